@@ -1,0 +1,38 @@
+/** What a NodeSet2 file says of itself, beside its nodes (OPC 10000-6 §F.3–F.5). */
+import type { NodeKey } from "./node-id";
+import type { RolePermission, XmlText } from "./node";
+
+/** A row of the Models table. Dates and versions are kept as written. */
+export type ModelEntry = {
+  readonly modelUri: string;
+  readonly version?: string;
+  readonly modelVersion?: string;
+  readonly publicationDate?: string;
+  readonly xmlSchemaUri?: string;
+  readonly accessRestrictions?: number;
+  readonly rolePermissions?: readonly RolePermission[];
+  readonly requiredModels: readonly ModelEntry[];
+  readonly otherAttributes?: Readonly<Record<string, string>>;
+};
+
+/** The head of one NodeSet. `namespaceUris` is the file's own table without namespace 0, in the order of the file. */
+export type ModelHeader = {
+  readonly namespaceUris: readonly string[];
+  readonly serverUris?: readonly string[];
+  readonly models: readonly ModelEntry[];
+  readonly aliases?: readonly (readonly [alias: string, key: NodeKey])[];
+  readonly extensions?: readonly XmlText[];
+  readonly lastModified?: string;
+  /** Comments before and directly behind the opening of the root element: licences stand there. */
+  readonly headComments?: readonly string[];
+  /** Namespace declarations and unknown attributes of the root element, as written. */
+  readonly rootAttributes?: Readonly<Record<string, string>>;
+  readonly otherElements?: readonly XmlText[];
+};
+
+/** The namespace that the model defines: the first row of Models, else the first namespace of the table. */
+export function getOwnNamespace(header: ModelHeader): string {
+  const uri = header.models[0]?.modelUri ?? header.namespaceUris[0];
+  if (uri === undefined) throw new RangeError("A model without a namespace");
+  return uri;
+}

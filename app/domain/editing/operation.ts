@@ -1,0 +1,92 @@
+/**
+ * Operations: the smallest edits of a model. Each is plain JSON, has an apply and an inverse, and names one conflict
+ * unit: (node, attribute), (source, type, target), a whole node, or one field of the header. User intents ("add a member",
+ * "instantiate", "delete with all below it") are commands that answer a list of operations.
+ */
+import type { NodeKey } from "../address-space/node-id";
+import type { ModelHeader } from "../address-space/model-header";
+import type { Node } from "../address-space/node";
+
+/** Every attribute of a node that may be set by itself: all but identity, class and references. */
+export type AttributeName =
+  | "nodeId"
+  | "order"
+  | "browseName"
+  | "symbolicName"
+  | "displayName"
+  | "description"
+  | "category"
+  | "documentation"
+  | "releaseStatus"
+  | "writeMask"
+  | "userWriteMask"
+  | "accessRestrictions"
+  | "hasNoPermissions"
+  | "rolePermissions"
+  | "extensions"
+  | "otherAttributes"
+  | "otherElements"
+  | "parent"
+  | "designToolOnly"
+  | "eventNotifier"
+  | "containsNoLoops"
+  | "value"
+  | "dataType"
+  | "valueRank"
+  | "arrayDimensions"
+  | "accessLevel"
+  | "userAccessLevel"
+  | "minimumSamplingInterval"
+  | "historizing"
+  | "translations"
+  | "executable"
+  | "userExecutable"
+  | "methodDeclaration"
+  | "argumentDescriptions"
+  | "isAbstract"
+  | "purpose"
+  | "definition"
+  | "symmetric"
+  | "inverseName";
+
+/** Where a reference is declared: at its source, at its target, or at both ends; ends outside the own model are skipped. */
+export type DeclaredAt = "source" | "target" | "both";
+
+export type Operation =
+  /** Adds a node with all it declares. */
+  | { readonly kind: "addNode"; readonly node: Node }
+  /** Removes a node that no other own node refers to any more. */
+  | { readonly kind: "removeNode"; readonly key: NodeKey }
+  /** Sets one attribute; an absent `value` takes it away. */
+  | { readonly kind: "setAttribute"; readonly key: NodeKey; readonly attribute: AttributeName; readonly value?: unknown }
+  /** `sourceIndex` and `targetIndex` are places in the lists of declared references; absent means at the end. */
+  | {
+      readonly kind: "addReference";
+      readonly source: NodeKey;
+      readonly type: NodeKey;
+      readonly target: NodeKey;
+      readonly declaredAt: DeclaredAt;
+      readonly sourceIndex?: number;
+      readonly targetIndex?: number;
+    }
+  | { readonly kind: "removeReference"; readonly source: NodeKey; readonly type: NodeKey; readonly target: NodeKey }
+  /** Sets one field of the model's header: version, required models, namespace table. */
+  | { readonly kind: "setHeader"; readonly field: keyof ModelHeader; readonly value?: unknown };
+
+/**
+ * A transaction: what one user did in one go. Stored as one row; undo is a new transaction made of `inverse`.
+ * `seq` is the model's sequence number that it got; `base` the one that the author saw.
+ */
+export type Transaction = {
+  readonly seq: number;
+  readonly base: number;
+  readonly clientId: string;
+  readonly clientSeq: number;
+  readonly author: string;
+  /** ISO 8601, UTC. */
+  readonly at: string;
+  /** The command for people and history: `add-member`, `set-unit`, `undo`. */
+  readonly label: string;
+  readonly operations: readonly Operation[];
+  readonly inverse: readonly Operation[];
+};
