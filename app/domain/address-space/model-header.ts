@@ -13,6 +13,7 @@ export type ModelEntry = {
   readonly rolePermissions?: readonly RolePermission[];
   readonly requiredModels: readonly ModelEntry[];
   readonly otherAttributes?: Readonly<Record<string, string>>;
+  readonly otherElements?: readonly XmlText[];
 };
 
 /** The head of one NodeSet. `namespaceUris` is the file's own table without namespace 0, in the order of the file. */

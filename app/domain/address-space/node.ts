@@ -28,14 +28,22 @@ export type DeclaredReference = {
   readonly target: NodeKey;
   readonly isForward: boolean;
   readonly serverUri?: string;
+  readonly otherAttributes?: Readonly<Record<string, string>>;
 };
 
 /**
- * XML kept as text, so that nothing is lost: a Value, an Extension, an element that we do not understand. Namespace
- * indices inside are replaced by URIs: `<Identifier>nsu=URI;i=1</Identifier>` and `<NamespaceIndex>URI</NamespaceIndex>`.
- * `prefixes` holds the prefixes ("" for the default namespace) that the text uses and an outer element declared.
+ * XML kept as text, so that nothing is lost: a Value, an Extension, an element that we do not understand. For `value`,
+ * `extensions` and `translations` it is what stands between the tags (`<Double xmlns="…">1.5</Double>`), for
+ * `otherElements` the whole element. Namespace indices inside a Value are replaced by URIs:
+ * `<Identifier>nsu=URI;i=1</Identifier>` and `<NamespaceIndex>URI</NamespaceIndex>` (index 0 stays as written).
+ * `prefixes` holds the prefixes ("" for the default namespace) that the text uses and an outer element declared;
+ * `attributes` what the tag around it carried, which no published file needs.
  */
-export type XmlText = { readonly xml: string; readonly prefixes?: Readonly<Record<string, string>> };
+export type XmlText = {
+  readonly xml: string;
+  readonly prefixes?: Readonly<Record<string, string>>;
+  readonly attributes?: Readonly<Record<string, string>>;
+};
 
 export type RolePermission = { readonly role: NodeKey; readonly permissions: number };
 
@@ -123,6 +131,7 @@ export type DataTypeField = {
   readonly isOptional?: boolean;
   readonly allowSubTypes?: boolean;
   readonly otherAttributes?: Readonly<Record<string, string>>;
+  readonly otherElements?: readonly XmlText[];
 };
 
 export type DataTypeDefinition = {
@@ -133,6 +142,7 @@ export type DataTypeDefinition = {
   readonly baseType?: string;
   readonly fields: readonly DataTypeField[];
   readonly otherAttributes?: Readonly<Record<string, string>>;
+  readonly otherElements?: readonly XmlText[];
 };
 
 export type DataTypeNode = NodeBase & {
