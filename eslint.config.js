@@ -3,9 +3,19 @@ import tseslint from "typescript-eslint";
 
 /** Globals of plain JavaScript run by Node.js; TypeScript files are checked by the compiler. */
 const nodeGlobals = Object.fromEntries(
-  ["process", "console", "Buffer", "URL", "AbortSignal", "AbortController", "fetch", "setTimeout", "clearTimeout", "setInterval", "clearInterval"].map(
-    (name) => [name, "readonly"],
-  ),
+  [
+    "process",
+    "console",
+    "Buffer",
+    "URL",
+    "AbortSignal",
+    "AbortController",
+    "fetch",
+    "setTimeout",
+    "clearTimeout",
+    "setInterval",
+    "clearInterval",
+  ].map((name) => [name, "readonly"]),
 );
 
 export default tseslint.config(

@@ -73,7 +73,9 @@ function seconds(since) {
 function report(name, passed, failed, since) {
   total.passed += passed;
   total.failed += failed;
-  console.log(`${failed === 0 ? "ok  " : "FAIL"} ${name.padEnd(14)} ${passed} passed, ${failed} failed  (${seconds(since)})`);
+  console.log(
+    `${failed === 0 ? "ok  " : "FAIL"} ${name.padEnd(14)} ${passed} passed, ${failed} failed  (${seconds(since)})`,
+  );
 }
 
 function show(text) {
@@ -146,7 +148,9 @@ function countResults(json) {
 }
 
 function describeFailure(test) {
-  return test.status === "failed" ? test.failureMessages.join("\n") : `The test did not run (${test.status}); a test may not be skipped.`;
+  return test.status === "failed"
+    ? test.failureMessages.join("\n")
+    : `The test did not run (${test.status}); a test may not be skipped.`;
 }
 
 async function runAll() {
@@ -154,10 +158,9 @@ async function runAll() {
   const hasChromium = await checkChromium();
   const [built] = await Promise.all([
     check("build", [[process.execPath, "app/cli/launch.mjs", "build"]]),
-    check("types", [
-      [bin("react-router"), "typegen"],
-      [bin("tsc")],
-    ]).then(() => check("types: domain", [[bin("tsc"), "-p", "app/domain/tsconfig.json"]])),
+    check("types", [[bin("react-router"), "typegen"], [bin("tsc")]]).then(() =>
+      check("types: domain", [[bin("tsc"), "-p", "app/domain/tsconfig.json"]]),
+    ),
     check("lint", [[bin("eslint"), ".", "--max-warnings=0"]]),
   ]);
   await runSuite("unit");
