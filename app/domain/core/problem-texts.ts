@@ -5,11 +5,17 @@
 import type { Problem } from "./result";
 import { addressSpaceProblemTexts } from "../address-space/problem-texts";
 import { editingProblemTexts } from "../editing/problem-texts";
+import { ioddProblemTexts } from "../iodd/problem-texts";
+import { testServerProblemTexts } from "../simulation/problem-texts";
+import { requestProblemTexts } from "./request-problem-texts";
 
 const texts: Readonly<Record<string, string>> = {
   "limit.file-size": "The file has {size} bytes; the limit is {limit} bytes (50 MB).",
   ...addressSpaceProblemTexts,
   ...editingProblemTexts,
+  ...ioddProblemTexts,
+  ...requestProblemTexts,
+  ...testServerProblemTexts,
 };
 
 /** The sentence for a problem, for people. An unknown code answers with the code itself, so that nothing is hidden. */

@@ -1,0 +1,89 @@
+/**
+ * Messages between the application and the process of a test server. Both ends parse what they get: the other end may be
+ * of another build, or broken. Everything that the child needs travels in `start`; it reads files, never the database.
+ */
+import { z } from "zod";
+
+const motionSchema = z.discriminatedUnion("kind", [
+  z.object({ kind: z.literal("sine"), low: z.number(), high: z.number(), period: z.number().positive(), phase: z.number() }),
+  z.object({ kind: z.literal("ramp"), low: z.number(), high: z.number(), period: z.number().positive(), phase: z.number() }),
+  z.object({ kind: z.literal("rise"), low: z.number(), high: z.number(), perSecond: z.number().positive(), phase: z.number() }),
+  z.object({ kind: z.literal("steps"), values: z.array(z.number()).min(1), secondsEach: z.number().positive(), phase: z.number() }),
+  z.object({ kind: z.literal("count"), start: z.number(), perSecond: z.number().positive(), last: z.number().positive() }),
+  z.object({ kind: z.literal("clock") }),
+  z.object({ kind: z.literal("static") }),
+]);
+
+const builtInTypeSchema = z.enum([
+  "Boolean", "SByte", "Byte", "Int16", "UInt16", "Int32", "UInt32", "Int64", "UInt64", "Float", "Double", "String",
+  "DateTime", "Guid", "ByteString", "XmlElement", "NodeId", "ExpandedNodeId", "StatusCode", "QualifiedName",
+  "LocalizedText", "ExtensionObject", "DataValue", "Variant", "DiagnosticInfo",
+]);
+
+export const simulatedVariableSchema = z.object({
+  nodeId: z.string(),
+  path: z.string(),
+  builtInType: builtInTypeSchema,
+  dataType: z.string(),
+  dimensions: z.array(z.number().int().positive()),
+  motion: motionSchema,
+  hasValue: z.boolean(),
+  isProperty: z.boolean(),
+});
+
+export const startSchema = z.object({
+  kind: z.literal("start"),
+  id: z.string(),
+  applicationName: z.string(),
+  applicationUri: z.string(),
+  /** Folder of the server's own keys and certificates. */
+  pkiFolder: z.string(),
+  host: z.string(),
+  /** 0 takes a free one. */
+  port: z.number().int().min(0).max(65535),
+  security: z.array(z.enum(["basic256sha256", "none"])).min(1),
+  userName: z.string(),
+  password: z.string(),
+  simulatedQuality: z.enum(["uncertain", "good"]),
+  /** NodeSet2 files in the order of their requirements, the base first. */
+  nodeSetFiles: z.array(z.string()).min(1),
+  simulation: z.array(simulatedVariableSchema),
+  maxSessions: z.number().int().positive(),
+});
+export type StartMessage = z.infer<typeof startSchema>;
+
+export const toChildSchema = z.discriminatedUnion("kind", [startSchema, z.object({ kind: z.literal("stop") })]);
+export type ToChildMessage = z.infer<typeof toChildSchema>;
+
+const sessionSchema = z.object({
+  name: z.string(),
+  user: z.string(),
+  security: z.string(),
+  since: z.string(),
+  subscriptions: z.number().int(),
+  monitoredItems: z.number().int(),
+});
+
+export const toParentSchema = z.discriminatedUnion("kind", [
+  z.object({ kind: z.literal("progress"), stage: z.enum(["process", "certificate", "nodesets", "simulation", "endpoint"]) }),
+  z.object({
+    kind: z.literal("ready"),
+    endpointUrl: z.string(),
+    certificateThumbprint: z.string(),
+    /** DER as base64, so that our own client trusts this server and no other. */
+    certificate: z.string(),
+    moving: z.number().int(),
+    fixed: z.number().int(),
+    /** NodeIds of the plan that the server does not have. */
+    missing: z.array(z.string()),
+  }),
+  z.object({ kind: z.literal("sessions"), sessions: z.array(sessionSchema) }),
+  z.object({ kind: z.literal("log"), level: z.enum(["info", "warning", "error"]), text: z.string() }),
+  z.object({
+    kind: z.literal("failed"),
+    code: z.string(),
+    data: z.record(z.string(), z.union([z.string(), z.number(), z.boolean()])),
+  }),
+  z.object({ kind: z.literal("stopped") }),
+]);
+export type ToParentMessage = z.infer<typeof toParentSchema>;

@@ -1,0 +1,115 @@
+/**
+ * The process of one test server. It is told everything by one message, reads files only, reports by messages, and ends
+ * when it is told to, when it fails, or when its parent is gone.
+ */
+import { join } from "node:path";
+import { setTimeout as wait } from "node:timers/promises";
+import type { OPCUAServer } from "node-opcua";
+import { toChildSchema, type StartMessage, type ToParentMessage } from "../messages";
+
+/** Sessions are looked at this often while the server runs, ms. */
+const SESSION_REPORT_INTERVAL = 1000;
+const SHUTDOWN_LIMIT = 2500;
+
+let running: { server: OPCUAServer; timer: NodeJS.Timeout } | undefined;
+let isEnding = false;
+
+process.on("message", (raw) => {
+  const message = toChildSchema.safeParse(raw);
+  if (!message.success) {
+    void fail("test-server.message", { detail: message.error.issues[0]?.message ?? "unreadable" });
+  } else if (message.data.kind === "stop") {
+    void end(0);
+  } else {
+    start(message.data).catch((error: unknown) => fail("test-server.start", { detail: error instanceof Error ? error.message : String(error) }));
+  }
+});
+process.on("disconnect", () => void end(0));
+process.on("SIGTERM", () => void end(0));
+// The terminal's Ctrl+C reaches the whole group; the parent decides when its children end.
+process.on("SIGINT", () => undefined);
+process.on("uncaughtException", (error) => void fail("test-server.crash", { detail: error.message }));
+process.on("unhandledRejection", (error) => void fail("test-server.crash", { detail: error instanceof Error ? error.message : String(error) }));
+
+async function start(config: StartMessage): Promise<void> {
+  send({ kind: "progress", stage: "process" });
+  // Loaded here and not at the head, so that "process" is reported before the one or two seconds that this takes.
+  const { createCertificateManager, createServer } = await import("./create-server");
+  const { addNotice } = await import("./add-notice");
+  const { bindSimulation } = await import("./bind-simulation");
+
+  send({ kind: "progress", stage: "certificate" });
+  const certificates = await createCertificateManager(config.pkiFolder);
+  const userCertificates = await createCertificateManager(join(config.pkiFolder, "users"));
+  const server = createServer(config, certificates, userCertificates);
+
+  send({ kind: "progress", stage: "nodesets" });
+  await server.initialize();
+  const space = server.engine.addressSpace;
+  if (!space) throw new Error("The server has no address space after its initialisation.");
+
+  send({ kind: "progress", stage: "simulation" });
+  addNotice(space);
+  const bound = bindSimulation(space, config.simulation, config.simulatedQuality, () => Date.now());
+
+  send({ kind: "progress", stage: "endpoint" });
+  await server.start();
+  const timer = await watchSessions(server);
+  running = { server, timer };
+  if (isEnding) return;
+  const port = server.endpoints[0]?.port ?? config.port;
+  const certificate = server.getCertificate();
+  const { createHash } = await import("node:crypto");
+  send({
+    kind: "ready",
+    endpointUrl: `opc.tcp://${config.host}:${port}`,
+    certificate: Buffer.from(certificate).toString("base64"),
+    certificateThumbprint: createHash("sha1").update(certificate).digest("hex"),
+    moving: bound.moving,
+    fixed: bound.fixed,
+    missing: bound.missing,
+  });
+}
+
+async function watchSessions(server: OPCUAServer): Promise<NodeJS.Timeout> {
+  const { listSessions } = await import("./list-sessions");
+  let last = "[]";
+  const report = (): void => {
+    const sessions = listSessions(server);
+    const text = JSON.stringify(sessions);
+    if (text === last) return;
+    last = text;
+    send({ kind: "sessions", sessions });
+  };
+  server.on("session_activated", (session) => log("info", `Session “${session.sessionName}” opened.`));
+  server.on("session_closed", (session) => log("info", `Session “${session.sessionName}” closed.`));
+  server.on("connectionRefused", () => log("warning", "A connection was refused: too many connections."));
+  server.on("openSecureChannelFailure", () => log("warning", "A secure channel could not be opened."));
+  return setInterval(report, SESSION_REPORT_INTERVAL);
+}
+
+function log(level: "info" | "warning" | "error", text: string): void {
+  send({ kind: "log", level, text });
+}
+
+function send(message: ToParentMessage): void {
+  if (process.connected) process.send?.(message);
+}
+
+async function fail(code: string, data: Record<string, string | number | boolean>): Promise<void> {
+  send({ kind: "failed", code, data });
+  await end(1);
+}
+
+/** Ends within the limit whatever the server does; sessions get a chance to be told. */
+async function end(exitCode: number): Promise<void> {
+  if (isEnding) return;
+  isEnding = true;
+  if (running) {
+    clearInterval(running.timer);
+    await Promise.race([running.server.shutdown(100), wait(SHUTDOWN_LIMIT)]).catch(() => undefined);
+  }
+  send({ kind: "stopped" });
+  // Leaves time for the last message on the channel; nothing else keeps the process.
+  setTimeout(() => process.exit(exitCode), 20);
+}
