@@ -75,7 +75,7 @@ export const layerRules: readonly LayerRule[] = [
   {
     name: "db",
     files: /^app\/db\//,
-    mayImport: ["domain", "db", "utils"],
+    mayImport: ["domain", "db", "permissions", "utils"],
     node: true,
     advice: "The database layer stores rows: put the use case into a service and call the repository from there.",
   },
