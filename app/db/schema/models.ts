@@ -1,0 +1,210 @@
+/** Models and everything that hangs on their working state. */
+import { sql } from "drizzle-orm";
+import { blob, index, integer, primaryKey, sqliteTable, text, uniqueIndex } from "drizzle-orm/sqlite-core";
+import type { Operation } from "../../domain/editing/operation";
+import { organization } from "./auth";
+
+const timestamp = (name: string) => integer(name, { mode: "timestamp_ms" });
+
+export type ModelKind = "types" | "machines";
+
+export const model = sqliteTable(
+  "model",
+  {
+    id: text("id").primaryKey(),
+    organizationId: text("organization_id")
+      .notNull()
+      .references(() => organization.id, { onDelete: "cascade" }),
+    name: text("name").notNull(),
+    kind: text("kind").$type<ModelKind>().notNull(),
+    namespaceUri: text("namespace_uri").notNull(),
+    version: text("version"),
+    publicationDate: text("publication_date"),
+    /** Sequence number of the last accepted transaction; 0 directly after revision 0. */
+    headSeq: integer("head_seq").notNull().default(0),
+    nodeCount: integer("node_count").notNull().default(0),
+    createdAt: timestamp("created_at").notNull(),
+    createdBy: text("created_by").notNull(),
+    updatedAt: timestamp("updated_at").notNull(),
+    updatedBy: text("updated_by").notNull(),
+  },
+  (table) => [uniqueIndex("model_namespace").on(table.organizationId, table.namespaceUri)],
+);
+
+/** Bytes by their SHA-256; revisions, snapshots and uploads name them. `bytes` is gzip of what the hash was made of. */
+export const contentBlob = sqliteTable("blob", {
+  hash: text("hash").primaryKey(),
+  bytes: blob("bytes", { mode: "buffer" }).notNull(),
+  size: integer("size").notNull(),
+  createdAt: timestamp("created_at").notNull(),
+});
+
+/** A frozen state: number 0 is the import or the creation, later ones are frozen by people. Never changed. */
+export const revision = sqliteTable(
+  "revision",
+  {
+    id: text("id").primaryKey(),
+    modelId: text("model_id")
+      .notNull()
+      .references(() => model.id, { onDelete: "cascade" }),
+    number: integer("number").notNull(),
+    seq: integer("seq").notNull(),
+    packHash: text("pack_hash")
+      .notNull()
+      .references(() => contentBlob.hash),
+    /** The bytes of the imported file, when the revision came from one. */
+    fileHash: text("file_hash").references(() => contentBlob.hash),
+    fileName: text("file_name"),
+    message: text("message").notNull(),
+    author: text("author").notNull(),
+    at: timestamp("at").notNull(),
+    nodeCount: integer("node_count").notNull(),
+    counts: text("counts", { mode: "json" }).$type<{ error: number; warning: number; hint: number }>(),
+  },
+  (table) => [uniqueIndex("revision_number").on(table.modelId, table.number)],
+);
+
+/** The own layer as a pack at some sequence number, so that loading replays only the tail. */
+export const snapshot = sqliteTable(
+  "snapshot",
+  {
+    modelId: text("model_id")
+      .notNull()
+      .references(() => model.id, { onDelete: "cascade" }),
+    seq: integer("seq").notNull(),
+    packHash: text("pack_hash")
+      .notNull()
+      .references(() => contentBlob.hash),
+  },
+  (table) => [primaryKey({ columns: [table.modelId, table.seq] })],
+);
+
+export const transaction = sqliteTable(
+  "model_transaction",
+  {
+    modelId: text("model_id")
+      .notNull()
+      .references(() => model.id, { onDelete: "cascade" }),
+    seq: integer("seq").notNull(),
+    base: integer("base").notNull(),
+    clientId: text("client_id").notNull(),
+    clientSeq: integer("client_seq").notNull(),
+    authorId: text("author_id").notNull(),
+    author: text("author").notNull(),
+    at: text("at").notNull(),
+    label: text("label").notNull(),
+    operations: text("operations", { mode: "json" }).$type<readonly Operation[]>().notNull(),
+    inverse: text("inverse", { mode: "json" }).$type<readonly Operation[]>().notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.modelId, table.seq] }),
+    uniqueIndex("transaction_client").on(table.modelId, table.clientId, table.clientSeq),
+  ],
+);
+
+/** The highest numeric identifier ever given in a namespace; kept when the model is deleted. */
+export const nodeIdLedger = sqliteTable(
+  "node_id_ledger",
+  {
+    organizationId: text("organization_id")
+      .notNull()
+      .references(() => organization.id, { onDelete: "cascade" }),
+    namespaceUri: text("namespace_uri").notNull(),
+    highest: integer("highest").notNull(),
+  },
+  (table) => [primaryKey({ columns: [table.organizationId, table.namespaceUri] })],
+);
+
+/** Blocks of numeric identifiers, each leased to one editing window. */
+export const nodeIdLease = sqliteTable(
+  "node_id_lease",
+  {
+    id: text("id").primaryKey(),
+    organizationId: text("organization_id")
+      .notNull()
+      .references(() => organization.id, { onDelete: "cascade" }),
+    namespaceUri: text("namespace_uri").notNull(),
+    clientId: text("client_id").notNull(),
+    userId: text("user_id").notNull(),
+    from: integer("from_id").notNull(),
+    to: integer("to_id").notNull(),
+    at: timestamp("at").notNull(),
+  },
+  (table) => [index("node_id_lease_namespace").on(table.organizationId, table.namespaceUri)],
+);
+
+export type SheetLayout = {
+  readonly positions: Readonly<Record<string, { readonly x: number; readonly y: number }>>;
+  readonly [part: string]: unknown;
+};
+
+export const sheet = sqliteTable(
+  "sheet",
+  {
+    id: text("id").primaryKey(),
+    modelId: text("model_id")
+      .notNull()
+      .references(() => model.id, { onDelete: "cascade" }),
+    name: text("name").notNull(),
+    position: integer("position").notNull(),
+    layout: text("layout", { mode: "json" }).$type<SheetLayout>().notNull(),
+    version: integer("version").notNull().default(1),
+    updatedAt: timestamp("updated_at").notNull(),
+    updatedBy: text("updated_by").notNull(),
+  },
+  (table) => [index("sheet_model").on(table.modelId)],
+);
+
+/** NodeSets that the organisation added to its library; read only, beside the published ones. */
+export const uploadedNodeSet = sqliteTable(
+  "uploaded_node_set",
+  {
+    id: text("id").primaryKey(),
+    organizationId: text("organization_id")
+      .notNull()
+      .references(() => organization.id, { onDelete: "cascade" }),
+    modelUri: text("model_uri").notNull(),
+    version: text("version"),
+    publicationDate: text("publication_date"),
+    fileName: text("file_name").notNull(),
+    fileHash: text("file_hash")
+      .notNull()
+      .references(() => contentBlob.hash),
+    packHash: text("pack_hash")
+      .notNull()
+      .references(() => contentBlob.hash),
+    nodeCount: integer("node_count").notNull(),
+    requiredModels: text("required_models", { mode: "json" })
+      .$type<readonly { modelUri: string; version?: string; publicationDate?: string }[]>()
+      .notNull(),
+    uploadedBy: text("uploaded_by").notNull(),
+    at: timestamp("at").notNull(),
+  },
+  (table) => [
+    uniqueIndex("uploaded_node_set_version").on(
+      table.organizationId,
+      table.modelUri,
+      sql`coalesce(${table.version}, '')`,
+      sql`coalesce(${table.publicationDate}, '')`,
+    ),
+  ],
+);
+
+/** A finding accepted with a reason; it ends when the facts at the node change. */
+export const waiver = sqliteTable(
+  "waiver",
+  {
+    id: text("id").primaryKey(),
+    modelId: text("model_id")
+      .notNull()
+      .references(() => model.id, { onDelete: "cascade" }),
+    rule: text("rule").notNull(),
+    nodeKey: text("node_key").notNull(),
+    facts: text("facts", { mode: "json" }).$type<readonly string[]>().notNull(),
+    reason: text("reason").notNull(),
+    author: text("author").notNull(),
+    at: timestamp("at").notNull(),
+    endsAt: timestamp("ends_at"),
+  },
+  (table) => [uniqueIndex("waiver_place").on(table.modelId, table.rule, table.nodeKey)],
+);
