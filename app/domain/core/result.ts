@@ -24,7 +24,8 @@ export type Problem = {
   data?: Readonly<Record<string, string | number | boolean>>;
 };
 
-export type Result<T> = { ok: true; value: T; problems: readonly Problem[] } | { ok: false; problems: readonly Problem[] };
+export type Result<T> =
+  { ok: true; value: T; problems: readonly Problem[] } | { ok: false; problems: readonly Problem[] };
 
 export function ok<T>(value: T, problems: readonly Problem[] = []): Result<T> {
   return { ok: true, value, problems };
