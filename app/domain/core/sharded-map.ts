@@ -7,7 +7,8 @@ const SHARDS = 512;
 
 function shardOf(key: string): number {
   let hash = 2166136261;
-  for (let i = key.length - 1, stop = Math.max(0, i - 24); i >= stop; i--) hash = Math.imul(hash ^ key.charCodeAt(i), 16777619);
+  for (let i = key.length - 1, stop = Math.max(0, i - 24); i >= stop; i--)
+    hash = Math.imul(hash ^ key.charCodeAt(i), 16777619);
   return (hash >>> 0) & (SHARDS - 1);
 }
 
@@ -62,6 +63,19 @@ export class ShardedMap<V> {
     return this.#replaced(index, shard, this.size - 1);
   }
 
+  /** Keys whose entries differ between this map and a later one; shards that both share cost one comparison. */
+  listChangedKeys(after: ShardedMap<V>): string[] {
+    const changed: string[] = [];
+    for (let i = 0; i < SHARDS; i++) {
+      const old = this.#shards[i];
+      const now = after.#shards[i];
+      if (old === now) continue;
+      for (const [key, value] of old ?? []) if (now?.get(key) !== value || !now.has(key)) changed.push(key);
+      for (const key of now?.keys() ?? []) if (!old?.has(key)) changed.push(key);
+    }
+    return changed;
+  }
+
   *keys(): IterableIterator<string> {
     for (const shard of this.#shards) if (shard) yield* shard.keys();
   }
@@ -75,7 +89,10 @@ export class ShardedMap<V> {
   }
 
   #replaced(index: number, shard: ReadonlyMap<string, V>, size: number): ShardedMap<V> {
-    const shards = this.#shards.length === 0 ? new Array<ReadonlyMap<string, V> | undefined>(SHARDS).fill(undefined) : this.#shards.slice();
+    const shards =
+      this.#shards.length === 0
+        ? new Array<ReadonlyMap<string, V> | undefined>(SHARDS).fill(undefined)
+        : this.#shards.slice();
     shards[index] = shard;
     return new ShardedMap<V>(shards, size);
   }

@@ -1,0 +1,103 @@
+/**
+ * Members that types give to their instances (OPC 10000-3 §6.2, §6.3.3): the instance declarations directly below a type
+ * and its supertypes, where a subtype's declaration of the same BrowseName overrides.
+ */
+import type { NodeKey } from "../address-space/node-id";
+import type { Node } from "../address-space/node";
+import { formatQualifiedName } from "../address-space/qualified-name";
+import { StandardModellingRule as M, StandardReferenceType as R } from "../address-space/standard-ids";
+import type { CheckContext, Lookup } from "./check-context";
+import { findModellingRule, listSupertypes } from "./lookups";
+
+/** A declaration with its rule and the type (or Interface, or declaration) that it hangs on. */
+export type Member = { readonly node: Node; readonly rule: NodeKey; readonly owner: NodeKey; readonly referenceType: NodeKey };
+
+/** Rules that name one member each; placeholders and ExposesItsArray name none. */
+export function isNaming(rule: NodeKey): boolean {
+  return rule === M.Mandatory || rule === M.Optional;
+}
+
+export function isPlaceholder(rule: NodeKey | undefined): boolean {
+  return rule === M.MandatoryPlaceholder || rule === M.OptionalPlaceholder;
+}
+
+const ownMembers: Lookup<readonly Member[]> = {
+  compute(ctx, key) {
+    const found: Member[] = [];
+    const seen = new Set<NodeKey>();
+    for (const edge of ctx.childEdges(key)) {
+      const node = ctx.node(edge.target);
+      const rule = findModellingRule(ctx, edge.target);
+      if (!node || rule === undefined || seen.has(node.key)) continue;
+      seen.add(node.key);
+      found.push({ node, rule, owner: key, referenceType: edge.type });
+    }
+    return found;
+  },
+};
+
+/** The declarations directly below a type or a declaration, not the inherited ones. */
+export function listOwnMembers(ctx: CheckContext, key: NodeKey): readonly Member[] {
+  return ctx.lookUp(ownMembers, key);
+}
+
+const inheritedMembers: Lookup<ReadonlyMap<string, Member>> = {
+  compute(ctx, key) {
+    const members = new Map<string, Member>();
+    for (const type of [key, ...listSupertypes(ctx, key)]) {
+      for (const member of listOwnMembers(ctx, type)) {
+        const name = formatQualifiedName(member.node.browseName);
+        if (!members.has(name)) members.set(name, member);
+      }
+    }
+    return members;
+  },
+};
+
+/** The members of a type with the inherited ones, by BrowseName with namespace; the nearest declaration wins. */
+export function getMembers(ctx: CheckContext, type: NodeKey): ReadonlyMap<string, Member> {
+  return ctx.lookUp(inheritedMembers, type);
+}
+
+const interfaces: Lookup<readonly NodeKey[]> = {
+  compute(ctx, key) {
+    const found = new Set<NodeKey>();
+    const types = ctx.closure(R.HasInterface);
+    for (const at of [key, ...listSupertypes(ctx, key)]) {
+      for (const edge of ctx.otherEdges(at)) if (types.has(edge.type)) found.add(edge.target);
+    }
+    return [...found];
+  },
+};
+
+/** Interfaces that a node or its supertypes apply (OPC 10000-3 §4.10). */
+export function listInterfaces(ctx: CheckContext, key: NodeKey): readonly NodeKey[] {
+  return ctx.lookUp(interfaces, key);
+}
+
+/** The declaration that the supertypes give for the name; undefined where the type is the first to declare it. */
+export function findInheritedMember(ctx: CheckContext, type: NodeKey, browseName: Node["browseName"]): Member | undefined {
+  const [supertype] = listSupertypes(ctx, type);
+  return supertype === undefined ? undefined : getMembers(ctx, supertype).get(formatQualifiedName(browseName));
+}
+
+/** Children of a node by BrowseName with namespace; several where names repeat. */
+const children: Lookup<ReadonlyMap<string, readonly Node[]>> = {
+  compute(ctx, key) {
+    const found = new Map<string, Node[]>();
+    for (const edge of ctx.childEdges(key)) {
+      const node = ctx.node(edge.target);
+      if (!node) continue;
+      const name = formatQualifiedName(node.browseName);
+      const same = found.get(name);
+      if (!same) found.set(name, [node]);
+      else if (!same.includes(node)) same.push(node);
+    }
+    return found;
+  },
+};
+
+export function getChildren(ctx: CheckContext, key: NodeKey): ReadonlyMap<string, readonly Node[]> {
+  return ctx.lookUp(children, key);
+}
+

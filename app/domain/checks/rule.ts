@@ -1,0 +1,76 @@
+/**
+ * A rule: one file, one number, one text. It looks at one node (or at the model's header) and reports what breaks it.
+ *
+ * Rules read the graph through the context only: the context notes what was read, which is how an edit finds the nodes
+ * that must be checked again. A rule keeps no state, asks for ids and never for names where the standard means ids, and
+ * answers to every graph, however broken, without throwing.
+ */
+import type { Node, NodeClass } from "../address-space/node";
+import type { Result, Severity } from "../core/result";
+import type { Operation } from "../editing/operation";
+import type { AddressSpace } from "../address-space/address-space";
+import type { NodeId, NodeKey } from "../address-space/node-id";
+import type { CheckContext } from "./check-context";
+import type { ExampleModel } from "./example-model";
+import type { Finding, ReportFunction, RuleId } from "./finding";
+
+/** What a fix may ask for: identities for nodes that it makes. */
+export type FixContext = { readonly allocate: () => NodeId };
+
+/** Answers the operations that mend a finding, all in one undo step. */
+export type Fix = {
+  /** What the fix does, as an imperative sentence for a button. */
+  readonly label: string;
+  readonly apply: (space: AddressSpace, finding: Finding, context: FixContext) => Result<readonly Operation[]>;
+};
+
+/** Builds a small model; the bad one answers the node that the rule must name ("model" for the model as a whole). */
+export type Example = { readonly text: string; readonly build: (m: ExampleModel) => NodeKey | "model" | undefined };
+
+type RuleBase = {
+  readonly id: RuleId;
+  readonly title: string;
+  /** The severest that the rule reports. */
+  readonly severity: Severity;
+  /** Part, edition and section. */
+  readonly clause: string;
+  readonly priority: 1 | 2;
+  /** What must hold. */
+  readonly condition: string;
+  /** What happens in practice where it does not hold. */
+  readonly why: string;
+  readonly examples: { readonly good: Example; readonly bad: Example };
+  readonly fix?: Fix;
+};
+
+export type NodeRule = RuleBase & {
+  readonly concerns: readonly NodeClass[];
+  readonly check: (node: Node, ctx: CheckContext, report: ReportFunction) => void;
+};
+
+export type ModelRule = RuleBase & {
+  readonly concerns: "model";
+  readonly check: (ctx: CheckContext, report: ReportFunction) => void;
+};
+
+export type Rule = NodeRule | ModelRule;
+
+export const ALL_CLASSES: readonly NodeClass[] = [
+  "Object",
+  "Variable",
+  "Method",
+  "View",
+  "ObjectType",
+  "VariableType",
+  "DataType",
+  "ReferenceType",
+];
+
+export const TYPE_CLASSES: readonly NodeClass[] = ["ObjectType", "VariableType", "DataType", "ReferenceType"];
+
+const EDITIONS: Readonly<Record<number, string>> = { 16: "1.05.04", 11: "1.05.04" };
+
+/** `OPC 10000-3 v1.05.06 §4.4.4`. The editions are those in which the sections were read. */
+export function clause(part: number, section: string): string {
+  return `OPC 10000-${part} v${EDITIONS[part] ?? "1.05.06"} ${section}`;
+}

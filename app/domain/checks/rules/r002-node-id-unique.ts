@@ -1,0 +1,39 @@
+import { formatNodeId, numericNodeId } from "../../address-space/node-id";
+import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { tagOf } from "../tags";
+
+export const r002: NodeRule = {
+  id: "R002",
+  title: "NodeId unique in the loaded set",
+  severity: "error",
+  clause: clause(3, "§5.2.2, §8.2.2"),
+  priority: 1,
+  concerns: ALL_CLASSES,
+  condition: "No two nodes of the model and its required models share namespace URI, identifier type and identifier.",
+  why: "The second node replaces the first or is refused when the file is loaded, and every reference to the identifier becomes ambiguous.",
+  check(node, ctx, report) {
+    const twins = ctx.listTagged(tagOf.nodeId(node.nodeId)).filter((key) => key !== node.key);
+    for (const twin of twins) {
+      const isModelTwice = !ctx.isOwn(twin) && ctx.header.models.some((m) => m.modelUri === node.nodeId.namespaceUri);
+      if (isModelTwice) continue;
+      report({
+        attribute: "nodeId",
+        message: `The NodeId ${formatNodeId(node.nodeId)} is given twice.`,
+        facts: [
+          `This node: ${node.browseName.name}, ${node.nodeClass}`,
+          `The other: ${ctx.nameOf(twin)}, ${ctx.node(twin)?.nodeClass ?? "unknown class"}, in ${ctx.isOwn(twin) ? "this model" : "a required model"}`,
+        ],
+      });
+    }
+  },
+  examples: {
+    good: { text: "Every node has an identifier of its own.", build: (m) => (m.objectType("PumpType"), m.objectType("ValveType")) },
+    bad: {
+      text: "Two types with the same identifier.",
+      build: (m) => {
+        m.objectType("PumpType", { nodeId: numericNodeId(m.uri, 5001) });
+        return m.objectType("ValveType", { nodeId: numericNodeId(m.uri, 5001) });
+      },
+    },
+  },
+};

@@ -1,0 +1,34 @@
+import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+
+const LIMIT = 512;
+
+export const r016: NodeRule = {
+  id: "R016",
+  title: "DisplayName present and at most 512 characters",
+  severity: "error",
+  clause: clause(3, "§5.2.1, Table 7, §5.2.5"),
+  priority: 1,
+  concerns: ALL_CLASSES,
+  condition: "A node has at least one DisplayName of at most 512 characters. An empty text is a warning (common practice, no source).",
+  why: "The DisplayName is what operators read. The file's schema allows it to be left out, but the attribute is mandatory in a server.",
+  check(node, _ctx, report) {
+    const attribute = "displayName";
+    const { displayName, browseName } = node;
+    if (displayName.length === 0) {
+      report({ attribute, message: `${browseName.name} has no DisplayName.`, facts: ["DisplayName elements: 0"] });
+    }
+    for (const { text, locale } of displayName) {
+      const where = locale ? ` (${locale})` : "";
+      if (text.length > LIMIT) {
+        report({ attribute, message: `The DisplayName${where} has ${text.length} characters.`, facts: [`Limit: ${LIMIT} characters`] });
+      }
+      if (text.trim() === "") {
+        report({ attribute, severity: "warning", message: `The DisplayName${where} of ${browseName.name} is empty.`, facts: ["Text: empty"] });
+      }
+    }
+  },
+  examples: {
+    good: { text: "One DisplayName.", build: (m) => m.objectType("PumpType") },
+    bad: { text: "No DisplayName.", build: (m) => m.objectType("PumpType", { set: { displayName: [] } }) },
+  },
+};
