@@ -1,0 +1,30 @@
+import { useFetcher, useFetchers } from "react-router";
+import { Segments } from "~/components/ui/segments";
+import { isTheme, type Theme } from "~/utils/theme";
+
+const fetcherKey = "theme";
+
+/** The theme that was just chosen, before the server has answered. */
+export function usePendingTheme(): Theme | undefined {
+  const chosen = useFetchers()
+    .find((fetcher) => fetcher.key === fetcherKey)
+    ?.formData?.get("theme");
+  return isTheme(chosen) ? chosen : undefined;
+}
+
+export function ThemeSwitch({ theme }: { theme: Theme }) {
+  const fetcher = useFetcher({ key: fetcherKey });
+  const pending = usePendingTheme();
+  return (
+    <Segments
+      label="Theme"
+      value={pending ?? theme}
+      onChange={(next) => void fetcher.submit({ theme: next }, { method: "post", action: "/theme" })}
+      options={[
+        { value: "light", label: "Light" },
+        { value: "dark", label: "Dark" },
+        { value: "system", label: "System" },
+      ]}
+    />
+  );
+}
