@@ -11,9 +11,15 @@ export function snapshotOwn(layer: Layer): unknown {
     header: layer.header,
     nodes: new Map(layer.nodes.entries()),
     ids: new Map(layer.keysByNodeId.entries()),
-    outgoing: new Map(layer.outgoing.entries()),
-    incoming: new Map(layer.incoming.entries()),
+    outgoing: toPlain(layer.outgoing),
+    incoming: toPlain(layer.incoming),
   };
+}
+
+function toPlain(index: Layer["outgoing"]): Map<string, unknown> {
+  const plain = new Map<string, unknown>();
+  for (const [key, { edges, declarers, distinct }] of index.entries()) plain.set(key, { edges, declarers, distinct });
+  return plain;
 }
 
 /** The own layer's indexes are those of a fresh build: no edit leaves a trace in them. */

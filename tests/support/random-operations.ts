@@ -2,6 +2,7 @@ import fc from "fast-check";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { DeclaredReference, Node, NodeClass } from "~/domain/address-space/node";
 import { numericNodeId, standardKey, toNodeKey, type NodeKey } from "~/domain/address-space/node-id";
+import { isRequiredAttribute } from "~/domain/editing/node-schema";
 import type { AttributeName, Operation } from "~/domain/editing/operation";
 import { makeNode, TEST_NAMESPACE } from "./small-standard";
 
@@ -80,5 +81,5 @@ function makeAttribute({ a, b, c, text, flag }: Choice, idBase: number): { attri
     { attribute: "parent", value: toNodeKey(numericNodeId(TEST_NAMESPACE, c)) },
   ];
   const chosen = pick(values, a);
-  return flag && a % 3 === 0 ? { attribute: chosen.attribute } : chosen;
+  return flag && !isRequiredAttribute(chosen.attribute) ? { attribute: chosen.attribute } : chosen;
 }

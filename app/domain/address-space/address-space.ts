@@ -9,70 +9,43 @@
  */
 import { ShardedMap } from "../core/sharded-map";
 import { formatNodeId, type NodeId, type NodeKey } from "./node-id";
+import { compareRank, isSameEdge, listDistinctEdges, NO_EDGES, type Edge, type EdgeBundle } from "./edge-bundle";
+import { buildEdgeIndex, updateEdgeIndex } from "./edge-index";
 import type { ModelHeader } from "./model-header";
 import type { Node } from "./node";
 
-/** A reference seen from nowhere in particular: always source → target. */
-export type Edge = { readonly source: NodeKey; readonly type: NodeKey; readonly target: NodeKey };
+export type { Edge } from "./edge-bundle";
+export { isSameEdge } from "./edge-bundle";
 
 export type Layer = {
   readonly header: ModelHeader;
   readonly nodes: ShardedMap<Node>;
   /** NodeId text → key. */
   readonly keysByNodeId: ShardedMap<NodeKey>;
-  /** Edges declared in this layer, at their source and at their target; one that is declared twice stands twice. */
-  readonly outgoing: ShardedMap<readonly Edge[]>;
-  readonly incoming: ShardedMap<readonly Edge[]>;
+  /** Edges declared in this layer, at their source and at their target; see edge-bundle.ts. */
+  readonly outgoing: ShardedMap<EdgeBundle>;
+  readonly incoming: ShardedMap<EdgeBundle>;
   /** The order number that the next new node gets. */
   readonly nextOrder: number;
 };
 
-const NO_EDGES: readonly Edge[] = [];
-
 /** Builds a layer in one go. Of two nodes with one key the later wins; the reader reports the pair. */
 export function buildLayer(header: ModelHeader, nodes: readonly Node[]): Layer {
-  const outgoing = new Map<NodeKey, Edge[]>();
-  const incoming = new Map<NodeKey, Edge[]>();
-  let nextOrder = 0;
-  for (const node of nodes) {
-    if (node.order >= nextOrder) nextOrder = node.order + 1;
-    for (const edge of declaredEdges(node)) {
-      pushTo(outgoing, edge.source, edge);
-      pushTo(incoming, edge.target, edge);
-    }
-  }
+  const byKey = ShardedMap.from(nodes.map((n) => [n.key, n] as const));
+  const ranked = listRanked(nodes.length === byKey.size ? nodes : [...byKey.values()]);
   return {
     header,
-    nodes: ShardedMap.from(nodes.map((n) => [n.key, n] as const)),
-    keysByNodeId: ShardedMap.from(nodes.map((n) => [formatNodeId(n.nodeId), n.key] as const)),
-    outgoing: ShardedMap.from(outgoing),
-    incoming: ShardedMap.from(incoming),
-    nextOrder,
+    nodes: byKey,
+    keysByNodeId: ShardedMap.from(ranked.map((n) => [formatNodeId(n.nodeId), n.key] as const)),
+    ...buildEdgeIndex(ranked),
+    nextOrder: (ranked.at(-1)?.order ?? -1) + 1,
   };
 }
 
-function pushTo(map: Map<NodeKey, Edge[]>, key: NodeKey, edge: Edge): void {
-  const list = map.get(key);
-  if (list) list.push(edge);
-  else map.set(key, [edge]);
-}
-
-/** The edges that a node declares; references to other servers are no edges of this graph. */
-function declaredEdges(node: Node): Edge[] {
-  const edges: Edge[] = [];
-  for (const reference of node.references) {
-    if (reference.serverUri !== undefined) continue;
-    edges.push(
-      reference.isForward
-        ? { source: node.key, type: reference.type, target: reference.target }
-        : { source: reference.target, type: reference.type, target: node.key },
-    );
-  }
-  return edges;
-}
-
-export function isSameEdge(a: Edge, b: Edge): boolean {
-  return a.source === b.source && a.target === b.target && a.type === b.type;
+/** The nodes by `order`; two windows may have chosen one number, then the key decides, so that all agree. */
+function listRanked(nodes: readonly Node[]): readonly Node[] {
+  const isRanked = nodes.every((n, i) => i === 0 || compareRank(nodes[i - 1] as Node, n) < 0);
+  return isRanked ? nodes : [...nodes].sort(compareRank);
 }
 
 export class AddressSpace {
@@ -124,21 +97,21 @@ export class AddressSpace {
 
   /** The nodes of the own model in their order. */
   listOwnNodes(): Node[] {
-    return [...this.own.nodes.values()].sort((a, b) => a.order - b.order);
+    return [...this.own.nodes.values()].sort(compareRank);
   }
 
-  /** All edges that start at the node, each once, in the order of declaration. */
+  /** All edges that start at the node, each once: required models first, then in the order of the declaring nodes. */
   edgesFrom(key: NodeKey): readonly Edge[] {
-    return collectEdges(this.layers, (layer) => layer.outgoing.get(key));
+    return collectEdges(this.layers, (layer) => layer.outgoing.get(key)?.distinct);
   }
 
   /** All edges that end at the node, each once. */
   edgesTo(key: NodeKey): readonly Edge[] {
-    return collectEdges(this.layers, (layer) => layer.incoming.get(key));
+    return collectEdges(this.layers, (layer) => layer.incoming.get(key)?.distinct);
   }
 
   hasEdge(edge: Edge): boolean {
-    return this.layers.some((layer) => layer.outgoing.get(edge.source)?.some((e) => isSameEdge(e, edge)) ?? false);
+    return this.layers.some((layer) => hasEdge(layer, edge));
   }
 
   /** Adds or replaces a node of the own model. */
@@ -151,7 +124,7 @@ export class AddressSpace {
       ...this.own,
       nodes: this.own.nodes.with(node.key, node),
       keysByNodeId,
-      ...reindexed(this.own, old, node),
+      ...updateEdgeIndex(this.own, old, node),
       nextOrder: Math.max(this.own.nextOrder, node.order + 1),
     };
     return this.#withOwn(layer, node.nodeClass === "ReferenceType" || old?.nodeClass === "ReferenceType");
@@ -165,7 +138,7 @@ export class AddressSpace {
       ...this.own,
       nodes: this.own.nodes.without(key),
       keysByNodeId: this.own.keysByNodeId.without(formatNodeId(old.nodeId)),
-      ...reindexed(this.own, old, undefined),
+      ...updateEdgeIndex(this.own, old, undefined),
     };
     return this.#withOwn(layer, old.nodeClass === "ReferenceType");
   }
@@ -184,49 +157,32 @@ export class AddressSpace {
   }
 }
 
+/** The edges of a node that other nodes of the layer declare: what keeps it from being removed. */
+export function listUses(layer: Layer, node: Node): Edge[] {
+  const uses: Edge[] = [];
+  for (const bundle of [layer.outgoing.get(node.key), layer.incoming.get(node.key)]) {
+    const declarers = bundle?.declarers;
+    bundle?.edges.forEach((edge, i) => {
+      if (declarers?.[i] !== node.key) uses.push(edge);
+    });
+  }
+  return uses;
+}
+
+/** Whether the layer declares the edge. Asks the smaller of the two bundles: hubs have tens of thousands of edges. */
+export function hasEdge(layer: Layer, edge: Edge): boolean {
+  const from = layer.outgoing.get(edge.source);
+  const to = layer.incoming.get(edge.target);
+  if (!from || !to) return false;
+  return (from.size <= to.size ? from : to).distinct.some((e) => isSameEdge(e, edge));
+}
+
+/** One layer answers nearly always; its list is then shared, not copied. */
 function collectEdges(layers: readonly Layer[], pick: (layer: Layer) => readonly Edge[] | undefined): readonly Edge[] {
-  const found: Edge[] = [];
+  let found: readonly Edge[] = NO_EDGES;
   for (const layer of layers) {
     const edges = pick(layer);
-    if (edges) found.push(...edges);
+    if (edges) found = found.length === 0 ? edges : listDistinctEdges([...found, ...edges]);
   }
-  if (found.length < 2) return found.length === 0 ? NO_EDGES : found;
-  return found.length < 16 ? found.filter((e, i) => found.findIndex((o) => isSameEdge(o, e)) === i) : dedupe(found);
-}
-
-function dedupe(edges: readonly Edge[]): Edge[] {
-  const seen = new Set<string>();
-  return edges.filter((e) => {
-    const id = `${e.source}\n${e.type}\n${e.target}`;
-    if (seen.has(id)) return false;
-    seen.add(id);
-    return true;
-  });
-}
-
-function reindexed(layer: Layer, old: Node | undefined, node: Node | undefined): Pick<Layer, "outgoing" | "incoming"> {
-  let { outgoing, incoming } = layer;
-  if (old?.references === node?.references) return { outgoing, incoming };
-  const before = old ? declaredEdges(old) : [];
-  const after = node ? declaredEdges(node) : [];
-  const gone = before.filter((e) => !after.some((o) => isSameEdge(o, e)));
-  const come = after.filter((e) => !before.some((o) => isSameEdge(o, e)));
-  for (const edge of gone) {
-    outgoing = withoutEdge(outgoing, edge.source, edge);
-    incoming = withoutEdge(incoming, edge.target, edge);
-  }
-  for (const edge of come) {
-    outgoing = outgoing.with(edge.source, [...(outgoing.get(edge.source) ?? NO_EDGES), edge]);
-    incoming = incoming.with(edge.target, [...(incoming.get(edge.target) ?? NO_EDGES), edge]);
-  }
-  return { outgoing, incoming };
-}
-
-/** Takes one declaration away: a reference that both ends declare stands twice and loses one. */
-function withoutEdge(index: ShardedMap<readonly Edge[]>, key: NodeKey, edge: Edge): ShardedMap<readonly Edge[]> {
-  const edges = index.get(key) ?? NO_EDGES;
-  const at = edges.findIndex((e) => isSameEdge(e, edge));
-  if (at < 0) return index;
-  if (edges.length === 1) return index.without(key);
-  return index.with(key, [...edges.slice(0, at), ...edges.slice(at + 1)]);
+  return found;
 }

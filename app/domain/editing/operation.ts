@@ -53,13 +53,19 @@ export type AttributeName =
 export type DeclaredAt = "source" | "target" | "both";
 
 export type Operation =
-  /** Adds a node with all it declares. */
-  | { readonly kind: "addNode"; readonly node: Node }
+  /**
+   * Adds a node with all it declares. What it refers to must be loaded, unless `isDangling` says that the node was like
+   * that before: an undo puts back what a file held.
+   */
+  | { readonly kind: "addNode"; readonly node: Node; readonly isDangling?: true }
   /** Removes a node that no other own node refers to any more. */
   | { readonly kind: "removeNode"; readonly key: NodeKey }
   /** Sets one attribute; an absent `value` takes it away. */
   | { readonly kind: "setAttribute"; readonly key: NodeKey; readonly attribute: AttributeName; readonly value?: unknown }
-  /** `sourceIndex` and `targetIndex` are places in the lists of declared references; absent means at the end. */
+  /**
+   * `sourceIndex` and `targetIndex` are places in the lists of declared references; absent means at the end. `repeats`
+   * are the places of further declarations of the same reference, which some files have and an undo must put back.
+   */
   | {
       readonly kind: "addReference";
       readonly source: NodeKey;
@@ -68,6 +74,8 @@ export type Operation =
       readonly declaredAt: DeclaredAt;
       readonly sourceIndex?: number;
       readonly targetIndex?: number;
+      readonly repeats?: { readonly source: readonly number[]; readonly target: readonly number[] };
+      readonly isDangling?: true;
     }
   | { readonly kind: "removeReference"; readonly source: NodeKey; readonly type: NodeKey; readonly target: NodeKey }
   /** Sets one field of the model's header: version, required models, namespace table. */

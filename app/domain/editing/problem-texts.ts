@@ -7,5 +7,11 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "operation.reference-exists": "This reference is there already.",
   "operation.reference-missing": "This reference is not there any more.",
   "operation.attribute-class": "A node of class {nodeClass} has no attribute {attribute}.",
+  "operation.attribute-required": "The attribute {attribute} cannot be taken away: every node has it.",
+  "operation.header-required": "The model's {field} cannot be taken away.",
   "operation.stale": "{attribute} of {node} was changed by somebody else meanwhile.",
+  "rebase.builds-on-refused": "This edit builds on another one that was refused.",
+  "history.nothing-to-undo": "There is nothing to undo.",
+  "history.nothing-to-redo": "There is nothing to redo.",
+  "node-id.block-empty": "No numbers for new NodeIds are left in this window; it gets new ones as soon as the server answers.",
 };

@@ -1,0 +1,64 @@
+/**
+ * New NodeIds. The server leases each window a block of numeric ids (`POST /models/:id/lease`), so that two windows never
+ * choose the same. An id is taken from the front of the block and never put back, also when the command that took it
+ * fails or is undone; gaps stay gaps. Ids that the model has meanwhile (an import may have brought them) are skipped.
+ */
+import type { AddressSpace } from "../address-space/address-space";
+import { numericNodeId, toNodeKey, type NodeId } from "../address-space/node-id";
+import { getOwnNamespace } from "../address-space/model-header";
+import type { NodeClass } from "../address-space/node";
+import { fail, ok, problem, type Result } from "../core/result";
+
+/** A leased block; `to` is the last id that belongs to it. */
+export type IdBlock = { readonly from: number; readonly to: number };
+
+/** What commands take new NodeIds from. The node class is told so that a policy may number by class. */
+export interface NodeIdAllocator {
+  allocate(nodeClass: NodeClass): Result<NodeId>;
+}
+
+/** Hands out the ids of leased blocks. It is the one thing here that remembers: ids are used up, whatever becomes of them. */
+export class BlockAllocator implements NodeIdAllocator {
+  #blocks: readonly IdBlock[];
+  #isTaken: (id: NodeId) => boolean;
+  #namespaceUri: string;
+
+  constructor(namespaceUri: string, blocks: readonly IdBlock[], isTaken: (id: NodeId) => boolean = () => false) {
+    this.#namespaceUri = namespaceUri;
+    this.#blocks = blocks;
+    this.#isTaken = isTaken;
+  }
+
+  /** For the namespace of a model; skips what `getSpace()` then has. */
+  static forModel(getSpace: () => AddressSpace, blocks: readonly IdBlock[]): BlockAllocator {
+    const isTaken = (id: NodeId): boolean =>
+      getSpace().findByNodeId(id) !== undefined || getSpace().getNode(toNodeKey(id)) !== undefined;
+    return new BlockAllocator(getOwnNamespace(getSpace().own.header), blocks, isTaken);
+  }
+
+  /** How many ids are left; a window leases the next block before they run out. */
+  get remaining(): number {
+    return this.#blocks.reduce((sum, block) => sum + Math.max(0, block.to - block.from + 1), 0);
+  }
+
+  addBlock(block: IdBlock): void {
+    this.#blocks = [...this.#blocks, block];
+  }
+
+  /** The blocks as they are now, to be kept over a reload of the window. */
+  listBlocks(): readonly IdBlock[] {
+    return this.#blocks;
+  }
+
+  /** Problem: `node-id.block-empty`. */
+  allocate(_nodeClass: NodeClass): Result<NodeId> {
+    for (let block = this.#blocks[0]; block; block = this.#blocks[0]) {
+      const rest = this.#blocks.slice(1);
+      const next = { from: block.from + 1, to: block.to };
+      this.#blocks = next.from > next.to ? rest : [next, ...rest];
+      const nodeId = numericNodeId(this.#namespaceUri, block.from);
+      if (block.from <= block.to && !this.#isTaken(nodeId)) return ok(nodeId);
+    }
+    return fail(problem("node-id.block-empty"));
+  }
+}
