@@ -41,7 +41,7 @@ export const layerRules: readonly LayerRule[] = [
     name: "domain",
     files: /^app\/domain\//,
     mayImport: ["domain"],
-    packages: ["zod", "saxes", "fast-xml-parser"],
+    packages: ["zod", "saxes", "fast-xml-parser", "mathjs"],
     node: false,
     advice:
       "The domain is pure: pass in what it needs as a value or a function, and let a service, component or process call it.",
@@ -193,6 +193,7 @@ export const domainAreas: readonly string[] = [
   "mapping",
   "deliver",
   "simulation",
+  "live",
 ];
 
 /** Everything that may stand at the top of the project. */
