@@ -6,6 +6,7 @@ import type { Problem } from "./result";
 import { addressSpaceProblemTexts } from "../address-space/problem-texts";
 import { editingProblemTexts } from "../editing/problem-texts";
 import { ioddProblemTexts } from "../iodd/problem-texts";
+import { mappingProblemTexts } from "../mapping/problem-texts";
 import { testServerProblemTexts } from "../simulation/problem-texts";
 import { requestProblemTexts } from "./request-problem-texts";
 
@@ -14,6 +15,7 @@ const texts: Readonly<Record<string, string>> = {
   ...addressSpaceProblemTexts,
   ...editingProblemTexts,
   ...ioddProblemTexts,
+  ...mappingProblemTexts,
   ...requestProblemTexts,
   ...testServerProblemTexts,
 };

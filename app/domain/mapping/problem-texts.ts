@@ -1,0 +1,16 @@
+export const mappingProblemTexts: Readonly<Record<string, string>> = {
+  "formula.syntax": "The formula cannot be read: {message}.",
+  "formula.not-allowed":
+    "The formula may not contain {what}; use numbers, names, + − * / ^ %, comparisons, conditions and functions such as min or abs.",
+  "formula.too-long": "The formula has {count} parts; the limit is {limit}.",
+  "formula.unknown-name": "The formula names {name}, which is no input; the inputs are {choices}.",
+  "transform.unit-dimension": "{from} cannot be converted to {to}: they measure different things.",
+  "mapping.target-twice": "{target} is fed by two rows.",
+  "mapping.formula-cycle": "Formulas read each other in a circle.",
+  "mapping.unknown-role": "The mapping has no role {role}; its roles are {choices}.",
+  "mapping.unknown-member": "A formula reads {target}, which the mapping does not feed.",
+  "mapping.unknown-field": "The device of {role} has no field with subindex {subindex} in direction {direction}.",
+  "mapping.no-device": "No device description is attached to the role {role}.",
+  "mapping.constant-input": "The input {name} is a constant; write it into the formula.",
+  "transform.lookup-order": "The lookup table gives two values for one input.",
+};
