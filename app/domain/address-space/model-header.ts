@@ -21,6 +21,7 @@ export type ModelHeader = {
   readonly namespaceUris: readonly string[];
   readonly serverUris?: readonly string[];
   readonly models: readonly ModelEntry[];
+  /** As in the file; absent (a model that no file was read for) means that the writer makes the usual ones. */
   readonly aliases?: readonly (readonly [alias: string, key: NodeKey])[];
   readonly extensions?: readonly XmlText[];
   readonly lastModified?: string;

@@ -9,10 +9,12 @@ import { ioddProblemTexts } from "../iodd/problem-texts";
 import { mappingProblemTexts } from "../mapping/problem-texts";
 import { testServerProblemTexts } from "../simulation/problem-texts";
 import { requestProblemTexts } from "./request-problem-texts";
+import { nodesetProblemTexts } from "../nodeset/problem-texts";
 
 const texts: Readonly<Record<string, string>> = {
   "limit.file-size": "The file has {size} bytes; the limit is {limit} bytes (50 MB).",
   ...addressSpaceProblemTexts,
+  ...nodesetProblemTexts,
   ...editingProblemTexts,
   ...ioddProblemTexts,
   ...mappingProblemTexts,

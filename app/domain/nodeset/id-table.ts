@@ -1,0 +1,116 @@
+/**
+ * Turns NodeId texts and aliases of one file into keys. Each different text is resolved once: published files repeat
+ * `i=40` or `HasProperty` tens of thousands of times.
+ */
+import {
+  OPC_UA_NAMESPACE,
+  parseNodeId,
+  standardKey,
+  toNodeKey,
+  type NodeId,
+  type NodeKey,
+} from "../address-space/node-id";
+import { parseQualifiedName, type QualifiedName } from "../address-space/qualified-name";
+import { fail, ok, problem, type Problem, type Result } from "../core/result";
+import { STANDARD_ALIASES } from "./standard-aliases";
+
+export type Target = { readonly key: NodeKey; readonly serverUri?: string };
+
+const NO_PROBLEMS: readonly Problem[] = [];
+
+export class IdTable {
+  /** With the OPC UA namespace at index 0. */
+  readonly namespaceUris: readonly string[];
+  readonly #serverUris: readonly string[];
+  readonly #aliases: ReadonlyMap<string, string>;
+  readonly #keys = new Map<string, NodeKey>();
+  readonly #reportedAliases = new Set<string>();
+
+  constructor(namespaceUris: readonly string[], serverUris: readonly string[], aliases: ReadonlyMap<string, string>) {
+    this.namespaceUris = [OPC_UA_NAMESPACE, ...namespaceUris];
+    this.#serverUris = serverUris;
+    this.#aliases = aliases;
+  }
+
+  /** The key that the text was resolved to before; the quick way for what repeats. */
+  findKnown(text: string): NodeKey | undefined {
+    return this.#keys.get(text);
+  }
+
+  /** The key of a NodeId or alias. Problems: those of `parseNodeId`, `nodeset.alias-unknown`, `-undefined`, `-cycle`. */
+  resolve(text: string): Result<NodeKey> {
+    const known = this.#keys.get(text);
+    if (known !== undefined) return ok(known, NO_PROBLEMS);
+    const result = this.#resolveText(text.trim());
+    if (result.ok) this.#keys.set(text, result.value);
+    return result;
+  }
+
+  /** The target of a reference, which may stand on another server: `svr=1;i=85` (OPC 10000-6 §5.1.12). */
+  resolveTarget(text: string): Result<Target> {
+    const known = this.#keys.get(text);
+    if (known !== undefined) return ok({ key: known }, NO_PROBLEMS);
+    const trimmed = text.trim();
+    const match = /^(?:svr=(\d{1,9})|svu=([^;]+));/.exec(trimmed);
+    if (!match) {
+      const result = this.resolve(text);
+      return result.ok ? ok({ key: result.value }, result.problems) : result;
+    }
+    const serverUri = match[1] === undefined ? unescapeUri(match[2] ?? "") : this.#serverUriAt(Number(match[1]));
+    if (serverUri === undefined) {
+      return fail(
+        problem("nodeset.server-index", { text: trimmed, index: Number(match[1]), count: this.#serverUris.length }),
+      );
+    }
+    const result = this.#resolveText(trimmed.slice(match[0].length));
+    if (!result.ok) return result;
+    return ok(serverUri === "" ? { key: result.value } : { key: result.value, serverUri }, result.problems);
+  }
+
+  /** The NodeId of a node that is defined here: no alias, no other server. */
+  parseOwn(text: string): Result<NodeId> {
+    return parseNodeId(text.trim(), this.namespaceUris);
+  }
+
+  /** A BrowseName. A name of namespace 0, the usual case of nothing before the name, costs no pattern. */
+  parseName(text: string): Result<QualifiedName> {
+    const first = text.charCodeAt(0);
+    if (!(first >= 48 && first <= 57)) return ok({ namespaceUri: OPC_UA_NAMESPACE, name: text }, NO_PROBLEMS);
+    return parseQualifiedName(text, this.namespaceUris);
+  }
+
+  /** The server behind an index; "" is the server of the file itself. */
+  #serverUriAt(index: number): string | undefined {
+    return index === 0 ? "" : this.#serverUris[index - 1];
+  }
+
+  #resolveText(text: string): Result<NodeKey> {
+    let at = text;
+    let passed: Set<string> | undefined;
+    for (let meaning = this.#aliases.get(at); meaning !== undefined; meaning = this.#aliases.get(at)) {
+      passed ??= new Set();
+      if (passed.has(at)) return fail(problem("nodeset.alias-cycle", { alias: text }));
+      passed.add(at);
+      at = meaning;
+    }
+    if (/^(?:ns=|nsu=|[isgb]=)/.test(at)) {
+      const result = parseNodeId(at, this.namespaceUris);
+      return result.ok ? ok(toNodeKey(result.value)) : result;
+    }
+    return this.#resolveStandardName(at);
+  }
+
+  #resolveStandardName(alias: string): Result<NodeKey> {
+    const identifier = STANDARD_ALIASES.get(alias);
+    if (identifier === undefined) return fail(problem("nodeset.alias-unknown", { alias }));
+    const key = standardKey(identifier);
+    if (this.#reportedAliases.has(alias)) return ok(key);
+    this.#reportedAliases.add(alias);
+    return ok(key, [problem.warning("nodeset.alias-undefined", { alias, nodeId: key })]);
+  }
+}
+
+function unescapeUri(text: string): string {
+  return text.replace(/%3B/gi, ";").replace(/%25/g, "%");
+}
+

@@ -1,0 +1,76 @@
+/** Collects one node while its element is read. */
+import { isNullNodeId, toNodeKey, formatNodeId, type NodeId, type NodeKey } from "../address-space/node-id";
+import type {
+  ArgumentDescription,
+  DataTypeDefinition,
+  DataTypeField,
+  DeclaredReference,
+  Node,
+  NodeClass,
+  RolePermission,
+  XmlText,
+} from "../address-space/node";
+import type { LocalizedText, QualifiedName } from "../address-space/qualified-name";
+
+type KeysOf<T> = T extends T ? keyof T : never;
+type ValueOf<T, K> = T extends T ? (K extends keyof T ? T[K] : never) : never;
+/** A node of any class, all fields optional and writable. */
+export type NodeFields = { -readonly [K in KeysOf<Node>]?: ValueOf<Node, K> };
+
+export type FieldDraft = { -readonly [K in keyof DataTypeField]: DataTypeField[K] };
+export type DefinitionDraft = { -readonly [K in keyof DataTypeDefinition]: DataTypeDefinition[K] };
+
+export class NodeBuilder {
+  readonly offset: number;
+  readonly nodeId: NodeId;
+  readonly key: NodeKey;
+  /** Attributes that the table knows, set by `readAttributes`. */
+  readonly fields: NodeFields;
+  readonly displayName: LocalizedText[] = [];
+  description: LocalizedText[] | undefined;
+  inverseName: LocalizedText[] | undefined;
+  category: string[] | undefined;
+  rolePermissions: RolePermission[] | undefined;
+  extensions: XmlText[] | undefined;
+  translations: XmlText[] | undefined;
+  argumentDescriptions: ArgumentDescription[] | undefined;
+  otherElements: XmlText[] | undefined;
+  readonly references: DeclaredReference[] = [];
+
+  constructor(offset: number, nodeClass: NodeClass, nodeId: NodeId, browseName: QualifiedName, order: number) {
+    this.offset = offset;
+    this.nodeId = nodeId;
+    this.key = toNodeKey(nodeId);
+    this.fields = {
+      key: this.key,
+      nodeId,
+      nodeClass,
+      order,
+      browseName,
+      displayName: this.displayName,
+      references: this.references,
+    };
+  }
+
+  get nodeIdText(): string {
+    return formatNodeId(this.nodeId);
+  }
+
+  isNull(): boolean {
+    return isNullNodeId(this.nodeId);
+  }
+
+  build(): Node {
+    const { fields } = this;
+    if (this.description) fields.description = this.description;
+    if (this.inverseName) fields.inverseName = this.inverseName;
+    if (this.category) fields.category = this.category;
+    if (this.rolePermissions) fields.rolePermissions = this.rolePermissions;
+    if (this.extensions) fields.extensions = this.extensions;
+    if (this.translations) fields.translations = this.translations;
+    if (this.argumentDescriptions) fields.argumentDescriptions = this.argumentDescriptions;
+    if (this.otherElements) fields.otherElements = this.otherElements;
+    // The constructor set what every node has, and the table of the class lets no foreign attribute in.
+    return fields as Node;
+  }
+}

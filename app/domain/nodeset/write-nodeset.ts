@@ -1,0 +1,131 @@
+/**
+ * Writes a NodeSet2 file (OPC 10000-6 Annex F). The same content gives the same bytes: UTF-8, LF, two spaces a level,
+ * attributes and children in fixed order, nodes and references in the order of the model.
+ */
+import type { ModelEntry, ModelHeader } from "../address-space/model-header";
+import type { Node } from "../address-space/node";
+import type { NodeId, NodeKey } from "../address-space/node-id";
+import { MODEL_ATTRIBUTES } from "./attribute-tables";
+import { toCanonicalOrder } from "./canonical-order";
+import { IdWriter } from "./id-writer";
+import { NODESET_XML_NAMESPACE } from "./nodeset-xml";
+import { writeAround, writeWholeElement } from "./write-fragments";
+import { writeAttributes, writeNode, writeRolePermissions, writeText, type WriteContext } from "./write-node";
+import { escapeAttribute, escapeText } from "./xml/escape";
+
+export type WriteOptions = {
+  /** Types first, parents before children, else by id; default is the order of the model. */
+  readonly canonicalOrder?: boolean;
+  /** The present NodeId of a node of a required model, where it may differ from the id that its key was made from. */
+  readonly findNodeId?: (key: NodeKey) => NodeId | undefined;
+};
+
+export type WrittenNodeSet = {
+  readonly xml: string;
+  /** The line, 1-based, in which the element of each node starts. */
+  readonly lines: ReadonlyMap<NodeKey, number>;
+};
+
+/** Only declared references are written; that both ends declare what interoperability asks for is the commands' part. */
+export function writeNodeSet(
+  content: { readonly header: ModelHeader; readonly nodes: readonly Node[] },
+  options: WriteOptions = {},
+): WrittenNodeSet {
+  const { header } = content;
+  const nodes = options.canonicalOrder ? toCanonicalOrder(content.nodes) : inModelOrder(content.nodes);
+  const ids = new IdWriter(header, nodes, options.findNodeId ?? (() => undefined));
+  const root = makeRoot(header);
+  const context: WriteContext = { ids, prefix: root.prefix, declared: root.declared };
+  // Nodes before the head: they decide which namespaces and aliases the head must list.
+  const parts = nodes.map((node) => writeNode(node, context));
+  const head = writeHead(header, root, context);
+  let line = countLineBreaks(head) + 1;
+  const lines = new Map<NodeKey, number>();
+  nodes.forEach((node, i) => {
+    lines.set(node.key, line);
+    line += countLineBreaks(parts[i] ?? "");
+  });
+  return { xml: `${head}${parts.join("")}</${root.prefix}UANodeSet>\n`, lines };
+}
+
+function inModelOrder(nodes: readonly Node[]): readonly Node[] {
+  const isSorted = nodes.every((node, i) => i === 0 || (nodes[i - 1]?.order ?? 0) <= node.order);
+  return isSorted ? nodes : [...nodes].sort((a, b) => a.order - b.order);
+}
+
+type Root = {
+  readonly prefix: string;
+  readonly attributes: Readonly<Record<string, string>>;
+  readonly declared: Readonly<Record<string, string>>;
+};
+
+/** Keeps the root's declarations as they were and finds the prefix of the NodeSet's own elements among them. */
+function makeRoot(header: ModelHeader): Root {
+  const attributes: Record<string, string> = { ...header.rootAttributes };
+  const declared: Record<string, string> = {};
+  for (const [name, uri] of Object.entries(attributes)) {
+    if (name === "xmlns") declared[""] = uri;
+    else if (name.startsWith("xmlns:")) declared[name.slice(6)] = uri;
+  }
+  let prefix = Object.entries(declared).find(([, uri]) => uri === NODESET_XML_NAMESPACE)?.[0];
+  if (declared[""] === NODESET_XML_NAMESPACE) prefix = "";
+  if (prefix === undefined) {
+    prefix = declared[""] === undefined ? "" : "ua";
+    attributes[prefix === "" ? "xmlns" : `xmlns:${prefix}`] = NODESET_XML_NAMESPACE;
+    declared[prefix] = NODESET_XML_NAMESPACE;
+  }
+  return { prefix: prefix === "" ? "" : `${prefix}:`, attributes, declared };
+}
+
+function writeHead(header: ModelHeader, root: Root, context: WriteContext): string {
+  const { ids, prefix } = context;
+  let out = '<?xml version="1.0" encoding="utf-8"?>\n';
+  for (const comment of header.headComments ?? []) out += `<!--${comment}-->\n`;
+  out += `<${prefix}UANodeSet${writeRootAttributes(header, root)}>\n`;
+  // The models come first in time: their roles may need a namespace that the table lacks.
+  const models = header.models.map((model) => writeModel("Model", model, "    ", context)).join("");
+  const aliases = (header.aliases ?? ids.listUsedAliases())
+    .map(([alias, key]) => `    <${prefix}Alias Alias="${escapeAttribute(alias)}">${escapeText(ids.formatKey(key))}</${prefix}Alias>\n`)
+    .join("");
+  const extensions = (header.extensions ?? [])
+    .map((extension) => `    ${writeAround(`${prefix}Extension`, extension, context.declared, undefined)}\n`)
+    .join("");
+  out += wrap(`${prefix}NamespaceUris`, writeUris(ids.namespaceUris, prefix));
+  out += wrap(`${prefix}ServerUris`, writeUris(ids.serverUris, prefix));
+  out += wrap(`${prefix}Models`, models) + wrap(`${prefix}Aliases`, aliases) + wrap(`${prefix}Extensions`, extensions);
+  for (const other of header.otherElements ?? []) out += `  ${writeWholeElement(other, context.declared)}\n`;
+  return out;
+}
+
+function writeRootAttributes(header: ModelHeader, root: Root): string {
+  const modified = header.lastModified === undefined ? "" : ` LastModified="${escapeAttribute(header.lastModified)}"`;
+  const others = Object.entries(root.attributes).map(([name, value]) => ` ${name}="${escapeAttribute(value)}"`);
+  return modified + others.join("");
+}
+
+function wrap(element: string, body: string): string {
+  return body === "" ? "" : `  <${element}>\n${body}  </${element}>\n`;
+}
+
+function writeUris(uris: readonly string[], prefix: string): string {
+  return uris.map((uri) => writeText(`${prefix}Uri`, uri, "    ")).join("");
+}
+
+function writeModel(element: string, model: ModelEntry, indent: string, context: WriteContext): string {
+  const { prefix, ids } = context;
+  const head =
+    `${indent}<${prefix}${element} ModelUri="${escapeAttribute(model.modelUri)}"` +
+    writeAttributes(model, MODEL_ATTRIBUTES, model.otherAttributes, ids);
+  const inner = `${indent}  `;
+  const body =
+    (model.rolePermissions ? writeRolePermissions(model.rolePermissions, inner, prefix, ids) : "") +
+    model.requiredModels.map((required) => writeModel("RequiredModel", required, inner, context)).join("") +
+    (model.otherElements ?? []).map((other) => `${inner}${writeWholeElement(other, context.declared)}\n`).join("");
+  return body === "" ? `${head} />\n` : `${head}>\n${body}${indent}</${prefix}${element}>\n`;
+}
+
+function countLineBreaks(text: string): number {
+  let count = 0;
+  for (let at = text.indexOf("\n"); at >= 0; at = text.indexOf("\n", at + 1)) count++;
+  return count;
+}
