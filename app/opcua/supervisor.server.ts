@@ -11,11 +11,14 @@ import { join } from "node:path";
 import { createInterface } from "node:readline";
 import { problem, type Problem } from "~/domain/core/result";
 import type { LogLine, TestServerStage, TestServerState } from "~/domain/simulation/test-server-state";
+import { findProjectRoot } from "~/utils/project-root.server";
+import { onShutdown } from "~/utils/shutdown.server";
+import { singleton } from "~/utils/singleton.server";
 import { toParentSchema, type StartMessage, type ToParentMessage } from "./messages";
 
 export type SupervisorOptions = {
-  /** The child's bundle; found beside the server's bundle when absent. */
-  entry?: string;
+  /** The child's bundle. */
+  entry: string;
   /** Limit from fork to ready, ms. */
   startTimeout?: number;
   /** Patience between SIGTERM and SIGKILL, ms. */
@@ -51,11 +54,11 @@ const LAST_LINES = 5;
 const FINISHED_LIMIT = 24;
 
 export class Supervisor {
-  readonly #options: Required<Omit<SupervisorOptions, "entry">> & { entry: string | undefined };
+  readonly #options: Required<SupervisorOptions>;
   readonly #entries = new Map<string, Entry>();
   readonly #listeners = new Set<(event: SupervisorEvent) => void>();
 
-  constructor(options: SupervisorOptions = {}) {
+  constructor(options: SupervisorOptions) {
     this.#options = {
       entry: options.entry,
       startTimeout: options.startTimeout ?? 60_000,
@@ -80,6 +83,11 @@ export class Supervisor {
   /** The certificate of a running server, DER, for clients of ours to pin. */
   getCertificate(id: string): Buffer | undefined {
     return this.#entries.get(id)?.certificate;
+  }
+
+  /** Process id of the child, while it lives. */
+  getPid(id: string): number | undefined {
+    return this.#entries.get(id)?.child?.pid;
   }
 
   onChange(listener: (event: SupervisorEvent) => void): () => void {
@@ -118,7 +126,7 @@ export class Supervisor {
   launch(message: StartMessage): void {
     const entry = this.#entries.get(message.id);
     if (entry?.state.state !== "starting") return;
-    const file = this.#options.entry ?? findEntry();
+    const file = this.#options.entry;
     if (!existsSync(file)) {
       this.#fail(entry, problem("test-server.not-built", { file }));
       return;
@@ -277,15 +285,11 @@ export class Supervisor {
   }
 }
 
-function findEntry(): string {
-  return join(process.cwd(), "build/node/test-server.js");
-}
-
-declare global {
-  var ferruleSupervisor: Supervisor | undefined;
-}
-
-/** The one supervisor of this process; kept on globalThis, so that a hot reload does not leave children behind. */
+/** The one supervisor of this process. Its children end before the database closes. */
 export function getSupervisor(): Supervisor {
-  return (globalThis.ferruleSupervisor ??= new Supervisor());
+  return singleton("test-server-supervisor", () => {
+    const supervisor = new Supervisor({ entry: join(findProjectRoot(), "build/node/test-server.js") });
+    onShutdown("test servers", () => supervisor.stopAll());
+    return supervisor;
+  });
 }

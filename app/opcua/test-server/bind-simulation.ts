@@ -8,7 +8,14 @@ import type { SimulatedVariable } from "~/domain/simulation/plan-simulation";
 import { toWireNodeId } from "../node-ids";
 import { encodeNumber, makePlainValue, makeVariant } from "./encode-value";
 
-export type BoundSimulation = { moving: number; fixed: number; missing: string[] };
+export type BoundSimulation = {
+  moving: number;
+  fixed: number;
+  /** NodeIds of the plan that the server does not have. */
+  missing: string[];
+  /** Variables that would not take a value; they stay as the model's file left them. */
+  refused: { nodeId: string; detail: string }[];
+};
 
 /** Fastest useful sampling of a simulated value, ms; slower than that only when the model says so. */
 const MINIMUM_SAMPLING_INTERVAL = 100;
@@ -24,7 +31,7 @@ export function bindSimulation(
 ): BoundSimulation {
   const status = quality === "good" ? StatusCodes.Good : StatusCodes.UncertainSimulatedValue;
   const namespaces = space.getNamespaceArray().map((namespace) => namespace.namespaceUri);
-  const bound: BoundSimulation = { moving: 0, fixed: 0, missing: [] };
+  const bound: BoundSimulation = { moving: 0, fixed: 0, missing: [], refused: [] };
   for (const entry of plan) {
     const id = toWireNodeId(entry.nodeId, namespaces);
     const node = id.ok ? space.findNode(id.value) : null;
@@ -32,13 +39,17 @@ export function bindSimulation(
       bound.missing.push(entry.nodeId);
       continue;
     }
-    const variable = node as UAVariable;
-    if (entry.motion.kind === "static") {
-      bound.fixed++;
-      holdValue(space, variable, entry, status, new Date(now()));
-    } else {
-      bound.moving++;
-      moveValue(variable, entry, status, now);
+    // One odd Variable must not keep a whole park from being served.
+    try {
+      if (entry.motion.kind === "static") {
+        holdValue(space, node as UAVariable, entry, status, new Date(now()));
+        bound.fixed++;
+      } else {
+        moveValue(node as UAVariable, entry, status, now);
+        bound.moving++;
+      }
+    } catch (error) {
+      bound.refused.push({ nodeId: entry.nodeId, detail: error instanceof Error ? error.message : String(error) });
     }
   }
   return bound;

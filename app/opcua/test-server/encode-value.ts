@@ -38,7 +38,7 @@ const NULL_GUID = "00000000-0000-0000-0000-000000000000";
 /** A Variant of one element per place of the dimensions, in row order; a scalar without dimensions. */
 export function makeVariant(type: BuiltInType, dimensions: readonly number[], element: (offset: number) => unknown): Variant {
   const dataType = WIRE_TYPE[type];
-  if (dimensions.length === 0) return new Variant({ dataType, value: element(0) });
+  if (dimensions.length === 0) return new Variant({ dataType, arrayType: VariantArrayType.Scalar, value: element(0) });
   const count = dimensions.reduce((product, length) => product * length, 1);
   const value = Array.from({ length: count }, (_, i) => element(i / count));
   const options: VariantOptions =

@@ -57,6 +57,7 @@ async function start(config: StartMessage): Promise<void> {
   const timer = await watchSessions(server);
   running = { server, timer };
   if (isEnding) return;
+  for (const { nodeId, detail } of bound.refused) log("warning", `${nodeId} is not simulated: ${detail}`);
   const port = server.endpoints[0]?.port ?? config.port;
   const certificate = server.getCertificate();
   const { createHash } = await import("node:crypto");

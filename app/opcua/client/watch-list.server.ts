@@ -1,0 +1,149 @@
+/**
+ * What is watched at one endpoint: one monitored item per node, shared by all who watch it, on one subscription. Samples of
+ * one publish are reduced to the newest per node before anybody is told, and how many were dropped is counted.
+ */
+import { AttributeIds, ClientMonitoredItem, type ClientSession, type ClientSubscription, type DataValue, type NodeId, TimestampsToReturn } from "node-opcua";
+import type { Sample } from "~/domain/live/live-node";
+import { toWireNodeId } from "../node-ids";
+import { decodeSample, type StateTexts } from "./decode-value";
+import { PUBLISHING_INTERVAL, WATCH_LIMIT } from "./endpoint-settings";
+import { readStateTexts } from "./read-states.server";
+
+type Link = { session: ClientSession; subscription: ClientSubscription; namespaces: readonly string[] };
+
+type Watch = {
+  readonly nodeId: string;
+  readonly listeners: Set<(sample: Sample) => void>;
+  item: ClientMonitoredItem | undefined;
+  states: StateTexts | undefined;
+  pending: DataValue | undefined;
+  last: Sample | undefined;
+  coalesced: number;
+};
+
+export class WatchList {
+  readonly #watches = new Map<string, Watch>();
+  readonly #link: () => Promise<Link>;
+  readonly #dirty = new Set<Watch>();
+  #queue = new Set<Watch>();
+  #isStarting = false;
+
+  constructor(link: () => Promise<Link>) {
+    this.#link = link;
+  }
+
+  get size(): number {
+    return this.#watches.size;
+  }
+
+  /** Throws RangeError past the limit; callers ask `size` first. */
+  add(nodeId: string, listener: (sample: Sample) => void): () => void {
+    let watch = this.#watches.get(nodeId);
+    if (!watch) {
+      if (this.#watches.size >= WATCH_LIMIT) throw new RangeError(`More than ${WATCH_LIMIT} watched nodes`);
+      watch = { nodeId, listeners: new Set(), item: undefined, states: undefined, pending: undefined, last: undefined, coalesced: 0 };
+      this.#watches.set(nodeId, watch);
+      this.#enqueue(watch);
+    } else if (watch.last) {
+      listener(watch.last);
+    }
+    watch.listeners.add(listener);
+    const started = watch;
+    return () => this.#leave(started, listener);
+  }
+
+  /** The connection is gone: items are void, what is watched stays. */
+  suspend(): void {
+    for (const watch of this.#watches.values()) watch.item = undefined;
+    this.#queue.clear();
+  }
+
+  /** Starts everything that has no item on the present connection. */
+  async restart(): Promise<void> {
+    for (const watch of this.#watches.values()) if (!watch.item) this.#queue.add(watch);
+    await this.#drain();
+  }
+
+  clear(): void {
+    this.#watches.clear();
+    this.#queue.clear();
+    this.#dirty.clear();
+  }
+
+  #leave(watch: Watch, listener: (sample: Sample) => void): void {
+    if (!watch.listeners.delete(listener) || watch.listeners.size > 0) return;
+    if (this.#watches.get(watch.nodeId) === watch) this.#watches.delete(watch.nodeId);
+    this.#queue.delete(watch);
+    this.#dirty.delete(watch);
+    void watch.item?.terminate().catch(() => undefined);
+    watch.item = undefined;
+  }
+
+  #enqueue(watch: Watch): void {
+    this.#queue.add(watch);
+    // Collects what one page asks for in one turn.
+    queueMicrotask(() => void this.#drain());
+  }
+
+  async #drain(): Promise<void> {
+    if (this.#isStarting || this.#queue.size === 0) return;
+    this.#isStarting = true;
+    try {
+      const link = await this.#link();
+      while (this.#queue.size > 0) {
+        const batch = [...this.#queue];
+        this.#queue = new Set();
+        await this.#start(link, batch);
+      }
+    } catch {
+      // The connection failed; it starts everything anew once it stands.
+    } finally {
+      this.#isStarting = false;
+    }
+  }
+
+  async #start(link: Link, batch: readonly Watch[]): Promise<void> {
+    const states = await readStateTexts(link.session, batch.map((watch) => watch.nodeId), link.namespaces);
+    const started = batch.flatMap((watch) => {
+      watch.states = states.get(watch.nodeId);
+      const wireId = toWireNodeId(watch.nodeId, link.namespaces);
+      // Somebody may have left while the texts were read.
+      return wireId.ok && watch.listeners.size > 0 ? [{ watch, target: { nodeId: wireId.value, attributeId: AttributeIds.Value } }] : [];
+    });
+    for (const { watch, target } of started) watch.item = this.#monitor(link, watch, target);
+    // The first value at once, and a status also where a node cannot be monitored.
+    const values = await link.session.read(started.map(({ target }) => target));
+    started.forEach(({ watch }, i) => {
+      const value = values[i];
+      if (value && !watch.last && watch.listeners.size > 0) this.#receive(watch, value);
+    });
+  }
+
+  #monitor(link: Link, watch: Watch, target: { nodeId: NodeId; attributeId: AttributeIds }): ClientMonitoredItem {
+    const parameters = { samplingInterval: PUBLISHING_INTERVAL, queueSize: 2, discardOldest: true };
+    const item = ClientMonitoredItem.create(link.subscription, target, parameters, TimestampsToReturn.Both);
+    item.on("changed", (value: DataValue) => {
+      if (watch.item === item) this.#receive(watch, value);
+    });
+    return item;
+  }
+
+  #receive(watch: Watch, value: DataValue): void {
+    if (watch.pending) watch.coalesced++;
+    watch.pending = value;
+    if (this.#dirty.size === 0) setImmediate(() => this.#flush());
+    this.#dirty.add(watch);
+  }
+
+  #flush(): void {
+    const watches = [...this.#dirty];
+    this.#dirty.clear();
+    for (const watch of watches) {
+      if (!watch.pending) continue;
+      const sample = decodeSample(watch.pending, watch.states, watch.coalesced);
+      watch.pending = undefined;
+      watch.last = sample;
+      for (const listener of watch.listeners) listener(sample);
+    }
+  }
+}
