@@ -10,11 +10,12 @@ import type { AddressSpace, Layer } from "../address-space/address-space";
 import { isSameEdge, listDeclaredEdges, listDistinctEdges, type Edge } from "../address-space/edge-index";
 import type { ModelHeader } from "../address-space/model-header";
 import type { Node } from "../address-space/node";
-import { formatNodeId, parseNodeId, type NodeKey } from "../address-space/node-id";
+import { formatNodeId, parseNodeId, type NodeId, type NodeKey } from "../address-space/node-id";
+import type { QualifiedName } from "../address-space/qualified-name";
 import { StandardReferenceType } from "../address-space/standard-ids";
 import { getReferenceTypes } from "../address-space/type-hierarchy";
 import { dropSlot, newSlot, noteRead, type Computation, type Slot, type Subject } from "./slots";
-import { getLayerTags, listTags, type Tag } from "./tags";
+import { getLayerTags, listTags, tagOf, type Tag } from "./tags";
 
 /** HasSubtype, other hierarchical references, the rest. */
 type EdgeGroup = 0 | 1 | 2;
@@ -40,13 +41,15 @@ export class CheckContext {
   readonly #tagSlots = new Map<Tag, Slot>();
   readonly #headerSlot = newSlot();
   readonly #hierarchical: ReadonlySet<NodeKey>;
+  readonly #required: readonly Layer[];
   readonly #requiredUris: ReadonlySet<string>;
   #reader: Computation | undefined;
 
   constructor(space: AddressSpace) {
     this.#space = space;
     this.#hierarchical = getReferenceTypes(space, StandardReferenceType.HierarchicalReferences);
-    this.#requiredUris = new Set(this.required.flatMap((l) => l.header.models.map((m) => m.modelUri)));
+    this.#required = space.layers.slice(0, -1);
+    this.#requiredUris = new Set(this.#required.flatMap((l) => l.header.models.map((m) => m.modelUri)));
     for (const node of space.own.nodes.values()) this.#retag(undefined, node);
   }
 
@@ -111,20 +114,31 @@ export class CheckContext {
 
   /** The layers of the required models; a change of these starts a new context. */
   get required(): readonly Layer[] {
-    return this.#space.layers.slice(0, -1);
+    return this.#required;
   }
 
   isOwn(key: NodeKey): boolean {
     return this.node(key) !== undefined && this.#space.isOwn(key);
   }
 
-  /** Keys of the nodes with a tag, those of required models first. */
-  listTagged(tag: Tag): NodeKey[] {
+  /** Keys of all types with the BrowseName, those of required models first. */
+  listTypesNamed(name: QualifiedName): NodeKey[] {
+    const tag = tagOf.typeName(name);
+    return [...this.#required.flatMap((layer) => getLayerTags(layer).get(tag) ?? []), ...this.#listOwnTagged(tag)];
+  }
+
+  /** Keys of all nodes with the NodeId, those of required models first. */
+  listWithNodeId(id: NodeId): NodeKey[] {
+    const text = formatNodeId(id);
+    return [...this.#required.flatMap((layer) => layer.keysByNodeId.get(text) ?? []), ...this.#listOwnTagged(tagOf.nodeId(id))];
+  }
+
+  #listOwnTagged(tag: Tag): NodeKey[] {
     let slot = this.#tagSlots.get(tag);
     if (!slot) this.#tagSlots.set(tag, (slot = newSlot()));
     noteRead(slot, this.#reader);
-    const keys = this.required.flatMap((layer) => getLayerTags(layer).get(tag) ?? []);
-    return [...keys, ...[...(this.#ownTags.get(tag) ?? [])].sort()];
+    const keys = this.#ownTags.get(tag);
+    return !keys || keys.size === 0 ? [] : [...keys].sort();
   }
 
   /** Whether a loaded model defines the namespace; the own model counts. */

@@ -155,15 +155,13 @@ export class ExampleModel {
 
   /** Header and nodes, with the namespace metadata object of OPC 10000-6 §F.2. */
   build(): { header: ModelHeader; nodes: Node[] } {
-    if (this.#hasMetadata) {
-      this.#hasMetadata = false;
-      this.metadata();
-    }
+    if (this.#hasMetadata) this.metadata();
     return { header: this.header, nodes: [...this.#nodes.values()] };
   }
 
-  /** The namespace metadata object with its seven Properties (OPC 10000-5 §6.3.13); `without` leaves one out. */
+  /** The namespace metadata object with its Properties (OPC 10000-5 §6.3.13); `without` leaves one out. */
   metadata(options: { readonly uri?: string; readonly without?: string } = {}): NodeKey {
+    this.#hasMetadata = false;
     const uri = options.uri ?? this.uri;
     const [model] = this.header.models;
     const parent = this.object(uri, { parent: StandardObject.ServerNamespaces, type: T.NamespaceMetadataType });
@@ -173,6 +171,7 @@ export class ExampleModel {
     property("NamespaceUri", D.String, { value: scalar("String", uri) });
     property("NamespaceVersion", D.String, { value: scalar("String", model?.version ?? "") });
     property("NamespacePublicationDate", D.DateTime, { value: scalar("DateTime", model?.publicationDate ?? "0001-01-01T00:00:00Z") });
+    if (model?.modelVersion !== undefined) property("ModelVersion", standardKey(24263), { value: scalar("String", model.modelVersion) });
     property("IsNamespaceSubset", D.Boolean, { value: scalar("Boolean", false) });
     property("StaticNodeIdTypes", standardKey(256), { valueRank: 1, arrayDimensions: "0", value: list("Int32", 0) });
     property("StaticNumericNodeIdRange", standardKey(291), { valueRank: 1, arrayDimensions: "0", value: list("String", "1:65535") });

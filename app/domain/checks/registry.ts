@@ -10,11 +10,82 @@ import { r012 } from "./rules/r012-standard-member-namespace";
 import { r016 } from "./rules/r016-display-name";
 import { r023 } from "./rules/r023-reference-target";
 import { r024 } from "./rules/r024-reference-type";
+import { r027 } from "./rules/r027-no-child-loops";
+import { r029 } from "./rules/r029-component-target";
+import { r030 } from "./rules/r030-component-source-of-variables";
+import { r031 } from "./rules/r031-component-source-of-objects";
+import { r032 } from "./rules/r032-property-target";
+import { r033 } from "./rules/r033-property-leaf";
+import { r035 } from "./rules/r035-property-type";
+import { r036 } from "./rules/r036-data-variable-type";
+import { r041 } from "./rules/r041-subtype-ends";
+import { r042 } from "./rules/r042-one-supertype";
+import { r049 } from "./rules/r049-type-definition";
+import { r050 } from "./rules/r050-modelling-rule";
+import { r066 } from "./rules/r066-abstract-type-instance";
+import { r069 } from "./rules/r069-interface-members";
+import { r075 } from "./rules/r075-type-child-without-rule";
+import { r080 } from "./rules/r080-rule-only-tightened";
+import { r086 } from "./rules/r086-mandatory-members";
+import { r090 } from "./rules/r090-member-similar";
+import { r095 } from "./rules/r095-data-type";
+import { r097 } from "./rules/r097-data-type-narrows";
+import { r098 } from "./rules/r098-value-rank-narrows";
+import { r099 } from "./rules/r099-array-dimensions";
+import { r101 } from "./rules/r101-value-matches-rank";
+import { r103 } from "./rules/r103-value-matches-data-type";
+import { r119 } from "./rules/r119-analog-item-range";
+import { r120 } from "./rules/r120-analog-unit";
+import { r123 } from "./rules/r123-units-on-numbers";
+import { r125 } from "./rules/r125-unit-namespace";
+import { r126 } from "./rules/r126-unit-id";
+import { r181 } from "./rules/r181-namespace-metadata";
 
-export const RULES: readonly Rule[] = [r001, r002, r004, r006, r008, r009, r012, r016, r023, r024];
+export const RULES: readonly Rule[] = [
+  r001,
+  r002,
+  r004,
+  r006,
+  r008,
+  r009,
+  r012,
+  r016,
+  r023,
+  r024,
+  r027,
+  r029,
+  r030,
+  r031,
+  r032,
+  r033,
+  r035,
+  r036,
+  r041,
+  r042,
+  r049,
+  r050,
+  r066,
+  r069,
+  r075,
+  r080,
+  r086,
+  r090,
+  r095,
+  r097,
+  r098,
+  r099,
+  r101,
+  r103,
+  r119,
+  r120,
+  r123,
+  r125,
+  r126,
+  r181,
+];
 
-const byId = new Map(RULES.map((rule) => [rule.id, rule] as const));
+const byId = new Map<string, Rule>(RULES.map((rule) => [rule.id, rule] as const));
 
 export function findRule(id: string): Rule | undefined {
-  return byId.get(id as Rule["id"]);
+  return byId.get(id);
 }

@@ -20,6 +20,7 @@ export function listTags(node: Node): Tag[] {
   return tags;
 }
 
+/** A layer finds NodeIds by itself, so that only names of types are gathered here. */
 const layerTags = new WeakMap<Layer, ReadonlyMap<Tag, readonly NodeKey[]>>();
 
 export function getLayerTags(layer: Layer): ReadonlyMap<Tag, readonly NodeKey[]> {
@@ -27,11 +28,11 @@ export function getLayerTags(layer: Layer): ReadonlyMap<Tag, readonly NodeKey[]>
   if (known) return known;
   const index = new Map<Tag, NodeKey[]>();
   for (const node of layer.nodes.values()) {
-    for (const tag of listTags(node)) {
-      const keys = index.get(tag);
-      if (keys) keys.push(node.key);
-      else index.set(tag, [node.key]);
-    }
+    if (!isTypeNode(node)) continue;
+    const tag = tagOf.typeName(node.browseName);
+    const keys = index.get(tag);
+    if (keys) keys.push(node.key);
+    else index.set(tag, [node.key]);
   }
   layerTags.set(layer, index);
   return index;

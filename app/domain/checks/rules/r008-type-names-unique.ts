@@ -1,6 +1,5 @@
 import { formatQualifiedName } from "../../address-space/qualified-name";
 import { clause, TYPE_CLASSES, type NodeRule } from "../rule";
-import { tagOf } from "../tags";
 
 export const r008: NodeRule = {
   id: "R008",
@@ -13,7 +12,7 @@ export const r008: NodeRule = {
   why: "Clients and code generators find types by their BrowseName; two of one name give two classes of one name, or the wrong type.",
   check(node, ctx, report) {
     // Two nodes of one NodeId are one finding of R002, not one more here.
-    for (const twin of ctx.listTagged(tagOf.typeName(node.browseName))) {
+    for (const twin of ctx.listTypesNamed(node.browseName)) {
       if (twin === node.key || ctx.nodeIdOf(twin) === ctx.nodeIdOf(node.key)) continue;
       report({
         attribute: "browseName",

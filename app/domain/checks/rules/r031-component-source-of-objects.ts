@@ -1,0 +1,38 @@
+import { StandardReferenceType as R } from "../../address-space/standard-ids";
+import { edgesDeclaredAt } from "../edges";
+import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+
+export const r031: NodeRule = {
+  id: "R031",
+  title: "Source of HasComponent to an Object or a Method",
+  severity: "error",
+  clause: clause(3, "§7.7"),
+  priority: 1,
+  concerns: ALL_CLASSES,
+  condition: "An Object or a Method is a component of an Object or an ObjectType only.",
+  why: "Variables and VariableTypes have no Object or Method components; servers refuse them and clients never show them.",
+  check(node, ctx, report) {
+    for (const edge of edgesDeclaredAt(node, ctx, R.HasComponent)) {
+      const source = ctx.node(edge.source);
+      const target = ctx.node(edge.target);
+      if (!source || !target || (target.nodeClass !== "Object" && target.nodeClass !== "Method")) continue;
+      if (source.nodeClass === "Object" || source.nodeClass === "ObjectType") continue;
+      report({
+        attribute: "references",
+        message: `The ${target.nodeClass} ${target.browseName.name} cannot be a component of the ${source.nodeClass} ${source.browseName.name}.`,
+        facts: [
+          `${ctx.nameOf(edge.type)} from ${ctx.describe(edge.source)} to ${ctx.describe(edge.target)}`,
+          `NodeClass of the source: ${source.nodeClass}; allowed: Object, ObjectType`,
+        ],
+        data: { ...edge },
+      });
+    }
+  },
+  examples: {
+    good: { text: "A Method below an ObjectType.", build: (m) => m.method("Start", { parent: m.objectType("PumpType"), rule: "Mandatory" }) },
+    bad: {
+      text: "An Object below a VariableType.",
+      build: (m) => m.object("Details", { parent: m.variableType("LevelType"), rule: "Optional" }),
+    },
+  },
+};

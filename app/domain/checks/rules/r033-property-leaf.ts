@@ -1,0 +1,43 @@
+import { StandardReferenceType as R } from "../../address-space/standard-ids";
+import { isProperty } from "../lookups";
+import { clause, type NodeRule } from "../rule";
+
+export const r033: NodeRule = {
+  id: "R033",
+  title: "A Property has no children",
+  severity: "error",
+  clause: clause(3, "§5.6.3, §7.3, §7.8"),
+  priority: 1,
+  concerns: ["Variable"],
+  condition: "The target of a HasProperty reference has no outgoing hierarchical reference of any kind.",
+  why: "Properties end the tree: clients do not browse below them, so what hangs there is never found.",
+  check(node, ctx, report) {
+    if (!isProperty(ctx, node.key)) return;
+    const edges = [...ctx.childEdges(node.key), ...ctx.subtypeEdges(node.key)];
+    for (const edge of edges) {
+      report({
+        attribute: "references",
+        message: `The Property ${node.browseName.name} has the child ${ctx.nameOf(edge.target)}.`,
+        facts: [
+          ...ctx.parentEdges(node.key).filter((e) => ctx.closure(R.HasProperty).has(e.type)).map((e) => `It is a Property of ${ctx.describe(e.source)}`),
+          `${ctx.nameOf(edge.type)} leads from it to ${ctx.describe(edge.target)}`,
+        ],
+        data: { ...edge },
+      });
+    }
+  },
+  examples: {
+    good: {
+      text: "A Property that ends the tree.",
+      build: (m) => m.property("Label", { parent: m.object("Pump1") }),
+    },
+    bad: {
+      text: "A Property with a unit of its own.",
+      build: (m) => {
+        const length = m.property("Length", { parent: m.object("Pump1") });
+        m.property("0:EngineeringUnits", { parent: length });
+        return length;
+      },
+    },
+  },
+};

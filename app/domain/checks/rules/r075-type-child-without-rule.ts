@@ -1,0 +1,46 @@
+import { standardKey } from "../../address-space/node-id";
+import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
+import type { CheckContext } from "../check-context";
+import { findModellingRule, findTypeDefinition, isInstanceDeclaration, isKindOf, ofType } from "../lookups";
+import { clause, type NodeRule } from "../rule";
+import type { Node } from "../../address-space/node";
+
+const StateType = standardKey(2307);
+const TransitionType = standardKey(2310);
+
+export const r075: NodeRule = {
+  id: "R075",
+  title: "Child of a type without modelling rule",
+  severity: "hint",
+  clause: clause(3, "§6.2.2"),
+  priority: 1,
+  concerns: ["Object", "Variable", "Method"],
+  condition:
+    "A child of an ObjectType, a VariableType or an instance declaration has a modelling rule. States, Transitions and DefaultInstanceBrowseName belong to the type alone.",
+  why: "Without a rule the member stays on the type: subtypes do not inherit it, and no instance gets it. Often the rule was forgotten.",
+  check(node, ctx, report) {
+    if (findModellingRule(ctx, node.key) !== undefined || isMeantForType(node, ctx)) return;
+    const owner = ofType(ctx, ctx.parentEdges(node.key), R.Aggregates).find(({ source }) => {
+      const parent = ctx.node(source);
+      return parent?.nodeClass === "ObjectType" || parent?.nodeClass === "VariableType" || isInstanceDeclaration(ctx, source);
+    });
+    if (!owner) return;
+    report({
+      attribute: "references",
+      message: `${node.browseName.name} has no modelling rule, so instances of ${ctx.nameOf(owner.source)} do not get it.`,
+      facts: [`${ctx.nameOf(owner.type)} from ${ctx.describe(owner.source)}`, "HasModellingRule references: 0"],
+    });
+  },
+  examples: {
+    good: { text: "A member that instances get.", build: (m) => m.variable("Speed", { parent: m.objectType("PumpType"), rule: "Mandatory" }) },
+    bad: { text: "The rule was forgotten.", build: (m) => m.variable("Speed", { parent: m.objectType("PumpType") }) },
+  },
+};
+
+function isMeantForType(node: Node, ctx: CheckContext): boolean {
+  const { browseName } = node;
+  if (browseName.name === "DefaultInstanceBrowseName" && browseName.namespaceUri === "http://opcfoundation.org/UA/") return true;
+  const type = findTypeDefinition(ctx, node.key);
+  if (type === undefined) return false;
+  return [StateType, TransitionType, T.DataTypeEncodingType].some((t) => isKindOf(ctx, type, t));
+}

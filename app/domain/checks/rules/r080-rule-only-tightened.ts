@@ -1,0 +1,76 @@
+import type { Severity } from "../../core/result";
+import type { NodeKey } from "../../address-space/node-id";
+import { formatQualifiedName } from "../../address-space/qualified-name";
+import { StandardModellingRule as M } from "../../address-space/standard-ids";
+import type { CheckContext } from "../check-context";
+import { findModellingRule, findTypeDefinition, isInstanceDeclaration } from "../lookups";
+import { findInheritedMember, getMembers, isPlaceholder, type Member } from "../members";
+import { clause, type NodeRule } from "../rule";
+
+export const r080: NodeRule = {
+  id: "R080",
+  title: "A modelling rule may only be tightened",
+  severity: "error",
+  clause: clause(3, "§6.4.4.2, Table 21, §6.4.4.3, §6.4.4.4.4, §6.4.4.4.5"),
+  priority: 1,
+  concerns: ["Object", "Variable", "Method"],
+  condition:
+    "Where a declaration overrides an inherited one, or repeats one of its parent's type, Mandatory stays, Optional stays or becomes Mandatory, placeholders stay.",
+  why: "Clients written for the base type rely on its Mandatory members; a subtype that makes one Optional breaks them.",
+  check(node, ctx, report) {
+    const rule = findModellingRule(ctx, node.key);
+    if (rule === undefined || !isInstanceDeclaration(ctx, node.key)) return;
+    for (const { source } of ctx.parentEdges(node.key)) {
+      const base = findBase(source, node.browseName, ctx);
+      if (!base || base.node.key === node.key) continue;
+      if (node.nodeClass === "Method" && isPlaceholder(base.rule)) continue;
+      const severity = judge(base.rule, rule);
+      if (!severity) continue;
+      report({
+        severity,
+        attribute: "references",
+        message: `${node.browseName.name} is ${ctx.nameOf(rule)}, but ${ctx.nameOf(base.rule)} where it is inherited from.`,
+        facts: [
+          `Here: ${ctx.nameOf(rule)}, below ${ctx.describe(source)}`,
+          `Inherited: ${ctx.nameOf(base.rule)}, ${ctx.describe(base.node.key)} of ${ctx.describe(base.owner)}`,
+        ],
+        data: { rule: base.rule, found: rule },
+      });
+    }
+  },
+  examples: {
+    good: {
+      text: "Optional becomes Mandatory in the subtype.",
+      build: (m) => {
+        const pump = m.objectType("PumpType");
+        m.variable("Speed", { parent: pump, rule: "Optional" });
+        m.variable("Speed", { parent: m.objectType("FastPumpType", { supertype: pump }), rule: "Mandatory" });
+        return undefined;
+      },
+    },
+    bad: {
+      text: "Mandatory becomes Optional in the subtype.",
+      build: (m) => {
+        const pump = m.objectType("PumpType");
+        m.variable("Speed", { parent: pump, rule: "Mandatory" });
+        return m.variable("Speed", { parent: m.objectType("FastPumpType", { supertype: pump }), rule: "Optional" });
+      },
+    },
+  },
+};
+
+function findBase(parent: NodeKey, name: Member["node"]["browseName"], ctx: CheckContext): Member | undefined {
+  const parentClass = ctx.node(parent)?.nodeClass;
+  if (parentClass === "ObjectType" || parentClass === "VariableType") return findInheritedMember(ctx, parent, name);
+  const type = findTypeDefinition(ctx, parent);
+  return type === undefined ? undefined : getMembers(ctx, type).get(formatQualifiedName(name));
+}
+
+/** Rules outside the standard's table are expected to stay; undefined means that the change is allowed. */
+function judge(before: NodeKey, after: NodeKey): Severity | undefined {
+  if (before === after) return undefined;
+  if (before === M.Optional && after === M.Mandatory) return undefined;
+  if (before === M.OptionalPlaceholder && after === M.MandatoryPlaceholder) return "warning";
+  const isInTable = before === M.Mandatory || before === M.Optional || isPlaceholder(before);
+  return isInTable ? "error" : "warning";
+}

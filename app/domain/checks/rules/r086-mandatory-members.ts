@@ -1,0 +1,99 @@
+import type { Node } from "../../address-space/node";
+import type { NodeKey } from "../../address-space/node-id";
+import { formatQualifiedName } from "../../address-space/qualified-name";
+import { StandardModellingRule as M } from "../../address-space/standard-ids";
+import type { CheckContext } from "../check-context";
+import type { ReportFunction } from "../finding";
+import { findModellingRule, findTypeDefinition, isInstanceDeclaration } from "../lookups";
+import { getChildren, getMembers, isNaming, isPlaceholder, listOwnMembers, type Member } from "../members";
+import { clause, type NodeRule } from "../rule";
+
+export const r086: NodeRule = {
+  id: "R086",
+  title: "Mandatory members present on instances",
+  severity: "error",
+  clause: `${clause(3, "§6.4.2, §6.4.4.4.1, §6.2.4")}, ${clause(6, "§F.3, §F.7")}`,
+  priority: 1,
+  concerns: ["Object", "Variable"],
+  condition:
+    "A plain instance has every Mandatory member of its type and supertypes, nested ones too, with the same BrowseName and NodeClass. Below placeholders and absent optional members nothing is asked for; on instance declarations a missing nested member is a hint.",
+  why: "Clients written for the type read its Mandatory members without asking; here they get “node unknown”.",
+  check(node, ctx, report) {
+    if (node.nodeClass === "Object" && node.designToolOnly) return;
+    const type = findTypeDefinition(ctx, node.key);
+    if (type === undefined) return;
+    const isDeclaration = isInstanceDeclaration(ctx, node.key);
+    if (isDeclaration && isPlaceholder(findModellingRule(ctx, node.key))) return;
+    const walk: Walk = { instance: node, type, isDeclaration, report, ctx };
+    checkBelow(walk, node, [...getMembers(ctx, type).values()], []);
+  },
+  examples: {
+    good: {
+      text: "The instance has the Mandatory member of its type.",
+      build: (m) => {
+        const pump = m.objectType("PumpType");
+        m.variable("Speed", { parent: pump, rule: "Mandatory" });
+        m.variable("Speed", { parent: m.object("Pump1", { type: pump }) });
+        return undefined;
+      },
+    },
+    bad: {
+      text: "The instance lacks it.",
+      build: (m) => {
+        const pump = m.objectType("PumpType");
+        m.variable("Speed", { parent: pump, rule: "Mandatory" });
+        return m.object("Pump1", { type: pump });
+      },
+    },
+  },
+};
+
+type Walk = {
+  readonly instance: Node;
+  readonly type: NodeKey;
+  readonly isDeclaration: boolean;
+  readonly report: ReportFunction;
+  readonly ctx: CheckContext;
+};
+
+const MAX_DEPTH = 20;
+
+/** Members of the type on `at`, and below the members found what the type declares below their declarations. */
+function checkBelow(walk: Walk, at: Node, members: readonly Member[], path: readonly string[]): void {
+  if (path.length > MAX_DEPTH) return;
+  const { ctx } = walk;
+  const children = getChildren(ctx, at.key);
+  for (const member of members) {
+    if (!isNaming(member.rule)) continue;
+    const name = formatQualifiedName(member.node.browseName);
+    const child = children.get(name)?.find((c) => c.nodeClass === member.node.nodeClass);
+    const memberPath = [...path, member.node.browseName.name];
+    if (!child) {
+      if (member.rule === M.Mandatory && !isToldByChild(walk, at, name, path)) reportMissing(walk, at, member, memberPath);
+    } else if (child.key !== member.node.key) {
+      checkBelow(walk, child, listOwnMembers(ctx, member.node.key), memberPath);
+    }
+  }
+}
+
+/** A nested node is checked against its own type by itself. */
+function isToldByChild({ ctx }: Walk, at: Node, name: string, path: readonly string[]): boolean {
+  if (path.length === 0 || !ctx.isOwn(at.key)) return false;
+  const type = findTypeDefinition(ctx, at.key);
+  return type !== undefined && getMembers(ctx, type).get(name)?.rule === M.Mandatory;
+}
+
+function reportMissing({ instance, type, isDeclaration, report, ctx }: Walk, at: Node, member: Member, path: readonly string[]): void {
+  const isHint = isDeclaration || isInstanceDeclaration(ctx, at.key);
+  report({
+    key: ctx.isOwn(at.key) ? at.key : instance.key,
+    ...(isHint ? { severity: "hint" } : {}),
+    message: `${at.browseName.name} has no ${member.node.browseName.name}, which ${ctx.nameOf(type)} makes Mandatory.`,
+    facts: [
+      `Type of ${instance.browseName.name}: ${ctx.describe(type)}`,
+      `Mandatory there: ${path.join("/")}, declared by ${ctx.describe(member.node.key)}, ${member.node.nodeClass}`,
+      `BrowseName looked for: ${formatQualifiedName(member.node.browseName)}`,
+    ],
+    data: { parent: at.key, member: member.node.key, path: path.join("/") },
+  });
+}

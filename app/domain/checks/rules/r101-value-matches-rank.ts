@@ -1,0 +1,81 @@
+import { getDataType, getValueRank, hasValueAttributes } from "../../address-space/node";
+import { StandardDataType as D } from "../../address-space/standard-ids";
+import { findChild, type XmlElement } from "../../core/xml-tree";
+import { list, scalar } from "../example-values";
+import { clause, type NodeRule } from "../rule";
+import { findValueRoot, isNil, listItemType } from "../value-xml";
+
+export const r101: NodeRule = {
+  id: "R101",
+  title: "Value has the shape of its rank",
+  severity: "error",
+  clause: `${clause(3, "§5.6.2, Table 13, §5.6.5, Table 14, §8.7")}, ${clause(6, "§5.3.1.17, §5.1.11")}`,
+  priority: 1,
+  concerns: ["Variable", "VariableType"],
+  condition:
+    "Rank −1 holds one element, 1 a list, above 1 a Matrix with as many dimensions, −3 one element or a list, 0 a list or a Matrix. No value, an empty one and an empty list of an array are never wrong.",
+  why: "Loaders take the value as it stands: the server then serves an array where its own attributes promise a single value.",
+  check(node, ctx, report) {
+    if (!hasValueAttributes(node)) return;
+    const root = findValueRoot(node.value);
+    if (!root || isNil(root)) return;
+    const rank = getValueRank(node);
+    if (rank === -1 && getDataType(node) === D.BaseDataType) return;
+    const shape = findShape(root);
+    const shown = String(rank).replace("-", "−");
+    const facts = [`ValueRank: ${shown}${node.valueRank === undefined ? " (the attribute is left out)" : ""}`, `Value: ${describeShape(root, shape)}`];
+    if (!isAllowed(shape, rank, root)) {
+      report({
+        attribute: "value",
+        message: `The Value of ${node.browseName.name} is ${describeShape(root, shape)}, but the ValueRank is ${shown}.`,
+        facts,
+        data: { shape },
+      });
+      return;
+    }
+    const sizes = shape === "matrix" ? listSizes(root) : [];
+    if (shape === "matrix" && ((rank > 1 && sizes.length !== rank) || sizes.some((size) => !(size > 0)))) {
+      report({
+        attribute: "value",
+        message: `The Matrix of ${node.browseName.name} has the dimensions ${sizes.join(", ") || "none"}, but the ValueRank is ${shown}.`,
+        facts,
+      });
+    }
+  },
+  examples: {
+    good: {
+      text: "A list for one dimension.",
+      build: (m) => m.variable("Names", { parent: m.object("Pump1"), dataType: D.String, valueRank: 1, value: list("String", "a", "b") }),
+    },
+    bad: {
+      text: "A single text for one dimension.",
+      build: (m) => m.variable("Names", { parent: m.object("Pump1"), dataType: D.String, valueRank: 1, value: scalar("String", "a") }),
+    },
+  },
+};
+
+type Shape = "scalar" | "list" | "matrix";
+
+function findShape(root: XmlElement): Shape {
+  if (root.name === "Matrix") return "matrix";
+  return listItemType(root) === undefined ? "scalar" : "list";
+}
+
+function isAllowed(shape: Shape, rank: number, root: XmlElement): boolean {
+  const isEmptyList = shape === "list" && root.children.length === 0;
+  if (rank === -2) return true;
+  if (rank === -1) return shape === "scalar";
+  if (rank === -3) return shape !== "matrix";
+  if (isEmptyList) return true;
+  if (rank === 0) return shape !== "scalar";
+  return rank === 1 ? shape === "list" : shape === "matrix";
+}
+
+function listSizes(root: XmlElement): number[] {
+  return (findChild(root, "Dimensions")?.children ?? []).map((d) => Number(d.text.trim()));
+}
+
+function describeShape(root: XmlElement, shape: Shape): string {
+  if (shape === "matrix") return "a Matrix";
+  return shape === "list" ? `a list (${root.name}, ${root.children.length} entries)` : `a single ${root.name}`;
+}

@@ -1,0 +1,45 @@
+/**
+ * What a Variable or VariableType must fit: its VariableType, its supertype, the declaration that it overrides, the
+ * declaration of the type of which it is a member (OPC 10000-3 §6.2.8).
+ */
+import { hasValueAttributes, type Node, type VariableNode, type VariableTypeNode } from "../address-space/node";
+import { formatQualifiedName } from "../address-space/qualified-name";
+import type { CheckContext } from "./check-context";
+import { findTypeDefinition, listSupertypes } from "./lookups";
+import { findInheritedMember, getMembers, isNaming, listInterfaces } from "./members";
+
+export type ValueBase = {
+  readonly base: VariableNode | VariableTypeNode;
+  /** How the two relate, to be read as `{role} {name}`. */
+  readonly role: "its VariableType" | "its supertype" | "the overridden declaration" | "the declaration in the type";
+};
+
+export function listValueBases(node: VariableNode | VariableTypeNode, ctx: CheckContext): ValueBase[] {
+  const bases: ValueBase[] = [];
+  const add = (base: Node | undefined, role: ValueBase["role"]): void => {
+    if (base && base.key !== node.key && hasValueAttributes(base)) bases.push({ base, role });
+  };
+  if (node.nodeClass === "VariableType") {
+    const [supertype] = listSupertypes(ctx, node.key);
+    if (supertype !== undefined) add(ctx.node(supertype), "its supertype");
+    return bases;
+  }
+  const type = findTypeDefinition(ctx, node.key);
+  const typeNode = type === undefined ? undefined : ctx.node(type);
+  if (typeNode?.nodeClass === "VariableType") add(typeNode, "its VariableType");
+  const name = formatQualifiedName(node.browseName);
+  for (const { source } of ctx.parentEdges(node.key)) {
+    const parent = ctx.node(source);
+    if (!parent) continue;
+    if (parent.nodeClass === "ObjectType" || parent.nodeClass === "VariableType") {
+      add(findInheritedMember(ctx, source, node.browseName)?.node, "the overridden declaration");
+      continue;
+    }
+    const parentType = findTypeDefinition(ctx, source);
+    for (const from of [...(parentType === undefined ? [] : [parentType]), ...listInterfaces(ctx, source)]) {
+      const member = getMembers(ctx, from).get(name);
+      if (member && isNaming(member.rule)) add(member.node, "the declaration in the type");
+    }
+  }
+  return bases;
+}

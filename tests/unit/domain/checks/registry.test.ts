@@ -1,0 +1,43 @@
+import { readdirSync } from "node:fs";
+import { describe, expect, test } from "vitest";
+import { RULES } from "~/domain/checks/registry";
+import { runChecks } from "~/domain/checks/run-checks";
+import { buildModel } from "../../../support/model-builder";
+
+const files = readdirSync(new URL("../../../../app/domain/checks/rules/", import.meta.url)).filter((f) => f.endsWith(".ts"));
+
+describe("registry of rules", () => {
+  test("holds every rule file once, in the order of numbers", () => {
+    expect(RULES.map((r) => r.id.toLowerCase())).toEqual(files.map((f) => f.slice(0, 4)).sort());
+  });
+
+  test.each(RULES)("$id has its texts", (rule) => {
+    expect(rule.title.length).toBeGreaterThan(8);
+    expect(rule.condition.length).toBeGreaterThan(20);
+    expect(rule.why.length).toBeGreaterThan(20);
+    expect(rule.clause).toMatch(/OPC \d+|UANodeSet\.xsd|common practice/);
+    expect(rule.examples.good.text).not.toBe("");
+    expect(rule.examples.bad.text).not.toBe("");
+  });
+});
+
+describe.each(RULES)("$id $title", (rule) => {
+  test(`good: ${rule.examples.good.text}`, () => {
+    const { space } = buildModel((m) => rule.examples.good.build(m));
+    const findings = runChecks(space);
+    expect(findings.filter((f) => f.rule === rule.id)).toEqual([]);
+    expect(findings.filter((f) => f.severity === "error")).toEqual([]);
+  });
+
+  test(`bad: ${rule.examples.bad.text}`, () => {
+    const { space, made } = buildModel((m) => rule.examples.bad.build(m));
+    const found = runChecks(space).filter((f) => f.rule === rule.id);
+    expect(found.map((f) => f.key ?? "model")).toContain(made);
+    expect(found.some((f) => f.severity === rule.severity)).toBe(true);
+    for (const finding of found) {
+      expect(finding.message).toMatch(/\.$/);
+      expect(finding.facts.length).toBeGreaterThan(0);
+      expect(finding.message + finding.facts.join("")).not.toMatch(/undefined|\[object/);
+    }
+  });
+});
