@@ -38,7 +38,6 @@ export class HeaderBuilder {
   readonly otherElements: XmlText[] = [];
   rootAttributes: Attributes = {};
   hasServerUris = false;
-  hasExtensions = false;
   readonly #report: Report;
 
   constructor(report: Report) {
@@ -76,7 +75,7 @@ export class HeaderBuilder {
       ...(this.hasServerUris ? { serverUris: this.serverUris } : {}),
       models: this.models.map((model) => this.#toEntry(model, ids, [])),
       aliases: this.#resolveAliases(ids),
-      ...(this.hasExtensions ? { extensions: this.extensions } : {}),
+      ...(this.extensions.length > 0 ? { extensions: this.extensions } : {}),
       ...(lastModified !== undefined ? { lastModified } : {}),
       ...(this.comments.length > 0 ? { headComments: this.comments } : {}),
       rootAttributes: others,

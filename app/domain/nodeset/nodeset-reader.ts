@@ -264,7 +264,6 @@ export class NodeSetReader implements XmlHandler {
       case "Models":
         return "models";
       case "Extensions":
-        this.#header.hasExtensions = true;
         return "extensions";
       default:
         return undefined;

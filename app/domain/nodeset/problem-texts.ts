@@ -39,4 +39,13 @@ export const nodesetProblemTexts: Readonly<Record<string, string>> = {
   "nodeset.browse-name-prefix": "The name “{name}” itself begins with digits and a colon, which looks like a second namespace index.",
   "nodeset.type-cycle": "The type {nodeId} is its own supertype: {path}.",
   "nodeset.header-order": "The table {element} stands behind nodes. It was read; the schema wants it before them.",
+  "library.model-missing": "{requiredBy} requires the model {modelUri} ({version}), which is not in the library.",
+  "library.only-older": "{requiredBy} requires {modelUri} {version}; the library has only the older {found}.",
+  "library.required-cycle": "The required models go in a circle: {path}.",
+  "library.unreadable": "{file} in the library cannot be read: {detail}",
+  "library.folder-missing": "There is no folder {folder}.",
+  "library.folder-limit": "Below {folder} lie more than {limit} files; the search ended there.",
+  "read.cancelled": "Reading was cancelled.",
+  "read.worker-ended": "Reading ended before it was done ({detail}).",
+  "xsd.invalid": "Not valid by UANodeSet.xsd: {detail}",
 };
