@@ -1,7 +1,6 @@
 import { standardKey } from "../../address-space/node-id";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { edgesDeclaredAt } from "../edges";
-import { isProperty } from "../lookups";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
 const HasArgumentDescription = standardKey(129);
@@ -21,15 +20,14 @@ export const r030: NodeRule = {
     for (const edge of edgesDeclaredAt(node, ctx, R.HasComponent)) {
       const source = ctx.node(edge.source);
       if (!source || ctx.node(edge.target)?.nodeClass !== "Variable" || exception.has(edge.type)) continue;
-      const isSourceProperty = source.nodeClass === "Variable" && isProperty(ctx, source.key);
-      if (!isSourceProperty && ["Object", "ObjectType", "Variable", "VariableType"].includes(source.nodeClass)) continue;
-      const role = isSourceProperty ? "Property" : source.nodeClass;
+      // A Property as the source is a finding of R033.
+      if (["Object", "ObjectType", "Variable", "VariableType"].includes(source.nodeClass)) continue;
       report({
         attribute: "references",
-        message: `${ctx.nameOf(edge.target)} cannot be a component of the ${role} ${source.browseName.name}.`,
+        message: `${ctx.nameOf(edge.target)} cannot be a component of the ${source.nodeClass} ${source.browseName.name}.`,
         facts: [
           `${ctx.nameOf(edge.type)} from ${ctx.describe(edge.source)} to ${ctx.describe(edge.target)}`,
-          `The source is a ${role}; allowed: Object, ObjectType, DataVariable, VariableType`,
+          `The source is a ${source.nodeClass}; allowed: Object, ObjectType, DataVariable, VariableType`,
         ],
         data: { ...edge },
       });

@@ -1,6 +1,7 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
-import { isProperty } from "../lookups";
+import { isProperty, ofType } from "../lookups";
 import { clause, type NodeRule } from "../rule";
+import { count } from "../texts";
 
 export const r033: NodeRule = {
   id: "R033",
@@ -14,17 +15,13 @@ export const r033: NodeRule = {
   check(node, ctx, report) {
     if (!isProperty(ctx, node.key)) return;
     const edges = [...ctx.childEdges(node.key), ...ctx.subtypeEdges(node.key)];
-    for (const edge of edges) {
-      report({
-        attribute: "references",
-        message: `The Property ${node.browseName.name} has the child ${ctx.nameOf(edge.target)}.`,
-        facts: [
-          ...ctx.parentEdges(node.key).filter((e) => ctx.closure(R.HasProperty).has(e.type)).map((e) => `It is a Property of ${ctx.describe(e.source)}`),
-          `${ctx.nameOf(edge.type)} leads from it to ${ctx.describe(edge.target)}`,
-        ],
-        data: { ...edge },
-      });
-    }
+    if (edges.length === 0) return;
+    const owners = ofType(ctx, ctx.parentEdges(node.key), R.HasProperty).map((e) => `It is a Property of ${ctx.describe(e.source)}`);
+    report({
+      attribute: "references",
+      message: `The Property ${node.browseName.name} has ${count(edges.length, "child", "children")}.`,
+      facts: [...owners, ...edges.map((e) => `${ctx.nameOf(e.type)} leads from it to ${ctx.describe(e.target)}`)],
+    });
   },
   examples: {
     good: {
