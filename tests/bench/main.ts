@@ -1,0 +1,35 @@
+/** `npm run bench [-- --json]`: figures with their references, all of one run. */
+import { readInChild, readReferenceInChild, measureReading } from "./reading";
+import type { BenchResult } from "./result";
+import { measureTestServerStart, runBareServer } from "./test-server-start";
+
+const measures: readonly (() => Promise<BenchResult[]>)[] = [measureReading, measureTestServerStart];
+
+async function runAll(asJson: boolean): Promise<void> {
+  const results: BenchResult[] = [];
+  for (const measure of measures) {
+    const found = await measure();
+    results.push(...found);
+    if (!asJson) for (const result of found) console.log(formatResult(result));
+  }
+  if (asJson) console.log(JSON.stringify({ results }));
+}
+
+function formatResult({ name, value, unit, reference, ratio, target, met }: BenchResult): string {
+  const figure = `${name}: ${value} ${unit}`;
+  if (reference === null || ratio === null) return figure;
+  const wanted = target === null ? "" : ` (asked for: at most ${target} ×, ${met ? "met" : "not met"})`;
+  return `${figure}, reference ${reference} ${unit}, ${ratio} ×${wanted}`;
+}
+
+async function runAsChild(name: string, args: readonly string[]): Promise<void> {
+  if (name === "read") return readInChild(args);
+  if (name === "read-reference") return readReferenceInChild(args);
+  const [pkiFolder, ...files] = args;
+  if (name === "bare-server" && pkiFolder) return runBareServer(pkiFolder, files);
+  throw new RangeError(`Unknown child ${name}`);
+}
+
+const [first, name, ...rest] = process.argv.slice(2);
+if (first === "--child" && name) await runAsChild(name, rest);
+else await runAll(process.argv.includes("--json"));

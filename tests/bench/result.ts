@@ -1,0 +1,40 @@
+/** One measured figure beside its reference, measured in the same run on the same files. */
+export type BenchResult = {
+  readonly name: string;
+  readonly value: number;
+  readonly unit: string;
+  /** The reference's figure in the same unit; null where there is none. */
+  readonly reference: number | null;
+  /** value ÷ reference. */
+  readonly ratio: number | null;
+  /** Highest ratio that is asked for; null for a figure that is only recorded. */
+  readonly target: number | null;
+  readonly met: boolean | null;
+};
+
+/** `target` is the highest ratio of value to reference that is asked for. */
+export function compare(name: string, unit: string, value: number, reference: number, target: number): BenchResult {
+  const ratio = value / reference;
+  return {
+    name,
+    value: round(value),
+    unit,
+    reference: round(reference),
+    ratio: round(ratio),
+    target,
+    met: ratio <= target,
+  };
+}
+
+export function median(values: readonly number[]): number {
+  const sorted = [...values].sort((a, b) => a - b);
+  const middle = Math.floor(sorted.length / 2);
+  const upper = sorted[middle];
+  const lower = sorted[sorted.length % 2 === 0 ? middle - 1 : middle];
+  if (upper === undefined || lower === undefined) throw new RangeError("No values");
+  return (lower + upper) / 2;
+}
+
+function round(value: number): number {
+  return Number(value.toPrecision(4));
+}
