@@ -58,7 +58,7 @@ async function requireFreePort(port: number, host: string): Promise<void> {
 function resetDemo(): void {
   const { isDemo, dataFolder } = getEnvironment();
   if (!isDemo) return;
-  for (const name of ["ferrule.db", "ferrule.db-wal", "ferrule.db-shm", "uploads", "packs"]) {
+  for (const name of ["ferrule.db", "ferrule.db-wal", "ferrule.db-shm", "uploads"]) {
     rmSync(join(dataFolder, name), { recursive: true, force: true });
   }
 }

@@ -3,7 +3,7 @@ import { betterAuth } from "better-auth";
 import { drizzleAdapter } from "better-auth/adapters/drizzle";
 import { organization } from "better-auth/plugins/organization";
 import { getDatabase } from "../db/client.server";
-import * as schema from "../db/schema/schema";
+import { schema } from "../db/schema/schema";
 import { getEnvironment } from "../utils/env.server";
 import { singleton } from "../utils/singleton.server";
 import { CLIENT_ADDRESS_HEADER } from "../utils/client-address.server";

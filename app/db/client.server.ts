@@ -5,12 +5,13 @@
  */
 import { join } from "node:path";
 import { createClient, type Client } from "@libsql/client";
+import type { BatchItem } from "drizzle-orm/batch";
 import { drizzle, type LibSQLDatabase } from "drizzle-orm/libsql";
 import { migrate } from "drizzle-orm/libsql/migrator";
 import { getEnvironment } from "../utils/env.server";
 import { findProjectRoot } from "../utils/project-root.server";
 import { singleton } from "../utils/singleton.server";
-import * as schema from "./schema/schema";
+import { schema } from "./schema/schema";
 
 export type Database = LibSQLDatabase<typeof schema>;
 
@@ -43,6 +44,13 @@ export function writeInTurn<T>(work: (db: Database) => Promise<T>): Promise<T> {
   );
   connection.lastWrite = turn.catch(() => undefined);
   return turn;
+}
+
+export type Statement = BatchItem<"sqlite">;
+
+/** Writes all statements or none, in turn with other use cases; answers what each returned, in order. */
+export function writeBatch(statements: readonly [Statement, ...Statement[]]): Promise<readonly unknown[]> {
+  return writeInTurn((db) => db.batch(statements as [Statement, ...Statement[]]));
 }
 
 /** Waits for the writes in turn and closes; for shutdown. */

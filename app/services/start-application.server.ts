@@ -1,10 +1,13 @@
 /** Start and end of the application inside its process; asked once by server.ts, or by the entry in development. */
+import { join } from "node:path";
 import { closeDatabase, migrateDatabase } from "../db/client.server";
 import { getEnvironment } from "../utils/env.server";
 import { onShutdown, runShutdown } from "../utils/shutdown.server";
 import { singleton } from "../utils/singleton.server";
+import { getLibrary } from "../library/library.server";
 import { seedDemo } from "./seed-demo.server";
 import { keepSetUpCode, needsSetUp } from "./set-up-organization.server";
+import { registerModelTopics } from "./topic-providers.server";
 
 const SHUTDOWN_LIMIT_MS = 4000;
 
@@ -18,6 +21,8 @@ export function startApplication(): Promise<StartReport> {
 async function start(): Promise<StartReport> {
   await migrateDatabase();
   onShutdown("database", closeDatabase);
+  getLibrary().usePackFolder(join(getEnvironment().dataFolder, "packs"));
+  registerModelTopics();
   const { isDemo, dataFolder } = getEnvironment();
   if (isDemo) return { lines: await seedDemo() };
   if (!(await needsSetUp())) return { lines: [`Data folder: ${dataFolder}`] };

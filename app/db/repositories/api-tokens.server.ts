@@ -1,7 +1,7 @@
 import { and, desc, eq, isNull } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import { getDatabase } from "../client.server";
-import { apiToken, user } from "../schema/schema";
+import { apiToken, user } from "../schema/auth";
 
 export type TokenRow = typeof apiToken.$inferSelect;
 

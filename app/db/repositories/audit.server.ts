@@ -1,6 +1,6 @@
 import { and, desc, eq, lt } from "drizzle-orm";
 import { getDatabase } from "../client.server";
-import { auditEntry } from "../schema/schema";
+import { auditEntry } from "../schema/operations";
 
 export type AuditRow = typeof auditEntry.$inferSelect;
 

@@ -1,16 +1,20 @@
 /** Bytes by content: stored once however often they are named. */
-import { gunzipSync, gzipSync } from "node:zlib";
+import { promisify } from "node:util";
+import { gunzip, gzip } from "node:zlib";
 import { eq } from "drizzle-orm";
 import { sha256 } from "../../utils/ids.server";
 import { getDatabase } from "../client.server";
-import { contentBlob } from "../schema/schema";
+import { contentBlob } from "../schema/models";
 
 export type StoredBlob = { readonly hash: string; readonly gzip: Buffer; readonly size: number };
 
-/** Hashes and compresses; nothing is written before the statement runs. */
-export function toBlob(data: Uint8Array | string): StoredBlob {
+const compress = promisify(gzip);
+const unpack = promisify(gunzip);
+
+/** Hashes, and compresses off the main thread; nothing is written before the statement runs. */
+export async function toBlob(data: Uint8Array | string): Promise<StoredBlob> {
   const bytes = typeof data === "string" ? Buffer.from(data, "utf8") : Buffer.from(data.buffer, data.byteOffset, data.byteLength);
-  return { hash: sha256(bytes), gzip: gzipSync(bytes, { level: 6 }), size: bytes.length };
+  return { hash: sha256(bytes), gzip: await compress(bytes, { level: 5 }), size: bytes.length };
 }
 
 export function addBlobStatement(blob: StoredBlob, now: Date) {
@@ -27,6 +31,6 @@ export async function findBlobGzip(hash: string): Promise<Buffer | undefined> {
 }
 
 export async function findBlob(hash: string): Promise<Buffer | undefined> {
-  const gzip = await findBlobGzip(hash);
-  return gzip ? gunzipSync(gzip) : undefined;
+  const stored = await findBlobGzip(hash);
+  return stored ? unpack(stored) : undefined;
 }

@@ -3,7 +3,8 @@ import { and, asc, desc, eq, gt, inArray, lte, sql } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import type { Transaction } from "../../domain/editing/operation";
 import { getDatabase } from "../client.server";
-import { eventEntry, model, revision, sheet, snapshot, transaction, type SheetLayout } from "../schema/schema";
+import { model, revision, sheet, snapshot, transaction, type SheetLayout } from "../schema/models";
+import { eventEntry } from "../schema/operations";
 
 export type ModelRow = typeof model.$inferSelect;
 export type RevisionRow = typeof revision.$inferSelect;
@@ -141,7 +142,7 @@ export function addTransactionStatement(modelId: string, authorId: string, entry
 }
 
 export function addEventStatement(topic: string, reference: number, at: Date) {
-  return getDatabase().insert(eventEntry).values({ topic, reference, at });
+  return getDatabase().insert(eventEntry).values({ topic, reference, at }).returning({ seq: eventEntry.seq });
 }
 
 /** The place of an event in the global sequence. */

@@ -2,7 +2,7 @@
 import { and, eq, sql } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import { getDatabase } from "../client.server";
-import { nodeIdLease, nodeIdLedger } from "../schema/schema";
+import { nodeIdLease, nodeIdLedger } from "../schema/models";
 
 /**
  * Blocks are leased from the lower half of the 32-bit range. The upper half is left to identifiers that people or other

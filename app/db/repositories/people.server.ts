@@ -3,7 +3,7 @@ import { and, asc, count, eq, sql } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import { formatRoles, parseRoles, type Role } from "../../auth/permissions";
 import { getDatabase } from "../client.server";
-import { account, member, organization, session, user } from "../schema/schema";
+import { account, member, organization, session, user } from "../schema/auth";
 
 export type Membership = { readonly organizationId: string; readonly organizationName: string; readonly roles: readonly Role[] };
 

@@ -1,7 +1,7 @@
 /** NodeSets that an organisation added to its library. */
 import { asc, eq } from "drizzle-orm";
 import { getDatabase } from "../client.server";
-import { uploadedNodeSet } from "../schema/schema";
+import { uploadedNodeSet } from "../schema/models";
 
 export type UploadRow = typeof uploadedNodeSet.$inferSelect;
 

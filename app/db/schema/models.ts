@@ -8,6 +8,9 @@ const timestamp = (name: string) => integer(name, { mode: "timestamp_ms" });
 
 export type ModelKind = "types" | "machines";
 
+/** A required model as a header names it, for questions that need no contents. */
+export type RequiredModelRow = { readonly modelUri: string; readonly version?: string; readonly publicationDate?: string };
+
 export const model = sqliteTable(
   "model",
   {
@@ -23,6 +26,7 @@ export const model = sqliteTable(
     /** Sequence number of the last accepted transaction; 0 directly after revision 0. */
     headSeq: integer("head_seq").notNull().default(0),
     nodeCount: integer("node_count").notNull().default(0),
+    requiredModels: text("required_models", { mode: "json" }).$type<readonly RequiredModelRow[]>().notNull(),
     createdAt: timestamp("created_at").notNull(),
     createdBy: text("created_by").notNull(),
     updatedAt: timestamp("updated_at").notNull(),
@@ -174,9 +178,7 @@ export const uploadedNodeSet = sqliteTable(
       .notNull()
       .references(() => contentBlob.hash),
     nodeCount: integer("node_count").notNull(),
-    requiredModels: text("required_models", { mode: "json" })
-      .$type<readonly { modelUri: string; version?: string; publicationDate?: string }[]>()
-      .notNull(),
+    requiredModels: text("required_models", { mode: "json" }).$type<readonly RequiredModelRow[]>().notNull(),
     uploadedBy: text("uploaded_by").notNull(),
     at: timestamp("at").notNull(),
   },

@@ -53,11 +53,13 @@ export const testServer = sqliteTable(
     endpointUrl: text("endpoint_url"),
     options: text("options", { mode: "json" }).$type<Readonly<Record<string, unknown>>>().notNull(),
     problems: text("problems", { mode: "json" }).$type<readonly Problem[]>().notNull(),
-    /** Process id of the application that owns the child, and the child's own. */
+    /** Process of the application that owns the child: its id and its host. */
     ownerPid: integer("owner_pid").notNull(),
-    childPid: integer("child_pid"),
+    ownerHost: text("owner_host").notNull(),
     startedBy: text("started_by").notNull(),
     startedAt: timestamp("started_at").notNull(),
+    /** The owner writes here now and then; a row whose owner has fallen silent is marked lost. */
+    heartbeatAt: timestamp("heartbeat_at").notNull(),
     endedAt: timestamp("ended_at"),
   },
   (table) => [index("test_server_model").on(table.modelId)],

@@ -1,4 +1,6 @@
-/** All tables, for the client and for the generator of migrations. */
-export * from "./auth";
-export * from "./models";
-export * from "./operations";
+/** All tables, for the client. */
+import * as authTables from "./auth";
+import * as modelTables from "./models";
+import * as operationTables from "./operations";
+
+export const schema = { ...authTables, ...modelTables, ...operationTables };

@@ -1,13 +1,14 @@
-import { join } from "node:path";
 import { MessageSecurityMode, OPCUACertificateManager, OPCUAServer, SecurityPolicy, WellKnownRoles, makeRoles } from "node-opcua";
 import type { StartMessage } from "../messages";
 
-/** Keys and certificates of this server alone, below the data folder; a simulation never borrows a machine's certificate. */
-export async function createCertificateManager(folder: string): Promise<OPCUACertificateManager> {
+/**
+ * Keys and certificates of this server alone, below the data folder; a simulation never borrows a machine's certificate.
+ * The server is bound to loopback and has nothing to guard, so that clients are let in unknown; users are not.
+ */
+export async function createCertificateManager(folder: string, trust: { acceptsUnknown: boolean }): Promise<OPCUACertificateManager> {
   const manager = new OPCUACertificateManager({
-    rootFolder: join(folder, "server"),
-    // The server is bound to loopback and has nothing to guard: whoever reaches it may look at simulated values.
-    automaticallyAcceptUnknownCertificate: true,
+    rootFolder: folder,
+    automaticallyAcceptUnknownCertificate: trust.acceptsUnknown,
     disableFileWatchers: true,
   });
   await manager.initialize();

@@ -39,8 +39,8 @@ async function start(config: StartMessage): Promise<void> {
   const { bindSimulation } = await import("./bind-simulation");
 
   send({ kind: "progress", stage: "certificate" });
-  const certificates = await createCertificateManager(config.pkiFolder);
-  const userCertificates = await createCertificateManager(join(config.pkiFolder, "users"));
+  const certificates = await createCertificateManager(join(config.pkiFolder, "server"), { acceptsUnknown: true });
+  const userCertificates = await createCertificateManager(join(config.pkiFolder, "users"), { acceptsUnknown: false });
   const server = createServer(config, certificates, userCertificates);
 
   send({ kind: "progress", stage: "nodesets" });
@@ -111,6 +111,6 @@ async function end(exitCode: number): Promise<void> {
     await Promise.race([running.server.shutdown(100), wait(SHUTDOWN_LIMIT)]).catch(() => undefined);
   }
   send({ kind: "stopped" });
-  // Leaves time for the last message on the channel; nothing else keeps the process.
-  setTimeout(() => process.exit(exitCode), 20);
+  // Leaves the channel a turn for the last message; nothing else keeps the process.
+  setImmediate(() => process.exit(exitCode));
 }

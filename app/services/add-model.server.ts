@@ -1,0 +1,99 @@
+/** Storing a new model: its row, revision 0, ledger, first sheet and audit row, in one batch or not at all. */
+import type { Caller } from "../auth/caller.server";
+import { writeBatch } from "../db/client.server";
+import { addAuditStatement } from "../db/repositories/audit.server";
+import { addBlobStatement, toBlob } from "../db/repositories/blobs.server";
+import {
+  addModelStatement,
+  addRevisionStatement,
+  addSheetStatement,
+  findModelByNamespace,
+  type ModelRow,
+} from "../db/repositories/models.server";
+import { HIGHEST_LEASED_IDENTIFIER, raiseLedgerStatement } from "../db/repositories/node-ids.server";
+import type { ModelKind } from "../db/schema/models";
+import { getOwnNamespace, type ModelHeader } from "../domain/address-space/model-header";
+import type { Node } from "../domain/address-space/node";
+import { fail, ok, problem, type Result } from "../domain/core/result";
+import { writePack } from "../domain/nodeset/pack";
+import { newId } from "../utils/ids.server";
+import { describeHeader } from "./describe-header.server";
+import { publish } from "./event-hub.server";
+import { makeSheet } from "./save-sheet.server";
+
+export type NewModel = {
+  readonly name: string;
+  readonly kind: ModelKind;
+  readonly content: { readonly header: ModelHeader; readonly nodes: readonly Node[] };
+  readonly message: string;
+  /** The imported file, kept byte for byte. */
+  readonly file?: { readonly name: string; readonly bytes: Uint8Array };
+};
+
+/** Problem: `model.namespace-taken`, also when another request was quicker by a moment. */
+export async function addModel(author: Caller, organizationId: string, intent: NewModel): Promise<Result<ModelRow>> {
+  const { content, name, kind, file } = intent;
+  const now = new Date();
+  const namespaceUri = getOwnNamespace(content.header);
+  const taken = () => fail(problem("model.namespace-taken", { namespaceUri, name }));
+  if (await findModelByNamespace(organizationId, namespaceUri)) return taken();
+  const pack = await toBlob(writePack(content));
+  const fileBlob = file ? await toBlob(file.bytes) : undefined;
+  const model: ModelRow = {
+    id: newId(),
+    organizationId,
+    name,
+    kind,
+    namespaceUri,
+    ...describeHeader(content.header),
+    headSeq: 0,
+    nodeCount: content.nodes.length,
+    createdAt: now,
+    createdBy: author.name,
+    updatedAt: now,
+    updatedBy: author.name,
+  };
+  try {
+    await writeBatch([
+      addModelStatement(model),
+      addBlobStatement(pack, now),
+      ...(fileBlob ? [addBlobStatement(fileBlob, now)] : []),
+      addRevisionStatement({
+        modelId: model.id,
+        number: 0,
+        seq: 0,
+        packHash: pack.hash,
+        fileHash: fileBlob?.hash ?? null,
+        fileName: file?.name ?? null,
+        message: intent.message,
+        author: author.name,
+        at: now,
+        nodeCount: content.nodes.length,
+      }),
+      raiseLedgerStatement(organizationId, namespaceUri, findHighestIdentifier(content.nodes, namespaceUri)),
+      addSheetStatement(makeSheet(model.id, "Overview", 0, author.name)),
+      addAuditStatement({
+        organizationId,
+        userId: author.userId,
+        userName: author.name,
+        action: file ? "model.import" : "model.create",
+        subject: { kind: "model", id: model.id, name },
+        details: { namespaceUri, nodes: content.nodes.length, ...(file ? { file: file.name } : {}) },
+      }),
+    ]);
+  } catch (error) {
+    if (await findModelByNamespace(organizationId, namespaceUri)) return taken();
+    throw error;
+  }
+  publish(`models:${organizationId}`, { id: model.id, change: "added" });
+  return ok(model);
+}
+
+function findHighestIdentifier(nodes: readonly Node[], namespaceUri: string): number {
+  let highest = 0;
+  for (const { nodeId } of nodes) {
+    if (nodeId.namespaceUri !== namespaceUri || typeof nodeId.identifier !== "number") continue;
+    if (nodeId.identifier <= HIGHEST_LEASED_IDENTIFIER) highest = Math.max(highest, nodeId.identifier);
+  }
+  return highest;
+}

@@ -1,0 +1,88 @@
+/** The demo: its organisation, its people and its models. Seeding again changes nothing that is there. */
+import { readdirSync, readFileSync } from "node:fs";
+import { join } from "node:path";
+import type { Caller } from "../auth/caller.server";
+import { hashPassword } from "../auth/session.server";
+import { writeBatch, type Statement } from "../db/client.server";
+import { findModelByNamespace } from "../db/repositories/models.server";
+import {
+  addMemberStatement,
+  addOrganizationStatement,
+  addPersonStatements,
+  findOrganizationBySlug,
+  findUserByEmail,
+  listMemberships,
+} from "../db/repositories/people.server";
+import { formatProblem } from "../domain/core/problem-texts";
+import { demoAccounts, demoOrganizationName, demoPassword } from "../utils/demo-accounts";
+import { newId } from "../utils/ids.server";
+import { findProjectRoot } from "../utils/project-root.server";
+import { importModel } from "./import-model.server";
+import { readUpload } from "./read-upload.server";
+
+const DEMO_SLUG = "demo";
+
+/** The demo's models in the order in which they require each other; the file names tell the model's name. */
+const demoModels = [
+  { file: "RopeBraider.NodeSet2.xml", name: "Rope braider" },
+  { file: "MerrowHall.NodeSet2.xml", name: "Merrow hall" },
+] as const;
+
+/** Answers lines for the console. */
+export async function seedDemo(): Promise<string[]> {
+  const organizationId = await seedPeople();
+  const lines = [`Demo organisation: ${demoOrganizationName} (everybody and everything in it is invented)`];
+  const author = await findAuthor(organizationId);
+  for (const { file, name } of listDemoFiles()) {
+    const problem = await seedModel(author, organizationId, file, name);
+    if (problem !== undefined) lines.push(`${file} was not seeded: ${problem}`);
+  }
+  return lines;
+}
+
+async function seedPeople(): Promise<string> {
+  const known = await findOrganizationBySlug(DEMO_SLUG);
+  const organizationId = known?.id ?? newId();
+  const now = new Date();
+  const statements: Statement[] = known ? [] : [addOrganizationStatement(organizationId, demoOrganizationName, DEMO_SLUG, now)];
+  for (const { name, email, roles } of demoAccounts) {
+    const user = await findUserByEmail(email);
+    if (!user) {
+      const passwordHash = await hashPassword(demoPassword);
+      statements.push(...addPersonStatements(organizationId, { name, email, passwordHash, roles }, now).statements);
+    } else if (!(await listMemberships(user.id)).some((m) => m.organizationId === organizationId)) {
+      statements.push(addMemberStatement(organizationId, user.id, roles, now));
+    }
+  }
+  const [first, ...rest] = statements;
+  if (first) await writeBatch([first, ...rest]);
+  return organizationId;
+}
+
+async function findAuthor(organizationId: string): Promise<Caller> {
+  const engineer = demoAccounts.find((account) => account.roles.includes("engineer"));
+  const user = engineer ? await findUserByEmail(engineer.email) : undefined;
+  if (!user) throw new Error(`The demo organisation ${organizationId} has no engineer`);
+  return { userId: user.id, name: user.name, email: user.email, memberships: await listMemberships(user.id) };
+}
+
+function demoFolder(): string {
+  return join(findProjectRoot(), "nodesets", "demo");
+}
+
+/** The known models that are there, in order. */
+function listDemoFiles(): { file: string; name: string }[] {
+  const present = new Set(readdirSync(demoFolder()));
+  return demoModels.filter(({ file }) => present.has(file));
+}
+
+/** Imports one file unless its namespace is there; answers what was wrong with it. */
+async function seedModel(author: Caller, organizationId: string, file: string, name: string): Promise<string | undefined> {
+  const bytes = readFileSync(join(demoFolder(), file));
+  const upload = await readUpload(bytes, file);
+  const explain = (problems: readonly Parameters<typeof formatProblem>[0][]) => problems.filter((p) => p.severity === "error").map(formatProblem).join(" ");
+  if (!upload.ok) return explain(upload.problems);
+  if (await findModelByNamespace(organizationId, upload.value.namespaceUri)) return undefined;
+  const imported = await importModel(author, organizationId, upload.value, { name });
+  return imported.ok ? undefined : explain(imported.problems);
+}

@@ -1,0 +1,116 @@
+import { randomBytes } from "node:crypto";
+import { hostname } from "node:os";
+import { join } from "node:path";
+import { z } from "zod";
+import { saveNewTestServer } from "../db/repositories/test-servers.server";
+import { fail, ok, problem, type Result } from "../domain/core/result";
+import { planSimulation, type SimulatedVariable } from "../domain/simulation/plan-simulation";
+import type { TestServerState } from "../domain/simulation/test-server-state";
+import type { StartMessage } from "../opcua/messages";
+import { getSupervisor, type TestServerSeed } from "../opcua/supervisor.server";
+import { getEnvironment } from "../utils/env.server";
+import { newId } from "../utils/ids.server";
+import { logError } from "../utils/log.server";
+import { followTestServers } from "./follow-test-servers.server";
+import { getTestServerFolder, writeTestServerFiles } from "./test-server-files.server";
+import { loadWorkingModel } from "./working-model.server";
+
+/** What a caller may choose; the API takes it as its body. "none" opens the server to everybody on this host. */
+export const testServerIntentSchema = z.strictObject({
+  security: z.array(z.enum(["basic256sha256", "none"])).min(1).max(2).default(["basic256sha256"]),
+  simulatedQuality: z.enum(["uncertain", "good"]).default("uncertain"),
+});
+export type TestServerIntent = z.infer<typeof testServerIntentSchema>;
+
+type ModelOfServer = { readonly id: string; readonly organizationId: string; readonly name: string };
+
+const MAX_SESSIONS = 50;
+const HOST = "127.0.0.1";
+
+/**
+ * Starts a test server on the model's working state and answers at once, in state "starting"; who asked for it has the
+ * permission. Problems: `test-server.limit`. What goes wrong later is in the server's state.
+ */
+export async function startTestServer(model: ModelOfServer, startedBy: string, intent: TestServerIntent): Promise<Result<TestServerState>> {
+  const supervisor = getSupervisor();
+  await followTestServers();
+  const full = supervisor.checkRoom();
+  if (full) return fail(full);
+  const seed = makeSeed(model, intent);
+  const state = supervisor.announce(seed);
+  await saveNewTestServer({
+    id: seed.id,
+    organizationId: model.organizationId,
+    modelId: model.id,
+    state: "starting",
+    options: { ...intent },
+    problems: [],
+    ownerPid: process.pid,
+    ownerHost: hostname(),
+    startedBy,
+    startedAt: new Date(state.startedAt),
+    heartbeatAt: new Date(state.startedAt),
+  });
+  void prepare(seed).catch((error: unknown) => {
+    logError(error, "start of a test server");
+    supervisor.failStart(seed.id, [problem("test-server.start", { detail: "the model's files could not be written" })]);
+  });
+  return ok(state);
+}
+
+function makeSeed(model: ModelOfServer, { security, simulatedQuality }: TestServerIntent): TestServerSeed {
+  return {
+    id: newId(),
+    organizationId: model.organizationId,
+    modelId: model.id,
+    modelName: model.name,
+    sampleInstances: [],
+    applicationName: `${model.name} (simulation)`,
+    applicationUri: `urn:ferrule:simulation:${model.id}`,
+    security: [...new Set(security)],
+    simulatedQuality,
+    tokens: { anonymous: true, userName: "tester", password: randomBytes(9).toString("base64url") },
+  };
+}
+
+async function prepare(seed: TestServerSeed): Promise<void> {
+  const supervisor = getSupervisor();
+  const working = await loadWorkingModel(seed.modelId);
+  if (!working) return supervisor.failStart(seed.id, [problem("test-server.model-gone")]);
+  if (working.missing.length > 0) return supervisor.failStart(seed.id, working.missing);
+  const nodeSetFiles = await writeTestServerFiles(getTestServerFolder(seed.id), working, []);
+  // Machines of required models are part of what the server shows, so they move too.
+  const team = working.layers.filter((required) => required.from).map((required) => required.layer);
+  const simulation = planSimulation(working.space, [...team, working.space.own]);
+  supervisor.launch(toStartMessage(seed, nodeSetFiles, simulation));
+}
+
+function toStartMessage(seed: TestServerSeed, nodeSetFiles: string[], simulation: readonly SimulatedVariable[]): StartMessage {
+  const { id, applicationName, applicationUri, security, simulatedQuality, tokens } = seed;
+  return {
+    kind: "start",
+    id,
+    applicationName,
+    applicationUri,
+    // One folder a model: its certificate stays the same from start to start, so that clients need to trust it once.
+    pkiFolder: join(getEnvironment().dataFolder, "pki", `test-server-${seed.modelId}`),
+    host: HOST,
+    port: 0,
+    security: [...security],
+    userName: tokens.userName,
+    password: tokens.password,
+    simulatedQuality,
+    nodeSetFiles,
+    simulation: simulation.map(toMessage),
+    maxSessions: MAX_SESSIONS,
+  };
+}
+
+function toMessage(entry: SimulatedVariable): StartMessage["simulation"][number] {
+  const { motion } = entry;
+  return {
+    ...entry,
+    dimensions: [...entry.dimensions],
+    motion: motion.kind === "steps" ? { ...motion, values: [...motion.values] } : motion,
+  };
+}

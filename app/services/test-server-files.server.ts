@@ -1,0 +1,52 @@
+/**
+ * The files that a test server loads, the base first. Published NodeSets are loaded where the npm package put them (the
+ * server's loader knows a quick form of these), everything else is written from the model that was checked and shown.
+ */
+import { mkdir, rm, writeFile } from "node:fs/promises";
+import { join } from "node:path";
+import { getLibrary } from "../library/library.server";
+import type { AddressSpace, Layer } from "../domain/address-space/address-space";
+import { writeNodeSet } from "../domain/nodeset/write-nodeset";
+import { getEnvironment } from "../utils/env.server";
+import type { RequiredLayer } from "./required-models.server";
+
+export type ServedModel = { readonly space: AddressSpace; readonly layers: readonly RequiredLayer[] };
+
+/** The folder that belongs to one server alone. */
+export function getTestServerFolder(id: string): string {
+  return join(getEnvironment().dataFolder, "test-servers", id);
+}
+
+/** Writes into `folder` and answers the paths in the order of loading. */
+export async function writeTestServerFiles(folder: string, { space, layers }: ServedModel, extra: readonly Layer[]): Promise<string[]> {
+  await mkdir(folder, { recursive: true });
+  const files: string[] = [];
+  for (const required of layers) {
+    const published = findPublishedFile(required);
+    files.push(published ?? (await writeLayer(folder, files.length, required.layer, space)));
+  }
+  for (const layer of [space.own, ...extra]) files.push(await writeLayer(folder, files.length, layer, space));
+  return files;
+}
+
+export async function removeTestServerFiles(folder: string): Promise<void> {
+  await rm(folder, { recursive: true, force: true });
+}
+
+function findPublishedFile({ modelUri, version, publicationDate, from }: RequiredLayer): string | undefined {
+  if (from) return undefined;
+  const entry = getLibrary()
+    .list()
+    .find((e) => e.origin === "published" && e.modelUri === modelUri && e.version === version && e.publicationDate === publicationDate);
+  return entry?.source.kind === "file" ? entry.source.path : undefined;
+}
+
+async function writeLayer(folder: string, index: number, layer: Layer, space: AddressSpace): Promise<string> {
+  const file = join(folder, `${String(index).padStart(2, "0")}.NodeSet2.xml`);
+  const { xml } = writeNodeSet(
+    { header: layer.header, nodes: [...layer.nodes.values()] },
+    { findNodeId: (key) => space.getNode(key)?.nodeId },
+  );
+  await writeFile(file, xml);
+  return file;
+}

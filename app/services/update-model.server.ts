@@ -1,0 +1,48 @@
+import type { Caller } from "../auth/caller.server";
+import { writeBatch } from "../db/client.server";
+import { addAuditStatement } from "../db/repositories/audit.server";
+import { removeModelStatement, updateModelStatement, type ModelRow } from "../db/repositories/models.server";
+import { fail, ok, problem, type Result } from "../domain/core/result";
+import { publish } from "./event-hub.server";
+import { listDependents } from "./required-models.server";
+import { forgetWorkingModel, inModelTurn } from "./working-model.server";
+
+/** The name that the team gives the model; namespace and version belong to its contents. */
+export async function renameModel(author: Caller, model: ModelRow, name: string): Promise<void> {
+  await inModelTurn(model.id, async () => {
+    await writeBatch([
+      updateModelStatement(model.id, { name, updatedAt: new Date(), updatedBy: author.name }),
+      addAuditStatement({ ...describe(author, model), action: "model.rename", details: { from: model.name, to: name } }),
+    ]);
+    forgetWorkingModel(model.id);
+  });
+  publish(`models:${model.organizationId}`, { id: model.id, change: "renamed" });
+}
+
+/**
+ * Deletes a model with its history and sheets; the ledger of its identifiers stays, so that none is given again.
+ * Problem: `model.required-by-others`.
+ */
+export async function deleteModel(author: Caller, model: ModelRow): Promise<Result<null>> {
+  const users = await listDependents(model.organizationId, model.namespaceUri);
+  if (users.length > 0) return fail(problem("model.required-by-others", { names: users.join(", ") }));
+  await inModelTurn(model.id, async () => {
+    await writeBatch([
+      removeModelStatement(model.id),
+      addAuditStatement({ ...describe(author, model), action: "model.delete", details: { namespaceUri: model.namespaceUri } }),
+    ]);
+    forgetWorkingModel(model.id);
+  });
+  publish(`model:${model.id}`, { deleted: true });
+  publish(`models:${model.organizationId}`, { id: model.id, change: "deleted" });
+  return ok(null);
+}
+
+function describe(author: Caller, model: ModelRow) {
+  return {
+    organizationId: model.organizationId,
+    userId: author.userId,
+    userName: author.name,
+    subject: { kind: "model", id: model.id, name: model.name },
+  };
+}

@@ -1,0 +1,38 @@
+/** Forms about models; checked in the browser while typing and again on the server. */
+import { z } from "zod";
+
+const maxUri = 400;
+
+export const modelName = z.string("Write a name").trim().max(100, "At most 100 characters");
+
+/** An absolute URI, as OPC 10000-3 §8.2.2 asks of namespaces; the namespaces of the standards body are not ours. */
+export const namespaceUri = z
+  .string("Write the namespace URI")
+  .trim()
+  .max(maxUri, `At most ${maxUri} characters`)
+  .regex(/^[A-Za-z][A-Za-z0-9+.-]*:[^\s<>"{}|\\^`]+$/, "Write an absolute URI, as http://merrow.example/UA/RopeBraider/")
+  .refine((uri) => !uri.toLowerCase().startsWith("http://opcfoundation.org/"), "This part of the namespace belongs to the standards body");
+
+export const modelVersion = z
+  .string("Write a version")
+  .trim()
+  .regex(/^\d+\.\d+(\.\d+)?([-+][0-9A-Za-z.-]+)?$/, "Write figures with dots, as 1.0.0");
+
+export const newModelSchema = z.object({
+  kind: z.enum(["types", "machines"]),
+  name: modelName,
+  namespaceUri,
+  version: modelVersion,
+  required: z.array(z.string().max(maxUri)).max(50, "At most 50 models").default([]),
+});
+export type NewModelForm = z.infer<typeof newModelSchema>;
+
+export const modelParticularsSchema = z.object({ name: modelName, version: modelVersion });
+
+export const importSchema = z.object({
+  upload: z.string().max(100),
+  into: z.enum(["model", "library"]),
+  name: modelName.optional(),
+  kind: z.enum(["types", "machines"]).optional(),
+  namespaceUri: namespaceUri.optional(),
+});
