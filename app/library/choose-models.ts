@@ -18,7 +18,7 @@ export type Choice = {
 
 type Versioned = Pick<ModelEntry, "version" | "modelVersion" | "publicationDate">;
 
-/** `requiredBy` names the model that asks, for problems. Earlier lists of `sources` win between equally new entries. */
+/** `requiredBy` is the URI of the model that asks; it is never chosen itself. Earlier lists of `sources` win between equally new entries. */
 export function chooseModels(
   required: readonly ModelEntry[],
   sources: readonly (readonly LibraryEntry[])[],
@@ -28,7 +28,7 @@ export function chooseModels(
   const entries: LibraryEntry[] = [];
   const problems: Problem[] = [];
   const done = new Set<string>();
-  const path: string[] = [];
+  const path: string[] = [requiredBy];
 
   const visit = (model: ModelEntry, asking: string): void => {
     const chosen = newest(candidates.get(model.modelUri) ?? []);
@@ -51,7 +51,7 @@ export function chooseModels(
     entries.push(chosen);
   };
 
-  visit({ modelUri: OPC_UA_NAMESPACE, requiredModels: [] }, requiredBy);
+  if (requiredBy !== OPC_UA_NAMESPACE) visit({ modelUri: OPC_UA_NAMESPACE, requiredModels: [] }, requiredBy);
   for (const model of required) visit(model, requiredBy);
   return { entries, problems: withoutRepeats(problems) };
 }

@@ -19,7 +19,7 @@ export type PackFile = { readonly hash: string; readonly gzip: Uint8Array };
 export type ResolveOptions = {
   /** Entries beside the published ones: uploads, folders, models of the team; they win between equally new ones. */
   readonly extra?: readonly LibraryEntry[];
-  /** The model that asks, named in problems. */
+  /** URI of the model that asks: named in problems, and never among the layers itself. */
   readonly requiredBy?: string;
 };
 

@@ -38,6 +38,8 @@ export class HeaderBuilder {
   readonly otherElements: XmlText[] = [];
   rootAttributes: Attributes = {};
   hasServerUris = false;
+  /** Set by `build` when an alias or a role could not be resolved. */
+  hasLosses = false;
   readonly #report: Report;
 
   constructor(report: Report) {
@@ -97,6 +99,7 @@ export class HeaderBuilder {
       const result = ids.resolve(alias);
       for (const found of result.problems) this.#report(found, offset);
       if (result.ok) resolved.push([alias, result.value]);
+      else this.hasLosses = true;
     }
     return resolved;
   }
@@ -121,6 +124,7 @@ export class HeaderBuilder {
   #toRole(role: PendingRole, ids: IdTable): RolePermission[] {
     const result = ids.resolve(role.text);
     for (const found of result.problems) this.#report(found, role.offset);
+    if (!result.ok) this.hasLosses = true;
     return result.ok ? [{ role: result.value, permissions: role.permissions }] : [];
   }
 }

@@ -108,6 +108,7 @@ export class NodeSetReader implements XmlHandler {
   readonly #lines = new Map<NodeKey, Position>();
   readonly #attributeContext: AttributeContext;
   #elementOffset = 0;
+  #isWhole = true;
 
   constructor(source: string, limits: ReadLimits, tables: IdTables | undefined) {
     this.#source = source;
@@ -127,7 +128,7 @@ export class NodeSetReader implements XmlHandler {
   finish(): NodeSetContent {
     this.#finishHeader();
     const header = this.#header.build(this.#ids);
-    return { header, nodes: this.#nodes, lines: this.#lines };
+    return { header, nodes: this.#nodes, lines: this.#lines, isWhole: this.#isWhole && !this.#header.hasLosses };
   }
 
   /** Where the own model with this index is declared. */
@@ -448,6 +449,7 @@ export class NodeSetReader implements XmlHandler {
 
   /** A node without usable id cannot be kept; what is in it is passed over. */
   #skipNode(element: string, attributes: Attributes, start: number): "captured" {
+    this.#isWhole = false;
     return this.#openCapture("nothing", element, attributes, start, start, () => undefined);
   }
 
@@ -585,7 +587,11 @@ export class NodeSetReader implements XmlHandler {
     const known = this.#ids.findKnown(text);
     const target = known === undefined ? this.#take(this.#ids.resolveTarget(text), this.#leafOffset) : undefined;
     const key = known ?? target?.key;
-    if (!this.#node || type === undefined || key === undefined) return;
+    if (!this.#node) return;
+    if (type === undefined || key === undefined) {
+      this.#isWhole = false;
+      return;
+    }
     const others = this.#otherReferenceAttributes(attributes);
     this.#node.references.push({
       type,
@@ -624,6 +630,7 @@ export class NodeSetReader implements XmlHandler {
       const value = this.#leafAttributes["Permissions"] ?? "";
       const data = { attribute: "Permissions", value, expected: "a whole number 0 … 4294967295" };
       this.#report(problem("nodeset.attribute-value", data), this.#leafOffset, "Permissions");
+      this.#isWhole = false;
       return;
     }
     const model = this.#models.at(-1);
@@ -632,7 +639,8 @@ export class NodeSetReader implements XmlHandler {
       return;
     }
     const role = this.#toKey(text, this.#leafOffset);
-    if (role !== undefined) this.#node?.rolePermissions?.push({ role, permissions });
+    if (role === undefined) this.#isWhole = false;
+    else this.#node?.rolePermissions?.push({ role, permissions });
   }
 
   #addAlias(text: string): void {

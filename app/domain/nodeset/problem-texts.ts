@@ -1,4 +1,7 @@
 export const nodesetProblemTexts: Readonly<Record<string, string>> = {
+  "file.unreadable": "{file} cannot be read: {detail}",
+  "file.unwritable": "{file} cannot be written: {detail}",
+  "roundtrip.not-whole": "{output} was not written, since something of the file could not be kept; the problems above say what.",
   "file.empty": "The file is empty.",
   "file.other-kind": "This is no NodeSet2 file: it is {what}.",
   "limit.depth": "Elements stand within each other deeper than {limit} levels, which is the limit.",

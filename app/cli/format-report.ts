@@ -1,0 +1,20 @@
+/** A report for people: one line a finding, in the form that editors and pipelines turn into links. */
+import type { CheckReport } from "../domain/checks/to-report";
+
+export function formatReport(report: CheckReport): string {
+  const { file, counts, findings, problems } = report;
+  const lines: string[] = [];
+  for (const { line, column, code, message } of problems) lines.push(`${file}:${line}:${column}: ${message} [${code}]`);
+  for (const finding of findings) {
+    const { line, column, severity, rule, message, path, facts, clause } = finding;
+    lines.push(`${file}:${line}:${column}: ${severity} ${rule}: ${message}${path === "" ? "" : ` (${path})`}`);
+    for (const fact of facts) lines.push(`    ${fact}`);
+    if (clause !== "") lines.push(`    ${clause}`);
+  }
+  lines.push(`${count(counts.error, "error")}, ${count(counts.warning, "warning")}, ${count(counts.hint, "hint")}`);
+  return `${lines.join("\n")}\n`;
+}
+
+function count(number: number, name: string): string {
+  return `${number} ${name}${number === 1 ? "" : "s"}`;
+}

@@ -1,0 +1,64 @@
+/** The command line as a value. */
+import { resolve } from "node:path";
+import { parseArgs } from "node:util";
+
+export type CheckCommand = {
+  readonly name: "check";
+  readonly file: string;
+  readonly folders: readonly string[];
+  readonly isJson: boolean;
+};
+export type RoundtripCommand = {
+  readonly name: "roundtrip";
+  readonly input: string;
+  readonly output: string;
+  readonly folders: readonly string[];
+};
+export type Command = { readonly name: "help" } | CheckCommand | RoundtripCommand;
+
+/** npm runs scripts in the project's folder; paths mean the folder that the user stands in. */
+export function resolvePath(path: string): string {
+  const { npm_lifecycle_event: script, INIT_CWD: startedIn } = process.env;
+  return script === "ferrule" && startedIn !== undefined ? resolve(startedIn, path) : resolve(path);
+}
+
+/** Wrong usage; its message says what is wrong. */
+export class UsageError extends Error {}
+
+export function parseCommandLine(args: readonly string[]): Command {
+  const { values, positionals } = parse(args);
+  const [name, ...rest] = positionals;
+  const folders = values.with ?? [];
+  if (values.help || name === "help") return { name: "help" };
+  if (name === "check") {
+    const [file] = requireCount(rest, 1, "check takes one FILE.");
+    return { name, file: file ?? "", folders, isJson: values.json ?? false };
+  }
+  if (name === "roundtrip") {
+    if (values.json) throw new UsageError("roundtrip knows no --json.");
+    const [input, output] = requireCount(rest, 2, "roundtrip takes two files, IN and OUT.");
+    return { name, input: input ?? "", output: output ?? "", folders };
+  }
+  throw new UsageError(name === undefined ? "Which command?" : `There is no command “${name}”.`);
+}
+
+function parse(args: readonly string[]) {
+  try {
+    return parseArgs({
+      args: [...args],
+      allowPositionals: true,
+      options: {
+        with: { type: "string", multiple: true },
+        json: { type: "boolean" },
+        help: { type: "boolean", short: "h" },
+      },
+    });
+  } catch (error) {
+    throw new UsageError(error instanceof Error ? error.message : String(error));
+  }
+}
+
+function requireCount(values: readonly string[], count: number, message: string): readonly string[] {
+  if (values.length !== count) throw new UsageError(message);
+  return values;
+}
