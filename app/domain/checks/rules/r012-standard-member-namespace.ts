@@ -81,13 +81,16 @@ function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunct
   const sources = types.flatMap((t) => (t === undefined ? [] : [t, ...listInterfaces(ctx, t)]));
   if (node.nodeClass === "Object") sources.push(...listInterfaces(ctx, node.key));
   const children = getChildren(ctx, node.key);
+  const told = new Set<string>();
   for (const source of sources) {
     for (const [name, member] of getMembers(ctx, source)) {
       if (children.has(name)) continue;
       const { browseName } = member.node;
       const stray = ctx.childEdges(node.key).find((e) => ctx.node(e.target)?.browseName.name === browseName.name);
       const child = stray && ctx.node(stray.target);
-      if (!child || !ctx.isOwn(child.key) || isReportedAsStandard(node, child, ctx)) continue;
+      if (!child || told.has(child.key) || !ctx.isOwn(child.key) || isReportedAsStandard(node, child, ctx)) continue;
+      if (sources.some((s) => s !== node.key && getMembers(ctx, s).has(formatQualifiedName(child.browseName)))) continue;
+      told.add(child.key);
       report({
         key: child.key,
         severity: "warning",
