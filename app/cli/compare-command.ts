@@ -21,7 +21,9 @@ export async function compare(command: CompareCommand): Promise<number> {
   const after = await loadSpace(command.after, folders.value);
   if (!after.ok) return refuse(command, command.after, after.problems);
   const comparison = compareModels(before.value, after.value);
-  process.stdout.write(command.isJson ? `${JSON.stringify(toJson(comparison), null, 2)}\n` : formatComparison(comparison));
+  process.stdout.write(
+    command.isJson ? `${JSON.stringify(toJson(comparison), null, 2)}\n` : formatComparison(comparison),
+  );
   return comparison.rating === undefined ? 0 : EXIT_CODES[comparison.rating];
 }
 
@@ -62,7 +64,9 @@ function refuse(command: CompareCommand, file: string, problems: readonly Proble
     column: found.at?.column ?? null,
   }));
   if (command.isJson) process.stdout.write(`${JSON.stringify({ problems: rows }, null, 2)}\n`);
-  else for (const row of rows) process.stderr.write(`${row.file}:${row.line ?? 1}:${row.column ?? 1}: ${row.message} [${row.code}]\n`);
+  else
+    for (const row of rows)
+      process.stderr.write(`${row.file}:${row.line ?? 1}:${row.column ?? 1}: ${row.message} [${row.code}]\n`);
   return 2;
 }
 

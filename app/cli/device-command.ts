@@ -28,7 +28,9 @@ export async function decode(command: DecodeCommand): Promise<number> {
   if (!read.ok) return refuse(command, read.problems);
   const fields = decodeHex(read.value, command);
   if (!fields.ok) return refuse(command, fields.problems);
-  process.stdout.write(command.isJson ? `${JSON.stringify({ fields: fields.value }, null, 2)}\n` : formatFields(fields.value));
+  process.stdout.write(
+    command.isJson ? `${JSON.stringify({ fields: fields.value }, null, 2)}\n` : formatFields(fields.value),
+  );
   return 0;
 }
 
@@ -91,7 +93,8 @@ function formatDevice(description: DeviceDescription): string {
   for (const data of description.processData) {
     const when = data.condition ? ` when ${data.condition.variableId} = ${data.condition.value}` : "";
     if (data.in) lines.push(`process data in ${data.in.id}, ${data.in.bitLength} bit${when}`, ...formatImage(data.in));
-    if (data.out) lines.push(`process data out ${data.out.id}, ${data.out.bitLength} bit${when}`, ...formatImage(data.out));
+    if (data.out)
+      lines.push(`process data out ${data.out.id}, ${data.out.bitLength} bit${when}`, ...formatImage(data.out));
   }
   return `${lines.join("\n")}\n`;
 }

@@ -1,14 +1,22 @@
-export const helpText = `ferrule – checks and rewrites OPC UA NodeSet2 files
+export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSet2 files, reads IO-Link device descriptions
 
   npm run -s ferrule -- check FILE [--with DIR]… [--json]
       Reads the file with the models it requires and runs the checker.
   npm run -s ferrule -- roundtrip IN OUT [--with DIR]…
       Reads IN and writes OUT with all nodes, references and attributes, in the order of IN.
+  npm run -s ferrule -- compare OLD NEW [--with DIR]… [--json]
+      What changed from OLD to NEW, by meaning: each change rated breaking, additive or neutral, with the clause.
+  npm run -s ferrule -- device FILE [--json]
+      What an IODD says: one XML file, or the ZIP that it came in.
+  npm run -s ferrule -- decode FILE HEX [--direction in|out] [--condition VALUE] [--json]
+      One frame of the device's process data. HEX: pairs in the order of transmission, spaces allowed.
   npm run -s ferrule -- help
 
   --with DIR   adds the NodeSets below DIR to the library for this call; may be given several times
   --json       prints the findings as one JSON document
 
 Exit status: 0 nothing of severity error · 1 at least one error ·
-2 unreadable file, missing required model, or wrong usage
+2 unreadable file, missing required model, or wrong usage.
+compare: 0 no change or neutral ones only · 1 additive · 3 breaking · 2 unreadable.
+decode: 2 also for a frame of the wrong length and where --condition must say which layout is meant.
 `;

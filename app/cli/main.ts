@@ -1,5 +1,7 @@
-/** The command line for pipelines: `check`, `roundtrip`, `help`. No database; exit codes 0, 1, 2. */
+/** The command line for pipelines. No database; the exit codes are told by `help`. */
 import { check } from "./check";
+import { compare } from "./compare-command";
+import { decode, device } from "./device-command";
 import { helpText } from "./help-text";
 import { parseCommandLine, UsageError } from "./parse-command-line";
 import { roundtrip } from "./roundtrip";
@@ -14,6 +16,12 @@ async function run(args: readonly string[]): Promise<number> {
       return check(command);
     case "roundtrip":
       return roundtrip(command);
+    case "compare":
+      return compare(command);
+    case "device":
+      return device(command);
+    case "decode":
+      return decode(command);
   }
 }
 

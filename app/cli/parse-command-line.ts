@@ -14,7 +14,24 @@ export type RoundtripCommand = {
   readonly output: string;
   readonly folders: readonly string[];
 };
-export type Command = { readonly name: "help" } | CheckCommand | RoundtripCommand;
+export type CompareCommand = {
+  readonly name: "compare";
+  readonly before: string;
+  readonly after: string;
+  readonly folders: readonly string[];
+  readonly isJson: boolean;
+};
+export type DeviceCommand = { readonly name: "device"; readonly file: string; readonly isJson: boolean };
+export type DecodeCommand = {
+  readonly name: "decode";
+  readonly file: string;
+  readonly hex: string;
+  readonly direction: "in" | "out";
+  readonly condition?: string;
+  readonly isJson: boolean;
+};
+export type Command =
+  { readonly name: "help" } | CheckCommand | RoundtripCommand | CompareCommand | DeviceCommand | DecodeCommand;
 
 /** npm runs scripts in the project's folder; paths mean the folder that the user stands in. */
 export function resolvePath(path: string): string {
@@ -39,6 +56,22 @@ export function parseCommandLine(args: readonly string[]): Command {
     const [input, output] = requireCount(rest, 2, "roundtrip takes two files, IN and OUT.");
     return { name, input: input ?? "", output: output ?? "", folders };
   }
+  if (name === "compare") {
+    const [before, after] = requireCount(rest, 2, "compare takes two files, OLD and NEW.");
+    return { name, before: before ?? "", after: after ?? "", folders, isJson: values.json ?? false };
+  }
+  if (name === "device") {
+    const [file] = requireCount(rest, 1, "device takes one FILE.");
+    return { name, file: file ?? "", isJson: values.json ?? false };
+  }
+  if (name === "decode") {
+    const [file, ...hex] = rest;
+    if (file === undefined || hex.length === 0) throw new UsageError("decode takes a FILE and the frame as HEX.");
+    const direction = values.direction ?? "in";
+    if (direction !== "in" && direction !== "out") throw new UsageError("--direction is in or out.");
+    const condition = values.condition === undefined ? {} : { condition: values.condition };
+    return { name, file, hex: hex.join(" "), direction, ...condition, isJson: values.json ?? false };
+  }
   throw new UsageError(name === undefined ? "Which command?" : `There is no command “${name}”.`);
 }
 
@@ -50,6 +83,8 @@ function parse(args: readonly string[]) {
       options: {
         with: { type: "string", multiple: true },
         json: { type: "boolean" },
+        direction: { type: "string" },
+        condition: { type: "string" },
         help: { type: "boolean", short: "h" },
       },
     });

@@ -1,4 +1,9 @@
 export const ioddProblemTexts: Readonly<Record<string, string>> = {
+  "package.damaged": "The ZIP file is damaged and cannot be unpacked.",
+  "package.entries": "The ZIP file has more than {limit} entries.",
+  "package.unpacked-size": "The ZIP file would unpack to more than {limit} bytes.",
+  "package.path": "The ZIP file holds “{name}”, which points outside its own folder.",
+  "package.no-description": "The ZIP file holds no device description (…-IODD1.1.xml).",
   "xml.too-large": "The file has {size} characters; the limit is {limit}.",
   "xml.doctype": "The file declares a document type. Such files are refused: entities could expand without end.",
   "xml.depth": "Elements lie deeper than {limit} levels.",
@@ -14,7 +19,6 @@ export const ioddProblemTexts: Readonly<Record<string, string>> = {
   "iodd.unresolved-datatype": "The datatype {id} is referred to but not defined.",
   "iodd.circular-datatype": "The datatype {id} refers to itself.",
   "iodd.nested-record": "A record item can hold a simple datatype only, not {kind}.",
-  "iodd.unresolved-variable": "The variable {id} is referred to but not defined.",
   "iodd.unknown-standard-variable": "{id} is not a standard variable.",
   "iodd.missing-text": "The text {id} is missing.",
   "iodd.duplicate-id": "The id {id} is given twice; the first one counts.",
