@@ -7,6 +7,7 @@ import { singleton } from "../utils/singleton.server";
 import { getLibrary } from "../library/library.server";
 import { seedDemo } from "./seed-demo.server";
 import { keepSetUpCode, needsSetUp } from "./set-up-organization.server";
+import { registerLiveTopics } from "./live-topics.server";
 import { registerModelTopics } from "./topic-providers.server";
 
 const SHUTDOWN_LIMIT_MS = 4000;
@@ -23,6 +24,7 @@ async function start(): Promise<StartReport> {
   onShutdown("database", closeDatabase);
   getLibrary().usePackFolder(join(getEnvironment().dataFolder, "packs"));
   registerModelTopics();
+  await registerLiveTopics();
   const { isDemo, dataFolder } = getEnvironment();
   if (isDemo) return { lines: await seedDemo() };
   if (!(await needsSetUp())) return { lines: [`Data folder: ${dataFolder}`] };
