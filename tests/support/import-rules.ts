@@ -16,6 +16,7 @@ export type LayerName =
   | "auth"
   | "services"
   | "presenters"
+  | "root"
   | "routes"
   | "cli"
   | "utils"
@@ -41,7 +42,7 @@ export const layerRules: readonly LayerRule[] = [
     name: "domain",
     files: /^app\/domain\//,
     mayImport: ["domain"],
-    packages: ["zod", "saxes", "fast-xml-parser", "mathjs"],
+    packages: ["zod", "saxes", "fast-xml-parser", "fflate", "mathjs"],
     node: false,
     advice:
       "The domain is pure: pass in what it needs as a value or a function, and let a service, component or process call it.",
@@ -152,9 +153,18 @@ export const layerRules: readonly LayerRule[] = [
     advice: "The entries only start, connect and stop: move the logic into a service.",
   },
   {
-    name: "routes",
-    files: /^app\/(routes\/|root\.tsx$)/,
+    name: "root",
+    files: /^app\/root\.tsx$/,
     mayImport: ["domain", "editor", "services", "presenters", "components", "ui", "auth", "permissions", "utils"],
+    node: false,
+    advice:
+      "A route parses, authorises, calls and answers: what two routes share belongs into a component, a presenter or a service.",
+  },
+  {
+    name: "routes",
+    files: /^app\/routes\//,
+    mayImport: ["domain", "editor", "services", "presenters", "components", "ui", "auth", "permissions", "utils"],
+    mayImportTypesOf: ["root"],
     node: false,
     advice:
       "A route parses, authorises, calls and answers: what two routes share belongs into a component, a presenter or a service.",

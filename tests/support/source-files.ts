@@ -1,5 +1,5 @@
 /** The project's own source, read once, with what the architecture test asks of it. */
-import { readdirSync, readFileSync, statSync } from "node:fs";
+import { existsSync, readdirSync, readFileSync } from "node:fs";
 import { dirname, join, posix } from "node:path";
 import { fileURLToPath } from "node:url";
 import ts from "typescript";
@@ -83,13 +83,11 @@ export function resolveImport(from: string, specifier: string): string | undefin
   if (bare.startsWith("~/")) base = posix.join("app", bare.slice(2));
   else if (bare.startsWith(".")) base = posix.join(dirname(from), bare);
   else return undefined;
-  return ["", ".ts", ".tsx", ".mjs", "/index.ts"]
-    .map((end) => base + end)
-    .find((path) => CODE.test(path) && isFile(path));
+  return ["", ".ts", ".tsx", ".mjs"].map((end) => base + end).find((path) => CODE.test(path) && isFile(path));
 }
 
 function isFile(path: string): boolean {
-  return statSync(join(projectRoot, path), { throwIfNoEntry: false })?.isFile() ?? false;
+  return existsSync(join(projectRoot, path));
 }
 
 /** `drizzle-orm/libsql` → `drizzle-orm`, `@xyflow/react` → itself; undefined for a file of the project. */

@@ -108,7 +108,7 @@ function findWrongImport(file: SourceFile, rule: LayerRule, found: Import): stri
   const target = resolveImport(file.path, found.specifier);
   const layer = target && findLayer(target);
   if (!target || !layer) return undefined;
-  if (isServerOnly(target) && !rule.node && rule.name !== "routes" && !found.isTypeOnly) {
+  if (isServerOnly(target) && !rule.node && !["root", "routes"].includes(rule.name) && !found.isTypeOnly) {
     return `${at} brings the server's ${target} into the browser. ${rule.advice}`;
   }
   if (rule.mayImport.includes(layer.name)) return undefined;
@@ -155,7 +155,7 @@ describe("the tree", () => {
   it("has no other entries at its top than the listed ones", () => {
     const ignored = readFileSync(join(projectRoot, ".gitignore"), "utf8")
       .split("\n")
-      .map((line) => line.replace(/\/$/, ""));
+      .map((line) => line.replace(/^\/|\/$/g, ""));
     const extra = readdirSync(projectRoot).filter(
       (name) => name !== ".git" && !ignored.includes(name) && !name.endsWith(".log") && !topLevelEntries.includes(name),
     );
