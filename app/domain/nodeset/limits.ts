@@ -15,7 +15,7 @@ export type ReadLimits = {
 };
 
 export const READ_LIMITS: ReadLimits = {
-  maxBytes: 50 * 1024 * 1024,
+  maxBytes: 50_000_000,
   maxDepth: 200,
   maxAttributes: 256,
   maxNodes: 500_000,
