@@ -26,8 +26,20 @@ export default [
   ]),
   ...prefix("api", [
     route("auth/*", "routes/api/auth.ts"),
+    route("v1/openapi.json", "routes/api/openapi.ts"),
+    route("v1/models", "routes/api/models.ts"),
+    route("v1/models/:modelId", "routes/api/model.ts"),
+    route("v1/models/:modelId/nodeset", "routes/api/model-nodeset.ts"),
+    route("v1/models/:modelId/findings", "routes/api/model-findings.ts"),
+    route("*", "routes/api/not-found.ts"),
   ]),
   layout("routes/frame.tsx", [
+    index("routes/park.tsx"),
+    route("models", "routes/models.tsx"),
+    route("models/new", "routes/models.new.tsx"),
+    route("models/import", "routes/models.import.tsx"),
+    route("library", "routes/library.tsx"),
+    route("team", "routes/team.tsx"),
     route("*", "routes/not-found.tsx"),
   ]),
 ] satisfies RouteConfig;

@@ -1,9 +1,9 @@
 const signals = [
   { y: 70, raw: "0x017C", tag: "port 1", name: "CreelDistance", value: "38.0 mm" },
   { y: 134, raw: "0x2C87", tag: "port 2", name: "CarriagePosition", value: "113.99 mm" },
-  { y: 198, raw: "10 .. 11", tag: "register", name: "SpindleSpeed", value: "142.6 r/min" },
+  { y: 198, raw: "10 … 11", tag: "register", name: "SpindleSpeed", value: "142.6 r/min" },
   { y: 262, raw: "0x0282", tag: "port 3", name: "GearboxTemperature", value: "64.2 °C" },
-  { y: 326, raw: "2 .. 3", tag: "meter", name: "ActiveEnergy", value: "4 812.07 kW·h" },
+  { y: 326, raw: "2 … 3", tag: "meter", name: "ActiveEnergy", value: "4 812.07 kW·h" },
 ] as const;
 
 const frame = { stroke: "var(--rule)", fill: "none" } as const;

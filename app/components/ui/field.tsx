@@ -5,7 +5,7 @@ import { Icon } from "./icon";
 
 const frame =
   "w-full min-w-0 rounded-edge border border-edge bg-leaf text-ink focus:outline-2 focus:-outline-offset-1 focus:outline-copper focus:border-copper " +
-  "disabled:border-dashed disabled:border-rule disabled:bg-transparent disabled:text-ink-3 read-only:bg-transparent read-only:border-rule aria-invalid:border-error";
+  "disabled:border-dashed disabled:border-rule disabled:bg-transparent disabled:text-ink-3 [&[readonly]]:bg-transparent [&[readonly]]:border-rule aria-invalid:border-error";
 
 const heights = { small: "h-6 px-2 text-small", medium: "h-7 px-2 text-small", large: "h-9 px-3 text-body" } as const;
 export type ControlSize = keyof typeof heights;

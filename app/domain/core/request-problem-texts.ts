@@ -12,6 +12,7 @@ export const requestProblemTexts: Readonly<Record<string, string>> = {
   "request.not-found": "There is nothing here, or it is not yours to see.",
   "request.method": "{method} is not possible here.",
   "request.content-type": "Send {expected}, not “{given}”.",
+  "request.internal": "Something went wrong on our side. The log has it under {id}.",
   "request.body-json": "The body is not JSON.",
   "request.body-size": "The body is larger than {limit} bytes.",
   "request.body-empty": "The body is empty.",

@@ -1,0 +1,29 @@
+import type { Route } from "./+types/park";
+import { assertMay, mayDo, requireUser } from "~/auth/caller.server";
+import { ParkView } from "~/components/park/park-view";
+import { chooseOrganization } from "~/presenters/chosen-organization.server";
+import { listTestServers } from "~/presenters/list-test-servers.server";
+import { readPark } from "~/services/read-park.server";
+import { hidesSteps } from "~/utils/hidden-steps";
+
+export const meta: Route.MetaFunction = () => [{ title: "Park · Ferrule" }];
+
+export async function loader({ request }: Route.LoaderArgs) {
+  const caller = await requireUser(request);
+  const { organizationId, organizationName, roles } = chooseOrganization(request, caller);
+  assertMay(caller, "read", organizationId);
+  return {
+    ...(await readPark(organizationId)),
+    testServers: listTestServers(organizationId),
+    organizationName,
+    userName: caller.name,
+    roles,
+    mayEdit: mayDo(caller, "model.edit", organizationId),
+    showsSteps: !hidesSteps(request),
+    now: new Date().toISOString(),
+  };
+}
+
+export default function Park({ loaderData }: Route.ComponentProps) {
+  return <ParkView park={loaderData} />;
+}
