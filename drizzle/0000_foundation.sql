@@ -230,7 +230,8 @@ CREATE TABLE `uploaded_node_set` (
 	FOREIGN KEY (`pack_hash`) REFERENCES `blob`(`hash`) ON UPDATE no action ON DELETE no action
 );
 --> statement-breakpoint
-CREATE UNIQUE INDEX `uploaded_node_set_version` ON `uploaded_node_set` (`organization_id`,`model_uri`,`coalesce("version"`,` '')`,`coalesce("publication_date"`,` '')`);--> statement-breakpoint
+CREATE UNIQUE INDEX `uploaded_node_set_file` ON `uploaded_node_set` (`organization_id`,`file_hash`);--> statement-breakpoint
+CREATE INDEX `uploaded_node_set_model` ON `uploaded_node_set` (`organization_id`,`model_uri`);--> statement-breakpoint
 CREATE TABLE `waiver` (
 	`id` text PRIMARY KEY NOT NULL,
 	`model_id` text NOT NULL,

@@ -1,6 +1,6 @@
 /** A NodeSet2 file becomes a model of the team (its own namespace editable), or part of the library (read only). */
 import type { Caller } from "../auth/caller.server";
-import { writeBatch } from "../db/client.server";
+import { writeBatch, writeInTurn } from "../db/client.server";
 import { addAuditStatement } from "../db/repositories/audit.server";
 import { addBlobStatement, toBlob } from "../db/repositories/blobs.server";
 import type { ModelRow } from "../db/repositories/models.server";
@@ -40,7 +40,7 @@ export async function importModel(
 export async function addToLibrary(author: Caller, organizationId: string, upload: Upload): Promise<Result<UploadRow>> {
   const { content } = upload;
   const { missing } = await resolveRequiredModels(organizationId, content.header);
-  const refusals = [...listRefusals(upload), ...missing, ...(await listLibraryConflicts(organizationId, upload))];
+  const refusals = [...listRefusals(upload), ...missing];
   if (refusals.length > 0) return fail(...refusals);
   const now = new Date();
   const file = await toBlob(upload.bytes);
@@ -57,8 +57,10 @@ export async function addToLibrary(author: Caller, organizationId: string, uploa
     uploadedBy: author.name,
     at: now,
   };
-  try {
-    await writeBatch([
+  return writeInTurn(async (db) => {
+    const conflicts = await listLibraryConflicts(organizationId, upload);
+    if (conflicts.length > 0) return fail(...conflicts);
+    await db.batch([
       addBlobStatement(file, now),
       addBlobStatement(pack, now),
       addUploadStatement(row),
@@ -71,12 +73,8 @@ export async function addToLibrary(author: Caller, organizationId: string, uploa
         details: { version: row.version, file: row.fileName },
       }),
     ]);
-  } catch (error) {
-    const conflicts = await listLibraryConflicts(organizationId, upload);
-    if (conflicts.length > 0) return fail(...conflicts);
-    throw error;
-  }
-  return ok(row, upload.problems);
+    return ok(row, upload.problems);
+  });
 }
 
 /** Takes an uploaded NodeSet out of the library. Problems: `request.not-found`, `library.entry-used`. */

@@ -1,5 +1,4 @@
 /** Models and everything that hangs on their working state. */
-import { sql } from "drizzle-orm";
 import { blob, index, integer, primaryKey, sqliteTable, text, uniqueIndex } from "drizzle-orm/sqlite-core";
 import type { Operation } from "../../domain/editing/operation";
 import { organization } from "./auth";
@@ -183,12 +182,8 @@ export const uploadedNodeSet = sqliteTable(
     at: timestamp("at").notNull(),
   },
   (table) => [
-    uniqueIndex("uploaded_node_set_version").on(
-      table.organizationId,
-      table.modelUri,
-      sql`coalesce(${table.version}, '')`,
-      sql`coalesce(${table.publicationDate}, '')`,
-    ),
+    uniqueIndex("uploaded_node_set_file").on(table.organizationId, table.fileHash),
+    index("uploaded_node_set_model").on(table.organizationId, table.modelUri),
   ],
 );
 

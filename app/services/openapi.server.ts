@@ -1,0 +1,161 @@
+/** The OpenAPI 3.1 document of /api/v1, made of the schemas that the routes check and answer with. */
+import { z } from "zod";
+import { findingsSchema, modelSchema, problemDocumentSchema } from "../utils/api-schemas";
+import { testServerAnswerSchema } from "./describe-test-server.server";
+import { testServerIntentSchema } from "./start-test-server.server";
+
+const schemas = {
+  Model: modelSchema,
+  Findings: findingsSchema,
+  TestServer: testServerAnswerSchema,
+  Problem: problemDocumentSchema,
+} as const;
+type SchemaName = keyof typeof schemas;
+
+type JsonObject = { readonly [name: string]: unknown };
+
+function toJsonSchema(schema: z.ZodType, io: "input" | "output" = "output"): JsonObject {
+  const { $schema: _, ...json } = z.toJSONSchema(schema, { io, reused: "inline" });
+  return inlineDefinitions(json);
+}
+
+/** zod puts schemas that carry an id under $defs; in this document each stands in components or inline. */
+function inlineDefinitions(json: JsonObject): JsonObject {
+  const { $defs, ...rest } = json as { $defs?: Record<string, JsonObject> } & JsonObject;
+  if (!$defs) return rest;
+  const resolve = (value: unknown): unknown => {
+    if (Array.isArray(value)) return value.map(resolve);
+    if (typeof value !== "object" || value === null) return value;
+    const { $ref } = value as { $ref?: string };
+    const target = $ref === undefined ? undefined : $defs[$ref.slice("#/$defs/".length)];
+    if (target) return resolve(target);
+    return Object.fromEntries(Object.entries(value).map(([key, inner]) => [key, resolve(inner)]));
+  };
+  return resolve(rest) as JsonObject;
+}
+
+const refTo = (name: SchemaName) => ({ $ref: `#/components/schemas/${name}` });
+const json = (schema: JsonObject, description: string) => ({ description, content: { "application/json": { schema } } });
+
+const problemMeanings: Readonly<Record<number, string>> = {
+  400: "The request cannot be understood",
+  401: "Nobody is signed in, or the token does not hold",
+  403: "The roles or the token's scopes do not allow it, or the origin is foreign",
+  404: "It does not exist, or belongs to another organisation",
+  409: "In conflict with the present state",
+  413: "Larger than 50 MB",
+  415: "Wrong content type",
+  422: "Cannot be processed; `problems` tell code, message and place",
+  503: "Not available now",
+};
+
+function problems(...codes: readonly number[]) {
+  const content = { "application/problem+json": { schema: refTo("Problem") } };
+  return Object.fromEntries(codes.map((code) => [String(code), { description: problemMeanings[code] ?? "Problem", content }]));
+}
+
+const organization = {
+  name: "organization",
+  in: "query",
+  required: false,
+  schema: { type: "string" },
+  description: "Needed only by a session of somebody who belongs to several organisations.",
+};
+const pathId = (name: string) => ({ name, in: "path", required: true, schema: { type: "string" } });
+const nodeSetBody = { "application/xml": { schema: { type: "string", contentMediaType: "application/xml" } } };
+
+const paths = {
+  "/models": {
+    get: {
+      operationId: "listModels",
+      summary: "The models of the organisation",
+      parameters: [organization],
+      responses: { 200: json({ type: "array", items: refTo("Model") }, "The models by name"), ...problems(400, 401, 403, 404) },
+    },
+    post: {
+      operationId: "importModel",
+      summary: "Make a model of a NodeSet2 file",
+      parameters: [
+        { name: "name", in: "query", required: false, schema: { type: "string", maxLength: 100 }, description: "Default: from the namespace." },
+        { name: "kind", in: "query", required: false, schema: { type: "string", enum: ["types", "machines"] }, description: "Default: by what the file holds." },
+        organization,
+      ],
+      requestBody: { required: true, content: nodeSetBody },
+      responses: { 201: json(refTo("Model"), "The model"), ...problems(400, 401, 403, 404, 409, 413, 415, 422) },
+    },
+  },
+  "/models/{modelId}": {
+    parameters: [pathId("modelId")],
+    get: { operationId: "getModel", summary: "One model", responses: { 200: json(refTo("Model"), "The model"), ...problems(401, 403, 404) } },
+    delete: {
+      operationId: "deleteModel",
+      summary: "Delete a model with its history",
+      responses: { 204: { description: "Deleted" }, ...problems(401, 403, 404, 409) },
+    },
+  },
+  "/models/{modelId}/nodeset": {
+    parameters: [pathId("modelId")],
+    get: {
+      operationId: "exportModel",
+      summary: "The NodeSet2 file of the working state",
+      responses: { 200: { description: "The file", content: nodeSetBody }, ...problems(401, 403, 404) },
+    },
+  },
+  "/models/{modelId}/findings": {
+    parameters: [pathId("modelId")],
+    get: {
+      operationId: "listFindings",
+      summary: "What the checker says of the working state",
+      responses: { 200: json(refTo("Findings"), "The report"), ...problems(401, 403, 404) },
+    },
+  },
+  "/models/{modelId}/test-servers": {
+    parameters: [pathId("modelId")],
+    get: {
+      operationId: "listTestServers",
+      summary: "The model's test servers",
+      responses: { 200: json({ type: "array", items: refTo("TestServer") }, "The test servers"), ...problems(401, 403, 404) },
+    },
+    post: {
+      operationId: "startTestServer",
+      summary: "Start a test server on the working state",
+      description: "Answers at once in state `starting`. A simulation, not for control.",
+      requestBody: { required: false, content: { "application/json": { schema: toJsonSchema(testServerIntentSchema, "input") } } },
+      responses: { 201: json(refTo("TestServer"), "The test server, starting"), ...problems(400, 401, 403, 404, 415, 422, 503) },
+    },
+  },
+  "/test-servers/{testServerId}": {
+    parameters: [pathId("testServerId")],
+    get: {
+      operationId: "getTestServer",
+      summary: "State of a test server; ask until it is running or failed",
+      responses: { 200: json(refTo("TestServer"), "The test server"), ...problems(401, 403, 404) },
+    },
+    delete: {
+      operationId: "stopTestServer",
+      summary: "Stop a test server; its port is free afterwards",
+      responses: { 204: { description: "Stopped" }, ...problems(401, 403, 404) },
+    },
+  },
+} as const;
+
+export function makeOpenApiDocument(): JsonObject {
+  return {
+    openapi: "3.1.0",
+    info: {
+      title: "Ferrule API",
+      version: "1.0.0",
+      description: "Models of machines for OPC UA: import, export, findings, test servers. Errors are problem documents (RFC 9457).",
+    },
+    servers: [{ url: "/api/v1" }],
+    security: [{ session: [] }, { bearer: [] }],
+    paths,
+    components: {
+      schemas: Object.fromEntries(Object.entries(schemas).map(([name, schema]) => [name, toJsonSchema(schema)])),
+      securitySchemes: {
+        session: { type: "apiKey", in: "cookie", name: "ferrule.session_token", description: "Sign in by POST /api/auth/sign-in/email." },
+        bearer: { type: "http", scheme: "bearer", description: "A token of the Team page." },
+      },
+    },
+  };
+}

@@ -1,0 +1,142 @@
+import { afterAll, beforeAll, expect, test } from "vitest";
+import type { Operation } from "~/domain/editing/operation";
+import { gunzipSync } from "node:zlib";
+import { pumpUri, writePumpNodeSet } from "../support/pump-nodeset";
+import { startTestApp, type TestApp } from "../support/test-app";
+import { addOtherOrganization, setUpFirst } from "../support/test-people";
+
+let app: TestApp;
+let cookie: string;
+let organizationId: string;
+let modelId: string;
+
+beforeAll(async () => {
+  app = await startTestApp();
+  ({ cookie, organizationId } = await setUpFirst(app));
+  const answer = await app.call("POST", "/api/v1/models?name=Pump", {
+    cookie,
+    body: writePumpNodeSet(),
+    headers: { "content-type": "application/xml" },
+  });
+  expect(answer.status).toBe(201);
+  modelId = ((await answer.json()) as { id: string }).id;
+});
+
+afterAll(() => app.stop());
+
+const speed = `nsu=${pumpUri};i=1002`;
+
+function rename(text: string): Operation {
+  return { kind: "setAttribute", key: speed as never, attribute: "displayName", value: [{ text }] };
+}
+
+async function post(body: unknown, as = cookie): Promise<{ status: number; json: Record<string, never> & Answer }> {
+  const answer = await app.call("POST", `/models/${modelId}/transactions`, { cookie: as, json: body });
+  return { status: answer.status, json: (await answer.json()) as never };
+}
+
+type Answer = {
+  head: number;
+  accepted: { clientSeq: number; seq: number; at: string }[];
+  between: { seq: number; label: string; operations: unknown[]; inverse: unknown[] }[];
+  problems: { code: string }[];
+};
+
+test("accepts a transaction, answers a resend as the first time, and keeps it over a restart of the cache", async () => {
+  const body = { clientId: "w1", base: 0, transactions: [{ clientSeq: 1, label: "rename", operations: [rename("Drehzahl")] }] };
+  const first = await post(body);
+  expect(first.status).toBe(200);
+  expect(first.json.head).toBe(1);
+  expect(first.json.accepted[0]).toMatchObject({ clientSeq: 1, seq: 1 });
+  const again = await post(body);
+  expect(again.status).toBe(200);
+  expect(again.json.accepted).toEqual(first.json.accepted);
+
+  const { forgetWorkingModel } = await import("~/services/working-model.server");
+  forgetWorkingModel(modelId);
+  const pack = await app.call("GET", `/models/${modelId}/pack`, { cookie, headers: { "accept-encoding": "gzip" } });
+  expect(pack.headers.get("x-ferrule-seq")).toBe("1");
+  const text = gunzipSync(new Uint8Array(await pack.arrayBuffer())).toString("utf8");
+  expect(text).toContain("Drehzahl");
+});
+
+test("answers 409 with what came between when another window was quicker", async () => {
+  const stale = await post({ clientId: "w2", base: 0, transactions: [{ clientSeq: 1, label: "rename", operations: [rename("Vitesse")] }] });
+  expect(stale.status).toBe(409);
+  expect(stale.json.head).toBe(1);
+  expect(stale.json.between).toHaveLength(1);
+  expect(stale.json.between[0]).toMatchObject({ seq: 1, label: "rename" });
+  expect(stale.json.between[0]?.inverse[0]).toMatchObject({ kind: "setAttribute", attribute: "displayName" });
+  const rebased = await post({ clientId: "w2", base: 1, transactions: [{ clientSeq: 1, label: "rename", operations: [rename("Vitesse")] }] });
+  expect(rebased.status).toBe(200);
+  expect(rebased.json.head).toBe(2);
+});
+
+test("of two windows that send at the same time exactly one is accepted", async () => {
+  const send = (clientId: string) =>
+    post({ clientId, base: 2, transactions: [{ clientSeq: 7, label: "rename", operations: [rename(clientId)] }] });
+  const answers = await Promise.all([send("w3"), send("w4"), send("w5")]);
+  expect(answers.map((a) => a.status).sort()).toEqual([200, 409, 409]);
+});
+
+test("refuses the whole when one operation does not apply, and stores nothing of it", async () => {
+  const before = await app.call("GET", `/models/${modelId}/transactions?since=0`, { cookie });
+  const { head } = (await before.json()) as Answer;
+  const removal: Operation = { kind: "removeNode", key: `nsu=${pumpUri};i=9999` as never };
+  const refused = await post({
+    clientId: "w1",
+    base: head,
+    transactions: [{ clientSeq: 20, label: "mixed", operations: [rename("Never"), removal] }],
+  });
+  expect(refused.status).toBe(422);
+  expect(refused.json.problems[0]?.code).toBe("operation.node-missing");
+  const after = (await (await app.call("GET", `/models/${modelId}/transactions?since=0`, { cookie })).json()) as Answer;
+  expect(after.head).toBe(head);
+});
+
+test("refuses a body that is no operation, with the field named", async () => {
+  const bad = await post({ clientId: "w1", base: 0, transactions: [{ clientSeq: 1, label: "x", operations: [{ kind: "explode" }] }] });
+  expect(bad.status).toBe(422);
+  expect(bad.json.problems[0]?.code).toBe("request.field");
+});
+
+test("leases blocks that never overlap, also after the model was deleted and imported again", async () => {
+  const lease = async (id: string, clientId: string) =>
+    (await (await app.call("POST", `/models/${id}/lease`, { cookie, json: { clientId } })).json()) as { from: number; to: number };
+  const blocks = await Promise.all(["a", "b", "c"].map((client) => lease(modelId, client)));
+  const sorted = [...blocks].sort((a, b) => a.from - b.from);
+  expect(sorted[0]?.from).toBeGreaterThan(1003);
+  for (let i = 1; i < sorted.length; i++) expect(sorted[i]?.from).toBeGreaterThan(sorted[i - 1]?.to ?? 0);
+  const highest = sorted.at(-1)?.to ?? 0;
+
+  const { findModel } = await import("~/db/repositories/models.server");
+  const { deleteModel } = await import("~/services/update-model.server");
+  const model = await findModel(modelId);
+  if (!model) throw new Error("The model is gone");
+  const author = { userId: "test", name: "Test", email: "t@harbour.example", memberships: [] };
+  expect((await deleteModel(author, model)).ok).toBe(true);
+  const again = await app.call("POST", "/api/v1/models?name=Pump", { cookie, body: writePumpNodeSet(), headers: { "content-type": "application/xml" } });
+  modelId = ((await again.json()) as { id: string }).id;
+  expect((await lease(modelId, "d")).from).toBeGreaterThan(highest);
+});
+
+test("a sheet keeps its layout with unknown parts, and an old version is refused", async () => {
+  const [sheet] = (await (await app.call("GET", `/models/${modelId}/sheets`, { cookie })).json()) as { id: string }[];
+  const path = `/models/${modelId}/sheets/${sheet?.id}`;
+  const layout = { positions: { [speed]: { x: 12, y: 40 } }, captions: [{ text: "Drive" }] };
+  const saved = await app.call("PUT", path, { cookie, json: layout, headers: { "if-match": '"1"' } });
+  expect(saved.status).toBe(200);
+  expect(await (await app.call("GET", path, { cookie })).json()).toEqual(layout);
+  expect((await app.call("PUT", path, { cookie, json: layout, headers: { "if-match": '"1"' } })).status).toBe(409);
+});
+
+test("another organisation cannot tell the model from one that does not exist", async () => {
+  const other = await addOtherOrganization(app);
+  for (const path of ["pack", "transactions", "layers", "sheets", "nodeset"]) {
+    const foreign = await app.call("GET", `/models/${modelId}/${path}`, { cookie: other.cookie });
+    const absent = await app.call("GET", `/models/nosuchmodel0000000000/${path}`, { cookie: other.cookie });
+    expect(foreign.status).toBe(404);
+    expect(await foreign.text()).toBe(await absent.text());
+  }
+  expect(organizationId).not.toBe(other.organizationId);
+});
