@@ -22,7 +22,8 @@ export type CallOptions = {
   readonly signal?: AbortSignal;
 };
 
-type Handler = (args: { request: Request; params: Record<string, string | undefined>; context: unknown }) => unknown;
+type Params = Readonly<Record<string, string | undefined>>;
+type Handler = (args: { request: Request; params: Params; context: unknown }) => unknown;
 type RouteModule = { readonly loader?: Handler; readonly action?: Handler };
 
 export type ListedRoute = { readonly path: string; readonly file: string };
@@ -35,6 +36,8 @@ export type TestApp = {
   /** Signs in and answers the cookie header. */
   signIn(email: string, password: string): Promise<string>;
   load(file: string): Promise<RouteModule>;
+  /** Asks one route module, whatever else lies on its path; undefined when it has no handler for the method. */
+  ask(file: string, method: string, path: string, options?: CallOptions): Promise<Response | undefined>;
   stop(): Promise<void>;
 };
 
@@ -53,6 +56,11 @@ export async function startTestApp(env: Readonly<Record<string, string>> = {}): 
     routes: listRoutes(table),
     call,
     load: loadModule,
+    ask: async (file, method, path, options = {}) => {
+      const handler = pickHandler(await loadModule(file), method);
+      const params = matchRoutes(tree, path)?.at(-1)?.params ?? {};
+      return handler && runHandler(handler, method, new URL(path, ORIGIN), options, params);
+    },
     signIn: async (email, password) => {
       const answer = await call("POST", "/api/auth/sign-in/email", { json: { email, password } });
       if (answer.status !== 200) throw new Error(`Sign-in answered ${answer.status}: ${await answer.text()}`);
@@ -95,16 +103,20 @@ async function callRoute(tree: RouteObject[], method: string, path: string, opti
   const url = new URL(path, ORIGIN);
   const match = matchRoutes(tree, url.pathname)?.at(-1);
   if (!match?.route.id) throw new Error(`No route for ${path}`);
-  const module = await loadModule(match.route.id);
-  const handler = method === "GET" || method === "HEAD" ? module.loader : module.action;
-  if (!handler) return new Response(null, { status: 405 });
+  const handler = pickHandler(await loadModule(match.route.id), method);
+  return handler ? runHandler(handler, method, url, options, match.params) : new Response(null, { status: 405 });
+}
+
+function pickHandler(module: RouteModule, method: string): Handler | undefined {
+  return method === "GET" || method === "HEAD" ? module.loader : module.action;
+}
+
+async function runHandler(handler: Handler, method: string, url: URL, options: CallOptions, params: Params): Promise<Response> {
   try {
-    const answer = await handler({ request: makeRequest(method, url, options), params: match.params, context: {} });
+    const answer = await handler({ request: makeRequest(method, url, options), params, context: {} });
     if (answer instanceof Response) return answer;
     const wrapped = answer as { type?: string; data?: unknown; init?: ResponseInit } | null;
-    return wrapped?.type === "DataWithResponseInit"
-      ? Response.json(wrapped.data, wrapped.init)
-      : Response.json(answer ?? null);
+    return wrapped?.type === "DataWithResponseInit" ? Response.json(wrapped.data, wrapped.init) : Response.json(answer ?? null);
   } catch (thrown) {
     if (thrown instanceof Response) return thrown;
     throw thrown;
