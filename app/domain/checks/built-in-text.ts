@@ -1,5 +1,5 @@
 /** Whether the text of a value's element can be read as its built-in type (OPC 10000-6 §5.3.1). */
-import type { XmlElement } from "../core/xml-tree";
+import type { ValueElement } from "./value-element";
 
 const INTEGER_RANGES: Readonly<Record<string, readonly [low: bigint, high: bigint]>> = {
   SByte: [-128n, 127n],
@@ -20,7 +20,7 @@ const GUID = /^[0-9a-f]{8}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{12}$/i;
 const BASE64 = /^[A-Za-z0-9+/\s]*={0,2}\s*$/;
 
 /** True also for elements whose content is not plain text, which other rules look at. */
-export function isBuiltInText(element: XmlElement): boolean {
+export function isBuiltInText(element: ValueElement): boolean {
   const text = element.text.trim();
   const range = INTEGER_RANGES[element.name];
   if (range) {

@@ -24,19 +24,62 @@ const HIERARCHICAL: EdgeGroup = 1;
 const OTHER: EdgeGroup = 2;
 
 type Direction = "outgoing" | "incoming";
-type EdgeSlot = Slot & { readonly edges: readonly Edge[] };
-type NodeSlot = Slot & { readonly node: Node | undefined };
-type View = { node: NodeSlot | undefined; readonly outgoing: (EdgeSlot | undefined)[]; readonly incoming: (EdgeSlot | undefined)[] };
+class NodeSlot implements Slot {
+  readers: Computation[] = [];
+  lastReader: Computation | undefined = undefined;
+  readonly node: Node | undefined;
+
+  constructor(node: Node | undefined) {
+    this.node = node;
+  }
+}
+
+class EdgeSlot implements Slot {
+  readers: Computation[] = [];
+  lastReader: Computation | undefined = undefined;
+  readonly edges: readonly Edge[];
+
+  constructor(edges: readonly Edge[]) {
+    this.edges = edges;
+  }
+}
+
+class Answer implements Slot {
+  readers: Computation[] = [];
+  lastReader: Computation | undefined = undefined;
+  value: unknown = undefined;
+}
+
+/** All slots of one node. */
+class View {
+  node: NodeSlot | undefined = undefined;
+  readonly outgoing: [EdgeSlot | undefined, EdgeSlot | undefined, EdgeSlot | undefined] = [
+    undefined,
+    undefined,
+    undefined,
+  ];
+  readonly incoming: [EdgeSlot | undefined, EdgeSlot | undefined, EdgeSlot | undefined] = [
+    undefined,
+    undefined,
+    undefined,
+  ];
+  readonly answers = new Map<object, Answer>();
+}
+
+const NO_EDGES: readonly Edge[] = [];
+
+/** Up to this many edges all groups are sorted out in one go; of hubs (PropertyType, Mandatory) only what is asked for. */
+const HUB = 64;
 
 /** A lookup worth remembering. `compute` walks in loops and never asks itself for another key, so that cycles end. */
 export type Lookup<T> = { readonly compute: (ctx: CheckContext, key: NodeKey) => T };
 
-type Answer = Slot & { value: unknown };
-
 export class CheckContext {
   #space: AddressSpace;
   readonly #views = new Map<NodeKey, View>();
-  readonly #answers = new Map<object, Map<NodeKey, Answer>>();
+  /** Checks ask for the same node many times in a row. */
+  #lastKey: NodeKey | undefined;
+  #lastView = new View();
   readonly #ownTags = new Map<Tag, Set<NodeKey>>();
   readonly #tagSlots = new Map<Tag, Slot>();
   readonly #headerSlot = newSlot();
@@ -45,8 +88,12 @@ export class CheckContext {
   readonly #requiredUris: ReadonlySet<string>;
   #reader: Computation | undefined;
 
-  constructor(space: AddressSpace) {
+  readonly #isTracked: boolean;
+
+  /** Without tracking reads are not noted, which a single full run does not need; `update` then must not be called. */
+  constructor(space: AddressSpace, isTracked = true) {
     this.#space = space;
+    this.#isTracked = isTracked;
     this.#hierarchical = getReferenceTypes(space, StandardReferenceType.HierarchicalReferences);
     this.#required = space.layers.slice(0, -1);
     this.#requiredUris = new Set(this.#required.flatMap((l) => l.header.models.map((m) => m.modelUri)));
@@ -55,7 +102,7 @@ export class CheckContext {
 
   node(key: NodeKey): Node | undefined {
     const view = this.#view(key);
-    const slot = (view.node ??= Object.assign(newSlot(), { node: this.#space.getNode(key) }));
+    const slot = (view.node ??= new NodeSlot(this.#space.getNode(key)));
     noteRead(slot, this.#reader);
     return slot.node;
   }
@@ -130,7 +177,10 @@ export class CheckContext {
   /** Keys of all nodes with the NodeId, those of required models first. */
   listWithNodeId(id: NodeId): NodeKey[] {
     const text = formatNodeId(id);
-    return [...this.#required.flatMap((layer) => layer.keysByNodeId.get(text) ?? []), ...this.#listOwnTagged(tagOf.nodeId(id))];
+    return [
+      ...this.#required.flatMap((layer) => layer.keysByNodeId.get(text) ?? []),
+      ...this.#listOwnTagged(tagOf.nodeId(id)),
+    ];
   }
 
   #listOwnTagged(tag: Tag): NodeKey[] {
@@ -147,20 +197,19 @@ export class CheckContext {
   }
 
   lookUp<T>(lookup: Lookup<T>, key: NodeKey): T {
-    let answers = this.#answers.get(lookup);
-    if (!answers) this.#answers.set(lookup, (answers = new Map<NodeKey, Answer>()));
-    let answer = answers.get(key);
+    const { answers } = this.#view(key);
+    let answer = answers.get(lookup);
     if (!answer) {
       answer = this.#answer(lookup, key, answers);
-      answers.set(key, answer);
+      answers.set(lookup, answer);
     }
     noteRead(answer, this.#reader);
     return answer.value as T;
   }
 
-  #answer(lookup: Lookup<unknown>, key: NodeKey, answers: Map<NodeKey, Answer>): Answer {
-    const answer: Answer = Object.assign(newSlot(), { value: undefined as unknown });
-    const computation: Computation = { answer, forget: () => void answers.delete(key), isEnded: false };
+  #answer(lookup: Lookup<unknown>, key: NodeKey, answers: Map<object, Answer>): Answer {
+    const answer = new Answer();
+    const computation: Computation = { answer, forget: () => void answers.delete(lookup), isEnded: false };
     answer.value = this.#readAs(computation, () => lookup.compute(this, key));
     return answer;
   }
@@ -248,24 +297,34 @@ export class CheckContext {
   }
 
   #view(key: NodeKey): View {
+    if (key === this.#lastKey) return this.#lastView;
     let view = this.#views.get(key);
-    if (!view) this.#views.set(key, (view = { node: undefined, outgoing: [], incoming: [] }));
+    if (!view) this.#views.set(key, (view = new View()));
+    this.#lastKey = key;
+    this.#lastView = view;
     return view;
   }
 
   #edges(key: NodeKey, direction: Direction, group: EdgeGroup): readonly Edge[] {
     const slots = this.#view(key)[direction];
-    const slot = (slots[group] ??= Object.assign(newSlot(), { edges: this.#collectEdges(key, direction, group) }));
+    const slot = slots[group] ?? this.#fillEdges(slots, key, direction, group);
     noteRead(slot, this.#reader);
     return slot.edges;
   }
 
-  #collectEdges(key: NodeKey, direction: Direction, group: EdgeGroup): readonly Edge[] {
-    const found: Edge[] = [];
+  #fillEdges(slots: View[Direction], key: NodeKey, direction: Direction, group: EdgeGroup): EdgeSlot {
+    const all: Edge[] = [];
     for (const layer of this.#space.layers) {
-      for (const edge of layer[direction].get(key)?.distinct ?? []) if (this.#groupOf(edge.type) === group) found.push(edge);
+      const bundle = layer[direction].get(key);
+      if (bundle) for (const edge of bundle.distinct) all.push(edge);
     }
-    return listDistinctEdges(found);
+    const groups = all.length > HUB ? [group] : ([SUBTYPE, HIERARCHICAL, OTHER] as const);
+    for (const each of groups) {
+      slots[each] ??= new EdgeSlot(
+        all.length === 0 ? NO_EDGES : listDistinctEdges(all.filter((e) => this.#groupOf(e.type) === each)),
+      );
+    }
+    return slots[group] as EdgeSlot;
   }
 
   #groupOf(type: NodeKey): EdgeGroup {
@@ -274,6 +333,7 @@ export class CheckContext {
   }
 
   #readAs<T>(reader: Computation, run: () => T): T {
+    if (!this.#isTracked) return run();
     const outer = this.#reader;
     this.#reader = reader;
     try {
@@ -289,14 +349,21 @@ function listMovedEdges(old: Node | undefined, node: Node | undefined): Edge[] {
   if (old && node && old.references === node.references && old.order === node.order) return [];
   const before = old ? listDeclaredEdges(old) : [];
   const after = node ? listDeclaredEdges(node) : [];
-  const isReordered = old !== undefined && node !== undefined && (old.order !== node.order || !keepsOrder(before, after));
+  const isReordered =
+    old !== undefined && node !== undefined && (old.order !== node.order || !keepsOrder(before, after));
   if (isReordered) return [...before, ...after];
-  return [...before.filter((e) => !after.some((o) => isSameEdge(o, e))), ...after.filter((e) => !before.some((o) => isSameEdge(o, e)))];
+  return [
+    ...before.filter((e) => !after.some((o) => isSameEdge(o, e))),
+    ...after.filter((e) => !before.some((o) => isSameEdge(o, e))),
+  ];
 }
 
 /** Whether the edges that both lists hold stand in one order. */
 function keepsOrder(before: readonly Edge[], after: readonly Edge[]): boolean {
   const kept = before.filter((e) => after.some((o) => isSameEdge(o, e)));
   const keptAfter = after.filter((e) => before.some((o) => isSameEdge(o, e)));
-  return kept.length === keptAfter.length && kept.every((e, i) => isSameEdge(e, keptAfter[i] ?? e) && keptAfter[i] !== undefined);
+  return (
+    kept.length === keptAfter.length &&
+    kept.every((e, i) => isSameEdge(e, keptAfter[i] ?? e) && keptAfter[i] !== undefined)
+  );
 }

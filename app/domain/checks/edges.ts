@@ -27,5 +27,10 @@ export function edgesDeclaredAt(node: Node, ctx: CheckContext, referenceType: No
 
 function isDeclaredAtSource(node: Node, { target, type }: DeclaredReference, ctx: CheckContext): boolean {
   if (!ctx.isOwn(target)) return false;
-  return ctx.node(target)?.references.some((r) => r.isForward && r.target === node.key && r.type === type && r.serverUri === undefined) ?? false;
+  return (
+    ctx
+      .node(target)
+      ?.references.some((r) => r.isForward && r.target === node.key && r.type === type && r.serverUri === undefined) ??
+    false
+  );
 }

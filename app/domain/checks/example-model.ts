@@ -5,7 +5,14 @@
  */
 import type { ModelEntry, ModelHeader } from "../address-space/model-header";
 import type { DataTypeDefinition, DeclaredReference, Node, NodeClass, XmlText } from "../address-space/node";
-import { numericNodeId, OPC_UA_NAMESPACE, standardKey, toNodeKey, type NodeId, type NodeKey } from "../address-space/node-id";
+import {
+  numericNodeId,
+  OPC_UA_NAMESPACE,
+  standardKey,
+  toNodeKey,
+  type NodeId,
+  type NodeKey,
+} from "../address-space/node-id";
 import { qualifiedName, type QualifiedName } from "../address-space/qualified-name";
 import {
   StandardDataType as D,
@@ -33,7 +40,12 @@ type Common = {
 };
 
 type Instance = Common & { readonly type?: NodeKey };
-type ValueParts = { readonly dataType?: NodeKey; readonly valueRank?: number; readonly arrayDimensions?: string; readonly value?: XmlText };
+type ValueParts = {
+  readonly dataType?: NodeKey;
+  readonly valueRank?: number;
+  readonly arrayDimensions?: string;
+  readonly value?: XmlText;
+};
 type TypeParts = Common & { readonly supertype?: NodeKey; readonly isAbstract?: boolean };
 
 /** Builder of one own model; every method answers the key of the node that it made. */
@@ -56,7 +68,12 @@ export class ExampleModel {
           publicationDate: "2026-05-01T00:00:00Z",
           xmlSchemaUri: `${uri}Types.xsd`,
           requiredModels: [
-            { modelUri: OPC_UA_NAMESPACE, version: "1.05.03", publicationDate: "2023-12-15T00:00:00Z", requiredModels: [] },
+            {
+              modelUri: OPC_UA_NAMESPACE,
+              version: "1.05.03",
+              publicationDate: "2023-12-15T00:00:00Z",
+              requiredModels: [],
+            },
           ],
         },
       ],
@@ -76,7 +93,10 @@ export class ExampleModel {
     return this.#type("DataType", name, D.Structure, parts, definition ? { definition } : {});
   }
 
-  referenceType(name: string, parts: TypeParts & { readonly inverseName?: string; readonly symmetric?: boolean } = {}): NodeKey {
+  referenceType(
+    name: string,
+    parts: TypeParts & { readonly inverseName?: string; readonly symmetric?: boolean } = {},
+  ): NodeKey {
     return this.#type("ReferenceType", name, R.NonHierarchicalReferences, parts, {
       ...(parts.inverseName === undefined ? {} : { inverseName: [{ text: parts.inverseName }] }),
       ...(parts.symmetric === undefined ? {} : { symmetric: parts.symmetric }),
@@ -85,7 +105,8 @@ export class ExampleModel {
 
   /** An Object; without `parent` it stands below the Objects folder. */
   object(name: string, parts: Instance = {}): NodeKey {
-    const placed = parts.parent === undefined ? { ...parts, parent: StandardObject.ObjectsFolder, reference: R.Organizes } : parts;
+    const placed =
+      parts.parent === undefined ? { ...parts, parent: StandardObject.ObjectsFolder, reference: R.Organizes } : parts;
     return this.#instance("Object", name, placed, R.HasComponent, parts.type ?? T.BaseObjectType, {});
   }
 
@@ -170,16 +191,29 @@ export class ExampleModel {
     };
     property("NamespaceUri", D.String, { value: scalar("String", uri) });
     property("NamespaceVersion", D.String, { value: scalar("String", model?.version ?? "") });
-    property("NamespacePublicationDate", D.DateTime, { value: scalar("DateTime", model?.publicationDate ?? "0001-01-01T00:00:00Z") });
-    if (model?.modelVersion !== undefined) property("ModelVersion", standardKey(24263), { value: scalar("String", model.modelVersion) });
+    property("NamespacePublicationDate", D.DateTime, {
+      value: scalar("DateTime", model?.publicationDate ?? "0001-01-01T00:00:00Z"),
+    });
+    if (model?.modelVersion !== undefined)
+      property("ModelVersion", standardKey(24263), { value: scalar("String", model.modelVersion) });
     property("IsNamespaceSubset", D.Boolean, { value: scalar("Boolean", false) });
     property("StaticNodeIdTypes", standardKey(256), { valueRank: 1, arrayDimensions: "0", value: list("Int32", 0) });
-    property("StaticNumericNodeIdRange", standardKey(291), { valueRank: 1, arrayDimensions: "0", value: list("String", "1:65535") });
+    property("StaticNumericNodeIdRange", standardKey(291), {
+      valueRank: 1,
+      arrayDimensions: "0",
+      value: list("String", "1:65535"),
+    });
     property("StaticStringNodeIdPattern", D.String, { value: scalar("String", "") });
     return parent;
   }
 
-  #type(nodeClass: NodeClass, name: string, root: NodeKey, parts: TypeParts, attributes: Readonly<Record<string, unknown>>): NodeKey {
+  #type(
+    nodeClass: NodeClass,
+    name: string,
+    root: NodeKey,
+    parts: TypeParts,
+    attributes: Readonly<Record<string, unknown>>,
+  ): NodeKey {
     const references = [{ type: R.HasSubtype, target: parts.supertype ?? root, isForward: false }];
     const isAbstract = parts.isAbstract === undefined ? {} : { isAbstract: parts.isAbstract };
     return this.#add(nodeClass, name, parts, references, { ...isAbstract, ...attributes });
@@ -196,7 +230,8 @@ export class ExampleModel {
     const references: DeclaredReference[] = [];
     if (type !== undefined) references.push({ type: R.HasTypeDefinition, target: type, isForward: true });
     if (parts.rule) references.push({ type: R.HasModellingRule, target: M[parts.rule], isForward: true });
-    if (parts.parent !== undefined) references.push({ type: parts.reference ?? reference, target: parts.parent, isForward: false });
+    if (parts.parent !== undefined)
+      references.push({ type: parts.reference ?? reference, target: parts.parent, isForward: false });
     return this.#add(nodeClass, name, parts, references, {
       ...(parts.parent === undefined ? {} : { parent: parts.parent }),
       ...attributes,
@@ -245,6 +280,8 @@ export class ExampleModel {
 }
 
 function valuesOf({ dataType, valueRank, arrayDimensions, value }: ValueParts): Readonly<Record<string, unknown>> {
-  const given = Object.entries({ dataType, valueRank, arrayDimensions, value }).filter(([, part]) => part !== undefined);
+  const given = Object.entries({ dataType, valueRank, arrayDimensions, value }).filter(
+    ([, part]) => part !== undefined,
+  );
   return Object.fromEntries(given);
 }

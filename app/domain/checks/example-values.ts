@@ -16,7 +16,11 @@ export function list(builtIn: string, ...items: readonly (string | number)[]): X
   return { xml: `<ListOf${builtIn} ${TYPES}>${inner}</ListOf${builtIn}>` };
 }
 
-export function matrix(builtIn: string, dimensions: readonly number[], ...items: readonly (string | number)[]): XmlText {
+export function matrix(
+  builtIn: string,
+  dimensions: readonly number[],
+  ...items: readonly (string | number)[]
+): XmlText {
   const sizes = dimensions.map((d) => `<Int32>${d}</Int32>`).join("");
   const inner = items.map((item) => `<${builtIn}>${item}</${builtIn}>`).join("");
   return { xml: `<Matrix ${TYPES}><Dimensions>${sizes}</Dimensions><Elements>${inner}</Elements></Matrix>` };
@@ -31,7 +35,9 @@ export function extensionObject(typeId: string, body: string): XmlText {
 }
 
 export function extensionObjects(typeId: string, ...bodies: readonly string[]): XmlText {
-  return { xml: `<ListOfExtensionObject ${TYPES}>${bodies.map((b) => extensionObjectXml(typeId, b)).join("")}</ListOfExtensionObject>` };
+  return {
+    xml: `<ListOfExtensionObject ${TYPES}>${bodies.map((b) => extensionObjectXml(typeId, b)).join("")}</ListOfExtensionObject>`,
+  };
 }
 
 /** A Range, OPC 10000-8 §5.6.2. */

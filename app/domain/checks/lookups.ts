@@ -10,7 +10,7 @@ const supertypes: Lookup<readonly NodeKey[]> = {
   compute(ctx, key) {
     const chain: NodeKey[] = [];
     const seen = new Set<NodeKey>([key]);
-    for (let at = ctx.supertypeEdges(key)[0]?.source; at !== undefined && !seen.has(at); ) {
+    for (let at = ctx.supertypeEdges(key)[0]?.source; at !== undefined && !seen.has(at);) {
       seen.add(at);
       chain.push(at);
       at = ctx.supertypeEdges(at)[0]?.source;
@@ -105,7 +105,12 @@ export function findStandardProperty(ctx: CheckContext, key: NodeKey, name: stri
   return findPropertyNamed(ctx, key, "http://opcfoundation.org/UA/", name);
 }
 
-export function findPropertyNamed(ctx: CheckContext, key: NodeKey, namespaceUri: string, name: string): Node | undefined {
+export function findPropertyNamed(
+  ctx: CheckContext,
+  key: NodeKey,
+  namespaceUri: string,
+  name: string,
+): Node | undefined {
   for (const edge of ofType(ctx, ctx.childEdges(key), R.HasProperty)) {
     const node = ctx.node(edge.target);
     if (node?.browseName.name === name && node.browseName.namespaceUri === namespaceUri) return node;

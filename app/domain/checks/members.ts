@@ -10,7 +10,12 @@ import type { CheckContext, Lookup } from "./check-context";
 import { findModellingRule, listSupertypes } from "./lookups";
 
 /** A declaration with its rule and the type (or Interface, or declaration) that it hangs on. */
-export type Member = { readonly node: Node; readonly rule: NodeKey; readonly owner: NodeKey; readonly referenceType: NodeKey };
+export type Member = {
+  readonly node: Node;
+  readonly rule: NodeKey;
+  readonly owner: NodeKey;
+  readonly referenceType: NodeKey;
+};
 
 /** Rules that name one member each; placeholders and ExposesItsArray name none. */
 export function isNaming(rule: NodeKey): boolean {
@@ -76,7 +81,11 @@ export function listInterfaces(ctx: CheckContext, key: NodeKey): readonly NodeKe
 }
 
 /** The declaration that the supertypes give for the name; undefined where the type is the first to declare it. */
-export function findInheritedMember(ctx: CheckContext, type: NodeKey, browseName: Node["browseName"]): Member | undefined {
+export function findInheritedMember(
+  ctx: CheckContext,
+  type: NodeKey,
+  browseName: Node["browseName"],
+): Member | undefined {
   const [supertype] = listSupertypes(ctx, type);
   return supertype === undefined ? undefined : getMembers(ctx, supertype).get(formatQualifiedName(browseName));
 }
@@ -100,4 +109,3 @@ const children: Lookup<ReadonlyMap<string, readonly Node[]>> = {
 export function getChildren(ctx: CheckContext, key: NodeKey): ReadonlyMap<string, readonly Node[]> {
   return ctx.lookUp(children, key);
 }
-

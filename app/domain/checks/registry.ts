@@ -2,12 +2,26 @@
 import type { Rule } from "./rule";
 import { r001 } from "./rules/r001-node-id-not-null";
 import { r002 } from "./rules/r002-node-id-unique";
+import { r003 } from "./rules/r003-string-identifier-limits";
 import { r004 } from "./rules/r004-node-id-own-namespace";
+import { r005 } from "./rules/r005-numeric-type-ids";
 import { r006 } from "./rules/r006-browse-name-form";
+import { r007 } from "./rules/r007-index-like-name";
 import { r008 } from "./rules/r008-type-names-unique";
 import { r009 } from "./rules/r009-sibling-browse-names";
+import { r010 } from "./rules/r010-instance-sibling-names";
+import { r011 } from "./rules/r011-property-names-unique";
 import { r012 } from "./rules/r012-standard-member-namespace";
+import { r013 } from "./rules/r013-type-naming";
+import { r014 } from "./rules/r014-name-characters";
+import { r015 } from "./rules/r015-names-differ-in-case";
 import { r016 } from "./rules/r016-display-name";
+import { r017 } from "./rules/r017-one-text-per-locale";
+import { r018 } from "./rules/r018-locale-form";
+import { r019 } from "./rules/r019-description";
+import { r020 } from "./rules/r020-namespace-uri-form";
+import { r021 } from "./rules/r021-uris-nearly-equal";
+import { r022 } from "./rules/r022-symbolic-name";
 import { r023 } from "./rules/r023-reference-target";
 import { r024 } from "./rules/r024-reference-type";
 import { r027 } from "./rules/r027-no-child-loops";
@@ -44,12 +58,26 @@ import { r181 } from "./rules/r181-namespace-metadata";
 export const RULES: readonly Rule[] = [
   r001,
   r002,
+  r003,
   r004,
+  r005,
   r006,
+  r007,
   r008,
   r009,
+  r010,
+  r011,
   r012,
+  r013,
+  r014,
+  r015,
   r016,
+  r017,
+  r018,
+  r019,
+  r020,
+  r021,
+  r022,
   r023,
   r024,
   r027,

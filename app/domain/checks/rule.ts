@@ -7,21 +7,19 @@
  */
 import type { Node, NodeClass } from "../address-space/node";
 import type { Result, Severity } from "../core/result";
+import type { NodeIdAllocator } from "../editing/allocate-node-id";
 import type { Operation } from "../editing/operation";
 import type { AddressSpace } from "../address-space/address-space";
-import type { NodeId, NodeKey } from "../address-space/node-id";
+import type { NodeKey } from "../address-space/node-id";
 import type { CheckContext } from "./check-context";
 import type { ExampleModel } from "./example-model";
 import type { Finding, ReportFunction, RuleId } from "./finding";
 
-/** What a fix may ask for: identities for nodes that it makes. */
-export type FixContext = { readonly allocate: () => NodeId };
-
-/** Answers the operations that mend a finding, all in one undo step. */
+/** Answers the operations that mend a finding, all in one undo step; new nodes take their NodeIds from `ids`. */
 export type Fix = {
   /** What the fix does, as an imperative sentence for a button. */
   readonly label: string;
-  readonly apply: (space: AddressSpace, finding: Finding, context: FixContext) => Result<readonly Operation[]>;
+  readonly apply: (space: AddressSpace, finding: Finding, ids: NodeIdAllocator) => Result<readonly Operation[]>;
 };
 
 /** Builds a small model; the bad one answers the node that the rule must name ("model" for the model as a whole). */

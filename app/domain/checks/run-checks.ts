@@ -39,11 +39,15 @@ const PROGRESS_STEP = 500;
 
 /** Checks the own model of an address space; findings inside required models stay out. Never throws. */
 export function runChecks(space: AddressSpace, options: CheckOptions = {}): readonly Finding[] {
-  return startChecks(space, options).findings;
+  return run(space, options, new CheckContext(space, false)).findings;
 }
 
+/** Like `runChecks`, and ready to be continued by `updateChecks`. */
 export function startChecks(space: AddressSpace, options: CheckOptions = {}): CheckRun {
-  const context = new CheckContext(space);
+  return run(space, options, new CheckContext(space));
+}
+
+function run(space: AddressSpace, options: CheckOptions, context: CheckContext): CheckRun {
   const results = new Map<Subject, readonly RawFinding[]>();
   const rules = groupRules(options.rules ?? RULES);
   checkSubject("model", context, rules, results);
@@ -64,9 +68,9 @@ export function startChecks(space: AddressSpace, options: CheckOptions = {}): Ch
  * The findings of the next state of the model. The same as a full run, at the price of what the difference touches.
  * A change of ReferenceTypes or of required models asks every question anew and is a full run.
  */
-export function updateChecks(run: CheckRun, after: AddressSpace): CheckRun {
-  const { space: before, options, context, results } = run;
-  if (before === after) return run;
+export function updateChecks(last: CheckRun, after: AddressSpace): CheckRun {
+  const { space: before, options, context, results } = last;
+  if (before === after) return last;
   const changed = before.own.nodes.listChangedKeys(after.own.nodes) as NodeKey[];
   if (needsFullRun(before, after, changed)) return startChecks(after, options);
   const dirty = context.update(after, changed);
@@ -88,7 +92,10 @@ function needsFullRun(before: AddressSpace, after: AddressSpace, changed: readon
   );
 }
 
-type RuleGroups = { readonly model: readonly ModelRule[]; readonly byClass: ReadonlyMap<NodeClass, readonly NodeRule[]> };
+type RuleGroups = {
+  readonly model: readonly ModelRule[];
+  readonly byClass: ReadonlyMap<NodeClass, readonly NodeRule[]>;
+};
 
 const groups = new WeakMap<readonly Rule[], RuleGroups>();
 
@@ -105,7 +112,12 @@ function groupRules(rules: readonly Rule[]): RuleGroups {
   return made;
 }
 
-function checkSubject(subject: Subject, context: CheckContext, rules: RuleGroups, results: Map<Subject, readonly RawFinding[]>): void {
+function checkSubject(
+  subject: Subject,
+  context: CheckContext,
+  rules: RuleGroups,
+  results: Map<Subject, readonly RawFinding[]>,
+): void {
   const found: RawFinding[] = [];
   context.runAs(subject, () => {
     if (subject === "model") {

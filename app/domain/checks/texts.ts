@@ -5,7 +5,8 @@ export function listControlCharacters(text: string): string[] {
   const found = new Set<string>();
   for (let i = 0; i < text.length; i++) {
     const code = text.charCodeAt(i);
-    if (code < 0x20 || (code >= 0x7f && code <= 0x9f)) found.add(`U+${code.toString(16).toUpperCase().padStart(4, "0")}`);
+    if (code < 0x20 || (code >= 0x7f && code <= 0x9f))
+      found.add(`U+${code.toString(16).toUpperCase().padStart(4, "0")}`);
   }
   return [...found];
 }

@@ -18,7 +18,12 @@ export type ReportedFinding = {
   readonly facts: readonly string[];
 };
 
-export type ReportedProblem = { readonly code: string; readonly message: string; readonly line: number; readonly column: number };
+export type ReportedProblem = {
+  readonly code: string;
+  readonly message: string;
+  readonly line: number;
+  readonly column: number;
+};
 
 export type CheckReport = {
   readonly file: string;

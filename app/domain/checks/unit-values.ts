@@ -33,7 +33,12 @@ export function isNearMiss(uri: string, known: string): boolean {
 }
 
 function toSkeleton(uri: string): string {
-  return uri.toLowerCase().replace(/\s/g, "").replace(/^https?:\/\//, "").replace(/^www\./, "").replace(/\/+$/, "");
+  return uri
+    .toLowerCase()
+    .replace(/\s/g, "")
+    .replace(/^https?:\/\//, "")
+    .replace(/^www\./, "")
+    .replace(/\/+$/, "");
 }
 
 /**

@@ -1,10 +1,10 @@
 /** Values as element trees, each read once: values are immutable and shared by all states of a model. */
 import type { XmlText } from "../address-space/node";
-import { findChild, readXmlTree, type XmlElement } from "../core/xml-tree";
+import { findChild, readValueElements, type ValueElement } from "./value-element";
 
 export type ValueTree =
   /** One element, as the schema demands. */
-  | { readonly kind: "value"; readonly root: XmlElement }
+  | { readonly kind: "value"; readonly root: ValueElement }
   | { readonly kind: "empty" }
   /** No well-formed XML, or several elements. */
   | { readonly kind: "broken" };
@@ -18,39 +18,36 @@ export function readValueTree(value: XmlText): ValueTree {
 }
 
 /** The element of a value that is there and well formed. */
-export function findValueRoot(value: XmlText | undefined): XmlElement | undefined {
+export function findValueRoot(value: XmlText | undefined): ValueElement | undefined {
   if (!value) return undefined;
   const tree = readValueTree(value);
   return tree.kind === "value" ? tree.root : undefined;
 }
 
 function makeTree(value: XmlText): ValueTree {
-  const prefixes = Object.entries(value.prefixes ?? {})
-    .map(([prefix, uri]) => ` xmlns${prefix === "" ? "" : `:${prefix}`}="${escapeAttribute(uri)}"`)
-    .join("");
-  const read = readXmlTree(`<Value${prefixes}>${value.xml}</Value>`);
-  if (!read.ok) return { kind: "broken" };
-  const [root, second] = read.value.children;
+  const elements = readValueElements(value.xml, value.prefixes);
+  if (!elements) return { kind: "broken" };
+  const [root, second] = elements;
   if (!root) return { kind: "empty" };
   return second ? { kind: "broken" } : { kind: "value", root };
 }
 
-function escapeAttribute(text: string): string {
-  return text.replace(/&/g, "&amp;").replace(/</g, "&lt;").replace(/"/g, "&quot;");
-}
-
 /** Whether the element says that it is null: `xsi:nil="true"`. */
-export function isNil(element: XmlElement): boolean {
-  return Object.entries(element.attributes).some(([name, text]) => /(^|:)nil$/.test(name) && (text === "true" || text === "1"));
+export function isNil(element: ValueElement): boolean {
+  for (const name in element.attributes) {
+    const text = element.attributes[name];
+    if ((text === "true" || text === "1") && /(?:^|:)nil$/.test(name)) return true;
+  }
+  return false;
 }
 
 /** Name of the element type of a list: `ListOfString` → `String`; undefined for anything else. */
-export function listItemType(element: XmlElement): string | undefined {
+export function listItemType(element: ValueElement): string | undefined {
   return element.name.startsWith("ListOf") ? element.name.slice(6) : undefined;
 }
 
 /** The ExtensionObjects of a value: the value itself, the items of a list, the elements of a matrix. */
-export function listExtensionObjects(root: XmlElement | undefined): XmlElement[] {
+export function listExtensionObjects(root: ValueElement | undefined): ValueElement[] {
   if (!root) return [];
   if (root.name === "ExtensionObject") return [root];
   const holder = root.name === "Matrix" ? findChild(root, "Elements") : root;
@@ -58,16 +55,16 @@ export function listExtensionObjects(root: XmlElement | undefined): XmlElement[]
 }
 
 /** The one element in an ExtensionObject's Body. */
-export function findBody(extensionObject: XmlElement): XmlElement | undefined {
+export function findBody(extensionObject: ValueElement): ValueElement | undefined {
   return findChild(extensionObject, "Body")?.children[0];
 }
 
-export function findTypeId(extensionObject: XmlElement): string | undefined {
+export function findTypeId(extensionObject: ValueElement): string | undefined {
   return findChild(extensionObject, "TypeId", "Identifier")?.text.trim();
 }
 
 /** Bodies named after a standard structure, wherever they stand in the value. */
-export function listBodies(value: XmlText | undefined, name: string): XmlElement[] {
+export function listBodies(value: XmlText | undefined, name: string): ValueElement[] {
   return listExtensionObjects(findValueRoot(value)).flatMap((e) => {
     const body = findBody(e);
     return body?.name === name ? [body] : [];
@@ -75,6 +72,6 @@ export function listBodies(value: XmlText | undefined, name: string): XmlElement
 }
 
 /** Trimmed text of a field, "" where it is left out. */
-export function textOf(element: XmlElement | undefined, ...path: readonly string[]): string {
+export function textOf(element: ValueElement | undefined, ...path: readonly string[]): string {
   return findChild(element, ...path)?.text.trim() ?? "";
 }

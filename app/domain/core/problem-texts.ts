@@ -4,6 +4,7 @@
  */
 import type { Problem } from "./result";
 import { addressSpaceProblemTexts } from "../address-space/problem-texts";
+import { checksProblemTexts } from "../checks/problem-texts";
 import { editingProblemTexts } from "../editing/problem-texts";
 import { ioddProblemTexts } from "../iodd/problem-texts";
 import { mappingProblemTexts } from "../mapping/problem-texts";
@@ -14,6 +15,7 @@ import { nodesetProblemTexts } from "../nodeset/problem-texts";
 const texts: Readonly<Record<string, string>> = {
   "limit.file-size": "The file has {size} bytes; the limit is {limit} bytes (50 MB).",
   ...addressSpaceProblemTexts,
+  ...checksProblemTexts,
   ...nodesetProblemTexts,
   ...editingProblemTexts,
   ...ioddProblemTexts,

@@ -26,7 +26,10 @@ export const r002: NodeRule = {
     }
   },
   examples: {
-    good: { text: "Every node has an identifier of its own.", build: (m) => (m.objectType("PumpType"), m.objectType("ValveType")) },
+    good: {
+      text: "Every node has an identifier of its own.",
+      build: (m) => (m.objectType("PumpType"), m.objectType("ValveType")),
+    },
     bad: {
       text: "Two types with the same identifier.",
       build: (m) => {

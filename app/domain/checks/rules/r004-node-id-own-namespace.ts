@@ -17,7 +17,10 @@ export const r004: NodeRule = {
     report({
       attribute: "nodeId",
       message: `${node.browseName.name} is numbered in the foreign namespace ${namespaceUri}.`,
-      facts: [`NodeId: ${formatNodeId(node.nodeId)}`, `This model defines: ${models.map((m) => m.modelUri).join(", ")}`],
+      facts: [
+        `NodeId: ${formatNodeId(node.nodeId)}`,
+        `This model defines: ${models.map((m) => m.modelUri).join(", ")}`,
+      ],
     });
   },
   examples: {

@@ -18,7 +18,11 @@ export const r006: NodeRule = {
     const attribute = "browseName";
     if (name === "") report({ attribute, message: "The BrowseName is empty.", facts: ["Name part: empty text"] });
     if (name.length > LIMIT) {
-      report({ attribute, message: `The BrowseName has ${name.length} characters.`, facts: [`Limit: ${LIMIT} characters`] });
+      report({
+        attribute,
+        message: `The BrowseName has ${name.length} characters.`,
+        facts: [`Limit: ${LIMIT} characters`],
+      });
     }
     if (controls.length > 0) {
       report({

@@ -8,7 +8,8 @@ export const r008: NodeRule = {
   clause: clause(3, "§5.2.4, §5.3.2"),
   priority: 1,
   concerns: TYPE_CLASSES,
-  condition: "Namespace and name are unique among all ObjectTypes, VariableTypes, DataTypes and ReferenceTypes together.",
+  condition:
+    "Namespace and name are unique among all ObjectTypes, VariableTypes, DataTypes and ReferenceTypes together.",
   why: "Clients and code generators find types by their BrowseName; two of one name give two classes of one name, or the wrong type.",
   check(node, ctx, report) {
     // Two nodes of one NodeId are one finding of R002, not one more here.
@@ -25,7 +26,10 @@ export const r008: NodeRule = {
     }
   },
   examples: {
-    good: { text: "Each type has a name of its own.", build: (m) => (m.objectType("PumpType"), m.dataType("PumpStateDataType")) },
+    good: {
+      text: "Each type has a name of its own.",
+      build: (m) => (m.objectType("PumpType"), m.dataType("PumpStateDataType")),
+    },
     bad: {
       text: "A DataType named like an ObjectType of the same namespace.",
       build: (m) => {

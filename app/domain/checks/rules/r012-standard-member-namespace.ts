@@ -19,7 +19,8 @@ export const r012: NodeRule = {
   clause: clause(3, "§5.2.4, §6.2.7"),
   priority: 1,
   concerns: ["Object", "Variable", "Method", "ObjectType", "VariableType", "DataType"],
-  condition: "A standard Property has its BrowseName in namespace 0, and a member of a type that of its declaration, whatever namespace the NodeId has.",
+  condition:
+    "A standard Property has its BrowseName in namespace 0, and a member of a type that of its declaration, whatever namespace the NodeId has.",
   why: "Clients look for 0:EURange or 0:InputArguments by browse path. Under another namespace the range, the unit or the arguments are not found.",
   check(node, ctx, report) {
     checkStandardProperties(node, ctx, report);
@@ -65,19 +66,26 @@ function checkStandardProperties(node: Node, ctx: CheckContext, report: ReportFu
   if (!names) return;
   for (const { target } of ofType(ctx, ctx.childEdges(node.key), R.HasProperty)) {
     const property = ctx.node(target);
-    if (!property || !names.has(property.browseName.name) || property.browseName.namespaceUri === OPC_UA_NAMESPACE) continue;
+    if (!property || !names.has(property.browseName.name) || property.browseName.namespaceUri === OPC_UA_NAMESPACE)
+      continue;
     report({
       key: ctx.isOwn(target) ? target : node.key,
       attribute: "browseName",
       message: `The standard Property ${property.browseName.name} of ${node.browseName.name} is named in a namespace other than 0.`,
-      facts: [`BrowseName: ${formatQualifiedName(property.browseName)}`, `The standard's: ${property.browseName.name} in namespace 0`],
+      facts: [
+        `BrowseName: ${formatQualifiedName(property.browseName)}`,
+        `The standard's: ${property.browseName.name} in namespace 0`,
+      ],
     });
   }
 }
 
 /** A member with the right text in a wrong namespace, while the declared one is absent: a likely slip. */
 function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunction): void {
-  const types = node.nodeClass === "ObjectType" || node.nodeClass === "VariableType" ? [node.key] : [findTypeDefinition(ctx, node.key)];
+  const types =
+    node.nodeClass === "ObjectType" || node.nodeClass === "VariableType"
+      ? [node.key]
+      : [findTypeDefinition(ctx, node.key)];
   const sources = types.flatMap((t) => (t === undefined ? [] : [t, ...listInterfaces(ctx, t)]));
   if (node.nodeClass === "Object") sources.push(...listInterfaces(ctx, node.key));
   const children = getChildren(ctx, node.key);
@@ -89,19 +97,27 @@ function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunct
       const stray = ctx.childEdges(node.key).find((e) => ctx.node(e.target)?.browseName.name === browseName.name);
       const child = stray && ctx.node(stray.target);
       if (!child || told.has(child.key) || !ctx.isOwn(child.key) || isReportedAsStandard(node, child, ctx)) continue;
-      if (sources.some((s) => s !== node.key && getMembers(ctx, s).has(formatQualifiedName(child.browseName)))) continue;
+      if (sources.some((s) => s !== node.key && getMembers(ctx, s).has(formatQualifiedName(child.browseName))))
+        continue;
       told.add(child.key);
       report({
         key: child.key,
         severity: "warning",
         attribute: "browseName",
         message: `${child.browseName.name} has the name of a declared member but another namespace.`,
-        facts: [`BrowseName: ${formatQualifiedName(child.browseName)}`, `Declared: ${name}, by ${ctx.describe(member.owner)}`],
+        facts: [
+          `BrowseName: ${formatQualifiedName(child.browseName)}`,
+          `Declared: ${name}, by ${ctx.describe(member.owner)}`,
+        ],
       });
     }
   }
 }
 
 function isReportedAsStandard(node: Node, child: Node, ctx: CheckContext): boolean {
-  return (namesFor(node, ctx)?.has(child.browseName.name) ?? false) && child.browseName.namespaceUri !== OPC_UA_NAMESPACE && isKindOf(ctx, findTypeDefinition(ctx, child.key) ?? child.key, T.PropertyType);
+  return (
+    (namesFor(node, ctx)?.has(child.browseName.name) ?? false) &&
+    child.browseName.namespaceUri !== OPC_UA_NAMESPACE &&
+    isKindOf(ctx, findTypeDefinition(ctx, child.key) ?? child.key, T.PropertyType)
+  );
 }

@@ -9,7 +9,8 @@ export const r016: NodeRule = {
   clause: clause(3, "§5.2.1, Table 7, §5.2.5"),
   priority: 1,
   concerns: ALL_CLASSES,
-  condition: "A node has at least one DisplayName of at most 512 characters. An empty text is a warning (common practice, no source).",
+  condition:
+    "A node has at least one DisplayName of at most 512 characters. An empty text is a warning (common practice, no source).",
   why: "The DisplayName is what operators read. The file's schema allows it to be left out, but the attribute is mandatory in a server.",
   check(node, _ctx, report) {
     const attribute = "displayName";
@@ -20,10 +21,19 @@ export const r016: NodeRule = {
     for (const { text, locale } of displayName) {
       const where = locale ? ` (${locale})` : "";
       if (text.length > LIMIT) {
-        report({ attribute, message: `The DisplayName${where} has ${text.length} characters.`, facts: [`Limit: ${LIMIT} characters`] });
+        report({
+          attribute,
+          message: `The DisplayName${where} has ${text.length} characters.`,
+          facts: [`Limit: ${LIMIT} characters`],
+        });
       }
       if (text.trim() === "") {
-        report({ attribute, severity: "warning", message: `The DisplayName${where} of ${browseName.name} is empty.`, facts: ["Text: empty"] });
+        report({
+          attribute,
+          severity: "warning",
+          message: `The DisplayName${where} of ${browseName.name} is empty.`,
+          facts: ["Text: empty"],
+        });
       }
     }
   },

@@ -25,13 +25,21 @@ export const r023: NodeRule = {
         severity: isNeeded ? "error" : "warning",
         attribute: "references",
         message: `${nameReference(ctx, type, reference.isForward)} of ${node.browseName.name} names ${target}, which does not exist.`,
-        facts: [`Target: ${target}`, namespace === undefined ? "The text is no NodeId." : `The namespace ${namespace} is loaded and has no such node.`],
+        facts: [
+          `Target: ${target}`,
+          namespace === undefined
+            ? "The text is no NodeId."
+            : `The namespace ${namespace} is loaded and has no such node.`,
+        ],
         data: { type, target },
       });
     }
   },
   examples: {
-    good: { text: "The type definition is loaded.", build: (m) => m.object("Pump1", { type: m.objectType("PumpType") }) },
+    good: {
+      text: "The type definition is loaded.",
+      build: (m) => m.object("Pump1", { type: m.objectType("PumpType") }),
+    },
     bad: {
       text: "The type definition names a node that namespace 0 does not have.",
       build: (m) => m.object("Pump1", { type: standardKey(4294967290) }),

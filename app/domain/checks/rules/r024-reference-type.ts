@@ -10,7 +10,8 @@ export const r024: NodeRule = {
   clause: clause(3, "§5.3.1, Table 9, §7.2–7.6"),
   priority: 1,
   concerns: ALL_CLASSES,
-  condition: "The type of every reference is a ReferenceType that is not abstract. Where its namespace is not loaded: a warning.",
+  condition:
+    "The type of every reference is a ReferenceType that is not abstract. Where its namespace is not loaded: a warning.",
   why: "A reference of an unknown or abstract type is dropped by loaders, so its target is not found by browsing.",
   check(node, ctx, report) {
     const seen = new Set<NodeKey>();
@@ -26,7 +27,12 @@ export const r024: NodeRule = {
           severity: isLoaded ? "error" : "warning",
           attribute: "references",
           message: `A reference of ${name} has the type ${type}, which ${isLoaded ? "does not exist" : "is not loaded"}.`,
-          facts: [`Type: ${type}`, namespace === undefined ? "The text is no NodeId." : `Namespace ${namespace}: ${isLoaded ? "loaded" : "not loaded"}`],
+          facts: [
+            `Type: ${type}`,
+            namespace === undefined
+              ? "The text is no NodeId."
+              : `Namespace ${namespace}: ${isLoaded ? "loaded" : "not loaded"}`,
+          ],
         });
       } else if (found.nodeClass !== "ReferenceType") {
         report({
@@ -50,7 +56,12 @@ export const r024: NodeRule = {
     },
     bad: {
       text: "HierarchicalReferences is abstract and stands only for its subtypes.",
-      build: (m) => m.variable("Speed", { parent: m.objectType("PumpType"), rule: "Mandatory", reference: R.HierarchicalReferences }),
+      build: (m) =>
+        m.variable("Speed", {
+          parent: m.objectType("PumpType"),
+          rule: "Mandatory",
+          reference: R.HierarchicalReferences,
+        }),
     },
   },
 };

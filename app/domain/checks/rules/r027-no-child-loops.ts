@@ -18,7 +18,10 @@ export const r027: NodeRule = {
     report({
       attribute: "references",
       message: `${node.browseName.name} stands below itself.`,
-      facts: [`The way round: ${[...loop, node.key].map((key) => ctx.nameOf(key)).join(" → ")}`, ...loop.map((key) => ctx.describe(key))],
+      facts: [
+        `The way round: ${[...loop, node.key].map((key) => ctx.nameOf(key)).join(" → ")}`,
+        ...loop.map((key) => ctx.describe(key)),
+      ],
     });
   },
   examples: {

@@ -29,7 +29,10 @@ export const r031: NodeRule = {
     }
   },
   examples: {
-    good: { text: "A Method below an ObjectType.", build: (m) => m.method("Start", { parent: m.objectType("PumpType"), rule: "Mandatory" }) },
+    good: {
+      text: "A Method below an ObjectType.",
+      build: (m) => m.method("Start", { parent: m.objectType("PumpType"), rule: "Mandatory" }),
+    },
     bad: {
       text: "An Object below a VariableType.",
       build: (m) => m.object("Details", { parent: m.variableType("LevelType"), rule: "Optional" }),

@@ -16,7 +16,9 @@ export const r033: NodeRule = {
     if (!isProperty(ctx, node.key)) return;
     const edges = [...ctx.childEdges(node.key), ...ctx.subtypeEdges(node.key)];
     if (edges.length === 0) return;
-    const owners = ofType(ctx, ctx.parentEdges(node.key), R.HasProperty).map((e) => `It is a Property of ${ctx.describe(e.source)}`);
+    const owners = ofType(ctx, ctx.parentEdges(node.key), R.HasProperty).map(
+      (e) => `It is a Property of ${ctx.describe(e.source)}`,
+    );
     report({
       attribute: "references",
       message: `The Property ${node.browseName.name} has ${count(edges.length, "child", "children")}.`,

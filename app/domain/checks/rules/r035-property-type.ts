@@ -19,7 +19,10 @@ export const r035: NodeRule = {
       attribute: "references",
       message: `The Property ${node.browseName.name} has the type ${ctx.nameOf(type)} instead of PropertyType.`,
       facts: [
-        ...ctx.parentEdges(node.key).filter((e) => ctx.closure(R.HasProperty).has(e.type)).map((e) => `HasProperty from ${ctx.describe(e.source)}`),
+        ...ctx
+          .parentEdges(node.key)
+          .filter((e) => ctx.closure(R.HasProperty).has(e.type))
+          .map((e) => `HasProperty from ${ctx.describe(e.source)}`),
         `HasTypeDefinition: ${ctx.describe(type)}`,
       ],
       data: { type },

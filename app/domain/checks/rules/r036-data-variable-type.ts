@@ -23,7 +23,10 @@ export const r036: NodeRule = {
     }
   },
   examples: {
-    good: { text: "A component typed BaseDataVariableType.", build: (m) => m.variable("Speed", { parent: m.object("Pump1") }) },
+    good: {
+      text: "A component typed BaseDataVariableType.",
+      build: (m) => m.variable("Speed", { parent: m.object("Pump1") }),
+    },
     bad: {
       text: "A component typed PropertyType.",
       build: (m) => m.variable("Speed", { parent: m.object("Pump1"), type: T.PropertyType }),

@@ -27,10 +27,19 @@ export const r041: NodeRule = {
         report({ attribute: "references", message, facts, data: { source, target } });
         continue;
       }
-      const isAtSubtype = subtype.references.some((r) => !r.isForward && r.type === R.HasSubtype && r.target === source);
+      const isAtSubtype = subtype.references.some(
+        (r) => !r.isForward && r.type === R.HasSubtype && r.target === source,
+      );
       if (!isAtSubtype && ctx.isOwn(target)) {
         const message = `${subtype.browseName.name} does not declare its supertype ${supertype.browseName.name} itself.`;
-        report({ severity: "hint", key: target, attribute: "references", message, facts: [...facts, "Declared at the supertype only"], data: { source, target } });
+        report({
+          severity: "hint",
+          key: target,
+          attribute: "references",
+          message,
+          facts: [...facts, "Declared at the supertype only"],
+          data: { source, target },
+        });
       }
     }
   },

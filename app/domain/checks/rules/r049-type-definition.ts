@@ -8,16 +8,25 @@ export const r049: NodeRule = {
   clause: clause(3, "§5.5.1, §5.6.2, §7.13"),
   priority: 1,
   concerns: ALL_CLASSES,
-  condition: "An Object has exactly one type definition, an ObjectType; a Variable exactly one, a VariableType; no other class has any.",
+  condition:
+    "An Object has exactly one type definition, an ObjectType; a Variable exactly one, a VariableType; no other class has any.",
   why: "Without its type a node cannot be understood or created; loaders refuse it or make it an instance of a base type.",
   check(node, ctx, report) {
-    const types = ctx.otherEdges(node.key).filter((e) => e.type === R.HasTypeDefinition).map((e) => e.target);
+    const types = ctx
+      .otherEdges(node.key)
+      .filter((e) => e.type === R.HasTypeDefinition)
+      .map((e) => e.target);
     const attribute = "references";
-    const wanted = node.nodeClass === "Object" ? "ObjectType" : node.nodeClass === "Variable" ? "VariableType" : undefined;
+    const wanted =
+      node.nodeClass === "Object" ? "ObjectType" : node.nodeClass === "Variable" ? "VariableType" : undefined;
     const facts = types.map((key) => `HasTypeDefinition: ${ctx.describe(key)}`);
     if (wanted === undefined) {
       if (types.length === 0) return;
-      report({ attribute, message: `The ${node.nodeClass} ${node.browseName.name} has a type definition.`, facts: [...facts, "Only Objects and Variables have one."] });
+      report({
+        attribute,
+        message: `The ${node.nodeClass} ${node.browseName.name} has a type definition.`,
+        facts: [...facts, "Only Objects and Variables have one."],
+      });
       return;
     }
     if (types.length !== 1) {
@@ -32,7 +41,13 @@ export const r049: NodeRule = {
     }
   },
   examples: {
-    good: { text: "An Object typed by an ObjectType.", build: (m) => m.object("Pump1", { type: m.objectType("PumpType") }) },
-    bad: { text: "An Object typed by a VariableType.", build: (m) => m.object("Pump1", { type: T.BaseDataVariableType }) },
+    good: {
+      text: "An Object typed by an ObjectType.",
+      build: (m) => m.object("Pump1", { type: m.objectType("PumpType") }),
+    },
+    bad: {
+      text: "An Object typed by a VariableType.",
+      build: (m) => m.object("Pump1", { type: T.BaseDataVariableType }),
+    },
   },
 };

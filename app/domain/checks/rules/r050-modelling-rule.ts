@@ -13,19 +13,29 @@ export const r050: NodeRule = {
     "Only Objects, Variables and Methods have a modelling rule, at most one, and it is an Object of ModellingRuleType or a subtype; rules of one's own are legal.",
   why: "With two rules nobody knows whether the member must exist on instances; a rule that is none is ignored.",
   check(node, ctx, report) {
-    const rules = ctx.otherEdges(node.key).filter((e) => e.type === R.HasModellingRule).map((e) => e.target);
+    const rules = ctx
+      .otherEdges(node.key)
+      .filter((e) => e.type === R.HasModellingRule)
+      .map((e) => e.target);
     const attribute = "references";
     const facts = rules.map((key) => `HasModellingRule: ${ctx.describe(key)}`);
     const name = node.browseName.name;
     if (rules.length > 0 && !["Object", "Variable", "Method"].includes(node.nodeClass)) {
-      report({ attribute, message: `The ${node.nodeClass} ${name} has a modelling rule.`, facts: [...facts, "Only Objects, Variables and Methods have one."] });
+      report({
+        attribute,
+        message: `The ${node.nodeClass} ${name} has a modelling rule.`,
+        facts: [...facts, "Only Objects, Variables and Methods have one."],
+      });
     }
     if (rules.length > 1) report({ attribute, message: `${name} has ${rules.length} modelling rules.`, facts });
     for (const key of rules) {
       const rule = ctx.node(key);
       if (!rule) continue;
       const type = findTypeDefinition(ctx, key);
-      const isRule = rule.nodeClass === "Object" && type !== undefined && (isKindOf(ctx, type, T.ModellingRuleType) || !isChainLoaded(ctx, type));
+      const isRule =
+        rule.nodeClass === "Object" &&
+        type !== undefined &&
+        (isKindOf(ctx, type, T.ModellingRuleType) || !isChainLoaded(ctx, type));
       if (isRule) continue;
       report({
         attribute,
@@ -35,7 +45,10 @@ export const r050: NodeRule = {
     }
   },
   examples: {
-    good: { text: "One rule.", build: (m) => m.variable("Speed", { parent: m.objectType("PumpType"), rule: "Mandatory" }) },
+    good: {
+      text: "One rule.",
+      build: (m) => m.variable("Speed", { parent: m.objectType("PumpType"), rule: "Mandatory" }),
+    },
     bad: {
       text: "Mandatory and Optional at once.",
       build: (m) => {

@@ -9,7 +9,8 @@ export const r066: NodeRule = {
   clause: clause(3, "§5.5.2, Table 12, §5.6.5, Table 14, §6.2.1, §6.4.4.3"),
   priority: 1,
   concerns: ["Object", "Variable"],
-  condition: "The type definition of a plain instance is not abstract; an instance declaration may name an abstract type.",
+  condition:
+    "The type definition of a plain instance is not abstract; an instance declaration may name an abstract type.",
   why: "Servers refuse to create an instance of an abstract type: only a subtype says what the node really is.",
   check(node, ctx, report) {
     const typeKey = findTypeDefinition(ctx, node.key);
@@ -25,7 +26,9 @@ export const r066: NodeRule = {
       facts: [
         `HasTypeDefinition: ${ctx.describe(type.key)}`,
         "IsAbstract of the type: true",
-        hasRule ? "It has a modelling rule, but no type above it." : "It has no modelling rule, so it is a plain instance.",
+        hasRule
+          ? "It has a modelling rule, but no type above it."
+          : "It has no modelling rule, so it is a plain instance.",
       ],
       data: { type: type.key },
     });

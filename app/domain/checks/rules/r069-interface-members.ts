@@ -1,6 +1,10 @@
 import type { Node } from "../../address-space/node";
 import { formatQualifiedName } from "../../address-space/qualified-name";
-import { StandardModellingRule as M, StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
+import {
+  StandardModellingRule as M,
+  StandardReferenceType as R,
+  StandardType as T,
+} from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import type { ReportFunction } from "../finding";
 import { findModellingRule, findTypeDefinition, ofType } from "../lookups";
@@ -21,7 +25,13 @@ export const r069: NodeRule = {
     if (isPlaceholder(findModellingRule(ctx, node.key))) return;
     for (const { target } of ofType(ctx, ctx.otherEdges(node.key), R.HasInterface)) {
       const members = [...getMembers(ctx, target).values()];
-      checkMembers({ owner: node, applied: target, isType: node.nodeClass === "ObjectType", path: [] }, node, members, ctx, report);
+      checkMembers(
+        { owner: node, applied: target, isType: node.nodeClass === "ObjectType", path: [] },
+        node,
+        members,
+        ctx,
+        report,
+      );
     }
   },
   examples: {
@@ -49,9 +59,20 @@ export const r069: NodeRule = {
   },
 };
 
-type Walk = { readonly owner: Node; readonly applied: Node["key"]; readonly isType: boolean; readonly path: readonly string[] };
+type Walk = {
+  readonly owner: Node;
+  readonly applied: Node["key"];
+  readonly isType: boolean;
+  readonly path: readonly string[];
+};
 
-function checkMembers(walk: Walk, at: Node, members: readonly Member[], ctx: CheckContext, report: ReportFunction): void {
+function checkMembers(
+  walk: Walk,
+  at: Node,
+  members: readonly Member[],
+  ctx: CheckContext,
+  report: ReportFunction,
+): void {
   if (walk.path.length > MAX_DEPTH) return;
   for (const member of members) {
     const name = formatQualifiedName(member.node.browseName);
@@ -59,9 +80,11 @@ function checkMembers(walk: Walk, at: Node, members: readonly Member[], ctx: Che
     const path = [...walk.path, member.node.browseName.name];
     if (member.rule === M.Mandatory && !isGivenByType(walk, at, name, ctx)) {
       if (!found) reportMissing(walk, path, member, ctx, report);
-      else if (walk.isType && findModellingRule(ctx, found.key) !== M.Mandatory) reportRule(walk, path, member, found, ctx, report);
+      else if (walk.isType && findModellingRule(ctx, found.key) !== M.Mandatory)
+        reportRule(walk, path, member, found, ctx, report);
     }
-    if (found && !isPlaceholder(member.rule)) checkMembers({ ...walk, path }, found, listOwnMembers(ctx, member.node.key), ctx, report);
+    if (found && !isPlaceholder(member.rule))
+      checkMembers({ ...walk, path }, found, listOwnMembers(ctx, member.node.key), ctx, report);
   }
 }
 
@@ -70,7 +93,9 @@ const MAX_DEPTH = 20;
 function findSimilar(walk: Walk, at: Node, name: string, member: Member, ctx: CheckContext): Node | undefined {
   const inherited = at.nodeClass === "ObjectType" ? getMembers(ctx, at.key).get(name)?.node : undefined;
   if (inherited?.nodeClass === member.node.nodeClass) return inherited;
-  return getChildren(ctx, at.key).get(name)?.find((child) => child.nodeClass === member.node.nodeClass);
+  return getChildren(ctx, at.key)
+    .get(name)
+    ?.find((child) => child.nodeClass === member.node.nodeClass);
 }
 
 /** A nested member that the type of its parent already makes Mandatory comes with every instance. */
@@ -80,7 +105,13 @@ function isGivenByType(walk: Walk, at: Node, name: string, ctx: CheckContext): b
   return type !== undefined && getMembers(ctx, type).get(name)?.rule === M.Mandatory;
 }
 
-function reportMissing(walk: Walk, path: readonly string[], member: Member, ctx: CheckContext, report: ReportFunction): void {
+function reportMissing(
+  walk: Walk,
+  path: readonly string[],
+  member: Member,
+  ctx: CheckContext,
+  report: ReportFunction,
+): void {
   report({
     message: `${walk.owner.browseName.name} has no ${path.join("/")}, which the Interface ${ctx.nameOf(walk.applied)} makes Mandatory.`,
     facts: [
@@ -91,7 +122,14 @@ function reportMissing(walk: Walk, path: readonly string[], member: Member, ctx:
   });
 }
 
-function reportRule(walk: Walk, path: readonly string[], member: Member, found: Node, ctx: CheckContext, report: ReportFunction): void {
+function reportRule(
+  walk: Walk,
+  path: readonly string[],
+  member: Member,
+  found: Node,
+  ctx: CheckContext,
+  report: ReportFunction,
+): void {
   const rule = findModellingRule(ctx, found.key);
   report({
     message: `${path.join("/")} of ${walk.owner.browseName.name} is not Mandatory, as the Interface ${ctx.nameOf(walk.applied)} asks.`,

@@ -22,7 +22,9 @@ export const r075: NodeRule = {
     if (findModellingRule(ctx, node.key) !== undefined || isMeantForType(node, ctx)) return;
     const owner = ofType(ctx, ctx.parentEdges(node.key), R.Aggregates).find(({ source }) => {
       const parent = ctx.node(source);
-      return parent?.nodeClass === "ObjectType" || parent?.nodeClass === "VariableType" || isInstanceDeclaration(ctx, source);
+      return (
+        parent?.nodeClass === "ObjectType" || parent?.nodeClass === "VariableType" || isInstanceDeclaration(ctx, source)
+      );
     });
     if (!owner) return;
     report({
@@ -32,14 +34,18 @@ export const r075: NodeRule = {
     });
   },
   examples: {
-    good: { text: "A member that instances get.", build: (m) => m.variable("Speed", { parent: m.objectType("PumpType"), rule: "Mandatory" }) },
+    good: {
+      text: "A member that instances get.",
+      build: (m) => m.variable("Speed", { parent: m.objectType("PumpType"), rule: "Mandatory" }),
+    },
     bad: { text: "The rule was forgotten.", build: (m) => m.variable("Speed", { parent: m.objectType("PumpType") }) },
   },
 };
 
 function isMeantForType(node: Node, ctx: CheckContext): boolean {
   const { browseName } = node;
-  if (browseName.name === "DefaultInstanceBrowseName" && browseName.namespaceUri === "http://opcfoundation.org/UA/") return true;
+  if (browseName.name === "DefaultInstanceBrowseName" && browseName.namespaceUri === "http://opcfoundation.org/UA/")
+    return true;
   const type = findTypeDefinition(ctx, node.key);
   if (type === undefined) return false;
   return [StateType, TransitionType, T.DataTypeEncodingType].some((t) => isKindOf(ctx, type, t));

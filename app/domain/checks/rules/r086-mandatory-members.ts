@@ -69,7 +69,8 @@ function checkBelow(walk: Walk, at: Node, members: readonly Member[], path: read
     const child = children.get(name)?.find((c) => c.nodeClass === member.node.nodeClass);
     const memberPath = [...path, member.node.browseName.name];
     if (!child) {
-      if (member.rule === M.Mandatory && !isToldByChild(walk, at, name, path)) reportMissing(walk, at, member, memberPath);
+      if (member.rule === M.Mandatory && !isToldByChild(walk, at, name, path))
+        reportMissing(walk, at, member, memberPath);
     } else if (child.key !== member.node.key) {
       checkBelow(walk, child, listOwnMembers(ctx, member.node.key), memberPath);
     }
@@ -83,7 +84,12 @@ function isToldByChild({ ctx }: Walk, at: Node, name: string, path: readonly str
   return type !== undefined && getMembers(ctx, type).get(name)?.rule === M.Mandatory;
 }
 
-function reportMissing({ instance, type, isDeclaration, report, ctx }: Walk, at: Node, member: Member, path: readonly string[]): void {
+function reportMissing(
+  { instance, type, isDeclaration, report, ctx }: Walk,
+  at: Node,
+  member: Member,
+  path: readonly string[],
+): void {
   const isHint = isDeclaration || isInstanceDeclaration(ctx, at.key);
   report({
     key: ctx.isOwn(at.key) ? at.key : instance.key,

@@ -17,13 +17,17 @@ export const r090: NodeRule = {
   why: "A client that knows the type expects a Variable of a known type at this path and finds something else.",
   check(node, ctx, report) {
     const type = findTypeDefinition(ctx, node.key);
-    const sources = [...(type === undefined ? [] : [type, ...listInterfaces(ctx, type)]), ...listInterfaces(ctx, node.key)];
+    const sources = [
+      ...(type === undefined ? [] : [type, ...listInterfaces(ctx, type)]),
+      ...listInterfaces(ctx, node.key),
+    ];
     const children = getChildren(ctx, node.key);
     const done = new Set<string>();
     for (const source of sources) {
       for (const [name, member] of getMembers(ctx, source)) {
         const same = children.get(name);
-        if (!same || !isNaming(member.rule) || done.has(name) || same.some((child) => isSimilar(child, member, ctx))) continue;
+        if (!same || !isNaming(member.rule) || done.has(name) || same.some((child) => isSimilar(child, member, ctx)))
+          continue;
         done.add(name);
         const child = same.find((c) => ctx.isOwn(c.key)) ?? same[0];
         if (!child) continue;

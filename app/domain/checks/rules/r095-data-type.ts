@@ -9,7 +9,8 @@ export const r095: NodeRule = {
   clause: `${clause(3, "§5.6.2, Table 13, §5.6.5, Table 14, §5.8.3")}, UANodeSet.xsd`,
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  condition: "The DataType is not null and names a DataType; left out it is BaseDataType. Abstract DataTypes are legal.",
+  condition:
+    "The DataType is not null and names a DataType; left out it is BaseDataType. Abstract DataTypes are legal.",
   why: "Clients cannot decode or show a value whose type they cannot find, and servers refuse to load the Variable.",
   check(node, ctx, report) {
     if (!hasValueAttributes(node) || node.dataType === undefined) return;
@@ -30,8 +31,16 @@ export const r095: NodeRule = {
     if (dataType !== standardKey(0) && namespace !== undefined && !ctx.isNamespaceLoaded(namespace)) return;
     report({
       attribute,
-      message: dataType === standardKey(0) ? `The DataType of ${name} is null.` : `The DataType ${dataType} of ${name} does not exist.`,
-      facts: [`DataType attribute: ${dataType}`, namespace === undefined ? "The text is no NodeId." : `The namespace ${namespace} is loaded and has no such node.`],
+      message:
+        dataType === standardKey(0)
+          ? `The DataType of ${name} is null.`
+          : `The DataType ${dataType} of ${name} does not exist.`,
+      facts: [
+        `DataType attribute: ${dataType}`,
+        namespace === undefined
+          ? "The text is no NodeId."
+          : `The namespace ${namespace} is loaded and has no such node.`,
+      ],
     });
   },
   examples: {

@@ -19,7 +19,13 @@ export const r097: NodeRule = {
     const dataType = getDataType(node);
     for (const { base, role } of listValueBases(node, ctx)) {
       const wider = getDataType(base);
-      if (wider === D.BaseDataType || !ctx.node(wider) || isKindOf(ctx, dataType, wider) || !isChainLoaded(ctx, dataType)) continue;
+      if (
+        wider === D.BaseDataType ||
+        !ctx.node(wider) ||
+        isKindOf(ctx, dataType, wider) ||
+        !isChainLoaded(ctx, dataType)
+      )
+        continue;
       report({
         attribute: "dataType",
         message: `The DataType ${ctx.nameOf(dataType)} of ${node.browseName.name} does not fit ${ctx.nameOf(wider)} of ${role} ${base.browseName.name}.`,

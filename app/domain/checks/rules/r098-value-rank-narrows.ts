@@ -18,7 +18,11 @@ export const r098: NodeRule = {
     const attribute = "valueRank";
     const written = node.valueRank === undefined ? " (the attribute is left out)" : "";
     if (rank < -3 || !Number.isInteger(rank)) {
-      report({ attribute, message: `The ValueRank ${formatRank(rank)} of ${node.browseName.name} does not exist.`, facts: [`ValueRank: ${formatRank(rank)}`, "Allowed: −3 and above"] });
+      report({
+        attribute,
+        message: `The ValueRank ${formatRank(rank)} of ${node.browseName.name} does not exist.`,
+        facts: [`ValueRank: ${formatRank(rank)}`, "Allowed: −3 and above"],
+      });
       return;
     }
     for (const { base, role } of listValueBases(node, ctx)) {
@@ -35,11 +39,21 @@ export const r098: NodeRule = {
   examples: {
     good: {
       text: "A scalar of a VariableType that allows anything.",
-      build: (m) => m.variable("Speed", { parent: m.object("Pump1"), type: m.variableType("LevelType", { valueRank: -2 }), valueRank: -1 }),
+      build: (m) =>
+        m.variable("Speed", {
+          parent: m.object("Pump1"),
+          type: m.variableType("LevelType", { valueRank: -2 }),
+          valueRank: -1,
+        }),
     },
     bad: {
       text: "A scalar of a VariableType for arrays.",
-      build: (m) => m.variable("Levels", { parent: m.object("Pump1"), type: m.variableType("LevelsType", { valueRank: 1 }), valueRank: -1 }),
+      build: (m) =>
+        m.variable("Levels", {
+          parent: m.object("Pump1"),
+          type: m.variableType("LevelsType", { valueRank: 1 }),
+          valueRank: -1,
+        }),
     },
   },
 };

@@ -28,7 +28,10 @@ export const r099: NodeRule = {
         rank > 0
           ? `ArrayDimensions of ${node.browseName.name} has ${count(entries, "entry", "entries")} for ${count(rank, "dimension")}.`
           : `ArrayDimensions of ${node.browseName.name} is given, but the ValueRank is ${shown}.`,
-      facts: [`ArrayDimensions: ${text}`, `ValueRank: ${shown}${node.valueRank === undefined ? " (the attribute is left out)" : ""}`],
+      facts: [
+        `ArrayDimensions: ${text}`,
+        `ValueRank: ${shown}${node.valueRank === undefined ? " (the attribute is left out)" : ""}`,
+      ],
       data: { rank },
     });
   },

@@ -1,6 +1,6 @@
 import { getDataType, getValueRank, hasValueAttributes } from "../../address-space/node";
 import { StandardDataType as D } from "../../address-space/standard-ids";
-import { findChild, type XmlElement } from "../../core/xml-tree";
+import { findChild, type ValueElement } from "../value-element";
 import { list, scalar } from "../example-values";
 import { clause, type NodeRule } from "../rule";
 import { findValueRoot, isNil, listItemType } from "../value-xml";
@@ -23,7 +23,10 @@ export const r101: NodeRule = {
     if (rank === -1 && getDataType(node) === D.BaseDataType) return;
     const shape = findShape(root);
     const shown = String(rank).replace("-", "−");
-    const facts = [`ValueRank: ${shown}${node.valueRank === undefined ? " (the attribute is left out)" : ""}`, `Value: ${describeShape(root, shape)}`];
+    const facts = [
+      `ValueRank: ${shown}${node.valueRank === undefined ? " (the attribute is left out)" : ""}`,
+      `Value: ${describeShape(root, shape)}`,
+    ];
     if (!isAllowed(shape, rank, root)) {
       report({
         attribute: "value",
@@ -45,23 +48,35 @@ export const r101: NodeRule = {
   examples: {
     good: {
       text: "A list for one dimension.",
-      build: (m) => m.variable("Names", { parent: m.object("Pump1"), dataType: D.String, valueRank: 1, value: list("String", "a", "b") }),
+      build: (m) =>
+        m.variable("Names", {
+          parent: m.object("Pump1"),
+          dataType: D.String,
+          valueRank: 1,
+          value: list("String", "a", "b"),
+        }),
     },
     bad: {
       text: "A single text for one dimension.",
-      build: (m) => m.variable("Names", { parent: m.object("Pump1"), dataType: D.String, valueRank: 1, value: scalar("String", "a") }),
+      build: (m) =>
+        m.variable("Names", {
+          parent: m.object("Pump1"),
+          dataType: D.String,
+          valueRank: 1,
+          value: scalar("String", "a"),
+        }),
     },
   },
 };
 
 type Shape = "scalar" | "list" | "matrix";
 
-function findShape(root: XmlElement): Shape {
+function findShape(root: ValueElement): Shape {
   if (root.name === "Matrix") return "matrix";
   return listItemType(root) === undefined ? "scalar" : "list";
 }
 
-function isAllowed(shape: Shape, rank: number, root: XmlElement): boolean {
+function isAllowed(shape: Shape, rank: number, root: ValueElement): boolean {
   const isEmptyList = shape === "list" && root.children.length === 0;
   if (rank === -2) return true;
   if (rank === -1) return shape === "scalar";
@@ -71,11 +86,11 @@ function isAllowed(shape: Shape, rank: number, root: XmlElement): boolean {
   return rank === 1 ? shape === "list" : shape === "matrix";
 }
 
-function listSizes(root: XmlElement): number[] {
+function listSizes(root: ValueElement): number[] {
   return (findChild(root, "Dimensions")?.children ?? []).map((d) => Number(d.text.trim()));
 }
 
-function describeShape(root: XmlElement, shape: Shape): string {
+function describeShape(root: ValueElement, shape: Shape): string {
   if (shape === "matrix") return "a Matrix";
   return shape === "list" ? `a list (${root.name}, ${root.children.length} entries)` : `a single ${root.name}`;
 }

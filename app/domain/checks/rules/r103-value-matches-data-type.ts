@@ -1,7 +1,7 @@
 import { getDataType, hasValueAttributes, type VariableNode, type VariableTypeNode } from "../../address-space/node";
 import { parseNodeId, type NodeKey } from "../../address-space/node-id";
 import { StandardDataType as D, StandardReferenceType as R } from "../../address-space/standard-ids";
-import { findChild, type XmlElement } from "../../core/xml-tree";
+import { findChild, type ValueElement } from "../value-element";
 import { isBuiltInText } from "../built-in-text";
 import type { CheckContext } from "../check-context";
 import { findAllowedBuiltIns } from "../data-types";
@@ -29,13 +29,20 @@ export const r103: NodeRule = {
     const allowed = findAllowedBuiltIns(ctx, getDataType(node));
     if (allowed === undefined) return;
     const elements = listElements(root);
-    const wrong = allowed === "any" ? undefined : elements.find((e) => !allowed.has(e.name) && !(e.name === "Variant" && allowed.size > 1));
+    const wrong =
+      allowed === "any"
+        ? undefined
+        : elements.find((e) => !allowed.has(e.name) && !(e.name === "Variant" && allowed.size > 1));
     if (wrong && allowed !== "any") {
       const dataType = ctx.nameOf(getDataType(node));
       report({
         attribute: "value",
         message: `The Value of ${node.browseName.name} is ${wrong.name}, but values of ${dataType} are ${either([...allowed])}.`,
-        facts: [`DataType: ${ctx.describe(getDataType(node))}`, `Element in Value: ${root.name}`, `Built-in type of the DataType: ${either([...allowed])}`],
+        facts: [
+          `DataType: ${ctx.describe(getDataType(node))}`,
+          `Element in Value: ${root.name}`,
+          `Built-in type of the DataType: ${either([...allowed])}`,
+        ],
         data: { found: wrong.name },
       });
       return;
@@ -53,24 +60,31 @@ export const r103: NodeRule = {
   examples: {
     good: {
       text: "A Double for Double.",
-      build: (m) => m.variable("Speed", { parent: m.object("Pump1"), dataType: D.Double, value: scalar("Double", 1.5) }),
+      build: (m) =>
+        m.variable("Speed", { parent: m.object("Pump1"), dataType: D.Double, value: scalar("Double", 1.5) }),
     },
     bad: {
       text: "A text for Double.",
-      build: (m) => m.variable("Speed", { parent: m.object("Pump1"), dataType: D.Double, value: scalar("String", "1.5") }),
+      build: (m) =>
+        m.variable("Speed", { parent: m.object("Pump1"), dataType: D.Double, value: scalar("String", "1.5") }),
     },
   },
 };
 
 /** The single values: the element itself, the items of a list, the elements of a Matrix. An empty list has a type too. */
-function listElements(root: XmlElement): readonly XmlElement[] {
+function listElements(root: ValueElement): readonly ValueElement[] {
   if (root.name === "Matrix") return findChild(root, "Elements")?.children ?? [];
   const item = listItemType(root);
   if (item === undefined) return [root];
   return root.children.length > 0 ? root.children : [];
 }
 
-function checkTypeIds(node: VariableNode | VariableTypeNode, elements: readonly XmlElement[], ctx: CheckContext, report: ReportFunction): void {
+function checkTypeIds(
+  node: VariableNode | VariableTypeNode,
+  elements: readonly ValueElement[],
+  ctx: CheckContext,
+  report: ReportFunction,
+): void {
   const dataType = getDataType(node);
   if (dataType === D.BaseDataType || !isKindOf(ctx, dataType, D.Structure)) return;
   const seen = new Set<string>();

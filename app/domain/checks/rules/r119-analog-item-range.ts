@@ -44,6 +44,9 @@ export const r119: NodeRule = {
         return undefined;
       },
     },
-    bad: { text: "No EURange.", build: (m) => m.variable("Level", { parent: m.object("Tank1"), type: T.AnalogItemType }) },
+    bad: {
+      text: "No EURange.",
+      build: (m) => m.variable("Level", { parent: m.object("Tank1"), type: T.AnalogItemType }),
+    },
   },
 };

@@ -16,7 +16,8 @@ export const r120: NodeRule = {
   why: "A number without its unit is read wrongly sooner or later: bar for pascal, litres for cubic metres.",
   check(node, ctx, report) {
     const type = findTypeDefinition(ctx, node.key);
-    if (type === undefined || !(isKindOf(ctx, type, T.AnalogUnitType) || isKindOf(ctx, type, T.AnalogUnitRangeType))) return;
+    if (type === undefined || !(isKindOf(ctx, type, T.AnalogUnitType) || isKindOf(ctx, type, T.AnalogUnitRangeType)))
+      return;
     const property = findStandardProperty(ctx, node.key, "EngineeringUnits");
     const isDeclared = findTypeAbove(ctx, node.key) !== undefined;
     if (!property) {
@@ -44,6 +45,9 @@ export const r120: NodeRule = {
         return undefined;
       },
     },
-    bad: { text: "No unit.", build: (m) => m.variable("Temperature", { parent: m.object("Tank1"), type: T.AnalogUnitType }) },
+    bad: {
+      text: "No unit.",
+      build: (m) => m.variable("Temperature", { parent: m.object("Tank1"), type: T.AnalogUnitType }),
+    },
   },
 };

@@ -32,7 +32,11 @@ export const r123: NodeRule = {
       ...(verdict === "warning" ? { severity: "warning" } : {}),
       attribute: "dataType",
       message: `${node.browseName.name} has EngineeringUnits, but its DataType ${ctx.nameOf(dataType)} is not a number.`,
-      facts: [`DataType: ${ctx.describe(dataType)}`, `Property: ${ctx.describe(property.key)}`, "Units are for DataTypes below Number."],
+      facts: [
+        `DataType: ${ctx.describe(dataType)}`,
+        `Property: ${ctx.describe(property.key)}`,
+        "Units are for DataTypes below Number.",
+      ],
       data: { property: property.key },
     });
   },
@@ -62,5 +66,7 @@ function judge(ctx: CheckContext, dataType: NodeKey): "fits" | "warning" | "erro
   if (!isKindOf(ctx, dataType, D.Structure)) return "error";
   const fields = listFields(ctx, dataType);
   const isKnown = fields.every((f) => isChainLoaded(ctx, getDataType(f)));
-  return !isKnown || (fields.length > 0 && fields.every((f) => isNumeric(ctx, getDataType(f)) === true)) ? "fits" : "warning";
+  return !isKnown || (fields.length > 0 && fields.every((f) => isNumeric(ctx, getDataType(f)) === true))
+    ? "fits"
+    : "warning";
 }

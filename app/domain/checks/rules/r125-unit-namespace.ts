@@ -36,14 +36,27 @@ export const r125: NodeRule = {
     }
   },
   examples: {
-    good: { text: "The exact URI.", build: (m) => m.property("0:EngineeringUnits", { parent: m.variable("T", { parent: m.object("Tank1"), type: T.AnalogUnitType }), dataType: D.EUInformation, value: CELSIUS }) },
+    good: {
+      text: "The exact URI.",
+      build: (m) =>
+        m.property("0:EngineeringUnits", {
+          parent: m.variable("T", { parent: m.object("Tank1"), type: T.AnalogUnitType }),
+          dataType: D.EUInformation,
+          value: CELSIUS,
+        }),
+    },
     bad: {
       text: "https instead of http.",
       build: (m) =>
         m.property("0:EngineeringUnits", {
           parent: m.variable("T", { parent: m.object("Tank1"), type: T.AnalogUnitType }),
           dataType: D.EUInformation,
-          value: unit({ uri: UNECE_URI.replace("http:", "https:"), unitId: 4408652, symbol: "°C", name: "degree Celsius" }),
+          value: unit({
+            uri: UNECE_URI.replace("http:", "https:"),
+            unitId: 4408652,
+            symbol: "°C",
+            name: "degree Celsius",
+          }),
         }),
     },
   },

@@ -18,14 +18,27 @@ export const r126: NodeRule = {
     if (!hasValueAttributes(node)) return;
     for (const value of listUnits(node.value)) {
       const unitId = Number(value.unitId);
-      const facts = [`UnitId: ${value.unitId || "left out"}`, `DisplayName: ${value.symbol || "none"}`, `NamespaceUri: ${value.uri}`];
+      const facts = [
+        `UnitId: ${value.unitId || "left out"}`,
+        `DisplayName: ${value.symbol || "none"}`,
+        `NamespaceUri: ${value.uri}`,
+      ];
       const name = node.browseName.name;
       if (value.uri === IEC_URI && !(Number.isInteger(unitId) && unitId > 0 && unitId < 2 ** 30)) {
-        report({ attribute: "value", message: `The unitId ${value.unitId || "0"} of ${name} is no IEC 62720 code.`, facts });
+        report({
+          attribute: "value",
+          message: `The unitId ${value.unitId || "0"} of ${name} is no IEC 62720 code.`,
+          facts,
+        });
       }
       if (!isUnece(value)) continue;
       if (unitId === -1) {
-        report({ severity: "warning", attribute: "value", message: `The unit of ${name} has the unitId −1, “not available”.`, facts });
+        report({
+          severity: "warning",
+          attribute: "value",
+          message: `The unit of ${name} has the unitId −1, “not available”.`,
+          facts,
+        });
       } else if (value.unitId === "" || decodeUnitId(unitId) === undefined) {
         report({
           attribute: "value",
@@ -37,7 +50,15 @@ export const r126: NodeRule = {
     }
   },
   examples: {
-    good: { text: "4408652 is CEL.", build: (m) => m.property("0:EngineeringUnits", { parent: m.variable("T", { parent: m.object("Tank1"), type: T.AnalogUnitType }), dataType: D.EUInformation, value: CELSIUS }) },
+    good: {
+      text: "4408652 is CEL.",
+      build: (m) =>
+        m.property("0:EngineeringUnits", {
+          parent: m.variable("T", { parent: m.object("Tank1"), type: T.AnalogUnitType }),
+          dataType: D.EUInformation,
+          value: CELSIUS,
+        }),
+    },
     bad: {
       text: "A number of another system.",
       build: (m) =>

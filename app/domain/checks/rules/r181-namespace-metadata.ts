@@ -35,7 +35,10 @@ export const r181: ModelRule = {
         report({
           attribute: "models",
           message: `The model ${model.modelUri} has no namespace metadata object.`,
-          facts: ["Objects of NamespaceMetadataType (i=11616) with this NamespaceUri: 0", `ModelUri: ${model.modelUri}`],
+          facts: [
+            "Objects of NamespaceMetadataType (i=11616) with this NamespaceUri: 0",
+            `ModelUri: ${model.modelUri}`,
+          ],
           data: { modelUri: model.modelUri },
         });
       }
@@ -87,7 +90,10 @@ function checkMetadata(node: Node, model: ModelEntry, ctx: CheckContext, report:
       key,
       severity: "warning",
       message: "The namespace metadata object does not stand below Server/Namespaces.",
-      facts: [`Asked for: a component of Namespaces (i=11715)`, ...ctx.parentEdges(key).map((e) => `It stands below ${ctx.describe(e.source)}`)],
+      facts: [
+        `Asked for: a component of Namespaces (i=11715)`,
+        ...ctx.parentEdges(key).map((e) => `It stands below ${ctx.describe(e.source)}`),
+      ],
     });
   }
   compareVersion(node, "NamespaceVersion", "Version", model.version, ctx, report);
@@ -138,7 +144,10 @@ function compareDate(node: Node, model: ModelEntry, ctx: CheckContext, report: R
     key: node.key,
     severity: isSameDay ? "hint" : "warning",
     message: `NamespacePublicationDate is ${written || "empty"}, but the model's PublicationDate is ${expected || "not given"}.`,
-    facts: [`NamespacePublicationDate: ${written || "no value"}`, `PublicationDate in the Models table: ${expected || "none"}`],
+    facts: [
+      `NamespacePublicationDate: ${written || "no value"}`,
+      `PublicationDate in the Models table: ${expected || "none"}`,
+    ],
   });
 }
 

@@ -1,0 +1,32 @@
+import { isTypeNode } from "../../address-space/node";
+import { isInstanceDeclaration } from "../lookups";
+import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+
+export const r019: NodeRule = {
+  id: "R019",
+  title: "A Description explains the node",
+  severity: "hint",
+  clause: clause(3, "§5.2.6"),
+  priority: 2,
+  concerns: ALL_CLASSES,
+  condition:
+    "Types, and members that the model names itself, have a Description (the attribute is optional; where present it explains the meaning).",
+  why: "Whoever connects to the machine in five years has nothing else to learn from what “Level2” means.",
+  check(node, ctx, report) {
+    if ((node.description ?? []).some((t) => t.text.trim() !== "")) return;
+    const isOwnName = node.browseName.namespaceUri === node.nodeId.namespaceUri;
+    if (!isOwnName || !(isTypeNode(node) || isInstanceDeclaration(ctx, node.key))) return;
+    report({
+      attribute: "description",
+      message: `${node.browseName.name} has no Description.`,
+      facts: [`NodeClass: ${node.nodeClass}`, "Description: none"],
+    });
+  },
+  examples: {
+    good: {
+      text: "A type that says what it stands for.",
+      build: (m) => m.objectType("TankType", { set: { description: [{ text: "A tank with one level sensor." }] } }),
+    },
+    bad: { text: "A type without a word.", build: (m) => m.objectType("TankType") },
+  },
+};
