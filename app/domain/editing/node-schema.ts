@@ -33,9 +33,9 @@ export const nodeIdSchema: z.ZodType<NodeId> = z
 const qualifiedName = z.strictObject({ namespaceUri: text.min(1), name: text });
 const localizedText = z.strictObject({ locale: text.optional(), text });
 const localizedTexts = z.array(localizedText);
-const xmlText = z.strictObject({ xml: text, prefixes: z.record(z.string(), text).optional() });
-const rolePermission = z.strictObject({ role: nodeKeySchema, permissions: uint32 });
 const otherAttributes = z.record(z.string(), text);
+const xmlText = z.strictObject({ xml: text, prefixes: otherAttributes.optional(), attributes: otherAttributes.optional() });
+const rolePermission = z.strictObject({ role: nodeKeySchema, permissions: uint32 });
 
 const declaredReference = z.strictObject({
   type: nodeKeySchema,
