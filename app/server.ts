@@ -4,7 +4,6 @@ import type { Server } from "node:http";
 import { createServer } from "node:net";
 import { join } from "node:path";
 import { pathToFileURL } from "node:url";
-import { createRequestHandler } from "@react-router/express";
 import express, { type ErrorRequestHandler, type RequestHandler } from "express";
 import type { ServerBuild } from "react-router";
 import { CLIENT_ADDRESS_HEADER } from "./utils/client-address.server";
@@ -86,7 +85,9 @@ const answerError: ErrorRequestHandler = (error: { status?: number; message?: st
   response.status(status).type("text/plain").send(status === 500 ? "Something went wrong on our side." : "The request cannot be understood.");
 };
 
-function createApplication(root: string, build: ApplicationBuild): express.Express {
+async function createApplication(root: string, build: ApplicationBuild): Promise<express.Express> {
+  // React looks at NODE_ENV when it is loaded, so what loads it must come after main() has set it.
+  const { createRequestHandler } = await import("@react-router/express");
   const client = join(root, "build", "client");
   const app = express();
   app.disable("x-powered-by");
@@ -125,7 +126,8 @@ async function main(): Promise<void> {
   process.env.NODE_ENV ??= "production";
   const build = await loadApplication(root);
   const { lines } = await build.entry.module.startApplication();
-  const server = createApplication(root, build).listen(port, host, (error?: Error) => {
+  const app = await createApplication(root, build);
+  const server = app.listen(port, host, (error?: Error) => {
     if (error) stopWith(`Port ${port} on ${host} cannot be opened: ${error.message}`);
     for (const line of lines) console.log(line);
     const name = host === "127.0.0.1" || host === "0.0.0.0" || host === "::1" || host === "::" ? "localhost" : host;
