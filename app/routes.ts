@@ -11,6 +11,7 @@ export default [
   route("api/v1/test-servers/:testServerId", "routes/api/test-server.ts"),
   route("live/:testServerId/children", "routes/data/live-children.ts"),
   route("live/:testServerId/node", "routes/data/live-node.ts"),
+  route("live/:testServerId/path", "routes/data/live-path.ts"),
   route("events", "routes/data/events.ts"),
   route("events/topics", "routes/data/event-topics.ts"),
   route("packs/:hash", "routes/data/pack.ts"),
@@ -40,6 +41,8 @@ export default [
     route("models/import", "routes/models.import.tsx"),
     route("library", "routes/library.tsx"),
     route("team", "routes/team.tsx"),
+    route("live", "routes/live.tsx"),
+    route("live/:testServerId", "routes/live.$testServerId.tsx"),
     route("*", "routes/not-found.tsx"),
   ]),
 ] satisfies RouteConfig;

@@ -21,7 +21,8 @@ export async function loader() {
 export async function action({ request }: Route.ActionArgs) {
   const submission = parseWithZod(await request.formData(), { schema });
   if (submission.status !== "success") return data(submission.reply({ hideFields: ["password", "repeat"] }), { status: 400 });
-  const { repeat: _, ...intent } = submission.value;
+  const { code, organizationName, name, email, password } = submission.value;
+  const intent = { code, organizationName, name, email, password };
   const result = await setUpOrganization(request, intent);
   if (!result.ok) {
     const reply = submission.reply({ formErrors: result.problems.map(formatProblem), hideFields: ["password", "repeat"] });

@@ -27,7 +27,7 @@ export const newModelSchema = z.object({
 });
 export type NewModelForm = z.infer<typeof newModelSchema>;
 
-export const modelParticularsSchema = z.object({ name: modelName, version: modelVersion });
+export const modelParticularsSchema = z.object({ name: modelName });
 
 export const importSchema = z.object({
   upload: z.string().max(100),

@@ -4,7 +4,7 @@ import { IconButton, LinkButton } from "~/components/ui/button";
 import { FerruleBadge } from "~/components/notation/ferrule-badge";
 import { cx } from "~/components/ui/cx";
 import { hiddenStepsCookie } from "~/utils/hidden-steps";
-import type { ParkData } from "./park-view";
+import type { ParkData } from "./park-data";
 
 type Step = { title: string; about: string; to: string | undefined; action: string; isDone: boolean };
 

@@ -8,23 +8,13 @@ import { Empty } from "~/components/ui/empty";
 import { Block, Page } from "~/components/ui/page";
 import { Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
 import { TitleBlock } from "~/components/ui/title-block";
-import type { TestServerState } from "~/domain/simulation/test-server-state";
 import type { Park } from "~/services/read-park.server";
 import { formatCount } from "~/utils/format";
 import { MachineTable } from "./machine-table";
 import { FirstSteps } from "./first-steps";
+import type { ParkData } from "./park-data";
 import { TestServerTable } from "./test-server-table";
 import { WaitList } from "./wait-list";
-
-export type ParkData = Park & {
-  readonly testServers: readonly TestServerState[];
-  readonly organizationName: string;
-  readonly userName: string;
-  readonly roles: readonly string[];
-  readonly mayEdit: boolean;
-  readonly showsSteps: boolean;
-  readonly now: string;
-};
 
 const editReason = "asks for the role engineer or administrator";
 
@@ -45,7 +35,7 @@ export function ParkView({ park }: { park: ParkData }) {
               <LinkButton to="/models/import" icon={FileUp}>
                 Import
               </LinkButton>
-              <LinkButton to="/models/new" icon={Plus} tone={models.length === 0 ? "main" : "plain"}>
+              <LinkButton to="/models/new" icon={Plus} >
                 New model
               </LinkButton>
             </>

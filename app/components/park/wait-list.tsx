@@ -2,7 +2,7 @@ import type { ReactNode } from "react";
 import { FindingShape } from "~/components/notation/finding-badge";
 import { LinkButton } from "~/components/ui/button";
 import type { Severity } from "~/domain/core/result";
-import type { ParkData } from "./park-view";
+import type { ParkData } from "./park-data";
 
 type Waiting = { id: string; severity: Severity; title: string; about: ReactNode; to: string; action: string };
 

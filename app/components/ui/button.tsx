@@ -88,7 +88,7 @@ export function IconButton({ icon, label, keys, tone = "bare", size = "medium", 
   );
 }
 
-type LinkButtonProps = LinkProps & { tone?: ButtonTone; size?: ButtonSize; icon?: LucideIcon };
+type LinkButtonProps = LinkProps & { tone?: ButtonTone; size?: ButtonSize; icon?: LucideIcon | undefined };
 
 export function LinkButton({ tone, size, icon, className, children, ...rest }: LinkButtonProps) {
   return (

@@ -1,0 +1,39 @@
+import { useSyncExternalStore } from "react";
+import type { Route } from "./+types/models.$modelId.findings";
+import { requireModelForPage } from "~/auth/require-model.server";
+import { FindingsView } from "~/components/findings/findings-view";
+import { useEditorState, useOpenModel } from "~/components/model/use-model";
+import { Progress } from "~/components/ui/progress";
+
+export async function loader({ request, params }: Route.LoaderArgs) {
+  const { model } = await requireModelForPage(request, params.modelId, "read");
+  return { name: model.name };
+}
+
+export const meta: Route.MetaFunction = ({ data }) => [{ title: `Findings of ${data?.name ?? "the model"} · Ferrule` }];
+
+export default function Findings() {
+  const { workspace, findings } = useOpenModel();
+  const { space } = useEditorState();
+  const found = useSyncExternalStore(findings.subscribe, findings.getState, findings.getState);
+  const mayEdit = workspace.permissions.includes("model.edit");
+  if (!found.isKnown)
+    return (
+      <main id="main" className="grid flex-1 place-content-center p-8">
+        <h1 className="sr-only">Findings</h1>
+        <Progress stage="Loading the required models and checking" className="w-96" />
+      </main>
+    );
+  return (
+    <FindingsView
+      findings={found.findings}
+      ownNodes={space.own.nodes.size}
+      tools={{
+        space,
+        modelId: workspace.model.id,
+        mend: undefined,
+        mendBlockedBy: mayEdit ? undefined : "asks for the role engineer or administrator",
+      }}
+    />
+  );
+}
