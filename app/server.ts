@@ -75,12 +75,13 @@ const addOwnHeaders: RequestHandler = (request, response, next) => {
 };
 
 /** What goes wrong before the router: never a stack trace to the client. */
-const answerError: ErrorRequestHandler = (error: { status?: number; message?: string }, _request, response, next) => {
+const answerError: ErrorRequestHandler = (error: { status?: number; code?: string; message?: string }, _request, response, next) => {
   if (response.headersSent) {
     next(error);
     return;
   }
-  const status = error.status && error.status >= 400 && error.status < 500 ? error.status : 500;
+  const isTheirs = error.code === "ERR_INVALID_URL" || (error.status !== undefined && error.status >= 400 && error.status < 500);
+  const status = isTheirs ? (error.status ?? 400) : 500;
   if (status === 500) console.error(`Ferrule error: ${error.message ?? "unknown"}`);
   response.status(status).type("text/plain").send(status === 500 ? "Something went wrong on our side." : "The request cannot be understood.");
 };
@@ -123,7 +124,7 @@ async function main(): Promise<void> {
   await requireFreePort(port, host);
   if (process.argv.includes("--reset")) resetDemo();
   const root = findProjectRoot();
-  process.env.NODE_ENV ??= "production";
+  process.env.NODE_ENV = "production";
   const build = await loadApplication(root);
   const { lines } = await build.entry.module.startApplication();
   const app = await createApplication(root, build);

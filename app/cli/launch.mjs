@@ -72,6 +72,8 @@ function run(command, args) {
   return new Promise((resolve) => {
     const child = spawn(join(root, "node_modules", ".bin", command), args, {
       cwd: root,
+      // A test run that starts the application must not turn its build into one for tests.
+      env: { ...process.env, NODE_ENV: "production", VITEST: "" },
       stdio: ["ignore", "pipe", "pipe"],
     });
     let output = "";

@@ -34,8 +34,13 @@ export async function requireJson<T extends z.ZodType>(request: Request, schema:
 
 /** The same for a body that may be left out altogether; the schema then judges `{}`. */
 export async function requireOptionalJson<T extends z.ZodType>(request: Request, schema: T): Promise<z.infer<T>> {
-  const isEmpty = request.body === null || request.headers.get("content-length") === "0";
-  return isEmpty ? requireFields(schema, {}) : requireJson(request, schema);
+  return hasNoBody(request) ? requireFields(schema, {}) : requireJson(request, schema);
+}
+
+/** The server's adapter gives every POST a stream, so the headers must tell whether something comes. */
+function hasNoBody(request: Request): boolean {
+  if (request.body === null || request.headers.get("content-length") === "0") return true;
+  return ["content-length", "transfer-encoding", "content-type"].every((name) => !request.headers.has(name));
 }
 
 /** Values after the schema, else 422 with one problem a field. */
