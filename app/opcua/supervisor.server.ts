@@ -31,7 +31,7 @@ export type SupervisorOptions = {
 /** What the page shows of a server before its process runs. */
 export type TestServerSeed = Pick<
   TestServerState,
-  "id" | "organizationId" | "modelId" | "modelName" | "sampleInstances" | "applicationName" | "applicationUri" | "security" | "simulatedQuality" | "tokens"
+  "id" | "organizationId" | "modelId" | "modelName" | "applicationName" | "applicationUri" | "security" | "simulatedQuality" | "tokens"
 >;
 
 export type SupervisorEvent =
@@ -115,6 +115,8 @@ export class Supervisor {
       simulation: null,
       sessions: [],
       problems: [],
+      sampleInstances: [],
+      landingNode: null,
     };
     this.#entries.set(seed.id, { state, log: [], certificate: undefined, child: undefined, startTimer: undefined, gone: Promise.resolve() });
     this.#forgetFinished();
@@ -123,7 +125,7 @@ export class Supervisor {
   }
 
   /** Forks the process of an announced server. Does nothing when it was stopped meanwhile. */
-  launch(message: StartMessage): void {
+  launch(message: StartMessage, content: Pick<TestServerState, "sampleInstances" | "landingNode">): void {
     const entry = this.#entries.get(message.id);
     if (entry?.state.state !== "starting") return;
     const file = this.#options.entry;
@@ -131,7 +133,7 @@ export class Supervisor {
       this.#fail(entry, problem("test-server.not-built", { file }));
       return;
     }
-    this.#update(entry, { stage: "process" });
+    this.#update(entry, { stage: "process", ...content });
     const child = fork(file, [], {
       execArgv: [`--max-old-space-size=${this.#options.maxMemory}`],
       silent: true,

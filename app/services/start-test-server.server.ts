@@ -3,7 +3,9 @@ import { hostname } from "node:os";
 import { join } from "node:path";
 import { z } from "zod";
 import { saveNewTestServer } from "../db/repositories/test-servers.server";
+import { AddressSpace } from "../domain/address-space/address-space";
 import { fail, ok, problem, type Result } from "../domain/core/result";
+import { makeSampleInstances } from "../domain/simulation/make-sample-instances";
 import { planSimulation, type SimulatedVariable } from "../domain/simulation/plan-simulation";
 import type { TestServerState } from "../domain/simulation/test-server-state";
 import type { StartMessage } from "../opcua/messages";
@@ -64,7 +66,6 @@ function makeSeed(model: ModelOfServer, { security, simulatedQuality }: TestServ
     organizationId: model.organizationId,
     modelId: model.id,
     modelName: model.name,
-    sampleInstances: [],
     applicationName: `${model.name} (simulation)`,
     applicationUri: `urn:ferrule:simulation:${model.id}`,
     security: [...new Set(security)],
@@ -78,11 +79,18 @@ async function prepare(seed: TestServerSeed): Promise<void> {
   const working = await loadWorkingModel(seed.modelId);
   if (!working) return supervisor.failStart(seed.id, [problem("test-server.model-gone")]);
   if (working.missing.length > 0) return supervisor.failStart(seed.id, working.missing);
-  const nodeSetFiles = await writeTestServerFiles(getTestServerFolder(seed.id), working, []);
+  const { space, model, layers } = working;
+  const samples = model.kind === "types" ? makeSampleInstances(space) : undefined;
+  const nodeSetFiles = await writeTestServerFiles(getTestServerFolder(seed.id), working, samples ? [samples.layer] : []);
   // Machines of required models are part of what the server shows, so they move too.
-  const team = working.layers.filter((required) => required.from).map((required) => required.layer);
-  const simulation = planSimulation(working.space, [...team, working.space.own]);
-  supervisor.launch(toStartMessage(seed, nodeSetFiles, simulation));
+  const team = layers.filter((required) => required.from).map((required) => required.layer);
+  const simulation = samples
+    ? planSimulation(AddressSpace.of(space.layers, samples.layer), [...team, space.own, samples.layer])
+    : planSimulation(space, [...team, space.own]);
+  supervisor.launch(toStartMessage(seed, nodeSetFiles, simulation), {
+    sampleInstances: samples?.names ?? [],
+    landingNode: (simulation.find(({ motion }) => motion.kind === "sine" || motion.kind === "ramp") ?? simulation[0])?.nodeId ?? null,
+  });
 }
 
 function toStartMessage(seed: TestServerSeed, nodeSetFiles: string[], simulation: readonly SimulatedVariable[]): StartMessage {

@@ -241,7 +241,7 @@ describe("the end of a test server", () => {
 
   it("leaves no process behind when it is stopped while it starts", async () => {
     newSupervisor().announce(makeSeed("early"));
-    supervisor.launch(makeStartMessage(makeSeed("early")));
+    supervisor.launch(makeStartMessage(makeSeed("early")), { sampleInstances: [], landingNode: null });
     const pid = supervisor.getPid("early") ?? 0;
     await supervisor.stop("early");
     expect(() => process.kill(pid, 0)).toThrow();

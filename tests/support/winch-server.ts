@@ -32,7 +32,6 @@ export function makeSeed(id: string, security: TestServerSeed["security"] = ["ba
     organizationId: "merrow",
     modelId: "winch",
     modelName: "Winch",
-    sampleInstances: [],
     applicationName: "Winch (simulation)",
     applicationUri: "urn:ferrule:simulation:winch",
     security,
@@ -55,7 +54,11 @@ export function makeStartMessage(seed: TestServerSeed, change: Partial<StartMess
     password: seed.tokens.password,
     simulatedQuality: seed.simulatedQuality,
     nodeSetFiles: [nodesets.standard, winchFile],
-    simulation: planWinch().map((entry) => ({ ...entry, dimensions: [...entry.dimensions], motion: copyMotion(entry.motion) })),
+    simulation: planWinch().map((entry) => ({
+      ...entry,
+      dimensions: [...entry.dimensions],
+      motion: copyMotion(entry.motion),
+    })),
     maxSessions: 20,
     ...change,
   };
@@ -66,9 +69,13 @@ function copyMotion(motion: SimulatedVariable["motion"]): StartMessage["simulati
 }
 
 /** Starts and waits for running or failed, at most 40 s. */
-export async function startWinch(supervisor: Supervisor, seed: TestServerSeed, change: Partial<StartMessage> = {}): Promise<TestServerState> {
+export async function startWinch(
+  supervisor: Supervisor,
+  seed: TestServerSeed,
+  change: Partial<StartMessage> = {},
+): Promise<TestServerState> {
   supervisor.announce(seed);
-  supervisor.launch(makeStartMessage(seed, change));
+  supervisor.launch(makeStartMessage(seed, change), { sampleInstances: [], landingNode: null });
   return waitFor(() => {
     const state = supervisor.get(seed.id);
     return state && state.state !== "starting" ? state : undefined;

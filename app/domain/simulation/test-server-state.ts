@@ -54,6 +54,8 @@ export type TestServerState = {
   readonly endpointUrl: string | null;
   /** Names of instances that exist on the test server only, one of each type, because a model of types has none to watch. */
   readonly sampleInstances: readonly string[];
+  /** The node that Live opens at, `nsu=`: the first that moves. */
+  readonly landingNode: string | null;
   readonly applicationName: string;
   readonly applicationUri: string;
   readonly security: readonly TestServerSecurity[];
