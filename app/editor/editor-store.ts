@@ -1,0 +1,321 @@
+/**
+ * The working state of a model in one window, and its way to the server.
+ *
+ * Two states are kept. *Confirmed* is what the server has said: the pack, then every transaction in the order of its
+ * sequence numbers, own and foreign alike. *Shown* is confirmed with the pending edits of this window on top; an edit is
+ * applied there at once and sent in the background, one request at a time. A foreign transaction moves the confirmed
+ * state on and the pending edits are rebased; one that cannot be kept leaves the queue and is told with the edit that it
+ * met. The server answers the same way as the rebase here, so what passes here passes there. While the server cannot be
+ * reached edits queue; a resend carries the same numbers, so that nothing is applied twice.
+ *
+ * The store knows no React, network or clock: requests go through SyncTransport, waiting through Scheduler.
+ */
+import type { AddressSpace } from "../domain/address-space/address-space";
+import { fail, ok, type Problem, type Result } from "../domain/core/result";
+import { BlockAllocator, type IdBlock, type NodeIdAllocator } from "../domain/editing/allocate-node-id";
+import { applyOperations } from "../domain/editing/apply-operation";
+import { EMPTY_HISTORY, forget, recordForeign, recordOwn, redo, undo, type History, type HistoryStep } from "../domain/editing/history";
+import { applyWithInverse, type Applied } from "../domain/editing/invert-operation";
+import type { Operation, Transaction } from "../domain/editing/operation";
+import { rebase, type RefusedEdit } from "../domain/editing/rebase";
+import type { OutgoingTransaction, PostOutcome, Scheduler, SyncTransport } from "./sync-transport";
+
+/** `blocked`: signed out, or the right to edit was taken away; `offline`: the server does not answer, edits queue. */
+export type SyncState = "saved" | "saving" | "offline" | "blocked";
+
+export type EditorState = {
+  readonly space: AddressSpace;
+  /** Sequence number of the confirmed state. */
+  readonly seq: number;
+  readonly pendingCount: number;
+  readonly sync: SyncState;
+  /** ISO 8601 time of the last acknowledged edit of this window. */
+  readonly savedAt: string | undefined;
+  readonly undoLabel: string | undefined;
+  readonly redoLabel: string | undefined;
+};
+
+export type EditorOptions = {
+  readonly space: AddressSpace;
+  readonly seq: number;
+  readonly clientId: string;
+  /** False: nothing is leased or sent, the window only follows. */
+  readonly canEdit: boolean;
+  readonly transport: SyncTransport;
+  readonly schedule: Scheduler;
+  /** Edits of an earlier page of this window that were not acknowledged, and ids that it did not use. */
+  readonly restored?: { readonly pending: readonly OutgoingTransaction[]; readonly blocks: readonly IdBlock[] };
+  /** Told of edits that could not be kept. */
+  readonly onRefused?: (refused: readonly RefusedEdit<OutgoingTransaction>[]) => void;
+  /** Told of each foreign transaction after it was applied. */
+  readonly onForeign?: (transaction: Transaction) => void;
+};
+
+const MOST_SENT = 100;
+const RETRY_DELAYS = [500, 1000, 2000, 4000, 8000];
+const LEASE_BELOW = 400;
+
+export class EditorStore {
+  readonly clientId: string;
+  readonly allocator: NodeIdAllocator;
+  readonly #options: EditorOptions;
+  readonly #blocks: BlockAllocator;
+  readonly #listeners = new Set<() => void>();
+  /** Foreign transactions that came before the one they follow. */
+  readonly #early = new Map<number, Transaction>();
+  #confirmed: AddressSpace;
+  #seq: number;
+  #shown: AddressSpace;
+  #pending: readonly OutgoingTransaction[] = [];
+  #history: History = EMPTY_HISTORY;
+  #nextClientSeq = 1;
+  #savedAt: string | undefined;
+  #sync: SyncState = "saved";
+  #state: EditorState;
+  #isSending = false;
+  #isCatchingUp = false;
+  #isLeasing = false;
+  #isDisposed = false;
+  #attempt = 0;
+  #cancelRetry: (() => void) | undefined;
+
+  constructor(options: EditorOptions) {
+    this.#options = options;
+    this.clientId = options.clientId;
+    this.#confirmed = options.space;
+    this.#shown = options.space;
+    this.#seq = options.seq;
+    this.#blocks = BlockAllocator.forModel(() => this.#shown, options.restored?.blocks ?? []);
+    this.allocator = { allocate: (nodeClass) => this.#allocate(nodeClass) };
+    this.#state = this.#makeState();
+    if (options.canEdit) this.#restore(options.restored?.pending ?? []);
+    void this.#lease();
+  }
+
+  readonly getState = (): EditorState => this.#state;
+
+  readonly subscribe = (listener: () => void): (() => void) => {
+    this.#listeners.add(listener);
+    return () => this.#listeners.delete(listener);
+  };
+
+  /** What a reload of the page needs to go on: pending edits and unused ids. */
+  listUnsaved(): { readonly pending: readonly OutgoingTransaction[]; readonly blocks: readonly IdBlock[] } {
+    return { pending: this.#pending, blocks: this.#blocks.listBlocks() };
+  }
+
+  /** Applies an edit at once and sends it; answers the problems where it cannot be applied. */
+  dispatch(label: string, operations: readonly Operation[]): Result<AddressSpace> {
+    const applied = applyWithInverse(this.#shown, operations);
+    if (!applied.ok) return applied;
+    const clientSeq = this.#enqueue(label, operations, applied.value);
+    this.#history = recordOwn(this.#history, { id: clientSeq, label, operations, inverse: applied.value.inverse });
+    this.#changed();
+    return ok(this.#shown);
+  }
+
+  /** Takes the newest own edit back, as a new transaction. */
+  undo(): Result<AddressSpace> {
+    return this.#step(undo(this.#history, this.#shown, this.#nextClientSeq));
+  }
+
+  redo(): Result<AddressSpace> {
+    return this.#step(redo(this.#history, this.#shown, this.#nextClientSeq));
+  }
+
+  /** A transaction of the event stream: an acknowledgement of an own one, or what somebody else did. */
+  receive(transaction: Transaction): void {
+    if (transaction.seq <= this.#seq) return;
+    if (transaction.seq > this.#seq + 1) {
+      this.#early.set(transaction.seq, transaction);
+      void this.catchUp();
+      return;
+    }
+    this.#advance(transaction);
+    for (let next = this.#early.get(this.#seq + 1); next; next = this.#early.get(this.#seq + 1)) this.#advance(next);
+    for (const seq of this.#early.keys()) if (seq <= this.#seq) this.#early.delete(seq);
+    this.#changed();
+  }
+
+  /** Asks for what was missed while the stream was away, then sends what is pending. */
+  async catchUp(): Promise<void> {
+    if (this.#isCatchingUp || this.#isDisposed) return;
+    this.#isCatchingUp = true;
+    const missed = await this.#options.transport.listSince(this.#seq);
+    this.#isCatchingUp = false;
+    if (this.#isDisposed || !missed) return;
+    for (const transaction of missed) this.receive(transaction);
+    this.#send();
+  }
+
+  dispose(): void {
+    this.#isDisposed = true;
+    this.#cancelRetry?.();
+    this.#listeners.clear();
+  }
+
+  #allocate(nodeClass: Parameters<NodeIdAllocator["allocate"]>[0]): ReturnType<NodeIdAllocator["allocate"]> {
+    const allocated = this.#blocks.allocate(nodeClass);
+    void this.#lease();
+    return allocated;
+  }
+
+  /** Keeps some ids in stock, since an edit cannot wait for the network. */
+  async #lease(): Promise<void> {
+    if (this.#isLeasing || this.#isDisposed || !this.#options.canEdit || this.#blocks.remaining >= LEASE_BELOW) return;
+    this.#isLeasing = true;
+    const block = await this.#options.transport.lease();
+    this.#isLeasing = false;
+    if (block) this.#blocks.addBlock(block);
+    else this.#options.schedule(() => void this.#lease(), RETRY_DELAYS[2] as number);
+  }
+
+  #restore(pending: readonly OutgoingTransaction[]): void {
+    if (pending.length === 0) return;
+    this.#nextClientSeq = Math.max(...pending.map((edit) => edit.clientSeq)) + 1;
+    this.#pending = pending;
+    this.#rebase([]);
+    this.#changed();
+  }
+
+  #enqueue(label: string, operations: readonly Operation[], applied: Applied): number {
+    const clientSeq = this.#nextClientSeq++;
+    this.#shown = applied.space;
+    this.#pending = [...this.#pending, { clientSeq, label, operations }];
+    // Edits of one turn go in one request.
+    queueMicrotask(() => this.#send());
+    return clientSeq;
+  }
+
+  #step({ history, outcome }: HistoryStep): Result<AddressSpace> {
+    this.#history = history;
+    if (outcome.ok) this.#enqueue(outcome.value.label, outcome.value.operations, outcome.value);
+    this.#changed();
+    return outcome.ok ? ok(this.#shown) : fail(...outcome.problems);
+  }
+
+  /** The next transaction of the confirmed state. */
+  #advance(transaction: Transaction): void {
+    const applied = applyOperations(this.#confirmed, transaction.operations);
+    // The server accepted it on the same state; if it cannot be applied here this window has gone wrong and must reload.
+    if (!applied.ok) throw new RangeError(`Transaction ${transaction.seq} does not fit: ${applied.problems.map((p) => p.code).join(", ")}`);
+    this.#confirmed = applied.value;
+    this.#seq = transaction.seq;
+    if (transaction.clientId === this.clientId && this.#acknowledge(transaction.clientSeq, transaction.at)) return;
+    this.#history = recordForeign(this.#history, transaction);
+    this.#rebase([transaction]);
+    this.#options.onForeign?.(transaction);
+  }
+
+  /** Takes an own edit out of the queue; the shown state has it already. False when it is not pending. */
+  #acknowledge(clientSeq: number, at: string): boolean {
+    const index = this.#pending.findIndex((edit) => edit.clientSeq === clientSeq);
+    if (index < 0) return false;
+    this.#pending = this.#pending.filter((_, i) => i !== index);
+    this.#savedAt = at;
+    if (this.#pending.length === 0) this.#shown = this.#confirmed;
+    return true;
+  }
+
+  #rebase(between: readonly Transaction[]): void {
+    const { space, kept, refused } = rebase(this.#confirmed, between, this.#pending);
+    this.#shown = space;
+    this.#pending = kept.map((entry) => entry.pending);
+    if (refused.length > 0) this.#drop(refused);
+  }
+
+  #drop(refused: readonly RefusedEdit<OutgoingTransaction>[]): void {
+    for (const { pending } of refused) this.#history = forget(this.#history, pending.clientSeq);
+    this.#options.onRefused?.(refused);
+  }
+
+  #send(): void {
+    if (this.#isSending || this.#isDisposed || this.#pending.length === 0 || this.#sync === "blocked") return;
+    this.#isSending = true;
+    this.#cancelRetry?.();
+    this.#cancelRetry = undefined;
+    const batch = this.#pending.slice(0, MOST_SENT);
+    void this.#options.transport.post(this.#seq, batch).then((outcome) => {
+      this.#isSending = false;
+      if (!this.#isDisposed) this.#settle(batch, outcome);
+    });
+  }
+
+  #settle(batch: readonly OutgoingTransaction[], outcome: PostOutcome): void {
+    if (outcome.kind !== "unreachable") this.#attempt = 0;
+    switch (outcome.kind) {
+      case "accepted":
+        this.#sync = "saving";
+        this.#confirm(batch, outcome);
+        break;
+      case "stale":
+        this.#sync = "saving";
+        for (const transaction of outcome.between) this.receive(transaction);
+        break;
+      case "refused":
+        this.#refuse(batch, outcome.problems);
+        break;
+      case "forbidden":
+        this.#sync = "blocked";
+        break;
+      case "unreachable":
+        this.#sync = "offline";
+        this.#retryLater();
+        this.#changed();
+        return;
+    }
+    this.#changed();
+    this.#send();
+  }
+
+  /** Own transactions in the order of their numbers; a gap means that others came between, and these are asked for. */
+  #confirm(batch: readonly OutgoingTransaction[], outcome: Extract<PostOutcome, { kind: "accepted" }>): void {
+    const ordered = [...outcome.accepted].sort((a, b) => a.seq - b.seq);
+    for (const { clientSeq, seq, at } of ordered) {
+      const edit = batch.find((entry) => entry.clientSeq === clientSeq);
+      if (!edit || seq <= this.#seq) continue;
+      if (seq > this.#seq + 1) {
+        void this.catchUp();
+        return;
+      }
+      this.#advance({ seq, base: seq - 1, clientId: this.clientId, clientSeq, author: "", at, label: edit.label, operations: edit.operations, inverse: [] });
+    }
+  }
+
+  /** The transaction that the server names goes, and what builds on it; without a name it is the first. */
+  #refuse(batch: readonly OutgoingTransaction[], problems: readonly Problem[]): void {
+    const named = problems.map((found) => found.data?.clientSeq).find((value) => typeof value === "number");
+    const culprit = batch.find((edit) => edit.clientSeq === named) ?? batch[0];
+    if (!culprit) return;
+    this.#pending = this.#pending.filter((edit) => edit.clientSeq !== culprit.clientSeq);
+    this.#rebase([]);
+    this.#drop([{ pending: culprit, problems }]);
+  }
+
+  #retryLater(): void {
+    const delay = RETRY_DELAYS[Math.min(this.#attempt++, RETRY_DELAYS.length - 1)] as number;
+    this.#cancelRetry = this.#options.schedule(() => {
+      this.#cancelRetry = undefined;
+      this.#send();
+    }, delay);
+  }
+
+  #makeState(): EditorState {
+    return {
+      space: this.#shown,
+      seq: this.#seq,
+      pendingCount: this.#pending.length,
+      sync: this.#sync,
+      savedAt: this.#savedAt,
+      undoLabel: this.#history.undoable.at(-1)?.label,
+      redoLabel: this.#history.redoable.at(-1)?.label,
+    };
+  }
+
+  #changed(): void {
+    if (this.#sync !== "offline" && this.#sync !== "blocked") this.#sync = this.#pending.length === 0 ? "saved" : "saving";
+    if (this.#sync === "offline" && this.#pending.length === 0) this.#sync = "saved";
+    this.#state = this.#makeState();
+    for (const listener of [...this.#listeners]) listener();
+  }
+}
