@@ -24,8 +24,8 @@ const DEMO_SLUG = "demo";
 
 /** The demo's models in the order in which they require each other; the file names tell the model's name. */
 const demoModels = [
-  { file: "RopeBraider.NodeSet2.xml", name: "Rope braider" },
-  { file: "MerrowHall.NodeSet2.xml", name: "Merrow hall" },
+  { file: "merrow-rope-braider.NodeSet2.xml", name: "Rope braider" },
+  { file: "merrow-hall.NodeSet2.xml", name: "Merrow hall" },
 ] as const;
 
 /** Answers lines for the console. */
