@@ -5,6 +5,7 @@
 import type { Problem } from "./result";
 import { addressSpaceProblemTexts } from "../address-space/problem-texts";
 import { checksProblemTexts } from "../checks/problem-texts";
+import { deliverProblemTexts } from "../deliver/problem-texts";
 import { editingProblemTexts } from "../editing/problem-texts";
 import { ioddProblemTexts } from "../iodd/problem-texts";
 import { mappingProblemTexts } from "../mapping/problem-texts";
@@ -17,6 +18,7 @@ const texts: Readonly<Record<string, string>> = {
   ...addressSpaceProblemTexts,
   ...checksProblemTexts,
   ...nodesetProblemTexts,
+  ...deliverProblemTexts,
   ...editingProblemTexts,
   ...ioddProblemTexts,
   ...mappingProblemTexts,

@@ -3,7 +3,7 @@
  * the row by its target, so that a list of them is a list of work.
  */
 import { fail, ok, problem, type Problem, type Result } from "../core/result";
-import type { DeviceDescription, Direction } from "../iodd/device-description";
+import type { DeviceDescription, Direction, ProcessDataImage } from "../iodd/device-description";
 import { chooseLayout } from "./choose-layout";
 import { planFrame, type FieldPlan, type FramePlan } from "./decode-frame";
 import { compileFormula, type CompiledFormula } from "./formula";
@@ -33,12 +33,26 @@ export type MappingPlan = {
   readonly frames: ReadonlyMap<string, { readonly plan: FramePlan; readonly channels: readonly FrameChannel[] }>;
 };
 
+export type Layout = { readonly image: ProcessDataImage; readonly profileCharacteristic: readonly number[] };
+
 export type PlanMappingOptions = {
-  readonly devices: ReadonlyMap<string, DeviceDescription>;
+  /** The layout of a role's process data: of a device description, or as a mapping document carries it. */
+  readonly findLayout: (role: string, direction: Direction) => Result<Layout>;
   readonly findConversion: FindConversion;
-  /** Present value of the parameter that decides a role's layout. */
-  readonly conditions?: Readonly<Record<string, string>>;
 };
+
+/** Layouts of attached device descriptions. `conditions`: present value of the parameter that decides a role's layout. */
+export function makeDeviceLayouts(
+  devices: ReadonlyMap<string, DeviceDescription>,
+  conditions: Readonly<Record<string, string>> = {},
+): PlanMappingOptions["findLayout"] {
+  return (role, direction) => {
+    const device = devices.get(role);
+    if (!device) return fail(problem("mapping.no-device", { role }));
+    const image = chooseLayout(device, direction, conditions[role]);
+    return image.ok ? ok({ image: image.value, profileCharacteristic: device.profileCharacteristic }) : image;
+  };
+}
 
 export function frameKey(role: string, direction: Direction): string {
   return `${role}\n${direction}`;
@@ -137,14 +151,13 @@ function planChannel(
   if (reference.kind !== "process-data") return ok(channel);
 
   const { role, direction, subindex } = reference;
-  const device = options.devices.get(role);
-  if (!device) return fail(problem("mapping.no-device", { role }));
   const key = frameKey(role, direction);
   let entry = frames.get(key);
   if (!entry) {
-    const image = chooseLayout(device, direction, options.conditions?.[role]);
-    if (!image.ok) return image;
-    entry = { plan: planFrame(image.value, { profileCharacteristic: device.profileCharacteristic }), channels: [] };
+    const layout = options.findLayout(role, direction);
+    if (!layout.ok) return layout;
+    const { image, profileCharacteristic } = layout.value;
+    entry = { plan: planFrame(image, { profileCharacteristic }), channels: [] };
     frames.set(key, entry);
   }
   const fieldIndex = entry.plan.fields.findIndex((f) => f.subindex === subindex);

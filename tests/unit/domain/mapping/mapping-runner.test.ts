@@ -6,7 +6,7 @@ import { parseHex } from "../../../../app/domain/mapping/bits";
 import { compileFormula } from "../../../../app/domain/mapping/formula";
 import { mappingSchema, type Mapping, type MappingRow, type Transform } from "../../../../app/domain/mapping/mapping";
 import { MappingRunner } from "../../../../app/domain/mapping/mapping-runner";
-import { planMapping, toChannelKey } from "../../../../app/domain/mapping/plan-mapping";
+import { makeDeviceLayouts, planMapping, toChannelKey } from "../../../../app/domain/mapping/plan-mapping";
 import type { Sample } from "../../../../app/domain/mapping/sample";
 import { makeTransform } from "../../../../app/domain/mapping/transform";
 
@@ -81,7 +81,7 @@ const devices = new Map([
 const findConversion = (): undefined => undefined;
 
 function runner(of: Mapping = mapping): MappingRunner {
-  const plan = planMapping(of, { devices, findConversion });
+  const plan = planMapping(of, { findLayout: makeDeviceLayouts(devices), findConversion });
   if (!plan.ok) throw new Error(JSON.stringify(plan.problems));
   return new MappingRunner(plan.value);
 }
@@ -144,7 +144,9 @@ describe("MappingRunner", () => {
 
 describe("planMapping", () => {
   const planCodes = (changed: Partial<Mapping>): string[] =>
-    planMapping({ ...mapping, ...changed }, { devices, findConversion }).problems.map((p) => p.code);
+    planMapping({ ...mapping, ...changed }, { findLayout: makeDeviceLayouts(devices), findConversion }).problems.map(
+      (p) => p.code,
+    );
   const row = (source: MappingRow["source"], transforms: Transform[] = []): Partial<Mapping> => ({
     rows: [{ target: "T", source, transforms }],
   });
