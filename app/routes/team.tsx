@@ -7,6 +7,7 @@ import { AddPersonForm } from "~/components/team/add-person-form";
 import { AuditBlock } from "~/components/team/audit-block";
 import { PeopleTable } from "~/components/team/people-table";
 import { teamSchema, type TeamIntent } from "~/components/team/team-forms";
+import { RoleLegend } from "~/components/team/role-boxes";
 import { TokensBlock } from "~/components/team/tokens-block";
 import { Notice } from "~/components/ui/notice";
 import { Block, Page } from "~/components/ui/page";
@@ -86,7 +87,9 @@ export default function Team({ loaderData, actionData }: Route.ComponentProps) {
           <Block title="Add a person" className="border-t-[1.5px] border-ink pt-2">
             <AddPersonForm lastResult={actionData?.intent === "add-person" ? actionData.submission : null} count={page.people.length} />
           </Block>
-        ) : null}
+        ) : (
+          <RoleLegend />
+        )}
       </div>
     </Page>
   );

@@ -3,7 +3,7 @@ import { Form, useNavigation } from "react-router";
 import type { ImportPreview } from "~/services/preview-import.server";
 import { FindingShape } from "~/components/notation/finding-badge";
 import { NodeClassGlyph } from "~/components/notation/node-class-glyph";
-import { StatusBadge } from "~/components/notation/status-badge";
+import { StatusBadge, type Status } from "~/components/notation/status-badge";
 import { Button, LinkButton } from "~/components/ui/button";
 import { Field, Input } from "~/components/ui/field";
 import { Notice } from "~/components/ui/notice";
@@ -73,8 +73,15 @@ function Models({ preview }: { preview: ImportPreview }) {
   );
 }
 
-const stateWords = { present: "present", "other-version": "another version is present", missing: "missing" } as const;
-const stateShapes = { present: "good", "other-version": "uncertain", missing: "bad" } as const;
+type Requirement = ImportPreview["required"][number];
+
+/** A newer one is meant to be compatible (OPC 10000-6 §F.5); an older one may lack what the file uses. */
+function describeRequirement({ state, publicationDate, found }: Requirement): { status: Status; words: string } {
+  if (state === "missing") return { status: "bad", words: "missing" };
+  if (state === "present") return { status: "good", words: "present" };
+  const isNewer = (found?.publicationDate ?? "") >= (publicationDate ?? "");
+  return isNewer ? { status: "good", words: "a newer one is present" } : { status: "uncertain", words: "only an older one is present" };
+}
 
 function RequiredModels({ required }: { required: ImportPreview["required"] }) {
   if (required.length === 0) return <p className="border-t border-ink pt-2 text-small text-ink-2">The file names none.</p>;
@@ -93,8 +100,8 @@ function RequiredModels({ required }: { required: ImportPreview["required"] }) {
             <Td mono>{row.modelUri}</Td>
             <Td mono>{[row.version, row.publicationDate?.slice(0, 10)].filter(Boolean).join(" · ") || "any"}</Td>
             <Td>
-              <StatusBadge status={stateShapes[row.state]}>
-                {stateWords[row.state]}
+              <StatusBadge status={describeRequirement(row).status}>
+                {describeRequirement(row).words}
                 {row.found && row.state === "other-version" ? <span className="font-mono">{[row.found.version, row.found.publicationDate?.slice(0, 10)].filter(Boolean).join(" · ")}</span> : null}
               </StatusBadge>
             </Td>

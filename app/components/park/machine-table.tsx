@@ -11,7 +11,7 @@ import { useLiveValue } from "./use-live-value";
 
 type Props = { machines: readonly ParkMachine[]; testServers: readonly TestServerState[] };
 
-const headClass = "sticky left-0 z-10 border-r border-ink bg-bench px-2.5 text-left font-normal whitespace-nowrap text-ink-2";
+const headClass = "sticky left-0 z-10 border-r border-r-ink bg-bench px-2.5 text-left font-normal whitespace-nowrap text-ink-2";
 
 /** Machines as columns under their elevation, so that a difference between equal machines shows by eye. */
 export function MachineTable({ machines, testServers }: Props) {
@@ -21,7 +21,7 @@ export function MachineTable({ machines, testServers }: Props) {
   return (
     <>
       <div role="region" aria-label="Machines" tabIndex={0} className="overflow-x-auto max-md:hidden">
-        <table className="w-full border-[1.5px] border-ink bg-leaf text-small" style={{ minWidth: 150 + machines.length * 132 }}>
+        <table className="w-full border-[1.5px] border-ink bg-leaf text-small" style={{ minWidth: 150 + machines.length * 126 }}>
           <caption className="sr-only">Machines of the park, one a column</caption>
           <thead>
             <tr>
@@ -92,7 +92,7 @@ function MachineName({ machine }: { machine: ParkMachine }) {
 type RowProps = { label: string; machines: readonly ParkMachine[]; tall?: boolean; opens?: boolean; within?: boolean; children: (machine: ParkMachine) => ReactNode };
 
 function Row({ label, machines, tall, opens, within, children }: RowProps) {
-  const border = opens ? "border-t border-ink" : within ? "" : "border-t border-hair";
+  const border = opens ? "border-t border-t-ink" : within ? "" : "border-t border-t-hair";
   const height = tall ? "h-11" : within ? "h-[22px]" : "h-7";
   return (
     <tr>
@@ -100,7 +100,7 @@ function Row({ label, machines, tall, opens, within, children }: RowProps) {
         {label}
       </th>
       {machines.map((machine) => (
-        <td key={machine.key} className={cx("border-l border-hair px-3 whitespace-nowrap", border, height)}>
+        <td key={machine.key} className={cx("border-l border-l-hair px-3 whitespace-nowrap max-[1400px]:px-2.5", border, height)}>
           {children(machine)}
         </td>
       ))}

@@ -65,7 +65,7 @@ export function ParkView({ park }: { park: ParkData }) {
       {models.length === 0 ? (
         <NoModels mayEdit={park.mayEdit} />
       ) : (
-        <div className="grid grid-cols-[minmax(0,1fr)_330px] gap-x-5 gap-y-6 max-xl:grid-cols-[minmax(0,1fr)_280px] max-lg:grid-cols-1">
+        <div className="grid grid-cols-[minmax(0,1fr)_330px] gap-x-5 gap-y-6 max-[1400px]:grid-cols-[minmax(0,1fr)_260px] max-lg:grid-cols-1">
           <div className="grid content-start gap-6">
             {machines.length > 0 ? <MachineTable machines={machines} testServers={running} /> : <NoMachines mayEdit={park.mayEdit} />}
           </div>

@@ -23,3 +23,21 @@ export function RoleBoxes({ held, name = "roles" }: { held: readonly Role[]; nam
     </fieldset>
   );
 }
+
+/** What each role allows, for those who cannot change them. */
+export function RoleLegend() {
+  return (
+    <section className="border-t-[1.5px] border-ink pt-2">
+      <h2 className="mb-2 text-lead font-semibold">What the roles allow</h2>
+      <dl className="grid grid-cols-[96px_1fr] gap-y-1.5 text-small">
+        {roles.map((role) => (
+          <div key={role} className="contents">
+            <dt>{role}</dt>
+            <dd className="text-ink-2">{roleJobs[role]}</dd>
+          </div>
+        ))}
+      </dl>
+      <p className="mt-2 text-note text-ink-3">A person may hold several; one of them is enough.</p>
+    </section>
+  );
+}
