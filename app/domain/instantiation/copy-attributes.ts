@@ -31,10 +31,16 @@ function copyValueAttributes(space: AddressSpace, member: MemberDeclaration): Re
   return { ...attributes, ...(withValue ? pick(withValue, ["value"]) : {}) };
 }
 
-/** What a Variable takes from the VariableType that it is an instance of. */
+/**
+ * What a Variable takes from the VariableType that it is an instance of. Where the type leaves the rank open, a scalar is
+ * meant (or one dimension, where it wants an array): a Variable should say the narrowest (OPC 10000-3 §5.6.2).
+ */
 export function copyTypeAttributes(space: AddressSpace, type: NodeKey): Readonly<Record<string, unknown>> {
   const node = space.getNode(type);
-  return node?.nodeClass === "VariableType" ? pick(node, ["dataType", "valueRank", "arrayDimensions", "value"]) : {};
+  if (node?.nodeClass !== "VariableType") return {};
+  const rank = node.valueRank ?? -1;
+  if (rank > 0) return pick(node, ["dataType", "valueRank", "arrayDimensions", "value"]);
+  return { ...pick(node, ["dataType", "value"]), ...(rank === 0 ? { valueRank: 1, arrayDimensions: "0" } : {}) };
 }
 
 function pick(node: Node, names: readonly string[]): Record<string, unknown> {

@@ -8,6 +8,7 @@
  */
 import { listUses, type AddressSpace, type Edge } from "../../address-space/address-space";
 import { listEdgesFrom, listEdgesTo } from "../../address-space/browse";
+import { compareRank } from "../../address-space/edge-bundle";
 import { listDeclaredEdges } from "../../address-space/edge-index";
 import type { Node } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
@@ -82,7 +83,7 @@ function listUsers(space: AddressSpace, going: ReadonlySet<NodeKey>): Use[] {
     for (const dataType of listDataTypes(node)) add(dataType, "data-type");
     if (node.nodeClass === "Method") add(node.methodDeclaration, "method-declaration");
   }
-  return uses;
+  return uses.sort((a, b) => compareRank(space.requireNode(a.user), space.requireNode(b.user)));
 }
 
 function listDataTypes(node: Node): NodeKey[] {

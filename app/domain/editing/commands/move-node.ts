@@ -67,7 +67,9 @@ function listOldEdges(space: AddressSpace, node: Node): Edge[] {
 
 function chooseType(space: AddressSpace, node: Node, parent: Node, preferred: NodeKey | undefined): NodeKey {
   if (isTypeNode(node)) return R.HasSubtype;
-  if (preferred !== undefined && !checkReference(space, parent.key, preferred, node.key)) return preferred;
+  // What a folder merely organised becomes a component elsewhere; other references keep their type.
+  const isKept = preferred !== undefined && preferred !== R.Organizes;
+  if (isKept && !checkReference(space, parent.key, preferred, node.key)) return preferred;
   const typeDefinition = findTypeDefinition(space, node.key);
   const nodeClass = node.nodeClass === "Variable" || node.nodeClass === "Method" ? node.nodeClass : "Object";
   const placement = placeChild(space, parent, { nodeClass, ...(typeDefinition === undefined ? {} : { typeDefinition }) }, {});
