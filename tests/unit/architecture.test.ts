@@ -171,7 +171,8 @@ describe("the tree", () => {
 
   it("names its files in kebab-case", () => {
     const plain = /^[a-z0-9]+(-[a-z0-9]+)*(\.(server|client|test|config|d))*\.(ts|tsx|mjs)$/;
-    const route = /^[a-z0-9$_.-]+\.tsx?$/;
+    // A segment that is a parameter has the parameter's name: models.$modelId.sheet.tsx.
+    const route = /^[a-z0-9]+(-[a-z0-9]+)*(\.(\$[a-z][A-Za-z]*|[a-z0-9]+(-[a-z0-9]+)*))*\.tsx?$/;
     const wrong = allFiles.filter(({ path }) => {
       const name = path.slice(path.lastIndexOf("/") + 1);
       return !(path.startsWith("app/routes/") ? route : plain).test(name);
