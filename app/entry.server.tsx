@@ -36,14 +36,14 @@ function renderPage(request: Request, status: number, headers: Headers, context:
   const ready: keyof RenderToPipeableStreamOptions = isbot(request.headers.get("user-agent")) ? "onAllReady" : "onShellReady";
   return new Promise((resolve, reject) => {
     let isShellRendered = false;
-    let timer: NodeJS.Timeout | undefined;
+    const limit = new AbortController();
     const { pipe, abort } = renderToPipeableStream(<ServerRouter context={context} url={request.url} nonce={nonce} />, {
       nonce,
       [ready]() {
         isShellRendered = true;
         const body = new PassThrough({
           final(callback) {
-            clearTimeout(timer);
+            limit.abort();
             callback();
           },
         });
@@ -55,7 +55,8 @@ function renderPage(request: Request, status: number, headers: Headers, context:
         if (isShellRendered) logError(error, new URL(request.url).pathname);
       },
     });
-    timer = setTimeout(abort, streamTimeout + 1_000);
+    const timer = setTimeout(abort, streamTimeout + 1_000);
+    limit.signal.addEventListener("abort", () => clearTimeout(timer), { once: true });
   });
 }
 

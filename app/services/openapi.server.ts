@@ -15,8 +15,8 @@ type SchemaName = keyof typeof schemas;
 type JsonObject = { readonly [name: string]: unknown };
 
 function toJsonSchema(schema: z.ZodType, io: "input" | "output" = "output"): JsonObject {
-  const { $schema: _, ...json } = z.toJSONSchema(schema, { io, reused: "inline" });
-  return inlineDefinitions(json);
+  const whole = z.toJSONSchema(schema, { io, reused: "inline" });
+  return inlineDefinitions(Object.fromEntries(Object.entries(whole).filter(([name]) => name !== "$schema")));
 }
 
 /** zod puts schemas that carry an id under $defs; in this document each stands in components or inline. */

@@ -10,7 +10,7 @@ import type { RequiredModelRow } from "../db/schema/models";
 import { buildLayer, type Layer } from "../domain/address-space/address-space";
 import { getOwnNamespace, type ModelHeader } from "../domain/address-space/model-header";
 import { OPC_UA_NAMESPACE } from "../domain/address-space/node-id";
-import { problem, type Problem } from "../domain/core/result";
+import type { Problem } from "../domain/core/result";
 import { readPack } from "../domain/nodeset/pack";
 import { describeLayer, listRequired } from "../library/describe-nodeset.server";
 import { getLibrary } from "../library/library.server";
@@ -51,10 +51,6 @@ export async function resolveRequiredModels(organizationId: string, header: Mode
   const problems = [...choice.problems];
   const layers: RequiredLayer[] = [];
   for (const entry of choice.entries) {
-    if (entry.modelUri === ownUri) {
-      problems.push(problem("required.cycle", { modelUri: ownUri }));
-      continue;
-    }
     const found = await loadEntry(entry, own.find((o) => o.entry === entry));
     if ("layer" in found) layers.push(found);
     else problems.push(...found.problems);

@@ -1,5 +1,5 @@
 /** The beginning of data routes and API routes: method, media type, body, fields. Each refusal is thrown as an answer. */
-import { z } from "zod";
+import type { z } from "zod";
 import { problem, type Problem } from "../domain/core/result";
 import { failWith, problemResponse } from "./problem-response.server";
 import { getMediaType, readBody } from "./read-body.server";

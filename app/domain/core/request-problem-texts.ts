@@ -22,7 +22,6 @@ export const requestProblemTexts: Readonly<Record<string, string>> = {
   "model.several-own": "The file defines {count} models: {uris}. Upload one model a file.",
   "model.required-by-others": "{names} require this model; delete them or change their required models first.",
   "model.identifiers-used-up": "All numeric identifiers of this namespace are used up.",
-  "required.cycle": "What the model requires in turn requires {modelUri}, the model itself.",
   "import.no-file": "Choose a file that is not empty.",
   "import.gone": "This upload is not waiting any more. Choose the file again.",
   "library.entry-exists": "The library has {modelUri} in version {version} already.",
