@@ -35,8 +35,9 @@ export async function addModel(author: Caller, organizationId: string, intent: N
   const { content, name, kind, file } = intent;
   const now = new Date();
   const namespaceUri = getOwnNamespace(content.header);
-  const taken = () => fail(problem("model.namespace-taken", { namespaceUri, name }));
-  if (await findModelByNamespace(organizationId, namespaceUri)) return taken();
+  const taken = (holder: ModelRow) => fail(problem("model.namespace-taken", { namespaceUri, name: holder.name }));
+  const before = await findModelByNamespace(organizationId, namespaceUri);
+  if (before) return taken(before);
   const pack = await toBlob(writePack(content));
   const fileBlob = file ? await toBlob(file.bytes) : undefined;
   const model: ModelRow = {
@@ -82,7 +83,8 @@ export async function addModel(author: Caller, organizationId: string, intent: N
       }),
     ]);
   } catch (error) {
-    if (await findModelByNamespace(organizationId, namespaceUri)) return taken();
+    const quicker = await findModelByNamespace(organizationId, namespaceUri);
+    if (quicker) return taken(quicker);
     throw error;
   }
   publish(`models:${organizationId}`, { id: model.id, change: "added" });

@@ -2,12 +2,15 @@
 import { z } from "zod";
 import type { Caller } from "../auth/caller.server";
 import type { ModelRow } from "../db/repositories/models.server";
-import { AddressSpace, buildLayer } from "../domain/address-space/address-space";
-import type { ModelEntry, ModelHeader } from "../domain/address-space/model-header";
+import { findHighestIdentifier } from "../db/repositories/node-ids.server";
+import type { ModelEntry } from "../domain/address-space/model-header";
 import { OPC_UA_NAMESPACE } from "../domain/address-space/node-id";
-import { fail, ok, problem, type Result } from "../domain/core/result";
+import { fail, problem, type Result } from "../domain/core/result";
+import { BlockAllocator } from "../domain/editing/allocate-node-id";
+import { createModel as makeModel, type ModelContent } from "../domain/editing/commands/create-model";
 import { getLibrary } from "../library/library.server";
 import { addModel } from "./add-model.server";
+import { FIRST_IDENTIFIER } from "./lease-node-ids.server";
 import { resolveRequiredModels, type RequiredLayer } from "./required-models.server";
 
 export const newModelIntentSchema = z.object({
@@ -20,7 +23,10 @@ export const newModelIntentSchema = z.object({
 });
 export type NewModelIntent = z.infer<typeof newModelIntentSchema>;
 
-/** Problems: `model.namespace-published`, `model.namespace-taken`, missing required models. */
+/** The namespace's metadata Object and its Properties take fewer. */
+const METADATA_IDS = 64;
+
+/** Problems: `model.namespace-published`, `model.uri`, `model.namespace-taken`, missing required models. */
 export async function createModel(author: Caller, organizationId: string, intent: NewModelIntent): Promise<Result<ModelRow>> {
   const { namespaceUri, kind, name } = intent;
   if (getLibrary().list().some((entry) => entry.modelUri === namespaceUri)) {
@@ -31,31 +37,27 @@ export async function createModel(author: Caller, organizationId: string, intent
   return addModel(author, organizationId, { name, kind, content: content.value, message: "Created" });
 }
 
-async function makeContent(organizationId: string, intent: NewModelIntent) {
+async function makeContent(organizationId: string, intent: NewModelIntent): Promise<Result<ModelContent>> {
+  const { namespaceUri, version } = intent;
   const uris = [...new Set([OPC_UA_NAMESPACE, ...intent.requiredModels])];
-  const asked = makeHeader(intent, uris.map((modelUri) => ({ modelUri, requiredModels: [] })));
-  const required = await resolveRequiredModels(organizationId, asked);
+  const entry = { modelUri: namespaceUri, requiredModels: uris.map((modelUri) => ({ modelUri, requiredModels: [] })) };
+  const required = await resolveRequiredModels(organizationId, { namespaceUris: [namespaceUri], models: [entry] });
   if (required.missing.length > 0) return fail(...required.missing);
-  const entries = uris.flatMap((uri) => required.layers.filter((layer) => layer.modelUri === uri).map(toEntry));
-  const header = makeHeader(intent, entries);
-  const space = AddressSpace.of(required.layers.map((l) => l.layer), buildLayer(header, []));
-  return ok({ header: space.own.header, nodes: space.listOwnNodes() });
+  const publicationDate = `${new Date().toISOString().slice(0, 19)}Z`;
+  const layers = required.layers.map((l) => l.layer);
+  const requiredModels = uris.flatMap((uri) => required.layers.filter((layer) => layer.modelUri === uri).map(toEntry));
+  // A namespace that was deleted once goes on where it ended, so that none of its identifiers is given again.
+  const from = Math.max((await findHighestIdentifier(organizationId, namespaceUri)) + 1, FIRST_IDENTIFIER);
+  const ids = new BlockAllocator(namespaceUri, [{ from, to: from + METADATA_IDS - 1 }]);
+  return makeModel(layers, ids, { namespaceUri, version, publicationDate, requiredModels });
 }
 
-function toEntry({ modelUri, version, publicationDate }: RequiredLayer): ModelEntry {
+function toEntry({ modelUri, version, publicationDate, entry }: RequiredLayer): ModelEntry {
   return {
     modelUri,
     ...(version === undefined ? {} : { version }),
+    ...(entry.modelVersion === undefined ? {} : { modelVersion: entry.modelVersion }),
     ...(publicationDate === undefined ? {} : { publicationDate }),
     requiredModels: [],
-  };
-}
-
-function makeHeader({ namespaceUri, version }: NewModelIntent, requiredModels: readonly ModelEntry[]): ModelHeader {
-  const publicationDate = `${new Date().toISOString().slice(0, 19)}Z`;
-  const others = requiredModels.map((entry) => entry.modelUri).filter((uri) => uri !== OPC_UA_NAMESPACE);
-  return {
-    namespaceUris: [namespaceUri, ...others],
-    models: [{ modelUri: namespaceUri, version, publicationDate, requiredModels }],
   };
 }

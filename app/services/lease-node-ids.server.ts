@@ -5,7 +5,7 @@ import { fail, ok, problem, type Result } from "../domain/core/result";
 
 export const LEASE_SIZE = 256;
 /** People find their own nodes by round numbers; the first block of a namespace starts here. */
-const FIRST_IDENTIFIER = 1001;
+export const FIRST_IDENTIFIER = 1001;
 
 export type IdBlock = { readonly from: number; readonly to: number };
 

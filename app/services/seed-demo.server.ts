@@ -1,5 +1,5 @@
 /** The demo: its organisation, its people and its models. Seeding again changes nothing that is there. */
-import { readdirSync, readFileSync } from "node:fs";
+import { existsSync, readFileSync } from "node:fs";
 import { join } from "node:path";
 import type { Caller } from "../auth/caller.server";
 import { hashPassword } from "../auth/session.server";
@@ -14,6 +14,7 @@ import {
   listMemberships,
 } from "../db/repositories/people.server";
 import { formatProblem } from "../domain/core/problem-texts";
+import type { Problem } from "../domain/core/result";
 import { demoAccounts, demoOrganizationName, demoPassword } from "../utils/demo-accounts";
 import { newId } from "../utils/ids.server";
 import { findProjectRoot } from "../utils/project-root.server";
@@ -28,16 +29,12 @@ const demoModels = [
   { file: "merrow-hall.NodeSet2.xml", name: "Merrow hall" },
 ] as const;
 
-/** Answers lines for the console. */
+/** Answers lines for the console. Throws when a model of the demo cannot be seeded: half a demo would mislead. */
 export async function seedDemo(): Promise<string[]> {
   const organizationId = await seedPeople();
-  const lines = [`Demo organisation: ${demoOrganizationName} (everybody and everything in it is invented)`];
   const author = await findAuthor(organizationId);
-  for (const { file, name } of listDemoFiles()) {
-    const problem = await seedModel(author, organizationId, file, name);
-    if (problem !== undefined) lines.push(`${file} was not seeded: ${problem}`);
-  }
-  return lines;
+  for (const { file, name } of demoModels) await seedModel(author, organizationId, file, name);
+  return [`Demo organisation: ${demoOrganizationName} (everybody and everything in it is invented)`];
 }
 
 async function seedPeople(): Promise<string> {
@@ -66,23 +63,17 @@ async function findAuthor(organizationId: string): Promise<Caller> {
   return { userId: user.id, name: user.name, email: user.email, memberships: await listMemberships(user.id) };
 }
 
-function demoFolder(): string {
-  return join(findProjectRoot(), "nodesets", "demo");
-}
-
-/** The known models that are there, in order. */
-function listDemoFiles(): { file: string; name: string }[] {
-  const present = new Set(readdirSync(demoFolder()));
-  return demoModels.filter(({ file }) => present.has(file));
-}
-
-/** Imports one file unless its namespace is there; answers what was wrong with it. */
-async function seedModel(author: Caller, organizationId: string, file: string, name: string): Promise<string | undefined> {
-  const bytes = readFileSync(join(demoFolder(), file));
-  const upload = await readUpload(bytes, file);
-  const explain = (problems: readonly Parameters<typeof formatProblem>[0][]) => problems.filter((p) => p.severity === "error").map(formatProblem).join(" ");
-  if (!upload.ok) return explain(upload.problems);
-  if (await findModelByNamespace(organizationId, upload.value.namespaceUri)) return undefined;
+/** Imports one file unless its namespace is there. */
+async function seedModel(author: Caller, organizationId: string, file: string, name: string): Promise<void> {
+  const path = join(findProjectRoot(), "nodesets", "demo", file);
+  if (!existsSync(path)) throw new Error(`The demo's model ${path} is missing.`);
+  const upload = await readUpload(readFileSync(path), file);
+  if (!upload.ok) throw new Error(`The demo's model ${file} cannot be read. ${explain(upload.problems)}`);
+  if (await findModelByNamespace(organizationId, upload.value.namespaceUri)) return;
   const imported = await importModel(author, organizationId, upload.value, { name });
-  return imported.ok ? undefined : explain(imported.problems);
+  if (!imported.ok) throw new Error(`The demo's model ${file} cannot be imported. ${explain(imported.problems)}`);
+}
+
+function explain(problems: readonly Problem[]): string {
+  return problems.filter((p) => p.severity === "error").map(formatProblem).join(" ");
 }
