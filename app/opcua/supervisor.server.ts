@@ -61,7 +61,7 @@ export class Supervisor {
   constructor(options: SupervisorOptions) {
     this.#options = {
       entry: options.entry,
-      startTimeout: options.startTimeout ?? 60_000,
+      startTimeout: options.startTimeout ?? 120_000,
       stopTimeout: options.stopTimeout ?? 3_000,
       maxRunning: options.maxRunning ?? 8,
       maxMemory: options.maxMemory ?? 1024,

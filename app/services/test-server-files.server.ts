@@ -6,6 +6,8 @@ import { mkdir, rm, writeFile } from "node:fs/promises";
 import { join } from "node:path";
 import { getLibrary } from "../library/library.server";
 import type { AddressSpace, Layer } from "../domain/address-space/address-space";
+import type { Node } from "../domain/address-space/node";
+import { findText, type LocalizedText } from "../domain/address-space/qualified-name";
 import { writeNodeSet } from "../domain/nodeset/write-nodeset";
 import { getEnvironment } from "../utils/env.server";
 import type { RequiredLayer } from "./required-models.server";
@@ -41,10 +43,21 @@ function findPublishedFile({ modelUri, version, publicationDate, from }: Require
   return entry?.source.kind === "file" ? entry.source.path : undefined;
 }
 
+/** The loader of the server keeps one text of several, the last it meets: the one in the wanted language is put there. */
+function withChosenTexts(node: Node): Node {
+  if (node.displayName.length < 2 && (node.description?.length ?? 0) < 2) return node;
+  return { ...node, displayName: putLast(node.displayName), ...(node.description ? { description: putLast(node.description) } : {}) };
+}
+
+function putLast(texts: readonly LocalizedText[]): readonly LocalizedText[] {
+  const chosen = findText(texts);
+  return [...texts].sort((a, b) => Number(a.text === chosen) - Number(b.text === chosen));
+}
+
 async function writeLayer(folder: string, index: number, layer: Layer, space: AddressSpace): Promise<string> {
   const file = join(folder, `${String(index).padStart(2, "0")}.NodeSet2.xml`);
   const { xml } = writeNodeSet(
-    { header: layer.header, nodes: [...layer.nodes.values()] },
+    { header: layer.header, nodes: [...layer.nodes.values()].map(withChosenTexts) },
     { findNodeId: (key) => space.getNode(key)?.nodeId },
   );
   await writeFile(file, xml);

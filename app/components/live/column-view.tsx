@@ -39,7 +39,7 @@ export function ColumnView({ column, index, selected, isLast, onSelect, onLoadMo
       aria-label={column.title}
       className={cx(
         "flex min-w-0 shrink-0 flex-col border-r border-rule",
-        index === 0 ? "w-[184px]" : "w-[clamp(188px,19vw,262px)]",
+        index === 0 ? "w-[184px]" : column.children.some((child) => child.nodeClass === "Variable") ? "w-[clamp(224px,18.5vw,268px)]" : "w-[clamp(160px,13vw,188px)]",
         isLast ? "max-md:w-full max-md:border-r-0" : "max-md:hidden",
       )}
     >
@@ -103,7 +103,7 @@ function Row({ node, isFirst, isSelected, onSelect }: RowProps) {
       )}
     >
       <NodeClassGlyph kind={node.isProperty ? "Property" : node.nodeClass} label />
-      <span className="min-w-0 flex-1 truncate">{node.displayName}</span>
+      <span className="min-w-[38%] flex-1 truncate">{node.displayName}</span>
       {node.nodeClass === "Variable" ? <RowValue node={node} /> : null}
       {node.nodeClass === "Method" ? (
         <span title="Methods are shown, not called, here" className="text-ink-3">
@@ -126,7 +126,7 @@ function RowValue({ node }: { node: BrowsedNode }) {
   const { sample } = value;
   const isStale = stream !== "running";
   return (
-    <span className={cx("flex max-w-[62%] min-w-0 items-center gap-2 font-mono text-small font-normal", isStale && "text-stale")} title={nameStatus(sample, stream)}>
+    <span className={cx("flex max-w-[58%] min-w-0 items-center gap-2 font-mono text-small font-normal", isStale && "text-stale")} title={nameStatus(sample, stream)}>
       <span className="truncate">
         {showValue(sample, node.range)}
         {node.unit && sample.value !== null ? <small className="ml-1 text-note text-ink-3">{node.unit.text}</small> : null}

@@ -18,7 +18,7 @@ const SPANS = [
 ] as const;
 type Span = (typeof SPANS)[number]["value"];
 
-const GRID = "grid grid-cols-[36px_minmax(120px,168px)_minmax(120px,1fr)_minmax(110px,140px)_minmax(120px,190px)_88px_28px] items-center gap-x-2 max-md:grid-cols-[minmax(0,1fr)_auto_28px]";
+const GRID = "grid grid-cols-[36px_minmax(120px,168px)_minmax(120px,1fr)_minmax(110px,140px)_minmax(120px,214px)_76px_28px] items-center gap-x-2 max-md:grid-cols-[minmax(0,1fr)_auto_28px]";
 
 type Props = {
   nodes: readonly WatchedNode[];

@@ -1,5 +1,6 @@
 /** Values from the wire → JSON for the event stream and a text for people. */
 import { DataType, type DataValue, type Variant, VariantArrayType } from "node-opcua";
+import { formatRange } from "~/domain/live/format-live";
 import type { Sample, StatusSeverity } from "~/domain/live/live-node";
 
 const TEXT_LIMIT = 400;
@@ -83,6 +84,14 @@ export function formatValue(value: unknown, states: StateTexts | undefined): str
     return `[${shown.join(", ")}${value.length > ELEMENTS_SHOWN ? `, … ${value.length} elements` : ""}]`.slice(0, TEXT_LIMIT);
   }
   if (typeof value === "number") return states?.get(value) ?? String(value);
-  if (typeof value === "object") return JSON.stringify(value).slice(0, TEXT_LIMIT);
+  if (typeof value === "object") return formatStructure(value).slice(0, TEXT_LIMIT);
   return String(value).slice(0, TEXT_LIMIT);
+}
+
+/** The two structures that every analog item carries read as people write them; others are shown by their fields. */
+function formatStructure(value: object): string {
+  const { low, high, displayName, unitId } = value as { low?: unknown; high?: unknown; displayName?: { text?: string } | string; unitId?: unknown };
+  if (typeof low === "number" && typeof high === "number") return formatRange({ low, high });
+  if (typeof unitId === "number" && displayName !== undefined) return typeof displayName === "string" ? displayName : (displayName.text ?? "");
+  return JSON.stringify(value);
 }
