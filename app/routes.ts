@@ -45,7 +45,6 @@ export default [
       route("findings", "routes/models.$modelId.findings.tsx"),
       route("about", "routes/models.$modelId.about.tsx"),
       route("test-server", "routes/models.$modelId.test-server.tsx"),
-      route("test-server", "routes/models.$modelId.test-server.tsx"),
     ]),
     route("library", "routes/library.tsx"),
     route("team", "routes/team.tsx"),
