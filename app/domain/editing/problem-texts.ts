@@ -84,6 +84,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "value.dimensions": "{count} elements do not fill the dimensions {dimensions}.",
   "unit.no-variable": "Only Variables have a unit and a range.",
   "unit.not-numeric": "{name} is not a number, so it has no unit and no range (OPC 10000-8 §5.3.2).",
+  "unit.unknown": "There is no unit with the code {code} in Recommendation 20.",
+  "unit.other-quantity": "{from} and {to} measure different things.",
   "range.not-finite": "The ends of a range are numbers.",
   "range.order": "The range {low} … {high} ends before it starts.",
   "argument.no-method": "Only Methods have arguments.",
