@@ -2,6 +2,7 @@ import { useSyncExternalStore } from "react";
 import type { Route } from "./+types/models.$modelId.findings";
 import { requireModelForPage } from "~/auth/require-model.server";
 import { FindingsView } from "~/components/findings/findings-view";
+import { mendFindings } from "~/components/findings/mend-findings";
 import { useEditorState, useOpenModel } from "~/components/model/use-model";
 import { Progress } from "~/components/ui/progress";
 
@@ -13,7 +14,8 @@ export async function loader({ request, params }: Route.LoaderArgs) {
 export const meta: Route.MetaFunction = ({ data }) => [{ title: `Findings of ${data?.name ?? "the model"} · Ferrule` }];
 
 export default function Findings() {
-  const { workspace, findings } = useOpenModel();
+  const model = useOpenModel();
+  const { workspace, findings } = model;
   const { space } = useEditorState();
   const found = useSyncExternalStore(findings.subscribe, findings.getState, findings.getState);
   const mayEdit = workspace.permissions.includes("model.edit");
@@ -31,7 +33,7 @@ export default function Findings() {
       tools={{
         space,
         modelId: workspace.model.id,
-        mend: undefined,
+        mend: mayEdit ? (list) => mendFindings(model, list) : undefined,
         mendBlockedBy: mayEdit ? undefined : "asks for the role engineer or administrator",
       }}
     />
