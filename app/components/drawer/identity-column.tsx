@@ -1,0 +1,126 @@
+import { Lock } from "lucide-react";
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import { findTypeDefinition } from "~/domain/address-space/browse";
+import { isTypeNode, type Node } from "~/domain/address-space/node";
+import { formatNodeId } from "~/domain/address-space/node-id";
+import { findSupertype } from "~/domain/address-space/type-hierarchy";
+import { findRuleName, formatPath, getNodeName, RULE_KEYS, type RuleName } from "../model/member-facts";
+import { formatLocalNodeId, getNamespaceLabel } from "../model/namespace-label";
+import { TypeField } from "../model/type-search";
+import { useOpenModel } from "../model/use-model";
+import { Checkbox, Select } from "../ui/field";
+import { Icon } from "../ui/icon";
+import { Segments } from "../ui/segments";
+import { LocalisedTexts } from "./localised-texts";
+import { CommitField, Fact, Particular } from "./particular";
+
+/** What the node is: names, NodeId, path, type, modelling rule. */
+export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
+  const { actions } = useOpenModel();
+  return (
+    <section aria-label="Identity">
+      <h3>Identity</h3>
+      <Particular label="BrowseName">
+        {(id) => (
+          <div className="localised">
+            <CommitField id={id} mono value={node.browseName.name} readOnly={readOnly} onCommit={(text) => actions.rename(node.key, text)} />
+            <span className="locale" title={node.browseName.namespaceUri}>
+              {getNamespaceLabel(node.browseName.namespaceUri)}
+            </span>
+          </div>
+        )}
+      </Particular>
+      <Particular label="DisplayName">
+        {(id) => (
+          <LocalisedTexts id={id} label="DisplayName" texts={node.displayName} readOnly={readOnly} onChange={(text, locale) => actions.setText({ node: node.key, attribute: "displayName", text, ...(locale === undefined ? {} : { locale }) })} />
+        )}
+      </Particular>
+      <Fact label="NodeId" mono>
+        <span title={formatNodeId(node.nodeId)} className="flex items-center gap-1.5">
+          {formatLocalNodeId(node.nodeId)}
+          <Icon of={Lock} size={11} className="text-ink-3" label="is never given twice" />
+          <span className="truncate font-words text-note text-ink-3">{node.nodeId.namespaceUri}</span>
+        </span>
+      </Fact>
+      <Fact label="Path">
+        <span title={formatPath(space, node.key)}>{formatPath(space, node.key)}</span>
+      </Fact>
+      <TypeRow space={space} node={node} readOnly={readOnly} />
+      {isTypeNode(node) ? (
+        <Fact label="">
+          <Checkbox
+            label="Abstract: may not be instantiated"
+            checked={node.isAbstract === true}
+            disabled={readOnly}
+            onChange={(event) => actions.setAttribute([node.key], "isAbstract", event.currentTarget.checked ? true : undefined)}
+          />
+        </Fact>
+      ) : (
+        <RuleRow rule={findRuleName(space, node.key)} node={node} readOnly={readOnly} />
+      )}
+    </section>
+  );
+}
+
+function TypeRow({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
+  const { actions, view } = useOpenModel();
+  if (isTypeNode(node)) {
+    const supertype = findSupertype(space, node.key);
+    return (
+      <Fact label="Subtype of">
+        {supertype === undefined ? (
+          "–"
+        ) : (
+          <button type="button" className="italic underline decoration-rule underline-offset-3 hover:text-copper" onClick={() => view.reveal(supertype)}>
+            {getNodeName(space, supertype)}
+          </button>
+        )}
+      </Fact>
+    );
+  }
+  if (node.nodeClass !== "Object" && node.nodeClass !== "Variable") return <Fact label="Class">{node.nodeClass}</Fact>;
+  const type = findTypeDefinition(space, node.key);
+  return (
+    <Particular label="Type">
+      {(id) => (
+        <TypeField
+          id={id}
+          label="Type"
+          space={space}
+          kind={node.nodeClass === "Object" ? "ObjectType" : "VariableType"}
+          value={type}
+          readOnly={readOnly}
+          onPick={(picked) => actions.setTypeDefinition([node.key], picked)}
+        />
+      )}
+    </Particular>
+  );
+}
+
+const SHORT: readonly RuleName[] = ["Mandatory", "Optional"];
+
+function RuleRow({ rule, node, readOnly }: { rule: RuleName | undefined; node: Node; readOnly: boolean }) {
+  const { actions } = useOpenModel();
+  const set = (text: string): void => actions.changeCells([{ key: node.key, column: "rule", text }], "set-rule");
+  const isShort = rule !== undefined && SHORT.includes(rule);
+  if (readOnly) return <Fact label="Rule">{rule ?? "none"}</Fact>;
+  return (
+    <Particular label="Rule">
+      {(id) => (
+        <span className="flex items-center gap-1.5">
+          {isShort ? <Segments label="Modelling rule" value={rule} onChange={set} options={SHORT.map((name) => ({ value: name, label: name }))} className="h-6!" /> : null}
+          <span className={isShort ? "w-7" : "w-full"}>
+            <Select id={id} size="small" aria-label="Modelling rule" value={rule ?? ""} onChange={(event) => set(event.currentTarget.value)} className={isShort ? "w-7! overflow-hidden" : ""}>
+              <option value="">none</option>
+              {Object.keys(RULE_KEYS).map((name) => (
+                <option key={name} value={name}>
+                  {name}
+                </option>
+              ))}
+            </Select>
+          </span>
+        </span>
+      )}
+    </Particular>
+  );
+}

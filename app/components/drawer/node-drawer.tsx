@@ -1,0 +1,91 @@
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import type { Node } from "~/domain/address-space/node";
+import type { Finding } from "~/domain/checks/finding";
+import { useSyncExternalStore } from "react";
+import { formatPath, getNodeName, isProperty } from "../model/member-facts";
+import { useOpenModel, useSelection, useSpace, useView } from "../model/use-model";
+import { FindingBadge } from "../notation/finding-badge";
+import { NodeClassGlyph } from "../notation/node-class-glyph";
+import { Button } from "../ui/button";
+import { Drawer } from "../ui/drawer";
+import { cx } from "../ui/cx";
+import { IdentityColumn } from "./identity-column";
+import { ReferenceColumn } from "./reference-column";
+import { TextColumn } from "./text-column";
+import { ValueColumn } from "./value-column";
+import "./drawer.css";
+
+/** Particulars of the selected node, for the sheet and the register alike. */
+export function NodeDrawer() {
+  const { view } = useOpenModel();
+  const space = useSpace();
+  const selection = useSelection();
+  const isOpen = useView((state) => state.isDrawerOpen);
+  const key = selection.at(-1);
+  const node = key === undefined ? undefined : space.getNode(key);
+  if (!isOpen) return <ClosedDrawer />;
+  return (
+    <Drawer
+      label="Particulars"
+      storageKey="particulars-height"
+      initialHeight={258}
+      onClose={() => view.setDrawerOpen(false)}
+      head={node ? <Head space={space} node={node} more={selection.length - 1} /> : <span className="text-small text-ink-3">Select a node to see its particulars</span>}
+      tools={node ? <WorstFinding node={node} /> : null}
+    >
+      {node ? <Columns key={node.key} space={space} node={node} /> : null}
+    </Drawer>
+  );
+}
+
+function ClosedDrawer() {
+  const { view } = useOpenModel();
+  return (
+    <div className="flex h-7 shrink-0 items-center border-t border-rule bg-bench px-5">
+      <Button size="small" tone="bare" onClick={() => view.setDrawerOpen(true)}>
+        Show particulars
+      </Button>
+    </div>
+  );
+}
+
+function Head({ space, node, more }: { space: AddressSpace; node: Node; more: number }) {
+  return (
+    <>
+      <NodeClassGlyph kind={isProperty(space, node) ? "Property" : node.nodeClass} label />
+      <h2 className={cx("text-body font-semibold", node.nodeClass.endsWith("Type") && "italic")}>{getNodeName(space, node.key)}</h2>
+      <span className="truncate font-mono text-note text-ink-3">{formatPath(space, node.key)}</span>
+      {space.isOwn(node.key) ? null : <span className="text-note text-ink-3">belongs to a required model, read only</span>}
+      {more > 0 ? <span className="text-note text-copper">and {more} more selected</span> : null}
+    </>
+  );
+}
+
+function WorstFinding({ node }: { node: Node }) {
+  const { findings } = useOpenModel();
+  const read = (): Finding | undefined => findings.getState().byNode.get(node.key)?.[0];
+  const finding = useSyncExternalStore(findings.subscribe, read, read);
+  const count = findings.getState().byNode.get(node.key)?.length ?? 0;
+  if (!finding) return null;
+  return (
+    <span className="flex min-w-0 max-w-130 items-center gap-1.5 text-small" title={`${finding.rule} ${finding.message}\n${finding.facts.join("\n")}\n${finding.clause}`}>
+      <FindingBadge severity={finding.severity} title={finding.rule} />
+      <span className="truncate">{finding.message}</span>
+      {count > 1 ? <span className="shrink-0 text-note text-ink-3">and {count - 1} more</span> : null}
+    </span>
+  );
+}
+
+function Columns({ space, node }: { space: AddressSpace; node: Node }) {
+  const { actions } = useOpenModel();
+  const readOnly = !actions.mayChange(node.key);
+  const isWide = node.nodeClass === "Method" || node.nodeClass === "DataType";
+  return (
+    <div className={cx("particulars", isWide && "is-wide")}>
+      <IdentityColumn space={space} node={node} readOnly={readOnly} />
+      <ValueColumn space={space} node={node} readOnly={readOnly} />
+      <TextColumn node={node} readOnly={readOnly} />
+      <ReferenceColumn space={space} node={node} />
+    </div>
+  );
+}

@@ -1,0 +1,49 @@
+import { useEffect, useMemo, useState, type ReactNode } from "react";
+import type { ModelWorkspace } from "~/presenters/model-workspace.server";
+import { Button } from "../ui/button";
+import { Notice } from "../ui/notice";
+import { loadSpace } from "./load-space";
+import { ModelKeys } from "./model-keys";
+import { makeWaitingModel, openModel } from "./open-model";
+import { OpenModelContext, type OpenModel } from "./use-model";
+
+/** Opens a model for the pages inside. The packs come after the first paint; until then the pages draw an empty model. */
+export function ModelStoreProvider({ workspace, children }: { workspace: ModelWorkspace; children: ReactNode }) {
+  const waiting = useMemo(() => makeWaitingModel(workspace), [workspace]);
+  const [opened, setOpened] = useState<OpenModel>();
+  const [failure, setFailure] = useState<string>();
+  const [attempt, setAttempt] = useState(0);
+
+  useEffect(() => {
+    const controller = new AbortController();
+    let close: (() => void) | undefined;
+    setFailure(undefined);
+    loadSpace(workspace, controller.signal)
+      .then((loaded) => {
+        if (controller.signal.aborted) return;
+        const opening = openModel(workspace, loaded, waiting.view);
+        close = opening.close;
+        setOpened(opening.model);
+      })
+      .catch((error: unknown) => {
+        if (!controller.signal.aborted) setFailure(error instanceof Error ? error.message : String(error));
+      });
+    return () => {
+      controller.abort();
+      close?.();
+      setOpened(undefined);
+    };
+  }, [workspace, waiting, attempt]);
+
+  return (
+    <OpenModelContext value={opened ?? waiting}>
+      {failure === undefined ? null : (
+        <Notice tone="error" title="The model could not be loaded" live action={<Button onClick={() => setAttempt(attempt + 1)}>Load again</Button>}>
+          {failure}
+        </Notice>
+      )}
+      {opened ? <ModelKeys /> : null}
+      {children}
+    </OpenModelContext>
+  );
+}

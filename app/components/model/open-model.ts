@@ -1,0 +1,98 @@
+/** Puts an open model together from its parts, and takes it apart again. Browser only. */
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import type { Transaction } from "~/domain/editing/operation";
+import { EditorStore } from "~/editor/editor-store";
+import type { ModelWorkspace } from "~/presenters/model-workspace.server";
+import { onConnectionChange, subscribeToTopic } from "../shell/event-stream";
+import { showToast } from "../ui/toast";
+import { describe } from "./edit-steps";
+import { FindingStore } from "./finding-store";
+import { makeEmptySpace } from "./load-space";
+import { ModelActions } from "./model-actions";
+import { ModelTransport, parseTransaction } from "./model-transport";
+import { PresenceStore } from "./presence-store";
+import { followFindings } from "./run-checks";
+import { keepUnsaved, takeUnsaved } from "./unsaved-edits";
+import type { OpenModel } from "./use-model";
+import { ViewStore } from "./view-store";
+
+const NO_TRANSPORT = { post: async () => ({ kind: "unreachable" as const }), listSince: async () => undefined, lease: async () => undefined };
+
+/** What the page is drawn with until the packs have come, on the server too: nothing in it, nothing to be changed. */
+export function makeWaitingModel(workspace: ModelWorkspace): OpenModel {
+  const space = makeEmptySpace(workspace.model.namespaceUri);
+  const editor = new EditorStore({ space, seq: workspace.model.headSeq, clientId: "", canEdit: false, transport: NO_TRANSPORT, schedule: () => () => undefined });
+  const view = new ViewStore();
+  return { workspace, editor, view, findings: new FindingStore(), presence: new PresenceStore(), actions: new ModelActions(editor, view, false), isReady: false };
+}
+
+/** The model with its way to the server; the second function ends everything. */
+export function openModel(workspace: ModelWorkspace, loaded: { space: AddressSpace; seq: number }, view: ViewStore): { model: OpenModel; close: () => void } {
+  const { id } = workspace.model;
+  const canEdit = workspace.permissions.includes("model.edit");
+  const unsaved = canEdit ? takeUnsaved(id) : undefined;
+  const clientId = unsaved?.clientId ?? crypto.randomUUID();
+  const transport = new ModelTransport(id, clientId);
+  const editor: EditorStore = new EditorStore({
+    ...loaded,
+    clientId,
+    canEdit,
+    transport,
+    schedule: (run, milliseconds) => {
+      const timer = setTimeout(run, milliseconds);
+      return () => clearTimeout(timer);
+    },
+    ...(unsaved ? { restored: unsaved } : {}),
+    onRefused: (refused) => {
+      for (const { problems, conflictsWith } of refused) {
+        const by = conflictsWith?.author ? `${conflictsWith.author} was quicker. ` : "";
+        const reasons = describe(loaded.space, problems).join(" ");
+        showToast({ tone: "warning", title: "One of your edits could not be kept", detail: `${by}${reasons} Your view shows the model as it is now; do the edit again if it is still right.`, seconds: 20 });
+      }
+    },
+  });
+  const findings = new FindingStore();
+  const presence = new PresenceStore();
+  const actions = new ModelActions(editor, view, canEdit);
+  const model: OpenModel = { workspace, editor, view, findings, presence, actions, isReady: true };
+  const ends = [
+    followFindings(editor, findings),
+    followTransactions(id, editor),
+    presence.follow(id, transport, view),
+    keepEdits(id, editor),
+    () => editor.dispose(),
+  ];
+  return { model, close: () => ends.forEach((end) => end()) };
+}
+
+/** Edits of others come by the stream; after it was away the store asks for what it missed. */
+function followTransactions(modelId: string, editor: EditorStore): () => void {
+  const endTopic = subscribeToTopic(`model:${modelId}`, (data) => {
+    const transaction: Transaction | undefined = parseTransaction(data);
+    if (transaction) editor.receive(transaction);
+    else if (typeof data === "object" && data !== null && "deleted" in data) showToast({ tone: "error", title: "This model was deleted." });
+  });
+  const endWatch = onConnectionChange((state) => {
+    if (state === "open") void editor.catchUp();
+  });
+  return () => {
+    endTopic();
+    endWatch();
+  };
+}
+
+/** Keeps what is not acknowledged for a reload, and asks before the tab is closed with it. */
+function keepEdits(modelId: string, editor: EditorStore): () => void {
+  const keep = (): void => keepUnsaved(modelId, { clientId: editor.clientId, ...editor.listUnsaved() });
+  const ask = (event: BeforeUnloadEvent): void => {
+    keep();
+    if (editor.getState().pendingCount > 0) event.preventDefault();
+  };
+  window.addEventListener("pagehide", keep);
+  window.addEventListener("beforeunload", ask);
+  return () => {
+    keep();
+    window.removeEventListener("pagehide", keep);
+    window.removeEventListener("beforeunload", ask);
+  };
+}

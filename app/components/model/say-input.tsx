@@ -1,0 +1,98 @@
+import { useState } from "react";
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import type { NodeKey } from "~/domain/address-space/node-id";
+import { NodeClassGlyph } from "../notation/node-class-glyph";
+import { Combobox } from "../ui/combobox";
+import { Kbd } from "../ui/tag";
+import { formatRange, type UnitFacts } from "./analog-facts";
+import { findMemberOwner } from "./member-owner";
+import { findSpokenUnit } from "./find-spoken-unit";
+import { isInType } from "./list-parents";
+import { getNodeName } from "./member-facts";
+import { parsePhrase, type SpokenMember } from "./parse-phrase";
+import { useOpenModel, useSelection } from "./use-model";
+
+type Props = { space: AddressSpace; placeholder?: string; isBare?: boolean };
+
+/** "oil level %": says what a member carries, and the member with its type and unit is made. Enter adds, the next can follow at once. */
+export function SayInput({ space, placeholder, isBare = false }: Props) {
+  const { actions } = useOpenModel();
+  const selection = useSelection();
+  const [phrase, setPhrase] = useState("");
+  const [owner, setOwner] = useState<NodeKey>();
+  const selected = findMemberOwner(space, selection.at(-1));
+  // While members are added one after the other the selection goes to the newest; they all belong to the same owner.
+  const parent = selected ?? (owner !== undefined && space.isOwn(owner) ? owner : undefined);
+  const spoken = parsePhrase(phrase, findSpokenUnit);
+  const target = parent === undefined ? "select a card first" : `to ${getNodeName(space, parent)}`;
+
+  function add(member: SpokenMember<UnitFacts>): void {
+    if (parent === undefined) return;
+    const { kind, name, typeDefinition, dataType, unit, range } = member;
+    const made =
+      kind === "Method"
+        ? actions.addMethod({ parent, name })
+        : kind === "Object"
+          ? actions.addObject({ parent, name })
+          : actions.addVariable({
+              parent,
+              name,
+              typeDefinition,
+              ...(dataType === undefined ? {} : { dataType }),
+              ...(unit ? { unit: unit.information } : {}),
+              ...(range ? { range } : {}),
+            });
+    if (made === undefined) return;
+    setOwner(parent);
+    setPhrase("");
+  }
+
+  const combobox = (id: string | undefined) => (
+    <Combobox<SpokenMember<UnitFacts>>
+      label="Say what the member carries"
+      {...(id === undefined ? {} : { id })}
+      size="small"
+      query={phrase}
+      onQuery={setPhrase}
+      items={spoken && parent !== undefined ? [spoken] : []}
+      itemKey={(member) => member.name}
+      renderItem={(member) => <SpokenRow space={space} member={member} target={target} />}
+      onPick={add}
+      placeholder={placeholder ?? "oil level %"}
+      none={phrase === "" ? "A name, a unit, a range: oil level % 0 … 100" : parent === undefined ? "Select the card that the member belongs to" : "Type a name first"}
+      foot={
+        <>
+          <span className="truncate">{isInType(space, parent) ? "Mandatory member" : "Member"} {target}</span>
+          <span className="ml-auto">
+            <Kbd>Enter</Kbd>
+          </span>
+        </>
+      }
+    />
+  );
+  if (isBare) return combobox(undefined);
+  return (
+    <>
+      <label htmlFor="say-what-it-carries">
+        or say what it carries, {target} <Kbd>A</Kbd>
+      </label>
+      {combobox("say-what-it-carries")}
+    </>
+  );
+}
+
+function SpokenRow({ space, member, target }: { space: AddressSpace; member: SpokenMember<UnitFacts>; target: string }) {
+  const facts = [member.dataType === undefined ? "" : getNodeName(space, member.dataType), member.unit ? `${member.unit.symbol} ${member.unit.name}` : "", formatRange(member.range)];
+  return (
+    <span className="type-hit">
+      <NodeClassGlyph kind={member.kind} />
+      <span>
+        Add <b className="font-semibold">{member.name}</b> {target}
+      </span>
+      <code />
+      <p>
+        {member.kind === "Variable" ? <em>{getNodeName(space, member.typeDefinition)}</em> : member.kind} {facts.filter((fact) => fact !== "").join(" · ")}
+      </p>
+    </span>
+  );
+}

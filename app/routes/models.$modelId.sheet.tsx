@@ -1,0 +1,24 @@
+import { useEffect } from "react";
+import { NodeDrawer } from "~/components/drawer/node-drawer";
+import { LoadingModel } from "~/components/model/loading-model";
+import { useOpenModel } from "~/components/model/use-model";
+import { Sheet } from "~/components/sheet/sheet";
+
+/** The drawing carries the title block itself. */
+export const handle = { drawsTitleBlock: true };
+
+export function meta() {
+  return [{ title: "Sheet · Ferrule" }];
+}
+
+export default function SheetPage() {
+  const { workspace, presence, isReady } = useOpenModel();
+  const sheet = workspace.sheets[0];
+  useEffect(() => presence.setPlace("sheet"), [presence]);
+  return (
+    <>
+      {isReady ? <Sheet sheetId={sheet?.id ?? "main"} /> : <LoadingModel what="the sheet" />}
+      <NodeDrawer />
+    </>
+  );
+}
