@@ -24,24 +24,72 @@ import { r021 } from "./rules/r021-uris-nearly-equal";
 import { r022 } from "./rules/r022-symbolic-name";
 import { r023 } from "./rules/r023-reference-target";
 import { r024 } from "./rules/r024-reference-type";
+import { r025 } from "./rules/r025-reference-once";
+import { r026 } from "./rules/r026-no-self-reference";
 import { r027 } from "./rules/r027-no-child-loops";
+import { r028 } from "./rules/r028-no-event-loops";
 import { r029 } from "./rules/r029-component-target";
 import { r030 } from "./rules/r030-component-source-of-variables";
 import { r031 } from "./rules/r031-component-source-of-objects";
 import { r032 } from "./rules/r032-property-target";
 import { r033 } from "./rules/r033-property-leaf";
+import { r034 } from "./rules/r034-property-or-data-variable";
 import { r035 } from "./rules/r035-property-type";
 import { r036 } from "./rules/r036-data-variable-type";
+import { r037 } from "./rules/r037-variable-parent";
+import { r038 } from "./rules/r038-method-parent";
+import { r039 } from "./rules/r039-reachable";
+import { r040 } from "./rules/r040-organizes-source";
 import { r041 } from "./rules/r041-subtype-ends";
 import { r042 } from "./rules/r042-one-supertype";
+import { r043 } from "./rules/r043-reference-type-references";
+import { r044 } from "./rules/r044-data-type-references";
+import { r045 } from "./rules/r045-view-references";
+import { r046 } from "./rules/r046-inverse-name";
+import { r048 } from "./rules/r048-reference-type-branch";
 import { r049 } from "./rules/r049-type-definition";
 import { r050 } from "./rules/r050-modelling-rule";
+import { r051 } from "./rules/r051-encoding-ends";
+import { r052 } from "./rules/r052-generates-event-source";
+import { r053 } from "./rules/r053-always-generates-event";
+import { r054 } from "./rules/r054-event-source-source";
+import { r055 } from "./rules/r055-notifier-target";
+import { r056 } from "./rules/r056-condition-ends";
+import { r057 } from "./rules/r057-event-hierarchy-root";
+import { r058 } from "./rules/r058-interface-ends";
+import { r059 } from "./rules/r059-add-in-ends";
+import { r060 } from "./rules/r060-argument-descriptions";
+import { r061 } from "./rules/r061-optional-arguments-last";
+import { r062 } from "./rules/r062-structured-component";
+import { r064 } from "./rules/r064-associated-with";
+import { r065 } from "./rules/r065-deprecated-target";
 import { r066 } from "./rules/r066-abstract-type-instance";
+import { r067 } from "./rules/r067-interface-as-type";
+import { r068 } from "./rules/r068-interface-definition";
 import { r069 } from "./rules/r069-interface-members";
+import { r070 } from "./rules/r070-interface-optional-path";
+import { r071 } from "./rules/r071-interfaces-collide";
+import { r072 } from "./rules/r072-interface-twice";
+import { r073 } from "./rules/r073-add-in-name";
+import { r074 } from "./rules/r074-declaration-of-one-type";
 import { r075 } from "./rules/r075-type-child-without-rule";
+import { r076 } from "./rules/r076-rule-on-instance";
+import { r077 } from "./rules/r077-placeholder-brackets";
+import { r078 } from "./rules/r078-brackets-without-placeholder";
+import { r079 } from "./rules/r079-placeholder-method";
 import { r080 } from "./rules/r080-rule-only-tightened";
+import { r081 } from "./rules/r081-exposes-its-array";
+import { r082 } from "./rules/r082-override-similar";
+import { r083 } from "./rules/r083-override-path";
+import { r084 } from "./rules/r084-needless-override";
+import { r085 } from "./rules/r085-attributes-kept";
 import { r086 } from "./rules/r086-mandatory-members";
+import { r088 } from "./rules/r088-mandatory-placeholder";
 import { r090 } from "./rules/r090-member-similar";
+import { r091 } from "./rules/r091-references-join-same-nodes";
+import { r092 } from "./rules/r092-method-copy-linked";
+import { r093 } from "./rules/r093-state-machine-type";
+import { r094 } from "./rules/r094-state-machine-instance";
 import { r095 } from "./rules/r095-data-type";
 import { r097 } from "./rules/r097-data-type-narrows";
 import { r098 } from "./rules/r098-value-rank-narrows";
@@ -80,24 +128,72 @@ export const RULES: readonly Rule[] = [
   r022,
   r023,
   r024,
+  r025,
+  r026,
   r027,
+  r028,
   r029,
   r030,
   r031,
   r032,
   r033,
+  r034,
   r035,
   r036,
+  r037,
+  r038,
+  r039,
+  r040,
   r041,
   r042,
+  r043,
+  r044,
+  r045,
+  r046,
+  r048,
   r049,
   r050,
+  r051,
+  r052,
+  r053,
+  r054,
+  r055,
+  r056,
+  r057,
+  r058,
+  r059,
+  r060,
+  r061,
+  r062,
+  r064,
+  r065,
   r066,
+  r067,
+  r068,
   r069,
+  r070,
+  r071,
+  r072,
+  r073,
+  r074,
   r075,
+  r076,
+  r077,
+  r078,
+  r079,
   r080,
+  r081,
+  r082,
+  r083,
+  r084,
+  r085,
   r086,
+  r088,
   r090,
+  r091,
+  r092,
+  r093,
+  r094,
   r095,
   r097,
   r098,

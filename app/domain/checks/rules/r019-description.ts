@@ -1,5 +1,8 @@
-import { isTypeNode } from "../../address-space/node";
-import { isInstanceDeclaration } from "../lookups";
+import { isTypeNode, type Node } from "../../address-space/node";
+import { formatQualifiedName } from "../../address-space/qualified-name";
+import type { CheckContext } from "../check-context";
+import { findTypeDefinition, isInstanceDeclaration } from "../lookups";
+import { getMembers } from "../members";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
 export const r019: NodeRule = {
@@ -15,7 +18,8 @@ export const r019: NodeRule = {
   check(node, ctx, report) {
     if ((node.description ?? []).some((t) => t.text.trim() !== "")) return;
     const isOwnName = node.browseName.namespaceUri === node.nodeId.namespaceUri;
-    if (!isOwnName || !(isTypeNode(node) || isInstanceDeclaration(ctx, node.key))) return;
+    if (!isOwnName || !(isTypeNode(node) || isInstanceDeclaration(ctx, node.key)) || isDescribedElsewhere(node, ctx))
+      return;
     report({
       attribute: "description",
       message: `${node.browseName.name} has no Description.`,
@@ -30,3 +34,11 @@ export const r019: NodeRule = {
     bad: { text: "A type without a word.", build: (m) => m.objectType("TankType") },
   },
 };
+
+/** A copy of a member that the type of its parent declares is explained there. */
+function isDescribedElsewhere(node: Node, ctx: CheckContext): boolean {
+  return ctx.parentEdges(node.key).some(({ source }) => {
+    const type = findTypeDefinition(ctx, source);
+    return type !== undefined && getMembers(ctx, type).has(formatQualifiedName(node.browseName));
+  });
+}

@@ -4,7 +4,9 @@ import { RULES } from "~/domain/checks/registry";
 import { runChecks } from "~/domain/checks/run-checks";
 import { buildModel } from "../../../support/model-builder";
 
-const files = readdirSync(new URL("../../../../app/domain/checks/rules/", import.meta.url)).filter((f) => f.endsWith(".ts"));
+const files = readdirSync(new URL("../../../../app/domain/checks/rules/", import.meta.url)).filter((f) =>
+  f.endsWith(".ts"),
+);
 
 describe("registry of rules", () => {
   test("holds every rule file once, in the order of numbers", () => {

@@ -65,17 +65,25 @@ describe("updateChecks", () => {
 
   test("finds what a full run finds, after any edit of any model", () => {
     fc.assert(
-      fc.property(garbageSpace([getStandardLayer()]), fc.array(edit, { minLength: 1, maxLength: 6 }), (start, edits) => {
-        let run = startChecks(start);
-        let space = start;
-        for (const step of edits) {
-          if (step.kind === "put") space = space.withNode(step.node);
-          else if (step.kind === "remove") space = space.withoutNode(step.node.key);
-          else space = space.withHeader({ ...space.own.header, models: space.own.header.models.map((m) => ({ ...m, version: step.version })) });
-          run = updateChecks(run, space);
-          expect(run.findings).toEqual(runChecks(space));
-        }
-      }),
+      fc.property(
+        garbageSpace([getStandardLayer()]),
+        fc.array(edit, { minLength: 1, maxLength: 6 }),
+        (start, edits) => {
+          let run = startChecks(start);
+          let space = start;
+          for (const step of edits) {
+            if (step.kind === "put") space = space.withNode(step.node);
+            else if (step.kind === "remove") space = space.withoutNode(step.node.key);
+            else
+              space = space.withHeader({
+                ...space.own.header,
+                models: space.own.header.models.map((m) => ({ ...m, version: step.version })),
+              });
+            run = updateChecks(run, space);
+            expect(run.findings).toEqual(runChecks(space));
+          }
+        },
+      ),
       { numRuns: 300 },
     );
   });
@@ -104,7 +112,9 @@ describe("updateChecks", () => {
     const run = startChecks(space);
     expect(run.findings.filter((f) => f.rule === "R086")).toEqual([]);
     const speed = space.requireNode(made.speed);
-    const references = speed.references.map((r) => (r.type === R.HasModellingRule ? { ...r, target: standardKey(78) } : r));
+    const references = speed.references.map((r) =>
+      r.type === R.HasModellingRule ? { ...r, target: standardKey(78) } : r,
+    );
     const next = updateChecks(run, space.withNode({ ...speed, references }));
     expect(next.findings.filter((f) => f.rule === "R086").map((f) => f.key)).toEqual([made.pump]);
   });

@@ -1,19 +1,28 @@
 /** Conditions from OPC 10000-3 and -6 v1.05.06; the clause of each stands in the rule. */
 import { numericNodeId, OPC_UA_NAMESPACE, standardKey, toNodeKey } from "~/domain/address-space/node-id";
-import { StandardDataType as D, StandardReferenceType as R, StandardType as T } from "~/domain/address-space/standard-ids";
+import {
+  StandardDataType as D,
+  StandardReferenceType as R,
+  StandardType as T,
+} from "~/domain/address-space/standard-ids";
 import { getPublishedLayer, getStandardLayer } from "../../../../support/published-layers";
 import { describeRule } from "../../../../support/describe-rule";
 
 describeRule("R001", {
   valid: {
     "zero in a namespace of one's own": (m) => m.objectType("PumpType", { nodeId: numericNodeId(m.uri, 0) }),
-    "an empty text in a namespace of one's own": (m) => m.objectType("PumpType", { nodeId: { namespaceUri: m.uri, type: "s", identifier: "" } }),
+    "an empty text in a namespace of one's own": (m) =>
+      m.objectType("PumpType", { nodeId: { namespaceUri: m.uri, type: "s", identifier: "" } }),
   },
   invalid: {
-    "an empty text in namespace 0": (m) => m.objectType("A", { nodeId: { namespaceUri: OPC_UA_NAMESPACE, type: "s", identifier: "" } }),
+    "an empty text in namespace 0": (m) =>
+      m.objectType("A", { nodeId: { namespaceUri: OPC_UA_NAMESPACE, type: "s", identifier: "" } }),
     "an all-zero GUID in namespace 0": (m) =>
-      m.objectType("A", { nodeId: { namespaceUri: OPC_UA_NAMESPACE, type: "g", identifier: "00000000-0000-0000-0000-000000000000" } }),
-    "empty bytes in namespace 0": (m) => m.objectType("A", { nodeId: { namespaceUri: OPC_UA_NAMESPACE, type: "b", identifier: "" } }),
+      m.objectType("A", {
+        nodeId: { namespaceUri: OPC_UA_NAMESPACE, type: "g", identifier: "00000000-0000-0000-0000-000000000000" },
+      }),
+    "empty bytes in namespace 0": (m) =>
+      m.objectType("A", { nodeId: { namespaceUri: OPC_UA_NAMESPACE, type: "b", identifier: "" } }),
   },
 });
 
@@ -42,13 +51,17 @@ describeRule("R004", {
     },
   },
   invalid: {
-    "a namespace that no row of Models has": (m) => m.objectType("A", { nodeId: numericNodeId("http://example.org/UA/Other/", 1) }),
+    "a namespace that no row of Models has": (m) =>
+      m.objectType("A", { nodeId: numericNodeId("http://example.org/UA/Other/", 1) }),
     "the own URI without its closing slash": (m) => m.objectType("A", { nodeId: numericNodeId(m.uri.slice(0, -1), 1) }),
   },
 });
 
 describeRule("R006", {
-  valid: { "512 characters": (m) => m.objectType("x".repeat(512)), "letters of any script": (m) => m.objectType("ÖlTemperatur") },
+  valid: {
+    "512 characters": (m) => m.objectType("x".repeat(512)),
+    "letters of any script": (m) => m.objectType("ÖlTemperatur"),
+  },
   invalid: {
     "513 characters": (m) => m.objectType("x".repeat(513)),
     "an empty name": (m) => m.objectType(""),
@@ -113,10 +126,14 @@ describeRule("R012", {
     },
   },
   invalid: {
-    "InputArguments of a Method": (m) => m.property("InputArguments", { parent: m.method("Start", { parent: m.object("Pump1") }) }),
-    "EnumStrings of a DataType": (m) => m.property("EnumStrings", { parent: m.dataType("StateEnum", { supertype: D.Enumeration }) }),
+    "InputArguments of a Method": (m) =>
+      m.property("InputArguments", { parent: m.method("Start", { parent: m.object("Pump1") }) }),
+    "EnumStrings of a DataType": (m) =>
+      m.property("EnumStrings", { parent: m.dataType("StateEnum", { supertype: D.Enumeration }) }),
     "warning: a member of a declaration of a required model": (m) =>
-      m.property("SerialNumber", { parent: m.object("Pump1", { type: toNodeKey(numericNodeId("http://opcfoundation.org/UA/DI/", 1002)) }) }),
+      m.property("SerialNumber", {
+        parent: m.object("Pump1", { type: toNodeKey(numericNodeId("http://opcfoundation.org/UA/DI/", 1002)) }),
+      }),
   },
   required: [getStandardLayer(), getPublishedLayer("Opc.Ua.Di.NodeSet2.xml")],
 });
@@ -136,7 +153,11 @@ describeRule("R023", {
       m.reference(a, R.Organizes, toNodeKey(numericNodeId("http://example.org/UA/Other/", 1)));
     },
     "a target in another server": (m) =>
-      m.set(m.object("A"), { references: [{ type: R.HasComponent, target: standardKey(4294967290), isForward: true, serverUri: "urn:other" }] }),
+      m.set(m.object("A"), {
+        references: [
+          { type: R.HasComponent, target: standardKey(4294967290), isForward: true, serverUri: "urn:other" },
+        ],
+      }),
   },
   invalid: {
     "a missing supertype": (m) => m.objectType("A", { supertype: standardKey(4294967290) }),

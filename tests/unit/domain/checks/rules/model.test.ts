@@ -46,9 +46,28 @@ describe("toReport", () => {
     expect(report.file).toBe("press.xml");
     expect(report.counts).toEqual({ error: 1, warning: 0, hint: 0 });
     expect(report.findings).toMatchObject([
-      { rule: "R016", severity: "error", nodeId: "nsu=http://example.org/UA/Press/;i=1001", browseName: "PumpType", path: "PumpType", line: 7, column: 3 },
+      {
+        rule: "R016",
+        severity: "error",
+        nodeId: "nsu=http://example.org/UA/Press/;i=1001",
+        browseName: "PumpType",
+        path: "PumpType",
+        line: 7,
+        column: 3,
+      },
     ]);
-    expect(Object.keys(report.findings[0] ?? {})).toEqual(["rule", "severity", "nodeId", "browseName", "path", "line", "column", "message", "clause", "facts"]);
+    expect(Object.keys(report.findings[0] ?? {})).toEqual([
+      "rule",
+      "severity",
+      "nodeId",
+      "browseName",
+      "path",
+      "line",
+      "column",
+      "message",
+      "clause",
+      "facts",
+    ]);
   });
 
   test("takes the lines of a writer too", () => {
@@ -57,7 +76,11 @@ describe("toReport", () => {
   });
 
   test("turns problems that break a rule into findings and keeps them as problems", () => {
-    const twice = problem("nodeset.duplicate-node-id", { nodeId: "nsu=http://example.org/UA/Press/;i=1", firstLine: 4 }, { line: 12, column: 5 });
+    const twice = problem(
+      "nodeset.duplicate-node-id",
+      { nodeId: "nsu=http://example.org/UA/Press/;i=1", firstLine: 4 },
+      { line: 12, column: 5 },
+    );
     const report = toReport([], { file: "press.xml", lines: new Map(), problems: [twice] });
     expect(report.findings).toMatchObject([{ rule: "R002", severity: "error", line: 12, column: 5 }]);
     expect(report.problems).toMatchObject([{ code: "nodeset.duplicate-node-id", line: 12, column: 5 }]);

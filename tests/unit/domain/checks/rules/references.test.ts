@@ -1,12 +1,19 @@
 /** Conditions from OPC 10000-3, -5 and -6 v1.05.06; the clause of each stands in the rule. */
 import { numericNodeId, standardKey, toNodeKey } from "~/domain/address-space/node-id";
-import { StandardModellingRule, StandardReferenceType as R, StandardType as T } from "~/domain/address-space/standard-ids";
+import {
+  StandardModellingRule,
+  StandardReferenceType as R,
+  StandardType as T,
+} from "~/domain/address-space/standard-ids";
 import { describeRule } from "../../../../support/describe-rule";
 
 const HasArgumentDescription = standardKey(129);
 
 describeRule("R024", {
-  valid: { "a reference type of one's own": (m) => m.reference(m.object("A"), m.referenceType("Feeds", { inverseName: "IsFedBy" }), m.object("B")) },
+  valid: {
+    "a reference type of one's own": (m) =>
+      m.reference(m.object("A"), m.referenceType("Feeds", { inverseName: "IsFedBy" }), m.object("B")),
+  },
   invalid: {
     "an own abstract reference type": (m) => {
       const a = m.object("A");
@@ -62,7 +69,13 @@ describeRule("R027", {
 });
 
 describeRule("R029", {
-  valid: { "all three classes": (m) => (m.variable("V", { parent: m.object("A") }), m.method("M", { parent: m.object("B") }), m.object("O", { parent: m.object("C") })) },
+  valid: {
+    "all three classes": (m) => (
+      m.variable("V", { parent: m.object("A") }),
+      m.method("M", { parent: m.object("B") }),
+      m.object("O", { parent: m.object("C") })
+    ),
+  },
   invalid: {
     "a View below a subtype of HasComponent": (m) => {
       const a = m.object("A");
@@ -82,8 +95,12 @@ describeRule("R029", {
 describeRule("R030", {
   valid: {
     "HasArgumentDescription from a Method": (m) =>
-      m.variable("Speed", { parent: m.method("Start", { parent: m.object("Pump1") }), reference: HasArgumentDescription }),
-    "a DataVariable below a DataVariable": (m) => m.variable("Raw", { parent: m.variable("Speed", { parent: m.object("Pump1") }) }),
+      m.variable("Speed", {
+        parent: m.method("Start", { parent: m.object("Pump1") }),
+        reference: HasArgumentDescription,
+      }),
+    "a DataVariable below a DataVariable": (m) =>
+      m.variable("Raw", { parent: m.variable("Speed", { parent: m.object("Pump1") }) }),
   },
   invalid: { "a View as source": (m) => m.variable("Speed", { parent: m.view("Operation") }) },
 });
@@ -91,7 +108,8 @@ describeRule("R030", {
 describeRule("R031", {
   invalid: {
     "a Method below a Variable": (m) => m.method("Reset", { parent: m.variable("Counter", { parent: m.object("A") }) }),
-    "an Object by HasAddIn below a VariableType": (m) => m.object("Details", { parent: m.variableType("LevelType"), reference: R.HasAddIn, rule: "Optional" }),
+    "an Object by HasAddIn below a VariableType": (m) =>
+      m.object("Details", { parent: m.variableType("LevelType"), reference: R.HasAddIn, rule: "Optional" }),
   },
 });
 
@@ -102,8 +120,13 @@ describeRule("R032", {
 describeRule("R033", {
   valid: {
     "a non-hierarchical reference from a Property": (m) =>
-      m.reference(m.property("Label", { parent: m.object("A") }), m.referenceType("Explains", { inverseName: "IsExplainedBy" }), m.object("B")),
-    "children of a DataVariable": (m) => m.property("Label", { parent: m.variable("Speed", { parent: m.object("A") }) }),
+      m.reference(
+        m.property("Label", { parent: m.object("A") }),
+        m.referenceType("Explains", { inverseName: "IsExplainedBy" }),
+        m.object("B"),
+      ),
+    "children of a DataVariable": (m) =>
+      m.property("Label", { parent: m.variable("Speed", { parent: m.object("A") }) }),
   },
   invalid: {
     "Organizes from a Property": (m) => {
@@ -122,7 +145,10 @@ describeRule("R035", {
 
 describeRule("R036", {
   valid: { "a Property": (m) => m.property("Label", { parent: m.object("A") }) },
-  invalid: { "PropertyType below a subtype of HasComponent": (m) => m.variable("Label", { parent: m.object("A"), type: T.PropertyType, reference: R.HasOrderedComponent }) },
+  invalid: {
+    "PropertyType below a subtype of HasComponent": (m) =>
+      m.variable("Label", { parent: m.object("A"), type: T.PropertyType, reference: R.HasOrderedComponent }),
+  },
 });
 
 describeRule("R041", {
@@ -143,23 +169,33 @@ describeRule("R041", {
 });
 
 describeRule("R042", {
-  valid: { "a supertype of a model that is not loaded": (m) => m.objectType("A", { supertype: toNodeKey(numericNodeId("http://example.org/UA/Other/", 1)) }) },
+  valid: {
+    "a supertype of a model that is not loaded": (m) =>
+      m.objectType("A", { supertype: toNodeKey(numericNodeId("http://example.org/UA/Other/", 1)) }),
+  },
   invalid: {
     "a ReferenceType with two supertypes": (m) => {
       const type = m.referenceType("Feeds", { inverseName: "IsFedBy" });
-      m.set(type, { references: [...m.get(type).references, { type: R.HasSubtype, target: R.Organizes, isForward: false }] });
+      m.set(type, {
+        references: [...m.get(type).references, { type: R.HasSubtype, target: R.Organizes, isForward: false }],
+      });
       return type;
     },
     "warning: an ObjectType with two supertypes": (m) => {
       const type = m.objectType("A");
-      m.set(type, { references: [...m.get(type).references, { type: R.HasSubtype, target: T.FolderType, isForward: false }] });
+      m.set(type, {
+        references: [...m.get(type).references, { type: R.HasSubtype, target: T.FolderType, isForward: false }],
+      });
       return type;
     },
   },
 });
 
 describeRule("R049", {
-  valid: { "a type that is not loaded": (m) => m.object("A", { type: toNodeKey(numericNodeId("http://example.org/UA/Other/", 1)) }) },
+  valid: {
+    "a type that is not loaded": (m) =>
+      m.object("A", { type: toNodeKey(numericNodeId("http://example.org/UA/Other/", 1)) }),
+  },
   invalid: {
     "two type definitions": (m) => {
       const a = m.object("A");

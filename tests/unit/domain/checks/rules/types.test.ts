@@ -1,6 +1,10 @@
 /** Conditions from OPC 10000-3 and -6 v1.05.06; the clause of each stands in the rule. */
 import { standardKey } from "~/domain/address-space/node-id";
-import { StandardDataType as D, StandardReferenceType as R, StandardType as T } from "~/domain/address-space/standard-ids";
+import {
+  StandardDataType as D,
+  StandardReferenceType as R,
+  StandardType as T,
+} from "~/domain/address-space/standard-ids";
 import type { ExampleModel, NodeKey } from "../../../../support/model-builder";
 import { describeRule } from "../../../../support/describe-rule";
 
@@ -15,14 +19,27 @@ function ratedInterface(m: ExampleModel): NodeKey {
 
 describeRule("R066", {
   valid: {
-    "a declaration of an abstract type": (m) => m.object("Motor", { parent: m.objectType("PumpType"), type: m.objectType("MotorType", { isAbstract: true }), rule: "Mandatory" }),
+    "a declaration of an abstract type": (m) =>
+      m.object("Motor", {
+        parent: m.objectType("PumpType"),
+        type: m.objectType("MotorType", { isAbstract: true }),
+        rule: "Mandatory",
+      }),
   },
   invalid: {
     "an instance with a left-over rule below an instance": (m) =>
-      m.object("Motor", { parent: m.object("Pump1"), type: m.objectType("MotorType", { isAbstract: true }), rule: "Mandatory" }),
-    "a Variable of an abstract VariableType": (m) => m.variable("Level", { parent: m.object("Tank1"), type: m.variableType("LevelType", { isAbstract: true }) }),
+      m.object("Motor", {
+        parent: m.object("Pump1"),
+        type: m.objectType("MotorType", { isAbstract: true }),
+        rule: "Mandatory",
+      }),
+    "a Variable of an abstract VariableType": (m) =>
+      m.variable("Level", { parent: m.object("Tank1"), type: m.variableType("LevelType", { isAbstract: true }) }),
     "hint: a detached placeholder": (m) => {
-      const key = m.object("<Motor>", { type: m.objectType("MotorType", { isAbstract: true }), rule: "OptionalPlaceholder" });
+      const key = m.object("<Motor>", {
+        type: m.objectType("MotorType", { isAbstract: true }),
+        rule: "OptionalPlaceholder",
+      });
       m.removeReferences(key, R.Organizes);
       return key;
     },
@@ -31,11 +48,16 @@ describeRule("R066", {
 
 describeRule("R069", {
   valid: {
-    "a missing member below an absent optional one": (m) => m.reference(m.object("Pump1"), R.HasInterface, ratedInterface(m)),
+    "a missing member below an absent optional one": (m) =>
+      m.reference(m.object("Pump1"), R.HasInterface, ratedInterface(m)),
     "a placeholder that applies the Interface": (m) => {
       const face = m.objectType("IRatedType", { supertype: T.BaseInterfaceType, isAbstract: true });
       m.variable("Power", { parent: face, rule: "Mandatory" });
-      m.reference(m.object("<Pump>", { parent: m.objectType("PlantType"), rule: "OptionalPlaceholder" }), R.HasInterface, face);
+      m.reference(
+        m.object("<Pump>", { parent: m.objectType("PlantType"), rule: "OptionalPlaceholder" }),
+        R.HasInterface,
+        face,
+      );
     },
     "a member inherited from the supertype": (m) => {
       const face = m.objectType("IRatedType", { supertype: T.BaseInterfaceType, isAbstract: true });
@@ -65,13 +87,20 @@ describeRule("R069", {
 
 describeRule("R075", {
   valid: {
-    "a State": (m) => m.object("Idle", { parent: m.objectType("PumpStateMachineType", { supertype: standardKey(2771) }), type: StateType }),
-    "DefaultInstanceBrowseName": (m) => m.property("0:DefaultInstanceBrowseName", { parent: m.objectType("PumpType"), dataType: D.QualifiedName }),
-    "a Property of a DataType": (m) => m.property("0:EnumStrings", { parent: m.dataType("StateEnum", { supertype: D.Enumeration }) }),
+    "a State": (m) =>
+      m.object("Idle", {
+        parent: m.objectType("PumpStateMachineType", { supertype: standardKey(2771) }),
+        type: StateType,
+      }),
+    DefaultInstanceBrowseName: (m) =>
+      m.property("0:DefaultInstanceBrowseName", { parent: m.objectType("PumpType"), dataType: D.QualifiedName }),
+    "a Property of a DataType": (m) =>
+      m.property("0:EnumStrings", { parent: m.dataType("StateEnum", { supertype: D.Enumeration }) }),
     "a child of an instance": (m) => m.variable("Speed", { parent: m.object("Pump1") }),
   },
   invalid: {
-    "a child of a declaration": (m) => m.variable("Speed", { parent: m.object("Drive", { parent: m.objectType("PumpType"), rule: "Mandatory" }) }),
+    "a child of a declaration": (m) =>
+      m.variable("Speed", { parent: m.object("Drive", { parent: m.objectType("PumpType"), rule: "Mandatory" }) }),
   },
 });
 
@@ -87,12 +116,18 @@ describeRule("R080", {
     "a nested declaration against the member's own type": (m) => {
       const drive = m.objectType("DriveType");
       m.variable("Speed", { parent: drive, rule: "Mandatory" });
-      return m.variable("Speed", { parent: m.object("Drive", { parent: m.objectType("PumpType"), type: drive, rule: "Mandatory" }), rule: "Optional" });
+      return m.variable("Speed", {
+        parent: m.object("Drive", { parent: m.objectType("PumpType"), type: drive, rule: "Mandatory" }),
+        rule: "Optional",
+      });
     },
     "warning: an optional placeholder made mandatory": (m) => {
       const base = m.objectType("PlantType");
       m.object("<Pump>", { parent: base, rule: "OptionalPlaceholder" });
-      return m.object("<Pump>", { parent: m.objectType("BigPlantType", { supertype: base }), rule: "MandatoryPlaceholder" });
+      return m.object("<Pump>", {
+        parent: m.objectType("BigPlantType", { supertype: base }),
+        rule: "MandatoryPlaceholder",
+      });
     },
   },
 });
@@ -106,7 +141,10 @@ describeRule("R086", {
     },
     "nothing for placeholders": (m) => {
       const plant = m.objectType("PlantType");
-      m.variable("Speed", { parent: m.object("<Pump>", { parent: plant, rule: "MandatoryPlaceholder" }), rule: "Mandatory" });
+      m.variable("Speed", {
+        parent: m.object("<Pump>", { parent: plant, rule: "MandatoryPlaceholder" }),
+        rule: "Mandatory",
+      });
       m.object("Plant1", { type: plant });
     },
     "the declaration node itself as the instance's Method": (m) => {
