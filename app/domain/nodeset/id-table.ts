@@ -24,6 +24,7 @@ export class IdTable {
   readonly #serverUris: readonly string[];
   readonly #aliases: ReadonlyMap<string, string>;
   readonly #keys = new Map<string, NodeKey>();
+  readonly #aliasEnds = new Map<string, string | undefined>();
   readonly #reportedAliases = new Set<string>();
 
   constructor(namespaceUris: readonly string[], serverUris: readonly string[], aliases: ReadonlyMap<string, string>) {
@@ -85,19 +86,28 @@ export class IdTable {
   }
 
   #resolveText(text: string): Result<NodeKey> {
-    let at = text;
-    let passed: Set<string> | undefined;
-    for (let meaning = this.#aliases.get(at); meaning !== undefined; meaning = this.#aliases.get(at)) {
-      passed ??= new Set();
-      if (passed.has(at)) return fail(problem("nodeset.alias-cycle", { alias: text }));
-      passed.add(at);
-      at = meaning;
-    }
-    if (/^(?:ns=|nsu=|[isgb]=)/.test(at)) {
-      const result = parseNodeId(at, this.namespaceUris);
+    const end = this.#aliases.has(text) ? this.#followAliases(text) : text;
+    if (end === undefined) return fail(problem("nodeset.alias-cycle", { alias: text }));
+    if (/^(?:ns=|nsu=|[isgb]=)/.test(end)) {
+      const result = parseNodeId(end, this.namespaceUris);
       return result.ok ? ok(toNodeKey(result.value)) : result;
     }
-    return this.#resolveStandardName(at);
+    return this.#resolveStandardName(end);
+  }
+
+  /** What a chain of aliases ends at, undefined for a circle; remembered for each alias that was passed. */
+  #followAliases(alias: string): string | undefined {
+    const passed = new Set<string>();
+    let at: string | undefined = alias;
+    while (at !== undefined && !this.#aliasEnds.has(at)) {
+      const meaning = this.#aliases.get(at);
+      if (meaning === undefined) break;
+      passed.add(at);
+      at = passed.has(meaning) ? undefined : meaning;
+    }
+    const end = at !== undefined && this.#aliasEnds.has(at) ? this.#aliasEnds.get(at) : at;
+    for (const one of passed) this.#aliasEnds.set(one, end);
+    return end;
   }
 
   #resolveStandardName(alias: string): Result<NodeKey> {

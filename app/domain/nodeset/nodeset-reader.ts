@@ -24,7 +24,7 @@ import { readAttributes, type AttributeContext } from "./read-attributes";
 import type { NodeSetContent } from "./read-nodeset";
 import { findRootMeaning } from "./root-meanings";
 import { getLocalName, NamespaceScopes } from "./xml/namespace-scopes";
-import { ScanStop, type Attributes, type XmlHandler } from "./xml/scan-xml";
+import { ScanStop, type AttributeHint, type Attributes, type XmlHandler } from "./xml/scan-xml";
 import { PositionCounter, type Position } from "./xml/source-position";
 
 /** Where the reader stands; the name of the open element that decides what may follow. */
@@ -137,16 +137,19 @@ export class NodeSetReader implements XmlHandler {
     return model && this.#positions.at(model.offset);
   }
 
-  open(name: string, attributes: Attributes, start: number, end: number, declares: boolean): void {
+  open(name: string, attributes: Attributes, start: number, end: number, hint: AttributeHint): void {
     const depth = this.#states.length + this.#captureDepth;
-    if (declares) this.#scopes.declare(depth, attributes);
+    if (hint === "declaring") this.#scopes.declare(depth, attributes);
+    if (hint !== "plain") this.#requirePrefixes(attributes, start);
     if (this.#capture) {
+      if (name.includes(":")) this.#requirePrefix(name, start);
       this.#captureDepth++;
       this.#capture.open(name, attributes, start, end, depth);
       return;
     }
     this.#elementOffset = start;
     const isPlain = !name.includes(":");
+    if (!isPlain) this.#requirePrefix(name, start);
     const uri = isPlain ? this.#scopes.defaultUri : this.#scopes.uriOf(name);
     const local = isPlain ? name : getLocalName(name);
     if (this.#state === "document") {
@@ -159,9 +162,9 @@ export class NodeSetReader implements XmlHandler {
     else if (next !== "captured") this.#push(next);
   }
 
-  text(text: string): void {
-    if (this.#capture) this.#capture.text(text);
-    else if (this.#state === "leaf") this.#text += text;
+  text(start: number, end: number, resolved: string | undefined): void {
+    if (this.#capture) this.#capture.text(start, end, resolved);
+    else if (this.#state === "leaf") this.#text += resolved ?? this.#source.slice(start, end);
   }
 
   comment(text: string): void {
@@ -187,6 +190,17 @@ export class NodeSetReader implements XmlHandler {
     this.#states.pop();
     this.#state = this.#states.at(-1) ?? "document";
     this.#scopes.leave(this.#states.length);
+  }
+
+  /** Names with prefixes that nobody declared mean nothing (Namespaces in XML 1.0 §5). */
+  #requirePrefix(name: string, offset: number): void {
+    const prefix = name.slice(0, name.indexOf(":"));
+    if (prefix === "xmlns" || this.#scopes.find(prefix) !== undefined) return;
+    throw new ScanStop(problem("xml.prefix-undeclared", { prefix, name }, this.#positions.at(offset)));
+  }
+
+  #requirePrefixes(attributes: Attributes, offset: number): void {
+    for (const name in attributes) if (name.includes(":")) this.#requirePrefix(name, offset);
   }
 
   #push(state: State): void {

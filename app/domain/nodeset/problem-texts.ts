@@ -18,6 +18,7 @@ export const nodesetProblemTexts: Readonly<Record<string, string>> = {
   "xml.not-well-formed": "The XML is broken here: {detail}.",
   "xml.truncated": "The file ends too early: {detail}.",
   "pack.format": "This is no pack of the form {expected}, or it is damaged.",
+  "xml.prefix-undeclared": "{name} has the prefix {prefix}, which no element around it declares.",
   "nodeset.wrong-root": "The root element is {root}, so this is {what} and no NodeSet2 file.",
   "nodeset.wrong-namespace": "The root element UANodeSet is not in the namespace http://opcfoundation.org/UA/2011/03/UANodeSet.xsd.",
   "nodeset.no-model": "The file has no Models table. The first namespace of its table, {modelUri}, is taken as its model.",

@@ -66,8 +66,8 @@ export class RawCapture {
     this.#indexText = "";
   }
 
-  text(text: string): void {
-    if (this.#indexStart >= 0) this.#indexText += text;
+  text(start: number, end: number, resolved: string | undefined): void {
+    if (this.#indexStart >= 0) this.#indexText += resolved ?? this.#source.slice(start, end);
   }
 
   /** An element inside closes; `start` is the start of its end tag. */

@@ -62,9 +62,9 @@ class FragmentBuilder {
     });
   }
 
-  text(text: string): void {
+  text(start: number, end: number, resolved: string | undefined): void {
     const element = this.#open.at(-1);
-    if (element) element.text += text;
+    if (element) element.text += resolved ?? this.#source.slice(start, end);
   }
 
   comment(): void {
