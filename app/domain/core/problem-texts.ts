@@ -9,6 +9,7 @@ import { deliverProblemTexts } from "../deliver/problem-texts";
 import { editingProblemTexts } from "../editing/problem-texts";
 import { ioddProblemTexts } from "../iodd/problem-texts";
 import { mappingProblemTexts } from "../mapping/problem-texts";
+import { sourceProblemTexts } from "../mapping/source-problem-texts";
 import { testServerProblemTexts } from "../simulation/problem-texts";
 import { requestProblemTexts } from "./request-problem-texts";
 import { nodesetProblemTexts } from "../nodeset/problem-texts";
@@ -22,6 +23,7 @@ const texts: Readonly<Record<string, string>> = {
   ...editingProblemTexts,
   ...ioddProblemTexts,
   ...mappingProblemTexts,
+  ...sourceProblemTexts,
   ...requestProblemTexts,
   ...testServerProblemTexts,
 };
