@@ -13,6 +13,7 @@ import { securityHeaders } from "./utils/security-headers.server";
 
 const ONE_YEAR = "1y";
 const EXIT_LIMIT_MS = 4800;
+const MAX_FORM_BYTES = 2 * 1024 * 1024;
 
 type ApplicationEntry = {
   startApplication(): Promise<{ lines: readonly string[] }>;
@@ -74,6 +75,17 @@ const addOwnHeaders: RequestHandler = (request, response, next) => {
   next();
 };
 
+/** Forms are small; a large one is refused before it is read into memory. Files come as multipart or raw, with limits of their own. */
+const refuseLargeForms: RequestHandler = (request, response, next) => {
+  const isForm = request.headers["content-type"]?.startsWith("application/x-www-form-urlencoded") === true;
+  const length = request.headers["content-length"];
+  if (isForm && (length === undefined || Number(length) > MAX_FORM_BYTES)) {
+    response.status(413).set("connection", "close").type("text/plain").send("The form is too large.");
+    return;
+  }
+  next();
+};
+
 /** What goes wrong before the router: never a stack trace to the client. */
 const answerError: ErrorRequestHandler = (error: { status?: number; code?: string; message?: string }, _request, response, next) => {
   if (response.headersSent) {
@@ -96,6 +108,7 @@ async function createApplication(root: string, build: ApplicationBuild): Promise
   app.use(addOwnHeaders);
   app.use("/assets", express.static(join(client, "assets"), { immutable: true, maxAge: ONE_YEAR, fallthrough: false, redirect: false }));
   app.use(express.static(client, { maxAge: "1h", redirect: false, index: false }));
+  app.use(refuseLargeForms);
   app.use(createRequestHandler({ build, mode: "production" }));
   app.use(answerError);
   return app;

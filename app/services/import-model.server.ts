@@ -11,7 +11,7 @@ import { writePack } from "../domain/nodeset/pack";
 import { newId } from "../utils/ids.server";
 import { addModel } from "./add-model.server";
 import { describeHeader } from "./describe-header.server";
-import { listLibraryConflicts, suggestKind, suggestName } from "./preview-import.server";
+import { listLibraryConflicts, listModelConflicts, suggestKind, suggestName } from "./preview-import.server";
 import { listRefusals, type Upload } from "./read-upload.server";
 import { listDependents, resolveRequiredModels } from "./required-models.server";
 
@@ -25,6 +25,7 @@ export async function importModel(
   const { content } = upload;
   const { missing } = await resolveRequiredModels(organizationId, content.header);
   const refusals = [...listRefusals(upload), ...missing];
+  if (refusals.length === 0) refusals.push(...(await listModelConflicts(organizationId, upload)));
   if (refusals.length > 0) return fail(...refusals);
   const added = await addModel(author, organizationId, {
     name: intent.name ?? suggestName(upload),

@@ -3,6 +3,7 @@ import type { Caller } from "../auth/caller.server";
 import { findModelByNamespace } from "../db/repositories/models.server";
 import { listUploads } from "../db/repositories/uploads.server";
 import type { ModelEntry } from "../domain/address-space/model-header";
+import { OPC_UA_NAMESPACE } from "../domain/address-space/node-id";
 import type { Node, NodeClass } from "../domain/address-space/node";
 import { isTypeNode } from "../domain/address-space/node";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
@@ -80,6 +81,8 @@ export function dropPendingUpload(uploadId: string): void {
 
 export async function listModelConflicts(organizationId: string, upload: Upload): Promise<Problem[]> {
   const { namespaceUri } = upload;
+  // As a model of the team it would be put beneath all others in place of the published one.
+  if (namespaceUri === OPC_UA_NAMESPACE) return [problem("model.namespace-published", { namespaceUri })];
   const model = await findModelByNamespace(organizationId, namespaceUri);
   return model ? [problem("model.namespace-taken", { namespaceUri, name: model.name })] : [];
 }

@@ -126,6 +126,12 @@ export async function areLayersCurrent(layers: readonly RequiredLayer[]): Promis
   return true;
 }
 
+/** Whether the organisation's library, the published NodeSets among it, has a NodeSet of this namespace. */
+export async function isInLibrary(organizationId: string, modelUri: string): Promise<boolean> {
+  if (getLibrary().list().some((entry) => entry.modelUri === modelUri)) return true;
+  return (await listUploads(organizationId)).some((row) => row.modelUri === modelUri);
+}
+
 /** Names of the organisation's models and uploads that require this URI directly. */
 export async function listDependents(organizationId: string, modelUri: string): Promise<string[]> {
   const requires = (rows: readonly RequiredModelRow[]) => rows.some((row) => row.modelUri === modelUri);

@@ -4,7 +4,7 @@ import { addAuditStatement } from "../db/repositories/audit.server";
 import { removeModelStatement, updateModelStatement, type ModelRow } from "../db/repositories/models.server";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import { publish } from "./event-hub.server";
-import { listDependents } from "./required-models.server";
+import { isInLibrary, listDependents } from "./required-models.server";
 import { forgetWorkingModel, inModelTurn } from "./working-model.server";
 
 /** The name that the team gives the model; namespace and version belong to its contents. */
@@ -21,10 +21,11 @@ export async function renameModel(author: Caller, model: ModelRow, name: string)
 
 /**
  * Deletes a model with its history and sheets; the ledger of its identifiers stays, so that none is given again.
- * Problem: `model.required-by-others`.
+ * Problem: `model.required-by-others`, unless the library has the same namespace for them to fall back on.
  */
 export async function deleteModel(author: Caller, model: ModelRow): Promise<Result<null>> {
-  const users = await listDependents(model.organizationId, model.namespaceUri);
+  const isElsewhere = await isInLibrary(model.organizationId, model.namespaceUri);
+  const users = isElsewhere ? [] : await listDependents(model.organizationId, model.namespaceUri);
   if (users.length > 0) return fail(problem("model.required-by-others", { names: users.join(", ") }));
   await inModelTurn(model.id, async () => {
     await writeBatch([

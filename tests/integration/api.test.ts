@@ -184,6 +184,10 @@ describe("preview and library", () => {
     expect(layers.layers.map((l) => l.modelUri)).toEqual(["http://opcfoundation.org/UA/", uri]);
     for (const { packUrl } of layers.layers) expect((await app.call("GET", packUrl, { cookie })).status).toBe(200);
     expect((await removeFromLibrary(caller, organizationId, entry.value.id)).problems[0]?.code).toBe("library.entry-used");
+    // The same namespace as a model of the team may go again, since the library has it for those who require it.
+    const copy = await importModel(caller, organizationId, upload.value, { name: "Shelf" });
+    if (!copy.ok) throw new Error(copy.problems[0]?.code);
+    expect((await app.call("DELETE", `/api/v1/models/${copy.value.id}`, { cookie })).status).toBe(204);
     expect((await app.call("DELETE", `/api/v1/models/${model.value.id}`, { cookie })).status).toBe(204);
     expect((await removeFromLibrary(caller, organizationId, entry.value.id)).ok).toBe(true);
   });
