@@ -39,7 +39,7 @@ export function ColumnView({ column, index, selected, isLast, onSelect, onLoadMo
       aria-label={column.title}
       className={cx(
         "flex min-w-0 shrink-0 flex-col border-r border-rule",
-        index === 0 ? "w-[184px]" : column.children.some((child) => child.nodeClass === "Variable") ? "w-[clamp(224px,18.5vw,268px)]" : "w-[clamp(160px,13vw,188px)]",
+        index === 0 ? "w-[184px]" : column.children.some((child) => child.nodeClass === "Variable") ? "w-[clamp(236px,20vw,280px)]" : "w-[clamp(160px,13vw,188px)]",
         isLast ? "max-md:w-full max-md:border-r-0" : "max-md:hidden",
       )}
     >

@@ -26,8 +26,14 @@ export function LiveBar({ server, values }: { server: TestServerState; values: L
       <span className="font-mono text-note text-ink-3">{server.endpointUrl ?? "no endpoint"}</span>
       <span className="h-[18px] w-px bg-rule max-sm:hidden" />
       <StatusBadge status={isOver ? "bad" : stream === "running" ? "good" : "stale"} quiet>
-        {isOver ? `Test server ${server.state}` : STREAM_WORDS[stream]}
-        {stream === "running" && !isOver ? <span className="font-mono">{server.security.includes("basic256sha256") ? ", SignAndEncrypt" : ", None"}</span> : null}
+        <span>
+          {isOver ? `Test server ${server.state}` : STREAM_WORDS[stream]}
+          {stream === "running" && !isOver ? (
+            <>
+              , <span className="font-mono">{server.security.includes("basic256sha256") ? "SignAndEncrypt" : "None"}</span>
+            </>
+          ) : null}
+        </span>
       </StatusBadge>
       <span className="h-[18px] w-px bg-rule max-lg:hidden" />
       <span className="font-mono text-note text-ink-3 max-lg:hidden">{watched} nodes watched, published every 500 ms</span>

@@ -74,7 +74,7 @@ function LiveFigure({ node, card }: { node: BrowsedNode; card: NodeCard | null }
   const isScalar = typeof sample.value !== "object" || sample.value === null;
   return (
     <>
-      <div className="mt-2.5 flex items-end justify-between gap-4">
+      <div className="mt-2.5 flex flex-wrap items-end justify-between gap-x-4">
         {isScalar ? (
           <p data-live-value className={cx("min-w-0 truncate font-mono text-live font-medium tracking-[-0.03em]", isStale && "text-stale")}>
             {showValue(sample, range)}
@@ -83,7 +83,7 @@ function LiveFigure({ node, card }: { node: BrowsedNode; card: NodeCard | null }
         ) : (
           <pre data-live-value className={cx("max-h-40 min-w-0 flex-1 overflow-auto font-mono text-small", isStale && "text-stale")}>{JSON.stringify(sample.value, null, 1)}</pre>
         )}
-        <div className="grid shrink-0 justify-items-end gap-px pb-1 text-right">
+        <div className="grid shrink-0 justify-items-end gap-px pb-1 text-right max-md:w-full max-md:grid-cols-[auto_1fr] max-md:justify-items-start max-md:gap-3">
           <StatusBadge status={toStatus(sample, stream)}>
             <span className="font-mono">{nameStatus(sample, stream)}</span>
           </StatusBadge>

@@ -29,7 +29,7 @@ type Props = {
 
 /** Nodes kept in sight: one row each, all on one axis of time. */
 export function WatchStrip({ nodes, selected, onOpen, onRemove }: Props) {
-  const [span, setSpan] = useState<Span>("300");
+  const [span, setSpan] = useState<Span>("60");
   return (
     <section aria-label="Watch strip" className="flex min-h-[92px] flex-1 flex-col border-t-[1.5px] border-ink bg-paper max-md:min-h-60 max-md:flex-none">
       <header className="flex h-[38px] shrink-0 items-center gap-2.5 border-b border-rule px-5 max-md:px-4">
