@@ -86,7 +86,7 @@ describe("the demo's sign-in page", () => {
       await page.getByRole("button", { name: "Mei Castellan" }).click();
       await page.waitForURL((url) => url.pathname !== "/sign-in");
       await page.getByRole("button", { name: /Mei Castellan|Account/ }).click();
-      await page.getByRole("menuitem", { name: "Sign out" }).click();
+      await page.getByRole("button", { name: "Sign out" }).click();
       await page.waitForURL(/\/sign-in/);
       await page.goto("/models");
       expect(new URL(page.url()).pathname).toBe("/sign-in");

@@ -28,7 +28,10 @@ function makeFolder(): string {
 type Started = { child: ChildProcess; output: () => string; ended: Promise<number | null> };
 
 function start(args: readonly string[], env: Readonly<Record<string, string>>): Started {
-  const child = spawn(process.execPath, ["app/cli/launch.mjs", ...args], { cwd: projectRoot, env: { ...process.env, ...env } });
+  const child = spawn(process.execPath, ["app/cli/launch.mjs", ...args], {
+    cwd: projectRoot,
+    env: { ...process.env, ...env },
+  });
   running.push(child);
   let printed = "";
   child.stdout.on("data", (chunk) => (printed += String(chunk)));
@@ -59,11 +62,17 @@ async function signIn(url: string): Promise<string> {
     body: JSON.stringify({ email: "tomas@merrow.example", password: "six-braiders-one-model" }),
   });
   expect(answer.status).toBe(200);
-  return answer.headers.getSetCookie().map((cookie) => cookie.split(";")[0]).join("; ");
+  return answer.headers
+    .getSetCookie()
+    .map((cookie) => cookie.split(";")[0])
+    .join("; ");
 }
 
 async function listModels(url: string, cookie: string): Promise<{ id: string; name: string }[]> {
-  return (await (await fetch(`${url}/api/v1/models`, { headers: { cookie } })).json()) as { id: string; name: string }[];
+  return (await (await fetch(`${url}/api/v1/models`, { headers: { cookie } })).json()) as {
+    id: string;
+    name: string;
+  }[];
 }
 
 function isAlive(pid: number): boolean {

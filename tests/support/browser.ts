@@ -66,3 +66,10 @@ export async function findAccessibilityProblems(page: Page): Promise<string[]> {
     ),
   );
 }
+
+/** Signs in at the demo with one press and waits for the first page. */
+export async function signInAs({ page }: Visitor, name: string): Promise<void> {
+  await page.goto("/sign-in");
+  await page.getByRole("region", { name: "Demo accounts" }).getByRole("button", { name }).click();
+  await page.waitForURL((url) => url.pathname !== "/sign-in");
+}

@@ -20,7 +20,12 @@ export class Workbench {
     const layers: Layer[] = [getStandardLayer(), ...files.map(getPublishedLayer)];
     this.context = new BlockAllocator(TEST_NAMESPACE, [{ from: 5001, to: 90_000 }]);
     const requiredModels = layers.flatMap((l) => l.header.models.slice(0, 1));
-    const intent = { namespaceUri: TEST_NAMESPACE, version: "1.0.0", publicationDate: "2024-05-01T00:00:00Z", requiredModels };
+    const intent = {
+      namespaceUri: TEST_NAMESPACE,
+      version: "1.0.0",
+      publicationDate: "2024-05-01T00:00:00Z",
+      requiredModels,
+    };
     const { header, nodes } = getValue(createModel(layers, this.context, intent));
     this.space = AddressSpace.of(layers, buildLayer(header, nodes));
   }
@@ -46,7 +51,10 @@ export class Workbench {
   at(top: NodeKey, path: string): Node {
     let key = top;
     for (const name of path.split("/")) {
-      const found = this.space.edgesFrom(key).map((e) => this.space.getNode(e.target)).find((n) => n?.browseName.name === name);
+      const found = this.space
+        .edgesFrom(key)
+        .map((e) => this.space.getNode(e.target))
+        .find((n) => n?.browseName.name === name);
       if (!found) throw new Error(`No ${name} of ${path}`);
       key = found.key;
     }

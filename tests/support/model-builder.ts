@@ -9,7 +9,10 @@ export { ExampleModel } from "~/domain/checks/example-model";
 export type BuiltModel<T> = { readonly space: AddressSpace; readonly made: T; readonly model: ExampleModel };
 
 /** Builds the model that `write` describes; `made` is what it answers, usually keys of nodes. */
-export function buildModel<T>(write: (m: ExampleModel) => T, required: readonly Layer[] = [getStandardLayer()]): BuiltModel<T> {
+export function buildModel<T>(
+  write: (m: ExampleModel) => T,
+  required: readonly Layer[] = [getStandardLayer()],
+): BuiltModel<T> {
   const model = new ExampleModel();
   const made = write(model);
   const { header, nodes } = model.build();

@@ -10,7 +10,16 @@ import { makeNode, TEST_NAMESPACE } from "./small-standard";
 export type Choice = { kind: Operation["kind"]; a: number; b: number; c: number; text: string; flag: boolean };
 
 export const choice: fc.Arbitrary<Choice> = fc.record({
-  kind: fc.constantFrom<Operation["kind"]>("addNode", "addNode", "removeNode", "setAttribute", "setAttribute", "addReference", "removeReference", "setHeader"),
+  kind: fc.constantFrom<Operation["kind"]>(
+    "addNode",
+    "addNode",
+    "removeNode",
+    "setAttribute",
+    "setAttribute",
+    "addReference",
+    "removeReference",
+    "setHeader",
+  ),
   a: fc.nat(1000),
   b: fc.nat(1000),
   c: fc.nat(1000),
@@ -18,7 +27,16 @@ export const choice: fc.Arbitrary<Choice> = fc.record({
   flag: fc.boolean(),
 });
 
-const CLASSES: readonly NodeClass[] = ["Object", "Variable", "Method", "View", "ObjectType", "VariableType", "DataType", "ReferenceType"];
+const CLASSES: readonly NodeClass[] = [
+  "Object",
+  "Variable",
+  "Method",
+  "View",
+  "ObjectType",
+  "VariableType",
+  "DataType",
+  "ReferenceType",
+];
 const TYPES = [35, 46, 47, 45, 41].map(standardKey);
 
 function pick<T>(list: readonly T[], index: number): T {
@@ -66,7 +84,11 @@ function makeRandomNode(space: AddressSpace, { a, b, c, text, flag }: Choice, id
   const references: DeclaredReference[] = [{ type: pick(TYPES, b), target: parent, isForward: false }];
   if (flag) references.push({ type: standardKey(37), target: standardKey(78), isForward: true });
   if (c % 5 === 0) references.push(references[0] as DeclaredReference);
-  return makeNode(idBase + (c % 300), pick(CLASSES, b), { references, order: a % 40, description: [{ locale: "en", text }] });
+  return makeNode(idBase + (c % 300), pick(CLASSES, b), {
+    references,
+    order: a % 40,
+    description: [{ locale: "en", text }],
+  });
 }
 
 function makeAttribute({ a, b, c, text, flag }: Choice, idBase: number): { attribute: AttributeName; value?: unknown } {

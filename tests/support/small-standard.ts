@@ -74,6 +74,12 @@ export function makeNode(id: number, nodeClass: Node["nodeClass"], overrides: Pa
 }
 
 export function makeSpace(nodes: readonly Node[] = []): AddressSpace {
-  const models = [{ modelUri: TEST_NAMESPACE, version: "1.0.0", requiredModels: [{ modelUri: OPC_UA_NAMESPACE, requiredModels: [] }] }];
+  const models = [
+    {
+      modelUri: TEST_NAMESPACE,
+      version: "1.0.0",
+      requiredModels: [{ modelUri: OPC_UA_NAMESPACE, requiredModels: [] }],
+    },
+  ];
   return AddressSpace.of([smallStandard], buildLayer({ namespaceUris: [TEST_NAMESPACE], models }, nodes));
 }

@@ -111,12 +111,20 @@ function pickHandler(module: RouteModule, method: string): Handler | undefined {
   return method === "GET" || method === "HEAD" ? module.loader : module.action;
 }
 
-async function runHandler(handler: Handler, method: string, url: URL, options: CallOptions, params: Params): Promise<Response> {
+async function runHandler(
+  handler: Handler,
+  method: string,
+  url: URL,
+  options: CallOptions,
+  params: Params,
+): Promise<Response> {
   try {
     const answer = await handler({ request: makeRequest(method, url, options), params, context: {} });
     if (answer instanceof Response) return answer;
     const wrapped = answer as { type?: string; data?: unknown; init?: ResponseInit } | null;
-    return wrapped?.type === "DataWithResponseInit" ? Response.json(wrapped.data, wrapped.init) : Response.json(answer ?? null);
+    return wrapped?.type === "DataWithResponseInit"
+      ? Response.json(wrapped.data, wrapped.init)
+      : Response.json(answer ?? null);
   } catch (thrown) {
     if (thrown instanceof Response) return thrown;
     throw thrown;

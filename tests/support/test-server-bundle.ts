@@ -21,7 +21,10 @@ export async function buildTestServer(name: string): Promise<TestServerBundle> {
       outDir,
       emptyOutDir: true,
       rolldownOptions: {
-        input: { "test-server": join(root, "app/opcua/test-server/main.ts"), supervisor: join(root, "app/opcua/supervisor.server.ts") },
+        input: {
+          "test-server": join(root, "app/opcua/test-server/main.ts"),
+          supervisor: join(root, "app/opcua/supervisor.server.ts"),
+        },
       },
     },
   });
