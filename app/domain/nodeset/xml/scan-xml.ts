@@ -146,14 +146,18 @@ class XmlScan {
       const close = text.indexOf(";", reference);
       const name = close < 0 || close >= end ? "" : text.slice(reference + 1, close);
       const character = findReferenced(name);
-      if (character === undefined) {
-        if (close < 0 && end === text.length) this.#truncated("a reference has no end");
-        this.#fail(/^[^\s&;]{1,40}$/.test(name) ? `there is no entity &${name};` : "“&” stands alone; write &amp;", reference);
-      }
+      if (character === undefined) this.#failOnReference(name, reference);
       out += text.slice(at, reference) + character;
       at = close + 1;
     }
     return out + text.slice(at, end);
+  }
+
+  #failOnReference(name: string, offset: number): never {
+    if (/^[^\s&;<]{1,40}$/.test(name)) this.#fail(`there is no entity &${name};`, offset);
+    const isLast = offset + 40 > this.#text.length && /^&[^\s&;<]*$/.test(this.#text.slice(offset));
+    if (isLast) this.#truncated("a reference has no end");
+    this.#fail("“&” stands alone; write &amp;", offset);
   }
 
   #readStartTag(start: number): void {
