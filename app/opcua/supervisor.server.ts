@@ -9,6 +9,7 @@ import { fork, type ChildProcess } from "node:child_process";
 import { existsSync } from "node:fs";
 import { join } from "node:path";
 import { createInterface } from "node:readline";
+import { stripVTControlCharacters } from "node:util";
 import { problem, type Problem } from "~/domain/core/result";
 import type { LogLine, TestServerStage, TestServerState } from "~/domain/simulation/test-server-state";
 import { findProjectRoot } from "~/utils/project-root.server";
@@ -260,7 +261,7 @@ export class Supervisor {
       if (!stream) continue;
       createInterface({ input: stream }).on("line", (line) => {
         // Colour codes of a terminal and blank lines say nothing here.
-        const text = line.replace(/\u001b\[[0-9;]*m/g, "").trimEnd();
+        const text = stripVTControlCharacters(line).trimEnd();
         if (text !== "") this.#log(entry, "output", text.slice(0, 2000));
       });
     }

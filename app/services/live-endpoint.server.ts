@@ -10,7 +10,7 @@ import { getSupervisor } from "../opcua/supervisor.server";
 import { getEnvironment } from "../utils/env.server";
 import { singleton } from "../utils/singleton.server";
 
-type Pool = typeof import("../opcua/client/client-pool.server");
+type Pool = { getEndpointClient: (settings: EndpointSettings) => EndpointClient; disposeClient: (id: string) => Promise<void> };
 const pool = singleton<{ loading?: Promise<Pool> }>("endpoint-client-pool", () => ({}));
 
 /** The shared session with a running test server. Problem: `test-server.not-running`. */

@@ -102,7 +102,7 @@ function toColumn(nodeId: string, node: BrowsedNode | undefined, entry: { page: 
     nodeId,
     title: node?.displayName ?? "Objects",
     about: node ? (node.typeName ?? node.nodeClass) : OBJECTS_FOLDER,
-    aboutIsType: node?.typeName != null,
+    aboutIsType: typeof node?.typeName === "string",
     children: entry?.page?.children ?? [],
     continuation: entry?.page?.continuation ?? null,
     state: entry?.page ? "ready" : entry?.problem ? "failed" : "loading",
