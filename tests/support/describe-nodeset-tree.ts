@@ -51,9 +51,16 @@ function describeRoot(root: XmlElement): NodeSetDescription {
   };
 }
 
-/** `place`: "value" is the inside of a Value, where ids are elements and texts are kept to the character. */
-function describeElement(element: XmlElement, tables: Tables, place: "node" | "head" | "value", depth: number): string {
-  const inner = place === "node" && element.name === "Value" && element.namespaceUri === NODESET ? "value" : place;
+/** "value" is the inside of a Value, where ids are elements; "free" is XML that means nothing to OPC UA. */
+type Place = "node" | "head" | "value" | "free";
+
+function findInner(element: XmlElement, place: Place): Place {
+  if (place === "node" && element.name === "Value" && element.namespaceUri === NODESET) return "value";
+  return place === "value" && element.name === "XmlElement" && element.namespaceUri === TYPES ? "free" : place;
+}
+
+function describeElement(element: XmlElement, tables: Tables, place: Place, depth: number): string {
+  const inner = findInner(element, place);
   const attributes = element.attrs
     .map(
       ({ namespaceUri, name, value }) =>
@@ -65,7 +72,7 @@ function describeElement(element: XmlElement, tables: Tables, place: "node" | "h
   const head = `{${element.namespaceUri}}${element.name} ${attributes.join(" ")}`;
   if (children.length === 0) return `${head} "${describeText(element, tables, place)}"`;
   const lines = children.map((child) => describeElement(child, tables, inner, depth + 1));
-  const isUnordered = inner !== "value" && element.namespaceUri === NODESET;
+  const isUnordered = (inner === "node" || inner === "head") && element.namespaceUri === NODESET;
   // Between different elements the schema gives the order; among equal ones it is the file's, except for references.
   const ordered = isUnordered ? sortByName(lines, element.name === "References") : lines;
   return [head, ...ordered.filter((line) => !isEmptyReferences(line)).map((line) => indent + line)].join("\n");
@@ -88,20 +95,20 @@ function isEmptyReferences(line: string): boolean {
   return line === `{${NODESET}}References  ""`;
 }
 
-function describeAttribute(element: XmlElement, name: string, value: string, tables: Tables, place: string): string {
-  if (place === "value" || element.namespaceUri !== NODESET) return value;
+function describeAttribute(element: XmlElement, name: string, value: string, tables: Tables, place: Place): string {
+  if (place === "value" || place === "free" || element.namespaceUri !== NODESET) return value;
   if (ID_ATTRIBUTES.has(name)) return expandId(value, tables);
   if (name === "BrowseName" || (name === "Name" && NAME_PARENTS.has(element.name))) return expandName(value, tables);
   return value;
 }
 
-function describeText(element: XmlElement, tables: Tables, place: string): string {
+function describeText(element: XmlElement, tables: Tables, place: Place): string {
   const text = element.content;
   if (place === "value" && element.namespaceUri === TYPES) {
     if (element.name === "Identifier" && /^\s*(svr=\d+;)?ns=/.test(text)) return expandId(text.trim(), tables);
     if (element.name === "NamespaceIndex" && Number(text) > 0) return tables.uris[Number(text)] ?? `index ${text}`;
   }
-  if (place === "value" || element.namespaceUri !== NODESET) return text;
+  if (place === "value" || place === "free" || element.namespaceUri !== NODESET) return text;
   return element.name === "Reference" || element.name === "RolePermission" ? expandId(text.trim(), tables) : text;
 }
 

@@ -42,7 +42,7 @@ export class IdTable {
   resolve(text: string): Result<NodeKey> {
     const known = this.#keys.get(text);
     if (known !== undefined) return ok(known, NO_PROBLEMS);
-    const result = this.#resolveText(text.trim());
+    const result = this.#resolveText(trimId(text));
     if (result.ok) this.#keys.set(text, result.value);
     return result;
   }
@@ -51,7 +51,7 @@ export class IdTable {
   resolveTarget(text: string): Result<Target> {
     const known = this.#keys.get(text);
     if (known !== undefined) return ok({ key: known }, NO_PROBLEMS);
-    const trimmed = text.trim();
+    const trimmed = trimId(text);
     const match = /^(?:svr=(\d{1,9})|svu=([^;]+));/.exec(trimmed);
     if (!match) {
       const result = this.resolve(text);
@@ -70,7 +70,7 @@ export class IdTable {
 
   /** The NodeId of a node that is defined here: no alias, no other server. */
   parseOwn(text: string): Result<NodeId> {
-    return parseNodeId(text.trim(), this.namespaceUris);
+    return parseNodeId(trimId(text), this.namespaceUris);
   }
 
   /** A BrowseName. A name of namespace 0, the usual case of nothing before the name, costs no pattern. */
@@ -118,6 +118,14 @@ export class IdTable {
     this.#reportedAliases.add(alias);
     return ok(key, [problem.warning("nodeset.alias-undefined", { alias, nodeId: key })]);
   }
+}
+
+/** Without the white space that exporters put around ids; spaces at the end of a string identifier are part of it. */
+function trimId(text: string): string {
+  const trimmed = text.trim();
+  if (trimmed.length === text.length || !/^(?:[^;]*;){0,2}s=/.test(trimmed)) return trimmed;
+  const tail = text.slice(text.indexOf(trimmed) + trimmed.length);
+  return /[\r\n]/.test(tail) ? trimmed : trimmed + tail;
 }
 
 function unescapeUri(text: string): string {

@@ -175,8 +175,9 @@ export class NodeSetReader implements XmlHandler {
     if (this.#capture) {
       this.#captureDepth--;
       if (this.#captureDepth > 0) {
-        this.#capture.close(name, start);
-        this.#scopes.leave(this.#states.length + this.#captureDepth);
+        const depth = this.#states.length + this.#captureDepth;
+        this.#capture.close(name, start, depth);
+        this.#scopes.leave(depth);
         return;
       }
       const text = this.#capture.finish(start, end);

@@ -30,6 +30,8 @@ export class RawCapture {
   #edits: Edit[] | undefined;
   #indexStart = -1;
   #indexText = "";
+  /** Depth of an XmlElement that is open: what is in it means nothing to OPC UA. */
+  #freeDepth = Number.POSITIVE_INFINITY;
 
   /** To be made when the element opens, after its own declarations are in force. `depth` is the element's depth. */
   constructor(
@@ -58,10 +60,14 @@ export class RawCapture {
   open(name: string, attributes: Attributes, start: number, end: number, depth: number): void {
     this.#notePrefixes(name, attributes, start, depth);
     this.#indexStart = -1;
-    if (this.#mode !== "value") return;
+    if (this.#mode !== "value" || depth > this.#freeDepth) return;
     const local = getLocalName(name);
-    if (local !== "Identifier" && local !== "NamespaceIndex") return;
+    if (local !== "Identifier" && local !== "NamespaceIndex" && local !== "XmlElement") return;
     if (this.#scopes.uriOf(name) !== TYPES_XML_NAMESPACE) return;
+    if (local === "XmlElement") {
+      this.#freeDepth = depth;
+      return;
+    }
     this.#indexStart = end;
     this.#indexText = "";
   }
@@ -71,7 +77,8 @@ export class RawCapture {
   }
 
   /** An element inside closes; `start` is the start of its end tag. */
-  close(name: string, start: number): void {
+  close(name: string, start: number, depth: number): void {
+    if (depth === this.#freeDepth) this.#freeDepth = Number.POSITIVE_INFINITY;
     if (this.#indexStart < 0) return;
     const replaced =
       getLocalName(name) === "NamespaceIndex"

@@ -1,0 +1,104 @@
+/** Files of our own for what the schema allows, or readers must bear, and no published NodeSet contains. */
+import { readFileSync } from "node:fs";
+import { describe, expect, it } from "vitest";
+import { getValue } from "~/domain/core/result";
+import type { Node } from "~/domain/address-space/node";
+import { readNodeSet, type NodeSetContent } from "~/domain/nodeset/read-nodeset";
+import { readPack, writePack } from "~/domain/nodeset/pack";
+import { writeNodeSet } from "~/domain/nodeset/write-nodeset";
+import { validateXsd } from "~/library/validate-xsd.server";
+import { describeNodeSetTree, listHeadComments } from "../support/describe-nodeset-tree";
+
+function load(name: string): string {
+  return readFileSync(new URL(`../fixtures/nodesets/${name}.NodeSet2.xml`, import.meta.url), "utf8");
+}
+
+function nodeNamed(content: NodeSetContent, name: string): Node {
+  const node = content.nodes.find((one) => one.browseName.name === name);
+  if (!node) throw new Error(`No node ${name}`);
+  return node;
+}
+
+describe.each(["rare", "strange"])("the %s file", (name) => {
+  const text = load(name);
+  const content = getValue(readNodeSet(text));
+  const { xml } = writeNodeSet(content);
+
+  it("says after writing what it said before, by a comparer of its own", () => {
+    expect(describeNodeSetTree(xml)).toEqual(describeNodeSetTree(text));
+    expect(listHeadComments(xml)).toEqual(listHeadComments(text));
+  });
+
+  it("comes out the same when its own output is read and written", () => {
+    const again = getValue(readNodeSet(xml));
+    expect(writeNodeSet(again).xml).toBe(xml);
+    expect({ header: again.header, nodes: again.nodes }).toEqual({ header: content.header, nodes: content.nodes });
+  });
+
+  it("survives a pack", () => {
+    const pack = getValue(readPack(writePack(content)));
+    expect(writeNodeSet(pack).xml).toBe(xml);
+  });
+});
+
+describe("the rare file", () => {
+  const text = load("rare");
+  const content = getValue(readNodeSet(text));
+
+  it("is valid by the schema before and after", async () => {
+    expect(await validateXsd(text)).toEqual([]);
+    expect(await validateXsd(writeNodeSet(content).xml)).toEqual([]);
+  });
+
+  it("is read without a problem but the name that looks as if it had two indices", () => {
+    expect(readNodeSet(text).problems.map(({ code }) => code)).toEqual(["nodeset.browse-name-prefix"]);
+  });
+
+  it("keeps dates, locales and unused namespaces as written", () => {
+    expect(content.header.lastModified).toBe("2026-01-02T03:04:05.6789+02:00");
+    expect(content.header.models[0]?.requiredModels[1]?.publicationDate).toBe("2022-11-03T00:00:00.0000000");
+    expect(content.header.namespaceUris[0]).toBe("http://merrow.example/unused/");
+    expect(nodeNamed(content, "Rare").displayName.map(({ locale }) => locale)).toEqual([undefined, "de-DE", ""]);
+  });
+
+  it("knows targets on other servers by their URI", () => {
+    const servers = nodeNamed(content, "Rare").references.map((reference) => reference.serverUri);
+    expect(servers).toEqual([undefined, "urn:merrow:plc", "urn:merrow:scada", undefined, undefined, undefined]);
+  });
+
+  it("replaces indices in values by URIs, and nothing else", () => {
+    const node = nodeNamed(content, "1:Odd");
+    const xml = "value" in node ? node.value?.xml : undefined;
+    expect(xml).toContain("<uax:Identifier>nsu=http://merrow.example/rare/;s=a=b;c</uax:Identifier>");
+    expect(xml).toContain("<uax:Identifier>svr=1;nsu=http://merrow.example/a%3Bb%25c/;i=77</uax:Identifier>");
+    expect(xml).toContain("<uax:NamespaceIndex>http://opcfoundation.org/UA/DI/</uax:NamespaceIndex><uax:Name>2:Name</uax:Name>");
+    expect(xml).toContain("<uax:NamespaceIndex>0</uax:NamespaceIndex>");
+    expect(xml).toContain("<uax:NamespaceIndex>5</uax:NamespaceIndex></free>");
+  });
+
+  it("keeps duplicate references, since the file has them", () => {
+    expect(nodeNamed(content, "Owner").references).toHaveLength(3);
+  });
+
+  it("gives a new namespace the next index, and leaves the others", () => {
+    const [first, ...rest] = content.nodes;
+    if (!first) throw new Error("No nodes");
+    const added = { ...first, browseName: { namespaceUri: "http://merrow.example/new/", name: "New" } };
+    const again = getValue(readNodeSet(writeNodeSet({ ...content, nodes: [added, ...rest] }).xml));
+    expect(again.header.namespaceUris).toEqual([...content.header.namespaceUris, "http://merrow.example/new/"]);
+    expect(again.nodes.slice(1)).toEqual(rest);
+    expect(again.nodes[0]?.browseName).toEqual(added.browseName);
+  });
+});
+
+describe("the strange file", () => {
+  it("is read with its tables behind the nodes", () => {
+    const result = readNodeSet(load("strange"));
+    expect(result.problems.map(({ code, severity }) => `${severity} ${code}`)).toEqual([
+      "hint nodeset.header-order",
+    ]);
+    const content = getValue(result);
+    expect(content.isWhole).toBe(true);
+    expect(nodeNamed(content, "Own").key).toBe("nsu=http://merrow.example/strange/;i=1");
+  });
+});
