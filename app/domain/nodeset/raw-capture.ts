@@ -53,7 +53,7 @@ export class RawCapture {
     this.#depth = isWhole ? element.depth - 1 : element.depth;
     this.#start = isWhole ? element.start : element.end;
     if (isWhole) this.#notePrefixes(element.name, element.attributes, element.start, element.depth);
-    else this.#attributes = copyAttributes(element.attributes);
+    else this.#attributes = this.#takeAttributes(element.attributes);
   }
 
   /** An element inside opens; its declarations are in force already. */
@@ -110,6 +110,17 @@ export class RawCapture {
     return out + this.#source.slice(at, stop);
   }
 
+  /** What the tag around the content carries: its declarations are prefixes of the content, used in names or not. */
+  #takeAttributes(attributes: Attributes): Record<string, string> | undefined {
+    let kept: Record<string, string> | undefined;
+    for (const name in attributes) {
+      const value = attributes[name] ?? "";
+      if (name.startsWith("xmlns:")) (this.#prefixes ??= {})[name.slice(6)] = value;
+      else if (name !== "xmlns") (kept ??= {})[name] = value;
+    }
+    return kept;
+  }
+
   #notePrefixes(name: string, attributes: Attributes, start: number, depth: number): void {
     const colon = name.indexOf(":");
     if (colon >= 0) this.#notePrefix(name.slice(0, colon));
@@ -163,9 +174,4 @@ export class RawCapture {
   #reportIndex(text: string, index: number): void {
     this.#report(problem("node-id.namespace-index", { text, index, count: this.#namespaceUris.length }), this.#indexStart);
   }
-}
-
-function copyAttributes(attributes: Attributes): Record<string, string> | undefined {
-  const names = Object.keys(attributes).filter((name) => name !== "xmlns");
-  return names.length === 0 ? undefined : Object.fromEntries(names.map((name) => [name, attributes[name] ?? ""]));
 }

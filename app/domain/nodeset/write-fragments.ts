@@ -25,7 +25,7 @@ export function writeAround(
   let head = element;
   for (const [name, value] of Object.entries(text.attributes ?? {})) head += ` ${name}="${escapeAttribute(value)}"`;
   for (const [prefix, uri] of Object.entries(text.prefixes ?? {})) {
-    if (declared[prefix] === uri || text.attributes?.[`xmlns:${prefix}`] === uri) continue;
+    if (declared[prefix] === uri) continue;
     // Without prefix the declaration would also change the meaning of the element around.
     if (prefix === "" && !element.includes(":")) xml = insertIntoFirstTag(xml, ` xmlns="${escapeAttribute(uri)}"`);
     else head += declaration(prefix, uri);
