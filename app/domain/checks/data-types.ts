@@ -1,7 +1,7 @@
 /** Questions about DataTypes: what their values are encoded as (OPC 10000-6 §5.1.2), their fields with inherited ones. */
 import type { DataTypeField } from "../address-space/node";
-import { standardKey, type NodeKey } from "../address-space/node-id";
-import { StandardDataType as D } from "../address-space/standard-ids";
+import { parseNodeId, standardKey, type NodeKey } from "../address-space/node-id";
+import { StandardDataType as D, StandardReferenceType } from "../address-space/standard-ids";
 import type { CheckContext, Lookup } from "./check-context";
 import { isChainLoaded, isKindOf, listSupertypes } from "./lookups";
 
@@ -89,4 +89,14 @@ export function listFields(ctx: CheckContext, dataType: NodeKey): readonly DataT
 /** `name (nsu=…)` of a DataType, for messages. */
 export function nameDataType(ctx: CheckContext, dataType: NodeKey): string {
   return ctx.node(dataType)?.browseName.name ?? dataType;
+}
+
+/** The DataType behind a TypeId of a value: one of its encodings, or the DataType itself. Undefined when it is not loaded. */
+export function findDataTypeOf(ctx: CheckContext, typeId: string): NodeKey | undefined {
+  const parsed = parseNodeId(typeId, []);
+  if (!parsed.ok) return undefined;
+  const [key] = ctx.listWithNodeId(parsed.value);
+  if (key === undefined) return undefined;
+  if (ctx.node(key)?.nodeClass === "DataType") return key;
+  return ctx.otherEdgesTo(key).find((e) => e.type === StandardReferenceType.HasEncoding)?.source;
 }

@@ -91,16 +91,46 @@ import { r092 } from "./rules/r092-method-copy-linked";
 import { r093 } from "./rules/r093-state-machine-type";
 import { r094 } from "./rules/r094-state-machine-instance";
 import { r095 } from "./rules/r095-data-type";
+import { r096 } from "./rules/r096-base-data-type";
 import { r097 } from "./rules/r097-data-type-narrows";
 import { r098 } from "./rules/r098-value-rank-narrows";
 import { r099 } from "./rules/r099-array-dimensions";
+import { r100 } from "./rules/r100-array-dimensions-refined";
 import { r101 } from "./rules/r101-value-matches-rank";
+import { r102 } from "./rules/r102-value-length";
 import { r103 } from "./rules/r103-value-matches-data-type";
+import { r104 } from "./rules/r104-value-in-enumeration";
+import { r105 } from "./rules/r105-structure-fields";
+import { r106 } from "./rules/r106-value-of-abstract-type";
+import { r107 } from "./rules/r107-access-level-bits";
+import { r108 } from "./rules/r108-user-access-level";
+import { r109 } from "./rules/r109-setpoint-access";
+import { r111 } from "./rules/r111-semantic-change";
+import { r112 } from "./rules/r112-historizing";
+import { r113 } from "./rules/r113-sampling-interval";
+import { r114 } from "./rules/r114-event-notifier-bits";
+import { r115 } from "./rules/r115-mask-bits";
+import { r116 } from "./rules/r116-length-properties";
+import { r117 } from "./rules/r117-fixed-size-array";
+import { r118 } from "./rules/r118-properties-of-properties";
 import { r119 } from "./rules/r119-analog-item-range";
 import { r120 } from "./rules/r120-analog-unit";
+import { r121 } from "./rules/r121-analog-numeric";
+import { r122 } from "./rules/r122-number-without-unit";
 import { r123 } from "./rules/r123-units-on-numbers";
+import { r124 } from "./rules/r124-unit-has-value";
 import { r125 } from "./rules/r125-unit-namespace";
 import { r126 } from "./rules/r126-unit-id";
+import { r127 } from "./rules/r127-unit-texts";
+import { r128 } from "./rules/r128-range-order";
+import { r129 } from "./rules/r129-ranges-nested";
+import { r130 } from "./rules/r130-instrument-range-fits";
+import { r131 } from "./rules/r131-two-state-discrete";
+import { r132 } from "./rules/r132-multi-state-discrete";
+import { r133 } from "./rules/r133-multi-state-value-discrete";
+import { r134 } from "./rules/r134-discrete-item-concrete";
+import { r135 } from "./rules/r135-array-items";
+import { r136 } from "./rules/r136-value-precision";
 import { r181 } from "./rules/r181-namespace-metadata";
 
 export const RULES: readonly Rule[] = [
@@ -195,16 +225,46 @@ export const RULES: readonly Rule[] = [
   r093,
   r094,
   r095,
+  r096,
   r097,
   r098,
   r099,
+  r100,
   r101,
+  r102,
   r103,
+  r104,
+  r105,
+  r106,
+  r107,
+  r108,
+  r109,
+  r111,
+  r112,
+  r113,
+  r114,
+  r115,
+  r116,
+  r117,
+  r118,
   r119,
   r120,
+  r121,
+  r122,
   r123,
+  r124,
   r125,
   r126,
+  r127,
+  r128,
+  r129,
+  r130,
+  r131,
+  r132,
+  r133,
+  r134,
+  r135,
+  r136,
   r181,
 ];
 

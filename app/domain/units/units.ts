@@ -26,7 +26,12 @@ export type Unit = {
   readonly quantity?: string;
 };
 
-type Entry = Unit & { readonly group: string; readonly factor: number | undefined; readonly folded: readonly string[] };
+type Entry = Unit & {
+  readonly group: string;
+  readonly symbols: readonly string[];
+  readonly factor: number | undefined;
+  readonly folded: readonly string[];
+};
 
 let table: { entries: readonly Entry[]; byCode: ReadonlyMap<string, Entry> } | undefined;
 
@@ -46,6 +51,7 @@ function parseRow(row: string): Entry {
     code,
     unitId: toUnitId(code),
     symbol: symbols[0] ?? cell,
+    symbols: symbols.length > 1 ? [...symbols, cell] : symbols,
     name,
     ...(quantity === undefined ? {} : { quantity }),
     group,
@@ -56,7 +62,13 @@ function parseRow(row: string): Entry {
 
 /** Case, blanks and points do not matter; `µ` has two code points, `·` and `*` mean the same. */
 function fold(text: string): string {
-  return text.normalize("NFKC").toLowerCase().replace(/[\s.]+/g, "").replace(/[*⋅]/g, "·").replace(/metre/g, "meter").replace(/litre/g, "liter");
+  return text
+    .normalize("NFKC")
+    .toLowerCase()
+    .replace(/[\s.]+/g, "")
+    .replace(/[*⋅]/g, "·")
+    .replace(/metre/g, "meter")
+    .replace(/litre/g, "liter");
 }
 
 /** The unit's code as a number: its characters, the first in the highest byte (OPC 10000-8 §5.6.3.4). */
@@ -80,6 +92,11 @@ export function unitByCode(code: string): Unit | undefined {
 export function unitById(unitId: number): Unit | undefined {
   const code = toUnitCode(unitId);
   return code === undefined ? undefined : getTable().byCode.get(code);
+}
+
+/** The symbols that the published table allows for a unit: `%` and `pct`, and the cell `% or pct` as a whole. */
+export function listSymbols(unit: Unit): readonly string[] {
+  return getTable().byCode.get(unit.code)?.symbols ?? [unit.symbol];
 }
 
 /** All units in the order of the published table. */
@@ -111,7 +128,10 @@ export function findUnits(query: string, limit = 20): Unit[] {
   const scored = entries
     .map((entry) => ({ entry, score: rate(entry, query.trim(), wanted, synonym) }))
     .filter(({ score }) => score > 0);
-  scored.sort((a, b) => b.score - a.score || a.entry.name.length - b.entry.name.length || a.entry.name.localeCompare(b.entry.name, "en"));
+  scored.sort(
+    (a, b) =>
+      b.score - a.score || a.entry.name.length - b.entry.name.length || a.entry.name.localeCompare(b.entry.name, "en"),
+  );
   return scored.slice(0, limit).map(({ entry }) => entry);
 }
 
@@ -138,7 +158,11 @@ const OFFSETS: Readonly<Record<string, number>> = { CEL: 273.15, FAH: (459.67 * 
 export function canConvert(from: string, to: string): boolean {
   const a = getTable().byCode.get(from);
   const b = getTable().byCode.get(to);
-  return a !== undefined && b !== undefined && (a === b || (a.group !== "" && a.group === b.group && a.factor !== undefined && b.factor !== undefined));
+  return (
+    a !== undefined &&
+    b !== undefined &&
+    (a === b || (a.group !== "" && a.group === b.group && a.factor !== undefined && b.factor !== undefined))
+  );
 }
 
 /**

@@ -1,6 +1,8 @@
 import { isAbstract } from "../../address-space/node";
 import { findModellingRule, findTypeAbove, findTypeDefinition } from "../lookups";
 import { clause, type NodeRule } from "../rule";
+import { StandardType } from "../../address-space/standard-ids";
+import { StandardNode } from "../standard-nodes";
 
 export const r066: NodeRule = {
   id: "R066",
@@ -15,7 +17,14 @@ export const r066: NodeRule = {
   check(node, ctx, report) {
     const typeKey = findTypeDefinition(ctx, node.key);
     const type = typeKey === undefined ? undefined : ctx.node(typeKey);
-    if (!type || !isAbstract(type)) return;
+    // DiscreteItemType and ArrayItemType have rules of their own, R134 and R135.
+    if (
+      !type ||
+      !isAbstract(type) ||
+      type.key === StandardType.DiscreteItemType ||
+      type.key === StandardNode.ArrayItemType
+    )
+      return;
     const hasRule = findModellingRule(ctx, node.key) !== undefined;
     if (hasRule && findTypeAbove(ctx, node.key) !== undefined) return;
     const isDetached = hasRule && ctx.parentEdges(node.key).length === 0;

@@ -1,5 +1,5 @@
 import type { Node } from "../../address-space/node";
-import type { NodeKey } from "../../address-space/node-id";
+import { standardKey, type NodeKey } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardModellingRule as M } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
@@ -58,13 +58,21 @@ type Walk = {
 
 const MAX_DEPTH = 20;
 
+/**
+ * Members of Data Access types that R119, R120, R131, R132, R133 and R135 ask for with better words: EURange and
+ * EngineeringUnits of analog items, TrueState, FalseState, EnumStrings, EnumValues, ValueAsText, and those of array items.
+ */
+const TOLD_BY_DATA_ACCESS: ReadonlySet<NodeKey> = new Set(
+  [2369, 17502, 17575, 2374, 2375, 2377, 11241, 11461, 12025, 12026, 12027, 12028].map(standardKey),
+);
+
 /** Members of the type on `at`, and below the members found what the type declares below their declarations. */
 function checkBelow(walk: Walk, at: Node, members: readonly Member[], path: readonly string[]): void {
   if (path.length > MAX_DEPTH) return;
   const { ctx } = walk;
   const children = getChildren(ctx, at.key);
   for (const member of members) {
-    if (!isNaming(member.rule)) continue;
+    if (!isNaming(member.rule) || TOLD_BY_DATA_ACCESS.has(member.node.key)) continue;
     const name = formatQualifiedName(member.node.browseName);
     const child = children.get(name)?.find((c) => c.nodeClass === member.node.nodeClass);
     const memberPath = [...path, member.node.browseName.name];

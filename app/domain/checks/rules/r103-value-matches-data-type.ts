@@ -1,10 +1,9 @@
 import { getDataType, hasValueAttributes, type VariableNode, type VariableTypeNode } from "../../address-space/node";
-import { parseNodeId, type NodeKey } from "../../address-space/node-id";
-import { StandardDataType as D, StandardReferenceType as R } from "../../address-space/standard-ids";
+import { StandardDataType as D } from "../../address-space/standard-ids";
 import { findChild, type ValueElement } from "../value-element";
 import { isBuiltInText } from "../built-in-text";
 import type { CheckContext } from "../check-context";
-import { findAllowedBuiltIns } from "../data-types";
+import { findAllowedBuiltIns, findDataTypeOf } from "../data-types";
 import { scalar } from "../example-values";
 import type { ReportFunction } from "../finding";
 import { isChainLoaded, isKindOf } from "../lookups";
@@ -92,7 +91,7 @@ function checkTypeIds(
     const text = findTypeId(element);
     if (text === undefined || seen.has(text)) continue;
     seen.add(text);
-    const found = findDataTypeOf(text, ctx);
+    const found = findDataTypeOf(ctx, text);
     if (found === undefined || !isChainLoaded(ctx, found) || isKindOf(ctx, found, dataType)) continue;
     report({
       attribute: "value",
@@ -100,14 +99,4 @@ function checkTypeIds(
       facts: [`TypeId: ${text}, which stands for ${ctx.describe(found)}`, `DataType: ${ctx.describe(dataType)}`],
     });
   }
-}
-
-/** The DataType behind a TypeId: an encoding of it, or the DataType itself. Undefined when the node is not loaded. */
-function findDataTypeOf(typeId: string, ctx: CheckContext): NodeKey | undefined {
-  const parsed = parseNodeId(typeId, []);
-  if (!parsed.ok) return undefined;
-  const [key] = ctx.listWithNodeId(parsed.value);
-  if (key === undefined) return undefined;
-  if (ctx.node(key)?.nodeClass === "DataType") return key;
-  return ctx.otherEdgesTo(key).find((e) => e.type === R.HasEncoding)?.source;
 }

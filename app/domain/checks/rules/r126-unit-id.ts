@@ -1,5 +1,6 @@
 import { hasValueAttributes } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
+import { unitById } from "../../units/units";
 import { CELSIUS, unit } from "../example-values";
 import { clause, type NodeRule } from "../rule";
 import { decodeUnitId, IEC_URI, isUnece, listUnits } from "../unit-values";
@@ -12,7 +13,7 @@ export const r126: NodeRule = {
   priority: 1,
   concerns: ["Variable", "VariableType"],
   condition:
-    "Beside the UN/CEFACT namespace the unitId is a common code: two or three characters 0–9, A–Z as bytes, high byte first. −1, “not available”, is a warning. Beside the IEC 62720 namespace it holds six characters of five bits.",
+    "Beside the UN/CEFACT namespace the unitId is a common code: two or three characters 0–9, A–Z as bytes, high byte first. −1, “not available”, and a code that the published table does not have are warnings. Beside the IEC 62720 namespace it holds six characters of five bits.",
   why: "Clients find symbol and conversion by the code; a number of another system names another unit or none.",
   check(node, _ctx, report) {
     if (!hasValueAttributes(node)) return;
@@ -45,6 +46,13 @@ export const r126: NodeRule = {
           message: `The unitId ${value.unitId || "0"} of ${name} is no UN/CEFACT code.`,
           facts: [...facts, "A code is two or three characters as bytes: °C is CEL, 0x43454C, 4408652."],
           data: { symbol: value.symbol },
+        });
+      } else if (unitById(unitId) === undefined) {
+        report({
+          severity: "warning",
+          attribute: "value",
+          message: `The unit code ${decodeUnitId(unitId) ?? ""} of ${name} is not in the published table.`,
+          facts: [...facts, "The table leaves out doubled and deleted codes of Recommendation 20, and it grows."],
         });
       }
     }
