@@ -15,6 +15,7 @@ export default [
   route("events", "routes/data/events.ts"),
   route("events/topics", "routes/data/event-topics.ts"),
   route("packs/:hash", "routes/data/pack.ts"),
+  route("team/audit.csv", "routes/data/audit.ts"),
   ...prefix("models/:modelId", [
     route("pack", "routes/data/model-pack.ts"),
     route("layers", "routes/data/model-layers.ts"),
@@ -32,6 +33,8 @@ export default [
     route("v1/models/:modelId", "routes/api/model.ts"),
     route("v1/models/:modelId/nodeset", "routes/api/model-nodeset.ts"),
     route("v1/models/:modelId/findings", "routes/api/model-findings.ts"),
+    route("v1/models/:modelId/revisions", "routes/api/revisions.ts"),
+    route("v1/models/:modelId/revisions/:number/nodeset", "routes/api/revision-nodeset.ts"),
     route("*", "routes/api/not-found.ts"),
   ]),
   layout("routes/frame.tsx", [

@@ -1,12 +1,14 @@
 /** The OpenAPI 3.1 document of /api/v1, made of the schemas that the routes check and answer with. */
 import { z } from "zod";
-import { findingsSchema, modelSchema, problemDocumentSchema } from "../utils/api-schemas";
+import { findingsSchema, modelSchema, problemDocumentSchema, revisionSchema } from "../utils/api-schemas";
 import { testServerAnswerSchema } from "./describe-test-server.server";
+import { freezeSchema } from "./freeze-revision.server";
 import { testServerIntentSchema } from "./start-test-server.server";
 
 const schemas = {
   Model: modelSchema,
   Findings: findingsSchema,
+  Revision: revisionSchema,
   TestServer: testServerAnswerSchema,
   Problem: problemDocumentSchema,
 } as const;
@@ -107,6 +109,28 @@ const paths = {
       operationId: "listFindings",
       summary: "What the checker says of the working state",
       responses: { 200: json(refTo("Findings"), "The report"), ...problems(401, 403, 404) },
+    },
+  },
+  "/models/{modelId}/revisions": {
+    parameters: [pathId("modelId")],
+    get: {
+      operationId: "listRevisions",
+      summary: "The frozen states of a model, newest first",
+      responses: { 200: json({ type: "array", items: refTo("Revision") }, "The revisions"), ...problems(401, 403, 404) },
+    },
+    post: {
+      operationId: "freezeRevision",
+      summary: "Freeze the working state",
+      requestBody: { required: true, content: { "application/json": { schema: toJsonSchema(freezeSchema, "input") } } },
+      responses: { 201: json(refTo("Revision"), "The revision"), ...problems(400, 401, 403, 404, 409, 415, 422) },
+    },
+  },
+  "/models/{modelId}/revisions/{number}/nodeset": {
+    parameters: [pathId("modelId"), { name: "number", in: "path", required: true, schema: { type: "integer", minimum: 0 } }],
+    get: {
+      operationId: "exportRevision",
+      summary: "The NodeSet2 file of a revision",
+      responses: { 200: { description: "The file", content: nodeSetBody }, ...problems(401, 403, 404) },
     },
   },
   "/models/{modelId}/test-servers": {

@@ -56,6 +56,21 @@ export const problemDocumentSchema = z
   })
   .meta({ id: "Problem", description: "A problem document after RFC 9457." });
 
+export const revisionSchema = z
+  .object({
+    number: z.int().min(0),
+    seq: z.int().min(0).meta({ description: "The last transaction that it holds." }),
+    hash: z.string().meta({ description: "SHA-256 of the contents; equal contents have equal hashes." }),
+    message: z.string(),
+    author: z.string(),
+    at: z.iso.datetime(),
+    nodeCount: z.int(),
+    counts: z.object({ error: z.int(), warning: z.int(), hint: z.int() }).nullable(),
+    pinned: z.array(z.object({ modelUri: z.string(), version: z.string().nullable(), publicationDate: z.string().nullable() })),
+  })
+  .meta({ id: "Revision", description: "A frozen state of a model; number 0 is what it began with." });
+
+export type RevisionJson = z.infer<typeof revisionSchema>;
 export type ModelJson = z.infer<typeof modelSchema>;
 
 export function toModelJson(row: ModelJson): ModelJson {

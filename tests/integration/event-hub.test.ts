@@ -23,7 +23,7 @@ type Tab = { streamId: string; next(): Promise<Message>; listen(...topics: strin
 
 async function openTab(as: string, after?: number): Promise<Tab> {
   const abort = new AbortController();
-  const headers = after === undefined ? {} : { "last-event-id": String(after) };
+  const headers: Record<string, string> = after === undefined ? {} : { "last-event-id": String(after) };
   const answer = await app.call("GET", "/events", { cookie: as, headers, signal: abort.signal });
   expect(answer.headers.get("content-type")).toContain("text/event-stream");
   expect(answer.headers.get("cache-control")).toBe("no-cache, no-transform");

@@ -120,6 +120,30 @@ test("leases blocks that never overlap, also after the model was deleted and imp
   expect((await lease(modelId, "d")).from).toBeGreaterThan(highest);
 });
 
+test("hundreds of edits are snapshotted, and a fresh load replays to the same state", async () => {
+  let base = 0;
+  for (let batch = 0; batch < 9; batch++) {
+    const transactions = Array.from({ length: 50 }, (_, i) => {
+      const clientSeq = batch * 50 + i;
+      return { clientSeq, label: "rename", operations: [rename(`Speed ${clientSeq}`)] };
+    });
+    const answer = await post({ clientId: "burst", base, transactions });
+    expect(answer.status).toBe(200);
+    base = answer.json.head;
+  }
+  expect(base).toBe(450);
+  const { loadWorkingModel, forgetWorkingModel } = await import("~/services/working-model.server");
+  const { findStoredState } = await import("~/db/repositories/models.server");
+  await expect.poll(async () => (await findStoredState(modelId, base))?.seq).toBe(400);
+  const before = (await loadWorkingModel(modelId))?.space.listOwnNodes();
+  forgetWorkingModel(modelId);
+  const after = await loadWorkingModel(modelId);
+  expect(after?.seq).toBe(450);
+  expect(after?.space.listOwnNodes()).toEqual(before);
+  const older = await app.call("GET", `/models/${modelId}/pack?seq=7`, { cookie });
+  expect(await older.text()).toContain("Speed 6");
+});
+
 test("a sheet keeps its layout with unknown parts, and an old version is refused", async () => {
   const [sheet] = (await (await app.call("GET", `/models/${modelId}/sheets`, { cookie })).json()) as { id: string }[];
   const path = `/models/${modelId}/sheets/${sheet?.id}`;

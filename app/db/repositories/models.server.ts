@@ -1,5 +1,5 @@
 /** Models and their working state as rows. Statements for writes are answered, so that a use case writes one batch. */
-import { and, asc, desc, eq, gt, inArray, lte, sql } from "drizzle-orm";
+import { and, asc, desc, eq, gt, inArray, lte } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import type { Transaction } from "../../domain/editing/operation";
 import { getDatabase } from "../client.server";
@@ -49,8 +49,11 @@ export async function listRevisions(modelId: string): Promise<RevisionRow[]> {
   return getDatabase().select().from(revision).where(eq(revision.modelId, modelId)).orderBy(desc(revision.number));
 }
 
-export async function findRevision(id: string): Promise<RevisionRow | undefined> {
-  const [row] = await getDatabase().select().from(revision).where(eq(revision.id, id));
+export async function findRevisionByNumber(modelId: string, number: number): Promise<RevisionRow | undefined> {
+  const [row] = await getDatabase()
+    .select()
+    .from(revision)
+    .where(and(eq(revision.modelId, modelId), eq(revision.number, number)));
   return row;
 }
 
@@ -145,17 +148,6 @@ export function addEventStatement(topic: string, reference: number, at: Date) {
   return getDatabase().insert(eventEntry).values({ topic, reference, at }).returning({ seq: eventEntry.seq });
 }
 
-/** The place of an event in the global sequence. */
-export async function findEventSeq(topic: string, reference: number): Promise<number | undefined> {
-  const [row] = await getDatabase()
-    .select({ seq: eventEntry.seq })
-    .from(eventEntry)
-    .where(and(eq(eventEntry.topic, topic), eq(eventEntry.reference, reference)))
-    .orderBy(desc(eventEntry.seq))
-    .limit(1);
-  return row?.seq;
-}
-
 export async function listEventsAfter(topic: string, seq: number, limit: number) {
   return getDatabase()
     .select({ seq: eventEntry.seq, reference: eventEntry.reference })
@@ -163,11 +155,6 @@ export async function listEventsAfter(topic: string, seq: number, limit: number)
     .where(and(eq(eventEntry.topic, topic), gt(eventEntry.seq, seq)))
     .orderBy(asc(eventEntry.seq))
     .limit(limit);
-}
-
-export async function getLastEventSeq(): Promise<number> {
-  const [row] = await getDatabase().select({ seq: sql<number>`coalesce(max(${eventEntry.seq}), 0)` }).from(eventEntry);
-  return row?.seq ?? 0;
 }
 
 export async function listSheets(modelId: string): Promise<SheetRow[]> {

@@ -10,6 +10,9 @@ export type ModelKind = "types" | "machines";
 /** A required model as a header names it, for questions that need no contents. */
 export type RequiredModelRow = { readonly modelUri: string; readonly version?: string; readonly publicationDate?: string };
 
+/** One required model of a frozen revision: a published pack by its name, or the contents of a blob of our own. */
+export type PinnedModelRow = RequiredModelRow & { readonly kept: "published" | "blob"; readonly hash: string };
+
 export const model = sqliteTable(
   "model",
   {
@@ -63,6 +66,8 @@ export const revision = sqliteTable(
     at: timestamp("at").notNull(),
     nodeCount: integer("node_count").notNull(),
     counts: text("counts", { mode: "json" }).$type<{ error: number; warning: number; hint: number }>(),
+    /** The required models that it was frozen on, base first; absent for revision 0, which pins nothing. */
+    pinned: text("pinned", { mode: "json" }).$type<readonly PinnedModelRow[]>(),
   },
   (table) => [uniqueIndex("revision_number").on(table.modelId, table.number)],
 );

@@ -1,0 +1,50 @@
+/** Who did what when, for the Team page and as a file. */
+import { listAudit, type AuditRow } from "../db/repositories/audit.server";
+
+export type AuditLine = {
+  readonly id: number;
+  readonly at: string;
+  readonly who: string;
+  readonly action: string;
+  readonly subjectKind: string;
+  readonly subject: string;
+  readonly details: Readonly<Record<string, unknown>>;
+};
+
+const PAGE = 100;
+const EXPORT_PAGE = 1000;
+
+/** One page, newest first; `before` is the id of the last line of the page before. */
+export async function presentAudit(organizationId: string, before?: number): Promise<AuditLine[]> {
+  return (await listAudit(organizationId, PAGE, before)).map(toLine);
+}
+
+function toLine(row: AuditRow): AuditLine {
+  const { id, at, userName, action, subjectKind, subjectName, details } = row;
+  return { id, at: at.toISOString(), who: userName, action, subjectKind, subject: subjectName, details };
+}
+
+const columns = ["id", "at", "who", "action", "subjectKind", "subject", "details"] as const;
+
+/** The whole audit as CSV (RFC 4180), newest first, page by page. */
+export async function* exportAudit(organizationId: string): AsyncGenerator<string> {
+  yield `${columns.join(",")}\r\n`;
+  let before: number | undefined;
+  for (;;) {
+    const rows = await listAudit(organizationId, EXPORT_PAGE, before);
+    if (rows.length === 0) return;
+    yield rows.map((row) => toCsvLine(toLine(row))).join("");
+    before = rows.at(-1)?.id;
+  }
+}
+
+function toCsvLine(line: AuditLine): string {
+  const cells = columns.map((column) => (column === "details" ? JSON.stringify(line.details) : String(line[column])));
+  return `${cells.map(quoteCell).join(",")}\r\n`;
+}
+
+/** A spreadsheet would run a cell that begins like a formula; an apostrophe before it makes it text. */
+function quoteCell(text: string): string {
+  const safe = /^[=+\-@\t\r]/.test(text) ? `'${text}` : text;
+  return `"${safe.replaceAll('"', '""')}"`;
+}
