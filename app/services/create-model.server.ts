@@ -45,14 +45,15 @@ async function makeContent(organizationId: string, intent: NewModelIntent): Prom
   if (required.missing.length > 0) return fail(...required.missing);
   const publicationDate = `${new Date().toISOString().slice(0, 19)}Z`;
   const layers = required.layers.map((l) => l.layer);
-  const requiredModels = uris.flatMap((uri) => required.layers.filter((layer) => layer.modelUri === uri).map(toEntry));
+  const requiredModels = uris.flatMap((uri) => required.layers.filter((layer) => layer.modelUri === uri).map(toRequiredEntry));
   // A namespace that was deleted once goes on where it ended, so that none of its identifiers is given again.
   const from = Math.max((await findHighestIdentifier(organizationId, namespaceUri)) + 1, FIRST_IDENTIFIER);
   const ids = new BlockAllocator(namespaceUri, [{ from, to: from + METADATA_IDS - 1 }]);
   return makeModel(layers, ids, { namespaceUri, version, publicationDate, requiredModels });
 }
 
-function toEntry({ modelUri, version, publicationDate, entry }: RequiredLayer): ModelEntry {
+/** The row of a required model as it stands in the header of a model that requires this layer. */
+export function toRequiredEntry({ modelUri, version, publicationDate, entry }: RequiredLayer): ModelEntry {
   return {
     modelUri,
     ...(version === undefined ? {} : { version }),

@@ -27,7 +27,13 @@ export const newModelSchema = z.object({
 });
 export type NewModelForm = z.infer<typeof newModelSchema>;
 
-export const modelParticularsSchema = z.object({ name: modelName });
+export const aboutModelSchema = z.discriminatedUnion("intent", [
+  z.object({ intent: z.literal("rename"), name: modelName }),
+  z.object({ intent: z.literal("set-version"), version: modelVersion }),
+  z.object({ intent: z.literal("set-required"), required: z.array(z.string().max(maxUri)).max(50, "At most 50 models").default([]) }),
+  z.object({ intent: z.literal("delete") }),
+]);
+export type AboutModelForm = z.infer<typeof aboutModelSchema>;
 
 export const importSchema = z.object({
   upload: z.string().max(100),

@@ -22,7 +22,7 @@ export type FindingTools = {
 };
 
 function toParentPath(finding: Finding): string {
-  return finding.path.split("/").slice(0, -1).join(" / ");
+  return finding.key === undefined ? "" : finding.path.split("/").slice(0, -1).join(" / ");
 }
 
 function showLinks(finding: Finding, modelId: string) {

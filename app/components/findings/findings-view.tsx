@@ -13,6 +13,9 @@ import type { Severity } from "~/domain/core/result";
 import { FindingRow, type FindingTools } from "./finding-row";
 import { getFindingId, groupFindings, matchesText, type FindingGroup, type Grouping } from "./group-findings";
 
+/** Rows of a group that are shown at first: one decision often settles the whole group. */
+const firstRows = 8;
+
 const severities: readonly Severity[] = ["error", "warning", "hint"];
 
 type Props = { findings: readonly Finding[]; tools: FindingTools; ownNodes: number };
@@ -110,6 +113,8 @@ type GroupProps = {
 
 function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: GroupProps) {
   const fix = grouping === "rule" ? findRule(group.id)?.fix : undefined;
+  const [showsAll, setShowsAll] = useState(false);
+  const shown = showsAll ? group.findings : group.findings.slice(0, firstRows);
   return (
     <li className="border-b border-rule">
       <div className="flex h-8 items-center bg-bench pr-3">
@@ -137,12 +142,19 @@ function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: G
       </div>
       {isClosed ? null : (
         <ul>
-          {group.findings.map((finding) => {
+          {shown.map((finding) => {
             const id = getFindingId(finding);
             return (
               <FindingRow key={id} finding={finding} tools={tools} open={id === openId} onToggle={() => onOpen(id)} showsRule={grouping === "place"} />
             );
           })}
+          {shown.length < group.findings.length ? (
+            <li className="flex h-7 items-center pl-[74px]">
+              <button type="button" onClick={() => setShowsAll(true)} className="border-b border-rule text-small font-medium hover:border-copper hover:text-copper">
+                Show {group.findings.length - shown.length} more
+              </button>
+            </li>
+          ) : null}
         </ul>
       )}
     </li>

@@ -8,12 +8,12 @@ import { FindingShape } from "~/components/notation/finding-badge";
 import type { LibraryChoice } from "~/services/list-library-choices.server";
 import { baseModelUri, listRequired, searchChoices } from "./required-closure";
 
-type Props = { choices: readonly LibraryChoice[]; chosen: readonly string[]; onChange: (chosen: readonly string[]) => void; name?: string };
+type Props = { choices: readonly LibraryChoice[]; chosen: readonly string[]; onChange: (chosen: readonly string[]) => void; name?: string; disabled?: boolean };
 
 const originWords: Record<LibraryChoice["origin"], string> = { published: "published", added: "added by the team", team: "a model of the team" };
 
 /** Required models: found by search, with everything that comes along listed below. */
-export function RequiredModelsField({ choices, chosen, onChange, name = "required" }: Props) {
+export function RequiredModelsField({ choices, chosen, onChange, name = "required", disabled = false }: Props) {
   const [query, setQuery] = useState("");
   const rows = useMemo(() => listRequired(choices, chosen), [choices, chosen]);
   const open = choices.filter((choice) => choice.modelUri !== baseModelUri && !chosen.includes(choice.modelUri));
@@ -21,39 +21,41 @@ export function RequiredModelsField({ choices, chosen, onChange, name = "require
   const titleOf = (uri: string) => rows.find((row) => row.modelUri === uri)?.choice?.title ?? uri;
   return (
     <fieldset className="grid gap-2">
-      <legend className="mb-1 text-note font-medium text-ink-2">Required models</legend>
+      <legend className="sr-only">Required models</legend>
       {chosen.map((uri) => (
         <input key={uri} type="hidden" name={name} value={uri} />
       ))}
-      <Combobox
-        label="Add a required model"
-        placeholder="Search the library: Machinery, Devices, IO-Link …"
-        query={query}
-        onQuery={setQuery}
-        items={found}
-        itemKey={(choice) => `${choice.modelUri} ${choice.version ?? ""}`}
-        onPick={(choice) => {
-          onChange([...chosen, choice.modelUri]);
-          setQuery("");
-        }}
-        head={
-          <>
-            <span className="font-mono">
-              {found.length} of {open.length}
-            </span>
-            <span>models of the library</span>
-          </>
-        }
-        none="No model of the library has these words"
-        renderItem={(choice) => (
-          <span className="grid grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-3">
-            <b className="font-semibold">{choice.title}</b>
-            <span className="font-mono text-note text-ink-2">{choice.version}</span>
-            <span className="truncate font-mono text-note text-ink-3">{choice.modelUri}</span>
-            <span className="text-note text-ink-3">{originWords[choice.origin]}</span>
-          </span>
-        )}
-      />
+      {disabled ? null : (
+       <Combobox
+         label="Add a required model"
+         placeholder="Search the library: Machinery, Devices, IO-Link …"
+         query={query}
+         onQuery={setQuery}
+         items={found}
+         itemKey={(choice) => `${choice.modelUri} ${choice.version ?? ""}`}
+         onPick={(choice) => {
+           onChange([...chosen, choice.modelUri]);
+           setQuery("");
+         }}
+         head={
+           <>
+             <span className="font-mono">
+               {found.length} of {open.length}
+             </span>
+             <span>models of the library</span>
+           </>
+         }
+         none="No model of the library has these words"
+         renderItem={(choice) => (
+           <span className="grid grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-3">
+             <b className="font-semibold">{choice.title}</b>
+             <span className="font-mono text-note text-ink-2">{choice.version}</span>
+             <span className="truncate font-mono text-note text-ink-3">{choice.modelUri}</span>
+             <span className="text-note text-ink-3">{originWords[choice.origin]}</span>
+           </span>
+         )}
+       />
+      )}
       <Table caption="Models that this model stands on">
         <thead>
           <tr>
@@ -81,7 +83,7 @@ export function RequiredModelsField({ choices, chosen, onChange, name = "require
                 {row.modelUri === baseModelUri ? "every model does" : row.askedBy.length > 0 ? `${row.askedBy.map(titleOf).join(", ")} ${row.askedBy.length === 1 ? "needs" : "need"} it` : null}
               </Td>
               <Td right>
-                {chosen.includes(row.modelUri) ? (
+                {chosen.includes(row.modelUri) && !disabled ? (
                   <IconButton
                     icon={X}
                     size="small"

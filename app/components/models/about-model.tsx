@@ -1,104 +1,97 @@
-import { getFormProps, useForm, type SubmissionResult } from "@conform-to/react";
-import { getZodConstraint, parseWithZod } from "@conform-to/zod/v4";
+import type { SubmissionResult } from "@conform-to/react";
 import { Download } from "lucide-react";
-import type { ReactNode } from "react";
+import { useState, type ReactNode } from "react";
 import { Form, useNavigation } from "react-router";
-import { StatusBadge } from "~/components/notation/status-badge";
-import { ConformField } from "~/components/shell/conform-field";
+import { RequiredModelsField } from "~/components/library/required-models-field";
+import { baseModelUri } from "~/components/library/required-closure";
 import { LocalTime } from "~/components/shell/local-time";
-import { Button } from "~/components/ui/button";
+import { Button, buttonClass } from "~/components/ui/button";
 import { Dialog, DialogClose } from "~/components/ui/dialog";
+import { Field, Input } from "~/components/ui/field";
 import { Icon } from "~/components/ui/icon";
 import { Notice } from "~/components/ui/notice";
 import { Block, Page } from "~/components/ui/page";
-import { Table, Td, Th } from "~/components/ui/table";
 import type { ModelWorkspace } from "~/presenters/model-workspace.server";
-import { modelParticularsSchema as schema } from "~/utils/model-forms";
+import type { LibraryChoice } from "~/services/list-library-choices.server";
+import type { AboutModelForm } from "~/utils/model-forms";
+
+type Intent = AboutModelForm["intent"];
+type Answer = { readonly intent: Intent | undefined; readonly submission: SubmissionResult<string[]> | null; readonly refusal: string | undefined };
 
 type Props = {
   workspace: ModelWorkspace;
-  lastResult: SubmissionResult<string[]> | null;
-  refusal: string | undefined;
+  required: readonly string[];
+  choices: readonly LibraryChoice[];
+  answer: Answer | undefined;
   editBlockedBy: string | undefined;
 };
 
-export function AboutModel({ workspace, lastResult, refusal, editBlockedBy }: Props) {
+export function AboutModel({ workspace, required, choices, answer, editBlockedBy }: Props) {
   const { model } = workspace;
+  const refusalOf = (intent: Intent) => (answer?.intent === intent ? answer.refusal : undefined);
+  const errorsOf = (intent: Intent, field: string) => (answer?.intent === intent ? (answer.submission?.error?.[field] ?? undefined) : undefined);
   return (
     <Page title="About this model" about={model.kind === "types" ? "a model of types" : "a model of machines"}>
-      <div className="grid grid-cols-[minmax(0,1fr)_420px] gap-10 max-lg:grid-cols-1">
+      <div className="grid grid-cols-[minmax(0,1fr)_400px] gap-10 max-lg:grid-cols-1">
         <div className="grid content-start gap-8">
-          <Block title="Facts">
-            <dl className="grid grid-cols-[120px_minmax(0,1fr)] border-t border-ink text-small">
-              <Fact label="Namespace URI">
-                <span className="font-mono">{model.namespaceUri}</span>
-              </Fact>
-              <Fact label="Version">
-                <span className="font-mono">{model.version ?? "none"}</span>
-              </Fact>
-              <Fact label="Published">
-                <span className="font-mono">{model.publicationDate?.slice(0, 10) ?? "not given"}</span>
-              </Fact>
-              <Fact label="Came here">
-                <LocalTime iso={model.createdAt} />
-              </Fact>
-              <Fact label="Last edit">
-                {model.updatedBy}, <LocalTime iso={model.updatedAt} />
-              </Fact>
-            </dl>
-          </Block>
-          <Block title="Stands on" about="required models, in the order in which they are loaded">
-            <Table caption="Required models">
-              <thead>
-                <tr>
-                  <Th>Model URI</Th>
-                  <Th>Version</Th>
-                  <Th>Published</Th>
-                  <Th>State</Th>
-                </tr>
-              </thead>
-              <tbody>
-                {workspace.layers.map((layer) => (
-                  <tr key={layer.modelUri}>
-                    <Td mono>{layer.modelUri}</Td>
-                    <Td mono>{layer.version}</Td>
-                    <Td mono>{layer.publicationDate?.slice(0, 10)}</Td>
-                    <Td>
-                      <StatusBadge status="good">present</StatusBadge>
-                    </Td>
-                  </tr>
-                ))}
-              </tbody>
-            </Table>
+          <Facts model={model} />
+          <Block title="Required models">
             {workspace.problems.map((problem) => (
-              <Notice key={problem.message} tone={problem.severity === "error" ? "error" : "warning"} className="mt-2">
+              <Notice key={problem.message} tone={problem.severity === "error" ? "error" : "warning"} className="mb-2">
                 {problem.message}
               </Notice>
             ))}
+            <RequiredForm key={required.join(" ")} required={required} choices={choices} refusal={refusalOf("set-required")} editBlockedBy={editBlockedBy} />
           </Block>
         </div>
-        <div className="grid content-start gap-6">
-          <RenameForm model={model} lastResult={lastResult} editBlockedBy={editBlockedBy} />
-          <section className="grid gap-2 border-t border-rule pt-3">
-            <h2 className="text-lead font-semibold">Export</h2>
-            <p className="text-small text-ink-2">The NodeSet2 file, valid against the standard’s schema; the same model gives the same bytes.</p>
-            <a
-              href={`/models/${model.id}/nodeset`}
-              download
-              className="inline-flex h-7 items-center gap-1.5 justify-self-start rounded-edge border border-edge bg-leaf px-2.5 text-small font-medium hover:bg-bench-2"
-            >
+        <div className="grid content-start gap-5">
+          <FieldForm intent="rename" name="name" label="Name" hint="For the team’s screens. The namespace stays what it is." value={model.name} errors={errorsOf("rename", "name")} action="Rename" editBlockedBy={editBlockedBy} first />
+          <FieldForm
+            intent="set-version"
+            name="version"
+            label="Version"
+            hint="Written into the header and into the namespace’s metadata, with the date of today."
+            value={model.version ?? ""}
+            errors={errorsOf("set-version", "version") ?? (refusalOf("set-version") ? [refusalOf("set-version") ?? ""] : undefined)}
+            action="Set version"
+            editBlockedBy={editBlockedBy}
+            mono
+          />
+          <Part title="Export" about="The NodeSet2 file, valid against the standard’s schema; the same model gives the same bytes.">
+            <a href={`/models/${model.id}/nodeset`} download className={buttonClass("plain", "medium", "justify-self-start")}>
               <Icon of={Download} /> Download NodeSet2
             </a>
-          </section>
-          <section id="delete" className="grid gap-2 border-t border-rule pt-3">
-            <h2 className="text-lead font-semibold">Delete</h2>
-            <p className="text-small text-ink-2">With its history and sheets, for good. Its NodeIds are never given again.</p>
-            {refusal ? <Notice tone="error" title={refusal} live /> : null}
+          </Part>
+          <Part id="delete" title="Delete" about="With its history and sheets, for good. Its NodeIds are never given again.">
+            {refusalOf("delete") ? <Notice tone="error" title={refusalOf("delete")} live /> : null}
             <DeleteModel model={model} editBlockedBy={editBlockedBy} />
-          </section>
+          </Part>
         </div>
       </div>
     </Page>
+  );
+}
+
+function Facts({ model }: { model: ModelWorkspace["model"] }) {
+  return (
+    <Block title="Facts">
+      <dl className="grid grid-cols-[120px_minmax(0,1fr)] border-t border-ink text-small">
+        <Fact label="Namespace URI">
+          <span className="font-mono">{model.namespaceUri}</span>
+        </Fact>
+        <Fact label="Version">
+          <span className="font-mono">{[model.version, model.publicationDate?.slice(0, 10)].filter(Boolean).join(" · ") || "not given"}</span>
+        </Fact>
+        <Fact label="Came here">
+          <LocalTime iso={model.createdAt} />
+        </Fact>
+        <Fact label="Last edit">
+          <span>
+            {model.updatedBy}, <LocalTime iso={model.updatedAt} />
+          </span>
+        </Fact>
+      </dl>
+    </Block>
   );
 }
 
@@ -111,44 +104,80 @@ function Fact({ label, children }: { label: string; children: ReactNode }) {
   );
 }
 
-function RenameForm({ model, lastResult, editBlockedBy }: { model: ModelWorkspace["model"]; lastResult: SubmissionResult<string[]> | null; editBlockedBy: string | undefined }) {
-  const busy = useNavigation().formData?.get("intent") === "rename";
-  const [form, fields] = useForm({
-    lastResult,
-    defaultValue: { name: model.name },
-    constraint: getZodConstraint(schema),
-    onValidate: ({ formData }) => parseWithZod(formData, { schema }),
-    shouldRevalidate: "onInput",
-  });
+function Part({ id, title, about, children }: { id?: string; title: string; about: string; children: ReactNode }) {
   return (
-    <Form method="post" {...getFormProps(form)} className="grid gap-3 border-t-[1.5px] border-ink pt-3">
-      <h2 className="text-lead font-semibold">Name</h2>
-      <input type="hidden" name="intent" value="rename" />
-      <ConformField field={fields.name} label="Name of the model" hint="For the team’s screens. The namespace stays what it is." />
-      <Button type="submit" tone="ink" busy={busy} blockedBy={editBlockedBy} className="justify-self-start">
-        Rename
-      </Button>
+    <section id={id} className="grid gap-2 border-t border-rule pt-3">
+      <h2 className="text-lead font-semibold">{title}</h2>
+      <p className="text-small text-ink-2">{about}</p>
+      {children}
+    </section>
+  );
+}
+
+function useIsSending(intent: Intent): boolean {
+  return useNavigation().formData?.get("intent") === intent;
+}
+
+type RequiredFormProps = Pick<Props, "required" | "choices" | "editBlockedBy"> & { refusal: string | undefined };
+
+function RequiredForm({ required, choices, refusal, editBlockedBy }: RequiredFormProps) {
+  const before = required.filter((uri) => uri !== baseModelUri);
+  const [chosen, setChosen] = useState<readonly string[]>(before);
+  const isSending = useIsSending("set-required");
+  const isSame = chosen.length === before.length && chosen.every((uri) => before.includes(uri));
+  return (
+    <Form method="post" className="grid gap-3">
+      <input type="hidden" name="intent" value="set-required" />
+      {refusal ? <Notice tone="error" title={refusal} live /> : null}
+      <RequiredModelsField choices={choices} chosen={chosen} onChange={setChosen} disabled={editBlockedBy !== undefined} />
+      {editBlockedBy === undefined ? (
+        <Button type="submit" tone="ink" busy={isSending} blockedBy={isSame ? "nothing was changed" : undefined} className="justify-self-start">
+          Save required models
+        </Button>
+      ) : null}
+    </Form>
+  );
+}
+
+type FieldFormProps = {
+  intent: Intent;
+  name: string;
+  label: string;
+  hint: string;
+  value: string;
+  errors: readonly string[] | undefined;
+  action: string;
+  editBlockedBy: string | undefined;
+  mono?: boolean;
+  first?: boolean;
+};
+
+function FieldForm({ intent, name, label, hint, value, errors, action, editBlockedBy, mono, first }: FieldFormProps) {
+  const isSending = useIsSending(intent);
+  return (
+    <Form method="post" key={value} className={first ? "grid gap-2 border-t-[1.5px] border-ink pt-3" : "grid gap-2 border-t border-rule pt-3"}>
+      <input type="hidden" name="intent" value={intent} />
+      <Field label={label} hint={hint} errors={errors}>
+        {(tied) => <Input {...tied} name={name} defaultValue={value} maxLength={100} required readOnly={editBlockedBy !== undefined} {...(mono ? { mono } : {})} />}
+      </Field>
+      {editBlockedBy === undefined ? (
+        <Button type="submit" busy={isSending} className="justify-self-start">
+          {action}
+        </Button>
+      ) : null}
     </Form>
   );
 }
 
 function DeleteModel({ model, editBlockedBy }: { model: ModelWorkspace["model"]; editBlockedBy: string | undefined }) {
-  if (editBlockedBy !== undefined)
-    return (
-      <Button tone="danger" blockedBy={editBlockedBy} className="justify-self-start">
-        Delete model
-      </Button>
-    );
+  const button = (blockedBy?: string) => (
+    <Button tone="danger" blockedBy={blockedBy} className="justify-self-start">
+      Delete model
+    </Button>
+  );
+  if (editBlockedBy !== undefined) return button(editBlockedBy);
   return (
-    <Dialog
-      title={`Delete ${model.name}?`}
-      about="The model, its history and its sheets are removed for good. Download the NodeSet2 file first if you may need it."
-      trigger={
-        <Button tone="danger" className="justify-self-start">
-          Delete model
-        </Button>
-      }
-    >
+    <Dialog title={`Delete ${model.name}?`} about="The model, its history and its sheets are removed for good. Download the NodeSet2 file first if you may need it." trigger={button()}>
       <Form method="post" className="flex justify-end gap-2">
         <input type="hidden" name="intent" value="delete" />
         <DialogClose asChild>

@@ -85,7 +85,10 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
           />
         )}
       </Field>
-      <RequiredModelsField choices={choices} chosen={required} onChange={setRequired} name={fields.required.name} />
+      <div className="grid gap-1">
+        <h2 className="text-note font-medium text-ink-2">Required models</h2>
+        <RequiredModelsField choices={choices} chosen={required} onChange={setRequired} name={fields.required.name} />
+      </div>
       <p className="flex gap-2">
         <Button type="submit" tone="main" size="large" busy={busy} blockedBy={twin ? "the namespace is taken" : undefined}>
           Create model

@@ -30,6 +30,7 @@ export function buttonClass(tone: ButtonTone = "plain", size: ButtonSize = "medi
     "disabled:border-dashed disabled:border-rule disabled:bg-transparent disabled:text-ink-3 disabled:cursor-not-allowed disabled:hover:bg-transparent disabled:hover:brightness-100",
     "aria-disabled:border-dashed aria-disabled:border-rule aria-disabled:bg-transparent aria-disabled:text-ink-3 aria-disabled:cursor-not-allowed aria-disabled:hover:bg-transparent aria-disabled:hover:brightness-100",
     tones[tone],
+    tone === "bare" && "aria-disabled:border-transparent! disabled:border-transparent!",
     sizes[size],
     className,
   );
