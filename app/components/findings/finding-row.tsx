@@ -61,7 +61,7 @@ export function FindingRow({ finding, tools, open, onToggle, showsRule }: RowPro
           </span>
           <span className={cx("text-ink-2", open ? "" : "truncate")}>{finding.message}</span>
         </button>
-        <span className="flex items-center gap-3 text-small">
+        <span className="flex w-21 items-center justify-end gap-3 text-small">
           {rule?.fix && mend && !open ? (
             <button type="button" onClick={() => mend([finding])} className="border-b border-rule font-medium hover:border-copper hover:text-copper" title={rule.fix.label}>
               Mend
