@@ -3,7 +3,7 @@ import { OPC_UA_NAMESPACE, type NodeKey } from "../address-space/node-id";
 import type { ModelEntry, ModelHeader } from "../address-space/model-header";
 import type { RolePermission, XmlText } from "../address-space/node";
 import { problem, type Problem } from "../core/result";
-import { IdTable } from "./id-table";
+import type { IdTable } from "./id-table";
 import type { Attributes } from "./xml/scan-xml";
 
 type PendingRole = { readonly text: string; readonly permissions: number; readonly offset: number };

@@ -10,7 +10,6 @@ for (const character of "0123456789-.") ASCII[character.charCodeAt(0)] = NAME_ON
 
 const WIDE_START =
   /^[\u{C0}-\u{D6}\u{D8}-\u{F6}\u{F8}-\u{2FF}\u{370}-\u{37D}\u{37F}-\u{1FFF}\u{200C}-\u{200D}\u{2070}-\u{218F}\u{2C00}-\u{2FEF}\u{3001}-\u{D7FF}\u{F900}-\u{FDCF}\u{FDF0}-\u{FFFD}\u{10000}-\u{EFFFF}]$/u;
-const WIDE_ONLY = /^[\u{B7}\u{300}-\u{36F}\u{203F}-\u{2040}]$/u;
 
 /** The offset behind the name that starts at `from`; `from` itself when there is none. */
 export function findNameEnd(text: string, from: number): number {
@@ -34,7 +33,12 @@ function wideNameLength(text: string, at: number, isFirst: boolean): number {
   const point = text.codePointAt(at);
   if (point === undefined) return 0;
   const character = String.fromCodePoint(point);
-  return WIDE_START.test(character) || (!isFirst && WIDE_ONLY.test(character)) ? character.length : 0;
+  return WIDE_START.test(character) || (!isFirst && isWideInName(point)) ? character.length : 0;
+}
+
+/** What may stand in a name but not start it: the middle dot, combining marks, ties. */
+function isWideInName(point: number): boolean {
+  return point === 0xb7 || (point >= 0x300 && point <= 0x36f) || point === 0x203f || point === 0x2040;
 }
 
 /** The character of a reference without `&` and `;`; undefined when it is none of the predefined ones and no number. */
