@@ -9,7 +9,7 @@ import { parseHex } from "../domain/mapping/bits";
 import { chooseLayout } from "../domain/mapping/choose-layout";
 import { decodeFrame, planFrame } from "../domain/mapping/decode-frame";
 import { reportFrame, type FieldReport } from "../domain/mapping/report-frame";
-import type { DecodeCommand, DeviceCommand } from "./parse-command-line";
+import { resolvePath, type DecodeCommand, type DeviceCommand } from "./parse-command-line";
 
 export async function device(command: DeviceCommand): Promise<number> {
   const read = await readDevice(command.file);
@@ -47,9 +47,10 @@ function decodeHex(description: DeviceDescription, command: DecodeCommand): Resu
 async function readDevice(file: string): Promise<Result<DeviceDescription>> {
   let bytes: Uint8Array;
   try {
-    const { size } = await stat(file);
+    const path = resolvePath(file);
+    const { size } = await stat(path);
     if (size > PACKAGE_LIMITS.bytes) return fail(problem("limit.file-size", { size, limit: PACKAGE_LIMITS.bytes }));
-    bytes = await readFile(file);
+    bytes = await readFile(path);
   } catch (error) {
     return fail(problem("file.unreadable", { file, detail: error instanceof Error ? error.message : String(error) }));
   }

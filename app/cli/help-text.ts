@@ -10,6 +10,8 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
       What an IODD says: one XML file, or the ZIP that it came in.
   npm run -s ferrule -- decode FILE HEX [--direction in|out] [--condition VALUE] [--json]
       One frame of the device's process data. HEX: pairs in the order of transmission, spaces allowed.
+  npm run -s ferrule -- map DOCUMENT --frame SOURCE=HEX… [--json]
+      Node values with status codes that a mapping document makes of one frame a source (SOURCE:out=HEX: what was set).
   npm run -s ferrule -- help
 
   --with DIR   adds the NodeSets below DIR to the library for this call; may be given several times

@@ -3,6 +3,7 @@ import { check } from "./check";
 import { compare } from "./compare-command";
 import { decode, device } from "./device-command";
 import { helpText } from "./help-text";
+import { map } from "./map-command";
 import { parseCommandLine, UsageError } from "./parse-command-line";
 import { roundtrip } from "./roundtrip";
 
@@ -22,6 +23,8 @@ async function run(args: readonly string[]): Promise<number> {
       return device(command);
     case "decode":
       return decode(command);
+    case "map":
+      return map(command);
   }
 }
 

@@ -30,8 +30,21 @@ export type DecodeCommand = {
   readonly condition?: string;
   readonly isJson: boolean;
 };
+export type MapCommand = {
+  readonly name: "map";
+  readonly file: string;
+  /** `SOURCE=HEX`, one for each frame. */
+  readonly frames: readonly string[];
+  readonly isJson: boolean;
+};
 export type Command =
-  { readonly name: "help" } | CheckCommand | RoundtripCommand | CompareCommand | DeviceCommand | DecodeCommand;
+  | { readonly name: "help" }
+  | CheckCommand
+  | RoundtripCommand
+  | CompareCommand
+  | DeviceCommand
+  | DecodeCommand
+  | MapCommand;
 
 /** npm runs scripts in the project's folder; paths mean the folder that the user stands in. */
 export function resolvePath(path: string): string {
@@ -72,6 +85,10 @@ export function parseCommandLine(args: readonly string[]): Command {
     const condition = values.condition === undefined ? {} : { condition: values.condition };
     return { name, file, hex: hex.join(" "), direction, ...condition, isJson: values.json ?? false };
   }
+  if (name === "map") {
+    const [file] = requireCount(rest, 1, "map takes one DOCUMENT.");
+    return { name, file: file ?? "", frames: values.frame ?? [], isJson: values.json ?? false };
+  }
   throw new UsageError(name === undefined ? "Which command?" : `There is no command “${name}”.`);
 }
 
@@ -85,6 +102,7 @@ function parse(args: readonly string[]) {
         json: { type: "boolean" },
         direction: { type: "string" },
         condition: { type: "string" },
+        frame: { type: "string", multiple: true },
         help: { type: "boolean", short: "h" },
       },
     });
