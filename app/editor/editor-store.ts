@@ -35,6 +35,13 @@ export type EditorState = {
   readonly redoLabel: string | undefined;
 };
 
+/** Edits that were not acknowledged, ids that were not used, and the sequence number that both were seen at. */
+export type UnsavedEdits = {
+  readonly pending: readonly OutgoingTransaction[];
+  readonly blocks: readonly IdBlock[];
+  readonly base: number;
+};
+
 export type EditorOptions = {
   readonly space: AddressSpace;
   readonly seq: number;
@@ -43,8 +50,8 @@ export type EditorOptions = {
   readonly canEdit: boolean;
   readonly transport: SyncTransport;
   readonly schedule: Scheduler;
-  /** Edits of an earlier page of this window that were not acknowledged, and ids that it did not use. */
-  readonly restored?: { readonly pending: readonly OutgoingTransaction[]; readonly blocks: readonly IdBlock[] };
+  /** What an earlier page of this window left behind; see `listUnsaved`. */
+  readonly restored?: UnsavedEdits;
   /** Told of edits that could not be kept. */
   readonly onRefused?: (refused: readonly RefusedEdit<OutgoingTransaction>[]) => void;
   /** Told of each foreign transaction after it was applied. */
@@ -76,6 +83,10 @@ export class EditorStore {
   #isCatchingUp = false;
   #isLeasing = false;
   #isDisposed = false;
+  /** Transactions are known to be missing; nothing is sent until they are here. */
+  #isBehind = false;
+  #isSettling = false;
+  #unsettled: UnsavedEdits | undefined;
   #attempt = 0;
   #cancelRetry: (() => void) | undefined;
 
@@ -88,7 +99,7 @@ export class EditorStore {
     this.#blocks = BlockAllocator.forModel(() => this.#shown, options.restored?.blocks ?? []);
     this.allocator = { allocate: (nodeClass) => this.#allocate(nodeClass) };
     this.#state = this.#makeState();
-    if (options.canEdit) this.#restore(options.restored?.pending ?? []);
+    if (options.canEdit && options.restored && options.restored.pending.length > 0) this.#startRestoring(options.restored);
     void this.#lease();
   }
 
@@ -100,8 +111,13 @@ export class EditorStore {
   };
 
   /** What a reload of the page needs to go on: pending edits and unused ids. */
-  listUnsaved(): { readonly pending: readonly OutgoingTransaction[]; readonly blocks: readonly IdBlock[] } {
-    return { pending: this.#pending, blocks: this.#blocks.listBlocks() };
+  listUnsaved(): UnsavedEdits {
+    const earlier = this.#unsettled;
+    return {
+      pending: [...(earlier?.pending ?? []), ...this.#pending],
+      blocks: this.#blocks.listBlocks(),
+      base: earlier?.base ?? this.#seq,
+    };
   }
 
   /** Applies an edit at once and sends it; answers the problems where it cannot be applied. */
@@ -128,6 +144,7 @@ export class EditorStore {
     if (transaction.seq <= this.#seq) return;
     if (transaction.seq > this.#seq + 1) {
       this.#early.set(transaction.seq, transaction);
+      this.#isBehind = true;
       void this.catchUp();
       return;
     }
@@ -140,10 +157,16 @@ export class EditorStore {
   /** Asks for what was missed while the stream was away, then sends what is pending. */
   async catchUp(): Promise<void> {
     if (this.#isCatchingUp || this.#isDisposed) return;
+    if (this.#unsettled) return this.#settleRestored();
     this.#isCatchingUp = true;
     const missed = await this.#options.transport.listSince(this.#seq);
     this.#isCatchingUp = false;
-    if (this.#isDisposed || !missed) return;
+    if (this.#isDisposed) return;
+    if (!missed) {
+      this.#goOffline();
+      return;
+    }
+    this.#isBehind = false;
     for (const transaction of missed) this.receive(transaction);
     this.#send();
   }
@@ -170,12 +193,41 @@ export class EditorStore {
     else this.#options.schedule(() => void this.#lease(), RETRY_DELAYS[2] as number);
   }
 
-  #restore(pending: readonly OutgoingTransaction[]): void {
-    if (pending.length === 0) return;
-    this.#nextClientSeq = Math.max(...pending.map((edit) => edit.clientSeq)) + 1;
-    this.#pending = pending;
-    this.#rebase([]);
+  /**
+   * Some of the restored edits may have reached the server, and others may have come before the rest. Only the list of
+   * transactions since they were made tells; until it is here they wait.
+   */
+  #startRestoring(unsettled: UnsavedEdits): void {
+    this.#nextClientSeq = Math.max(...unsettled.pending.map((edit) => edit.clientSeq)) + 1;
+    this.#unsettled = unsettled;
     this.#changed();
+    void this.#settleRestored();
+  }
+
+  async #settleRestored(): Promise<void> {
+    const unsettled = this.#unsettled;
+    if (!unsettled || this.#isSettling) return;
+    this.#isSettling = true;
+    const since = await this.#options.transport.listSince(unsettled.base);
+    this.#isSettling = false;
+    if (this.#isDisposed) return;
+    if (!since) {
+      this.#goOffline();
+      return;
+    }
+    const isOwn = (t: Transaction): boolean => t.clientId === this.clientId;
+    const stored = new Set(since.filter(isOwn).map((t) => t.clientSeq));
+    const between = since.filter((t) => !isOwn(t) && t.seq <= this.#seq);
+    const rest = unsettled.pending.filter((edit) => !stored.has(edit.clientSeq));
+    this.#unsettled = undefined;
+    // What this page has edited meanwhile comes after what it left behind.
+    const restored = rebase(this.#confirmed, between, rest);
+    this.#pending = [...restored.kept.map((entry) => entry.pending), ...this.#pending];
+    if (restored.refused.length > 0) this.#drop(restored.refused);
+    this.#rebase([]);
+    for (const transaction of since) this.receive(transaction);
+    this.#changed();
+    this.#send();
   }
 
   #enqueue(label: string, operations: readonly Operation[], applied: Applied): number {
@@ -230,7 +282,8 @@ export class EditorStore {
   }
 
   #send(): void {
-    if (this.#isSending || this.#isDisposed || this.#pending.length === 0 || this.#sync === "blocked") return;
+    const mustWait = this.#isSending || this.#isCatchingUp || this.#isBehind || this.#unsettled !== undefined;
+    if (mustWait || this.#isDisposed || this.#pending.length === 0 || this.#sync === "blocked") return;
     this.#isSending = true;
     this.#cancelRetry?.();
     this.#cancelRetry = undefined;
@@ -243,6 +296,7 @@ export class EditorStore {
 
   #settle(batch: readonly OutgoingTransaction[], outcome: PostOutcome): void {
     if (outcome.kind !== "unreachable") this.#attempt = 0;
+    const [before, seq] = [this.#pending, this.#seq];
     switch (outcome.kind) {
       case "accepted":
         this.#sync = "saving";
@@ -259,13 +313,13 @@ export class EditorStore {
         this.#sync = "blocked";
         break;
       case "unreachable":
-        this.#sync = "offline";
-        this.#retryLater();
-        this.#changed();
+        this.#goOffline();
         return;
     }
     this.#changed();
-    this.#send();
+    // An answer that moved nothing is not asked for again at once.
+    if (this.#pending === before && this.#seq === seq && this.#sync !== "blocked") this.#retryLater();
+    else this.#send();
   }
 
   /** Own transactions in the order of their numbers; a gap means that others came between, and these are asked for. */
@@ -275,6 +329,7 @@ export class EditorStore {
       const edit = batch.find((entry) => entry.clientSeq === clientSeq);
       if (!edit || seq <= this.#seq) continue;
       if (seq > this.#seq + 1) {
+        this.#isBehind = true;
         void this.catchUp();
         return;
       }
@@ -292,11 +347,19 @@ export class EditorStore {
     this.#drop([{ pending: culprit, problems }]);
   }
 
+  #goOffline(): void {
+    this.#sync = "offline";
+    this.#retryLater();
+    this.#changed();
+  }
+
   #retryLater(): void {
+    this.#cancelRetry?.();
     const delay = RETRY_DELAYS[Math.min(this.#attempt++, RETRY_DELAYS.length - 1)] as number;
     this.#cancelRetry = this.#options.schedule(() => {
       this.#cancelRetry = undefined;
-      this.#send();
+      if (this.#isBehind || this.#unsettled) void this.catchUp();
+      else this.#send();
     }, delay);
   }
 
@@ -304,7 +367,7 @@ export class EditorStore {
     return {
       space: this.#shown,
       seq: this.#seq,
-      pendingCount: this.#pending.length,
+      pendingCount: this.#countPending(),
       sync: this.#sync,
       savedAt: this.#savedAt,
       undoLabel: this.#history.undoable.at(-1)?.label,
@@ -312,9 +375,14 @@ export class EditorStore {
     };
   }
 
+  #countPending(): number {
+    return this.#pending.length + (this.#unsettled?.pending.length ?? 0);
+  }
+
   #changed(): void {
-    if (this.#sync !== "offline" && this.#sync !== "blocked") this.#sync = this.#pending.length === 0 ? "saved" : "saving";
-    if (this.#sync === "offline" && this.#pending.length === 0) this.#sync = "saved";
+    const isDone = this.#countPending() === 0;
+    if (this.#sync !== "offline" && this.#sync !== "blocked") this.#sync = isDone ? "saved" : "saving";
+    if (this.#sync === "offline" && isDone && !this.#isBehind) this.#sync = "saved";
     this.#state = this.#makeState();
     for (const listener of [...this.#listeners]) listener();
   }

@@ -18,6 +18,7 @@ export class SimulatedServer {
 
   post(clientId: string, base: number, transactions: readonly OutgoingTransaction[]): PostOutcome {
     this.posts++;
+    if (this.posts > 2000) throw new Error(`The server is asked without end: ${JSON.stringify({ clientId, base, transactions }).slice(0, 300)} ${this.list.length}`);
     const sent = new Set(transactions.map((t) => t.clientSeq));
     const isKnown = (t: Transaction): boolean => t.clientId === clientId && sent.has(t.clientSeq);
     const known = new Set(this.list.filter(isKnown).map((t) => t.clientSeq));
@@ -43,7 +44,7 @@ export class SimulatedServer {
 /** A window whose network, timers and event stream the test holds in its hands. */
 export class SimulatedWindow {
   readonly server: SimulatedServer;
-  readonly clientId: string;
+  clientId: string;
   readonly refused: string[] = [];
   isOnline = true;
   /** How many of the next answers get lost on the way back. */
@@ -58,9 +59,10 @@ export class SimulatedWindow {
     this.store = this.#open(server.start, 0);
   }
 
-  /** A reload: the page loads the newest state and takes up what was not acknowledged. */
+  /** A reload: the page loads the newest state and takes up what was not acknowledged, else it is a new window. */
   reload(): void {
     const restored = this.store.listUnsaved();
+    if (restored.pending.length === 0) this.clientId += "'";
     this.store.dispose();
     this.#timers = [];
     this.#heard = this.server.list.length;

@@ -225,7 +225,7 @@ it("goes on with the edits of an earlier page of the same window", async () => {
       lease: async () => undefined,
     },
     schedule: () => () => undefined,
-    restored: { pending, blocks: [] },
+    restored: { pending, blocks: [], base: 0 },
   });
   store.dispatch("rename", [setName(2, "Tank 1")]);
   await first.settle();
