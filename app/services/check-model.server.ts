@@ -1,5 +1,6 @@
 /** Findings of a model's working state, kept by model and continued from the last run after an edit. */
-import { startChecks, updateChecks, type CheckRun } from "../domain/checks/run-checks";
+import type { AddressSpace } from "../domain/address-space/address-space";
+import { startChecksInSteps, updateChecks, type CheckRun } from "../domain/checks/run-checks";
 import { toReport, type CheckReport } from "../domain/checks/to-report";
 import type { Finding } from "../domain/checks/finding";
 import { singleton } from "../utils/singleton.server";
@@ -7,27 +8,48 @@ import { exportModel } from "./export-model.server";
 import { loadWorkingModel } from "./working-model.server";
 
 const MAX_CACHED = 16;
-const getRuns = () => singleton("check-runs", () => new Map<string, CheckRun>());
+/** How long a check may keep the thread before other requests get their turn. */
+const SLICE_MS = 15;
+const getRuns = () => singleton("check-runs", () => new Map<string, Promise<CheckRun>>());
 
 export type ModelFindings = { readonly seq: number; readonly findings: readonly Finding[] };
 
 /** The findings at the head; undefined when the model is gone. */
 export async function checkModel(modelId: string): Promise<ModelFindings | undefined> {
   const working = await loadWorkingModel(modelId);
+  const runs = getRuns();
   if (!working) {
-    getRuns().delete(modelId);
+    runs.delete(modelId);
     return undefined;
   }
-  const runs = getRuns();
+  // A run takes over the memory of the one before, so those of one model stand in a queue.
   const before = runs.get(modelId);
-  const run = before ? updateChecks(before, working.space) : startChecks(working.space);
+  const run = before ? before.then((last) => advance(last, working.space), () => check(working.space)) : check(working.space);
   runs.delete(modelId);
   runs.set(modelId, run);
   for (const oldest of runs.keys()) {
     if (runs.size <= MAX_CACHED) break;
     runs.delete(oldest);
   }
-  return { seq: working.seq, findings: run.findings };
+  return { seq: working.seq, findings: (await run).findings };
+}
+
+/** An edit touches little; other required models are a new check. */
+function advance(last: CheckRun, space: AddressSpace): CheckRun | Promise<CheckRun> {
+  const isSameBase = last.space.layers.length === space.layers.length && last.space.layers.every((layer, i) => layer === space.layers[i] || layer === last.space.own);
+  return isSameBase ? updateChecks(last, space) : check(space);
+}
+
+async function check(space: AddressSpace): Promise<CheckRun> {
+  const steps = startChecksInSteps(space);
+  let since = performance.now();
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+    if (performance.now() - since < SLICE_MS) continue;
+    await new Promise((resolve) => setImmediate(resolve));
+    since = performance.now();
+  }
 }
 
 export type FindingCounts = { readonly error: number; readonly warning: number; readonly hint: number };

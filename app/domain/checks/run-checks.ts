@@ -35,6 +35,7 @@ export type CheckRun = {
   readonly results: Map<Subject, readonly RawFinding[]>;
 };
 
+const STEP = 50;
 const PROGRESS_STEP = 500;
 
 /** Checks the own model of an address space; findings inside required models stay out. Never throws. */
@@ -47,7 +48,30 @@ export function startChecks(space: AddressSpace, options: CheckOptions = {}): Ch
   return run(space, options, new CheckContext(space));
 }
 
+/**
+ * Like `startChecks`, in steps: whoever shares a thread with others does something else between them. Each step answers how
+ * many nodes are done; the last one answers the run.
+ */
+export function startChecksInSteps(
+  space: AddressSpace,
+  options: CheckOptions = {},
+): Generator<number, CheckRun, undefined> {
+  return takeSteps(space, options, new CheckContext(space));
+}
+
 function run(space: AddressSpace, options: CheckOptions, context: CheckContext): CheckRun {
+  const steps = takeSteps(space, options, context);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
+}
+
+function* takeSteps(
+  space: AddressSpace,
+  options: CheckOptions,
+  context: CheckContext,
+): Generator<number, CheckRun, undefined> {
   const results = new Map<Subject, readonly RawFinding[]>();
   const rules = groupRules(options.rules ?? RULES);
   checkSubject("model", context, rules, results);
@@ -56,6 +80,7 @@ function run(space: AddressSpace, options: CheckOptions, context: CheckContext):
   for (const key of space.own.nodes.keys()) {
     checkSubject(key as NodeKey, context, rules, results);
     done++;
+    if (done % STEP === 0) yield done;
     if (done % PROGRESS_STEP !== 0) continue;
     options.onProgress?.(done, total);
     if (options.shouldStop?.()) break;
