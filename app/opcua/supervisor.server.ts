@@ -50,6 +50,8 @@ type Entry = {
   gone: Promise<void>;
 };
 
+/** What the library says at every start on Node.js 20 about a padding that no policy offered here uses. */
+const NOISE = /\[NODE-OPCUA-W27\]|--security-revert=CVE-2023-46809/;
 const LOG_LIMIT = 400;
 const LAST_LINES = 5;
 const FINISHED_LIMIT = 24;
@@ -262,7 +264,7 @@ export class Supervisor {
       createInterface({ input: stream }).on("line", (line) => {
         // Colour codes of a terminal and blank lines say nothing here.
         const text = stripVTControlCharacters(line).trimEnd();
-        if (text !== "") this.#log(entry, "output", text.slice(0, 2000));
+        if (text !== "" && !NOISE.test(text)) this.#log(entry, "output", text.slice(0, 2000));
       });
     }
   }

@@ -9,7 +9,7 @@ import { logError } from "../utils/log.server";
 import { onShutdown } from "../utils/shutdown.server";
 import { singleton } from "../utils/singleton.server";
 import { publish } from "./event-hub.server";
-import { closeEndpointSession } from "./live-endpoint.server";
+import { closeEndpointSession, loadClient } from "./live-endpoint.server";
 import { getTestServerFolder, removeTestServerFiles } from "./test-server-files.server";
 
 const HEARTBEAT_INTERVAL = 10_000;
@@ -41,6 +41,7 @@ function follow(event: SupervisorEvent): void {
       return;
     case "state":
       tell(event.state);
+      if (event.state.state === "running") void loadClient();
       void keepRow(event.state);
       return;
     case "removed":

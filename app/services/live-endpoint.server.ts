@@ -13,11 +13,16 @@ import { singleton } from "../utils/singleton.server";
 type Pool = { getEndpointClient: (settings: EndpointSettings) => EndpointClient; disposeClient: (id: string) => Promise<void> };
 const pool = singleton<{ loading?: Promise<Pool> }>("endpoint-client-pool", () => ({}));
 
+/** Loads the client ahead of its first use: whoever started a server looks at it next. */
+export function loadClient(): Promise<Pool> {
+  return (pool.loading ??= import("../opcua/client/client-pool.server"));
+}
+
 /** The shared session with a running test server. Problem: `test-server.not-running`. */
 export async function openEndpoint(testServerId: string): Promise<Result<EndpointClient>> {
   const settings = findSettings(testServerId);
   if (!settings) return fail(problem("test-server.not-running"));
-  const { getEndpointClient } = await (pool.loading ??= import("../opcua/client/client-pool.server"));
+  const { getEndpointClient } = await loadClient();
   return ok(getEndpointClient(settings));
 }
 

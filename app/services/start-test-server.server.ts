@@ -14,7 +14,7 @@ import { getEnvironment } from "../utils/env.server";
 import { newId } from "../utils/ids.server";
 import { logError } from "../utils/log.server";
 import { followTestServers } from "./follow-test-servers.server";
-import { getTestServerFolder, writeTestServerFiles } from "./test-server-files.server";
+import { getTestServerFolder, removeTestServerFiles, writeTestServerFiles } from "./test-server-files.server";
 import { loadWorkingModel } from "./working-model.server";
 
 /** What a caller may choose; the API takes it as its body. "none" opens the server to everybody on this host. */
@@ -53,11 +53,23 @@ export async function startTestServer(model: ModelOfServer, startedBy: string, i
     startedAt: new Date(state.startedAt),
     heartbeatAt: new Date(state.startedAt),
   });
-  void prepare(seed).catch((error: unknown) => {
-    logError(error, "start of a test server");
-    supervisor.failStart(seed.id, [problem("test-server.start", { detail: "the model's files could not be written" })]);
-  });
+  void prepare(seed)
+    .catch((error: unknown) => failStart(seed, error))
+    .then(() => clearWhenStopped(seed.id));
   return ok(state);
+}
+
+function failStart(seed: TestServerSeed, error: unknown): void {
+  const supervisor = getSupervisor();
+  // Whoever stopped it meanwhile has taken its folder away too; that is no error.
+  if (!supervisor.get(seed.id)) return;
+  logError(error, "start of a test server");
+  supervisor.failStart(seed.id, [problem("test-server.start", { detail: "the model's files could not be written" })]);
+}
+
+/** A server that was stopped while its files were written leaves none behind. */
+async function clearWhenStopped(id: string): Promise<void> {
+  if (!getSupervisor().get(id)) await removeTestServerFiles(getTestServerFolder(id));
 }
 
 function makeSeed(model: ModelOfServer, { security, simulatedQuality }: TestServerIntent): TestServerSeed {

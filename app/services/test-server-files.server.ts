@@ -32,7 +32,8 @@ export async function writeTestServerFiles(folder: string, { space, layers }: Se
 }
 
 export async function removeTestServerFiles(folder: string): Promise<void> {
-  await rm(folder, { recursive: true, force: true });
+  // A file may be on its way into the folder while it is taken away.
+  await rm(folder, { recursive: true, force: true, maxRetries: 5, retryDelay: 100 });
 }
 
 function findPublishedFile({ modelUri, version, publicationDate, from }: RequiredLayer): string | undefined {

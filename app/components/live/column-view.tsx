@@ -126,7 +126,7 @@ function RowValue({ node }: { node: BrowsedNode }) {
   const { sample } = value;
   const isStale = stream !== "running";
   return (
-    <span className={cx("flex max-w-[58%] min-w-0 items-center gap-2 font-mono text-small font-normal", isStale && "text-stale")} title={nameStatus(sample, stream)}>
+    <span className={cx("flex min-w-0 items-center gap-2 font-mono text-small font-normal", typeof sample.value === "string" ? "max-w-[32%]" : "max-w-[58%]", isStale && "text-stale")} title={nameStatus(sample, stream)}>
       <span className="truncate">
         {showValue(sample, node.range)}
         {node.unit && sample.value !== null ? <small className="ml-1 text-note text-ink-3">{node.unit.text}</small> : null}

@@ -79,6 +79,7 @@ function makePlot(element: HTMLElement, range: LiveRange | null, span: number, s
     width: Math.max(40, element.clientWidth),
     height: HEIGHT,
     padding: [4, 4, 4, 0],
+    pxAlign: 0,
     cursor: { show: false },
     legend: { show: false },
     axes: [{ show: false }, { show: false }],
@@ -89,7 +90,7 @@ function makePlot(element: HTMLElement, range: LiveRange | null, span: number, s
     },
     series: [
       {},
-      { stroke: ink, width: 1.25, spanGaps: false, points: { show: false }, ...steps(range) },
+      { stroke: ink, width: 1.25, pxAlign: 0, spanGaps: false, points: { show: false }, ...steps(range) },
       { show: false, scale: "mark" },
     ],
     hooks: {

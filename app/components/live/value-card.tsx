@@ -33,7 +33,7 @@ export function ValueCard({ node, path, state, isWatched, onWatch, onOpenMember 
   }
   const { card, members, problem } = state;
   return (
-    <section aria-label="Value" className="min-w-0 flex-1 overflow-y-auto bg-leaf px-7 pt-3.5 pb-4 max-md:border-t max-md:border-rule max-md:px-4">
+    <section aria-label="Value" className="min-w-0 flex-1 overflow-y-auto bg-leaf px-7 pt-3.5 pb-4 *:max-w-150 max-md:border-t max-md:border-rule max-md:px-4">
       <header className="flex items-center gap-2.5">
         <span data-wire-end className="flex h-7 items-center">
           <NodeClassGlyph kind={node.isProperty ? "Property" : node.nodeClass} label />

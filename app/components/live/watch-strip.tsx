@@ -18,7 +18,7 @@ const SPANS = [
 ] as const;
 type Span = (typeof SPANS)[number]["value"];
 
-const GRID = "grid grid-cols-[36px_minmax(120px,168px)_minmax(120px,1fr)_minmax(110px,140px)_minmax(120px,214px)_76px_28px] items-center gap-x-2 max-md:grid-cols-[minmax(0,1fr)_auto_28px]";
+const GRID = "grid grid-cols-[64px_minmax(120px,168px)_minmax(120px,1fr)_minmax(110px,140px)_minmax(120px,214px)_76px_28px] items-center gap-x-2 max-md:grid-cols-[minmax(0,1fr)_auto_28px]";
 
 type Props = {
   nodes: readonly WatchedNode[];
@@ -131,7 +131,7 @@ function TimeAxis({ span }: { span: number }) {
   const step = span <= 60 ? 10 : span <= 300 ? 60 : 300;
   const end = now / 1000;
   const ticks: number[] = [];
-  if (now > 0) for (let at = Math.ceil((end - span - offset) / step) * step + offset; at < end - step / 3; at += step) ticks.push(at);
+  if (now > 0) for (let at = Math.ceil((end - span - offset) / step) * step + offset; at < end - span * 0.07; at += step) ticks.push(at);
   return (
     <div aria-hidden className={cx(GRID, "px-5 max-md:hidden")}>
       <div className="relative col-start-3 h-5 font-mono text-note text-ink-3">
