@@ -26,7 +26,9 @@ export async function action({ request }: Route.ActionArgs) {
   assertMay(caller, "model.edit", organizationId);
   const upload = (await request.formData()).get("upload");
   const result = await removeFromLibrary(caller, organizationId, typeof upload === "string" ? upload : "");
-  return result.ok ? redirect("/library") : data({ refusal: result.problems.map(formatProblem).join(" ") }, { status: 409 });
+  return result.ok
+    ? redirect("/library")
+    : data({ refusal: result.problems.map(formatProblem).join(" ") }, { status: 409 });
 }
 
 export default function Library({ loaderData, actionData }: Route.ComponentProps) {

@@ -21,9 +21,15 @@ export async function loader({ request, params }: Route.LoaderArgs) {
   return { name: model.name, required, choices: choices.filter((choice) => choice.id !== model.id) };
 }
 
-export const meta: Route.MetaFunction = ({ loaderData }) => [{ title: `About ${loaderData?.name ?? "the model"} · Ferrule` }];
+export const meta: Route.MetaFunction = ({ loaderData }) => [
+  { title: `About ${loaderData?.name ?? "the model"} · Ferrule` },
+];
 
-type Answer = { intent: AboutModelForm["intent"] | undefined; submission: SubmissionResult<string[]> | null; refusal: string | undefined };
+type Answer = {
+  intent: AboutModelForm["intent"] | undefined;
+  submission: SubmissionResult<string[]> | null;
+  refusal: string | undefined;
+};
 
 export async function action({ request, params }: Route.ActionArgs) {
   const { caller, model } = await requireModelForPage(request, params.modelId, "model.edit");
@@ -35,8 +41,14 @@ export async function action({ request, params }: Route.ActionArgs) {
   }
   const { value } = submission;
   const result = await act(caller, model, value);
-  if (!result.ok) return data<Answer>({ intent: value.intent, submission: null, refusal: result.problems.map(formatProblem).join(" ") }, { status: 409 });
-  return value.intent === "delete" ? redirect("/models") : data<Answer>({ intent: value.intent, submission: submission.reply(), refusal: undefined });
+  if (!result.ok)
+    return data<Answer>(
+      { intent: value.intent, submission: null, refusal: result.problems.map(formatProblem).join(" ") },
+      { status: 409 },
+    );
+  return value.intent === "delete"
+    ? redirect("/models")
+    : data<Answer>({ intent: value.intent, submission: submission.reply(), refusal: undefined });
 }
 
 async function act(caller: Caller, model: ModelAccess["model"], form: AboutModelForm): Promise<Result<unknown>> {
@@ -61,7 +73,9 @@ export default function About({ loaderData, actionData }: Route.ComponentProps) 
       required={loaderData.required}
       choices={loaderData.choices}
       answer={actionData}
-      editBlockedBy={workspace.permissions.includes("model.edit") ? undefined : "asks for the role engineer or administrator"}
+      editBlockedBy={
+        workspace.permissions.includes("model.edit") ? undefined : "asks for the role engineer or administrator"
+      }
     />
   );
 }

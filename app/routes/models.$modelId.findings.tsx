@@ -11,7 +11,9 @@ export async function loader({ request, params }: Route.LoaderArgs) {
   return { name: model.name };
 }
 
-export const meta: Route.MetaFunction = ({ loaderData }) => [{ title: `Findings of ${loaderData?.name ?? "the model"} · Ferrule` }];
+export const meta: Route.MetaFunction = ({ loaderData }) => [
+  { title: `Findings of ${loaderData?.name ?? "the model"} · Ferrule` },
+];
 
 export default function Findings() {
   const model = useOpenModel();

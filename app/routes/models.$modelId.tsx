@@ -13,7 +13,8 @@ import { failWith } from "~/utils/problem-response.server";
 
 export async function loader({ request, params }: Route.LoaderArgs) {
   const { caller, model } = await requireModelForPage(request, params.modelId, "read");
-  if (new URL(request.url).pathname.replace(/\/$/, "") === `/models/${model.id}`) throw redirect(`/models/${model.id}/sheet`);
+  if (new URL(request.url).pathname.replace(/\/$/, "") === `/models/${model.id}`)
+    throw redirect(`/models/${model.id}/sheet`);
   const working = await loadWorkingModel(model.id);
   if (!working) throw failWith(404, "request.not-found");
   const isServed = listTestServers(model.organizationId, model.id).some((server) => server.state === "running");
@@ -27,7 +28,9 @@ export function shouldRevalidate({ formMethod, currentParams, nextParams }: Shou
 
 /** A page whose drawing carries the title block itself says so: `export const handle = { drawsTitleBlock: true }`. */
 function useDrawsTitleBlock(): boolean {
-  return useMatches().some(({ handle }) => typeof handle === "object" && handle !== null && "drawsTitleBlock" in handle);
+  return useMatches().some(
+    ({ handle }) => typeof handle === "object" && handle !== null && "drawsTitleBlock" in handle,
+  );
 }
 
 export default function Model({ loaderData }: Route.ComponentProps) {

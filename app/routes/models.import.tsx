@@ -53,7 +53,10 @@ export async function action({ request }: Route.ActionArgs) {
   return redirect(`/models/${imported.value.id}/sheet`);
 }
 
-function refuse(problems: Parameters<typeof toProblemJson>[0][] | readonly Parameters<typeof toProblemJson>[0][], status: number) {
+function refuse(
+  problems: Parameters<typeof toProblemJson>[0][] | readonly Parameters<typeof toProblemJson>[0][],
+  status: number,
+) {
   return data({ preview: null, problems: problems.map(toProblemJson) }, { status });
 }
 
@@ -67,7 +70,14 @@ export default function Import({ actionData }: Route.ComponentProps) {
       </Page>
     );
   return (
-    <Page title="Import" about={target === "library" ? "A NodeSet2 file for the library." : "A NodeSet2 file as a model of the team, or for the library."}>
+    <Page
+      title="Import"
+      about={
+        target === "library"
+          ? "A NodeSet2 file for the library."
+          : "A NodeSet2 file as a model of the team, or for the library."
+      }
+    >
       <Upload />
       {actionData && actionData.problems.length > 0 ? (
         <section className="mt-6 max-w-240">

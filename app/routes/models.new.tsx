@@ -17,7 +17,10 @@ export async function loader({ request }: Route.LoaderArgs) {
   const caller = await requireUser(request);
   const organization = chooseOrganization(request, caller);
   assertMay(caller, "model.edit", organization.organizationId);
-  const [page, choices] = await Promise.all([readNewModelPage(organization), listLibraryChoices(organization.organizationId)]);
+  const [page, choices] = await Promise.all([
+    readNewModelPage(organization),
+    listLibraryChoices(organization.organizationId),
+  ]);
   return { ...page, choices };
 }
 

@@ -15,6 +15,7 @@ export async function loader({ request }: Route.LoaderArgs) {
   return {
     ...(await readPark(organizationId)),
     testServers: listTestServers(organizationId),
+    organizationId,
     organizationName,
     userName: caller.name,
     roles,

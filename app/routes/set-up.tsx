@@ -20,12 +20,16 @@ export async function loader() {
 
 export async function action({ request }: Route.ActionArgs) {
   const submission = parseWithZod(await request.formData(), { schema });
-  if (submission.status !== "success") return data(submission.reply({ hideFields: ["password", "repeat"] }), { status: 400 });
+  if (submission.status !== "success")
+    return data(submission.reply({ hideFields: ["password", "repeat"] }), { status: 400 });
   const { code, organizationName, name, email, password } = submission.value;
   const intent = { code, organizationName, name, email, password };
   const result = await setUpOrganization(request, intent);
   if (!result.ok) {
-    const reply = submission.reply({ formErrors: result.problems.map(formatProblem), hideFields: ["password", "repeat"] });
+    const reply = submission.reply({
+      formErrors: result.problems.map(formatProblem),
+      hideFields: ["password", "repeat"],
+    });
     return data(reply, { status: 422 });
   }
   const signedIn = await signIn(request, intent);
@@ -56,12 +60,31 @@ export default function SetUp({ actionData }: Route.ComponentProps) {
           autoFocus
           autoComplete="one-time-code"
         />
-        <ConformField field={fields.organizationName} label="Organisation" hint="As your works call themselves." size="large" autoComplete="organization" />
+        <ConformField
+          field={fields.organizationName}
+          label="Organisation"
+          hint="As your works call themselves."
+          size="large"
+          autoComplete="organization"
+        />
         <ConformField field={fields.name} label="Your name" size="large" autoComplete="name" />
         <ConformField field={fields.email} label="E-mail" type="email" size="large" autoComplete="username" />
         <div className="grid grid-cols-2 gap-3 max-sm:grid-cols-1">
-          <ConformField field={fields.password} label="Password" type="password" hint="At least 10 characters." size="large" autoComplete="new-password" />
-          <ConformField field={fields.repeat} label="Password again" type="password" size="large" autoComplete="new-password" />
+          <ConformField
+            field={fields.password}
+            label="Password"
+            type="password"
+            hint="At least 10 characters."
+            size="large"
+            autoComplete="new-password"
+          />
+          <ConformField
+            field={fields.repeat}
+            label="Password again"
+            type="password"
+            size="large"
+            autoComplete="new-password"
+          />
         </div>
         <Button type="submit" tone="main" size="large" busy={busy} className="mt-1">
           Create organisation

@@ -35,7 +35,9 @@ export async function action({ request }: Route.ActionArgs) {
   const result = await signIn(request, submission.value);
   if (result.ok) return redirect(toSafePath(form.get("to")), { headers: result.value.headers });
   const status = result.problems.some((p) => p.code === "auth.too-many-attempts") ? 429 : 401;
-  return data(submission.reply({ formErrors: result.problems.map(formatProblem), hideFields: ["password"] }), { status });
+  return data(submission.reply({ formErrors: result.problems.map(formatProblem), hideFields: ["password"] }), {
+    status,
+  });
 }
 
 export default function SignIn({ loaderData, actionData }: Route.ComponentProps) {
@@ -49,14 +51,38 @@ export default function SignIn({ loaderData, actionData }: Route.ComponentProps)
   });
   const { demo } = loaderData;
   return (
-    <Gate title="Sign in" about={demo ? "Choose whom to be in the demo, one press each." : "With the account that your administrator made for you."}>
+    <Gate
+      title="Sign in"
+      about={
+        demo
+          ? "Choose whom to be in the demo, one press each."
+          : "With the account that your administrator made for you."
+      }
+    >
       {demo ? <DemoPeople accounts={demo.accounts} password={demo.password} to={to} /> : null}
-      {demo ? <p className="flex items-center gap-3 text-note text-ink-3 before:h-px before:flex-1 before:bg-rule after:h-px after:flex-1 after:bg-rule">or by hand</p> : null}
+      {demo ? (
+        <p className="flex items-center gap-3 text-note text-ink-3 before:h-px before:flex-1 before:bg-rule after:h-px after:flex-1 after:bg-rule">
+          or by hand
+        </p>
+      ) : null}
       <Form method="post" {...getFormProps(form)} className="grid gap-3">
         {form.errors ? <Notice tone="error" title={form.errors.join(" ")} live /> : null}
         <input type="hidden" name="to" value={to} />
-        <ConformField field={fields.email} label="E-mail" type="email" autoComplete="username" size="large" autoFocus={!demo} />
-        <ConformField field={fields.password} label="Password" type="password" autoComplete="current-password" size="large" />
+        <ConformField
+          field={fields.email}
+          label="E-mail"
+          type="email"
+          autoComplete="username"
+          size="large"
+          autoFocus={!demo}
+        />
+        <ConformField
+          field={fields.password}
+          label="Password"
+          type="password"
+          autoComplete="current-password"
+          size="large"
+        />
         <Button type="submit" tone={demo ? "plain" : "main"} size="large" busy={busy} className="mt-1">
           Sign in
         </Button>

@@ -24,11 +24,19 @@ export async function loader({ request }: Route.LoaderArgs) {
   const caller = await requireUser(request);
   const organization = chooseOrganization(request, caller);
   assertMay(caller, "read", organization.organizationId);
-  const [page, tokens] = await Promise.all([readTeamPage(caller, organization), listVisibleTokens(caller, organization.organizationId)]);
+  const [page, tokens] = await Promise.all([
+    readTeamPage(caller, organization),
+    listVisibleTokens(caller, organization.organizationId),
+  ]);
   return { page, tokens, now: new Date().toISOString() };
 }
 
-type Answer = { intent: TeamIntent["intent"] | undefined; submission: SubmissionResult<string[]> | null; secret?: string; errors: readonly string[] };
+type Answer = {
+  intent: TeamIntent["intent"] | undefined;
+  submission: SubmissionResult<string[]> | null;
+  secret?: string;
+  errors: readonly string[];
+};
 
 export async function action({ request }: Route.ActionArgs) {
   const caller = await requireUser(request);
@@ -38,22 +46,35 @@ export async function action({ request }: Route.ActionArgs) {
   if (submission.status !== "success") {
     const errors = Object.values(submission.error ?? {}).flatMap((texts) => texts ?? []);
     const intent = form.get("intent") === "add-person" ? "add-person" : undefined;
-    return data<Answer>({ intent, submission: submission.reply({ hideFields: ["password"] }), errors }, { status: 400 });
+    return data<Answer>(
+      { intent, submission: submission.reply({ hideFields: ["password"] }), errors },
+      { status: 400 },
+    );
   }
   const { value } = submission;
   const isOfTokens = value.intent === "create-token" || value.intent === "revoke-token";
   assertMay(caller, isOfTokens ? "read" : "organization.administer", organizationId);
   if (value.intent === "create-token") {
-    const { secret } = await createToken(caller, organizationId, { name: value.name, scopes: value.scope === "write" ? ["read", "write"] : ["read"], days: value.days });
+    const { secret } = await createToken(caller, organizationId, {
+      name: value.name,
+      scopes: value.scope === "write" ? ["read", "write"] : ["read"],
+      days: value.days,
+    });
     return data<Answer>({ intent: value.intent, submission: null, secret, errors: [] });
   }
   const result = await act(caller, organizationId, value);
   const errors = result.ok ? [] : result.problems.map(formatProblem);
-  const reply = result.ok ? submission.reply({ resetForm: true }) : submission.reply({ formErrors: errors, hideFields: ["password"] });
+  const reply = result.ok
+    ? submission.reply({ resetForm: true })
+    : submission.reply({ formErrors: errors, hideFields: ["password"] });
   return data<Answer>({ intent: value.intent, submission: reply, errors }, { status: result.ok ? 200 : 422 });
 }
 
-function act(caller: Caller, organizationId: string, intent: Exclude<TeamIntent, { intent: "create-token" }>): Promise<Result<unknown>> {
+function act(
+  caller: Caller,
+  organizationId: string,
+  intent: Exclude<TeamIntent, { intent: "create-token" }>,
+): Promise<Result<unknown>> {
   switch (intent.intent) {
     case "add-person":
       return addPerson(caller, organizationId, intent);
@@ -73,11 +94,16 @@ export default function Team({ loaderData, actionData }: Route.ComponentProps) {
   const isOfTokens = actionData?.intent === "create-token" || actionData?.intent === "revoke-token";
   const errors = actionData?.errors ?? [];
   return (
-    <Page title="Team" about={`${page.people.length} ${page.people.length === 1 ? "person" : "people"} of ${page.organizationName}`}>
+    <Page
+      title="Team"
+      about={`${page.people.length} ${page.people.length === 1 ? "person" : "people"} of ${page.organizationName}`}
+    >
       <div className="grid grid-cols-[minmax(0,1fr)_340px] gap-8 max-lg:grid-cols-1">
         <div className="grid content-start gap-8">
           <Block title="People" about={page.mayAdminister ? undefined : "an administrator changes people and roles"}>
-            {errors.length > 0 && !isOfTokens && actionData?.intent !== "add-person" ? <Notice tone="error" title={errors.join(" ")} live className="mb-3" /> : null}
+            {errors.length > 0 && !isOfTokens && actionData?.intent !== "add-person" ? (
+              <Notice tone="error" title={errors.join(" ")} live className="mb-3" />
+            ) : null}
             <PeopleTable people={page.people} userId={page.userId} mayAdminister={page.mayAdminister} />
           </Block>
           <TokensBlock tokens={tokens} secret={actionData?.secret} errors={isOfTokens ? errors : []} now={now} />
@@ -85,7 +111,10 @@ export default function Team({ loaderData, actionData }: Route.ComponentProps) {
         </div>
         {page.mayAdminister ? (
           <Block title="Add a person" className="border-t-[1.5px] border-ink pt-2">
-            <AddPersonForm lastResult={actionData?.intent === "add-person" ? actionData.submission : null} count={page.people.length} />
+            <AddPersonForm
+              lastResult={actionData?.intent === "add-person" ? actionData.submission : null}
+              count={page.people.length}
+            />
           </Block>
         ) : (
           <RoleLegend />

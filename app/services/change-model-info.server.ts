@@ -18,20 +18,39 @@ const noIdentifiers = (model: ModelRow) => new BlockAllocator(model.namespaceUri
 /** Sets the version, with the date of today, in the header and in the namespace's metadata. */
 export function changeVersion(author: Caller, model: ModelRow, version: string): Promise<Result<null>> {
   const publicationDate = `${new Date().toISOString().slice(0, 19)}Z`;
-  return append(author, model, "set-version", (space) => setModelInfo(space, noIdentifiers(model), { version, publicationDate }));
+  return append(author, model, "set-version", (space) =>
+    setModelInfo(space, noIdentifiers(model), { version, publicationDate }),
+  );
 }
 
 /** Problems: missing ones, `model.required-in-use` where nodes still use one that would go. */
-export async function changeRequiredModels(author: Caller, model: ModelRow, modelUris: readonly string[]): Promise<Result<null>> {
+export async function changeRequiredModels(
+  author: Caller,
+  model: ModelRow,
+  modelUris: readonly string[],
+): Promise<Result<null>> {
   const uris = [...new Set([OPC_UA_NAMESPACE, ...modelUris])];
-  const asked = { modelUri: model.namespaceUri, requiredModels: uris.map((modelUri) => ({ modelUri, requiredModels: [] })) };
-  const { layers, missing } = await resolveRequiredModels(model.organizationId, { namespaceUris: [model.namespaceUri], models: [asked] });
+  const asked = {
+    modelUri: model.namespaceUri,
+    requiredModels: uris.map((modelUri) => ({ modelUri, requiredModels: [] })),
+  };
+  const { layers, missing } = await resolveRequiredModels(model.organizationId, {
+    namespaceUris: [model.namespaceUri],
+    models: [asked],
+  });
   if (missing.length > 0) return fail(...missing);
   const requiredModels = uris.flatMap((uri) => layers.filter((layer) => layer.modelUri === uri).map(toRequiredEntry));
-  return append(author, model, "set-required-models", (space) => setRequiredModels(space, noIdentifiers(model), { requiredModels }));
+  return append(author, model, "set-required-models", (space) =>
+    setRequiredModels(space, noIdentifiers(model), { requiredModels }),
+  );
 }
 
-async function append(author: Caller, model: ModelRow, label: string, edit: (space: AddressSpace) => Result<Edit>): Promise<Result<null>> {
+async function append(
+  author: Caller,
+  model: ModelRow,
+  label: string,
+  edit: (space: AddressSpace) => Result<Edit>,
+): Promise<Result<null>> {
   const working = await loadWorkingModel(model.id);
   if (!working) return fail(problem("request.not-found"));
   const made = edit(working.space);

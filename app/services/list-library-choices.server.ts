@@ -40,20 +40,18 @@ export async function listLibraryChoices(organizationId: string): Promise<Librar
       };
     }),
   );
-  const added = uploads.map(
-    (row): LibraryChoice => ({
-      id: row.id,
-      modelUri: row.modelUri,
-      title: toTitle(row.modelUri),
-      fileName: row.fileName,
-      version: row.version ?? undefined,
-      publicationDate: row.publicationDate ?? undefined,
-      nodeCount: row.nodeCount,
-      origin: "added",
-      required: row.requiredModels,
-      by: row.uploadedBy,
-    }),
-  );
+  const added = uploads.map((row): LibraryChoice => ({
+    id: row.id,
+    modelUri: row.modelUri,
+    title: toTitle(row.modelUri),
+    fileName: row.fileName,
+    version: row.version ?? undefined,
+    publicationDate: row.publicationDate ?? undefined,
+    nodeCount: row.nodeCount,
+    origin: "added",
+    required: row.requiredModels,
+    by: row.uploadedBy,
+  }));
   return [...ofTeam, ...added, ...getLibrary().list().map(fromPublished)];
 }
 
@@ -78,5 +76,10 @@ function toRequired({ modelUri, version }: ModelEntry): LibraryChoice["required"
 
 /** The last part of the URI stands for the name where a file gives none. */
 function toTitle(modelUri: string): string {
-  return modelUri.split(/[/:#]+/).filter(Boolean).at(-1) ?? modelUri;
+  return (
+    modelUri
+      .split(/[/:#]+/)
+      .filter(Boolean)
+      .at(-1) ?? modelUri
+  );
 }

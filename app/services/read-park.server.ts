@@ -5,7 +5,7 @@ import { findParent } from "../domain/address-space/browse";
 import { formatNodeId, OPC_UA_NAMESPACE, type NodeKey } from "../domain/address-space/node-id";
 import type { Finding } from "../domain/checks/finding";
 import { formatProblem } from "../domain/core/problem-texts";
-import { listMachines, type Machine } from "../domain/instantiation/list-machines";
+import { listMachines, type Machine, type MachineFigure } from "../domain/instantiation/list-machines";
 import { checkModel, countFindings, type FindingCounts } from "./check-model.server";
 import { loadWorkingModel } from "./working-model.server";
 
@@ -31,7 +31,7 @@ export type ParkMachine = Omit<Machine, "state" | "figure"> & {
   readonly tally: FindingCounts;
   /** NodeId texts to watch while a test server serves the model. */
   readonly stateNodeId: string | null;
-  readonly figureNodeId: string | null;
+  readonly figure: (Pick<MachineFigure, "name" | "unit" | "range"> & { readonly nodeId: string }) | null;
 };
 
 export type RecentEdit = {
@@ -86,7 +86,9 @@ function toParkMachines(modelId: string, space: AddressSpace, findings: readonly
     modelId,
     tally: countFindings(findings.filter((finding) => isBelow(space, finding.key, machine.key))),
     stateNodeId: toNodeId(state),
-    figureNodeId: toNodeId(figure),
+    figure: figure
+      ? { name: figure.name, unit: figure.unit, range: figure.range, nodeId: toNodeId(figure.key) ?? "" }
+      : null,
   }));
 }
 
@@ -103,7 +105,14 @@ async function listRecentEdits(models: readonly ModelSummary[]): Promise<RecentE
   const pages = await Promise.all(
     models.map(async ({ id, name, headSeq }) => {
       const transactions = await listTransactions(id, Math.max(0, headSeq - MAX_EDITS), MAX_EDITS);
-      return transactions.map(({ seq, author, label, at }) => ({ modelId: id, modelName: name, seq, author, label, at }));
+      return transactions.map(({ seq, author, label, at }) => ({
+        modelId: id,
+        modelName: name,
+        seq,
+        author,
+        label,
+        at,
+      }));
     }),
   );
   return pages

@@ -4,6 +4,8 @@ const thin = "\u202f";
 
 /** 1318 → `1 318`. */
 export function formatCount(value: number): string {
-  const text = Math.abs(value).toString().replace(/\B(?=(\d{3})+(?!\d))/g, thin);
+  const text = Math.abs(value)
+    .toString()
+    .replace(/\B(?=(\d{3})+(?!\d))/g, thin);
   return value < 0 ? `\u2212${text}` : text;
 }

@@ -10,8 +10,14 @@ export const namespaceUri = z
   .string("Write the namespace URI")
   .trim()
   .max(maxUri, `At most ${maxUri} characters`)
-  .regex(/^[A-Za-z][A-Za-z0-9+.-]*:[^\s<>"{}|\\^`]+$/, "Write an absolute URI, as http://merrow.example/UA/RopeBraider/")
-  .refine((uri) => !uri.toLowerCase().startsWith("http://opcfoundation.org/"), "This part of the namespace belongs to the standards body");
+  .regex(
+    /^[A-Za-z][A-Za-z0-9+.-]*:[^\s<>"{}|\\^`]+$/,
+    "Write an absolute URI, as http://merrow.example/UA/RopeBraider/",
+  )
+  .refine(
+    (uri) => !uri.toLowerCase().startsWith("http://opcfoundation.org/"),
+    "This part of the namespace belongs to the standards body",
+  );
 
 export const modelVersion = z
   .string("Write a version")
@@ -30,7 +36,10 @@ export type NewModelForm = z.infer<typeof newModelSchema>;
 export const aboutModelSchema = z.discriminatedUnion("intent", [
   z.object({ intent: z.literal("rename"), name: modelName }),
   z.object({ intent: z.literal("set-version"), version: modelVersion }),
-  z.object({ intent: z.literal("set-required"), required: z.array(z.string().max(maxUri)).max(50, "At most 50 models").default([]) }),
+  z.object({
+    intent: z.literal("set-required"),
+    required: z.array(z.string().max(maxUri)).max(50, "At most 50 models").default([]),
+  }),
   z.object({ intent: z.literal("delete") }),
 ]);
 export type AboutModelForm = z.infer<typeof aboutModelSchema>;

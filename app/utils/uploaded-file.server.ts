@@ -21,7 +21,9 @@ export async function readUploadedFile(request: Request, field: string): Promise
 
 async function parseForm(bytes: Uint8Array, contentType: string): Promise<FormData | undefined> {
   try {
-    return await new Response(bytes as Uint8Array<ArrayBuffer>, { headers: { "content-type": contentType } }).formData();
+    return await new Response(bytes as Uint8Array<ArrayBuffer>, {
+      headers: { "content-type": contentType },
+    }).formData();
   } catch {
     return undefined;
   }

@@ -32,7 +32,17 @@ export function FindingPlace({ space, nodeKey }: { space: AddressSpace; nodeKey:
   );
 }
 
-function Card({ node, here, foreign, children }: { node: Node; here?: boolean; foreign?: boolean; children?: ReactNode }) {
+function Card({
+  node,
+  here,
+  foreign,
+  children,
+}: {
+  node: Node;
+  here?: boolean;
+  foreign?: boolean;
+  children?: ReactNode;
+}) {
   return (
     <div
       className={cx(

@@ -48,10 +48,16 @@ export function FindingRow({ finding, tools, open, onToggle, showsRule }: RowPro
           onClick={onToggle}
           className="grid min-h-7 grid-cols-[20px_minmax(0,5fr)_minmax(0,7fr)] items-center gap-x-2 py-0.5 pl-[46px] text-left text-small focus-visible:-outline-offset-2"
         >
-          {node ? <NodeClassGlyph kind={isProperty(space, node) ? "Property" : node.nodeClass} label /> : <FindingShape severity={finding.severity} />}
+          {node ? (
+            <NodeClassGlyph kind={isProperty(space, node) ? "Property" : node.nodeClass} label />
+          ) : (
+            <FindingShape severity={finding.severity} />
+          )}
           <span className={cx(open ? "" : "truncate")}>
             {showsRule ? <span className="mr-2 font-mono text-ink-2">{finding.rule}</span> : null}
-            <b className={cx("font-semibold", node?.nodeClass.endsWith("Type") && "italic")}>{finding.browseName || "Model"}</b>
+            <b className={cx("font-semibold", node?.nodeClass.endsWith("Type") && "italic")}>
+              {finding.browseName || "Model"}
+            </b>
             {parent ? (
               <span className="text-ink-2">
                 {" "}
@@ -63,11 +69,20 @@ export function FindingRow({ finding, tools, open, onToggle, showsRule }: RowPro
         </button>
         <span className="flex w-21 items-center justify-end gap-3 text-small">
           {rule?.fix && mend && !open ? (
-            <button type="button" onClick={() => mend([finding])} className="border-b border-rule font-medium hover:border-copper hover:text-copper" title={rule.fix.label}>
+            <button
+              type="button"
+              onClick={() => mend([finding])}
+              className="border-b border-rule font-medium hover:border-copper hover:text-copper"
+              title={rule.fix.label}
+            >
               Mend
             </button>
           ) : null}
-          <Link to={links.register} className="border-b border-rule font-medium hover:border-copper hover:text-copper" aria-label={`Show ${finding.browseName || "the model"} in the register`}>
+          <Link
+            to={links.register}
+            className="border-b border-rule font-medium hover:border-copper hover:text-copper"
+            aria-label={`Show ${finding.browseName || "the model"} in the register`}
+          >
             Show
           </Link>
         </span>
@@ -88,7 +103,9 @@ function FindingDetail({ finding, tools }: { finding: Finding; tools: FindingToo
         <p className="mt-3 font-mono text-note break-all text-ink-3">{finding.nodeId}</p>
       </section>
       <section className="border-l border-hair px-5 py-3">
-        <h3 className="mb-2 text-note font-medium text-ink-3">{finding.facts.length > 1 ? "Facts that do not fit" : "The fact"}</h3>
+        <h3 className="mb-2 text-note font-medium text-ink-3">
+          {finding.facts.length > 1 ? "Facts that do not fit" : "The fact"}
+        </h3>
         <dl className="grid grid-cols-[88px_minmax(0,1fr)] gap-x-3 gap-y-1.5 text-small">
           {finding.facts.length === 0 ? <Fact label="Found">{finding.message}</Fact> : null}
           {finding.facts.map((fact, i) => (
@@ -146,7 +163,10 @@ function Fact({ label, children }: { label: string; children: ReactNode }) {
 
 function LinkToNode({ to, children }: { to: string; children: string }) {
   return (
-    <Link to={to} className="inline-flex h-6 items-center rounded-edge border border-edge bg-leaf px-2 text-small font-medium hover:bg-bench-2">
+    <Link
+      to={to}
+      className="inline-flex h-6 items-center rounded-edge border border-edge bg-leaf px-2 text-small font-medium hover:bg-bench-2"
+    >
       {children}
     </Link>
   );

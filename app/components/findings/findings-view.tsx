@@ -26,7 +26,10 @@ export function FindingsView({ findings, tools, ownNodes }: Props) {
   const [text, setText] = useState("");
   const [opened, setOpened] = useState<string | undefined>(undefined);
   const [closed, setClosed] = useState<ReadonlySet<string>>(new Set());
-  const visible = useMemo(() => findings.filter((f) => shown.has(f.severity) && matchesText(f, text)), [findings, shown, text]);
+  const visible = useMemo(
+    () => findings.filter((f) => shown.has(f.severity) && matchesText(f, text)),
+    [findings, shown, text],
+  );
   const groups = useMemo(() => groupFindings(visible, grouping), [visible, grouping]);
   const first = groups[0]?.findings[0];
   const openId = opened ?? (first ? getFindingId(first) : undefined);
@@ -64,11 +67,17 @@ export function FindingsView({ findings, tools, ownNodes }: Props) {
         <label className="relative w-60">
           <span className="sr-only">Filter findings</span>
           <Icon of={Search} className="pointer-events-none absolute inset-y-0 left-2 my-auto text-ink-3" />
-          <Input value={text} onChange={(event) => setText(event.currentTarget.value)} placeholder="Rule, name, clause" className="pl-7" type="search" />
+          <Input
+            value={text}
+            onChange={(event) => setText(event.currentTarget.value)}
+            placeholder="Rule, name, clause"
+            className="pl-7"
+            type="search"
+          />
         </label>
         <p className="ml-auto text-note text-ink-3">
-          <span className="font-mono">{ownNodes.toLocaleString("en").replaceAll(",", " ")}</span> nodes of the model checked by{" "}
-          <span className="font-mono">{RULES.length}</span> rules; findings inside required models stay out
+          <span className="font-mono">{ownNodes.toLocaleString("en").replaceAll(",", " ")}</span> nodes of the model
+          checked by <span className="font-mono">{RULES.length}</span> rules; findings inside required models stay out
         </p>
       </div>
       <div className="min-h-0 flex-1 overflow-y-auto px-5 pb-8">
@@ -127,7 +136,11 @@ function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: G
           <Icon of={isClosed ? ChevronRight : ChevronDown} className="shrink-0 text-ink-3" />
           <FindingShape severity={group.severity} />
           {group.mark ? <span className="ml-1 w-10 font-mono text-small text-ink-2">{group.mark}</span> : null}
-          <h2 className={`truncate text-body font-semibold ${grouping === "place" && group.title.endsWith("Type") ? "italic" : ""}`}>{group.title}</h2>
+          <h2
+            className={`truncate text-body font-semibold ${grouping === "place" && group.title.endsWith("Type") ? "italic" : ""}`}
+          >
+            {group.title}
+          </h2>
           {group.clause ? <Tag>{group.clause}</Tag> : null}
         </button>
         <span className="flex items-center gap-3 text-note text-ink-3">
@@ -145,12 +158,23 @@ function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: G
           {shown.map((finding) => {
             const id = getFindingId(finding);
             return (
-              <FindingRow key={id} finding={finding} tools={tools} open={id === openId} onToggle={() => onOpen(id)} showsRule={grouping === "place"} />
+              <FindingRow
+                key={id}
+                finding={finding}
+                tools={tools}
+                open={id === openId}
+                onToggle={() => onOpen(id)}
+                showsRule={grouping === "place"}
+              />
             );
           })}
           {shown.length < group.findings.length ? (
             <li className="flex h-7 items-center pl-[74px]">
-              <button type="button" onClick={() => setShowsAll(true)} className="border-b border-rule text-small font-medium hover:border-copper hover:text-copper">
+              <button
+                type="button"
+                onClick={() => setShowsAll(true)}
+                className="border-b border-rule text-small font-medium hover:border-copper hover:text-copper"
+              >
                 Show {group.findings.length - shown.length} more
               </button>
             </li>

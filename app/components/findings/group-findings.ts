@@ -36,9 +36,17 @@ function toPlace(finding: Finding): string {
 function toGroup(id: string, list: readonly Finding[], grouping: Grouping): FindingGroup {
   const findings = [...list].sort((a, b) => weight[a.severity] - weight[b.severity]);
   const severity = findings[0]?.severity ?? "hint";
-  if (grouping === "place") return { id, mark: "", title: id === "" ? "The model as a whole" : id, clause: undefined, severity, findings };
+  if (grouping === "place")
+    return { id, mark: "", title: id === "" ? "The model as a whole" : id, clause: undefined, severity, findings };
   const clauses = new Set(findings.map((finding) => finding.clause));
-  return { id, mark: id, title: findRule(id)?.title ?? id, clause: clauses.size === 1 ? findings[0]?.clause : undefined, severity, findings };
+  return {
+    id,
+    mark: id,
+    title: findRule(id)?.title ?? id,
+    clause: clauses.size === 1 ? findings[0]?.clause : undefined,
+    severity,
+    findings,
+  };
 }
 
 function compareGroups(a: FindingGroup, b: FindingGroup): number {
@@ -49,9 +57,14 @@ function compareGroups(a: FindingGroup, b: FindingGroup): number {
 export function matchesText(finding: Finding, text: string): boolean {
   const wanted = text.trim().toLowerCase();
   if (wanted === "") return true;
-  return [finding.rule, finding.browseName, finding.path, finding.message, finding.clause, findRule(finding.rule)?.title ?? ""].some((part) =>
-    part.toLowerCase().includes(wanted),
-  );
+  return [
+    finding.rule,
+    finding.browseName,
+    finding.path,
+    finding.message,
+    finding.clause,
+    findRule(finding.rule)?.title ?? "",
+  ].some((part) => part.toLowerCase().includes(wanted));
 }
 
 /** A finding's identity among those of one model: the same fault keeps it from run to run. */

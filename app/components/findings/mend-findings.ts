@@ -9,16 +9,32 @@ import type { NodeIdAllocator } from "~/domain/editing/allocate-node-id";
 import { applyOperations } from "~/domain/editing/apply-operation";
 import type { Operation } from "~/domain/editing/operation";
 
-type Mended = { readonly operations: readonly Operation[]; readonly count: number; readonly reasons: readonly string[] };
+type Mended = {
+  readonly operations: readonly Operation[];
+  readonly count: number;
+  readonly reasons: readonly string[];
+};
 
 export function mendFindings({ editor }: OpenModel, findings: readonly Finding[]): void {
   const { space } = editor.getState();
   const mended = applyFixes(space, findings, editor.allocator);
   const rules = new Set(findings.map((finding) => finding.rule));
-  const saved = mended.operations.length === 0 ? undefined : editor.dispatch(`mend-${[...rules].join("-")}`, mended.operations);
+  const saved =
+    mended.operations.length === 0 ? undefined : editor.dispatch(`mend-${[...rules].join("-")}`, mended.operations);
   const reasons = saved && !saved.ok ? describe(space, saved.problems) : mended.reasons;
-  if (reasons.length > 0) showToast({ tone: "error", title: `${findings.length - mended.count} could not be mended`, detail: reasons.join(" "), seconds: 12 });
-  if (saved?.ok) showToast({ tone: "good", title: `${mended.count === 1 ? "One finding" : `${mended.count} findings`} mended`, detail: "Undo takes it back in one step." });
+  if (reasons.length > 0)
+    showToast({
+      tone: "error",
+      title: `${findings.length - mended.count} could not be mended`,
+      detail: reasons.join(" "),
+      seconds: 12,
+    });
+  if (saved?.ok)
+    showToast({
+      tone: "good",
+      title: `${mended.count === 1 ? "One finding" : `${mended.count} findings`} mended`,
+      detail: "Undo takes it back in one step.",
+    });
 }
 
 function applyFixes(space: AddressSpace, findings: readonly Finding[], context: NodeIdAllocator): Mended {

@@ -57,7 +57,13 @@ export function LibraryView({ entries, editBlockedBy, shown, refusal }: Props) {
         <label className="relative w-72">
           <span className="sr-only">Search the library</span>
           <Icon of={Search} className="pointer-events-none absolute inset-y-0 left-2 my-auto text-ink-3" />
-          <Input type="search" value={query} onChange={(event) => setQuery(event.currentTarget.value)} placeholder="Name or model URI" className="pl-7" />
+          <Input
+            type="search"
+            value={query}
+            onChange={(event) => setQuery(event.currentTarget.value)}
+            placeholder="Name or model URI"
+            className="pl-7"
+          />
         </label>
         <Segments
           label="Shelf"
@@ -68,7 +74,9 @@ export function LibraryView({ entries, editBlockedBy, shown, refusal }: Props) {
             label: (
               <>
                 {shelfWords[value]}
-                <span className="font-mono">{value === "all" ? entries.length : entries.filter((entry) => entry.origin === value).length}</span>
+                <span className="font-mono">
+                  {value === "all" ? entries.length : entries.filter((entry) => entry.origin === value).length}
+                </span>
               </>
             ),
           }))}
@@ -92,7 +100,12 @@ export function LibraryView({ entries, editBlockedBy, shown, refusal }: Props) {
             <tbody>
               {found.map((entry) => (
                 <Fragment key={entry.id}>
-                  <tr className={cx("hover:bg-bench", openId === entry.id && "bg-copper-wash shadow-[inset_3px_0_0_var(--copper)]")}>
+                  <tr
+                    className={cx(
+                      "hover:bg-bench",
+                      openId === entry.id && "bg-copper-wash shadow-[inset_3px_0_0_var(--copper)]",
+                    )}
+                  >
                     <Td className="pl-0">
                       <button
                         type="button"
@@ -112,7 +125,9 @@ export function LibraryView({ entries, editBlockedBy, shown, refusal }: Props) {
                       {entry.nodeCount === undefined ? "" : formatCount(entry.nodeCount)}
                     </Td>
                     <Td>
-                      <Tag tone={entry.origin === "published" ? "plain" : "ink"}>{shelfWords[entry.origin].toLowerCase()}</Tag>
+                      <Tag tone={entry.origin === "published" ? "plain" : "ink"}>
+                        {shelfWords[entry.origin].toLowerCase()}
+                      </Tag>
                     </Td>
                   </tr>
                   {openId === entry.id ? (
@@ -132,7 +147,15 @@ export function LibraryView({ entries, editBlockedBy, shown, refusal }: Props) {
   );
 }
 
-function EntryDetail({ entry, entries, editBlockedBy }: { entry: LibraryChoice; entries: readonly LibraryChoice[]; editBlockedBy: string | undefined }) {
+function EntryDetail({
+  entry,
+  entries,
+  editBlockedBy,
+}: {
+  entry: LibraryChoice;
+  entries: readonly LibraryChoice[];
+  editBlockedBy: string | undefined;
+}) {
   const rows = listRequired(entries, [entry.modelUri]).filter((row) => row.modelUri !== entry.modelUri);
   const users = entries.filter((other) => other.required.some((required) => required.modelUri === entry.modelUri));
   return (
@@ -152,13 +175,24 @@ function EntryDetail({ entry, entries, editBlockedBy }: { entry: LibraryChoice; 
       </section>
       <section>
         <h3 className="mb-1.5 text-note font-medium text-ink-3">Asked for by</h3>
-        <p>{users.length === 0 ? <span className="text-ink-2">nobody</span> : [...new Set(users.map((user) => user.title))].join(", ")}</p>
+        <p>
+          {users.length === 0 ? (
+            <span className="text-ink-2">nobody</span>
+          ) : (
+            [...new Set(users.map((user) => user.title))].join(", ")
+          )}
+        </p>
         <h3 className="mt-3 mb-1 text-note font-medium text-ink-3">File</h3>
         <p className="font-mono break-all text-ink-2">{entry.fileName || "working state of the team’s model"}</p>
         {entry.by ? <p className="mt-1 text-ink-2">by {entry.by}</p> : null}
       </section>
       <section className="justify-self-end">
-        {entry.origin === "added" ? <RemoveEntry entry={entry} blockedBy={editBlockedBy ?? (users.length > 0 ? "others require it" : undefined)} /> : null}
+        {entry.origin === "added" ? (
+          <RemoveEntry
+            entry={entry}
+            blockedBy={editBlockedBy ?? (users.length > 0 ? "others require it" : undefined)}
+          />
+        ) : null}
         {entry.origin === "team" ? <LinkButton to={`/models/${entry.id}/sheet`}>Open the model</LinkButton> : null}
       </section>
     </div>
@@ -166,7 +200,8 @@ function EntryDetail({ entry, entries, editBlockedBy }: { entry: LibraryChoice; 
 }
 
 function RemoveEntry({ entry, blockedBy }: { entry: LibraryChoice; blockedBy: string | undefined }) {
-  if (blockedBy !== undefined) return <IconButton icon={Trash2} label="Take out of the library" blockedBy={blockedBy} />;
+  if (blockedBy !== undefined)
+    return <IconButton icon={Trash2} label="Take out of the library" blockedBy={blockedBy} />;
   return (
     <Dialog
       title="Take it out of the library?"

@@ -8,9 +8,19 @@ import { FindingShape } from "~/components/notation/finding-badge";
 import type { LibraryChoice } from "~/services/list-library-choices.server";
 import { baseModelUri, listRequired, searchChoices } from "./required-closure";
 
-type Props = { choices: readonly LibraryChoice[]; chosen: readonly string[]; onChange: (chosen: readonly string[]) => void; name?: string; disabled?: boolean };
+type Props = {
+  choices: readonly LibraryChoice[];
+  chosen: readonly string[];
+  onChange: (chosen: readonly string[]) => void;
+  name?: string;
+  disabled?: boolean;
+};
 
-const originWords: Record<LibraryChoice["origin"], string> = { published: "published", added: "added by the team", team: "a model of the team" };
+const originWords: Record<LibraryChoice["origin"], string> = {
+  published: "published",
+  added: "added by the team",
+  team: "a model of the team",
+};
 
 /** Required models: found by search, with everything that comes along listed below. */
 export function RequiredModelsField({ choices, chosen, onChange, name = "required", disabled = false }: Props) {
@@ -26,35 +36,35 @@ export function RequiredModelsField({ choices, chosen, onChange, name = "require
         <input key={uri} type="hidden" name={name} value={uri} />
       ))}
       {disabled ? null : (
-       <Combobox
-         label="Add a required model"
-         placeholder="Search the library: Machinery, Devices, IO-Link …"
-         query={query}
-         onQuery={setQuery}
-         items={found}
-         itemKey={(choice) => `${choice.modelUri} ${choice.version ?? ""}`}
-         onPick={(choice) => {
-           onChange([...chosen, choice.modelUri]);
-           setQuery("");
-         }}
-         head={
-           <>
-             <span className="font-mono">
-               {found.length} of {open.length}
-             </span>
-             <span>models of the library</span>
-           </>
-         }
-         none="No model of the library has these words"
-         renderItem={(choice) => (
-           <span className="grid grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-3">
-             <b className="font-semibold">{choice.title}</b>
-             <span className="font-mono text-note text-ink-2">{choice.version}</span>
-             <span className="truncate font-mono text-note text-ink-3">{choice.modelUri}</span>
-             <span className="text-note text-ink-3">{originWords[choice.origin]}</span>
-           </span>
-         )}
-       />
+        <Combobox
+          label="Add a required model"
+          placeholder="Search the library: Machinery, Devices, IO-Link …"
+          query={query}
+          onQuery={setQuery}
+          items={found}
+          itemKey={(choice) => `${choice.modelUri} ${choice.version ?? ""}`}
+          onPick={(choice) => {
+            onChange([...chosen, choice.modelUri]);
+            setQuery("");
+          }}
+          head={
+            <>
+              <span className="font-mono">
+                {found.length} of {open.length}
+              </span>
+              <span>models of the library</span>
+            </>
+          }
+          none="No model of the library has these words"
+          renderItem={(choice) => (
+            <span className="grid grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-3">
+              <b className="font-semibold">{choice.title}</b>
+              <span className="font-mono text-note text-ink-2">{choice.version}</span>
+              <span className="truncate font-mono text-note text-ink-3">{choice.modelUri}</span>
+              <span className="text-note text-ink-3">{originWords[choice.origin]}</span>
+            </span>
+          )}
+        />
       )}
       <Table caption="Models that this model stands on">
         <thead>
@@ -80,7 +90,11 @@ export function RequiredModelsField({ choices, chosen, onChange, name = "require
               <Td mono>{row.choice?.version}</Td>
               <Td className="text-ink-2">
                 {chosen.includes(row.modelUri) ? <Tag tone="ink">chosen</Tag> : null}
-                {row.modelUri === baseModelUri ? "every model does" : row.askedBy.length > 0 ? `${row.askedBy.map(titleOf).join(", ")} ${row.askedBy.length === 1 ? "needs" : "need"} it` : null}
+                {row.modelUri === baseModelUri
+                  ? "every model does"
+                  : row.askedBy.length > 0
+                    ? `${row.askedBy.map(titleOf).join(", ")} ${row.askedBy.length === 1 ? "needs" : "need"} it`
+                    : null}
               </Td>
               <Td right>
                 {chosen.includes(row.modelUri) && !disabled ? (

@@ -16,7 +16,11 @@ import type { LibraryChoice } from "~/services/list-library-choices.server";
 import type { AboutModelForm } from "~/utils/model-forms";
 
 type Intent = AboutModelForm["intent"];
-type Answer = { readonly intent: Intent | undefined; readonly submission: SubmissionResult<string[]> | null; readonly refusal: string | undefined };
+type Answer = {
+  readonly intent: Intent | undefined;
+  readonly submission: SubmissionResult<string[]> | null;
+  readonly refusal: string | undefined;
+};
 
 type Props = {
   workspace: ModelWorkspace;
@@ -29,7 +33,8 @@ type Props = {
 export function AboutModel({ workspace, required, choices, answer, editBlockedBy }: Props) {
   const { model } = workspace;
   const refusalOf = (intent: Intent) => (answer?.intent === intent ? answer.refusal : undefined);
-  const errorsOf = (intent: Intent, field: string) => (answer?.intent === intent ? (answer.submission?.error?.[field] ?? undefined) : undefined);
+  const errorsOf = (intent: Intent, field: string) =>
+    answer?.intent === intent ? (answer.submission?.error?.[field] ?? undefined) : undefined;
   return (
     <Page title="About this model" about={model.kind === "types" ? "a model of types" : "a model of machines"}>
       <div className="grid grid-cols-[minmax(0,1fr)_400px] gap-10 max-lg:grid-cols-1">
@@ -41,28 +46,58 @@ export function AboutModel({ workspace, required, choices, answer, editBlockedBy
                 {problem.message}
               </Notice>
             ))}
-            <RequiredForm key={required.join(" ")} required={required} choices={choices} refusal={refusalOf("set-required")} editBlockedBy={editBlockedBy} />
+            <RequiredForm
+              key={required.join(" ")}
+              required={required}
+              choices={choices}
+              refusal={refusalOf("set-required")}
+              editBlockedBy={editBlockedBy}
+            />
           </Block>
         </div>
         <div className="grid content-start gap-5">
-          <FieldForm intent="rename" name="name" label="Name" hint="For the team’s screens. The namespace stays what it is." value={model.name} errors={errorsOf("rename", "name")} action="Rename" editBlockedBy={editBlockedBy} first />
+          <FieldForm
+            intent="rename"
+            name="name"
+            label="Name"
+            hint="For the team’s screens. The namespace stays what it is."
+            value={model.name}
+            errors={errorsOf("rename", "name")}
+            action="Rename"
+            editBlockedBy={editBlockedBy}
+            first
+          />
           <FieldForm
             intent="set-version"
             name="version"
             label="Version"
             hint="Written into the header and into the namespace’s metadata, with the date of today."
             value={model.version ?? ""}
-            errors={errorsOf("set-version", "version") ?? (refusalOf("set-version") ? [refusalOf("set-version") ?? ""] : undefined)}
+            errors={
+              errorsOf("set-version", "version") ??
+              (refusalOf("set-version") ? [refusalOf("set-version") ?? ""] : undefined)
+            }
             action="Set version"
             editBlockedBy={editBlockedBy}
             mono
           />
-          <Part title="Export" about="The NodeSet2 file, valid against the standard’s schema; the same model gives the same bytes.">
-            <a href={`/models/${model.id}/nodeset`} download className={buttonClass("plain", "medium", "justify-self-start")}>
+          <Part
+            title="Export"
+            about="The NodeSet2 file, valid against the standard’s schema; the same model gives the same bytes."
+          >
+            <a
+              href={`/models/${model.id}/nodeset`}
+              download
+              className={buttonClass("plain", "medium", "justify-self-start")}
+            >
               <Icon of={Download} /> Download NodeSet2
             </a>
           </Part>
-          <Part id="delete" title="Delete" about="With its history and sheets, for good. Its NodeIds are never given again.">
+          <Part
+            id="delete"
+            title="Delete"
+            about="With its history and sheets, for good. Its NodeIds are never given again."
+          >
             {refusalOf("delete") ? <Notice tone="error" title={refusalOf("delete")} live /> : null}
             <DeleteModel model={model} editBlockedBy={editBlockedBy} />
           </Part>
@@ -80,7 +115,9 @@ function Facts({ model }: { model: ModelWorkspace["model"] }) {
           <span className="font-mono">{model.namespaceUri}</span>
         </Fact>
         <Fact label="Version">
-          <span className="font-mono">{[model.version, model.publicationDate?.slice(0, 10)].filter(Boolean).join(" · ") || "not given"}</span>
+          <span className="font-mono">
+            {[model.version, model.publicationDate?.slice(0, 10)].filter(Boolean).join(" · ") || "not given"}
+          </span>
         </Fact>
         <Fact label="Came here">
           <LocalTime iso={model.createdAt} />
@@ -129,9 +166,20 @@ function RequiredForm({ required, choices, refusal, editBlockedBy }: RequiredFor
     <Form method="post" className="grid gap-3">
       <input type="hidden" name="intent" value="set-required" />
       {refusal ? <Notice tone="error" title={refusal} live /> : null}
-      <RequiredModelsField choices={choices} chosen={chosen} onChange={setChosen} disabled={editBlockedBy !== undefined} />
+      <RequiredModelsField
+        choices={choices}
+        chosen={chosen}
+        onChange={setChosen}
+        disabled={editBlockedBy !== undefined}
+      />
       {editBlockedBy === undefined ? (
-        <Button type="submit" tone="ink" busy={isSending} blockedBy={isSame ? "nothing was changed" : undefined} className="justify-self-start">
+        <Button
+          type="submit"
+          tone="ink"
+          busy={isSending}
+          blockedBy={isSame ? "nothing was changed" : undefined}
+          className="justify-self-start"
+        >
           Save required models
         </Button>
       ) : null}
@@ -155,10 +203,24 @@ type FieldFormProps = {
 function FieldForm({ intent, name, label, hint, value, errors, action, editBlockedBy, mono, first }: FieldFormProps) {
   const isSending = useIsSending(intent);
   return (
-    <Form method="post" key={value} className={first ? "grid gap-2 border-t-[1.5px] border-ink pt-3" : "grid gap-2 border-t border-rule pt-3"}>
+    <Form
+      method="post"
+      key={value}
+      className={first ? "grid gap-2 border-t-[1.5px] border-ink pt-3" : "grid gap-2 border-t border-rule pt-3"}
+    >
       <input type="hidden" name="intent" value={intent} />
       <Field label={label} hint={hint} errors={errors}>
-        {(tied) => <Input {...tied} name={name} defaultValue={value} maxLength={100} required readOnly={editBlockedBy !== undefined} {...(mono ? { mono } : {})} />}
+        {(tied) => (
+          <Input
+            {...tied}
+            name={name}
+            defaultValue={value}
+            maxLength={100}
+            required
+            readOnly={editBlockedBy !== undefined}
+            {...(mono ? { mono } : {})}
+          />
+        )}
       </Field>
       {editBlockedBy === undefined ? (
         <Button type="submit" busy={isSending} className="justify-self-start">
@@ -177,7 +239,11 @@ function DeleteModel({ model, editBlockedBy }: { model: ModelWorkspace["model"];
   );
   if (editBlockedBy !== undefined) return button(editBlockedBy);
   return (
-    <Dialog title={`Delete ${model.name}?`} about="The model, its history and its sheets are removed for good. Download the NodeSet2 file first if you may need it." trigger={button()}>
+    <Dialog
+      title={`Delete ${model.name}?`}
+      about="The model, its history and its sheets are removed for good. Download the NodeSet2 file first if you may need it."
+      trigger={button()}
+    >
       <Form method="post" className="flex justify-end gap-2">
         <input type="hidden" name="intent" value="delete" />
         <DialogClose asChild>

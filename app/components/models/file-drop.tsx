@@ -3,7 +3,14 @@ import { useRef, useState, type DragEvent } from "react";
 import { Icon } from "~/components/ui/icon";
 import { cx } from "~/components/ui/cx";
 
-type Props = { name: string; accept: string; label: string; hint: string; onChosen: (file: File) => void; disabled?: boolean };
+type Props = {
+  name: string;
+  accept: string;
+  label: string;
+  hint: string;
+  onChosen: (file: File) => void;
+  disabled?: boolean;
+};
 
 /** A place to drop a file on, which is also a plain file field. */
 export function FileDrop({ name, accept, label, hint, onChosen, disabled }: Props) {
@@ -37,7 +44,16 @@ export function FileDrop({ name, accept, label, hint, onChosen, disabled }: Prop
       <Icon of={FileUp} size={28} className="text-ink-3" />
       <span className="text-body font-semibold">{chosen ?? label}</span>
       <span className="text-small text-ink-2">{hint}</span>
-      <input ref={input} type="file" name={name} accept={accept} disabled={disabled} required className="sr-only" onChange={(event) => take(event.currentTarget.files)} />
+      <input
+        ref={input}
+        type="file"
+        name={name}
+        accept={accept}
+        disabled={disabled}
+        required
+        className="sr-only"
+        onChange={(event) => take(event.currentTarget.files)}
+      />
     </label>
   );
 }

@@ -26,8 +26,8 @@ export function ImportPreviewView({ preview, target }: Props) {
       <div className="grid content-start gap-6">
         <Block title={preview.fileName} about={`${formatCount(preview.bytes)} bytes`}>
           <p className="mb-3 text-small text-ink-2">
-            A NodeSet2 file with {preview.models.length === 1 ? "one model" : `${preview.models.length} models`}, {formatCount(preview.counts.nodes)} nodes and{" "}
-            {formatCount(preview.counts.references)} references.
+            A NodeSet2 file with {preview.models.length === 1 ? "one model" : `${preview.models.length} models`},{" "}
+            {formatCount(preview.counts.nodes)} nodes and {formatCount(preview.counts.references)} references.
           </p>
           <Models preview={preview} />
         </Block>
@@ -80,11 +80,14 @@ function describeRequirement({ state, publicationDate, found }: Requirement): { 
   if (state === "missing") return { status: "bad", words: "missing" };
   if (state === "present") return { status: "good", words: "present" };
   const isNewer = (found?.publicationDate ?? "") >= (publicationDate ?? "");
-  return isNewer ? { status: "good", words: "a newer one is present" } : { status: "uncertain", words: "only an older one is present" };
+  return isNewer
+    ? { status: "good", words: "a newer one is present" }
+    : { status: "uncertain", words: "only an older one is present" };
 }
 
 function RequiredModels({ required }: { required: ImportPreview["required"] }) {
-  if (required.length === 0) return <p className="border-t border-ink pt-2 text-small text-ink-2">The file names none.</p>;
+  if (required.length === 0)
+    return <p className="border-t border-ink pt-2 text-small text-ink-2">The file names none.</p>;
   return (
     <Table caption="Required models">
       <thead>
@@ -102,7 +105,11 @@ function RequiredModels({ required }: { required: ImportPreview["required"] }) {
             <Td>
               <StatusBadge status={describeRequirement(row).status}>
                 {describeRequirement(row).words}
-                {row.found && row.state === "other-version" ? <span className="font-mono">{[row.found.version, row.found.publicationDate?.slice(0, 10)].filter(Boolean).join(" · ")}</span> : null}
+                {row.found && row.state === "other-version" ? (
+                  <span className="font-mono">
+                    {[row.found.version, row.found.publicationDate?.slice(0, 10)].filter(Boolean).join(" · ")}
+                  </span>
+                ) : null}
               </StatusBadge>
             </Td>
           </tr>
@@ -153,7 +160,9 @@ function ImportForm({ preview, target, modelUri }: { preview: ImportPreview; tar
       </p>
       {into === "model" ? (
         <>
-          <Field label="Name">{(tied) => <Input {...tied} name="name" defaultValue={preview.suggestedName} maxLength={100} required />}</Field>
+          <Field label="Name">
+            {(tied) => <Input {...tied} name="name" defaultValue={preview.suggestedName} maxLength={100} required />}
+          </Field>
           <div className="grid gap-1">
             <span className="text-note font-medium text-ink-2">Kind</span>
             <Segments
@@ -174,7 +183,11 @@ function ImportForm({ preview, target, modelUri }: { preview: ImportPreview; tar
         <span className="font-mono text-small break-all">{modelUri}</span>
       </div>
       {against.length > 0 ? (
-        <Notice tone="error" glyph={<FindingShape severity="error" />} title={into === "model" ? "It cannot become a model" : "It cannot become part of the library"}>
+        <Notice
+          tone="error"
+          glyph={<FindingShape severity="error" />}
+          title={into === "model" ? "It cannot become a model" : "It cannot become part of the library"}
+        >
           <ul className="grid gap-1">
             {against.map((problem) => (
               <li key={problem.message}>
@@ -191,7 +204,14 @@ function ImportForm({ preview, target, modelUri }: { preview: ImportPreview; tar
         </Notice>
       ) : null}
       <p className="flex flex-wrap gap-2">
-        <Button type="submit" tone="main" busy={busy} blockedBy={against.length > 0 ? "see the problems above" : undefined} name="intent" value="import">
+        <Button
+          type="submit"
+          tone="main"
+          busy={busy}
+          blockedBy={against.length > 0 ? "see the problems above" : undefined}
+          name="intent"
+          value="import"
+        >
           {into === "model" ? "Import as model" : "Add to library"}
         </Button>
         <LinkButton to={`/models/import?into=${into}`} reloadDocument>

@@ -1,7 +1,16 @@
 /** One type with its shadow, or its instances in a row. */
 export function KindSketch({ kind, width = 56 }: { kind: "types" | "machines"; width?: number }) {
   return (
-    <svg viewBox="0 0 56 40" width={width} height={(width * 40) / 56} fill="var(--leaf)" stroke="var(--ink)" strokeWidth={1.4} aria-hidden className="shrink-0">
+    <svg
+      viewBox="0 0 56 40"
+      width={width}
+      height={(width * 40) / 56}
+      fill="var(--leaf)"
+      stroke="var(--ink)"
+      strokeWidth={1.4}
+      aria-hidden
+      className="shrink-0"
+    >
       {kind === "types" ? (
         <>
           <path d="M12 36.500h40V10" fill="none" stroke="var(--shade)" strokeWidth="5" />

@@ -18,19 +18,36 @@ type Props = {
 
 export function ModelBar({ model, tabs, mayEdit, tools, testServer }: Props) {
   return (
-    <div className="flex h-(--bar-2) shrink-0 items-stretch gap-4 border-b border-rule bg-paper px-5">
+    <section
+      aria-label={`Bar of ${model.name}`}
+      className="flex h-(--bar-2) shrink-0 items-stretch gap-4 border-b border-rule bg-paper px-5"
+    >
       <Menu
         label={`Model ${model.name}`}
         trigger={
-          <button type="button" className="flex min-w-0 items-center gap-1.5 self-center text-lead font-semibold tracking-[-0.01em] hover:text-copper">
+          <button
+            type="button"
+            className="flex min-w-0 items-center gap-1.5 self-center text-lead font-semibold tracking-[-0.01em] hover:text-copper"
+          >
             <span className="truncate">{model.name}</span>
             <Icon of={ChevronDown} className="shrink-0 text-ink-3" />
           </button>
         }
         entries={[
           { kind: "link", label: "About this model", icon: Info, to: `/models/${model.id}/about` },
-          { kind: "link", label: "Download NodeSet2", icon: Download, to: `/models/${model.id}/nodeset`, download: true },
-          ...(mayEdit ? ([{ kind: "rule" }, { kind: "link", label: "Delete …", icon: Trash2, to: `/models/${model.id}/about#delete` }] as const) : []),
+          {
+            kind: "link",
+            label: "Download NodeSet2",
+            icon: Download,
+            to: `/models/${model.id}/nodeset`,
+            download: true,
+          },
+          ...(mayEdit
+            ? ([
+                { kind: "rule" },
+                { kind: "link", label: "Delete …", icon: Trash2, to: `/models/${model.id}/about#delete` },
+              ] as const)
+            : []),
         ]}
       />
       <LinkTabs label={`Screens of ${model.name}`} tabs={tabs} />
@@ -45,7 +62,7 @@ export function ModelBar({ model, tabs, mayEdit, tools, testServer }: Props) {
           <Icon of={Download} /> Export
         </a>
       </div>
-    </div>
+    </section>
   );
 }
 

@@ -7,5 +7,12 @@ export function ModelFoot() {
   const { workspace, findings, isReady } = useOpenModel();
   const { space, seq } = useEditorState();
   const found = useSyncExternalStore(findings.subscribe, findings.getState, findings.getState);
-  return <ModelTitleBlock workspace={workspace} seq={seq} nodeCount={isReady ? space.own.nodes.size : workspace.model.nodeCount} tally={found.isKnown ? found.tally : undefined} />;
+  return (
+    <ModelTitleBlock
+      workspace={workspace}
+      seq={seq}
+      nodeCount={isReady ? space.own.nodes.size : workspace.model.nodeCount}
+      tally={found.isKnown ? found.tally : undefined}
+    />
+  );
 }

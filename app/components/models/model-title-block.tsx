@@ -12,7 +12,11 @@ export type ModelTitleFacts = {
   readonly tally: FindingTally | undefined;
 };
 
-const toShortName = (uri: string) => uri.split(/[/:#]+/).filter(Boolean).at(-1) ?? uri;
+const toShortName = (uri: string) =>
+  uri
+    .split(/[/:#]+/)
+    .filter(Boolean)
+    .at(-1) ?? uri;
 
 /** The cells of the title block of a model, for the foot of its pages and for the corner of its sheet. */
 export function listTitleCells({ workspace, seq, nodeCount, tally }: ModelTitleFacts): TitleCell[] {
@@ -22,7 +26,10 @@ export function listTitleCells({ workspace, seq, nodeCount, tally }: ModelTitleF
     { label: "Model", value: model.name, strong: true },
     { label: "Namespace", value: model.namespaceUri, mono: true },
     { label: "Version", value: model.version ?? "none", mono: true },
-    { label: "State", value: seq === 0 ? "as it came here" : `${formatCount(seq)} ${seq === 1 ? "edit" : "edits"} since it came here` },
+    {
+      label: "State",
+      value: seq === 0 ? "as it came here" : `${formatCount(seq)} ${seq === 1 ? "edit" : "edits"} since it came here`,
+    },
     { label: "Nodes", value: formatCount(nodeCount), mono: true },
     {
       label: "Drawn",
@@ -35,7 +42,12 @@ export function listTitleCells({ workspace, seq, nodeCount, tally }: ModelTitleF
     { label: "Findings", value: tally ? <FindingTallyBadge tally={tally} showNone /> : "not checked yet" },
     {
       label: "Stands on",
-      value: missing > 0 ? `${missing} required missing` : layers.map((layer) => (layer.modelUri.endsWith("opcfoundation.org/UA/") ? "UA" : toShortName(layer.modelUri))).join(" · "),
+      value:
+        missing > 0
+          ? `${missing} required missing`
+          : layers
+              .map((layer) => (layer.modelUri.endsWith("opcfoundation.org/UA/") ? "UA" : toShortName(layer.modelUri)))
+              .join(" · "),
       mono: missing === 0,
     },
   ];

@@ -78,7 +78,13 @@ export function ModelsTable({ models }: { models: readonly ModelSummary[] }) {
                     { kind: "link", label: "Findings", to: `/models/${model.id}/findings` },
                     { kind: "link", label: "Test server", to: `/models/${model.id}/test-server` },
                     { kind: "rule" },
-                    { kind: "link", label: "Download NodeSet2", icon: Download, to: `/models/${model.id}/nodeset`, download: true },
+                    {
+                      kind: "link",
+                      label: "Download NodeSet2",
+                      icon: Download,
+                      to: `/models/${model.id}/nodeset`,
+                      download: true,
+                    },
                     { kind: "link", label: "Rename, version, delete", to: `/models/${model.id}/about` },
                   ]}
                 />
@@ -93,5 +99,10 @@ export function ModelsTable({ models }: { models: readonly ModelSummary[] }) {
 
 /** The last part of a model URI: `http://opcfoundation.org/UA/DI/` → `DI`. */
 function toShortName(modelUri: string): string {
-  return modelUri.split(/[/:#]+/).filter(Boolean).at(-1) ?? modelUri;
+  return (
+    modelUri
+      .split(/[/:#]+/)
+      .filter(Boolean)
+      .at(-1) ?? modelUri
+  );
 }

@@ -37,7 +37,14 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
     shouldValidate: "onBlur",
     shouldRevalidate: "onInput",
   });
-  const namespaceBase = useMemo(() => findNamespaceBase(taken.map((model) => model.namespaceUri), organizationName), [taken, organizationName]);
+  const namespaceBase = useMemo(
+    () =>
+      findNamespaceBase(
+        taken.map((model) => model.namespaceUri),
+        organizationName,
+      ),
+    [taken, organizationName],
+  );
   const proposed = uri ?? proposeNamespaceUri(namespaceBase, name);
   const twin = taken.find((model) => model.namespaceUri === proposed);
   const uriErrors = twin ? [`The model “${twin.name}” has this namespace already`] : fields.namespaceUri.errors;
@@ -47,8 +54,20 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
       <fieldset>
         <legend className="mb-1 text-note font-medium text-ink-2">Kind</legend>
         <div className="grid grid-cols-2 gap-3 max-sm:grid-cols-1">
-          <KindChoice kind="types" chosen={kind} onChoose={setKind} title="Types" about="What a kind of machine exposes: object types, variables with unit and range, enumerations, methods." />
-          <KindChoice kind="machines" chosen={kind} onChoose={setKind} title="Machines" about="The machines themselves: instances of types of another model, with their identification." />
+          <KindChoice
+            kind="types"
+            chosen={kind}
+            onChoose={setKind}
+            title="Types"
+            about="What a kind of machine exposes: object types, variables with unit and range, enumerations, methods."
+          />
+          <KindChoice
+            kind="machines"
+            chosen={kind}
+            onChoose={setKind}
+            title="Machines"
+            about="The machines themselves: instances of types of another model, with their identification."
+          />
         </div>
       </fieldset>
       <div className="grid grid-cols-[1fr_140px] gap-3">
@@ -90,7 +109,13 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
         <RequiredModelsField choices={choices} chosen={required} onChange={setRequired} name={fields.required.name} />
       </div>
       <p className="flex gap-2">
-        <Button type="submit" tone="main" size="large" busy={busy} blockedBy={twin ? "the namespace is taken" : undefined}>
+        <Button
+          type="submit"
+          tone="main"
+          size="large"
+          busy={busy}
+          blockedBy={twin ? "the namespace is taken" : undefined}
+        >
           Create model
         </Button>
         <LinkButton to="/models" size="large" tone="bare">
@@ -106,7 +131,12 @@ type KindChoiceProps = { kind: Kind; chosen: Kind; onChoose: (kind: Kind) => voi
 function KindChoice({ kind, chosen, onChoose, title, about }: KindChoiceProps) {
   const on = kind === chosen;
   return (
-    <label className={cx("grid cursor-pointer grid-cols-[auto_1fr] gap-x-3 border p-3 has-focus-visible:outline-2 has-focus-visible:outline-copper", on ? "border-copper bg-copper-wash" : "border-rule bg-leaf hover:border-edge")}>
+    <label
+      className={cx(
+        "grid cursor-pointer grid-cols-[auto_1fr] gap-x-3 border p-3 has-focus-visible:outline-2 has-focus-visible:outline-copper",
+        on ? "border-copper bg-copper-wash" : "border-rule bg-leaf hover:border-edge",
+      )}
+    >
       <input type="radio" name="kind" value={kind} checked={on} onChange={() => onChoose(kind)} className="sr-only" />
       <KindSketch kind={kind} />
       <span>

@@ -17,7 +17,9 @@ export function proposeNamespaceUri(base: string, name: string): string {
 
 /** The part that the team's namespaces share up to the last slash; a domain to be replaced when there are none. */
 export function findNamespaceBase(namespaceUris: readonly string[], organizationName: string): string {
-  const parents = namespaceUris.map((uri) => uri.replace(/[^/]*\/?$/, "")).filter((parent) => /^https?:\/\/[^/]+\//.test(parent));
+  const parents = namespaceUris
+    .map((uri) => uri.replace(/[^/]*\/?$/, ""))
+    .filter((parent) => /^https?:\/\/[^/]+\//.test(parent));
   const counts = new Map<string, number>();
   for (const parent of parents) counts.set(parent, (counts.get(parent) ?? 0) + 1);
   const [best] = [...counts].sort((a, b) => b[1] - a[1]);

@@ -10,7 +10,15 @@ const nouns: Record<Severity, readonly [one: string, many: string]> = {
 /** Error: filled octagon with a cross; warning: open triangle; hint: open circle with an i. */
 export function FindingShape({ severity, size = 13 }: { severity: Severity; size?: number }) {
   return (
-    <svg viewBox="0 0 16 16" width={size} height={size} className={`shrink-0 ${colours[severity]}`} fill="none" stroke="currentColor" aria-hidden>
+    <svg
+      viewBox="0 0 16 16"
+      width={size}
+      height={size}
+      className={`shrink-0 ${colours[severity]}`}
+      fill="none"
+      stroke="currentColor"
+      aria-hidden
+    >
       {severity === "error" ? (
         <>
           <path d="M5 1.5h6L14.5 5v6L11 14.5H5L1.5 11V5z" fill="currentColor" stroke="none" />

@@ -41,12 +41,20 @@ const filled = (d: string, stroke: string) => <path d={d} fill={stroke} stroke={
 
 const shapes: Record<LineEnd, MarkerShape> = {
   component: { width: 18, refX: 18, draw: (s) => <path d="M8 2v10" stroke={s} strokeWidth={1.5} fill="none" /> },
-  property: { width: 18, refX: 18, draw: (s) => <path d="M5.5 2v10M10.5 2v10" stroke={s} strokeWidth={1.5} fill="none" /> },
+  property: {
+    width: 18,
+    refX: 18,
+    draw: (s) => <path d="M5.5 2v10M10.5 2v10" stroke={s} strokeWidth={1.5} fill="none" />,
+  },
   "type-definition": { width: 24, refX: 23.5, draw: (s) => filled(closedTwice, s) },
   subtype: { width: 24, refX: 23.5, draw: (s) => hollow(closedTwice, s) },
   interface: { width: 14, refX: 12.5, draw: (s) => hollow(closed, s) },
   "event-source": { width: 14, refX: 12.5, draw: (s) => hollow(closed, s) },
-  hierarchical: { width: 14, refX: 12.5, draw: (s) => <path d="M2 2 12.5 7 2 12" stroke={s} strokeWidth={1.4} fill="none" /> },
+  hierarchical: {
+    width: 14,
+    refX: 12.5,
+    draw: (s) => <path d="M2 2 12.5 7 2 12" stroke={s} strokeWidth={1.4} fill="none" />,
+  },
   other: { width: 14, refX: 12.5, draw: (s) => filled(closed, s) },
   symmetric: { width: 14, refX: 12.5, draw: (s) => filled(closed, s) },
 };
@@ -92,9 +100,16 @@ export function LineEndSample({ end, width = 52 }: { end: LineEnd; width?: numbe
   const shape = shapes[end];
   return (
     <svg width={width} height={14} viewBox={`0 0 ${width} 14`} className="shrink-0" aria-hidden>
-      <path d={`M0 7H${width - 1}`} stroke="var(--ink)" strokeWidth={1.25} {...(isDashedLine(end) ? { strokeDasharray: "4 3" } : {})} />
+      <path
+        d={`M0 7H${width - 1}`}
+        stroke="var(--ink)"
+        strokeWidth={1.25}
+        {...(isDashedLine(end) ? { strokeDasharray: "4 3" } : {})}
+      />
       <g transform={`translate(${width - 1 - shape.refX} 0)`}>{shape.draw("var(--ink)")}</g>
-      {end === "symmetric" ? <g transform={`translate(${shape.refX} 14) rotate(180)`}>{shape.draw("var(--ink)")}</g> : null}
+      {end === "symmetric" ? (
+        <g transform={`translate(${shape.refX} 14) rotate(180)`}>{shape.draw("var(--ink)")}</g>
+      ) : null}
     </svg>
   );
 }

@@ -67,7 +67,12 @@ function Shape({ kind }: { kind: GlyphKind }) {
   }
 }
 
-type Props = { kind: GlyphKind; width?: number; className?: string; /** Read out; leave it away where the class is said in words. */ label?: boolean };
+type Props = {
+  kind: GlyphKind;
+  width?: number;
+  className?: string;
+  /** Read out; leave it away where the class is said in words. */ label?: boolean;
+};
 
 export function NodeClassGlyph({ kind, width = 20, className, label }: Props) {
   return (

@@ -3,12 +3,25 @@ import type { ReactNode } from "react";
 /** What a value, a connection or a process is like now. `stale`: the stream stopped, or it is not connected. */
 export type Status = "good" | "uncertain" | "bad" | "stale";
 
-const colours: Record<Status, string> = { good: "text-good", uncertain: "text-uncertain", bad: "text-bad", stale: "text-stale" };
+const colours: Record<Status, string> = {
+  good: "text-good",
+  uncertain: "text-uncertain",
+  bad: "text-bad",
+  stale: "text-stale",
+};
 
 /** Full disc, half disc, open disc struck through, dashed disc. */
 export function StatusShape({ status, size = 11 }: { status: Status; size?: number }) {
   return (
-    <svg viewBox="0 0 16 16" width={size} height={size} className={`shrink-0 ${colours[status]}`} fill="none" stroke="currentColor" aria-hidden>
+    <svg
+      viewBox="0 0 16 16"
+      width={size}
+      height={size}
+      className={`shrink-0 ${colours[status]}`}
+      fill="none"
+      stroke="currentColor"
+      aria-hidden
+    >
       {status === "good" ? <circle cx="8" cy="8" r="6.5" fill="currentColor" stroke="none" /> : null}
       {status === "uncertain" ? (
         <>
@@ -27,9 +40,19 @@ export function StatusShape({ status, size = 11 }: { status: Status; size?: numb
   );
 }
 
-export function StatusBadge({ status, children, quiet }: { status: Status; children: ReactNode; /** The word in ink, only the shape coloured. */ quiet?: boolean }) {
+export function StatusBadge({
+  status,
+  children,
+  quiet,
+}: {
+  status: Status;
+  children: ReactNode;
+  /** The word in ink, only the shape coloured. */ quiet?: boolean;
+}) {
   return (
-    <span className={`inline-flex items-center gap-[5px] align-middle text-small whitespace-nowrap ${quiet ? "text-ink-2" : colours[status]}`}>
+    <span
+      className={`inline-flex items-center gap-[5px] align-middle text-small whitespace-nowrap ${quiet ? "text-ink-2" : colours[status]}`}
+    >
       <StatusShape status={status} />
       {children}
     </span>

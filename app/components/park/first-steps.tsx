@@ -22,7 +22,9 @@ function toSteps({ models, testServers }: ParkData): Step[] {
     },
     {
       title: "Start a test server",
-      about: running ? `${running.modelName} is served at ${running.endpointUrl ?? "its endpoint"}.` : `Serves ${served?.name ?? "the model"} on this host, with simulated values.`,
+      about: running
+        ? `${running.modelName} is served at ${running.endpointUrl ?? "its endpoint"}.`
+        : `Serves ${served?.name ?? "the model"} on this host, with simulated values.`,
       to: running ? "/live" : served ? `/models/${served.id}/test-server` : undefined,
       action: running ? "Look at it" : "Start",
       isDone: running !== undefined,
@@ -47,7 +49,12 @@ export function FirstSteps({ park }: { park: ParkData }) {
     <section aria-label="Next steps" className="relative mb-5 border border-rule bg-leaf">
       <ol className="grid grid-cols-3 max-md:grid-cols-1">
         {steps.map((step, i) => (
-          <li key={step.title} className={cx("flex items-start gap-3 border-l border-hair py-3 pr-4 pl-4 first:border-l-0 md:last:pr-10 max-md:first:pr-10 max-md:border-t max-md:border-l-0 max-md:first:border-t-0")}>
+          <li
+            key={step.title}
+            className={cx(
+              "flex items-start gap-3 border-l border-hair py-3 pr-4 pl-4 first:border-l-0 md:last:pr-10 max-md:first:pr-10 max-md:border-t max-md:border-l-0 max-md:first:border-t-0",
+            )}
+          >
             <span className="mt-0.5 flex items-center gap-1.5">
               <span className="font-mono text-small text-ink-3">{i + 1}</span>
               <FerruleBadge feed={step.isDone ? "fed" : "open"} title={step.isDone ? "done" : "to do"} />

@@ -19,7 +19,10 @@ export function MachineElevation({ silent }: { silent: boolean }) {
       <path d="M24 54h14v12H24zM44 57h16M44 63h16" fill="none" />
       <circle cx="42" cy="30" r="18" />
       <circle cx="42" cy="30" r="12.500" fill="none" />
-      <path d="M42 17.500v8M42 34.500v8M31.200 23.700l6.900 4M45.900 32.300l6.900 4M31.200 36.300l6.900-4M45.900 27.700l6.900-4" fill="none" />
+      <path
+        d="M42 17.500v8M42 34.500v8M31.200 23.700l6.900 4M45.900 32.300l6.900 4M31.200 36.300l6.900-4M45.900 27.700l6.900-4"
+        fill="none"
+      />
       <circle cx="42" cy="30" r="3.500" />
       <path d="M60 30h14v-9h8" fill="none" strokeWidth={2} />
       <path d="M84 26h28v54.500H84zM98 26v54.500M101 50v8" />

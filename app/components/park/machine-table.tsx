@@ -1,6 +1,7 @@
 import type { ReactNode } from "react";
 import { Link } from "react-router";
 import { FindingTallyBadge } from "~/components/notation/finding-badge";
+import { showValue } from "~/components/live/show-value";
 import { StatusBadge, StatusShape } from "~/components/notation/status-badge";
 import { cx } from "~/components/ui/cx";
 import type { TestServerState } from "~/domain/simulation/test-server-state";
@@ -11,23 +12,36 @@ import { useLiveValue } from "./use-live-value";
 
 type Props = { machines: readonly ParkMachine[]; testServers: readonly TestServerState[] };
 
-const headClass = "sticky left-0 z-10 border-r border-r-ink bg-bench px-2.5 text-left font-normal whitespace-nowrap text-ink-2";
+const headClass =
+  "sticky left-0 z-10 border-r border-r-ink bg-bench px-2.5 text-left font-normal whitespace-nowrap text-ink-2";
 
 /** Machines as columns under their elevation, so that a difference between equal machines shows by eye. */
 export function MachineTable({ machines, testServers }: Props) {
   const serverOf = (machine: ParkMachine) => testServers.find((server) => server.modelId === machine.modelId);
   const groups = listGroupNames(machines);
-  const identified = (["SerialNumber", "YearOfConstruction"] as const).filter((name) => machines.some((machine) => machine.identification[name]));
+  const identified = (["SerialNumber", "YearOfConstruction"] as const).filter((name) =>
+    machines.some((machine) => machine.identification[name]),
+  );
   return (
     <>
       <div role="region" aria-label="Machines" tabIndex={0} className="overflow-x-auto max-md:hidden">
-        <table className="w-full border-[1.5px] border-ink bg-leaf text-small" style={{ minWidth: 150 + machines.length * 126 }}>
+        <table
+          className="w-full border-[1.5px] border-ink bg-leaf text-small"
+          style={{ minWidth: 150 + machines.length * 126 }}
+        >
           <caption className="sr-only">Machines of the park, one a column</caption>
           <thead>
             <tr>
               <td className={headClass} />
               {machines.map((machine) => (
-                <th key={machine.key} scope="col" className={cx("border-l border-hair px-3 pt-2 pb-2.5 text-left align-top", serverOf(machine) ? "bg-paper" : "bg-bench")}>
+                <th
+                  key={machine.key}
+                  scope="col"
+                  className={cx(
+                    "border-l border-hair px-3 pt-2 pb-2.5 text-left align-top",
+                    serverOf(machine) ? "bg-paper" : "bg-bench",
+                  )}
+                >
                   <MachineName machine={machine} />
                   <MachineElevation silent={!serverOf(machine)} />
                 </th>
@@ -81,7 +95,10 @@ function MachineName({ machine }: { machine: ParkMachine }) {
   const place = machine.identification.Location ?? machine.identification.YearOfConstruction;
   return (
     <span className="mb-1 flex items-baseline justify-between gap-2">
-      <Link to={`/models/${machine.modelId}/register?node=${encodeURIComponent(machine.key)}`} className="text-[16px] leading-6 font-semibold hover:text-copper">
+      <Link
+        to={`/models/${machine.modelId}/register?node=${encodeURIComponent(machine.key)}`}
+        className="text-[16px] leading-6 font-semibold hover:text-copper"
+      >
         {machine.name}
       </Link>
       <span className="font-mono text-note font-normal text-ink-3">{place}</span>
@@ -89,7 +106,14 @@ function MachineName({ machine }: { machine: ParkMachine }) {
   );
 }
 
-type RowProps = { label: string; machines: readonly ParkMachine[]; tall?: boolean; opens?: boolean; within?: boolean; children: (machine: ParkMachine) => ReactNode };
+type RowProps = {
+  label: string;
+  machines: readonly ParkMachine[];
+  tall?: boolean;
+  opens?: boolean;
+  within?: boolean;
+  children: (machine: ParkMachine) => ReactNode;
+};
 
 function Row({ label, machines, tall, opens, within, children }: RowProps) {
   const border = opens ? "border-t border-t-ink" : within ? "" : "border-t border-t-hair";
@@ -100,7 +124,10 @@ function Row({ label, machines, tall, opens, within, children }: RowProps) {
         {label}
       </th>
       {machines.map((machine) => (
-        <td key={machine.key} className={cx("border-l border-l-hair px-3 whitespace-nowrap max-[1400px]:px-2.5", border, height)}>
+        <td
+          key={machine.key}
+          className={cx("border-l border-l-hair px-3 whitespace-nowrap max-[1400px]:px-2.5", border, height)}
+        >
           {children(machine)}
         </td>
       ))}
@@ -125,21 +152,29 @@ function GroupCell({ machine, name }: { machine: ParkMachine; name: string }) {
 /** What the machine does now, as the test server tells it. */
 function Now({ machine, server }: { machine: ParkMachine; server: TestServerState | undefined }) {
   const state = useLiveValue(server?.id, machine.stateNodeId);
-  const figure = useLiveValue(server?.id, machine.figureNodeId);
+  const figure = useLiveValue(server?.id, machine.figure?.nodeId ?? null);
   if (!server)
     return (
-      <Link to={`/models/${machine.modelId}/test-server`} className="block leading-[18px] hover:text-copper" title="Start a test server that serves this model">
+      <Link
+        to={`/models/${machine.modelId}/test-server`}
+        className="block leading-[18px] hover:text-copper"
+        title="Start a test server that serves this model"
+      >
         <StatusBadge status="stale">not served</StatusBadge>
       </Link>
     );
   return (
-    <Link to={`/live/${server.id}?node=${encodeURIComponent(machine.nodeId)}`} className="block leading-[18px] hover:text-copper">
-      <span className="flex items-center gap-[5px]" title={state?.statusName}>
-        <StatusShape status={state?.status ?? "stale"} />
+    <Link
+      to={`/live/${server.id}?node=${encodeURIComponent(machine.nodeId)}`}
+      className="block leading-[18px] hover:text-copper"
+    >
+      <span className="flex items-center gap-[5px]" title={state?.status.name}>
+        <StatusShape status={state?.status.severity ?? "stale"} />
         <span className="truncate">{state?.text ?? (machine.stateNodeId === null ? "no state" : "waiting")}</span>
       </span>
-      <span className="block font-mono text-ink-2">
-        {figure ? figure.text : ""} <span className="text-ink-3">{figure?.unit}</span>
+      <span className="block font-mono text-ink-2" title={machine.figure?.name}>
+        {figure && machine.figure ? showValue(figure, machine.figure.range) : ""}{" "}
+        <span className="text-ink-3">{figure ? machine.figure?.unit : ""}</span>
       </span>
     </Link>
   );

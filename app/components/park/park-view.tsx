@@ -3,6 +3,7 @@ import { Link } from "react-router";
 import { FindingTallyBadge } from "~/components/notation/finding-badge";
 import { describeEdit } from "~/components/shell/describe-edit";
 import { LocalTime } from "~/components/shell/local-time";
+import { useRevalidateOn } from "~/components/shell/use-revalidate-on";
 import { Button, LinkButton } from "~/components/ui/button";
 import { Empty } from "~/components/ui/empty";
 import { Block, Page } from "~/components/ui/page";
@@ -19,7 +20,8 @@ import { WaitList } from "./wait-list";
 const editReason = "asks for the role engineer or administrator";
 
 export function ParkView({ park }: { park: ParkData }) {
-  const { models, machines, testServers, edits } = park;
+  const { models, machines, testServers, edits, organizationId } = park;
+  useRevalidateOn(`test-servers:${organizationId}`, `models:${organizationId}`);
   const running = testServers.filter((server) => server.state === "running");
   return (
     <Page
@@ -35,7 +37,7 @@ export function ParkView({ park }: { park: ParkData }) {
               <LinkButton to="/models/import" icon={FileUp}>
                 Import
               </LinkButton>
-              <LinkButton to="/models/new" icon={Plus} >
+              <LinkButton to="/models/new" icon={Plus}>
                 New model
               </LinkButton>
             </>
@@ -52,7 +54,11 @@ export function ParkView({ park }: { park: ParkData }) {
           cells={[
             { label: "Works", value: park.organizationName, strong: true },
             { label: "Models", value: describeModels(park) },
-            { label: "Nodes of our own", value: formatCount(models.reduce((sum, model) => sum + model.nodeCount, 0)), mono: true },
+            {
+              label: "Nodes of our own",
+              value: formatCount(models.reduce((sum, model) => sum + model.nodeCount, 0)),
+              mono: true,
+            },
             { label: "Machines", value: String(machines.length), mono: true },
             { label: "Test servers", value: `${running.length} running` },
             { label: "Last edit", value: edits[0] ? <EditCell edit={edits[0]} /> : "none yet" },
@@ -67,7 +73,11 @@ export function ParkView({ park }: { park: ParkData }) {
       ) : (
         <div className="grid grid-cols-[minmax(0,1fr)_330px] gap-x-5 gap-y-6 max-[1400px]:grid-cols-[minmax(0,1fr)_260px] max-lg:grid-cols-1">
           <div className="grid content-start gap-6">
-            {machines.length > 0 ? <MachineTable machines={machines} testServers={running} /> : <NoMachines mayEdit={park.mayEdit} />}
+            {machines.length > 0 ? (
+              <MachineTable machines={machines} testServers={running} />
+            ) : (
+              <NoMachines mayEdit={park.mayEdit} />
+            )}
           </div>
           <WaitList park={park} />
         </div>
@@ -87,8 +97,11 @@ export function ParkView({ park }: { park: ParkData }) {
 
 function describePark({ machines, models }: ParkData): string {
   const types = new Set(machines.map((machine) => machine.typeName)).size;
-  if (machines.length > 0) return `${machines.length} ${machines.length === 1 ? "machine" : "machines"} of ${types} ${types === 1 ? "type" : "types"}`;
-  return models.length === 0 ? "nothing here yet" : `${models.length} ${models.length === 1 ? "model" : "models"}, no machines yet`;
+  if (machines.length > 0)
+    return `${machines.length} ${machines.length === 1 ? "machine" : "machines"} of ${types} ${types === 1 ? "type" : "types"}`;
+  return models.length === 0
+    ? "nothing here yet"
+    : `${models.length} ${models.length === 1 ? "model" : "models"}, no machines yet`;
 }
 
 function describeModels({ models }: ParkData): string {
@@ -126,7 +139,8 @@ function NoModels({ mayEdit }: { mayEdit: boolean }) {
         </span>
       }
     >
-      Decide once what a kind of machine exposes; then make the machines from it, check them, and serve them on a test server.
+      Decide once what a kind of machine exposes; then make the machines from it, check them, and serve them on a test
+      server.
     </Empty>
   );
 }
@@ -144,7 +158,14 @@ function NoMachines({ mayEdit }: { mayEdit: boolean }) {
 
 function ModelsBlock({ park }: { park: ParkData }) {
   return (
-    <Block title="Models" actions={<LinkButton to="/models" size="small" tone="bare">All models</LinkButton>}>
+    <Block
+      title="Models"
+      actions={
+        <LinkButton to="/models" size="small" tone="bare">
+          All models
+        </LinkButton>
+      }
+    >
       <TableScroll label="Models">
         <Table caption="Models of the team">
           <thead>
@@ -195,12 +216,16 @@ function EditsBlock({ park }: { park: ParkData }) {
       ) : (
         <ol className="border-t border-ink">
           {park.edits.map((edit) => (
-            <li key={`${edit.modelId} ${edit.seq}`} className="flex min-h-7 items-center gap-2 border-b border-hair text-small">
+            <li
+              key={`${edit.modelId} ${edit.seq}`}
+              className="flex min-h-7 items-center gap-2 border-b border-hair text-small"
+            >
               <span className="w-32 shrink-0 font-mono text-note text-ink-3">
                 <LocalTime iso={edit.at} />
               </span>
               <span className="min-w-0 flex-1 truncate">
-                <b className="font-semibold">{edit.author}</b> <span className="text-ink-2">{describeEdit(edit.label)} in</span>{" "}
+                <b className="font-semibold">{edit.author}</b>{" "}
+                <span className="text-ink-2">{describeEdit(edit.label)} in</span>{" "}
                 <Link to={`/models/${edit.modelId}/register`} className="hover:text-copper">
                   {edit.modelName}
                 </Link>

@@ -5,14 +5,23 @@ import { Block } from "~/components/ui/page";
 import { Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
 import type { TestServerPhase, TestServerState } from "~/domain/simulation/test-server-state";
 
-const shapes: Record<TestServerPhase, Status> = { starting: "uncertain", running: "good", stopping: "uncertain", stopped: "stale", failed: "bad", lost: "bad" };
+const shapes: Record<TestServerPhase, Status> = {
+  starting: "uncertain",
+  running: "good",
+  stopping: "uncertain",
+  stopped: "stale",
+  failed: "bad",
+  lost: "bad",
+};
 
 export function TestServerTable({ servers }: { servers: readonly TestServerState[] }) {
   const shown = servers.filter((server) => server.state !== "stopped");
   return (
     <Block title="Test servers">
       {shown.length === 0 ? (
-        <p className="border-t border-ink pt-2 text-small text-ink-2">None runs. Start one from a model’s page; it listens on this host only.</p>
+        <p className="border-t border-ink pt-2 text-small text-ink-2">
+          None runs. Start one from a model’s page; it listens on this host only.
+        </p>
       ) : (
         <TableScroll label="Test servers">
           <Table caption="Test servers">
@@ -29,7 +38,10 @@ export function TestServerTable({ servers }: { servers: readonly TestServerState
               {shown.map((server) => (
                 <Tr key={server.id}>
                   <Td>
-                    <Link to={server.state === "running" ? `/live/${server.id}` : `/models/${server.modelId}/test-server`} className="font-semibold hover:text-copper">
+                    <Link
+                      to={server.state === "running" ? `/live/${server.id}` : `/models/${server.modelId}/test-server`}
+                      className="font-semibold hover:text-copper"
+                    >
                       {server.modelName}
                     </Link>
                   </Td>

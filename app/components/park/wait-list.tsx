@@ -12,16 +12,44 @@ function listWaiting({ models, testServers }: ParkData): Waiting[] {
     const { error, warning } = model.tally;
     const rows: Waiting[] = [];
     if (model.missing.length > 0)
-      rows.push({ id: `missing ${model.id}`, severity: "error", title: `${model.name} lacks a required model`, about: model.missing.join(" "), to: "/models/import?into=library", action: "Add it" });
+      rows.push({
+        id: `missing ${model.id}`,
+        severity: "error",
+        title: `${model.name} lacks a required model`,
+        about: model.missing.join(" "),
+        to: "/models/import?into=library",
+        action: "Add it",
+      });
     if (error > 0)
-      rows.push({ id: `error ${model.id}`, severity: "error", title: `${model.name} has ${error} ${error === 1 ? "error" : "errors"}`, about: "Other OPC UA software may refuse the export.", to: `/models/${model.id}/findings`, action: "Look at it" });
+      rows.push({
+        id: `error ${model.id}`,
+        severity: "error",
+        title: `${model.name} has ${error} ${error === 1 ? "error" : "errors"}`,
+        about: "Other OPC UA software may refuse the export.",
+        to: `/models/${model.id}/findings`,
+        action: "Look at it",
+      });
     else if (warning > 0)
-      rows.push({ id: `warning ${model.id}`, severity: "warning", title: `${model.name} has ${warning} ${warning === 1 ? "warning" : "warnings"}`, about: "It can be exported; readers may stumble.", to: `/models/${model.id}/findings`, action: "Look at it" });
+      rows.push({
+        id: `warning ${model.id}`,
+        severity: "warning",
+        title: `${model.name} has ${warning} ${warning === 1 ? "warning" : "warnings"}`,
+        about: "It can be exported; readers may stumble.",
+        to: `/models/${model.id}/findings`,
+        action: "Look at it",
+      });
     return rows;
   });
   const ofServers = testServers
     .filter((server) => server.state === "failed" || server.state === "lost")
-    .map((server): Waiting => ({ id: server.id, severity: "error", title: `The test server of ${server.modelName} ended`, about: server.state === "lost" ? "Its process is gone." : "It failed; its log has the last lines.", to: `/models/${server.modelId}/test-server`, action: "Look at it" }));
+    .map((server): Waiting => ({
+      id: server.id,
+      severity: "error",
+      title: `The test server of ${server.modelName} ended`,
+      about: server.state === "lost" ? "Its process is gone." : "It failed; its log has the last lines.",
+      to: `/models/${server.modelId}/test-server`,
+      action: "Look at it",
+    }));
   const weight: Record<Severity, number> = { error: 0, warning: 1, hint: 2 };
   return [...ofServers, ...ofModels].sort((a, b) => weight[a.severity] - weight[b.severity]);
 }
@@ -34,7 +62,9 @@ export function WaitList({ park }: { park: ParkData }) {
         Waits for you <span className="font-mono font-normal text-ink-3">{waiting.length}</span>
       </h2>
       {waiting.length === 0 ? (
-        <p className="mt-2 border-t border-hair pt-2 text-small text-ink-2">Nothing. No model has an error or a warning, and no test server has failed.</p>
+        <p className="mt-2 border-t border-hair pt-2 text-small text-ink-2">
+          Nothing. No model has an error or a warning, and no test server has failed.
+        </p>
       ) : (
         <ul className="mt-2">
           {waiting.map((row) => (

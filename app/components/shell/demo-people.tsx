@@ -5,7 +5,15 @@ import { Initials } from "~/components/ui/initials";
 import type { DemoAccount } from "~/utils/demo-accounts";
 
 /** The invented people of the demo, each a form of its own, so that one press signs in, with and without JavaScript. */
-export function DemoPeople({ accounts, password, to }: { accounts: readonly DemoAccount[]; password: string; to: string }) {
+export function DemoPeople({
+  accounts,
+  password,
+  to,
+}: {
+  accounts: readonly DemoAccount[];
+  password: string;
+  to: string;
+}) {
   return (
     <section aria-label="Demo accounts">
       <ul className="border-y-[1.5px] border-ink">
@@ -19,7 +27,8 @@ export function DemoPeople({ accounts, password, to }: { accounts: readonly Demo
                 <Initials name={account.name} />
                 <span className="min-w-0">
                   <span className="block">
-                    <b className="font-semibold">{account.name}</b> <span className="text-small text-ink-2">{account.roles.join(", ")}</span>
+                    <b className="font-semibold">{account.name}</b>{" "}
+                    <span className="text-small text-ink-2">{account.roles.join(", ")}</span>
                   </span>
                   <span className="block text-note text-ink-3">{account.job}</span>
                 </span>
@@ -30,8 +39,8 @@ export function DemoPeople({ accounts, password, to }: { accounts: readonly Demo
         ))}
       </ul>
       <p className="mt-2 text-note text-ink-3">
-        Merrow Ropeworks, its people, machines, devices and numbers are all invented. These accounts exist in the demo’s own database
-        only; all have the password <code className="font-mono text-ink-2">{password}</code>.
+        Merrow Ropeworks, its people, machines, devices and numbers are all invented. These accounts exist in the demo’s
+        own database only; all have the password <code className="font-mono text-ink-2">{password}</code>.
       </p>
     </section>
   );

@@ -6,8 +6,16 @@ type ErrorWords = { status: string; title: string; text: string; isOurFault?: bo
 const byStatus: Readonly<Record<number, ErrorWords>> = {
   400: { status: "400", title: "This address cannot be understood", text: "A part of it is missing or wrong." },
   401: { status: "401", title: "You are not signed in", text: "Sign in to go on; you come back to this page." },
-  403: { status: "403", title: "Your roles do not allow this", text: "An administrator of your organisation can give you the role on the Team page." },
-  404: { status: "404", title: "Nothing is here", text: "It was removed, belongs to another organisation, or the address has a slip in it." },
+  403: {
+    status: "403",
+    title: "Your roles do not allow this",
+    text: "An administrator of your organisation can give you the role on the Team page.",
+  },
+  404: {
+    status: "404",
+    title: "Nothing is here",
+    text: "It was removed, belongs to another organisation, or the address has a slip in it.",
+  },
   413: { status: "413", title: "Too large", text: "Files are read up to 50 MB." },
   429: { status: "429", title: "Too many requests", text: "Wait a minute, then try again." },
 };
@@ -80,7 +88,16 @@ function BrokenWire({ label }: { label: string }) {
       <path d="M254 32h16m6-8 6 16m4-12 6 12" stroke="var(--edge)" />
       <path d="M306 32h214" strokeDasharray="6 5" stroke="var(--edge)" />
       <rect x="404" y="18" width="76" height="28" rx="9" fill="var(--leaf)" />
-      <text x="442" y="37" textAnchor="middle" fill="var(--ink)" stroke="none" fontFamily="var(--mono)" fontSize="14" fontWeight="600">
+      <text
+        x="442"
+        y="37"
+        textAnchor="middle"
+        fill="var(--ink)"
+        stroke="none"
+        fontFamily="var(--mono)"
+        fontSize="14"
+        fontWeight="600"
+      >
         {label}
       </text>
     </svg>

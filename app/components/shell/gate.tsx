@@ -3,7 +3,17 @@ import { FerruleMark } from "~/components/notation/ferrule-badge";
 import { LandingDrawing } from "./landing-drawing";
 
 /** The page before the door: a drawing of what the product does, and a panel. Used for sign-in and set-up. */
-export function Gate({ title, about, foot, children }: { title: string; about?: ReactNode; foot?: ReactNode; children: ReactNode }) {
+export function Gate({
+  title,
+  about,
+  foot,
+  children,
+}: {
+  title: string;
+  about?: ReactNode;
+  foot?: ReactNode;
+  children: ReactNode;
+}) {
   return (
     <div className="grid min-h-dvh grid-cols-[minmax(0,1fr)_460px] bg-paper max-lg:grid-cols-1">
       <aside className="relative flex flex-col border-r-[1.5px] border-ink bg-bench p-10 max-lg:hidden">
@@ -14,8 +24,8 @@ export function Gate({ title, about, foot, children }: { title: string; about?: 
           <LandingDrawing />
         </div>
         <p className="max-w-136 text-lead leading-6 text-ink-2">
-          A ferrule gives a wire a clean end before it is landed in a terminal. This one does it for the signals of your machines, before
-          they are landed in an OPC UA server.
+          A ferrule gives a wire a clean end before it is landed in a terminal. This one does it for the signals of your
+          machines, before they are landed in an OPC UA server.
         </p>
       </aside>
       <main id="main" className="flex flex-col px-10 py-10 max-sm:px-5 max-sm:py-6">

@@ -11,15 +11,36 @@ const frame = { stroke: "var(--rule)", fill: "none" } as const;
 /** Raw signals on wires, each with its ferrule, landed in the Variables of one type. A picture, not data. */
 export function LandingDrawing() {
   return (
-    <svg viewBox="0 0 720 430" className="w-full max-w-200" role="img" aria-label="Raw signals land, each by a ferrule, in the Variables of one machine type">
+    <svg
+      viewBox="0 0 720 430"
+      className="w-full max-w-200"
+      role="img"
+      aria-label="Raw signals land, each by a ferrule, in the Variables of one machine type"
+    >
       <rect x="1" y="1" width="718" height="428" {...frame} />
       {[1, 2, 3, 4, 5, 6].map((zone) => (
-        <text key={zone} x={zone * 120 - 60} y="14" textAnchor="middle" fontSize="10" fontFamily="var(--mono)" fill="var(--ink-3)">
+        <text
+          key={zone}
+          x={zone * 120 - 60}
+          y="14"
+          textAnchor="middle"
+          fontSize="10"
+          fontFamily="var(--mono)"
+          fill="var(--ink-3)"
+        >
           {zone}
         </text>
       ))}
       {["A", "B", "C", "D"].map((zone, i) => (
-        <text key={zone} x="9" y={70 + i * 103} textAnchor="middle" fontSize="10" fontFamily="var(--mono)" fill="var(--ink-3)">
+        <text
+          key={zone}
+          x="9"
+          y={70 + i * 103}
+          textAnchor="middle"
+          fontSize="10"
+          fontFamily="var(--mono)"
+          fill="var(--ink-3)"
+        >
           {zone}
         </text>
       ))}
@@ -40,7 +61,21 @@ export function LandingDrawing() {
   );
 }
 
-function Signal({ y, raw, tag, name, value, color }: { y: number; raw: string; tag: string; name: string; value: string; color: string }) {
+function Signal({
+  y,
+  raw,
+  tag,
+  name,
+  value,
+  color,
+}: {
+  y: number;
+  raw: string;
+  tag: string;
+  name: string;
+  value: string;
+  color: string;
+}) {
   return (
     <g>
       <text x="38" y={y - 8} fontSize="11" fill="var(--ink-3)">
@@ -50,7 +85,12 @@ function Signal({ y, raw, tag, name, value, color }: { y: number; raw: string; t
         {raw}
       </text>
       <path d={`M38 ${y}H296`} stroke={color} strokeWidth="1.75" fill="none" />
-      <path d={`M296 ${y - 13}l18 6h52v14h-52l-18 6z`} fill="var(--copper)" stroke="var(--copper)" strokeLinejoin="round" />
+      <path
+        d={`M296 ${y - 13}l18 6h52v14h-52l-18 6z`}
+        fill="var(--copper)"
+        stroke="var(--copper)"
+        strokeLinejoin="round"
+      />
       <path d={`M306 ${y - 9}v18M352 ${y - 7}v14M358 ${y - 7}v14`} stroke="var(--paper)" strokeWidth="1.2" />
       <path d={`M366 ${y}H436`} stroke={color} strokeWidth="1.75" />
       <path d={`M410 ${y - 12}h10v24h-10z`} fill="var(--bench-2)" stroke="var(--ink)" strokeWidth="1.25" />

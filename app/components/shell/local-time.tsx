@@ -7,7 +7,11 @@ const never = () => () => undefined;
 
 /** False while the page is the server's, which does not know the reader's time zone. */
 export function useHydrated(): boolean {
-  return useSyncExternalStore(never, () => true, () => false);
+  return useSyncExternalStore(
+    never,
+    () => true,
+    () => false,
+  );
 }
 
 export type TimeParts = "date" | "time" | "date-time" | "day-date-time";

@@ -30,7 +30,10 @@ function Screens({ stacked }: { stacked?: boolean }) {
       prefetch="intent"
       className={({ isActive }) =>
         stacked
-          ? cx("flex h-10 items-center px-4 text-body", isActive && "bg-copper-wash font-semibold shadow-[inset_3px_0_0_var(--copper)]")
+          ? cx(
+              "flex h-10 items-center px-4 text-body",
+              isActive && "bg-copper-wash font-semibold shadow-[inset_3px_0_0_var(--copper)]",
+            )
           : cx(
               "relative flex items-center px-[11px] focus-visible:-outline-offset-2",
               isActive
@@ -50,7 +53,11 @@ export function TopBar({ frame, theme, onFind }: { frame: FrameData; theme: Them
       <a href="#main" className="sr-only focus:not-sr-only focus:self-center focus:px-2">
         Skip to content
       </a>
-      <Link to="/" aria-label="Ferrule, to the park" className="flex items-center gap-2 pr-4 text-lead font-bold tracking-[-0.015em]">
+      <Link
+        to="/"
+        aria-label="Ferrule, to the park"
+        className="flex items-center gap-2 pr-4 text-lead font-bold tracking-[-0.015em]"
+      >
         <FerruleMark />
         <span className="max-sm:sr-only">Ferrule</span>
       </Link>
@@ -83,7 +90,8 @@ export function TopBar({ frame, theme, onFind }: { frame: FrameData; theme: Them
 
 function Organization({ frame }: { frame: FrameData }) {
   const { organization, organizations } = frame;
-  const className = "flex items-center gap-1.5 border-x border-hair px-4 text-small text-ink-2 max-sm:border-r-0 max-sm:px-3";
+  const className =
+    "flex items-center gap-1.5 border-x border-hair px-4 text-small text-ink-2 max-sm:border-r-0 max-sm:px-3";
   if (organizations.length < 2) return <div className={className}>{organization.name}</div>;
   return (
     <Popover
@@ -175,4 +183,3 @@ function PersonMenu({ frame, theme }: { frame: FrameData; theme: Theme }) {
     </Popover>
   );
 }
-

@@ -21,5 +21,12 @@ export function useRunningTestServers(organizationId: string, initial: readonly 
 }
 
 function isRunningServer(data: unknown): data is RunningServer {
-  return typeof data === "object" && data !== null && "id" in data && "state" in data && typeof data.id === "string" && typeof data.state === "string";
+  return (
+    typeof data === "object" &&
+    data !== null &&
+    "id" in data &&
+    "state" in data &&
+    typeof data.id === "string" &&
+    typeof data.state === "string"
+  );
 }

@@ -22,7 +22,13 @@ export function AddPersonForm({ lastResult, count }: { lastResult: SubmissionRes
       <input type="hidden" name="intent" value="add-person" />
       <ConformField field={fields.name} label="Name" autoComplete="off" />
       <ConformField field={fields.email} label="E-mail" type="email" autoComplete="off" />
-      <ConformField field={fields.password} label="First password" type="password" autoComplete="new-password" hint="At least 10 characters; tell it on a safe way." />
+      <ConformField
+        field={fields.password}
+        label="First password"
+        type="password"
+        autoComplete="new-password"
+        hint="At least 10 characters; tell it on a safe way."
+      />
       <div>
         <RoleBoxes held={[]} />
         {fields.roles.errors ? <p className="mt-1 text-note text-error">{fields.roles.errors.join(" ")}</p> : null}

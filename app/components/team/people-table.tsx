@@ -15,7 +15,15 @@ import { RoleBoxes } from "./role-boxes";
 type Person = TeamPage["people"][number];
 type Change = { kind: "roles" | "password" | "remove"; person: Person };
 
-export function PeopleTable({ people, userId, mayAdminister }: { people: readonly Person[]; userId: string; mayAdminister: boolean }) {
+export function PeopleTable({
+  people,
+  userId,
+  mayAdminister,
+}: {
+  people: readonly Person[];
+  userId: string;
+  mayAdminister: boolean;
+}) {
   const [change, setChange] = useState<Change | undefined>(undefined);
   const close = () => setChange(undefined);
   return (
@@ -103,14 +111,33 @@ const abouts: Record<Change["kind"], string> = {
 function ChangeDialog({ change, onClose }: { change: Change; onClose: () => void }) {
   const { kind, person } = change;
   return (
-    <Dialog title={titles[kind](person.name)} about={abouts[kind]} open onOpenChange={(open) => (open ? undefined : onClose())}>
+    <Dialog
+      title={titles[kind](person.name)}
+      about={abouts[kind]}
+      open
+      onOpenChange={(open) => (open ? undefined : onClose())}
+    >
       <Form method="post" className="grid gap-4" onSubmit={() => setTimeout(onClose)}>
-        <input type="hidden" name="intent" value={{ roles: "set-roles", password: "set-password", remove: "remove-person" }[kind]} />
+        <input
+          type="hidden"
+          name="intent"
+          value={{ roles: "set-roles", password: "set-password", remove: "remove-person" }[kind]}
+        />
         <input type="hidden" name="userId" value={person.id} />
         {kind === "roles" ? <RoleBoxes held={person.roles} /> : null}
         {kind === "password" ? (
           <Field label="New password" hint="At least 10 characters.">
-            {(tied) => <Input {...tied} name="password" type="password" minLength={10} maxLength={128} required autoComplete="new-password" />}
+            {(tied) => (
+              <Input
+                {...tied}
+                name="password"
+                type="password"
+                minLength={10}
+                maxLength={128}
+                required
+                autoComplete="new-password"
+              />
+            )}
           </Field>
         ) : null}
         <div className="flex justify-end gap-2">

@@ -15,7 +15,13 @@ export function RoleBoxes({ held, name = "roles" }: { held: readonly Role[]; nam
       <legend className="mb-1 text-note font-medium text-ink-2">Roles</legend>
       {roles.map((role) => (
         <label key={role} className="grid grid-cols-[14px_96px_1fr] items-start gap-x-2 text-small">
-          <input type="checkbox" name={name} value={role} defaultChecked={held.includes(role)} className="mt-[1.5px] size-3.5 accent-(--copper)" />
+          <input
+            type="checkbox"
+            name={name}
+            value={role}
+            defaultChecked={held.includes(role)}
+            className="mt-[1.5px] size-3.5 accent-(--copper)"
+          />
           <span>{role}</span>
           <span className="text-note leading-[17px] text-ink-3">{roleJobs[role]}</span>
         </label>

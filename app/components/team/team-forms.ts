@@ -2,7 +2,10 @@
 import { z } from "zod";
 import { roles, tokenScopes } from "~/auth/permissions";
 
-const password = z.string("Choose a first password").min(10, "At least 10 characters").max(128, "At most 128 characters");
+const password = z
+  .string("Choose a first password")
+  .min(10, "At least 10 characters")
+  .max(128, "At most 128 characters");
 const held = z.array(z.enum(roles)).min(1, "Give at least one role").default([]);
 const userId = z.string().max(100);
 
@@ -21,7 +24,11 @@ export const createTokenSchema = z.object({
   intent: z.literal("create-token"),
   name: z.string("Say what it is for").trim().max(100, "At most 100 characters"),
   scope: z.enum(tokenScopes),
-  days: z.coerce.number("Write a number of days").int("Whole days").min(1, "At least one day").max(366, "At most 366 days"),
+  days: z.coerce
+    .number("Write a number of days")
+    .int("Whole days")
+    .min(1, "At least one day")
+    .max(366, "At most 366 days"),
 });
 export const revokeTokenSchema = z.object({ intent: z.literal("revoke-token"), tokenId: z.string().max(100) });
 

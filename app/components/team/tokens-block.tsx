@@ -45,7 +45,9 @@ export function TokensBlock({ tokens, secret, errors, now }: Props) {
                   </Td>
                   <Td>{token.owner}</Td>
                   <Td>{token.scopes.includes("write") ? "read and write" : "read"}</Td>
-                  <Td mono>{token.expiresAt ? <Expiry iso={token.expiresAt} hasExpired={token.expiresAt <= now} /> : "never"}</Td>
+                  <Td mono>
+                    {token.expiresAt ? <Expiry iso={token.expiresAt} hasExpired={token.expiresAt <= now} /> : "never"}
+                  </Td>
                   <Td mono className="text-ink-2">
                     {token.lastUsedAt ? <LocalTime iso={token.lastUsedAt} /> : "never"}
                   </Td>
@@ -72,7 +74,9 @@ export function TokensBlock({ tokens, secret, errors, now }: Props) {
           )}
         </Field>
         <Field label="Ends after" className="w-28">
-          {(tied) => <Input {...tied} name="days" type="number" min={1} max={366} defaultValue={90} unit="days" mono required />}
+          {(tied) => (
+            <Input {...tied} name="days" type="number" min={1} max={366} defaultValue={90} unit="days" mono required />
+          )}
         </Field>
         <Button type="submit" busy={busy}>
           Make a token
@@ -98,7 +102,11 @@ function NewSecret({ secret }: { secret: string }) {
     <Notice tone="good" title="Copy the token now; it is never shown again" live className="mb-3">
       <span className="mt-1.5 flex flex-wrap items-center gap-2">
         <code className="border border-rule bg-leaf px-2 py-1 font-mono text-small break-all select-all">{secret}</code>
-        <Button size="small" icon={Copy} onClick={() => void navigator.clipboard.writeText(secret).then(() => setCopied(true))}>
+        <Button
+          size="small"
+          icon={Copy}
+          onClick={() => void navigator.clipboard.writeText(secret).then(() => setCopied(true))}
+        >
           {copied ? "Copied" : "Copy"}
         </Button>
       </span>

@@ -48,7 +48,18 @@ type ButtonProps = ButtonHTMLAttributes<HTMLButtonElement> & {
   children?: ReactNode;
 };
 
-export function Button({ tone, size, icon, blockedBy, busy, className, children, onClick, type = "button", ...rest }: ButtonProps) {
+export function Button({
+  tone,
+  size,
+  icon,
+  blockedBy,
+  busy,
+  className,
+  children,
+  onClick,
+  type = "button",
+  ...rest
+}: ButtonProps) {
   const blocked = Boolean(blockedBy) || busy === true;
   const button = (
     <button
@@ -69,7 +80,16 @@ export function Button({ tone, size, icon, blockedBy, busy, className, children,
 type IconButtonProps = Omit<ButtonProps, "children" | "icon"> & { icon: LucideIcon; label: string; keys?: string };
 
 /** A square button that shows only a sign: for actions whose sign needs no word (undo, close, more). The label is its name and tooltip. */
-export function IconButton({ icon, label, keys, tone = "bare", size = "medium", className, blockedBy, ...rest }: IconButtonProps) {
+export function IconButton({
+  icon,
+  label,
+  keys,
+  tone = "bare",
+  size = "medium",
+  className,
+  blockedBy,
+  ...rest
+}: IconButtonProps) {
   const text = blockedBy ? `${label}: ${blockedBy}` : keys ? `${label} (${keys})` : label;
   const { onClick, busy, type = "button", ...others } = rest;
   const blocked = Boolean(blockedBy) || busy === true;
@@ -105,7 +125,10 @@ export function TextLink({ className, ...rest }: LinkProps) {
   return (
     <Link
       {...rest}
-      className={cx("underline decoration-rule decoration-1 underline-offset-3 hover:decoration-copper hover:text-copper", className)}
+      className={cx(
+        "underline decoration-rule decoration-1 underline-offset-3 hover:decoration-copper hover:text-copper",
+        className,
+      )}
     />
   );
 }

@@ -33,7 +33,21 @@ type ComboboxProps<Item> = {
 
 /** A text field with a list below it; arrow keys choose, Enter takes, Esc leaves. The focus stays in the field. */
 export function Combobox<Item>(props: ComboboxProps<Item>) {
-  const { label, query, onQuery, items, itemKey, renderItem, onPick, onCancel, head, foot, none = "Nothing found", size, mono } = props;
+  const {
+    label,
+    query,
+    onQuery,
+    items,
+    itemKey,
+    renderItem,
+    onPick,
+    onCancel,
+    head,
+    foot,
+    none = "Nothing found",
+    size,
+    mono,
+  } = props;
   const listId = useId();
   const [open, setOpen] = useState(false);
   const [active, setActive] = useState(0);
@@ -105,7 +119,9 @@ export function Combobox<Item>(props: ComboboxProps<Item>) {
         />
       }
     >
-      {head ? <div className="flex h-6 items-center justify-between gap-2 bg-bench px-2 text-note text-ink-3">{head}</div> : null}
+      {head ? (
+        <div className="flex h-6 items-center justify-between gap-2 bg-bench px-2 text-note text-ink-3">{head}</div>
+      ) : null}
       <ul ref={list} id={listId} role="listbox" aria-label={label} className="max-h-72 overflow-auto">
         {items.map((item, i) => (
           <li
@@ -126,7 +142,11 @@ export function Combobox<Item>(props: ComboboxProps<Item>) {
         ))}
       </ul>
       {items.length === 0 ? <p className="px-2 py-2 text-small text-ink-3">{none}</p> : null}
-      {foot ? <div className="flex min-h-7 items-center gap-2 border-t border-rule bg-bench px-2 text-small text-ink-2">{foot}</div> : null}
+      {foot ? (
+        <div className="flex min-h-7 items-center gap-2 border-t border-rule bg-bench px-2 text-small text-ink-2">
+          {foot}
+        </div>
+      ) : null}
     </AnchoredPanel>
   );
 }

@@ -22,7 +22,17 @@ const step = 24;
 
 /** A drawer at the lower edge of its column: dragged taller by its grip, or by arrow keys on it; keeps its height. */
 export function Drawer(props: DrawerProps) {
-  const { label, head, tools, children, onClose, storageKey = "drawer-height", initialHeight = 260, minHeight = 96, className } = props;
+  const {
+    label,
+    head,
+    tools,
+    children,
+    onClose,
+    storageKey = "drawer-height",
+    initialHeight = 260,
+    minHeight = 96,
+    className,
+  } = props;
   const [height, setHeight] = useState(initialHeight);
   const section = useRef<HTMLElement>(null);
   const drag = useRef<{ y: number; height: number } | null>(null);

@@ -1,5 +1,12 @@
 import { ChevronDown } from "lucide-react";
-import { useId, type InputHTMLAttributes, type ReactNode, type Ref, type SelectHTMLAttributes, type TextareaHTMLAttributes } from "react";
+import {
+  useId,
+  type InputHTMLAttributes,
+  type ReactNode,
+  type Ref,
+  type SelectHTMLAttributes,
+  type TextareaHTMLAttributes,
+} from "react";
 import { cx } from "./cx";
 import { Icon } from "./icon";
 
@@ -64,12 +71,16 @@ type InputProps = Omit<InputHTMLAttributes<HTMLInputElement>, "size"> & {
 };
 
 export function Input({ size = "medium", mono, unit, className, ...rest }: InputProps) {
-  const input = <input {...rest} className={cx(frame, heights[size], mono && "font-mono", unit && "pr-10", className)} />;
+  const input = (
+    <input {...rest} className={cx(frame, heights[size], mono && "font-mono", unit && "pr-10", className)} />
+  );
   if (!unit) return input;
   return (
     <span className="relative block w-full">
       {input}
-      <span className="pointer-events-none absolute inset-y-0 right-2 flex items-center text-note text-ink-3">{unit}</span>
+      <span className="pointer-events-none absolute inset-y-0 right-2 flex items-center text-note text-ink-3">
+        {unit}
+      </span>
     </span>
   );
 }
@@ -77,10 +88,20 @@ export function Input({ size = "medium", mono, unit, className, ...rest }: Input
 type TextAreaProps = TextareaHTMLAttributes<HTMLTextAreaElement> & { mono?: boolean; ref?: Ref<HTMLTextAreaElement> };
 
 export function TextArea({ mono, className, rows = 3, ...rest }: TextAreaProps) {
-  return <textarea {...rest} rows={rows} className={cx(frame, "block px-2 py-1 text-small", mono && "font-mono", className)} />;
+  return (
+    <textarea
+      {...rest}
+      rows={rows}
+      className={cx(frame, "block px-2 py-1 text-small", mono && "font-mono", className)}
+    />
+  );
 }
 
-type SelectProps = Omit<SelectHTMLAttributes<HTMLSelectElement>, "size"> & { size?: ControlSize; mono?: boolean; ref?: Ref<HTMLSelectElement> };
+type SelectProps = Omit<SelectHTMLAttributes<HTMLSelectElement>, "size"> & {
+  size?: ControlSize;
+  mono?: boolean;
+  ref?: Ref<HTMLSelectElement>;
+};
 
 export function Select({ size = "medium", mono, className, children, ...rest }: SelectProps) {
   return (
@@ -93,11 +114,21 @@ export function Select({ size = "medium", mono, className, children, ...rest }: 
   );
 }
 
-type CheckboxProps = Omit<InputHTMLAttributes<HTMLInputElement>, "type"> & { label: ReactNode; hint?: ReactNode; ref?: Ref<HTMLInputElement> };
+type CheckboxProps = Omit<InputHTMLAttributes<HTMLInputElement>, "type"> & {
+  label: ReactNode;
+  hint?: ReactNode;
+  ref?: Ref<HTMLInputElement>;
+};
 
 export function Checkbox({ label, hint, className, ...rest }: CheckboxProps) {
   return (
-    <label className={cx("grid grid-cols-[14px_1fr] items-start gap-x-2 text-small", rest.disabled && "text-ink-3", className)}>
+    <label
+      className={cx(
+        "grid grid-cols-[14px_1fr] items-start gap-x-2 text-small",
+        rest.disabled && "text-ink-3",
+        className,
+      )}
+    >
       <input {...rest} type="checkbox" className="mt-[1.5px] size-3.5 accent-(--copper)" />
       <span>
         {label}

@@ -1,6 +1,10 @@
 import { cx } from "./cx";
 
-const tones = { plain: "border-ink bg-leaf text-ink", me: "border-ink bg-ink text-ink-on", mate: "border-mate bg-leaf text-mate" } as const;
+const tones = {
+  plain: "border-ink bg-leaf text-ink",
+  me: "border-ink bg-ink text-ink-on",
+  mate: "border-mate bg-leaf text-mate",
+} as const;
 
 /** First letters of the first and the last word of a name. */
 export function toInitials(name: string): string {
@@ -10,7 +14,15 @@ export function toInitials(name: string): string {
   return (first + last).toUpperCase();
 }
 
-export function Initials({ name, tone = "plain", small }: { name: string; tone?: keyof typeof tones; small?: boolean }) {
+export function Initials({
+  name,
+  tone = "plain",
+  small,
+}: {
+  name: string;
+  tone?: keyof typeof tones;
+  small?: boolean;
+}) {
   return (
     <span
       title={name}

@@ -86,7 +86,14 @@ function MenuRows({ entries, parts }: { entries: readonly MenuEntry[]; parts: Pa
   });
 }
 
-type MenuProps = { trigger: ReactNode; label: string; entries: readonly MenuEntry[]; align?: "start" | "end"; head?: ReactNode; className?: string };
+type MenuProps = {
+  trigger: ReactNode;
+  label: string;
+  entries: readonly MenuEntry[];
+  align?: "start" | "end";
+  head?: ReactNode;
+  className?: string;
+};
 
 /** A menu under a button; arrow keys, type-ahead and Esc as everywhere. */
 export function Menu({ trigger, label, entries, align = "start", head, className }: MenuProps) {
@@ -94,7 +101,13 @@ export function Menu({ trigger, label, entries, align = "start", head, className
     <Radix.Root modal={false}>
       <Radix.Trigger asChild>{trigger}</Radix.Trigger>
       <Radix.Portal>
-        <Radix.Content aria-label={label} align={align} sideOffset={5} collisionPadding={8} className={cx(panelClass, "min-w-48 py-1", className)}>
+        <Radix.Content
+          aria-label={label}
+          align={align}
+          sideOffset={5}
+          collisionPadding={8}
+          className={cx(panelClass, "min-w-48 py-1", className)}
+        >
           {head}
           <MenuRows entries={entries} parts={Radix} />
         </Radix.Content>
@@ -104,7 +117,15 @@ export function Menu({ trigger, label, entries, align = "start", head, className
 }
 
 /** The same menu on the secondary button, on the menu key and on Shift F10. */
-export function ContextMenu({ children, label, entries }: { children: ReactNode; label: string; entries: readonly MenuEntry[] }) {
+export function ContextMenu({
+  children,
+  label,
+  entries,
+}: {
+  children: ReactNode;
+  label: string;
+  entries: readonly MenuEntry[];
+}) {
   return (
     <RadixContext.Root modal={false}>
       <RadixContext.Trigger asChild>{children}</RadixContext.Trigger>

@@ -11,7 +11,15 @@ const tones: Record<NoticeTone, string> = {
   good: "bg-good-wash border-good shadow-[inset_3px_0_0_var(--good)]",
 };
 
-type NoticeProps = { tone?: NoticeTone; title?: ReactNode; glyph?: ReactNode; action?: ReactNode; live?: boolean; className?: string; children?: ReactNode };
+type NoticeProps = {
+  tone?: NoticeTone;
+  title?: ReactNode;
+  glyph?: ReactNode;
+  action?: ReactNode;
+  live?: boolean;
+  className?: string;
+  children?: ReactNode;
+};
 
 /** A word on the page about what happened or what to know. `live` reads it out when it appears. */
 export function Notice({ tone = "plain", title, glyph, action, live, className, children }: NoticeProps) {

@@ -1,7 +1,14 @@
 import type { ReactNode } from "react";
 import { cx } from "./cx";
 
-type PageProps = { title: ReactNode; about?: ReactNode; actions?: ReactNode; foot?: ReactNode; wide?: boolean; children: ReactNode };
+type PageProps = {
+  title: ReactNode;
+  about?: ReactNode;
+  actions?: ReactNode;
+  foot?: ReactNode;
+  wide?: boolean;
+  children: ReactNode;
+};
 
 /** A page below the top bar: title row, scrolling body, and a foot that stays. */
 export function Page({ title, about, actions, foot, wide = true, children }: PageProps) {
@@ -23,7 +30,19 @@ export function Page({ title, about, actions, foot, wide = true, children }: Pag
 }
 
 /** A block of a page with its title; a rule or an ink line opens it. */
-export function Block({ title, about, actions, children, className }: { title: ReactNode; about?: ReactNode; actions?: ReactNode; children: ReactNode; className?: string }) {
+export function Block({
+  title,
+  about,
+  actions,
+  children,
+  className,
+}: {
+  title: ReactNode;
+  about?: ReactNode;
+  actions?: ReactNode;
+  children: ReactNode;
+  className?: string;
+}) {
   return (
     <section className={className}>
       <header className="mb-1.5 flex min-h-7 items-center gap-2">

@@ -15,12 +15,28 @@ type PopoverProps = {
   className?: string;
 };
 
-export function Popover({ trigger, children, label, side = "bottom", align = "start", open, onOpenChange, className }: PopoverProps) {
+export function Popover({
+  trigger,
+  children,
+  label,
+  side = "bottom",
+  align = "start",
+  open,
+  onOpenChange,
+  className,
+}: PopoverProps) {
   return (
     <Radix.Root {...(open === undefined ? {} : { open })} {...(onOpenChange ? { onOpenChange } : {})}>
       <Radix.Trigger asChild>{trigger}</Radix.Trigger>
       <Radix.Portal>
-        <Radix.Content aria-label={label} side={side} align={align} sideOffset={5} collisionPadding={8} className={cx(panelClass, className)}>
+        <Radix.Content
+          aria-label={label}
+          side={side}
+          align={align}
+          sideOffset={5}
+          collisionPadding={8}
+          className={cx(panelClass, className)}
+        >
           {children}
         </Radix.Content>
       </Radix.Portal>
@@ -29,7 +45,15 @@ export function Popover({ trigger, children, label, side = "bottom", align = "st
 }
 
 /** A panel that hangs on a place that is no button, as a cell in edit. */
-export function AnchoredPanel({ anchor, children, label, open, onOpenChange, className, keepFocus }: {
+export function AnchoredPanel({
+  anchor,
+  children,
+  label,
+  open,
+  onOpenChange,
+  className,
+  keepFocus,
+}: {
   anchor: ReactNode;
   children: ReactNode;
   label: string;
@@ -48,7 +72,12 @@ export function AnchoredPanel({ anchor, children, label, open, onOpenChange, cla
           align="start"
           sideOffset={-1}
           collisionPadding={8}
-          {...(keepFocus ? { onOpenAutoFocus: (event: Event) => event.preventDefault(), onCloseAutoFocus: (event: Event) => event.preventDefault() } : {})}
+          {...(keepFocus
+            ? {
+                onOpenAutoFocus: (event: Event) => event.preventDefault(),
+                onCloseAutoFocus: (event: Event) => event.preventDefault(),
+              }
+            : {})}
           className={cx(panelClass, className)}
         >
           {children}

@@ -34,7 +34,9 @@ export function Progress({ stage, done, figure, onCancel, className }: ProgressP
         className="h-[5px] overflow-hidden border border-ink-2"
       >
         <div
-          className={percent === undefined ? "h-full w-full hatch" : "h-full bg-ink-2 transition-[width] duration-(--calm)"}
+          className={
+            percent === undefined ? "h-full w-full hatch" : "h-full bg-ink-2 transition-[width] duration-(--calm)"
+          }
           {...(percent === undefined ? {} : { style: { width: `${percent}%` } })}
         />
       </div>

@@ -3,7 +3,8 @@ import { cx } from "./cx";
 
 export type Segment<Value extends string> = { value: Value; label: ReactNode; name?: string; disabled?: boolean };
 
-const shell = "inline-flex h-[26px] shrink-0 overflow-hidden rounded-edge border border-edge bg-leaf text-small whitespace-nowrap";
+const shell =
+  "inline-flex h-[26px] shrink-0 overflow-hidden rounded-edge border border-edge bg-leaf text-small whitespace-nowrap";
 
 type SegmentsProps<Value extends string> = {
   label: string;
@@ -16,10 +17,19 @@ type SegmentsProps<Value extends string> = {
 };
 
 /** One of a few, as radio buttons: solid ink is the one chosen. */
-export function Segments<Value extends string>({ label, options, value, onChange, name, className }: SegmentsProps<Value>) {
+export function Segments<Value extends string>({
+  label,
+  options,
+  value,
+  onChange,
+  name,
+  className,
+}: SegmentsProps<Value>) {
   const group = useId();
   return (
-    <fieldset className={cx(shell, "m-0 p-0 focus-within:has-focus-visible:outline-2 focus-within:outline-copper", className)}>
+    <fieldset
+      className={cx(shell, "m-0 p-0 focus-within:has-focus-visible:outline-2 focus-within:outline-copper", className)}
+    >
       <legend className="sr-only">{label}</legend>
       {options.map((option) => (
         <label
@@ -56,7 +66,13 @@ type ToggleSegmentsProps<Value extends string> = {
 };
 
 /** Several of a few: a copper foot line marks each one chosen. */
-export function ToggleSegments<Value extends string>({ label, options, values, onToggle, className }: ToggleSegmentsProps<Value>) {
+export function ToggleSegments<Value extends string>({
+  label,
+  options,
+  values,
+  onToggle,
+  className,
+}: ToggleSegmentsProps<Value>) {
   return (
     <div role="group" aria-label={label} className={cx(shell, className)}>
       {options.map((option) => {

@@ -2,7 +2,12 @@ import type { HTMLAttributes, ReactNode, TableHTMLAttributes, TdHTMLAttributes, 
 import { cx } from "./cx";
 
 /** A plain table of the drawing: hairlines between rows, an ink line under the head. Wrap wide ones in `TableScroll`. */
-export function Table({ className, caption, children, ...rest }: TableHTMLAttributes<HTMLTableElement> & { caption: string }) {
+export function Table({
+  className,
+  caption,
+  children,
+  ...rest
+}: TableHTMLAttributes<HTMLTableElement> & { caption: string }) {
   return (
     <table {...rest} className={cx("w-full border-collapse text-small", className)}>
       <caption className="sr-only">{caption}</caption>
@@ -11,7 +16,15 @@ export function Table({ className, caption, children, ...rest }: TableHTMLAttrib
   );
 }
 
-export function TableScroll({ label, children, className }: { label: string; children: ReactNode; className?: string }) {
+export function TableScroll({
+  label,
+  children,
+  className,
+}: {
+  label: string;
+  children: ReactNode;
+  className?: string;
+}) {
   return (
     <div role="region" aria-label={label} tabIndex={0} className={cx("overflow-x-auto", className)}>
       {children}
@@ -46,7 +59,12 @@ export function RowHead({ className, ...rest }: ThHTMLAttributes<HTMLTableCellEl
   );
 }
 
-export function Td({ right, mono, className, ...rest }: TdHTMLAttributes<HTMLTableCellElement> & Align & { mono?: boolean }) {
+export function Td({
+  right,
+  mono,
+  className,
+  ...rest
+}: TdHTMLAttributes<HTMLTableCellElement> & Align & { mono?: boolean }) {
   return (
     <td
       {...rest}

@@ -8,7 +8,17 @@ const tones = {
   mate: "border-mate text-mate",
 } as const;
 
-export function Tag({ tone = "plain", mono, className, children }: { tone?: keyof typeof tones; mono?: boolean; className?: string; children: ReactNode }) {
+export function Tag({
+  tone = "plain",
+  mono,
+  className,
+  children,
+}: {
+  tone?: keyof typeof tones;
+  mono?: boolean;
+  className?: string;
+  children: ReactNode;
+}) {
   return (
     <span
       className={cx(

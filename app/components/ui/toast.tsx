@@ -3,7 +3,14 @@ import { useEffect, useSyncExternalStore, type ReactNode } from "react";
 import { IconButton } from "./button";
 import { Notice, type NoticeTone } from "./notice";
 
-export type Toast = { id: number; tone: NoticeTone; title: string; detail?: ReactNode; action?: ReactNode; seconds?: number };
+export type Toast = {
+  id: number;
+  tone: NoticeTone;
+  title: string;
+  detail?: ReactNode;
+  action?: ReactNode;
+  seconds?: number;
+};
 
 let toasts: readonly Toast[] = [];
 let nextId = 1;
@@ -55,7 +62,11 @@ function ToastRow({ toast }: { toast: Toast }) {
 
 /** Once, in the page frame. */
 export function Toaster() {
-  const shown = useSyncExternalStore(subscribe, () => toasts, () => none);
+  const shown = useSyncExternalStore(
+    subscribe,
+    () => toasts,
+    () => none,
+  );
   return (
     <div className="pointer-events-none fixed right-4 bottom-16 z-50 grid gap-2 *:pointer-events-auto">
       {shown.map((toast) => (

@@ -2,7 +2,15 @@ import { Tooltip as Radix } from "radix-ui";
 import type { ReactNode } from "react";
 
 /** A short word about a control, on hover and focus. Never the only place of something that must be known. */
-export function Tooltip({ text, side = "bottom", children }: { text: string; side?: "top" | "bottom" | "left" | "right"; children: ReactNode }) {
+export function Tooltip({
+  text,
+  side = "bottom",
+  children,
+}: {
+  text: string;
+  side?: "top" | "bottom" | "left" | "right";
+  children: ReactNode;
+}) {
   return (
     <Radix.Root>
       <Radix.Trigger asChild>{children}</Radix.Trigger>

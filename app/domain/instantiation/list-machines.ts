@@ -4,12 +4,21 @@
  * declared members it has. Grouping by sub-objects of the type is common practice for retrofitted machines, no source.
  */
 import type { AddressSpace } from "../address-space/address-space";
-import { findMember, findTypeDefinition, getDisplayName, listChildren, listEdgesFrom, listEdgesTo } from "../address-space/browse";
-import { hasValueAttributes, isTypeNode, type Node } from "../address-space/node";
+import {
+  findMember,
+  findProperty,
+  findTypeDefinition,
+  getDisplayName,
+  listChildren,
+  listEdgesFrom,
+  listEdgesTo,
+} from "../address-space/browse";
+import { hasValueAttributes, isTypeNode, type Node, type XmlText } from "../address-space/node";
 import { formatNodeId, type NodeKey } from "../address-space/node-id";
 import { formatQualifiedName } from "../address-space/qualified-name";
 import { StandardDataType, StandardReferenceType, StandardType } from "../address-space/standard-ids";
 import { isSubtypeOf, listSupertypes } from "../address-space/type-hierarchy";
+import { readRange } from "../simulation/read-range";
 
 const DI_NAMESPACE = "http://opcfoundation.org/UA/DI/";
 
@@ -17,6 +26,14 @@ export type MachineGroup = {
   readonly name: string;
   /** One entry a declared member, in the order of the type: whether the machine has it. */
   readonly members: readonly { readonly name: string; readonly isPresent: boolean }[];
+};
+
+export type MachineFigure = {
+  readonly key: NodeKey;
+  readonly name: string;
+  /** Display name of the EngineeringUnits, "" where there are none. */
+  readonly unit: string;
+  readonly range: { readonly low: number; readonly high: number } | null;
 };
 
 export type Machine = {
@@ -31,7 +48,7 @@ export type Machine = {
   /** The Variable that tells what the machine does: the first whose data type is an enumeration. */
   readonly state: NodeKey | undefined;
   /** The analog value that tells it best: a speed where there is one, else the first. */
-  readonly figure: NodeKey | undefined;
+  readonly figure: MachineFigure | undefined;
 };
 
 export function listMachines(space: AddressSpace): Machine[] {
@@ -43,8 +60,13 @@ export function listMachines(space: AddressSpace): Machine[] {
 
 function isMachine(space: AddressSpace, node: Node): boolean {
   if (node.nodeClass !== "Object" || !hasMachineType(space, node.key)) return false;
-  const owners = listEdgesTo(space, node.key, StandardReferenceType.HierarchicalReferences).map((e) => space.getNode(e.source));
-  return owners.length > 0 && owners.every((owner) => owner?.nodeClass === "Object" && (!space.isOwn(owner.key) || isFolder(space, owner.key)));
+  const owners = listEdgesTo(space, node.key, StandardReferenceType.HierarchicalReferences).map((e) =>
+    space.getNode(e.source),
+  );
+  return (
+    owners.length > 0 &&
+    owners.every((owner) => owner?.nodeClass === "Object" && (!space.isOwn(owner.key) || isFolder(space, owner.key)))
+  );
 }
 
 function isFolder(space: AddressSpace, key: NodeKey): boolean {
@@ -70,8 +92,13 @@ function toMachine(space: AddressSpace, node: Node): Machine {
     typeKey,
     groups: typeKey === undefined ? [] : listGroups(space, node.key, typeKey),
     identification: readIdentification(space, node.key),
-    state: variables.find((v) => hasValueAttributes(v) && v.dataType !== undefined && isSubtypeOf(space, v.dataType, StandardDataType.Enumeration))?.key,
-    figure: findFigure(space, variables)?.key,
+    state: variables.find(
+      (v) =>
+        hasValueAttributes(v) &&
+        v.dataType !== undefined &&
+        isSubtypeOf(space, v.dataType, StandardDataType.Enumeration),
+    )?.key,
+    figure: findFigure(space, variables),
   };
 }
 
@@ -99,11 +126,15 @@ function listGroups(space: AddressSpace, machine: NodeKey, type: NodeKey): Machi
 function listDeclaredComponents(space: AddressSpace, key: NodeKey): Node[] {
   const node = space.getNode(key);
   const owners = node && isTypeNode(node) ? [...listSupertypes(space, key)].reverse().concat(key) : [key];
-  return owners.flatMap((owner) => listComponents(space, owner)).filter((m) => !m.browseName.name.startsWith("<") && m.nodeClass !== "Method");
+  return owners
+    .flatMap((owner) => listComponents(space, owner))
+    .filter((m) => !m.browseName.name.startsWith("<") && m.nodeClass !== "Method");
 }
 
 function listComponents(space: AddressSpace, key: NodeKey): Node[] {
-  return listEdgesFrom(space, key, StandardReferenceType.HasComponent).flatMap((edge) => space.getNode(edge.target) ?? []);
+  return listEdgesFrom(space, key, StandardReferenceType.HasComponent).flatMap(
+    (edge) => space.getNode(edge.target) ?? [],
+  );
 }
 
 /** Variables below the machine, no Properties, depth first; a visited set ends cycles. */
@@ -123,19 +154,34 @@ function listVariables(space: AddressSpace, key: NodeKey): Node[] {
 }
 
 /** UNECE common codes of speeds as unit ids (OPC 10000-8 §5.6.4.3: the code's characters as bytes): r/min, m/s, m/min. */
-const SPEED_UNITS: ReadonlySet<string> = new Set(["RPM", "MTS", "2X"].map((code) => String([...code].reduce((id, c) => id * 256 + c.charCodeAt(0), 0))));
+const SPEED_UNITS: ReadonlySet<string> = new Set(
+  ["RPM", "MTS", "2X"].map((code) => String([...code].reduce((id, c) => id * 256 + c.charCodeAt(0), 0))),
+);
 
-function findFigure(space: AddressSpace, variables: readonly Node[]): Node | undefined {
+function findFigure(space: AddressSpace, variables: readonly Node[]): MachineFigure | undefined {
   const analog = variables.filter((v) => {
     const type = findTypeDefinition(space, v.key);
     return type !== undefined && isSubtypeOf(space, type, StandardType.BaseAnalogType);
   });
-  return analog.find((v) => SPEED_UNITS.has(readUnitId(space, v.key) ?? "")) ?? analog[0];
+  const node = analog.find((v) => SPEED_UNITS.has(readUnitId(space, v.key) ?? "")) ?? analog[0];
+  if (!node) return undefined;
+  const range = findPropertyValue(space, node.key, "EURange");
+  return {
+    key: node.key,
+    name: getDisplayName(node),
+    unit: readText(findPropertyValue(space, node.key, "EngineeringUnits")?.xml) ?? "",
+    range: (range && readRange(range)) ?? null,
+  };
+}
+
+/** A Property of namespace 0 by BrowseName. */
+function findPropertyValue(space: AddressSpace, key: NodeKey, name: string): XmlText | undefined {
+  const property = findProperty(space, key, name);
+  return property && hasValueAttributes(property) ? property.value : undefined;
 }
 
 function readUnitId(space: AddressSpace, key: NodeKey): string | undefined {
-  const property = listChildren(space, key).find((m) => m.browseName.name === "EngineeringUnits");
-  return property && hasValueAttributes(property) ? /<(?:[\w.-]+:)?UnitId>\s*(-?\d+)\s*</.exec(property.value?.xml ?? "")?.[1] : undefined;
+  return /<(?:[\w.-]+:)?UnitId>\s*(-?\d+)\s*</.exec(findPropertyValue(space, key, "EngineeringUnits")?.xml ?? "")?.[1];
 }
 
 function readIdentification(space: AddressSpace, machine: NodeKey): Record<string, string> {
@@ -152,7 +198,9 @@ function readIdentification(space: AddressSpace, machine: NodeKey): Record<strin
 
 /** The text of a scalar or of a LocalizedText; undefined for structures and lists. */
 function readText(xml: string | undefined): string | undefined {
-  const text = /<(?:[\w.-]+:)?Text>([^<]*)</.exec(xml ?? "")?.[1] ?? /^\s*<(?!(?:[\w.-]+:)?ListOf)[^>]*>([^<]+)<\/[^>]*>\s*$/.exec(xml ?? "")?.[1];
+  const text =
+    /<(?:[\w.-]+:)?Text>([^<]*)</.exec(xml ?? "")?.[1] ??
+    /^\s*<(?!(?:[\w.-]+:)?ListOf)[^>]*>([^<]+)<\/[^>]*>\s*$/.exec(xml ?? "")?.[1];
   const trimmed = text?.trim();
   return trimmed ? decodeEntities(trimmed) : undefined;
 }

@@ -6,10 +6,17 @@ describe("toSafePath", () => {
     expect(toSafePath("/models/abc/sheet?node=x")).toBe("/models/abc/sheet?node=x");
   });
 
-  it.each([null, undefined, "", "models", "https://elsewhere.example/", "//elsewhere.example", "/\\elsewhere.example", "/a b", "/a\nb"])(
-    "leads home instead of to %j",
-    (wanted) => {
-      expect(toSafePath(wanted)).toBe("/");
-    },
-  );
+  it.each([
+    null,
+    undefined,
+    "",
+    "models",
+    "https://elsewhere.example/",
+    "//elsewhere.example",
+    "/\\elsewhere.example",
+    "/a b",
+    "/a\nb",
+  ])("leads home instead of to %j", (wanted) => {
+    expect(toSafePath(wanted)).toBe("/");
+  });
 });

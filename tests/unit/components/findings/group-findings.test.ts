@@ -6,10 +6,24 @@ import type { Severity } from "~/domain/core/result";
 
 function finding(rule: RuleId, severity: Severity, path: string): Finding {
   const browseName = path.split("/").at(-1) ?? "";
-  return { rule, severity, key: path as NodeKey, nodeId: path, browseName, path, message: `${rule} at ${path}`, clause: "OPC 10000-3", facts: [] };
+  return {
+    rule,
+    severity,
+    key: path as NodeKey,
+    nodeId: path,
+    browseName,
+    path,
+    message: `${rule} at ${path}`,
+    clause: "OPC 10000-3",
+    facts: [],
+  };
 }
 
-const findings = [finding("R016", "hint", "PumpType/Speed"), finding("R023", "error", "PumpType"), finding("R016", "warning", "TankType/Level")];
+const findings = [
+  finding("R016", "hint", "PumpType/Speed"),
+  finding("R023", "error", "PumpType"),
+  finding("R016", "warning", "TankType/Level"),
+];
 
 describe("groupFindings", () => {
   it("puts groups with errors first and the severest finding of a group first", () => {

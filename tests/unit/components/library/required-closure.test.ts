@@ -2,7 +2,12 @@ import { describe, expect, it } from "vitest";
 import { baseModelUri, listRequired, searchChoices } from "~/components/library/required-closure";
 import type { LibraryChoice } from "~/services/list-library-choices.server";
 
-function choice(title: string, modelUri: string, required: readonly string[], publicationDate = "2024-01-01"): LibraryChoice {
+function choice(
+  title: string,
+  modelUri: string,
+  required: readonly string[],
+  publicationDate = "2024-01-01",
+): LibraryChoice {
   return {
     id: `${modelUri} ${publicationDate}`,
     modelUri,

@@ -3,7 +3,9 @@ import { findNamespaceBase, proposeNamespaceUri, toNamespacePart } from "~/compo
 
 describe("proposeNamespaceUri", () => {
   it("joins the words of the name", () => {
-    expect(proposeNamespaceUri("http://merrow.example/UA/", "Rope braider")).toBe("http://merrow.example/UA/RopeBraider/");
+    expect(proposeNamespaceUri("http://merrow.example/UA/", "Rope braider")).toBe(
+      "http://merrow.example/UA/RopeBraider/",
+    );
   });
 
   it("keeps letters without their accents and drops other signs", () => {
@@ -17,7 +19,12 @@ describe("proposeNamespaceUri", () => {
 
 describe("findNamespaceBase", () => {
   it("takes what most of the team's namespaces share", () => {
-    const uris = ["http://merrow.example/UA/RopeBraider/", "http://merrow.example/UA/Hall/", "urn:other:thing", "http://other.example/X/"];
+    const uris = [
+      "http://merrow.example/UA/RopeBraider/",
+      "http://merrow.example/UA/Hall/",
+      "urn:other:thing",
+      "http://other.example/X/",
+    ];
     expect(findNamespaceBase(uris, "Merrow Ropeworks")).toBe("http://merrow.example/UA/");
   });
 

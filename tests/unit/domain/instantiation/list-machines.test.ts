@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import type { NodeKey } from "~/domain/address-space/node-id";
+import { OPC_UA_NAMESPACE, type NodeKey } from "~/domain/address-space/node-id";
 import { StandardDataType, StandardReferenceType, StandardType } from "~/domain/address-space/standard-ids";
 import { listMachines } from "~/domain/instantiation/list-machines";
 import { buildModel, type ExampleModel } from "../../../support/model-builder";
@@ -18,6 +18,10 @@ function addGroup(m: ExampleModel, parent: NodeKey, name: string, members: reado
   return group;
 }
 
+function addStandardProperty(m: ExampleModel, parent: NodeKey, name: string, xml: string): void {
+  m.property(name, { parent, value: { xml }, set: { browseName: { namespaceUri: OPC_UA_NAMESPACE, name } } });
+}
+
 const process: Group = { Process: ["Speed", "Counter"], Energy: ["Power"] };
 
 describe("listMachines", () => {
@@ -33,7 +37,13 @@ describe("listMachines", () => {
         "P1",
         "PressType",
         [
-          { name: "Process", members: [{ name: "Speed", isPresent: true }, { name: "Counter", isPresent: false }] },
+          {
+            name: "Process",
+            members: [
+              { name: "Speed", isPresent: true },
+              { name: "Counter", isPresent: false },
+            ],
+          },
           { name: "Energy", members: [{ name: "Power", isPresent: true }] },
         ],
       ],
@@ -68,12 +78,14 @@ describe("listMachines", () => {
       const first = analog("Pressure");
       const speed = analog("Speed");
       // UNECE Rec. 20: r/min is RPM, unit id 5394509 by the formula of OPC 10000-8 §5.6.4.3.
-      const unit = "<EUInformation><UnitId>5394509</UnitId></EUInformation>";
-      m.property("EngineeringUnits", { parent: speed, value: { xml: unit } });
+      const unit =
+        "<EUInformation><UnitId>5394509</UnitId><DisplayName><Text>r/min</Text></DisplayName></EUInformation>";
+      addStandardProperty(m, speed, "EngineeringUnits", unit);
+      addStandardProperty(m, speed, "EURange", "<Range><Low>0</Low><High>180</High></Range>");
       return { state: m.variable("State", { parent: press, dataType: states }), speed, first };
     });
     const [machine] = listMachines(space);
     expect(machine?.state).toBe(made.state);
-    expect(machine?.figure).toBe(made.speed);
+    expect(machine?.figure).toEqual({ key: made.speed, name: "Speed", unit: "r/min", range: { low: 0, high: 180 } });
   });
 });
