@@ -2,9 +2,10 @@ import { Lock } from "lucide-react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { findTypeDefinition } from "~/domain/address-space/browse";
 import { isTypeNode, type Node } from "~/domain/address-space/node";
+import { getOwnNamespace } from "~/domain/address-space/model-header";
 import { formatNodeId } from "~/domain/address-space/node-id";
 import { findSupertype } from "~/domain/address-space/type-hierarchy";
-import { findRuleName, formatPath, getNodeName, RULE_KEYS, type RuleName } from "../model/member-facts";
+import { findRuleName, getNodeName, RULE_KEYS, type RuleName } from "../model/member-facts";
 import { formatLocalNodeId, getNamespaceLabel } from "../model/namespace-label";
 import { TypeField } from "../model/type-search";
 import { useOpenModel } from "../model/use-model";
@@ -24,9 +25,11 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
         {(id) => (
           <div className="localised">
             <CommitField id={id} mono value={node.browseName.name} readOnly={readOnly} onCommit={(text) => actions.rename(node.key, text)} />
-            <span className="locale" title={node.browseName.namespaceUri}>
-              {getNamespaceLabel(node.browseName.namespaceUri)}
-            </span>
+            {node.browseName.namespaceUri === getOwnNamespace(space.own.header) ? null : (
+              <span className="locale" title={node.browseName.namespaceUri}>
+                {getNamespaceLabel(node.browseName.namespaceUri)}
+              </span>
+            )}
           </div>
         )}
       </Particular>
@@ -41,9 +44,6 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
           <Icon of={Lock} size={11} className="text-ink-3" label="is never given twice" />
           <span className="truncate font-words text-note text-ink-3">{node.nodeId.namespaceUri}</span>
         </span>
-      </Fact>
-      <Fact label="Path">
-        <span title={formatPath(space, node.key)}>{formatPath(space, node.key)}</span>
       </Fact>
       <TypeRow space={space} node={node} readOnly={readOnly} />
       {isTypeNode(node) ? (

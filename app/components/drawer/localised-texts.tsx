@@ -25,6 +25,7 @@ export function LocalisedTexts({ id, label, texts, readOnly, rows, onChange }: P
         <div key={`${index}-${text.locale ?? ""}`} className="localised">
           <CommitField
             {...(index === 0 ? { id } : { label: `${label} in ${text.locale ?? "no language"}` })}
+            className="pr-9!"
             value={text.text}
             readOnly={readOnly}
             {...(rows === undefined ? {} : { rows })}
@@ -37,6 +38,7 @@ export function LocalisedTexts({ id, label, texts, readOnly, rows, onChange }: P
         <div className="localised">
           <CommitField
             label={`${label} in ${added}`}
+            className="pr-9!"
             value=""
             readOnly={readOnly}
             {...(rows === undefined ? {} : { rows })}

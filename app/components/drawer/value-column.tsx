@@ -9,15 +9,18 @@ import { formatValueText } from "../model/value-text";
 import { Select } from "../ui/field";
 import { ArgumentTables } from "./argument-tables";
 import { EnumerationTable } from "./enumeration-table";
+import { MembersColumn } from "./members-column";
 import { CommitField, Particular } from "./particular";
 import { RangeDimension } from "./range-dimension";
+import { ReferenceTypeColumn } from "./reference-type-column";
 
 /** What the node carries: DataType, rank, unit and range of a Variable, arguments of a Method, fields of an enumeration. */
 export function ValueColumn({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
   if (node.nodeClass === "Method") return <ArgumentTables space={space} node={node} readOnly={readOnly} />;
   if (node.nodeClass === "DataType") return <EnumerationTable space={space} node={node} readOnly={readOnly} />;
   if (hasValueAttributes(node)) return <VariableValue space={space} node={node} readOnly={readOnly} />;
-  return null;
+  if (node.nodeClass === "ReferenceType") return <ReferenceTypeColumn node={node} readOnly={readOnly} />;
+  return <MembersColumn space={space} node={node} readOnly={readOnly} />;
 }
 
 type VariableProps = { space: AddressSpace; node: Extract<Node, { nodeClass: "Variable" | "VariableType" }>; readOnly: boolean };

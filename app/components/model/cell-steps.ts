@@ -14,7 +14,7 @@ import { parseRange } from "./analog-facts";
 import type { CellChange } from "./cell-change";
 import type { EditStep } from "./edit-steps";
 import { findTypes } from "./find-types";
-import { findSpokenUnit } from "./find-spoken-unit";
+import { findSpokenUnit } from "./unit-lookup";
 import { formatValueRank, RULE_KEYS, VALUE_RANKS, type RuleName } from "./member-facts";
 import { setTypeDefinition } from "./set-type-definition";
 import { parseValueText } from "./value-text";

@@ -12,6 +12,8 @@ import { ModelActions } from "./model-actions";
 import { ModelTransport, parseTransaction } from "./model-transport";
 import { PresenceStore } from "./presence-store";
 import { followFindings } from "./run-checks";
+import { listRoots } from "./list-roots";
+import { loadUnits } from "./unit-lookup";
 import { keepUnsaved, takeUnsaved } from "./unsaved-edits";
 import type { OpenModel } from "./use-model";
 import { ViewStore } from "./view-store";
@@ -51,9 +53,11 @@ export function openModel(workspace: ModelWorkspace, loaded: { space: AddressSpa
       }
     },
   });
+  void loadUnits();
   const findings = new FindingStore();
   const presence = new PresenceStore();
   const actions = new ModelActions(editor, view, canEdit);
+  selectFirst(loaded.space, view);
   const model: OpenModel = { workspace, editor, view, findings, presence, actions, isReady: true };
   const ends = [
     followFindings(editor, findings),
@@ -63,6 +67,13 @@ export function openModel(workspace: ModelWorkspace, loaded: { space: AddressSpa
     () => editor.dispose(),
   ];
   return { model, close: () => ends.forEach((end) => end()) };
+}
+
+/** Something is always looked at: the first type, or the first machine. */
+function selectFirst(space: AddressSpace, view: ViewStore): void {
+  if (view.getState().selection.some((key) => space.getNode(key) !== undefined)) return;
+  const [first] = listRoots(space);
+  if (first !== undefined) view.select([first]);
 }
 
 /** Edits of others come by the stream; after it was away the store asks for what it missed. */

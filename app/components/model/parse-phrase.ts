@@ -31,6 +31,8 @@ const HABITS: readonly Habit[] = [
 
 const ANALOG_WORDS = ["temperature", "pressure", "speed", "level", "position", "distance", "flow", "vibration", "humidity", "voltage", "current", "power", "energy", "torque", "force", "weight", "mass", "length", "angle", "set-point", "setpoint", "deviation", "factor"];
 
+const QUANTITY_WORDS = new Set([...ANALOG_WORDS, ...HABITS.flatMap((habit) => habit.words)]);
+
 const NUMBER = String.raw`[-−+]?\d+(?:[.,]\d+)?`;
 const RANGE = new RegExp(String.raw`(?:^|\s)(${NUMBER})\s*(?:…|\.{2,3}|–|to|bis)\s*(${NUMBER})(?=\s|$|[^\d.,])`, "i");
 
@@ -73,6 +75,8 @@ function takeUnit<Unit>(text: string, findUnit: UnitLookup<Unit>): { words: stri
   const words = text.split(/\s+/).filter((word) => word !== "");
   for (let take = Math.min(4, words.length - 1); take >= 1; take--) {
     const tail = words.slice(words.length - take);
+    // A word that names what is measured is no unit, although some tables know it as one.
+    if (take === 1 && QUANTITY_WORDS.has((tail[0] ?? "").toLowerCase())) break;
     const unit = findUnit(tail.join(" ").replace(/^[[(](.*)[\])]$/, "$1"));
     if (unit !== undefined) return { words: words.slice(0, words.length - take), unit };
   }

@@ -6,7 +6,7 @@ import { Combobox } from "../ui/combobox";
 import { Kbd } from "../ui/tag";
 import { formatRange, type UnitFacts } from "./analog-facts";
 import { findMemberOwner } from "./member-owner";
-import { findSpokenUnit } from "./find-spoken-unit";
+import { findSpokenUnit, useUnitTable } from "./unit-lookup";
 import { isInType } from "./list-parents";
 import { getNodeName } from "./member-facts";
 import { parsePhrase, type SpokenMember } from "./parse-phrase";
@@ -18,6 +18,7 @@ type Props = { space: AddressSpace; placeholder?: string; isBare?: boolean };
 export function SayInput({ space, placeholder, isBare = false }: Props) {
   const { actions } = useOpenModel();
   const selection = useSelection();
+  useUnitTable();
   const [phrase, setPhrase] = useState("");
   const [owner, setOwner] = useState<NodeKey>();
   const selected = findMemberOwner(space, selection.at(-1));
@@ -58,7 +59,7 @@ export function SayInput({ space, placeholder, isBare = false }: Props) {
       itemKey={(member) => member.name}
       renderItem={(member) => <SpokenRow space={space} member={member} target={target} />}
       onPick={add}
-      placeholder={placeholder ?? "oil level %"}
+      placeholder={placeholder ?? (parent === undefined ? "oil level %" : `oil level %  ${target}`)}
       none={phrase === "" ? "A name, a unit, a range: oil level % 0 … 100" : parent === undefined ? "Select the card that the member belongs to" : "Type a name first"}
       foot={
         <>
@@ -74,7 +75,7 @@ export function SayInput({ space, placeholder, isBare = false }: Props) {
   return (
     <>
       <label htmlFor="say-what-it-carries">
-        or say what it carries, {target} <Kbd>A</Kbd>
+        or say what it carries <Kbd>A</Kbd>
       </label>
       {combobox("say-what-it-carries")}
     </>

@@ -3,6 +3,7 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
 import { Combobox } from "../ui/combobox";
+import { cx } from "../ui/cx";
 import { Input } from "../ui/field";
 import { findTypes, type TypeHit, type TypeKind } from "./find-types";
 import { getNodeName } from "./member-facts";
@@ -78,6 +79,9 @@ type FieldProps = {
   onPick: (type: NodeKey) => void;
 };
 
+/** Looks like any other field although the text itself is not typed into. */
+export const EDITABLE = "cursor-pointer border-edge! bg-leaf! hover:border-ink!";
+
 /** Shows the chosen type; pressed or typed into, it becomes the search. */
 export function TypeField({ id, label, space, kind, value, readOnly = false, concreteOnly, onPick }: FieldProps) {
   const [search, setSearch] = useState<string>();
@@ -87,7 +91,7 @@ export function TypeField({ id, label, space, kind, value, readOnly = false, con
         {...(id === undefined ? { "aria-label": label } : { id })}
         size="small"
         readOnly
-        className={kind === "DataType" ? "cursor-pointer font-mono" : "cursor-pointer italic"}
+        className={cx(kind === "DataType" ? "font-mono" : "italic", !readOnly && EDITABLE)}
         value={getNodeName(space, value)}
         onClick={() => setSearch("")}
         onKeyDown={(event) => {

@@ -2,8 +2,9 @@ import { useMemo, useState } from "react";
 import { Combobox } from "../ui/combobox";
 import { Input } from "../ui/field";
 import { Kbd } from "../ui/tag";
+import { EDITABLE } from "./type-search";
 import type { UnitFacts } from "./analog-facts";
-import { searchUnits, UNIT_COUNT, UNIT_TABLE, type UnitHit } from "./find-spoken-unit";
+import { countUnits, searchUnits, UNIT_TABLE, useUnitTable, type UnitHit } from "./unit-lookup";
 import "./model.css";
 
 type SearchProps = {
@@ -20,8 +21,9 @@ const NONE = "none";
 
 /** Searches a unit by symbol, name or UNECE code; hangs on the cell and names its table. */
 export function UnitSearch({ label, id, initial, onPick, onCancel }: SearchProps) {
+  const isThere = useUnitTable();
   const [query, setQuery] = useState(initial);
-  const hits = useMemo<readonly (UnitHit | typeof NONE)[]>(() => (query.trim() === "" ? [NONE, ...searchUnits("", MOST)] : searchUnits(query, MOST)), [query]);
+  const hits = useMemo<readonly (UnitHit | typeof NONE)[]>(() => (query.trim() === "" ? [NONE, ...searchUnits("", MOST)] : searchUnits(query, MOST)), [query, isThere]);
   return (
     <Combobox<UnitHit | typeof NONE>
       label={label}
@@ -37,11 +39,11 @@ export function UnitSearch({ label, id, initial, onPick, onCancel }: SearchProps
       {...(onCancel ? { onCancel } : {})}
       placeholder="°C, degree, CEL"
       none="No unit of this name in the table"
-      panelClassName="w-115!"
+      panelClassName="w-130!"
       head={
         <>
           <span className="font-mono">
-            {hits.filter((hit) => hit !== NONE).length} of {UNIT_COUNT}
+            {hits.filter((hit) => hit !== NONE).length} of {countUnits()}
           </span>
           <span>{UNIT_TABLE}</span>
         </>
@@ -63,6 +65,7 @@ function UnitHitRow({ hit }: { hit: UnitHit }) {
       <span>{hit.name}</span>
       <code>{hit.code}</code>
       <code>{hit.unitId}</code>
+      <i>{hit.quantity}</i>
     </span>
   );
 }
@@ -92,7 +95,7 @@ export function UnitField({ id, label, value, readOnly = false, onPick }: FieldP
         {...(id === undefined ? { "aria-label": label } : { id })}
         size="small"
         readOnly
-        className="cursor-pointer"
+        className={readOnly ? "" : EDITABLE}
         placeholder="none"
         value={value ? `${value.symbol}   ${value.name === value.symbol ? "" : value.name}` : ""}
         onClick={() => setSearch("")}

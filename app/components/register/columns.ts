@@ -24,18 +24,18 @@ export type Column = {
 };
 
 export const COLUMNS: readonly Column[] = [
-  { id: "name", title: "Member", width: 250, grows: 1 },
-  { id: "type", title: "Type", width: 160, grows: 0.5 },
-  { id: "dataType", title: "DataType", width: 120, isMono: true },
-  { id: "rank", title: "Rank", width: 84 },
-  { id: "unit", title: "Unit", width: 76 },
-  { id: "range", title: "EURange", width: 104, isRight: true, isMono: true },
-  { id: "rule", title: "Rule", width: 92 },
-  { id: "access", title: "Access", width: 62, isMono: true },
-  { id: "value", title: "Value", width: 110, isMono: true },
-  { id: "description", title: "Description", width: 180, grows: 1.2 },
-  { id: "nodeId", title: "NodeId", width: 84, isMono: true },
-  { id: "finding", title: "Finding", width: 64 },
+  { id: "name", title: "Member", width: 216, grows: 1 },
+  { id: "type", title: "Type", width: 140, grows: 0.5 },
+  { id: "dataType", title: "DataType", width: 108, isMono: true },
+  { id: "rank", title: "Rank", width: 62 },
+  { id: "unit", title: "Unit", width: 64 },
+  { id: "range", title: "EURange", width: 100, isRight: true, isMono: true },
+  { id: "rule", title: "Rule", width: 90 },
+  { id: "access", title: "Access", width: 56, isMono: true },
+  { id: "value", title: "Value", width: 84, isMono: true },
+  { id: "description", title: "Description", width: 160, grows: 1.2 },
+  { id: "nodeId", title: "NodeId", width: 70, isMono: true },
+  { id: "finding", title: "Finding", width: 62 },
 ];
 
 /** The text of a cell; names of types come from their nodes. */

@@ -6,7 +6,7 @@ import type { AddressSpace, Edge } from "~/domain/address-space/address-space";
 import { listChildren } from "~/domain/address-space/browse";
 import type { Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
-import { isEntryObject } from "../sheet/default-choice";
+import { listRoots } from "../model/list-roots";
 import { listInheritedMembers } from "../model/member-facts";
 
 export type RegisterRow = {
@@ -33,15 +33,6 @@ export type RegisterView = {
 
 const SEPARATOR = " ";
 const DEEPEST = 24;
-
-/** Own types first, then where a client enters the model. */
-export function listRoots(space: AddressSpace): NodeKey[] {
-  const groups: Record<string, NodeKey[]> = { Object: [], ObjectType: [], VariableType: [], DataType: [], ReferenceType: [] };
-  for (const node of space.listOwnNodes()) {
-    if (node.nodeClass === "Object" ? isEntryObject(space, node.key) : node.nodeClass.endsWith("Type")) groups[node.nodeClass]?.push(node.key);
-  }
-  return ["ObjectType", "Object", "VariableType", "DataType", "ReferenceType"].flatMap((name) => groups[name] ?? []);
-}
 
 export function buildRows(space: AddressSpace, view: RegisterView): RegisterRow[] {
   const rows: RegisterRow[] = [];

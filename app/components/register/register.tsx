@@ -32,7 +32,7 @@ export function Register() {
   const [filter, setFilter] = useState(NO_FILTER);
   const [toggled, setToggled] = useState<ReadonlySet<string>>(new Set());
   const [adding, setAdding] = useState<AddRequest>();
-  const { columns, template, choice } = useRegisterColumns();
+  const { columns, template, width, choice } = useRegisterColumns();
 
   const rows = useMemo(() => {
     const text = filter.text.trim().toLowerCase();
@@ -94,8 +94,8 @@ export function Register() {
         onCopy={grid.onCopy}
         onPaste={grid.onPaste}
       >
-        <RegisterHead columns={columns} template={template} />
-        <div className="register-body" role="rowgroup" style={{ height: virtual.getTotalSize() }}>
+        <RegisterHead columns={columns} template={template} width={width} />
+        <div className="register-body" role="rowgroup" style={{ height: virtual.getTotalSize(), minWidth: width }}>
           {virtual.getVirtualItems().map((item) => {
             const row = rows[item.index];
             const node = row && space.getNode(row.key);

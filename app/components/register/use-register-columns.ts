@@ -7,7 +7,7 @@ const ALWAYS: ColumnId = "name";
 export type ColumnChoice = { readonly hidden: ReadonlySet<ColumnId>; readonly toggle: (id: ColumnId) => void };
 
 /** Which columns are shown; this browser remembers the choice. */
-export function useRegisterColumns(): { columns: readonly Column[]; template: string; choice: ColumnChoice } {
+export function useRegisterColumns(): { columns: readonly Column[]; template: string; width: number; choice: ColumnChoice } {
   const [hidden, setHidden] = useState<ReadonlySet<ColumnId>>(new Set());
 
   useEffect(() => {
@@ -28,6 +28,7 @@ export function useRegisterColumns(): { columns: readonly Column[]; template: st
   return useMemo(() => {
     const columns = COLUMNS.filter((column) => !hidden.has(column.id));
     const template = columns.map((column) => (column.grows ? `minmax(${column.width}px, ${column.grows}fr)` : `${column.width}px`)).join(" ");
-    return { columns, template, choice: { hidden, toggle } };
+    const width = columns.reduce((sum, column) => sum + column.width, 0);
+    return { columns, template, width, choice: { hidden, toggle } };
   }, [hidden, toggle]);
 }

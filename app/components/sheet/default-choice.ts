@@ -4,15 +4,16 @@
  */
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { findParent, findTypeDefinition, listMembers } from "~/domain/address-space/browse";
-import { isTypeNode, type Node } from "~/domain/address-space/node";
+import type { Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { formatQualifiedName } from "~/domain/address-space/qualified-name";
-import { StandardObject, StandardType } from "~/domain/address-space/standard-ids";
 import { findSupertype, listSupertypes } from "~/domain/address-space/type-hierarchy";
+import { isEntryObject } from "../model/list-roots";
 import { listInterfaces } from "../model/member-facts";
 
 const MOST_CARDS = 80;
 const MOST_METHODS = 4;
+const FEWEST_ROWS = 3;
 
 /** Keys in the order in which a reader meets them. */
 export function listDefaultCards(space: AddressSpace): NodeKey[] {
@@ -39,8 +40,10 @@ function addTypeCards(space: AddressSpace, type: Node, shown: Set<NodeKey>): voi
   for (const member of members) {
     if (member.nodeClass === "Object" && isGroup(space, member)) shown.add(member.key);
   }
+  // Methods stand beside a type that has other members to list; else its card would be empty.
   const methods = members.filter((member) => member.nodeClass === "Method");
-  if (type.nodeClass === "ObjectType" && methods.length <= MOST_METHODS) for (const method of methods) shown.add(method.key);
+  const listed = members.filter((member) => !shown.has(member.key)).length - methods.length;
+  if (listed >= FEWEST_ROWS && methods.length <= MOST_METHODS) for (const method of methods) shown.add(method.key);
 }
 
 /** An Object that is more than an instance of its type: it has members that the type does not declare. */
@@ -59,14 +62,4 @@ function addEntryCards(space: AddressSpace, key: NodeKey, shown: Set<NodeKey>): 
   const parent = findParent(space, key);
   if (parent !== undefined) shown.add(parent);
   shown.add(key);
-}
-
-/** An own Object that hangs below a node of a required model: where a client enters. Namespace metadata and encodings are none. */
-export function isEntryObject(space: AddressSpace, key: NodeKey): boolean {
-  const parent = findParent(space, key);
-  if (parent === undefined || parent === StandardObject.ServerNamespaces || space.isOwn(parent)) return false;
-  const parentNode = space.getNode(parent);
-  if (parentNode && isTypeNode(parentNode)) return false;
-  const type = findTypeDefinition(space, key);
-  return type !== StandardType.DataTypeEncodingType && type !== StandardType.NamespaceMetadataType;
 }

@@ -17,16 +17,19 @@ const SLOTS = [0, 8, -8, 4, -4];
 export function routeLines(lines: readonly Line[], rects: ReadonlyMap<string, Rect>): Route[] {
   const slots = new SlotTable();
   const tracks = new TrackTable();
+  const obstacles = new ObstacleTable(rects);
   const routes: Route[] = [];
   for (const line of lines) {
     const source = rects.get(line.from);
     const target = rects.get(line.to);
-    if (source && target) routes.push({ line, points: routeLine(line, source, target, slots, tracks) });
+    if (source && target) routes.push({ line, points: routeLine(line, source, target, { slots, tracks, obstacles }) });
   }
   return routes;
 }
 
-function routeLine(line: Line, source: Rect, target: Rect, slots: SlotTable, tracks: TrackTable): Point[] {
+type Tables = { readonly slots: SlotTable; readonly tracks: TrackTable; readonly obstacles: ObstacleTable };
+
+function routeLine(line: Line, source: Rect, target: Rect, { slots, tracks, obstacles }: Tables): Point[] {
   if (line.from === line.to) return routeLoop(source, line.sourceRow);
   const [from, to] = chooseSides(source, target, line.sourceRow !== undefined);
   // Lines of one type meet at the end that carries no mark, and at a supertype's heads.
@@ -35,14 +38,24 @@ function routeLine(line: Line, source: Rect, target: Rect, slots: SlotTable, tra
   const end = getAnchor(target, to, slots.take(line.to, to, `${line.edge.type} ${line.end}`), undefined);
   if (from === "top" || from === "bottom") return routeVertical(start, end);
   if (from === to) return routeAround(start, end, from, tracks, bundle);
-  if (Math.abs(start.y - end.y) < 1.5) return [start, { x: end.x, y: start.y }];
+  const ends = [line.from, line.to];
+  if (Math.abs(start.y - end.y) < 1.5 && obstacles.isFree(start.y, start.x, end.x, ends)) return [start, { x: end.x, y: start.y }];
   const direction = from === "right" ? 1 : -1;
   const gap = Math.abs(end.x - start.x);
   const isRoomy = gap > 2 * STUB + 16;
   const nearEnd = line.end === "subtype";
   const wanted = !isRoomy ? start.x + direction * (gap / 2) : nearEnd ? end.x - direction * STUB * 1.2 : start.x + direction * STUB;
   const x = tracks.take(wanted, nearEnd ? -direction : direction, start.y, end.y, bundle, isRoomy);
-  return [start, { x, y: start.y }, { x, y: end.y }, end];
+  if (obstacles.isFree(end.y, x, end.x, ends)) return [start, { x, y: start.y }, { x, y: end.y }, end];
+  return routeBetween(start, end, x, direction, ends, { slots, tracks, obstacles }, bundle);
+}
+
+/** Cards lie in the way: along a free lane between them, then down or up to the target. */
+function routeBetween(start: Point, end: Point, x: number, direction: number, ends: readonly string[], { tracks, obstacles }: Tables, bundle: string): Point[] {
+  const before = end.x - direction * STUB;
+  const lane = obstacles.findLane(end.y, x, before, ends);
+  const last = tracks.take(before, -direction, lane, end.y, `${bundle} far`, true);
+  return [start, { x, y: start.y }, { x, y: lane }, { x: last, y: lane }, { x: last, y: end.y }, end];
 }
 
 function chooseSides(source: Rect, target: Rect, isRow: boolean): [Side, Side] {
@@ -97,6 +110,54 @@ class SlotTable {
     let index = bundles.indexOf(bundle);
     if (index < 0) index = bundles.push(bundle) - 1;
     return SLOTS[index % SLOTS.length] ?? 0;
+  }
+}
+
+const BUCKET = 160;
+const CLEARANCE = 12;
+
+/** Finds cards that a level stretch would run through. */
+class ObstacleTable {
+  readonly #buckets = new Map<number, [key: string, rect: Rect][]>();
+
+  constructor(rects: ReadonlyMap<string, Rect>) {
+    for (const [key, rect] of rects) {
+      for (let at = Math.floor(rect.y / BUCKET); at <= Math.floor((rect.y + rect.height) / BUCKET); at++) {
+        const bucket = this.#buckets.get(at) ?? [];
+        bucket.push([key, rect]);
+        this.#buckets.set(at, bucket);
+      }
+    }
+  }
+
+  isFree(y: number, x1: number, x2: number, ends: readonly string[]): boolean {
+    return this.#listMet(y, x1, x2, ends).length === 0;
+  }
+
+  /** The free height nearest to the wished one, beside the edges of the cards in the way. */
+  findLane(y: number, x1: number, x2: number, ends: readonly string[]): number {
+    const tried = new Set<number>();
+    let wave = this.#listMet(y, x1, x2, ends);
+    for (let round = 0; round < 6 && wave.length > 0; round++) {
+      const lanes = wave.flatMap((rect) => [rect.y - CLEARANCE, rect.y + rect.height + CLEARANCE]).filter((lane) => !tried.has(lane));
+      lanes.sort((a, b) => Math.abs(a - y) - Math.abs(b - y));
+      const free = lanes.find((lane) => this.isFree(lane, x1, x2, ends));
+      if (free !== undefined) return free;
+      for (const lane of lanes) tried.add(lane);
+      wave = lanes.flatMap((lane) => this.#listMet(lane, x1, x2, ends));
+    }
+    return y;
+  }
+
+  #listMet(y: number, x1: number, x2: number, ends: readonly string[]): Rect[] {
+    const left = Math.min(x1, x2);
+    const right = Math.max(x1, x2);
+    const met: Rect[] = [];
+    for (const [key, rect] of this.#buckets.get(Math.floor(y / BUCKET)) ?? []) {
+      const isMet = rect.y < y && y < rect.y + rect.height && rect.x < right && left < rect.x + rect.width;
+      if (isMet && !ends.includes(key)) met.push(rect);
+    }
+    return met;
   }
 }
 

@@ -40,7 +40,7 @@ function SheetMap({ isArranging, onArrange }: { isArranging: boolean; onArrange:
         nodeBorderRadius={0}
         maskColor="transparent"
         maskStrokeColor="var(--copper)"
-        maskStrokeWidth={18}
+        maskStrokeWidth={1.5}
         ariaLabel="Map of the sheet"
       />
       <div className="sheet-map-tools">
@@ -56,7 +56,7 @@ function SheetMap({ isArranging, onArrange }: { isArranging: boolean; onArrange:
   );
 }
 
-const MAP_SIZE = { width: "100%", height: 45 };
+const MAP_SIZE = { width: 131, height: 45 };
 
 function MapButton({ label, onClick, icon: IconOf }: { label: string; onClick: () => void; icon: typeof Plus }) {
   return (

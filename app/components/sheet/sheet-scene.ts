@@ -7,7 +7,7 @@ import type { AddressSpace, Edge } from "~/domain/address-space/address-space";
 import { findTypeDefinition, getDisplayName, listMembers } from "~/domain/address-space/browse";
 import { hasValueAttributes, getDataType, isAbstract, isTypeNode, type Node } from "~/domain/address-space/node";
 import { formatNodeId, type NodeKey } from "~/domain/address-space/node-id";
-import { StandardReferenceType } from "~/domain/address-space/standard-ids";
+import { StandardReferenceType, StandardType } from "~/domain/address-space/standard-ids";
 import { isHierarchical } from "~/domain/address-space/type-hierarchy";
 import {
   findRuleName,
@@ -123,7 +123,7 @@ function buildCard(space: AddressSpace, node: Node, shown: ReadonlySet<NodeKey>,
   const folded = own.length + inherited.length - rows.length;
   const drawn = hasRows ? members.length - own.length : 0;
   const typeDefinition = isTypeNode(node) ? undefined : findTypeDefinition(space, node.key);
-  const typeName = typeDefinition !== undefined && !shown.has(typeDefinition) ? getNodeName(space, typeDefinition) : undefined;
+  const typeName = getInlineType(space, typeDefinition, shown);
   const card = {
     key: node.key,
     shape: SHAPES[node.nodeClass],
@@ -144,6 +144,14 @@ function buildCard(space: AddressSpace, node: Node, shown: ReadonlySet<NodeKey>,
   return { ...card, ...measureCard(card) };
 }
 
+/** Plain Objects and folders need no type beside their name. */
+const PLAIN_TYPES = new Set<NodeKey>([StandardType.BaseObjectType, StandardType.FolderType, StandardType.BaseDataVariableType, StandardType.PropertyType]);
+
+function getInlineType(space: AddressSpace, type: NodeKey | undefined, shown: ReadonlySet<NodeKey>): string | undefined {
+  if (type === undefined || PLAIN_TYPES.has(type) || (shown.has(type) && space.isOwn(type))) return undefined;
+  return getNodeName(space, type);
+}
+
 function buildRow(space: AddressSpace, node: Node, origin?: string): MemberRow {
   const typeDefinition = node.nodeClass === "Object" ? findTypeDefinition(space, node.key) : undefined;
   return {
@@ -151,7 +159,7 @@ function buildRow(space: AddressSpace, node: Node, origin?: string): MemberRow {
     name: getDisplayName(node),
     nodeClass: node.nodeClass,
     isProperty: isProperty(space, node),
-    ...(typeDefinition === undefined ? {} : { typeName: getNodeName(space, typeDefinition) }),
+    ...(typeDefinition === undefined || PLAIN_TYPES.has(typeDefinition) ? {} : { typeName: getNodeName(space, typeDefinition) }),
     dataType: formatDataType(space, node),
     unit: node.nodeClass === "Variable" ? findUnitSymbol(space, node.key) : "",
     cardinality: getCardinality(findRuleName(space, node.key)),
@@ -169,23 +177,25 @@ function measureCard(card: Omit<Card, "width" | "height">): { width: number; hei
   if (card.shape === "oval") return { width: snap(clamp(head + 56, 112, 320)), height: 38 };
   if (card.shape === "hexagon" || card.shape === "signpost") return { width: snap(clamp(head + 76, 140, 360)), height: 44 };
   const rows = card.rows.map(measureRow);
-  const width = snap(clamp(Math.max(head + label + 40, ...rows), card.rows.length > 0 ? 260 : 140, 400));
   const hasFoot = card.folded > 0 || card.drawn > 0;
+  const wide = card.rows.length > 0 || hasFoot;
+  const width = snap(clamp(Math.max(head + label + 40, ...rows), wide ? 264 : 140, 408), wide ? 24 : 4);
   return { width, height: HEAD_HEIGHT + card.rows.length * ROW_HEIGHT + (hasFoot ? FOOT_HEIGHT : 0) };
 }
 
 function measureRow(row: MemberRow): number {
   const name = row.name.length * WORD + (row.typeName ? (row.typeName.length + 2) * WORD : 0);
-  const right = row.origin ? (row.origin.length + 5) * 6 : (row.dataType.length + row.unit.length + 1) * MONO;
-  return 28 + name + 12 + right + 20 + 34;
+  const right = row.origin ? (row.origin.length + 5) * 6 : (row.dataType.length + row.unit.length) * MONO + 8;
+  return 106 + name + right;
 }
 
 function clamp(value: number, low: number, high: number): number {
   return Math.min(high, Math.max(low, value));
 }
 
-function snap(value: number): number {
-  return Math.ceil(value / 4) * 4;
+/** Whole steps, so that cards of one column mostly have one width. */
+function snap(value: number, step = 4): number {
+  return Math.ceil(value / step) * step;
 }
 
 function buildLines(space: AddressSpace, card: Card, cards: ReadonlyMap<NodeKey, Card>): Line[] {
@@ -201,6 +211,8 @@ function buildLines(space: AddressSpace, card: Card, cards: ReadonlyMap<NodeKey,
 function buildLine(space: AddressSpace, edge: Edge): Line | undefined {
   const { HasModellingRule, HasSubtype, HasComponent, HasProperty, HasTypeDefinition } = StandardReferenceType;
   if (edge.type === HasModellingRule) return undefined;
+  // The type of a required model stands inside the node; only own types are joined by a line.
+  if (edge.type === HasTypeDefinition && !space.isOwn(edge.target)) return undefined;
   const end = getLineEnd(space, edge.type);
   const says = edge.type === HasSubtype || edge.type === HasComponent || edge.type === HasProperty || edge.type === HasTypeDefinition;
   const cardinality = isHierarchical(space, edge.type) ? getCardinality(findRuleName(space, edge.target)) : "";

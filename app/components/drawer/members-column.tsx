@@ -1,0 +1,119 @@
+import { Plus } from "lucide-react";
+import { useMemo } from "react";
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import { findTypeDefinition, listMembers } from "~/domain/address-space/browse";
+import { isTypeNode, type Node } from "~/domain/address-space/node";
+import { listMissingMembers, listOfferedMembers, type OpenMember } from "~/domain/instantiation/missing-members";
+import { findRuleName, getClassName, isProperty, listInheritedMembers } from "../model/member-facts";
+import { useOpenModel } from "../model/use-model";
+import { Button } from "../ui/button";
+
+const MOST = 60;
+
+/** What a type or an Object is made of, and what an Object could have beside it. */
+export function MembersColumn({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
+  return (
+    <section aria-label="Members">
+      <Summary space={space} node={node} />
+      {!isTypeNode(node) && findTypeDefinition(space, node.key) !== undefined && space.isOwn(node.key) ? <OpenMembers space={space} node={node} readOnly={readOnly} /> : null}
+    </section>
+  );
+}
+
+function Summary({ space, node }: { space: AddressSpace; node: Node }) {
+  const members = listMembers(space, node.key);
+  const inherited = isTypeNode(node) ? listInheritedMembers(space, node.key).length : 0;
+  const rows = new Map<string, { all: number; mandatory: number; optional: number }>();
+  for (const member of members) {
+    const name = getClassName(member.nodeClass, isProperty(space, member));
+    const row = rows.get(name) ?? { all: 0, mandatory: 0, optional: 0 };
+    const rule = findRuleName(space, member.key);
+    row.all++;
+    if (rule === "Mandatory" || rule === "MandatoryPlaceholder") row.mandatory++;
+    if (rule === "Optional" || rule === "OptionalPlaceholder") row.optional++;
+    rows.set(name, row);
+  }
+  return (
+    <>
+      <h3>
+        Members <span className="font-mono font-normal">{members.length}</span>
+      </h3>
+      {rows.size === 0 ? <p className="text-small text-ink-3">None of its own yet.</p> : null}
+      {rows.size > 0 ? (
+        <table className="small-table is-counts" aria-label="Members by class">
+          <thead>
+            <tr>
+              <th scope="col">Class</th>
+              <th scope="col">All</th>
+              <th scope="col">Mandatory</th>
+              <th scope="col">Optional</th>
+            </tr>
+          </thead>
+          <tbody>
+            {[...rows].map(([name, row]) => (
+              <tr key={name}>
+                <td>{name}</td>
+                <td>{row.all}</td>
+                <td>{row.mandatory || ""}</td>
+                <td>{row.optional || ""}</td>
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      ) : null}
+      {inherited > 0 ? (
+        <p className="mt-1.5 text-note text-ink-3">
+          and <span className="font-mono">{inherited}</span> inherited
+        </p>
+      ) : null}
+    </>
+  );
+}
+
+function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
+  const { actions } = useOpenModel();
+  const { missing, offered } = useMemo(
+    () => ({ missing: listMissingMembers(space, node.key), offered: listOfferedMembers(space, node.key).filter((member) => !member.isPlaceholder).slice(0, MOST) }),
+    [space, node.key],
+  );
+  return (
+    <>
+      {missing.length > 0 ? (
+        <div className="mt-3">
+          <h3>
+            Missing of its type <span className="font-mono font-normal">{missing.length}</span>
+          </h3>
+          <p className="text-small text-ink-2">{missing.slice(0, 6).map(formatPath).join(", ")}{missing.length > 6 ? " …" : ""}</p>
+          {readOnly ? null : (
+            <Button size="small" className="mt-1.5" onClick={() => actions.addMissingMembers(node.key)}>
+              Add what is missing
+            </Button>
+          )}
+        </div>
+      ) : null}
+      {offered.length > 0 ? (
+        <div className="mt-3">
+          <h3>
+            Optional members of its type <span className="font-mono font-normal">{offered.length}</span>
+          </h3>
+          <ul className="grid gap-px">
+            {offered.map((member) => (
+              <li key={member.pathKey} className="reference-item">
+                <span>{formatPath(member)}</span>
+                {readOnly ? null : (
+                  <Button size="small" tone="bare" icon={Plus} className="ml-auto h-5!" aria-label={`Add ${formatPath(member)}`} onClick={() => actions.addOptionalMembers(node.key, [member.pathKey])}>
+                    Add
+                  </Button>
+                )}
+              </li>
+            ))}
+          </ul>
+        </div>
+      ) : null}
+    </>
+  );
+}
+
+function formatPath(member: OpenMember): string {
+  return member.path.map((name) => name.name).join(" / ");
+}
