@@ -1,10 +1,12 @@
 /** Start and end of the application inside its process; asked once by server.ts, or by the entry in development. */
 import { join } from "node:path";
 import { closeDatabase, migrateDatabase } from "../db/client.server";
+import { removeUnusedBlobs } from "../db/repositories/blobs.server";
 import { getEnvironment } from "../utils/env.server";
 import { onShutdown, runShutdown } from "../utils/shutdown.server";
 import { singleton } from "../utils/singleton.server";
 import { getLibrary } from "../library/library.server";
+import { removeOldUploads } from "./pending-uploads.server";
 import { seedDemo } from "./seed-demo.server";
 import { keepSetUpCode, needsSetUp } from "./set-up-organization.server";
 import { registerLiveTopics } from "./live-topics.server";
@@ -22,6 +24,8 @@ export function startApplication(): Promise<StartReport> {
 async function start(): Promise<StartReport> {
   await migrateDatabase();
   onShutdown("database", closeDatabase);
+  await removeUnusedBlobs();
+  removeOldUploads();
   getLibrary().usePackFolder(join(getEnvironment().dataFolder, "packs"));
   registerModelTopics();
   await registerLiveTopics();

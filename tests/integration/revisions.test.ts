@@ -77,3 +77,15 @@ test("the audit tells who did what, as a file for administrators only", async ()
   const developer = await app.signIn("dev@harbour.example", "a-long-enough-password");
   expect((await app.call("GET", "/team/audit.csv", { cookie: developer })).status).toBe(403);
 });
+
+test("cleaning up takes the bytes of what was deleted, and nothing that a revision names", async () => {
+  const { removeUnusedBlobs } = await import("~/db/repositories/blobs.server");
+  const uri = "http://merrow.example/UA/Gone/";
+  const made = await app.call("POST", "/api/v1/models?name=Gone", { cookie, body: writePumpNodeSet({ uri }), headers: { "content-type": "application/xml" } });
+  const { id } = (await made.json()) as { id: string };
+  expect(await removeUnusedBlobs()).toBe(0);
+  expect((await app.call("DELETE", `/api/v1/models/${id}`, { cookie })).status).toBe(204);
+  // The pack and the file of revision 0.
+  expect(await removeUnusedBlobs()).toBe(2);
+  expect(await fileOf(1)).toContain("PumpType");
+});

@@ -1,7 +1,7 @@
 /** Bytes by content: stored once however often they are named. */
 import { promisify } from "node:util";
 import { gunzip, gzip } from "node:zlib";
-import { eq } from "drizzle-orm";
+import { eq, sql } from "drizzle-orm";
 import { sha256 } from "../../utils/ids.server";
 import { getDatabase } from "../client.server";
 import { contentBlob } from "../schema/models";
@@ -33,4 +33,18 @@ export async function findBlobGzip(hash: string): Promise<Buffer | undefined> {
 export async function findBlob(hash: string): Promise<Buffer | undefined> {
   const stored = await findBlobGzip(hash);
   return stored ? unpack(stored) : undefined;
+}
+
+/** Removes the bytes that nothing names any more: of deleted models, old snapshots, removed uploads. */
+export async function removeUnusedBlobs(): Promise<number> {
+  const result = await getDatabase().run(sql`
+    delete from blob where hash not in (
+      select pack_hash from revision
+      union select file_hash from revision where file_hash is not null
+      union select json_extract(pin.value, '$.hash') from revision, json_each(revision.pinned) as pin
+      union select pack_hash from snapshot
+      union select pack_hash from uploaded_node_set
+      union select file_hash from uploaded_node_set
+    )`);
+  return result.rowsAffected;
 }
