@@ -5,7 +5,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, afterEach, expect, test } from "vitest";
 import { findFreePort } from "../support/app-server";
-import { writePumpNodeSet } from "../support/pump-nodeset";
+import { pumpUri, writePumpNodeSet } from "../support/pump-nodeset";
 import { projectRoot } from "../support/source-files";
 
 const running: ChildProcess[] = [];
@@ -157,6 +157,50 @@ test("seeding twice changes nothing, and --reset starts anew without touching th
   third.child.kill("SIGTERM");
   await third.ended;
   expect(readFileSync(join(data, "ferrule.db")).equals(ownDatabase)).toBe(true);
+});
+
+test("killed in the middle of a burst of edits, it loses none that it had acknowledged", async () => {
+  const data = makeFolder();
+  const port = await findFreePort();
+  const app = await startReady(["demo"], port, data);
+  const cookie = await signIn(app.url);
+  const created = await fetch(`${app.url}/api/v1/models?name=Pump`, {
+    method: "POST",
+    headers: { cookie, "content-type": "application/xml" },
+    body: writePumpNodeSet(),
+  });
+  const { id } = (await created.json()) as { id: string };
+  const acknowledged: number[] = [];
+  const burst = (async () => {
+    for (let base = 0; base < 2000; base++) {
+      const operations = [
+        {
+          kind: "setAttribute",
+          key: `nsu=${pumpUri};i=1002`,
+          attribute: "displayName",
+          value: [{ text: `Speed ${base}` }],
+        },
+      ];
+      const answer = await fetch(`${app.url}/models/${id}/transactions`, {
+        method: "POST",
+        headers: { cookie, "content-type": "application/json", origin: app.url },
+        body: JSON.stringify({ clientId: "w", base, transactions: [{ clientSeq: base, label: "rename", operations }] }),
+      });
+      if (answer.status === 200) acknowledged.push(base + 1);
+    }
+  })().catch(() => undefined);
+  await waitFor(() => acknowledged.length > 30, "some edits");
+  app.child.kill("SIGKILL");
+  await app.ended;
+  await burst;
+
+  const again = await startReady(["demo"], port, data);
+  const answer = await fetch(`${again.url}/models/${id}/transactions?since=0`, { headers: { cookie } });
+  const { transactions } = (await answer.json()) as { transactions: { seq: number }[] };
+  const kept = new Set(transactions.map((transaction) => transaction.seq));
+  expect(acknowledged.filter((seq) => !kept.has(seq))).toEqual([]);
+  again.child.kill("SIGTERM");
+  expect(await again.ended).toBe(0);
 });
 
 test("a taken port is told, ends with 1 and never becomes another port", async () => {
