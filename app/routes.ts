@@ -45,6 +45,7 @@ export default [
     route("models/:modelId", "routes/models.$modelId.tsx", [
       route("sheet", "routes/models.$modelId.sheet.tsx"),
       route("register", "routes/models.$modelId.register.tsx"),
+      route("types", "routes/models.$modelId.types.tsx"),
       route("findings", "routes/models.$modelId.findings.tsx"),
       route("about", "routes/models.$modelId.about.tsx"),
       route("test-server", "routes/models.$modelId.test-server.tsx"),

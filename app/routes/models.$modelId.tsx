@@ -47,6 +47,7 @@ export default function Model({ loaderData }: Route.ComponentProps) {
         tabs={[
           { to: `${base}/sheet`, label: "Sheet" },
           { to: `${base}/register`, label: "Register" },
+          { to: `${base}/types`, label: "Types" },
           {
             to: `${base}/findings`,
             label: (

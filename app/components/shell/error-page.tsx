@@ -56,7 +56,7 @@ export function ErrorPage({ error }: { error: unknown }) {
   const { pathname, search } = useLocation();
   return (
     <main id="main" className="grid min-h-0 flex-1 place-content-center overflow-auto p-6">
-      <div className="w-[min(520px,100%)]">
+      <div className="w-130 max-w-full">
         <BrokenWire label={words.status} />
         <h1 className="mt-6 text-title font-semibold tracking-[-0.02em]">{words.title}</h1>
         <p className="mt-1 text-body text-ink-2">{words.text}</p>

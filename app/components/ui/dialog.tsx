@@ -1,8 +1,9 @@
 import { X } from "lucide-react";
 import { Dialog as Radix } from "radix-ui";
 import type { ReactNode } from "react";
-import { IconButton } from "./button";
+import { buttonClass } from "./button";
 import { cx } from "./cx";
+import { Icon } from "./icon";
 
 type DialogProps = {
   title: string;
@@ -32,7 +33,9 @@ export function Dialog({ title, about, trigger, open, onOpenChange, children, cl
           <header className="flex items-center gap-2 border-b border-rule py-2 pr-2 pl-4">
             <Radix.Title className="flex-1 text-lead font-semibold">{title}</Radix.Title>
             <Radix.Close asChild>
-              <IconButton icon={X} label="Close" />
+              <button type="button" aria-label="Close" className={buttonClass("bare", "medium", "w-7 px-0!")}>
+                <Icon of={X} size={15} />
+              </button>
             </Radix.Close>
           </header>
           <div className="grid gap-4 p-4">
