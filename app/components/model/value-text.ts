@@ -6,6 +6,7 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import { getDataType, getValueRank, hasValueAttributes, type Node } from "~/domain/address-space/node";
 import { formatNodeId, parseNodeId } from "~/domain/address-space/node-id";
 import { StandardDataType } from "~/domain/address-space/standard-ids";
+import { formatValue } from "~/domain/nodeset/values/format-value";
 import { parseScalarText } from "~/domain/nodeset/values/scalar-text";
 import { array, scalar, type BuiltInType, type Scalar, type Variant } from "~/domain/nodeset/values/variant";
 import { findEuInformation, findRange } from "~/domain/nodeset/values/standard-values";
@@ -19,9 +20,14 @@ export function formatValueText(space: AddressSpace, node: Node): string {
   const variant = readTypedValue(space, node);
   if (!variant) return hasValueAttributes(node) && node.value ? "…" : "";
   const names = hasValueAttributes(node) ? getDataTypes(space).findEnumerationNames(getDataType(node)) : undefined;
+  if (isStructure(variant)) return clip(formatValue(variant, getDataTypes(space)));
   if (variant.shape === "scalar") return clip(formatScalar(variant.type, variant.value, variant, names));
   const texts = (variant.values as readonly Scalar[]).slice(0, 40).map((value) => formatScalar(variant.type, value, undefined, names));
   return clip(`[${texts.join(", ")}${variant.values.length > 40 ? ", …" : ""}]`);
+}
+
+function isStructure(variant: Variant): boolean {
+  return variant.type === "ExtensionObject" && !findEuInformation(variant) && !findRange(variant);
 }
 
 function clip(text: string): string {

@@ -7,10 +7,13 @@ import { z } from "zod";
 import { parseNodeId, MAX_NUMERIC_IDENTIFIER, type NodeId, type NodeKey } from "../address-space/node-id";
 import type { ModelEntry, ModelHeader } from "../address-space/model-header";
 import type { Node, NodeClass } from "../address-space/node";
+import { isWritableText } from "../nodeset/values/scalar-text";
+import { readFragment } from "../nodeset/values/xml-fragment";
 import type { AttributeName } from "./operation";
 
 const MAX_TEXT = 16_000_000;
-const text = z.string().max(MAX_TEXT);
+/** Characters that no XML file can hold (XML 1.0 §2.2): with one of these a model could not be exported any more. */
+const text = z.string().max(MAX_TEXT).refine(isWritableText, "Holds characters that XML cannot hold");
 const uint16 = z.int().min(0).max(65_535);
 const uint32 = z.int().min(0).max(4_294_967_295);
 const int32 = z.int().min(-2_147_483_648).max(2_147_483_647);
@@ -33,8 +36,12 @@ export const nodeIdSchema: z.ZodType<NodeId> = z
 const qualifiedName = z.strictObject({ namespaceUri: text.min(1), name: text });
 const localizedText = z.strictObject({ locale: text.optional(), text });
 const localizedTexts = z.array(localizedText);
-const otherAttributes = z.record(z.string(), text);
-const xmlText = z.strictObject({ xml: text, prefixes: otherAttributes.optional(), attributes: otherAttributes.optional() });
+const XML_NAME = /^[\p{L}_][\p{L}\p{N}_.-]*(?::[\p{L}_][\p{L}\p{N}_.-]*)?$/u;
+const otherAttributes = z.record(z.string().regex(XML_NAME), text);
+const prefixes = z.record(z.string().refine((name) => name === "" || XML_NAME.test(name)), text);
+const xmlText = z
+  .strictObject({ xml: text, prefixes: prefixes.optional(), attributes: otherAttributes.optional() })
+  .refine((value) => readFragment(value).ok, "Is not well-formed XML");
 const rolePermission = z.strictObject({ role: nodeKeySchema, permissions: uint32 });
 
 const declaredReference = z.strictObject({

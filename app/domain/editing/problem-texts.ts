@@ -76,6 +76,7 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "value.type": "A value of type {type} does not fit; expected is {expected}.",
   "value.rank": "The value's number of dimensions does not fit ValueRank {valueRank}.",
   "value.range": "A {type} goes from {low} to {high}.",
+  "value.character": "The value holds characters that XML cannot hold.",
   "value.dropped": "The value of {name} did not fit any more and was taken away.",
   "value.empty": "There is no value.",
   "value.element": "<{name}> is not a value of a built-in type.",

@@ -6,6 +6,7 @@ import { problem, type Problem, type Result } from "../../core/result";
 import { SpaceDataTypes } from "../../nodeset/values/data-type-shapes";
 import { checkVariant } from "../../nodeset/values/check-variant";
 import { readValue } from "../../nodeset/values/read-value";
+import { isWritableText } from "../../nodeset/values/scalar-text";
 import type { Variant } from "../../nodeset/values/variant";
 import { writeValue } from "../../nodeset/values/write-value";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
@@ -16,7 +17,7 @@ export type SetValueIntent = {
   readonly value?: Variant;
 };
 
-/** Problems: `value.no-variable`, `value.type`, `value.rank`, `value.range`. */
+/** Problems: `value.no-variable`, `value.type`, `value.rank`, `value.range`, `value.character`. */
 export function setValue(space: AddressSpace, context: CommandContext, intent: SetValueIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
   setValueOn(draft, intent.node, intent.value);
@@ -31,8 +32,13 @@ export function setValueOn(draft: EditDraft, key: NodeKey, value: Variant | unde
     return;
   }
   const misfit = findMisfit(draft.space, key, value);
-  if (misfit) draft.fail(misfit);
-  else draft.set(key, "value", writeValue(value, new SpaceDataTypes(draft.space)));
+  if (misfit) {
+    draft.fail(misfit);
+    return;
+  }
+  const written = writeValue(value, new SpaceDataTypes(draft.space));
+  if (isWritableText(written.xml)) draft.set(key, "value", written);
+  else draft.fail(problem("value.character", undefined, { node: key, attribute: "value" }));
 }
 
 function findMisfit(space: AddressSpace, key: NodeKey, value: Variant): Problem | undefined {

@@ -21,6 +21,9 @@ export type StructureField = {
   readonly isEnumeration: boolean;
   readonly valueRank: number;
   readonly isOptional: boolean;
+  /** Names of the elements inside an array, and the XML namespace of everything inside the field's element. */
+  readonly itemName: string;
+  readonly contentNamespace: string;
 };
 
 export type StructureShape = {
@@ -72,6 +75,8 @@ const knownShapes: readonly StructureShape[] = KNOWN_STRUCTURES.map(([dataType, 
     isEnumeration: false,
     valueRank,
     isOptional: false,
+    itemName: BUILT_IN_BY_KEY.get(standardKey(id)) ?? "",
+    contentNamespace: TYPES_XML_NAMESPACE,
   })),
 }));
 
@@ -137,7 +142,8 @@ export class SpaceDataTypes implements DataTypeLookup {
     const chain = [dataType, ...listSupertypes(this.#space, dataType)];
     const root = chain.indexOf(StandardDataType.Structure);
     if (!node || root < 0) return undefined;
-    const definitions = chain.slice(0, root).map((key) => this.#getDataType(key)?.definition);
+    // The fields of an option set's Definition are its bits; the structure has Value and ValidBits of OptionSet itself.
+    const definitions = chain.slice(0, root).map((key) => this.#getDataType(key)?.definition).filter((d) => !d?.isOptionSet);
     const isUnion = definitions.some((d) => d?.isUnion === true) || chain.includes(StandardDataType.Union);
     const fields = definitions.reverse().flatMap((d) => d?.fields ?? []).map((f) => this.#makeField(f));
     return {
@@ -157,15 +163,21 @@ export class SpaceDataTypes implements DataTypeLookup {
     const node = this.#getDataType(dataType);
     const isAny = dataType === StandardDataType.Structure || field.allowSubTypes === true || node?.isAbstract === true;
     const isStructure = builtInType === "ExtensionObject";
+    const isInline = isStructure && !isAny;
+    const isEnumeration = listSupertypes(this.#space, dataType).includes(StandardDataType.Enumeration);
+    // A field that allows subtypes of a simple type carries a Variant (OPC 10000-3 §8.49).
+    const carrier = field.allowSubTypes === true && builtInType !== undefined && !isStructure ? "Variant" : builtInType;
+    const isNamedByType = node !== undefined && (isInline || (isEnumeration && carrier !== "Variant"));
     return {
       name: field.name,
       dataType,
-      // A field that allows subtypes of a simple type carries a Variant (OPC 10000-3 §8.49).
-      builtInType: field.allowSubTypes === true && builtInType !== undefined && !isStructure ? "Variant" : builtInType,
-      isInline: isStructure && !isAny,
-      isEnumeration: listSupertypes(this.#space, dataType).includes(StandardDataType.Enumeration),
+      builtInType: carrier,
+      isInline,
+      isEnumeration: isEnumeration && carrier !== "Variant",
       valueRank: field.valueRank ?? -1,
       isOptional: field.isOptional === true,
+      itemName: isNamedByType ? toXmlName(node.browseName.name) : (carrier ?? ""),
+      contentNamespace: isNamedByType ? this.#findXmlNamespace(node) : TYPES_XML_NAMESPACE,
     };
   }
 

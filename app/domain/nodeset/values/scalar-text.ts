@@ -13,6 +13,19 @@ export const INTEGER_RANGES: Readonly<Partial<Record<BuiltInType, readonly [low:
   UInt64: [0n, 18_446_744_073_709_551_615n],
 };
 
+/** Whether XML can hold every character (XML 1.0 §2.2): no control characters but tab and line ends, no lone surrogates. */
+export function isWritableText(text: string): boolean {
+  if (LONE_SURROGATE.test(text)) return false;
+  for (let i = 0; i < text.length; i++) {
+    const code = text.charCodeAt(i);
+    if (code < 0x20 ? code !== 9 && code !== 10 && code !== 13 : code >= 0xfffe) return false;
+  }
+  return true;
+}
+
+/** With the flag u a pair counts as one character, so this finds halves only. */
+const LONE_SURROGATE = /\p{Surrogate}/u;
+
 const DATE_TIME = /^-?\d{4,}-\d\d-\d\dT\d\d:\d\d:\d\d(?:\.\d+)?(?:Z|[+-]\d\d:\d\d)?$/;
 const GUID = /^[0-9a-f]{8}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{12}$/i;
 const BASE64 = /^(?:[A-Za-z0-9+/]{4})*(?:[A-Za-z0-9+/]{2}==|[A-Za-z0-9+/]{3}=)?$/;

@@ -150,14 +150,13 @@ class ValueWriter {
   }
 
   #field(shape: StructureShape, field: StructureField, variant: Variant): Element {
-    const name = toXmlName(field.name);
-    const element = this.#fieldContent(name, field, variant);
-    if (shape.xmlNamespace === TYPES_XML_NAMESPACE || !element.children?.length) return element;
-    return { ...element, children: element.children.map((child) => inTypesNamespace(child, field)) };
+    const element = this.#fieldContent(toXmlName(field.name), field, variant);
+    if (shape.xmlNamespace === field.contentNamespace || !element.children?.length) return element;
+    return { ...element, children: element.children.map((child) => withAttributes(child, { xmlns: field.contentNamespace })) };
   }
 
   #fieldContent(name: string, field: StructureField, variant: Variant): Element {
-    const itemName = this.#itemName(field, variant);
+    const { itemName } = field;
     const one = (value: Scalar, as: string): Element => {
       if (field.isInline && variant.type === "ExtensionObject") return this.#inlineStructure(as, value as ExtensionObject | null);
       if (field.isEnumeration && variant.type === "Int32") return leaf(as, this.#enumerationText(field, value as number));
@@ -176,11 +175,6 @@ class ValueWriter {
           branch("Elements", variant.values.map((value) => one(value, itemName))),
         ]);
     }
-  }
-
-  #itemName(field: StructureField, variant: Variant): string {
-    if (field.isInline) return this.#types.findStructure(field.dataType)?.elementName ?? variant.type;
-    return field.builtInType === "Variant" ? "Variant" : variant.type;
   }
 
   #inlineStructure(name: string, value: ExtensionObject | null): Element {
@@ -213,11 +207,6 @@ export function getEncodingMask(shape: StructureShape, value: StructureValue): n
   return shape.fields
     .filter((field) => field.isOptional)
     .reduce((mask, field, i) => (value.fields[field.name] === undefined ? mask : mask + 2 ** i), 0);
-}
-
-/** Built-in types keep their namespace inside a body of another one: `<Text xmlns="…Types.xsd">`. */
-function inTypesNamespace(child: Element, field: StructureField): Element {
-  return field.isInline ? child : withAttributes(child, { xmlns: TYPES_XML_NAMESPACE });
 }
 
 function toVariant(variant: Variant, value: Scalar): Variant {
