@@ -191,6 +191,15 @@ export class CheckContext {
     return !keys || keys.size === 0 ? [] : [...keys].sort();
   }
 
+  /** Whether an id, a name or a value of an own node is in the namespace. */
+  isNamespaceUsed(namespaceUri: string): boolean {
+    return this.#listOwnTagged(tagOf.namespace(namespaceUri)).length > 0;
+  }
+
+  hasOwnDataTypes(): boolean {
+    return this.#listOwnTagged(tagOf.dataTypes).length > 0;
+  }
+
   /** Whether a loaded model defines the namespace; the own model counts. */
   isNamespaceLoaded(namespaceUri: string): boolean {
     return this.#requiredUris.has(namespaceUri) || this.header.models.some((m) => m.modelUri === namespaceUri);

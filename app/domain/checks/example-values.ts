@@ -92,3 +92,8 @@ export function localizedTexts(...texts: readonly string[]): XmlText {
   const inner = texts.map((t) => `<LocalizedText><Text>${t}</Text></LocalizedText>`).join("");
   return { xml: `<ListOfLocalizedText ${TYPES}>${inner}</ListOfLocalizedText>` };
 }
+
+/** A NodeId by its text, with `nsu=` outside namespace 0. */
+export function nodeId(text: string): XmlText {
+  return { xml: `<NodeId ${TYPES}><Identifier>${text}</Identifier></NodeId>` };
+}

@@ -131,7 +131,58 @@ import { r133 } from "./rules/r133-multi-state-value-discrete";
 import { r134 } from "./rules/r134-discrete-item-concrete";
 import { r135 } from "./rules/r135-array-items";
 import { r136 } from "./rules/r136-value-precision";
+import { r137 } from "./rules/r137-no-own-base-data-type";
+import { r138 } from "./rules/r138-xml-element-leaf";
+import { r139 } from "./rules/r139-enum-strings-or-values";
+import { r140 } from "./rules/r140-enum-strings-zero-based";
+import { r141 } from "./rules/r141-enum-property-agrees";
+import { r142 } from "./rules/r142-enum-values-unique";
+import { r143 } from "./rules/r143-enum-subtype-restricts";
+import { r144 } from "./rules/r144-definition-present";
+import { r145 } from "./rules/r145-field-data-type";
+import { r146 } from "./rules/r146-field-rank";
+import { r147 } from "./rules/r147-field-names-unique";
+import { r148 } from "./rules/r148-field-flags";
+import { r149 } from "./rules/r149-max-string-length";
+import { r150 } from "./rules/r150-union-parent";
+import { r151 } from "./rules/r151-recursive-structure";
+import { r152 } from "./rules/r152-encodings-present";
+import { r153 } from "./rules/r153-encodings-of-concrete";
+import { r154 } from "./rules/r154-option-set-values";
+import { r155 } from "./rules/r155-option-set-subtype";
+import { r156 } from "./rules/r156-bit-numbers";
+import { r158 } from "./rules/r158-argument-properties";
+import { r159 } from "./rules/r159-argument-names";
+import { r160 } from "./rules/r160-argument-type-and-rank";
+import { r161 } from "./rules/r161-no-aliases-in-values";
+import { r162 } from "./rules/r162-method-override-signature";
+import { r163 } from "./rules/r163-empty-argument-list";
+import { r164 } from "./rules/r164-user-executable";
+import { r165 } from "./rules/r165-event-type-target";
+import { r167 } from "./rules/r167-condition-source";
+import { r168 } from "./rules/r168-alarm-below-variable";
+import { r169 } from "./rules/r169-model-uri-listed";
+import { r170 } from "./rules/r170-used-namespaces-required";
+import { r171 } from "./rules/r171-base-model-required";
+import { r172 } from "./rules/r172-namespace-index";
+import { r173 } from "./rules/r173-unused-namespace";
+import { r174 } from "./rules/r174-model-version";
+import { r175 } from "./rules/r175-publication-date";
+import { r176 } from "./rules/r176-required-model-satisfied";
+import { r177 } from "./rules/r177-required-model-content";
+import { r178 } from "./rules/r178-no-circular-dependency";
+import { r180 } from "./rules/r180-xml-schema-uri";
 import { r181 } from "./rules/r181-namespace-metadata";
+import { r182 } from "./rules/r182-metadata-arrays";
+import { r183 } from "./rules/r183-parent-node-id";
+import { r184 } from "./rules/r184-design-tool-only";
+import { r185 } from "./rules/r185-release-status";
+import { r186 } from "./rules/r186-purpose";
+import { r187 } from "./rules/r187-method-declaration";
+import { r188 } from "./rules/r188-aliases";
+import { r192 } from "./rules/r192-value-namespace";
+import { r194 } from "./rules/r194-translation-count";
+import { r197 } from "./rules/r197-role-permissions";
 
 export const RULES: readonly Rule[] = [
   r001,
@@ -265,7 +316,58 @@ export const RULES: readonly Rule[] = [
   r134,
   r135,
   r136,
+  r137,
+  r138,
+  r139,
+  r140,
+  r141,
+  r142,
+  r143,
+  r144,
+  r145,
+  r146,
+  r147,
+  r148,
+  r149,
+  r150,
+  r151,
+  r152,
+  r153,
+  r154,
+  r155,
+  r156,
+  r158,
+  r159,
+  r160,
+  r161,
+  r162,
+  r163,
+  r164,
+  r165,
+  r167,
+  r168,
+  r169,
+  r170,
+  r171,
+  r172,
+  r173,
+  r174,
+  r175,
+  r176,
+  r177,
+  r178,
+  r180,
   r181,
+  r182,
+  r183,
+  r184,
+  r185,
+  r186,
+  r187,
+  r188,
+  r192,
+  r194,
+  r197,
 ];
 
 const byId = new Map<string, Rule>(RULES.map((rule) => [rule.id, rule] as const));

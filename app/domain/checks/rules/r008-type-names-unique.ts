@@ -28,7 +28,7 @@ export const r008: NodeRule = {
   examples: {
     good: {
       text: "Each type has a name of its own.",
-      build: (m) => (m.objectType("PumpType"), m.dataType("PumpStateDataType")),
+      build: (m) => (m.objectType("PumpType"), m.variableType("PumpStateType")),
     },
     bad: {
       text: "A DataType named like an ObjectType of the same namespace.",

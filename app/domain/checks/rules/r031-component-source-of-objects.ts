@@ -1,6 +1,8 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { edgesDeclaredAt } from "../edges";
+import { findTypeDefinition, isKindOf } from "../lookups";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { StandardNode } from "../standard-nodes";
 
 export const r031: NodeRule = {
   id: "R031",
@@ -17,6 +19,14 @@ export const r031: NodeRule = {
       const target = ctx.node(edge.target);
       if (!source || !target || (target.nodeClass !== "Object" && target.nodeClass !== "Method")) continue;
       if (source.nodeClass === "Object" || source.nodeClass === "ObjectType") continue;
+      // An alarm below a Variable is a finding of R168.
+      const type = findTypeDefinition(ctx, edge.target);
+      if (
+        source.nodeClass.startsWith("Variable") &&
+        type !== undefined &&
+        isKindOf(ctx, type, StandardNode.ConditionType)
+      )
+        continue;
       report({
         attribute: "references",
         message: `The ${target.nodeClass} ${target.browseName.name} cannot be a component of the ${source.nodeClass} ${source.browseName.name}.`,

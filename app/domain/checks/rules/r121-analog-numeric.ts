@@ -2,7 +2,7 @@ import { getDataType, hasValueAttributes } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import { isNumeric } from "../data-types";
 import { attributeFix } from "../fixes";
-import { findTypeDefinition, isKindOf, listSupertypes } from "../lookups";
+import { findTypeDefinition, isKindOf } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
 export const r121: NodeRule = {
@@ -11,20 +11,19 @@ export const r121: NodeRule = {
   severity: "error",
   clause: `${clause(8, "§5.3.2.2, Table 2")}, ${clause(3, "§6.2.8")}`,
   priority: 1,
-  concerns: ["Variable", "VariableType"],
+  concerns: ["Variable"],
   condition: "The DataType of a Variable of BaseAnalogType or a subtype is Number or below.",
   why: "Range, unit and deadband have no meaning for anything else, and clients that plot the item fail.",
   check(node, ctx, report) {
     if (!hasValueAttributes(node)) return;
-    const type =
-      node.nodeClass === "VariableType" ? listSupertypes(ctx, node.key)[0] : findTypeDefinition(ctx, node.key);
+    const type = findTypeDefinition(ctx, node.key);
     if (type === undefined || !isKindOf(ctx, type, T.BaseAnalogType) || isNumeric(ctx, getDataType(node)) !== false)
       return;
     report({
       attribute: "dataType",
       message: `${node.browseName.name} is an analog item of the DataType ${ctx.nameOf(getDataType(node))}, which is no number.`,
       facts: [
-        `${node.nodeClass === "VariableType" ? "Supertype" : "HasTypeDefinition"}: ${ctx.describe(type)}`,
+        `HasTypeDefinition: ${ctx.describe(type)}`,
         `DataType: ${ctx.describe(getDataType(node))}${node.dataType === undefined ? " (left out)" : ""}`,
       ],
     });

@@ -14,7 +14,7 @@ describe("runChecks", () => {
       fc.property(garbageSpace([getStandardLayer()]), (space) => {
         expect(runChecks(space)).toEqual(runChecks(space));
       }),
-      { numRuns: 300 },
+      { numRuns: 40 },
     );
   });
 
@@ -23,7 +23,7 @@ describe("runChecks", () => {
       fc.property(garbageSpace([]), (space) => {
         expect(() => runChecks(space)).not.toThrow();
       }),
-      { numRuns: 100 },
+      { numRuns: 40 },
     );
   });
 
@@ -41,7 +41,7 @@ describe("runChecks", () => {
         const other = AddressSpace.of(space.layers.slice(0, -1), buildLayer(space.own.header, reversed));
         expect(runChecks(other)).toEqual(runChecks(space));
       }),
-      { numRuns: 60 },
+      { numRuns: 20 },
     );
   });
 
@@ -84,7 +84,7 @@ describe("updateChecks", () => {
           }
         },
       ),
-      { numRuns: 300 },
+      { numRuns: 40 },
     );
   });
 

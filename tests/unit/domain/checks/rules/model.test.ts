@@ -39,7 +39,9 @@ describeRule("R181", {
 });
 
 describe("toReport", () => {
-  const { space, made } = buildModel((m) => m.objectType("PumpType", { set: { displayName: [] } }));
+  const { space, made } = buildModel((m) =>
+    m.objectType("PumpType", { set: { displayName: [], description: [{ text: "A pump." }] } }),
+  );
 
   test("gives findings the places of their nodes, in the order of lines", () => {
     const report = toReport(runChecks(space), { file: "press.xml", lines: new Map([[made, { line: 7, column: 3 }]]) });

@@ -1,0 +1,62 @@
+import { hasValueAttributes } from "../../address-space/node";
+import { StandardDataType as D } from "../../address-space/standard-ids";
+import { argumentList } from "../example-values";
+import { clause, type NodeRule } from "../rule";
+import type { ValueElement } from "../value-element";
+import { findValueRoot } from "../value-xml";
+
+const NODE_ID = /^(?:svr=\d+;)?(?:svu=[^;]*;)?(?:ns=\d+;|nsu=[^;]*;)?[isgb]=/;
+
+export const r161: NodeRule = {
+  id: "R161",
+  title: "No aliases inside values",
+  severity: "error",
+  clause: clause(6, "§F.2"),
+  priority: 1,
+  concerns: ["Variable", "VariableType"],
+  condition: "NodeIds inside a Value are written as NodeIds, never as an alias of the file.",
+  why: "Aliases are not resolved inside values: loaders read a null NodeId or stop.",
+  check(node, _ctx, report) {
+    if (!hasValueAttributes(node) || !node.value?.xml.includes("Identifier")) return;
+    const root = findValueRoot(node.value);
+    const alias = root && findAlias(root);
+    if (alias === undefined) return;
+    report({
+      attribute: "value",
+      message: `The Value of ${node.browseName.name} has “${alias}” in the place of a NodeId.`,
+      facts: [`Identifier: ${alias}`, "Asked for: a NodeId like i=12"],
+    });
+  },
+  examples: {
+    good: {
+      text: "i=11.",
+      build: (m) =>
+        void m.property("0:InputArguments", {
+          parent: m.method("Start", { parent: m.object("Pump1") }),
+          dataType: D.Argument,
+          valueRank: 1,
+          value: argumentList({ name: "Speed", dataType: "i=11" }),
+        }),
+    },
+    bad: {
+      text: "Double.",
+      build: (m) =>
+        m.property("0:InputArguments", {
+          parent: m.method("Start", { parent: m.object("Pump1") }),
+          dataType: D.Argument,
+          valueRank: 1,
+          value: argumentList({ name: "Speed", dataType: "Double" }),
+        }),
+    },
+  },
+};
+
+function findAlias(root: ValueElement): string | undefined {
+  const open: ValueElement[] = [root];
+  for (let at = open.pop(); at; at = open.pop()) {
+    const text = at.text.trim();
+    if (at.name === "Identifier" && at.children.length === 0 && text !== "" && !NODE_ID.test(text)) return text;
+    open.push(...at.children);
+  }
+  return undefined;
+}
