@@ -58,6 +58,6 @@ function Caption({ x, y, text }: { x: number; y: number; text: string }) {
 function widen({ low, high }: Range): Range {
   const span = high - low;
   if (!(span > 0) || !Number.isFinite(span)) return { low, high };
-  const step = 10 ** Math.floor(Math.log10(span)) / 2;
+  const step = 10 ** Math.floor(Math.log10(span)) / 5;
   return { low: Math.floor((low - span * 0.12) / step) * step, high: Math.ceil((high + span * 0.12) / step) * step };
 }

@@ -1,5 +1,6 @@
 /** What people do to the open model: intents become commands, commands become one transaction each, refusals become messages. */
 import type { Edge } from "~/domain/address-space/address-space";
+import { findParent } from "~/domain/address-space/browse";
 import type { DataTypeField } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import type { LocalizedText } from "~/domain/address-space/qualified-name";
@@ -118,8 +119,9 @@ export class ModelActions {
     const { space } = this.#editor.getState();
     const count = findDeletion(space, nodes).nodes.length;
     const name = getNodeName(space, nodes[0]);
+    const owner = nodes[0] && findParent(space, nodes[0]);
     if (this.#run("delete", [(current, context) => deleteNodes(current, context, { nodes })]) === undefined) return;
-    this.#view.select([]);
+    this.#view.select(owner !== undefined && this.#editor.getState().space.getNode(owner) ? [owner] : []);
     const more = count > 1 ? ` and ${count - 1} ${count === 2 ? "node" : "nodes"} with it` : "";
     showToast({ tone: "plain", title: `${name}${more} deleted. Ctrl Z brings ${count > 1 ? "them" : "it"} back.`, seconds: 5 });
   }

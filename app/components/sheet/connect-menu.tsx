@@ -1,5 +1,6 @@
 import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
+import { hasValueAttributes } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { formatProblem } from "~/domain/core/problem-texts";
 import { listLawfulReferences, type ReferenceChoice } from "~/domain/editing/lawful-references";
@@ -57,7 +58,8 @@ export function ConnectMenu({ space, request, onClose }: Props) {
   );
 }
 
-type ChoiceRow = ReferenceChoice & { readonly source: NodeKey; readonly target: NodeKey; readonly isReversed: boolean };
+/** A reference, or the DataType of a Variable, which is an attribute and drawn as a dotted leader. */
+type ChoiceRow = Omit<ReferenceChoice, "type"> & { readonly type: NodeKey | undefined; readonly source: NodeKey; readonly target: NodeKey; readonly isReversed: boolean };
 
 const FEW = 6;
 
@@ -69,13 +71,18 @@ function Choices({ space, source, target, onClose }: { space: AddressSpace; sour
   const { rows, reasons } = useMemo(() => listChoices(space, source, target), [space, source, target]);
   const shown = showsAll ? rows : rows.slice(0, FEW);
 
-  useEffect(() => list.current?.focus(), []);
-  useEffect(() => list.current?.querySelector('[aria-selected="true"]')?.scrollIntoView({ block: "nearest" }), [active, showsAll]);
+  useEffect(() => {
+    list.current?.focus();
+  }, []);
+  useEffect(() => {
+    list.current?.querySelector('[aria-selected="true"]')?.scrollIntoView({ block: "nearest" });
+  }, [active, showsAll]);
 
   function pick(row: ChoiceRow | undefined): void {
     if (!row) return;
     onClose();
-    actions.connect({ source: row.source, type: row.type, target: row.target });
+    if (row.type === undefined) actions.setDataType([row.source], row.target);
+    else actions.connect({ source: row.source, type: row.type, target: row.target });
   }
 
   function onKeyDown(event: KeyboardEvent): void {
@@ -108,16 +115,16 @@ function Choices({ space, source, target, onClose }: { space: AddressSpace; sour
         <ul ref={list} role="listbox" aria-label="Reference types" tabIndex={0} className="max-h-80 overflow-auto py-1 outline-none" onKeyDown={onKeyDown}>
           {shown.map((row, index) => (
             <li
-              key={`${row.type} ${row.isReversed}`}
+              key={`${row.name} ${row.type ?? ""} ${row.isReversed}`}
               role="option"
               aria-selected={index === active}
               onMouseMove={() => setActive(index)}
               onClick={() => pick(row)}
               className={cx("flex h-7 cursor-pointer items-center gap-2.5 px-3 text-small", index === active && "bg-copper-wash shadow-[inset_3px_0_0_var(--copper)]")}
             >
-              <LineEndSample end={getLineEnd(space, row.type)} width={40} />
-              <span className={row.isUsual ? "font-medium" : ""}>{row.name}</span>
-              <span className="ml-auto pl-3 text-note text-ink-3">
+              {row.type === undefined ? <i className="w-10 border-t-[1.5px] border-dotted border-ink-3" /> : <LineEndSample end={getLineEnd(space, row.type)} width={40} />}
+              <span className={cx("shrink-0", row.isUsual && "font-medium")}>{row.name}</span>
+              <span className="ml-auto truncate pl-3 text-note text-ink-3">
                 {row.isReversed ? "from" : "to"} {getNodeName(space, target)}
               </span>
             </li>
@@ -139,11 +146,19 @@ function Choices({ space, source, target, onClose }: { space: AddressSpace; sour
 function listChoices(space: AddressSpace, source: NodeKey, target: NodeKey): { rows: ChoiceRow[]; reasons: string[] } {
   const forward = listLawfulReferences(space, source, target);
   const backward = listLawfulReferences(space, target, source);
-  const rows = [
+  const rows: ChoiceRow[] = [
+    ...listDataTypeChoice(space, source, target, false),
+    ...listDataTypeChoice(space, target, source, true),
     ...forward.choices.map((choice) => ({ ...choice, source, target, isReversed: false })),
     ...backward.choices.map((choice) => ({ ...choice, source: target, target: source, isReversed: true })),
   ];
   return { rows: [...rows.filter((row) => row.isUsual), ...rows.filter((row) => !row.isUsual)], reasons: [...new Set(forward.refusals.map(formatProblem))].slice(0, 5) };
+}
+
+function listDataTypeChoice(space: AddressSpace, variable: NodeKey, dataType: NodeKey, isReversed: boolean): ChoiceRow[] {
+  const node = space.getNode(variable);
+  const isFit = node !== undefined && hasValueAttributes(node) && space.isOwn(variable) && space.getNode(dataType)?.nodeClass === "DataType";
+  return isFit ? [{ type: undefined, name: "DataType", isUsual: true, source: variable, target: dataType, isReversed }] : [];
 }
 
 const WIDTH = 380;
