@@ -18,7 +18,7 @@ import {
   type AcceptedTransaction,
   type ModelRow,
 } from "../db/repositories/models.server";
-import { HIGHEST_LEASED_IDENTIFIER, raiseLedgerStatement } from "../db/repositories/node-ids.server";
+import { addRetiredStatement, HIGHEST_LEASED_IDENTIFIER, raiseLedgerStatement } from "../db/repositories/node-ids.server";
 import { AddressSpace } from "../domain/address-space/address-space";
 import { getOwnNamespace } from "../domain/address-space/model-header";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
@@ -30,6 +30,7 @@ import { singleton } from "../utils/singleton.server";
 import { describeHeader } from "./describe-header.server";
 import { publish } from "./event-hub.server";
 import { forgetNewestLayer, keepNewestLayer, loadNewestLayer } from "./own-layer.server";
+import { findGivenTwice, listRetired } from "./retire-node-ids.server";
 import { areLayersCurrent, resolveRequiredModels, type RequiredLayer } from "./required-models.server";
 
 export type WorkingModel = {
@@ -158,6 +159,8 @@ async function append(modelId: string, author: Caller, intent: AppendIntent): Pr
   }
   const applied = await applyAll(working, author, clientId, fresh);
   if (!applied.ok) return { kind: "refused", head: working.seq, problems: applied.problems, accepted };
+  const givenTwice = await findGivenTwice(working.model.organizationId, applied.value.added);
+  if (givenTwice.length > 0) return { kind: "refused", head: working.seq, problems: givenTwice, accepted };
   await save(applied.value.working, author, applied.value.added);
   const added = applied.value.added.map(({ clientSeq, seq, at }) => ({ clientSeq, seq, at }));
   return { kind: "accepted", head: applied.value.working.seq, accepted: [...accepted, ...added] };
@@ -211,6 +214,7 @@ async function save(working: WorkingModel, author: Caller, added: readonly Trans
   for (const entry of added) statements.push(addTransactionStatement(model.id, author.userId, entry));
   const highest = findHighestGiven(model.namespaceUri, added);
   if (highest > 0) statements.push(raiseLedgerStatement(model.organizationId, model.namespaceUri, highest));
+  for (const retired of listRetired(added)) statements.push(addRetiredStatement(model.organizationId, retired));
   const firstEvent = statements.length;
   for (const entry of added) statements.push(addEventStatement(topic, entry.seq, now));
   const results = await writeBatch(statements as [Statement, ...Statement[]]);

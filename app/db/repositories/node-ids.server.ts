@@ -1,8 +1,8 @@
 /** The ledger of numeric identifiers: what was given once is never given again, also after deletion and import. */
-import { and, eq, sql } from "drizzle-orm";
+import { and, eq, inArray, sql } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import { getDatabase } from "../client.server";
-import { nodeIdLease, nodeIdLedger } from "../schema/models";
+import { nodeIdLease, nodeIdLedger, retiredNodeId } from "../schema/models";
 
 /**
  * Blocks are leased from the lower half of the 32-bit range. The upper half is left to identifiers that people or other
@@ -33,4 +33,30 @@ export function addLeaseStatement(row: Omit<typeof nodeIdLease.$inferInsert, "id
   return getDatabase()
     .insert(nodeIdLease)
     .values({ ...row, id: newId() });
+}
+
+export type RetiredNodeId = Omit<typeof retiredNodeId.$inferSelect, "organizationId">;
+
+/** Which of these NodeIds somebody has given up. */
+export async function findRetired(organizationId: string, nodeIds: readonly string[]): Promise<RetiredNodeId[]> {
+  const found: RetiredNodeId[] = [];
+  for (let i = 0; i < nodeIds.length; i += 500) {
+    const rows = await getDatabase()
+      .select()
+      .from(retiredNodeId)
+      .where(and(eq(retiredNodeId.organizationId, organizationId), inArray(retiredNodeId.nodeId, nodeIds.slice(i, i + 500))));
+    found.push(...rows);
+  }
+  return found;
+}
+
+export function addRetiredStatement(organizationId: string, retired: RetiredNodeId) {
+  const { nodeKey, nodeClass, browseName } = retired;
+  return getDatabase()
+    .insert(retiredNodeId)
+    .values({ organizationId, ...retired })
+    .onConflictDoUpdate({
+      target: [retiredNodeId.organizationId, retiredNodeId.nodeId],
+      set: { nodeKey, nodeClass, browseName },
+    });
 }

@@ -123,6 +123,25 @@ export const nodeIdLedger = sqliteTable(
   (table) => [primaryKey({ columns: [table.organizationId, table.namespaceUri] })],
 );
 
+/**
+ * NodeIds that a node has given up, by deletion or by a new number. Only the same node may have one back, which is what
+ * undo asks for; nobody else ever gets it.
+ */
+export const retiredNodeId = sqliteTable(
+  "retired_node_id",
+  {
+    organizationId: text("organization_id")
+      .notNull()
+      .references(() => organization.id, { onDelete: "cascade" }),
+    nodeId: text("node_id").notNull(),
+    nodeKey: text("node_key").notNull(),
+    /** What the node was when it was deleted; absent when it lives on under another number. */
+    nodeClass: text("node_class"),
+    browseName: text("browse_name"),
+  },
+  (table) => [primaryKey({ columns: [table.organizationId, table.nodeId] })],
+);
+
 /** Blocks of numeric identifiers, each leased to one editing window. */
 export const nodeIdLease = sqliteTable(
   "node_id_lease",
