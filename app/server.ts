@@ -10,6 +10,7 @@ import { CLIENT_ADDRESS_HEADER } from "./utils/client-address.server";
 import { EnvironmentError, getEnvironment } from "./utils/env.server";
 import { findProjectRoot } from "./utils/project-root.server";
 import { securityHeaders } from "./utils/security-headers.server";
+import { serveCompressed } from "./utils/serve-compressed.server";
 
 const ONE_YEAR = "1y";
 const EXIT_LIMIT_MS = 4800;
@@ -106,6 +107,7 @@ async function createApplication(root: string, build: ApplicationBuild): Promise
   app.disable("x-powered-by");
   app.set("trust proxy", process.env.FERRULE_ORIGIN ? "loopback" : false);
   app.use(addOwnHeaders);
+  app.use("/assets", serveCompressed(join(client, "assets")));
   app.use("/assets", express.static(join(client, "assets"), { immutable: true, maxAge: ONE_YEAR, fallthrough: false, redirect: false }));
   app.use(express.static(client, { maxAge: "1h", redirect: false, index: false }));
   app.use(refuseLargeForms);

@@ -228,7 +228,14 @@ test("an empty installation leads to the set-up page and prints its code before 
   for (const script of scripts) expect(script).toContain(`nonce="${nonce}"`);
   expect(policy).not.toContain("unsafe-eval");
   const asset = /\/assets\/[\w.-]+\.js/.exec(html)?.[0] ?? "";
-  expect((await fetch(`${app.url}${asset}`)).headers.get("cache-control")).toContain("immutable");
+  const script = await fetch(`${app.url}${asset}`, { headers: { "accept-encoding": "gzip" } });
+  expect(script.headers.get("cache-control")).toContain("immutable");
+  expect(script.headers.get("content-encoding")).toBe("gzip");
+  expect((await script.text()).length).toBeGreaterThan(Number(script.headers.get("content-length")));
+  const plain = await fetch(`${app.url}${asset}`, { headers: { "accept-encoding": "identity" } });
+  expect(plain.headers.get("content-encoding")).toBeNull();
+  expect(plain.headers.get("cache-control")).toContain("immutable");
+  expect((await fetch(`${app.url}/assets/..%2f..%2fserver%2findex.js`)).status).toBe(404);
   app.child.kill("SIGTERM");
   expect(await app.ended).toBe(0);
 });
