@@ -3,9 +3,11 @@
  * an index that each edit moves by one node. Layers beneath are indexed once and shared.
  */
 import type { Layer } from "../address-space/address-space";
-import { isTypeNode, type Node } from "../address-space/node";
-import { formatNodeId, OPC_UA_NAMESPACE, type NodeId, type NodeKey } from "../address-space/node-id";
+import { isTypeNode, type Node, type XmlText } from "../address-space/node";
+import { formatNodeId, OPC_UA_NAMESPACE, parseNodeId, type NodeId, type NodeKey } from "../address-space/node-id";
 import { formatQualifiedName, type QualifiedName } from "../address-space/qualified-name";
+import { walkValue } from "./value-element";
+import { findValueRoot } from "./value-xml";
 
 export type Tag = string;
 
@@ -25,30 +27,37 @@ export function listTags(node: Node): Tag[] {
   return tags;
 }
 
-const NAMESPACE_IN_KEY = /^nsu=([^;]*);/;
-
 /** Namespaces of ids, names and values, except namespace 0 and that of the node itself. Keys are NodeId texts when first seen. */
 function listForeignNamespaces(node: Node): Set<string> {
   const found = new Set<string>([node.browseName.namespaceUri]);
-  const add = (key: string | undefined): void => {
-    const uri = key === undefined ? undefined : NAMESPACE_IN_KEY.exec(key)?.[1];
-    if (uri !== undefined) found.add(uri);
-  };
   for (const { type, target } of node.references) {
-    add(type);
-    add(target);
+    addNamespace(found, type);
+    addNamespace(found, target);
   }
-  if ("dataType" in node) add(node.dataType);
-  if ("value" in node && node.value) for (const [, uri = ""] of node.value.xml.matchAll(URI_IN_VALUE)) found.add(uri);
-  if ("definition" in node) for (const field of node.definition?.fields ?? []) add(field.dataType);
-  if ("methodDeclaration" in node) add(node.methodDeclaration);
+  if ("dataType" in node) addNamespace(found, node.dataType);
+  if ("value" in node && node.value && MAY_NAME.test(node.value.xml)) addNamespacesOfValue(found, node.value);
+  if ("definition" in node) for (const field of node.definition?.fields ?? []) addNamespace(found, field.dataType);
+  if ("methodDeclaration" in node) addNamespace(found, node.methodDeclaration);
   found.delete(OPC_UA_NAMESPACE);
   found.delete(node.nodeId.namespaceUri);
   return found;
 }
 
-/** `<Identifier>nsu=URI;…` and `<NamespaceIndex>URI<` in values. */
-const URI_IN_VALUE = /(?:>\s*nsu=|<(?:\w+:)?NamespaceIndex>\s*)([^;<\s]+)/g;
+/** Most values name no namespace but 0 and need not be read for this. */
+const MAY_NAME = /Identifier>[^<;]*;|NamespaceIndex/;
+
+function addNamespace(found: Set<string>, nodeIdText: string | undefined): void {
+  if (!nodeIdText?.includes(";")) return;
+  const parsed = parseNodeId(nodeIdText, []);
+  if (parsed.ok) found.add(parsed.value.namespaceUri);
+}
+
+function addNamespacesOfValue(found: Set<string>, value: XmlText): void {
+  for (const element of walkValue(findValueRoot(value))) {
+    if (element.name === "Identifier") addNamespace(found, element.text.trim());
+    if (element.name === "NamespaceIndex") found.add(element.text.trim());
+  }
+}
 
 /** A layer finds NodeIds by itself, so that only names of types are gathered here. */
 const layerTags = new WeakMap<Layer, ReadonlyMap<Tag, readonly NodeKey[]>>();

@@ -103,3 +103,10 @@ export function findChild(element: ValueElement | undefined, ...path: readonly s
   for (const name of path) at = at?.children.find((c) => c.name === name);
   return at;
 }
+
+/** The element and all below it, in no promised order. */
+export function walkValue(root: ValueElement | undefined): ValueElement[] {
+  const found: ValueElement[] = root ? [root] : [];
+  for (const element of found) found.push(...element.children);
+  return found;
+}

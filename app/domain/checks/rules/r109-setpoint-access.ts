@@ -1,6 +1,6 @@
 import { attributeFix } from "../fixes";
 import { isProperty } from "../lookups";
-import { clause, type NodeRule } from "../rule";
+import type { NodeRule } from "../rule";
 
 const MEANT_TO_BE_WRITTEN = /(?:set-?point|setting|command)$/i;
 

@@ -1,11 +1,10 @@
 import { hasValueAttributes } from "../../address-space/node";
+import { parseNodeId } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { argumentList } from "../example-values";
 import { clause, type NodeRule } from "../rule";
-import type { ValueElement } from "../value-element";
+import { walkValue, type ValueElement } from "../value-element";
 import { findValueRoot } from "../value-xml";
-
-const NODE_ID = /^(?:svr=\d+;)?(?:svu=[^;]*;)?(?:ns=\d+;|nsu=[^;]*;)?[isgb]=/;
 
 export const r161: NodeRule = {
   id: "R161",
@@ -52,11 +51,15 @@ export const r161: NodeRule = {
 };
 
 function findAlias(root: ValueElement): string | undefined {
-  const open: ValueElement[] = [root];
-  for (let at = open.pop(); at; at = open.pop()) {
-    const text = at.text.trim();
-    if (at.name === "Identifier" && at.children.length === 0 && text !== "" && !NODE_ID.test(text)) return text;
-    open.push(...at.children);
-  }
-  return undefined;
+  const texts = walkValue(root)
+    .filter((e) => e.name === "Identifier" && e.children.length === 0)
+    .map((e) => e.text.trim());
+  return texts.find((text) => text !== "" && !isNodeId(text));
+}
+
+/** Also true for ids of other servers and for indices that the file does not have: those are no aliases. */
+function isNodeId(text: string): boolean {
+  const local = text.startsWith("svr=") || text.startsWith("svu=") ? text.slice(text.indexOf(";") + 1) : text;
+  const parsed = parseNodeId(local, []);
+  return parsed.ok || parsed.problems.every((p) => p.code !== "node-id.syntax");
 }
