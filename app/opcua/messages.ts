@@ -48,6 +48,8 @@ export const startSchema = z.object({
   /** NodeSet2 files in the order of their requirements, the base first. */
   nodeSetFiles: z.array(z.string()).min(1),
   simulation: z.array(simulatedVariableSchema),
+  /** Methods that answer with typed results; the others say that they are not implemented. */
+  methods: z.array(z.string()),
   maxSessions: z.number().int().positive(),
 });
 export type StartMessage = z.infer<typeof startSchema>;

@@ -5,6 +5,7 @@ import { z } from "zod";
 import { saveNewTestServer } from "../db/repositories/test-servers.server";
 import { AddressSpace } from "../domain/address-space/address-space";
 import { fail, ok, problem, type Result } from "../domain/core/result";
+import { listAnsweredMethods } from "../domain/simulation/list-answered-methods";
 import { makeSampleInstances } from "../domain/simulation/make-sample-instances";
 import { planSimulation, type SimulatedVariable } from "../domain/simulation/plan-simulation";
 import type { TestServerState } from "../domain/simulation/test-server-state";
@@ -96,16 +97,16 @@ async function prepare(seed: TestServerSeed): Promise<void> {
   const nodeSetFiles = await writeTestServerFiles(getTestServerFolder(seed.id), working, samples ? [samples.layer] : []);
   // Machines of required models are part of what the server shows, so they move too.
   const team = layers.filter((required) => required.from).map((required) => required.layer);
-  const simulation = samples
-    ? planSimulation(AddressSpace.of(space.layers, samples.layer), [...team, space.own, samples.layer])
-    : planSimulation(space, [...team, space.own]);
-  supervisor.launch(toStartMessage(seed, nodeSetFiles, simulation), {
+  const served = samples ? AddressSpace.of(space.layers, samples.layer) : space;
+  const moved = [...team, space.own, ...(samples ? [samples.layer] : [])];
+  const simulation = planSimulation(served, moved);
+  supervisor.launch({ ...toStartMessage(seed, nodeSetFiles, simulation), methods: listAnsweredMethods(served, moved) }, {
     sampleInstances: samples?.names ?? [],
     landingNode: (simulation.find(({ motion }) => motion.kind === "sine" || motion.kind === "ramp") ?? simulation[0])?.nodeId ?? null,
   });
 }
 
-function toStartMessage(seed: TestServerSeed, nodeSetFiles: string[], simulation: readonly SimulatedVariable[]): StartMessage {
+function toStartMessage(seed: TestServerSeed, nodeSetFiles: string[], simulation: readonly SimulatedVariable[]): Omit<StartMessage, "methods"> {
   const { id, applicationName, applicationUri, security, simulatedQuality, tokens } = seed;
   return {
     kind: "start",

@@ -10,6 +10,7 @@ import { fileURLToPath } from "node:url";
 import { AddressSpace, buildLayer, type Layer } from "~/domain/address-space/address-space";
 import { getValue } from "~/domain/core/result";
 import { readNodeSet } from "~/domain/nodeset/read-nodeset";
+import { listAnsweredMethods } from "~/domain/simulation/list-answered-methods";
 import { planSimulation } from "~/domain/simulation/plan-simulation";
 import { getPackageFolder } from "~/library/published.server";
 import { findProjectRoot } from "~/utils/project-root.server";
@@ -115,6 +116,7 @@ function makeStartMessage(files: readonly string[], pkiFolder: string): object {
     simulatedQuality: "uncertain",
     nodeSetFiles: files,
     simulation: planSimulation(AddressSpace.of(layers, own)),
+    methods: listAnsweredMethods(AddressSpace.of(layers, own), [own]),
     maxSessions: 20,
   };
 }

@@ -8,7 +8,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { OPCUACertificateManager, OPCUAServer, MessageSecurityMode, SecurityPolicy } from "node-opcua";
 import { nodesets } from "node-opcua-nodesets";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { afterAll, beforeAll, describe, expect, it, vi } from "vitest";
 import { getValue } from "~/domain/core/result";
 import type { Sample } from "~/domain/live/live-node";
 import { browseChildren, findPathTo } from "~/opcua/client/browse.server";
@@ -18,6 +18,9 @@ import { readNode } from "~/opcua/client/read-node.server";
 import { Supervisor } from "~/opcua/supervisor.server";
 import { buildTestServer } from "../support/test-server-bundle";
 import { makeSeed, startWinch, waitFor, WINCH_URI } from "../support/winch-server";
+
+// Each test starts real processes; a busy machine takes its time over them.
+vi.setConfig({ testTimeout: 180_000, hookTimeout: 180_000 });
 
 const pkiFolder = mkdtempSync(join(tmpdir(), "ferrule-live-pki-"));
 const winch = (local: string): string => `nsu=${WINCH_URI};${local}`;

@@ -1,6 +1,6 @@
 /** Test servers through the API and the event stream, with roles and organisations; the winch of the fixtures is served. */
 import { readFileSync } from "node:fs";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { afterAll, beforeAll, describe, expect, it, vi } from "vitest";
 import { Supervisor } from "~/opcua/supervisor.server";
 import type { TestServerAnswer } from "~/services/describe-test-server.server";
 import { onShutdown } from "~/utils/shutdown.server";
@@ -9,6 +9,9 @@ import { startTestApp, type TestApp } from "../support/test-app";
 import { addOtherOrganization, addTestPerson, setUpFirst } from "../support/test-people";
 import { buildTestServer } from "../support/test-server-bundle";
 import { waitFor, winchFile, WINCH_URI } from "../support/winch-server";
+
+// Each test starts real processes; a busy machine takes its time over them.
+vi.setConfig({ testTimeout: 180_000, hookTimeout: 180_000 });
 
 let app: TestApp;
 let cookie: string;

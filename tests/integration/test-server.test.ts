@@ -11,6 +11,7 @@ import { join } from "node:path";
 import {
   AttributeIds,
   type ClientSession,
+  DataType,
   MessageSecurityMode,
   OPCUACertificateManager,
   OPCUAClient,
@@ -18,10 +19,13 @@ import {
   UserTokenType,
   type UserIdentityInfo,
 } from "node-opcua";
-import { afterAll, afterEach, beforeAll, describe, expect, it } from "vitest";
+import { afterAll, afterEach, beforeAll, describe, expect, it, vi } from "vitest";
 import { Supervisor } from "~/opcua/supervisor.server";
 import { buildTestServer, type TestServerBundle } from "../support/test-server-bundle";
 import { makeSeed, makeStartMessage, startWinch, waitFor, winchFile, WINCH_URI } from "../support/winch-server";
+
+// Each test starts real processes; a busy machine takes its time over them.
+vi.setConfig({ testTimeout: 180_000, hookTimeout: 180_000 });
 
 const UNCERTAIN_SIMULATED_VALUE = 0x42090000;
 const GOOD = 0;
@@ -183,6 +187,25 @@ describe("a running test server", () => {
       expect(written.name).toBe("Good");
       expect((await session.read({ nodeId: rope, attributeId: AttributeIds.Value })).value.value).toBe(7.25);
     });
+  });
+
+  it("answers Methods with typed results and says in its log that they were called", async () => {
+    const state = await startWinch(newSupervisor(), makeSeed("methods"));
+    await withStranger(state.endpointUrl, SECURED, async (session) => {
+      const index = (await session.readNamespaceArray()).indexOf(WINCH_URI);
+      const objectId = `ns=${index};i=5001`;
+      const selected = await session.call({ objectId, methodId: `ns=${index};i=7002`, inputArguments: [{ dataType: DataType.UInt16, value: 12 }] });
+      expect(selected.statusCode.value).toBe(GOOD);
+      expect(selected.outputArguments?.map(({ dataType, value }) => [dataType, value])).toEqual([
+        [DataType.Boolean, true],
+        [DataType.UInt16, 12],
+        [DataType.String, "simulation"],
+      ]);
+      const wrong = await session.call({ objectId, methodId: `ns=${index};i=7002`, inputArguments: [] });
+      expect(wrong.statusCode.name).toBe("BadArgumentsMissing");
+      expect((await session.call({ objectId, methodId: `ns=${index};i=7001`, inputArguments: [] })).statusCode.value).toBe(GOOD);
+    });
+    expect(supervisor.getLog("methods").map((line) => line.text)).toContain("Method SelectRecipe was called with 12.");
   });
 
   it("reports who is connected", async () => {

@@ -59,6 +59,7 @@ export function makeStartMessage(seed: TestServerSeed, change: Partial<StartMess
       dimensions: [...entry.dimensions],
       motion: copyMotion(entry.motion),
     })),
+    methods: [`nsu=${WINCH_URI};i=7001`, `nsu=${WINCH_URI};i=7002`],
     maxSessions: 20,
     ...change,
   };
@@ -79,7 +80,7 @@ export async function startWinch(
   return waitFor(() => {
     const state = supervisor.get(seed.id);
     return state && state.state !== "starting" ? state : undefined;
-  }, 40_000);
+  }, 90_000);
 }
 
 /** Polls until the answer is there; throws when it does not come within the limit. */

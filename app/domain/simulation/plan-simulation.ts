@@ -4,11 +4,12 @@
  * type do not move in step and still every start of the server shows the same.
  */
 import type { AddressSpace, Layer } from "../address-space/address-space";
-import { findParent, findProperty, getPath, listEdgesTo } from "../address-space/browse";
-import { getDataType, getValueRank, isTypeNode, type VariableNode } from "../address-space/node";
+import { findProperty, getPath, listEdgesTo } from "../address-space/browse";
+import { getDataType, getValueRank, type VariableNode } from "../address-space/node";
 import { formatNodeId, type NodeKey } from "../address-space/node-id";
 import { StandardReferenceType } from "../address-space/standard-ids";
 import { findBuiltInType } from "./find-built-in-type";
+import { isInstance } from "./is-instance";
 import { listStates } from "./list-states";
 import type { BuiltInType, Motion } from "./motion";
 import { INTEGER_RANGES } from "./motion";
@@ -138,25 +139,6 @@ function listDimensions(node: VariableNode): number[] {
     const length = given[i] ?? 0;
     return Number.isInteger(length) && length > 0 ? Math.min(length, MAX_ARRAY_LENGTH) : ARRAY_LENGTH;
   });
-}
-
-/** Whether no type and no Method stands above the node: only then a client finds it as part of a machine. */
-function isInstance(space: AddressSpace, key: NodeKey, known: Map<NodeKey, boolean>): boolean {
-  const trail = new Set<NodeKey>();
-  let answer = true;
-  for (let at: NodeKey | undefined = key; at !== undefined && !trail.has(at); at = findParent(space, at)) {
-    const cached = known.get(at);
-    const node = space.getNode(at);
-    if (cached !== undefined) answer = cached;
-    else if (node && (isTypeNode(node) || node.nodeClass === "Method")) answer = false;
-    else if (node) {
-      trail.add(at);
-      continue;
-    }
-    break;
-  }
-  for (const visited of trail) known.set(visited, answer);
-  return answer;
 }
 
 /** A number 0 … 1 from a path: FNV-1a, so that neighbours with like names lie far apart. */

@@ -36,6 +36,7 @@ async function start(config: StartMessage): Promise<void> {
   // Loaded here and not at the head, so that "process" is reported before the one or two seconds that this takes.
   const { createCertificateManager, createServer } = await import("./create-server");
   const { addNotice } = await import("./add-notice");
+  const { answerMethods } = await import("./answer-methods");
   const { bindSimulation } = await import("./bind-simulation");
 
   send({ kind: "progress", stage: "certificate" });
@@ -51,6 +52,7 @@ async function start(config: StartMessage): Promise<void> {
   send({ kind: "progress", stage: "simulation" });
   addNotice(space);
   const bound = bindSimulation(space, config.simulation, config.simulatedQuality, () => Date.now());
+  answerMethods(space, config.methods, (text) => log("info", text));
 
   send({ kind: "progress", stage: "endpoint" });
   await server.start();

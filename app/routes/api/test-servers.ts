@@ -2,18 +2,20 @@ import { requireModel } from "~/auth/require-model.server";
 import { listTestServers } from "~/presenters/list-test-servers.server";
 import { describeTestServer } from "~/services/describe-test-server.server";
 import { startTestServer, testServerIntentSchema } from "~/services/start-test-server.server";
+import { handleApi } from "~/utils/api-handler.server";
 import { requireMethod, requireOptionalJson } from "~/utils/parse-request.server";
 import { problemResponse } from "~/utils/problem-response.server";
 import type { Route } from "./+types/test-servers";
 
 /** `GET /api/v1/models/:modelId/test-servers`: those that run, start or have failed. */
-export async function loader({ request, params }: Route.LoaderArgs): Promise<Response> {
+export const loader = handleApi(async ({ request, params }: Route.LoaderArgs) => {
   const { model } = await requireModel(request, params.modelId, "read");
-  return Response.json(listTestServers(model.organizationId, model.id).map((server) => describeTestServer(server)));
-}
+  const servers = listTestServers(model.organizationId, model.id).map((server) => describeTestServer(server));
+  return Response.json(servers, { headers: { "cache-control": "no-store" } });
+});
 
 /** `POST`: starts one and answers at once; the caller asks again until it is running or has failed. */
-export async function action({ request, params }: Route.ActionArgs): Promise<Response> {
+export const action = handleApi(async ({ request, params }: Route.ActionArgs) => {
   const { caller, model } = await requireModel(request, params.modelId, "test-server.run");
   requireMethod(request, "POST");
   const intent = await requireOptionalJson(request, testServerIntentSchema);
@@ -21,4 +23,4 @@ export async function action({ request, params }: Route.ActionArgs): Promise<Res
   if (!started.ok) return problemResponse(503, started.problems);
   const location = `/api/v1/test-servers/${started.value.id}`;
   return Response.json(describeTestServer(started.value), { status: 201, headers: { location } });
-}
+});
