@@ -2,7 +2,6 @@
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { getAccessLevel, type Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
-import { renameNode } from "~/domain/editing/commands/rename-node";
 import { setAttribute } from "~/domain/editing/commands/set-attribute";
 import { setDataType } from "~/domain/editing/commands/set-data-type";
 import { setModellingRule } from "~/domain/editing/commands/set-modelling-rule";
@@ -16,6 +15,7 @@ import type { EditStep } from "./edit-steps";
 import { findTypes } from "./find-types";
 import { findSpokenUnit } from "./unit-lookup";
 import { formatValueRank, RULE_KEYS, VALUE_RANKS, type RuleName } from "./member-facts";
+import { toRenameStep } from "./rename-steps";
 import { setTypeDefinition } from "./set-type-definition";
 import { parseValueText } from "./value-text";
 
@@ -25,7 +25,7 @@ export function toCellStep(change: CellChange): EditStep | undefined {
   const trimmed = text.trim();
   switch (column) {
     case "name":
-      return (space, context) => renameNode(space, context, { node: key, name: trimmed });
+      return toRenameStep(key, trimmed);
     case "description":
       return (space, context) => setText(space, context, { node: key, attribute: "description", text: trimmed, ...getFirstLocale(space, key) });
     case "dataType":

@@ -9,7 +9,8 @@ export function InlineName({ nodeKey, name }: { nodeKey: NodeKey; name: string }
 }
 
 function NameField({ nodeKey, name }: { nodeKey: NodeKey; name: string }) {
-  const { actions, view } = useOpenModel();
+  const { actions, view, editor } = useOpenModel();
+  const browseName = editor.getState().space.getNode(nodeKey)?.browseName.name ?? name;
   const field = useRef<HTMLInputElement>(null);
   const isDone = useRef(false);
 
@@ -23,7 +24,7 @@ function NameField({ nodeKey, name }: { nodeKey: NodeKey; name: string }) {
     isDone.current = true;
     const back = field.current?.closest<HTMLElement>("[data-keyboard]");
     view.stopRenaming();
-    if (text !== undefined && text.trim() !== "" && text.trim() !== name) actions.rename(nodeKey, text.trim());
+    if (text !== undefined && text.trim() !== "" && text.trim() !== browseName) actions.rename(nodeKey, text.trim());
     back?.focus();
   }
 
@@ -32,7 +33,7 @@ function NameField({ nodeKey, name }: { nodeKey: NodeKey; name: string }) {
       ref={field}
       className="inline-name nodrag nopan"
       aria-label={`New name of ${name}`}
-      defaultValue={name}
+      defaultValue={browseName}
       spellCheck={false}
       autoComplete="off"
       onPointerDown={(event) => event.stopPropagation()}

@@ -10,7 +10,6 @@ import { addType, type AddTypeIntent } from "~/domain/editing/commands/add-type"
 import { connectNodes, disconnectNodes, type ConnectNodesIntent } from "~/domain/editing/commands/connect-nodes";
 import { deleteNodes, findDeletion } from "~/domain/editing/commands/delete-nodes";
 import { moveNode } from "~/domain/editing/commands/move-node";
-import { renameNode } from "~/domain/editing/commands/rename-node";
 import { setAttribute, type SetAttributeIntent } from "~/domain/editing/commands/set-attribute";
 import { setDataType } from "~/domain/editing/commands/set-data-type";
 import { setMethodArguments } from "~/domain/editing/commands/set-method-arguments";
@@ -26,6 +25,7 @@ import { copySubtrees, readClipboard, writeClipboard } from "./copy-nodes";
 import { composeEdit, describe, type EditStep } from "./edit-steps";
 import { listArguments, type ArgumentFacts, type Direction } from "./method-arguments";
 import { getNodeName } from "./member-facts";
+import { toRenameStep } from "./rename-steps";
 import { setTypeDefinition } from "./set-type-definition";
 import type { ViewStore } from "./view-store";
 
@@ -105,7 +105,7 @@ export class ModelActions {
   }
 
   rename(node: NodeKey, name: string): void {
-    this.#run("rename", [(space, context) => renameNode(space, context, { node, name })]);
+    this.#run("rename", [toRenameStep(node, name)]);
   }
 
   move(nodes: readonly NodeKey[], parent: NodeKey): void {

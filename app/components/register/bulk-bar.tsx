@@ -88,7 +88,7 @@ export function BulkBar({ space, selection }: { space: AddressSpace; selection: 
       <Button size="small" tone="danger" onClick={() => actions.remove(keys)} {...(keys.length === 0 ? { blockedBy: "these nodes belong to required models" } : {})}>
         Delete
       </Button>
-      <span className="ml-auto text-ink-2">one edit each, undone with one step</span>
+      <span className="ml-auto text-ink-2">one edit, undone with one step</span>
       <Button size="small" tone="bare" icon={X} onClick={() => view.select([])}>
         Clear
       </Button>

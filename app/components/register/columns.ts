@@ -25,7 +25,7 @@ export type Column = {
 
 export const COLUMNS: readonly Column[] = [
   { id: "name", title: "Member", width: 216, grows: 1 },
-  { id: "type", title: "Type", width: 140, grows: 0.5 },
+  { id: "type", title: "Type", width: 154, grows: 0.3 },
   { id: "dataType", title: "DataType", width: 108, isMono: true },
   { id: "rank", title: "Rank", width: 62 },
   { id: "unit", title: "Unit", width: 64 },
@@ -104,6 +104,11 @@ export function isEditable(node: Node, column: ColumnId): boolean {
     case "finding":
       return false;
   }
+}
+
+/** What an editor starts with: the BrowseName where the cell shows the DisplayName, else what the cell shows. */
+export function getEditText(space: AddressSpace, node: Node, column: ColumnId): string {
+  return column === "name" ? node.browseName.name : getCellText(space, node, column);
 }
 
 /** Everything a filter looks into. */

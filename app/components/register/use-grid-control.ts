@@ -5,7 +5,7 @@ import { makeAddRequest, type AddRequest } from "../model/add-request";
 import { findMemberOwner } from "../model/member-owner";
 import type { CellChange } from "../model/cell-change";
 import { useOpenModel, useView } from "../model/use-model";
-import { getCellText, isEditable, type Column, type ColumnId } from "./columns";
+import { getCellText, getEditText, isEditable, type Column, type ColumnId } from "./columns";
 import { formatBlock, listRowsBetween, moveCell, parseBlock, type GridCell, type Move } from "./grid-state";
 import type { RegisterRow } from "./register-rows";
 
@@ -89,7 +89,7 @@ export function useGridControl(inputs: Inputs): GridControl {
       const node = row && space.getNode(row.key);
       if (!node || !actions.mayChange(node.key) || !isEditable(node, at.column)) return;
       setCell(at);
-      setEditing({ text: key ?? getCellText(space, node, at.column), replaces: key !== undefined });
+      setEditing({ text: key ?? getEditText(space, node, at.column), replaces: key !== undefined });
     },
     [actions],
   );
