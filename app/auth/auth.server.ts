@@ -10,7 +10,7 @@ import { CLIENT_ADDRESS_HEADER } from "../utils/client-address.server";
 import { getExpectedOrigins } from "./same-origin.server";
 
 const SESSION_DAYS = 14;
-export const MIN_PASSWORD_LENGTH = 10;
+const MIN_PASSWORD_LENGTH = 10;
 
 function createAuth() {
   const environment = getEnvironment();
@@ -36,7 +36,7 @@ function createAuth() {
   });
 }
 
-export type Auth = ReturnType<typeof createAuth>;
+type Auth = ReturnType<typeof createAuth>;
 
 export function getAuth(): Auth {
   return singleton("auth", createAuth);

@@ -105,17 +105,6 @@ export function assertMay(caller: Caller, action: Action, organizationIdOfRow: s
   if (!mayDo(caller, action, organizationIdOfRow)) throw failWith(403, "auth.not-allowed", { action });
 }
 
-/** `requireCaller` and `assertMay` in one, for routes that know the row's organisation beforehand. */
-export async function requirePermission(
-  request: Request,
-  action: Action,
-  organizationIdOfRow: string | undefined,
-): Promise<Caller> {
-  const caller = await requireCaller(request);
-  assertMay(caller, action, organizationIdOfRow);
-  return caller;
-}
-
 /**
  * The organisation that a request without a row means: the token's, else `?organization=`, else the caller's only one.
  * Throws 400 when the caller belongs to several and names none, 404 when to none or to another.

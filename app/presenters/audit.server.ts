@@ -1,7 +1,7 @@
-/** Who did what when, for the Team page and as a file. */
+/** Who did what when, as a file. */
 import { listAudit, type AuditRow } from "../db/repositories/audit.server";
 
-export type AuditLine = {
+type AuditLine = {
   readonly id: number;
   readonly at: string;
   readonly who: string;
@@ -11,13 +11,7 @@ export type AuditLine = {
   readonly details: Readonly<Record<string, unknown>>;
 };
 
-const PAGE = 100;
 const EXPORT_PAGE = 1000;
-
-/** One page, newest first; `before` is the id of the last line of the page before. */
-export async function presentAudit(organizationId: string, before?: number): Promise<AuditLine[]> {
-  return (await listAudit(organizationId, PAGE, before)).map(toLine);
-}
 
 function toLine(row: AuditRow): AuditLine {
   const { id, at, userName, action, subjectKind, subjectName, details } = row;

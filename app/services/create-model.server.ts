@@ -1,7 +1,7 @@
 /** A new model: its header with the required models as the library has them, and the metadata of its namespace. */
-import { z } from "zod";
 import type { Caller } from "../auth/caller.server";
 import type { ModelRow } from "../db/repositories/models.server";
+import type { ModelKind } from "../db/schema/models";
 import { findHighestIdentifier } from "../db/repositories/node-ids.server";
 import type { ModelEntry } from "../domain/address-space/model-header";
 import { OPC_UA_NAMESPACE } from "../domain/address-space/node-id";
@@ -13,15 +13,14 @@ import { addModel } from "./add-model.server";
 import { FIRST_IDENTIFIER } from "./lease-node-ids.server";
 import { resolveRequiredModels, type RequiredLayer } from "./required-models.server";
 
-export const newModelIntentSchema = z.object({
-  kind: z.enum(["types", "machines"]),
-  name: z.string().trim().min(1).max(100),
-  namespaceUri: z.string().trim().min(1).max(400),
-  version: z.string().trim().min(1).max(50),
+export type NewModelIntent = {
+  readonly kind: ModelKind;
+  readonly name: string;
+  readonly namespaceUri: string;
+  readonly version: string;
   /** URIs of the models that it requires directly; the base model is always among them. */
-  requiredModels: z.array(z.string().max(400)).max(50),
-});
-export type NewModelIntent = z.infer<typeof newModelIntentSchema>;
+  readonly requiredModels: readonly string[];
+};
 
 /** The namespace's metadata Object and its Properties take fewer. */
 const METADATA_IDS = 64;

@@ -1,8 +1,6 @@
 /** People of an organisation and their roles. Each act ends what the change took away: sessions, tokens. */
-import { z } from "zod";
-import { MIN_PASSWORD_LENGTH } from "../auth/auth.server";
 import type { Caller } from "../auth/caller.server";
-import { roles as allRoles, type Role } from "../auth/permissions";
+import type { Role } from "../auth/permissions";
 import { hashPassword } from "../auth/session.server";
 import { writeBatch, writeInTurn } from "../db/client.server";
 import { revokeTokensOfUserStatement } from "../db/repositories/api-tokens.server";
@@ -21,20 +19,18 @@ import {
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import { closeStreamsOf } from "./event-hub.server";
 
-export const rolesSchema = z.array(z.enum(allRoles)).min(1);
-export const newPersonSchema = z.object({
-  name: z.string().trim().min(1).max(100),
-  email: z.email().max(320),
-  password: z.string().min(MIN_PASSWORD_LENGTH).max(128),
-  roles: rolesSchema,
-});
-export type NewPersonIntent = z.infer<typeof newPersonSchema>;
+export type NewPerson = {
+  readonly name: string;
+  readonly email: string;
+  readonly password: string;
+  readonly roles: readonly Role[];
+};
 
 /**
  * Adds a person with a first password. Somebody who is known from another organisation of this installation joins with
  * the password that they have. Problem: `people.exists`.
  */
-export async function addPerson(author: Caller, organizationId: string, intent: NewPersonIntent): Promise<Result<{ userId: string }>> {
+export async function addPerson(author: Caller, organizationId: string, intent: NewPerson): Promise<Result<{ userId: string }>> {
   const passwordHash = await hashPassword(intent.password);
   return writeInTurn(async (db) => {
     const known = await findUserByEmail(intent.email);

@@ -2,8 +2,6 @@
 import { existsSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { randomInt, timingSafeEqual } from "node:crypto";
 import { join } from "node:path";
-import { z } from "zod";
-import { MIN_PASSWORD_LENGTH } from "../auth/auth.server";
 import { hashPassword } from "../auth/session.server";
 import { getDatabase, writeInTurn } from "../db/client.server";
 import { addAuditStatement } from "../db/repositories/audit.server";
@@ -14,14 +12,13 @@ import { getEnvironment } from "../utils/env.server";
 import { newId, sha256 } from "../utils/ids.server";
 import { noteFailure, secondsUntilAllowed } from "./sign-in-limiter.server";
 
-export const setUpSchema = z.object({
-  code: z.string().trim().min(1).max(40),
-  organizationName: z.string().trim().min(1).max(100),
-  name: z.string().trim().min(1).max(100),
-  email: z.email().max(320),
-  password: z.string().min(MIN_PASSWORD_LENGTH).max(128),
-});
-export type SetUpIntent = z.infer<typeof setUpSchema>;
+export type SetUpIntent = {
+  readonly code: string;
+  readonly organizationName: string;
+  readonly name: string;
+  readonly email: string;
+  readonly password: string;
+};
 
 /** Whether the installation still waits for its first administrator. */
 export async function needsSetUp(): Promise<boolean> {

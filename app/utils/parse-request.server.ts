@@ -4,7 +4,7 @@ import { problem, type Problem } from "../domain/core/result";
 import { failWith, problemResponse } from "./problem-response.server";
 import { getMediaType, readBody } from "./read-body.server";
 
-export const MAX_JSON_BYTES = 16 * 1024 * 1024;
+const MAX_JSON_BYTES = 16 * 1024 * 1024;
 
 export function requireMethod(request: Request, ...allowed: readonly string[]): void {
   if (allowed.includes(request.method)) return;
@@ -50,16 +50,9 @@ export function requireFields<T extends z.ZodType>(schema: T, value: unknown): z
   return parsed.data;
 }
 
-export function toFieldProblems(error: z.ZodError): Problem[] {
+function toFieldProblems(error: z.ZodError): Problem[] {
   return error.issues.slice(0, 50).map((issue) => {
     const field = issue.path.join(".");
     return problem("request.field", { field: field === "" ? "body" : field, message: issue.message }, { attribute: field });
   });
-}
-
-/** A parameter of the path that the route table guarantees. */
-export function requireParam(params: Readonly<Record<string, string | undefined>>, name: string): string {
-  const value = params[name];
-  if (value === undefined || value.length > 200) throw failWith(404, "request.not-found");
-  return value;
 }

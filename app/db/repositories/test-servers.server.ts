@@ -1,23 +1,17 @@
 /** Rows of test servers: who owns which child, and whether the owner still lives. */
 import { and, eq, inArray, lt } from "drizzle-orm";
-import { getDatabase, writeBatch } from "../client.server";
+import { getDatabase, writeBatch, type Statement } from "../client.server";
 import { testServer, type TestServerState } from "../schema/operations";
-
-export type TestServerRow = typeof testServer.$inferSelect;
 
 const liveStates: TestServerState[] = ["starting", "running", "stopping"];
 
-export async function saveNewTestServer(row: typeof testServer.$inferInsert): Promise<void> {
-  await writeBatch([getDatabase().insert(testServer).values(row)]);
+/** The row and its entry in the audit, both or none. */
+export async function saveNewTestServer(row: typeof testServer.$inferInsert, audit: Statement): Promise<void> {
+  await writeBatch([getDatabase().insert(testServer).values(row), audit]);
 }
 
 export async function saveTestServer(id: string, change: Partial<Omit<typeof testServer.$inferInsert, "id">>): Promise<void> {
   await writeBatch([getDatabase().update(testServer).set(change).where(eq(testServer.id, id))]);
-}
-
-export async function findTestServer(id: string): Promise<TestServerRow | undefined> {
-  const [row] = await getDatabase().select().from(testServer).where(eq(testServer.id, id));
-  return row;
 }
 
 /** Marks as lost what claims to run although its owner has not been heard of since `silentSince`; answers the ids. */
