@@ -4,7 +4,7 @@
  * fails or is undone; gaps stay gaps. Ids that the model has meanwhile (an import may have brought them) are skipped.
  */
 import type { AddressSpace } from "../address-space/address-space";
-import { numericNodeId, toNodeKey, type NodeId } from "../address-space/node-id";
+import { numericNodeId, toNodeKey, type NodeId, type NodeKey } from "../address-space/node-id";
 import { getOwnNamespace } from "../address-space/model-header";
 import type { NodeClass } from "../address-space/node";
 import { fail, ok, problem, type Result } from "../core/result";
@@ -12,9 +12,12 @@ import { fail, ok, problem, type Result } from "../core/result";
 /** A leased block; `to` is the last id that belongs to it. */
 export type IdBlock = { readonly from: number; readonly to: number };
 
-/** What commands take new NodeIds from. The node class is told so that a policy may number by class. */
+/** Where the node will stand, for policies that make the id from it. */
+export type NewNodePlace = { readonly space: AddressSpace; readonly parent: NodeKey | undefined; readonly name: string };
+
+/** What commands take new NodeIds from. Class and place are told so that a policy may number by them; see id-policies.ts. */
 export interface NodeIdAllocator {
-  allocate(nodeClass: NodeClass): Result<NodeId>;
+  allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId>;
 }
 
 /** Hands out the ids of leased blocks. It is the one thing here that remembers: ids are used up, whatever becomes of them. */

@@ -80,7 +80,8 @@ export class EditDraft {
   /** Adds a node with the next free NodeId and order number; undefined when the command has failed. */
   add(spec: NewNode): NodeKey | undefined {
     if (this.hasFailed) return undefined;
-    const allocated = this.#context.allocate(spec.nodeClass);
+    const parent = spec.references.find((r) => !r.isForward)?.target;
+    const allocated = this.#context.allocate(spec.nodeClass, { space: this.#space, parent, name: spec.browseName.name });
     if (!allocated.ok) {
       this.#problems.push(...allocated.problems);
       return undefined;

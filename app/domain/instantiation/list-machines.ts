@@ -153,7 +153,7 @@ function listVariables(space: AddressSpace, key: NodeKey): Node[] {
   return found;
 }
 
-/** UNECE common codes of speeds as unit ids (OPC 10000-8 §5.6.4.3: the code's characters as bytes): r/min, m/s, m/min. */
+/** UNECE common codes of speeds as unit ids (OPC 10000-8 §5.6.3.4: the code's characters as bytes): r/min, m/s, m/min. */
 const SPEED_UNITS: ReadonlySet<string> = new Set(
   ["RPM", "MTS", "2X"].map((code) => String([...code].reduce((id, c) => id * 256 + c.charCodeAt(0), 0))),
 );

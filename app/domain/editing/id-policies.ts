@@ -1,0 +1,98 @@
+/**
+ * How new NodeIds are chosen beside the plain block of numbers: in a range of its own for each node class, or as a path of
+ * names (`B1.Gearbox.Vibration`) for the nodes of machines. `NodeIdLedger` remembers every NodeId that was ever given in a
+ * namespace, so that no policy gives one twice, also after deletion, renumbering or import.
+ */
+import { formatNodeId, type NodeId } from "../address-space/node-id";
+import { findModellingRule } from "../address-space/browse";
+import { isTypeNode, type NodeClass } from "../address-space/node";
+import { fail, ok, problem, type Result } from "../core/result";
+import type { NewNodePlace, NodeIdAllocator } from "./allocate-node-id";
+import type { Operation } from "./operation";
+
+/** All NodeIds ever given. Grows only. */
+export class NodeIdLedger {
+  readonly #given: Set<string>;
+
+  constructor(given: Iterable<string> = []) {
+    this.#given = new Set(given);
+  }
+
+  has(id: NodeId): boolean {
+    return this.#given.has(formatNodeId(id));
+  }
+
+  /** Takes note of what operations give; what they take away stays given. */
+  record(operations: readonly Operation[]): void {
+    for (const operation of operations) {
+      if (operation.kind === "addNode") this.add(operation.node.nodeId);
+      else if (operation.kind === "setAttribute" && operation.attribute === "nodeId") this.add(operation.value as NodeId);
+    }
+  }
+
+  add(id: NodeId): void {
+    this.#given.add(formatNodeId(id));
+  }
+
+  /** NodeId texts, to be kept. */
+  list(): string[] {
+    return [...this.#given];
+  }
+}
+
+/** Numbers from a range of its own for each class that has one; other classes take from `fallback`. */
+export class ClassRangeAllocator implements NodeIdAllocator {
+  readonly #byClass: ReadonlyMap<NodeClass, NodeIdAllocator>;
+  readonly #fallback: NodeIdAllocator;
+
+  constructor(byClass: ReadonlyMap<NodeClass, NodeIdAllocator>, fallback: NodeIdAllocator) {
+    this.#byClass = byClass;
+    this.#fallback = fallback;
+  }
+
+  allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId> {
+    return (this.#byClass.get(nodeClass) ?? this.#fallback).allocate(nodeClass, place);
+  }
+}
+
+/** More nodes of one path than anybody makes; ends the search for a free one. */
+const MAX_SUFFIX = 10_000;
+
+/**
+ * String ids along the path: the parent's own string id, a separator, the name. Types and what stands in them are numbered,
+ * since their members are found by browse path. A path that was given before gets `_2`, `_3` …
+ * Problem: `node-id.path-used-up`.
+ */
+export class PathAllocator implements NodeIdAllocator {
+  readonly #namespaceUri: string;
+  readonly #separator: string;
+  readonly #ledger: NodeIdLedger;
+  readonly #numbers: NodeIdAllocator;
+
+  constructor(namespaceUri: string, ledger: NodeIdLedger, numbers: NodeIdAllocator, separator = ".") {
+    this.#namespaceUri = namespaceUri;
+    this.#ledger = ledger;
+    this.#numbers = numbers;
+    this.#separator = separator;
+  }
+
+  allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId> {
+    if (!place || nodeClass.endsWith("Type") || isInType(place)) return this.#numbers.allocate(nodeClass, place);
+    const parent = place.parent === undefined ? undefined : place.space.getNode(place.parent)?.nodeId;
+    const isOwnPath = parent?.type === "s" && parent.namespaceUri === this.#namespaceUri;
+    const path = isOwnPath ? `${parent.identifier}${this.#separator}${place.name}` : place.name;
+    for (let suffix = 1; suffix <= MAX_SUFFIX; suffix++) {
+      const identifier = suffix === 1 ? path : `${path}_${suffix}`;
+      const nodeId: NodeId = { namespaceUri: this.#namespaceUri, type: "s", identifier };
+      if (this.#ledger.has(nodeId) || place.space.findByNodeId(nodeId)) continue;
+      this.#ledger.add(nodeId);
+      return ok(nodeId);
+    }
+    return fail(problem("node-id.path-used-up", { path }));
+  }
+}
+
+function isInType({ space, parent }: NewNodePlace): boolean {
+  const node = parent === undefined ? undefined : space.getNode(parent);
+  return node !== undefined && (isTypeNode(node) || findModellingRule(space, node.key) !== undefined);
+}

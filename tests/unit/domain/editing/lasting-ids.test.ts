@@ -1,0 +1,159 @@
+import fc from "fast-check";
+import { describe, expect, it } from "vitest";
+import { formatNodeId, numericNodeId, standardKey, type NodeId, type NodeKey } from "~/domain/address-space/node-id";
+import type { NodeClass } from "~/domain/address-space/node";
+import { StandardDataType, StandardType } from "~/domain/address-space/standard-ids";
+import { BlockAllocator } from "~/domain/editing/allocate-node-id";
+import { applyOperation } from "~/domain/editing/apply-operation";
+import { addEnumeration } from "~/domain/editing/commands/add-enumeration";
+import { addMethod, addObject, addVariable } from "~/domain/editing/commands/add-member";
+import { addStructure } from "~/domain/editing/commands/add-structure";
+import { addType } from "~/domain/editing/commands/add-type";
+import { renumberNodes } from "~/domain/editing/commands/renumber-nodes";
+import { ClassRangeAllocator, NodeIdLedger, PathAllocator } from "~/domain/editing/id-policies";
+import { instantiate } from "~/domain/instantiation/instantiate";
+import { planNodeIds, readNodeIdsCsv, writeNodeIdsCsv } from "~/domain/nodeset/node-ids-csv";
+import { Workbench } from "../../../support/command-harness";
+import { choice, makeOperation } from "../../../support/random-operations";
+import { makeNode, makeSpace, TEST_NAMESPACE } from "../../../support/small-standard";
+
+const id = (identifier: number): NodeId => numericNodeId(TEST_NAMESPACE, identifier);
+
+describe("policies", () => {
+  it("number by class, each in its range", () => {
+    const ranges = new Map<NodeClass, BlockAllocator>([
+      ["Variable", new BlockAllocator(TEST_NAMESPACE, [{ from: 6000, to: 6999 }])],
+      ["Method", new BlockAllocator(TEST_NAMESPACE, [{ from: 7000, to: 7999 }])],
+    ]);
+    const allocator = new ClassRangeAllocator(ranges, new BlockAllocator(TEST_NAMESPACE, [{ from: 1000, to: 1999 }]));
+    const given = (["Object", "Variable", "Method", "Variable"] as const).map((c) => allocator.allocate(c));
+    expect(given.map((r) => r.ok && r.value.identifier)).toEqual([1000, 6000, 7000, 6001]);
+  });
+
+  it("name nodes of machines by path and number types and what stands in them", () => {
+    const bench = new Workbench();
+    const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "GearboxType" });
+    bench.do(addVariable, { parent: type, name: "Vibration", dataType: StandardDataType.Float });
+    const ledger = new NodeIdLedger();
+    const paths = new PathAllocator(TEST_NAMESPACE, ledger, bench.context);
+    const make = (name: string, parent: NodeKey): NodeKey => {
+      const result = instantiate(bench.space, paths, { type, parent, name });
+      if (!result.ok) throw new Error("refused");
+      for (const operation of result.value.operations) {
+        const applied = applyOperation(bench.space, operation);
+        if (applied.ok) bench.space = applied.value;
+      }
+      return result.value.made[0] as NodeKey;
+    };
+    const machine = make("B1", standardKey(85));
+    make("Gearbox", machine);
+    const texts = bench.space.listOwnNodes().map((n) => n.nodeId).filter((n) => n.type === "s").map((n) => n.identifier);
+    expect(texts).toEqual(["B1", "B1.Vibration", "B1.Gearbox", "B1.Gearbox.Vibration"]);
+    const again = paths.allocate("Object", { space: makeSpace(), parent: undefined, name: "B1" });
+    expect(again.ok && again.value.identifier).toBe("B1_2");
+  });
+});
+
+describe("NodeIdLedger", () => {
+  it("never lets an id be given twice through additions, deletions, renumbering and imports", () => {
+    fc.assert(
+      fc.property(fc.array(choice, { maxLength: 40 }), fc.array(fc.nat(40), { maxLength: 10 }), (choices, imported) => {
+        const ledger = new NodeIdLedger();
+        let space = makeSpace([1, 2].map((n) => makeNode(n, "Object")));
+        for (const node of space.own.nodes.values()) ledger.add(node.nodeId);
+        const allocator = new BlockAllocator(TEST_NAMESPACE, [{ from: 0, to: 2000 }], (nodeId) => ledger.has(nodeId));
+        const everGiven: string[] = [];
+        for (const made of choices) {
+          const operation = makeOperation(space, made);
+          const result = applyOperation(space, operation);
+          if (!result.ok) continue;
+          space = result.value;
+          ledger.record([operation]);
+          const fresh = allocator.allocate("Object");
+          if (fresh.ok) {
+            expect(space.findByNodeId(fresh.value)).toBeUndefined();
+            everGiven.push(formatNodeId(fresh.value));
+            ledger.add(fresh.value);
+          }
+        }
+        for (const number of imported) ledger.add(id(number));
+        const last = allocator.allocate("Object");
+        if (last.ok) {
+          everGiven.push(formatNodeId(last.value));
+          expect(imported).not.toContain(last.value.identifier);
+        }
+        expect(new Set(everGiven).size).toBe(everGiven.length);
+        expect(new NodeIdLedger(ledger.list()).list()).toEqual(ledger.list());
+      }),
+      { numRuns: 100 },
+    );
+  });
+});
+
+describe("renumberNodes", () => {
+  const bench = new Workbench();
+  const state = bench.do(addEnumeration, { name: "StateEnum", fields: [{ name: "Off", value: 0 }] });
+  const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "MachineType" });
+  const method = bench.do(addMethod, { parent: type, name: "SetState", inputArguments: [{ name: "State", dataType: state }] });
+
+  it("rewrites the uses inside values and keeps keys and references", () => {
+    const argumentsKey = bench.at(method, "InputArguments").key;
+    const textOf = (): string => (bench.node(argumentsKey) as { value: { xml: string } }).value.xml;
+    const old = formatNodeId(bench.node(state).nodeId);
+    expect(textOf()).toContain(`<Identifier>${old}</Identifier>`);
+    bench.do(renumberNodes, { changes: [{ node: state, nodeId: id(3002) }, { node: type, nodeId: id(1002) }] });
+    expect(textOf()).toContain(`<Identifier>nsu=${TEST_NAMESPACE};i=3002</Identifier>`);
+    expect(textOf()).not.toContain(old);
+    expect(bench.space.findByNodeId(id(1002))?.key).toBe(type);
+    expect(bench.space.edgesFrom(type).map((e) => e.target)).toContain(method);
+  });
+
+  it("refuses ids that are or were given, and other namespaces", () => {
+    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: id(1002) }] })).toEqual(["operation.node-id-taken"]);
+    const former = Number(String(type).split("i=")[1]);
+    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: id(former) }] })).toEqual(["operation.node-id-taken"]);
+    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: numericNodeId("urn:x", 1) }] })).toEqual(["renumber.namespace"]);
+  });
+});
+
+describe("NodeIds CSV", () => {
+  it("writes symbol, identifier and class, and brings the ids back into another model of the same structure", () => {
+    const build = (bench: Workbench): void => {
+      const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "MachineType" });
+      const group = bench.do(addObject, { parent: type, name: "Process data" });
+      bench.do(addVariable, { parent: group, name: "Speed", dataType: StandardDataType.Float });
+      bench.do(addStructure, { name: "PointType", fields: [{ name: "X", dataType: StandardDataType.Double }] });
+    };
+    const one = new Workbench();
+    build(one);
+    const csv = writeNodeIdsCsv(one.space);
+    // The form of the published lists, e.g. `Argument_Encoding_DefaultXml,297,Object` (OPC 10000-6 §A.3).
+    expect(csv).toMatch(/^MachineType,\d+,ObjectType$/m);
+    expect(csv).toMatch(/^MachineType_Process_data_Speed,\d+,Variable$/m);
+    expect(csv).toMatch(/^PointType_Encoding_DefaultXML,\d+,Object$/m);
+    const two = new Workbench();
+    for (let i = 0; i < 4000; i++) two.context.allocate("Object");
+    build(two);
+    const rows = readNodeIdsCsv(csv, TEST_NAMESPACE);
+    if (!rows.ok) throw new Error("not read");
+    expect(rows.problems).toEqual([]);
+    const plan = planNodeIds(two.space, rows.value);
+    expect(plan.unknown).toEqual([]);
+    expect(plan.unnamed).toEqual([]);
+    two.do(renumberNodes, { changes: plan.changes });
+    expect(writeNodeIdsCsv(two.space)).toBe(csv);
+  });
+
+  it("tells lines that it cannot use", () => {
+    const text = 'A,1,Object\nB,2\n"C ""x""",s=a,Variable\nD,4294967296,Object\nE,5,Thing\nF,1,Object\n';
+    const result = readNodeIdsCsv(text, TEST_NAMESPACE);
+    if (!result.ok) throw new Error("not read");
+    expect(result.value.map((r) => [r.symbol, r.nodeId.identifier, r.line])).toEqual([["A", 1, 1], ['C "x"', "a", 3], ["F", 1, 6]]);
+    expect(result.problems.map((p) => [p.code, p.at?.line])).toEqual([
+      ["node-ids.columns", 2],
+      ["node-id.numeric-range", 4],
+      ["node-ids.class", 5],
+      ["node-ids.twice", 6],
+    ]);
+  });
+});
