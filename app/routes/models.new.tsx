@@ -3,12 +3,15 @@ import { data, redirect } from "react-router";
 import type { Route } from "./+types/models.new";
 import { assertMay, requireUser } from "~/auth/caller.server";
 import { NewModelForm } from "~/components/models/new-model-form";
+import { toNamespacePart } from "~/components/models/propose-namespace";
 import { Page } from "~/components/ui/page";
 import { formatProblem } from "~/domain/core/problem-texts";
+import { retrofitRequiredModels } from "~/domain/editing/starters/retrofit-models";
 import { chooseOrganization } from "~/presenters/chosen-organization.server";
 import { readNewModelPage } from "~/presenters/new-model-page.server";
 import { createModel } from "~/services/create-model.server";
 import { listLibraryChoices } from "~/services/list-library-choices.server";
+import { startRetrofit } from "~/services/start-retrofit.server";
 import { newModelSchema as schema } from "~/utils/model-forms";
 
 export const meta: Route.MetaFunction = () => [{ title: "New model · Ferrule" }];
@@ -30,9 +33,13 @@ export async function action({ request }: Route.ActionArgs) {
   assertMay(caller, "model.edit", organizationId);
   const submission = parseWithZod(await request.formData(), { schema });
   if (submission.status !== "success") return data(submission.reply(), { status: 400 });
-  const { required, ...intent } = submission.value;
-  const result = await createModel(caller, organizationId, { ...intent, requiredModels: required });
+  const { required, start, ...intent } = submission.value;
+  const requiredModels = start === "retrofit" ? [...new Set([...required, ...retrofitRequiredModels])] : required;
+  const result = await createModel(caller, organizationId, { ...intent, requiredModels });
   if (!result.ok) return data(submission.reply({ formErrors: result.problems.map(formatProblem) }), { status: 422 });
+  if (start === "signals") return redirect(`/models/${result.value.id}/signals`);
+  // A starter that fails leaves a blank model, which its author can fill or delete.
+  if (start === "retrofit") await startRetrofit(caller, result.value, toNamespacePart(intent.name) || "Machine");
   return redirect(`/models/${result.value.id}/sheet`);
 }
 

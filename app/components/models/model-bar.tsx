@@ -1,4 +1,4 @@
-import { ChevronDown, Download, Info, Play, Trash2 } from "lucide-react";
+import { ChevronDown, Download, Info, Play, Table2, Trash2 } from "lucide-react";
 import type { ReactNode } from "react";
 import { LinkButton } from "~/components/ui/button";
 import { Icon } from "~/components/ui/icon";
@@ -35,6 +35,11 @@ export function ModelBar({ model, tabs, mayEdit, tools, testServer }: Props) {
         }
         entries={[
           { kind: "link", label: "About this model", icon: Info, to: `/models/${model.id}/about` },
+          ...(mayEdit
+            ? ([
+                { kind: "link", label: "Add from a signal list", icon: Table2, to: `/models/${model.id}/signals` },
+              ] as const)
+            : []),
           {
             kind: "link",
             label: "Download NodeSet2",

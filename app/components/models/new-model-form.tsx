@@ -6,12 +6,14 @@ import { RequiredModelsField } from "~/components/library/required-models-field"
 import type { LibraryChoice } from "~/services/list-library-choices.server";
 import { ConformField } from "~/components/shell/conform-field";
 import { Button, LinkButton } from "~/components/ui/button";
-import { cx } from "~/components/ui/cx";
 import { Field, Input } from "~/components/ui/field";
 import { Notice } from "~/components/ui/notice";
-import { newModelSchema as schema } from "~/utils/model-forms";
+import { retrofitRequiredModels } from "~/domain/editing/starters/retrofit-models";
+import { newModelSchema as schema, type ModelStarter } from "~/utils/model-forms";
+import { ChoiceCard } from "./choice-card";
 import { KindSketch } from "./kind-sketch";
 import { findNamespaceBase, proposeNamespaceUri } from "./propose-namespace";
+import { StarterChoice } from "./starter-choice";
 
 type Kind = "types" | "machines";
 
@@ -29,6 +31,9 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
   const [uri, setUri] = useState<string | undefined>(undefined);
   const [name, setName] = useState("");
   const [required, setRequired] = useState<readonly string[]>([]);
+  const [start, setStart] = useState<ModelStarter>("blank");
+  const needed =
+    kind === "types" && start === "retrofit" ? [...new Set([...required, ...retrofitRequiredModels])] : required;
   const [form, fields] = useForm({
     lastResult,
     defaultValue: { version: "1.0.0" },
@@ -54,17 +59,21 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
       <fieldset>
         <legend className="mb-1 text-note font-medium text-ink-2">Kind</legend>
         <div className="grid grid-cols-2 gap-3 max-sm:grid-cols-1">
-          <KindChoice
-            kind="types"
+          <ChoiceCard
+            name="kind"
+            value="types"
             chosen={kind}
             onChoose={setKind}
+            sketch={<KindSketch kind="types" />}
             title="Types"
             about="What a kind of machine exposes: object types, variables with unit and range, enumerations, methods."
           />
-          <KindChoice
-            kind="machines"
+          <ChoiceCard
+            name="kind"
+            value="machines"
             chosen={kind}
             onChoose={setKind}
+            sketch={<KindSketch kind="machines" />}
             title="Machines"
             about="The machines themselves: instances of types of another model, with their identification."
           />
@@ -104,9 +113,10 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
           />
         )}
       </Field>
+      {kind === "types" ? <StarterChoice start={start} onChoose={setStart} /> : null}
       <div className="grid gap-1">
         <h2 className="text-note font-medium text-ink-2">Required models</h2>
-        <RequiredModelsField choices={choices} chosen={required} onChange={setRequired} name={fields.required.name} />
+        <RequiredModelsField choices={choices} chosen={needed} onChange={setRequired} name={fields.required.name} />
       </div>
       <p className="flex gap-2">
         <Button
@@ -123,26 +133,5 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
         </LinkButton>
       </p>
     </Form>
-  );
-}
-
-type KindChoiceProps = { kind: Kind; chosen: Kind; onChoose: (kind: Kind) => void; title: string; about: string };
-
-function KindChoice({ kind, chosen, onChoose, title, about }: KindChoiceProps) {
-  const on = kind === chosen;
-  return (
-    <label
-      className={cx(
-        "grid cursor-pointer grid-cols-[auto_1fr] gap-x-3 border p-3 has-focus-visible:outline-2 has-focus-visible:outline-copper",
-        on ? "border-copper bg-copper-wash" : "border-rule bg-leaf hover:border-edge",
-      )}
-    >
-      <input type="radio" name="kind" value={kind} checked={on} onChange={() => onChoose(kind)} className="sr-only" />
-      <KindSketch kind={kind} />
-      <span>
-        <b className="block font-semibold">{title}</b>
-        <span className="text-small text-ink-2">{about}</span>
-      </span>
-    </label>
   );
 }

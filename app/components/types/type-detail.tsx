@@ -21,7 +21,7 @@ export function TypeDetail({ space, type, modelId, onShow }: Props) {
   const members = listTypeMembers(space, type.key);
   const description = findText(type.description ?? []);
   return (
-    <article aria-label={getDisplayName(type)} className="grid content-start gap-4">
+    <article aria-label={getDisplayName(type)} className="grid grid-cols-[minmax(0,1fr)] content-start gap-4">
       <header>
         <p className="flex flex-wrap items-center gap-2">
           <NodeClassGlyph kind={type.nodeClass} width={26} label />

@@ -46,6 +46,7 @@ export function TypesView({ model, space, shown, onShow, editBlockedBy }: Props)
           </label>
           <Segments
             label="Class of type"
+            className="justify-self-start"
             value={kind}
             onChange={setKind}
             options={[

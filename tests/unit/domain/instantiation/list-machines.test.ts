@@ -77,7 +77,7 @@ describe("listMachines", () => {
       const analog = (name: string) => m.variable(name, { parent: press, type: StandardType.AnalogUnitRangeType });
       const first = analog("Pressure");
       const speed = analog("Speed");
-      // UNECE Rec. 20: r/min is RPM, unit id 5394509 by the formula of OPC 10000-8 §5.6.4.3.
+      // UNECE Rec. 20: r/min is RPM, unit id 5394509 by the formula of OPC 10000-8 §5.6.3.4.
       const unit =
         "<EUInformation><UnitId>5394509</UnitId><DisplayName><Text>r/min</Text></DisplayName></EUInformation>";
       addStandardProperty(m, speed, "EngineeringUnits", unit);

@@ -1,0 +1,163 @@
+import { useDeferredValue, useMemo, useState } from "react";
+import { useNavigate } from "react-router";
+import { describe } from "~/components/model/edit-steps";
+import type { OpenModel } from "~/components/model/use-model";
+import { FindingShape } from "~/components/notation/finding-badge";
+import { Button } from "~/components/ui/button";
+import { Field, Input, Select, TextArea } from "~/components/ui/field";
+import { Page } from "~/components/ui/page";
+import { showToast } from "~/components/ui/toast";
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import { isTypeNode } from "~/domain/address-space/node";
+import type { NodeKey } from "~/domain/address-space/node-id";
+import { addSignals } from "~/domain/editing/starters/add-signals";
+import { readDelimited } from "~/domain/editing/starters/read-delimited";
+import { guessColumns, readSignalList, type ColumnChoice } from "~/domain/editing/starters/read-signal-list";
+import { toNamespacePart } from "../models/propose-namespace";
+import { ColumnMatch } from "./column-match";
+import { SignalTable } from "./signal-table";
+
+type Props = { model: OpenModel; space: AddressSpace; editBlockedBy: string | undefined };
+
+const newType = "new";
+const example =
+  "group,name,type,unit,low,high,description\nProcess,spindle speed,REAL,r/min,0,180,Speed of the spindles";
+
+/** A signal list becomes members: paste or choose it, match the columns, look, and take it in one step. */
+export function SignalsView({ model, space, editBlockedBy }: Props) {
+  const navigate = useNavigate();
+  const [text, setText] = useState("");
+  const [matched, setMatched] = useState<ColumnChoice | undefined>(undefined);
+  const [target, setTarget] = useState<string>(newType);
+  const [typeName, setTypeName] = useState(`${toNamespacePart(model.workspace.model.name) || "Machine"}Type`);
+  const read = useDeferredValue(text);
+  const table = useMemo(() => (read.trim() === "" ? undefined : readDelimited(read)), [read]);
+  const head = table?.ok ? (table.value.rows[0]?.fields ?? []) : [];
+  const columns = matched ?? guessColumns(head);
+  const list = useMemo(() => (table?.ok ? readSignalList(table.value, columns) : undefined), [table, columns]);
+  const problems = [...(table && !table.ok ? table.problems : []), ...(list?.problems ?? [])];
+  const ownTypes = space.listOwnNodes().filter((node) => isTypeNode(node) && node.nodeClass === "ObjectType");
+  const count = list?.signals.length ?? 0;
+
+  async function chooseFile(file: File | undefined): Promise<void> {
+    if (!file) return;
+    setMatched(undefined);
+    setText(await file.text());
+  }
+  function take(): void {
+    const type = target === newType ? { name: typeName.trim() } : { key: target as NodeKey };
+    const edit = addSignals(space, model.editor.allocator, { type, signals: list?.signals ?? [] });
+    const saved = edit.ok ? model.editor.dispatch("add-signals", edit.value.operations) : edit;
+    if (!edit.ok || !saved.ok) {
+      showToast({
+        tone: "error",
+        title: "The list could not be taken in",
+        detail: describe(space, saved.problems).join(" "),
+        seconds: 15,
+      });
+      return;
+    }
+    showToast({
+      tone: "good",
+      title: `${count} ${count === 1 ? "signal" : "signals"} taken in`,
+      detail: "Undo takes all of them back in one step.",
+    });
+    const first = edit.value.made[0];
+    void navigate(
+      `/models/${model.workspace.model.id}/register${first === undefined ? "" : `?node=${encodeURIComponent(first)}`}`,
+    );
+  }
+
+  return (
+    <Page
+      title="Signal list"
+      about="Rows become members: a group becomes an Object, a signal a Variable with unit and range."
+    >
+      <div className="grid grid-cols-[minmax(0,1fr)_320px] gap-8 max-lg:grid-cols-1">
+        <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-5">
+          <Field
+            label="The list"
+            hint="Copy the cells in your spreadsheet and paste them here, or choose a CSV file. The first row holds the heads."
+          >
+            {(tied) => (
+              <TextArea
+                {...tied}
+                mono
+                rows={table ? 5 : 10}
+                value={text}
+                placeholder={example}
+                spellCheck={false}
+                onChange={(event) => {
+                  setMatched(undefined);
+                  setText(event.currentTarget.value);
+                }}
+              />
+            )}
+          </Field>
+          <input
+            type="file"
+            aria-label="CSV file"
+            accept=".csv,.tsv,.txt,text/csv,text/plain"
+            onChange={(event) => void chooseFile(event.currentTarget.files?.[0])}
+            className="text-small file:mr-3 file:h-7 file:rounded-edge file:border file:border-edge file:bg-leaf file:px-2.5 file:text-small file:font-medium"
+          />
+          {head.length > 0 ? <ColumnMatch head={head} columns={columns} onChange={setMatched} /> : null}
+          {list && count > 0 ? <SignalTable signals={list.signals} space={space} /> : null}
+        </div>
+        <aside className="grid content-start gap-4 border-t-[1.5px] border-ink pt-3">
+          <h2 className="text-lead font-semibold">Take it in</h2>
+          <Field label="Members of">
+            {(tied) => (
+              <Select {...tied} value={target} onChange={(event) => setTarget(event.currentTarget.value)}>
+                <option value={newType}>a new type</option>
+                {ownTypes.map((node) => (
+                  <option key={node.key} value={node.key}>
+                    {node.browseName.name}
+                  </option>
+                ))}
+              </Select>
+            )}
+          </Field>
+          {target === newType ? (
+            <Field label="Name of the type">
+              {(tied) => (
+                <Input {...tied} value={typeName} onChange={(event) => setTypeName(event.currentTarget.value)} />
+              )}
+            </Field>
+          ) : null}
+          <Button
+            tone="main"
+            className="justify-self-start"
+            onClick={take}
+            blockedBy={editBlockedBy ?? (count === 0 ? "no signal has been read yet" : undefined)}
+          >
+            Take in {count} {count === 1 ? "signal" : "signals"}
+          </Button>
+          {problems.length > 0 ? (
+            <section>
+              <h3 className="mb-1 text-note font-medium text-ink-2">Problems {problems.length}</h3>
+              <ul className="max-h-80 overflow-y-auto border-t border-ink">
+                {problems.map((problem, i) => (
+                  <li
+                    key={`${problem.code} ${problem.at?.line ?? ""} ${i}`}
+                    className="grid grid-cols-[14px_1fr] gap-1.5 border-b border-hair py-1 text-small"
+                  >
+                    <span className="pt-0.5">
+                      <FindingShape severity={problem.severity} />
+                    </span>
+                    <span>
+                      {problem.at?.line === undefined ? null : (
+                        <span className="mr-1 font-mono text-note text-ink-3">line {problem.at.line}</span>
+                      )}
+                      {describe(space, [problem]).join(" ")}
+                    </span>
+                  </li>
+                ))}
+              </ul>
+            </section>
+          ) : null}
+        </aside>
+      </div>
+    </Page>
+  );
+}
