@@ -120,6 +120,7 @@ export class Supervisor {
       problems: [],
       sampleInstances: [],
       landingNode: null,
+      servedSeq: null,
     };
     this.#entries.set(seed.id, { state, log: [], certificate: undefined, child: undefined, startTimer: undefined, gone: Promise.resolve() });
     this.#forgetFinished();
@@ -128,7 +129,7 @@ export class Supervisor {
   }
 
   /** Forks the process of an announced server. Does nothing when it was stopped meanwhile. */
-  launch(message: StartMessage, content: Pick<TestServerState, "sampleInstances" | "landingNode">): void {
+  launch(message: StartMessage, content: Pick<TestServerState, "sampleInstances" | "landingNode" | "servedSeq">): void {
     const entry = this.#entries.get(message.id);
     if (entry?.state.state !== "starting") return;
     const file = this.#options.entry;

@@ -15,6 +15,7 @@ export async function loader({ request, params }: Route.LoaderArgs) {
   const { caller, model } = await requireModelForPage(request, params.modelId, "read");
   const servers = listTestServers(model.organizationId, model.id);
   return {
+    headSeq: model.headSeq,
     servers: servers.map((server) => ({ server, log: readTestServerLog(server.id) })),
     mayRun: mayDo(caller, "test-server.run", model.organizationId),
   };
@@ -23,17 +24,20 @@ export async function loader({ request, params }: Route.LoaderArgs) {
 export async function action({ request, params }: Route.ActionArgs) {
   const { caller, model } = await requireModelForPage(request, params.modelId, "test-server.run");
   const form = await request.formData();
-  if (form.get("intent") === "stop") {
-    await stopTestServer(requireTestServer(caller, String(form.get("id")), "test-server.run").id);
-    return redirect(`/models/${model.id}/test-server`);
-  }
-  const intent = requireFields(testServerIntentSchema, {
-    security: form.get("open") === "1" ? ["basic256sha256", "none"] : ["basic256sha256"],
-    simulatedQuality: form.get("simulatedQuality") ?? undefined,
-  });
-  const started = await startTestServer(model, caller.userId, intent);
+  const old = form.has("id") ? requireTestServer(caller, String(form.get("id")), "test-server.run") : undefined;
+  if (old) await stopTestServer(old, caller);
+  if (form.get("intent") === "stop") return redirect(`/models/${model.id}/test-server`);
+  const intent = requireFields(testServerIntentSchema, old ? { security: old.security, simulatedQuality: old.simulatedQuality } : readChoice(form));
+  const started = await startTestServer(model, caller, intent);
   if (!started.ok) return data({ problems: started.problems }, { status: 503 });
   return redirect(`/models/${model.id}/test-server`);
+}
+
+function readChoice(form: FormData): object {
+  return {
+    security: form.get("open") === "1" ? ["basic256sha256", "none"] : ["basic256sha256"],
+    simulatedQuality: form.get("simulatedQuality") ?? undefined,
+  };
 }
 
 export default function TestServerRoute({ loaderData, actionData }: Route.ComponentProps) {

@@ -2,6 +2,7 @@ import { randomBytes } from "node:crypto";
 import { hostname } from "node:os";
 import { join } from "node:path";
 import { z } from "zod";
+import { addAuditStatement } from "../db/repositories/audit.server";
 import { saveNewTestServer } from "../db/repositories/test-servers.server";
 import { AddressSpace } from "../domain/address-space/address-space";
 import { fail, ok, problem, type Result } from "../domain/core/result";
@@ -25,6 +26,8 @@ export const testServerIntentSchema = z.strictObject({
 });
 export type TestServerIntent = z.infer<typeof testServerIntentSchema>;
 
+/** Who starts it, for the audit. */
+type Person = { readonly userId: string; readonly name: string };
 type ModelOfServer = { readonly id: string; readonly organizationId: string; readonly name: string };
 
 const MAX_SESSIONS = 50;
@@ -34,30 +37,36 @@ const HOST = "127.0.0.1";
  * Starts a test server on the model's working state and answers at once, in state "starting"; who asked for it has the
  * permission. Problems: `test-server.limit`. What goes wrong later is in the server's state.
  */
-export async function startTestServer(model: ModelOfServer, startedBy: string, intent: TestServerIntent): Promise<Result<TestServerState>> {
+export async function startTestServer(model: ModelOfServer, by: Person, intent: TestServerIntent): Promise<Result<TestServerState>> {
   const supervisor = getSupervisor();
   await followTestServers();
   const full = supervisor.checkRoom();
   if (full) return fail(full);
   const seed = makeSeed(model, intent);
   const state = supervisor.announce(seed);
-  await saveNewTestServer({
+  const row = {
     id: seed.id,
     organizationId: model.organizationId,
     modelId: model.id,
-    state: "starting",
+    state: "starting" as const,
     options: { ...intent },
     problems: [],
     ownerPid: process.pid,
     ownerHost: hostname(),
-    startedBy,
+    startedBy: by.userId,
     startedAt: new Date(state.startedAt),
     heartbeatAt: new Date(state.startedAt),
-  });
+  };
+  await saveNewTestServer(row, auditOf("test-server.start", model, by, { testServer: seed.id, ...intent }));
   void prepare(seed)
     .catch((error: unknown) => failStart(seed, error))
     .then(() => clearWhenStopped(seed.id));
   return ok(state);
+}
+
+function auditOf(action: "test-server.start", model: ModelOfServer, by: Person, details: Readonly<Record<string, unknown>>): ReturnType<typeof addAuditStatement> {
+  const { id, name, organizationId } = model;
+  return addAuditStatement({ organizationId, userId: by.userId, userName: by.name, action, subject: { kind: "model", id, name }, details });
 }
 
 function failStart(seed: TestServerSeed, error: unknown): void {
@@ -101,6 +110,7 @@ async function prepare(seed: TestServerSeed): Promise<void> {
   const moved = [...team, space.own, ...(samples ? [samples.layer] : [])];
   const simulation = planSimulation(served, moved);
   supervisor.launch({ ...toStartMessage(seed, nodeSetFiles, simulation), methods: listAnsweredMethods(served, moved) }, {
+    servedSeq: working.seq,
     sampleInstances: samples?.names ?? [],
     landingNode: (simulation.find(({ motion }) => motion.kind === "sine" || motion.kind === "ramp") ?? simulation[0])?.nodeId ?? null,
   });

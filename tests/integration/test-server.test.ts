@@ -264,7 +264,7 @@ describe("the end of a test server", () => {
 
   it("leaves no process behind when it is stopped while it starts", async () => {
     newSupervisor().announce(makeSeed("early"));
-    supervisor.launch(makeStartMessage(makeSeed("early")), { sampleInstances: [], landingNode: null });
+    supervisor.launch(makeStartMessage(makeSeed("early")), { sampleInstances: [], landingNode: null, servedSeq: 0 });
     const pid = supervisor.getPid("early") ?? 0;
     await supervisor.stop("early");
     expect(() => process.kill(pid, 0)).toThrow();

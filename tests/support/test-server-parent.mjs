@@ -3,7 +3,7 @@ const [supervisorFile, entry, seed, message] = process.argv.slice(2);
 const { Supervisor } = await import(supervisorFile);
 const supervisor = new Supervisor({ entry });
 supervisor.announce(JSON.parse(seed));
-supervisor.launch(JSON.parse(message), { sampleInstances: [], landingNode: null });
+supervisor.launch(JSON.parse(message), { sampleInstances: [], landingNode: null, servedSeq: 0 });
 const timer = setInterval(() => {
   if (supervisor.get(JSON.parse(seed).id)?.state !== "running") return;
   clearInterval(timer);

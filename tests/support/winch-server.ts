@@ -76,7 +76,7 @@ export async function startWinch(
   change: Partial<StartMessage> = {},
 ): Promise<TestServerState> {
   supervisor.announce(seed);
-  supervisor.launch(makeStartMessage(seed, change), { sampleInstances: [], landingNode: null });
+  supervisor.launch(makeStartMessage(seed, change), { sampleInstances: [], landingNode: null, servedSeq: 0 });
   return waitFor(() => {
     const state = supervisor.get(seed.id);
     return state && state.state !== "starting" ? state : undefined;

@@ -10,10 +10,12 @@ type Props = {
   servers: readonly { readonly server: TestServerState; readonly log: readonly LogLine[] }[];
   problems: readonly Problem[];
   mayRun: boolean;
+  /** The model's present sequence number. */
+  headSeq: number;
 };
 
 /** The test servers of a model. */
-export function TestServerPage({ servers, problems, mayRun }: Props) {
+export function TestServerPage({ servers, problems, mayRun, headSeq }: Props) {
   return (
     <Page title="Test server" about="An OPC UA server on this host that serves the model as it is now, with simulated values.">
       <div className="grid max-w-240 gap-4">
@@ -22,7 +24,7 @@ export function TestServerPage({ servers, problems, mayRun }: Props) {
         ))}
         <StartTestServer mayRun={mayRun} isAgain={servers.some(({ server }) => server.state === "running" || server.state === "starting")} />
         {servers.map(({ server, log }) => (
-          <TestServerPanel key={server.id} initial={server} initialLog={log} mayRun={mayRun} />
+          <TestServerPanel key={server.id} initial={server} initialLog={log} mayRun={mayRun} headSeq={headSeq} />
         ))}
       </div>
     </Page>

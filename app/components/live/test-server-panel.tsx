@@ -1,4 +1,4 @@
-import { Activity, Square, TriangleAlert } from "lucide-react";
+import { Activity, RotateCw, Square, TriangleAlert } from "lucide-react";
 import type { ReactNode } from "react";
 import { useFetcher } from "react-router";
 import { formatProblem } from "~/domain/core/problem-texts";
@@ -15,7 +15,7 @@ import { ServerLog } from "./server-log";
 import { StageList } from "./stage-list";
 import { useTestServer } from "./use-test-server";
 
-type Props = { initial: TestServerState; initialLog: readonly LogLine[]; mayRun: boolean };
+type Props = { initial: TestServerState; initialLog: readonly LogLine[]; mayRun: boolean; headSeq: number };
 
 const STATUS: Readonly<Record<TestServerState["state"], { status: Status; word: string }>> = {
   starting: { status: "stale", word: "Starting" },
@@ -27,12 +27,13 @@ const STATUS: Readonly<Record<TestServerState["state"], { status: Status; word: 
 };
 
 /** One test server: how far it is, how to reach it, who is connected, what it says, and its end. */
-export function TestServerPanel({ initial, initialLog, mayRun }: Props) {
+export function TestServerPanel({ initial, initialLog, mayRun, headSeq }: Props) {
   const { server, log } = useTestServer(initial, initialLog);
   const stop = useFetcher();
   const { status, word } = STATUS[server.state];
   const isStopping = stop.state !== "idle" || server.state === "stopping";
   const end = (): void => void stop.submit({ intent: "stop", id: server.id }, { method: "post" });
+  const restart = (): void => void stop.submit({ intent: "restart", id: server.id }, { method: "post" });
   return (
     <article aria-label={server.applicationName} data-test-server={server.state} className="border-[1.5px] border-ink bg-leaf">
       <header className="flex min-h-10 flex-wrap items-center gap-x-3 gap-y-1 border-b border-ink px-4 py-1.5">
@@ -55,6 +56,19 @@ export function TestServerPanel({ initial, initialLog, mayRun }: Props) {
       <div className="grid gap-4 p-4">
         {server.state === "starting" ? <StageList server={server} onCancel={mayRun ? end : undefined} /> : null}
         {server.state === "failed" ? <Failure server={server} /> : null}
+        {server.state === "running" && mayRun && server.servedSeq !== null && headSeq > server.servedSeq ? (
+          <Notice
+            tone="hint"
+            title={`The model has changed since this server started: ${countEdits(headSeq - server.servedSeq)}`}
+            action={
+              <Button icon={RotateCw} busy={isStopping} onClick={restart}>
+                Restart with them
+              </Button>
+            }
+          >
+            Connected clients lose their session; a new endpoint address follows.
+          </Notice>
+        ) : null}
         {server.state === "running" ? <Running server={server} /> : null}
         <details open={server.state === "failed"} className="text-small">
           <summary className="w-fit font-medium">Log, {log.length} lines</summary>
@@ -65,6 +79,10 @@ export function TestServerPanel({ initial, initialLog, mayRun }: Props) {
       </div>
     </article>
   );
+}
+
+function countEdits(count: number): string {
+  return count === 1 ? "1 edit" : `${count} edits`;
 }
 
 function Uptime({ since }: { since: string | null }) {

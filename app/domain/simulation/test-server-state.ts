@@ -54,6 +54,8 @@ export type TestServerState = {
   readonly endpointUrl: string | null;
   /** Names of instances that exist on the test server only, one of each type, because a model of types has none to watch. */
   readonly sampleInstances: readonly string[];
+  /** Sequence number of the model that is served; a higher head means that the model has changed since. */
+  readonly servedSeq: number | null;
   /** The node that Live opens at, `nsu=`: the first that moves. */
   readonly landingNode: string | null;
   readonly applicationName: string;

@@ -14,8 +14,9 @@ export const loader = handleApi(async ({ request, params }: Route.LoaderArgs) =>
 
 /** `DELETE`: answers when the process is gone and the port is free. */
 export const action = handleApi(async ({ request, params }: Route.ActionArgs) => {
-  const server = requireTestServer(await requireCaller(request), params.testServerId, "test-server.run");
+  const caller = await requireCaller(request);
+  const server = requireTestServer(caller, params.testServerId, "test-server.run");
   requireMethod(request, "DELETE");
-  await stopTestServer(server.id);
+  await stopTestServer(server, caller);
   return new Response(null, { status: 204 });
 });

@@ -19,7 +19,7 @@ export const action = handleApi(async ({ request, params }: Route.ActionArgs) =>
   const { caller, model } = await requireModel(request, params.modelId, "test-server.run");
   requireMethod(request, "POST");
   const intent = await requireOptionalJson(request, testServerIntentSchema);
-  const started = await startTestServer(model, caller.userId, intent);
+  const started = await startTestServer(model, caller, intent);
   if (!started.ok) return problemResponse(503, started.problems);
   const location = `/api/v1/test-servers/${started.value.id}`;
   return Response.json(describeTestServer(started.value), { status: 201, headers: { location } });
