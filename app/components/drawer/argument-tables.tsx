@@ -70,7 +70,7 @@ function ArgumentTable({ space, method, direction, title, readOnly }: TableProps
             {list.map((argument, index) => (
               <tr key={index}>
                 <td>
-                  <CommitField label={`Name of argument ${index + 1}`} mono value={argument.name} readOnly={readOnly} onCommit={(name) => change(index, { name })} />
+                  <CommitField isBare label={`Name of argument ${index + 1}`} mono value={argument.name} readOnly={readOnly} onCommit={(name) => change(index, { name })} />
                 </td>
                 <td>
                   <TypeField label={`DataType of ${argument.name}`} space={space} kind="DataType" value={argument.dataType} readOnly={readOnly} onPick={(dataType) => change(index, { dataType })} />
@@ -85,7 +85,7 @@ function ArgumentTable({ space, method, direction, title, readOnly }: TableProps
                   </Select>
                 </td>
                 <td>
-                  <CommitField label={`Description of ${argument.name}`} value={argument.description} readOnly={readOnly} onCommit={(description) => change(index, { description })} />
+                  <CommitField isBare label={`Description of ${argument.name}`} value={argument.description} readOnly={readOnly} onCommit={(description) => change(index, { description })} />
                 </td>
                 <td>
                   {readOnly ? null : (

@@ -49,7 +49,7 @@ export function EnumerationTable({ space, node, readOnly }: { space: AddressSpac
           {fields.map((field, index) => (
             <tr key={index}>
               <td>
-                <CommitField
+                <CommitField isBare
                   label={`Value of ${field.name}`}
                   mono
                   value={String(field.value ?? 0)}
@@ -61,10 +61,10 @@ export function EnumerationTable({ space, node, readOnly }: { space: AddressSpac
                 />
               </td>
               <td>
-                <CommitField label={`Name of value ${field.value ?? 0}`} value={field.name} readOnly={readOnly} onCommit={(name) => change(index, { name })} />
+                <CommitField isBare label={`Name of value ${field.value ?? 0}`} value={field.name} readOnly={readOnly} onCommit={(name) => change(index, { name })} />
               </td>
               <td>
-                <CommitField
+                <CommitField isBare
                   label={`Description of ${field.name}`}
                   value={findText(field.description ?? []) ?? ""}
                   readOnly={readOnly}

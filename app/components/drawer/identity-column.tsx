@@ -49,7 +49,7 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
       {isTypeNode(node) ? (
         <Fact label="">
           <Checkbox
-            label="Abstract: may not be instantiated"
+            label="Abstract"
             checked={node.isAbstract === true}
             disabled={readOnly}
             onChange={(event) => actions.setAttribute([node.key], "isAbstract", event.currentTarget.checked ? true : undefined)}

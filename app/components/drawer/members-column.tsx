@@ -1,5 +1,5 @@
 import { Plus } from "lucide-react";
-import { useMemo } from "react";
+import { useMemo, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { findTypeDefinition, listMembers } from "~/domain/address-space/browse";
 import { isTypeNode, type Node } from "~/domain/address-space/node";
@@ -8,7 +8,7 @@ import { findRuleName, getClassName, isProperty, listInheritedMembers } from "..
 import { useOpenModel } from "../model/use-model";
 import { Button } from "../ui/button";
 
-const MOST = 60;
+const MOST = 120;
 
 /** What a type or an Object is made of, and what an Object could have beside it. */
 export function MembersColumn({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
@@ -72,10 +72,14 @@ function Summary({ space, node }: { space: AddressSpace; node: Node }) {
 
 function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
   const { actions } = useOpenModel();
-  const { missing, offered } = useMemo(
-    () => ({ missing: listMissingMembers(space, node.key), offered: listOfferedMembers(space, node.key).filter((member) => !member.isPlaceholder).slice(0, MOST) }),
-    [space, node.key],
-  );
+  const [showsDetails, setShowsDetails] = useState(false);
+  const { missing, groups } = useMemo(() => {
+    const open = listOfferedMembers(space, node.key).filter((member) => !member.isPlaceholder);
+    // Properties of Variables are many and rarely wanted: InstrumentRange, Definition and their like.
+    const isDetail = (member: OpenMember): boolean => member.parent !== node.key && space.getNode(member.parent)?.nodeClass === "Variable";
+    return { missing: listMissingMembers(space, node.key), groups: { members: open.filter((m) => !isDetail(m)), details: open.filter(isDetail) } };
+  }, [space, node.key]);
+  const offered = [...groups.members, ...(showsDetails ? groups.details : [])].slice(0, MOST);
   return (
     <>
       {missing.length > 0 ? (
@@ -91,10 +95,10 @@ function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Nod
           )}
         </div>
       ) : null}
-      {offered.length > 0 ? (
+      {groups.members.length + groups.details.length > 0 ? (
         <div className="mt-3">
           <h3>
-            Optional members of its type <span className="font-mono font-normal">{offered.length}</span>
+            Optional members of its type <span className="font-mono font-normal">{groups.members.length}</span>
           </h3>
           <ul className="grid gap-px">
             {offered.map((member) => (
@@ -108,6 +112,11 @@ function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Nod
               </li>
             ))}
           </ul>
+          {groups.details.length > 0 && !showsDetails ? (
+            <Button size="small" tone="bare" className="-ml-2" onClick={() => setShowsDetails(true)}>
+              and {groups.details.length} Properties of its Variables
+            </Button>
+          ) : null}
         </div>
       ) : null}
     </>

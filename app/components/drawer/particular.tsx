@@ -1,4 +1,5 @@
 import { useEffect, useId, useRef, useState, type ReactNode } from "react";
+import { cx } from "../ui/cx";
 import { Input, TextArea } from "../ui/field";
 
 /** A key and its value or control, as one row of a drawer column. */
@@ -33,10 +34,12 @@ type CommitProps = {
   placeholder?: string;
   rows?: number;
   className?: string;
+  /** In a table: the frame shows only while it is pointed at or edited. */
+  isBare?: boolean;
 };
 
 /** A field that hands its text over when it is left or Enter is pressed; Esc brings the old text back. */
-export function CommitField({ id, label, value, onCommit, readOnly = false, mono, unit, placeholder, rows, className }: CommitProps) {
+export function CommitField({ id, label, value, onCommit, readOnly = false, mono, unit, placeholder, rows, className, isBare }: CommitProps) {
   const [text, setText] = useState(value);
   const isLeaving = useRef(false);
   useEffect(() => setText(value), [value]);
@@ -55,7 +58,7 @@ export function CommitField({ id, label, value, onCommit, readOnly = false, mono
     autoComplete: "off",
     onBlur: commit,
     ...(mono ? { mono } : {}),
-    ...(className === undefined ? {} : { className }),
+    className: cx(className, isBare && "border-transparent! bg-transparent! focus:border-copper! focus:bg-leaf! hover:not-read-only:border-edge!"),
   };
   function onKey(key: string, isMultiline: boolean, element: HTMLElement): void {
     if (key === "Enter" && !isMultiline) element.blur();

@@ -6,6 +6,7 @@ import { AddForm, DescriptionField, NameField, ParentField, RuleField } from "./
 import type { AddFormProps } from "./add-request";
 import { parseRange, type UnitFacts } from "./analog-facts";
 import { isInType } from "./list-parents";
+import { listRoots } from "./list-roots";
 import { RULE_KEYS, type RuleName } from "./member-facts";
 import { OptionalMembers } from "./optional-members";
 import { TypeField } from "./type-search";
@@ -18,7 +19,7 @@ export function AddMemberForm({ request, onDone }: AddFormProps) {
   const space = useSpace();
   const { kind } = request;
   const [name, setName] = useState("");
-  const [parent, setParent] = useState(request.parent);
+  const [parent, setParent] = useState(() => request.parent ?? listRoots(space).find((key) => !space.getNode(key)?.nodeClass.startsWith("Data")));
   const [type, setType] = useState<NodeKey>(request.base ?? (kind === "Object" ? StandardType.BaseObjectType : StandardType.AnalogUnitRangeType));
   const [dataType, setDataType] = useState<NodeKey>(kind === "Property" ? StandardDataType.String : StandardDataType.Float);
   const [unit, setUnit] = useState<UnitFacts>();

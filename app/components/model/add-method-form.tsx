@@ -8,6 +8,7 @@ import { Input } from "../ui/field";
 import { AddForm, DescriptionField, NameField, ParentField, RuleField } from "./add-form-parts";
 import type { AddFormProps } from "./add-request";
 import { isInType } from "./list-parents";
+import { listRoots } from "./list-roots";
 import { RULE_KEYS, type RuleName } from "./member-facts";
 import { TypeField } from "./type-search";
 import { useOpenModel, useSpace } from "./use-model";
@@ -19,7 +20,7 @@ export function AddMethodForm({ request, onDone }: AddFormProps) {
   const { actions } = useOpenModel();
   const space = useSpace();
   const [name, setName] = useState("");
-  const [parent, setParent] = useState(request.parent);
+  const [parent, setParent] = useState(() => request.parent ?? listRoots(space)[0]);
   const [input, setInput] = useState<readonly Argument[]>([]);
   const [output, setOutput] = useState<readonly Argument[]>([]);
   const [rule, setRule] = useState<RuleName>("Mandatory");

@@ -27,7 +27,8 @@ export function previewInstance(space: AddressSpace, parent: NodeKey, type: Node
   const made = edit.value.made[0];
   const after = applyOperations(space, edit.value.operations);
   if (!after.ok || made === undefined) return undefined;
-  const offered = listOfferedMembers(after.value, made).slice(0, MOST);
+  const isDetail = (owner: NodeKey): boolean => owner !== made && after.value.getNode(owner)?.nodeClass === "Variable";
+  const offered = listOfferedMembers(after.value, made).filter((member) => !isDetail(member.parent)).slice(0, MOST);
   return {
     mandatory: edit.value.made.slice(1).map((key) => after.value.requireNode(key).browseName.name),
     offered: offered.map((member) => ({

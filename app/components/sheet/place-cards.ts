@@ -55,10 +55,13 @@ function groupInBands(scene: Scene): Band[] {
     const isOwnership = line.end === "component" || line.end === "property" || line.end === "hierarchical";
     if (isOwnership && !owner.has(line.edge.target)) owner.set(line.edge.target, line.edge.source);
   }
+  const folders = new Set([...owner.values()].filter((key) => cards.get(key)?.isForeign && !cards.get(key)?.isType));
   const isAxis = (card: Card): boolean => {
+    // A folder of a required model, as that of the machines, holds its Objects like a type its members.
+    if (folders.has(card.key)) return !folders.has(owner.get(card.key) ?? card.key);
     if (card.isForeign || card.shape === "hexagon" || card.shape === "signpost" || card.shape === "oval") return false;
     const holder = cards.get(owner.get(card.key) ?? card.key);
-    return holder === undefined || holder.key === card.key || holder.isForeign;
+    return holder === undefined || holder.key === card.key || (holder.isForeign && holder.isType);
   };
   const bands = new Map<NodeKey, Band>();
   for (const card of scene.cards) if (isAxis(card)) bands.set(card.key, { axis: card, left: [], right: [] });
