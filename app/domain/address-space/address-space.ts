@@ -36,8 +36,8 @@ export function buildLayer(header: ModelHeader, nodes: readonly Node[]): Layer {
   return {
     header,
     nodes: byKey,
-    keysByNodeId: ShardedMap.from(ranked.map((n) => [formatNodeId(n.nodeId), n.key] as const)),
-    ...buildEdgeIndex(ranked),
+    keysByNodeId: ShardedMap.lazy(() => new Map(ranked.map((n) => [formatNodeId(n.nodeId), n.key]))),
+    ...buildEdgeIndex(byKey, ranked),
     nextOrder: (ranked.at(-1)?.order ?? -1) + 1,
   };
 }

@@ -5,6 +5,7 @@
  * server and a reload see members in one order, and an undo restores it.
  */
 import { ShardedMap } from "../core/sharded-map";
+import { DeclaredEdges, indexDeclarers, toEdge, type Declarers } from "./declared-edges";
 import { EdgeBundle, isSameEdge, type Edge, type RankOf } from "./edge-bundle";
 import type { Node } from "./node";
 import type { NodeKey } from "./node-id";
@@ -15,51 +16,15 @@ export type EdgeIndex = { readonly outgoing: ShardedMap<EdgeBundle>; readonly in
 
 /** The edges that a node declares; references to other servers are no edges of this graph. */
 export function listDeclaredEdges(node: Node): Edge[] {
-  const edges: Edge[] = [];
-  for (const reference of node.references) {
-    if (reference.serverUri !== undefined) continue;
-    edges.push(
-      reference.isForward
-        ? { source: node.key, type: reference.type, target: reference.target }
-        : { source: reference.target, type: reference.type, target: node.key },
-    );
-  }
-  return edges;
+  return node.references.filter(({ serverUri }) => serverUri === undefined).map((reference) => toEdge(node, reference));
 }
 
-type Draft = { edges: Edge[]; declarers: NodeKey[]; mayRepeat: boolean };
-
-/** Builds the index of nodes that stand in rank order. */
-export function buildEdgeIndex(ranked: readonly Node[]): EdgeIndex {
-  const outgoing = new Map<NodeKey, Draft>();
-  const incoming = new Map<NodeKey, Draft>();
-  for (const node of ranked) {
-    for (const edge of listDeclaredEdges(node)) {
-      pushTo(outgoing, edge.source, edge, node.key);
-      pushTo(incoming, edge.target, edge, node.key);
-    }
-  }
-  return { outgoing: seal(outgoing), incoming: seal(incoming) };
-}
-
-/** An edge is declared by its two ends only, so one stands twice only if the key's node or one node twice declares here. */
-function pushTo(map: Map<NodeKey, Draft>, key: NodeKey, edge: Edge, declarer: NodeKey): void {
-  const draft = map.get(key);
-  if (draft) {
-    draft.mayRepeat ||= declarer === key || draft.declarers.at(-1) === declarer;
-    draft.edges.push(edge);
-    draft.declarers.push(declarer);
-  } else {
-    map.set(key, { edges: [edge], declarers: [declarer], mayRepeat: declarer === key });
-  }
-}
-
-function seal(map: Map<NodeKey, Draft>): ShardedMap<EdgeBundle> {
-  return ShardedMap.from(listBundles(map));
-}
-
-function* listBundles(map: Map<NodeKey, Draft>): Iterable<readonly [string, EdgeBundle]> {
-  for (const [key, { edges, declarers, mayRepeat }] of map) yield [key, EdgeBundle.of(edges, declarers, mayRepeat)];
+/** The index of nodes that stand in rank order, made when the first edge is asked for. */
+export function buildEdgeIndex(nodes: ShardedMap<Node>, ranked: readonly Node[]): EdgeIndex {
+  let declarers: Declarers | undefined;
+  const makeSide = (end: "source" | "target"): ShardedMap<EdgeBundle> =>
+    ShardedMap.lazy<EdgeBundle, NodeKey>(() => new DeclaredEdges(end, nodes, ranked, (declarers ??= indexDeclarers(ranked))));
+  return { outgoing: makeSide("source"), incoming: makeSide("target") };
 }
 
 /** The index after one node was added (`old` undefined), replaced, or removed (`node` undefined). */

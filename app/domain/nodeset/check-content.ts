@@ -1,10 +1,10 @@
 /** What can be wrong with a file as a whole, once it is read: its models, and types that close a circle. */
 import { OPC_UA_NAMESPACE, standardKey, type NodeKey } from "../address-space/node-id";
-import type { Node } from "../address-space/node";
+import { isTypeNode, type Node } from "../address-space/node";
 import { StandardObject, StandardReferenceType } from "../address-space/standard-ids";
 import { problem, type Problem } from "../core/result";
 import type { ProblemList } from "./problem-list";
-import type { NodeSetContent } from "./read-nodeset";
+import type { NodeSetContent } from "./nodeset-content";
 
 /** Adds problems; answers one when the content is of no use at all. */
 export function checkContent(
@@ -12,7 +12,7 @@ export function checkContent(
   target: { readonly problems: ProblemList; readonly modelsAt: (index: number) => Problem["at"] },
 ): Problem | undefined {
   const { header, nodes } = content;
-  const isBase = content.lines.has(StandardObject.RootFolder);
+  const isBase = nodes.some((node) => node.key === StandardObject.RootFolder);
   if (header.models.length === 0 && header.namespaceUris.length === 0 && !isBase) {
     return problem("nodeset.no-namespace", undefined, { line: 1, column: 1 });
   }
@@ -55,6 +55,7 @@ function checkModels(
 function findTypeCycles(nodes: readonly Node[]): NodeKey[][] {
   const supertypes = new Map<NodeKey, NodeKey>();
   for (const node of nodes) {
+    if (!isTypeNode(node)) continue;
     for (const reference of node.references) {
       if (reference.type !== StandardReferenceType.HasSubtype || reference.serverUri !== undefined) continue;
       const [subtype, supertype] = reference.isForward ? [reference.target, node.key] : [node.key, reference.target];

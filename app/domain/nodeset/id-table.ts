@@ -27,8 +27,12 @@ export class IdTable {
   readonly #aliasEnds = new Map<string, string | undefined>();
   readonly #reportedAliases = new Set<string>();
 
+  /** What stands before the identifier in a key, by namespace index. */
+  readonly #keyHeads: readonly string[];
+
   constructor(namespaceUris: readonly string[], serverUris: readonly string[], aliases: ReadonlyMap<string, string>) {
     this.namespaceUris = [OPC_UA_NAMESPACE, ...namespaceUris];
+    this.#keyHeads = this.namespaceUris.map((uri) => toNodeKey({ namespaceUri: uri, type: "s", identifier: "" }).slice(0, -2));
     this.#serverUris = serverUris;
     this.#aliases = aliases;
   }
@@ -42,6 +46,15 @@ export class IdTable {
   resolve(text: string): Result<NodeKey> {
     const known = this.#keys.get(text);
     if (known !== undefined) return ok(known, NO_PROBLEMS);
+    const numeric = findNumericId(text);
+    if (numeric && !this.#aliases.has(text)) {
+      const head = this.#keyHeads[numeric.index];
+      if (head !== undefined) {
+        const key = (head + text.slice(numeric.start)) as NodeKey;
+        this.#keys.set(text, key);
+        return ok(key, NO_PROBLEMS);
+      }
+    }
     const result = this.#resolveText(trimId(text));
     if (result.ok) this.#keys.set(text, result.value);
     return result;
@@ -49,9 +62,9 @@ export class IdTable {
 
   /** The target of a reference, which may stand on another server: `svr=1;i=85` (OPC 10000-6 §5.1.12). */
   resolveTarget(text: string): Result<Target> {
-    const known = this.#keys.get(text);
-    if (known !== undefined) return ok({ key: known }, NO_PROBLEMS);
-    const trimmed = trimId(text);
+    const first = text.charCodeAt(0);
+    // `svr=` and `svu=` begin with an s, as string identifiers and some aliases do; nothing else need be looked at.
+    const trimmed = first === 115 || first <= 32 ? trimId(text) : "";
     const match = /^(?:svr=(\d{1,9})|svu=([^;]+));/.exec(trimmed);
     if (!match) {
       const result = this.resolve(text);
@@ -70,6 +83,11 @@ export class IdTable {
 
   /** The NodeId of a node that is defined here: no alias, no other server. */
   parseOwn(text: string): Result<NodeId> {
+    const numeric = findNumericId(text);
+    const namespaceUri = numeric && this.namespaceUris[numeric.index];
+    if (numeric && namespaceUri !== undefined) {
+      return ok({ namespaceUri, type: "i", identifier: Number(text.slice(numeric.start + 2)) }, NO_PROBLEMS);
+    }
     return parseNodeId(trimId(text), this.namespaceUris);
   }
 
@@ -118,6 +136,33 @@ export class IdTable {
     this.#reportedAliases.add(alias);
     return ok(key, [problem.warning("nodeset.alias-undefined", { alias, nodeId: key })]);
   }
+}
+
+/**
+ * The usual form of ids, `i=40` or `ns=1;i=6001` without leading zeros: namespace index and where `i=` starts. Undefined
+ * for every other form, which then takes the slow way with all its checks.
+ */
+function findNumericId(text: string): { readonly index: number; readonly start: number } | undefined {
+  let start = 0;
+  let index = 0;
+  if (text.charCodeAt(0) === 110) {
+    start = text.indexOf(";") + 1;
+    if (!text.startsWith("ns=") || start < 5 || start > 9) return undefined;
+    for (let at = 3; at < start - 1; at++) {
+      const digit = text.charCodeAt(at) - 48;
+      if (digit < 0 || digit > 9) return undefined;
+      index = index * 10 + digit;
+    }
+  }
+  const digits = text.length - start - 2;
+  // Nine digits are always in range; the tenth is left to the slow way.
+  if (digits < 1 || digits > 9 || text.charCodeAt(start) !== 105 || text.charCodeAt(start + 1) !== 61) return undefined;
+  if (digits > 1 && text.charCodeAt(start + 2) === 48) return undefined;
+  for (let at = start + 2; at < text.length; at++) {
+    const code = text.charCodeAt(at);
+    if (code < 48 || code > 57) return undefined;
+  }
+  return { index, start };
 }
 
 /** Without the white space that exporters put around ids; spaces at the end of a string identifier are part of it. */

@@ -17,8 +17,20 @@ type ValueOf<T, K> = T extends T ? (K extends keyof T ? T[K] : never) : never;
 /** A node of any class, all fields optional and writable. */
 export type NodeFields = { -readonly [K in KeysOf<Node>]?: ValueOf<Node, K> };
 
-export type FieldDraft = { -readonly [K in keyof DataTypeField]: DataTypeField[K] };
+export type FieldDraft = { -readonly [K in keyof DataTypeField]: DataTypeField[K] } & {
+  displayName?: LocalizedText[];
+  description?: LocalizedText[];
+};
 export type DefinitionDraft = { -readonly [K in keyof DataTypeDefinition]: DataTypeDefinition[K] };
+
+const NOTHING: readonly never[] = [];
+
+/** Puts an item behind the others; a list of one, the usual case, takes no more room than it needs. */
+export function append<T>(list: T[] | undefined, item: T): T[] {
+  if (!list) return [item];
+  list.push(item);
+  return list;
+}
 
 export class NodeBuilder {
   readonly offset: number;
@@ -26,7 +38,7 @@ export class NodeBuilder {
   readonly key: NodeKey;
   /** Attributes that the table knows, set by `readAttributes`. */
   readonly fields: NodeFields;
-  readonly displayName: LocalizedText[] = [];
+  displayName: LocalizedText[] | undefined;
   description: LocalizedText[] | undefined;
   inverseName: LocalizedText[] | undefined;
   category: string[] | undefined;
@@ -47,8 +59,8 @@ export class NodeBuilder {
       nodeClass,
       order,
       browseName,
-      displayName: this.displayName,
-      references: this.references,
+      displayName: NOTHING,
+      references: NOTHING,
     };
   }
 
@@ -62,6 +74,9 @@ export class NodeBuilder {
 
   build(): Node {
     const { fields } = this;
+    if (this.displayName) fields.displayName = this.displayName;
+    // A copy, since the list that grew has room for many more.
+    if (this.references.length > 0) fields.references = this.references.slice();
     if (this.description) fields.description = this.description;
     if (this.inverseName) fields.inverseName = this.inverseName;
     if (this.category) fields.category = this.category;

@@ -16,16 +16,17 @@ import {
 import { HeaderBuilder, type IdTables, type ModelDraft } from "./header-builder";
 import { IdTable } from "./id-table";
 import type { ReadLimits } from "./limits";
-import { NodeBuilder, type DefinitionDraft, type FieldDraft } from "./node-builder";
+import { append, NodeBuilder, type DefinitionDraft, type FieldDraft } from "./node-builder";
 import { NODE_ELEMENTS, NODESET_XML_NAMESPACE } from "./nodeset-xml";
 import { ProblemList } from "./problem-list";
 import { RawCapture, type CaptureMode } from "./raw-capture";
 import { readAttributes, type AttributeContext } from "./read-attributes";
-import type { NodeSetContent } from "./read-nodeset";
+import type { NodeSetContent } from "./nodeset-content";
 import { findRootMeaning } from "./root-meanings";
 import { getLocalName, NamespaceScopes } from "./xml/namespace-scopes";
 import { ScanStop, type AttributeHint, type Attributes, type XmlHandler } from "./xml/scan-xml";
 import { PositionCounter, type Position } from "./xml/source-position";
+import { StringCache } from "./xml/string-cache";
 
 /** Where the reader stands; the name of the open element that decides what may follow. */
 type State =
@@ -74,6 +75,7 @@ export class NodeSetReader implements XmlHandler {
   readonly #source: string;
   readonly #limits: ReadLimits;
   readonly #positions: PositionCounter;
+  readonly #cache: StringCache;
   readonly #scopes = new NamespaceScopes();
   readonly #header: HeaderBuilder;
   readonly #states: State[] = ["document"];
@@ -105,7 +107,7 @@ export class NodeSetReader implements XmlHandler {
   readonly #models: ModelDraft[] = [];
 
   readonly #nodes: Node[] = [];
-  readonly #lines = new Map<NodeKey, Position>();
+  readonly #offsets = new Map<NodeKey, number>();
   readonly #attributeContext: AttributeContext;
   #elementOffset = 0;
   #isWhole = true;
@@ -116,6 +118,7 @@ export class NodeSetReader implements XmlHandler {
     this.#tables = tables;
     this.problems = new ProblemList(limits.maxProblems);
     this.#positions = new PositionCounter(source);
+    this.#cache = new StringCache(source);
     this.#header = new HeaderBuilder((found, offset) => this.#report(found, offset));
     this.#ids = new IdTable([], [], new Map());
     this.#attributeContext = {
@@ -128,7 +131,18 @@ export class NodeSetReader implements XmlHandler {
   finish(): NodeSetContent {
     this.#finishHeader();
     const header = this.#header.build(this.#ids);
-    return { header, nodes: this.#nodes, lines: this.#lines, isWhole: this.#isWhole && !this.#header.hasLosses };
+    const source = this.#source;
+    const offsets = this.#offsets;
+    let lines: ReadonlyMap<NodeKey, Position> | undefined;
+    return {
+      header,
+      nodes: this.#nodes,
+      isWhole: this.#isWhole && !this.#header.hasLosses,
+      // Counted when they are asked for: who loads a required model never asks.
+      get lines() {
+        return (lines ??= countLines(source, offsets));
+      },
+    };
   }
 
   /** Where the own model with this index is declared. */
@@ -164,7 +178,10 @@ export class NodeSetReader implements XmlHandler {
 
   text(start: number, end: number, resolved: string | undefined): void {
     if (this.#capture) this.#capture.text(start, end, resolved);
-    else if (this.#state === "leaf") this.#text += resolved ?? this.#source.slice(start, end);
+    else if (this.#state === "leaf") {
+      const piece = resolved ?? this.#cache.slice(start, end);
+      this.#text = this.#text === "" ? piece : this.#text + piece;
+    }
   }
 
   comment(text: string): void {
@@ -445,17 +462,17 @@ export class NodeSetReader implements XmlHandler {
     };
     if (nodeId === undefined) return this.#skipNode(element, attributes, start);
     const node = new NodeBuilder(start, nodeClass, nodeId, browseName, this.#nodes.length);
-    const known = this.#lines.get(node.key);
+    const known = this.#offsets.get(node.key);
     if (known !== undefined || node.isNull()) {
-      const data = { nodeId: node.nodeIdText, firstLine: known?.line ?? 0 };
-      const code = known ? "nodeset.duplicate-node-id" : "nodeset.null-node-id";
+      const data = { nodeId: node.nodeIdText, firstLine: known === undefined ? 0 : this.#positions.at(known).line };
+      const code = known === undefined ? "nodeset.null-node-id" : "nodeset.duplicate-node-id";
       this.#report(problem(code, data), start, "NodeId");
       return this.#skipNode(element, attributes, start);
     }
-    if (/^\d+:/.test(browseName.name)) {
+    if (isDigit(browseName.name.charCodeAt(0)) && /^\d+:/.test(browseName.name)) {
       this.#report(problem.warning("nodeset.browse-name-prefix", { name: browseName.name }), start, "BrowseName");
     }
-    this.#lines.set(node.key, this.#positions.at(start));
+    this.#offsets.set(node.key, start);
     this.#node = node;
     const others = this.#readInto(attributes, NODE_ATTRIBUTES[nodeClass], NODE_HANDLED, node.fields);
     if (others) node.fields.otherAttributes = others;
@@ -545,25 +562,25 @@ export class NodeSetReader implements XmlHandler {
         this.#addReference(text);
         return;
       case "displayName":
-        this.#node?.displayName.push(this.#toLocalizedText(text));
+        if (this.#node) this.#node.displayName = append(this.#node.displayName, this.#toLocalizedText(text));
         return;
       case "description":
-        if (this.#node) (this.#node.description ??= []).push(this.#toLocalizedText(text));
+        if (this.#node) this.#node.description = append(this.#node.description, this.#toLocalizedText(text));
         return;
       case "inverseName":
-        if (this.#node) (this.#node.inverseName ??= []).push(this.#toLocalizedText(text));
+        if (this.#node) this.#node.inverseName = append(this.#node.inverseName, this.#toLocalizedText(text));
         return;
       case "category":
-        if (this.#node) (this.#node.category ??= []).push(text);
+        if (this.#node) this.#node.category = append(this.#node.category, text);
         break;
       case "documentation":
         if (this.#node) this.#node.fields.documentation = text;
         break;
       case "fieldDisplayName":
-        if (this.#field) this.#field.displayName = [...(this.#field.displayName ?? []), this.#toLocalizedText(text)];
+        if (this.#field) this.#field.displayName = append(this.#field.displayName, this.#toLocalizedText(text));
         return;
       case "fieldDescription":
-        if (this.#field) this.#field.description = [...(this.#field.description ?? []), this.#toLocalizedText(text)];
+        if (this.#field) this.#field.description = append(this.#field.description, this.#toLocalizedText(text));
         return;
       case "argumentName":
         this.#argumentName = text;
@@ -608,11 +625,16 @@ export class NodeSetReader implements XmlHandler {
       return;
     }
     const others = this.#otherReferenceAttributes(attributes);
+    const serverUri = target?.serverUri;
+    if (others === undefined && serverUri === undefined) {
+      this.#node.references.push({ type, target: key, isForward });
+      return;
+    }
     this.#node.references.push({
       type,
       target: key,
       isForward,
-      ...(target?.serverUri !== undefined ? { serverUri: target.serverUri } : {}),
+      ...(serverUri !== undefined ? { serverUri } : {}),
       ...(others ? { otherAttributes: others } : {}),
     });
   }
@@ -700,6 +722,15 @@ export class NodeSetReader implements XmlHandler {
     };
     this.problems.add({ ...found, at });
   }
+}
+
+function countLines(source: string, offsets: ReadonlyMap<NodeKey, number>): ReadonlyMap<NodeKey, Position> {
+  const positions = new PositionCounter(source);
+  return new Map([...offsets].map(([key, offset]) => [key, positions.at(offset)]));
+}
+
+function isDigit(code: number): boolean {
+  return code >= 48 && code <= 57;
 }
 
 function othersOf(draft: { otherElements?: readonly XmlText[] }): XmlText[] {

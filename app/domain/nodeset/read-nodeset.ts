@@ -4,24 +4,13 @@
  * Nothing is lost: what the schema does not know is kept beside what it knows. Elements of the head may stand in any
  * order; when a table that ids depend on stands behind nodes, the text is read a second time with the tables known.
  */
-import type { ModelHeader } from "../address-space/model-header";
-import type { Node } from "../address-space/node";
 import { OPC_UA_NAMESPACE, type NodeKey } from "../address-space/node-id";
 import { fail, ok, problem, type Problem, type Result } from "../core/result";
 import { checkContent } from "./check-content";
+import type { NodeSetContent } from "./nodeset-content";
 import { READ_LIMITS, type ReadLimits } from "./limits";
 import { NodeSetReader } from "./nodeset-reader";
 import { scanXml } from "./xml/scan-xml";
-import type { Position } from "./xml/source-position";
-
-export type NodeSetContent = {
-  readonly header: ModelHeader;
-  readonly nodes: readonly Node[];
-  /** Where the element of each node starts in the file. */
-  readonly lines: ReadonlyMap<NodeKey, Position>;
-  /** False when a node, a reference, a role or an alias of the file could not be kept; a problem tells each. */
-  readonly isWhole: boolean;
-};
 
 export type ReadOptions = {
   /** Named in the places of problems. */

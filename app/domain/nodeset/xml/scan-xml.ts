@@ -7,6 +7,7 @@
 import { problem, type Problem } from "../../core/result";
 import type { ReadLimits } from "../limits";
 import { PositionCounter } from "./source-position";
+import { StringCache } from "./string-cache";
 import { findNameEnd, findReferenced } from "./xml-characters";
 
 export type Attributes = Readonly<Record<string, string>>;
@@ -54,6 +55,8 @@ export function scanXml(text: string, handler: XmlHandler, options: ScanOptions)
 
 const ELEMENTS_PER_QUESTION = 512;
 const ILLEGAL = /[^\t\n\r\u0020-\uFFFD]/;
+// Engines interpret a pattern the first time and compile it for the second: let the first be a short text.
+ILLEGAL.test("");
 const NOT_SPACE = /[^ \t\n\r]/;
 
 const TAB = 9;
@@ -73,6 +76,7 @@ const QUESTION = 63;
 /** Objects with fast properties and no inherited names, so that an attribute may be called `constructor`. */
 const AttributeBag = function () {} as unknown as new () => Record<string, string>;
 AttributeBag.prototype = Object.create(null);
+const NO_ATTRIBUTES: Attributes = Object.freeze(new AttributeBag());
 
 class XmlScan {
   readonly #text: string;
@@ -80,6 +84,7 @@ class XmlScan {
   readonly #options: ScanOptions;
   readonly #open: string[] = [];
   readonly #hasCdataEnd: boolean;
+  readonly #cache: StringCache;
   #at = 0;
   #nextAmpersand: number;
   #elements = 0;
@@ -90,6 +95,7 @@ class XmlScan {
     this.#handler = handler;
     this.#options = options;
     this.#hasCdataEnd = text.includes("]]>");
+    this.#cache = new StringCache(text);
     this.#nextAmpersand = findFrom(text, "&", 0);
   }
 
@@ -167,10 +173,10 @@ class XmlScan {
       if (nameEnd >= text.length) this.#truncated("a tag has no name");
       this.#fail("“<” stands in text; write &lt;", start);
     }
-    const name = text.slice(start + 1, nameEnd);
+    const name = this.#cache.slice(start + 1, nameEnd);
     if (this.#open.length === 0) this.#checkRoot(start);
     this.#countElement(start);
-    const attributes = new AttributeBag();
+    let attributes: Record<string, string> | undefined;
     let hint: AttributeHint = "plain";
     let count = 0;
     let at = nameEnd;
@@ -180,7 +186,7 @@ class XmlScan {
       if (code === GREATER) {
         at = next + 1;
         this.#at = at;
-        this.#handler.open(name, attributes, start, at, hint);
+        this.#handler.open(name, attributes ?? NO_ATTRIBUTES, start, at, hint);
         this.#open.push(name);
         return;
       }
@@ -188,7 +194,7 @@ class XmlScan {
         if (text.charCodeAt(next + 1) !== GREATER) this.#failOrTruncated("“/” stands alone in a tag", next, next + 1);
         at = next + 2;
         this.#at = at;
-        this.#handler.open(name, attributes, start, at, hint);
+        this.#handler.open(name, attributes ?? NO_ATTRIBUTES, start, at, hint);
         this.#handler.close(name, at, at);
         return;
       }
@@ -196,7 +202,8 @@ class XmlScan {
       if (attributeEnd === next) this.#failOrTruncated(`the tag ${name} is not closed`, next, next);
       if (next === at) this.#fail("a space is missing before the attribute", next);
       if (++count > this.#options.limits.maxAttributes) this.#stopAtLimit("limit.attributes", "maxAttributes", start);
-      const attribute = text.slice(next, attributeEnd);
+      const attribute = this.#cache.slice(next, attributeEnd);
+      attributes ??= new AttributeBag();
       if (attributes[attribute] !== undefined) this.#fail(`the attribute ${attribute} stands twice`, next);
       at = this.#readValue(attribute, attributeEnd, attributes);
       if (attribute.startsWith("xmlns") && (attribute.length === 5 || attribute.charCodeAt(5) === 58)) hint = "declaring";
@@ -218,7 +225,7 @@ class XmlScan {
     for (let at = open + 1; at < text.length; at++) {
       const code = text.charCodeAt(at);
       if (code === quote) {
-        attributes[attribute] = isPlain ? text.slice(open + 1, at) : this.#normalise(open + 1, at);
+        attributes[attribute] = isPlain ? this.#cache.slice(open + 1, at) : this.#normalise(open + 1, at);
         return at + 1;
       }
       if (code === LESS) this.#fail(`the value of ${attribute} has no end, or holds “<”; write &lt;`, at);
