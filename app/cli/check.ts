@@ -4,7 +4,7 @@ import { getOwnNamespace } from "../domain/address-space/model-header";
 import { runChecks } from "../domain/checks/run-checks";
 import { toReport, type CheckReport } from "../domain/checks/to-report";
 import type { Problem } from "../domain/core/result";
-import type { NodeSetContent } from "../domain/nodeset/read-nodeset";
+import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { listRequired } from "../library/describe-nodeset.server";
 import { getLibrary } from "../library/library.server";
 import type { CheckCommand } from "./parse-command-line";
@@ -13,7 +13,8 @@ import { readFolders, readInput } from "./read-input";
 
 export async function check(command: CheckCommand): Promise<number> {
   const content = await readInput(command.file);
-  if (!content.ok) return print(command, toReport([], { file: command.file, lines: new Map(), problems: content.problems }), 2);
+  if (!content.ok)
+    return print(command, toReport([], { file: command.file, lines: new Map(), problems: content.problems }), 2);
   const folders = await readFolders(command.folders);
   const problems = [...content.problems, ...folders.problems];
   const { lines } = content.value;

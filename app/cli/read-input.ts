@@ -2,7 +2,7 @@
 import { readFile, stat } from "node:fs/promises";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import { READ_LIMITS } from "../domain/nodeset/limits";
-import type { NodeSetContent } from "../domain/nodeset/read-nodeset";
+import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { findNodeSets } from "../library/find-nodesets.server";
 import type { LibraryEntry } from "../library/library-entry";
 import { readHere } from "../library/read-file.server";

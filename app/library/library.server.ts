@@ -7,7 +7,7 @@ import { buildLayer, type Layer } from "../domain/address-space/address-space";
 import type { ModelEntry } from "../domain/address-space/model-header";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import { formatProblem } from "../domain/core/problem-texts";
-import type { NodeSetContent } from "../domain/nodeset/read-nodeset";
+import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { chooseModels, type Choice } from "./choose-models";
 import type { LibraryEntry } from "./library-entry";
 import { compressPack, PackStore, toPackHash } from "./pack-store.server";

@@ -5,7 +5,8 @@
 import { Worker } from "node:worker_threads";
 import { decodeXmlBytes } from "../domain/nodeset/decode-xml-bytes";
 import { READ_LIMITS } from "../domain/nodeset/limits";
-import { readNodeSet, type NodeSetContent } from "../domain/nodeset/read-nodeset";
+import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
+import { readNodeSet } from "../domain/nodeset/read-nodeset";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import { findReadWorker } from "./find-read-worker.server";
 import { unpackResult, type ReadRequest, type ReadStep } from "./read-messages";

@@ -2,7 +2,7 @@
 import type { NodeKey } from "../domain/address-space/node-id";
 import { getValue, type Result } from "../domain/core/result";
 import { readPack, writePack } from "../domain/nodeset/pack";
-import type { NodeSetContent } from "../domain/nodeset/read-nodeset";
+import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 
 export type ReadRequest = {
   readonly bytes: Uint8Array;

@@ -2,7 +2,7 @@
 import { getOwnNamespace, type ModelEntry } from "../domain/address-space/model-header";
 import { ok, problem, type Problem, type Result } from "../domain/core/result";
 import { READ_LIMITS } from "../domain/nodeset/limits";
-import type { NodeSetContent } from "../domain/nodeset/read-nodeset";
+import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { listRequired } from "../library/describe-nodeset.server";
 import { getLibrary } from "../library/library.server";
 

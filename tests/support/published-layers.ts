@@ -4,7 +4,8 @@ import { createRequire } from "node:module";
 import { dirname, join } from "node:path";
 import { buildLayer, type Layer } from "~/domain/address-space/address-space";
 import { getValue } from "~/domain/core/result";
-import { readNodeSet, type NodeSetContent } from "~/domain/nodeset/read-nodeset";
+import type { NodeSetContent } from "~/domain/nodeset/nodeset-content";
+import { readNodeSet } from "~/domain/nodeset/read-nodeset";
 
 const folder = join(dirname(createRequire(import.meta.url).resolve("node-opcua-nodesets/package.json")), "nodesets");
 

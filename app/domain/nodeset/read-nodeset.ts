@@ -4,7 +4,7 @@
  * Nothing is lost: what the schema does not know is kept beside what it knows. Elements of the head may stand in any
  * order; when a table that ids depend on stands behind nodes, the text is read a second time with the tables known.
  */
-import { OPC_UA_NAMESPACE, type NodeKey } from "../address-space/node-id";
+import { OPC_UA_NAMESPACE } from "../address-space/node-id";
 import { fail, ok, problem, type Problem, type Result } from "../core/result";
 import { checkContent } from "./check-content";
 import type { NodeSetContent } from "./nodeset-content";
