@@ -6,7 +6,7 @@ import { Table, Td, Th } from "~/components/ui/table";
 import { Tag } from "~/components/ui/tag";
 import { FindingShape } from "~/components/notation/finding-badge";
 import type { LibraryChoice } from "~/services/list-library-choices.server";
-import { baseModelUri, listRequired, searchChoices } from "./required-closure";
+import { baseModelUri, listRequired, searchChoices, type RequiredRow } from "./required-closure";
 
 type Props = {
   choices: readonly LibraryChoice[];
@@ -89,12 +89,10 @@ export function RequiredModelsField({ choices, chosen, onChange, name = "require
               </Td>
               <Td mono>{row.choice?.version}</Td>
               <Td className="text-ink-2">
-                {chosen.includes(row.modelUri) ? <Tag tone="ink">chosen</Tag> : null}
-                {row.modelUri === baseModelUri
-                  ? "every model does"
-                  : row.askedBy.length > 0
-                    ? `${row.askedBy.map(titleOf).join(", ")} ${row.askedBy.length === 1 ? "needs" : "need"} it`
-                    : null}
+                <span className="flex items-center gap-2">
+                  {chosen.includes(row.modelUri) ? <Tag tone="ink">chosen</Tag> : null}
+                  {explain(row, titleOf)}
+                </span>
               </Td>
               <Td right>
                 {chosen.includes(row.modelUri) && !disabled ? (
@@ -112,4 +110,9 @@ export function RequiredModelsField({ choices, chosen, onChange, name = "require
       </Table>
     </fieldset>
   );
+}
+
+function explain({ modelUri, askedBy }: RequiredRow, titleOf: (uri: string) => string): string {
+  if (modelUri === baseModelUri) return "every model does";
+  return askedBy.length === 0 ? "" : `${askedBy.map(titleOf).join(", ")} ${askedBy.length === 1 ? "needs" : "need"} it`;
 }
