@@ -49,6 +49,8 @@ export default [
       route("types", "routes/models.$modelId.types.tsx"),
       route("signals", "routes/models.$modelId.signals.tsx"),
       route("findings", "routes/models.$modelId.findings.tsx"),
+      route("source", "routes/models.$modelId.source.tsx"),
+      route("revisions", "routes/models.$modelId.revisions.tsx"),
       route("about", "routes/models.$modelId.about.tsx"),
       route("test-server", "routes/models.$modelId.test-server.tsx"),
     ]),

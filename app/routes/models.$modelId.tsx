@@ -56,6 +56,8 @@ export default function Model({ loaderData }: Route.ComponentProps) {
               </>
             ),
           },
+          { to: `${base}/source`, label: "Source text" },
+          { to: `${base}/revisions`, label: "Revisions" },
         ]}
       />
       <div className="flex min-h-0 flex-1 flex-col">

@@ -1,0 +1,43 @@
+/** The editor for source text, loaded when it is wanted the first time: it is larger than all the rest together. */
+import EditorWorker from "monaco-editor/editor/editor.worker.js?worker";
+import * as monaco from "monaco-editor/editor.js";
+import "monaco-editor/languages/definitions/xml/register.js";
+
+self.MonacoEnvironment = { getWorker: () => new EditorWorker() };
+
+const THEME = "ferrule";
+
+/** Colours of the page's tokens, as they are now: the editor takes no custom properties. */
+export function applyTheme(): void {
+  const style = getComputedStyle(document.documentElement);
+  const colour = (name: string): string => style.getPropertyValue(name).trim();
+  const bare = (name: string): string => colour(name).replace("#", "");
+  monaco.editor.defineTheme(THEME, {
+    base: style.colorScheme === "dark" ? "vs-dark" : "vs",
+    inherit: true,
+    rules: [
+      { token: "", foreground: bare("--ink") },
+      { token: "tag", foreground: bare("--ink") },
+      { token: "delimiter", foreground: bare("--ink-3") },
+      { token: "attribute.name", foreground: bare("--ink-2") },
+      { token: "attribute.value", foreground: bare("--hint") },
+      { token: "comment", foreground: bare("--ink-3") },
+      { token: "metatag", foreground: bare("--ink-3") },
+    ],
+    colors: {
+      "editor.background": colour("--paper"),
+      "editor.foreground": colour("--ink"),
+      "editorLineNumber.foreground": colour("--ink-3"),
+      "editorLineNumber.activeForeground": colour("--copper"),
+      "editor.selectionBackground": colour("--copper-wash"),
+      "editor.lineHighlightBackground": colour("--bench"),
+      "editor.lineHighlightBorder": colour("--bench"),
+      "editorGutter.background": colour("--bench"),
+      "editorIndentGuide.background1": colour("--hair"),
+      "editorCursor.foreground": colour("--copper"),
+    },
+  });
+  monaco.editor.setTheme(THEME);
+}
+
+export { monaco, THEME };
