@@ -1,6 +1,6 @@
 /** Runs the checker in the browser after edits: the first time over the whole model, then only over what an edit touched. */
 import type { AddressSpace } from "~/domain/address-space/address-space";
-import { startChecks, updateChecks, type CheckRun } from "~/domain/checks/run-checks";
+import type { CheckRun } from "~/domain/checks/run-checks";
 import type { EditorStore } from "~/editor/editor-store";
 import type { FindingStore } from "./finding-store";
 
@@ -12,11 +12,14 @@ export function followFindings(editor: EditorStore, findings: FindingStore): () 
   let run: CheckRun | undefined;
   let checked: AddressSpace | undefined;
   let timer: ReturnType<typeof setTimeout> | undefined;
+  let isEnded = false;
 
-  function check(): void {
+  async function check(): Promise<void> {
     timer = undefined;
+    // The rules are many; they come after the first paint.
+    const { startChecks, updateChecks } = await import("~/domain/checks/run-checks");
     const { space } = editor.getState();
-    if (space === checked) return;
+    if (isEnded || space === checked) return;
     checked = space;
     run = run ? updateChecks(run, space) : startChecks(space);
     findings.set(space, run.findings);
@@ -25,12 +28,13 @@ export function followFindings(editor: EditorStore, findings: FindingStore): () 
   function schedule(): void {
     if (editor.getState().space === checked) return;
     clearTimeout(timer);
-    timer = setTimeout(check, run ? NEXT_DELAY : FIRST_DELAY);
+    timer = setTimeout(() => void check(), run ? NEXT_DELAY : FIRST_DELAY);
   }
 
   schedule();
   const unsubscribe = editor.subscribe(schedule);
   return () => {
+    isEnded = true;
     clearTimeout(timer);
     unsubscribe();
   };

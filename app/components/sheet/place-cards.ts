@@ -58,7 +58,8 @@ function groupInBands(scene: Scene): Band[] {
   const folders = new Set([...owner.values()].filter((key) => cards.get(key)?.isForeign && !cards.get(key)?.isType));
   const isAxis = (card: Card): boolean => {
     // A folder of a required model, as that of the machines, holds its Objects like a type its members.
-    if (folders.has(card.key)) return !folders.has(owner.get(card.key) ?? card.key);
+    const above = owner.get(card.key);
+    if (folders.has(card.key)) return above === undefined || !folders.has(above);
     if (card.isForeign || card.shape === "hexagon" || card.shape === "signpost" || card.shape === "oval") return false;
     const holder = cards.get(owner.get(card.key) ?? card.key);
     return holder === undefined || holder.key === card.key || (holder.isForeign && holder.isType);

@@ -17,12 +17,12 @@ export function applyTheme(): void {
     inherit: true,
     rules: [
       { token: "", foreground: bare("--ink") },
-      { token: "tag", foreground: bare("--ink") },
-      { token: "delimiter", foreground: bare("--ink-3") },
-      { token: "attribute.name", foreground: bare("--ink-2") },
-      { token: "attribute.value", foreground: bare("--hint") },
-      { token: "comment", foreground: bare("--ink-3") },
-      { token: "metatag", foreground: bare("--ink-3") },
+      { token: "tag.xml", foreground: bare("--ink") },
+      { token: "delimiter.xml", foreground: bare("--ink-3") },
+      { token: "attribute.name.xml", foreground: bare("--ink-2") },
+      { token: "attribute.value.xml", foreground: bare("--hint") },
+      { token: "comment.xml", foreground: bare("--ink-3") },
+      { token: "metatag.xml", foreground: bare("--ink-3") },
     ],
     colors: {
       "editor.background": colour("--paper"),
