@@ -37,5 +37,5 @@ function toArgument(body: ValueElement): ArgumentValue {
 /** The key of the node behind a NodeId text of a value; undefined when it is not loaded or no NodeId. */
 export function toKey(ctx: CheckContext, text: string): NodeKey | undefined {
   const parsed = parseNodeId(text, []);
-  return parsed.ok ? ctx.listWithNodeId(parsed.value)[0] : undefined;
+  return parsed.ok ? ctx.findWithNodeId(parsed.value) : undefined;
 }

@@ -9,70 +9,30 @@
 import type { AddressSpace, Layer } from "../address-space/address-space";
 import { isSameEdge, listDeclaredEdges, listDistinctEdges, type Edge } from "../address-space/edge-index";
 import type { ModelHeader } from "../address-space/model-header";
-import type { Node } from "../address-space/node";
+import { isTypeNode, type Node } from "../address-space/node";
 import { formatNodeId, parseNodeId, type NodeId, type NodeKey } from "../address-space/node-id";
-import type { QualifiedName } from "../address-space/qualified-name";
+import { formatQualifiedName, type QualifiedName } from "../address-space/qualified-name";
 import { StandardReferenceType } from "../address-space/standard-ids";
 import { getReferenceTypes } from "../address-space/type-hierarchy";
-import { dropSlot, newSlot, noteRead, type Computation, type Slot, type Subject } from "./slots";
-import { getLayerTags, listTags, tagOf, type Tag } from "./tags";
-
-/** HasSubtype, other hierarchical references, the rest. */
-type EdgeGroup = 0 | 1 | 2;
-const SUBTYPE: EdgeGroup = 0;
-const HIERARCHICAL: EdgeGroup = 1;
-const OTHER: EdgeGroup = 2;
-
-type Direction = "outgoing" | "incoming";
-class NodeSlot implements Slot {
-  readers: Computation[] = [];
-  lastReader: Computation | undefined = undefined;
-  readonly node: Node | undefined;
-
-  constructor(node: Node | undefined) {
-    this.node = node;
-  }
-}
-
-class EdgeSlot implements Slot {
-  readers: Computation[] = [];
-  lastReader: Computation | undefined = undefined;
-  readonly edges: readonly Edge[];
-
-  constructor(edges: readonly Edge[]) {
-    this.edges = edges;
-  }
-}
-
-class Answer implements Slot {
-  readers: Computation[] = [];
-  lastReader: Computation | undefined = undefined;
-  value: unknown = undefined;
-}
-
-/** All slots of one node. */
-class View {
-  node: NodeSlot | undefined = undefined;
-  readonly outgoing: [EdgeSlot | undefined, EdgeSlot | undefined, EdgeSlot | undefined] = [
-    undefined,
-    undefined,
-    undefined,
-  ];
-  readonly incoming: [EdgeSlot | undefined, EdgeSlot | undefined, EdgeSlot | undefined] = [
-    undefined,
-    undefined,
-    undefined,
-  ];
-  readonly answers = new Map<object, Answer>();
-}
+import { dropSlot, Slot, type Computation, type Subject } from "./slots";
+import { addTypeName, getTypeNames, makeTypeNames, removeTypeName, type TypeNames } from "./type-names";
+import { usesNamespace } from "./namespace-use";
+import { Answer, EdgeSlot, FROM, HIERARCHICAL, NodeSlot, OTHER, SUBTYPE, TO, View } from "./views";
 
 const NO_EDGES: readonly Edge[] = [];
 
 /** Up to this many edges all groups are sorted out in one go; of hubs (PropertyType, Mandatory) only what is asked for. */
 const HUB = 64;
 
-/** A lookup worth remembering. `compute` walks in loops and never asks itself for another key, so that cycles end. */
-export type Lookup<T> = { readonly compute: (ctx: CheckContext, key: NodeKey) => T };
+/** A lookup worth remembering; `makeLookup` makes it. */
+export type Lookup<T> = { readonly number: number; readonly compute: (ctx: CheckContext, key: NodeKey) => T };
+
+let lookups = 0;
+
+/** `compute` walks in loops and never asks itself for another key, so that cycles end. Called while modules load only. */
+export function makeLookup<T>(compute: Lookup<T>["compute"]): Lookup<T> {
+  return { number: lookups++, compute };
+}
 
 export class CheckContext {
   #space: AddressSpace;
@@ -80,15 +40,16 @@ export class CheckContext {
   /** Checks ask for the same node many times in a row. */
   #lastKey: NodeKey | undefined;
   #lastView = new View();
-  readonly #ownTags = new Map<Tag, Set<NodeKey>>();
-  readonly #tagSlots = new Map<Tag, Slot>();
-  readonly #headerSlot = newSlot();
+  readonly #typeNames: TypeNames;
+  /** Slots of questions that are not about one node: who has a name, who has an id, who uses a namespace. */
+  readonly #slots = new Map<string, Slot>();
+  readonly #witnesses = new Map<string, NodeKey>();
+  #twins: ReadonlyMap<string, readonly NodeKey[]> | undefined;
   readonly #hierarchical: ReadonlySet<NodeKey>;
   readonly #required: readonly Layer[];
   readonly #requiredUris: ReadonlySet<string>;
-  #reader: Computation | undefined;
-
   readonly #isTracked: boolean;
+  #reader: Computation | undefined;
 
   /** Without tracking reads are not noted, which a single full run does not need; `update` then must not be called. */
   constructor(space: AddressSpace, isTracked = true) {
@@ -97,44 +58,44 @@ export class CheckContext {
     this.#hierarchical = getReferenceTypes(space, StandardReferenceType.HierarchicalReferences);
     this.#required = space.layers.slice(0, -1);
     this.#requiredUris = new Set(this.#required.flatMap((l) => l.header.models.map((m) => m.modelUri)));
-    for (const node of space.own.nodes.values()) this.#retag(undefined, node);
+    this.#typeNames = makeTypeNames(space.own);
   }
 
   node(key: NodeKey): Node | undefined {
     const view = this.#view(key);
     const slot = (view.node ??= new NodeSlot(this.#space.getNode(key)));
-    noteRead(slot, this.#reader);
+    slot.note(this.#reader);
     return slot.node;
   }
 
   /** Edges from the node that are hierarchical, HasSubtype left out. */
   childEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, "outgoing", HIERARCHICAL);
+    return this.#edges(key, FROM, HIERARCHICAL);
   }
 
   /** Edges to the node that are hierarchical, HasSubtype left out. */
   parentEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, "incoming", HIERARCHICAL);
+    return this.#edges(key, TO, HIERARCHICAL);
   }
 
   /** HasSubtype edges to the node; the supertypes are their sources. */
   supertypeEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, "incoming", SUBTYPE);
+    return this.#edges(key, TO, SUBTYPE);
   }
 
   /** HasSubtype edges from the node; the subtypes are their targets. */
   subtypeEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, "outgoing", SUBTYPE);
+    return this.#edges(key, FROM, SUBTYPE);
   }
 
   /** Non-hierarchical edges from the node. */
   otherEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, "outgoing", OTHER);
+    return this.#edges(key, FROM, OTHER);
   }
 
   /** Non-hierarchical edges to the node. */
   otherEdgesTo(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, "incoming", OTHER);
+    return this.#edges(key, TO, OTHER);
   }
 
   edgesFrom(key: NodeKey): Edge[] {
@@ -155,7 +116,7 @@ export class CheckContext {
   }
 
   get header(): ModelHeader {
-    noteRead(this.#headerSlot, this.#reader);
+    this.#note("header");
     return this.#space.own.header;
   }
 
@@ -169,35 +130,58 @@ export class CheckContext {
   }
 
   /** Keys of all types with the BrowseName, those of required models first. */
-  listTypesNamed(name: QualifiedName): NodeKey[] {
-    const tag = tagOf.typeName(name);
-    return [...this.#required.flatMap((layer) => getLayerTags(layer).get(tag) ?? []), ...this.#listOwnTagged(tag)];
+  listTypesNamed(browseName: QualifiedName): NodeKey[] {
+    const name = formatQualifiedName(browseName);
+    this.#note(`type ${name}`);
+    const keys = this.#required.flatMap((layer) => [...(getTypeNames(layer).get(name) ?? [])]);
+    return [...keys, ...[...(this.#typeNames.get(name) ?? [])].sort()];
   }
 
-  /** Keys of all nodes with the NodeId, those of required models first. */
-  listWithNodeId(id: NodeId): NodeKey[] {
+  /** The key of the node with the NodeId, of required models before the own one. */
+  findWithNodeId(id: NodeId): NodeKey | undefined {
     const text = formatNodeId(id);
-    return [
-      ...this.#required.flatMap((layer) => layer.keysByNodeId.get(text) ?? []),
-      ...this.#listOwnTagged(tagOf.nodeId(id)),
-    ];
+    for (const layer of this.#required) {
+      const key = layer.keysByNodeId.get(text);
+      if (key !== undefined) return key;
+    }
+    this.#note(`id ${text}`);
+    return this.#space.own.keysByNodeId.get(text);
   }
 
-  #listOwnTagged(tag: Tag): NodeKey[] {
-    let slot = this.#tagSlots.get(tag);
-    if (!slot) this.#tagSlots.set(tag, (slot = newSlot()));
-    noteRead(slot, this.#reader);
-    const keys = this.#ownTags.get(tag);
-    return !keys || keys.size === 0 ? [] : [...keys].sort();
+  /** Keys of other nodes with the NodeId of an own node. */
+  listTwins({ key, nodeId }: Node): NodeKey[] {
+    const text = formatNodeId(nodeId);
+    const twins = this.#required.flatMap((layer) => layer.keysByNodeId.get(text) ?? []);
+    if (hasTwins(this.#space)) twins.push(...(this.#getTwins().get(text) ?? []));
+    return twins.filter((twin) => twin !== key);
   }
 
-  /** Whether an id, a name or a value of an own node is in the namespace. */
+  #getTwins(): ReadonlyMap<string, readonly NodeKey[]> {
+    this.#twins ??= groupByNodeId(this.#space);
+    return this.#twins;
+  }
+
+  /** Whether an id, a name or a value of an own node is in the namespace. One node that uses it is remembered. */
   isNamespaceUsed(namespaceUri: string): boolean {
-    return this.#listOwnTagged(tagOf.namespace(namespaceUri)).length > 0;
+    const known = this.#witnesses.get(namespaceUri);
+    const witness = known === undefined ? undefined : this.node(known);
+    if (witness && usesNamespace(witness, namespaceUri)) return true;
+    for (const node of this.#space.own.nodes.values()) {
+      if (!usesNamespace(node, namespaceUri)) continue;
+      this.#witnesses.set(namespaceUri, node.key);
+      this.node(node.key);
+      return true;
+    }
+    this.#note("any node");
+    return false;
   }
 
   hasOwnDataTypes(): boolean {
-    return this.#listOwnTagged(tagOf.dataTypes).length > 0;
+    this.#note("data types");
+    for (const keys of this.#typeNames.values()) {
+      for (const key of keys) if (this.#space.own.nodes.get(key)?.nodeClass === "DataType") return true;
+    }
+    return false;
   }
 
   /** Whether a loaded model defines the namespace; the own model counts. */
@@ -207,19 +191,19 @@ export class CheckContext {
 
   lookUp<T>(lookup: Lookup<T>, key: NodeKey): T {
     const { answers } = this.#view(key);
-    let answer = answers.get(lookup);
-    if (!answer) {
-      answer = this.#answer(lookup, key, answers);
-      answers.set(lookup, answer);
-    }
-    noteRead(answer, this.#reader);
+    const answer = answers[lookup.number] ?? this.#answer(lookup, key, answers);
+    answer.note(this.#reader);
     return answer.value as T;
   }
 
-  #answer(lookup: Lookup<unknown>, key: NodeKey, answers: Map<object, Answer>): Answer {
+  #answer(lookup: Lookup<unknown>, key: NodeKey, answers: (Answer | undefined)[]): Answer {
     const answer = new Answer();
-    const computation: Computation = { answer, forget: () => void answers.delete(lookup), isEnded: false };
-    answer.value = this.#readAs(computation, () => lookup.compute(this, key));
+    const { number } = lookup;
+    const forget = (): void => void (answers[number] = undefined);
+    answer.value = this.#isTracked
+      ? this.#readAs({ answer, forget, isEnded: false }, () => lookup.compute(this, key))
+      : lookup.compute(this, key);
+    answers[number] = answer;
     return answer;
   }
 
@@ -247,9 +231,31 @@ export class CheckContext {
     return parsed.ok ? parsed.value.namespaceUri : undefined;
   }
 
+  /** Names from the topmost owner down to the node, as `getPath` makes them. */
+  pathOf(key: NodeKey): string {
+    const names: string[] = [];
+    const seen = new Set<NodeKey>();
+    const isStartOwn = this.isOwn(key);
+    for (let at: NodeKey | undefined = key; at !== undefined && !seen.has(at);) {
+      seen.add(at);
+      const node = this.node(at);
+      if (!node || (names.length > 0 && isStartOwn && !this.isOwn(at))) break;
+      names.unshift(node.browseName.name);
+      at = isTypeNode(node) ? undefined : this.#parentOf(node);
+    }
+    return names.join("/");
+  }
+
+  #parentOf(node: Node): NodeKey | undefined {
+    const edges = this.parentEdges(node.key);
+    const declared = "parent" in node ? node.parent : undefined;
+    return edges.some((e) => e.source === declared) ? declared : edges[0]?.source;
+  }
+
   /** Runs the check of a subject; what it reads is noted for it. */
   runAs(subject: Subject, run: () => void): void {
-    this.#readAs({ subject, isEnded: false }, run);
+    if (this.#isTracked) this.#readAs({ subject, isEnded: false }, run);
+    else run();
   }
 
   /**
@@ -258,11 +264,24 @@ export class CheckContext {
    */
   update(after: AddressSpace, changed: readonly NodeKey[]): Set<Subject> {
     const before = this.#space;
-    this.#space = after;
     const dirty = new Set<Subject>();
-    if (before.own.header !== after.own.header) dropSlot(this.#headerSlot, dirty);
+    if (hasTwins(before)) this.#dirtyTwins(before, after, changed, dirty);
+    this.#space = after;
+    this.#twins = undefined;
+    if (hasTwins(after)) this.#dirtyTwins(before, after, changed, dirty);
+    if (before.own.header !== after.own.header) this.#drop("header", dirty);
+    if (changed.length > 0) this.#drop("any node", dirty);
     for (const key of changed) this.#touch(key, before.own.nodes.get(key), after.own.nodes.get(key), dirty);
     return dirty;
+  }
+
+  /** Of two nodes with one NodeId both are told, so both are checked again when one of them changes. */
+  #dirtyTwins(before: AddressSpace, after: AddressSpace, changed: readonly NodeKey[], dirty: Set<Subject>): void {
+    for (const key of changed) {
+      for (const node of [before.own.nodes.get(key), after.own.nodes.get(key)]) {
+        if (node) for (const twin of this.#getTwins().get(formatNodeId(node.nodeId)) ?? []) dirty.add(twin);
+      }
+    }
   }
 
   #touch(key: NodeKey, old: Node | undefined, node: Node | undefined, dirty: Set<Subject>): void {
@@ -271,38 +290,39 @@ export class CheckContext {
       dropSlot(view.node, dirty);
       view.node = undefined;
     }
-    for (const tag of this.#retag(old, node)) {
-      const slot = this.#tagSlots.get(tag);
-      if (slot) dropSlot(slot, dirty);
+    for (const state of [old, node]) {
+      if (!state) continue;
+      this.#drop(`id ${formatNodeId(state.nodeId)}`, dirty);
+      if (isTypeNode(state)) this.#drop(`type ${formatQualifiedName(state.browseName)}`, dirty);
+      if (state.nodeClass === "DataType") this.#drop("data types", dirty);
     }
+    if (old) removeTypeName(this.#typeNames, old);
+    if (node) addTypeName(this.#typeNames, node);
     for (const edge of listMovedEdges(old, node)) {
       const group = this.#groupOf(edge.type);
-      this.#dropEdges(edge.source, "outgoing", group, dirty);
-      this.#dropEdges(edge.target, "incoming", group, dirty);
+      this.#dropEdges(edge.source, FROM + group, dirty);
+      this.#dropEdges(edge.target, TO + group, dirty);
     }
   }
 
-  #dropEdges(key: NodeKey, direction: Direction, group: EdgeGroup, dirty: Set<Subject>): void {
-    const slots = this.#views.get(key)?.[direction];
-    const slot = slots?.[group];
-    if (!slots || !slot) return;
+  #dropEdges(key: NodeKey, index: number, dirty: Set<Subject>): void {
+    const edges = this.#views.get(key)?.edges;
+    const slot = edges?.[index];
+    if (!edges || !slot) return;
     dropSlot(slot, dirty);
-    slots[group] = undefined;
+    edges[index] = undefined;
   }
 
-  /** Moves a node's tags and answers those that it gained or lost. */
-  #retag(old: Node | undefined, node: Node | undefined): Tag[] {
-    const before = old ? listTags(old) : [];
-    const after = node ? listTags(node) : [];
-    const lost = before.filter((t) => !after.includes(t));
-    const gained = after.filter((t) => !before.includes(t));
-    for (const tag of lost) if (old) this.#ownTags.get(tag)?.delete(old.key);
-    for (const tag of gained) {
-      let keys = this.#ownTags.get(tag);
-      if (!keys) this.#ownTags.set(tag, (keys = new Set()));
-      if (node) keys.add(node.key);
-    }
-    return [...lost, ...gained];
+  #drop(name: string, dirty: Set<Subject>): void {
+    const slot = this.#slots.get(name);
+    if (slot) dropSlot(slot, dirty);
+  }
+
+  #note(name: string): void {
+    if (!this.#reader) return;
+    let slot = this.#slots.get(name);
+    if (!slot) this.#slots.set(name, (slot = new Slot()));
+    slot.note(this.#reader);
   }
 
   #view(key: NodeKey): View {
@@ -314,35 +334,50 @@ export class CheckContext {
     return view;
   }
 
-  #edges(key: NodeKey, direction: Direction, group: EdgeGroup): readonly Edge[] {
-    const slots = this.#view(key)[direction];
-    const slot = slots[group] ?? this.#fillEdges(slots, key, direction, group);
-    noteRead(slot, this.#reader);
+  #edges(key: NodeKey, direction: number, group: number): readonly Edge[] {
+    const { edges } = this.#view(key);
+    const slot = edges[direction + group] ?? this.#fillEdges(edges, key, direction, group);
+    slot.note(this.#reader);
     return slot.edges;
   }
 
-  #fillEdges(slots: View[Direction], key: NodeKey, direction: Direction, group: EdgeGroup): EdgeSlot {
-    const all: Edge[] = [];
-    for (const layer of this.#space.layers) {
-      const bundle = layer[direction].get(key);
-      if (bundle) for (const edge of bundle.distinct) all.push(edge);
-    }
-    const groups = all.length > HUB ? [group] : ([SUBTYPE, HIERARCHICAL, OTHER] as const);
-    for (const each of groups) {
-      slots[each] ??= new EdgeSlot(
-        all.length === 0 ? NO_EDGES : listDistinctEdges(all.filter((e) => this.#groupOf(e.type) === each)),
-      );
-    }
-    return slots[group] as EdgeSlot;
+  #fillEdges(slots: View["edges"], key: NodeKey, direction: number, group: number): EdgeSlot {
+    const bundles = this.#listBundles(key, direction);
+    const size = bundles.reduce((sum, bundle) => sum + bundle.length, 0);
+    if (size > HUB) return (slots[direction + group] = new EdgeSlot(this.#pick(bundles, group)));
+    for (const each of [SUBTYPE, HIERARCHICAL, OTHER])
+      slots[direction + each] ??= new EdgeSlot(this.#pick(bundles, each));
+    return slots[direction + group] ?? new EdgeSlot(NO_EDGES);
   }
 
-  #groupOf(type: NodeKey): EdgeGroup {
+  #listBundles(key: NodeKey, direction: number): (readonly Edge[])[] {
+    const bundles: (readonly Edge[])[] = [];
+    for (const layer of this.#space.layers) {
+      const bundle = (direction === FROM ? layer.outgoing : layer.incoming).get(key);
+      if (bundle) bundles.push(bundle.distinct);
+    }
+    return bundles;
+  }
+
+  #pick(bundles: readonly (readonly Edge[])[], group: number): readonly Edge[] {
+    let found: Edge[] | undefined;
+    for (const bundle of bundles) {
+      for (const edge of bundle) {
+        if (this.#groupOf(edge.type) !== group) continue;
+        if (found) found.push(edge);
+        else found = [edge];
+      }
+    }
+    if (!found) return NO_EDGES;
+    return bundles.length > 1 ? listDistinctEdges(found) : found;
+  }
+
+  #groupOf(type: NodeKey): number {
     if (type === StandardReferenceType.HasSubtype) return SUBTYPE;
     return this.#hierarchical.has(type) ? HIERARCHICAL : OTHER;
   }
 
   #readAs<T>(reader: Computation, run: () => T): T {
-    if (!this.#isTracked) return run();
     const outer = this.#reader;
     this.#reader = reader;
     try {
@@ -351,6 +386,23 @@ export class CheckContext {
       this.#reader = outer;
     }
   }
+}
+
+/** Whether two own nodes share a NodeId: then there are fewer NodeIds than nodes. */
+function hasTwins({ own }: AddressSpace): boolean {
+  return own.keysByNodeId.size !== own.nodes.size;
+}
+
+function groupByNodeId({ own }: AddressSpace): Map<string, NodeKey[]> {
+  const groups = new Map<string, NodeKey[]>();
+  for (const { key, nodeId } of own.nodes.values()) {
+    const text = formatNodeId(nodeId);
+    const keys = groups.get(text);
+    if (keys) keys.push(key);
+    else groups.set(text, [key]);
+  }
+  for (const keys of groups.values()) keys.sort();
+  return groups;
 }
 
 /** The edges that a node's change can have moved: gained, lost, or all where their order may differ. */

@@ -2,7 +2,7 @@
 import type { DataTypeField } from "../address-space/node";
 import { parseNodeId, standardKey, type NodeKey } from "../address-space/node-id";
 import { StandardDataType as D, StandardReferenceType } from "../address-space/standard-ids";
-import type { CheckContext, Lookup } from "./check-context";
+import { makeLookup, type CheckContext } from "./check-context";
 import { isChainLoaded, isKindOf, listSupertypes } from "./lookups";
 
 const Decimal = standardKey(50);
@@ -44,21 +44,19 @@ const UNSIGNED = ["Byte", "UInt16", "UInt32", "UInt64"];
 /** Names of the built-in types that a value of the DataType may have; "any" for BaseDataType. */
 export type AllowedBuiltIns = ReadonlySet<string> | "any";
 
-const allowedBuiltIns: Lookup<AllowedBuiltIns | undefined> = {
-  compute(ctx, dataType) {
-    for (const at of [dataType, ...listSupertypes(ctx, dataType)]) {
-      if (at === D.BaseDataType) return "any";
-      if (at === D.Enumeration) return new Set(["Int32"]);
-      if (at === Decimal) return new Set(["ExtensionObject"]);
-      if (at === D.Number) return new Set([...SIGNED, ...UNSIGNED, "Float", "Double", "ExtensionObject"]);
-      if (at === D.Integer) return new Set(SIGNED);
-      if (at === D.UInteger) return new Set(UNSIGNED);
-      const name = BUILT_IN.get(at);
-      if (name !== undefined) return new Set([name]);
-    }
-    return undefined;
-  },
-};
+const allowedBuiltIns = makeLookup<AllowedBuiltIns | undefined>((ctx, dataType) => {
+  for (const at of [dataType, ...listSupertypes(ctx, dataType)]) {
+    if (at === D.BaseDataType) return "any";
+    if (at === D.Enumeration) return new Set(["Int32"]);
+    if (at === Decimal) return new Set(["ExtensionObject"]);
+    if (at === D.Number) return new Set([...SIGNED, ...UNSIGNED, "Float", "Double", "ExtensionObject"]);
+    if (at === D.Integer) return new Set(SIGNED);
+    if (at === D.UInteger) return new Set(UNSIGNED);
+    const name = BUILT_IN.get(at);
+    if (name !== undefined) return new Set([name]);
+  }
+  return undefined;
+});
 
 /** Undefined when the DataType, or a type above it, is not loaded. */
 export function findAllowedBuiltIns(ctx: CheckContext, dataType: NodeKey): AllowedBuiltIns | undefined {
@@ -71,15 +69,13 @@ export function isNumeric(ctx: CheckContext, dataType: NodeKey): boolean | undef
   return isChainLoaded(ctx, dataType) ? false : undefined;
 }
 
-const fields: Lookup<readonly DataTypeField[]> = {
-  compute(ctx, dataType) {
-    const chain = [dataType, ...listSupertypes(ctx, dataType)].reverse();
-    return chain.flatMap((type) => {
-      const node = ctx.node(type);
-      return node?.nodeClass === "DataType" ? (node.definition?.fields ?? []) : [];
-    });
-  },
-};
+const fields = makeLookup<readonly DataTypeField[]>((ctx, dataType) => {
+  const chain = [dataType, ...listSupertypes(ctx, dataType)].reverse();
+  return chain.flatMap((type) => {
+    const node = ctx.node(type);
+    return node?.nodeClass === "DataType" ? (node.definition?.fields ?? []) : [];
+  });
+});
 
 /** The fields of a Structure or Union, inherited ones first. */
 export function listFields(ctx: CheckContext, dataType: NodeKey): readonly DataTypeField[] {
@@ -95,7 +91,7 @@ export function nameDataType(ctx: CheckContext, dataType: NodeKey): string {
 export function findDataTypeOf(ctx: CheckContext, typeId: string): NodeKey | undefined {
   const parsed = parseNodeId(typeId, []);
   if (!parsed.ok) return undefined;
-  const [key] = ctx.listWithNodeId(parsed.value);
+  const key = ctx.findWithNodeId(parsed.value);
   if (key === undefined) return undefined;
   if (ctx.node(key)?.nodeClass === "DataType") return key;
   return ctx.otherEdgesTo(key).find((e) => e.type === StandardReferenceType.HasEncoding)?.source;

@@ -2,22 +2,20 @@
 import type { Edge } from "../address-space/edge-index";
 import type { Node } from "../address-space/node";
 import { isTypeNode } from "../address-space/node";
-import type { NodeKey } from "../address-space/node-id";
+import { OPC_UA_NAMESPACE, type NodeKey } from "../address-space/node-id";
 import { StandardReferenceType as R } from "../address-space/standard-ids";
-import type { CheckContext, Lookup } from "./check-context";
+import { makeLookup, type CheckContext } from "./check-context";
 
-const supertypes: Lookup<readonly NodeKey[]> = {
-  compute(ctx, key) {
-    const chain: NodeKey[] = [];
-    const seen = new Set<NodeKey>([key]);
-    for (let at = ctx.supertypeEdges(key)[0]?.source; at !== undefined && !seen.has(at);) {
-      seen.add(at);
-      chain.push(at);
-      at = ctx.supertypeEdges(at)[0]?.source;
-    }
-    return chain;
-  },
-};
+const supertypes = makeLookup<readonly NodeKey[]>((ctx, key) => {
+  const chain: NodeKey[] = [];
+  const seen = new Set<NodeKey>([key]);
+  for (let at = ctx.supertypeEdges(key)[0]?.source; at !== undefined && !seen.has(at);) {
+    seen.add(at);
+    chain.push(at);
+    at = ctx.supertypeEdges(at)[0]?.source;
+  }
+  return chain;
+});
 
 /** The chain of supertypes, nearest first, without the type itself. */
 export function listSupertypes(ctx: CheckContext, type: NodeKey): readonly NodeKey[] {
@@ -34,60 +32,66 @@ export function isChainLoaded(ctx: CheckContext, type: NodeKey): boolean {
   return ctx.node(type) !== undefined && listSupertypes(ctx, type).every((t) => ctx.node(t) !== undefined);
 }
 
+const typeDefinition = makeLookup<NodeKey | undefined>((ctx, key) =>
+  findTarget(ctx.otherEdges(key), R.HasTypeDefinition),
+);
+const modellingRule = makeLookup<NodeKey | undefined>((ctx, key) =>
+  findTarget(ctx.otherEdges(key), R.HasModellingRule),
+);
+
+function findTarget(edges: readonly Edge[], type: NodeKey): NodeKey | undefined {
+  for (const edge of edges) if (edge.type === type) return edge.target;
+  return undefined;
+}
+
 export function findTypeDefinition(ctx: CheckContext, key: NodeKey): NodeKey | undefined {
-  return ctx.otherEdges(key).find((e) => e.type === R.HasTypeDefinition)?.target;
+  return ctx.lookUp(typeDefinition, key);
 }
 
 export function findModellingRule(ctx: CheckContext, key: NodeKey): NodeKey | undefined {
-  return ctx.otherEdges(key).find((e) => e.type === R.HasModellingRule)?.target;
+  return ctx.lookUp(modellingRule, key);
 }
 
-const typeAbove: Lookup<NodeKey | undefined> = {
-  compute(ctx, key) {
-    const seen = new Set<NodeKey>([key]);
-    for (const at of seen) {
-      for (const edge of ctx.parentEdges(at)) {
-        const parent = ctx.node(edge.source);
-        if (parent && isTypeNode(parent)) return parent.key;
-        seen.add(edge.source);
-      }
+const typeAbove = makeLookup<NodeKey | undefined>((ctx, key) => {
+  const seen = new Set<NodeKey>([key]);
+  for (const at of seen) {
+    for (const edge of ctx.parentEdges(at)) {
+      const parent = ctx.node(edge.source);
+      if (parent && isTypeNode(parent)) return parent.key;
+      seen.add(edge.source);
     }
-    return undefined;
-  },
-};
+  }
+  return undefined;
+});
 
 /** A type from which hierarchical references lead down to the node; undefined for what belongs to instances only. */
 export function findTypeAbove(ctx: CheckContext, key: NodeKey): NodeKey | undefined {
   return ctx.lookUp(typeAbove, key);
 }
 
-const declaration: Lookup<boolean> = {
-  compute(ctx, key) {
-    if (findModellingRule(ctx, key) === undefined) return false;
-    const seen = new Set<NodeKey>([key]);
-    for (const at of seen) {
-      for (const { source } of ctx.parentEdges(at)) {
-        const parent = ctx.node(source);
-        if (!parent) continue;
-        if (parent.nodeClass === "ObjectType" || parent.nodeClass === "VariableType") return true;
-        if (findModellingRule(ctx, source) !== undefined) seen.add(source);
-      }
+const declaration = makeLookup<boolean>((ctx, key) => {
+  if (findModellingRule(ctx, key) === undefined) return false;
+  const seen = new Set<NodeKey>([key]);
+  for (const at of seen) {
+    for (const { source } of ctx.parentEdges(at)) {
+      const parent = ctx.node(source);
+      if (!parent) continue;
+      if (parent.nodeClass === "ObjectType" || parent.nodeClass === "VariableType") return true;
+      if (findModellingRule(ctx, source) !== undefined) seen.add(source);
     }
-    return false;
-  },
-};
+  }
+  return false;
+});
 
 /** An InstanceDeclaration: a node with a modelling rule below a type or another declaration (OPC 10000-3 §6.2.1). */
 export function isInstanceDeclaration(ctx: CheckContext, key: NodeKey): boolean {
   return ctx.lookUp(declaration, key);
 }
 
-const propertyRole: Lookup<boolean> = {
-  compute(ctx, key) {
-    const types = ctx.closure(R.HasProperty);
-    return ctx.parentEdges(key).some((e) => types.has(e.type));
-  },
-};
+const propertyRole = makeLookup<boolean>((ctx, key) => {
+  const types = ctx.closure(R.HasProperty);
+  return ctx.parentEdges(key).some((e) => types.has(e.type));
+});
 
 /** Whether the node is the target of a HasProperty reference. */
 export function isProperty(ctx: CheckContext, key: NodeKey): boolean {
@@ -95,25 +99,27 @@ export function isProperty(ctx: CheckContext, key: NodeKey): boolean {
 }
 
 /** Edges of the given ones whose type is the reference type or below it. */
-export function ofType(ctx: CheckContext, edges: readonly Edge[], referenceType: NodeKey): Edge[] {
+export function ofType(ctx: CheckContext, edges: readonly Edge[], referenceType: NodeKey): readonly Edge[] {
+  if (edges.length === 0) return edges;
   const types = ctx.closure(referenceType);
-  return edges.filter((e) => types.has(e.type));
+  return edges.every((e) => types.has(e.type)) ? edges : edges.filter((e) => types.has(e.type));
 }
+
+const NO_PROPERTIES: ReadonlyMap<string, Node> = new Map();
+
+const standardProperties = makeLookup<ReadonlyMap<string, Node>>((ctx, key) => {
+  const edges = ofType(ctx, ctx.childEdges(key), R.HasProperty);
+  if (edges.length === 0) return NO_PROPERTIES;
+  const found = new Map<string, Node>();
+  for (const { target } of edges) {
+    const node = ctx.node(target);
+    if (node?.browseName.namespaceUri !== OPC_UA_NAMESPACE || found.has(node.browseName.name)) continue;
+    found.set(node.browseName.name, node);
+  }
+  return found;
+});
 
 /** The Property with a BrowseName of namespace 0, by identity of namespace and name. */
 export function findStandardProperty(ctx: CheckContext, key: NodeKey, name: string): Node | undefined {
-  return findPropertyNamed(ctx, key, "http://opcfoundation.org/UA/", name);
-}
-
-export function findPropertyNamed(
-  ctx: CheckContext,
-  key: NodeKey,
-  namespaceUri: string,
-  name: string,
-): Node | undefined {
-  for (const edge of ofType(ctx, ctx.childEdges(key), R.HasProperty)) {
-    const node = ctx.node(edge.target);
-    if (node?.browseName.name === name && node.browseName.namespaceUri === namespaceUri) return node;
-  }
-  return undefined;
+  return ctx.lookUp(standardProperties, key).get(name);
 }

@@ -1,30 +1,28 @@
 /** Loops over references of one kind, told once each. */
 import type { NodeKey } from "../address-space/node-id";
-import type { CheckContext, Lookup } from "./check-context";
+import { makeLookup, type CheckContext, type Lookup } from "./check-context";
 
 type LoopLookup = Lookup<readonly NodeKey[] | undefined>;
 
 /** Finds a shortest loop from a node upwards over references of the type or below it, back to the node. */
 export function makeLoopLookup(referenceType: NodeKey): LoopLookup {
-  return {
-    compute(ctx, start) {
-      const types = ctx.closure(referenceType);
-      const below = new Map<NodeKey, NodeKey>();
-      const open: NodeKey[] = [start];
-      for (const at of open) {
-        for (const edges of [ctx.supertypeEdges(at), ctx.parentEdges(at)]) {
-          for (const { type, source } of edges) {
-            if (!types.has(type)) continue;
-            if (source === start) return listLoop(start, at, below);
-            if (below.has(source)) continue;
-            below.set(source, at);
-            open.push(source);
-          }
+  return makeLookup((ctx, start) => {
+    const types = ctx.closure(referenceType);
+    const below = new Map<NodeKey, NodeKey>();
+    const open: NodeKey[] = [start];
+    for (const at of open) {
+      for (const edges of [ctx.supertypeEdges(at), ctx.parentEdges(at)]) {
+        for (const { type, source } of edges) {
+          if (!types.has(type)) continue;
+          if (source === start) return listLoop(start, at, below);
+          if (below.has(source)) continue;
+          below.set(source, at);
+          open.push(source);
         }
       }
-      return undefined;
-    },
-  };
+    }
+    return undefined;
+  });
 }
 
 function listLoop(start: NodeKey, first: NodeKey, below: ReadonlyMap<NodeKey, NodeKey>): NodeKey[] {

@@ -6,7 +6,7 @@ import type { NodeKey } from "../address-space/node-id";
 import type { Node } from "../address-space/node";
 import { formatQualifiedName } from "../address-space/qualified-name";
 import { StandardModellingRule as M, StandardReferenceType as R } from "../address-space/standard-ids";
-import type { CheckContext, Lookup } from "./check-context";
+import { makeLookup, type CheckContext } from "./check-context";
 import { findModellingRule, listSupertypes } from "./lookups";
 
 /** A declaration with its rule and the type (or Interface, or declaration) that it hangs on. */
@@ -26,54 +26,48 @@ export function isPlaceholder(rule: NodeKey | undefined): boolean {
   return rule === M.MandatoryPlaceholder || rule === M.OptionalPlaceholder;
 }
 
-const ownMembers: Lookup<readonly Member[]> = {
-  compute(ctx, key) {
-    const found: Member[] = [];
-    const seen = new Set<NodeKey>();
-    for (const edge of ctx.childEdges(key)) {
-      const node = ctx.node(edge.target);
-      const rule = findModellingRule(ctx, edge.target);
-      if (!node || rule === undefined || seen.has(node.key)) continue;
-      seen.add(node.key);
-      found.push({ node, rule, owner: key, referenceType: edge.type });
-    }
-    return found;
-  },
-};
+const ownMembers = makeLookup<readonly Member[]>((ctx, key) => {
+  const found: Member[] = [];
+  const seen = new Set<NodeKey>();
+  for (const edge of ctx.childEdges(key)) {
+    const node = ctx.node(edge.target);
+    const rule = findModellingRule(ctx, edge.target);
+    if (!node || rule === undefined || seen.has(node.key)) continue;
+    seen.add(node.key);
+    found.push({ node, rule, owner: key, referenceType: edge.type });
+  }
+  return found;
+});
 
 /** The declarations directly below a type or a declaration, not the inherited ones. */
 export function listOwnMembers(ctx: CheckContext, key: NodeKey): readonly Member[] {
   return ctx.lookUp(ownMembers, key);
 }
 
-const inheritedMembers: Lookup<ReadonlyMap<string, Member>> = {
-  compute(ctx, key) {
-    const members = new Map<string, Member>();
-    for (const type of [key, ...listSupertypes(ctx, key)]) {
-      for (const member of listOwnMembers(ctx, type)) {
-        const name = formatQualifiedName(member.node.browseName);
-        if (!members.has(name)) members.set(name, member);
-      }
+const inheritedMembers = makeLookup<ReadonlyMap<string, Member>>((ctx, key) => {
+  const members = new Map<string, Member>();
+  for (const type of [key, ...listSupertypes(ctx, key)]) {
+    for (const member of listOwnMembers(ctx, type)) {
+      const name = formatQualifiedName(member.node.browseName);
+      if (!members.has(name)) members.set(name, member);
     }
-    return members;
-  },
-};
+  }
+  return members;
+});
 
 /** The members of a type with the inherited ones, by BrowseName with namespace; the nearest declaration wins. */
 export function getMembers(ctx: CheckContext, type: NodeKey): ReadonlyMap<string, Member> {
   return ctx.lookUp(inheritedMembers, type);
 }
 
-const interfaces: Lookup<readonly NodeKey[]> = {
-  compute(ctx, key) {
-    const found = new Set<NodeKey>();
-    const types = ctx.closure(R.HasInterface);
-    for (const at of [key, ...listSupertypes(ctx, key)]) {
-      for (const edge of ctx.otherEdges(at)) if (types.has(edge.type)) found.add(edge.target);
-    }
-    return [...found];
-  },
-};
+const interfaces = makeLookup<readonly NodeKey[]>((ctx, key) => {
+  const found = new Set<NodeKey>();
+  const types = ctx.closure(R.HasInterface);
+  for (const at of [key, ...listSupertypes(ctx, key)]) {
+    for (const edge of ctx.otherEdges(at)) if (types.has(edge.type)) found.add(edge.target);
+  }
+  return [...found];
+});
 
 /** Interfaces that a node or its supertypes apply (OPC 10000-3 §4.10). */
 export function listInterfaces(ctx: CheckContext, key: NodeKey): readonly NodeKey[] {
@@ -91,20 +85,18 @@ export function findInheritedMember(
 }
 
 /** Children of a node by BrowseName with namespace; several where names repeat. */
-const children: Lookup<ReadonlyMap<string, readonly Node[]>> = {
-  compute(ctx, key) {
-    const found = new Map<string, Node[]>();
-    for (const edge of ctx.childEdges(key)) {
-      const node = ctx.node(edge.target);
-      if (!node) continue;
-      const name = formatQualifiedName(node.browseName);
-      const same = found.get(name);
-      if (!same) found.set(name, [node]);
-      else if (!same.includes(node)) same.push(node);
-    }
-    return found;
-  },
-};
+const children = makeLookup<ReadonlyMap<string, readonly Node[]>>((ctx, key) => {
+  const found = new Map<string, Node[]>();
+  for (const edge of ctx.childEdges(key)) {
+    const node = ctx.node(edge.target);
+    if (!node) continue;
+    const name = formatQualifiedName(node.browseName);
+    const same = found.get(name);
+    if (!same) found.set(name, [node]);
+    else if (!same.includes(node)) same.push(node);
+  }
+  return found;
+});
 
 export function getChildren(ctx: CheckContext, key: NodeKey): ReadonlyMap<string, readonly Node[]> {
   return ctx.lookUp(children, key);

@@ -43,6 +43,10 @@ type RuleBase = {
 
 export type NodeRule = RuleBase & {
   readonly concerns: readonly NodeClass[];
+  /** Only nodes that declare a reference of this type or below it are looked at, which spares most nodes most rules. */
+  readonly declares?: NodeKey;
+  /** Likewise only nodes that have a value, or children. */
+  readonly needs?: "value" | "children";
   readonly check: (node: Node, ctx: CheckContext, report: ReportFunction) => void;
 };
 

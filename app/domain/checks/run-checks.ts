@@ -4,15 +4,13 @@
  * order: the model as a whole first, then node by node in the model's order, rule by rule.
  */
 import type { AddressSpace } from "../address-space/address-space";
-import { getPath } from "../address-space/browse";
-import { compareRank } from "../address-space/edge-index";
-import type { Node, NodeClass } from "../address-space/node";
+import { hasValueAttributes, type Node } from "../address-space/node";
 import { formatNodeId, type NodeKey } from "../address-space/node-id";
-import { getOwnNamespace } from "../address-space/model-header";
+import { getOwnNamespace, type ModelHeader } from "../address-space/model-header";
 import { CheckContext } from "./check-context";
-import type { Finding, Report, RuleId } from "./finding";
+import type { Finding, Report } from "./finding";
 import { RULES } from "./registry";
-import { ALL_CLASSES, type ModelRule, type NodeRule, type Rule } from "./rule";
+import type { ModelRule, NodeRule, Rule } from "./rule";
 import type { Subject } from "./slots";
 
 export type CheckOptions = {
@@ -24,7 +22,7 @@ export type CheckOptions = {
   readonly shouldStop?: () => boolean;
 };
 
-type RawFinding = Report & { readonly rule: Rule };
+type RankedFinding = { readonly finding: Finding; readonly order: number };
 
 /** A run that can be continued. `updateChecks` takes its memory over: keep the newest run only. */
 export type CheckRun = {
@@ -32,7 +30,8 @@ export type CheckRun = {
   readonly space: AddressSpace;
   readonly options: CheckOptions;
   readonly context: CheckContext;
-  readonly results: Map<Subject, readonly RawFinding[]>;
+  readonly byKind: RulesByKind;
+  readonly results: Map<Subject, readonly RankedFinding[]>;
 };
 
 const STEP = 50;
@@ -72,13 +71,14 @@ function* takeSteps(
   options: CheckOptions,
   context: CheckContext,
 ): Generator<number, CheckRun, undefined> {
-  const results = new Map<Subject, readonly RawFinding[]>();
+  const results = new Map<Subject, readonly RankedFinding[]>();
   const rules = groupRules(options.rules ?? RULES);
-  checkSubject("model", context, rules, results);
+  const byKind: RulesByKind = new Map();
+  checkSubject("model", context, rules, results, byKind);
   const total = space.own.nodes.size;
   let done = 0;
   for (const key of space.own.nodes.keys()) {
-    checkSubject(key as NodeKey, context, rules, results);
+    checkSubject(key as NodeKey, context, rules, results, byKind);
     done++;
     if (done % STEP === 0) yield done;
     if (done % PROGRESS_STEP !== 0) continue;
@@ -86,7 +86,7 @@ function* takeSteps(
     if (options.shouldStop?.()) break;
   }
   options.onProgress?.(done, total);
-  return { findings: listFindings(space, results), space, options, context, results };
+  return { findings: listFindings(results), space, options, context, byKind, results };
 }
 
 /**
@@ -94,15 +94,15 @@ function* takeSteps(
  * A change of ReferenceTypes or of required models asks every question anew and is a full run.
  */
 export function updateChecks(last: CheckRun, after: AddressSpace): CheckRun {
-  const { space: before, options, context, results } = last;
+  const { space: before, options, context, byKind, results } = last;
   if (before === after) return last;
   const changed = before.own.nodes.listChangedKeys(after.own.nodes) as NodeKey[];
   if (needsFullRun(before, after, changed)) return startChecks(after, options);
   const dirty = context.update(after, changed);
   for (const key of changed) dirty.add(key);
   const rules = groupRules(options.rules ?? RULES);
-  for (const subject of dirty) checkSubject(subject, context, rules, results);
-  return { findings: listFindings(after, results), space: after, options, context, results };
+  for (const subject of dirty) checkSubject(subject, context, rules, results, byKind);
+  return { findings: listFindings(results), space: after, options, context, byKind, results };
 }
 
 function needsFullRun(before: AddressSpace, after: AddressSpace, changed: readonly NodeKey[]): boolean {
@@ -119,7 +119,7 @@ function needsFullRun(before: AddressSpace, after: AddressSpace, changed: readon
 
 type RuleGroups = {
   readonly model: readonly ModelRule[];
-  readonly byClass: ReadonlyMap<NodeClass, readonly NodeRule[]>;
+  readonly nodes: readonly NodeRule[];
 };
 
 const groups = new WeakMap<readonly Rule[], RuleGroups>();
@@ -128,74 +128,111 @@ function groupRules(rules: readonly Rule[]): RuleGroups {
   const known = groups.get(rules);
   if (known) return known;
   const isModelRule = (rule: Rule): rule is ModelRule => rule.concerns === "model";
-  const nodeRules = rules.filter((r): r is NodeRule => !isModelRule(r));
   const made: RuleGroups = {
     model: rules.filter(isModelRule),
-    byClass: new Map(ALL_CLASSES.map((c) => [c, nodeRules.filter((r) => r.concerns.includes(c))] as const)),
+    nodes: rules.filter((rule): rule is NodeRule => !isModelRule(rule)),
   };
   groups.set(rules, made);
   return made;
 }
 
+/**
+ * The rules that a node can break at all, by its kind: class, types of the references that it declares, whether it has a
+ * value and children. A model has a few dozen kinds, and most rules speak of few of them.
+ */
+function listRulesFor(
+  node: Node,
+  context: CheckContext,
+  { nodes }: RuleGroups,
+  byKind: RulesByKind,
+): readonly NodeRule[] {
+  const hasValue = hasValueAttributes(node) && node.value !== undefined;
+  const hasChildren = context.childEdges(node.key).length > 0;
+  let kind = `${node.nodeClass}${hasValue ? "+v" : ""}${hasChildren ? "+c" : ""}`;
+  for (const { type } of node.references) if (!kind.includes(type)) kind += ` ${type}`;
+  let rules = byKind.get(kind);
+  if (!rules) {
+    rules = nodes.filter(
+      ({ concerns, declares, needs }) =>
+        concerns.includes(node.nodeClass) &&
+        (needs !== "value" || hasValue) &&
+        (needs !== "children" || hasChildren) &&
+        (declares === undefined || node.references.some((r) => context.closure(declares).has(r.type))),
+    );
+    byKind.set(kind, rules);
+  }
+  return rules;
+}
+
+type RulesByKind = Map<string, readonly NodeRule[]>;
+
 function checkSubject(
   subject: Subject,
   context: CheckContext,
   rules: RuleGroups,
-  results: Map<Subject, readonly RawFinding[]>,
+  results: Map<Subject, readonly RankedFinding[]>,
+  byKind: RulesByKind,
 ): void {
-  const found: RawFinding[] = [];
+  const found: RankedFinding[] = [];
   context.runAs(subject, () => {
     if (subject === "model") {
-      for (const rule of rules.model) rule.check(context, (report) => found.push({ ...report, rule }));
+      for (const rule of rules.model)
+        rule.check(context, (report) => found.push(rank(context, rule, report, undefined)));
       return;
     }
     const node = context.node(subject);
     if (!node || !context.isOwn(subject)) return;
-    for (const rule of rules.byClass.get(node.nodeClass) ?? []) {
-      rule.check(node, context, (report) => found.push({ key: subject, ...report, rule }));
+    let current: NodeRule | undefined;
+    const report = (reported: Report): void => {
+      if (current) found.push(rank(context, current, reported, subject));
+    };
+    for (const rule of listRulesFor(node, context, rules, byKind)) {
+      current = rule;
+      rule.check(node, context, report);
     }
   });
   if (found.length > 0) results.set(subject, found);
   else results.delete(subject);
 }
 
-/** Puts findings in order and gives each its place; places follow renamed parents, so they are made last. */
-function listFindings(space: AddressSpace, results: ReadonlyMap<Subject, readonly RawFinding[]>): Finding[] {
-  const raw = [...results.values()].flat().filter((f) => f.key === undefined || space.isOwn(f.key));
-  const nodeOf = (f: RawFinding): Node | undefined => (f.key === undefined ? undefined : space.getNode(f.key));
-  const keyed = raw.map((finding) => ({ finding, node: nodeOf(finding) }));
-  keyed.sort(
-    (a, b) =>
-      (a.node && b.node ? compareRank(a.node, b.node) : Number(a.node !== undefined) - Number(b.node !== undefined)) ||
-      compareText(a.finding.rule.id, b.finding.rule.id) ||
-      compareText(a.finding.message, b.finding.message) ||
-      compareText((a.finding.facts ?? []).join("\n"), (b.finding.facts ?? []).join("\n")),
-  );
-  return keyed.map(({ finding, node }) => toFinding(space, finding, node));
-}
-
-function compareText(a: string, b: string): number {
-  return a < b ? -1 : a > b ? 1 : 0;
-}
-
-function toFinding(space: AddressSpace, raw: RawFinding, node: Node | undefined): Finding {
-  const { rule, message, facts, severity, attribute, clause, data } = raw;
-  return {
-    rule: rule.id as RuleId,
+/** Places a report; the place is read like everything else, so that a renamed parent changes the paths below it. */
+function rank(context: CheckContext, rule: Rule, report: Report, subject: NodeKey | undefined): RankedFinding {
+  const { message, facts, severity, attribute, clause, data, key = subject } = report;
+  const node = key !== undefined && context.isOwn(key) ? context.node(key) : undefined;
+  const finding: Finding = {
+    rule: rule.id,
     severity: severity ?? rule.severity,
     ...(node ? { key: node.key } : {}),
     nodeId: node ? formatNodeId(node.nodeId) : "",
     browseName: node?.browseName.name ?? "",
-    path: node ? getPath(space, node.key) : nameModel(space),
+    path: node ? context.pathOf(node.key) : nameModel(context.header),
     ...(attribute === undefined ? {} : { attribute }),
     message,
     clause: clause ?? rule.clause,
     facts: facts ?? [],
     ...(data ? { data } : {}),
   };
+  return { finding, order: node?.order ?? -1 };
 }
 
-function nameModel(space: AddressSpace): string {
-  const { header } = space.own;
+/** All findings in order: by place in the model, then by rule. */
+function listFindings(results: ReadonlyMap<Subject, readonly RankedFinding[]>): Finding[] {
+  const ranked = [...results.values()].flat();
+  ranked.sort(
+    (a, b) =>
+      a.order - b.order ||
+      compareText(a.finding.key ?? "", b.finding.key ?? "") ||
+      compareText(a.finding.rule, b.finding.rule) ||
+      compareText(a.finding.message, b.finding.message) ||
+      compareText(a.finding.facts.join("\n"), b.finding.facts.join("\n")),
+  );
+  return ranked.map(({ finding }) => finding);
+}
+
+function compareText(a: string, b: string): number {
+  return a < b ? -1 : a > b ? 1 : 0;
+}
+
+function nameModel(header: ModelHeader): string {
   return header.models.length + header.namespaceUris.length === 0 ? "" : getOwnNamespace(header);
 }

@@ -15,27 +15,31 @@ export type Computation = {
   isEnded: boolean;
 };
 
-export type Slot = { readers: Computation[]; lastReader: Computation | undefined };
+export class Slot {
+  #readers: Computation[] | undefined = undefined;
+  #lastReader: Computation | undefined = undefined;
 
-export function newSlot(): Slot {
-  return { readers: [], lastReader: undefined };
-}
+  /** Notes a read; reading twice in a row costs one comparison. */
+  note(reader: Computation | undefined): void {
+    if (reader === undefined || this.#lastReader === reader) return;
+    this.#lastReader = reader;
+    if (this.#readers) this.#readers.push(reader);
+    else this.#readers = [reader];
+  }
 
-/** Notes a read; reading twice in a row costs one comparison. */
-export function noteRead(slot: Slot, reader: Computation | undefined): void {
-  if (!reader || slot.lastReader === reader) return;
-  slot.lastReader = reader;
-  slot.readers.push(reader);
+  takeReaders(): readonly Computation[] {
+    const readers = this.#readers ?? [];
+    this.#readers = undefined;
+    this.#lastReader = undefined;
+    return readers;
+  }
 }
 
 /** Ends everything that depends on the slot and empties it; the subjects of ended checks are added to `dirty`. */
 export function dropSlot(slot: Slot, dirty: Set<Subject>): void {
   const open = [slot];
   for (let at = open.pop(); at; at = open.pop()) {
-    const { readers } = at;
-    at.readers = [];
-    at.lastReader = undefined;
-    for (const reader of readers) {
+    for (const reader of at.takeReaders()) {
       if (reader.isEnded) continue;
       reader.isEnded = true;
       reader.forget?.();

@@ -11,7 +11,7 @@ export const r002: NodeRule = {
   condition: "No two nodes of the model and its required models share namespace URI, identifier type and identifier.",
   why: "The second node replaces the first or is refused when the file is loaded, and every reference to the identifier becomes ambiguous.",
   check(node, ctx, report) {
-    const twins = ctx.listWithNodeId(node.nodeId).filter((key) => key !== node.key);
+    const twins = ctx.listTwins(node);
     for (const twin of twins) {
       const isModelTwice = !ctx.isOwn(twin) && ctx.header.models.some((m) => m.modelUri === node.nodeId.namespaceUri);
       if (isModelTwice) continue;

@@ -10,6 +10,7 @@ export const r009: NodeRule = {
   clause: clause(3, "§4.6.4, §5.5.1, §5.5.2, §5.6.4, §5.6.5, §5.7.1, §6.2.6"),
   priority: 1,
   concerns: ["ObjectType", "VariableType", "Object", "Variable", "Method"],
+  needs: "children",
   condition: "All children of a type or an instance declaration have different BrowseNames, namespace included.",
   why: "A browse path from the type would have two targets, so instances cannot say which of the two a member comes from.",
   check(node, ctx, report) {

@@ -9,6 +9,7 @@ export const r010: NodeRule = {
   clause: clause(3, "§6.4.2, §6.4.1, §4.6.4"),
   priority: 2,
   concerns: ["Object", "Variable"],
+  needs: "children",
   condition:
     "A plain instance has one child of the name of a Mandatory or Optional declaration of its type. Other names may repeat.",
   why: "A browse path from the type answers two nodes: a client that takes the first may read the wrong one.",

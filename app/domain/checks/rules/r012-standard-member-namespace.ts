@@ -19,6 +19,7 @@ export const r012: NodeRule = {
   clause: clause(3, "§5.2.4, §6.2.7"),
   priority: 1,
   concerns: ["Object", "Variable", "Method", "ObjectType", "VariableType", "DataType"],
+  needs: "children",
   condition:
     "A standard Property has its BrowseName in namespace 0, and a member of a type that of its declaration, whatever namespace the NodeId has.",
   why: "Clients look for 0:EURange or 0:InputArguments by browse path. Under another namespace the range, the unit or the arguments are not found.",

@@ -10,6 +10,7 @@ export const r026: NodeRule = {
   clause: clause(3, "§7.3"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HierarchicalReferences,
   condition: "A hierarchical reference leads to another node.",
   why: "A client that walks the tree comes back to the same node for ever.",
   check(node, ctx, report) {

@@ -9,6 +9,7 @@ export const r029: NodeRule = {
   clause: clause(3, "§7.7, §5.3.3.3"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasComponent,
   condition: "The target of HasComponent or a subtype is an Object, a Variable or a Method.",
   why: "A type or a View as a component is refused by loaders or shown as an empty member.",
   check(node, ctx, report) {

@@ -12,6 +12,7 @@ export const r030: NodeRule = {
   clause: clause(3, "§7.7, §5.7.2"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasComponent,
   condition:
     "A Variable is a component of an Object, an ObjectType, a DataVariable or a VariableType only. HasArgumentDescription, which starts at a Method, is the exception.",
   why: "Clients do not look for Variables below Methods, Properties or DataTypes, and servers refuse the reference.",

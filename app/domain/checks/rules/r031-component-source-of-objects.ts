@@ -11,6 +11,7 @@ export const r031: NodeRule = {
   clause: clause(3, "§7.7"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasComponent,
   condition: "An Object or a Method is a component of an Object or an ObjectType only.",
   why: "Variables and VariableTypes have no Object or Method components; servers refuse them and clients never show them.",
   check(node, ctx, report) {

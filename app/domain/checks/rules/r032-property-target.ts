@@ -9,6 +9,7 @@ export const r032: NodeRule = {
   clause: clause(3, "§7.8"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasProperty,
   condition: "The target of HasProperty is a Variable.",
   why: "A Property is a value that describes its owner. Clients read it as a Variable at once, and fail.",
   check(node, ctx, report) {

@@ -10,6 +10,7 @@ export const r033: NodeRule = {
   clause: clause(3, "§5.6.3, §7.3, §7.8"),
   priority: 1,
   concerns: ["Variable"],
+  needs: "children",
   condition: "The target of a HasProperty reference has no outgoing hierarchical reference of any kind.",
   why: "Properties end the tree: clients do not browse below them, so what hangs there is never found.",
   check(node, ctx, report) {

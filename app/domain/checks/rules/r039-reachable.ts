@@ -1,7 +1,7 @@
 import type { Node } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
 import { StandardObject, StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
-import type { CheckContext, Lookup } from "../check-context";
+import { makeLookup, type CheckContext } from "../check-context";
 import { addReference, findSubject, notPossible } from "../fixes";
 import { ok } from "../../core/result";
 import { findTypeDefinition, isKindOf } from "../lookups";
@@ -53,17 +53,15 @@ export const r039: NodeRule = {
 };
 
 /** Root, or a node whose model is not loaded, somewhere above. */
-const reaches: Lookup<boolean> = {
-  compute(ctx, key) {
-    const seen = new Set<NodeKey>([key]);
-    for (const at of seen) {
-      if (at === StandardObject.RootFolder || !ctx.node(at)) return true;
-      for (const { source } of ctx.parentEdges(at)) seen.add(source);
-      for (const { source } of ctx.supertypeEdges(at)) seen.add(source);
-    }
-    return false;
-  },
-};
+const reaches = makeLookup<boolean>((ctx, key) => {
+  const seen = new Set<NodeKey>([key]);
+  for (const at of seen) {
+    if (at === StandardObject.RootFolder || !ctx.node(at)) return true;
+    for (const { source } of ctx.parentEdges(at)) seen.add(source);
+    for (const { source } of ctx.supertypeEdges(at)) seen.add(source);
+  }
+  return false;
+});
 
 function isExempt(node: Node, ctx: CheckContext): boolean {
   if (node.nodeClass === "Object" && node.designToolOnly) return true;

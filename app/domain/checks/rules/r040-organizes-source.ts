@@ -11,6 +11,7 @@ export const r040: NodeRule = {
   clause: clause(3, "§7.11, §5.5.3"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.Organizes,
   condition:
     "The source of Organizes or a subtype is an Object, an ObjectType or a View. For Organizes itself an Object should be of FolderType or a subtype, else a warning.",
   why: "Organizes says “is filed under”: clients look for it at folders, and servers refuse it elsewhere.",

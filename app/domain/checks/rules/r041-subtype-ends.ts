@@ -10,6 +10,7 @@ export const r041: NodeRule = {
   clause: `${clause(3, "§7.10, §6.3.1, §5.3.3.3, §5.5.2, §5.6.5, §5.8.3")}, ${clause(6, "§F.4")}`,
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasSubtype,
   condition:
     "HasSubtype joins two types of the same NodeClass, from the supertype to the subtype. The subtype should declare it; one that only an own supertype declares is a hint.",
   why: "Most loaders look for the supertype at the subtype. Between unlike classes there is nothing to inherit, and loaders refuse the file.",

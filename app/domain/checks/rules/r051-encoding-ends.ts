@@ -10,6 +10,7 @@ export const r051: NodeRule = {
   clause: `${clause(3, "§5.8.3, §5.8.4, §7.14")}, ${clause(6, "§F.4")}`,
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasEncoding,
   condition:
     "HasEncoding leads from a subtype of Structure to an Object of DataTypeEncodingType, and no such Object belongs to two DataTypes.",
   why: "The encoding's NodeId stands in every message: shared between two DataTypes it no longer says which of them is meant.",

@@ -12,6 +12,7 @@ export const r052: NodeRule = {
   clause: clause(3, "§7.15, §5.7.1"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.GeneratesEvent,
   condition: "GeneratesEvent starts at an ObjectType, a VariableType or a Method of a type.",
   why: "Clients look at the type to learn which events its instances send; at an instance nobody looks.",
   check(node, ctx, report) {

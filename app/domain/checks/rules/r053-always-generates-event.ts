@@ -11,6 +11,7 @@ export const r053: NodeRule = {
   clause: clause(3, "§7.16"),
   priority: 2,
   concerns: ALL_CLASSES,
+  declares: R.AlwaysGeneratesEvent,
   condition: "AlwaysGeneratesEvent starts at a Method of a type.",
   why: "It promises an event for every call; what is not called cannot keep the promise.",
   check(node, ctx, report) {

@@ -13,6 +13,7 @@ export const r054: NodeRule = {
   clause: clause(3, "§7.17, §5.5.1, Table 11"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasEventSource,
   condition:
     "HasEventSource starts at an Object or a View to which clients can subscribe for events, or at an ObjectType and leads to one of its declarations.",
   why: "Nobody can subscribe at the source, so the events of the target never arrive anywhere.",

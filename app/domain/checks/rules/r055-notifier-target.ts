@@ -13,6 +13,7 @@ export const r055: NodeRule = {
   clause: clause(3, "§7.18"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasNotifier,
   condition: "HasNotifier leads to an Object to which clients can subscribe for events.",
   why: "HasNotifier says that the target passes on events of its own; without the bit it does not.",
   check(node, ctx, report) {

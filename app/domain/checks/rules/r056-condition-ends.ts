@@ -15,6 +15,7 @@ export const r056: NodeRule = {
   clause: `${clause(9, "§5.12, §6.2, §6.3, §6.4")}, ${clause(3, "§7.17")}`,
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: N.HasCondition,
   condition:
     "HasCondition leads from an Object, a Variable, a Method or their types to a condition or a condition type. A source that is nobody's event source is a warning.",
   why: "Clients find the alarms of a tag along this reference; events of a source that hangs on no notifier never arrive.",

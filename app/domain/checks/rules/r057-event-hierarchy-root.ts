@@ -1,6 +1,6 @@
 import type { NodeKey } from "../../address-space/node-id";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
-import type { Lookup } from "../check-context";
+import { makeLookup } from "../check-context";
 import { addReference, findSubject, notPossible } from "../fixes";
 import { ok } from "../../core/result";
 import { findTypeAbove, ofType } from "../lookups";
@@ -63,13 +63,11 @@ export const r057: NodeRule = {
   },
 };
 
-const reachesServer: Lookup<boolean> = {
-  compute(ctx, key) {
-    const seen = new Set<NodeKey>([key]);
-    for (const at of seen) {
-      if (at === N.Server) return true;
-      for (const { source } of ofType(ctx, ctx.parentEdges(at), R.HasEventSource)) seen.add(source);
-    }
-    return false;
-  },
-};
+const reachesServer = makeLookup<boolean>((ctx, key) => {
+  const seen = new Set<NodeKey>([key]);
+  for (const at of seen) {
+    if (at === N.Server) return true;
+    for (const { source } of ofType(ctx, ctx.parentEdges(at), R.HasEventSource)) seen.add(source);
+  }
+  return false;
+});

@@ -11,6 +11,7 @@ export const r058: NodeRule = {
   clause: clause(3, "§4.10.2, §7.19"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasInterface,
   condition:
     "HasInterface leads from an Object, or an ObjectType that is no Interface, to a subtype of BaseInterfaceType.",
   why: "Clients take the target's members as given; a target that is no Interface promises nothing.",

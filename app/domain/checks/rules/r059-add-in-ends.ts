@@ -10,6 +10,7 @@ export const r059: NodeRule = {
   clause: clause(3, "§7.20"),
   priority: 2,
   concerns: ALL_CLASSES,
+  declares: R.HasAddIn,
   condition: "HasAddIn leads from an Object or an ObjectType to an Object.",
   why: "An AddIn is an Object with a known name; clients do not look for anything else.",
   check(node, ctx, report) {

@@ -14,6 +14,7 @@ export const r060: NodeRule = {
   clause: clause(3, "§5.7.1, Table 15, §5.7.2"),
   priority: 2,
   concerns: ALL_CLASSES,
+  declares: N.HasArgumentDescription,
   condition:
     "HasArgumentDescription leads from a Method to a Variable that is named like one of its arguments and has its DataType, one for each argument; on declarations it is Mandatory.",
   why: "The description tells unit and range of an argument; one that fits no argument, or another, misleads whoever calls the Method.",

@@ -13,6 +13,7 @@ export const r062: NodeRule = {
   clause: clause(3, "§7.22.1"),
   priority: 2,
   concerns: ALL_CLASSES,
+  declares: N.HasStructuredComponent,
   condition:
     "HasStructuredComponent leads from a Variable of a Structure to Variables named like its fields, with their DataType and ValueRank; below an array they are named like the parent with the index in brackets.",
   why: "Clients take the component for the field of its name and read another value.",

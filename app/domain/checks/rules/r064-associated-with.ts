@@ -10,6 +10,7 @@ export const r064: NodeRule = {
   clause: clause(3, "§7.23"),
   priority: 2,
   concerns: ALL_CLASSES,
+  declares: N.AssociatedWith,
   condition: "Source and target of AssociatedWith are Objects.",
   why: "It is defined for Objects only; servers refuse it elsewhere.",
   check(node, ctx, report) {

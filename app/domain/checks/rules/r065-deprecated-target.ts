@@ -10,6 +10,7 @@ export const r065: NodeRule = {
   clause: `${clause(3, "§7.21")}, OPC 11030 v1.03 §14.3.2 (white paper) for the place`,
   priority: 2,
   concerns: ALL_CLASSES,
+  declares: N.IsDeprecated,
   condition: "IsDeprecated leads to the Object that stands for the version in which the node was first deprecated.",
   why: "Tools show the version from which on a node should not be used any more; another target has none.",
   check(node, ctx, report) {

@@ -15,6 +15,7 @@ export const r073: NodeRule = {
   clause: clause(3, "§4.10.3, §5.5.2, Table 12"),
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasAddIn,
   condition:
     "The type of a HasAddIn target, or a supertype, has the Property 0:DefaultInstanceBrowseName of DataType QualifiedName without modelling rule; for a type of another model a warning. The AddIn should bear that name.",
   why: "Clients find an AddIn by its default name; without one they do not know what to look for.",

@@ -12,6 +12,7 @@ export const r090: NodeRule = {
   clause: clause(3, "§4.6.4, §6.2.4, §6.4.1, §6.4.2"),
   priority: 1,
   concerns: ["Object", "Variable"],
+  needs: "children",
   condition:
     "A child with the BrowseName of a Mandatory or Optional declaration of the type or an Interface has the declared NodeClass and the declared type or a subtype. Of several children of one name one must fit.",
   why: "A client that knows the type expects a Variable of a known type at this path and finds something else.",

@@ -13,6 +13,7 @@ export const r091: NodeRule = {
   clause: clause(3, "§6.4.3"),
   priority: 2,
   concerns: ["Object", "Variable"],
+  needs: "children",
   condition: "Where the type has several references to one member, the instance has all of them to its one member.",
   why: "Events, for example, are then announced for another node than the one that sends them.",
   check(node, ctx, report) {

@@ -12,6 +12,7 @@ export const r101: NodeRule = {
   clause: `${clause(3, "§5.6.2, Table 13, §5.6.5, Table 14, §8.7")}, ${clause(6, "§5.3.1.17, §5.1.11")}`,
   priority: 1,
   concerns: ["Variable", "VariableType"],
+  needs: "value",
   condition:
     "Rank −1 holds one element, 1 a list, above 1 a Matrix with as many dimensions, −3 one element or a list, 0 a list or a Matrix. No value, an empty one and an empty list of an array are never wrong.",
   why: "Loaders take the value as it stands: the server then serves an array where its own attributes promise a single value.",

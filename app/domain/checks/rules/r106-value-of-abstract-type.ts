@@ -11,6 +11,7 @@ export const r106: NodeRule = {
   clause: clause(3, "§5.8.3"),
   priority: 2,
   concerns: ["Variable", "VariableType"],
+  needs: "value",
   condition:
     "The TypeId of a structure in a value stands for a concrete DataType; the DataType attribute may be abstract.",
   why: "There is no encoding of an abstract type, so that nobody can read the value.",

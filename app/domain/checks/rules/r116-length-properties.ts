@@ -13,6 +13,7 @@ export const r116: NodeRule = {
   clause: clause(3, "§5.6.2, Table 13, §5.6.4"),
   priority: 2,
   concerns: ["Variable"],
+  needs: "children",
   condition:
     "MaxStringLength and MaxCharacters exclude each other and stand on texts; MaxByteStringLength on ByteString; MaxArrayLength where there may be an array.",
   why: "Clients cut their input after these; where two limits stand, or one without meaning, each client takes another.",

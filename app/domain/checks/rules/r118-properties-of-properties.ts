@@ -12,6 +12,7 @@ export const r118: NodeRule = {
   clause: clause(3, "§5.6.2, Table 13"),
   priority: 2,
   concerns: ["Variable"],
+  needs: "children",
   condition: "A Property does not carry NodeVersion, LocalTime or AllowNulls.",
   why: "They describe DataVariables; on a Property nobody looks for them.",
   check(node, ctx, report) {

@@ -13,6 +13,7 @@ export const r127: NodeRule = {
   clause: clause(8, "§5.6.3.4"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
+  needs: "value",
   condition:
     "For a unitId of the published table the English or unnamed displayName is its symbol; of several in the cell any. Another description is a hint.",
   why: "One of the two is wrong, and a reader of the display cannot know which.",

@@ -11,6 +11,7 @@ export const r129: NodeRule = {
   clause: `${clause(8, "§5.3.2.2")} (inferred from the meanings)`,
   priority: 2,
   concerns: ["Variable"],
+  needs: "children",
   condition:
     "Where both have values, EURange (what is likely in normal operation) lies within InstrumentRange (what the instrument can return).",
   why: "Values that the instrument can never return are shown as normal.",

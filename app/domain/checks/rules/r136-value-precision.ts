@@ -13,6 +13,7 @@ export const r136: NodeRule = {
   clause: clause(8, "§5.3.1"),
   priority: 2,
   concerns: ["Variable"],
+  needs: "value",
   condition: "The value of ValuePrecision is a whole number, although its DataType is Double.",
   why: "It counts digits; half a digit is shown as any.",
   check(node, ctx, report) {

@@ -1,7 +1,7 @@
 import { getDataType, getValueRank, type DataTypeNode } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
-import type { CheckContext, Lookup } from "../check-context";
+import { makeLookup, type CheckContext } from "../check-context";
 import { listFields } from "../data-types";
 import { clause, type NodeRule } from "../rule";
 import { addStructure, isStructure } from "../structures";
@@ -48,21 +48,19 @@ export const r151: NodeRule = {
   },
 };
 
-const wayBack: Lookup<readonly NodeKey[] | undefined> = {
-  compute(ctx, start) {
-    const from = new Map<NodeKey, NodeKey>();
-    const open: NodeKey[] = [start];
-    for (const at of open) {
-      for (const inner of listInner(ctx, at)) {
-        if (inner === start) return listWay(start, at, from);
-        if (from.has(inner)) continue;
-        from.set(inner, at);
-        open.push(inner);
-      }
+const wayBack = makeLookup<readonly NodeKey[] | undefined>((ctx, start) => {
+  const from = new Map<NodeKey, NodeKey>();
+  const open: NodeKey[] = [start];
+  for (const at of open) {
+    for (const inner of listInner(ctx, at)) {
+      if (inner === start) return listWay(start, at, from);
+      if (from.has(inner)) continue;
+      from.set(inner, at);
+      open.push(inner);
     }
-    return undefined;
-  },
-};
+  }
+  return undefined;
+});
 
 function listInner(ctx: CheckContext, key: NodeKey): NodeKey[] {
   const node = ctx.node(key);

@@ -13,6 +13,7 @@ export const r161: NodeRule = {
   clause: clause(6, "§F.2"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
+  needs: "value",
   condition: "NodeIds inside a Value are written as NodeIds, never as an alias of the file.",
   why: "Aliases are not resolved inside values: loaders read a null NodeId or stop.",
   check(node, _ctx, report) {

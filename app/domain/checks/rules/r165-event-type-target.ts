@@ -11,6 +11,7 @@ export const r165: NodeRule = {
   clause: `${clause(3, "§7.15, §7.16, §4.7.2, §9.2")}, ${clause(5, "§6.4.2")}`,
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.GeneratesEvent,
   condition: "GeneratesEvent and AlwaysGeneratesEvent lead to BaseEventType or a subtype.",
   why: "Clients filter events by type; what does not derive from BaseEventType has no event fields.",
   check(node, ctx, report) {

@@ -13,6 +13,7 @@ export const r168: NodeRule = {
   clause: `${clause(3, "§7.7")}, ${clause(9, "§5.12, §6.5")}`,
   priority: 1,
   concerns: ALL_CLASSES,
+  declares: R.HasComponent,
   condition: "A condition of a tag hangs on it by HasCondition, not by HasComponent.",
   why: "Variables have no Object components: the alarm is refused when the file is loaded, and the tag seems to have none.",
   check(node, ctx, report) {

@@ -3,7 +3,7 @@ import { clause, type ModelRule } from "../rule";
 import { ok } from "../../core/result";
 import { notPossible } from "../fixes";
 import { toRequirement } from "../header-fixes";
-import { listTags, tagOf } from "../tags";
+import { usesNamespace } from "../namespace-use";
 
 export const r170: ModelRule = {
   id: "R170",
@@ -52,7 +52,7 @@ export const r170: ModelRule = {
         const models = [{ ...first, requiredModels: [...first.requiredModels, toRequirement(loaded)] }, ...others];
         return ok([{ kind: "setHeader", field: "models", value: models }]);
       }
-      const isUsed = space.listOwnNodes().some((node) => listTags(node).includes(tagOf.namespace(uri)));
+      const isUsed = space.listOwnNodes().some((node) => usesNamespace(node, uri));
       if (isUsed) return notPossible(finding);
       return ok([{ kind: "setHeader", field: "namespaceUris", value: header.namespaceUris.filter((u) => u !== uri) }]);
     },

@@ -13,6 +13,7 @@ export const r172: NodeRule = {
   clause: clause(6, "§F.2, §5.1.12"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
+  needs: "value",
   condition:
     "Every index in a NodeId, a BrowseName or a Value is one of the file's namespace table. Ids and names are judged while a file is read; here what is left in values.",
   why: "The index stands for no namespace: the id or the name is lost when the file is loaded.",

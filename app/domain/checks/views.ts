@@ -1,0 +1,40 @@
+/** The slots of one node: itself, its edges by direction and group, answers of lookups. */
+import type { Edge } from "../address-space/edge-index";
+import type { Node } from "../address-space/node";
+import { Slot } from "./slots";
+
+export class NodeSlot extends Slot {
+  readonly node: Node | undefined;
+
+  constructor(node: Node | undefined) {
+    super();
+    this.node = node;
+  }
+}
+
+export class EdgeSlot extends Slot {
+  readonly edges: readonly Edge[];
+
+  constructor(edges: readonly Edge[]) {
+    super();
+    this.edges = edges;
+  }
+}
+
+export class Answer extends Slot {
+  value: unknown = undefined;
+}
+
+/** HasSubtype, other hierarchical references, the rest; first those from the node, then those to it. */
+export const FROM = 0;
+export const TO = 3;
+export const SUBTYPE = 0;
+export const HIERARCHICAL = 1;
+export const OTHER = 2;
+
+export class View {
+  node: NodeSlot | undefined = undefined;
+  readonly edges: (EdgeSlot | undefined)[] = [undefined, undefined, undefined, undefined, undefined, undefined];
+  /** By the number of the lookup. */
+  readonly answers: (Answer | undefined)[] = [];
+}
