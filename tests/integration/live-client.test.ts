@@ -2,9 +2,7 @@
  * The client side of Live against servers that it did not start: a test server of ours and a bare node-opcua server. Names,
  * ranges, units and states expected here are read off the NodeSet file; 4408652 is °C (OPC 10000-8 §5.6.4.2, code CEL).
  */
-import { mkdtempSync } from "node:fs";
 import { createServer, type AddressInfo } from "node:net";
-import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { OPCUACertificateManager, OPCUAServer, MessageSecurityMode, SecurityPolicy } from "node-opcua";
 import { nodesets } from "node-opcua-nodesets";
@@ -16,22 +14,23 @@ import { EndpointClient } from "~/opcua/client/endpoint-client.server";
 import { BROWSE_PAGE, type EndpointSettings } from "~/opcua/client/endpoint-settings";
 import { readNode } from "~/opcua/client/read-node.server";
 import { Supervisor } from "~/opcua/supervisor.server";
-import { buildTestServer } from "../support/test-server-bundle";
-import { makeSeed, startWinch, waitFor, WINCH_URI } from "../support/winch-server";
+import { buildTestServer, type TestServerBundle } from "../support/test-server-bundle";
+import { makeSeed, makeTestFolder, removeTestFolders, startWinch, waitFor, WINCH_URI } from "../support/winch-server";
 
 // Each test starts real processes; a busy machine takes its time over them.
 vi.setConfig({ testTimeout: 180_000, hookTimeout: 180_000 });
 
-const pkiFolder = mkdtempSync(join(tmpdir(), "ferrule-live-pki-"));
+const pkiFolder = makeTestFolder("live-pki");
 const winch = (local: string): string => `nsu=${WINCH_URI};${local}`;
 const OBJECTS = "i=85";
 
+let bundle: TestServerBundle;
 let supervisor: Supervisor;
 let settings: EndpointSettings;
 
 beforeAll(async () => {
-  const { entry } = await buildTestServer("live-client");
-  supervisor = new Supervisor({ entry });
+  bundle = await buildTestServer("live-client");
+  supervisor = new Supervisor({ entry: bundle.entry });
   const state = await startWinch(supervisor, makeSeed("live"));
   expect(state.problems).toEqual([]);
   settings = {
@@ -45,6 +44,8 @@ beforeAll(async () => {
 
 afterAll(async () => {
   await supervisor.stopAll();
+  bundle.remove();
+  removeTestFolders();
 });
 
 async function withClient<T>(work: (client: EndpointClient) => Promise<T>, change: Partial<EndpointSettings> = {}): Promise<T> {
@@ -158,7 +159,7 @@ describe("an endpoint that is not there", () => {
   });
 
   it("is not taken for the server whose certificate is known", async () => {
-    const other = await startWinch(supervisor, makeSeed("other"), { pkiFolder: mkdtempSync(join(tmpdir(), "ferrule-other-pki-")) });
+    const other = await startWinch(supervisor, makeSeed("other"), { pkiFolder: makeTestFolder("other-pki") });
     await withClient((client) => expect(browseChildren(client, OBJECTS, null)).rejects.toThrow(), { endpointUrl: other.endpointUrl ?? "" });
     await supervisor.stop("other");
   });

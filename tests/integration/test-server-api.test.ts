@@ -7,12 +7,13 @@ import { onShutdown } from "~/utils/shutdown.server";
 import { singleton } from "~/utils/singleton.server";
 import { startTestApp, type TestApp } from "../support/test-app";
 import { addOtherOrganization, addTestPerson, setUpFirst } from "../support/test-people";
-import { buildTestServer } from "../support/test-server-bundle";
+import { buildTestServer, type TestServerBundle } from "../support/test-server-bundle";
 import { waitFor, winchFile, WINCH_URI } from "../support/winch-server";
 
 // Each test starts real processes; a busy machine takes its time over them.
 vi.setConfig({ testTimeout: 180_000, hookTimeout: 180_000 });
 
+let bundle: TestServerBundle;
 let app: TestApp;
 let cookie: string;
 let organizationId: string;
@@ -20,8 +21,8 @@ let modelId: string;
 let supervisor: Supervisor;
 
 beforeAll(async () => {
-  const { entry } = await buildTestServer("test-server-api");
-  supervisor = singleton("test-server-supervisor", () => new Supervisor({ entry }));
+  bundle = await buildTestServer("test-server-api");
+  supervisor = singleton("test-server-supervisor", () => new Supervisor({ entry: bundle.entry }));
   onShutdown("test servers", () => supervisor.stopAll());
   app = await startTestApp();
   ({ cookie, organizationId } = await setUpFirst(app));
@@ -32,6 +33,7 @@ beforeAll(async () => {
 
 afterAll(async () => {
   await app.stop();
+  bundle.remove();
 });
 
 const start = (json: unknown, who = cookie) => app.call("POST", `/api/v1/models/${modelId}/test-servers`, { cookie: who, json });

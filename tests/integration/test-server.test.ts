@@ -2,11 +2,9 @@
  * The test server as a stranger sees it: every question goes through a bare node-opcua client, never through our own
  * client code. The expected NodeIds are taken from the NodeSet file as text, status codes and ids from OPC 10000-6 Annex A.
  */
-import { readFileSync } from "node:fs";
+import { readFileSync, writeFileSync } from "node:fs";
 import { createConnection } from "node:net";
 import { fork } from "node:child_process";
-import { mkdtempSync, writeFileSync } from "node:fs";
-import { tmpdir } from "node:os";
 import { join } from "node:path";
 import {
   AttributeIds,
@@ -22,7 +20,7 @@ import {
 import { afterAll, afterEach, beforeAll, describe, expect, it, vi } from "vitest";
 import { Supervisor } from "~/opcua/supervisor.server";
 import { buildTestServer, type TestServerBundle } from "../support/test-server-bundle";
-import { makeSeed, makeStartMessage, startWinch, waitFor, winchFile, WINCH_URI } from "../support/winch-server";
+import { makeSeed, makeStartMessage, makeTestFolder, removeTestFolders, startWinch, waitFor, winchFile, WINCH_URI } from "../support/winch-server";
 
 // Each test starts real processes; a busy machine takes its time over them.
 vi.setConfig({ testTimeout: 180_000, hookTimeout: 180_000 });
@@ -32,7 +30,7 @@ const GOOD = 0;
 
 let bundle: TestServerBundle;
 let supervisor: Supervisor;
-const clientPki = mkdtempSync(join(tmpdir(), "ferrule-stranger-"));
+const clientPki = makeTestFolder("stranger");
 
 beforeAll(async () => {
   bundle = await buildTestServer("test-server");
@@ -246,7 +244,7 @@ describe("the end of a test server", () => {
   });
 
   it("says why when the model's file cannot be loaded", async () => {
-    const broken = join(mkdtempSync(join(tmpdir(), "ferrule-broken-")), "broken.xml");
+    const broken = join(makeTestFolder("broken"), "broken.xml");
     writeFileSync(broken, readFileSync(winchFile, "utf8").replace('ModelUri="http://opcfoundation.org/UA/"', 'ModelUri="http://merrow.example/UA/Missing/"'));
     const message = makeStartMessage(makeSeed("broken"));
     const state = await startWinch(newSupervisor(), makeSeed("broken"), { nodeSetFiles: [...message.nodeSetFiles.slice(0, -1), broken] });
@@ -297,4 +295,6 @@ describe("the end of a test server", () => {
 
 afterAll(async () => {
   await supervisor.stopAll();
+  bundle.remove();
+  removeTestFolders();
 });

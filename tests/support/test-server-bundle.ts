@@ -1,11 +1,12 @@
 /** Builds the test server's process as `npm run build` does, into a folder of the tests, so that they never run a stale one. */
+import { rmSync } from "node:fs";
 import { fileURLToPath } from "node:url";
 import { join } from "node:path";
 import { build } from "vite";
 
 const root = fileURLToPath(new URL("../..", import.meta.url));
 
-export type TestServerBundle = { entry: string; supervisor: string };
+export type TestServerBundle = { readonly entry: string; readonly supervisor: string; remove(): void };
 
 export async function buildTestServer(name: string): Promise<TestServerBundle> {
   const outDir = join(root, "node_modules/.cache", `ferrule-${name}-${process.pid}`);
@@ -28,5 +29,5 @@ export async function buildTestServer(name: string): Promise<TestServerBundle> {
       },
     },
   });
-  return { entry: join(outDir, "test-server.js"), supervisor: join(outDir, "supervisor.js") };
+  return { entry: join(outDir, "test-server.js"), supervisor: join(outDir, "supervisor.js"), remove: () => rmSync(outDir, { recursive: true, force: true }) };
 }

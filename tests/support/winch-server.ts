@@ -1,5 +1,5 @@
 /** A small model with one of each kind of Variable, and how to start a test server on it without database or web. */
-import { mkdtempSync, readFileSync } from "node:fs";
+import { mkdtempSync, readFileSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
@@ -14,6 +14,19 @@ import type { TestServerState } from "~/domain/simulation/test-server-state";
 
 export const WINCH_URI = "http://merrow.example/UA/Winch/";
 export const winchFile = fileURLToPath(new URL("../fixtures/test-server/winch.NodeSet2.xml", import.meta.url));
+
+const folders: string[] = [];
+
+/** A folder for one test file; `removeTestFolders` takes all of them away. */
+export function makeTestFolder(name: string): string {
+  const folder = mkdtempSync(join(tmpdir(), `ferrule-${name}-`));
+  folders.push(folder);
+  return folder;
+}
+
+export function removeTestFolders(): void {
+  for (const folder of folders.splice(0)) rmSync(folder, { recursive: true, force: true, maxRetries: 5 });
+}
 
 let planned: SimulatedVariable[] | undefined;
 
@@ -46,7 +59,7 @@ export function makeStartMessage(seed: TestServerSeed, change: Partial<StartMess
     id: seed.id,
     applicationName: seed.applicationName,
     applicationUri: seed.applicationUri,
-    pkiFolder: mkdtempSync(join(tmpdir(), "ferrule-pki-")),
+    pkiFolder: makeTestFolder("pki"),
     host: "127.0.0.1",
     port: 0,
     security: [...seed.security],

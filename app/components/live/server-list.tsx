@@ -1,20 +1,21 @@
-import { Link } from "react-router";
+import { Play } from "lucide-react";
+import { Form, useNavigation } from "react-router";
 import { formatAge } from "~/domain/live/format-live";
 import type { TestServerState } from "~/domain/simulation/test-server-state";
 import { StatusBadge } from "../notation/status-badge";
-import { LinkButton } from "../ui/button";
+import { Button, LinkButton } from "../ui/button";
 import { Empty } from "../ui/empty";
 import { Page } from "../ui/page";
 import { useNow } from "./live-context";
 
-type Props = { servers: readonly TestServerState[]; models: readonly { readonly id: string; readonly name: string }[] };
+type Props = { servers: readonly TestServerState[]; models: readonly { readonly id: string; readonly name: string }[]; mayRun: boolean };
 
 /** Where Live begins: the servers that can be looked at, or the way to one. */
-export function ServerList({ servers, models }: Props) {
+export function ServerList({ servers, models, mayRun }: Props) {
   const now = useNow(1000);
   return (
     <Page title="Live" about="Values of running servers, along the browse path.">
-      {servers.length === 0 ? <NoServer models={models} /> : null}
+      {servers.length === 0 ? <NoServer models={models} mayRun={mayRun} /> : null}
       <ul className="grid max-w-240">
         {servers.map((server) => (
           <li key={server.id} className="flex min-h-12 flex-wrap items-center gap-x-4 gap-y-1 border-b border-hair py-2">
@@ -40,18 +41,35 @@ export function ServerList({ servers, models }: Props) {
   );
 }
 
-function NoServer({ models }: { models: Props["models"] }) {
+function NoServer({ models, mayRun }: Pick<Props, "models" | "mayRun">) {
+  const navigation = useNavigation();
   return (
     <Empty title="No server runs" className="max-w-240">
-      <p>Start a test server on a model; its values are then one press away.</p>
-      <ul className="mt-3 grid gap-1">
-        {models.map((model) => (
-          <li key={model.id}>
-            <Link to={`/models/${model.id}/test-server`} className="underline underline-offset-3 hover:text-copper">
-              {model.name}
-            </Link>
-          </li>
-        ))}
+      {models.length === 0 ? (
+        <p>Make a model first; a test server then serves it with simulated values.</p>
+      ) : (
+        <p>Start a test server on a model; its values are then one press away.</p>
+      )}
+      <ul className="mt-3 grid justify-items-center gap-2">
+        {models.map((model, index) => {
+          const action = `/models/${model.id}/test-server`;
+          return (
+            <li key={model.id}>
+              <Form method="post" action={action}>
+                <input type="hidden" name="intent" value="start" />
+                <Button
+                  type="submit"
+                  tone={index === 0 ? "main" : "plain"}
+                  icon={Play}
+                  busy={navigation.formAction === action}
+                  blockedBy={mayRun ? undefined : "Your roles do not start test servers"}
+                >
+                  Start test server on {model.name}
+                </Button>
+              </Form>
+            </li>
+          );
+        })}
       </ul>
     </Empty>
   );

@@ -1,9 +1,11 @@
 import { Play, TriangleAlert } from "lucide-react";
 import { useState } from "react";
 import { Form, useNavigation } from "react-router";
+import { TEST_SERVER_STAGES } from "~/domain/simulation/test-server-state";
 import { Button } from "../ui/button";
 import { Checkbox } from "../ui/field";
 import { Icon } from "../ui/icon";
+import { Progress } from "../ui/progress";
 import { Segments } from "../ui/segments";
 
 /** Starts a test server with one press; the choices below it are for those who need them. */
@@ -26,6 +28,7 @@ export function StartTestServer({ mayRun, isAgain }: { mayRun: boolean; isAgain:
           {isAgain ? "Start another" : "Start test server"}
         </Button>
       </div>
+      {isStarting ? <Progress stage={TEST_SERVER_STAGES[0].label} figure={`1 of ${TEST_SERVER_STAGES.length}`} className="max-w-160" /> : null}
       <details className="text-small">
         <summary className="w-fit text-ink-2">Security and status</summary>
         <div className="mt-2 grid gap-3 border-l border-rule pl-4">
