@@ -1,9 +1,16 @@
 /** `npm run bench [-- --json]`: figures with their references, all of one run. */
-import { readInChild, readReferenceInChild, measureReading } from "./reading";
+import { measureEditing } from "./editing";
+import { measureLibrary, readLibraryInChild } from "./library";
+import { measureReading, readAndParseInChild, readInChild, readPacksInChild, readReferenceInChild } from "./reading";
 import type { BenchResult } from "./result";
 import { measureTestServerStart, runBareServer } from "./test-server-start";
 
-const measures: readonly (() => Promise<BenchResult[]>)[] = [measureReading, measureTestServerStart];
+const measures: readonly (() => Promise<BenchResult[]>)[] = [
+  measureReading,
+  measureLibrary,
+  measureEditing,
+  measureTestServerStart,
+];
 
 async function runAll(asJson: boolean): Promise<void> {
   const results: BenchResult[] = [];
@@ -25,6 +32,9 @@ function formatResult({ name, value, unit, reference, ratio, target, met }: Benc
 async function runAsChild(name: string, args: readonly string[]): Promise<void> {
   if (name === "read") return readInChild(args);
   if (name === "read-reference") return readReferenceInChild(args);
+  if (name === "read-packs") return readPacksInChild(args);
+  if (name === "read-and-parse") return readAndParseInChild(args);
+  if (name === "read-library") return readLibraryInChild();
   const [pkiFolder, ...files] = args;
   if (name === "bare-server" && pkiFolder) return runBareServer(pkiFolder, files);
   throw new RangeError(`Unknown child ${name}`);

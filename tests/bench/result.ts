@@ -26,6 +26,11 @@ export function compare(name: string, unit: string, value: number, reference: nu
   };
 }
 
+/** A figure that is only recorded. */
+export function record(name: string, unit: string, value: number): BenchResult {
+  return { name, value: round(value), unit, reference: null, ratio: null, target: null, met: null };
+}
+
 export function median(values: readonly number[]): number {
   const sorted = [...values].sort((a, b) => a - b);
   const middle = Math.floor(sorted.length / 2);
