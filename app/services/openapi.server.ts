@@ -1,6 +1,6 @@
 /** The OpenAPI 3.1 document of /api/v1, made of the schemas that the routes check and answer with. */
 import { z } from "zod";
-import { findingsSchema, modelSchema, problemDocumentSchema, revisionSchema } from "../utils/api-schemas";
+import { comparisonSchema, findingsSchema, modelSchema, problemDocumentSchema, revisionSchema } from "../utils/api-schemas";
 import { testServerAnswerSchema } from "./describe-test-server.server";
 import { freezeSchema } from "./freeze-revision.server";
 import { testServerIntentSchema } from "./start-test-server.server";
@@ -9,6 +9,7 @@ const schemas = {
   Model: modelSchema,
   Findings: findingsSchema,
   Revision: revisionSchema,
+  Comparison: comparisonSchema,
   TestServer: testServerAnswerSchema,
   Problem: problemDocumentSchema,
 } as const;
@@ -64,6 +65,13 @@ const organization = {
   description: "Needed only by a session of somebody who belongs to several organisations.",
 };
 const pathId = (name: string) => ({ name, in: "path", required: true, schema: { type: "string" } });
+const stateName = (name: string, description: string) => ({
+  name,
+  in: "query",
+  required: true,
+  schema: { type: "string", pattern: "^(working|[0-9]{1,9})$" },
+  description: `${description} The number of a revision, or \`working\`.`,
+});
 const nodeSetBody = { "application/xml": { schema: { type: "string", contentMediaType: "application/xml" } } };
 
 const paths = {
@@ -131,6 +139,14 @@ const paths = {
       operationId: "exportRevision",
       summary: "The NodeSet2 file of a revision",
       responses: { 200: { description: "The file", content: nodeSetBody }, ...problems(401, 403, 404) },
+    },
+  },
+  "/models/{modelId}/comparison": {
+    parameters: [pathId("modelId"), stateName("from", "The earlier state."), stateName("to", "The later state.")],
+    get: {
+      operationId: "compareStates",
+      summary: "What changed between two states, by meaning",
+      responses: { 200: json(refTo("Comparison"), "The comparison"), ...problems(400, 401, 403, 404) },
     },
   },
   "/models/{modelId}/test-servers": {

@@ -1,5 +1,6 @@
 /** The JSON of /api/v1. Routes answer what these say, and the OpenAPI document is made of them. */
 import { z } from "zod";
+import type { Comparison } from "../domain/compare/change";
 
 export const modelSchema = z
   .object({
@@ -69,6 +70,48 @@ export const revisionSchema = z
     pinned: z.array(z.object({ modelUri: z.string(), version: z.string().nullable(), publicationDate: z.string().nullable() })),
   })
   .meta({ id: "Revision", description: "A frozen state of a model; number 0 is what it began with." });
+
+const ratingSchema = z.enum(["breaking", "additive", "neutral"]);
+
+export const comparisonSchema = z
+  .object({
+    changes: z.array(
+      z.object({
+        kind: z.string(),
+        nodeId: z.string().nullable().meta({ description: "With nsu=; null when the model as a whole changed." }),
+        path: z.string(),
+        detail: z.string().nullable(),
+        rating: ratingSchema,
+        reason: z.string(),
+        clause: z.string(),
+        before: z.string().nullable(),
+        after: z.string().nullable(),
+      }),
+    ),
+    rating: ratingSchema.nullable().meta({ description: "The worst one; null when nothing changed." }),
+    proposedVersion: z.string().nullable(),
+  })
+  .meta({ id: "Comparison", description: "What changed by meaning: breaking first, then additive, then neutral." });
+
+export type ComparisonJson = z.infer<typeof comparisonSchema>;
+
+export function toComparisonJson({ changes, rating, proposedVersion }: Comparison): ComparisonJson {
+  return {
+    changes: changes.map(({ kind, nodeId, path, detail, rating: rated, reason, clause, before, after }) => ({
+      kind,
+      nodeId: nodeId ?? null,
+      path,
+      detail: detail ?? null,
+      rating: rated,
+      reason,
+      clause,
+      before,
+      after,
+    })),
+    rating: rating ?? null,
+    proposedVersion: proposedVersion ?? null,
+  };
+}
 
 export type RevisionJson = z.infer<typeof revisionSchema>;
 export type ModelJson = z.infer<typeof modelSchema>;

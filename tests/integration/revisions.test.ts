@@ -57,6 +57,19 @@ test("the same contents have the same hash, and freezing without a change is ref
   expect(back.revision.hash).toBe(list.find((r) => r.number === 1)?.hash);
 });
 
+test("compares two states by meaning, and names a state that is not there", async () => {
+  const compare = (query: string) => app.call("GET", `/api/v1/models/${modelId}/comparison?${query}`, { cookie });
+  const renamed = (await (await compare("from=1&to=2")).json()) as { changes: { kind: string; nodeId: string; before: string; after: string }[]; rating: string };
+  expect(renamed.changes).toHaveLength(1);
+  expect(renamed.changes[0]).toMatchObject({ kind: "text-changed", nodeId: `nsu=${pumpUri};i=1002` });
+  expect(renamed.rating).toBe("neutral");
+  const same = (await (await compare("from=1&to=working")).json()) as { changes: unknown[]; rating: null };
+  expect(same).toMatchObject({ changes: [], rating: null });
+  expect((await compare("from=1&to=77")).status).toBe(404);
+  expect((await compare("from=first&to=2")).status).toBe(400);
+  expect((await compare("from=0&to=1")).status).toBe(200);
+});
+
 test("asks for a message and for the role", async () => {
   expect((await freeze("  ")).status).toBe(422);
   const developer = await addTestPerson(app, organizationId, "Dev", ["developer"]);

@@ -30,6 +30,7 @@ export const requestProblemTexts: Readonly<Record<string, string>> = {
   "transactions.ahead": "The window believes to be at {base}, but the model is at {head}. Reload it.",
   "transactions.stale": "Others changed the model meanwhile.",
   "sheet.stale": "The sheet was changed in another window meanwhile.",
+  "revision.state-name": "“{text}” names no state. Write the number of a revision, or working.",
   "revision.unchanged": "Nothing has changed since revision {number}.",
   "sheet.last": "A model keeps one sheet at least.",
   "people.exists": "{email} belongs to the organisation already.",
