@@ -4,6 +4,7 @@ import { requireUser } from "~/auth/caller.server";
 import { CommandPalette } from "~/components/palette/command-palette";
 import { openPalette } from "~/components/palette/palette-store";
 import { ErrorPage } from "~/components/shell/error-page";
+import { FrameActions } from "~/components/shell/frame-actions";
 import { TopBar } from "~/components/shell/top-bar";
 import { readFrame } from "~/presenters/frame.server";
 import type { loader as rootLoader } from "~/root";
@@ -20,6 +21,7 @@ export default function Frame({ loaderData }: Route.ComponentProps) {
       <div className="flex min-h-0 flex-1 flex-col">
         <Outlet />
       </div>
+      <FrameActions frame={loaderData} />
       <CommandPalette />
     </div>
   );

@@ -2,18 +2,19 @@ import { useFetcher, useFetchers } from "react-router";
 import { Segments } from "~/components/ui/segments";
 import { isTheme, type Theme } from "~/utils/theme";
 
-const fetcherKey = "theme";
+/** One fetcher for all places that choose a theme, so that each sees the choice at once. */
+export const themeFetcherKey = "theme";
 
 /** The theme that was just chosen, before the server has answered. */
 export function usePendingTheme(): Theme | undefined {
   const chosen = useFetchers()
-    .find((fetcher) => fetcher.key === fetcherKey)
+    .find((fetcher) => fetcher.key === themeFetcherKey)
     ?.formData?.get("theme");
   return isTheme(chosen) ? chosen : undefined;
 }
 
 export function ThemeSwitch({ theme }: { theme: Theme }) {
-  const fetcher = useFetcher({ key: fetcherKey });
+  const fetcher = useFetcher({ key: themeFetcherKey });
   const pending = usePendingTheme();
   return (
     <Segments

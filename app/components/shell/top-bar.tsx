@@ -10,23 +10,16 @@ import { Kbd } from "~/components/ui/tag";
 import { cx } from "~/components/ui/cx";
 import type { FrameData } from "~/presenters/frame.server";
 import type { Theme } from "~/utils/theme";
+import { screens } from "./screens";
 import { useRunningTestServers } from "./use-running-test-servers";
 import { ThemeSwitch } from "./theme-switch";
-
-const screens = [
-  { to: "/", label: "Park", end: true },
-  { to: "/models", label: "Models" },
-  { to: "/library", label: "Library" },
-  { to: "/live", label: "Live" },
-  { to: "/team", label: "Team" },
-];
 
 function Screens({ stacked }: { stacked?: boolean }) {
   return screens.map((screen) => (
     <NavLink
       key={screen.to}
       to={screen.to}
-      end={screen.end ?? false}
+      end={screen.end}
       prefetch="intent"
       className={({ isActive }) =>
         stacked

@@ -35,7 +35,7 @@ export function Field({ label, hint, errors, inline, optional, className, childr
   const invalid = errors !== undefined && errors.length > 0;
   const describedBy = [hint ? `${id}-hint` : "", invalid ? `${id}-errors` : ""].filter(Boolean).join(" ");
   return (
-    <div className={cx(inline ? "grid grid-cols-[96px_1fr] items-center gap-x-3 gap-y-1" : "grid gap-1", className)}>
+    <div className={cx(inline ? "grid grid-cols-[96px_1fr] items-center gap-x-3 gap-y-1" : "grid content-start gap-1", className)}>
       <label htmlFor={id} className="text-note font-medium text-ink-2">
         {label}
         {optional ? <span className="font-normal text-ink-3"> (optional)</span> : null}

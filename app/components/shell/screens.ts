@@ -1,0 +1,8 @@
+/** The screens of the top bar, in order. */
+export const screens = [
+  { to: "/", label: "Park", end: true },
+  { to: "/models", label: "Models", end: false },
+  { to: "/library", label: "Library", end: false },
+  { to: "/live", label: "Live", end: false },
+  { to: "/team", label: "Team", end: false },
+] as const;
