@@ -172,14 +172,12 @@ class Copier {
   #listAttributes(node: Node, parent: NodeKey | undefined): Record<string, unknown> {
     const { key: _key, nodeId: _id, nodeClass: _class, order: _order, browseName: _name, displayName: _display, description: _description, references: _references, symbolicName: _symbolic, ...rest } = node;
     const attributes: Record<string, unknown> = { ...rest };
-    const map = (name: string): void => {
+    // A node that is not there in the model pasted into leaves its attribute out: the draft drops what is undefined.
+    for (const name of ["dataType", "methodDeclaration", "parent"]) {
       const value = attributes[name];
-      if (typeof value !== "string") return;
-      const mapped = this.copies.get(value as NodeKey) ?? (this.#draft.space.getNode(value as NodeKey) ? value : undefined);
-      if (mapped === undefined) delete attributes[name];
-      else attributes[name] = mapped;
-    };
-    for (const name of ["dataType", "methodDeclaration", "parent"]) map(name);
+      if (typeof value !== "string") continue;
+      attributes[name] = this.copies.get(value as NodeKey) ?? (this.#draft.space.getNode(value as NodeKey) ? value : undefined);
+    }
     if (parent !== undefined) attributes["parent"] = parent;
     return attributes;
   }

@@ -1,8 +1,9 @@
 /** The unit table for screens. It is large, so it comes by itself after a model was opened; until then it answers nothing. */
 import { useSyncExternalStore } from "react";
+import type * as units from "~/domain/units/units";
 import { toUnitFacts, type UnitFacts } from "./analog-facts";
 
-type UnitModule = typeof import("~/domain/units/units") & { readonly synonyms: ReadonlyMap<string, string> };
+type UnitModule = Pick<typeof units, "findUnits" | "listUnits" | "toEuInformation"> & { readonly synonyms: ReadonlyMap<string, string> };
 
 /** A unit of the table, with what else a list shows of it. */
 export type UnitHit = UnitFacts & { readonly code: string; readonly quantity: string };
@@ -14,8 +15,8 @@ let loading: Promise<void> | undefined;
 const listeners = new Set<() => void>();
 
 export function loadUnits(): Promise<void> {
-  loading ??= Promise.all([import("~/domain/units/units"), import("~/domain/units/common-units")]).then(([units, common]) => {
-    table = { ...units, synonyms: common.UNIT_SYNONYMS };
+  loading ??= Promise.all([import("~/domain/units/units"), import("~/domain/units/common-units")]).then(([loaded, common]) => {
+    table = { ...loaded, synonyms: common.UNIT_SYNONYMS };
     for (const listener of [...listeners]) listener();
   });
   return loading;

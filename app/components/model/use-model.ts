@@ -54,6 +54,18 @@ export function useSelectedAmong(keys: readonly NodeKey[]): ReadonlySet<NodeKey>
   return useMemo(() => new Set(text === "" ? [] : (text.split(SEPARATOR) as NodeKey[])), [text]);
 }
 
+/** Which of the keys a colleague has selected, and who. */
+export function useMatesAmong(keys: readonly NodeKey[]): ReadonlyMap<NodeKey, string> {
+  const { presence } = useOpenModel();
+  const read = (): string => {
+    const people = presence.getPeople();
+    if (people.length === 0) return "";
+    return people.flatMap((person) => person.selection.flatMap((key) => (keys.includes(key) ? [`${key}\t${person.name}`] : []))).join(SEPARATOR);
+  };
+  const text = useSyncExternalStore(presence.subscribe, read, read);
+  return useMemo(() => new Map(text === "" ? [] : text.split(SEPARATOR).map((entry) => entry.split("\t") as [NodeKey, string])), [text]);
+}
+
 /** Counts by severity; undefined until the checker has answered. */
 export function useFindingTally(): FindingTally | undefined {
   const { findings } = useOpenModel();

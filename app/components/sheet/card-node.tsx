@@ -4,7 +4,7 @@ import { FindingBadge } from "../notation/finding-badge";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
 import { cx } from "../ui/cx";
 import { InlineName } from "../model/inline-name";
-import { useBadges, useSelectedAmong, type Badge } from "../model/use-model";
+import { useBadges, useMatesAmong, useSelectedAmong, type Badge } from "../model/use-model";
 import type { Card, MemberRow } from "./sheet-scene";
 
 export type CardFlowNode = FlowNode<{ card: Card }, "card">;
@@ -15,6 +15,7 @@ export const CardNode = memo(function CardNode({ data }: NodeProps<CardFlowNode>
   const keys = [card.key, ...card.rows.map((row) => row.key)];
   const selected = useSelectedAmong(keys);
   const badges = useBadges(keys);
+  const mates = useMatesAmong(keys);
   return (
     <div
       className={cx("drawn-card", `is-${card.shape}`, card.isType && "is-type", card.isForeign && "is-foreign", selected.has(card.key) && "is-selected")}
@@ -22,11 +23,12 @@ export const CardNode = memo(function CardNode({ data }: NodeProps<CardFlowNode>
       style={{ width: card.width, height: card.height }}
     >
       <CardShape card={card} />
+      <MateFlag name={mates.get(card.key)} />
       <CardHead card={card} badge={badges.get(card.key)} />
       {card.rows.length === 0 ? null : (
         <ul className="card-rows" role="listbox" aria-label={`Members of ${card.name}`} aria-multiselectable="true">
           {card.rows.map((row) => (
-            <CardRow key={row.key} row={row} isForeign={card.isForeign} isSelected={selected.has(row.key)} badge={badges.get(row.key)} />
+            <CardRow key={row.key} row={row} isForeign={card.isForeign} isSelected={selected.has(row.key)} badge={badges.get(row.key)} mate={mates.get(row.key)} />
           ))}
         </ul>
       )}
@@ -88,9 +90,18 @@ function CardHead({ card, badge }: { card: Card; badge: Badge | undefined }) {
   );
 }
 
-type RowProps = { row: MemberRow; isForeign: boolean; isSelected: boolean; badge: Badge | undefined };
+/** Dashed edge and first name of a colleague who has this selected. */
+function MateFlag({ name }: { name: string | undefined }) {
+  return name === undefined ? null : (
+    <span className="mate-flag">
+      <b>{name.split(" ")[0]}</b>
+    </span>
+  );
+}
 
-const CardRow = memo(function CardRow({ row, isForeign, isSelected, badge }: RowProps) {
+type RowProps = { row: MemberRow; isForeign: boolean; isSelected: boolean; badge: Badge | undefined; mate: string | undefined };
+
+const CardRow = memo(function CardRow({ row, isForeign, isSelected, badge, mate }: RowProps) {
   const isOwn = !isForeign && row.origin === undefined;
   return (
     <li
@@ -100,6 +111,7 @@ const CardRow = memo(function CardRow({ row, isForeign, isSelected, badge }: Row
       aria-label={getRowLabel(row, badge)}
       data-key={row.key}
     >
+      <MateFlag name={mate} />
       <NodeClassGlyph kind={row.isProperty ? "Property" : row.nodeClass} />
       <span className="row-name">
         <InlineName nodeKey={row.key} name={row.name} />

@@ -3,8 +3,10 @@ import { useMemo, useRef, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { AddNodePanel } from "../model/add-node-panel";
-import type { AddRequest } from "../model/add-request";
+import { makeAddRequest, type AddRequest } from "../model/add-request";
 import { useOpenModel } from "../model/use-model";
+import type { PaletteEntry } from "../palette/palette-store";
+import { usePaletteActions } from "../palette/use-palette-actions";
 import { arrangeCards } from "./arrange-cards";
 import { ConnectMenu } from "./connect-menu";
 import { placeCards } from "./place-cards";
@@ -25,7 +27,7 @@ const NOT_MOVED: ReadonlyMap<NodeKey, Point> = new Map();
 
 /** Frame, canvas and foot of one sheet with what can be done on it. */
 export function SheetDrawing({ space, layout, changeLayout }: Props) {
-  const { view } = useOpenModel();
+  const { view, actions } = useOpenModel();
   const { fitView } = useReactFlow();
   const canvas = useRef<HTMLDivElement>(null);
   const scene = useScene(space, layout);
@@ -67,6 +69,8 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
     };
   }, [changeLayout, places, scene, view, fitView]);
 
+  usePaletteActions(useMemo(() => listSheetActions(control, actions.canEdit), [control, actions]));
+
   return (
     <section className="sheet" aria-label="Sheet">
       <div className="sheet-frame">
@@ -86,6 +90,16 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
     </section>
   );
 }
+
+function listSheetActions(control: SheetControl, canEdit: boolean): PaletteEntry[] {
+  const group = "Actions on this sheet";
+  const arrange = { id: "arrange", label: "Arrange the cards", group, run: control.arrange };
+  if (!canEdit) return [arrange];
+  const adds = ADDABLE.map((kind) => ({ id: `add-${kind}`, label: `Add ${kind === "DataType" ? "enumeration" : kind}`, group, run: () => control.add(makeAddRequest(kind)) }));
+  return [arrange, ...adds];
+}
+
+const ADDABLE = ["ObjectType", "VariableType", "DataType", "ReferenceType", "Object", "Variable", "Property", "Method"] as const;
 
 function toRects(scene: Scene, places: ReadonlyMap<NodeKey, Point>, moved: ReadonlyMap<NodeKey, Point>): Map<NodeKey, Rect> {
   const rects = new Map<NodeKey, Rect>();

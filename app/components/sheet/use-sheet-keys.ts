@@ -91,6 +91,13 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
     },
   };
 
+  const commands: Readonly<Record<string, () => void>> = {
+    a: () => view.select(scene.cards.map((card) => card.key)),
+    c: () => actions.copyNodes(view.getState().selection),
+    v: () => actions.paste(findMemberOwner(space, view.getState().selection.at(-1))),
+    d: () => actions.duplicate(view.getState().selection),
+  };
+
   return function onKeyDown(event: KeyboardEvent): void {
     if ((event.target as Element).closest("input, textarea, select")) return;
     const isCommand = event.ctrlKey || event.metaKey;
@@ -100,13 +107,8 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
       else walk(event);
       return;
     }
-    if (isCommand && event.key === "a") {
-      event.preventDefault();
-      view.select(scene.cards.map((card) => card.key));
-      return;
-    }
-    if (isCommand || event.altKey) return;
-    const act = plain[event.key];
+    if (event.altKey) return;
+    const act = isCommand ? commands[event.key.toLowerCase()] : plain[event.key];
     if (!act) return;
     event.preventDefault();
     act();
