@@ -21,7 +21,9 @@ export type FieldDraft = { -readonly [K in keyof DataTypeField]: DataTypeField[K
   displayName?: LocalizedText[];
   description?: LocalizedText[];
 };
-export type DefinitionDraft = { -readonly [K in keyof DataTypeDefinition]: DataTypeDefinition[K] };
+export type DefinitionDraft = { -readonly [K in keyof DataTypeDefinition]: DataTypeDefinition[K] } & {
+  fields: DataTypeField[];
+};
 
 const NOTHING: readonly never[] = [];
 
@@ -33,7 +35,6 @@ export function append<T>(list: T[] | undefined, item: T): T[] {
 }
 
 export class NodeBuilder {
-  readonly offset: number;
   readonly nodeId: NodeId;
   readonly key: NodeKey;
   /** Attributes that the table knows, set by `readAttributes`. */
@@ -49,8 +50,7 @@ export class NodeBuilder {
   otherElements: XmlText[] | undefined;
   readonly references: DeclaredReference[] = [];
 
-  constructor(offset: number, nodeClass: NodeClass, nodeId: NodeId, browseName: QualifiedName, order: number) {
-    this.offset = offset;
+  constructor(nodeClass: NodeClass, nodeId: NodeId, browseName: QualifiedName, order: number) {
     this.nodeId = nodeId;
     this.key = toNodeKey(nodeId);
     this.fields = {

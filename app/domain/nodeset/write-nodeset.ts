@@ -39,13 +39,24 @@ export function writeNodeSet(
   // Nodes before the head: they decide which namespaces and aliases the head must list.
   const parts = nodes.map((node) => writeNode(node, context));
   const head = writeHead(header, root, context);
-  let line = countLineBreaks(head) + 1;
+  let lines: ReadonlyMap<NodeKey, number> | undefined;
+  return {
+    xml: `${head}${parts.join("")}</${root.prefix}UANodeSet>\n`,
+    // Counted when they are asked for: an export to a file never asks.
+    get lines() {
+      return (lines ??= countLines(nodes, parts, countLineBreaks(head) + 1));
+    },
+  };
+}
+
+function countLines(nodes: readonly Node[], parts: readonly string[], first: number): ReadonlyMap<NodeKey, number> {
+  let line = first;
   const lines = new Map<NodeKey, number>();
   nodes.forEach((node, i) => {
     lines.set(node.key, line);
     line += countLineBreaks(parts[i] ?? "");
   });
-  return { xml: `${head}${parts.join("")}</${root.prefix}UANodeSet>\n`, lines };
+  return lines;
 }
 
 function inModelOrder(nodes: readonly Node[]): readonly Node[] {

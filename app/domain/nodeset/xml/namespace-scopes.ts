@@ -39,6 +39,17 @@ export class NamespaceScopes {
     return colon < 0 ? this.defaultUri : (this.find(name.slice(0, colon))?.uri ?? "");
   }
 
+  /**
+   * The prefix of an element's or attribute's name that nobody declared; such a name means nothing (Namespaces in XML 1.0
+   * §5). Undefined when all is well.
+   */
+  findUndeclaredPrefix(name: string): string | undefined {
+    const colon = name.indexOf(":");
+    if (colon < 0) return undefined;
+    const prefix = name.slice(0, colon);
+    return prefix === "xmlns" || this.find(prefix) !== undefined ? undefined : prefix;
+  }
+
   #bind(depth: number, prefix: string, uri: string): void {
     this.#bindings.push({ depth, prefix, uri });
     if (prefix === "") this.defaultUri = uri;

@@ -30,3 +30,9 @@ export class PositionCounter {
     this.#nextBreak = this.#text.indexOf("\n");
   }
 }
+
+/** The places of many offsets, which should stand in rising order. */
+export function toPositions<K>(text: string, offsets: ReadonlyMap<K, number>): ReadonlyMap<K, Position> {
+  const counter = new PositionCounter(text);
+  return new Map([...offsets].map(([key, offset]) => [key, counter.at(offset)]));
+}
