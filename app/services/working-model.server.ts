@@ -58,10 +58,13 @@ export async function loadWorkingModel(modelId: string): Promise<WorkingModel | 
     const cached = models.get(modelId);
     if (!cached) return startLoading(modelId, loadFromStore(modelId));
     const working = await cached;
-    const isCurrent = working !== undefined && (await areLayersCurrent(working.layers));
+    const head = (await findModel(modelId))?.headSeq;
+    const isOnCurrentLayers = working !== undefined && (await areLayersCurrent(working.layers));
     // A writer may have put a newer state there while we waited; only what we judged may be kept or replaced.
     if (models.get(modelId) !== cached) continue;
-    if (!isCurrent) return startLoading(modelId, working ? withFreshLayers(working) : loadFromStore(modelId));
+    // Another process on the same database may have moved the head.
+    if (!working || head !== working.seq) return startLoading(modelId, loadFromStore(modelId));
+    if (!isOnCurrentLayers) return startLoading(modelId, withFreshLayers(working));
     touch(modelId, cached);
     return working;
   }
@@ -161,7 +164,14 @@ async function append(modelId: string, author: Caller, intent: AppendIntent): Pr
   if (!applied.ok) return { kind: "refused", head: working.seq, problems: applied.problems, accepted };
   const givenTwice = await findGivenTwice(working.model.organizationId, applied.value.added);
   if (givenTwice.length > 0) return { kind: "refused", head: working.seq, problems: givenTwice, accepted };
-  await save(applied.value.working, author, applied.value.added);
+  try {
+    await save(applied.value.working, author, applied.value.added);
+  } catch (error) {
+    // The database refuses a number that another process has given meanwhile; then we were too late like any other window.
+    if ((await findModel(modelId))?.headSeq === working.seq) throw error;
+    forgetWorkingModel(modelId);
+    return append(modelId, author, intent);
+  }
   const added = applied.value.added.map(({ clientSeq, seq, at }) => ({ clientSeq, seq, at }));
   return { kind: "accepted", head: applied.value.working.seq, accepted: [...accepted, ...added] };
 }

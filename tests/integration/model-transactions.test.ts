@@ -142,6 +142,21 @@ test("a NodeId that was given up goes back to its own node only", async () => {
   expect((await send(6, base + 3, [{ kind: "setAttribute", key: maker.key, attribute: "nodeId", value: maker.nodeId }])).status).toBe(200);
 });
 
+test("an edit that another process has stored is seen, and wins over one that comes too late", async () => {
+  const { addTransactionStatement, listTransactions, updateModelStatement } = await import("~/db/repositories/models.server");
+  const { loadWorkingModel } = await import("~/services/working-model.server");
+  const { writeBatch } = await import("~/db/client.server");
+  const seq = (await loadWorkingModel(modelId))?.seq ?? 0;
+  const [last] = await listTransactions(modelId, seq - 1, 1);
+  if (!last) throw new Error("No transaction");
+  const foreign = { ...last, seq: seq + 1, base: seq, clientId: "other process", clientSeq: 1, operations: [rename("From elsewhere")], inverse: [] };
+  await writeBatch([addTransactionStatement(modelId, "someone", foreign), updateModelStatement(modelId, { headSeq: seq + 1 })]);
+  const late = await post({ clientId: "late", base: seq, transactions: [{ clientSeq: 1, label: "rename", operations: [rename("Late")] }] });
+  expect(late.status).toBe(409);
+  expect(late.json.between.map((t) => t.seq)).toEqual([seq + 1]);
+  expect((await post({ clientId: "late", base: seq + 1, transactions: [{ clientSeq: 1, label: "rename", operations: [rename("Late")] }] })).status).toBe(200);
+});
+
 test("hundreds of edits are snapshotted, and a fresh load replays to the same state", async () => {
   const { head } = (await (await app.call("GET", `/models/${modelId}/transactions?since=0`, { cookie })).json()) as Answer;
   let base = head;

@@ -85,7 +85,7 @@ function RevisionTable({ modelId, revisions }: Pick<Props, "modelId" | "revision
           </Th>
           <Th>Message</Th>
           <Th>Frozen by</Th>
-          <Th>When</Th>
+          <Th>When, UTC</Th>
           <Th right>Edits up to</Th>
           <Th right>Nodes</Th>
           <Th>Findings</Th>
