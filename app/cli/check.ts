@@ -1,24 +1,39 @@
-/** `check`: the findings of one file, as text or JSON. */
+/** `check`: the findings of one file, as text, JSON or SARIF. */
+import { createHash } from "node:crypto";
+import { readFile } from "node:fs/promises";
 import { AddressSpace, buildLayer } from "../domain/address-space/address-space";
 import { getOwnNamespace } from "../domain/address-space/model-header";
 import { runChecks } from "../domain/checks/run-checks";
-import { toReport, type CheckReport } from "../domain/checks/to-report";
-import type { Problem } from "../domain/core/result";
+import { toReport, type CheckReport, type ReportedFinding } from "../domain/checks/to-report";
+import { toSarif } from "../domain/checks/to-sarif";
+import { applyWaivers, waiverFileSchema, type Waiver } from "../domain/checks/waivers";
+import { fail, ok, problem, type Problem, type Result, type Severity } from "../domain/core/result";
 import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { listRequired } from "../library/describe-nodeset.server";
 import { getLibrary } from "../library/library.server";
-import type { CheckCommand } from "./parse-command-line";
 import { formatReport } from "./format-report";
+import { resolvePath, type CheckCommand } from "./parse-command-line";
 import { readFolders, readInput } from "./read-input";
 
+type Checked = {
+  readonly report: CheckReport;
+  readonly waived: readonly { finding: ReportedFinding; waiver: Waiver }[];
+};
+
+const NOTHING = new Map<never, never>();
+const WEIGHT: Readonly<Record<Severity, number>> = { error: 2, warning: 1, hint: 0 };
+
 export async function check(command: CheckCommand): Promise<number> {
-  const content = await readInput(command.file);
-  if (!content.ok)
-    return print(command, toReport([], { file: command.file, lines: new Map(), problems: content.problems }), 2);
+  const { file } = command;
+  const refuse = (problems: readonly Problem[]): number =>
+    print(command, { report: toReport([], { file, lines: NOTHING, problems }), waived: [] }, 2);
+  const content = await readInput(file);
+  if (!content.ok) return refuse(content.problems);
+  const waivers = await readWaivers(command.waivers);
+  if (!waivers.ok) return refuse(waivers.problems);
   const folders = await readFolders(command.folders);
   const problems = [...content.problems, ...folders.problems];
-  const { lines } = content.value;
-  if (!folders.ok) return print(command, toReport([], { file: command.file, lines, problems }), 2);
+  if (!folders.ok) return refuse(problems);
   const { header } = content.value;
   const layers = await getLibrary().resolve(listRequired(header), {
     extra: folders.value,
@@ -26,23 +41,64 @@ export async function check(command: CheckCommand): Promise<number> {
   });
   problems.push(...layers.problems);
   const isComplete = layers.ok && layers.problems.every((found) => found.severity !== "error");
-  if (!isComplete) return print(command, toReport([], { file: command.file, lines, problems }), 2);
-  const report = checkContent(command.file, content.value, layers.value, problems);
-  const hasErrors = report.counts.error > 0 || problems.some((found) => found.severity === "error");
-  return print(command, report, hasErrors ? 1 : 0);
+  if (!isComplete) return refuse(problems);
+  const checked = checkContent(command, content.value, layers.value, problems, waivers.value);
+  const counted = checked.report.findings.some((f) => WEIGHT[f.severity] >= WEIGHT[command.severity ?? "error"]);
+  const hasErrors = counted || problems.some((found) => found.severity === "error");
+  return print(command, checked, hasErrors ? 1 : 0);
 }
 
 function checkContent(
-  file: string,
+  { file, severity }: CheckCommand,
   content: NodeSetContent,
   layers: Parameters<typeof AddressSpace.of>[0],
   problems: readonly Problem[],
-): CheckReport {
+  waivers: readonly Waiver[],
+): Checked {
   const space = AddressSpace.of(layers, buildLayer(content.header, content.nodes));
-  return toReport(runChecks(space), { file, lines: content.lines, problems });
+  const { open, waived } = applyWaivers(space, runChecks(space), waivers);
+  const sources = { file, lines: content.lines, problems };
+  const listed = waived.map(({ finding, waiver }) => {
+    const [reported] = toReport([finding], { file, lines: content.lines }).findings;
+    return reported ? [{ finding: reported, waiver }] : [];
+  });
+  return { report: keepFrom(toReport(open, sources), severity), waived: listed.flat() };
 }
 
-function print(command: CheckCommand, report: CheckReport, code: number): number {
-  process.stdout.write(command.isJson ? `${JSON.stringify(report, null, 2)}\n` : formatReport(report));
+/** Leaves out findings below the severity that is asked for. */
+function keepFrom(report: CheckReport, lowest: Severity | undefined): CheckReport {
+  if (lowest === undefined) return report;
+  const findings = report.findings.filter((f) => WEIGHT[f.severity] >= WEIGHT[lowest]);
+  const counts = { error: 0, warning: 0, hint: 0 };
+  for (const { severity } of findings) counts[severity]++;
+  return { ...report, counts, findings };
+}
+
+/** Problem: `waivers.unreadable`. */
+async function readWaivers(file: string | undefined): Promise<Result<readonly Waiver[]>> {
+  if (file === undefined) return ok([]);
+  try {
+    const parsed = waiverFileSchema.safeParse(JSON.parse(await readFile(resolvePath(file), "utf8")));
+    if (parsed.success) return ok(parsed.data.waivers);
+    const [issue] = parsed.error.issues;
+    return fail(
+      problem("waivers.unreadable", { file, detail: `${issue?.path.join(".") ?? ""}: ${issue?.message ?? ""}` }),
+    );
+  } catch (error) {
+    return fail(
+      problem("waivers.unreadable", { file, detail: error instanceof Error ? error.message : String(error) }),
+    );
+  }
+}
+
+function print({ format }: CheckCommand, { report, waived }: Checked, code: number): number {
+  process.stdout.write(toText(format, report, waived));
   return code;
+}
+
+function toText(format: CheckCommand["format"], report: CheckReport, waived: Checked["waived"]): string {
+  if (format === "text") return formatReport(report);
+  const digest = (text: string): string => createHash("sha256").update(text).digest("hex");
+  const document = format === "json" ? report : toSarif([report], { version: "0.1.0", waived, digest });
+  return `${JSON.stringify(document, null, 2)}\n`;
 }

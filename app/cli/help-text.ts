@@ -1,7 +1,9 @@
 export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSet2 files, reads IO-Link device descriptions
 
-  npm run -s ferrule -- check FILE [--with DIR]… [--json]
+  npm run -s ferrule -- check FILE [--with DIR]… [--format text|json|sarif] [--severity S] [--waivers FILE]
       Reads the file with the models it requires and runs the checker.
+  npm run -s ferrule -- rules [--json]
+      The rules of the checker: number, severity, clause, whether there is a fix; and those that do not run, with the reason.
   npm run -s ferrule -- roundtrip IN OUT [--with DIR]…
       Reads IN and writes OUT with all nodes, references and attributes, in the order of IN.
   npm run -s ferrule -- compare OLD NEW [--with DIR]… [--json]
@@ -15,9 +17,12 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
   npm run -s ferrule -- help
 
   --with DIR   adds the NodeSets below DIR to the library for this call; may be given several times
-  --json       prints the findings as one JSON document
+  --json       prints the findings as one JSON document; for check the same as --format json
+  --severity S error, warning or hint: lists findings of this severity and above, and lets them decide the exit status
+  --waivers FILE   a JSON file {"waivers":[{rule,nodeId,attribute?,reason,person,date,fingerprint}]}: accepted findings are
+               left out (in SARIF: suppressed) while the node stays as its fingerprint says
 
-Exit status: 0 nothing of severity error · 1 at least one error ·
+Exit status: 0 nothing of severity error · 1 at least one error (check --severity S: one of S or above) ·
 2 unreadable file, missing required model, or wrong usage.
 compare: 0 no change or neutral ones only · 1 additive · 3 breaking · 2 unreadable.
 decode: 2 also for a frame of the wrong length and where --condition must say which layout is meant.

@@ -6,6 +6,7 @@ import { helpText } from "./help-text";
 import { map } from "./map-command";
 import { parseCommandLine, UsageError } from "./parse-command-line";
 import { roundtrip } from "./roundtrip";
+import { rules } from "./rules-command";
 
 async function run(args: readonly string[]): Promise<number> {
   const command = parseCommandLine(args);
@@ -15,6 +16,8 @@ async function run(args: readonly string[]): Promise<number> {
       return 0;
     case "check":
       return check(command);
+    case "rules":
+      return rules(command);
     case "roundtrip":
       return roundtrip(command);
     case "compare":

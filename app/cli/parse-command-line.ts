@@ -1,13 +1,19 @@
 /** The command line as a value. */
 import { resolve } from "node:path";
 import { parseArgs } from "node:util";
+import type { Severity } from "../domain/core/result";
 
 export type CheckCommand = {
   readonly name: "check";
   readonly file: string;
   readonly folders: readonly string[];
-  readonly isJson: boolean;
+  readonly format: ReportFormat;
+  /** The lowest severity that is listed and, where it is given, that counts for the exit code; errors count always. */
+  readonly severity: Severity | undefined;
+  readonly waivers: string | undefined;
 };
+export type ReportFormat = "text" | "json" | "sarif";
+export type RulesCommand = { readonly name: "rules"; readonly isJson: boolean };
 export type RoundtripCommand = {
   readonly name: "roundtrip";
   readonly input: string;
@@ -40,6 +46,7 @@ export type MapCommand = {
 export type Command =
   | { readonly name: "help" }
   | CheckCommand
+  | RulesCommand
   | RoundtripCommand
   | CompareCommand
   | DeviceCommand
@@ -62,7 +69,20 @@ export function parseCommandLine(args: readonly string[]): Command {
   if (values.help || name === "help") return { name: "help" };
   if (name === "check") {
     const [file] = requireCount(rest, 1, "check takes one FILE.");
-    return { name, file: file ?? "", folders, isJson: values.json ?? false };
+    const format = requireOneOf(
+      values.format ?? (values.json ? "json" : "text"),
+      FORMATS,
+      "--format is text, json or sarif.",
+    );
+    const severity =
+      values.severity === undefined
+        ? undefined
+        : requireOneOf(values.severity, SEVERITIES, "--severity is error, warning or hint.");
+    return { name, file: file ?? "", folders, format, severity, waivers: values.waivers };
+  }
+  if (name === "rules") {
+    requireCount(rest, 0, "rules takes no file.");
+    return { name, isJson: values.json ?? false };
   }
   if (name === "roundtrip") {
     if (values.json) throw new UsageError("roundtrip knows no --json.");
@@ -100,6 +120,9 @@ function parse(args: readonly string[]) {
       options: {
         with: { type: "string", multiple: true },
         json: { type: "boolean" },
+        format: { type: "string" },
+        severity: { type: "string" },
+        waivers: { type: "string" },
         direction: { type: "string" },
         condition: { type: "string" },
         frame: { type: "string", multiple: true },
@@ -109,6 +132,15 @@ function parse(args: readonly string[]) {
   } catch (error) {
     throw new UsageError(error instanceof Error ? error.message : String(error));
   }
+}
+
+const FORMATS: readonly ReportFormat[] = ["text", "json", "sarif"];
+const SEVERITIES: readonly Severity[] = ["error", "warning", "hint"];
+
+function requireOneOf<T extends string>(value: string, allowed: readonly T[], message: string): T {
+  const found = allowed.find((one) => one === value);
+  if (found === undefined) throw new UsageError(message);
+  return found;
 }
 
 function requireCount(values: readonly string[], count: number, message: string): readonly string[] {

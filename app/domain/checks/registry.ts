@@ -164,7 +164,7 @@ import { r168 } from "./rules/r168-alarm-below-variable";
 import { r169 } from "./rules/r169-model-uri-listed";
 import { r170 } from "./rules/r170-used-namespaces-required";
 import { r171 } from "./rules/r171-base-model-required";
-import { r172 } from "./rules/r172-namespace-index";
+import { r172 } from "./rules/r172-known-namespaces";
 import { r173 } from "./rules/r173-unused-namespace";
 import { r174 } from "./rules/r174-model-version";
 import { r175 } from "./rules/r175-publication-date";
@@ -181,6 +181,7 @@ import { r186 } from "./rules/r186-purpose";
 import { r187 } from "./rules/r187-method-declaration";
 import { r188 } from "./rules/r188-aliases";
 import { r192 } from "./rules/r192-value-namespace";
+import { r193 } from "./rules/r193-value-namespace-index";
 import { r194 } from "./rules/r194-translation-count";
 import { r197 } from "./rules/r197-role-permissions";
 
@@ -366,6 +367,7 @@ export const RULES: readonly Rule[] = [
   r187,
   r188,
   r192,
+  r193,
   r194,
   r197,
 ];

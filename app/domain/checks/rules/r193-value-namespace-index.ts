@@ -6,17 +6,16 @@ import { hasValueAttributes } from "../../address-space/node";
 import { parseNodeId } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 
-export const r172: NodeRule = {
-  id: "R172",
-  title: "Namespace index in range",
+export const r193: NodeRule = {
+  id: "R193",
+  title: "Namespace indices inside values are those of the file",
   severity: "error",
-  clause: clause(6, "§F.2, §5.1.12"),
+  clause: clause(6, "§F.14"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
   needs: "value",
-  condition:
-    "Every index in a NodeId, a BrowseName or a Value is one of the file's namespace table. Ids and names are judged while a file is read; here what is left in values.",
-  why: "The index stands for no namespace: the id or the name is lost when the file is loaded.",
+  condition: "NodeIds inside a Value name namespaces of the file's own table.",
+  why: "An index of a running server, or of another file, stands for another namespace here, or for none: the id is lost.",
   check(node, _ctx, report) {
     if (!hasValueAttributes(node) || !node.value?.xml.includes("Identifier")) return;
     const texts = walkValue(findValueRoot(node.value)).flatMap((e) => (e.name === "Identifier" ? [e.text.trim()] : []));

@@ -1,0 +1,148 @@
+/** The whole catalogue for people and pipelines: rules that run, and those that do not, with the reason. */
+import type { Severity } from "../core/result";
+import { RULES } from "./registry";
+import { clause } from "./rule";
+
+export type ListedRule = {
+  readonly id: string;
+  readonly title: string;
+  readonly severity: Severity;
+  readonly clause: string;
+  readonly hasFix: boolean;
+  readonly implemented: boolean;
+  /** Why a rule does not run; absent for rules that do. */
+  readonly reason?: string;
+};
+
+type Omission = readonly [id: string, title: string, severity: Severity, clause: string, reason: string];
+
+const COMES_WITH_MAPPINGS = "Speaks of mappings and sources and runs over these, not over a model alone.";
+
+const OMITTED: readonly Omission[] = [
+  [
+    "R047",
+    "A ReferenceType subtype keeps the parent's constraints",
+    "error",
+    clause(3, "§5.3.3.3, §5.7.2"),
+    "R026 to R059 ask it: each holds for all subtypes of its reference type.",
+  ],
+  [
+    "R063",
+    "HasOrderedComponent only where order matters",
+    "hint",
+    clause(3, "§7.9"),
+    "Withdrawn: the clause adds no constraint.",
+  ],
+  [
+    "R087",
+    "Children of an absent optional parent",
+    "error",
+    clause(3, "§6.4.4.4.1, §6.4.4.4.2"),
+    "A part of R086, which asks for members of present parents only.",
+  ],
+  [
+    "R089",
+    "Children of a placeholder are not enforced by the containing type",
+    "hint",
+    clause(3, "§6.4.4.4.4, §6.4.4.4.5"),
+    "A part of R086, which asks nothing below placeholders.",
+  ],
+  ["R110", "Writable but not meant to be", "hint", "common practice, no source", COMES_WITH_MAPPINGS],
+  [
+    "R157",
+    "DefaultEncodingId",
+    "error",
+    clause(3, "§8.48"),
+    "An attribute of running servers; a NodeSet has no such field.",
+  ],
+  [
+    "R166",
+    "Event types are not inserted inside a published hierarchy",
+    "warning",
+    "OPC 11030 v1.03 §3.2.9 (white paper)",
+    "Needs two versions of a model: the comparison of revisions tells it.",
+  ],
+  [
+    "R179",
+    "The declared minimum of a required model suffices",
+    "warning",
+    "common practice, no source",
+    "Needs older versions of the required models than the one that is loaded.",
+  ],
+  [
+    "R189",
+    "A reference stored once",
+    "hint",
+    clause(6, "§F.3, §F.4"),
+    "A matter of writing files, never of a model: exports write each reference where loaders look for it.",
+  ],
+  [
+    "R190",
+    "Order robust for one-pass loaders",
+    "hint",
+    "common practice, no source (UANodeSet.xsd allows any order)",
+    "A matter of writing files: exports of new models are sorted.",
+  ],
+  [
+    "R191",
+    "Schema valid",
+    "error",
+    `UANodeSet.xsd, ${clause(6, "§F.1, §F.7")}`,
+    "A question to the text of a file, not to the model in it: the validation against the schema answers it.",
+  ],
+  [
+    "R195",
+    "Extensions preserved",
+    "hint",
+    "common practice, no source",
+    "Behaviour of reading and writing, which tests of these prove.",
+  ],
+  [
+    "R196",
+    "Category texts name conformance units",
+    "hint",
+    `${clause(6, "§F.3")}, ${clause(5, "§3.3")}`,
+    "The list of conformance units is not published as data that could be compared.",
+  ],
+  [
+    "R198",
+    "A mapped Variable exists and is a leaf value",
+    "warning",
+    "common practice, no source",
+    COMES_WITH_MAPPINGS,
+  ],
+  ["R199", "The source's width fits the DataType", "error", "OPC 30120 §12.2.2, Table 63", COMES_WITH_MAPPINGS],
+  [
+    "R200",
+    "Unit of source and target agree",
+    "warning",
+    `OPC 30120 Annex C, ${clause(8, "§6.6.2")}`,
+    COMES_WITH_MAPPINGS,
+  ],
+  ["R201", "Quality mapped", "warning", `OPC 30120 §7.1.3, ${clause(8, "§7.3")}`, COMES_WITH_MAPPINGS],
+  ["R202", "Write path guarded", "warning", "common practice, no source", COMES_WITH_MAPPINGS],
+  ["R203", "One writer", "warning", "common practice, no source", COMES_WITH_MAPPINGS],
+  ["R204", "Every mandatory tag bound", "warning", "common practice, no source", COMES_WITH_MAPPINGS],
+];
+
+/** In the order of numbers. */
+export function listRules(): ListedRule[] {
+  const running = RULES.map(({ id, title, severity, clause: basis, fix }) => ({
+    id,
+    title,
+    severity,
+    clause: basis,
+    hasFix: fix !== undefined,
+    implemented: true,
+  }));
+  const omitted = OMITTED.map(([id, title, severity, basis, reason]) => ({
+    id,
+    title,
+    severity,
+    clause: basis,
+    hasFix: false,
+    implemented: false,
+    reason,
+  }));
+  return [...running, ...omitted].sort((a, b) => (a.id < b.id ? -1 : 1));
+}
