@@ -9,12 +9,13 @@ export function meta() {
 }
 
 export default function RegisterPage() {
-  const { presence, isReady } = useOpenModel();
+  const { workspace, presence, isReady } = useOpenModel();
   useEffect(() => presence.setPlace("register"), [presence]);
   return (
-    <>
+    <main id="main" className="flex min-h-0 flex-1 flex-col">
+      <h1 className="sr-only">Register of {workspace.model.name}</h1>
       {isReady ? <Register /> : <LoadingModel what="the register" />}
       <NodeDrawer />
-    </>
+    </main>
   );
 }

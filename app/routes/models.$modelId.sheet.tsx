@@ -16,9 +16,10 @@ export default function SheetPage() {
   const sheet = workspace.sheets[0];
   useEffect(() => presence.setPlace("sheet"), [presence]);
   return (
-    <>
+    <main id="main" className="flex min-h-0 flex-1 flex-col">
+      <h1 className="sr-only">Sheet of {workspace.model.name}</h1>
       {isReady ? <Sheet sheetId={sheet?.id ?? "main"} /> : <LoadingModel what="the sheet" />}
       <NodeDrawer />
-    </>
+    </main>
   );
 }

@@ -10,11 +10,12 @@ export function meta() {
 }
 
 export default function SourcePage() {
-  const { presence, isReady } = useOpenModel();
+  const { workspace, presence, isReady } = useOpenModel();
   useEffect(() => presence.setPlace("source text"), [presence]);
   const waiting = <LoadingModel what="the source text" />;
   return (
-    <>
+    <main id="main" className="flex min-h-0 flex-1 flex-col">
+      <h1 className="sr-only">Source text of {workspace.model.name}</h1>
       {isReady ? (
         <Suspense fallback={waiting}>
           <SourceText />
@@ -23,6 +24,6 @@ export default function SourcePage() {
         waiting
       )}
       <NodeDrawer />
-    </>
+    </main>
   );
 }

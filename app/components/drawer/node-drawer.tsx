@@ -3,6 +3,7 @@ import type { Node } from "~/domain/address-space/node";
 import type { Finding } from "~/domain/checks/finding";
 import { useSyncExternalStore } from "react";
 import { formatPath, getNodeName, isProperty } from "../model/member-facts";
+import { listRoots } from "../model/list-roots";
 import { useOpenModel, useSelection, useSpace, useView } from "../model/use-model";
 import { FindingBadge } from "../notation/finding-badge";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
@@ -24,6 +25,8 @@ export function NodeDrawer() {
   const key = selection.at(-1);
   const node = key === undefined ? undefined : space.getNode(key);
   if (!isOpen) return <ClosedDrawer />;
+  // An empty model has no particulars; the room belongs to the first thing to do.
+  if (!node && listRoots(space).length === 0) return null;
   return (
     <Drawer
       label="Particulars"

@@ -99,7 +99,7 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
   };
 
   return function onKeyDown(event: KeyboardEvent): void {
-    if ((event.target as Element).closest("input, textarea, select")) return;
+    if ((event.target as Element).closest("input, textarea, select, button, a")) return;
     const isCommand = event.ctrlKey || event.metaKey;
     if (event.key in ARROWS) {
       event.preventDefault();
