@@ -56,8 +56,20 @@ function listNamedNodes(attribute: string, value: unknown): string[] {
   return namesNode && typeof value === "string" ? [nodeUnit(value as NodeKey)] : [];
 }
 
+/** Transactions never change, and the history asks for their units with each edit of somebody else. */
+const known = new WeakMap<readonly Operation[], ConflictUnits>();
+
 /** The units of a transaction as a whole. */
 export function collectConflictUnits(operations: readonly Operation[]): ConflictUnits {
+  let units = known.get(operations);
+  if (!units) {
+    units = makeConflictUnits(operations);
+    known.set(operations, units);
+  }
+  return units;
+}
+
+function makeConflictUnits(operations: readonly Operation[]): ConflictUnits {
   const changes = new Set<string>();
   const needs = new Set<string>();
   for (const operation of operations) {

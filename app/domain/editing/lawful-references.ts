@@ -7,12 +7,13 @@
  * offers these choices never offers what is then refused.
  */
 import type { AddressSpace } from "../address-space/address-space";
-import { findTypeDefinition, listEdgesFrom } from "../address-space/browse";
+import { findModellingRule, findTypeDefinition, listEdgesTo } from "../address-space/browse";
 import type { Node } from "../address-space/node";
 import { standardKey, type NodeKey } from "../address-space/node-id";
 import { StandardReferenceType, StandardType } from "../address-space/standard-ids";
 import { findSupertype, getReferenceTypes, isHierarchical, isSubtypeOf, listSupertypes } from "../address-space/type-hierarchy";
 import { problem, type Problem } from "../core/result";
+import { checkSiblingName } from "./names";
 import { checkSourceClass, endsRules, type Refusal } from "./reference-rules";
 import { findTypedEnds } from "./typed-ends";
 
@@ -82,7 +83,9 @@ export function checkReference(space: AddressSpace, source: NodeKey, type: NodeK
     return problem(refusal.code, data, { node: source });
   }
   if (space.hasEdge({ source, type, target })) return problem("operation.reference-exists", { source, type, target }, { node: source });
-  return undefined;
+  // Components and Properties of one node differ in name (§4.6.4, §5.6.3); what is organised may be called alike.
+  const isMember = getReferenceTypes(space, R.Aggregates).has(type);
+  return isMember ? checkSiblingName(space, source, to.browseName, target) : undefined;
 }
 
 function findRefusal(space: AddressSpace, source: Node, type: Node, target: Node): Refusal | undefined {
@@ -93,7 +96,9 @@ function findRefusal(space: AddressSpace, source: Node, type: Node, target: Node
     checkSourceClass(space, source, hierarchical, type.key) ??
     checkRules(space, source, type.key, target) ??
     checkCounts(space, source, type.key, target) ??
-    (hierarchical ? checkLoop(space, source.key, type.key, target.key) : undefined)
+    checkParallel(space, source.key, type.key, target.key) ??
+    (hierarchical ? checkLoop(space, source.key, type.key, target.key) : undefined) ??
+    (hierarchical && type.key !== R.HasSubtype ? checkDeclaringType(space, source, target) : undefined)
   );
 }
 
@@ -123,6 +128,14 @@ function checkCounts(space: AddressSpace, source: Node, type: NodeKey, target: N
   return undefined;
 }
 
+/** A reference and one of a subtype of it between the same two nodes say the same twice (§5.3.1, §7.2). */
+function checkParallel(space: AddressSpace, source: NodeKey, type: NodeKey, target: NodeKey): Refusal | undefined {
+  const says = (a: NodeKey, b: NodeKey): boolean => a !== b && isSubtypeOf(space, a, b);
+  const known = space.edgesTo(target).filter((e) => e.source === source);
+  const isRepeated = known.some((e) => says(e.type, type) || says(type, e.type));
+  return isRepeated ? { code: "reference.said-already", clause: "OPC 10000-3 §5.3.1" } : undefined;
+}
+
 /** No node reaches itself by HasChild and its subtypes (§7.5), none refers to itself hierarchically (§7.3). */
 function checkLoop(space: AddressSpace, source: NodeKey, type: NodeKey, target: NodeKey): Refusal | undefined {
   if (source === target) return { code: "reference.to-itself", clause: "OPC 10000-3 §7.3" };
@@ -130,13 +143,34 @@ function checkLoop(space: AddressSpace, source: NodeKey, type: NodeKey, target: 
   return isBelow(space, target, source) ? { code: "reference.loop", clause: "OPC 10000-3 §7.5" } : undefined;
 }
 
-/** Whether `key` can be reached from `top` by HasChild and its subtypes. */
-export function isBelow(space: AddressSpace, top: NodeKey, key: NodeKey): boolean {
-  const seen = new Set<NodeKey>([top]);
+/** An instance declaration stands in one type (§6.2.1): another type gets a declaration of its own. */
+function checkDeclaringType(space: AddressSpace, source: Node, target: Node): Refusal | undefined {
+  if (findModellingRule(space, target.key) === undefined) return undefined;
+  const types = listDeclaringTypes(space, source.key);
+  const others = listDeclaringTypes(space, target.key);
+  const isForeign = types.size > 0 && others.size > 0 && [...types].every((type) => !others.has(type));
+  return isForeign ? { code: "reference.declaration-of-other-type", clause: "OPC 10000-3 §6.2.1" } : undefined;
+}
+
+/** The Object- and VariableTypes that a node stands in, itself included. */
+function listDeclaringTypes(space: AddressSpace, key: NodeKey): Set<NodeKey> {
+  const types = new Set<NodeKey>();
+  const seen = new Set<NodeKey>([key]);
   for (const at of seen) {
-    for (const edge of listEdgesFrom(space, at, R.HasChild)) {
-      if (edge.target === key) return true;
-      if (space.isOwn(edge.target)) seen.add(edge.target);
+    const nodeClass = space.getNode(at)?.nodeClass;
+    if (nodeClass === "ObjectType" || nodeClass === "VariableType") types.add(at);
+    else for (const edge of listEdgesTo(space, at, R.HierarchicalReferences)) seen.add(edge.source);
+  }
+  return types;
+}
+
+/** Whether `key` can be reached from `top` by HasChild and its subtypes. Asked upwards, since a node has few parents. */
+export function isBelow(space: AddressSpace, top: NodeKey, key: NodeKey): boolean {
+  const seen = new Set<NodeKey>([key]);
+  for (const at of seen) {
+    for (const { source } of listEdgesTo(space, at, R.HasChild)) {
+      if (source === top) return true;
+      seen.add(source);
     }
   }
   return false;

@@ -1,7 +1,7 @@
 /** Rules for names that the user types (OPC 10000-3 §8.3: at most 512 characters; §4.6.4, §5.5.2: siblings differ). */
 import type { AddressSpace } from "../address-space/address-space";
 import { listChildren } from "../address-space/browse";
-import type { Node } from "../address-space/node";
+import { isTypeNode } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import { isSameQualifiedName, type QualifiedName } from "../address-space/qualified-name";
 import { problem, type Problem } from "../core/result";
@@ -31,15 +31,10 @@ export function checkSiblingName(
   return holder && problem("name.taken", { name: browseName.name }, { node: holder.key });
 }
 
-/** Problem `name.taken` when another type of the class in the own model has the BrowseName (§5.5.2: unique as class names). */
-export function checkTypeName(
-  space: AddressSpace,
-  nodeClass: Node["nodeClass"],
-  browseName: QualifiedName,
-  except?: NodeKey,
-): Problem | undefined {
+/** Problem `name.taken` when another own type of any class has the BrowseName (§5.2.4, §5.3.2). */
+export function checkTypeName(space: AddressSpace, browseName: QualifiedName, except?: NodeKey): Problem | undefined {
   for (const node of space.own.nodes.values()) {
-    if (node.nodeClass !== nodeClass || node.key === except || !isSameQualifiedName(node.browseName, browseName)) continue;
+    if (!isTypeNode(node) || node.key === except || !isSameQualifiedName(node.browseName, browseName)) continue;
     return problem("name.taken", { name: browseName.name }, { node: node.key });
   }
   return undefined;

@@ -7,7 +7,7 @@ import { findModellingRule, findTypeDefinition } from "../address-space/browse";
 import { isTypeNode, type DeclaredReference, type Node } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import { StandardModellingRule, StandardReferenceType, StandardType } from "../address-space/standard-ids";
-import { isHierarchical, isSubtypeOf, listSupertypes } from "../address-space/type-hierarchy";
+import { getReferenceTypes, isHierarchical, isSubtypeOf, listSupertypes } from "../address-space/type-hierarchy";
 import { problem, type Problem } from "../core/result";
 import { checkSourceClass, endsRules } from "./reference-rules";
 
@@ -28,6 +28,15 @@ export type Placement =
 export function isDeclarationParent(space: AddressSpace, parent: Node): boolean {
   if (parent.nodeClass === "ObjectType" || parent.nodeClass === "VariableType") return true;
   return findModellingRule(space, parent.key) !== undefined;
+}
+
+/** Variables and Methods hang on an owner by HasComponent or HasProperty (OPC 10000-3 §5.6.3, §5.6.4, §5.7.1). */
+export function needsOwner(node: Node): boolean {
+  return node.nodeClass === "Variable" || node.nodeClass === "Method";
+}
+
+export function isOwning(space: AddressSpace, referenceType: NodeKey): boolean {
+  return getReferenceTypes(space, R.Aggregates).has(referenceType);
 }
 
 /** What the user may wish for; `rule: "none"` means no rule although the parent is a type. */

@@ -3,11 +3,11 @@
  * by subtypes of the reference type (§5.3.3.3), so the rules along the chain of supertypes all hold.
  */
 import type { AddressSpace } from "../address-space/address-space";
-import { findTypeDefinition, listEdgesFrom, listEdgesTo } from "../address-space/browse";
+import { findProperty, findTypeDefinition, listEdgesFrom, listEdgesTo } from "../address-space/browse";
 import type { Node, NodeClass } from "../address-space/node";
 import { standardKey, type NodeKey } from "../address-space/node-id";
 import { StandardReferenceType, StandardType } from "../address-space/standard-ids";
-import { isSubtypeOf } from "../address-space/type-hierarchy";
+import { isSubtypeOf, listSupertypes } from "../address-space/type-hierarchy";
 
 /** Why two nodes may not be joined this way: a code with a text in problem-texts.ts, and the clause. */
 export type Refusal = { readonly code: string; readonly clause: string };
@@ -74,7 +74,12 @@ function checkEncoding(space: AddressSpace, source: Node, target: Node): Refusal
   const isEncoding =
     target.nodeClass === "Object" &&
     isSubtypeOf(space, findTypeDefinition(space, target.key) ?? target.key, StandardType.DataTypeEncodingType);
-  return isStructure && isEncoding ? undefined : refuse("reference.encoding-ends", "OPC 10000-3 §7.14");
+  if (!isStructure || !isEncoding) return refuse("reference.encoding-ends", "OPC 10000-3 §7.14");
+  // An encoding Object belongs to one DataType, which has one of each name (§5.8.4).
+  const isTaken = space.edgesTo(target.key).some((e) => e.type === R.HasEncoding);
+  const encodings = space.edgesFrom(source.key).filter((e) => e.type === R.HasEncoding);
+  const hasName = encodings.some((e) => space.getNode(e.target)?.browseName.name === target.browseName.name);
+  return isTaken || hasName ? refuse("reference.encoding-taken", "OPC 10000-3 §5.8.4") : undefined;
 }
 
 function checkGeneratesEvent(space: AddressSpace, source: Node, target: Node): Refusal | undefined {
@@ -99,9 +104,12 @@ function checkInterface(space: AddressSpace, source: Node, target: Node): Refusa
   return fits ? undefined : refuse("reference.interface-ends", "OPC 10000-3 §7.19");
 }
 
-function checkAddIn(_space: AddressSpace, source: Node, target: Node): Refusal | undefined {
-  const fits = isOneOf(source, OBJECTS) && target.nodeClass === "Object";
-  return fits ? undefined : refuse("reference.add-in-ends", "OPC 10000-3 §7.20");
+function checkAddIn(space: AddressSpace, source: Node, target: Node): Refusal | undefined {
+  if (!isOneOf(source, OBJECTS) || target.nodeClass !== "Object") return refuse("reference.add-in-ends", "OPC 10000-3 §7.20");
+  const type = findTypeDefinition(space, target.key);
+  const chain = type === undefined ? [] : [type, ...listSupertypes(space, type)];
+  const hasDefaultName = chain.some((key) => findProperty(space, key, "DefaultInstanceBrowseName") !== undefined);
+  return hasDefaultName ? undefined : refuse("reference.add-in-type", "OPC 10000-3 §4.10.3");
 }
 
 function checkOrganizes(_space: AddressSpace, source: Node, _target: Node): Refusal | undefined {

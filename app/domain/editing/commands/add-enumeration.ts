@@ -9,12 +9,13 @@ import type { DataTypeField, DataTypeNode } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
 import { qualifiedName, type LocalizedText } from "../../address-space/qualified-name";
 import { StandardDataType } from "../../address-space/standard-ids";
-import { isSubtypeOf } from "../../address-space/type-hierarchy";
+import { findSupertype, isSubtypeOf } from "../../address-space/type-hierarchy";
 import { problem, type Result } from "../../core/result";
 import { SpaceDataTypes } from "../../nodeset/values/data-type-shapes";
 import { makeEnumValues, makeTexts } from "../../nodeset/values/standard-values";
 import { writeValue } from "../../nodeset/values/write-value";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
+import { checkInheritedFields } from "../inherited-fields";
 import { addTypeTo } from "./add-type";
 import { addStandardProperty, removeProperty } from "./set-unit";
 
@@ -33,10 +34,10 @@ export type AddEnumerationIntent = {
   readonly supertype?: NodeKey;
 };
 
-/** Problems: `name.*`, `enumeration.no-fields`, `enumeration.name-taken`, `enumeration.value-taken`, `enumeration.value-range`. */
+/** Problems: `name.*`, `enumeration.no-fields`, `enumeration.name-taken`, `enumeration.value-taken`, `enumeration.value-range`, `enumeration.extends`. */
 export function addEnumeration(space: AddressSpace, context: CommandContext, intent: AddEnumerationIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
-  checkFields(draft, intent.fields);
+  checkFields(draft, intent.fields, intent.supertype);
   if (draft.hasFailed) return draft.finish();
   const name = qualifiedName(draft.ownNamespace, intent.name);
   const definition = { name, fields: intent.fields.map(toField) };
@@ -55,7 +56,7 @@ export function setEnumerationFields(space: AddressSpace, context: CommandContex
     draft.fail(problem("enumeration.no-enumeration", { node: intent.dataType }));
     return draft.finish();
   }
-  checkFields(draft, intent.fields);
+  checkFields(draft, intent.fields, findSupertype(space, node.key));
   draft.set(node.key, "definition", { ...getDefinition(node), fields: intent.fields.map(toField) });
   setFieldsProperty(draft, node.key, intent.fields);
   return draft.finish();
@@ -65,7 +66,7 @@ function getDefinition(node: DataTypeNode): NonNullable<DataTypeNode["definition
   return node.definition ?? { name: node.browseName, fields: [] };
 }
 
-function checkFields(draft: EditDraft, fields: readonly EnumerationField[]): void {
+function checkFields(draft: EditDraft, fields: readonly EnumerationField[], supertype: NodeKey | undefined): void {
   if (fields.length === 0) draft.fail(problem("enumeration.no-fields"));
   const names = new Set<string>();
   const values = new Set<number>();
@@ -77,6 +78,8 @@ function checkFields(draft: EditDraft, fields: readonly EnumerationField[]): voi
     names.add(name);
     values.add(value);
   }
+  const extended = supertype === undefined ? undefined : checkInheritedFields(draft.space, supertype, fields);
+  if (extended) draft.fail(extended);
 }
 
 function toField({ name, value, displayName, description }: EnumerationField): DataTypeField {

@@ -8,10 +8,11 @@ import type { DataTypeField, DataTypeNode } from "../../address-space/node";
 import { OPC_UA_NAMESPACE, standardKey, type NodeKey } from "../../address-space/node-id";
 import { qualifiedName, type LocalizedText } from "../../address-space/qualified-name";
 import { StandardDataType, StandardReferenceType, StandardType } from "../../address-space/standard-ids";
-import { isSubtypeOf } from "../../address-space/type-hierarchy";
+import { findSupertype, isSubtypeOf } from "../../address-space/type-hierarchy";
 import { problem, type Result } from "../../core/result";
 import { makeTexts } from "../../nodeset/values/standard-values";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
+import { checkInheritedFields } from "../inherited-fields";
 import { setListProperty } from "./add-enumeration";
 import { addTypeTo } from "./add-type";
 import { toDimensionsText } from "./set-value-rank";
@@ -45,7 +46,7 @@ export function addStructure(space: AddressSpace, context: CommandContext, inten
   const draft = new EditDraft(space, context);
   const isUnion = intent.isUnion ?? false;
   const supertype = intent.supertype ?? (isUnion ? StandardDataType.Union : StandardDataType.Structure);
-  checkFields(draft, intent.fields, isUnion);
+  checkFields(draft, intent.fields, isUnion, supertype);
   if (!isSubtypeOf(space, supertype, StandardDataType.Structure)) draft.fail(problem("structure.supertype", { node: supertype }));
   if (draft.hasFailed) return draft.finish();
   const name = qualifiedName(draft.ownNamespace, intent.name);
@@ -77,13 +78,18 @@ export function setStructureFields(space: AddressSpace, context: CommandContext,
     draft.fail(problem("structure.no-structure", { node: intent.dataType }));
     return draft.finish();
   }
-  checkFields(draft, intent.fields, node.definition?.isUnion ?? false);
+  checkFields(draft, intent.fields, node.definition?.isUnion ?? false, findSupertype(space, node.key));
   const fields = intent.fields.map((f) => toField(space, f));
   draft.set(node.key, "definition", { ...(node.definition ?? { name: node.browseName }), fields });
   return draft.finish();
 }
 
-function checkFields(draft: EditDraft, fields: readonly StructureFieldIntent[], isUnion: boolean): void {
+function checkFields(
+  draft: EditDraft,
+  fields: readonly StructureFieldIntent[],
+  isUnion: boolean,
+  supertype: NodeKey | undefined,
+): void {
   const names = new Set<string>();
   for (const { name, dataType, isOptional, valueRank } of fields) {
     if (name.trim() === "") draft.fail(problem("name.empty"));
@@ -93,6 +99,8 @@ function checkFields(draft: EditDraft, fields: readonly StructureFieldIntent[], 
     if (isUnion && isOptional) draft.fail(problem("structure.optional-in-union", { name }));
     if (valueRank !== undefined && valueRank !== -1 && valueRank < 1) draft.fail(problem("structure.rank", { name, valueRank }));
   }
+  const repeated = supertype === undefined ? undefined : checkInheritedFields(draft.space, supertype, fields);
+  if (repeated) draft.fail(repeated);
 }
 
 /** Abstract types that a field may name without AllowSubTypes (OPC 10000-6 §F.13). */

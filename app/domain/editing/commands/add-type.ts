@@ -44,7 +44,7 @@ export function addTypeTo(
   const found =
     checkName(intent.name) ??
     (supertype && isTypeNode(supertype) ? undefined : problem("type.no-supertype", { node: intent.supertype })) ??
-    (supertype && checkTypeName(draft.space, supertype.nodeClass, browseName)) ??
+    checkTypeName(draft.space, browseName) ??
     (supertype && checkInverseName(supertype, intent));
   if (found || !supertype) {
     if (found) draft.fail(found);

@@ -8,6 +8,7 @@ import { isHierarchical } from "../../address-space/type-hierarchy";
 import { problem, type Result } from "../../core/result";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
 import { checkReference } from "../lawful-references";
+import { isOwning, needsOwner } from "../placement";
 
 export type ConnectNodesIntent = { readonly source: NodeKey; readonly type: NodeKey; readonly target: NodeKey };
 
@@ -36,7 +37,7 @@ function connect(draft: EditDraft, edge: Edge): void {
   if (isFirstOwner) draft.set(child.key, "parent", edge.source);
 }
 
-/** Problems: `disconnect.last-parent` (delete the node instead), `disconnect.required`, `operation.*`. */
+/** Problems: `disconnect.last-parent`, `disconnect.last-owner` (move or delete instead), `disconnect.required`, `operation.*`. */
 export function disconnectNodes(space: AddressSpace, context: CommandContext, intent: ConnectNodesIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
   const { source, type, target } = intent;
@@ -48,7 +49,10 @@ export function disconnectNodes(space: AddressSpace, context: CommandContext, in
   if (child && isHierarchical(space, type)) {
     const others = listEdgesTo(space, target, R.HierarchicalReferences).filter((e) => e.source !== source || e.type !== type);
     if (others.length === 0) draft.fail(problem("disconnect.last-parent", { name: child.browseName.name }, { node: target }));
-    else if (!isTypeNode(child) && child.parent === source && space.isOwn(target) && others.every((e) => e.source !== source)) {
+    else if (needsOwner(child) && !others.some((e) => isOwning(space, e.type))) {
+      draft.fail(problem("disconnect.last-owner", { name: child.browseName.name }, { node: target }));
+    }
+    if (!isTypeNode(child) && child.parent === source && space.isOwn(target) && others.every((e) => e.source !== source)) {
       draft.set(target, "parent", others[0]?.source);
     }
   }

@@ -6,18 +6,21 @@ import type { AddressSpace, Edge } from "../../address-space/address-space";
 import { findModellingRule, findParent, findTypeDefinition, listEdgesTo } from "../../address-space/browse";
 import { isTypeNode, type Node } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
-import { StandardModellingRule, StandardReferenceType } from "../../address-space/standard-ids";
+import { StandardDataType, StandardModellingRule, StandardReferenceType } from "../../address-space/standard-ids";
+import { isSubtypeOf } from "../../address-space/type-hierarchy";
+import { SpaceDataTypes } from "../../nodeset/values/data-type-shapes";
 import { problem, type Problem, type Result } from "../../core/result";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
+import { checkInheritedFields } from "../inherited-fields";
 import { checkReference, isBelow } from "../lawful-references";
 import { checkSiblingName } from "../names";
-import { isDeclarationParent, placeChild } from "../placement";
+import { isDeclarationParent, isOwning, needsOwner, placeChild } from "../placement";
 
 const R = StandardReferenceType;
 
 export type MoveNodeIntent = { readonly node: NodeKey; readonly parent: NodeKey; readonly referenceType?: NodeKey };
 
-/** Problems: `move.below-itself`, `name.taken`, `reference.*`, `operation.node-missing`, `operation.node-foreign`. */
+/** Problems: `move.below-itself`, `move.no-owner`, `move.other-kind`, `name.taken`, `reference.*`, `operation.node-missing`, `operation.node-foreign`. */
 export function moveNode(space: AddressSpace, context: CommandContext, intent: MoveNodeIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
   const node = space.getNode(intent.node);
@@ -38,7 +41,10 @@ function move(draft: EditDraft, node: Node, parent: Node, wished: NodeKey | unde
   const old = listOldEdges(space, node);
   for (const edge of old) draft.removeReference(edge);
   const type = chooseType(draft.space, node, parent, wished ?? old[0]?.type);
-  const refused = checkReference(draft.space, parent.key, type, node.key);
+  const isLoose = needsOwner(node) && !isOwning(space, type);
+  const refused = isLoose
+    ? problem("move.no-owner", { name: node.browseName.name, parent: parent.browseName.name }, { node: node.key })
+    : checkReference(draft.space, parent.key, type, node.key);
   if (refused) {
     draft.fail(refused);
     return;
@@ -55,7 +61,16 @@ function checkTarget(space: AddressSpace, node: Node, parent: Node): Problem | u
   if (node.key === parent.key || isBelow(space, node.key, parent.key)) {
     return problem("move.below-itself", { name: node.browseName.name }, { node: node.key });
   }
-  return isTypeNode(node) ? undefined : checkSiblingName(space, parent.key, node.browseName, node.key);
+  if (!isTypeNode(node)) return checkSiblingName(space, parent.key, node.browseName, node.key);
+  const isOtherKind = node.nodeClass === "DataType" && getDataTypeKind(space, node.key) !== getDataTypeKind(space, parent.key);
+  if (isOtherKind) return problem("move.other-kind", { name: node.browseName.name, parent: parent.browseName.name }, { node: node.key });
+  return node.nodeClass === "DataType" ? checkInheritedFields(space, parent.key, node.definition?.fields ?? []) : undefined;
+}
+
+/** What decides fields, encodings and Properties of a DataType: a structure does not become an enumeration by moving. */
+function getDataTypeKind(space: AddressSpace, dataType: NodeKey): NodeKey | string | undefined {
+  const kinds: readonly NodeKey[] = [StandardDataType.Enumeration, StandardDataType.Union, StandardDataType.Structure];
+  return kinds.find((kind) => isSubtypeOf(space, dataType, kind)) ?? new SpaceDataTypes(space).findBuiltInType(dataType);
 }
 
 /** The references to the present owner; others (a folder that organises the node too) stay. */

@@ -18,7 +18,10 @@ export type RenameNodeIntent = { readonly node: NodeKey; readonly name: string; 
 export function renameNode(space: AddressSpace, context: CommandContext, intent: RenameNodeIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
   const node = space.getNode(intent.node);
-  const browseName = qualifiedName(intent.namespaceUri ?? node?.browseName.namespaceUri ?? draft.ownNamespace, intent.name);
+  // A name that another namespace defines stays its own; a new name is one of this model.
+  const isSameName = node?.browseName.name === intent.name;
+  const namespaceUri = intent.namespaceUri ?? (isSameName ? node.browseName.namespaceUri : draft.ownNamespace);
+  const browseName = qualifiedName(namespaceUri, intent.name);
   const found = node
     ? (checkName(intent.name) ?? checkTaken(space, node, browseName))
     : problem("operation.node-missing", { node: intent.node }, { node: intent.node });
@@ -28,7 +31,7 @@ export function renameNode(space: AddressSpace, context: CommandContext, intent:
 }
 
 function checkTaken(space: AddressSpace, node: Node, browseName: Node["browseName"]): ReturnType<typeof checkName> {
-  if (isTypeNode(node)) return checkTypeName(space, node.nodeClass, browseName, node.key);
+  if (isTypeNode(node)) return checkTypeName(space, browseName, node.key);
   const parent = findParent(space, node.key);
   return parent === undefined ? undefined : checkSiblingName(space, parent, browseName, node.key);
 }
