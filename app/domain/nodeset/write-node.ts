@@ -2,7 +2,7 @@
 import type { DataTypeDefinition, DataTypeField, DeclaredReference, Node, RolePermission } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import type { LocalizedText } from "../address-space/qualified-name";
-import { DEFINITION_ATTRIBUTES, FIELD_ATTRIBUTES, NODE_ATTRIBUTES, type AttributeTable } from "./attribute-tables";
+import { DEFINITION_ATTRIBUTES, FIELD_ATTRIBUTES, NODE_ATTRIBUTES, type AttributeTable, type AttributeType } from "./attribute-tables";
 import type { IdWriter } from "./id-writer";
 import { writeAround, writeWholeElement, type Declared } from "./write-fragments";
 import { escapeAttribute, escapeText } from "./xml/escape";
@@ -13,6 +13,8 @@ export type WriteContext = {
   readonly prefix: string;
   /** What the root declares. */
   readonly declared: Declared;
+  /** Starts of Reference elements that were written before, by reference type. */
+  readonly referenceHeads: { readonly forward: Map<NodeKey, string>; readonly inverse: Map<NodeKey, string> };
 };
 
 export function writeNode(node: Node, context: WriteContext): string {
@@ -36,11 +38,10 @@ export function writeAttributes(
 ): string {
   let out = "";
   const values = fields as Readonly<Record<string, unknown>>;
-  for (const spec of table.values()) {
-    const value = values[spec.field];
-    if (value === undefined) continue;
-    out += ` ${spec.name}="${escapeAttribute(formatAttribute(value, spec.type, spec.name, ids))}"`;
-  }
+  table.forEach(({ name, field, type }) => {
+    const value = values[field];
+    if (value !== undefined) out += ` ${name}="${formatAttribute(value, type, name, ids)}"`;
+  });
   if (!others) return out;
   for (const [name, value] of Object.entries(others)) {
     const spec = table.get(name);
@@ -50,9 +51,11 @@ export function writeAttributes(
   return out;
 }
 
-function formatAttribute(value: unknown, type: string, name: string, ids: IdWriter): string {
-  if (type !== "nodeId") return String(value);
-  return name === "DataType" ? ids.formatType(value as NodeKey) : ids.formatKey(value as NodeKey);
+function formatAttribute(value: unknown, type: AttributeType, name: string, ids: IdWriter): string {
+  if (type === "nodeId") {
+    return escapeAttribute(name === "DataType" ? ids.formatType(value as NodeKey) : ids.formatKey(value as NodeKey));
+  }
+  return typeof value === "string" ? escapeAttribute(value) : String(value);
 }
 
 function writeCommon(node: Node, context: WriteContext, declared: Declared): string {
@@ -76,11 +79,19 @@ function writeCommon(node: Node, context: WriteContext, declared: Declared): str
   return out;
 }
 
-function writeReference(reference: DeclaredReference, { ids, prefix }: WriteContext): string {
-  let head = `      <${prefix}Reference ReferenceType="${escapeAttribute(ids.formatType(reference.type))}"`;
-  if (!reference.isForward) head += ' IsForward="false"';
-  for (const [name, value] of Object.entries(reference.otherAttributes ?? {})) head += ` ${name}="${escapeAttribute(value)}"`;
-  return `${head}>${escapeText(ids.formatTarget(reference.target, reference.serverUri))}</${prefix}Reference>\n`;
+function writeReference(reference: DeclaredReference, context: WriteContext): string {
+  const { ids, prefix, referenceHeads } = context;
+  const { type, target, isForward, serverUri, otherAttributes } = reference;
+  // A model has few reference types and tens of thousands of references.
+  let head = (isForward ? referenceHeads.forward : referenceHeads.inverse).get(type);
+  if (head === undefined) {
+    head = `      <${prefix}Reference ReferenceType="${escapeAttribute(ids.formatType(type))}"${isForward ? "" : ' IsForward="false"'}`;
+    (isForward ? referenceHeads.forward : referenceHeads.inverse).set(type, head);
+  }
+  if (otherAttributes) {
+    for (const [name, value] of Object.entries(otherAttributes)) head += ` ${name}="${escapeAttribute(value)}"`;
+  }
+  return `${head}>${escapeText(ids.formatTarget(target, serverUri))}</${prefix}Reference>\n`;
 }
 
 export function writeRolePermissions(

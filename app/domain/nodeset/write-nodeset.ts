@@ -35,7 +35,12 @@ export function writeNodeSet(
   const nodes = options.canonicalOrder ? toCanonicalOrder(content.nodes) : inModelOrder(content.nodes);
   const ids = new IdWriter(header, nodes, options.findNodeId ?? (() => undefined));
   const root = makeRoot(header);
-  const context: WriteContext = { ids, prefix: root.prefix, declared: root.declared };
+  const context: WriteContext = {
+    ids,
+    prefix: root.prefix,
+    declared: root.declared,
+    referenceHeads: { forward: new Map(), inverse: new Map() },
+  };
   // Nodes before the head: they decide which namespaces and aliases the head must list.
   const parts = nodes.map((node) => writeNode(node, context));
   const head = writeHead(header, root, context);
