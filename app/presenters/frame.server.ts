@@ -14,7 +14,7 @@ export type FrameData = {
   readonly organizations: readonly { readonly id: string; readonly name: string }[];
   /** For the command palette. */
   readonly models: readonly { readonly id: string; readonly name: string; readonly kind: ModelKind }[];
-  readonly testServers: readonly { readonly id: string; readonly state: string }[];
+  readonly testServers: readonly { readonly id: string; readonly state: string; readonly modelId: string }[];
 };
 
 export async function readFrame(request: Request, caller: Caller): Promise<FrameData> {
@@ -27,6 +27,6 @@ export async function readFrame(request: Request, caller: Caller): Promise<Frame
     organization: { id: membership.organizationId, name: membership.organizationName },
     organizations: caller.memberships.map((m) => ({ id: m.organizationId, name: m.organizationName })),
     models: models.map(({ id, name, kind }) => ({ id, name, kind })),
-    testServers: listTestServers(membership.organizationId).map(({ id, state }) => ({ id, state })),
+    testServers: listTestServers(membership.organizationId).map(({ id, state, modelId }) => ({ id, state, modelId })),
   };
 }

@@ -1,4 +1,4 @@
-import { Outlet, redirect, useMatches, type ShouldRevalidateFunctionArgs } from "react-router";
+import { Outlet, redirect, useMatches, useRouteLoaderData, type ShouldRevalidateFunctionArgs } from "react-router";
 import type { Route } from "./+types/models.$modelId";
 import { requireModelForPage } from "~/auth/require-model.server";
 import { FindingCounts } from "~/components/model/finding-counts";
@@ -6,7 +6,7 @@ import { ModelStoreProvider } from "~/components/model/model-store-provider";
 import { ModelTools } from "~/components/model/model-tools";
 import { ModelBar, TestServerLink } from "~/components/models/model-bar";
 import { ModelFoot } from "~/components/models/model-foot";
-import { listTestServers } from "~/presenters/list-test-servers.server";
+import type { FrameData } from "~/presenters/frame.server";
 import { presentWorkspace } from "~/presenters/model-workspace.server";
 import { loadWorkingModel } from "~/services/working-model.server";
 import { failWith } from "~/utils/problem-response.server";
@@ -17,13 +17,12 @@ export async function loader({ request, params }: Route.LoaderArgs) {
     throw redirect(`/models/${model.id}/sheet`);
   const working = await loadWorkingModel(model.id);
   if (!working) throw failWith(404, "request.not-found");
-  const isServed = listTestServers(model.organizationId, model.id).some((server) => server.state === "running");
-  return { ...(await presentWorkspace(caller, working)), isServed };
+  return presentWorkspace(caller, working);
 }
 
-/** The pages inside keep their own state; only a form or another model asks for the workspace anew. */
-export function shouldRevalidate({ formMethod, currentParams, nextParams }: ShouldRevalidateFunctionArgs) {
-  return (formMethod !== undefined && formMethod !== "GET") || currentParams.modelId !== nextParams.modelId;
+/** The open model lives on between pages; only its About page changes what it was opened with. */
+export function shouldRevalidate({ formAction, currentParams, nextParams }: ShouldRevalidateFunctionArgs) {
+  return formAction === `/models/${currentParams.modelId ?? ""}/about` || currentParams.modelId !== nextParams.modelId;
 }
 
 /** A page whose drawing carries the title block itself says so: `export const handle = { drawsTitleBlock: true }`. */
@@ -33,8 +32,11 @@ function useDrawsTitleBlock(): boolean {
   );
 }
 
+const noServers: FrameData["testServers"] = [];
+
 export default function Model({ loaderData }: Route.ComponentProps) {
-  const { model, permissions, isServed } = loaderData;
+  const { model, permissions } = loaderData;
+  const frame = useRouteLoaderData<FrameData>("routes/frame");
   const drawsTitleBlock = useDrawsTitleBlock();
   const base = `/models/${model.id}`;
   return (
@@ -43,7 +45,13 @@ export default function Model({ loaderData }: Route.ComponentProps) {
         model={model}
         mayEdit={permissions.includes("model.edit")}
         tools={<ModelTools />}
-        testServer={<TestServerLink modelId={model.id} isRunning={isServed} />}
+        testServer={
+          <TestServerLink
+            modelId={model.id}
+            organizationId={model.organizationId}
+            known={frame?.testServers ?? noServers}
+          />
+        }
         tabs={[
           { to: `${base}/sheet`, label: "Sheet" },
           { to: `${base}/register`, label: "Register" },

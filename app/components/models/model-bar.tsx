@@ -1,5 +1,6 @@
 import { ChevronDown, Download, Info, Play, Table2, Trash2 } from "lucide-react";
 import type { ReactNode } from "react";
+import { useRunningTestServers, type RunningServer } from "~/components/shell/use-running-test-servers";
 import { LinkButton } from "~/components/ui/button";
 import { Icon } from "~/components/ui/icon";
 import { LinkTabs, type LinkTab } from "~/components/ui/link-tabs";
@@ -71,7 +72,11 @@ export function ModelBar({ model, tabs, mayEdit, tools, testServer }: Props) {
   );
 }
 
-export function TestServerLink({ modelId, isRunning }: { modelId: string; isRunning: boolean }) {
+type TestServerLinkProps = { modelId: string; organizationId: string; known: readonly RunningServer[] };
+
+/** The way to the model's test server; a full disc while one runs. */
+export function TestServerLink({ modelId, organizationId, known }: TestServerLinkProps) {
+  const isRunning = useRunningTestServers(organizationId, known).some((server) => server.modelId === modelId);
   return (
     <LinkButton to={`/models/${modelId}/test-server`} icon={isRunning ? undefined : Play}>
       {isRunning ? <RunningMark /> : null}

@@ -134,7 +134,7 @@ function FindButton({ onFind }: { onFind: () => void }) {
 }
 
 function TestServers({ frame }: { frame: FrameData }) {
-  const count = useRunningTestServers(frame.organization.id, frame.testServers);
+  const count = useRunningTestServers(frame.organization.id, frame.testServers).length;
   if (count === 0) return null;
   return (
     <Link to="/live" className="flex items-center gap-[5px] text-small whitespace-nowrap text-ink-2 hover:text-ink">
