@@ -34,21 +34,63 @@ const BASE = ["kg", "m", "s", "A", "K", "mol", "cd", "rad", "sr", "Np", "bit"];
 const base = (powers, factor = 1) => ({ factor, powers });
 /** Units that occur in factors, in base units (SI brochure, 9th edition, tables 4 and 8). */
 const KNOWN = {
-  kg: base({ kg: 1 }), m: base({ m: 1 }), s: base({ s: 1 }), A: base({ A: 1 }), K: base({ K: 1 }), mol: base({ mol: 1 }), cd: base({ cd: 1 }),
-  rad: base({ rad: 1 }), sr: base({ sr: 1 }), Np: base({ Np: 1 }), bit: base({ bit: 1 }),
-  Hz: base({ s: -1 }), N: base({ kg: 1, m: 1, s: -2 }), Pa: base({ kg: 1, m: -1, s: -2 }), J: base({ kg: 1, m: 2, s: -2 }),
-  W: base({ kg: 1, m: 2, s: -3 }), C: base({ A: 1, s: 1 }), V: base({ kg: 1, m: 2, s: -3, A: -1 }), F: base({ kg: -1, m: -2, s: 4, A: 2 }),
-  "Ω": base({ kg: 1, m: 2, s: -3, A: -2 }), S: base({ kg: -1, m: -2, s: 3, A: 2 }), Wb: base({ kg: 1, m: 2, s: -2, A: -1 }),
-  T: base({ kg: 1, s: -2, A: -1 }), H: base({ kg: 1, m: 2, s: -2, A: -2 }), lm: base({ cd: 1, sr: 1 }), lx: base({ cd: 1, sr: 1, m: -2 }),
-  Bq: base({ s: -1 }), Gy: base({ m: 2, s: -2 }), Sv: base({ m: 2, s: -2 }), kat: base({ mol: 1, s: -1 }),
-  h: base({ s: 1 }, 3600), l: base({ m: 3 }, 1e-3), g: base({ kg: 1 }, 1e-3), eV: base({ kg: 1, m: 2, s: -2 }, 1.602176634e-19),
+  kg: base({ kg: 1 }),
+  m: base({ m: 1 }),
+  s: base({ s: 1 }),
+  A: base({ A: 1 }),
+  K: base({ K: 1 }),
+  mol: base({ mol: 1 }),
+  cd: base({ cd: 1 }),
+  rad: base({ rad: 1 }),
+  sr: base({ sr: 1 }),
+  Np: base({ Np: 1 }),
+  bit: base({ bit: 1 }),
+  Hz: base({ s: -1 }),
+  N: base({ kg: 1, m: 1, s: -2 }),
+  Pa: base({ kg: 1, m: -1, s: -2 }),
+  J: base({ kg: 1, m: 2, s: -2 }),
+  W: base({ kg: 1, m: 2, s: -3 }),
+  C: base({ A: 1, s: 1 }),
+  V: base({ kg: 1, m: 2, s: -3, A: -1 }),
+  F: base({ kg: -1, m: -2, s: 4, A: 2 }),
+  Ω: base({ kg: 1, m: 2, s: -3, A: -2 }),
+  S: base({ kg: -1, m: -2, s: 3, A: 2 }),
+  Wb: base({ kg: 1, m: 2, s: -2, A: -1 }),
+  T: base({ kg: 1, s: -2, A: -1 }),
+  H: base({ kg: 1, m: 2, s: -2, A: -2 }),
+  lm: base({ cd: 1, sr: 1 }),
+  lx: base({ cd: 1, sr: 1, m: -2 }),
+  Bq: base({ s: -1 }),
+  Gy: base({ m: 2, s: -2 }),
+  Sv: base({ m: 2, s: -2 }),
+  kat: base({ mol: 1, s: -1 }),
+  h: base({ s: 1 }, 3600),
+  l: base({ m: 3 }, 1e-3),
+  g: base({ kg: 1 }, 1e-3),
+  eV: base({ kg: 1, m: 2, s: -2 }, 1.602176634e-19),
 };
-const SUPERSCRIPTS = { "⁰": 0, "¹": 1, "²": 2, "³": 3, "⁴": 4, "⁵": 5, "⁶": 6, "⁷": 7, "⁸": 8, "⁹": 9, "⁻": "-", "⁺": "" };
+const SUPERSCRIPTS = {
+  "⁰": 0,
+  "¹": 1,
+  "²": 2,
+  "³": 3,
+  "⁴": 4,
+  "⁵": 5,
+  "⁶": 6,
+  "⁷": 7,
+  "⁸": 8,
+  "⁹": 9,
+  "⁻": "-",
+  "⁺": "",
+};
 const toNumber = (text) => Number([...text].map((c) => SUPERSCRIPTS[c]).join(""));
 
 /** A recursive reader for `product := factor ((x | · | / | blank) factor)*`; throws a text where it meets something else. */
 function parseFactor(source) {
-  let rest = source.normalize("NFC").replace(/\u00a0/g, " ").trim();
+  let rest = source
+    .normalize("NFC")
+    .replace(/\u00a0/g, " ")
+    .trim();
   const take = (pattern) => {
     const match = pattern.exec(rest);
     if (!match) return undefined;
@@ -59,7 +101,10 @@ function parseFactor(source) {
     factor: a.factor * b.factor ** sign,
     powers: Object.fromEntries(BASE.map((u) => [u, (a.powers[u] ?? 0) + sign * (b.powers[u] ?? 0)])),
   });
-  const raise = (a, n) => ({ factor: a.factor ** n, powers: Object.fromEntries(BASE.map((u) => [u, (a.powers[u] ?? 0) * n])) });
+  const raise = (a, n) => ({
+    factor: a.factor ** n,
+    powers: Object.fromEntries(BASE.map((u) => [u, (a.powers[u] ?? 0) * n])),
+  });
   const exponent = () => {
     const match = take(/^[⁰¹²³⁴⁵⁶⁷⁸⁹⁻⁺]+/);
     return match ? toNumber(match[0]) : 1;
@@ -93,12 +138,18 @@ function parseFactor(source) {
   return value;
 }
 
-const units = readCsv(unitsFile).slice(1).map(([code, unitId, symbol, name]) => ({ code, unitId: Number(unitId), symbol, name }));
+const units = readCsv(unitsFile)
+  .slice(1)
+  .map(([code, unitId, symbol, name]) => ({ code, unitId: Number(unitId), symbol, name }));
 const quantities = new Map();
 const factors = new Map();
 for (const row of readCsv(annex1File).slice(1)) {
   const code = row[6].trim();
-  const phrases = row[3].toLowerCase().replace(/\([^)]*\)/g, "").split(",").map((p) => p.trim().replace(/\s+/g, " "));
+  const phrases = row[3]
+    .toLowerCase()
+    .replace(/\([^)]*\)/g, "")
+    .split(",")
+    .map((p) => p.trim().replace(/\s+/g, " "));
   quantities.set(code, [...(quantities.get(code) ?? []), ...phrases.filter((p) => p !== "")]);
   if (row[8].trim() !== "" && !factors.has(code)) factors.set(code, row[8]);
 }
@@ -116,10 +167,36 @@ const POUND = 0.45359237;
 const POUND_FORCE = POUND * 9.80665;
 const PERSECOND = "s-1";
 const EXACT = {
-  RPM: [1 / 60, PERSECOND], C94: [1 / 60, PERSECOND], M46: [Math.PI / 30], DD: [Math.PI / 180], KMH: [1 / 3.6], "2X": [1 / 60], H81: [1e-3 / 60],
-  FR: [FOOT / 60], L2: [1e-3 / 60], E32: [1e-3 / 3600], MQH: [1 / 3600], G53: [1 / 60], E93: [1 / 3600], F31: [1 / 60],
-  PS: [POUND_FORCE / 0.0254 ** 2], FOT: [FOOT], SMI: [1609.344], GLL: [3.785411784e-3], GLI: [4.54609e-3], ONZ: [POUND / 16], LBR: [POUND],
-  C78: [POUND_FORCE], KNT: [1852 / 3600], FAH: [5 / 9], A48: [5 / 9], P1: [1e-2, ""], NX: [1e-3, ""], 59: [1e-6, ""], 61: [1e-9, ""], C62: [1, ""],
+  RPM: [1 / 60, PERSECOND],
+  C94: [1 / 60, PERSECOND],
+  M46: [Math.PI / 30],
+  DD: [Math.PI / 180],
+  KMH: [1 / 3.6],
+  "2X": [1 / 60],
+  H81: [1e-3 / 60],
+  FR: [FOOT / 60],
+  L2: [1e-3 / 60],
+  E32: [1e-3 / 3600],
+  MQH: [1 / 3600],
+  G53: [1 / 60],
+  E93: [1 / 3600],
+  F31: [1 / 60],
+  PS: [POUND_FORCE / 0.0254 ** 2],
+  FOT: [FOOT],
+  SMI: [1609.344],
+  GLL: [3.785411784e-3],
+  GLI: [4.54609e-3],
+  ONZ: [POUND / 16],
+  LBR: [POUND],
+  C78: [POUND_FORCE],
+  KNT: [1852 / 3600],
+  FAH: [5 / 9],
+  A48: [5 / 9],
+  P1: [1e-2, ""],
+  NX: [1e-3, ""],
+  59: [1e-6, ""],
+  61: [1e-9, ""],
+  C62: [1, ""],
 };
 /** Quantities that Annex I leaves out, and those that must not be mixed up with others of their dimension. */
 const RATIO = ["ratio"];
@@ -127,7 +204,11 @@ const FLOW = ["volume flow rate"];
 const PHRASES = { E32: FLOW, G51: FLOW, P1: RATIO, NX: RATIO, 59: RATIO, 61: RATIO, C62: RATIO };
 
 /** What one means by two words, so that units that measure the same can be converted. */
-const SAME = new Map([["thermodynamic", "temperature"], ["fahrenheit temperature", "temperature"], ["rotational frequency", "frequency"]]);
+const SAME = new Map([
+  ["thermodynamic", "temperature"],
+  ["fahrenheit temperature", "temperature"],
+  ["rotational frequency", "frequency"],
+]);
 const unparsed = [];
 for (const unit of units) {
   unit.phrases = PHRASES[unit.code] ?? (quantities.get(unit.code) ?? []).map((p) => SAME.get(p) ?? p);
@@ -138,7 +219,11 @@ for (const unit of units) {
   try {
     const { factor, powers } = exact?.[1] !== undefined ? { powers: {} } : parseFactor(text);
     unit.factor = exact ? exact[0] : Number(factor.toPrecision(15));
-    unit.dimension = exact?.[1] ?? BASE.filter((u) => powers[u]).map((u) => u + (powers[u] === 1 ? "" : powers[u])).join(" ");
+    unit.dimension =
+      exact?.[1] ??
+      BASE.filter((u) => powers[u])
+        .map((u) => u + (powers[u] === 1 ? "" : powers[u]))
+        .join(" ");
   } catch {
     unparsed.push(`${unit.code} ${text}`);
   }
@@ -159,7 +244,8 @@ for (const unit of units) {
 }
 const counts = new Map();
 for (const unit of units) {
-  unit.group = unit.dimension === undefined || unit.phrases.length === 0 ? "" : find(`${unit.dimension}|${unit.phrases[0]}`);
+  unit.group =
+    unit.dimension === undefined || unit.phrases.length === 0 ? "" : find(`${unit.dimension}|${unit.phrases[0]}`);
   for (const phrase of new Set(unit.phrases)) {
     const key = `${unit.group}|${phrase}`;
     counts.set(key, (counts.get(key) ?? 0) + 1);
@@ -187,12 +273,18 @@ const file = `/**
  * A row: code|symbol|name|number of the quantity|factor to the coherent unit of that quantity (empty: not given).
  */
 
-export const QUANTITY_NAMES: readonly string[] = ${JSON.stringify(groups.map((g) => names.get(g).phrase), null, 2)};
+export const QUANTITY_NAMES: readonly string[] = ${JSON.stringify(
+  groups.map((g) => names.get(g).phrase),
+  null,
+  2,
+)};
 
 export const UNIT_ROWS = \`
 ${rows.join("\n").replace(/[\\`$]/g, "\\$&")}
 \`;
 `;
 writeFileSync(new URL("../domain/units/unit-table.ts", import.meta.url), file);
-console.error(`${units.length} units, ${rows.filter((r) => !r.endsWith("|")).length} with a factor, ${groups.length} quantities, ${unparsed.length} factors not parsed`);
+console.error(
+  `${units.length} units, ${rows.filter((r) => !r.endsWith("|")).length} with a factor, ${groups.length} quantities, ${unparsed.length} factors not parsed`,
+);
 if (process.env.VERBOSE) console.error(unparsed.join("\n"));

@@ -14,7 +14,16 @@ import type { AddressSpace } from "../domain/address-space/address-space";
 import { fail, ok, type Problem, type Result } from "../domain/core/result";
 import { BlockAllocator, type IdBlock, type NodeIdAllocator } from "../domain/editing/allocate-node-id";
 import { applyOperations } from "../domain/editing/apply-operation";
-import { EMPTY_HISTORY, forget, recordForeign, recordOwn, redo, undo, type History, type HistoryStep } from "../domain/editing/history";
+import {
+  EMPTY_HISTORY,
+  forget,
+  recordForeign,
+  recordOwn,
+  redo,
+  undo,
+  type History,
+  type HistoryStep,
+} from "../domain/editing/history";
 import { applyWithInverse, type Applied } from "../domain/editing/invert-operation";
 import type { Operation, Transaction } from "../domain/editing/operation";
 import { rebase, type RefusedEdit } from "../domain/editing/rebase";
@@ -99,7 +108,8 @@ export class EditorStore {
     this.#blocks = BlockAllocator.forModel(() => this.#shown, options.restored?.blocks ?? []);
     this.allocator = { allocate: (nodeClass) => this.#allocate(nodeClass) };
     this.#state = this.#makeState();
-    if (options.canEdit && options.restored && options.restored.pending.length > 0) this.#startRestoring(options.restored);
+    if (options.canEdit && options.restored && options.restored.pending.length > 0)
+      this.#startRestoring(options.restored);
     void this.#lease();
   }
 
@@ -250,7 +260,10 @@ export class EditorStore {
   #advance(transaction: Transaction): void {
     const applied = applyOperations(this.#confirmed, transaction.operations);
     // The server accepted it on the same state; if it cannot be applied here this window has gone wrong and must reload.
-    if (!applied.ok) throw new RangeError(`Transaction ${transaction.seq} does not fit: ${applied.problems.map((p) => p.code).join(", ")}`);
+    if (!applied.ok)
+      throw new RangeError(
+        `Transaction ${transaction.seq} does not fit: ${applied.problems.map((p) => p.code).join(", ")}`,
+      );
     this.#confirmed = applied.value;
     this.#seq = transaction.seq;
     if (transaction.clientId === this.clientId && this.#acknowledge(transaction.clientSeq, transaction.at)) return;
@@ -333,7 +346,17 @@ export class EditorStore {
         void this.catchUp();
         return;
       }
-      this.#advance({ seq, base: seq - 1, clientId: this.clientId, clientSeq, author: "", at, label: edit.label, operations: edit.operations, inverse: [] });
+      this.#advance({
+        seq,
+        base: seq - 1,
+        clientId: this.clientId,
+        clientSeq,
+        author: "",
+        at,
+        label: edit.label,
+        operations: edit.operations,
+        inverse: [],
+      });
     }
   }
 

@@ -3,7 +3,11 @@ import type { Problem } from "../domain/core/result";
 import type { IdBlock } from "../domain/editing/allocate-node-id";
 import type { Operation, Transaction } from "../domain/editing/operation";
 
-export type OutgoingTransaction = { readonly clientSeq: number; readonly label: string; readonly operations: readonly Operation[] };
+export type OutgoingTransaction = {
+  readonly clientSeq: number;
+  readonly label: string;
+  readonly operations: readonly Operation[];
+};
 export type AcceptedTransaction = { readonly clientSeq: number; readonly seq: number; readonly at: string };
 
 export type PostOutcome =

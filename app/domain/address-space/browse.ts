@@ -94,7 +94,7 @@ export function getDisplayName(node: Node, locale?: string): string {
 export function getPath(space: AddressSpace, key: NodeKey): string {
   const names: string[] = [];
   const seen = new Set<NodeKey>();
-  for (let at: NodeKey | undefined = key; at !== undefined && !seen.has(at); ) {
+  for (let at: NodeKey | undefined = key; at !== undefined && !seen.has(at);) {
     seen.add(at);
     const node = space.getNode(at);
     if (!node || (names.length > 0 && !space.isOwn(at) && space.isOwn(key))) break;

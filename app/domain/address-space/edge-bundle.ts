@@ -64,7 +64,7 @@ export class EdgeBundle {
     if (this.size === count) return undefined;
     const chunks = [...this.#chunks];
     let [index, offset] = this.#findPlace(node, rankOf);
-    for (let left = count; left > 0; ) {
+    for (let left = count; left > 0;) {
       const chunk = chunks[index] as Chunk;
       const taken = Math.min(left, chunk.edges.length - offset);
       left -= taken;

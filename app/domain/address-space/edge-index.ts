@@ -23,7 +23,9 @@ export function listDeclaredEdges(node: Node): Edge[] {
 export function buildEdgeIndex(nodes: ShardedMap<Node>, ranked: readonly Node[]): EdgeIndex {
   let declarers: Declarers | undefined;
   const makeSide = (end: "source" | "target"): ShardedMap<EdgeBundle> =>
-    ShardedMap.lazy<EdgeBundle, NodeKey>(() => new DeclaredEdges(end, nodes, ranked, (declarers ??= indexDeclarers(ranked))));
+    ShardedMap.lazy<EdgeBundle, NodeKey>(
+      () => new DeclaredEdges(end, nodes, ranked, (declarers ??= indexDeclarers(ranked))),
+    );
   return { outgoing: makeSide("source"), incoming: makeSide("target") };
 }
 
@@ -79,6 +81,11 @@ function addRun(
   rankOf: RankOf,
 ): EdgeBundle {
   const mayRepeat = key === node.key || edges.length > 1;
-  if (!bundle) return EdgeBundle.of(edges, edges.map(() => node.key), mayRepeat);
+  if (!bundle)
+    return EdgeBundle.of(
+      edges,
+      edges.map(() => node.key),
+      mayRepeat,
+    );
   return bundle.withRun(node, edges, rankOf, mayRepeat);
 }

@@ -71,7 +71,10 @@ export function listMemberSources(
 }
 
 /** The members that the sources declare, merged by BrowseName, in the order of declaration, nearest source first. */
-export function listMemberDeclarations(space: AddressSpace, sources: readonly DeclarationSource[]): MemberDeclaration[] {
+export function listMemberDeclarations(
+  space: AddressSpace,
+  sources: readonly DeclarationSource[],
+): MemberDeclaration[] {
   const byName = new Map<string, { first: MemberDeclaration; declared: DeclarationSource[] }>();
   const seenSources = new Set<NodeKey>();
   for (const source of sources) {
@@ -82,13 +85,19 @@ export function listMemberDeclarations(space: AddressSpace, sources: readonly De
       const known = byName.get(id);
       const declaration = { key: node.key, scope: source.scope };
       if (!known) byName.set(id, { first: makeMember(space, node, referenceTypes, rule), declared: [declaration] });
-      else if (known.first.node.nodeClass === node.nodeClass && !known.declared.some((d) => d.key === node.key)) known.declared.push(declaration);
+      else if (known.first.node.nodeClass === node.nodeClass && !known.declared.some((d) => d.key === node.key))
+        known.declared.push(declaration);
     }
   }
   return [...byName.values()].map(({ first, declared }) => ({ ...first, declared }));
 }
 
-function makeMember(space: AddressSpace, node: Node, referenceTypes: readonly NodeKey[], rule: NodeKey): MemberDeclaration {
+function makeMember(
+  space: AddressSpace,
+  node: Node,
+  referenceTypes: readonly NodeKey[],
+  rule: NodeKey,
+): MemberDeclaration {
   const typeDefinition = findTypeDefinition(space, node.key);
   return { browseName: node.browseName, node, declared: [], referenceTypes, rule, typeDefinition };
 }
@@ -124,16 +133,26 @@ export type InstanceDeclaration = MemberDeclaration & {
 export function listInstanceDeclarations(space: AddressSpace, type: NodeKey): ReadonlyMap<string, InstanceDeclaration> {
   const table = new Map<string, InstanceDeclaration>();
   const owners = new Map<NodeKey, NodeKey>();
-  const visit = (sources: readonly DeclarationSource[], path: readonly QualifiedName[], above: readonly NodeKey[]): void => {
+  const visit = (
+    sources: readonly DeclarationSource[],
+    path: readonly QualifiedName[],
+    above: readonly NodeKey[],
+  ): void => {
     for (const member of listMemberDeclarations(space, sources)) {
       // Organizes may lead back to where one came from; a path that passes a node twice is no path.
       if (above.includes(member.node.key)) continue;
       const memberPath = [...path, member.browseName];
       for (const { key } of member.declared) {
-        const source = sources.find((s) => listEdgesFrom(space, s.key, StandardReferenceType.HierarchicalReferences).some((e) => e.target === key));
+        const source = sources.find((s) =>
+          listEdgesFrom(space, s.key, StandardReferenceType.HierarchicalReferences).some((e) => e.target === key),
+        );
         if (source && !owners.has(key)) owners.set(key, owners.get(source.key) ?? source.key);
       }
-      table.set(toPathKey(memberPath), { ...member, path: memberPath, declaredBy: owners.get(member.node.key) ?? type });
+      table.set(toPathKey(memberPath), {
+        ...member,
+        path: memberPath,
+        declaredBy: owners.get(member.node.key) ?? type,
+      });
       visit(member.declared, memberPath, [...above, member.node.key]);
     }
   };

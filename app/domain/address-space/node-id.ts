@@ -75,7 +75,8 @@ export function parseNodeId(text: string, namespaceUris: readonly string[]): Res
     if (!/^\d{1,5}$/.test(digits)) return fail(problem("node-id.syntax", { text }));
     const index = Number(digits);
     const uri = index === 0 ? OPC_UA_NAMESPACE : namespaceUris[index];
-    if (uri === undefined) return fail(problem("node-id.namespace-index", { text, index, count: namespaceUris.length }));
+    if (uri === undefined)
+      return fail(problem("node-id.namespace-index", { text, index, count: namespaceUris.length }));
     namespaceUri = uri;
     rest = rest.slice(end + 1);
   } else if (rest.startsWith("nsu=")) {

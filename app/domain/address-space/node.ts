@@ -9,14 +9,7 @@ import type { NodeId, NodeKey } from "./node-id";
 import type { LocalizedText, QualifiedName } from "./qualified-name";
 
 export type NodeClass =
-  | "Object"
-  | "Variable"
-  | "Method"
-  | "View"
-  | "ObjectType"
-  | "VariableType"
-  | "DataType"
-  | "ReferenceType";
+  "Object" | "Variable" | "Method" | "View" | "ObjectType" | "VariableType" | "DataType" | "ReferenceType";
 
 /**
  * A reference as a file declares it at a node: `isForward: false` means that the node is the target. The same reference

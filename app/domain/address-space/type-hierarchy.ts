@@ -23,7 +23,10 @@ export function listSupertypes(space: AddressSpace, type: NodeKey): NodeKey[] {
 
 /** Direct subtypes in the order of declaration. */
 export function listDirectSubtypes(space: AddressSpace, type: NodeKey): NodeKey[] {
-  return space.edgesFrom(type).filter((e) => e.type === HasSubtype).map((e) => e.target);
+  return space
+    .edgesFrom(type)
+    .filter((e) => e.type === HasSubtype)
+    .map((e) => e.target);
 }
 
 /** The type and all types below it. */

@@ -13,7 +13,11 @@ import { fail, ok, problem, type Result } from "../core/result";
 export type IdBlock = { readonly from: number; readonly to: number };
 
 /** Where the node will stand, for policies that make the id from it. */
-export type NewNodePlace = { readonly space: AddressSpace; readonly parent: NodeKey | undefined; readonly name: string };
+export type NewNodePlace = {
+  readonly space: AddressSpace;
+  readonly parent: NodeKey | undefined;
+  readonly name: string;
+};
 
 /** What commands take new NodeIds from. Class and place are told so that a policy may number by them; see id-policies.ts. */
 export interface NodeIdAllocator {

@@ -94,7 +94,8 @@ function setAttribute(space: AddressSpace, { key, attribute, value }: Of<"setAtt
   if (!hasAttribute(node.nodeClass, attribute)) {
     return fail(problem("operation.attribute-class", { nodeClass: node.nodeClass, attribute }, at));
   }
-  if (value === undefined && isRequiredAttribute(attribute)) return fail(problem("operation.attribute-required", { attribute }, at));
+  if (value === undefined && isRequiredAttribute(attribute))
+    return fail(problem("operation.attribute-required", { attribute }, at));
   if (attribute === "nodeId") {
     const taken = findIdProblem(space, key, value as NodeId);
     if (taken) return fail(taken);
@@ -110,7 +111,8 @@ function withAttribute(node: Node, attribute: AttributeName, value: unknown): No
 function addReference(space: AddressSpace, operation: Of<"addReference">): Result<AddressSpace> {
   const { source, type, target, declaredAt } = operation;
   if (!operation.isDangling) {
-    for (const key of [source, type, target]) if (!space.getNode(key)) return fail(about("operation.node-missing", key));
+    for (const key of [source, type, target])
+      if (!space.getNode(key)) return fail(about("operation.node-missing", key));
   }
   const ends = listDeclaringEnds(space, operation);
   const wanted = declaredAt === "source" ? source : declaredAt === "target" ? target : undefined;

@@ -81,7 +81,11 @@ export class EditDraft {
   add(spec: NewNode): NodeKey | undefined {
     if (this.hasFailed) return undefined;
     const parent = spec.references.find((r) => !r.isForward)?.target;
-    const allocated = this.#context.allocate(spec.nodeClass, { space: this.#space, parent, name: spec.browseName.name });
+    const allocated = this.#context.allocate(spec.nodeClass, {
+      space: this.#space,
+      parent,
+      name: spec.browseName.name,
+    });
     if (!allocated.ok) {
       this.#problems.push(...allocated.problems);
       return undefined;

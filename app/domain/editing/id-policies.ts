@@ -26,7 +26,8 @@ export class NodeIdLedger {
   record(operations: readonly Operation[]): void {
     for (const operation of operations) {
       if (operation.kind === "addNode") this.add(operation.node.nodeId);
-      else if (operation.kind === "setAttribute" && operation.attribute === "nodeId") this.add(operation.value as NodeId);
+      else if (operation.kind === "setAttribute" && operation.attribute === "nodeId")
+        this.add(operation.value as NodeId);
     }
   }
 

@@ -12,10 +12,16 @@ type Field = Pick<DataTypeField, "name" | "value">;
  * A structure repeats no inherited field name (OPC 10000-3 §8.48), an enumeration adds no value to the one that it derives
  * from (§8.14). Problems: `structure.name-inherited`, `enumeration.extends`.
  */
-export function checkInheritedFields(space: AddressSpace, supertype: NodeKey, fields: readonly Field[]): Problem | undefined {
+export function checkInheritedFields(
+  space: AddressSpace,
+  supertype: NodeKey,
+  fields: readonly Field[],
+): Problem | undefined {
   if (isSubtypeOf(space, supertype, StandardDataType.Enumeration)) return checkValues(space, supertype, fields);
   if (!isSubtypeOf(space, supertype, StandardDataType.Structure)) return undefined;
-  const inherited = new Set([supertype, ...listSupertypes(space, supertype)].flatMap((key) => listFields(space, key).map((f) => f.name)));
+  const inherited = new Set(
+    [supertype, ...listSupertypes(space, supertype)].flatMap((key) => listFields(space, key).map((f) => f.name)),
+  );
   const repeated = fields.find((field) => inherited.has(field.name));
   return repeated && problem("structure.name-inherited", { name: repeated.name });
 }
@@ -24,7 +30,9 @@ function checkValues(space: AddressSpace, supertype: NodeKey, fields: readonly F
   const base = listFields(space, supertype);
   const isAbstract = base.length === 0;
   const added = fields.find((field) => !base.some((b) => b.value === field.value && b.name === field.name));
-  return isAbstract || !added ? undefined : problem("enumeration.extends", { name: added.name, value: added.value ?? -1 });
+  return isAbstract || !added
+    ? undefined
+    : problem("enumeration.extends", { name: added.name, value: added.value ?? -1 });
 }
 
 function listFields(space: AddressSpace, key: NodeKey): readonly DataTypeField[] {

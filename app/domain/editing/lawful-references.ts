@@ -11,7 +11,13 @@ import { findModellingRule, findTypeDefinition, listEdgesTo } from "../address-s
 import type { Node } from "../address-space/node";
 import { standardKey, type NodeKey } from "../address-space/node-id";
 import { StandardReferenceType, StandardType } from "../address-space/standard-ids";
-import { findSupertype, getReferenceTypes, isHierarchical, isSubtypeOf, listSupertypes } from "../address-space/type-hierarchy";
+import {
+  findSupertype,
+  getReferenceTypes,
+  isHierarchical,
+  isSubtypeOf,
+  listSupertypes,
+} from "../address-space/type-hierarchy";
 import { problem, type Problem } from "../core/result";
 import { checkSiblingName } from "./names";
 import { checkSourceClass, endsRules, type Refusal } from "./reference-rules";
@@ -53,7 +59,8 @@ export function listLawfulReferences(space: AddressSpace, source: NodeKey, targe
     if (node?.nodeClass !== "ReferenceType" || node.isAbstract || node.releaseStatus === "Deprecated") continue;
     const refused = checkReference(space, source, type, target);
     const usual = USUAL.indexOf(type);
-    if (!refused) choices.push({ type, name: node.browseName.name, isUsual: usual >= 0, rank: rank(space, source, type, usual) });
+    if (!refused)
+      choices.push({ type, name: node.browseName.name, isUsual: usual >= 0, rank: rank(space, source, type, usual) });
     else if (usual >= 0) refusals.push(refused);
   }
   choices.sort((a, b) => a.rank - b.rank || a.name.localeCompare(b.name, "en"));
@@ -71,18 +78,30 @@ function rank(space: AddressSpace, source: NodeKey, type: NodeKey, usual: number
  * The reason why `type` may not lead from source to target; undefined where it may. Problems: `reference.*` with
  * `data.clause`, `operation.node-missing`, `operation.node-foreign`, `operation.reference-exists`.
  */
-export function checkReference(space: AddressSpace, source: NodeKey, type: NodeKey, target: NodeKey): Problem | undefined {
+export function checkReference(
+  space: AddressSpace,
+  source: NodeKey,
+  type: NodeKey,
+  target: NodeKey,
+): Problem | undefined {
   const from = space.getNode(source);
   const to = space.getNode(target);
   const by = space.getNode(type);
   if (!from || !to || !by) return problem("operation.node-missing", { node: !from ? source : !to ? target : type });
-  if (!space.isOwn(source) && !space.isOwn(target)) return problem("operation.node-foreign", { node: source }, { node: source });
+  if (!space.isOwn(source) && !space.isOwn(target))
+    return problem("operation.node-foreign", { node: source }, { node: source });
   const refusal = findRefusal(space, from, by, to);
   if (refusal) {
-    const data = { source: from.browseName.name, target: to.browseName.name, type: by.browseName.name, clause: refusal.clause };
+    const data = {
+      source: from.browseName.name,
+      target: to.browseName.name,
+      type: by.browseName.name,
+      clause: refusal.clause,
+    };
     return problem(refusal.code, data, { node: source });
   }
-  if (space.hasEdge({ source, type, target })) return problem("operation.reference-exists", { source, type, target }, { node: source });
+  if (space.hasEdge({ source, type, target }))
+    return problem("operation.reference-exists", { source, type, target }, { node: source });
   // Components and Properties of one node differ in name (§4.6.4, §5.6.3); what is organised may be called alike.
   const isMember = getReferenceTypes(space, R.Aggregates).has(type);
   return isMember ? checkSiblingName(space, source, to.browseName, target) : undefined;
@@ -123,7 +142,10 @@ function checkCounts(space: AddressSpace, source: Node, type: NodeKey, target: N
   }
   const isSingle = type === R.HasTypeDefinition || type === R.HasModellingRule;
   if (isSingle && space.edgesFrom(source.key).some((e) => e.type === type)) {
-    return { code: "reference.only-one", clause: type === R.HasTypeDefinition ? "OPC 10000-3 §7.13" : "OPC 10000-3 §7.12" };
+    return {
+      code: "reference.only-one",
+      clause: type === R.HasTypeDefinition ? "OPC 10000-3 §7.13" : "OPC 10000-3 §7.12",
+    };
   }
   return undefined;
 }

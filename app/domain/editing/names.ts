@@ -27,7 +27,9 @@ export function checkSiblingName(
   browseName: QualifiedName,
   except?: NodeKey,
 ): Problem | undefined {
-  const holder = listChildren(space, parent).find((n) => n.key !== except && isSameQualifiedName(n.browseName, browseName));
+  const holder = listChildren(space, parent).find(
+    (n) => n.key !== except && isSameQualifiedName(n.browseName, browseName),
+  );
   return holder && problem("name.taken", { name: browseName.name }, { node: holder.key });
 }
 

@@ -29,16 +29,23 @@ export const nodeIdSchema: z.ZodType<NodeId> = z
     type: z.enum(["i", "s", "g", "b"]),
     identifier: z.union([z.int().min(0).max(MAX_NUMERIC_IDENTIFIER), text]),
   })
-  .refine((id) => parseNodeId(`${id.type}=${id.identifier}`, []).ok && (id.type === "i") === (typeof id.identifier === "number"), {
-    message: "The identifier does not fit its type",
-  });
+  .refine(
+    (id) =>
+      parseNodeId(`${id.type}=${id.identifier}`, []).ok && (id.type === "i") === (typeof id.identifier === "number"),
+    {
+      message: "The identifier does not fit its type",
+    },
+  );
 
 const qualifiedName = z.strictObject({ namespaceUri: text.min(1), name: text });
 const localizedText = z.strictObject({ locale: text.optional(), text });
 const localizedTexts = z.array(localizedText);
 const XML_NAME = /^[\p{L}_][\p{L}\p{N}_.-]*(?::[\p{L}_][\p{L}\p{N}_.-]*)?$/u;
 const otherAttributes = z.record(z.string().regex(XML_NAME), text);
-const prefixes = z.record(z.string().refine((name) => name === "" || XML_NAME.test(name)), text);
+const prefixes = z.record(
+  z.string().refine((name) => name === "" || XML_NAME.test(name)),
+  text,
+);
 const xmlText = z
   .strictObject({ xml: text, prefixes: prefixes.optional(), attributes: otherAttributes.optional() })
   .refine((value) => readFragment(value).ok, "Is not well-formed XML");
@@ -133,7 +140,12 @@ const attributeShapes = {
     purpose: z.enum(["Normal", "ServicesOnly", "CodeGenerator"]).optional(),
     definition: dataTypeDefinition.optional(),
   },
-  ReferenceType: { ...baseShape, isAbstract, symmetric: z.boolean().optional(), inverseName: localizedTexts.optional() },
+  ReferenceType: {
+    ...baseShape,
+    isAbstract,
+    symmetric: z.boolean().optional(),
+    inverseName: localizedTexts.optional(),
+  },
 } as const;
 
 const identity = { key: nodeKeySchema, references: z.array(declaredReference) };

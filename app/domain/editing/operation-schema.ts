@@ -13,7 +13,12 @@ const attributeName = z.enum(Object.keys(attributeSchemas) as [AttributeName, ..
 const headerField = z.enum(Object.keys(headerShape) as [keyof ModelHeader, ...(keyof ModelHeader)[]]);
 
 const setAttribute = z
-  .strictObject({ kind: z.literal("setAttribute"), key: nodeKeySchema, attribute: attributeName, value: z.unknown().optional() })
+  .strictObject({
+    kind: z.literal("setAttribute"),
+    key: nodeKeySchema,
+    attribute: attributeName,
+    value: z.unknown().optional(),
+  })
   .superRefine((operation, context) => {
     if (operation.value === undefined && !isRequiredAttribute(operation.attribute)) return;
     copyIssues(attributeSchemas[operation.attribute], operation.value, context);

@@ -61,7 +61,12 @@ export type Operation =
   /** Removes a node that no other own node refers to any more. */
   | { readonly kind: "removeNode"; readonly key: NodeKey }
   /** Sets one attribute; an absent `value` takes it away. */
-  | { readonly kind: "setAttribute"; readonly key: NodeKey; readonly attribute: AttributeName; readonly value?: unknown }
+  | {
+      readonly kind: "setAttribute";
+      readonly key: NodeKey;
+      readonly attribute: AttributeName;
+      readonly value?: unknown;
+    }
   /**
    * `sourceIndex` and `targetIndex` are places in the lists of declared references; absent means at the end. `repeats`
    * are the places of further declarations of the same reference, which some files have and an undo must put back.

@@ -43,12 +43,7 @@ export function isOwning(space: AddressSpace, referenceType: NodeKey): boolean {
 export type PlacementWish = { readonly referenceType?: NodeKey; readonly rule?: NodeKey | "none" };
 
 /** For an instance of `type`, an ObjectType or VariableType. */
-export function choosePlacement(
-  space: AddressSpace,
-  parent: Node,
-  type: Node,
-  wish: PlacementWish,
-): Placement {
+export function choosePlacement(space: AddressSpace, parent: Node, type: Node, wish: PlacementWish): Placement {
   const nodeClass = type.nodeClass === "VariableType" ? "Variable" : "Object";
   return placeChild(space, parent, { nodeClass, typeDefinition: type.key }, wish);
 }
@@ -56,12 +51,7 @@ export function choosePlacement(
 /** A child that does not exist yet. */
 type NewChild = { readonly nodeClass: "Object" | "Variable" | "Method"; readonly typeDefinition?: NodeKey };
 
-export function placeChild(
-  space: AddressSpace,
-  parent: Node,
-  child: NewChild,
-  wish: PlacementWish,
-): Placement {
+export function placeChild(space: AddressSpace, parent: Node, child: NewChild, wish: PlacementWish): Placement {
   const referenceType = wish.referenceType ?? getUsualReference(space, parent, child);
   const found = checkPlace(space, parent, child, referenceType);
   if (found) return { ok: false, problem: found };
@@ -105,5 +95,13 @@ function withProbe(space: AddressSpace, child: NewChild): AddressSpace {
   const references = [{ type: R.HasTypeDefinition, target: child.typeDefinition as NodeKey, isForward: true }];
   const nodeId = { namespaceUri: "", type: "i", identifier: 0 } as const;
   const browseName = { namespaceUri: "", name: "" };
-  return space.withNode({ key: PROBE, nodeId, nodeClass: child.nodeClass, order: 0, browseName, displayName: [], references } as Node);
+  return space.withNode({
+    key: PROBE,
+    nodeId,
+    nodeClass: child.nodeClass,
+    order: 0,
+    browseName,
+    displayName: [],
+    references,
+  } as Node);
 }

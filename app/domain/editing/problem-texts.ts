@@ -13,7 +13,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "rebase.builds-on-refused": "This edit builds on another one that was refused.",
   "history.nothing-to-undo": "There is nothing to undo.",
   "history.nothing-to-redo": "There is nothing to redo.",
-  "node-id.block-empty": "No numbers for new NodeIds are left in this window; it gets new ones as soon as the server answers.",
+  "node-id.block-empty":
+    "No numbers for new NodeIds are left in this window; it gets new ones as soon as the server answers.",
 
   "node-id.path-used-up": "No NodeId is left for the path {path}.",
   "renumber.namespace": "A node of this model has its NodeId in the model's own namespace, not in {uri}.",
@@ -33,30 +34,45 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
 
   "instantiate.no-type": "“{type}” is neither an ObjectType nor a VariableType, so it has no instances.",
   "instantiate.abstract": "{type} is abstract: choose one of its subtypes (OPC 10000-3 §6.2.1).",
-  "instantiate.interface": "{type} is an Interface: a node has it by HasInterface, not as its type definition (OPC 10000-3 §4.10.2).",
+  "instantiate.interface":
+    "{type} is an Interface: a node has it by HasInterface, not as its type definition (OPC 10000-3 §4.10.2).",
   "instantiate.no-such-member": "The type has no member {path}.",
-  "instantiate.too-deep": "The members nest deeper than {limit} levels; a type that contains itself as mandatory has no end.",
+  "instantiate.too-deep":
+    "The members nest deeper than {limit} levels; a type that contains itself as mandatory has no end.",
   "instantiate.too-many": "The instance would have more than {limit} nodes.",
 
   "reference.component-target": "A component is an Object, a Variable or a Method; {target} is none ({clause}).",
-  "reference.component-variable-source": "A Variable is a component of an Object, a Variable or their types; {source} is none ({clause}).",
-  "reference.component-object-source": "Objects and Methods are components of Objects and ObjectTypes only; {source} is neither ({clause}).",
+  "reference.component-variable-source":
+    "A Variable is a component of an Object, a Variable or their types; {source} is none ({clause}).",
+  "reference.component-object-source":
+    "Objects and Methods are components of Objects and ObjectTypes only; {source} is neither ({clause}).",
   "reference.property-as-component": "{target} is a Property, so it hangs by HasProperty ({clause}).",
   "reference.component-as-property": "{target} is a DataVariable, so it hangs by HasComponent ({clause}).",
   "reference.property-target": "A Property is a Variable; {target} is none ({clause}).",
   "reference.property-is-leaf": "A Property has nothing below it ({clause}).",
-  "reference.subtype-ends": "A subtype has the node class of its supertype; {source} and {target} differ or are no types ({clause}).",
-  "reference.type-definition-ends": "An Object is of an ObjectType, a Variable of a VariableType; {source} and {target} are not ({clause}).",
-  "reference.modelling-rule-ends": "A modelling rule leads from an Object, Variable or Method to a rule; {source} and {target} are not ({clause}).",
-  "reference.encoding-ends": "An encoding leads from a structured DataType to an encoding Object; {source} and {target} are not ({clause}).",
-  "reference.encoding-taken": "{target} is an encoding of another DataType, or {source} has one of this name ({clause}).",
-  "reference.event-ends": "Events are announced by ObjectTypes, VariableTypes and Methods and are types below BaseEventType; {source} and {target} are not ({clause}).",
-  "reference.interface-ends": "An Interface is a type below BaseInterfaceType and is given to Objects and ObjectTypes; {source} and {target} are not ({clause}).",
-  "reference.add-in-ends": "An add-in is an Object at an Object or ObjectType; {source} and {target} are not ({clause}).",
-  "reference.add-in-type": "The type of {target} is not made for add-ins: it has no DefaultInstanceBrowseName ({clause}).",
+  "reference.subtype-ends":
+    "A subtype has the node class of its supertype; {source} and {target} differ or are no types ({clause}).",
+  "reference.type-definition-ends":
+    "An Object is of an ObjectType, a Variable of a VariableType; {source} and {target} are not ({clause}).",
+  "reference.modelling-rule-ends":
+    "A modelling rule leads from an Object, Variable or Method to a rule; {source} and {target} are not ({clause}).",
+  "reference.encoding-ends":
+    "An encoding leads from a structured DataType to an encoding Object; {source} and {target} are not ({clause}).",
+  "reference.encoding-taken":
+    "{target} is an encoding of another DataType, or {source} has one of this name ({clause}).",
+  "reference.event-ends":
+    "Events are announced by ObjectTypes, VariableTypes and Methods and are types below BaseEventType; {source} and {target} are not ({clause}).",
+  "reference.interface-ends":
+    "An Interface is a type below BaseInterfaceType and is given to Objects and ObjectTypes; {source} and {target} are not ({clause}).",
+  "reference.add-in-ends":
+    "An add-in is an Object at an Object or ObjectType; {source} and {target} are not ({clause}).",
+  "reference.add-in-type":
+    "The type of {target} is not made for add-ins: it has no DefaultInstanceBrowseName ({clause}).",
   "reference.organizes-source": "Only Objects, ObjectTypes and Views organise; {source} is none ({clause}).",
-  "reference.event-source-ends": "Event sources hang below Objects, Views and ObjectTypes; {source} and {target} do not fit ({clause}).",
-  "reference.notifier-ends": "Notifiers are Objects below Objects, Views and ObjectTypes; {source} and {target} do not fit ({clause}).",
+  "reference.event-source-ends":
+    "Event sources hang below Objects, Views and ObjectTypes; {source} and {target} do not fit ({clause}).",
+  "reference.notifier-ends":
+    "Notifiers are Objects below Objects, Views and ObjectTypes; {source} and {target} do not fit ({clause}).",
   "reference.typed-ends": "This reference joins other kinds of nodes than {source} and {target} ({clause}).",
   "reference.reference-type-source": "A ReferenceType has only subtypes and Properties ({clause}).",
   "reference.data-type-source": "A DataType has only subtypes, Properties and encodings ({clause}).",
@@ -64,7 +80,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "reference.second-supertype": "{target} has a supertype already ({clause}).",
   "reference.only-one": "{source} has one of these already ({clause}).",
   "reference.said-already": "A narrower or wider reference already joins {source} and {target} ({clause}).",
-  "reference.declaration-of-other-type": "{target} is a declaration of another type; give {source} one of its own ({clause}).",
+  "reference.declaration-of-other-type":
+    "{target} is a declaration of another type; give {source} one of its own ({clause}).",
   "reference.to-itself": "A node does not stand below itself ({clause}).",
   "reference.loop": "{source} stands below {target}; the reference would close a loop ({clause}).",
   "reference.abstract": "The reference type {type} is abstract ({clause}).",
@@ -78,7 +95,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
 
   "move.below-itself": "{name} cannot be moved below itself.",
   "delete.in-use": "{used} is still used by {count} nodes, {user} among them.",
-  "rule.placeholder-name": "{name} is a placeholder now; its name is usually put in angle brackets (OPC 10000-3 §6.4.4.4.4).",
+  "rule.placeholder-name":
+    "{name} is a placeholder now; its name is usually put in angle brackets (OPC 10000-3 §6.4.4.4.4).",
   "text.locale": "“{locale}” is not a locale. Write for example en or de-AT.",
   "text.last-display-name": "A node has at least one DisplayName.",
   "attribute.value": "This is no value for {attribute}.",
@@ -111,7 +129,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "enumeration.no-fields": "An enumeration has at least one value.",
   "enumeration.name-taken": "Two values are called “{name}”.",
   "enumeration.value-taken": "{value} is given twice.",
-  "enumeration.extends": "{name} would add the value {value} to the enumeration that it derives from; a subtype only restricts (OPC 10000-3 §8.14).",
+  "enumeration.extends":
+    "{name} would add the value {value} to the enumeration that it derives from; a subtype only restricts (OPC 10000-3 §8.14).",
   "enumeration.value-range": "{name}: {value} is not a whole number of 32 bits.",
   "structure.no-structure": "{node} is not a structure.",
   "structure.supertype": "{node} is not below Structure.",

@@ -24,7 +24,10 @@ const refuse = (code: string, clause: string): Refusal => ({ code, clause });
 /** Whether a Variable is a Property: it is one by HasProperty or by its type definition (§5.6.3). */
 export function isProperty(space: AddressSpace, node: Node): boolean {
   if (node.nodeClass !== "Variable") return false;
-  return findTypeDefinition(space, node.key) === StandardType.PropertyType || listEdgesTo(space, node.key, R.HasProperty).length > 0;
+  return (
+    findTypeDefinition(space, node.key) === StandardType.PropertyType ||
+    listEdgesTo(space, node.key, R.HasProperty).length > 0
+  );
 }
 
 function checkComponent(space: AddressSpace, source: Node, target: Node): Refusal | undefined {
@@ -32,7 +35,8 @@ function checkComponent(space: AddressSpace, source: Node, target: Node): Refusa
   if (!isOneOf(target, ["Object", "Variable", "Method"])) return refuse("reference.component-target", clause);
   if (target.nodeClass === "Variable") {
     if (isProperty(space, target)) return refuse("reference.property-as-component", "OPC 10000-3 §5.6.4");
-    if (!isOneOf(source, ["Object", "ObjectType", "Variable", "VariableType"])) return refuse("reference.component-variable-source", clause);
+    if (!isOneOf(source, ["Object", "ObjectType", "Variable", "VariableType"]))
+      return refuse("reference.component-variable-source", clause);
     return isProperty(space, source) ? refuse("reference.property-is-leaf", "OPC 10000-3 §5.6.3") : undefined;
   }
   return isOneOf(source, OBJECTS) ? undefined : refuse("reference.component-object-source", clause);
@@ -66,7 +70,9 @@ function checkModellingRule(space: AddressSpace, source: Node, target: Node): Re
   const isRule =
     target.nodeClass === "Object" &&
     isSubtypeOf(space, findTypeDefinition(space, target.key) ?? target.key, StandardType.ModellingRuleType);
-  return isOneOf(source, ["Object", "Variable", "Method"]) && isRule ? undefined : refuse("reference.modelling-rule-ends", "OPC 10000-3 §7.12");
+  return isOneOf(source, ["Object", "Variable", "Method"]) && isRule
+    ? undefined
+    : refuse("reference.modelling-rule-ends", "OPC 10000-3 §7.12");
 }
 
 function checkEncoding(space: AddressSpace, source: Node, target: Node): Refusal | undefined {
@@ -105,7 +111,8 @@ function checkInterface(space: AddressSpace, source: Node, target: Node): Refusa
 }
 
 function checkAddIn(space: AddressSpace, source: Node, target: Node): Refusal | undefined {
-  if (!isOneOf(source, OBJECTS) || target.nodeClass !== "Object") return refuse("reference.add-in-ends", "OPC 10000-3 §7.20");
+  if (!isOneOf(source, OBJECTS) || target.nodeClass !== "Object")
+    return refuse("reference.add-in-ends", "OPC 10000-3 §7.20");
   const type = findTypeDefinition(space, target.key);
   const chain = type === undefined ? [] : [type, ...listSupertypes(space, type)];
   const hasDefaultName = chain.some((key) => findProperty(space, key, "DefaultInstanceBrowseName") !== undefined);
@@ -113,12 +120,17 @@ function checkAddIn(space: AddressSpace, source: Node, target: Node): Refusal | 
 }
 
 function checkOrganizes(_space: AddressSpace, source: Node, _target: Node): Refusal | undefined {
-  return isOneOf(source, ["Object", "ObjectType", "View"]) ? undefined : refuse("reference.organizes-source", "OPC 10000-3 §7.11");
+  return isOneOf(source, ["Object", "ObjectType", "View"])
+    ? undefined
+    : refuse("reference.organizes-source", "OPC 10000-3 §7.11");
 }
 
 function checkEventSource(_space: AddressSpace, source: Node, target: Node): Refusal | undefined {
-  if (!isOneOf(source, ["Object", "View", "ObjectType"])) return refuse("reference.event-source-ends", "OPC 10000-3 §7.17");
-  return isOneOf(target, ["DataType", "ReferenceType"]) ? refuse("reference.event-source-ends", "OPC 10000-3 §7.17") : undefined;
+  if (!isOneOf(source, ["Object", "View", "ObjectType"]))
+    return refuse("reference.event-source-ends", "OPC 10000-3 §7.17");
+  return isOneOf(target, ["DataType", "ReferenceType"])
+    ? refuse("reference.event-source-ends", "OPC 10000-3 §7.17")
+    : undefined;
 }
 
 function checkNotifier(_space: AddressSpace, source: Node, target: Node): Refusal | undefined {
@@ -144,7 +156,12 @@ export const endsRules: ReadonlyMap<NodeKey, EndsRule> = new Map<NodeKey, EndsRu
 ]);
 
 /** What a source of a class may refer to at all (§5.3.3.1, §5.4, §5.8.3). */
-export function checkSourceClass(space: AddressSpace, source: Node, isHierarchicalType: boolean, referenceType: NodeKey): Refusal | undefined {
+export function checkSourceClass(
+  space: AddressSpace,
+  source: Node,
+  isHierarchicalType: boolean,
+  referenceType: NodeKey,
+): Refusal | undefined {
   const isA = (ancestor: NodeKey): boolean => isSubtypeOf(space, referenceType, ancestor);
   if (isA(TOLERATED.HasDictionaryEntry) || isA(TOLERATED.IsDeprecated)) return undefined;
   if (source.nodeClass === "ReferenceType" && !isA(R.HasSubtype) && !isA(R.HasProperty)) {

@@ -6,7 +6,10 @@
 export function toSymbolicName(browseName: string): string | undefined {
   if (/^[A-Za-z][A-Za-z0-9_]*$/.test(browseName)) return undefined;
   const placeholder = /^<(.*)>$/s.exec(browseName);
-  const words = (placeholder?.[1] ?? browseName).normalize("NFD").replace(/[^A-Za-z0-9_]+/g, "_").replace(/^_+|_+$/g, "");
+  const words = (placeholder?.[1] ?? browseName)
+    .normalize("NFD")
+    .replace(/[^A-Za-z0-9_]+/g, "_")
+    .replace(/^_+|_+$/g, "");
   const named = words === "" ? "Node" : /^[A-Za-z]/.test(words) ? words : `N_${words}`;
   return placeholder ? `${named}_Placeholder` : named;
 }

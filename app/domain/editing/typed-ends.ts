@@ -53,7 +53,12 @@ const TABLE: readonly (readonly [id: number, name: string, source: End, target: 
   [56, "HasHistoricalConfiguration", { nodeClass: ["Object", "Variable"] }, object(2318)],
   [9004, "HasTrueSubState", { nodeClass: VARIABLE, type: 8995 }, { nodeClass: ["Object", "Variable"] }],
   [9005, "HasFalseSubState", { nodeClass: VARIABLE, type: 8995 }, { nodeClass: ["Object", "Variable"] }],
-  [9006, "HasCondition", { nodeClass: ["Object", "Variable", "Method", "ObjectType", "VariableType"] }, { nodeClass: ["Object", "ObjectType"], type: 2782 }],
+  [
+    9006,
+    "HasCondition",
+    { nodeClass: ["Object", "Variable", "Method", "ObjectType", "VariableType"] },
+    { nodeClass: ["Object", "ObjectType"], type: 2782 },
+  ],
   [129, "HasArgumentDescription", { nodeClass: ["Method"] }, { nodeClass: VARIABLE }],
   [131, "HasOptionalInputArgumentDescription", { nodeClass: ["Method"] }, { nodeClass: VARIABLE }],
   [14476, "HasPubSubConnection", object(14416), object(14209)],
@@ -68,7 +73,10 @@ const TABLE: readonly (readonly [id: number, name: string, source: End, target: 
 ];
 
 export const typedEnds: ReadonlyMap<NodeKey, TypedEnds> = new Map(
-  TABLE.map(([id, name, source, target]) => [standardKey(id), { name, source, target, check: makeCheck(name, source, target) }]),
+  TABLE.map(([id, name, source, target]) => [
+    standardKey(id),
+    { name, source, target, check: makeCheck(name, source, target) },
+  ]),
 );
 
 export function findTypedEnds(referenceType: NodeKey): TypedEnds | undefined {

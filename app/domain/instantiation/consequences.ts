@@ -23,10 +23,29 @@ import { listMissingMembers, walkInstance } from "./missing-members";
 
 /** `node` is the copy that follows a declaration; `declaration` the one that changed. */
 export type Consequence =
-  | { readonly kind: "missing-member"; readonly instance: NodeKey; readonly pathKey: string; readonly path: readonly QualifiedName[]; readonly declaration: NodeKey }
-  | { readonly kind: "renamed-member"; readonly node: NodeKey; readonly declaration: NodeKey; readonly from: QualifiedName; readonly to: QualifiedName }
+  | {
+      readonly kind: "missing-member";
+      readonly instance: NodeKey;
+      readonly pathKey: string;
+      readonly path: readonly QualifiedName[];
+      readonly declaration: NodeKey;
+    }
+  | {
+      readonly kind: "renamed-member";
+      readonly node: NodeKey;
+      readonly declaration: NodeKey;
+      readonly from: QualifiedName;
+      readonly to: QualifiedName;
+    }
   | { readonly kind: "removed-member"; readonly node: NodeKey; readonly declaration: NodeKey }
-  | { readonly kind: "changed-attribute"; readonly node: NodeKey; readonly declaration: NodeKey; readonly attribute: FollowedAttribute; readonly from: unknown; readonly to: unknown };
+  | {
+      readonly kind: "changed-attribute";
+      readonly node: NodeKey;
+      readonly declaration: NodeKey;
+      readonly attribute: FollowedAttribute;
+      readonly from: unknown;
+      readonly to: unknown;
+    };
 
 /** Attributes that a copy takes from its declaration. */
 const FOLLOWED = [
@@ -57,7 +76,8 @@ export function listConsequences(before: AddressSpace, after: AddressSpace): Con
   for (const node of after.listOwnNodes()) {
     if (!before.isOwn(node.key)) continue;
     if (findTypeDefinition(before, node.key) !== undefined) instances.push(node.key);
-    else if (node.nodeClass === "ObjectType" || node.nodeClass === "VariableType") compareOverrides(before, after, node.key, add);
+    else if (node.nodeClass === "ObjectType" || node.nodeClass === "VariableType")
+      compareOverrides(before, after, node.key, add);
   }
   for (const instance of instances) compareMembers(before, after, instance, add);
   // What is new below a renamed member can only be seen once the copies have the new name too.
@@ -101,7 +121,8 @@ function compareCompleteness(before: AddressSpace, after: AddressSpace, instance
 function compareOverrides(before: AddressSpace, after: AddressSpace, type: NodeKey, add: Add): void {
   for (const row of listInstanceDeclarations(before, type).values()) {
     const [nearest, ...overridden] = row.declared;
-    if (nearest && overridden.length > 0 && after.isOwn(nearest.key)) compareCopy(before, after, nearest.key, overridden, add);
+    if (nearest && overridden.length > 0 && after.isOwn(nearest.key))
+      compareCopy(before, after, nearest.key, overridden, add);
   }
 }
 
@@ -134,7 +155,14 @@ type Attributes = Node & { readonly [name: string]: unknown };
 function compareAttribute(nodes: { copy: Node; old: Node; now: Node }, attribute: FollowedAttribute, add: Add): void {
   const [copy, old, now] = [nodes.copy, nodes.old, nodes.now].map((n) => (n as Attributes)[attribute]);
   if (isSame(old, now) || !isSame(copy, old)) return;
-  add(nodes.copy.key, { kind: "changed-attribute", node: nodes.copy.key, declaration: nodes.now.key, attribute, from: old, to: now });
+  add(nodes.copy.key, {
+    kind: "changed-attribute",
+    node: nodes.copy.key,
+    declaration: nodes.now.key,
+    attribute,
+    from: old,
+    to: now,
+  });
 }
 
 function isSame(a: unknown, b: unknown): boolean {
@@ -142,7 +170,11 @@ function isSame(a: unknown, b: unknown): boolean {
 }
 
 /** The edit that makes the chosen consequences good. Problems as `addDeclaredMembers`, `deleteNodes` and apply. */
-export function applyConsequences(space: AddressSpace, context: CommandContext, intent: { readonly consequences: readonly Consequence[] }): Result<Edit> {
+export function applyConsequences(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: { readonly consequences: readonly Consequence[] },
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const missing = new Map<NodeKey, string[]>();
   for (const consequence of intent.consequences) {
@@ -163,7 +195,9 @@ export function applyConsequences(space: AddressSpace, context: CommandContext, 
   for (const [instance, paths] of missing) {
     if (draft.hasFailed) break;
     const withRules = draft.space.edgesFrom(instance).some((e) => e.type === StandardReferenceType.HasModellingRule);
-    const choice = new MemberChoice(paths.filter((path) => listMissingMembers(draft.space, instance).some((m) => m.pathKey === path)));
+    const choice = new MemberChoice(
+      paths.filter((path) => listMissingMembers(draft.space, instance).some((m) => m.pathKey === path)),
+    );
     new InstanceBuilder(draft, { choice, withRules, methods: "copy" }).complete(instance, false);
   }
   return draft.finish();

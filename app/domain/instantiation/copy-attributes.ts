@@ -10,7 +10,13 @@ const OF_EACH_CLASS: Readonly<Record<string, readonly string[]>> = {
   Method: ["executable", "argumentDescriptions"],
 };
 
-const COMMON: readonly string[] = ["writeMask", "accessRestrictions", "hasNoPermissions", "rolePermissions", "documentation"];
+const COMMON: readonly string[] = [
+  "writeMask",
+  "accessRestrictions",
+  "hasNoPermissions",
+  "rolePermissions",
+  "documentation",
+];
 
 /**
  * Attributes for a copy of the member. DataType, ValueRank, ArrayDimensions and Value are those of the nearest
@@ -44,5 +50,7 @@ export function copyTypeAttributes(space: AddressSpace, type: NodeKey): Readonly
 }
 
 function pick(node: Node, names: readonly string[]): Record<string, unknown> {
-  return Object.fromEntries(Object.entries(node).filter(([name, value]) => names.includes(name) && value !== undefined));
+  return Object.fromEntries(
+    Object.entries(node).filter(([name, value]) => names.includes(name) && value !== undefined),
+  );
 }

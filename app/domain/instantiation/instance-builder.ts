@@ -91,7 +91,8 @@ export class InstanceBuilder {
   }
 
   #finish(): void {
-    for (let next = this.#deferred.shift(); next && !this.#draft.hasFailed; next = this.#deferred.shift()) this.#buildDeferred(next);
+    for (let next = this.#deferred.shift(); next && !this.#draft.hasFailed; next = this.#deferred.shift())
+      this.#buildDeferred(next);
     this.#mirrorReferences();
     for (const asked of this.#options.choice.listUnmet()) {
       this.#draft.fail(problem("instantiate.no-such-member", { path: asked }));
@@ -107,7 +108,8 @@ export class InstanceBuilder {
     for (const member of listMemberDeclarations(this.#draft.space, place.sources)) {
       if (this.#draft.hasFailed) return;
       if (isPlaceholder(member.rule)) this.#buildPlaceholder(place, member);
-      else if (member.referenceTypes.some((type) => aggregates.has(type))) this.#buildMember(place, member, wantsMandatory);
+      else if (member.referenceTypes.some((type) => aggregates.has(type)))
+        this.#buildMember(place, member, wantsMandatory);
       else this.#deferred.push({ place, member, wantsMandatory });
     }
   }
@@ -115,7 +117,8 @@ export class InstanceBuilder {
   #buildMember(place: Place, member: MemberDeclaration, wantsMandatory: boolean): void {
     const isChosen = this.#options.choice.wants([...place.path, member.browseName]);
     const isWanted = isChosen || (wantsMandatory && isMandatory(member.rule));
-    if (isWanted && this.#findMade(member) === undefined) this.#make(place, member, member.browseName, member.typeDefinition);
+    if (isWanted && this.#findMade(member) === undefined)
+      this.#make(place, member, member.browseName, member.typeDefinition);
   }
 
   #findMade(member: MemberDeclaration): NodeKey | undefined {
@@ -163,13 +166,23 @@ export class InstanceBuilder {
 
   #listReferences(place: Place, member: MemberDeclaration, typeDefinition: NodeKey | undefined): DeclaredReference[] {
     const { space } = this.#draft;
-    const references: DeclaredReference[] = member.referenceTypes.map((type) => ({ type, target: place.parent, isForward: false }));
-    if (typeDefinition !== undefined) references.push({ type: R.HasTypeDefinition, target: typeDefinition, isForward: true });
+    const references: DeclaredReference[] = member.referenceTypes.map((type) => ({
+      type,
+      target: place.parent,
+      isForward: false,
+    }));
+    if (typeDefinition !== undefined)
+      references.push({ type: R.HasTypeDefinition, target: typeDefinition, isForward: true });
     if (this.#options.withRules) {
       references.push({ type: R.HasModellingRule, target: member.rule, isForward: true });
     }
     const interfaces = new Set(
-      member.declared.flatMap((d) => space.edgesFrom(d.key).filter((e) => e.type === R.HasInterface).map((e) => e.target)),
+      member.declared.flatMap((d) =>
+        space
+          .edgesFrom(d.key)
+          .filter((e) => e.type === R.HasInterface)
+          .map((e) => e.target),
+      ),
     );
     for (const target of interfaces) references.push({ type: R.HasInterface, target, isForward: true });
     return references;
@@ -223,4 +236,3 @@ function fromId(id: string): DeclarationSource {
   const at = id.indexOf(SEPARATOR);
   return { scope: id.slice(0, at), key: id.slice(at + 1) as NodeKey };
 }
-

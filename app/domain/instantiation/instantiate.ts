@@ -68,7 +68,10 @@ export function addInstance(draft: EditDraft, intent: InstantiateIntent): NodeKe
   const browseName = qualifiedName(intent.namespaceUri ?? draft.ownNamespace, intent.name);
   const placement = parent && type && choosePlacement(space, parent, type, intent);
   const isDeclaration = placement?.ok === true && placement.isDeclaration;
-  const found = checkType(space, type, isDeclaration) ?? checkName(intent.name) ?? checkSiblingName(space, intent.parent, browseName);
+  const found =
+    checkType(space, type, isDeclaration) ??
+    checkName(intent.name) ??
+    checkSiblingName(space, intent.parent, browseName);
   if (found || !placement) draft.fail(found ?? problem("operation.node-missing", { node: intent.parent }));
   else if (!placement.ok) draft.fail(placement.problem);
   if (draft.hasFailed || !placement?.ok || !type) return undefined;
@@ -77,7 +80,11 @@ export function addInstance(draft: EditDraft, intent: InstantiateIntent): NodeKe
     ...placement.references,
     { type: StandardReferenceType.HasTypeDefinition, target: type.key, isForward: true },
     ...placement.rules,
-    ...(intent.interfaces ?? []).map((target) => ({ type: StandardReferenceType.HasInterface, target, isForward: true })),
+    ...(intent.interfaces ?? []).map((target) => ({
+      type: StandardReferenceType.HasInterface,
+      target,
+      isForward: true,
+    })),
   ];
   const key = draft.add({
     nodeClass: type.nodeClass === "VariableType" ? "Variable" : "Object",
@@ -111,7 +118,8 @@ function checkType(space: AddressSpace, type: Node | undefined, isDeclaration: b
   if (type?.nodeClass !== "ObjectType" && type?.nodeClass !== "VariableType") {
     return problem("instantiate.no-type", { type: type?.browseName.name ?? "" });
   }
-  if (isSubtypeOf(space, type.key, StandardType.BaseInterfaceType)) return problem("instantiate.interface", { type: type.browseName.name });
+  if (isSubtypeOf(space, type.key, StandardType.BaseInterfaceType))
+    return problem("instantiate.interface", { type: type.browseName.name });
   if (isAbstract(type) && !isDeclaration) return problem("instantiate.abstract", { type: type.browseName.name });
   return undefined;
 }
@@ -123,10 +131,16 @@ export type AddDeclaredMembersIntent = Wishes & {
 };
 
 /** Completes an instance: the members asked for, and with `includeMissing` the mandatory ones that it lacks. */
-export function addDeclaredMembers(space: AddressSpace, context: CommandContext, intent: AddDeclaredMembersIntent): Result<Edit> {
+export function addDeclaredMembers(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: AddDeclaredMembersIntent,
+): Result<Edit> {
   const instance = space.getNode(intent.instance);
-  if (!instance || !space.isOwn(intent.instance)) return fail(problem(instance ? "operation.node-foreign" : "operation.node-missing", { node: intent.instance }));
-  if (findTypeDefinition(space, intent.instance) === undefined) return fail(problem("instantiate.no-type", { type: instance.browseName.name }));
+  if (!instance || !space.isOwn(intent.instance))
+    return fail(problem(instance ? "operation.node-foreign" : "operation.node-missing", { node: intent.instance }));
+  if (findTypeDefinition(space, intent.instance) === undefined)
+    return fail(problem("instantiate.no-type", { type: instance.browseName.name }));
   const draft = new EditDraft(space, context);
   const choice = new MemberChoice(intent.optional, intent.named);
   const withRules = findModellingRule(space, intent.instance) !== undefined;
@@ -134,4 +148,3 @@ export function addDeclaredMembers(space: AddressSpace, context: CommandContext,
   builder.complete(intent.instance, intent.includeMissing ?? false);
   return draft.finish();
 }
-

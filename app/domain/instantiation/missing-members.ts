@@ -45,14 +45,21 @@ export type OpenMember = {
 };
 
 /** All levels of an instance that exist, from the top. `newScope` names the use of a type in one place. */
-export function* walkInstance(space: AddressSpace, instance: NodeKey, newScope: () => string): Generator<InstanceLevel> {
+export function* walkInstance(
+  space: AddressSpace,
+  instance: NodeKey,
+  newScope: () => string,
+): Generator<InstanceLevel> {
   const seen = new Set<NodeKey>([instance]);
   const queue: Omit<InstanceLevel, "members">[] = [
     { parent: instance, path: [], sources: listInstanceSources(space, instance, newScope()) },
   ];
   for (let level = queue.shift(); level; level = queue.shift()) {
     const children = listHierarchicalChildren(space, level.parent);
-    const members = listMemberDeclarations(space, level.sources).map((member) => ({ member, child: findChild(children, member) }));
+    const members = listMemberDeclarations(space, level.sources).map((member) => ({
+      member,
+      child: findChild(children, member),
+    }));
     yield { ...level, members };
     for (const { member, child } of members) {
       if (!child || seen.has(child.key) || isPlaceholder(member.rule)) continue;
@@ -75,7 +82,9 @@ function listHierarchicalChildren(space: AddressSpace, key: NodeKey): Node[] {
 }
 
 function findChild(children: readonly Node[], member: MemberDeclaration): Node | undefined {
-  return children.find((n) => n.nodeClass === member.node.nodeClass && isSameQualifiedName(n.browseName, member.browseName));
+  return children.find(
+    (n) => n.nodeClass === member.node.nodeClass && isSameQualifiedName(n.browseName, member.browseName),
+  );
 }
 
 /** Mandatory members that the instance lacks. Below an optional member that is absent nothing is missing. */
@@ -88,7 +97,11 @@ export function listMissingMembers(space: AddressSpace, instance: NodeKey): Open
 
 /** Optional members that the instance has not, and placeholders, which take any number of nodes. */
 export function listOfferedMembers(space: AddressSpace, instance: NodeKey): OpenMember[] {
-  return listOpenMembers(space, instance, (_level, member) => member.rule === StandardModellingRule.Optional || isPlaceholder(member.rule));
+  return listOpenMembers(
+    space,
+    instance,
+    (_level, member) => member.rule === StandardModellingRule.Optional || isPlaceholder(member.rule),
+  );
 }
 
 function listOpenMembers(
@@ -120,6 +133,9 @@ function hasStandIn(space: AddressSpace, parent: NodeKey, member: MemberDeclarat
   return listHierarchicalChildren(space, parent).some((child) => {
     if (child.nodeClass !== member.node.nodeClass) return false;
     const definition = findTypeDefinition(space, child.key);
-    return member.typeDefinition === undefined || (definition !== undefined && isSubtypeOf(space, definition, member.typeDefinition));
+    return (
+      member.typeDefinition === undefined ||
+      (definition !== undefined && isSubtypeOf(space, definition, member.typeDefinition))
+    );
   });
 }

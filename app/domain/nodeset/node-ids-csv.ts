@@ -11,7 +11,12 @@ import { formatNodeId, parseNodeId, type NodeId, type NodeKey } from "../address
 import { StandardReferenceType } from "../address-space/standard-ids";
 import { ok, problem, type Problem, type Result } from "../core/result";
 
-export type NodeIdRow = { readonly symbol: string; readonly nodeId: NodeId; readonly nodeClass: NodeClass; readonly line: number };
+export type NodeIdRow = {
+  readonly symbol: string;
+  readonly nodeId: NodeId;
+  readonly nodeClass: NodeClass;
+  readonly line: number;
+};
 
 const CLASSES: ReadonlySet<string> = new Set<NodeClass>([
   "Object",
@@ -50,7 +55,7 @@ export function listSymbols(space: AddressSpace): ReadonlyMap<NodeKey, string> {
 function makeSymbol(space: AddressSpace, node: Node): string {
   const parts: string[] = [];
   const seen = new Set<NodeKey>();
-  for (let at: Node | undefined = node; at && !seen.has(at.key) && space.isOwn(at.key); ) {
+  for (let at: Node | undefined = node; at && !seen.has(at.key) && space.isOwn(at.key);) {
     seen.add(at.key);
     parts.unshift(at.symbolicName ?? at.browseName.name.replace(/[^A-Za-z0-9_]+/g, "_"));
     if (isTypeNode(at)) break;
@@ -76,7 +81,8 @@ export function readNodeIdsCsv(text: string, namespaceUri: string): Result<reado
   const seen = new Map<string, number>();
   for (const { cells, line } of readCells(text)) {
     const [symbol = "", identifier = "", nodeClass = ""] = cells.map((cell) => cell.trim());
-    const report = (code: string, data?: Problem["data"]): void => void problems.push(problem(code, data, { line, column: 1 }));
+    const report = (code: string, data?: Problem["data"]): void =>
+      void problems.push(problem(code, data, { line, column: 1 }));
     if (cells.length !== 3 || symbol === "") {
       report("node-ids.columns", { count: cells.length });
       continue;

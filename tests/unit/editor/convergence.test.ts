@@ -8,11 +8,31 @@ import { makeNode, makeSpace, TEST_NAMESPACE } from "../../support/small-standar
 
 const start = makeSpace([1, 2, 3].map((id) => makeNode(id, "Object")));
 const rename = (id: number, text: string) =>
-  [{ kind: "setAttribute", key: toNodeKey(numericNodeId(TEST_NAMESPACE, id)), attribute: "displayName", value: [{ text }] }] as const;
+  [
+    {
+      kind: "setAttribute",
+      key: toNodeKey(numericNodeId(TEST_NAMESPACE, id)),
+      attribute: "displayName",
+      value: [{ text }],
+    },
+  ] as const;
 
 const step = fc.record({
   window: fc.nat(1),
-  what: fc.constantFrom("edit", "edit", "edit", "undo", "redo", "hear", "offline", "online", "lose", "settle", "timers", "reload"),
+  what: fc.constantFrom(
+    "edit",
+    "edit",
+    "edit",
+    "undo",
+    "redo",
+    "hear",
+    "offline",
+    "online",
+    "lose",
+    "settle",
+    "timers",
+    "reload",
+  ),
   choice,
 });
 

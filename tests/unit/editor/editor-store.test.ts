@@ -26,7 +26,12 @@ function makeObject(id: number, name: string): Node {
 
 const keyOf = (id: number): NodeKey => toNodeKey(numericNodeId(TEST_NAMESPACE, id));
 const start = AddressSpace.of([smallStandard], buildLayer(header, [makeObject(1, "Pump"), makeObject(2, "Tank")]));
-const setName = (id: number, text: string): Operation => ({ kind: "setAttribute", key: keyOf(id), attribute: "displayName", value: [{ text }] });
+const setName = (id: number, text: string): Operation => ({
+  kind: "setAttribute",
+  key: keyOf(id),
+  attribute: "displayName",
+  value: [{ text }],
+});
 const nameOf = (space: AddressSpace, id: number): string | undefined => space.getNode(keyOf(id))?.displayName[0]?.text;
 
 /** A server after the contract of the data routes: one list of transactions, 409 when the base is old, a resend answers as before. */
@@ -39,21 +44,37 @@ class FakeServer {
 
   post(clientId: string, base: number, transactions: readonly OutgoingTransaction[]): PostOutcome {
     if (!this.isReachable) return { kind: "unreachable" };
-    const known = this.list.filter((t) => t.clientId === clientId && transactions.some((o) => o.clientSeq === t.clientSeq));
+    const known = this.list.filter(
+      (t) => t.clientId === clientId && transactions.some((o) => o.clientSeq === t.clientSeq),
+    );
     const fresh = transactions.filter((o) => !known.some((t) => t.clientSeq === o.clientSeq));
     const between = this.list.slice(base);
-    if (fresh.length > 0 && between.some((t) => !known.includes(t))) return { kind: "stale", head: this.list.length, between };
+    if (fresh.length > 0 && between.some((t) => !known.includes(t)))
+      return { kind: "stale", head: this.list.length, between };
     for (const { clientSeq, label, operations } of fresh) {
       const applied = applyWithInverse(this.space, operations);
-      if (!applied.ok) return { kind: "refused", problems: applied.problems.map((p) => ({ ...p, data: { ...p.data, clientSeq } })) };
+      if (!applied.ok)
+        return { kind: "refused", problems: applied.problems.map((p) => ({ ...p, data: { ...p.data, clientSeq } })) };
       this.space = applied.value.space;
       const seq = this.list.length + 1;
-      const transaction = { seq, base: seq - 1, clientId, clientSeq, author: clientId, at: "2026-12-01T07:00:00Z", label, operations, inverse: applied.value.inverse };
+      const transaction = {
+        seq,
+        base: seq - 1,
+        clientId,
+        clientSeq,
+        author: clientId,
+        at: "2026-12-01T07:00:00Z",
+        label,
+        operations,
+        inverse: applied.value.inverse,
+      };
       this.list.push(transaction);
       for (const listener of this.listeners) listener(transaction);
     }
     if (this.isAnswerLost) return { kind: "unreachable" };
-    const accepted = this.list.filter((t) => t.clientId === clientId && transactions.some((o) => o.clientSeq === t.clientSeq));
+    const accepted = this.list.filter(
+      (t) => t.clientId === clientId && transactions.some((o) => o.clientSeq === t.clientSeq),
+    );
     return { kind: "accepted", head: this.list.length, accepted };
   }
 }

@@ -35,13 +35,21 @@ export type AddEnumerationIntent = {
 };
 
 /** Problems: `name.*`, `enumeration.no-fields`, `enumeration.name-taken`, `enumeration.value-taken`, `enumeration.value-range`, `enumeration.extends`. */
-export function addEnumeration(space: AddressSpace, context: CommandContext, intent: AddEnumerationIntent): Result<Edit> {
+export function addEnumeration(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: AddEnumerationIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   checkFields(draft, intent.fields, intent.supertype);
   if (draft.hasFailed) return draft.finish();
   const name = qualifiedName(draft.ownNamespace, intent.name);
   const definition = { name, fields: intent.fields.map(toField) };
-  const key = addTypeTo(draft, { ...intent, supertype: intent.supertype ?? StandardDataType.Enumeration }, { definition });
+  const key = addTypeTo(
+    draft,
+    { ...intent, supertype: intent.supertype ?? StandardDataType.Enumeration },
+    { definition },
+  );
   if (key !== undefined) setFieldsProperty(draft, key, intent.fields);
   return draft.finish();
 }
@@ -49,7 +57,11 @@ export function addEnumeration(space: AddressSpace, context: CommandContext, int
 export type SetEnumerationFieldsIntent = { readonly dataType: NodeKey; readonly fields: readonly EnumerationField[] };
 
 /** Problems: `enumeration.no-enumeration` and those of `addEnumeration`. */
-export function setEnumerationFields(space: AddressSpace, context: CommandContext, intent: SetEnumerationFieldsIntent): Result<Edit> {
+export function setEnumerationFields(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: SetEnumerationFieldsIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const node = space.getNode(intent.dataType);
   if (node?.nodeClass !== "DataType" || !isSubtypeOf(space, node.key, StandardDataType.Enumeration)) {
@@ -74,7 +86,8 @@ function checkFields(draft: EditDraft, fields: readonly EnumerationField[], supe
     if (name.trim() === "") draft.fail(problem("name.empty"));
     if (names.has(name)) draft.fail(problem("enumeration.name-taken", { name }));
     if (values.has(value)) draft.fail(problem("enumeration.value-taken", { value }));
-    if (!Number.isInteger(value) || value < -2_147_483_648 || value > 2_147_483_647) draft.fail(problem("enumeration.value-range", { name, value }));
+    if (!Number.isInteger(value) || value < -2_147_483_648 || value > 2_147_483_647)
+      draft.fail(problem("enumeration.value-range", { name, value }));
     names.add(name);
     values.add(value);
   }
@@ -94,10 +107,17 @@ function setFieldsProperty(draft: EditDraft, key: NodeKey, fields: readonly Enum
   const texts = ranked.map((field): LocalizedText => field.displayName?.[0] ?? { text: field.name });
   const variant = isPlain
     ? makeTexts(texts)
-    : makeEnumValues(ranked.map((field, i) => ({ value: field.value, displayName: texts[i] as LocalizedText, ...describe(field) })));
+    : makeEnumValues(
+        ranked.map((field, i) => ({ value: field.value, displayName: texts[i] as LocalizedText, ...describe(field) })),
+      );
   const name = isPlain ? "EnumStrings" : "EnumValues";
   removeProperty(draft, key, isPlain ? "EnumValues" : "EnumStrings");
-  setListProperty(draft, key, { name, dataType: isPlain ? StandardDataType.LocalizedText : StandardDataType.EnumValueType }, variant);
+  setListProperty(
+    draft,
+    key,
+    { name, dataType: isPlain ? StandardDataType.LocalizedText : StandardDataType.EnumValueType },
+    variant,
+  );
 }
 
 function describe(field: EnumerationField): { description?: LocalizedText } {

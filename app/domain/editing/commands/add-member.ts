@@ -75,12 +75,16 @@ function listValueAttributes(intent: AddVariableIntent): Record<string, unknown>
   const attributes: Record<string, unknown> = {};
   if (dataType !== undefined) attributes["dataType"] = dataType;
   if (valueRank !== undefined && valueRank !== -1) attributes["valueRank"] = valueRank;
-  if (valueRank !== undefined || arrayDimensions) attributes["arrayDimensions"] = toDimensionsText(valueRank ?? -1, arrayDimensions);
+  if (valueRank !== undefined || arrayDimensions)
+    attributes["arrayDimensions"] = toDimensionsText(valueRank ?? -1, arrayDimensions);
   if (accessLevel !== undefined) attributes["accessLevel"] = accessLevel;
   return attributes;
 }
 
-export type AddPropertyIntent = Omit<AddVariableIntent, "typeDefinition" | "unit" | "range" | "optional" | "named" | "referenceType">;
+export type AddPropertyIntent = Omit<
+  AddVariableIntent,
+  "typeDefinition" | "unit" | "range" | "optional" | "named" | "referenceType"
+>;
 
 /** A Property: PropertyType by HasProperty, String by default. */
 export function addProperty(space: AddressSpace, context: CommandContext, intent: AddPropertyIntent): Result<Edit> {
@@ -97,7 +101,8 @@ export type AddMethodIntent = MemberIntent & {
 export function addMethod(space: AddressSpace, context: CommandContext, intent: AddMethodIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
   const key = addMethodTo(draft, intent);
-  if (key !== undefined) setMethodArgumentsOn(draft, key, { input: intent.inputArguments ?? [], output: intent.outputArguments ?? [] });
+  if (key !== undefined)
+    setMethodArgumentsOn(draft, key, { input: intent.inputArguments ?? [], output: intent.outputArguments ?? [] });
   return draft.finish();
 }
 
@@ -111,10 +116,19 @@ function addMethodTo(draft: EditDraft, intent: AddMethodIntent): NodeKey | undef
   else if (!placement.ok) draft.fail(placement.problem);
   if (draft.hasFailed || !placement?.ok) return undefined;
   const references: DeclaredReference[] = [...placement.references, ...placement.rules];
-  return draft.add({ nodeClass: "Method", browseName, ...listTexts(intent), references, attributes: { parent: intent.parent } });
+  return draft.add({
+    nodeClass: "Method",
+    browseName,
+    ...listTexts(intent),
+    references,
+    attributes: { parent: intent.parent },
+  });
 }
 
-function listTexts(intent: MemberIntent): { displayName?: readonly LocalizedText[]; description?: readonly LocalizedText[] } {
+function listTexts(intent: MemberIntent): {
+  displayName?: readonly LocalizedText[];
+  description?: readonly LocalizedText[];
+} {
   return {
     ...(intent.displayName ? { displayName: intent.displayName } : {}),
     ...(intent.description ? { description: intent.description } : {}),

@@ -47,10 +47,15 @@ export function addStructure(space: AddressSpace, context: CommandContext, inten
   const isUnion = intent.isUnion ?? false;
   const supertype = intent.supertype ?? (isUnion ? StandardDataType.Union : StandardDataType.Structure);
   checkFields(draft, intent.fields, isUnion, supertype);
-  if (!isSubtypeOf(space, supertype, StandardDataType.Structure)) draft.fail(problem("structure.supertype", { node: supertype }));
+  if (!isSubtypeOf(space, supertype, StandardDataType.Structure))
+    draft.fail(problem("structure.supertype", { node: supertype }));
   if (draft.hasFailed) return draft.finish();
   const name = qualifiedName(draft.ownNamespace, intent.name);
-  const definition = { name, ...(isUnion ? { isUnion: true } : {}), fields: intent.fields.map((f) => toField(space, f)) };
+  const definition = {
+    name,
+    ...(isUnion ? { isUnion: true } : {}),
+    fields: intent.fields.map((f) => toField(space, f)),
+  };
   const key = addTypeTo(draft, { ...intent, supertype }, { definition });
   if (key !== undefined && !intent.isAbstract) for (const encoding of ENCODINGS) addEncoding(draft, key, encoding);
   return draft.finish();
@@ -71,7 +76,11 @@ function addEncoding(draft: EditDraft, dataType: NodeKey, name: (typeof ENCODING
 export type SetStructureFieldsIntent = { readonly dataType: NodeKey; readonly fields: readonly StructureFieldIntent[] };
 
 /** Problems: `structure.no-structure` and those of `addStructure`. */
-export function setStructureFields(space: AddressSpace, context: CommandContext, intent: SetStructureFieldsIntent): Result<Edit> {
+export function setStructureFields(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: SetStructureFieldsIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const node = space.getNode(intent.dataType);
   if (node?.nodeClass !== "DataType" || !isSubtypeOf(space, node.key, StandardDataType.Structure)) {
@@ -95,9 +104,11 @@ function checkFields(
     if (name.trim() === "") draft.fail(problem("name.empty"));
     if (names.has(name)) draft.fail(problem("structure.name-taken", { name }));
     names.add(name);
-    if (draft.space.getNode(dataType)?.nodeClass !== "DataType") draft.fail(problem("structure.data-type", { name, node: dataType }));
+    if (draft.space.getNode(dataType)?.nodeClass !== "DataType")
+      draft.fail(problem("structure.data-type", { name, node: dataType }));
     if (isUnion && isOptional) draft.fail(problem("structure.optional-in-union", { name }));
-    if (valueRank !== undefined && valueRank !== -1 && valueRank < 1) draft.fail(problem("structure.rank", { name, valueRank }));
+    if (valueRank !== undefined && valueRank !== -1 && valueRank < 1)
+      draft.fail(problem("structure.rank", { name, valueRank }));
   }
   const repeated = supertype === undefined ? undefined : checkInheritedFields(draft.space, supertype, fields);
   if (repeated) draft.fail(repeated);
@@ -129,7 +140,11 @@ function toField(space: AddressSpace, intent: StructureFieldIntent): DataTypeFie
   };
 }
 
-export type OptionSetBit = { readonly name: string; readonly bit: number; readonly description?: readonly LocalizedText[] };
+export type OptionSetBit = {
+  readonly name: string;
+  readonly bit: number;
+  readonly description?: readonly LocalizedText[];
+};
 
 export type AddOptionSetIntent = {
   readonly name: string;
@@ -156,7 +171,11 @@ export function addOptionSet(space: AddressSpace, context: CommandContext, inten
 export type SetOptionSetBitsIntent = { readonly dataType: NodeKey; readonly bits: readonly OptionSetBit[] };
 
 /** Problems: `option-set.no-option-set` and those of `addOptionSet`. */
-export function setOptionSetBits(space: AddressSpace, context: CommandContext, intent: SetOptionSetBitsIntent): Result<Edit> {
+export function setOptionSetBits(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: SetOptionSetBitsIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const node = space.getNode(intent.dataType);
   if (node?.nodeClass !== "DataType" || !node.definition?.isOptionSet) {
@@ -176,7 +195,8 @@ function checkBits(draft: EditDraft, bits: readonly OptionSetBit[], size: number
     if (name.trim() === "") draft.fail(problem("name.empty"));
     if (names.has(name)) draft.fail(problem("option-set.name-taken", { name }));
     if (numbers.has(bit)) draft.fail(problem("option-set.bit-taken", { bit }));
-    if (!Number.isInteger(bit) || bit < 0 || bit >= size) draft.fail(problem("option-set.bit-range", { name, bit, size }));
+    if (!Number.isInteger(bit) || bit < 0 || bit >= size)
+      draft.fail(problem("option-set.bit-range", { name, bit, size }));
     names.add(name);
     numbers.add(bit);
   }
@@ -189,6 +209,8 @@ function toBitField({ name, bit, description }: OptionSetBit): DataTypeField {
 /** One text a bit from bit 0; bits without a meaning have an empty text (OPC 10000-3 §8.40). */
 function setOptionSetValues(draft: EditDraft, key: NodeKey, bits: readonly OptionSetBit[]): void {
   const highest = Math.max(-1, ...bits.map((b) => b.bit));
-  const texts = Array.from({ length: highest + 1 }, (_, bit) => ({ text: bits.find((b) => b.bit === bit)?.name ?? "" }));
+  const texts = Array.from({ length: highest + 1 }, (_, bit) => ({
+    text: bits.find((b) => b.bit === bit)?.name ?? "",
+  }));
   setListProperty(draft, key, { name: "OptionSetValues", dataType: StandardDataType.LocalizedText }, makeTexts(texts));
 }

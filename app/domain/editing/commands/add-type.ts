@@ -50,13 +50,19 @@ export function addTypeTo(
     if (found) draft.fail(found);
     return undefined;
   }
-  const references: DeclaredReference[] = [{ type: StandardReferenceType.HasSubtype, target: supertype.key, isForward: false }];
+  const references: DeclaredReference[] = [
+    { type: StandardReferenceType.HasSubtype, target: supertype.key, isForward: false },
+  ];
   return draft.add({
     nodeClass: supertype.nodeClass,
     browseName,
     ...(intent.description ? { description: intent.description } : {}),
     references,
-    attributes: { ...(intent.isAbstract ? { isAbstract: true } : {}), ...listClassAttributes(supertype, intent), ...attributes },
+    attributes: {
+      ...(intent.isAbstract ? { isAbstract: true } : {}),
+      ...listClassAttributes(supertype, intent),
+      ...attributes,
+    },
   });
 }
 

@@ -33,26 +33,41 @@ function connect(draft: EditDraft, edge: Edge): void {
   const [wanted, other] = isAtChild ? (["target", "source"] as const) : (["source", "target"] as const);
   draft.addReference(edge, space.isOwn(edge[wanted]) ? wanted : other);
   const child = space.getNode(edge.target);
-  const isFirstOwner = hierarchical && child && !isTypeNode(child) && space.isOwn(child.key) && child.parent === undefined;
+  const isFirstOwner =
+    hierarchical && child && !isTypeNode(child) && space.isOwn(child.key) && child.parent === undefined;
   if (isFirstOwner) draft.set(child.key, "parent", edge.source);
 }
 
 /** Problems: `disconnect.last-parent`, `disconnect.last-owner` (move or delete instead), `disconnect.required`, `operation.*`. */
-export function disconnectNodes(space: AddressSpace, context: CommandContext, intent: ConnectNodesIntent): Result<Edit> {
+export function disconnectNodes(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: ConnectNodesIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const { source, type, target } = intent;
   const child = space.getNode(target);
   if (type === R.HasTypeDefinition || type === R.HasSubtype) {
-    draft.fail(problem("disconnect.required", { type: space.getNode(type)?.browseName.name ?? type }, { node: target }));
+    draft.fail(
+      problem("disconnect.required", { type: space.getNode(type)?.browseName.name ?? type }, { node: target }),
+    );
     return draft.finish();
   }
   if (child && isHierarchical(space, type)) {
-    const others = listEdgesTo(space, target, R.HierarchicalReferences).filter((e) => e.source !== source || e.type !== type);
-    if (others.length === 0) draft.fail(problem("disconnect.last-parent", { name: child.browseName.name }, { node: target }));
+    const others = listEdgesTo(space, target, R.HierarchicalReferences).filter(
+      (e) => e.source !== source || e.type !== type,
+    );
+    if (others.length === 0)
+      draft.fail(problem("disconnect.last-parent", { name: child.browseName.name }, { node: target }));
     else if (needsOwner(child) && !others.some((e) => isOwning(space, e.type))) {
       draft.fail(problem("disconnect.last-owner", { name: child.browseName.name }, { node: target }));
     }
-    if (!isTypeNode(child) && child.parent === source && space.isOwn(target) && others.every((e) => e.source !== source)) {
+    if (
+      !isTypeNode(child) &&
+      child.parent === source &&
+      space.isOwn(target) &&
+      others.every((e) => e.source !== source)
+    ) {
       draft.set(target, "parent", others[0]?.source);
     }
   }

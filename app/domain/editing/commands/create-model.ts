@@ -9,7 +9,12 @@ import { getOwnNamespace, type ModelEntry, type ModelHeader } from "../../addres
 import type { Node } from "../../address-space/node";
 import { OPC_UA_NAMESPACE, standardKey, type NodeKey } from "../../address-space/node-id";
 import { qualifiedName } from "../../address-space/qualified-name";
-import { StandardDataType, StandardObject, StandardReferenceType, StandardType } from "../../address-space/standard-ids";
+import {
+  StandardDataType,
+  StandardObject,
+  StandardReferenceType,
+  StandardType,
+} from "../../address-space/standard-ids";
 import { fail, ok, problem, type Problem, type Result } from "../../core/result";
 import { SpaceDataTypes, toXmlSchemaUri } from "../../nodeset/values/data-type-shapes";
 import { array, scalar, type Variant } from "../../nodeset/values/variant";
@@ -28,7 +33,11 @@ export type CreateModelIntent = {
 export type ModelContent = { readonly header: ModelHeader; readonly nodes: readonly Node[] };
 
 /** `required`: the layers of the required models, namespace 0 first. Problems: `model.uri`, `model.uri-taken`, `model.date`. */
-export function createModel(required: readonly Layer[], context: CommandContext, intent: CreateModelIntent): Result<ModelContent> {
+export function createModel(
+  required: readonly Layer[],
+  context: CommandContext,
+  intent: CreateModelIntent,
+): Result<ModelContent> {
   const found = checkIntent(required, intent);
   if (found) return fail(found);
   const header = createHeader(intent);
@@ -38,11 +47,16 @@ export function createModel(required: readonly Layer[], context: CommandContext,
   return result.ok ? ok({ header, nodes: draft.space.listOwnNodes() }) : result;
 }
 
-function checkIntent(required: readonly Layer[], { namespaceUri, publicationDate }: CreateModelIntent): Problem | undefined {
+function checkIntent(
+  required: readonly Layer[],
+  { namespaceUri, publicationDate }: CreateModelIntent,
+): Problem | undefined {
   if (!isUri(namespaceUri)) return problem("model.uri", { uri: namespaceUri });
-  const taken = namespaceUri === OPC_UA_NAMESPACE || required.some((l) => l.header.models.some((m) => m.modelUri === namespaceUri));
+  const taken =
+    namespaceUri === OPC_UA_NAMESPACE || required.some((l) => l.header.models.some((m) => m.modelUri === namespaceUri));
   if (taken) return problem("model.uri-taken", { uri: namespaceUri });
-  if (!/^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\d(?:\.\d+)?(?:Z|[+-]\d\d:\d\d)$/.test(publicationDate)) return problem("model.date", { date: publicationDate });
+  if (!/^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\d(?:\.\d+)?(?:Z|[+-]\d\d:\d\d)$/.test(publicationDate))
+    return problem("model.date", { date: publicationDate });
   return undefined;
 }
 
@@ -96,7 +110,11 @@ function listMetadataProperties(space: AddressSpace): readonly [name: string, da
   return [
     ["NamespaceUri", StandardDataType.String, scalar("String", getOwnNamespace(space.own.header))],
     ["NamespaceVersion", StandardDataType.String, scalar("String", model?.version ?? "")],
-    ["NamespacePublicationDate", StandardDataType.DateTime, scalar("DateTime", model?.publicationDate ?? "0001-01-01T00:00:00Z")],
+    [
+      "NamespacePublicationDate",
+      StandardDataType.DateTime,
+      scalar("DateTime", model?.publicationDate ?? "0001-01-01T00:00:00Z"),
+    ],
     ["IsNamespaceSubset", StandardDataType.Boolean, scalar("Boolean", false)],
     // IdType 0 is Numeric: all numeric NodeIds mean the same node in every server that has this model.
     ["StaticNodeIdTypes", ID_TYPE, array("Int32", [0])],

@@ -21,7 +21,11 @@ const R = StandardReferenceType;
 export type DeleteNodesIntent = { readonly nodes: readonly NodeKey[]; readonly allowUses?: boolean };
 
 /** Another node that needs a deleted one. */
-export type Use = { readonly user: NodeKey; readonly used: NodeKey; readonly kind: "type-definition" | "supertype" | "data-type" | "method-declaration" | "interface" };
+export type Use = {
+  readonly user: NodeKey;
+  readonly used: NodeKey;
+  readonly kind: "type-definition" | "supertype" | "data-type" | "method-declaration" | "interface";
+};
 
 export type Deletion = {
   /** Everything that goes, children before parents. */
@@ -87,7 +91,8 @@ function listUsers(space: AddressSpace, going: ReadonlySet<NodeKey>): Use[] {
 }
 
 function listDataTypes(node: Node): NodeKey[] {
-  if (node.nodeClass === "Variable" || node.nodeClass === "VariableType") return node.dataType === undefined ? [] : [node.dataType];
+  if (node.nodeClass === "Variable" || node.nodeClass === "VariableType")
+    return node.dataType === undefined ? [] : [node.dataType];
   if (node.nodeClass !== "DataType") return [];
   return node.definition?.fields.flatMap((f) => (f.dataType === undefined ? [] : [f.dataType])) ?? [];
 }
@@ -100,20 +105,32 @@ export function deleteNodes(space: AddressSpace, context: CommandContext, intent
 }
 
 /** The same on a draft. */
-export function deleteNodesOn(draft: EditDraft, keys: readonly NodeKey[], options: { readonly allowUses?: boolean } = {}): void {
+export function deleteNodesOn(
+  draft: EditDraft,
+  keys: readonly NodeKey[],
+  options: { readonly allowUses?: boolean } = {},
+): void {
   const { space } = draft;
   for (const key of keys) {
-    if (!space.isOwn(key)) draft.fail(problem(space.getNode(key) ? "operation.node-foreign" : "operation.node-missing", { node: key }, { node: key }));
+    if (!space.isOwn(key))
+      draft.fail(
+        problem(space.getNode(key) ? "operation.node-foreign" : "operation.node-missing", { node: key }, { node: key }),
+      );
   }
   if (draft.hasFailed) return;
   const deletion = findDeletion(space, keys);
   const first = deletion.uses.find((use) => use.kind !== "method-declaration");
   if (first && !options.allowUses) {
-    const data = { count: deletion.uses.length, user: space.requireNode(first.user).browseName.name, used: space.requireNode(first.used).browseName.name };
+    const data = {
+      count: deletion.uses.length,
+      user: space.requireNode(first.user).browseName.name,
+      used: space.requireNode(first.used).browseName.name,
+    };
     draft.fail(problem("delete.in-use", data, { node: first.user }));
     return;
   }
-  for (const use of deletion.uses) if (use.kind === "method-declaration") draft.set(use.user, "methodDeclaration", undefined);
+  for (const use of deletion.uses)
+    if (use.kind === "method-declaration") draft.set(use.user, "methodDeclaration", undefined);
   for (const key of deletion.nodes) removeNodeOn(draft, key);
 }
 

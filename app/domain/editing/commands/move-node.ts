@@ -26,7 +26,8 @@ export function moveNode(space: AddressSpace, context: CommandContext, intent: M
   const node = space.getNode(intent.node);
   const parent = space.getNode(intent.parent);
   if (!node || !parent) draft.fail(problem("operation.node-missing", { node: node ? intent.parent : intent.node }));
-  else if (!space.isOwn(node.key)) draft.fail(problem("operation.node-foreign", { node: node.key }, { node: node.key }));
+  else if (!space.isOwn(node.key))
+    draft.fail(problem("operation.node-foreign", { node: node.key }, { node: node.key }));
   else move(draft, node, parent, intent.referenceType);
   return draft.finish();
 }
@@ -52,8 +53,15 @@ function move(draft: EditDraft, node: Node, parent: Node, wished: NodeKey | unde
   draft.addReference({ source: parent.key, type, target: node.key }, "target");
   if (isTypeNode(node)) return;
   draft.set(node.key, "parent", parent.key);
-  if (isDeclarationParent(space, parent) && findModellingRule(space, node.key) === undefined && node.nodeClass !== "View") {
-    draft.addReference({ source: node.key, type: R.HasModellingRule, target: StandardModellingRule.Mandatory }, "source");
+  if (
+    isDeclarationParent(space, parent) &&
+    findModellingRule(space, node.key) === undefined &&
+    node.nodeClass !== "View"
+  ) {
+    draft.addReference(
+      { source: node.key, type: R.HasModellingRule, target: StandardModellingRule.Mandatory },
+      "source",
+    );
   }
 }
 
@@ -62,15 +70,25 @@ function checkTarget(space: AddressSpace, node: Node, parent: Node): Problem | u
     return problem("move.below-itself", { name: node.browseName.name }, { node: node.key });
   }
   if (!isTypeNode(node)) return checkSiblingName(space, parent.key, node.browseName, node.key);
-  const isOtherKind = node.nodeClass === "DataType" && getDataTypeKind(space, node.key) !== getDataTypeKind(space, parent.key);
-  if (isOtherKind) return problem("move.other-kind", { name: node.browseName.name, parent: parent.browseName.name }, { node: node.key });
-  return node.nodeClass === "DataType" ? checkInheritedFields(space, parent.key, node.definition?.fields ?? []) : undefined;
+  const isOtherKind =
+    node.nodeClass === "DataType" && getDataTypeKind(space, node.key) !== getDataTypeKind(space, parent.key);
+  if (isOtherKind)
+    return problem(
+      "move.other-kind",
+      { name: node.browseName.name, parent: parent.browseName.name },
+      { node: node.key },
+    );
+  return node.nodeClass === "DataType"
+    ? checkInheritedFields(space, parent.key, node.definition?.fields ?? [])
+    : undefined;
 }
 
 /** What decides fields, encodings and Properties of a DataType: a structure does not become an enumeration by moving. */
 function getDataTypeKind(space: AddressSpace, dataType: NodeKey): NodeKey | string | undefined {
   const kinds: readonly NodeKey[] = [StandardDataType.Enumeration, StandardDataType.Union, StandardDataType.Structure];
-  return kinds.find((kind) => isSubtypeOf(space, dataType, kind)) ?? new SpaceDataTypes(space).findBuiltInType(dataType);
+  return (
+    kinds.find((kind) => isSubtypeOf(space, dataType, kind)) ?? new SpaceDataTypes(space).findBuiltInType(dataType)
+  );
 }
 
 /** The references to the present owner; others (a folder that organises the node too) stay. */
@@ -87,6 +105,11 @@ function chooseType(space: AddressSpace, node: Node, parent: Node, preferred: No
   if (isKept && !checkReference(space, parent.key, preferred, node.key)) return preferred;
   const typeDefinition = findTypeDefinition(space, node.key);
   const nodeClass = node.nodeClass === "Variable" || node.nodeClass === "Method" ? node.nodeClass : "Object";
-  const placement = placeChild(space, parent, { nodeClass, ...(typeDefinition === undefined ? {} : { typeDefinition }) }, {});
+  const placement = placeChild(
+    space,
+    parent,
+    { nodeClass, ...(typeDefinition === undefined ? {} : { typeDefinition }) },
+    {},
+  );
   return (placement.ok ? placement.references[0]?.type : undefined) ?? preferred ?? R.HasComponent;
 }

@@ -4,7 +4,11 @@
  */
 import type { AddressSpace } from "../../address-space/address-space";
 import { listEdgesFrom } from "../../address-space/browse";
-import { listInstanceDeclarations, toPathKey, type InstanceDeclaration } from "../../address-space/instance-declarations";
+import {
+  listInstanceDeclarations,
+  toPathKey,
+  type InstanceDeclaration,
+} from "../../address-space/instance-declarations";
 import type { DeclaredReference } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
 import { isSameQualifiedName } from "../../address-space/qualified-name";
@@ -22,7 +26,11 @@ export type OverrideMemberIntent = {
 };
 
 /** The last of `made` is the override. Problems: `override.no-such-member`, `override.exists`, `operation.*`. */
-export function overrideMember(space: AddressSpace, context: CommandContext, intent: OverrideMemberIntent): Result<Edit> {
+export function overrideMember(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: OverrideMemberIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const table = listInstanceDeclarations(space, intent.type);
   const row = findRow(table, intent.path);
@@ -38,7 +46,12 @@ function findRow(table: ReadonlyMap<string, InstanceDeclaration>, path: string):
   return undefined;
 }
 
-function override(draft: EditDraft, type: NodeKey, row: InstanceDeclaration, table: ReadonlyMap<string, InstanceDeclaration>): void {
+function override(
+  draft: EditDraft,
+  type: NodeKey,
+  row: InstanceDeclaration,
+  table: ReadonlyMap<string, InstanceDeclaration>,
+): void {
   let parent = type;
   let isNew = false;
   for (let length = 1; length <= row.path.length; length++) {
@@ -60,8 +73,13 @@ function findDirect(space: AddressSpace, parent: NodeKey, step: InstanceDeclarat
 }
 
 function addCopy(draft: EditDraft, parent: NodeKey, step: InstanceDeclaration): NodeKey | undefined {
-  const references: DeclaredReference[] = step.referenceTypes.map((type) => ({ type, target: parent, isForward: false }));
-  if (step.typeDefinition !== undefined) references.push({ type: R.HasTypeDefinition, target: step.typeDefinition, isForward: true });
+  const references: DeclaredReference[] = step.referenceTypes.map((type) => ({
+    type,
+    target: parent,
+    isForward: false,
+  }));
+  if (step.typeDefinition !== undefined)
+    references.push({ type: R.HasTypeDefinition, target: step.typeDefinition, isForward: true });
   references.push({ type: R.HasModellingRule, target: step.rule, isForward: true });
   // An override is a declaration itself, it has no MethodDeclarationId (OPC 10000-6 §F.9).
   const attributes = { ...copyAttributes(draft.space, step), methodDeclaration: undefined, parent };

@@ -39,7 +39,9 @@ function checkTaken(space: AddressSpace, node: Node, browseName: Node["browseNam
 function rename(draft: EditDraft, node: Node, browseName: Node["browseName"]): void {
   const oldName = node.browseName.name;
   draft.set(node.key, "browseName", browseName);
-  const displayName = node.displayName.map((text) => (text.text === oldName ? { ...text, text: browseName.name } : text));
+  const displayName = node.displayName.map((text) =>
+    text.text === oldName ? { ...text, text: browseName.name } : text,
+  );
   draft.set(node.key, "displayName", displayName);
   const hadMadeName = node.symbolicName === undefined || node.symbolicName === toSymbolicName(oldName);
   if (hadMadeName) draft.set(node.key, "symbolicName", toSymbolicName(browseName.name));

@@ -18,7 +18,8 @@ export function renumberNodes(space: AddressSpace, context: CommandContext, inte
   const draft = new EditDraft(space, context);
   const renamed = new Map<string, string>();
   for (const { node, nodeId } of intent.changes) {
-    if (nodeId.namespaceUri !== draft.ownNamespace) draft.fail(problem("renumber.namespace", { uri: nodeId.namespaceUri }, { node }));
+    if (nodeId.namespaceUri !== draft.ownNamespace)
+      draft.fail(problem("renumber.namespace", { uri: nodeId.namespaceUri }, { node }));
     const old = space.getNode(node)?.nodeId;
     if (old && formatNodeId(old) !== formatNodeId(nodeId)) renamed.set(formatNodeId(old), formatNodeId(nodeId));
     draft.set(node, "nodeId", nodeId);

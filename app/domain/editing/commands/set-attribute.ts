@@ -40,14 +40,19 @@ export type SetAttributeIntent = {
 };
 
 /** Bits that the standard leaves free to use (OPC 10000-3 §8.57–8.59): reserved ones must stay zero. */
-const ALLOWED_BITS: Readonly<Partial<Record<AttributeName, number>>> = { accessLevel: 0x3f7f, eventNotifier: 0x0d, accessRestrictions: 0x0f };
+const ALLOWED_BITS: Readonly<Partial<Record<AttributeName, number>>> = {
+  accessLevel: 0x3f7f,
+  eventNotifier: 0x0d,
+  accessRestrictions: 0x0f,
+};
 
 /** Problems: `attribute.value`, `attribute.reserved-bits`, `operation.*`. */
 export function setAttribute(space: AddressSpace, context: CommandContext, intent: SetAttributeIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
   const { node, attribute, value } = intent;
   const isGone = value === undefined && !isRequiredAttribute(attribute);
-  if (!isGone && !attributeSchemas[attribute].safeParse(value).success) draft.fail(problem("attribute.value", { attribute }, { node, attribute }));
+  if (!isGone && !attributeSchemas[attribute].safeParse(value).success)
+    draft.fail(problem("attribute.value", { attribute }, { node, attribute }));
   const allowed = ALLOWED_BITS[attribute];
   if (allowed !== undefined && typeof value === "number" && (value & ~allowed) !== 0) {
     draft.fail(problem("attribute.reserved-bits", { attribute, value }, { node, attribute }));

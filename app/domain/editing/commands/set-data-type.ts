@@ -14,7 +14,8 @@ export function setDataType(space: AddressSpace, context: CommandContext, intent
   const draft = new EditDraft(space, context);
   const node = space.getNode(intent.node);
   if (!node || !hasValueAttributes(node)) draft.fail(problem("value.no-variable", { node: intent.node }));
-  else if (space.getNode(intent.dataType)?.nodeClass !== "DataType") draft.fail(problem("value.no-data-type", { node: intent.dataType }));
+  else if (space.getNode(intent.dataType)?.nodeClass !== "DataType")
+    draft.fail(problem("value.no-data-type", { node: intent.dataType }));
   else {
     draft.set(intent.node, "dataType", intent.dataType === StandardDataType.BaseDataType ? undefined : intent.dataType);
     dropMisfitValue(draft, intent.node, intent.dataType);

@@ -26,7 +26,11 @@ export type SetMethodArgumentsIntent = {
 };
 
 /** An empty list takes the Property away. Problems: `argument.no-method`, `argument.name-taken`, `argument.data-type`, `name.empty`. */
-export function setMethodArguments(space: AddressSpace, context: CommandContext, intent: SetMethodArgumentsIntent): Result<Edit> {
+export function setMethodArguments(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: SetMethodArgumentsIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   setMethodArgumentsOn(draft, intent.method, intent);
   return draft.finish();
@@ -50,7 +54,8 @@ function checkArguments(draft: EditDraft, list: readonly ArgumentIntent[]): void
     if (name.trim() === "") draft.fail(problem("name.empty"));
     if (names.has(name)) draft.fail(problem("argument.name-taken", { name }));
     names.add(name);
-    if (draft.space.getNode(dataType)?.nodeClass !== "DataType") draft.fail(problem("argument.data-type", { name, node: dataType }));
+    if (draft.space.getNode(dataType)?.nodeClass !== "DataType")
+      draft.fail(problem("argument.data-type", { name, node: dataType }));
   }
 }
 

@@ -33,7 +33,11 @@ export function setModelInfo(space: AddressSpace, context: CommandContext, inten
 export type SetRequiredModelsIntent = { readonly requiredModels: readonly ModelEntry[] };
 
 /** Problems: `model.no-row`, `model.required-in-use` (data: uri, count) where a model that nodes use would go. */
-export function setRequiredModels(space: AddressSpace, context: CommandContext, intent: SetRequiredModelsIntent): Result<Edit> {
+export function setRequiredModels(
+  space: AddressSpace,
+  context: CommandContext,
+  intent: SetRequiredModelsIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const { models, namespaceUris } = space.own.header;
   const [row, ...others] = models;
@@ -47,7 +51,11 @@ export function setRequiredModels(space: AddressSpace, context: CommandContext, 
     const count = countUses(space, uri);
     if (count > 0) draft.fail(problem("model.required-in-use", { uri, count }));
   }
-  draft.do({ kind: "setHeader", field: "models", value: [{ ...row, requiredModels: intent.requiredModels.map(toRequiredRow) }, ...others] });
+  draft.do({
+    kind: "setHeader",
+    field: "models",
+    value: [{ ...row, requiredModels: intent.requiredModels.map(toRequiredRow) }, ...others],
+  });
   const kept = namespaceUris.filter((uri) => !gone.includes(uri));
   const added = [...wanted].filter((uri) => uri !== OPC_UA_NAMESPACE && !kept.includes(uri));
   draft.do({ kind: "setHeader", field: "namespaceUris", value: [...kept, ...added] });
@@ -65,7 +73,8 @@ function listNamespaces(space: AddressSpace, node: Node): ReadonlySet<string> {
   const keys = new Set<NodeKey>();
   for (const edge of listDeclaredEdges(node)) for (const key of [edge.source, edge.type, edge.target]) keys.add(key);
   if ("dataType" in node && node.dataType !== undefined) keys.add(node.dataType);
-  if (node.nodeClass === "DataType") for (const field of node.definition?.fields ?? []) if (field.dataType !== undefined) keys.add(field.dataType);
+  if (node.nodeClass === "DataType")
+    for (const field of node.definition?.fields ?? []) if (field.dataType !== undefined) keys.add(field.dataType);
   const uris = new Set([node.browseName.namespaceUri]);
   for (const key of keys) uris.add((space.getNode(key)?.nodeId ?? parseNodeKey(key)).namespaceUri);
   return uris;

@@ -7,10 +7,17 @@ import { problem, type Result } from "../../core/result";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
 import { checkReference } from "../lawful-references";
 
-export type SetModellingRuleIntent = { readonly node: NodeKey; /** Absent takes the rule away. */ readonly rule?: NodeKey };
+export type SetModellingRuleIntent = {
+  readonly node: NodeKey;
+  /** Absent takes the rule away. */ readonly rule?: NodeKey;
+};
 
 /** Hint `rule.placeholder-name` where a placeholder's name is not in angle brackets. Problems: `reference.*`, `operation.*`. */
-export function setModellingRule(space: AddressSpace, context: CommandContext, { node, rule }: SetModellingRuleIntent): Result<Edit> {
+export function setModellingRule(
+  space: AddressSpace,
+  context: CommandContext,
+  { node, rule }: SetModellingRuleIntent,
+): Result<Edit> {
   const draft = new EditDraft(space, context);
   const type = StandardReferenceType.HasModellingRule;
   const known = space.edgesFrom(node).filter((e) => e.type === type);
@@ -21,6 +28,7 @@ export function setModellingRule(space: AddressSpace, context: CommandContext, {
   if (refused) draft.fail(refused);
   draft.addReference({ source: node, type, target: rule }, "source");
   const name = space.getNode(node)?.browseName.name ?? "";
-  if (isPlaceholder(rule) && !/^<.*>$/s.test(name)) draft.note(problem.hint("rule.placeholder-name", { name }, { node }));
+  if (isPlaceholder(rule) && !/^<.*>$/s.test(name))
+    draft.note(problem.hint("rule.placeholder-name", { name }, { node }));
   return draft.finish();
 }

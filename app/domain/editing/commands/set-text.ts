@@ -18,11 +18,13 @@ export type SetTextIntent = {
 export function setText(space: AddressSpace, context: CommandContext, intent: SetTextIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
   const locale = intent.locale ?? "";
-  if (locale !== "" && !/^[A-Za-z]{2,8}(?:-[A-Za-z0-9]{1,8})*$/.test(locale)) draft.fail(problem("text.locale", { locale }));
+  if (locale !== "" && !/^[A-Za-z]{2,8}(?:-[A-Za-z0-9]{1,8})*$/.test(locale))
+    draft.fail(problem("text.locale", { locale }));
   const node = space.getNode(intent.node);
   const known = node?.[intent.attribute as "displayName"] ?? [];
   const texts = withText(known, locale, intent.text);
-  if (texts.length === 0 && intent.attribute === "displayName") draft.fail(problem("text.last-display-name", undefined, { node: intent.node }));
+  if (texts.length === 0 && intent.attribute === "displayName")
+    draft.fail(problem("text.last-display-name", undefined, { node: intent.node }));
   if (!draft.hasFailed) draft.set(intent.node, intent.attribute, texts.length === 0 ? undefined : texts);
   return draft.finish();
 }

@@ -18,7 +18,10 @@ import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
 import { placeChild } from "../placement";
 import { deleteNodesOn } from "./delete-nodes";
 
-export type SetUnitIntent = { readonly variable: NodeKey; /** Absent takes the Property away. */ readonly unit?: EUInformation };
+export type SetUnitIntent = {
+  readonly variable: NodeKey;
+  /** Absent takes the Property away. */ readonly unit?: EUInformation;
+};
 export type SetRangeIntent = { readonly variable: NodeKey; readonly range?: Range };
 
 /** Problems: `unit.no-variable`, `unit.not-numeric`, those of apply. */
@@ -38,7 +41,11 @@ export function setRange(space: AddressSpace, context: CommandContext, intent: S
 }
 
 export function setUnitOn(draft: EditDraft, variable: NodeKey, unit: EUInformation): void {
-  setPropertyOn(draft, variable, { name: "EngineeringUnits", dataType: StandardDataType.EUInformation, value: makeEuInformation(unit) });
+  setPropertyOn(draft, variable, {
+    name: "EngineeringUnits",
+    dataType: StandardDataType.EUInformation,
+    value: makeEuInformation(unit),
+  });
 }
 
 export function setRangeOn(draft: EditDraft, variable: NodeKey, range: Range): void {
@@ -65,7 +72,8 @@ function setPropertyOn(draft: EditDraft, variable: NodeKey, property: StandardPr
 
 /** Numbers have units (OPC 10000-8 §5.3.2); so may a structure and what is still abstract. */
 function checkNumeric(space: AddressSpace, node: Node | undefined, key: NodeKey): Problem | undefined {
-  if (node?.nodeClass !== "Variable" && node?.nodeClass !== "VariableType") return problem("unit.no-variable", { node: key });
+  if (node?.nodeClass !== "Variable" && node?.nodeClass !== "VariableType")
+    return problem("unit.no-variable", { node: key });
   const dataType = getDataType(node);
   const fits =
     dataType === StandardDataType.BaseDataType ||
@@ -81,14 +89,22 @@ export type NewStandardProperty = {
 };
 
 /** Adds a Property whose BrowseName is the standard's; below types and declarations with a modelling rule. */
-export function addStandardProperty(draft: EditDraft, parent: Node, property: NewStandardProperty): NodeKey | undefined {
+export function addStandardProperty(
+  draft: EditDraft,
+  parent: Node,
+  property: NewStandardProperty,
+): NodeKey | undefined {
   const child = { nodeClass: "Variable", typeDefinition: StandardType.PropertyType } as const;
   const placement = placeChild(draft.space, parent, child, {});
   if (!placement.ok) {
     draft.fail(placement.problem);
     return undefined;
   }
-  const definition = { type: StandardReferenceType.HasTypeDefinition, target: StandardType.PropertyType, isForward: true };
+  const definition = {
+    type: StandardReferenceType.HasTypeDefinition,
+    target: StandardType.PropertyType,
+    isForward: true,
+  };
   return draft.add({
     nodeClass: "Variable",
     browseName: qualifiedName(OPC_UA_NAMESPACE, property.name),

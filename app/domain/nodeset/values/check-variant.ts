@@ -6,7 +6,18 @@ import type { DataTypeLookup } from "./data-type-shapes";
 import { INTEGER_RANGES } from "./scalar-text";
 import type { BuiltInType, Variant } from "./variant";
 
-const NUMBERS: readonly BuiltInType[] = ["SByte", "Byte", "Int16", "UInt16", "Int32", "UInt32", "Int64", "UInt64", "Float", "Double"];
+const NUMBERS: readonly BuiltInType[] = [
+  "SByte",
+  "Byte",
+  "Int16",
+  "UInt16",
+  "Int32",
+  "UInt32",
+  "Int64",
+  "UInt64",
+  "Float",
+  "Double",
+];
 const SIGNED: readonly BuiltInType[] = ["SByte", "Int16", "Int32", "Int64"];
 const UNSIGNED: readonly BuiltInType[] = ["Byte", "UInt16", "UInt32", "UInt64"];
 
@@ -34,7 +45,10 @@ function listAllowedTypes(dataType: NodeKey, types: DataTypeLookup): readonly Bu
   return builtIn === undefined || builtIn === "Variant" ? undefined : [builtIn];
 }
 
-function checkRank(value: Variant, { dataType, valueRank }: { dataType: NodeKey; valueRank: number }): Problem | undefined {
+function checkRank(
+  value: Variant,
+  { dataType, valueRank }: { dataType: NodeKey; valueRank: number },
+): Problem | undefined {
   const rank = value.shape === "scalar" ? -1 : value.shape === "array" ? 1 : value.dimensions.length;
   const isEmptyArray = value.shape === "array" && value.values.length === 0;
   const fits =

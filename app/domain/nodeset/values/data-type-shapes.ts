@@ -50,14 +50,61 @@ export interface DataTypeLookup {
 }
 
 const BUILT_IN_BY_KEY = new Map<NodeKey, BuiltInType>(BUILT_IN_TYPES.map((name, i) => [standardKey(i + 1), name]));
-const ABSTRACT_NUMBERS = new Set<NodeKey>([StandardDataType.Number, StandardDataType.Integer, StandardDataType.UInteger]);
+const ABSTRACT_NUMBERS = new Set<NodeKey>([
+  StandardDataType.Number,
+  StandardDataType.Integer,
+  StandardDataType.UInteger,
+]);
 
 /** The four structures that files contain most; known even where namespace 0 is not loaded (OPC 10000-3 §8.6, §8.14; OPC 10000-8 §5.6). */
-const KNOWN_STRUCTURES: readonly (readonly [NodeKey, string, string, readonly (readonly [string, number, number?])[]])[] = [
-  [StandardDataType.Argument, "Argument", "i=297", [["Name", 12], ["DataType", 17], ["ValueRank", 6], ["ArrayDimensions", 7, 1], ["Description", 21]]],
-  [StandardDataType.EnumValueType, "EnumValueType", "i=7616", [["Value", 8], ["DisplayName", 21], ["Description", 21]]],
-  [StandardDataType.EUInformation, "EUInformation", "i=888", [["NamespaceUri", 12], ["UnitId", 6], ["DisplayName", 21], ["Description", 21]]],
-  [StandardDataType.Range, "Range", "i=885", [["Low", 11], ["High", 11]]],
+const KNOWN_STRUCTURES: readonly (readonly [
+  NodeKey,
+  string,
+  string,
+  readonly (readonly [string, number, number?])[],
+])[] = [
+  [
+    StandardDataType.Argument,
+    "Argument",
+    "i=297",
+    [
+      ["Name", 12],
+      ["DataType", 17],
+      ["ValueRank", 6],
+      ["ArrayDimensions", 7, 1],
+      ["Description", 21],
+    ],
+  ],
+  [
+    StandardDataType.EnumValueType,
+    "EnumValueType",
+    "i=7616",
+    [
+      ["Value", 8],
+      ["DisplayName", 21],
+      ["Description", 21],
+    ],
+  ],
+  [
+    StandardDataType.EUInformation,
+    "EUInformation",
+    "i=888",
+    [
+      ["NamespaceUri", 12],
+      ["UnitId", 6],
+      ["DisplayName", 21],
+      ["Description", 21],
+    ],
+  ],
+  [
+    StandardDataType.Range,
+    "Range",
+    "i=885",
+    [
+      ["Low", 11],
+      ["High", 11],
+    ],
+  ],
 ];
 
 const knownShapes: readonly StructureShape[] = KNOWN_STRUCTURES.map(([dataType, elementName, typeId, fields]) => ({
@@ -118,7 +165,8 @@ export class SpaceDataTypes implements DataTypeLookup {
 
   findEnumerationNames(dataType: NodeKey): ReadonlyMap<number, string> | undefined {
     const node = this.#getDataType(dataType);
-    if (!node?.definition || !listSupertypes(this.#space, dataType).includes(StandardDataType.Enumeration)) return undefined;
+    if (!node?.definition || !listSupertypes(this.#space, dataType).includes(StandardDataType.Enumeration))
+      return undefined;
     return new Map(node.definition.fields.map((f) => [f.value ?? -1, f.name]));
   }
 
@@ -143,9 +191,15 @@ export class SpaceDataTypes implements DataTypeLookup {
     const root = chain.indexOf(StandardDataType.Structure);
     if (!node || root < 0) return undefined;
     // The fields of an option set's Definition are its bits; the structure has Value and ValidBits of OptionSet itself.
-    const definitions = chain.slice(0, root).map((key) => this.#getDataType(key)?.definition).filter((d) => !d?.isOptionSet);
+    const definitions = chain
+      .slice(0, root)
+      .map((key) => this.#getDataType(key)?.definition)
+      .filter((d) => !d?.isOptionSet);
     const isUnion = definitions.some((d) => d?.isUnion === true) || chain.includes(StandardDataType.Union);
-    const fields = definitions.reverse().flatMap((d) => d?.fields ?? []).map((f) => this.#makeField(f));
+    const fields = definitions
+      .reverse()
+      .flatMap((d) => d?.fields ?? [])
+      .map((f) => this.#makeField(f));
     return {
       dataType,
       elementName: toXmlName(node.browseName.name),
@@ -190,7 +244,9 @@ export class SpaceDataTypes implements DataTypeLookup {
   /** The model's XmlSchemaUri; where a model gives none, the usual form: its URI with `Types.xsd` behind it. */
   #findXmlNamespace(node: DataTypeNode): string {
     if (node.nodeId.namespaceUri === OPC_UA_NAMESPACE) return TYPES_XML_NAMESPACE;
-    const layer = this.#space.layers.find((l) => l.header.models.length > 0 && getOwnNamespace(l.header) === node.nodeId.namespaceUri);
+    const layer = this.#space.layers.find(
+      (l) => l.header.models.length > 0 && getOwnNamespace(l.header) === node.nodeId.namespaceUri,
+    );
     const model = layer?.header.models.find((m) => m.modelUri === node.nodeId.namespaceUri);
     return model?.xmlSchemaUri ?? toXmlSchemaUri(node.nodeId.namespaceUri);
   }

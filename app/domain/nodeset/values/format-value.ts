@@ -17,7 +17,8 @@ const DEFAULT_ITEMS = 20;
 /** One line. Text stands as it is, without quotes, unless it is inside an array or a structure. */
 export function formatValue(variant: Variant, types: DataTypeLookup, options: FormatOptions = {}): string {
   const names = options.dataType === undefined ? undefined : types.findEnumerationNames(options.dataType);
-  const one = (value: Scalar, isInside: boolean): string => formatScalar(variant, value, types, { ...options, names, isInside });
+  const one = (value: Scalar, isInside: boolean): string =>
+    formatScalar(variant, value, types, { ...options, names, isInside });
   if (variant.shape === "scalar") return one(variant.value, false);
   const values: readonly Scalar[] = variant.values;
   const most = options.maxItems ?? DEFAULT_ITEMS;
@@ -31,7 +32,8 @@ type Inner = FormatOptions & { readonly names: ReadonlyMap<number, string> | und
 
 function formatScalar(variant: Variant, value: Scalar, types: DataTypeLookup, inner: Inner): string {
   if (value === null) return "–";
-  if (typeof value === "number") return inner.names?.get(value) ?? (variant.type === "StatusCode" ? formatStatus(value) : formatNumber(value));
+  if (typeof value === "number")
+    return inner.names?.get(value) ?? (variant.type === "StatusCode" ? formatStatus(value) : formatNumber(value));
   if (typeof value === "bigint") return formatNumber(value);
   if (typeof value === "boolean") return String(value);
   if (typeof value === "string") return variant.type === "ByteString" ? formatBytes(value) : quote(value, inner);
@@ -85,7 +87,10 @@ function formatStructure(value: ExtensionObject, types: DataTypeLookup, inner: I
   const shape = types.findStructure(value.dataType);
   const parts = Object.entries(value.fields).map(([name, field]) => {
     const dataType = shape?.fields.find((f) => f.name === name)?.dataType;
-    const text = formatValue(field, types, { ...(dataType === undefined ? {} : { dataType }), ...(inner.maxItems === undefined ? {} : { maxItems: inner.maxItems }) });
+    const text = formatValue(field, types, {
+      ...(dataType === undefined ? {} : { dataType }),
+      ...(inner.maxItems === undefined ? {} : { maxItems: inner.maxItems }),
+    });
     return `${name}: ${text}`;
   });
   return `{${parts.join(", ")}}`;

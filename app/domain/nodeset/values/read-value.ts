@@ -139,7 +139,12 @@ class ValueReader {
     const typeElement = findChild(element, "TypeId");
     const typeId = ((typeElement && findText(typeElement, "Identifier")) ?? "i=0").trim();
     const bodyElement = findChild(element, "Body");
-    const raw = (reason: RawStructure["reason"]): RawStructure => ({ kind: "raw", typeId, body: bodyElement?.content ?? { xml: "" }, reason });
+    const raw = (reason: RawStructure["reason"]): RawStructure => ({
+      kind: "raw",
+      typeId,
+      body: bodyElement?.content ?? { xml: "" },
+      reason,
+    });
     const body = bodyElement?.children[0];
     if (!body) return raw("no-body");
     if (body.name === "ByteString") return raw("binary-body");
@@ -154,7 +159,8 @@ class ValueReader {
     const fields: Record<string, Variant> = {};
     const byName = new Map(shape.fields.map((field) => [toXmlName(field.name), field]));
     for (const child of body.children) {
-      const isControl = (shape.isUnion && child.name === "SwitchField") || (shape.hasOptionalFields && child.name === "EncodingMask");
+      const isControl =
+        (shape.isUnion && child.name === "SwitchField") || (shape.hasOptionalFields && child.name === "EncodingMask");
       if (isControl) continue;
       const field = byName.get(child.name);
       const value = field && this.#readField(child, field, depth + 1);
@@ -168,7 +174,8 @@ class ValueReader {
   #readField(element: FragmentElement, field: StructureField, depth: number): Variant | undefined {
     const type = field.builtInType;
     if (!type) return undefined;
-    if (type === "Variant" && field.valueRank < 0) return { type, shape: "scalar", value: this.#readScalar(element, type, depth) as Variant | null };
+    if (type === "Variant" && field.valueRank < 0)
+      return { type, shape: "scalar", value: this.#readScalar(element, type, depth) as Variant | null };
     const read = (item: FragmentElement): Scalar | undefined => this.#readFieldItem(item, field, type, depth);
     if (field.valueRank === -1) return makeVariant(type, "scalar", [read(element)]);
     const matrix = readMatrixParts(element);
@@ -176,7 +183,12 @@ class ValueReader {
     return makeVariant(type, "array", element.children.map(read));
   }
 
-  #readFieldItem(element: FragmentElement, field: StructureField, type: BuiltInType, depth: number): Scalar | undefined {
+  #readFieldItem(
+    element: FragmentElement,
+    field: StructureField,
+    type: BuiltInType,
+    depth: number,
+  ): Scalar | undefined {
     if (field.isInline) {
       if (element.isNil) return null;
       const shape = this.#types.findStructure(field.dataType);
@@ -244,7 +256,10 @@ function makeVariant(
 function addDefaults(shape: StructureShape, fields: Record<string, Variant>): void {
   for (const field of shape.fields) {
     if (fields[field.name] !== undefined || field.isOptional || !field.builtInType) continue;
-    const value = field.valueRank > 0 ? makeVariant(field.builtInType, "array", []) : makeVariant(field.builtInType, "scalar", [getDefault(field.builtInType)]);
+    const value =
+      field.valueRank > 0
+        ? makeVariant(field.builtInType, "array", [])
+        : makeVariant(field.builtInType, "scalar", [getDefault(field.builtInType)]);
     if (value) fields[field.name] = value;
   }
 }
@@ -295,7 +310,10 @@ function readLocalizedText(element: FragmentElement): LocalizedText | null {
 
 function readQualifiedName(element: FragmentElement): QualifiedName {
   const index = (findText(element, "NamespaceIndex") ?? "0").trim();
-  return { namespaceUri: index === "0" || index === "" ? OPC_UA_NAMESPACE : index, name: findText(element, "Name") ?? "" };
+  return {
+    namespaceUri: index === "0" || index === "" ? OPC_UA_NAMESPACE : index,
+    name: findText(element, "Name") ?? "",
+  };
 }
 
 function findChild(element: FragmentElement, name: string): FragmentElement | undefined {

@@ -25,7 +25,11 @@ export type Argument = {
 };
 
 /** OPC 10000-3 §8.14. */
-export type EnumValue = { readonly value: number | bigint; readonly displayName: LocalizedText; readonly description?: LocalizedText };
+export type EnumValue = {
+  readonly value: number | bigint;
+  readonly displayName: LocalizedText;
+  readonly description?: LocalizedText;
+};
 
 export function makeEuInformation(unit: EUInformation): Variant {
   return toVariant(
@@ -142,7 +146,9 @@ function getNumbers(variant: Variant | undefined): number[] {
 }
 
 function getLocalizedText(variant: Variant | undefined): LocalizedText {
-  return variant?.type === "LocalizedText" && variant.shape === "scalar" && variant.value ? variant.value : { text: "" };
+  return variant?.type === "LocalizedText" && variant.shape === "scalar" && variant.value
+    ? variant.value
+    : { text: "" };
 }
 
 function getNodeId(variant: Variant | undefined): NodeId {

@@ -117,7 +117,12 @@ type VariantOf<T extends BuiltInType> =
   | { readonly type: T; readonly shape: "scalar"; readonly value: ScalarOf[T] }
   | { readonly type: T; readonly shape: "array"; readonly values: readonly ScalarOf[T][] }
   /** Values are flat, the last index runs fastest (OPC 10000-6 §5.3.1.17). */
-  | { readonly type: T; readonly shape: "matrix"; readonly values: readonly ScalarOf[T][]; readonly dimensions: readonly number[] };
+  | {
+      readonly type: T;
+      readonly shape: "matrix";
+      readonly values: readonly ScalarOf[T][];
+      readonly dimensions: readonly number[];
+    };
 
 /** A value of one built-in type: scalar, array or matrix. */
 export type Variant = { [T in BuiltInType]: VariantOf<T> }[BuiltInType];

@@ -75,7 +75,10 @@ class ValueWriter {
         return branch(`ListOf${variant.type}`, this.#items(variant));
       case "matrix":
         return branch("Matrix", [
-          branch("Dimensions", variant.dimensions.map((d) => leaf("UInt32", String(d)))),
+          branch(
+            "Dimensions",
+            variant.dimensions.map((d) => leaf("UInt32", String(d))),
+          ),
           branch("Elements", this.#items(variant)),
         ]);
     }
@@ -121,7 +124,10 @@ class ValueWriter {
   #extensionObject(name: string, value: ExtensionObject): Element {
     if (value.kind === "raw") {
       const typeId = branch("TypeId", [leaf("Identifier", value.typeId)]);
-      return branch(name, value.reason === "no-body" ? [typeId] : [typeId, { name: "Body", ...rawContent(value.body) }]);
+      return branch(
+        name,
+        value.reason === "no-body" ? [typeId] : [typeId, { name: "Body", ...rawContent(value.body) }],
+      );
     }
     const shape = this.#requireShape(value);
     const body = branch(shape.elementName, this.#structureParts(shape, value));
@@ -152,15 +158,21 @@ class ValueWriter {
   #field(shape: StructureShape, field: StructureField, variant: Variant): Element {
     const element = this.#fieldContent(toXmlName(field.name), field, variant);
     if (shape.xmlNamespace === field.contentNamespace || !element.children?.length) return element;
-    return { ...element, children: element.children.map((child) => withAttributes(child, { xmlns: field.contentNamespace })) };
+    return {
+      ...element,
+      children: element.children.map((child) => withAttributes(child, { xmlns: field.contentNamespace })),
+    };
   }
 
   #fieldContent(name: string, field: StructureField, variant: Variant): Element {
     const { itemName } = field;
     const one = (value: Scalar, as: string): Element => {
-      if (field.isInline && variant.type === "ExtensionObject") return this.#inlineStructure(as, value as ExtensionObject | null);
-      if (field.isEnumeration && variant.type === "Int32") return leaf(as, this.#enumerationText(field, value as number));
-      if (field.builtInType === "Variant") return this.#scalar(as, "Variant", variant.type === "Variant" ? value : toVariant(variant, value));
+      if (field.isInline && variant.type === "ExtensionObject")
+        return this.#inlineStructure(as, value as ExtensionObject | null);
+      if (field.isEnumeration && variant.type === "Int32")
+        return leaf(as, this.#enumerationText(field, value as number));
+      if (field.builtInType === "Variant")
+        return this.#scalar(as, "Variant", variant.type === "Variant" ? value : toVariant(variant, value));
       return this.#scalar(as, variant.type, value);
     };
     switch (variant.shape) {
@@ -168,11 +180,20 @@ class ValueWriter {
         return one(variant.value, name);
       case "array":
         if (field.builtInType === "Variant" && field.valueRank === -1) return this.#scalar(name, "Variant", variant);
-        return branch(name, variant.values.map((value) => one(value, itemName)));
+        return branch(
+          name,
+          variant.values.map((value) => one(value, itemName)),
+        );
       case "matrix":
         return branch(name, [
-          branch("Dimensions", variant.dimensions.map((d) => leaf("Int32", String(d)))),
-          branch("Elements", variant.values.map((value) => one(value, itemName))),
+          branch(
+            "Dimensions",
+            variant.dimensions.map((d) => leaf("Int32", String(d))),
+          ),
+          branch(
+            "Elements",
+            variant.values.map((value) => one(value, itemName)),
+          ),
         ]);
     }
   }
@@ -215,7 +236,8 @@ function toVariant(variant: Variant, value: Scalar): Variant {
 
 function rawContent(xml: XmlText): { raw: string; attributes: Readonly<Record<string, string>> } {
   const attributes: Record<string, string> = { ...xml.attributes };
-  for (const [prefix, uri] of Object.entries(xml.prefixes ?? {})) attributes[prefix === "" ? "xmlns" : `xmlns:${prefix}`] = uri;
+  for (const [prefix, uri] of Object.entries(xml.prefixes ?? {}))
+    attributes[prefix === "" ? "xmlns" : `xmlns:${prefix}`] = uri;
   return { raw: xml.xml, attributes };
 }
 
@@ -247,7 +269,8 @@ function diagnosticParts(info: DiagnosticInfo): Element[] {
   if (info.locale !== undefined) parts.push(leaf("Locale", String(info.locale)));
   if (info.localizedText !== undefined) parts.push(leaf("LocalizedText", String(info.localizedText)));
   if (info.additionalInfo !== undefined) parts.push(leaf("AdditionalInfo", info.additionalInfo));
-  if (info.innerStatusCode !== undefined) parts.push(branch("InnerStatusCode", [leaf("Code", String(info.innerStatusCode))]));
+  if (info.innerStatusCode !== undefined)
+    parts.push(branch("InnerStatusCode", [leaf("Code", String(info.innerStatusCode))]));
   if (info.innerDiagnosticInfo) parts.push(branch("InnerDiagnosticInfo", diagnosticParts(info.innerDiagnosticInfo)));
   return parts;
 }

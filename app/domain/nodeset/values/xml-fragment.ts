@@ -30,7 +30,9 @@ type Open = { -readonly [K in keyof Omit<FragmentElement, "children" | "content"
 /** The elements of a Value; none for an empty one. Problems as `scanXml`. */
 export function readFragment(value: XmlText): Result<readonly FragmentElement[]> {
   const declared = Object.entries(value.prefixes ?? {});
-  const head = declared.map(([prefix, uri]) => ` ${prefix === "" ? "xmlns" : `xmlns:${prefix}`}="${escapeAttribute(uri)}"`).join("");
+  const head = declared
+    .map(([prefix, uri]) => ` ${prefix === "" ? "xmlns" : `xmlns:${prefix}`}="${escapeAttribute(uri)}"`)
+    .join("");
   const source = `<v${head}>${value.xml}</v>`;
   const builder = new FragmentBuilder(source);
   const stopped = scanXml(source, builder, { limits: READ_LIMITS });
@@ -103,6 +105,8 @@ function listDeclarations(attributes: Attributes): Record<string, string> {
 
 /** Only the prefixes that the content uses; the default namespace is used by every name without one. */
 function makeContent(xml: string, prefixes: Readonly<Record<string, string>>): XmlText {
-  const used = Object.entries(prefixes).filter(([prefix]) => (prefix === "" ? /<[^:/!?>\s]+[\s/>]/.test(xml) : xml.includes(`${prefix}:`)));
+  const used = Object.entries(prefixes).filter(([prefix]) =>
+    prefix === "" ? /<[^:/!?>\s]+[\s/>]/.test(xml) : xml.includes(`${prefix}:`),
+  );
   return used.length === 0 ? { xml } : { xml, prefixes: Object.fromEntries(used) };
 }

@@ -13,7 +13,9 @@ describe("BlockAllocator", () => {
         fc.nat(120),
         (starts, taken, wanted) => {
           const blocks = starts.map((s) => ({ from: s * 10, to: s * 10 + 9 }));
-          const allocator = new BlockAllocator(TEST_NAMESPACE, blocks.slice(0, 1), (id) => taken.includes(id.identifier as number));
+          const allocator = new BlockAllocator(TEST_NAMESPACE, blocks.slice(0, 1), (id) =>
+            taken.includes(id.identifier as number),
+          );
           const given: number[] = [];
           for (let i = 0; i < wanted; i++) {
             const block = blocks[i + 1];
@@ -32,7 +34,10 @@ describe("BlockAllocator", () => {
   });
 
   it("skips what the model has and says when the block is empty", () => {
-    const space = makeSpace([makeNode(5, "Object"), makeNode(6, "Object", { nodeId: numericNodeId(TEST_NAMESPACE, 7) })]);
+    const space = makeSpace([
+      makeNode(5, "Object"),
+      makeNode(6, "Object", { nodeId: numericNodeId(TEST_NAMESPACE, 7) }),
+    ]);
     const allocator = BlockAllocator.forModel(() => space, [{ from: 5, to: 8 }]);
     expect(allocator.remaining).toBe(4);
     const first = allocator.allocate("Variable");

@@ -65,15 +65,32 @@ describe("setAttribute", () => {
   const space = makeSpace([parent, child]);
 
   it("sets, changes and takes away", () => {
-    const named = expectOperation(space, { kind: "setAttribute", key: child.key, attribute: "dataType", value: standardKey(11) });
+    const named = expectOperation(space, {
+      kind: "setAttribute",
+      key: child.key,
+      attribute: "dataType",
+      value: standardKey(11),
+    });
     const without = expectOperation(named, { kind: "setAttribute", key: child.key, attribute: "dataType" });
     expect(without.getNode(child.key)).not.toHaveProperty("dataType");
   });
 
   it("refuses an attribute that the class has not, and taking away what every node has", () => {
-    expectRefused(space, { kind: "setAttribute", key: parent.key, attribute: "dataType", value: standardKey(11) }, "operation.attribute-class");
-    expectRefused(space, { kind: "setAttribute", key: parent.key, attribute: "displayName" }, "operation.attribute-required");
-    expectRefused(space, { kind: "setAttribute", key: standardKey(58), attribute: "isAbstract", value: true }, "operation.node-foreign");
+    expectRefused(
+      space,
+      { kind: "setAttribute", key: parent.key, attribute: "dataType", value: standardKey(11) },
+      "operation.attribute-class",
+    );
+    expectRefused(
+      space,
+      { kind: "setAttribute", key: parent.key, attribute: "displayName" },
+      "operation.attribute-required",
+    );
+    expectRefused(
+      space,
+      { kind: "setAttribute", key: standardKey(58), attribute: "isAbstract", value: true },
+      "operation.node-foreign",
+    );
   });
 
   it("renumbers a node and finds it by its new NodeId only; the old one stays given", () => {
@@ -82,7 +99,11 @@ describe("setAttribute", () => {
     expect(next.findByNodeId(nodeId)?.key).toBe(child.key);
     expect(next.findByNodeId(child.nodeId)).toBeUndefined();
     expectOperation(next, { kind: "setAttribute", key: child.key, attribute: "nodeId", value: child.nodeId });
-    expectRefused(next, { kind: "setAttribute", key: parent.key, attribute: "nodeId", value: child.nodeId }, "operation.node-id-taken");
+    expectRefused(
+      next,
+      { kind: "setAttribute", key: parent.key, attribute: "nodeId", value: child.nodeId },
+      "operation.node-id-taken",
+    );
   });
 });
 
@@ -108,7 +129,11 @@ describe("addReference and removeReference", () => {
     expectRefused(space, { kind: "addReference", ...toFolder, declaredAt: "source" }, "operation.node-foreign");
     const foreign = { source: standardKey(85), type: standardKey(35), target: standardKey(58) };
     expectRefused(space, { kind: "addReference", ...foreign, declaredAt: "both" }, "operation.node-foreign");
-    expectRefused(space, { kind: "addReference", ...edge, target: keyOf(9), declaredAt: "both" }, "operation.node-missing");
+    expectRefused(
+      space,
+      { kind: "addReference", ...edge, target: keyOf(9), declaredAt: "both" },
+      "operation.node-missing",
+    );
     expectRefused(space, { kind: "removeReference", ...edge }, "operation.reference-missing");
     const standard = { source: standardKey(31), type: standardKey(45), target: standardKey(32) };
     expectRefused(space, { kind: "removeReference", ...standard }, "operation.node-foreign");
@@ -126,7 +151,12 @@ describe("addReference and removeReference", () => {
         { type: HasComponent, target: keyOf(6), isForward: true },
       ],
     });
-    expectOperation(makeSpace([self]), { kind: "removeReference", source: self.key, type: HasComponent, target: self.key });
+    expectOperation(makeSpace([self]), {
+      kind: "removeReference",
+      source: self.key,
+      type: HasComponent,
+      target: self.key,
+    });
   });
 });
 
@@ -161,7 +191,12 @@ describe("operationSchema", () => {
     refuses({ kind: "setAttribute", key: "i=1", attribute: "displayName", value: "Name" });
     refuses({ kind: "setAttribute", key: "i=1", attribute: "displayName" });
     refuses({ kind: "setAttribute", key: "i=1", attribute: "references", value: [] });
-    refuses({ kind: "setAttribute", key: "i=1", attribute: "nodeId", value: { namespaceUri: "u", type: "i", identifier: 4294967296 } });
+    refuses({
+      kind: "setAttribute",
+      key: "i=1",
+      attribute: "nodeId",
+      value: { namespaceUri: "u", type: "i", identifier: 4294967296 },
+    });
     refuses({ kind: "addNode", node: { ...child, dataTypes: 1 } });
     refuses({ kind: "addNode", node: { ...parent, dataType: "i=1" } });
     refuses({ kind: "setHeader", field: "models", value: [{ modelUri: "u" }] });
@@ -171,7 +206,10 @@ describe("operationSchema", () => {
 
 describe("indexes", () => {
   it("give one order of members, whichever way the model came about", () => {
-    const nodes = [parent, makeNode(9, "Object", { order: 9, references: [{ type: HasComponent, target: parent.key, isForward: false }] })];
+    const nodes = [
+      parent,
+      makeNode(9, "Object", { order: 9, references: [{ type: HasComponent, target: parent.key, isForward: false }] }),
+    ];
     const late = { ...child, order: 5 };
     const built = AddressSpace.of([smallStandard], buildLayer(makeSpace().own.header, [...nodes, late]));
     const edited = makeSpace(nodes).withNode(late);

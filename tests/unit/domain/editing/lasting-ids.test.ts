@@ -47,7 +47,11 @@ describe("policies", () => {
     };
     const machine = make("B1", standardKey(85));
     make("Gearbox", machine);
-    const texts = bench.space.listOwnNodes().map((n) => n.nodeId).filter((n) => n.type === "s").map((n) => n.identifier);
+    const texts = bench.space
+      .listOwnNodes()
+      .map((n) => n.nodeId)
+      .filter((n) => n.type === "s")
+      .map((n) => n.identifier);
     expect(texts).toEqual(["B1", "B1.Vibration", "B1.Gearbox", "B1.Gearbox.Vibration"]);
     const again = paths.allocate("Object", { space: makeSpace(), parent: undefined, name: "B1" });
     expect(again.ok && again.value.identifier).toBe("B1_2");
@@ -94,14 +98,23 @@ describe("renumberNodes", () => {
   const bench = new Workbench();
   const state = bench.do(addEnumeration, { name: "StateEnum", fields: [{ name: "Off", value: 0 }] });
   const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "MachineType" });
-  const method = bench.do(addMethod, { parent: type, name: "SetState", inputArguments: [{ name: "State", dataType: state }] });
+  const method = bench.do(addMethod, {
+    parent: type,
+    name: "SetState",
+    inputArguments: [{ name: "State", dataType: state }],
+  });
 
   it("rewrites the uses inside values and keeps keys and references", () => {
     const argumentsKey = bench.at(method, "InputArguments").key;
     const textOf = (): string => (bench.node(argumentsKey) as { value: { xml: string } }).value.xml;
     const old = formatNodeId(bench.node(state).nodeId);
     expect(textOf()).toContain(`<Identifier>${old}</Identifier>`);
-    bench.do(renumberNodes, { changes: [{ node: state, nodeId: id(3002) }, { node: type, nodeId: id(1002) }] });
+    bench.do(renumberNodes, {
+      changes: [
+        { node: state, nodeId: id(3002) },
+        { node: type, nodeId: id(1002) },
+      ],
+    });
     expect(textOf()).toContain(`<Identifier>nsu=${TEST_NAMESPACE};i=3002</Identifier>`);
     expect(textOf()).not.toContain(old);
     expect(bench.space.findByNodeId(id(1002))?.key).toBe(type);
@@ -109,10 +122,16 @@ describe("renumberNodes", () => {
   });
 
   it("refuses ids that are or were given, and other namespaces", () => {
-    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: id(1002) }] })).toEqual(["operation.node-id-taken"]);
+    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: id(1002) }] })).toEqual([
+      "operation.node-id-taken",
+    ]);
     const former = Number(String(type).split("i=")[1]);
-    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: id(former) }] })).toEqual(["operation.node-id-taken"]);
-    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: numericNodeId("urn:x", 1) }] })).toEqual(["renumber.namespace"]);
+    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: id(former) }] })).toEqual([
+      "operation.node-id-taken",
+    ]);
+    expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: numericNodeId("urn:x", 1) }] })).toEqual([
+      "renumber.namespace",
+    ]);
   });
 });
 
@@ -148,7 +167,11 @@ describe("NodeIds CSV", () => {
     const text = 'A,1,Object\nB,2\n"C ""x""",s=a,Variable\nD,4294967296,Object\nE,5,Thing\nF,1,Object\n';
     const result = readNodeIdsCsv(text, TEST_NAMESPACE);
     if (!result.ok) throw new Error("not read");
-    expect(result.value.map((r) => [r.symbol, r.nodeId.identifier, r.line])).toEqual([["A", 1, 1], ['C "x"', "a", 3], ["F", 1, 6]]);
+    expect(result.value.map((r) => [r.symbol, r.nodeId.identifier, r.line])).toEqual([
+      ["A", 1, 1],
+      ['C "x"', "a", 3],
+      ["F", 1, 6],
+    ]);
     expect(result.problems.map((p) => [p.code, p.at?.line])).toEqual([
       ["node-ids.columns", 2],
       ["node-id.numeric-range", 4],

@@ -15,7 +15,11 @@ const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "
 const other = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "OtherType" });
 const variableType = bench.do(addType, { supertype: StandardType.BaseDataVariableType, name: "VType" });
 const face = bench.do(addType, { supertype: StandardType.BaseInterfaceType, name: "IFaceType", isAbstract: true });
-const folder = bench.do(addObject, { parent: standardKey(85), name: "Folder", typeDefinition: StandardType.FolderType });
+const folder = bench.do(addObject, {
+  parent: standardKey(85),
+  name: "Folder",
+  typeDefinition: StandardType.FolderType,
+});
 const object = bench.do(addObject, { parent: standardKey(85), name: "Object" });
 const part = bench.do(addObject, { parent: object, name: "Part" });
 const variable = bench.do(addVariable, { parent: object, name: "Variable" });
@@ -24,7 +28,9 @@ const method = bench.do(addMethod, { parent: object, name: "Method" });
 const state = bench.do(addEnumeration, { name: "Enum", fields: [{ name: "A", value: 0 }] });
 
 function usual(source: NodeKey, target: NodeKey): string[] {
-  return listLawfulReferences(bench.space, source, target).choices.filter((c) => c.isUsual).map((c) => c.name);
+  return listLawfulReferences(bench.space, source, target)
+    .choices.filter((c) => c.isUsual)
+    .map((c) => c.name);
 }
 
 function refused(source: NodeKey, referenceType: NodeKey, target: NodeKey): string | undefined {
@@ -53,7 +59,11 @@ describe("listLawfulReferences", () => {
   });
 
   it("never offers abstract or deprecated types, nor what checkReference refuses", () => {
-    for (const [source, target] of [[object, part], [type, other], [folder, variable]] as const) {
+    for (const [source, target] of [
+      [object, part],
+      [type, other],
+      [folder, variable],
+    ] as const) {
       for (const choice of listLawfulReferences(bench.space, source, target).choices) {
         expect(bench.space.getNode(choice.type)).not.toMatchObject({ isAbstract: true });
         expect(refused(source, choice.type, target)).toBeUndefined();
@@ -63,7 +73,13 @@ describe("listLawfulReferences", () => {
 
   it("asks for typed ends of state machines and PubSub", () => {
     const names = listLawfulReferences(bench.space, folder, part).choices.map((c) => c.name);
-    for (const name of ["FromState", "HasSubStateMachine", "HasDataSetWriter", "HasHistoricalConfiguration", "HasCondition"]) {
+    for (const name of [
+      "FromState",
+      "HasSubStateMachine",
+      "HasDataSetWriter",
+      "HasHistoricalConfiguration",
+      "HasCondition",
+    ]) {
       expect(names).not.toContain(name);
     }
   });

@@ -44,7 +44,9 @@ describe("rebase", () => {
     const result = rebase(after(foreign.operations), [foreign], [{ operations: [rename(1, "mine")] }]);
     expect(result.kept).toEqual([]);
     expect(result.refused[0]).toMatchObject({
-      problems: [{ code: "operation.stale", at: { node: keyOf(1), attribute: "displayName" }, data: { author: "Priya" } }],
+      problems: [
+        { code: "operation.stale", at: { node: keyOf(1), attribute: "displayName" }, data: { author: "Priya" } },
+      ],
       conflictsWith: { seq: 7 },
     });
     expect(result.space.getNode(keyOf(1))?.displayName).toEqual([{ text: "theirs" }]);
@@ -107,6 +109,8 @@ function collectApplying(choices: Parameters<typeof makeOperation>[1][], idBase:
 
 /** Two windows that add references to one node at one time may list them in either order; all else must be equal. */
 function sortedReferences(space: AddressSpace): unknown {
-  const plain = space.listOwnNodes().map((n) => ({ ...n, references: n.references.map((r) => JSON.stringify(r)).sort() }));
+  const plain = space
+    .listOwnNodes()
+    .map((n) => ({ ...n, references: n.references.map((r) => JSON.stringify(r)).sort() }));
   return { header: (snapshotOwn(space.own) as { header: unknown }).header, plain };
 }

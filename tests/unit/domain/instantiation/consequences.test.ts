@@ -48,7 +48,9 @@ describe("listConsequences", () => {
     bench.do(applyConsequences, { consequences });
     for (const instance of [first, second]) {
       expect(bench.at(instance, "ProcessData/Speed")).toMatchObject({ dataType: "i=11" });
-      expect(bench.at(instance, "ProcessData/Speed/EURange")).toMatchObject({ value: (bench.at(type, "ProcessData/Speed/EURange") as { value: unknown }).value });
+      expect(bench.at(instance, "ProcessData/Speed/EURange")).toMatchObject({
+        value: (bench.at(type, "ProcessData/Speed/EURange") as { value: unknown }).value,
+      });
       expect(bench.has(instance, "ProcessData/Load")).toBe(false);
       expect(bench.has(instance, "ProcessData/Torque")).toBe(true);
       expect(listMissingMembers(bench.space, instance)).toEqual([]);
@@ -62,7 +64,9 @@ describe("listConsequences", () => {
     bench.do(deleteNodes, { nodes: [bench.at(second, "Process/Load").key] });
     const before = bench.space;
     bench.do(setRange, { variable: speed, range: { low: 0, high: 180 } });
-    expect(listConsequences(before, bench.space)).toMatchObject([{ kind: "changed-attribute", node: bench.at(second, "Process/Speed/EURange").key }]);
+    expect(listConsequences(before, bench.space)).toMatchObject([
+      { kind: "changed-attribute", node: bench.at(second, "Process/Speed/EURange").key },
+    ]);
   });
 
   it("reaches overriding declarations of subtypes", () => {
@@ -71,7 +75,9 @@ describe("listConsequences", () => {
     bench.do(overrideMember, { type: subtype, path: "Process/Speed" });
     const before = bench.space;
     bench.do(setDataType, { node: speed, dataType: StandardDataType.Double });
-    const found = listConsequences(before, bench.space).filter((c) => c.kind === "changed-attribute" && c.node === bench.at(subtype, "Process/Speed").key);
+    const found = listConsequences(before, bench.space).filter(
+      (c) => c.kind === "changed-attribute" && c.node === bench.at(subtype, "Process/Speed").key,
+    );
     expect(found).toMatchObject([{ attribute: "dataType", to: "i=11" }]);
   });
 });
@@ -86,7 +92,9 @@ describe("overrideMember", () => {
     expect(own.references).toContainEqual({ type: "i=37", target: StandardModellingRule.Mandatory, isForward: true });
     expect(bench.has(bench.at(subtype, "Process").key, "Load")).toBe(false);
     expect(bench.refuse(overrideMember, { type: subtype, path: "Process/Speed" })).toEqual(["override.exists"]);
-    expect(bench.refuse(overrideMember, { type: subtype, path: "Process/Nothing" })).toEqual(["override.no-such-member"]);
+    expect(bench.refuse(overrideMember, { type: subtype, path: "Process/Nothing" })).toEqual([
+      "override.no-such-member",
+    ]);
     const instance = bench.do(instantiate, { type: subtype, parent: OBJECTS, name: "F1" });
     for (const path of ["Process/Speed/EURange", "Process/Load"]) expect(bench.has(instance, path)).toBe(true);
   });

@@ -2,7 +2,12 @@ import { describe, expect, it } from "vitest";
 import { findModellingRule, findTypeDefinition } from "~/domain/address-space/browse";
 import { listInstanceDeclarations, toPathKey } from "~/domain/address-space/instance-declarations";
 import { numericNodeId, standardKey, toNodeKey, type NodeKey } from "~/domain/address-space/node-id";
-import { StandardDataType, StandardModellingRule, StandardReferenceType, StandardType } from "~/domain/address-space/standard-ids";
+import {
+  StandardDataType,
+  StandardModellingRule,
+  StandardReferenceType,
+  StandardType,
+} from "~/domain/address-space/standard-ids";
 import { addMethod, addObject, addVariable } from "~/domain/editing/commands/add-member";
 import { addType } from "~/domain/editing/commands/add-type";
 import { connectNodes } from "~/domain/editing/commands/connect-nodes";
@@ -21,11 +26,21 @@ const di = (id: number): NodeKey => toNodeKey(numericNodeId(DI, id));
 function makeMachineType(bench: Workbench): NodeKey {
   const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "MachineType" });
   const process = bench.do(addObject, { parent: type, name: "Process" });
-  bench.do(addVariable, { parent: process, name: "Speed", typeDefinition: StandardType.AnalogUnitRangeType, dataType: StandardDataType.Float, range: { low: 0, high: 180 } });
+  bench.do(addVariable, {
+    parent: process,
+    name: "Speed",
+    typeDefinition: StandardType.AnalogUnitRangeType,
+    dataType: StandardDataType.Float,
+    range: { low: 0, high: 180 },
+  });
   bench.do(addVariable, { parent: process, name: "Counter", dataType: StandardDataType.UInt32, rule: Optional });
   const light = bench.do(addObject, { parent: type, name: "Light", rule: Optional });
   bench.do(addVariable, { parent: light, name: "Color", dataType: StandardDataType.Byte });
-  bench.do(addMethod, { parent: type, name: "Reset", outputArguments: [{ name: "Done", dataType: StandardDataType.Boolean }] });
+  bench.do(addMethod, {
+    parent: type,
+    name: "Reset",
+    outputArguments: [{ name: "Done", dataType: StandardDataType.Boolean }],
+  });
   bench.do(addObject, { parent: type, name: "<Sensor>", rule: OptionalPlaceholder });
   return type;
 }
@@ -37,13 +52,21 @@ describe("instantiate", () => {
 
   it("makes mandatory members to the whole depth, with values and without rules", () => {
     const speed = bench.at(instance, "Process/Speed");
-    expect(speed).toMatchObject({ nodeClass: "Variable", dataType: "i=10", browseName: { namespaceUri: TEST_NAMESPACE } });
-    expect(bench.at(speed.key, "EURange")).toMatchObject({ value: (bench.at(type, "Process/Speed/EURange") as { value: unknown }).value });
+    expect(speed).toMatchObject({
+      nodeClass: "Variable",
+      dataType: "i=10",
+      browseName: { namespaceUri: TEST_NAMESPACE },
+    });
+    expect(bench.at(speed.key, "EURange")).toMatchObject({
+      value: (bench.at(type, "Process/Speed/EURange") as { value: unknown }).value,
+    });
     expect(bench.has(speed.key, "EngineeringUnits")).toBe(true);
     for (const path of ["Process", "Process/Speed", "Process/Speed/EURange", "Reset"]) {
       const node = bench.at(instance, path);
       expect(findModellingRule(bench.space, node.key)).toBeUndefined();
-      expect("parent" in node && node.parent).toBe(path.includes("/") ? bench.at(instance, path.slice(0, path.lastIndexOf("/"))).key : instance);
+      expect("parent" in node && node.parent).toBe(
+        path.includes("/") ? bench.at(instance, path.slice(0, path.lastIndexOf("/"))).key : instance,
+      );
     }
     expect(bench.has(instance, "Process/Counter")).toBe(false);
     expect(bench.has(instance, "Light")).toBe(false);
@@ -65,25 +88,37 @@ describe("instantiate", () => {
       parent: OBJECTS,
       name: "B3",
       optional: ["Process/Counter", toPathKey([{ namespaceUri: TEST_NAMESPACE, name: "Light" }])],
-      named: [{ path: "<Sensor>", name: "Left" }, { path: "<Sensor>", name: "Right" }],
+      named: [
+        { path: "<Sensor>", name: "Left" },
+        { path: "<Sensor>", name: "Right" },
+      ],
     });
     for (const path of ["Process/Counter", "Light/Color", "Left", "Right"]) expect(bench.has(chosen, path)).toBe(true);
-    expect(bench.refuse(instantiate, { type, parent: OBJECTS, name: "B4", optional: ["Process/Cuonter"] })).toEqual(["instantiate.no-such-member"]);
+    expect(bench.refuse(instantiate, { type, parent: OBJECTS, name: "B4", optional: ["Process/Cuonter"] })).toEqual([
+      "instantiate.no-such-member",
+    ]);
     expect(bench.refuse(instantiate, { type, parent: OBJECTS, name: "B3" })).toEqual(["name.taken"]);
   });
 
   it("refuses abstract types, Interfaces and what is no type", () => {
     const abstract = bench.do(addType, { supertype: type, name: "AbstractType", isAbstract: true });
     expect(bench.refuse(instantiate, { type: abstract, parent: OBJECTS, name: "X" })).toEqual(["instantiate.abstract"]);
-    expect(bench.refuse(instantiate, { type: StandardDataType.Double, parent: OBJECTS, name: "X" })).toEqual(["instantiate.no-type"]);
-    expect(bench.refuse(instantiate, { type: StandardType.BaseInterfaceType, parent: OBJECTS, name: "X" })).toEqual(["instantiate.interface"]);
+    expect(bench.refuse(instantiate, { type: StandardDataType.Double, parent: OBJECTS, name: "X" })).toEqual([
+      "instantiate.no-type",
+    ]);
+    expect(bench.refuse(instantiate, { type: StandardType.BaseInterfaceType, parent: OBJECTS, name: "X" })).toEqual([
+      "instantiate.interface",
+    ]);
   });
 
   it("tells what an instance lacks after the type grew, and completes it", () => {
     const rich = bench.do(instantiate, { type, parent: OBJECTS, name: "B5" });
     bench.do(addVariable, { parent: bench.at(type, "Process").key, name: "Torque", dataType: StandardDataType.Float });
     bench.do(deleteNodes, { nodes: [bench.at(rich, "Process/Speed/EURange").key] });
-    expect(listMissingMembers(bench.space, rich).map((m) => m.path.map((n) => n.name).join("/"))).toEqual(["Process/Torque", "Process/Speed/EURange"]);
+    expect(listMissingMembers(bench.space, rich).map((m) => m.path.map((n) => n.name).join("/"))).toEqual([
+      "Process/Torque",
+      "Process/Speed/EURange",
+    ]);
     bench.do(addDeclaredMembers, { instance: rich, includeMissing: true });
     expect(listMissingMembers(bench.space, rich)).toEqual([]);
     const offered = listOfferedMembers(bench.space, rich).map((m) => m.path.map((n) => n.name).join("/"));
@@ -92,7 +127,9 @@ describe("instantiate", () => {
       "Light",
       "<Sensor>",
       "Process/Counter",
-      ...["InstrumentRange", "InstrumentNumberRange", "EUNumberRange", "Definition", "ValuePrecision"].map((n) => `Process/Speed/${n}`),
+      ...["InstrumentRange", "InstrumentNumberRange", "EUNumberRange", "Definition", "ValuePrecision"].map(
+        (n) => `Process/Speed/${n}`,
+      ),
     ]);
     bench.do(addDeclaredMembers, { instance: rich, optional: ["Light"] });
     expect(bench.has(rich, "Light/Color")).toBe(true);
@@ -108,13 +145,18 @@ describe("inheritance", () => {
     bench.do(addVariable, { parent: process, name: "Counter", dataType: StandardDataType.UInt32 });
     bench.do(addVariable, { parent: process, name: "Load", dataType: StandardDataType.Double });
     const table = listInstanceDeclarations(bench.space, derived);
-    const rows = [...table.values()].map((row) => [row.path.map((n) => n.name).join("/"), row.rule, row.declaredBy === derived]);
+    const rows = [...table.values()].map((row) => [
+      row.path.map((n) => n.name).join("/"),
+      row.rule,
+      row.declaredBy === derived,
+    ]);
     expect(rows).toContainEqual(["Process/Counter", "i=78", true]);
     expect(rows).toContainEqual(["Process/Speed", "i=78", false]);
     expect(rows).toContainEqual(["Process/Load", "i=78", true]);
     expect(rows).toContainEqual(["Light/Color", "i=78", false]);
     const instance = bench.do(instantiate, { type: derived, parent: OBJECTS, name: "Big" });
-    for (const path of ["Process/Counter", "Process/Speed/EURange", "Process/Load"]) expect(bench.has(instance, path)).toBe(true);
+    for (const path of ["Process/Counter", "Process/Speed/EURange", "Process/Load"])
+      expect(bench.has(instance, path)).toBe(true);
     expect(bench.at(instance, "Process/Counter")).toMatchObject({ dataType: "i=7" });
   });
 
@@ -125,7 +167,13 @@ describe("inheritance", () => {
     expect(bench.node(vendor).browseName.name).toBe("IVendorNameplateType");
     const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "PumpType" });
     bench.do(connectNodes, { source: type, type: StandardReferenceType.HasInterface, target: vendor });
-    const pump = bench.do(instantiate, { type, parent: OBJECTS, name: "P1", optional: ["SerialNumber", "Manufacturer"], interfaces: [di(15048)] });
+    const pump = bench.do(instantiate, {
+      type,
+      parent: OBJECTS,
+      name: "P1",
+      optional: ["SerialNumber", "Manufacturer"],
+      interfaces: [di(15048)],
+    });
     expect(bench.at(pump, "SerialNumber")).toMatchObject({ browseName: { namespaceUri: DI }, dataType: "i=12" });
     expect(listOfferedMembers(bench.space, pump).map((m) => m.path[0]?.name)).toContain("AssetId");
   });
@@ -164,7 +212,9 @@ describe("shared declarations", () => {
     const b = bench.do(addObject, { parent: type, name: "B" });
     bench.do(connectNodes, { source: a, type: feeds, target: b });
     const instance = bench.do(instantiate, { type, parent: OBJECTS, name: "I" });
-    expect(bench.space.hasEdge({ source: bench.at(instance, "A").key, type: feeds, target: bench.at(instance, "B").key })).toBe(true);
+    expect(
+      bench.space.hasEdge({ source: bench.at(instance, "A").key, type: feeds, target: bench.at(instance, "B").key }),
+    ).toBe(true);
   });
 });
 
@@ -175,10 +225,17 @@ describe("published types", () => {
     for (const layer of bench.space.layers.slice(1, -1)) {
       for (const node of layer.nodes.values()) {
         if (node.nodeClass !== "ObjectType" || node.isAbstract) continue;
-        const result = instantiate(bench.space, bench.context, { type: node.key, parent: OBJECTS, name: `I${++count}` });
+        const result = instantiate(bench.space, bench.context, {
+          type: node.key,
+          parent: OBJECTS,
+          name: `I${++count}`,
+        });
         if (!result.ok) throw new Error(`${node.browseName.name}: ${JSON.stringify(result.problems)}`);
         const space = bench.space;
-        bench.space = result.value.operations.reduce((s, op) => (op.kind === "addNode" ? s.withNode(op.node) : s), space);
+        bench.space = result.value.operations.reduce(
+          (s, op) => (op.kind === "addNode" ? s.withNode(op.node) : s),
+          space,
+        );
         const instance = result.value.made[0] as NodeKey;
         const missing = listMissingMembers(bench.space, instance).filter((m) => m.rule !== MandatoryPlaceholder);
         expect([node.browseName.name, missing]).toEqual([node.browseName.name, []]);

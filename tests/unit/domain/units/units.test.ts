@@ -1,6 +1,17 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { canConvert, convert, findUnits, fromEuInformation, listUnits, toEuInformation, toUnitCode, toUnitId, unitByCode, unitById } from "~/domain/units/units";
+import {
+  canConvert,
+  convert,
+  findUnits,
+  fromEuInformation,
+  listUnits,
+  toEuInformation,
+  toUnitCode,
+  toUnitId,
+  unitByCode,
+  unitById,
+} from "~/domain/units/units";
 
 /** Code, unitId, symbol as printed in OPC 10000-8 §5.6.3.4 (°C) and its published table UNECE_to_OPCUA.csv, read by hand. */
 const PUBLISHED: readonly (readonly [code: string, unitId: number, symbol: string])[] = [
@@ -76,10 +87,10 @@ describe("findUnits", () => {
       psi: "PS",
       "m³/h": "MQH",
       "m3/h": "MQH",
-      "kW": "KWT",
+      kW: "KWT",
       hPa: "A97",
       hectopascal: "A97",
-      "µm": "4H",
+      µm: "4H",
       um: "4H",
       mA: "4K",
       MHz: "MHZ",
@@ -128,12 +139,17 @@ describe("convert", () => {
   it("back and forth is the start, for every pair that can be converted", () => {
     const codes = listUnits().map((u) => u.code);
     fc.assert(
-      fc.property(fc.constantFrom(...codes), fc.nat(2000), fc.double({ min: -1e6, max: 1e6, noNaN: true }), (from, shift, value) => {
-        const others = codes.filter((code) => canConvert(from, code));
-        const target = others[shift % Math.max(1, others.length)] ?? from;
-        const back = to(to(value, from, target), target, from);
-        expect(Math.abs(back - value)).toBeLessThan(1e-6 * Math.max(1, Math.abs(value)));
-      }),
+      fc.property(
+        fc.constantFrom(...codes),
+        fc.nat(2000),
+        fc.double({ min: -1e6, max: 1e6, noNaN: true }),
+        (from, shift, value) => {
+          const others = codes.filter((code) => canConvert(from, code));
+          const target = others[shift % Math.max(1, others.length)] ?? from;
+          const back = to(to(value, from, target), target, from);
+          expect(Math.abs(back - value)).toBeLessThan(1e-6 * Math.max(1, Math.abs(value)));
+        },
+      ),
       { numRuns: 200 },
     );
   });

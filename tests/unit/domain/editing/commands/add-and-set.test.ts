@@ -4,7 +4,12 @@ import { standardKey } from "~/domain/address-space/node-id";
 import { StandardDataType, StandardModellingRule, StandardType } from "~/domain/address-space/standard-ids";
 import { addEnumeration, setEnumerationFields } from "~/domain/editing/commands/add-enumeration";
 import { addMethod, addObject, addProperty, addVariable } from "~/domain/editing/commands/add-member";
-import { addOptionSet, addStructure, setOptionSetBits, setStructureFields } from "~/domain/editing/commands/add-structure";
+import {
+  addOptionSet,
+  addStructure,
+  setOptionSetBits,
+  setStructureFields,
+} from "~/domain/editing/commands/add-structure";
 import { addType } from "~/domain/editing/commands/add-type";
 import { addNamespaceMetadata, createModel, findNamespaceMetadata } from "~/domain/editing/commands/create-model";
 import { setAttribute } from "~/domain/editing/commands/set-attribute";
@@ -45,11 +50,17 @@ describe("createModel", () => {
     const { header } = bench.space.own;
     expect(header.namespaceUris).toEqual([TEST_NAMESPACE, "http://opcfoundation.org/UA/DI/"]);
     expect(header.models[0]).toMatchObject({ modelUri: TEST_NAMESPACE, version: "1.0.0" });
-    expect(header.models[0]?.requiredModels.map((m) => m.modelUri)).toEqual(["http://opcfoundation.org/UA/", "http://opcfoundation.org/UA/DI/"]);
+    expect(header.models[0]?.requiredModels.map((m) => m.modelUri)).toEqual([
+      "http://opcfoundation.org/UA/",
+      "http://opcfoundation.org/UA/DI/",
+    ]);
     const object = findNamespaceMetadata(bench.space);
     if (object === undefined) throw new Error("no metadata");
     // Names and DataTypes: OPC 10000-5 §6.3.13, Table 22.
-    const properties = bench.space.edgesFrom(object).map((e) => bench.node(e.target)).filter((n) => n.nodeClass === "Variable" && n.parent === object);
+    const properties = bench.space
+      .edgesFrom(object)
+      .map((e) => bench.node(e.target))
+      .filter((n) => n.nodeClass === "Variable" && n.parent === object);
     expect(properties.map((n) => n.browseName.name)).toEqual([
       "NamespaceUri",
       "NamespaceVersion",
@@ -87,7 +98,9 @@ describe("createModel", () => {
     const bench = new Workbench();
     bench.do(setModelInfo, { version: "1.1.0", publicationDate: "2025-01-01T00:00:00Z" });
     const object = findNamespaceMetadata(bench.space);
-    expect(valueOf(bench, bench.at(object ?? standardKey(0), "NamespaceVersion").key)).toEqual(scalar("String", "1.1.0"));
+    expect(valueOf(bench, bench.at(object ?? standardKey(0), "NamespaceVersion").key)).toEqual(
+      scalar("String", "1.1.0"),
+    );
     const di = { modelUri: "http://opcfoundation.org/UA/DI/", version: "1.04", requiredModels: [] };
     const base = bench.space.own.header.models[0]?.requiredModels ?? [];
     bench.do(setRequiredModels, { requiredModels: [...base, di] });
@@ -107,12 +120,20 @@ describe("addType", () => {
       references: [{ type: "i=45", target: "i=58", isForward: false }],
       displayName: [{ text: "PressType" }],
     });
-    const variable = bench.do(addType, { supertype: StandardType.AnalogUnitType, name: "ForceType", dataType: StandardDataType.Double });
+    const variable = bench.do(addType, {
+      supertype: StandardType.AnalogUnitType,
+      name: "ForceType",
+      dataType: StandardDataType.Double,
+    });
     expect(bench.node(variable)).toMatchObject({ nodeClass: "VariableType", dataType: "i=11", valueRank: -2 });
     const feeds = bench.do(addType, { supertype: standardKey(32), name: "Feeds", inverseName: [{ text: "FedBy" }] });
     expect(bench.node(feeds)).toMatchObject({ nodeClass: "ReferenceType", inverseName: [{ text: "FedBy" }] });
-    expect(bench.refuse(addType, { supertype: standardKey(32), name: "Nameless" })).toEqual(["type.inverse-name-missing"]);
-    expect(bench.refuse(addType, { supertype: StandardType.BaseObjectType, name: "PressType" })).toEqual(["name.taken"]);
+    expect(bench.refuse(addType, { supertype: standardKey(32), name: "Nameless" })).toEqual([
+      "type.inverse-name-missing",
+    ]);
+    expect(bench.refuse(addType, { supertype: StandardType.BaseObjectType, name: "PressType" })).toEqual([
+      "name.taken",
+    ]);
     expect(bench.refuse(addType, { supertype: standardKey(85), name: "X" })).toEqual(["type.no-supertype"]);
     expect(bench.refuse(addType, { supertype: StandardType.BaseObjectType, name: " " })).toEqual(["name.empty"]);
   });
@@ -154,13 +175,18 @@ describe("members", () => {
     bench.do(setUnit, { variable: temperature });
     expect(findProperty(bench.space, temperature, "EngineeringUnits")).toBeUndefined();
     expect(bench.refuse(setRange, { variable: temperature, range: { low: 5, high: 4 } })).toEqual(["range.order"]);
-    expect(bench.refuse(setRange, { variable: temperature, range: { low: NaN, high: 4 } })).toEqual(["range.not-finite"]);
+    expect(bench.refuse(setRange, { variable: temperature, range: { low: NaN, high: 4 } })).toEqual([
+      "range.not-finite",
+    ]);
   });
 
   it("makes a unit where a plain Variable has none, and refuses it on text", () => {
     const speed = bench.do(addVariable, { parent: type, name: "Speed", dataType: StandardDataType.Double });
     bench.do(setUnit, { variable: speed, unit: CELSIUS });
-    expect(findProperty(bench.space, speed, "EngineeringUnits")).toMatchObject({ dataType: "i=887", browseName: { name: "EngineeringUnits" } });
+    expect(findProperty(bench.space, speed, "EngineeringUnits")).toMatchObject({
+      dataType: "i=887",
+      browseName: { name: "EngineeringUnits" },
+    });
     const label = bench.do(addVariable, { parent: type, name: "Label", dataType: StandardDataType.String });
     expect(bench.refuse(setUnit, { variable: label, unit: CELSIUS })).toEqual(["unit.not-numeric"]);
     expect(bench.refuse(setUnit, { variable: type, unit: CELSIUS })).toEqual(["unit.no-variable"]);
@@ -179,11 +205,27 @@ describe("members", () => {
       outputArguments: [{ name: "Accepted", dataType: StandardDataType.Boolean }],
     });
     const input = findProperty(bench.space, reset, "InputArguments");
-    expect(input).toMatchObject({ dataType: "i=296", valueRank: 1, browseName: { namespaceUri: "http://opcfoundation.org/UA/" } });
-    expect(findArguments(input && valueOf(bench, input.key))).toMatchObject([{ name: "RecipeNumber", valueRank: -1, dataType: { identifier: 5 } }]);
-    bench.do(setMethodArguments, { method: reset, input: [], output: [{ name: "Done", dataType: StandardDataType.Boolean }] });
+    expect(input).toMatchObject({
+      dataType: "i=296",
+      valueRank: 1,
+      browseName: { namespaceUri: "http://opcfoundation.org/UA/" },
+    });
+    expect(findArguments(input && valueOf(bench, input.key))).toMatchObject([
+      { name: "RecipeNumber", valueRank: -1, dataType: { identifier: 5 } },
+    ]);
+    bench.do(setMethodArguments, {
+      method: reset,
+      input: [],
+      output: [{ name: "Done", dataType: StandardDataType.Boolean }],
+    });
     expect(findProperty(bench.space, reset, "InputArguments")).toBeUndefined();
-    expect(bench.refuse(setMethodArguments, { method: reset, input: [{ name: "A", dataType: standardKey(1) }], output: [{ name: "A", dataType: standardKey(1) }] })).toEqual(["argument.name-taken"]);
+    expect(
+      bench.refuse(setMethodArguments, {
+        method: reset,
+        input: [{ name: "A", dataType: standardKey(1) }],
+        output: [{ name: "A", dataType: standardKey(1) }],
+      }),
+    ).toEqual(["argument.name-taken"]);
     expect(bench.refuse(addObject, { parent: type, name: "Process" })).toEqual(["name.taken"]);
     expect(bench.refuse(addObject, { parent: serial, name: "X" })).toEqual(["reference.component-object-source"]);
     expect(bench.refuse(addVariable, { parent: serial, name: "X" })).toEqual(["reference.property-is-leaf"]);
@@ -191,7 +233,11 @@ describe("members", () => {
   });
 
   it("has no rule below an instance and an inverse Organizes in a folder", () => {
-    const folder = bench.do(addObject, { parent: standardKey(85), name: "Hall", typeDefinition: StandardType.FolderType });
+    const folder = bench.do(addObject, {
+      parent: standardKey(85),
+      name: "Hall",
+      typeDefinition: StandardType.FolderType,
+    });
     expect(bench.node(folder).references).toEqual([
       { type: "i=35", target: "i=85", isForward: false },
       { type: "i=40", target: "i=61", isForward: true },
@@ -202,7 +248,12 @@ describe("members", () => {
 describe("settings", () => {
   const bench = new Workbench();
   const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "T" });
-  const member = bench.do(addVariable, { parent: type, name: "V", dataType: StandardDataType.Double, value: scalar("Double", 1.5) });
+  const member = bench.do(addVariable, {
+    parent: type,
+    name: "V",
+    dataType: StandardDataType.Double,
+    value: scalar("Double", 1.5),
+  });
 
   it("drops a value that no longer fits and says so", () => {
     const result = setDataType(bench.space, bench.context, { node: member, dataType: StandardDataType.String });
@@ -217,7 +268,9 @@ describe("settings", () => {
     expect(bench.node(member)).toMatchObject({ valueRank: 2, arrayDimensions: "0,3" });
     bench.do(setValueRank, { node: member, valueRank: -1 });
     expect(bench.node(member)).not.toHaveProperty("arrayDimensions");
-    expect(bench.refuse(setValueRank, { node: member, valueRank: 2, arrayDimensions: [1] })).toEqual(["value.dimension-count"]);
+    expect(bench.refuse(setValueRank, { node: member, valueRank: 2, arrayDimensions: [1] })).toEqual([
+      "value.dimension-count",
+    ]);
   });
 
   it("sets rules, texts by locale and plain attributes", () => {
@@ -225,18 +278,33 @@ describe("settings", () => {
     expect(findModellingRule(bench.space, member)).toBe("i=80");
     bench.do(setModellingRule, { node: member });
     expect(findModellingRule(bench.space, member)).toBeUndefined();
-    expect(bench.refuse(setModellingRule, { node: member, rule: standardKey(85) })).toEqual(["reference.modelling-rule-ends"]);
+    expect(bench.refuse(setModellingRule, { node: member, rule: standardKey(85) })).toEqual([
+      "reference.modelling-rule-ends",
+    ]);
     bench.do(setText, { node: member, attribute: "displayName", locale: "de", text: "Wert" });
     bench.do(setText, { node: member, attribute: "description", text: "What it is" });
-    expect(bench.node(member)).toMatchObject({ displayName: [{ text: "V" }, { locale: "de", text: "Wert" }], description: [{ text: "What it is" }] });
+    expect(bench.node(member)).toMatchObject({
+      displayName: [{ text: "V" }, { locale: "de", text: "Wert" }],
+      description: [{ text: "What it is" }],
+    });
     bench.do(setText, { node: member, attribute: "displayName", locale: "de", text: "" });
-    expect(bench.refuse(setText, { node: member, attribute: "displayName", text: "" })).toEqual(["text.last-display-name"]);
-    expect(bench.refuse(setText, { node: member, attribute: "description", locale: "??", text: "x" })).toEqual(["text.locale"]);
+    expect(bench.refuse(setText, { node: member, attribute: "displayName", text: "" })).toEqual([
+      "text.last-display-name",
+    ]);
+    expect(bench.refuse(setText, { node: member, attribute: "description", locale: "??", text: "x" })).toEqual([
+      "text.locale",
+    ]);
     bench.do(setAttribute, { node: member, attribute: "accessLevel", value: 3 });
     expect(bench.node(member)).toMatchObject({ accessLevel: 3 });
-    expect(bench.refuse(setAttribute, { node: member, attribute: "accessLevel", value: 128 })).toEqual(["attribute.reserved-bits"]);
-    expect(bench.refuse(setAttribute, { node: type, attribute: "accessLevel", value: 3 })).toEqual(["operation.attribute-class"]);
-    expect(bench.refuse(setAttribute, { node: member, attribute: "historizing", value: "yes" })).toEqual(["attribute.value"]);
+    expect(bench.refuse(setAttribute, { node: member, attribute: "accessLevel", value: 128 })).toEqual([
+      "attribute.reserved-bits",
+    ]);
+    expect(bench.refuse(setAttribute, { node: type, attribute: "accessLevel", value: 3 })).toEqual([
+      "operation.attribute-class",
+    ]);
+    expect(bench.refuse(setAttribute, { node: member, attribute: "historizing", value: "yes" })).toEqual([
+      "attribute.value",
+    ]);
   });
 });
 
@@ -244,23 +312,49 @@ describe("data types", () => {
   const bench = new Workbench();
 
   it("keeps EnumStrings or EnumValues in step with the Definition", () => {
-    const state = bench.do(addEnumeration, { name: "StateEnum", fields: [{ name: "Off", value: 0 }, { name: "On", value: 1 }] });
+    const state = bench.do(addEnumeration, {
+      name: "StateEnum",
+      fields: [
+        { name: "Off", value: 0 },
+        { name: "On", value: 1 },
+      ],
+    });
     expect(bench.node(state)).toMatchObject({
       nodeClass: "DataType",
-      definition: { name: { namespaceUri: TEST_NAMESPACE, name: "StateEnum" }, fields: [{ name: "Off", value: 0 }, { name: "On", value: 1 }] },
+      definition: {
+        name: { namespaceUri: TEST_NAMESPACE, name: "StateEnum" },
+        fields: [
+          { name: "Off", value: 0 },
+          { name: "On", value: 1 },
+        ],
+      },
     });
     const strings = findProperty(bench.space, state, "EnumStrings");
     expect(strings && valueOf(bench, strings.key)).toEqual(array("LocalizedText", [{ text: "Off" }, { text: "On" }]));
     expect(strings && findModellingRule(bench.space, strings.key)).toBeUndefined();
-    bench.do(setEnumerationFields, { dataType: state, fields: [{ name: "Off", value: 0 }, { name: "Fault", value: 10 }] });
+    bench.do(setEnumerationFields, {
+      dataType: state,
+      fields: [
+        { name: "Off", value: 0 },
+        { name: "Fault", value: 10 },
+      ],
+    });
     expect(findProperty(bench.space, state, "EnumStrings")).toBeUndefined();
     const values = findProperty(bench.space, state, "EnumValues");
     expect(findEnumValues(values && valueOf(bench, values.key))?.map((v) => v.value)).toEqual([0, 10]);
-    const bad = (fields: { name: string; value: number }[]): string[] => bench.refuse(setEnumerationFields, { dataType: state, fields });
+    const bad = (fields: { name: string; value: number }[]): string[] =>
+      bench.refuse(setEnumerationFields, { dataType: state, fields });
     expect(bad([])).toEqual(["enumeration.no-fields"]);
-    expect(bad([{ name: "A", value: 1 }, { name: "A", value: 1 }])).toEqual(["enumeration.name-taken", "enumeration.value-taken"]);
+    expect(
+      bad([
+        { name: "A", value: 1 },
+        { name: "A", value: 1 },
+      ]),
+    ).toEqual(["enumeration.name-taken", "enumeration.value-taken"]);
     expect(bad([{ name: "A", value: 1.5 }])).toEqual(["enumeration.value-range"]);
-    expect(bench.refuse(setEnumerationFields, { dataType: StandardDataType.Double, fields: [{ name: "A", value: 1 }] })).toEqual(["enumeration.no-enumeration"]);
+    expect(
+      bench.refuse(setEnumerationFields, { dataType: StandardDataType.Double, fields: [{ name: "A", value: 1 }] }),
+    ).toEqual(["enumeration.no-enumeration"]);
   });
 
   it("makes a structure with its three encodings, a union and an option set", () => {
@@ -272,21 +366,49 @@ describe("data types", () => {
         { name: "Any", dataType: StandardDataType.Number },
       ],
     });
-    const encodings = bench.space.edgesFrom(point).filter((e) => e.type === standardKey(38)).map((e) => bench.node(e.target));
+    const encodings = bench.space
+      .edgesFrom(point)
+      .filter((e) => e.type === standardKey(38))
+      .map((e) => bench.node(e.target));
     expect(encodings.map((n) => [n.browseName.name, n.symbolicName, n.references[0]?.isForward])).toEqual([
       ["Default Binary", "DefaultBinary", false],
       ["Default XML", "DefaultXML", false],
       ["Default JSON", "DefaultJSON", false],
     ]);
-    expect(bench.node(point)).toMatchObject({ definition: { fields: [{ name: "X" }, { valueRank: 1, arrayDimensions: "0", isOptional: true }, { name: "Any" }] } });
+    expect(bench.node(point)).toMatchObject({
+      definition: {
+        fields: [{ name: "X" }, { valueRank: 1, arrayDimensions: "0", isOptional: true }, { name: "Any" }],
+      },
+    });
     bench.do(setStructureFields, { dataType: point, fields: [{ name: "Y", dataType: StandardDataType.Float }] });
-    const union = bench.do(addStructure, { name: "EitherType", isUnion: true, fields: [{ name: "A", dataType: point }] });
+    const union = bench.do(addStructure, {
+      name: "EitherType",
+      isUnion: true,
+      fields: [{ name: "A", dataType: point }],
+    });
     expect(bench.node(union)).toMatchObject({ definition: { isUnion: true }, references: [{ target: "i=12756" }] });
-    expect(bench.refuse(addStructure, { name: "U", isUnion: true, fields: [{ name: "A", dataType: point, isOptional: true }] })).toEqual(["structure.optional-in-union"]);
-    const flags = bench.do(addOptionSet, { name: "Flags", size: 8, bits: [{ name: "Ready", bit: 0 }, { name: "Hot", bit: 2 }] });
+    expect(
+      bench.refuse(addStructure, {
+        name: "U",
+        isUnion: true,
+        fields: [{ name: "A", dataType: point, isOptional: true }],
+      }),
+    ).toEqual(["structure.optional-in-union"]);
+    const flags = bench.do(addOptionSet, {
+      name: "Flags",
+      size: 8,
+      bits: [
+        { name: "Ready", bit: 0 },
+        { name: "Hot", bit: 2 },
+      ],
+    });
     const values = findProperty(bench.space, flags, "OptionSetValues");
-    expect(values && valueOf(bench, values.key)).toEqual(array("LocalizedText", [{ text: "Ready" }, { text: "" }, { text: "Hot" }]));
+    expect(values && valueOf(bench, values.key)).toEqual(
+      array("LocalizedText", [{ text: "Ready" }, { text: "" }, { text: "Hot" }]),
+    );
     bench.do(setOptionSetBits, { dataType: flags, bits: [{ name: "Cold", bit: 1 }] });
-    expect(bench.refuse(addOptionSet, { name: "More", size: 8, bits: [{ name: "Far", bit: 8 }] })).toEqual(["option-set.bit-range"]);
+    expect(bench.refuse(addOptionSet, { name: "More", size: 8, bits: [{ name: "Far", bit: 8 }] })).toEqual([
+      "option-set.bit-range",
+    ]);
   });
 });

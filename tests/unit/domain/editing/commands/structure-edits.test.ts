@@ -71,9 +71,16 @@ describe("moveNode", () => {
   it("gives a type another supertype of its class", () => {
     const sub = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "SubType" });
     bench.do(moveNode, { node: sub, parent: type });
-    expect(bench.space.edgesTo(sub).filter((e) => e.type === HasSubtype).map((e) => e.source)).toEqual([type]);
+    expect(
+      bench.space
+        .edgesTo(sub)
+        .filter((e) => e.type === HasSubtype)
+        .map((e) => e.source),
+    ).toEqual([type]);
     expect(bench.refuse(moveNode, { node: type, parent: sub })).toEqual(["move.below-itself"]);
-    expect(bench.refuse(moveNode, { node: sub, parent: StandardType.PropertyType })).toEqual(["reference.subtype-ends"]);
+    expect(bench.refuse(moveNode, { node: sub, parent: StandardType.PropertyType })).toEqual([
+      "reference.subtype-ends",
+    ]);
   });
 
   it("gives a rule to what moves from an instance into a type", () => {
@@ -90,8 +97,17 @@ describe("deleteNodes", () => {
     const before = bench.space.own.nodes.size;
     const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "T" });
     const group = bench.do(addObject, { parent: type, name: "G" });
-    bench.do(addVariable, { parent: group, name: "V", typeDefinition: StandardType.AnalogUnitRangeType, dataType: StandardDataType.Double });
-    bench.do(addMethod, { parent: type, name: "M", inputArguments: [{ name: "A", dataType: StandardDataType.Double }] });
+    bench.do(addVariable, {
+      parent: group,
+      name: "V",
+      typeDefinition: StandardType.AnalogUnitRangeType,
+      dataType: StandardDataType.Double,
+    });
+    bench.do(addMethod, {
+      parent: type,
+      name: "M",
+      inputArguments: [{ name: "A", dataType: StandardDataType.Double }],
+    });
     const deletion = findDeletion(bench.space, [type]);
     expect(deletion).toMatchObject({ references: [], uses: [] });
     expect(deletion.nodes).toHaveLength(7);
@@ -139,19 +155,37 @@ describe("connectNodes and disconnectNodes", () => {
   it("declares hierarchical references at the child and others at the source", () => {
     bench.do(connectNodes, { source: folder, type: Organizes, target: member });
     expect(bench.node(member).references).toContainEqual({ type: Organizes, target: folder, isForward: false });
-    bench.do(connectNodes, { source: type, type: StandardReferenceType.GeneratesEvent, target: StandardType.BaseEventType });
+    bench.do(connectNodes, {
+      source: type,
+      type: StandardReferenceType.GeneratesEvent,
+      target: StandardType.BaseEventType,
+    });
     expect(bench.node(type).references).toContainEqual({ type: "i=41", target: "i=2041", isForward: true });
     bench.do(disconnectNodes, { source: folder, type: Organizes, target: member });
-    expect(bench.refuse(disconnectNodes, { source: type, type: HasComponent, target: member })).toEqual(["disconnect.last-parent"]);
-    expect(bench.refuse(disconnectNodes, { source: standardKey(58), type: HasSubtype, target: type })).toEqual(["disconnect.required"]);
+    expect(bench.refuse(disconnectNodes, { source: type, type: HasComponent, target: member })).toEqual([
+      "disconnect.last-parent",
+    ]);
+    expect(bench.refuse(disconnectNodes, { source: standardKey(58), type: HasSubtype, target: type })).toEqual([
+      "disconnect.required",
+    ]);
   });
 
   it("refuses loops, doubles and what the standard forbids", () => {
-    expect(bench.refuse(connectNodes, { source: member, type: HasComponent, target: member })).toEqual(["reference.to-itself"]);
+    expect(bench.refuse(connectNodes, { source: member, type: HasComponent, target: member })).toEqual([
+      "reference.to-itself",
+    ]);
     const inner = bench.do(addObject, { parent: member, name: "B" });
-    expect(bench.refuse(connectNodes, { source: inner, type: HasComponent, target: member })).toEqual(["reference.loop"]);
-    expect(bench.refuse(connectNodes, { source: type, type: HasComponent, target: member })).toEqual(["operation.reference-exists"]);
-    expect(bench.refuse(connectNodes, { source: member, type: HasSubtype, target: type })).toEqual(["reference.subtype-ends"]);
-    expect(bench.refuse(connectNodes, { source: standardKey(85), type: Organizes, target: standardKey(58) })).toEqual(["operation.node-foreign"]);
+    expect(bench.refuse(connectNodes, { source: inner, type: HasComponent, target: member })).toEqual([
+      "reference.loop",
+    ]);
+    expect(bench.refuse(connectNodes, { source: type, type: HasComponent, target: member })).toEqual([
+      "operation.reference-exists",
+    ]);
+    expect(bench.refuse(connectNodes, { source: member, type: HasSubtype, target: type })).toEqual([
+      "reference.subtype-ends",
+    ]);
+    expect(bench.refuse(connectNodes, { source: standardKey(85), type: Organizes, target: standardKey(58) })).toEqual([
+      "operation.node-foreign",
+    ]);
   });
 });
