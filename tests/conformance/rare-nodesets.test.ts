@@ -103,3 +103,43 @@ describe("the strange file", () => {
     expect(nodeNamed(content, "Own").key).toBe("nsu=http://merrow.example/strange/;i=1");
   });
 });
+
+describe("the comparer", () => {
+  const text = load("rare");
+
+  it.each([
+    ['Version="0.1 alpha"', 'Version="0.1 beta"'],
+    ['WriteMask="4294967295"', ""],
+    ["<DisplayName>Rare</DisplayName>", "<DisplayName>Rarer</DisplayName>"],
+    ['Locale=""', ""],
+    ["svr=1;i=85", "i=85"],
+    ['IsForward="false">i=87', ">i=87"],
+    ['<Reference ReferenceType="HasComponent">ns=3;i=6001</Reference>', ""],
+    ["<Category>Rare Unit B</Category>", ""],
+    ['MaxStringLength="32"', 'MaxStringLength="33"'],
+    ["<uax:Int32>2</uax:Int32>", "<uax:Int32>3</uax:Int32>"],
+    ["  kept  as it stands  ", "kept as it stands"],
+    ['<Text Locale="fr">un</Text>', ""],
+    ["<Name>Length</Name>", "<Name>length</Name>"],
+    ["ns=3;s=a=b;c", "ns=2;s=a=b;c"],
+    ["<uax:NamespaceIndex>2", "<uax:NamespaceIndex>3"],
+    ['Permissions="131071"', 'Permissions="1"'],
+    ["<![CDATA[<raw>]]>", "raw"],
+  ])("sees that %j became %j", (before, after) => {
+    expect(text).toContain(before);
+    expect(describeNodeSetTree(text.replace(before, after))).not.toEqual(describeNodeSetTree(text));
+  });
+
+  it("does not mind other prefixes, or the order of nodes and namespaces", () => {
+    const first = text.slice(text.indexOf("  <UAView"), text.indexOf("  <UAReferenceType"));
+    expect(describeNodeSetTree(text.replace(first, "").replace("</UANodeSet>", `${first}</UANodeSet>`))).toEqual(describeNodeSetTree(text));
+    expect(describeNodeSetTree(text.replaceAll("uax:", "other:").replace("xmlns:uax", "xmlns:other"))).toEqual(describeNodeSetTree(text));
+    const swapped = text
+      .replace("<Uri>http://merrow.example/unused/</Uri>", "<Uri>X</Uri>")
+      .replace("<Uri>http://merrow.example/rare/</Uri>", "<Uri>http://merrow.example/unused/</Uri>")
+      .replace("<Uri>X</Uri>", "<Uri>http://merrow.example/rare/</Uri>")
+      .replaceAll("ns=3;", "ns=1;")
+      .replaceAll(/(BrowseName|Definition Name)="3:/g, '$1="1:');
+    expect(describeNodeSetTree(swapped)).toEqual(describeNodeSetTree(text));
+  });
+});

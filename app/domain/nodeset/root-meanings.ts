@@ -5,6 +5,8 @@ const BY_ROOT: Readonly<Record<string, string>> = {
   UANodeSetChangesStatus: "the answer to a list of changes (UANodeSetChangesStatus)",
   IODevice: "an IO-Link device description (IODD)",
   ExternalTextDocument: "a language file of an IO-Link device description (IODD)",
+  IODDStandardDefinitions: "the standard definitions that belong to IO-Link device descriptions (IODD)",
+  IODDStandardUnitDefinitions: "the standard units that belong to IO-Link device descriptions (IODD)",
   ModelDesign: "a source file for model compilers, not their result",
   TypeDictionary: "a binary type dictionary (.bsd)",
   html: "a web page",
