@@ -1,7 +1,8 @@
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { applyWithInverse } from "~/domain/editing/invert-operation";
 import type { Transaction } from "~/domain/editing/operation";
-import { EditorStore, type EditorOptions } from "~/editor/editor-store";
+import type { EditorOptions } from "~/editor/editor-state";
+import { EditorStore } from "~/editor/editor-store";
 import type { OutgoingTransaction, PostOutcome, SyncTransport } from "~/editor/sync-transport";
 
 /** A server after the contract of the data routes, in memory: one list, 409 on an old base, a resend answers as before. */
@@ -18,7 +19,10 @@ export class SimulatedServer {
 
   post(clientId: string, base: number, transactions: readonly OutgoingTransaction[]): PostOutcome {
     this.posts++;
-    if (this.posts > 2000) throw new Error(`The server is asked without end: ${JSON.stringify({ clientId, base, transactions }).slice(0, 300)} ${this.list.length}`);
+    if (this.posts > 2000)
+      throw new Error(
+        `The server is asked without end: ${JSON.stringify({ clientId, base, transactions }).slice(0, 300)} ${this.list.length}`,
+      );
     const sent = new Set(transactions.map((t) => t.clientSeq));
     const isKnown = (t: Transaction): boolean => t.clientId === clientId && sent.has(t.clientSeq);
     const known = new Set(this.list.filter(isKnown).map((t) => t.clientSeq));
@@ -29,11 +33,22 @@ export class SimulatedServer {
     const added: Transaction[] = [];
     for (const { clientSeq, label, operations } of fresh) {
       const applied = applyWithInverse(space, operations);
-      if (!applied.ok) return { kind: "refused", problems: applied.problems.map((p) => ({ ...p, data: { ...p.data, clientSeq } })) };
+      if (!applied.ok)
+        return { kind: "refused", problems: applied.problems.map((p) => ({ ...p, data: { ...p.data, clientSeq } })) };
       space = applied.value.space;
       const seq = this.list.length + added.length + 1;
       const { inverse } = applied.value;
-      added.push({ seq, base: seq - 1, clientId, clientSeq, author: clientId, at: "2024-05-01T08:00:00Z", label, operations, inverse });
+      added.push({
+        seq,
+        base: seq - 1,
+        clientId,
+        clientSeq,
+        author: clientId,
+        at: "2024-05-01T08:00:00Z",
+        label,
+        operations,
+        inverse,
+      });
     }
     this.space = space;
     this.list.push(...added);

@@ -1,6 +1,6 @@
 /** Edits that the server has not acknowledged outlive a reload of the page: they are kept for this tab and sent again. */
 import { operationsSchema } from "~/domain/editing/operation-schema";
-import type { UnsavedEdits } from "~/editor/editor-store";
+import type { UnsavedEdits } from "~/editor/editor-state";
 
 export type KeptEdits = UnsavedEdits & { readonly clientId: string };
 

@@ -2,7 +2,8 @@
 import { createContext, useContext, useMemo, useSyncExternalStore } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
-import type { EditorStore, EditorState } from "~/editor/editor-store";
+import type { EditorState } from "~/editor/editor-state";
+import type { EditorStore } from "~/editor/editor-store";
 import { toBadge, type Badge, type FindingStore, type FindingTally } from "./finding-store";
 import type { PresenceStore } from "./presence-store";
 import type { ModelActions } from "./model-actions";
