@@ -1,8 +1,12 @@
 /** `check`: the findings of one file, as text, JSON or SARIF. */
 import { createHash } from "node:crypto";
 import { readFile } from "node:fs/promises";
+import type { ZodType } from "zod";
 import { AddressSpace, buildLayer } from "../domain/address-space/address-space";
 import { getOwnNamespace } from "../domain/address-space/model-header";
+import { conventionsSchema, makeConventionRules, type Conventions } from "../domain/checks/conventions";
+import { RULES } from "../domain/checks/registry";
+import type { Rule } from "../domain/checks/rule";
 import { runChecks } from "../domain/checks/run-checks";
 import { toReport, type CheckReport, type ReportedFinding } from "../domain/checks/to-report";
 import { toSarif } from "../domain/checks/to-sarif";
@@ -29,8 +33,10 @@ export async function check(command: CheckCommand): Promise<number> {
     print(command, { report: toReport([], { file, lines: NOTHING, problems }), waived: [] }, 2);
   const content = await readInput(file);
   if (!content.ok) return refuse(content.problems);
-  const waivers = await readWaivers(command.waivers);
+  const waivers = await readJson(command.waivers, waiverFileSchema, { waivers: [] });
   if (!waivers.ok) return refuse(waivers.problems);
+  const conventions = await readJson<Conventions>(command.conventions, conventionsSchema, {});
+  if (!conventions.ok) return refuse(conventions.problems);
   const folders = await readFolders(command.folders);
   const problems = [...content.problems, ...folders.problems];
   if (!folders.ok) return refuse(problems);
@@ -42,7 +48,10 @@ export async function check(command: CheckCommand): Promise<number> {
   problems.push(...layers.problems);
   const isComplete = layers.ok && layers.problems.every((found) => found.severity !== "error");
   if (!isComplete) return refuse(problems);
-  const checked = checkContent(command, content.value, layers.value, problems, waivers.value);
+  const checked = checkContent(command, content.value, layers.value, problems, {
+    waivers: waivers.value.waivers,
+    rules: [...RULES, ...makeConventionRules(conventions.value)],
+  });
   const counted = checked.report.findings.some((f) => WEIGHT[f.severity] >= WEIGHT[command.severity ?? "error"]);
   const hasErrors = counted || problems.some((found) => found.severity === "error");
   return print(command, checked, hasErrors ? 1 : 0);
@@ -53,10 +62,10 @@ function checkContent(
   content: NodeSetContent,
   layers: Parameters<typeof AddressSpace.of>[0],
   problems: readonly Problem[],
-  waivers: readonly Waiver[],
+  { waivers, rules }: { readonly waivers: readonly Waiver[]; readonly rules: readonly Rule[] },
 ): Checked {
   const space = AddressSpace.of(layers, buildLayer(content.header, content.nodes));
-  const { open, waived } = applyWaivers(space, runChecks(space), waivers);
+  const { open, waived } = applyWaivers(space, runChecks(space, { rules }), waivers);
   const sources = { file, lines: content.lines, problems };
   const listed = waived.map(({ finding, waiver }) => {
     const [reported] = toReport([finding], { file, lines: content.lines }).findings;
@@ -74,19 +83,19 @@ function keepFrom(report: CheckReport, lowest: Severity | undefined): CheckRepor
   return { ...report, counts, findings };
 }
 
-/** Problem: `waivers.unreadable`. */
-async function readWaivers(file: string | undefined): Promise<Result<readonly Waiver[]>> {
-  if (file === undefined) return ok([]);
+/** Reads a JSON file of a known form. Problem: `check-file.unreadable`. */
+async function readJson<T>(file: string | undefined, schema: ZodType<T>, absent: T): Promise<Result<T>> {
+  if (file === undefined) return ok(absent);
   try {
-    const parsed = waiverFileSchema.safeParse(JSON.parse(await readFile(resolvePath(file), "utf8")));
-    if (parsed.success) return ok(parsed.data.waivers);
+    const parsed = schema.safeParse(JSON.parse(await readFile(resolvePath(file), "utf8")));
+    if (parsed.success) return ok(parsed.data);
     const [issue] = parsed.error.issues;
     return fail(
-      problem("waivers.unreadable", { file, detail: `${issue?.path.join(".") ?? ""}: ${issue?.message ?? ""}` }),
+      problem("check-file.unreadable", { file, detail: `${issue?.path.join(".") ?? ""}: ${issue?.message ?? ""}` }),
     );
   } catch (error) {
     return fail(
-      problem("waivers.unreadable", { file, detail: error instanceof Error ? error.message : String(error) }),
+      problem("check-file.unreadable", { file, detail: error instanceof Error ? error.message : String(error) }),
     );
   }
 }

@@ -11,6 +11,7 @@ export type CheckCommand = {
   /** The lowest severity that is listed and, where it is given, that counts for the exit code; errors count always. */
   readonly severity: Severity | undefined;
   readonly waivers: string | undefined;
+  readonly conventions: string | undefined;
 };
 export type ReportFormat = "text" | "json" | "sarif";
 export type RulesCommand = { readonly name: "rules"; readonly isJson: boolean };
@@ -78,7 +79,15 @@ export function parseCommandLine(args: readonly string[]): Command {
       values.severity === undefined
         ? undefined
         : requireOneOf(values.severity, SEVERITIES, "--severity is error, warning or hint.");
-    return { name, file: file ?? "", folders, format, severity, waivers: values.waivers };
+    return {
+      name,
+      file: file ?? "",
+      folders,
+      format,
+      severity,
+      waivers: values.waivers,
+      conventions: values.conventions,
+    };
   }
   if (name === "rules") {
     requireCount(rest, 0, "rules takes no file.");
@@ -123,6 +132,7 @@ function parse(args: readonly string[]) {
         format: { type: "string" },
         severity: { type: "string" },
         waivers: { type: "string" },
+        conventions: { type: "string" },
         direction: { type: "string" },
         condition: { type: "string" },
         frame: { type: "string", multiple: true },

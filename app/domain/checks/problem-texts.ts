@@ -1,5 +1,5 @@
 export const checksProblemTexts: Readonly<Record<string, string>> = {
   "fix.not-possible":
     "The finding of {rule} cannot be mended like this any more: the model has changed, or the case is not clear enough.",
-  "waivers.unreadable": "The waivers in {file} cannot be read: {detail}",
+  "check-file.unreadable": "{file} cannot be read: {detail}",
 };

@@ -184,6 +184,8 @@ import { r192 } from "./rules/r192-value-namespace";
 import { r193 } from "./rules/r193-value-namespace-index";
 import { r194 } from "./rules/r194-translation-count";
 import { r197 } from "./rules/r197-role-permissions";
+import { r311 } from "./rules/r311-five-groups";
+import { r312 } from "./rules/r312-like-its-type";
 
 export const RULES: readonly Rule[] = [
   r001,
@@ -370,6 +372,8 @@ export const RULES: readonly Rule[] = [
   r193,
   r194,
   r197,
+  r311,
+  r312,
 ];
 
 const byId = new Map<string, Rule>(RULES.map((rule) => [rule.id, rule] as const));

@@ -3,10 +3,17 @@ import { describe, expect, test } from "vitest";
 import { RULES } from "~/domain/checks/registry";
 import { runChecks } from "~/domain/checks/run-checks";
 import { buildModel } from "../../../support/model-builder";
+import { getPublishedLayer, getStandardLayer } from "../../../support/published-layers";
 
 const files = readdirSync(new URL("../../../../app/domain/checks/rules/", import.meta.url)).filter((f) =>
   f.endsWith(".ts"),
 );
+
+/** The rules about machines speak of nodes of OPC 40001-1. */
+const required = [
+  getStandardLayer(),
+  ...["Di", "Machinery"].map((name) => getPublishedLayer(`Opc.Ua.${name}.NodeSet2.xml`)),
+];
 
 describe("registry of rules", () => {
   test("holds every rule file once, in the order of numbers", () => {
@@ -25,14 +32,14 @@ describe("registry of rules", () => {
 
 describe.each(RULES)("$id $title", (rule) => {
   test(`good: ${rule.examples.good.text}`, () => {
-    const { space } = buildModel((m) => rule.examples.good.build(m));
+    const { space } = buildModel((m) => rule.examples.good.build(m), required);
     const findings = runChecks(space);
     expect(findings.filter((f) => f.rule === rule.id)).toEqual([]);
     expect(findings.filter((f) => f.severity === "error")).toEqual([]);
   });
 
   test(`bad: ${rule.examples.bad.text}`, () => {
-    const { space, made } = buildModel((m) => rule.examples.bad.build(m));
+    const { space, made } = buildModel((m) => rule.examples.bad.build(m), required);
     const found = runChecks(space).filter((f) => f.rule === rule.id);
     expect(found.map((f) => f.key ?? "model")).toContain(made);
     expect(found.some((f) => f.severity === rule.severity)).toBe(true);

@@ -1,0 +1,93 @@
+import { hasValueAttributes, type Node, type XmlText } from "../../address-space/node";
+import type { NodeKey } from "../../address-space/node-id";
+import { formatQualifiedName } from "../../address-space/qualified-name";
+import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
+import type { CheckContext } from "../check-context";
+import type { ExampleModel } from "../example-model";
+import { CELSIUS, unit } from "../example-values";
+import type { ReportFunction } from "../finding";
+import { findStandardProperty, findTypeAbove, findTypeDefinition } from "../lookups";
+import { getChildren, getMembers, isNaming, listOwnMembers, type Member } from "../members";
+import { formatRange, listRanges } from "../ranges";
+import type { NodeRule } from "../rule";
+import { listUnits } from "../unit-values";
+
+export const r312: NodeRule = {
+  id: "R312",
+  title: "A machine is like its type",
+  severity: "warning",
+  clause: "common practice, no source",
+  priority: 2,
+  concerns: ["Object"],
+  condition: "Members of an instance have the unit and the range of the type's declarations; another range is a hint.",
+  why: "Who compares machines takes the type's unit for all of them: one that differs is read wrongly by a factor.",
+  check(node, ctx, report) {
+    const type = findTypeDefinition(ctx, node.key);
+    if (type === undefined || findTypeAbove(ctx, node.key) !== undefined) return;
+    compareBelow(node, [...getMembers(ctx, type).values()], 0, ctx, report);
+  },
+  examples: {
+    good: { text: "The unit of the type.", build: (m) => void addTypeAndInstance(m, CELSIUS) },
+    bad: { text: "Another unit.", build: (m) => addTypeAndInstance(m, FAHRENHEIT) },
+  },
+};
+
+/** FAH of UN/CEFACT Recommendation 20. */
+const FAHRENHEIT = unit({ unitId: 4604232, symbol: "°F", name: "degree Fahrenheit" });
+
+function addTypeAndInstance(m: ExampleModel, value: XmlText): NodeKey {
+  const type = m.objectType("PressType");
+  const declared = m.variable("OilTemperature", { parent: type, type: T.AnalogUnitType, rule: "Mandatory" });
+  m.property("0:EngineeringUnits", { parent: declared, dataType: D.EUInformation, value: CELSIUS, rule: "Mandatory" });
+  const member = m.variable("OilTemperature", { parent: m.object("Press1", { type }), type: T.AnalogUnitType });
+  m.property("0:EngineeringUnits", { parent: member, dataType: D.EUInformation, value });
+  return member;
+}
+
+const MAX_DEPTH = 20;
+
+function compareBelow(
+  at: Node,
+  members: readonly Member[],
+  depth: number,
+  ctx: CheckContext,
+  report: ReportFunction,
+): void {
+  if (depth > MAX_DEPTH) return;
+  const children = getChildren(ctx, at.key);
+  for (const { node: declared, rule } of members) {
+    const child = isNaming(rule) ? children.get(formatQualifiedName(declared.browseName))?.[0] : undefined;
+    if (!child || child.key === declared.key) continue;
+    if (ctx.isOwn(child.key)) compareAnalog(child, declared, ctx, report);
+    compareBelow(child, listOwnMembers(ctx, declared.key), depth + 1, ctx, report);
+  }
+}
+
+function compareAnalog(child: Node, declared: Node, ctx: CheckContext, report: ReportFunction): void {
+  const [here, there] = [child, declared].map((n) => listUnits(findValue(n, "EngineeringUnits", ctx))[0]);
+  const name = child.browseName.name;
+  if (here && there && (here.unitId !== there.unitId || here.uri !== there.uri)) {
+    report({
+      key: child.key,
+      message: `${name} is in ${here.symbol || here.unitId}, its type says ${there.symbol || there.unitId}.`,
+      facts: [
+        `Here: ${here.symbol} (${here.unitId})`,
+        `${ctx.describe(declared.key)}: ${there.symbol} (${there.unitId})`,
+      ],
+    });
+  }
+  const [range, wanted] = [child, declared].map((n) => listRanges(findValue(n, "EURange", ctx))[0]);
+  if (range && wanted && (range.low !== wanted.low || range.high !== wanted.high)) {
+    report({
+      key: child.key,
+      severity: "hint",
+      message: `${name} has the range ${formatRange(range)}, its type ${formatRange(wanted)}.`,
+      facts: [`Here: ${formatRange(range)}`, `${ctx.describe(declared.key)}: ${formatRange(wanted)}`],
+    });
+  }
+}
+
+function findValue(node: Node, property: string, ctx: CheckContext): XmlText | undefined {
+  const found = findStandardProperty(ctx, node.key, property);
+  return found && hasValueAttributes(found) ? found.value : undefined;
+}
