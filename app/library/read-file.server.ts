@@ -35,7 +35,7 @@ export async function readFileBytes(bytes: Uint8Array, options: ReadFileOptions 
   if (running >= MAX_WORKERS) await new Promise<void>((resolve) => waiting.push(resolve));
   running++;
   try {
-    return await readInWorker(worker, bytes, options);
+    return options.signal?.aborted ? fail(problem("read.cancelled")) : await readInWorker(worker, bytes, options);
   } finally {
     running--;
     waiting.shift()?.();
@@ -56,7 +56,12 @@ export function readHere(bytes: Uint8Array, options: ReadFileOptions = {}): Resu
   return result.ok ? ok(result.value, problems) : fail(...problems);
 }
 
-function readInWorker(file: string, bytes: Uint8Array, options: ReadFileOptions): Promise<Result<NodeSetContent>> {
+/** The same in a thread of its own, started from the built worker. */
+export function readInWorker(
+  file: string,
+  bytes: Uint8Array,
+  options: ReadFileOptions = {},
+): Promise<Result<NodeSetContent>> {
   const { fileName, onProgress, signal } = options;
   const request: ReadRequest = { bytes, fileName, milliseconds: MILLISECONDS };
   return new Promise((resolve) => {
