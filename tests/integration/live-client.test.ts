@@ -9,6 +9,7 @@ import { nodesets } from "node-opcua-nodesets";
 import { afterAll, beforeAll, describe, expect, it, vi } from "vitest";
 import { getValue } from "~/domain/core/result";
 import type { Sample } from "~/domain/live/live-node";
+import { callMethod, writeValue } from "~/opcua/client/act.server";
 import { browseChildren, findPathTo } from "~/opcua/client/browse.server";
 import { EndpointClient } from "~/opcua/client/endpoint-client.server";
 import { BROWSE_PAGE, type EndpointSettings } from "~/opcua/client/endpoint-settings";
@@ -140,6 +141,44 @@ describe("watching", () => {
       client.watch(winch("i=99999"), (sample) => seen.push(sample));
       const first = await waitFor(() => seen[0]);
       expect(first).toMatchObject({ value: null, status: { name: "Bad_NodeIdUnknown", severity: "bad" } });
+    });
+  });
+});
+
+describe("writing and calling", () => {
+  const rope = winch("s=Rope;Length=1");
+
+  it("writes one value, reads it back and tells what was there", async () => {
+    await withClient(async (client) => {
+      expect(getValue(await writeValue(client, rope, "7,25"))).toMatchObject({ isDone: true, status: "Good", before: { value: 12.5 }, after: { value: 7.25 } });
+      expect(getValue(await writeValue(client, rope, "\u22123"))).toMatchObject({ before: { value: 7.25 }, after: { value: -3 } });
+    });
+  });
+
+  it("refuses what the server does not allow or the type does not take", async () => {
+    await withClient(async (client) => {
+      expect(await writeValue(client, winch("i=6100"), "7")).toMatchObject({ ok: false, problems: [{ code: "endpoint.not-writable" }] });
+      expect(await writeValue(client, rope, "much")).toMatchObject({ ok: false, problems: [{ code: "endpoint.input" }] });
+    });
+  });
+
+  it("calls a Method with typed arguments", async () => {
+    await withClient(async (client) => {
+      const card = getValue(await readNode(client, winch("i=7002")));
+      expect(card.inputArguments).toEqual([{ name: "RecipeNumber", builtInType: "UInt16", description: null }]);
+      expect(getValue(await callMethod(client, winch("i=5001"), winch("i=7002"), ["12"]))).toEqual({
+        status: "Good",
+        isDone: true,
+        outputs: [
+          { name: "Accepted", text: "true" },
+          { name: "RecipeNumber", text: "12" },
+          { name: "Remark", text: "simulation" },
+        ],
+      });
+      for (const wrong of ["-1", "65536", "1.5", "", "x"]) {
+        expect(await callMethod(client, winch("i=5001"), winch("i=7002"), [wrong]), wrong).toMatchObject({ ok: false, problems: [{ code: "endpoint.input" }] });
+      }
+      expect(await callMethod(client, winch("i=5001"), winch("i=7002"), [])).toMatchObject({ ok: false, problems: [{ code: "endpoint.arguments" }] });
     });
   });
 });

@@ -124,6 +124,19 @@ describe("Live over data routes and topics", () => {
     expect((await app.call("GET", `/live/${started.id}/node?node=nonsense`, { cookie })).status).toBe(503);
     expect((await app.call("GET", `/live/${started.id}/node`, { cookie })).status).toBe(400);
 
+    // Writing asks for a role that a reviewer has not, and every act stands in the audit, refused ones too.
+    const act = (who: string, value: string) => app.call("POST", `/live/${started.id}/write`, { cookie: who, json: { node: `nsu=${WINCH_URI};s=Rope;Length=1`, value } });
+    const rosa = await addTestPerson(app, organizationId, "Rosa", ["reviewer"]);
+    expect((await act(rosa, "8")).status).toBe(403);
+    expect(await (await act(cookie, "8")).json()).toMatchObject({ isDone: true, after: { value: 8 } });
+    expect((await act(cookie, "eight")).status).toBe(422);
+    const { listAudit } = await import("~/db/repositories/audit.server");
+    const audit = await listAudit(organizationId, 10);
+    expect(audit.filter((entry) => entry.action === "live.write").map((entry) => entry.details)).toMatchObject([
+      { value: "eight", refused: "endpoint.input" },
+      { value: "8", before: "12.5", after: "8", status: "Good" },
+    ]);
+
     const stream = await openStream();
     await stream.listen([`value:${started.id}:${load}`, `test-server:${started.id}`, `connection:${started.id}`]);
     const values = await waitFor(() => {

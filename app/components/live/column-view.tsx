@@ -106,8 +106,8 @@ function Row({ node, isFirst, isSelected, onSelect }: RowProps) {
       <span className="min-w-[38%] flex-1 truncate">{node.displayName}</span>
       {node.nodeClass === "Variable" ? <RowValue node={node} /> : null}
       {node.nodeClass === "Method" ? (
-        <span title="Methods are shown, not called, here" className="text-ink-3">
-          <Icon of={Lock} size={13} label="shown, not called, here" />
+        <span title="Called from its card, behind a caution" className="text-ink-3">
+          <Icon of={Lock} size={13} label="called from its card, behind a caution" />
         </span>
       ) : null}
       {node.nodeClass !== "Variable" && node.nodeClass !== "Method" && !isSelected ? (

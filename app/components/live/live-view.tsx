@@ -1,25 +1,31 @@
 import { useCallback, useEffect, useRef, useState, type ReactNode } from "react";
 import type { BrowsedNode } from "~/domain/live/live-node";
 import type { TestServerState } from "~/domain/simulation/test-server-state";
+import { ActBlock } from "./act-block";
 import { ColumnView } from "./column-view";
 import { LiveBar } from "./live-bar";
 import { LiveContext } from "./live-context";
 import { LiveValues } from "./live-values";
 import { PathWire } from "./path-wire";
-import { useLiveColumns } from "./use-live-columns";
+import { OBJECTS_FOLDER, useLiveColumns } from "./use-live-columns";
 import { useNodeCard } from "./use-node-card";
 import { useTestServer } from "./use-test-server";
 import { ValueCard } from "./value-card";
 import { toWatched, useWatchList } from "./watch-list";
 import { WatchStrip } from "./watch-strip";
 
-type Props = { server: TestServerState; startNode: string | null };
+type Props = {
+  server: TestServerState;
+  startNode: string | null;
+  /** The roles of whoever looks allow writes and calls. */
+  mayWrite: boolean;
+};
 
 /** Live: columns to the right along the browse path, the value at their end, the watch strip below. */
-export function LiveView({ server, startNode }: Props) {
+export function LiveView({ server, startNode, mayWrite }: Props) {
   return (
     <LiveProvider serverId={server.id}>
-      {(values) => <LiveStage initial={server} startNode={startNode} values={values} />}
+      {(values) => <LiveStage initial={server} startNode={startNode} mayWrite={mayWrite} values={values} />}
     </LiveProvider>
   );
 }
@@ -32,7 +38,9 @@ function LiveProvider({ serverId, children }: { serverId: string; children: (val
 
 const SUGGESTED = 5;
 
-function LiveStage({ initial, startNode, values }: { initial: TestServerState; startNode: string | null; values: LiveValues }) {
+type StageProps = { initial: TestServerState; startNode: string | null; mayWrite: boolean; values: LiveValues };
+
+function LiveStage({ initial, startNode, mayWrite, values }: StageProps) {
   const { server } = useTestServer(initial);
   const [wanted, setWanted] = useState(startNode);
   const live = useLiveColumns(server.id, wanted);
@@ -96,6 +104,7 @@ function LiveStage({ initial, startNode, values }: { initial: TestServerState; s
           isWatched={selected !== undefined && watch.has(selected.nodeId)}
           onWatch={() => selected && toggleWatch(selected)}
           onOpenMember={(node) => live.select(live.path.length, node)}
+          act={<ActBlock server={server} card={card.card} owner={live.path.at(-2)?.nodeId ?? OBJECTS_FOLDER} mayWrite={mayWrite} />}
         />
         <PathWire stage={stage} signature={live.path.map((node) => node.nodeId).join(" ")} />
       </div>

@@ -19,9 +19,11 @@ type Props = {
   isWatched: boolean;
   onWatch: () => void;
   onOpenMember: (node: BrowsedNode) => void;
+  /** Writing or calling, where the node allows it. */
+  act: ReactNode;
 };
 
-export function ValueCard({ node, path, state, isWatched, onWatch, onOpenMember }: Props) {
+export function ValueCard({ node, path, state, isWatched, onWatch, onOpenMember, act }: Props) {
   if (!node) {
     return (
       <section aria-label="Value" className="grid min-w-0 flex-1 content-start gap-1 bg-leaf p-6 text-small text-ink-2 max-md:border-t max-md:border-rule">
@@ -52,6 +54,7 @@ export function ValueCard({ node, path, state, isWatched, onWatch, onOpenMember 
       {node.nodeClass === "Variable" ? <LiveFigure node={node} card={card} /> : null}
       {card ? <Facts node={node} card={card} /> : null}
       {card && card.states.length > 0 ? <States node={node} card={card} /> : null}
+      {act}
       {card?.description ? <p className="mt-3 text-small text-ink-2">{card.description}</p> : null}
       {members.length > 0 ? <Members members={members} onOpen={onOpenMember} /> : null}
     </section>

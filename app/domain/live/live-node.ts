@@ -1,4 +1,5 @@
 /** What Live shows of a server's nodes: plain data, made by the client side and drawn by the columns. */
+import type { MethodArgument } from "./live-action";
 import type { NodeClass } from "../address-space/node";
 
 export type StatusSeverity = "good" | "uncertain" | "bad";
@@ -59,6 +60,10 @@ export type NodeCard = {
   readonly minimumSamplingInterval: number | null;
   readonly historizing: boolean | null;
   readonly executable: boolean | null;
+  /** Built-in type that a value is encoded as; null for what is no Variable. */
+  readonly builtInType: string | null;
+  /** Of Methods only. */
+  readonly inputArguments: readonly MethodArgument[];
   readonly unit: Unit | null;
   readonly range: LiveRange | null;
   readonly instrumentRange: LiveRange | null;

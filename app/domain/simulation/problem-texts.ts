@@ -12,5 +12,12 @@ export const testServerProblemTexts: Readonly<Record<string, string>> = {
   "endpoint.namespace-unknown": "The server has no namespace {namespaceUri}.",
   "endpoint.unreachable": "{endpointUrl} does not answer: {detail}",
   "endpoint.node-unknown": "The server has no node {node}.",
+  "endpoint.not-writable": "The server does not let this value be written.",
+  "endpoint.array": "Arrays are not written from here.",
+  "endpoint.beyond-range": "{value} lies beyond the range {low} … {high}; nothing was written.",
+  "endpoint.input": "“{value}” is not a {type} for {name}.",
+  "endpoint.input-type": "Values of type {type} ({name}) are not written from here.",
+  "endpoint.arguments": "The Method takes {expected} arguments, not {given}.",
+  "endpoint.unprotected": "Nothing is written or called over an unprotected connection. Start the test server with Basic256Sha256.",
   "endpoint.browse": "The server did not answer the browse of {node}: {status}.",
 };

@@ -25,7 +25,7 @@ export function decodeSample(dataValue: DataValue, states: StateTexts | undefine
 }
 
 /** The standard writes `Uncertain_SimulatedValue`; the library drops the underscore. */
-function nameStatus(name: string): string {
+export function nameStatus(name: string): string {
   return name.split("#")[0]?.replace(/^(Good|Uncertain|Bad)(?=[A-Z])/, "$1_") ?? name;
 }
 

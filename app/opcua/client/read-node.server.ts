@@ -1,9 +1,10 @@
 /** Everything that a node's card shows, in three requests. */
-import { AttributeIds, BrowseDirection, type ClientSession, coerceNodeId, type DataValue, NodeClass as WireNodeClass, type NodeId } from "node-opcua";
+import { AttributeIds, BrowseDirection, type ClientSession, coerceNodeId, DataType, type DataValue, NodeClass as WireNodeClass, type NodeId } from "node-opcua";
 import { fail, ok, problem, type Result } from "~/domain/core/result";
 import type { NodeClass } from "~/domain/address-space/node";
 import type { NodeCard } from "~/domain/live/live-node";
 import { fromWireNodeId, toWireNodeId } from "../node-ids";
+import { readArguments } from "./act.server";
 import { decodeSample, type StateTexts } from "./decode-value";
 import type { EndpointClient } from "./endpoint-client.server";
 import { readProperties, toRange, toUnit } from "./find-properties.server";
@@ -40,8 +41,18 @@ export async function readNode(client: EndpointClient, nodeId: string): Promise<
     const states = (await readStateTexts(session, [nodeId], namespaces)).get(nodeId);
     const [properties] = await readProperties(session, [wireId.value], ["EngineeringUnits", "EURange", "InstrumentRange"]);
     const relations = await readRelations(session, wireId.value);
-    return ok(await toCard(session, namespaces, nodeId, attributes, states, properties ?? new Map(), relations));
+    const card = await toCard(session, namespaces, nodeId, attributes, states, properties ?? new Map(), relations);
+    return ok({ ...card, ...(await readTypes(session, wireId.value, card.nodeClass)) });
   });
+}
+
+/** What an editor needs to offer the right field. */
+async function readTypes(session: ClientSession, nodeId: NodeId, nodeClass: NodeClass): Promise<Pick<NodeCard, "builtInType" | "inputArguments">> {
+  if (nodeClass === "Method") return { builtInType: null, inputArguments: (await readArguments(session, nodeId)).inputs };
+  if (nodeClass !== "Variable") return { builtInType: null, inputArguments: [] };
+  // A Variable of an abstract data type has no one built-in type, which is no reason not to show it.
+  const type = await session.getBuiltInDataType(nodeId).catch(() => DataType.Null);
+  return { builtInType: DataType[type] ?? null, inputArguments: [] };
 }
 
 type Attributes = (name: AttributeName) => DataValue | undefined;
@@ -90,6 +101,8 @@ async function toCard(
     minimumSamplingInterval: get<number>("MinimumSamplingInterval"),
     historizing: get<boolean>("Historizing"),
     executable: get<boolean>("Executable"),
+    builtInType: null,
+    inputArguments: [],
     unit: toUnit(properties.get("EngineeringUnits")),
     range: toRange(properties.get("EURange")),
     instrumentRange: toRange(properties.get("InstrumentRange")),
