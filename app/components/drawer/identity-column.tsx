@@ -1,10 +1,12 @@
 import { Lock } from "lucide-react";
+import { useMemo, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
-import { findTypeDefinition } from "~/domain/address-space/browse";
+import { findParent, findTypeDefinition } from "~/domain/address-space/browse";
 import { isTypeNode, type Node } from "~/domain/address-space/node";
 import { getOwnNamespace } from "~/domain/address-space/model-header";
-import { formatNodeId } from "~/domain/address-space/node-id";
+import { formatNodeId, type NodeKey } from "~/domain/address-space/node-id";
 import { findSupertype } from "~/domain/address-space/type-hierarchy";
+import { listParents } from "../model/list-parents";
 import { findRuleName, getNodeName, RULE_KEYS, type RuleName } from "../model/member-facts";
 import { formatLocalNodeId, getNamespaceLabel } from "../model/namespace-label";
 import { TypeField } from "../model/type-search";
@@ -45,6 +47,7 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
           <span className="truncate font-words text-note text-ink-3">{node.nodeId.namespaceUri}</span>
         </span>
       </Fact>
+      {isTypeNode(node) || readOnly ? null : <OwnerRow space={space} node={node} />}
       <TypeRow space={space} node={node} readOnly={readOnly} />
       {isTypeNode(node) ? (
         <Fact label="">
@@ -59,6 +62,30 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
         <RuleRow rule={findRuleName(space, node.key)} node={node} readOnly={readOnly} />
       )}
     </section>
+  );
+}
+
+/** The node that holds it; another choice moves it there. */
+function OwnerRow({ space, node }: { space: AddressSpace; node: Node }) {
+  const { actions } = useOpenModel();
+  const owner = findParent(space, node.key);
+  // The choices are many in a large model; they are listed when somebody is about to choose.
+  const [isAsked, setAsked] = useState(false);
+  const parents = useMemo(() => (isAsked ? listParents(space) : []), [space, isAsked]);
+  const isListed = parents.some((parent) => parent.key === owner);
+  return (
+    <Particular label="Belongs to">
+      {(id) => (
+        <Select id={id} size="small" value={owner ?? ""} onFocus={() => setAsked(true)} onPointerDown={() => setAsked(true)} onChange={(event) => actions.move([node.key], event.currentTarget.value as NodeKey)}>
+          {isListed ? null : <option value={owner ?? ""}>{getNodeName(space, owner)}</option>}
+          {parents.map((parent) => (
+            <option key={parent.key} value={parent.key}>
+              {parent.label}
+            </option>
+          ))}
+        </Select>
+      )}
+    </Particular>
   );
 }
 

@@ -1,7 +1,7 @@
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { Node } from "~/domain/address-space/node";
 import type { Finding } from "~/domain/checks/finding";
-import { useSyncExternalStore } from "react";
+import { useEffect, useState, useSyncExternalStore } from "react";
 import { formatPath, getNodeName, isProperty } from "../model/member-facts";
 import { listRoots } from "../model/list-roots";
 import { useOpenModel, useSelection, useSpace, useView } from "../model/use-model";
@@ -75,7 +75,30 @@ function WorstFinding({ node }: { node: Node }) {
       <FindingBadge severity={finding.severity} title={finding.rule} />
       <span className="truncate">{finding.message}</span>
       {count > 1 ? <span className="shrink-0 text-note text-ink-3">and {count - 1} more</span> : null}
+      <MendButton finding={finding} />
     </span>
+  );
+}
+
+/** The rule's own fix, where it has one. Rules come with the checker, so they are asked for when a finding is there. */
+function MendButton({ finding }: { finding: Finding }) {
+  const model = useOpenModel();
+  const [mend, setMend] = useState<() => void>();
+  useEffect(() => {
+    let isGone = false;
+    void Promise.all([import("../findings/mend-findings"), import("~/domain/checks/registry")]).then(([{ mendFindings }, { findRule }]) => {
+      const hasFix = findRule(finding.rule)?.fix !== undefined;
+      if (!isGone) setMend(() => (hasFix ? () => mendFindings(model, [finding]) : undefined));
+    });
+    return () => {
+      isGone = true;
+    };
+  }, [finding, model]);
+  if (!mend || !model.actions.canEdit) return null;
+  return (
+    <Button size="small" onClick={mend}>
+      Mend
+    </Button>
   );
 }
 

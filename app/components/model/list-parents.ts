@@ -4,6 +4,7 @@ import { findTypeDefinition } from "~/domain/address-space/browse";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { StandardObject, StandardType } from "~/domain/address-space/standard-ids";
 import { isDeclarationParent } from "~/domain/editing/placement";
+import { listOwnByClass } from "./list-roots";
 import { formatPath, getNodeName } from "./member-facts";
 
 export type ParentChoice = { readonly key: NodeKey; readonly label: string };
@@ -12,7 +13,7 @@ const MOST = 500;
 
 /** Own types and Objects, then the folders of required models where machines are entered. */
 export function listParents(space: AddressSpace): ParentChoice[] {
-  const own = space.listOwnNodes().filter((node) => {
+  const own = listOwnByClass(space, ["ObjectType", "VariableType", "Object"]).filter((node) => {
     if (node.nodeClass === "ObjectType" || node.nodeClass === "VariableType") return true;
     if (node.nodeClass !== "Object") return false;
     const type = findTypeDefinition(space, node.key);

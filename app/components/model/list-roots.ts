@@ -1,17 +1,23 @@
 /** Where a model begins for a reader: its types, and the Objects by which clients enter it. */
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { findParent, findTypeDefinition } from "~/domain/address-space/browse";
-import { isTypeNode } from "~/domain/address-space/node";
+import { isTypeNode, type Node, type NodeClass } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { StandardObject, StandardType } from "~/domain/address-space/standard-ids";
 
 /** Own types first, then where a client enters the model. */
 export function listRoots(space: AddressSpace): NodeKey[] {
-  const groups: Record<string, NodeKey[]> = { Object: [], ObjectType: [], VariableType: [], DataType: [], ReferenceType: [] };
-  for (const node of space.listOwnNodes()) {
-    if (node.nodeClass === "Object" ? isEntryObject(space, node.key) : node.nodeClass.endsWith("Type")) groups[node.nodeClass]?.push(node.key);
-  }
-  return ["ObjectType", "Object", "VariableType", "DataType", "ReferenceType"].flatMap((name) => groups[name] ?? []);
+  const own = listOwnByClass(space, ROOT_CLASSES);
+  return ROOT_CLASSES.flatMap((nodeClass) =>
+    own.flatMap((node) => (node.nodeClass === nodeClass && (nodeClass !== "Object" || isEntryObject(space, node.key)) ? [node.key] : [])),
+  );
+}
+
+const ROOT_CLASSES: readonly NodeClass[] = ["ObjectType", "Object", "VariableType", "DataType", "ReferenceType"];
+
+/** Own nodes of some classes in their order; most nodes of a model are Variables, so these are not sorted along. */
+export function listOwnByClass(space: AddressSpace, classes: readonly NodeClass[]): Node[] {
+  return [...space.own.nodes.values()].filter((node) => classes.includes(node.nodeClass)).sort((a, b) => a.order - b.order || (a.key < b.key ? -1 : 1));
 }
 
 /** An own Object that hangs below a node of a required model: where a client enters. Namespace metadata and encodings are none. */

@@ -3,6 +3,7 @@ import { useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { getNodeName, RULE_KEYS, type RuleName } from "../model/member-facts";
+import { MoveMenu } from "../model/move-menu";
 import { UnitSearch } from "../model/unit-search";
 import { useOpenModel } from "../model/use-model";
 import { Button } from "../ui/button";
@@ -12,7 +13,7 @@ import { Menu } from "../ui/menu";
 /** What can be done to all selected rows; each press is one edit, undone with one step. */
 export function BulkBar({ space, selection }: { space: AddressSpace; selection: readonly NodeKey[] }) {
   const { actions, view } = useOpenModel();
-  const [open, setOpen] = useState<"unit" | "range">();
+  const [open, setOpen] = useState<"unit" | "range" | "move">();
   const keys = selection.filter((key) => actions.mayChange(key));
   const variables = keys.filter((key) => space.getNode(key)?.nodeClass === "Variable");
   const names = selection.slice(0, 4).map((key) => getNodeName(space, key));
@@ -81,6 +82,10 @@ export function BulkBar({ space, selection }: { space: AddressSpace; selection: 
           onSelect: () => actions.changeCells(variables.map((key) => ({ key, column: "access", text: access })), "set-access"),
         }))}
       />
+      <Button size="small" onClick={() => setOpen("move")} {...(keys.length === 0 ? { blockedBy: "these nodes belong to required models" } : {})}>
+        Move to …
+      </Button>
+      {open === "move" ? <MoveMenu keys={keys} onClose={() => setOpen(undefined)} /> : null}
       <i className="register-rule" />
       <Button size="small" onClick={() => actions.duplicate(keys)} {...(keys.length === 0 ? { blockedBy: "these nodes belong to required models" } : {})}>
         Duplicate

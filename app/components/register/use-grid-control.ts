@@ -169,7 +169,7 @@ export function useGridControl(inputs: Inputs): GridControl {
           return true;
         case "enter": {
           const parent = findMemberOwner(space, view.getState().selection.at(-1));
-          if (parent !== undefined) latest.current.add(makeAddRequest("Variable", { parent }));
+          if (parent !== undefined && actions.canEdit) latest.current.add(makeAddRequest("Variable", { parent }));
           return true;
         }
         default:

@@ -8,7 +8,7 @@ import type { Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { formatQualifiedName } from "~/domain/address-space/qualified-name";
 import { findSupertype, listSupertypes } from "~/domain/address-space/type-hierarchy";
-import { isEntryObject } from "../model/list-roots";
+import { isEntryObject, listOwnByClass } from "../model/list-roots";
 import { listInterfaces } from "../model/member-facts";
 
 const MOST_CARDS = 80;
@@ -18,7 +18,7 @@ const FEWEST_ROWS = 3;
 /** Keys in the order in which a reader meets them. */
 export function listDefaultCards(space: AddressSpace): NodeKey[] {
   const shown = new Set<NodeKey>();
-  const own = space.listOwnNodes();
+  const own = listOwnByClass(space, ["ObjectType", "VariableType", "DataType", "ReferenceType", "Object"]);
   for (const node of own) {
     if (node.nodeClass === "ObjectType" || node.nodeClass === "VariableType") addTypeCards(space, node, shown);
     if (shown.size >= MOST_CARDS) break;

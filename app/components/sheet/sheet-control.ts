@@ -13,5 +13,6 @@ export type SheetControl = {
   readonly arrange: () => void;
   readonly connect: (request: ConnectRequest) => void;
   readonly add: (request: AddRequest) => void;
+  readonly move: (keys: readonly NodeKey[]) => void;
   readonly changeLayout: (make: (layout: SheetLayout) => SheetLayout) => void;
 };

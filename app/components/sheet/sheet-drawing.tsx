@@ -4,6 +4,7 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { AddNodePanel } from "../model/add-node-panel";
 import { makeAddRequest, type AddRequest } from "../model/add-request";
+import { MoveMenu } from "../model/move-menu";
 import { useOpenModel } from "../model/use-model";
 import type { PaletteEntry } from "../palette/palette-store";
 import { usePaletteActions } from "../palette/use-palette-actions";
@@ -34,6 +35,7 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
   const [moved, setMoved] = useState(NOT_MOVED);
   const [connecting, setConnecting] = useState<ConnectRequest>();
   const [adding, setAdding] = useState<AddRequest>();
+  const [moving, setMoving] = useState<readonly NodeKey[]>();
   const [isArranging, setArranging] = useState(false);
   const places = useMemo(() => placeCards(scene, new Map(Object.entries(layout.positions) as [NodeKey, Point][])), [scene, layout.positions]);
   const rects = useMemo(() => toRects(scene, places, moved), [scene, places, moved]);
@@ -65,6 +67,7 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
       arrange: () => void arrange(),
       connect: setConnecting,
       add: setAdding,
+      move: setMoving,
       changeLayout,
     };
   }, [changeLayout, places, scene, view, fitView]);
@@ -86,6 +89,7 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
         <ZoneStrip side="bottom" origin={origin} canvas={canvas} />
       </div>
       {connecting ? <ConnectMenu space={space} request={connecting} onClose={() => setConnecting(undefined)} /> : null}
+      {moving ? <MoveMenu keys={moving} onClose={() => setMoving(undefined)} /> : null}
       {adding ? <AddNodePanel key={adding.id} request={adding} onClose={() => setAdding(undefined)} /> : null}
     </section>
   );

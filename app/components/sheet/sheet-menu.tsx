@@ -62,6 +62,7 @@ function useMenuEntries(context: Context, key: NodeKey | undefined): MenuEntry[]
     entries.push(
       { label: "Rename", keys: "F2", onSelect: () => view.startRenaming(key) },
       { label: "Duplicate", keys: "Ctrl D", onSelect: () => actions.duplicate([key]) },
+      { label: "Move to …", onSelect: () => control.move(view.getState().selection.filter((k) => actions.mayChange(k))) },
       { label: "Connect to …", keys: "C", onSelect: () => control.connect({ source: key }) },
       { kind: "rule" },
     );

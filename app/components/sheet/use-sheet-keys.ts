@@ -63,7 +63,7 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
 
   function addNext(): void {
     const parent = findMemberOwner(space, view.getState().selection.at(-1));
-    if (parent !== undefined) control.add(makeAddRequest("Variable", { parent }));
+    if (parent !== undefined && actions.canEdit) control.add(makeAddRequest("Variable", { parent }));
   }
 
   const plain: Readonly<Record<string, () => void>> = {
@@ -78,7 +78,7 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
     a: () => document.getElementById("say-what-it-carries")?.focus(),
     c: () => {
       const source = view.getState().selection.at(-1);
-      if (source !== undefined) control.connect({ source });
+      if (source !== undefined && actions.canEdit) control.connect({ source });
     },
     h: () => control.hide(view.getState().selection.filter((key) => rects.has(key))),
     d: () => control.show(view.getState().selection),
