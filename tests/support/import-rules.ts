@@ -42,7 +42,7 @@ export const layerRules: readonly LayerRule[] = [
     name: "domain",
     files: /^app\/domain\//,
     mayImport: ["domain"],
-    packages: ["zod", "saxes", "fast-xml-parser", "fflate", "mathjs"],
+    packages: ["zod", "saxes", "fflate", "mathjs"],
     node: false,
     advice:
       "The domain is pure: pass in what it needs as a value or a function, and let a service, component or process call it.",
