@@ -42,26 +42,33 @@ export function writeNodeSet(
     referenceHeads: { forward: new Map(), inverse: new Map() },
   };
   // Nodes before the head: they decide which namespaces and aliases the head must list.
-  const parts = nodes.map((node) => writeNode(node, context));
+  const parts: string[] = [];
+  const heights = nodes.map((node) => {
+    const part = writeNode(node, context);
+    parts.push(part);
+    // Counting at once also makes one string of the many that the part was put together from.
+    return countLineBreaks(part);
+  });
   const head = writeHead(header, root, context);
   let lines: ReadonlyMap<NodeKey, number> | undefined;
   return {
     xml: `${head}${parts.join("")}</${root.prefix}UANodeSet>\n`,
-    // Counted when they are asked for: an export to a file never asks.
     get lines() {
-      return (lines ??= countLines(nodes, parts, countLineBreaks(head) + 1));
+      return (lines ??= toLines(nodes, heights, countLineBreaks(head) + 1));
     },
   };
 }
 
-function countLines(nodes: readonly Node[], parts: readonly string[], first: number): ReadonlyMap<NodeKey, number> {
+/** The first line of each node, from the number of lines that each takes. */
+function toLines(nodes: readonly Node[], heights: readonly number[], first: number): ReadonlyMap<NodeKey, number> {
   let line = first;
-  const lines = new Map<NodeKey, number>();
-  nodes.forEach((node, i) => {
-    lines.set(node.key, line);
-    line += countLineBreaks(parts[i] ?? "");
-  });
-  return lines;
+  return new Map(
+    nodes.map((node, i) => {
+      const start = line;
+      line += heights[i] ?? 0;
+      return [node.key, start];
+    }),
+  );
 }
 
 function inModelOrder(nodes: readonly Node[]): readonly Node[] {
