@@ -65,12 +65,14 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
   );
 }
 
+const FEW_NODES = 4000;
+
 /** The node that holds it; another choice moves it there. */
 function OwnerRow({ space, node }: { space: AddressSpace; node: Node }) {
   const { actions } = useOpenModel();
   const owner = findParent(space, node.key);
   // The choices are many in a large model; they are listed when somebody is about to choose.
-  const [isAsked, setAsked] = useState(false);
+  const [isAsked, setAsked] = useState(space.own.nodes.size < FEW_NODES);
   const parents = useMemo(() => (isAsked ? listParents(space) : []), [space, isAsked]);
   const isListed = parents.some((parent) => parent.key === owner);
   return (
