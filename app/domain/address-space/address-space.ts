@@ -102,12 +102,21 @@ export class AddressSpace {
 
   /** All edges that start at the node, each once: required models first, then in the order of the declaring nodes. */
   edgesFrom(key: NodeKey): readonly Edge[] {
-    return collectEdges(this.layers, (layer) => layer.outgoing.get(key)?.distinct);
+    return collectEdges(this.layers, key, "outgoing");
   }
 
   /** All edges that end at the node, each once. */
   edgesTo(key: NodeKey): readonly Edge[] {
-    return collectEdges(this.layers, (layer) => layer.incoming.get(key)?.distinct);
+    return collectEdges(this.layers, key, "incoming");
+  }
+
+  /** The first edge of one type that ends at the node, without gathering the others. */
+  findEdgeTo(key: NodeKey, type: NodeKey): Edge | undefined {
+    for (const layer of this.layers) {
+      const edge = layer.incoming.get(key)?.distinct.find((e) => e.type === type);
+      if (edge) return edge;
+    }
+    return undefined;
   }
 
   hasEdge(edge: Edge): boolean {
@@ -178,11 +187,28 @@ export function hasEdge(layer: Layer, edge: Edge): boolean {
 }
 
 /** One layer answers nearly always; its list is then shared, not copied. */
-function collectEdges(layers: readonly Layer[], pick: (layer: Layer) => readonly Edge[] | undefined): readonly Edge[] {
+function collectEdges(layers: readonly Layer[], key: NodeKey, side: "outgoing" | "incoming"): readonly Edge[] {
   let found: readonly Edge[] = NO_EDGES;
-  for (const layer of layers) {
-    const edges = pick(layer);
-    if (edges) found = found.length === 0 ? edges : listDistinctEdges([...found, ...edges]);
-  }
+  layers.forEach((layer, index) => {
+    const edges = layer[side].get(key)?.distinct;
+    if (!edges || found.length === 0) {
+      found = edges ?? found;
+      return;
+    }
+    const all = [...found, ...edges];
+    found = canRepeat(layers.slice(0, index), key, edges) ? listDistinctEdges(all) : all;
+  });
   return found;
+}
+
+/**
+ * Whether one of a layer's edges may stand in a layer beneath as well. An edge is declared by its two ends only, so there
+ * its other end must be known: as a node, or by what the key's own node declares.
+ */
+function canRepeat(beneath: readonly Layer[], key: NodeKey, edges: readonly Edge[]): boolean {
+  const named = new Set(beneath.flatMap((layer) => layer.nodes.get(key)?.references.map((r) => r.target) ?? []));
+  return edges.some((edge) => {
+    const other = edge.source === key ? edge.target : edge.source;
+    return named.has(other) || beneath.some((layer) => layer.nodes.has(other));
+  });
 }

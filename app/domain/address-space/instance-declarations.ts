@@ -36,10 +36,35 @@ export type MemberDeclaration = {
 
 /** A type with what it inherits and what its Interfaces give, nearest first. */
 export function listTypeSources(space: AddressSpace, type: NodeKey, scope = ""): DeclarationSource[] {
-  const chain = [type, ...listSupertypes(space, type)];
-  const interfaces = new Set<NodeKey>();
-  for (const key of chain) collectInterfaces(space, key, interfaces);
-  return [...new Set([...chain, ...interfaces])].map((key) => ({ key, scope }));
+  const { chains } = getCache(space);
+  let keys = chains.get(type);
+  if (!keys) {
+    const chain = [type, ...listSupertypes(space, type)];
+    const interfaces = new Set<NodeKey>();
+    for (const key of chain) collectInterfaces(space, key, interfaces);
+    keys = [...new Set([...chain, ...interfaces])];
+    chains.set(type, keys);
+  }
+  return keys.map((key) => ({ key, scope }));
+}
+
+type DirectDeclaration = readonly [node: Node, referenceTypes: NodeKey[], rule: NodeKey];
+
+/** An address space never changes, and an instance asks for the same few types with each of its members. */
+type Cache = {
+  readonly chains: Map<NodeKey, readonly NodeKey[]>;
+  readonly direct: Map<NodeKey, readonly DirectDeclaration[]>;
+};
+
+const caches = new WeakMap<AddressSpace, Cache>();
+
+function getCache(space: AddressSpace): Cache {
+  let cache = caches.get(space);
+  if (!cache) {
+    cache = { chains: new Map(), direct: new Map() };
+    caches.set(space, cache);
+  }
+  return cache;
 }
 
 function collectInterfaces(space: AddressSpace, key: NodeKey, found: Set<NodeKey>): void {
@@ -103,8 +128,18 @@ function makeMember(
 }
 
 /** Children of a type or declaration that have a modelling rule, with all hierarchical references that lead to them. */
-function listDirectDeclarations(space: AddressSpace, key: NodeKey): [Node, NodeKey[], NodeKey][] {
-  const found = new Map<NodeKey, [Node, NodeKey[], NodeKey]>();
+function listDirectDeclarations(space: AddressSpace, key: NodeKey): readonly DirectDeclaration[] {
+  const { direct } = getCache(space);
+  let declarations = direct.get(key);
+  if (!declarations) {
+    declarations = readDirectDeclarations(space, key);
+    direct.set(key, declarations);
+  }
+  return declarations;
+}
+
+function readDirectDeclarations(space: AddressSpace, key: NodeKey): DirectDeclaration[] {
+  const found = new Map<NodeKey, DirectDeclaration>();
   for (const edge of listEdgesFrom(space, key, StandardReferenceType.HierarchicalReferences)) {
     if (edge.type === StandardReferenceType.HasSubtype) continue;
     const known = found.get(edge.target);

@@ -1,13 +1,24 @@
 /** Questions along HasSubtype (OPC 10000-3 §7.10, §6.3). All of them end in graphs with cycles. */
 import type { AddressSpace } from "./address-space";
-import type { NodeKey } from "./node-id";
+import { standardKey, type NodeKey } from "./node-id";
 import { StandardReferenceType } from "./standard-ids";
 
 const { HasSubtype } = StandardReferenceType;
 
-/** The supertype of a type; the first one where a broken file gives several. */
+/** The roots of the four hierarchies; being used by everything they would be costly to ask, and they have none. */
+const ROOTS: ReadonlySet<NodeKey> = new Set([58, 62, 24, 31].map(standardKey));
+
+/**
+ * The supertype of a type; the first one where a broken file gives several. The type itself mostly says it, so that the
+ * nodes that use the type need not be looked through.
+ */
 export function findSupertype(space: AddressSpace, type: NodeKey): NodeKey | undefined {
-  return space.edgesTo(type).find((e) => e.type === HasSubtype)?.source;
+  if (ROOTS.has(type)) return undefined;
+  for (const reference of space.getNode(type)?.references ?? []) {
+    if (reference.type === HasSubtype && !reference.isForward && reference.serverUri === undefined)
+      return reference.target;
+  }
+  return space.findEdgeTo(type, HasSubtype)?.source;
 }
 
 /** The chain upwards without the type itself, nearest first; stops where a cycle closes. */

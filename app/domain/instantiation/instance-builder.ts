@@ -9,7 +9,7 @@
  * - The same declaration of a member's *type* is a new node for each member of that type (every analog item has its own
  *   EURange). Scopes keep these apart: the declarations of one type used in one place share a scope.
  */
-import type { Edge } from "../address-space/address-space";
+import type { AddressSpace, Edge } from "../address-space/address-space";
 import {
   isMandatory,
   isPlaceholder,
@@ -51,6 +51,8 @@ type Deferred = { readonly place: Place; readonly member: MemberDeclaration; rea
 
 export class InstanceBuilder {
   readonly #draft: EditDraft;
+  /** The model before the members are made: what is declared does not change while they are. */
+  readonly #declared: AddressSpace;
   readonly #options: BuildOptions;
   /** `scope + declaration` → the node made for it (or found on the instance). */
   readonly #nodes = new Map<string, NodeKey>();
@@ -60,6 +62,7 @@ export class InstanceBuilder {
 
   constructor(draft: EditDraft, options: BuildOptions) {
     this.#draft = draft;
+    this.#declared = draft.space;
     this.#options = options;
   }
 
@@ -105,7 +108,7 @@ export class InstanceBuilder {
       return;
     }
     const aggregates = getReferenceTypes(this.#draft.space, R.Aggregates);
-    for (const member of listMemberDeclarations(this.#draft.space, place.sources)) {
+    for (const member of listMemberDeclarations(this.#declared, place.sources)) {
       if (this.#draft.hasFailed) return;
       if (isPlaceholder(member.rule)) this.#buildPlaceholder(place, member);
       else if (member.referenceTypes.some((type) => aggregates.has(type)))
@@ -160,7 +163,7 @@ export class InstanceBuilder {
     });
     if (key === undefined) return;
     if (!isPlaceholder(member.rule)) this.#know(member.declared, key);
-    const sources = listMemberSources(this.#draft.space, member, this.#newScope(), typeDefinition);
+    const sources = listMemberSources(this.#declared, member, this.#newScope(), typeDefinition);
     this.#buildLevel({ parent: key, path: [...place.path, browseName], sources }, true);
   }
 
