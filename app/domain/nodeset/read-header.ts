@@ -15,5 +15,9 @@ export function readModelHeader(text: string): Result<ModelHeader> {
   const reader = new NodeSetReader(source, limits, undefined);
   const stopped = scanXml(source, reader, { limits });
   if (stopped && stopped.code !== "limit.nodes") return fail(stopped);
-  return ok(reader.finish().header, reader.problems.toArray());
+  const { header } = reader.finish();
+  if (header.models.length === 0 && header.namespaceUris.length === 0) {
+    return fail(problem("nodeset.no-namespace", undefined, { line: 1, column: 1 }));
+  }
+  return ok(header, reader.problems.toArray());
 }

@@ -3,6 +3,7 @@ import { describe, expect, it } from "vitest";
 import { formatProblem } from "~/domain/core/problem-texts";
 import type { Problem } from "~/domain/core/result";
 import { decodeXmlBytes } from "~/domain/nodeset/decode-xml-bytes";
+import { readModelHeader } from "~/domain/nodeset/read-header";
 import { readNodeSet, type ReadOptions } from "~/domain/nodeset/read-nodeset";
 
 const XMLNS = "http://opcfoundation.org/UA/2011/03/UANodeSet.xsd";
@@ -228,6 +229,20 @@ describe("encodings", () => {
     const result = readNodeSet(text);
     expect(result.ok && result.value.nodes[0]?.description?.[0]?.text).toBe("a\nb");
     expect(result.problems.map(({ code, severity }) => [code, severity])).toEqual([["encoding.line-ends", "hint"]]);
+  });
+});
+
+describe("the head alone", () => {
+  it("is read up to the first node", () => {
+    const result = readModelHeader(file({ body: `${type("ns=1;i=1")}<broken` }));
+    expect(result.ok && result.value.models[0]?.modelUri).toBe(OWN);
+  });
+
+  it("is refused as the whole would be", () => {
+    for (const text of ["hello", "<a/>", `<UANodeSet xmlns="${XMLNS}"/>`, `<UANodeSet xmlns="${XMLNS}"><Models>`]) {
+      const head = readModelHeader(text);
+      expect([head.ok, head.problems[0]?.code]).toEqual([false, readNodeSet(text).problems[0]?.code]);
+    }
   });
 });
 
