@@ -1,8 +1,10 @@
 /** Findings of a model's working state, kept by model and continued from the last run after an edit. */
+import { listWaivers } from "../db/repositories/waivers.server";
 import type { AddressSpace } from "../domain/address-space/address-space";
 import { startChecksInSteps, updateChecks, type CheckRun } from "../domain/checks/run-checks";
 import { toReport, type CheckReport } from "../domain/checks/to-report";
 import type { Finding } from "../domain/checks/finding";
+import { applyWaivers, type WaivedFindings } from "../domain/checks/waivers";
 import { singleton } from "../utils/singleton.server";
 import { exportModel } from "./export-model.server";
 import { loadWorkingModel } from "./working-model.server";
@@ -12,7 +14,12 @@ const MAX_CACHED = 16;
 const SLICE_MS = 15;
 const getRuns = () => singleton("check-runs", () => new Map<string, Promise<CheckRun>>());
 
-export type ModelFindings = { readonly seq: number; readonly findings: readonly Finding[] };
+export type ModelFindings = {
+  readonly seq: number;
+  /** Those that nobody has accepted. */
+  readonly findings: readonly Finding[];
+  readonly waived: WaivedFindings["waived"];
+};
 
 /** The findings at the head; undefined when the model is gone. */
 export async function checkModel(modelId: string): Promise<ModelFindings | undefined> {
@@ -31,25 +38,16 @@ export async function checkModel(modelId: string): Promise<ModelFindings | undef
     if (runs.size <= MAX_CACHED) break;
     runs.delete(oldest);
   }
-  return { seq: working.seq, findings: (await run).findings };
+  const { findings, space } = await run;
+  const { open, waived } = applyWaivers(space, findings, await listWaivers(modelId));
+  return { seq: working.seq, findings: open, waived };
 }
 
-/** An edit touches little; other required models are a new check. */
-function advance(last: CheckRun, space: AddressSpace): CheckRun | Promise<CheckRun> {
-  const isSameBase = last.space.layers.length === space.layers.length && last.space.layers.every((layer, i) => layer === space.layers[i] || layer === last.space.own);
-  return isSameBase ? updateChecks(last, space) : check(space);
-}
-
-async function check(space: AddressSpace): Promise<CheckRun> {
-  const steps = startChecksInSteps(space);
-  let since = performance.now();
-  for (;;) {
-    const step = steps.next();
-    if (step.done) return step.value;
-    if (performance.now() - since < SLICE_MS) continue;
-    await new Promise((resolve) => setImmediate(resolve));
-    since = performance.now();
-  }
+/** All findings of the state that was checked last, accepted ones too; for who decides on them. */
+export async function listAllFindings(modelId: string): Promise<{ space: AddressSpace; findings: readonly Finding[] } | undefined> {
+  const checked = await checkModel(modelId);
+  const run = await getRuns().get(modelId);
+  return checked && run && { space: run.space, findings: run.findings };
 }
 
 export type FindingCounts = { readonly error: number; readonly warning: number; readonly hint: number };

@@ -27,6 +27,7 @@ async function replayTransactions(topic: string, afterSeq: number): Promise<{ se
 export function registerModelTopics(): void {
   registerTopicProvider("model", { authorise: mayReadModel, replay: replayTransactions });
   registerTopicProvider("sheet", { authorise: mayReadModel });
+  registerTopicProvider("waivers", { authorise: mayReadModel });
   registerTopicProvider("models", { authorise: (caller, topic) => isMember(caller, restOf(topic)) });
   registerTopicProvider("presence", {
     authorise: mayReadModel,

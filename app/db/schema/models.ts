@@ -211,21 +211,23 @@ export const uploadedNodeSet = sqliteTable(
   ],
 );
 
-/** A finding accepted with a reason; it ends when the facts at the node change. */
-export const waiver = sqliteTable(
-  "waiver",
+/** A finding that somebody accepted with a reason; it holds while the node stays as it was. */
+export const findingWaiver = sqliteTable(
+  "finding_waiver",
   {
     id: text("id").primaryKey(),
     modelId: text("model_id")
       .notNull()
       .references(() => model.id, { onDelete: "cascade" }),
     rule: text("rule").notNull(),
-    nodeKey: text("node_key").notNull(),
-    facts: text("facts", { mode: "json" }).$type<readonly string[]>().notNull(),
+    /** With `nsu=`; empty for the model as a whole. */
+    nodeId: text("node_id").notNull(),
+    attribute: text("attribute").notNull(),
     reason: text("reason").notNull(),
-    author: text("author").notNull(),
+    person: text("person").notNull(),
     at: timestamp("at").notNull(),
-    endsAt: timestamp("ends_at"),
+    /** Of the node as it was accepted. */
+    fingerprint: text("fingerprint").notNull(),
   },
-  (table) => [uniqueIndex("waiver_place").on(table.modelId, table.rule, table.nodeKey)],
+  (table) => [uniqueIndex("finding_waiver_place").on(table.modelId, table.rule, table.nodeId, table.attribute)],
 );

@@ -32,6 +32,7 @@ export const requestProblemTexts: Readonly<Record<string, string>> = {
   "sheet.stale": "The sheet was changed in another window meanwhile.",
   "revision.state-name": "“{text}” names no state. Write the number of a revision, or working.",
   "revision.unchanged": "Nothing has changed since revision {number}.",
+  "waiver.no-finding": "There is no such finding any more; the model has changed.",
   "sheet.last": "A model keeps one sheet at least.",
   "people.exists": "{email} belongs to the organisation already.",
   "people.last-administrator": "The organisation needs one administrator at least.",
