@@ -7,13 +7,15 @@
  * asked for its type's supertype.
  */
 import type { AddressSpace, Layer } from "../address-space/address-space";
-import { isSameEdge, listDeclaredEdges, listDistinctEdges, type Edge } from "../address-space/edge-index";
+import { listDistinctEdges, type Edge } from "../address-space/edge-index";
 import type { ModelHeader } from "../address-space/model-header";
 import { isTypeNode, type Node } from "../address-space/node";
 import { formatNodeId, parseNodeId, type NodeId, type NodeKey } from "../address-space/node-id";
 import { formatQualifiedName, type QualifiedName } from "../address-space/qualified-name";
 import { StandardReferenceType } from "../address-space/standard-ids";
 import { getReferenceTypes } from "../address-space/type-hierarchy";
+import { listMovedEdges } from "./moved-edges";
+import { groupByNodeId, hasTwins } from "./twins";
 import { dropSlot, Slot, type Computation, type Subject } from "./slots";
 import { addTypeName, getTypeNames, makeTypeNames, removeTypeName, type TypeNames } from "./type-names";
 import { usesNamespace } from "./namespace-use";
@@ -386,45 +388,4 @@ export class CheckContext {
       this.#reader = outer;
     }
   }
-}
-
-/** Whether two own nodes share a NodeId: then there are fewer NodeIds than nodes. */
-function hasTwins({ own }: AddressSpace): boolean {
-  return own.keysByNodeId.size !== own.nodes.size;
-}
-
-function groupByNodeId({ own }: AddressSpace): Map<string, NodeKey[]> {
-  const groups = new Map<string, NodeKey[]>();
-  for (const { key, nodeId } of own.nodes.values()) {
-    const text = formatNodeId(nodeId);
-    const keys = groups.get(text);
-    if (keys) keys.push(key);
-    else groups.set(text, [key]);
-  }
-  for (const keys of groups.values()) keys.sort();
-  return groups;
-}
-
-/** The edges that a node's change can have moved: gained, lost, or all where their order may differ. */
-function listMovedEdges(old: Node | undefined, node: Node | undefined): Edge[] {
-  if (old && node && old.references === node.references && old.order === node.order) return [];
-  const before = old ? listDeclaredEdges(old) : [];
-  const after = node ? listDeclaredEdges(node) : [];
-  const isReordered =
-    old !== undefined && node !== undefined && (old.order !== node.order || !keepsOrder(before, after));
-  if (isReordered) return [...before, ...after];
-  return [
-    ...before.filter((e) => !after.some((o) => isSameEdge(o, e))),
-    ...after.filter((e) => !before.some((o) => isSameEdge(o, e))),
-  ];
-}
-
-/** Whether the edges that both lists hold stand in one order. */
-function keepsOrder(before: readonly Edge[], after: readonly Edge[]): boolean {
-  const kept = before.filter((e) => after.some((o) => isSameEdge(o, e)));
-  const keptAfter = after.filter((e) => before.some((o) => isSameEdge(o, e)));
-  return (
-    kept.length === keptAfter.length &&
-    kept.every((e, i) => isSameEdge(e, keptAfter[i] ?? e) && keptAfter[i] !== undefined)
-  );
 }
