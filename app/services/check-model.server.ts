@@ -50,6 +50,24 @@ export async function listAllFindings(modelId: string): Promise<{ space: Address
   return checked && run && { space: run.space, findings: run.findings };
 }
 
+/** An edit touches little; other required models are a new check. */
+function advance(last: CheckRun, space: AddressSpace): CheckRun | Promise<CheckRun> {
+  const isSameBase = last.space.layers.length === space.layers.length && last.space.layers.every((layer, i) => layer === space.layers[i] || layer === last.space.own);
+  return isSameBase ? updateChecks(last, space) : check(space);
+}
+
+async function check(space: AddressSpace): Promise<CheckRun> {
+  const steps = startChecksInSteps(space);
+  let since = performance.now();
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+    if (performance.now() - since < SLICE_MS) continue;
+    await new Promise((resolve) => setImmediate(resolve));
+    since = performance.now();
+  }
+}
+
 export type FindingCounts = { readonly error: number; readonly warning: number; readonly hint: number };
 
 /** How many of each severity, for lists and title blocks. */
