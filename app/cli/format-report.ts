@@ -1,7 +1,10 @@
-/** A report for people: one line a finding, in the form that editors and pipelines turn into links. */
+/**
+ * A report for people: one line a finding, in the form that editors and pipelines turn into links. `isChecked` is false
+ * when the file could not be checked, and nothing can be said about its findings.
+ */
 import type { CheckReport } from "../domain/checks/to-report";
 
-export function formatReport(report: CheckReport): string {
+export function formatReport(report: CheckReport, isChecked: boolean): string {
   const { file, counts, findings, problems } = report;
   const lines: string[] = [];
   for (const { line, column, code, message } of problems) lines.push(`${file}:${line}:${column}: ${message} [${code}]`);
@@ -11,7 +14,8 @@ export function formatReport(report: CheckReport): string {
     for (const fact of facts) lines.push(`    ${fact}`);
     if (clause !== "") lines.push(`    ${clause}`);
   }
-  lines.push(`${count(counts.error, "error")}, ${count(counts.warning, "warning")}, ${count(counts.hint, "hint")}`);
+  if (!isChecked) lines.push("Not checked.");
+  else lines.push(`${count(counts.error, "error")}, ${count(counts.warning, "warning")}, ${count(counts.hint, "hint")}`);
   return `${lines.join("\n")}\n`;
 }
 

@@ -64,7 +64,10 @@ function describe(path) {
   const { requiredModels, ...rest } = model;
   const key = nodesetCatalog.find((entry) => entry.xmlFile === file)?.name;
   const sha256 = createHash("sha256").update(bytes).digest("hex");
-  return { entry: { file, ...(key ? { key } : {}), ...rest, nodeCount, size: bytes.length, sha256, requiredModels }, names };
+  return {
+    entry: { file, ...(key ? { key } : {}), ...rest, nodeCount, size: bytes.length, sha256, requiredModels },
+    names,
+  };
 }
 
 function pick({ ModelUri, Version, ModelVersion, PublicationDate }) {
