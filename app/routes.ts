@@ -36,6 +36,7 @@ export default [
     route("v1/models", "routes/api/models.ts"),
     route("v1/models/:modelId", "routes/api/model.ts"),
     route("v1/models/:modelId/nodeset", "routes/api/model-nodeset.ts"),
+    route("v1/models/:modelId/node-ids", "routes/api/model-node-ids.ts"),
     route("v1/models/:modelId/findings", "routes/api/model-findings.ts"),
     route("v1/models/:modelId/revisions", "routes/api/revisions.ts"),
     route("v1/models/:modelId/comparison", "routes/api/comparison.ts"),

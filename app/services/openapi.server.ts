@@ -74,6 +74,21 @@ const stateName = (name: string, description: string) => ({
 });
 const nodeSetBody = { "application/xml": { schema: { type: "string", contentMediaType: "application/xml" } } };
 
+const csvBody = { "text/csv": { schema: { type: "string", contentMediaType: "text/csv" } } };
+const appliedNodeIds = {
+  type: "object",
+  required: ["changed", "unknown", "unnamed"],
+  properties: {
+    changed: { type: "integer", description: "Nodes that got another NodeId." },
+    unknown: {
+      type: "array",
+      description: "Lines that name no node of the model.",
+      items: { type: "object", required: ["symbol", "line"], properties: { symbol: { type: "string" }, line: { type: "integer" } } },
+    },
+    unnamed: { type: "integer", description: "Nodes that the list does not name; they keep theirs." },
+  },
+};
+
 const paths = {
   "/models": {
     get: {
@@ -109,6 +124,20 @@ const paths = {
       operationId: "exportModel",
       summary: "The NodeSet2 file of the working state",
       responses: { 200: { description: "The file", content: nodeSetBody }, ...problems(401, 403, 404) },
+    },
+  },
+  "/models/{modelId}/node-ids": {
+    parameters: [pathId("modelId")],
+    get: {
+      operationId: "exportNodeIds",
+      summary: "Symbol, identifier and node class of every node (OPC 10000-6 §A.3)",
+      responses: { 200: { description: "The list", content: csvBody }, ...problems(401, 403, 404) },
+    },
+    put: {
+      operationId: "applyNodeIds",
+      summary: "Give the nodes that a list names the NodeIds of the list",
+      requestBody: { required: true, content: csvBody },
+      responses: { 200: json(appliedNodeIds, "What it changed"), ...problems(401, 403, 404, 409, 413, 415, 422) },
     },
   },
   "/models/{modelId}/findings": {

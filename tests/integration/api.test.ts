@@ -233,3 +233,31 @@ describe("the OpenAPI document", () => {
     expect(JSON.stringify(document)).not.toContain("$defs");
   });
 });
+
+describe("the list of NodeIds", () => {
+  test("leaves, comes back changed, and is refused as a whole where a line is wrong", async () => {
+    const made = await app.call("POST", "/api/v1/models?name=Numbered", {
+      cookie,
+      body: writePumpNodeSet({ uri: "http://merrow.example/UA/Numbered/" }),
+      headers: xml,
+    });
+    const { id } = (await made.json()) as { id: string };
+    const path = `/api/v1/models/${id}/node-ids`;
+    const csv = await (await app.call("GET", path, { cookie })).text();
+    expect(csv).toMatch(/^PumpType,1001,ObjectType$/m);
+    const put = (body: string) => app.call("PUT", path, { cookie, body, headers: { "content-type": "text/csv" } });
+
+    const moved = await put("PumpType,7001,ObjectType\nNobody,7002,Object\n");
+    expect(moved.status).toBe(200);
+    expect(await moved.json()).toMatchObject({ changed: 1, unknown: [{ symbol: "Nobody", line: 2 }] });
+    expect(await (await app.call("GET", path, { cookie })).text()).toMatch(/^PumpType,7001,ObjectType$/m);
+    expect(await (await app.call("GET", `/api/v1/models/${id}/nodeset`, { cookie })).text()).toContain('NodeId="ns=1;i=7001"');
+
+    const wrong = await put("PumpType,7003,ObjectType\nPumpType_Speed,4294967296,Variable\n");
+    expect(wrong.status).toBe(422);
+    expect(((await wrong.json()) as Document).problems[0]).toMatchObject({ code: "node-id.numeric-range", line: 2 });
+    const taken = await put("PumpType,1001,ObjectType\n");
+    expect([taken.status, (await put("PumpType,1002,ObjectType\n")).status]).toEqual([200, 422]);
+    expect((await app.call("PUT", path, { cookie, body: "x", headers: xml })).status).toBe(415);
+  });
+});

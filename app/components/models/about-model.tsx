@@ -92,6 +92,13 @@ export function AboutModel({ workspace, required, choices, answer, editBlockedBy
             >
               <Icon of={Download} /> Download NodeSet2
             </a>
+            <a
+              href={`/api/v1/models/${model.id}/node-ids`}
+              download
+              className={buttonClass("plain", "medium", "justify-self-start")}
+            >
+              <Icon of={Download} /> Download NodeIds as CSV
+            </a>
           </Part>
           <Part
             id="delete"
