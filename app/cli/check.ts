@@ -101,12 +101,17 @@ async function readJson<T>(file: string | undefined, schema: ZodType<T>, absent:
 }
 
 function print({ format }: CheckCommand, { report, waived }: Checked, code: number): number {
-  process.stdout.write(toText(format, report, waived));
+  process.stdout.write(toText(format, report, waived, code !== 2));
   return code;
 }
 
-function toText(format: CheckCommand["format"], report: CheckReport, waived: Checked["waived"]): string {
-  if (format === "text") return formatReport(report);
+function toText(
+  format: CheckCommand["format"],
+  report: CheckReport,
+  waived: Checked["waived"],
+  isChecked: boolean,
+): string {
+  if (format === "text") return formatReport(report, isChecked);
   const digest = (text: string): string => createHash("sha256").update(text).digest("hex");
   const document = format === "json" ? report : toSarif([report], { version: "0.1.0", waived, digest });
   return `${JSON.stringify(document, null, 2)}\n`;
