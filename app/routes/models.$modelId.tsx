@@ -56,6 +56,7 @@ export default function Model({ loaderData }: Route.ComponentProps) {
           { to: `${base}/sheet`, label: "Sheet" },
           { to: `${base}/register`, label: "Register" },
           { to: `${base}/types`, label: "Types" },
+          ...(model.kind === "machines" ? [{ to: `${base}/roll-out`, label: "Roll-out" }] : []),
           {
             to: `${base}/findings`,
             label: (
