@@ -26,24 +26,24 @@ export type Waiver = z.infer<typeof waiverSchema>;
 /** The file that a pipeline reads: `{"waivers": […]}`. */
 export const waiverFileSchema = z.object({ waivers: z.array(waiverSchema) });
 
-export type WaivedFindings = {
+export type WaivedFindings<W extends Waiver = Waiver> = {
   readonly open: readonly Finding[];
-  readonly waived: readonly { readonly finding: Finding; readonly waiver: Waiver }[];
+  readonly waived: readonly { readonly finding: Finding; readonly waiver: W }[];
   /** Waivers of findings that are open again because their node changed. */
-  readonly expired: readonly Waiver[];
+  readonly expired: readonly W[];
 };
 
-export function applyWaivers(
+export function applyWaivers<W extends Waiver>(
   space: AddressSpace,
   findings: readonly Finding[],
-  waivers: readonly Waiver[],
-): WaivedFindings {
+  waivers: readonly W[],
+): WaivedFindings<W> {
   if (waivers.length === 0) return { open: findings, waived: [], expired: [] };
-  const byPlace = new Map<string, Waiver>();
+  const byPlace = new Map<string, W>();
   for (const waiver of waivers) byPlace.set(placeOf(waiver), waiver);
   const open: Finding[] = [];
-  const waived: { finding: Finding; waiver: Waiver }[] = [];
-  const expired = new Set<Waiver>();
+  const waived: { finding: Finding; waiver: W }[] = [];
+  const expired = new Set<W>();
   for (const finding of findings) {
     const waiver = byPlace.get(placeOf(finding));
     if (waiver?.fingerprint === fingerprintOf(space, finding.key)) waived.push({ finding, waiver });

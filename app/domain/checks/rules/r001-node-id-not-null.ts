@@ -1,3 +1,5 @@
+import { findSubject, notPossible, setAttribute } from "../fixes";
+import { ok } from "../../core/result";
 import { formatNodeId, isNullNodeId, numericNodeId, OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
@@ -19,6 +21,15 @@ export const r001: NodeRule = {
       message: `${node.browseName.name} has the null NodeId ${formatNodeId(nodeId)}.`,
       facts: [`NodeId: ${formatNodeId(nodeId)}`, "This value stands for “no node”."],
     });
+  },
+  fix: {
+    label: "Give it the next free NodeId of the model",
+    apply(space, finding, ids) {
+      const node = findSubject(space, finding);
+      const allocated = node && ids.allocate(node.nodeClass);
+      if (!node || !allocated) return notPossible(finding);
+      return allocated.ok ? ok([setAttribute(node.key, "nodeId", allocated.value)]) : allocated;
+    },
   },
   examples: {
     good: { text: "An identifier in the model's own namespace.", build: (m) => m.objectType("PumpType") },

@@ -1,3 +1,5 @@
+import { findSubject, notPossible, setAttribute } from "../fixes";
+import { ok } from "../../core/result";
 import { formatNodeId, numericNodeId } from "../../address-space/node-id";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
@@ -24,6 +26,15 @@ export const r002: NodeRule = {
         ],
       });
     }
+  },
+  fix: {
+    label: "Give it the next free NodeId of the model",
+    apply(space, finding, ids) {
+      const node = findSubject(space, finding);
+      const allocated = node && ids.allocate(node.nodeClass);
+      if (!node || !allocated) return notPossible(finding);
+      return allocated.ok ? ok([setAttribute(node.key, "nodeId", allocated.value)]) : allocated;
+    },
   },
   examples: {
     good: {

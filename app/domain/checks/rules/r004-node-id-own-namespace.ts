@@ -1,3 +1,5 @@
+import { findSubject, notPossible, setAttribute } from "../fixes";
+import { ok } from "../../core/result";
 import { formatNodeId, numericNodeId, OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
@@ -22,6 +24,15 @@ export const r004: NodeRule = {
         `This model defines: ${models.map((m) => m.modelUri).join(", ")}`,
       ],
     });
+  },
+  fix: {
+    label: "Give it the next free NodeId of the model",
+    apply(space, finding, ids) {
+      const node = findSubject(space, finding);
+      const allocated = node && ids.allocate(node.nodeClass);
+      if (!node || !allocated) return notPossible(finding);
+      return allocated.ok ? ok([setAttribute(node.key, "nodeId", allocated.value)]) : allocated;
+    },
   },
   examples: {
     good: { text: "The identifier stands in the namespace of the model.", build: (m) => m.objectType("PumpType") },

@@ -1,3 +1,4 @@
+import { attributeFix } from "../fixes";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 import { listControlCharacters } from "../texts";
 
@@ -32,6 +33,10 @@ export const r006: NodeRule = {
       });
     }
   },
+  fix: attributeFix("Take control characters out and cut it", "browseName", ({ browseName }) => {
+    const name = browseName.name.replace(/[\p{Cc}]/gu, "").slice(0, LIMIT);
+    return name === "" || name === browseName.name ? undefined : { ...browseName, name };
+  }),
   examples: {
     good: { text: "A plain name.", build: (m) => m.objectType("PumpType") },
     bad: { text: "A name with a line feed.", build: (m) => m.objectType("Pump\nType") },

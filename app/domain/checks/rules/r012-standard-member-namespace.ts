@@ -1,3 +1,4 @@
+import { attributeFix } from "../fixes";
 import type { Node } from "../../address-space/node";
 import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
@@ -27,6 +28,16 @@ export const r012: NodeRule = {
     checkStandardProperties(node, ctx, report);
     checkDeclaredMembers(node, ctx, report);
   },
+  fix: attributeFix(
+    "Take the name of the standard, or of the declaration",
+    "browseName",
+    ({ browseName }, { data }) => {
+      const namespaceUri = data?.["namespaceUri"];
+      return typeof namespaceUri === "string" && namespaceUri !== browseName.namespaceUri
+        ? { ...browseName, namespaceUri }
+        : undefined;
+    },
+  ),
   examples: {
     good: {
       text: "The Property belongs to the model, its name to namespace 0.",
@@ -77,6 +88,7 @@ function checkStandardProperties(node: Node, ctx: CheckContext, report: ReportFu
         `BrowseName: ${formatQualifiedName(property.browseName)}`,
         `The standard's: ${property.browseName.name} in namespace 0`,
       ],
+      data: { namespaceUri: OPC_UA_NAMESPACE },
     });
   }
 }
@@ -110,6 +122,7 @@ function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunct
           `BrowseName: ${formatQualifiedName(child.browseName)}`,
           `Declared: ${name}, by ${ctx.describe(member.owner)}`,
         ],
+        data: { namespaceUri: browseName.namespaceUri },
       });
     }
   }

@@ -1,3 +1,4 @@
+import { attributeFix } from "../fixes";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
 const LIMIT = 512;
@@ -37,6 +38,10 @@ export const r016: NodeRule = {
       }
     }
   },
+  fix: attributeFix("Take the BrowseName", "displayName", ({ browseName, displayName }) => {
+    if (displayName.length === 0) return browseName.name === "" ? undefined : [{ text: browseName.name }];
+    return displayName.map((t) => ({ ...t, text: t.text.trim() === "" ? browseName.name : t.text.slice(0, LIMIT) }));
+  }),
   examples: {
     good: { text: "One DisplayName.", build: (m) => m.objectType("PumpType") },
     bad: { text: "No DisplayName.", build: (m) => m.objectType("PumpType", { set: { displayName: [] } }) },

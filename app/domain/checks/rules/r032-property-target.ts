@@ -1,3 +1,4 @@
+import { retypeReferenceFix } from "../fixes";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { edgesDeclaredAt } from "../edges";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
@@ -27,6 +28,7 @@ export const r032: NodeRule = {
       });
     }
   },
+  fix: retypeReferenceFix("Make it a component", () => R.HasComponent),
   examples: {
     good: { text: "A Variable as Property.", build: (m) => m.property("SerialNumber", { parent: m.object("Pump1") }) },
     bad: {

@@ -1,3 +1,4 @@
+import { typeDefinitionFix } from "../fixes";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { findTypeDefinition, isProperty } from "../lookups";
 import { clause, type NodeRule } from "../rule";
@@ -28,6 +29,7 @@ export const r035: NodeRule = {
       data: { type },
     });
   },
+  fix: typeDefinitionFix("Take PropertyType", () => T.PropertyType),
   examples: {
     good: { text: "A Property typed PropertyType.", build: (m) => m.property("Label", { parent: m.object("Pump1") }) },
     bad: {

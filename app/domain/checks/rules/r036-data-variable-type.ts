@@ -1,3 +1,4 @@
+import { typeDefinitionFix } from "../fixes";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { findTypeDefinition, ofType } from "../lookups";
 import { clause, type NodeRule } from "../rule";
@@ -22,6 +23,7 @@ export const r036: NodeRule = {
       });
     }
   },
+  fix: typeDefinitionFix("Take BaseDataVariableType", () => T.BaseDataVariableType),
   examples: {
     good: {
       text: "A component typed BaseDataVariableType.",

@@ -1,3 +1,6 @@
+import type { NodeKey } from "../../address-space/node-id";
+import { addReference, findSubject, notPossible } from "../fixes";
+import { ok } from "../../core/result";
 import { StandardDataType as D, StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { clause, TYPE_CLASSES, type NodeRule } from "../rule";
 
@@ -31,6 +34,16 @@ export const r042: NodeRule = {
       });
     }
   },
+  fix: {
+    label: "Derive it from the base type of its class",
+    apply(space, finding) {
+      const node = findSubject(space, finding);
+      const root = node && BASES.get(node.nodeClass);
+      if (!node || root === undefined || space.edgesTo(node.key).some((e) => e.type === R.HasSubtype))
+        return notPossible(finding);
+      return ok([addReference(space, root, R.HasSubtype, node.key)]);
+    },
+  },
   examples: {
     good: { text: "One supertype.", build: (m) => m.objectType("PumpType") },
     bad: {
@@ -43,3 +56,10 @@ export const r042: NodeRule = {
     },
   },
 };
+
+/** What a type derives from where nothing else is known; DataTypes have no such base. */
+const BASES: ReadonlyMap<string, NodeKey> = new Map([
+  ["ObjectType", T.BaseObjectType],
+  ["VariableType", T.BaseDataVariableType],
+  ["ReferenceType", R.NonHierarchicalReferences],
+]);

@@ -1,3 +1,4 @@
+import { typeDefinitionFix } from "../fixes";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
@@ -40,6 +41,13 @@ export const r049: NodeRule = {
       report({ attribute, message, facts: [...facts, `NodeClass of the type: ${type.nodeClass}; allowed: ${wanted}`] });
     }
   },
+  fix: typeDefinitionFix("Take the base type", (node) => {
+    if (node.nodeClass === "Object") return T.BaseObjectType;
+    if (node.nodeClass !== "Variable") return undefined;
+    return node.references.some((r) => r.type === R.HasProperty && !r.isForward)
+      ? T.PropertyType
+      : T.BaseDataVariableType;
+  }),
   examples: {
     good: {
       text: "An Object typed by an ObjectType.",

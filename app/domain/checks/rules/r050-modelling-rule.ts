@@ -1,3 +1,4 @@
+import { modellingRuleFix, REMOVED } from "../fixes";
 import { StandardModellingRule, StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
@@ -44,6 +45,13 @@ export const r050: NodeRule = {
       });
     }
   },
+  fix: modellingRuleFix("Keep the strictest rule", (node) => {
+    if (!["Object", "Variable", "Method"].includes(node.nodeClass)) return REMOVED;
+    const rules = node.references.filter((r) => r.type === R.HasModellingRule).map((r) => r.target);
+    return rules.length > 1
+      ? [StandardModellingRule.Mandatory, StandardModellingRule.Optional].find((r) => rules.includes(r))
+      : undefined;
+  }),
   examples: {
     good: {
       text: "One rule.",

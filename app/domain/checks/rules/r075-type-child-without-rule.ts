@@ -1,5 +1,6 @@
+import { modellingRuleFix } from "../fixes";
 import { standardKey } from "../../address-space/node-id";
-import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
+import { StandardReferenceType as R, StandardType as T, StandardModellingRule } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import { findModellingRule, findTypeDefinition, isInstanceDeclaration, isKindOf, ofType } from "../lookups";
 import { clause, type NodeRule } from "../rule";
@@ -33,6 +34,7 @@ export const r075: NodeRule = {
       facts: [`${ctx.nameOf(owner.type)} from ${ctx.describe(owner.source)}`, "HasModellingRule references: 0"],
     });
   },
+  fix: modellingRuleFix("Make it Optional, so that instances may have it", () => StandardModellingRule.Optional),
   examples: {
     good: {
       text: "A member that instances get.",

@@ -1,3 +1,4 @@
+import { keyOf, modellingRuleFix } from "../fixes";
 import type { Severity } from "../../core/result";
 import type { NodeKey } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
@@ -38,6 +39,7 @@ export const r080: NodeRule = {
       });
     }
   },
+  fix: modellingRuleFix("Take the inherited rule", (_node, finding) => keyOf(finding, "rule")),
   examples: {
     good: {
       text: "Optional becomes Mandatory in the subtype.",

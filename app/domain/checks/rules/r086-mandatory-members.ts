@@ -1,7 +1,10 @@
+import { addDeclaredMembers } from "../../instantiation/instantiate";
+import { findSubject, notPossible } from "../fixes";
+import { ok } from "../../core/result";
 import type { Node } from "../../address-space/node";
 import { standardKey, type NodeKey } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
-import { StandardModellingRule as M } from "../../address-space/standard-ids";
+import { StandardModellingRule as M, StandardType } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import type { ReportFunction } from "../finding";
 import { findModellingRule, findTypeDefinition, isInstanceDeclaration } from "../lookups";
@@ -21,11 +24,21 @@ export const r086: NodeRule = {
   check(node, ctx, report) {
     if (node.nodeClass === "Object" && node.designToolOnly) return;
     const type = findTypeDefinition(ctx, node.key);
-    if (type === undefined) return;
+    // R181 asks for the members of the namespace metadata object.
+    if (type === undefined || type === StandardType.NamespaceMetadataType) return;
     const isDeclaration = isInstanceDeclaration(ctx, node.key);
     if (isDeclaration && isPlaceholder(findModellingRule(ctx, node.key))) return;
     const walk: Walk = { instance: node, type, isDeclaration, report, ctx };
     checkBelow(walk, node, [...getMembers(ctx, type).values()], []);
+  },
+  fix: {
+    label: "Make all mandatory members that are missing",
+    apply(space, finding, ids) {
+      if (!findSubject(space, finding) || finding.key === undefined) return notPossible(finding);
+      const made = addDeclaredMembers(space, ids, { instance: finding.key, includeMissing: true });
+      if (!made.ok) return made;
+      return made.value.operations.length > 0 ? ok(made.value.operations) : notPossible(finding);
+    },
   },
   examples: {
     good: {

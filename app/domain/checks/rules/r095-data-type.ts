@@ -1,3 +1,4 @@
+import { attributeFix, REMOVED } from "../fixes";
 import { hasValueAttributes } from "../../address-space/node";
 import { standardKey } from "../../address-space/node-id";
 import { clause, type NodeRule } from "../rule";
@@ -43,6 +44,9 @@ export const r095: NodeRule = {
       ],
     });
   },
+  fix: attributeFix("Leave the DataType open", "dataType", (node) =>
+    "dataType" in node && node.dataType !== undefined ? REMOVED : undefined,
+  ),
   examples: {
     good: { text: "Double.", build: (m) => m.variable("Speed", { parent: m.object("Pump1") }) },
     bad: {

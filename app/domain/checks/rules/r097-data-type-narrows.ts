@@ -1,3 +1,4 @@
+import { attributeFix, keyOf } from "../fixes";
 import { getDataType, hasValueAttributes } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import { isChainLoaded, isKindOf } from "../lookups";
@@ -38,6 +39,9 @@ export const r097: NodeRule = {
       });
     }
   },
+  fix: attributeFix("Take the DataType of the base", "dataType", (node, finding) =>
+    hasValueAttributes(node) && node.value === undefined ? keyOf(finding, "dataType") : undefined,
+  ),
   examples: {
     good: {
       text: "Double below the type's Number.",

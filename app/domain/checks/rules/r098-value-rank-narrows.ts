@@ -1,3 +1,4 @@
+import { attributeFix } from "../fixes";
 import { getValueRank, hasValueAttributes } from "../../address-space/node";
 import { clause, type NodeRule } from "../rule";
 import { listValueBases } from "../value-bases";
@@ -36,6 +37,11 @@ export const r098: NodeRule = {
       });
     }
   },
+  fix: attributeFix("Take the rank of the base", "valueRank", (node, { data }) =>
+    hasValueAttributes(node) && node.value === undefined && node.arrayDimensions === undefined
+      ? data?.["valueRank"]
+      : undefined,
+  ),
   examples: {
     good: {
       text: "A scalar of a VariableType that allows anything.",

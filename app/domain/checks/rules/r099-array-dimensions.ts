@@ -1,3 +1,4 @@
+import { attributeFix, REMOVED } from "../fixes";
 import { getValueRank, hasValueAttributes } from "../../address-space/node";
 import { clause, type NodeRule } from "../rule";
 import { count } from "../texts";
@@ -35,6 +36,11 @@ export const r099: NodeRule = {
       data: { rank },
     });
   },
+  fix: attributeFix("Fill it with 0 for each dimension, or leave it out", "arrayDimensions", (node) => {
+    if (!hasValueAttributes(node) || !node.arrayDimensions) return undefined;
+    const rank = getValueRank(node);
+    return rank > 0 ? Array.from({ length: rank }, () => "0").join(",") : REMOVED;
+  }),
   examples: {
     good: {
       text: "Two dimensions, two entries.",

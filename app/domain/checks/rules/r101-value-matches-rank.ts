@@ -1,3 +1,5 @@
+import { unwrapList, wrapInList } from "../list-values";
+import { attributeFix } from "../fixes";
 import { getDataType, getValueRank, hasValueAttributes } from "../../address-space/node";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { findChild, type ValueElement } from "../value-element";
@@ -46,6 +48,15 @@ export const r101: NodeRule = {
       });
     }
   },
+  fix: attributeFix("Make a list of the single value, or a single value of a list of one", "value", (node) => {
+    const root = hasValueAttributes(node) ? findValueRoot(node.value) : undefined;
+    if (!root || !hasValueAttributes(node) || !node.value) return undefined;
+    return getValueRank(node) === 1
+      ? wrapInList(node.value, root.name)
+      : getValueRank(node) === -1
+        ? unwrapList(node.value, root)
+        : undefined;
+  }),
   examples: {
     good: {
       text: "A list for one dimension.",

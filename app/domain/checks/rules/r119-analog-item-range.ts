@@ -1,3 +1,5 @@
+import { addProperty } from "../add-property";
+import { findSubject, notPossible } from "../fixes";
 import { getDataType } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import { range } from "../example-values";
@@ -34,6 +36,14 @@ export const r119: NodeRule = {
         facts: [`DataType: ${ctx.describe(getDataType(property))}`, "Asked for: Range (i=884)"],
       });
     }
+  },
+  fix: {
+    label: "Add an EURange with limits to be filled in",
+    apply(space, finding, ids) {
+      const node = findSubject(space, finding);
+      if (!node || finding.data?.["property"] !== "EURange") return notPossible(finding);
+      return addProperty(space, node.key, ids, { name: "EURange", dataType: D.Range, value: range("NaN", "NaN") });
+    },
   },
   examples: {
     good: {

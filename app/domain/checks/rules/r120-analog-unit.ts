@@ -1,6 +1,8 @@
+import { addProperty } from "../add-property";
+import { findSubject, notPossible } from "../fixes";
 import { getDataType } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
-import { CELSIUS } from "../example-values";
+import { CELSIUS, unit } from "../example-values";
 import { findStandardProperty, findTypeAbove, findTypeDefinition, isKindOf } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
@@ -35,6 +37,18 @@ export const r120: NodeRule = {
         facts: [`DataType: ${ctx.describe(getDataType(property))}`, "Asked for: EUInformation (i=887)"],
       });
     }
+  },
+  fix: {
+    label: "Add EngineeringUnits with the unit one, to be chosen",
+    apply(space, finding, ids) {
+      const node = findSubject(space, finding);
+      if (!node || finding.data?.["property"] !== "EngineeringUnits") return notPossible(finding);
+      return addProperty(space, node.key, ids, {
+        name: "EngineeringUnits",
+        dataType: D.EUInformation,
+        value: unit({ unitId: 4404786, symbol: "", name: "one" }),
+      });
+    },
   },
   examples: {
     good: {

@@ -1,3 +1,6 @@
+import { listUses } from "../../address-space/address-space";
+import { keyOf, notPossible } from "../fixes";
+import { ok } from "../../core/result";
 import { getDataType } from "../../address-space/node";
 import { standardKey, type NodeKey } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
@@ -40,6 +43,15 @@ export const r123: NodeRule = {
       ],
       data: { property: property.key },
     });
+  },
+  fix: {
+    label: "Remove the unit",
+    apply(space, finding) {
+      const key = keyOf(finding, "property");
+      const property = key === undefined ? undefined : space.own.nodes.get(key);
+      if (!property || listUses(space.own, property).length > 0) return notPossible(finding);
+      return ok([{ kind: "removeNode", key: property.key }]);
+    },
   },
   examples: {
     good: {

@@ -1,3 +1,4 @@
+import { attributeFix } from "../fixes";
 import { hasValueAttributes } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import { CELSIUS, unit, UNECE_URI } from "../example-values";
@@ -36,6 +37,13 @@ export const r125: NodeRule = {
       }
     }
   },
+  fix: attributeFix("Write the URI of the standard", "value", (node, { data }) => {
+    const [wanted, found] = [data?.["uri"], data?.["found"]];
+    if (!hasValueAttributes(node) || !node.value || typeof wanted !== "string" || typeof found !== "string")
+      return undefined;
+    const xml = node.value.xml.replace(`>${found}<`, `>${wanted}<`);
+    return xml === node.value.xml ? undefined : { ...node.value, xml };
+  }),
   examples: {
     good: {
       text: "The exact URI.",

@@ -1,6 +1,7 @@
+import { attributeFix } from "../fixes";
 import { hasValueAttributes } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
-import { unitById } from "../../units/units";
+import { unitById, findUnits, listSymbols } from "../../units/units";
 import { CELSIUS, unit } from "../example-values";
 import { clause, type NodeRule } from "../rule";
 import { decodeUnitId, IEC_URI, isUnece, listUnits } from "../unit-values";
@@ -58,6 +59,16 @@ export const r126: NodeRule = {
       }
     }
   },
+  fix: attributeFix("Take the code of the symbol", "value", (node, { data }) => {
+    const symbol = data?.["symbol"];
+    const [found] = typeof symbol === "string" && symbol !== "" ? findUnits(symbol, 1) : [];
+    return hasValueAttributes(node) &&
+      listUnits(node.value).length === 1 &&
+      found &&
+      listSymbols(found).includes(String(symbol))
+      ? unit({ unitId: found.unitId, symbol: found.symbol, name: found.name })
+      : undefined;
+  }),
   examples: {
     good: {
       text: "4408652 is CEL.",

@@ -15,6 +15,14 @@ export const r176: ModelRule = {
   check(ctx, report) {
     const loaded = ctx.required.flatMap((layer) => layer.header.models);
     for (const model of ctx.header.models) {
+      const twin = loaded.find((m) => m.modelUri === model.modelUri);
+      if (twin) {
+        report({
+          attribute: "models",
+          message: `The model ${model.modelUri} is loaded twice: here and as a required model.`,
+          facts: [`Here: ${describeModel(model)}`, `Required: ${describeModel(twin)}`],
+        });
+      }
       for (const required of model.requiredModels) {
         const found = loaded.filter((m) => m.modelUri === required.modelUri);
         if (

@@ -1,3 +1,6 @@
+import { addNamespaceMetadata } from "../../editing/commands/create-model";
+import { notPossible } from "../fixes";
+import { ok } from "../../core/result";
 import type { ModelEntry } from "../../address-space/model-header";
 import type { Node } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
@@ -44,6 +47,14 @@ export const r181: ModelRule = {
       }
       for (const node of found) checkMetadata(node, model, ctx, report);
     }
+  },
+  fix: {
+    label: "Make the object with its Properties",
+    apply(space, finding, ids) {
+      if (finding.data?.["modelUri"] === undefined) return notPossible(finding);
+      const made = addNamespaceMetadata(space, ids);
+      return made.ok ? ok(made.value.operations) : made;
+    },
   },
   examples: {
     good: { text: "The object with its seven Properties.", build: (m) => m.metadata() },
