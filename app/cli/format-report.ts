@@ -15,7 +15,8 @@ export function formatReport(report: CheckReport, isChecked: boolean): string {
     if (clause !== "") lines.push(`    ${clause}`);
   }
   if (!isChecked) lines.push("Not checked.");
-  else lines.push(`${count(counts.error, "error")}, ${count(counts.warning, "warning")}, ${count(counts.hint, "hint")}`);
+  else
+    lines.push(`${count(counts.error, "error")}, ${count(counts.warning, "warning")}, ${count(counts.hint, "hint")}`);
   return `${lines.join("\n")}\n`;
 }
 

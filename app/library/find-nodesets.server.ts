@@ -12,7 +12,10 @@ const MAX_DEPTH = 8;
 
 /** Files that are no NodeSet2 are passed over; one that is broken is a warning. Problem: `library.folder-missing`. */
 export async function findNodeSets(folder: string): Promise<Result<LibraryEntry[]>> {
-  const isFolder = await stat(folder).then((found) => found.isDirectory(), () => false);
+  const isFolder = await stat(folder).then(
+    (found) => found.isDirectory(),
+    () => false,
+  );
   if (!isFolder) return fail(problem("library.folder-missing", { folder }));
   const problems: Problem[] = [];
   const entries: LibraryEntry[] = [];
@@ -40,7 +43,10 @@ async function listXmlFiles(folder: string, depth: number): Promise<string[]> {
 }
 
 async function describeFile(path: string, problems: Problem[]): Promise<LibraryEntry | undefined> {
-  const size = await stat(path).then((found) => found.size, () => Number.POSITIVE_INFINITY);
+  const size = await stat(path).then(
+    (found) => found.size,
+    () => Number.POSITIVE_INFINITY,
+  );
   if (size > READ_LIMITS.maxBytes) return undefined;
   const bytes = await readFile(path);
   if (recogniseFile(bytes).kind !== "nodeset") return undefined;

@@ -36,7 +36,10 @@ export class PackStore {
   async load(hash: string): Promise<PackContent | undefined> {
     const bytes = await this.find(hash);
     if (!bytes) return undefined;
-    const text = await decompress(bytes).then((plain) => plain.toString("utf8"), () => "");
+    const text = await decompress(bytes).then(
+      (plain) => plain.toString("utf8"),
+      () => "",
+    );
     const pack = readPack(text);
     if (pack.ok) return pack.value;
     await rm(this.#path(hash), { force: true });

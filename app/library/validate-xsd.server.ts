@@ -39,5 +39,9 @@ function readSchema(): string {
 }
 
 function toProblem(detail: { readonly message: string; readonly line: number; readonly col: number }): Problem {
-  return problem("xsd.invalid", { detail: detail.message.trim() }, { line: Math.max(1, detail.line), column: Math.max(1, detail.col) });
+  return problem(
+    "xsd.invalid",
+    { detail: detail.message.trim() },
+    { line: Math.max(1, detail.line), column: Math.max(1, detail.col) },
+  );
 }

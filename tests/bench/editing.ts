@@ -21,7 +21,12 @@ export function measureEditing(): Promise<BenchResult[]> {
   const space = AddressSpace.of([], buildLayer(header, nodes));
   const middle = nodes[COUNT / 2];
   if (!middle) throw new RangeError("No node");
-  const operation: Operation = { kind: "setAttribute", key: middle.key, attribute: "displayName", value: [{ text: "New" }] };
+  const operation: Operation = {
+    kind: "setAttribute",
+    key: middle.key,
+    attribute: "displayName",
+    value: [{ text: "New" }],
+  };
   const edit = time(200, () => {
     const applied = getValue(applyWithInverse(space, [operation]));
     getValue(applyWithInverse(applied.space, applied.inverse));
@@ -35,13 +40,23 @@ function makeNodes(): Node[] {
   return Array.from({ length: COUNT }, (_, order): Node => {
     const nodeId = numericNodeId(NAMESPACE, order + 1);
     const key = toNodeKey(nodeId);
-    const common = { key, nodeId, order, browseName: { namespaceUri: NAMESPACE, name: `N${order}` }, displayName: [{ text: `N${order}` }] };
+    const common = {
+      key,
+      nodeId,
+      order,
+      browseName: { namespaceUri: NAMESPACE, name: `N${order}` },
+      displayName: [{ text: `N${order}` }],
+    };
     const type = (id: number) => ({ type: standardKey(40), target: standardKey(id), isForward: true });
     if (order % 11 === 0) {
       owner = key;
       return { ...common, nodeClass: "Object", references: [type(58)] };
     }
-    return { ...common, nodeClass: "Variable", references: [{ type: standardKey(47), target: owner, isForward: false }, type(63)] };
+    return {
+      ...common,
+      nodeClass: "Variable",
+      references: [{ type: standardKey(47), target: owner, isForward: false }, type(63)],
+    };
   });
 }
 

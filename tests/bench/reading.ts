@@ -21,7 +21,14 @@ import { copyBenchFiles } from "./published-files";
 import { compare, median, type BenchResult } from "./result";
 
 type Reading = { cold: number; warm: number; heap: number };
-type Parsing = { read: number; parsed: number; readWarm: number; parsedWarm: number; written: number; readBase: number };
+type Parsing = {
+  read: number;
+  parsed: number;
+  readWarm: number;
+  parsedWarm: number;
+  written: number;
+  readBase: number;
+};
 
 const ROUNDS = 5;
 const WARM_ROUNDS = 5;

@@ -55,7 +55,9 @@ function pickVersion({ modelUri, version, modelVersion, publicationDate }: Versi
 
 describe("the library", () => {
   it("lists every file of the package", () => {
-    expect(manifest.version).toBe(JSON.parse(readFileSync(join(getPackageFolder(), "..", "package.json"), "utf8")).version);
+    expect(manifest.version).toBe(
+      JSON.parse(readFileSync(join(getPackageFolder(), "..", "package.json"), "utf8")).version,
+    );
     expect(library.list()).toHaveLength(manifest.nodesets.length);
   });
 
@@ -101,8 +103,14 @@ describe("the library", () => {
     const folder = join(scratch, "with");
     mkdirSync(join(folder, "deep", "er"), { recursive: true });
     writeFileSync(join(folder, "note.xml"), "<note/>");
-    writeFileSync(join(folder, "broken.xml"), '<UANodeSet xmlns="http://opcfoundation.org/UA/2011/03/UANodeSet.xsd"><Models>');
-    writeFileSync(join(folder, "deep", "er", "di.xml"), readFileSync(join(getPackageFolder(), "Opc.Ua.Di.NodeSet2.xml")));
+    writeFileSync(
+      join(folder, "broken.xml"),
+      '<UANodeSet xmlns="http://opcfoundation.org/UA/2011/03/UANodeSet.xsd"><Models>',
+    );
+    writeFileSync(
+      join(folder, "deep", "er", "di.xml"),
+      readFileSync(join(getPackageFolder(), "Opc.Ua.Di.NodeSet2.xml")),
+    );
     const found = await findNodeSets(folder);
     expect(getValue(found).map(({ modelUri }) => modelUri)).toEqual(["http://opcfoundation.org/UA/DI/"]);
     expect(found.problems.map(({ code, severity }) => [code, severity])).toEqual([["library.unreadable", "warning"]]);

@@ -76,7 +76,26 @@ const damages: Readonly<Record<string, (random: Random) => Uint8Array>> = {
   },
   "cut off": (random) => bytes.subarray(0, random.below(bytes.length)),
   "markup inserted": (random) => {
-    const pieces = ["<", ">", "&", '"', "'", "]]>", "<!--", "-->", "<![CDATA[", "</", "/>", "<a>", "&#0;", "&x;", "\0", "<?", "<!", "="];
+    const pieces = [
+      "<",
+      ">",
+      "&",
+      '"',
+      "'",
+      "]]>",
+      "<!--",
+      "-->",
+      "<![CDATA[",
+      "</",
+      "/>",
+      "<a>",
+      "&#0;",
+      "&x;",
+      "\0",
+      "<?",
+      "<!",
+      "=",
+    ];
     return splice(random.below(bytes.length), 0, pieces[random.below(pieces.length)] ?? "");
   },
   "an element dropped": (random) => {
@@ -87,7 +106,9 @@ const damages: Readonly<Record<string, (random: Random) => Uint8Array>> = {
   "an attribute dropped": (random) => {
     const attributes = [...text.matchAll(/ \w+="[^"]*"/g)];
     const attribute = attributes[random.below(attributes.length)];
-    return Buffer.from(attribute ? text.slice(0, attribute.index) + text.slice(attribute.index + attribute[0].length) : text);
+    return Buffer.from(
+      attribute ? text.slice(0, attribute.index) + text.slice(attribute.index + attribute[0].length) : text,
+    );
   },
 };
 
@@ -108,9 +129,12 @@ describe.each(Object.entries(damages))("%s", (name, damage) => {
       expectDecent(result);
       const isDecoded = !result.problems.some(({ code }) => code.startsWith("encoding.") || code.startsWith("file."));
       // A document type is refused by us for another reason, before the rest is looked at.
-      if (!isDecoded || result.problems.some(({ code }) => code === "xml.doctype" || code.startsWith("nodeset.wrong"))) continue;
+      if (!isDecoded || result.problems.some(({ code }) => code === "xml.doctype" || code.startsWith("nodeset.wrong")))
+        continue;
       if (isBrokenByUs(result.problems) !== isBrokenByLibxml(input)) {
-        disagreements.push(`try ${i}: ${result.problems.map((one) => `${formatProblem(one)} ${JSON.stringify(one.at)}`).join(" | ")}`);
+        disagreements.push(
+          `try ${i}: ${result.problems.map((one) => `${formatProblem(one)} ${JSON.stringify(one.at)}`).join(" | ")}`,
+        );
       }
     }
     console.log(`${name}: ${TRIES} files, ${refused} refused, slowest ${slowest.toFixed(0)} ms`);
@@ -123,17 +147,51 @@ describe("hostile files", () => {
 
   it.each([
     ["depth 100 000", () => Buffer.from(root + "<a>".repeat(100_000)), "limit.depth"],
-    ["three million attributes", () => Buffer.from(`${root}<a${Array.from({ length: 3_000_000 }, (_, i) => ` a${i}=""`).join("")}`), "limit.attributes"],
-    ["ten million attributes of one name", () => Buffer.concat([Buffer.from(`${root}<a`), Buffer.alloc(40_000_000, ' a=""')]), "xml.not-well-formed"],
+    [
+      "three million attributes",
+      () => Buffer.from(`${root}<a${Array.from({ length: 3_000_000 }, (_, i) => ` a${i}=""`).join("")}`),
+      "limit.attributes",
+    ],
+    [
+      "ten million attributes of one name",
+      () => Buffer.concat([Buffer.from(`${root}<a`), Buffer.alloc(40_000_000, ' a=""')]),
+      "xml.not-well-formed",
+    ],
     ["one attribute of 40 MB", () => Buffer.from(`${root}<a b="${"x".repeat(40_000_000)}`), "xml.truncated"],
-    ["40 MB of text", () => Buffer.from(`${root}<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Documentation>${"x".repeat(40_000_000)}`), "xml.truncated"],
-    ["40 MB of ampersands", () => Buffer.from(`${root}<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Documentation>${"&".repeat(40_000_000)}`), "xml.not-well-formed"],
+    [
+      "40 MB of text",
+      () => Buffer.from(`${root}<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Documentation>${"x".repeat(40_000_000)}`),
+      "xml.truncated",
+    ],
+    [
+      "40 MB of ampersands",
+      () => Buffer.from(`${root}<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Documentation>${"&".repeat(40_000_000)}`),
+      "xml.not-well-formed",
+    ],
     ["a million references", () => Buffer.from(`${root}<a>${"&amp;".repeat(1_000_000)}`), "xml.truncated"],
     ["a comment of 40 MB", () => Buffer.from(`<!--${"-x".repeat(20_000_000)}`), "xml.truncated"],
     ["two million empty elements", () => Buffer.from(`${root}${"<a/>".repeat(2_000_000)}`), "xml.truncated"],
-    ["entities that grow", () => Buffer.from(`<!DOCTYPE a [<!ENTITY a "aaaaaaaaaa">${"<!ENTITY b '&a;&a;&a;'>".repeat(1_000)}]><a>&b;</a>`), "xml.doctype"],
-    ["600 000 nodes", () => Buffer.from(root + Array.from({ length: 600_000 }, (_, i) => `<UAView NodeId="i=${i + 1}" BrowseName="A"/>`).join("")), "limit.nodes"],
-    ["200 000 aliases in one chain", () => Buffer.from(`${root}<Aliases>${Array.from({ length: 200_000 }, (_, i) => `<Alias Alias="${i}">${i + 1}</Alias>`).join("")}</Aliases></UANodeSet>`), "nodeset.alias-unknown"],
+    [
+      "entities that grow",
+      () => Buffer.from(`<!DOCTYPE a [<!ENTITY a "aaaaaaaaaa">${"<!ENTITY b '&a;&a;&a;'>".repeat(1_000)}]><a>&b;</a>`),
+      "xml.doctype",
+    ],
+    [
+      "600 000 nodes",
+      () =>
+        Buffer.from(
+          root + Array.from({ length: 600_000 }, (_, i) => `<UAView NodeId="i=${i + 1}" BrowseName="A"/>`).join(""),
+        ),
+      "limit.nodes",
+    ],
+    [
+      "200 000 aliases in one chain",
+      () =>
+        Buffer.from(
+          `${root}<Aliases>${Array.from({ length: 200_000 }, (_, i) => `<Alias Alias="${i}">${i + 1}</Alias>`).join("")}</Aliases></UANodeSet>`,
+        ),
+      "nodeset.alias-unknown",
+    ],
     ["NUL bytes", () => Buffer.concat([Buffer.from(root), Buffer.alloc(1_000)]), "xml.not-well-formed"],
     ["nothing but NUL", () => Buffer.alloc(1_000), "file.other-kind"],
   ])("%s is refused within bounds", (name, make, code) => {
@@ -141,7 +199,12 @@ describe("hostile files", () => {
     const start = performance.now();
     const result = read(input);
     const time = performance.now() - start;
-    console.log(`${name}: ${time.toFixed(0)} ms, ${result.problems.map((found) => found.code).slice(0, 3).join(", ")}`);
+    console.log(
+      `${name}: ${time.toFixed(0)} ms, ${result.problems
+        .map((found) => found.code)
+        .slice(0, 3)
+        .join(", ")}`,
+    );
     expect(result.problems.map((found) => found.code)).toContain(code);
     expectDecent(result);
   });

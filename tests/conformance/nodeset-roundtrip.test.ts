@@ -51,7 +51,8 @@ describe.each(manifest.nodesets.map(({ file }) => file))("%s", (file) => {
   });
 
   it("has as many nodes as a count of its elements", () => {
-    const elements = text.match(/<UA(?:Object|Variable|Method|View)(?:Type)?[\s>]|<UA(?:Data|Reference)Type[\s>]/g) ?? [];
+    const elements =
+      text.match(/<UA(?:Object|Variable|Method|View)(?:Type)?[\s>]|<UA(?:Data|Reference)Type[\s>]/g) ?? [];
     expect(content.nodes).toHaveLength(elements.length);
     expect(new Set(content.nodes.map((node) => node.key)).size).toBe(elements.length);
   });
@@ -65,7 +66,9 @@ describe.each(manifest.nodesets.map(({ file }) => file))("%s", (file) => {
 function expectSame(actual: NodeSetDescription, expected: NodeSetDescription): void {
   expect(actual.namespaces).toEqual(expected.namespaces);
   expect(actual.head).toEqual(expected.head);
-  const different = expected.nodes.filter(([id, text], i) => actual.nodes[i]?.[0] !== id || actual.nodes[i]?.[1] !== text);
+  const different = expected.nodes.filter(
+    ([id, text], i) => actual.nodes[i]?.[0] !== id || actual.nodes[i]?.[1] !== text,
+  );
   const first = different[0];
   if (first) expect(actual.nodes.find(([id]) => id === first[0])?.[1]).toBe(first[1]);
   expect(actual.nodes).toHaveLength(expected.nodes.length);

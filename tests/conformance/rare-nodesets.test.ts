@@ -72,7 +72,9 @@ describe("the rare file", () => {
     const xml = "value" in node ? node.value?.xml : undefined;
     expect(xml).toContain("<uax:Identifier>nsu=http://merrow.example/rare/;s=a=b;c</uax:Identifier>");
     expect(xml).toContain("<uax:Identifier>svr=1;nsu=http://merrow.example/a%3Bb%25c/;i=77</uax:Identifier>");
-    expect(xml).toContain("<uax:NamespaceIndex>http://opcfoundation.org/UA/DI/</uax:NamespaceIndex><uax:Name>2:Name</uax:Name>");
+    expect(xml).toContain(
+      "<uax:NamespaceIndex>http://opcfoundation.org/UA/DI/</uax:NamespaceIndex><uax:Name>2:Name</uax:Name>",
+    );
     expect(xml).toContain("<uax:NamespaceIndex>0</uax:NamespaceIndex>");
     expect(xml).toContain("<uax:NamespaceIndex>5</uax:NamespaceIndex></free>");
   });
@@ -95,9 +97,7 @@ describe("the rare file", () => {
 describe("the strange file", () => {
   it("is read with its tables behind the nodes", () => {
     const result = readNodeSet(load("strange"));
-    expect(result.problems.map(({ code, severity }) => `${severity} ${code}`)).toEqual([
-      "hint nodeset.header-order",
-    ]);
+    expect(result.problems.map(({ code, severity }) => `${severity} ${code}`)).toEqual(["hint nodeset.header-order"]);
     const content = getValue(result);
     expect(content.isWhole).toBe(true);
     expect(nodeNamed(content, "Own").key).toBe("nsu=http://merrow.example/strange/;i=1");
@@ -132,8 +132,12 @@ describe("the comparer", () => {
 
   it("does not mind other prefixes, or the order of nodes and namespaces", () => {
     const first = text.slice(text.indexOf("  <UAView"), text.indexOf("  <UAReferenceType"));
-    expect(describeNodeSetTree(text.replace(first, "").replace("</UANodeSet>", `${first}</UANodeSet>`))).toEqual(describeNodeSetTree(text));
-    expect(describeNodeSetTree(text.replaceAll("uax:", "other:").replace("xmlns:uax", "xmlns:other"))).toEqual(describeNodeSetTree(text));
+    expect(describeNodeSetTree(text.replace(first, "").replace("</UANodeSet>", `${first}</UANodeSet>`))).toEqual(
+      describeNodeSetTree(text),
+    );
+    expect(describeNodeSetTree(text.replaceAll("uax:", "other:").replace("xmlns:uax", "xmlns:other"))).toEqual(
+      describeNodeSetTree(text),
+    );
     const swapped = text
       .replace("<Uri>http://merrow.example/unused/</Uri>", "<Uri>X</Uri>")
       .replace("<Uri>http://merrow.example/rare/</Uri>", "<Uri>http://merrow.example/unused/</Uri>")

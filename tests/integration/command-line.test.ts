@@ -56,14 +56,18 @@ describe("ferrule", () => {
     expect(first).toMatchObject({ code: 0, out: expect.stringContaining("roundtrip IN OUT") as string });
   });
 
-  it.each([[[]], [["check"]], [["check", "a", "b"]], [["roundtrip", "a"]], [["frobnicate"]], [["check", "--fast", "a"]]])(
-    "answers wrong usage %j with 2",
-    async (args) => {
-      const { code, out, err } = await run(...args);
-      expect({ code, out }).toEqual({ code: 2, out: "" });
-      expect(err).not.toContain("    at ");
-    },
-  );
+  it.each([
+    [[]],
+    [["check"]],
+    [["check", "a", "b"]],
+    [["roundtrip", "a"]],
+    [["frobnicate"]],
+    [["check", "--fast", "a"]],
+  ])("answers wrong usage %j with 2", async (args) => {
+    const { code, out, err } = await run(...args);
+    expect({ code, out }).toEqual({ code: 2, out: "" });
+    expect(err).not.toContain("    at ");
+  });
 });
 
 describe("check", () => {
@@ -71,13 +75,23 @@ describe("check", () => {
     const body = `<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><DisplayName>A</DisplayName></UAObject>`;
     const path = write("one.xml", file('<RequiredModel ModelUri="http://opcfoundation.org/UA/" />', body));
     const { code, out } = await run("check", path, "--json");
-    const report = JSON.parse(out) as { file: string; counts: Record<string, number>; findings: Record<string, unknown>[]; problems: unknown[] };
+    const report = JSON.parse(out) as {
+      file: string;
+      counts: Record<string, number>;
+      findings: Record<string, unknown>[];
+      problems: unknown[];
+    };
     expect(report.file).toBe(path);
     expect(Object.keys(report)).toEqual(["file", "counts", "findings", "problems"]);
     expect(code).toBe(report.counts.error === 0 ? 0 : 1);
     // An Object without type definition breaks OPC 10000-3 §5.5.1.
     const found = report.findings.find((finding) => finding.nodeId === `nsu=${OWN};i=1`);
-    expect(found).toMatchObject({ browseName: expect.any(String) as string, line: 5, column: 3, facts: expect.any(Array) as unknown[] });
+    expect(found).toMatchObject({
+      browseName: expect.any(String) as string,
+      line: 5,
+      column: 3,
+      facts: expect.any(Array) as unknown[],
+    });
     expect(JSON.stringify(report.findings)).not.toMatch(/"nodeId":"ns=\d/);
   });
 
@@ -100,10 +114,15 @@ describe("check", () => {
     const path = write("needs.xml", file(required, ""));
     const missing = await run("check", path);
     expect(missing.code).toBe(2);
-    expect(missing.out).toContain(`${OWN} requires the model http://merrow.example/base/ (3.1), which is not in the library.`);
+    expect(missing.out).toContain(
+      `${OWN} requires the model http://merrow.example/base/ (3.1), which is not in the library.`,
+    );
     const folder = join(scratch, "more");
     mkdirSync(join(folder, "below"), { recursive: true });
-    writeFileSync(join(folder, "below", "base.xml"), file("", "").replaceAll(OWN, "http://merrow.example/base/").replace('"1.0.0"', '"3.1"'));
+    writeFileSync(
+      join(folder, "below", "base.xml"),
+      file("", "").replaceAll(OWN, "http://merrow.example/base/").replace('"1.0.0"', '"3.1"'),
+    );
     expect((await run("check", path, "--with", folder)).out).not.toContain("not in the library");
   });
 });
@@ -117,7 +136,7 @@ describe("roundtrip", () => {
   });
 
   it("needs no required models", async () => {
-    const value = "<Value><x:Thing xmlns:x=\"urn:unknown\">7</x:Thing></Value>";
+    const value = '<Value><x:Thing xmlns:x="urn:unknown">7</x:Thing></Value>';
     const body = `<UAVariable NodeId="ns=1;i=1" BrowseName="1:A" DataType="ns=1;i=99">${value}</UAVariable>`;
     const path = write("alone.xml", file('<RequiredModel ModelUri="urn:nowhere" />', body));
     expect((await run("roundtrip", path, join(scratch, "alone.out.xml"))).code).toBe(0);
@@ -135,6 +154,8 @@ describe("roundtrip", () => {
 
   it("answers 2 where it cannot read or write", async () => {
     expect((await run("roundtrip", join(scratch, "none.xml"), join(scratch, "x.xml"))).code).toBe(2);
-    expect((await run("roundtrip", published("Opc.Ua.Di.NodeSet2.xml"), join(scratch, "no", "folder.xml"))).code).toBe(2);
+    expect((await run("roundtrip", published("Opc.Ua.Di.NodeSet2.xml"), join(scratch, "no", "folder.xml"))).code).toBe(
+      2,
+    );
   });
 });

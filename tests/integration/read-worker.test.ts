@@ -19,7 +19,10 @@ beforeAll(() => {
 describe("the reading worker", () => {
   it("reads what is read without it, and says how far it is", async () => {
     const steps: number[] = [];
-    const result = await readInWorker(worker, bytes, { fileName: "base.xml", onProgress: (done, total) => steps.push(done / total) });
+    const result = await readInWorker(worker, bytes, {
+      fileName: "base.xml",
+      onProgress: (done, total) => steps.push(done / total),
+    });
     const here = getValue(readHere(bytes, { fileName: "base.xml" }));
     const there = getValue(result);
     expect(there.header).toEqual(here.header);

@@ -11,7 +11,13 @@ const STANDARD = "http://opcfoundation.org/UA/";
 
 /** Any text that XML can hold, awkward characters more often than by chance. */
 export const text: fc.Arbitrary<string> = fc
-  .array(fc.oneof(fc.constantFrom("<", ">", "&", '"', "'", "\n", "\t", "\r", " ", ";", "]]>", ":", "1:", "é", "漢", "🪢", "&amp;"), fc.string({ maxLength: 3 })), { maxLength: 6 })
+  .array(
+    fc.oneof(
+      fc.constantFrom("<", ">", "&", '"', "'", "\n", "\t", "\r", " ", ";", "]]>", ":", "1:", "é", "漢", "🪢", "&amp;"),
+      fc.string({ maxLength: 3 }),
+    ),
+    { maxLength: 6 },
+  )
   .map((parts) => parts.join("").replace(/[^\t\n\r\u{20}-\u{D7FF}\u{E000}-\u{FFFD}\u{10000}-\u{10FFFF}]/gu, ""));
 
 /** A string identifier; white space at its ends and line breaks are told apart nowhere in OPC UA's own texts. */
@@ -24,7 +30,9 @@ const nodeId: fc.Arbitrary<NodeId> = fc
       fc.nat(4294967295).map((id) => ({ type: "i" as const, identifier: id })),
       identifier.map((id) => ({ type: "s" as const, identifier: id })),
       fc.uuid().map((id) => ({ type: "g" as const, identifier: id })),
-      fc.uint8Array({ minLength: 1, maxLength: 6 }).map((id) => ({ type: "b" as const, identifier: Buffer.from(id).toString("base64") })),
+      fc
+        .uint8Array({ minLength: 1, maxLength: 6 })
+        .map((id) => ({ type: "b" as const, identifier: Buffer.from(id).toString("base64") })),
     ),
   )
   .map(([namespaceUri, id]) => ({ namespaceUri, ...id }));
@@ -41,10 +49,17 @@ const localizedText: fc.Arbitrary<LocalizedText> = fc.oneof(
 );
 
 const reference: fc.Arbitrary<DeclaredReference> = fc
-  .record({ type: key, target: key, isForward: fc.boolean(), serverUri: fc.option(fc.constantFrom("urn:a", "urn:b"), { nil: undefined, freq: 6 }) })
+  .record({
+    type: key,
+    target: key,
+    isForward: fc.boolean(),
+    serverUri: fc.option(fc.constantFrom("urn:a", "urn:b"), { nil: undefined, freq: 6 }),
+  })
   .map(({ serverUri, ...rest }) => (serverUri === undefined ? rest : { ...rest, serverUri }));
 
-const valueText = text.map((one) => one.replaceAll("&", "&amp;").replaceAll("<", "&lt;").replaceAll("]]>", "").replaceAll("\r", ""));
+const valueText = text.map((one) =>
+  one.replaceAll("&", "&amp;").replaceAll("<", "&lt;").replaceAll("]]>", "").replaceAll("\r", ""),
+);
 const value = fc.oneof(
   valueText.map((one) => ({ xml: `<String xmlns="http://opcfoundation.org/UA/2008/02/Types.xsd">${one}</String>` })),
   nodeId.map((id) => ({
@@ -56,23 +71,22 @@ const value = fc.oneof(
   })),
 );
 
-const field: fc.Arbitrary<DataTypeField> = fc
-  .record(
-    {
-      name: text,
-      symbolicName: fc.constantFrom("F", "G_1"),
-      displayName: fc.array(localizedText, { minLength: 1, maxLength: 2 }),
-      description: fc.array(localizedText, { minLength: 1, maxLength: 2 }),
-      dataType: key,
-      valueRank: fc.integer({ min: -3, max: 5 }),
-      arrayDimensions: fc.constantFrom("", "0", "2,3"),
-      maxStringLength: fc.nat(4294967295),
-      value: fc.integer({ min: -2147483648, max: 2147483647 }),
-      isOptional: fc.boolean(),
-      allowSubTypes: fc.boolean(),
-    },
-    { requiredKeys: ["name"] },
-  );
+const field: fc.Arbitrary<DataTypeField> = fc.record(
+  {
+    name: text,
+    symbolicName: fc.constantFrom("F", "G_1"),
+    displayName: fc.array(localizedText, { minLength: 1, maxLength: 2 }),
+    description: fc.array(localizedText, { minLength: 1, maxLength: 2 }),
+    dataType: key,
+    valueRank: fc.integer({ min: -3, max: 5 }),
+    arrayDimensions: fc.constantFrom("", "0", "2,3"),
+    maxStringLength: fc.nat(4294967295),
+    value: fc.integer({ min: -2147483648, max: 2147483647 }),
+    isOptional: fc.boolean(),
+    allowSubTypes: fc.boolean(),
+  },
+  { requiredKeys: ["name"] },
+);
 
 const attributeValues: Readonly<Record<AttributeType, fc.Arbitrary<unknown>>> = {
   text,
@@ -90,7 +104,9 @@ const attributeValues: Readonly<Record<AttributeType, fc.Arbitrary<unknown>>> = 
 
 function fieldsOf(nodeClass: NodeClass): fc.Arbitrary<object> {
   const specs = [...NODE_ATTRIBUTES[nodeClass].values()];
-  return fc.record(Object.fromEntries(specs.map(({ field: name, type }) => [name, attributeValues[type]])), { requiredKeys: [] });
+  return fc.record(Object.fromEntries(specs.map(({ field: name, type }) => [name, attributeValues[type]])), {
+    requiredKeys: [],
+  });
 }
 
 function specificsOf(nodeClass: NodeClass): fc.Arbitrary<object> {
@@ -100,9 +116,17 @@ function specificsOf(nodeClass: NodeClass): fc.Arbitrary<object> {
     case "VariableType":
       return fc.record({ value }, { requiredKeys: [] });
     case "Method":
-      return fc.record({ argumentDescriptions: fc.array(fc.record({ name: text, description: texts }), { minLength: 1, maxLength: 2 }) }, { requiredKeys: [] });
+      return fc.record(
+        {
+          argumentDescriptions: fc.array(fc.record({ name: text, description: texts }), { minLength: 1, maxLength: 2 }),
+        },
+        { requiredKeys: [] },
+      );
     case "DataType":
-      return fc.record({ definition: fc.record({ name: qualifiedName, fields: fc.array(field, { maxLength: 3 }) }) }, { requiredKeys: [] });
+      return fc.record(
+        { definition: fc.record({ name: qualifiedName, fields: fc.array(field, { maxLength: 3 }) }) },
+        { requiredKeys: [] },
+      );
     case "ReferenceType":
       return fc.record({ inverseName: texts }, { requiredKeys: [] });
     default:
@@ -110,13 +134,26 @@ function specificsOf(nodeClass: NodeClass): fc.Arbitrary<object> {
   }
 }
 
-const CLASSES: readonly NodeClass[] = ["Object", "Variable", "Method", "View", "ObjectType", "VariableType", "DataType", "ReferenceType"];
+const CLASSES: readonly NodeClass[] = [
+  "Object",
+  "Variable",
+  "Method",
+  "View",
+  "ObjectType",
+  "VariableType",
+  "DataType",
+  "ReferenceType",
+];
 
 const node: fc.Arbitrary<Node> = fc.constantFrom(...CLASSES).chain((nodeClass) =>
   fc
     .tuple(
       nodeId,
-      fc.record({ browseName: qualifiedName, displayName: fc.array(localizedText, { maxLength: 3 }), references: fc.array(reference, { maxLength: 4 }) }),
+      fc.record({
+        browseName: qualifiedName,
+        displayName: fc.array(localizedText, { maxLength: 3 }),
+        references: fc.array(reference, { maxLength: 4 }),
+      }),
       fc.record(
         {
           description: fc.array(localizedText, { minLength: 1, maxLength: 2 }),
@@ -129,7 +166,19 @@ const node: fc.Arbitrary<Node> = fc.constantFrom(...CLASSES).chain((nodeClass) =
       fieldsOf(nodeClass),
       specificsOf(nodeClass),
     )
-    .map(([id, common, optional, fields, specific]) => ({ key: toNodeKey(id), nodeId: id, order: 0, nodeClass, ...common, ...optional, ...fields, ...specific }) as Node),
+    .map(
+      ([id, common, optional, fields, specific]) =>
+        ({
+          key: toNodeKey(id),
+          nodeId: id,
+          order: 0,
+          nodeClass,
+          ...common,
+          ...optional,
+          ...fields,
+          ...specific,
+        }) as Node,
+    ),
 );
 
 /** Nodes with different ids, in order. */
@@ -139,10 +188,19 @@ export const nodes: fc.Arbitrary<readonly Node[]> = fc
 
 const modelEntry: fc.Arbitrary<ModelEntry> = fc
   .record(
-    { version: text, modelVersion: fc.constantFrom("1.0.0", "0.1.0-a+b"), publicationDate: fc.constantFrom("2026-01-01T00:00:00Z", "2026-01-01"), accessRestrictions: fc.nat(65535) },
+    {
+      version: text,
+      modelVersion: fc.constantFrom("1.0.0", "0.1.0-a+b"),
+      publicationDate: fc.constantFrom("2026-01-01T00:00:00Z", "2026-01-01"),
+      accessRestrictions: fc.nat(65535),
+    },
     { requiredKeys: [] },
   )
-  .map((entry) => ({ modelUri: NAMESPACES[0] ?? "", ...entry, requiredModels: [{ modelUri: STANDARD, requiredModels: [] }] }));
+  .map((entry) => ({
+    modelUri: NAMESPACES[0] ?? "",
+    ...entry,
+    requiredModels: [{ modelUri: STANDARD, requiredModels: [] }],
+  }));
 
 export const header: fc.Arbitrary<ModelHeader> = fc
   .tuple(modelEntry, fc.shuffledSubarray(NAMESPACES, { minLength: NAMESPACES.length }))

@@ -4,10 +4,7 @@ import { READ_LIMITS } from "./limits";
 import { recogniseFile } from "./recognise-file";
 
 // A decoder is part of every platform that this code runs on; the domain's own types know none of the platforms.
-declare const TextDecoder: new (
-  label: string,
-  options?: { fatal?: boolean },
-) => { decode(bytes: Uint8Array): string };
+declare const TextDecoder: new (label: string, options?: { fatal?: boolean }) => { decode(bytes: Uint8Array): string };
 
 /** Labels that are read beside UTF-8; "iso-8859-1" is read as its superset, as browsers do. */
 const ENCODINGS: ReadonlyMap<string, string> = new Map([
@@ -70,7 +67,7 @@ function findInvalid(bytes: Uint8Array, encoding: string): { line: number; colum
   let line = 1;
   let column = 1;
   if (encoding !== "utf-8") return { line, column };
-  for (let i = 0; i < bytes.length; ) {
+  for (let i = 0; i < bytes.length;) {
     const length = sequenceLength(bytes, i);
     if (length === 0) break;
     if (bytes[i] === 0x0a) {

@@ -32,7 +32,9 @@ export class IdTable {
 
   constructor(namespaceUris: readonly string[], serverUris: readonly string[], aliases: ReadonlyMap<string, string>) {
     this.namespaceUris = [OPC_UA_NAMESPACE, ...namespaceUris];
-    this.#keyHeads = this.namespaceUris.map((uri) => toNodeKey({ namespaceUri: uri, type: "s", identifier: "" }).slice(0, -2));
+    this.#keyHeads = this.namespaceUris.map((uri) =>
+      toNodeKey({ namespaceUri: uri, type: "s", identifier: "" }).slice(0, -2),
+    );
     this.#serverUris = serverUris;
     this.#aliases = aliases;
   }
@@ -176,4 +178,3 @@ function trimId(text: string): string {
 function unescapeUri(text: string): string {
   return text.replace(/%3B/gi, ";").replace(/%25/g, "%");
 }
-

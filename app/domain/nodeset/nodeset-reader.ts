@@ -278,7 +278,9 @@ export class NodeSetReader implements XmlHandler {
         return this.#openCapture("value", local, attributes, start, end, (text) => (node.fields.value = text));
       case "Translation":
         if (nodeClass !== "Variable") return undefined;
-        return this.#openCapture("content", local, attributes, start, end, (text) => (node.translations ??= []).push(text));
+        return this.#openCapture("content", local, attributes, start, end, (text) =>
+          (node.translations ??= []).push(text),
+        );
       case "ArgumentDescription":
         if (nodeClass !== "Method") return undefined;
         this.#context.argument = { name: "", description: [] };

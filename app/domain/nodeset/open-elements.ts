@@ -17,7 +17,12 @@ const MODEL_HANDLED: readonly string[] = ["ModelUri"];
  */
 export function openNode(
   context: ReadContext,
-  element: { readonly name: string; readonly nodeClass: NodeClass; readonly attributes: Attributes; readonly start: number },
+  element: {
+    readonly name: string;
+    readonly nodeClass: NodeClass;
+    readonly attributes: Attributes;
+    readonly start: number;
+  },
   order: number,
   findOffset: (node: NodeBuilder) => number | undefined,
 ): NodeBuilder | undefined {
@@ -52,7 +57,10 @@ export function openDefinition(context: ReadContext, attributes: Attributes, sta
   const text = attributes["Name"];
   if (text === undefined) context.reportMissing("Definition", "Name", start);
   const name = context.take(context.ids.parseName(text ?? ""), start, "Name");
-  const definition: DefinitionDraft = { name: name ?? { namespaceUri: OPC_UA_NAMESPACE, name: text ?? "" }, fields: [] };
+  const definition: DefinitionDraft = {
+    name: name ?? { namespaceUri: OPC_UA_NAMESPACE, name: text ?? "" },
+    fields: [],
+  };
   const others = context.readInto(definition, attributes, DEFINITION_ATTRIBUTES, NAME_HANDLED, start);
   if (others) definition.otherAttributes = others;
   context.definition = definition;

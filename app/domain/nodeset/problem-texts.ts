@@ -1,7 +1,8 @@
 export const nodesetProblemTexts: Readonly<Record<string, string>> = {
   "file.unreadable": "{file} cannot be read: {detail}",
   "file.unwritable": "{file} cannot be written: {detail}",
-  "roundtrip.not-whole": "{output} was not written, since something of the file could not be kept; the problems above say what.",
+  "roundtrip.not-whole":
+    "{output} was not written, since something of the file could not be kept; the problems above say what.",
   "file.empty": "The file is empty.",
   "file.other-kind": "This is no NodeSet2 file: it is {what}.",
   "limit.depth": "Elements stand within each other deeper than {limit} levels, which is the limit.",
@@ -10,22 +11,29 @@ export const nodesetProblemTexts: Readonly<Record<string, string>> = {
   "limit.time": "Reading took longer than {limit} s, which is the limit, and was stopped.",
   "limit.problems": "{count} more problems are not listed; the list ends at {limit}.",
   "encoding.declared": "The file is in {encoding}. It was read; a NodeSet is usually UTF-8, and an export will be.",
-  "encoding.invalid": "The bytes are not {encoding}. Save the file as UTF-8, or let its first line name the encoding that it has.",
+  "encoding.invalid":
+    "The bytes are not {encoding}. Save the file as UTF-8, or let its first line name the encoding that it has.",
   "encoding.unknown": "The encoding “{encoding}” cannot be read. Save the file as UTF-8.",
   "encoding.line-ends": "Lines end with CR LF. They were read as LF, and an export writes LF.",
-  "xml.doctype": "The file has a document type declaration. These are refused, since their entities can read other files or grow without bound.",
+  "xml.doctype":
+    "The file has a document type declaration. These are refused, since their entities can read other files or grow without bound.",
   "xml.not-xml": "This is not XML: {detail}.",
   "xml.not-well-formed": "The XML is broken here: {detail}.",
   "xml.truncated": "The file ends too early: {detail}.",
   "pack.format": "This is no pack of the form {expected}, or it is damaged.",
   "xml.prefix-undeclared": "{name} has the prefix {prefix}, which no element around it declares.",
   "nodeset.wrong-root": "The root element is {root}, so this is {what} and no NodeSet2 file.",
-  "nodeset.wrong-namespace": "The root element UANodeSet is not in the namespace http://opcfoundation.org/UA/2011/03/UANodeSet.xsd.",
-  "nodeset.no-model": "The file has no Models table. The first namespace of its table, {modelUri}, is taken as its model.",
+  "nodeset.wrong-namespace":
+    "The root element UANodeSet is not in the namespace http://opcfoundation.org/UA/2011/03/UANodeSet.xsd.",
+  "nodeset.no-model":
+    "The file has no Models table. The first namespace of its table, {modelUri}, is taken as its model.",
   "nodeset.no-namespace": "The file names no model and no namespace, so that its nodes belong nowhere.",
-  "nodeset.several-models": "The file defines {count} models: {models}. All nodes are kept; {modelUri} is taken as the model of the file.",
-  "nodeset.own-namespace-zero": "The file claims to define {modelUri}, the namespace of the standard itself. Only the standard's own NodeSet does; give the model a namespace of its own.",
-  "nodeset.namespace-zero-listed": "The namespace table lists {uri} as index {index}; it is index 0 always and needs no entry.",
+  "nodeset.several-models":
+    "The file defines {count} models: {models}. All nodes are kept; {modelUri} is taken as the model of the file.",
+  "nodeset.own-namespace-zero":
+    "The file claims to define {modelUri}, the namespace of the standard itself. Only the standard's own NodeSet does; give the model a namespace of its own.",
+  "nodeset.namespace-zero-listed":
+    "The namespace table lists {uri} as index {index}; it is index 0 always and needs no entry.",
   "nodeset.namespace-listed-twice": "The namespace table lists {uri} twice.",
   "nodeset.namespace-missing": "The model {modelUri} is not in the table NamespaceUris.",
   "nodeset.required-model-cycle": "The model {modelUri} requires itself: {path}.",
@@ -40,7 +48,8 @@ export const nodesetProblemTexts: Readonly<Record<string, string>> = {
   "nodeset.server-index": "“{text}” names server index {index}, but the file's table ServerUris has {count} entries.",
   "nodeset.duplicate-node-id": "The NodeId {nodeId} is given twice; its first node is in line {firstLine}.",
   "nodeset.null-node-id": "{nodeId} is the null NodeId and cannot name a node.",
-  "nodeset.browse-name-prefix": "The name “{name}” itself begins with digits and a colon, which looks like a second namespace index.",
+  "nodeset.browse-name-prefix":
+    "The name “{name}” itself begins with digits and a colon, which looks like a second namespace index.",
   "nodeset.type-cycle": "The type {nodeId} is its own supertype: {path}.",
   "nodeset.header-order": "The table {element} stands behind nodes. It was read; the schema wants it before them.",
   "library.model-missing": "{requiredBy} requires the model {modelUri} ({version}), which is not in the library.",

@@ -84,7 +84,8 @@ export class RawCapture {
       getLocalName(name) === "NamespaceIndex"
         ? this.#replaceIndex(this.#indexText)
         : this.#replaceInIdentifier(this.#indexText);
-    if (replaced !== undefined) (this.#edits ??= []).push({ start: this.#indexStart, end: start, text: escapeText(replaced) });
+    if (replaced !== undefined)
+      (this.#edits ??= []).push({ start: this.#indexStart, end: start, text: escapeText(replaced) });
     this.#indexStart = -1;
   }
 
@@ -172,6 +173,9 @@ export class RawCapture {
   }
 
   #reportIndex(text: string, index: number): void {
-    this.#report(problem("node-id.namespace-index", { text, index, count: this.#namespaceUris.length }), this.#indexStart);
+    this.#report(
+      problem("node-id.namespace-index", { text, index, count: this.#namespaceUris.length }),
+      this.#indexStart,
+    );
   }
 }

@@ -2,7 +2,8 @@
 import { findRootMeaning } from "./root-meanings";
 
 export type FileKind = {
-  readonly kind: "nodeset" | "xml" | "html" | "json" | "zip" | "gzip" | "pdf" | "office" | "image" | "binary" | "text" | "csv";
+  readonly kind:
+    "nodeset" | "xml" | "html" | "json" | "zip" | "gzip" | "pdf" | "office" | "image" | "binary" | "text" | "csv";
   /** Completes "it is …". */
   readonly what: string;
   readonly isXml: boolean;
@@ -32,7 +33,8 @@ export function recogniseFile(bytes: Uint8Array): FileKind {
   if (first.startsWith("<")) return recogniseMarkup(first);
   if (/^[[{]/.test(first)) return { kind: "json", what: "a JSON file", isXml: false };
   if (head.includes("\u0000")) return { kind: "binary", what: "a binary file", isXml: false };
-  if (/^[^\n<]*[;,\t][^\n<]*\r?\n[^\n<]*[;,\t]/.test(first)) return { kind: "csv", what: "a table in text form (CSV)", isXml: false };
+  if (/^[^\n<]*[;,\t][^\n<]*\r?\n[^\n<]*[;,\t]/.test(first))
+    return { kind: "csv", what: "a table in text form (CSV)", isXml: false };
   return { kind: "text", what: "a text file without XML", isXml: false };
 }
 

@@ -14,12 +14,7 @@ export function writeWholeElement(text: XmlText, declared: Declared): string {
 }
 
 /** An element around the text. `isValue` says that URIs inside stand for namespace indices. */
-export function writeAround(
-  element: string,
-  text: XmlText,
-  declared: Declared,
-  ids: IdWriter | undefined,
-): string {
+export function writeAround(element: string, text: XmlText, declared: Declared, ids: IdWriter | undefined): string {
   let { xml } = text;
   if (ids) xml = writeIndices(xml, ids);
   let head = element;

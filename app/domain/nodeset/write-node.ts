@@ -2,7 +2,13 @@
 import type { DataTypeDefinition, DataTypeField, DeclaredReference, Node, RolePermission } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import type { LocalizedText } from "../address-space/qualified-name";
-import { DEFINITION_ATTRIBUTES, FIELD_ATTRIBUTES, NODE_ATTRIBUTES, type AttributeTable, type AttributeType } from "./attribute-tables";
+import {
+  DEFINITION_ATTRIBUTES,
+  FIELD_ATTRIBUTES,
+  NODE_ATTRIBUTES,
+  type AttributeTable,
+  type AttributeType,
+} from "./attribute-tables";
 import type { IdWriter } from "./id-writer";
 import { writeAround, writeWholeElement, type Declared } from "./write-fragments";
 import { escapeAttribute, escapeText } from "./xml/escape";
@@ -25,7 +31,8 @@ export function writeNode(node: Node, context: WriteContext): string {
     ` BrowseName="${escapeAttribute(ids.formatName(node.browseName))}"` +
     writeAttributes(node, NODE_ATTRIBUTES[node.nodeClass], node.otherAttributes, ids);
   const declared = withNodeDeclarations(context.declared, node.otherAttributes);
-  const body = writeCommon(node, context, declared) + writeSpecific(node, context, declared) + writeOthers(node, declared);
+  const body =
+    writeCommon(node, context, declared) + writeSpecific(node, context, declared) + writeOthers(node, declared);
   return body === "" ? `${head} />\n` : `${head}>\n${body}  </${element}>\n`;
 }
 
@@ -60,7 +67,9 @@ function formatAttribute(value: unknown, type: AttributeType, name: string, ids:
 
 function writeCommon(node: Node, context: WriteContext, declared: Declared): string {
   const { prefix, ids } = context;
-  let out = writeTexts("DisplayName", node.displayName, "    ", prefix) + writeTexts("Description", node.description, "    ", prefix);
+  let out =
+    writeTexts("DisplayName", node.displayName, "    ", prefix) +
+    writeTexts("Description", node.description, "    ", prefix);
   for (const category of node.category ?? []) out += writeText(`${prefix}Category`, category, "    ");
   if (node.documentation !== undefined) out += writeText(`${prefix}Documentation`, node.documentation, "    ");
   if (node.references.length > 0) {

@@ -108,7 +108,10 @@ function writeHead(header: ModelHeader, root: Root, context: WriteContext): stri
   // The models come first in time: their roles may need a namespace that the table lacks.
   const models = header.models.map((model) => writeModel("Model", model, "    ", context)).join("");
   const aliases = (header.aliases ?? ids.listUsedAliases())
-    .map(([alias, key]) => `    <${prefix}Alias Alias="${escapeAttribute(alias)}">${escapeText(ids.formatKey(key))}</${prefix}Alias>\n`)
+    .map(
+      ([alias, key]) =>
+        `    <${prefix}Alias Alias="${escapeAttribute(alias)}">${escapeText(ids.formatKey(key))}</${prefix}Alias>\n`,
+    )
     .join("");
   const extensions = (header.extensions ?? [])
     .map((extension) => `    ${writeAround(`${prefix}Extension`, extension, context.declared, undefined)}\n`)

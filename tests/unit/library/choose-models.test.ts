@@ -8,7 +8,11 @@ const BASE = "http://opcfoundation.org/UA/";
 
 type Asked = { modelUri: string; version?: string; publicationDate?: string };
 
-function entry(modelUri: string, requires: readonly (string | Asked)[] = [], more: Partial<LibraryEntry> = {}): LibraryEntry {
+function entry(
+  modelUri: string,
+  requires: readonly (string | Asked)[] = [],
+  more: Partial<LibraryEntry> = {},
+): LibraryEntry {
   return {
     origin: "published",
     title: modelUri,
@@ -52,20 +56,26 @@ describe("choosing models", () => {
     const { entries, problems } = chooseModels([ask(newer)], [library], "me");
     expect(entries).toHaveLength(2);
     expect(problems.map(({ severity }) => severity)).toEqual(["warning"]);
-    expect(problems.map(formatProblem)).toEqual(["me requires a 1.3.0 of 2023-01-01; the library has only the older 1.2.0 of 2022-06-01."]);
+    expect(problems.map(formatProblem)).toEqual([
+      "me requires a 1.3.0 of 2023-01-01; the library has only the older 1.2.0 of 2022-06-01.",
+    ]);
   });
 
   it("compares versions number by number where dates are missing", () => {
     const library = [base, entry("a", [], { version: "1.10.0" })];
     expect(chooseModels([ask({ modelUri: "a", version: "1.9" })], [library], "me").problems).toEqual([]);
-    expect(chooseModels([ask({ modelUri: "a", version: "1.11" })], [library], "me").problems[0]?.code).toBe("library.only-older");
+    expect(chooseModels([ask({ modelUri: "a", version: "1.11" })], [library], "me").problems[0]?.code).toBe(
+      "library.only-older",
+    );
   });
 
   it("says which model is missing, in which version, and who requires it", () => {
     const library = [base, entry("a", [{ modelUri: "gone", version: "2.0", publicationDate: "2025-02-03T00:00:00Z" }])];
     const { entries, problems } = chooseModels([ask("a"), ask("gone")], [library], "me");
     expect(entries.map(({ modelUri }) => modelUri)).toEqual([BASE, "a"]);
-    expect(problems.map(formatProblem)).toEqual(["a requires the model gone (2.0 of 2025-02-03), which is not in the library."]);
+    expect(problems.map(formatProblem)).toEqual([
+      "a requires the model gone (2.0 of 2025-02-03), which is not in the library.",
+    ]);
   });
 
   it("ends in a circle and shows it", () => {

@@ -206,7 +206,8 @@ class XmlScan {
       attributes ??= new AttributeBag();
       if (attributes[attribute] !== undefined) this.#fail(`the attribute ${attribute} stands twice`, next);
       at = this.#readValue(attribute, attributeEnd, attributes);
-      if (attribute.startsWith("xmlns") && (attribute.length === 5 || attribute.charCodeAt(5) === 58)) hint = "declaring";
+      if (attribute.startsWith("xmlns") && (attribute.length === 5 || attribute.charCodeAt(5) === 58))
+        hint = "declaring";
       else if (hint === "plain" && attribute.includes(":")) hint = "prefixed";
     }
   }
@@ -215,7 +216,8 @@ class XmlScan {
   #readValue(attribute: string, from: number, attributes: Record<string, string>): number {
     const text = this.#text;
     const equals = skipSpace(text, from);
-    if (text.charCodeAt(equals) !== EQUALS) this.#failOrTruncated(`the attribute ${attribute} has no value`, equals, equals);
+    if (text.charCodeAt(equals) !== EQUALS)
+      this.#failOrTruncated(`the attribute ${attribute} has no value`, equals, equals);
     const open = skipSpace(text, equals + 1);
     const quote = text.charCodeAt(open);
     if (quote !== QUOTE && quote !== APOSTROPHE) {
@@ -239,7 +241,7 @@ class XmlScan {
     const text = this.#text;
     if (text.indexOf("&", start) >= end) return text.slice(start, end).replace(/[\t\n\r]/g, " ");
     let out = "";
-    for (let at = start; at < end; ) {
+    for (let at = start; at < end;) {
       const reference = findFrom(text, "&", at);
       const stop = Math.min(reference, end);
       out += text.slice(at, stop).replace(/[\t\n\r]/g, " ");

@@ -5,7 +5,8 @@ const NAME_ONLY = 2;
 
 /** For ASCII: may start a name, may stand in a name, or neither. */
 const ASCII = new Uint8Array(128);
-for (const character of "ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz_:") ASCII[character.charCodeAt(0)] = NAME_START;
+for (const character of "ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz_:")
+  ASCII[character.charCodeAt(0)] = NAME_START;
 for (const character of "0123456789-.") ASCII[character.charCodeAt(0)] = NAME_ONLY;
 
 const WIDE_START =

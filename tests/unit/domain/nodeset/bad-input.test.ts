@@ -32,7 +32,12 @@ function problemsOf(text: string, options?: ReadOptions): readonly Problem[] {
 
 function find(text: string, code: string, options?: ReadOptions): Problem {
   const found = problemsOf(text, options).find((one) => one.code === code);
-  if (!found) throw new Error(`No ${code} among ${problemsOf(text, options).map((one) => one.code).join(", ")}`);
+  if (!found)
+    throw new Error(
+      `No ${code} among ${problemsOf(text, options)
+        .map((one) => one.code)
+        .join(", ")}`,
+    );
   expect(found.at?.line).toBeGreaterThan(0);
   expect(found.at?.column).toBeGreaterThan(0);
   expect(formatProblem(found)).not.toMatch(/\{\w+\}/);
@@ -68,9 +73,15 @@ describe("text that is no NodeSet2", () => {
   });
 
   it("is named by its root element", () => {
-    expect(find(`<UANodeSetChanges xmlns="${XMLNS}" TransactionId="1"/>`, "nodeset.wrong-root").data?.what).toMatch(/changes/);
-    expect(find('<IODevice xmlns="http://www.io-link.com/IODD/2010/10"/>', "nodeset.wrong-root").data?.what).toMatch(/IODD/);
-    expect(find('<xs:schema xmlns:xs="http://www.w3.org/2001/XMLSchema"/>', "nodeset.wrong-root").data?.what).toMatch(/schema/);
+    expect(find(`<UANodeSetChanges xmlns="${XMLNS}" TransactionId="1"/>`, "nodeset.wrong-root").data?.what).toMatch(
+      /changes/,
+    );
+    expect(find('<IODevice xmlns="http://www.io-link.com/IODD/2010/10"/>', "nodeset.wrong-root").data?.what).toMatch(
+      /IODD/,
+    );
+    expect(find('<xs:schema xmlns:xs="http://www.w3.org/2001/XMLSchema"/>', "nodeset.wrong-root").data?.what).toMatch(
+      /schema/,
+    );
     expect(
       find('<opc:TypeDictionary xmlns:opc="http://opcfoundation.org/BinarySchema/"/>', "nodeset.wrong-root").data?.what,
     ).toMatch(/binary/);
@@ -106,7 +117,10 @@ describe("XML that is broken", () => {
   it("names the very place of a bare ampersand", () => {
     const text = file({ body: '<UAObject NodeId="ns=1;i=1" BrowseName="1:A & B"/>' });
     const line = text.split("\n").findIndex((one) => one.includes(" & ")) + 1;
-    expect(find(text, "xml.not-well-formed").at).toEqual({ line, column: '<UAObject NodeId="ns=1;i=1" BrowseName="1:A '.length + 1 });
+    expect(find(text, "xml.not-well-formed").at).toEqual({
+      line,
+      column: '<UAObject NodeId="ns=1;i=1" BrowseName="1:A '.length + 1,
+    });
   });
 
   it("is told to end too early when it does", () => {
@@ -122,7 +136,10 @@ describe("XML that is broken", () => {
     ["an external entity", '<!DOCTYPE a [<!ENTITY b SYSTEM "file:///etc/passwd">]>'],
     ["an external definition", '<!DOCTYPE a SYSTEM "http://127.0.0.1:1/a.dtd">'],
   ])("refuses a document type with %s", (_name, doctype) => {
-    const text = file({ body: type("ns=1;i=1", "", "<Description>&b;</Description>") }).replace("<UANodeSet", `${doctype}<UANodeSet`);
+    const text = file({ body: type("ns=1;i=1", "", "<Description>&b;</Description>") }).replace(
+      "<UANodeSet",
+      `${doctype}<UANodeSet`,
+    );
     expect(readNodeSet(text).ok).toBe(false);
     expect(find(text, "xml.doctype").at?.line).toBe(2);
   });
@@ -136,14 +153,18 @@ describe("limits", () => {
   });
 
   it("end a file that is too deep, without growing with it", () => {
-    const text = file({ body: `<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Extensions><Extension>${"<a>".repeat(100_000)}` });
+    const text = file({
+      body: `<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Extensions><Extension>${"<a>".repeat(100_000)}`,
+    });
     expect(find(text, "limit.depth").data?.limit).toBe(200);
   });
 
   it("let 200 levels pass", () => {
     // The root, UAObject, Extensions and Extension are four of them.
     const inner = "<a>".repeat(196) + "</a>".repeat(196);
-    const text = file({ body: `<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Extensions><Extension>${inner}</Extension></Extensions></UAObject>` });
+    const text = file({
+      body: `<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><Extensions><Extension>${inner}</Extension></Extensions></UAObject>`,
+    });
     expect(problemsOf(text)).toEqual([]);
     expect(readNodeSet(text.replace(inner, `<a>${inner}</a>`)).ok).toBe(false);
   });
@@ -192,7 +213,10 @@ describe("encodings", () => {
   });
 
   it("reads declared Latin-1 with a warning", () => {
-    const text = file({ body: type("ns=1;i=1", "", "<Description>Spindel läuft</Description>") }).replace("utf-8", "ISO-8859-1");
+    const text = file({ body: type("ns=1;i=1", "", "<Description>Spindel läuft</Description>") }).replace(
+      "utf-8",
+      "ISO-8859-1",
+    );
     const result = decodeXmlBytes(Buffer.from(text, "latin1"));
     expect(result.ok && result.value).toContain("läuft");
     expect(result.problems[0]?.code).toBe("encoding.declared");
@@ -250,7 +274,11 @@ describe("namespaces and models", () => {
   it.each([
     ["a NodeId", type("ns=9;i=1"), "node-id.namespace-index"],
     ["a BrowseName", '<UAObject NodeId="ns=1;i=1" BrowseName="9:A"/>', "qualified-name.namespace-index"],
-    ["a reference", type("ns=1;i=1", "", '<References><Reference ReferenceType="HasSubtype">ns=9;i=1</Reference></References>'), "node-id.namespace-index"],
+    [
+      "a reference",
+      type("ns=1;i=1", "", '<References><Reference ReferenceType="HasSubtype">ns=9;i=1</Reference></References>'),
+      "node-id.namespace-index",
+    ],
     ["a DataType", '<UAVariable NodeId="ns=1;i=1" BrowseName="1:A" DataType="ns=9;i=1"/>', "node-id.namespace-index"],
     [
       "a value",
@@ -331,8 +359,12 @@ describe("nodes", () => {
   });
 
   it("misses NodeId and BrowseName where they are absent", () => {
-    expect(find(file({ body: '<UAObject BrowseName="1:A"/>' }), "nodeset.attribute-missing").data?.attribute).toBe("NodeId");
-    expect(find(file({ body: '<UAObject NodeId="ns=1;i=1"/>' }), "nodeset.attribute-missing").data?.attribute).toBe("BrowseName");
+    expect(find(file({ body: '<UAObject BrowseName="1:A"/>' }), "nodeset.attribute-missing").data?.attribute).toBe(
+      "NodeId",
+    );
+    expect(find(file({ body: '<UAObject NodeId="ns=1;i=1"/>' }), "nodeset.attribute-missing").data?.attribute).toBe(
+      "BrowseName",
+    );
   });
 
   it("tells types that are their own supertypes", () => {
@@ -363,7 +395,11 @@ describe("nodes", () => {
 
 describe("aliases", () => {
   const reference = (alias: string): string =>
-    type("ns=1;i=1", "", `<References><Reference ReferenceType="${alias}" IsForward="false">i=58</Reference></References>`);
+    type(
+      "ns=1;i=1",
+      "",
+      `<References><Reference ReferenceType="${alias}" IsForward="false">i=58</Reference></References>`,
+    );
 
   it("takes a name of the standard that is not defined, once with a warning", () => {
     const body = `${reference("HasSubtype")}\n${reference("HasSubtype").replace("i=1", "i=2")}`;

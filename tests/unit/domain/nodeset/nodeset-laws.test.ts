@@ -36,20 +36,29 @@ describe("any model", () => {
 
   it("means the same with another order of namespaces", () => {
     fc.assert(
-      fc.property(header, nodes, fc.shuffledSubarray(NAMESPACES, { minLength: NAMESPACES.length }), (head, list, namespaceUris) => {
-        const { xml } = writeNodeSet({ header: { ...head, namespaceUris }, nodes: list });
-        expect(getValue(readNodeSet(xml)).nodes).toEqual(list);
-      }),
+      fc.property(
+        header,
+        nodes,
+        fc.shuffledSubarray(NAMESPACES, { minLength: NAMESPACES.length }),
+        (head, list, namespaceUris) => {
+          const { xml } = writeNodeSet({ header: { ...head, namespaceUris }, nodes: list });
+          expect(getValue(readNodeSet(xml)).nodes).toEqual(list);
+        },
+      ),
       RUNS,
     );
   });
 
   it("has one canonical order, whatever order it had", () => {
     fc.assert(
-      fc.property(header, nodes.chain((list) => fc.tuple(fc.constant(list), fc.shuffledSubarray([...list], { minLength: list.length }))), (head, [list, shuffled]) => {
-        const { xml } = writeNodeSet({ header: head, nodes: list }, { canonicalOrder: true });
-        expect(writeNodeSet({ header: head, nodes: shuffled }, { canonicalOrder: true }).xml).toBe(xml);
-      }),
+      fc.property(
+        header,
+        nodes.chain((list) => fc.tuple(fc.constant(list), fc.shuffledSubarray([...list], { minLength: list.length }))),
+        (head, [list, shuffled]) => {
+          const { xml } = writeNodeSet({ header: head, nodes: list }, { canonicalOrder: true });
+          expect(writeNodeSet({ header: head, nodes: shuffled }, { canonicalOrder: true }).xml).toBe(xml);
+        },
+      ),
       RUNS,
     );
   });

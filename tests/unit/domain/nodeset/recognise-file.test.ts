@@ -11,7 +11,12 @@ describe("recogniseFile", () => {
   it.each([
     ["a NodeSet", NODESET, "nodeset", /NodeSet2/],
     ["one behind a comment", `<?xml version="1.0"?>\n<!-- <html> -->\n${NODESET}`, "nodeset", /NodeSet2/],
-    ["one with a prefix", '<u:UANodeSet xmlns:u="http://opcfoundation.org/UA/2011/03/UANodeSet.xsd"/>', "nodeset", /NodeSet2/],
+    [
+      "one with a prefix",
+      '<u:UANodeSet xmlns:u="http://opcfoundation.org/UA/2011/03/UANodeSet.xsd"/>',
+      "nodeset",
+      /NodeSet2/,
+    ],
     ["changes", '<UANodeSetChanges TransactionId="1"/>', "xml", /changes/],
     ["a device description", '<IODevice xmlns="http://www.io-link.com/IODD/2010/10">', "xml", /IODD/],
     ["an XML schema", '<xs:schema xmlns:xs="http://www.w3.org/2001/XMLSchema">', "xml", /schema/],
