@@ -8,7 +8,7 @@ import { OPCUACertificateManager, OPCUAServer, MessageSecurityMode, SecurityPoli
 import { nodesets } from "node-opcua-nodesets";
 import { afterAll, beforeAll, describe, expect, it, vi } from "vitest";
 import { getValue } from "~/domain/core/result";
-import type { Sample } from "~/domain/live/live-node";
+import type { Sample } from "~/domain/live/sample";
 import { callMethod, writeValue } from "~/opcua/client/act.server";
 import { browseChildren, findPathTo } from "~/opcua/client/browse.server";
 import { EndpointClient } from "~/opcua/client/endpoint-client.server";
@@ -133,6 +133,16 @@ describe("watching", () => {
     });
     // Nothing is left at the server: no session, and with it no subscription.
     await waitFor(() => (supervisor.get("live")?.sessions.length === 0 ? true : undefined));
+  });
+
+  it("tells each of many nodes once, also those that never change", async () => {
+    await withClient(async (client) => {
+      const members = getValue(await browseChildren(client, winch("i=5001"), null)).children.filter((c) => c.nodeClass === "Variable");
+      const seen = new Set<string>();
+      for (const { nodeId, displayName } of members) client.watch(nodeId, () => seen.add(displayName));
+      await waitFor(() => (seen.size === members.length ? true : undefined)).catch(() => undefined);
+      expect([...seen].sort()).toEqual(members.map((member) => member.displayName).sort());
+    });
   });
 
   it("shows a status where a node cannot be watched", async () => {

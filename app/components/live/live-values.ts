@@ -2,7 +2,7 @@
  * The live values of one server as this tab holds them: the newest sample per node, a bounded trend for nodes on the watch
  * strip, and whether the stream runs. Plain code without React, so that one row can be told without drawing the others.
  */
-import type { Sample } from "~/domain/live/live-node";
+import type { Sample } from "~/domain/live/sample";
 import { onConnectionChange, subscribeToTopic } from "../shell/event-stream";
 
 export type LiveValue = {

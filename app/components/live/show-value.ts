@@ -1,4 +1,5 @@
-import type { LiveRange, Sample } from "~/domain/live/live-node";
+import type { LiveRange } from "~/domain/live/live-node";
+import type { Sample } from "~/domain/live/sample";
 import { chooseDecimals, formatNumber } from "~/domain/live/format-live";
 import type { Status } from "../notation/status-badge";
 import type { StreamState } from "./live-values";

@@ -1,6 +1,6 @@
 import { useEffect, useState } from "react";
 import { subscribeToTopic } from "~/components/shell/event-stream";
-import type { Sample } from "~/domain/live/live-node";
+import type { Sample } from "~/domain/live/sample";
 
 /** The newest sample of a Variable while a test server serves it; undefined before the first. */
 export function useLiveValue(testServerId: string | undefined, nodeId: string | null): Sample | undefined {

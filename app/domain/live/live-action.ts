@@ -1,5 +1,5 @@
 /** Acts of Live on a server: what is asked, and what came of it. */
-import type { Sample } from "./live-node";
+import type { Sample } from "./sample";
 
 export type MethodArgument = {
   readonly name: string;

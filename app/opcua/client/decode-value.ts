@@ -1,7 +1,7 @@
 /** Values from the wire → JSON for the event stream and a text for people. */
 import { DataType, type DataValue, type Variant, VariantArrayType } from "node-opcua";
 import { formatRange } from "~/domain/live/format-live";
-import type { Sample, StatusSeverity } from "~/domain/live/live-node";
+import type { Sample, StatusSeverity } from "~/domain/live/sample";
 
 const TEXT_LIMIT = 400;
 const ELEMENTS_SHOWN = 12;

@@ -14,7 +14,7 @@ import {
 } from "node-opcua";
 import { CONNECT_LIMIT, IDLE_LIMIT, PUBLISHING_INTERVAL, REQUEST_LIMIT, type ConnectionState, type EndpointSettings } from "./endpoint-settings";
 import { WatchList } from "./watch-list.server";
-import type { Sample } from "~/domain/live/live-node";
+import type { Sample } from "~/domain/live/sample";
 
 type Connection = { client: OPCUAClient; session: ClientSession; subscription: ClientSubscription | undefined; namespaces: string[] };
 

@@ -3,7 +3,7 @@
  * one publish are reduced to the newest per node before anybody is told, and how many were dropped is counted.
  */
 import { AttributeIds, ClientMonitoredItem, type ClientSession, type ClientSubscription, type DataValue, type NodeId, TimestampsToReturn } from "node-opcua";
-import type { Sample } from "~/domain/live/live-node";
+import type { Sample } from "~/domain/live/sample";
 import { toWireNodeId } from "../node-ids";
 import { decodeSample, type StateTexts } from "./decode-value";
 import { PUBLISHING_INTERVAL, WATCH_LIMIT } from "./endpoint-settings";
