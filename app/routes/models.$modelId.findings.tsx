@@ -3,6 +3,7 @@ import type { Route } from "./+types/models.$modelId.findings";
 import { requireModelForPage } from "~/auth/require-model.server";
 import { FindingsView } from "~/components/findings/findings-view";
 import { mendFindings } from "~/components/findings/mend-findings";
+import { acceptFinding, reopenFinding } from "~/components/model/follow-waivers";
 import { useEditorState, useOpenModel } from "~/components/model/use-model";
 import { Progress } from "~/components/ui/progress";
 
@@ -31,12 +32,15 @@ export default function Findings() {
   return (
     <FindingsView
       findings={found.findings}
+      waived={found.waived}
       ownNodes={space.own.nodes.size}
       tools={{
         space,
         modelId: workspace.model.id,
         mend: mayEdit ? (list) => mendFindings(model, list) : undefined,
         mendBlockedBy: mayEdit ? undefined : "asks for the role engineer or administrator",
+        accept: mayEdit ? (finding, reason) => acceptFinding(workspace.model.id, finding, reason) : undefined,
+        reopen: mayEdit ? (waiverId) => reopenFinding(workspace.model.id, waiverId) : undefined,
       }}
     />
   );

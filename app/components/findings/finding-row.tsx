@@ -11,6 +11,7 @@ import { isProperty } from "~/components/model/member-facts";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { Finding } from "~/domain/checks/finding";
 import { findRule } from "~/domain/checks/registry";
+import { AcceptFinding } from "./accept-finding";
 import { FindingPlace } from "./finding-place";
 
 export type FindingTools = {
@@ -19,6 +20,9 @@ export type FindingTools = {
   /** Mends these in one undo step; absent where the person may not edit. */
   readonly mend: ((findings: readonly Finding[]) => void) | undefined;
   readonly mendBlockedBy: string | undefined;
+  /** Accepts the finding as it is; answers why not, or undefined. Absent where the person may not. */
+  readonly accept: ((finding: Finding, reason: string) => Promise<string | undefined>) | undefined;
+  readonly reopen: ((waiverId: string) => Promise<string | undefined>) | undefined;
 };
 
 function toParentPath(finding: Finding): string {
@@ -147,6 +151,7 @@ function FindingDetail({ finding, tools }: { finding: Finding; tools: FindingToo
           <LinkToNode to={links.register}>In the register</LinkToNode>
           <LinkToNode to={links.sheet}>On the sheet</LinkToNode>
         </p>
+        {tools.accept ? <AcceptFinding finding={finding} accept={tools.accept} /> : null}
       </section>
     </div>
   );

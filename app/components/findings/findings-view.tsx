@@ -1,5 +1,6 @@
 import { ChevronDown, ChevronRight, Search } from "lucide-react";
 import { useMemo, useState } from "react";
+import type { WaivedFinding } from "~/components/model/finding-store";
 import { findingWords, FindingShape } from "~/components/notation/finding-badge";
 import { Button } from "~/components/ui/button";
 import { Empty } from "~/components/ui/empty";
@@ -11,6 +12,7 @@ import type { Finding } from "~/domain/checks/finding";
 import { findRule, RULES } from "~/domain/checks/registry";
 import type { Severity } from "~/domain/core/result";
 import { FindingRow, type FindingTools } from "./finding-row";
+import { WaivedList } from "./waived-list";
 import { getFindingId, groupFindings, matchesText, type FindingGroup, type Grouping } from "./group-findings";
 
 /** Rows of a group that are shown at first: one decision often settles the whole group. */
@@ -18,9 +20,9 @@ const firstRows = 8;
 
 const severities: readonly Severity[] = ["error", "warning", "hint"];
 
-type Props = { findings: readonly Finding[]; tools: FindingTools; ownNodes: number };
+type Props = { findings: readonly Finding[]; waived: readonly WaivedFinding[]; tools: FindingTools; ownNodes: number };
 
-export function FindingsView({ findings, tools, ownNodes }: Props) {
+export function FindingsView({ findings, waived, tools, ownNodes }: Props) {
   const [grouping, setGrouping] = useState<Grouping>("rule");
   const [shown, setShown] = useState<ReadonlySet<Severity>>(new Set(severities));
   const [text, setText] = useState("");
@@ -99,6 +101,7 @@ export function FindingsView({ findings, tools, ownNodes }: Props) {
             ))}
           </ul>
         )}
+        <WaivedList waived={waived} reopen={tools.reopen} />
       </div>
     </main>
   );

@@ -4,6 +4,8 @@ import { findParent } from "~/domain/address-space/browse";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import type { Severity } from "~/domain/core/result";
 import type { Finding } from "~/domain/checks/finding";
+import { applyWaivers } from "~/domain/checks/waivers";
+import type { ShownWaiver } from "~/presenters/waivers.server";
 import { isProperty } from "./member-facts";
 
 /** One badge a row: the worst severity wins, the count tells of more. */
@@ -11,19 +13,25 @@ export type Badge = { readonly severity: Severity; readonly count: number; reado
 
 export type FindingTally = Readonly<Record<Severity, number>>;
 
+export type WaivedFinding = { readonly finding: Finding; readonly waiver: ShownWaiver };
+
 type FindingState = {
+  /** Those that nobody has accepted. */
   readonly findings: readonly Finding[];
+  readonly waived: readonly WaivedFinding[];
   readonly byNode: ReadonlyMap<NodeKey, readonly Finding[]>;
   readonly tally: FindingTally;
   /** False until the checker has answered once. */
   readonly isKnown: boolean;
 };
 
-const NOTHING: FindingState = { findings: [], byNode: new Map(), tally: { error: 0, warning: 0, hint: 0 }, isKnown: false };
+const NOTHING: FindingState = { findings: [], waived: [], byNode: new Map(), tally: { error: 0, warning: 0, hint: 0 }, isKnown: false };
 const WEIGHT: Readonly<Record<Severity, number>> = { error: 0, warning: 1, hint: 2 };
 
 export class FindingStore {
   #state = NOTHING;
+  #checked: { readonly space: AddressSpace; readonly findings: readonly Finding[] } | undefined;
+  #waivers: readonly ShownWaiver[] = [];
   readonly #listeners = new Set<() => void>();
 
   readonly getState = (): FindingState => this.#state;
@@ -33,8 +41,22 @@ export class FindingStore {
     return () => this.#listeners.delete(listener);
   };
 
-  /** A finding at a Property is shown at its owner too, since rows do not list Properties of Variables. */
   set(space: AddressSpace, findings: readonly Finding[]): void {
+    this.#checked = { space, findings };
+    this.#show();
+  }
+
+  /** What the team has accepted; each holds while its node stays as it was. */
+  setWaivers(waivers: readonly ShownWaiver[]): void {
+    this.#waivers = waivers;
+    this.#show();
+  }
+
+  /** A finding at a Property is shown at its owner too, since rows do not list Properties of Variables. */
+  #show(): void {
+    if (!this.#checked) return;
+    const { space } = this.#checked;
+    const { open: findings, waived } = applyWaivers(space, this.#checked.findings, this.#waivers);
     const byNode = new Map<NodeKey, Finding[]>();
     const tally = { error: 0, warning: 0, hint: 0 };
     for (const finding of findings) {
@@ -46,7 +68,7 @@ export class FindingStore {
       if (owner !== undefined) push(byNode, owner, finding);
     }
     for (const list of byNode.values()) list.sort((a, b) => WEIGHT[a.severity] - WEIGHT[b.severity]);
-    this.#state = { findings, byNode, tally, isKnown: true };
+    this.#state = { findings, waived, byNode, tally, isKnown: true };
     for (const listener of [...this.#listeners]) listener();
   }
 }

@@ -12,6 +12,7 @@ import { ModelActions } from "./model-actions";
 import { ModelTransport, parseTransaction } from "./model-transport";
 import { PresenceStore } from "./presence-store";
 import { followFindings } from "./run-checks";
+import { followWaivers } from "./follow-waivers";
 import { listRoots } from "./list-roots";
 import { loadUnits } from "./unit-lookup";
 import { keepUnsaved, takeUnsaved } from "./unsaved-edits";
@@ -61,6 +62,7 @@ export function openModel(workspace: ModelWorkspace, loaded: { space: AddressSpa
   const model: OpenModel = { workspace, editor, view, findings, presence, actions, isReady: true };
   const ends = [
     followFindings(editor, findings),
+    followWaivers(id, findings),
     followTransactions(id, editor),
     presence.follow(id, transport, view),
     keepEdits(id, editor),
