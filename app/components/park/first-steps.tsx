@@ -9,8 +9,11 @@ import type { ParkData } from "./park-data";
 type Step = { title: string; about: string; to: string | undefined; action: string; isDone: boolean };
 
 function toSteps({ models, testServers }: ParkData): Step[] {
-  const types = models.find((model) => model.kind === "types") ?? models[0];
-  const served = models.find((model) => model.kind === "machines") ?? types;
+  const machines = models.find((model) => model.kind === "machines");
+  const ofTypes = models.filter((model) => model.kind === "types");
+  // The type that the machines are made of says more than any other.
+  const types = ofTypes.find((model) => machines?.requires.includes(model.namespaceUri)) ?? ofTypes[0] ?? models[0];
+  const served = machines ?? types;
   const running = testServers.find((server) => server.state === "running");
   return [
     {
