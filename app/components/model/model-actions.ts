@@ -15,6 +15,7 @@ import { setDataType } from "~/domain/editing/commands/set-data-type";
 import { setMethodArguments } from "~/domain/editing/commands/set-method-arguments";
 import { setText, type SetTextIntent } from "~/domain/editing/commands/set-text";
 import { setUnit } from "~/domain/editing/commands/set-unit";
+import { applyConsequences, touchesDeclarations, type Consequence } from "~/domain/instantiation/consequences";
 import { addDeclaredMembers } from "~/domain/instantiation/instantiate";
 import type { EditorStore } from "~/editor/editor-store";
 import { showToast } from "../ui/toast";
@@ -23,6 +24,7 @@ import type { CellChange } from "./cell-change";
 import { toCellStep } from "./cell-steps";
 import { copySubtrees, readClipboard, writeClipboard } from "./copy-nodes";
 import { composeEdit, describe, type EditStep } from "./edit-steps";
+import { offerToFollow } from "./offer-to-follow";
 import { listArguments, type ArgumentFacts, type Direction } from "./method-arguments";
 import { getNodeName } from "./member-facts";
 import { toRenameStep } from "./rename-steps";
@@ -57,7 +59,16 @@ export class ModelActions {
     for (const note of edit.notes) showToast({ tone: "plain", title: note, seconds: 5 });
     if (edit.operations.length === 0) return edit.made;
     const result = this.#editor.dispatch(label, edit.operations);
-    return result.ok ? edit.made : this.#refuse(describe(space, result.problems));
+    if (!result.ok) return this.#refuse(describe(space, result.problems));
+    if (touchesDeclarations(space, edit.operations)) {
+      offerToFollow(space, result.value, (consequences) => this.#follow(consequences));
+    }
+    return edit.made;
+  }
+
+  /** Brings copies in line with what they were made from. */
+  #follow(consequences: readonly Consequence[]): void {
+    this.#run("follow-type", [(space, context) => applyConsequences(space, context, { consequences })]);
   }
 
   #refuse(reasons: readonly string[]): undefined {

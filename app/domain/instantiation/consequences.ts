@@ -7,8 +7,12 @@
  * is left alone. `applyConsequences` makes the edit that follows; the user chooses from the list.
  */
 import type { AddressSpace } from "../address-space/address-space";
-import { findTypeDefinition } from "../address-space/browse";
-import { listInstanceDeclarations, type DeclarationSource } from "../address-space/instance-declarations";
+import { findModellingRule, findTypeDefinition } from "../address-space/browse";
+import {
+  listInstanceDeclarations,
+  listInstanceSources,
+  type DeclarationSource,
+} from "../address-space/instance-declarations";
 import type { Node } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import { isSameQualifiedName, type QualifiedName } from "../address-space/qualified-name";
@@ -16,10 +20,12 @@ import { StandardReferenceType } from "../address-space/standard-ids";
 import type { Result } from "../core/result";
 import { deleteNodesOn } from "../editing/commands/delete-nodes";
 import { EditDraft, type CommandContext, type Edit } from "../editing/edit-draft";
-import type { AttributeName } from "../editing/operation";
+import type { AttributeName, Operation } from "../editing/operation";
 import { InstanceBuilder } from "./instance-builder";
 import { MemberChoice } from "./member-choice";
 import { listMissingMembers, walkInstance } from "./missing-members";
+
+const { HasModellingRule } = StandardReferenceType;
 
 /** `node` is the copy that follows a declaration; `declaration` the one that changed. */
 export type Consequence =
@@ -73,10 +79,13 @@ export function listConsequences(before: AddressSpace, after: AddressSpace): Con
     if (!found.has(id)) found.set(id, consequence);
   };
   const instances: NodeKey[] = [];
+  // An edit of the own model changes own types only; a newer required model may change any.
+  const isSameBelow = before.layers.slice(0, -1).every((layer, i) => layer === after.layers[i]);
   for (const node of after.listOwnNodes()) {
     if (!before.isOwn(node.key)) continue;
-    if (findTypeDefinition(before, node.key) !== undefined) instances.push(node.key);
-    else if (node.nodeClass === "ObjectType" || node.nodeClass === "VariableType")
+    if (findTypeDefinition(before, node.key) !== undefined) {
+      if (!isSameBelow || followsOwnType(before, node.key)) instances.push(node.key);
+    } else if (node.nodeClass === "ObjectType" || node.nodeClass === "VariableType")
       compareOverrides(before, after, node.key, add);
   }
   for (const instance of instances) compareMembers(before, after, instance, add);
@@ -84,6 +93,10 @@ export function listConsequences(before: AddressSpace, after: AddressSpace): Con
   const renamed = withRenamedMembers(after, found.values());
   for (const instance of instances) compareCompleteness(before, renamed, instance, add);
   return [...found.values()];
+}
+
+function followsOwnType(space: AddressSpace, instance: NodeKey): boolean {
+  return listInstanceSources(space, instance).some((source) => space.isOwn(source.key));
 }
 
 function withRenamedMembers(space: AddressSpace, consequences: Iterable<Consequence>): AddressSpace {
@@ -194,11 +207,27 @@ export function applyConsequences(
   }
   for (const [instance, paths] of missing) {
     if (draft.hasFailed) break;
-    const withRules = draft.space.edgesFrom(instance).some((e) => e.type === StandardReferenceType.HasModellingRule);
+    const withRules = draft.space.edgesFrom(instance).some((e) => e.type === HasModellingRule);
     const choice = new MemberChoice(
       paths.filter((path) => listMissingMembers(draft.space, instance).some((m) => m.pathKey === path)),
     );
     new InstanceBuilder(draft, { choice, withRules, methods: "copy" }).complete(instance, false);
   }
   return draft.finish();
+}
+
+/** Whether operations touch types or what stands in them, so that asking for consequences is worth the time. */
+export function touchesDeclarations(before: AddressSpace, operations: readonly Operation[]): boolean {
+  return operations.some((operation) => {
+    if (operation.kind === "setHeader") return false;
+    if (operation.kind === "addNode") return operation.node.references.some((r) => r.type === HasModellingRule);
+    const keys = "key" in operation ? [operation.key] : [operation.source, operation.target];
+    return keys.some((key) => isDeclaration(before, key));
+  });
+}
+
+function isDeclaration(space: AddressSpace, key: NodeKey): boolean {
+  const nodeClass = space.isOwn(key) ? space.getNode(key)?.nodeClass : undefined;
+  if (nodeClass === "ObjectType" || nodeClass === "VariableType") return true;
+  return nodeClass !== undefined && findModellingRule(space, key) !== undefined;
 }
