@@ -152,6 +152,8 @@ export class CheckContext {
 
   /** Keys of other nodes with the NodeId of an own node. */
   listTwins({ key, nodeId }: Node): NodeKey[] {
+    const isForeign = this.#requiredUris.has(nodeId.namespaceUri);
+    if (!isForeign && !hasTwins(this.#space)) return [];
     const text = formatNodeId(nodeId);
     const twins = this.#required.flatMap((layer) => layer.keysByNodeId.get(text) ?? []);
     if (hasTwins(this.#space)) twins.push(...(this.#getTwins().get(text) ?? []));

@@ -15,8 +15,19 @@ export type UnitValue = {
   readonly nameLocale: string;
 };
 
-export function listUnits(value: XmlText | undefined): UnitValue[] {
-  if (!value?.xml.includes("EUInformation")) return [];
+const NO_UNITS: readonly UnitValue[] = [];
+
+/** Values are immutable and several rules ask for the units of each. */
+const unitsOf = new WeakMap<XmlText, readonly UnitValue[]>();
+
+export function listUnits(value: XmlText | undefined): readonly UnitValue[] {
+  if (!value?.xml.includes("EUInformation")) return NO_UNITS;
+  let units = unitsOf.get(value);
+  if (!units) unitsOf.set(value, (units = readUnits(value)));
+  return units;
+}
+
+function readUnits(value: XmlText): UnitValue[] {
   return listBodies(value, "EUInformation").map((body) => ({
     uri: textOf(body, "NamespaceUri"),
     unitId: textOf(body, "UnitId"),
