@@ -28,7 +28,9 @@ export function toFindings(problems: readonly Problem[]): PlacedFinding[] {
   return problems.flatMap((found) => {
     const rule = findRule(RULE_BY_CODE[found.code] ?? "");
     if (!rule) return [];
-    const { line, column, node = "", attribute, path = "" } = found.at ?? {};
+    const { line, column, attribute, path = "" } = found.at ?? {};
+    const named = found.data?.["nodeId"];
+    const node = found.at?.node ?? (typeof named === "string" ? named : "");
     return [
       {
         rule: rule.id,
@@ -38,11 +40,18 @@ export function toFindings(problems: readonly Problem[]): PlacedFinding[] {
         path,
         message: formatProblem(found),
         clause: rule.clause,
-        facts: Object.entries(found.data ?? {}).map(([name, value]) => `${name}: ${String(value)}`),
+        facts: Object.entries(found.data ?? {}).map(([name, value]) => `${toLabel(name)}: ${String(value)}`),
         ...(attribute === undefined ? {} : { attribute }),
         ...(line === undefined ? {} : { line }),
         ...(column === undefined ? {} : { column }),
       },
     ];
   });
+}
+
+/** `firstLine` → `First line`, `nodeId` → `NodeId`. */
+function toLabel(name: string): string {
+  if (name === "nodeId") return "NodeId";
+  const words = name.replace(/[A-Z]/g, (letter) => ` ${letter.toLowerCase()}`);
+  return words.charAt(0).toUpperCase() + words.slice(1);
 }

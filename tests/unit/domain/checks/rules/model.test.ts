@@ -84,7 +84,10 @@ describe("toReport", () => {
       { line: 12, column: 5 },
     );
     const report = toReport([], { file: "press.xml", lines: new Map(), problems: [twice] });
-    expect(report.findings).toMatchObject([{ rule: "R002", severity: "error", line: 12, column: 5 }]);
+    expect(report.findings).toMatchObject([
+      { rule: "R002", severity: "error", nodeId: "nsu=http://example.org/UA/Press/;i=1", line: 12, column: 5 },
+    ]);
+    expect(report.findings[0]?.facts).toContain("First line: 4");
     expect(report.problems).toMatchObject([{ code: "nodeset.duplicate-node-id", line: 12, column: 5 }]);
     expect(report.problems[0]?.message).toContain("i=1");
   });
