@@ -25,7 +25,7 @@ export const modelVersion = z
   .regex(/^\d+\.\d+(\.\d+)?([-+][0-9A-Za-z.-]+)?$/, "Write figures with dots, as 1.0.0");
 
 /** What a new model starts with: nothing, the five groups of a retrofitted machine, or a list of signals. */
-export const modelStarters = ["blank", "retrofit", "signals"] as const;
+const modelStarters = ["blank", "retrofit", "signals"] as const;
 export type ModelStarter = (typeof modelStarters)[number];
 
 export const newModelSchema = z.object({

@@ -18,8 +18,8 @@ const toShortName = (uri: string) =>
     .filter(Boolean)
     .at(-1) ?? uri;
 
-/** The cells of the title block of a model, for the foot of its pages and for the corner of its sheet. */
-export function listTitleCells({ workspace, seq, nodeCount, tally }: ModelTitleFacts): TitleCell[] {
+/** The cells of the title block of a model. */
+function listTitleCells({ workspace, seq, nodeCount, tally }: ModelTitleFacts): TitleCell[] {
   const { model, layers, problems } = workspace;
   const missing = problems.filter((problem) => problem.severity === "error").length;
   return [

@@ -15,18 +15,6 @@ export type LineEnd =
   | "other"
   | "symmetric";
 
-export const lineEndNames: Record<LineEnd, string> = {
-  component: "HasComponent",
-  property: "HasProperty",
-  "type-definition": "HasTypeDefinition",
-  subtype: "HasSubtype, at the supertype",
-  interface: "HasInterface",
-  "event-source": "HasEventSource",
-  hierarchical: "hierarchical, named",
-  other: "other, named",
-  symmetric: "symmetric, named",
-};
-
 /** Line ends with dashes tell themselves from a twin with the same head. */
 export function isDashedLine(end: LineEnd): boolean {
   return end === "interface";

@@ -6,7 +6,7 @@ const days = ["Sun", "Mon", "Tue", "Wed", "Thu", "Fri", "Sat"];
 const never = () => () => undefined;
 
 /** False while the page is the server's, which does not know the reader's time zone. */
-export function useHydrated(): boolean {
+function useHydrated(): boolean {
   return useSyncExternalStore(
     never,
     () => true,

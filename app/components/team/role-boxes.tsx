@@ -1,6 +1,6 @@
 import { roles, type Role } from "~/auth/permissions";
 
-export const roleJobs: Readonly<Record<Role, string>> = {
+const roleJobs: Readonly<Record<Role, string>> = {
   administrator: "everything, and people, roles, tokens of others, audit",
   engineer: "edits models; waives, freezes, releases, delivers",
   integrator: "edits devices, sources, mappings and machines; rolls out",

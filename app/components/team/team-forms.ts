@@ -17,10 +17,10 @@ export const addPersonSchema = z.object({
   roles: held,
 });
 
-export const setRolesSchema = z.object({ intent: z.literal("set-roles"), userId, roles: held });
-export const removePersonSchema = z.object({ intent: z.literal("remove-person"), userId });
-export const setPasswordSchema = z.object({ intent: z.literal("set-password"), userId, password });
-export const createTokenSchema = z.object({
+const setRolesSchema = z.object({ intent: z.literal("set-roles"), userId, roles: held });
+const removePersonSchema = z.object({ intent: z.literal("remove-person"), userId });
+const setPasswordSchema = z.object({ intent: z.literal("set-password"), userId, password });
+const createTokenSchema = z.object({
   intent: z.literal("create-token"),
   name: z.string("Say what it is for").trim().max(100, "At most 100 characters"),
   scope: z.enum(tokenScopes),
@@ -30,7 +30,7 @@ export const createTokenSchema = z.object({
     .min(1, "At least one day")
     .max(366, "At most 366 days"),
 });
-export const revokeTokenSchema = z.object({ intent: z.literal("revoke-token"), tokenId: z.string().max(100) });
+const revokeTokenSchema = z.object({ intent: z.literal("revoke-token"), tokenId: z.string().max(100) });
 
 export const teamSchema = z.discriminatedUnion("intent", [
   addPersonSchema,

@@ -7,7 +7,7 @@ const tones = {
 } as const;
 
 /** First letters of the first and the last word of a name. */
-export function toInitials(name: string): string {
+function toInitials(name: string): string {
   const words = name.trim().split(/\s+/u).filter(Boolean);
   const first = words[0]?.[0] ?? "?";
   const last = words.length > 1 ? (words.at(-1)?.[0] ?? "") : "";
