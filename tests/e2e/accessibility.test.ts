@@ -45,7 +45,11 @@ const screens: readonly Screen[] = [
     path: () => `/models/${ids.braider}/register?node=${spindleSpeed}`,
     ready: (page) => page.getByRole("treegrid", { name: "Members" }),
   },
-  { name: "Findings", path: () => `/models/${ids.braider}/findings`, ready: (page) => page.getByText("No findings") },
+  {
+    name: "Findings",
+    path: () => `/models/${ids.braider}/findings`,
+    ready: (page) => page.getByRole("heading", { name: "Findings", level: 1 }),
+  },
   { name: "About", path: () => `/models/${ids.braider}/about`, ready: (page) => page.getByRole("main") },
   { name: "Test server", path: () => `/models/${ids.hall}/test-server`, ready: (page) => page.getByRole("article") },
   {

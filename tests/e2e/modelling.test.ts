@@ -22,7 +22,8 @@ afterAll(async () => {
   await app?.stop();
 });
 
-const membersOf = (page: Page, card: string) => page.getByRole("listbox", { name: `Members of ${card}` }).getByRole("option");
+const membersOf = (page: Page, card: string) =>
+  page.getByRole("listbox", { name: `Members of ${card}` }).getByRole("option");
 const rowOf = (page: Page, name: RegExp) => page.getByRole("row", { name });
 
 async function say(page: Page, phrase: string): Promise<void> {
@@ -50,7 +51,9 @@ describe("the sheet", () => {
     await say(page, "rope tension N 0..2000");
     await say(page, "bobbin counter");
     await say(page, "reset()");
-    await expect.poll(async () => (await membersOf(page, "WinderType").allInnerTexts()).map((text) => text.split("\n")[0])).toEqual(["RopeTension", "BobbinCounter", "Reset"]);
+    await expect
+      .poll(async () => (await membersOf(page, "WinderType").allInnerTexts()).map((text) => text.split("\n")[0]))
+      .toEqual(["RopeTension", "BobbinCounter", "Reset"]);
     const tension = membersOf(page, "WinderType").first();
     expect(await tension.getAttribute("aria-label")).toMatch(/^RopeTension, Variable, Float in N, cardinality 1/);
   });
@@ -88,7 +91,10 @@ describe("the register", () => {
     const power = rowOf(page, /Active power Variable/);
     await power.getByRole("gridcell", { name: "kW", exact: true }).click();
     await page.keyboard.type("watt");
-    await page.getByRole("option", { name: /4B|watt/ }).first().waitFor();
+    await page
+      .getByRole("option", { name: /4B|watt/ })
+      .first()
+      .waitFor();
     await page.keyboard.press("Enter");
     // UN/CEFACT Recommendation 20: watt is WTT; its id is the code's characters as a number (OPC 10000-8 §5.6.3.4).
     await power.getByRole("gridcell", { name: "W", exact: true }).waitFor();
@@ -101,24 +107,39 @@ describe("the register", () => {
 
   it("takes a block from a spreadsheet as one edit", async () => {
     const { page } = tomas;
-    await rowOf(page, /Voltage Variable/).getByRole("gridcell", { name: "V", exact: true }).click();
+    await rowOf(page, /Voltage Variable/)
+      .getByRole("gridcell", { name: "V", exact: true })
+      .click();
     await page.getByRole("treegrid", { name: "Members" }).evaluate((grid) => {
       const clipboardData = new DataTransfer();
       clipboardData.setData("text/plain", "mV\t0 … 250000\nmA\t0 … 63000");
       grid.dispatchEvent(new ClipboardEvent("paste", { clipboardData, bubbles: true, cancelable: true }));
     });
-    await rowOf(page, /Voltage Variable/).getByRole("gridcell", { name: "0 … 250000" }).waitFor();
-    await rowOf(page, /Current Variable/).getByRole("gridcell", { name: "mA", exact: true }).waitFor();
+    await rowOf(page, /Voltage Variable/)
+      .getByRole("gridcell", { name: "0 … 250000" })
+      .waitFor();
+    await rowOf(page, /Current Variable/)
+      .getByRole("gridcell", { name: "mA", exact: true })
+      .waitFor();
     await page.keyboard.press("Control+z");
-    await rowOf(page, /Voltage Variable/).getByRole("gridcell", { name: "V", exact: true }).waitFor();
-    await rowOf(page, /Current Variable/).getByRole("gridcell", { name: "0 … 63", exact: true }).waitFor();
+    await rowOf(page, /Voltage Variable/)
+      .getByRole("gridcell", { name: "V", exact: true })
+      .waitFor();
+    await rowOf(page, /Current Variable/)
+      .getByRole("gridcell", { name: "0 … 63", exact: true })
+      .waitFor();
   });
 
   it("keeps everything over a reload", async () => {
     const { page } = tomas;
-    await page.getByText(/^Saved/).first().waitFor();
+    await page
+      .getByText(/^Saved/)
+      .first()
+      .waitFor();
     await page.reload();
-    await rowOf(page, /Active power Variable/).getByRole("gridcell", { name: "0 … 15000" }).waitFor();
+    await rowOf(page, /Active power Variable/)
+      .getByRole("gridcell", { name: "0 … 15000" })
+      .waitFor();
     expect(tomas.complaints).toEqual([]);
   });
 });

@@ -19,6 +19,8 @@ export type AnalogMember = MemberBase & {
   readonly dataType: "Float" | "Double";
   readonly unit: string;
   readonly range: readonly [low: number, high: number];
+  /** Says that it can only be read, for a name that lets one expect more. */
+  readonly isReadOnly?: true;
 };
 
 /** A plain value, a BaseDataVariableType. `enumeration` names a DataType of the model or of DI. */
@@ -143,6 +145,7 @@ const process: BraiderGroup = {
       dataType: "Float",
       unit: "MMT",
       range: [0, 250],
+      isReadOnly: true,
     },
     {
       kind: "analog",

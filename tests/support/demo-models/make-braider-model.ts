@@ -114,6 +114,7 @@ function addAnalog(builder: DemoBuilder, group: NodeKey, member: AnalogMember): 
       dataType: StandardDataType[member.dataType],
       unit: getUnit(member.unit),
       range: { low, high },
+      ...(member.isReadOnly ? { accessLevel: 1 } : {}),
     }),
   );
 }
