@@ -8,8 +8,6 @@ export type AddRequest = {
   readonly parent?: NodeKey;
   /** Supertype of a new type, type definition of a new instance. */
   readonly base?: NodeKey;
-  /** Where a drag ended, in the drawing's units. */
-  readonly at?: { readonly x: number; readonly y: number };
 };
 
 /** What each form of the add panel gets; it tells the name of what it added. */

@@ -3,7 +3,7 @@ import { memo } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { isTypeNode, type Node } from "~/domain/address-space/node";
 import { getNodeName, isProperty } from "../model/member-facts";
-import { useBadges } from "../model/use-model";
+import { useBadges, useMatesAmong } from "../model/use-model";
 import { FindingBadge } from "../notation/finding-badge";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
 import { cx } from "../ui/cx";
@@ -29,11 +29,12 @@ type Props = {
 /** One member. Only rows in sight exist, so a row reads its cells when it is drawn. */
 export const RegisterRowView = memo(function RegisterRowView(props: Props) {
   const { space, row, node, index, top, columns, template, isSelected, activeColumn, editing, grid } = props;
+  const mates = useMatesAmong([row.key]);
   const isOwner = node.nodeClass === "Object" || isTypeNode(node);
   return (
     <div
       role="row"
-      className={cx("register-row", isOwner && "is-owner", isTypeNode(node) && "is-type", row.origin !== undefined && "is-inherited", isSelected && "is-selected")}
+      className={cx("register-row", isOwner && "is-owner", isTypeNode(node) && "is-type", row.origin !== undefined && "is-inherited", isSelected && "is-selected", mates.size > 0 && "is-others")}
       style={{ transform: `translateY(${top}px)`, gridTemplateColumns: template }}
       aria-rowindex={index + 2}
       aria-level={row.level}

@@ -39,7 +39,7 @@ function placeAll(scene: Scene): Map<NodeKey, Point> {
   const places = new Map<NodeKey, Point>();
   let y = ORIGIN.y;
   for (const band of bands) {
-    const left = stack(band.left, y, 1, (card) => ORIGIN.x + leftWidth - card.width, places);
+    const left = stack(band.left, y, (card) => ORIGIN.x + leftWidth - card.width, places);
     const right = stackColumns(band.right, y, Math.max(band.axis.height, 420), rightX, places);
     places.set(band.axis.key, { x: axisX, y });
     y = Math.max(y + band.axis.height, left, right) + BAND_GAP;
@@ -98,7 +98,7 @@ function findBand(card: Card, scene: Scene, bands: ReadonlyMap<NodeKey, Band>, o
   return undefined;
 }
 
-function stack(cards: readonly Card[], top: number, _columns: number, xOf: (card: Card) => number, places: Map<NodeKey, Point>): number {
+function stack(cards: readonly Card[], top: number, xOf: (card: Card) => number, places: Map<NodeKey, Point>): number {
   let y = top;
   for (const card of cards) {
     places.set(card.key, { x: xOf(card), y });

@@ -31,13 +31,7 @@ export function getBounds(rects: Iterable<Rect>): Rect | undefined {
   return left === Infinity ? undefined : { x: left, y: top, width: right - left, height: bottom - top };
 }
 
-/** The field of the drawing's frame that holds a point: `7A`. Columns are numbers from the left, rows letters from the top. */
-export function getZone(point: Point, origin: Point): string {
-  const column = Math.floor((point.x - origin.x) / ZONE_WIDTH);
-  const row = Math.floor((point.y - origin.y) / ZONE_HEIGHT);
-  return `${formatZoneColumn(column)}${formatZoneRow(row)}`;
-}
-
+/** Columns of the frame are numbers from the left, rows letters from the top. */
 export function formatZoneColumn(index: number): string {
   return index >= 0 ? String(index + 1) : `−${-index}`;
 }

@@ -23,15 +23,14 @@ export function Stencil({ space, control }: { space: AddressSpace; control: Shee
 
   function add(kind: Kind, at?: { x: number; y: number }): void {
     const under = at ? (findKeyElement(at.x, at.y)?.dataset.key as NodeKey | undefined) : view.getState().selection.at(-1);
-    const place = at ? screenToFlowPosition(at) : undefined;
     if (kind === "Caption") {
-      const corner = place ?? screenToFlowPosition({ x: window.innerWidth / 2 - 160, y: window.innerHeight / 3 });
+      const corner = screenToFlowPosition(at ?? { x: window.innerWidth / 2 - 160, y: window.innerHeight / 3 });
       const caption = { id: `caption-${crypto.randomUUID()}`, text: "Caption", ...corner, width: 320, height: 200 };
       control.changeLayout((old) => ({ ...old, captions: [...old.captions, caption] }));
       return;
     }
     const parent = MEMBERS.includes(kind) ? findMemberOwner(space, under) : undefined;
-    control.add(makeAddRequest(kind, { ...(parent === undefined ? {} : { parent }), ...(place ? { at: place } : {}) }));
+    control.add(makeAddRequest(kind, parent === undefined ? {} : { parent }));
   }
 
   return (
