@@ -140,7 +140,7 @@ describe("watching", () => {
       const members = getValue(await browseChildren(client, winch("i=5001"), null)).children.filter((c) => c.nodeClass === "Variable");
       const seen = new Set<string>();
       for (const { nodeId, displayName } of members) client.watch(nodeId, () => seen.add(displayName));
-      await waitFor(() => (seen.size === members.length ? true : undefined)).catch(() => undefined);
+      await waitFor(() => (seen.size === members.length ? true : undefined), 60_000);
       expect([...seen].sort()).toEqual(members.map((member) => member.displayName).sort());
     });
   });

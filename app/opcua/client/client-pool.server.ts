@@ -7,8 +7,18 @@ import type { EndpointSettings } from "./endpoint-settings";
 function getClients(): Map<string, EndpointClient> {
   return singleton("endpoint-clients", () => {
     onShutdown("endpoint sessions", disposeClients);
+    process.on("unhandledRejection", ignoreCancelled);
     return new Map();
   });
+}
+
+/**
+ * The library reads data type definitions behind a request and lets that work fail by itself when the session closes
+ * meanwhile. That must not end the application; every other rejection still does what it would have done.
+ */
+function ignoreCancelled(reason: unknown): void {
+  if (reason instanceof Error && reason.message.startsWith("Transaction has been canceled")) return;
+  throw reason;
 }
 
 /** The client of an endpoint; a new one when there is none, or when the endpoint's address changed. */

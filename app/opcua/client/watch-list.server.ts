@@ -102,21 +102,32 @@ export class WatchList {
     }
   }
 
+  /** Values are read before anything is monitored: the page fills at once, and a node that cannot be monitored shows its status. */
   async #start(link: Link, batch: readonly Watch[]): Promise<void> {
-    const states = await readStateTexts(link.session, batch.map((watch) => watch.nodeId), link.namespaces);
-    const started = batch.flatMap((watch) => {
-      watch.states = states.get(watch.nodeId);
+    const targets = batch.flatMap((watch) => {
       const wireId = toWireNodeId(watch.nodeId, link.namespaces);
-      // Somebody may have left while the texts were read.
-      return wireId.ok && watch.listeners.size > 0 ? [{ watch, target: { nodeId: wireId.value, attributeId: AttributeIds.Value } }] : [];
+      return wireId.ok ? [{ watch, target: { nodeId: wireId.value, attributeId: AttributeIds.Value } }] : [];
     });
-    for (const { watch, target } of started) watch.item = this.#monitor(link, watch, target);
-    // The first value at once, and a status also where a node cannot be monitored.
-    const values = await link.session.read(started.map(({ target }) => target));
-    started.forEach(({ watch }, i) => {
-      const value = values[i];
-      if (value && !watch.last && watch.listeners.size > 0) this.#receive(watch, value);
-    });
+    if (targets.length === 0) return;
+    const { session } = link;
+    const [states, types] = await Promise.all([
+      readStateTexts(session, batch.map((watch) => watch.nodeId), link.namespaces),
+      session.read(targets.map(({ target }) => ({ ...target, attributeId: AttributeIds.DataType }))),
+    ]);
+    for (const { watch } of targets) watch.states = states.get(watch.nodeId);
+    const plain = targets.filter((_, i) => isBuiltIn(types[i]));
+    const values = plain.length > 0 ? await session.read(plain.map(({ target }) => target)) : [];
+    plain.forEach(({ watch }, i) => this.#receiveFirst(watch, values[i]));
+    // The first structure of a session makes the client read all definitions of the server; nobody else waits for that.
+    for (const { watch, target } of targets.filter((one) => !plain.includes(one))) {
+      void session.read(target).then((value) => this.#receiveFirst(watch, value)).catch(() => undefined);
+    }
+    for (const { watch, target } of targets) if (watch.listeners.size > 0) watch.item = this.#monitor(link, watch, target);
+  }
+
+  /** Somebody may have left meanwhile, and a newer value may have come. */
+  #receiveFirst(watch: Watch, value: DataValue | undefined): void {
+    if (value && watch.listeners.size > 0 && !watch.last) this.#receive(watch, value);
   }
 
   #monitor(link: Link, watch: Watch, target: { nodeId: NodeId; attributeId: AttributeIds }): ClientMonitoredItem {
@@ -146,4 +157,10 @@ export class WatchList {
       for (const listener of watch.listeners) listener(sample);
     }
   }
+}
+
+/** Whether a DataType attribute names a built-in type of namespace 0 other than Structure. */
+function isBuiltIn(value: DataValue | undefined): boolean {
+  const id = value?.value.value as NodeId | null | undefined;
+  return !id || (id.namespace === 0 && typeof id.value === "number" && id.value <= 29 && id.value !== 22 && id.value !== 24);
 }
