@@ -45,7 +45,7 @@ export async function check(command: CheckCommand): Promise<number> {
     extra: folders.value,
     requiredBy: getOwnNamespace(header),
   });
-  problems.push(...layers.problems);
+  problems.push(...layers.problems.map((found) => withPlace(found, content.value)));
   const isComplete = layers.ok && layers.problems.every((found) => found.severity !== "error");
   if (!isComplete) return refuse(problems);
   const checked = checkContent(command, content.value, layers.value, problems, {
@@ -55,6 +55,12 @@ export async function check(command: CheckCommand): Promise<number> {
   const counted = checked.report.findings.some((f) => WEIGHT[f.severity] >= WEIGHT[command.severity ?? "error"]);
   const hasErrors = counted || problems.some((found) => found.severity === "error");
   return print(command, checked, hasErrors ? 1 : 0);
+}
+
+/** A problem of a required model stands where the file names that model, else at the file's own model. */
+function withPlace(found: Problem, { header, modelPlaces }: NodeSetContent): Problem {
+  const at = modelPlaces.get(String(found.data?.modelUri)) ?? modelPlaces.get(getOwnNamespace(header));
+  return found.at || !at ? found : { ...found, at };
 }
 
 function checkContent(

@@ -14,6 +14,7 @@ export type ReadAnswer = {
   readonly pack: string;
   /** Line and column of each node in turn. */
   readonly places: Uint32Array;
+  readonly modelPlaces: NodeSetContent["modelPlaces"];
   readonly isWhole: boolean;
 };
 
@@ -28,7 +29,7 @@ export function packResult(content: NodeSetContent): ReadAnswer {
     places[2 * i] = place?.line ?? 0;
     places[2 * i + 1] = place?.column ?? 0;
   });
-  return { pack: writePack(content), places, isWhole: content.isWhole };
+  return { pack: writePack(content), places, modelPlaces: content.modelPlaces, isWhole: content.isWhole };
 }
 
 export function unpackResult(answer: ReadAnswer): NodeSetContent {
@@ -37,5 +38,5 @@ export function unpackResult(answer: ReadAnswer): NodeSetContent {
   nodes.forEach((node, i) => {
     lines.set(node.key, { line: answer.places[2 * i] ?? 0, column: answer.places[2 * i + 1] ?? 0 });
   });
-  return { header, nodes, lines, isWhole: answer.isWhole };
+  return { header, nodes, lines, modelPlaces: answer.modelPlaces, isWhole: answer.isWhole };
 }

@@ -114,6 +114,7 @@ describe("check", () => {
     const path = write("needs.xml", file(required, ""));
     const missing = await run("check", path);
     expect(missing.code).toBe(2);
+    expect(missing.out).toContain(`${path}:4:`);
     expect(missing.out).toContain(
       `${OWN} requires the model http://merrow.example/base/ (3.1), which is not in the library.`,
     );

@@ -5,6 +5,7 @@ import type { RolePermission, XmlText } from "../address-space/node";
 import { problem, type Problem } from "../core/result";
 import type { IdTable } from "./id-table";
 import type { Attributes } from "./xml/scan-xml";
+import type { Position } from "./xml/source-position";
 
 type PendingRole = { readonly text: string; readonly permissions: number; readonly offset: number };
 
@@ -68,6 +69,17 @@ export class HeaderBuilder {
       serverUris: this.serverUris,
       aliases: new Map([...this.aliases].map(([alias, { text }]) => [alias, text])),
     };
+  }
+
+  /** Where each model, own or required, is named first. */
+  listModelPlaces(at: (offset: number) => Position): ReadonlyMap<string, Position> {
+    const places = new Map<string, Position>();
+    const note = (model: ModelDraft): void => {
+      if (!places.has(model.modelUri)) places.set(model.modelUri, at(model.offset));
+      model.requiredModels.forEach(note);
+    };
+    this.models.forEach(note);
+    return places;
   }
 
   build(ids: IdTable): ModelHeader {

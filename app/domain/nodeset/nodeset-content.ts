@@ -9,6 +9,8 @@ export type NodeSetContent = {
   readonly nodes: readonly Node[];
   /** Where the element of each node starts in the file. */
   readonly lines: ReadonlyMap<NodeKey, Position>;
+  /** Where each model, own or required, is named, by its URI. */
+  readonly modelPlaces: ReadonlyMap<string, Position>;
   /** False when a node, a reference, a role or an alias of the file could not be kept; a problem tells each. */
   readonly isWhole: boolean;
 };

@@ -80,6 +80,7 @@ export class NodeSetReader implements XmlHandler {
     return {
       header: built,
       nodes: this.#nodes,
+      modelPlaces: header.listModelPlaces((offset) => this.#context.at(offset)),
       isWhole: isWhole && !header.hasLosses,
       // Counted when they are asked for: who loads a required model never asks.
       get lines() {
