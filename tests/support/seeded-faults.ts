@@ -87,8 +87,11 @@ class Site {
     return node.references.find((r) => !r.isForward && r.type !== R.HasSubtype)?.target ?? node.key;
   }
 
-  isMember(node: Node): boolean {
-    return this.ruleOf(node.key) !== undefined && this.space.isOwn(this.parentOf(node));
+  /** An instance declaration: with a rule below a type, or below another declaration. */
+  isMember(node: Node, depth = 0): boolean {
+    const parent = this.space.own.nodes.get(this.parentOf(node));
+    if (this.ruleOf(node.key) === undefined || !parent || depth > 20) return false;
+    return parent.nodeClass === "ObjectType" || parent.nodeClass === "VariableType" || this.isMember(parent, depth + 1);
   }
 
   childrenOf(key: NodeKey): Node[] {

@@ -1,7 +1,7 @@
 import { formatQualifiedName } from "../../address-space/qualified-name";
 import type { Node } from "../../address-space/node";
 import type { CheckContext } from "../check-context";
-import { findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
+import { findTypeDefinition, isChainLoaded, isKindOf, isProperty } from "../lookups";
 import { getChildren, getMembers, isNaming, listInterfaces, type Member } from "../members";
 import { clause, type NodeRule } from "../rule";
 
@@ -74,6 +74,8 @@ function isSimilar(child: Node, { node: declared }: Member, ctx: CheckContext): 
   if (child.key === declared.key) return true;
   if (child.nodeClass !== declared.nodeClass) return false;
   if (child.nodeClass === "Method") return true;
+  // A Property of a wrong type is a finding of R035.
+  if (isProperty(ctx, child.key) && isProperty(ctx, declared.key)) return true;
   const wanted = findTypeDefinition(ctx, declared.key);
   const found = findTypeDefinition(ctx, child.key);
   if (wanted === undefined || found === undefined || !isChainLoaded(ctx, found) || !ctx.node(wanted)) return true;
