@@ -50,6 +50,11 @@ const screens: readonly Screen[] = [
     path: () => `/models/${ids.braider}/findings`,
     ready: (page) => page.getByRole("heading", { name: "Findings", level: 1 }),
   },
+  { name: "Types", path: () => `/models/${ids.braider}/types`, ready: (page) => page.getByRole("main") },
+  { name: "Signals", path: () => `/models/${ids.braider}/signals`, ready: (page) => page.getByRole("main") },
+  { name: "Roll-out", path: () => `/models/${ids.hall}/roll-out`, ready: (page) => page.getByRole("main") },
+  { name: "Source text", path: () => `/models/${ids.braider}/source`, ready: (page) => page.getByRole("main") },
+  { name: "Revisions", path: () => `/models/${ids.braider}/revisions`, ready: (page) => page.getByRole("main") },
   { name: "About", path: () => `/models/${ids.braider}/about`, ready: (page) => page.getByRole("main") },
   { name: "Test server", path: () => `/models/${ids.hall}/test-server`, ready: (page) => page.getByRole("article") },
   {
