@@ -5,7 +5,7 @@ export function MachineElevation({ silent }: { silent: boolean }) {
       viewBox="0 0 124 84"
       width={124}
       height={84}
-      className="mx-auto block"
+      className="mx-auto block h-auto max-[1400px]:w-[112px]"
       fill="var(--leaf)"
       stroke={silent ? "var(--ink-3)" : "var(--ink)"}
       strokeWidth={1.25}

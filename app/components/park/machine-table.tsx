@@ -38,7 +38,7 @@ export function MachineTable({ machines, testServers }: Props) {
                   key={machine.key}
                   scope="col"
                   className={cx(
-                    "border-l border-hair px-3 pt-2 pb-2.5 text-left align-top",
+                    "border-l border-hair px-3 max-[1400px]:px-2 pt-2 pb-2.5 text-left align-top",
                     serverOf(machine) ? "bg-paper" : "bg-bench",
                   )}
                 >
