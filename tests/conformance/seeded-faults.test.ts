@@ -10,7 +10,8 @@ import { getValue } from "~/domain/core/result";
 import { readNodeSet } from "~/domain/nodeset/read-nodeset";
 import { makeLargeSpace } from "../support/large-model";
 import { getPublishedLayer, getStandardLayer } from "../support/published-layers";
-import { FAULTS, makeRandom, plantFault } from "../support/seeded-faults";
+import { makeRandom } from "../support/random";
+import { FAULTS, plantFault } from "../support/seeded-faults";
 
 const PLANTED = 300;
 
@@ -33,13 +34,13 @@ function loadModels(): AddressSpace[] {
 type Tally = { planted: number; found: number };
 
 function plantAll(seed: number): Map<string, Tally> {
-  const random = makeRandom(seed);
+  const random = makeRandom(String(seed));
   const runs: CheckRun[] = loadModels().map((space) => startChecks(space));
   const tallies = new Map<string, Tally>();
   let planted = 0;
   for (let i = 0; planted < PLANTED && i < PLANTED * 5; i++) {
     const fault = FAULTS[i % FAULTS.length];
-    const first = random(runs.length);
+    const first = random.below(runs.length);
     // A model without a place for the fault passes it on to the next one.
     const places = runs.map((_, step) => (first + step) % runs.length);
     const [at, seeded] = places.flatMap((index) => {

@@ -12,20 +12,9 @@ import {
 } from "~/domain/address-space/standard-ids";
 import { isSubtypeOf } from "~/domain/address-space/type-hierarchy";
 import type { ChangeKind, ChangeRating } from "~/domain/compare/change";
+import { makeRandom } from "./random";
 
 export type Planted = { readonly kind: ChangeKind; readonly node: string; readonly rating: ChangeRating };
-
-/** A small generator with a seed (mulberry32), so that a failing run can be repeated. */
-export function makeRandom(seed: number): () => number {
-  let state = seed >>> 0;
-  return () => {
-    state = (state + 0x6d2b79f5) >>> 0;
-    let t = state;
-    t = Math.imul(t ^ (t >>> 15), t | 1);
-    t ^= t + Math.imul(t ^ (t >>> 7), t | 61);
-    return ((t ^ (t >>> 14)) >>> 0) / 4294967296;
-  };
-}
 
 type Context = { space: AddressSpace; readonly fresh: () => number; readonly used: Set<NodeKey> };
 type Planter = { readonly name: string; readonly plant: (context: Context, node: Node) => Planted | undefined };
@@ -337,7 +326,7 @@ export function plantChanges(
   count: number,
   seed: number,
 ): { space: AddressSpace; planted: Planted[] } {
-  const random = makeRandom(seed);
+  const random = makeRandom(String(seed));
   let next = 900_000;
   const context: Context = { space: start, fresh: () => next++, used: new Set() };
   const candidates = start.listOwnNodes().map((n) => n.key);
@@ -348,7 +337,7 @@ export function plantChanges(
     if (!planter || exhausted.has(planter)) continue;
     const before = planted.length;
     for (let attempt = 0; attempt < 400; attempt++) {
-      const key = candidates[Math.floor(random() * candidates.length)];
+      const key = candidates[random.below(candidates.length)];
       const node = key === undefined || context.used.has(key) ? undefined : context.space.own.nodes.get(key);
       if (!node || isNearUsed(context, node)) continue;
       const found = planter.plant(context, node);

@@ -16,21 +16,9 @@ import {
 } from "~/domain/address-space/standard-ids";
 import { listSupertypes } from "~/domain/address-space/type-hierarchy";
 import { extensionObject, list, range, scalar, unit } from "~/domain/checks/example-values";
+import type { Random } from "./random";
 
 export type Planted = { readonly rule: string; readonly key: NodeKey | undefined; readonly space: AddressSpace };
-export type Random = (below: number) => number;
-
-/** A small generator of even quality (mulberry32), the same for the same seed everywhere. */
-export function makeRandom(seed: number): Random {
-  let state = seed >>> 0;
-  return (below) => {
-    state = (state + 0x6d2b79f5) >>> 0;
-    let t = Math.imul(state ^ (state >>> 15), 1 | state);
-    t = (t + Math.imul(t ^ (t >>> 7), 61 | t)) ^ t;
-    return ((t ^ (t >>> 14)) >>> 0) % below;
-  };
-}
-
 type Fault = { readonly rule: string; readonly plant: (at: Site) => Planted | undefined };
 
 /** What a fault chooses its place from. */
@@ -47,7 +35,7 @@ class Site {
 
   pick(matches: (node: Node) => boolean): Node | undefined {
     const found = this.space.listOwnNodes().filter(matches);
-    return found.length === 0 ? undefined : found[this.random(found.length)];
+    return found.length === 0 ? undefined : found[this.random.below(found.length)];
   }
 
   /** Changes attributes of a node that matches; the finding must stand at it, or at `at`. */
@@ -143,7 +131,7 @@ export const FAULTS: readonly Fault[] = [
   fault("R006", (s) =>
     s.change(
       (n) => !isProperty(n),
-      (n) => ({ browseName: { ...n.browseName, name: "x".repeat(513 + s.random(50)) } }),
+      (n) => ({ browseName: { ...n.browseName, name: "x".repeat(513 + s.random.below(50)) } }),
     ),
   ),
   fault("R006", (s) =>
@@ -360,7 +348,7 @@ export const FAULTS: readonly Fault[] = [
     ),
   ),
   fault("R125", (s) => changeUnit(s, "https://www.opcfoundation.org/UA/units/un/cefact", 4408652)),
-  fault("R126", (s) => changeUnit(s, undefined, 1000 + s.random(200))),
+  fault("R126", (s) => changeUnit(s, undefined, 1000 + s.random.below(200))),
   fault("R128", (s) =>
     s.change(
       (n) => isVariable(n) && n.dataType === D.Range && n.value !== undefined,

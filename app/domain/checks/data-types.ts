@@ -2,41 +2,14 @@
 import type { DataTypeField } from "../address-space/node";
 import { parseNodeId, standardKey, type NodeKey } from "../address-space/node-id";
 import { StandardDataType as D, StandardReferenceType } from "../address-space/standard-ids";
+import { BUILT_IN_TYPES } from "../nodeset/values/variant";
 import { makeLookup, type CheckContext } from "./check-context";
 import { isChainLoaded, isKindOf, listSupertypes } from "./lookups";
 
 const Decimal = standardKey(50);
 
-const BUILT_IN_NAMES = [
-  "Boolean",
-  "SByte",
-  "Byte",
-  "Int16",
-  "UInt16",
-  "Int32",
-  "UInt32",
-  "Int64",
-  "UInt64",
-  "Float",
-  "Double",
-  "String",
-  "DateTime",
-  "Guid",
-  "ByteString",
-  "XmlElement",
-  "NodeId",
-  "ExpandedNodeId",
-  "StatusCode",
-  "QualifiedName",
-  "LocalizedText",
-  "ExtensionObject",
-  "DataValue",
-  "Variant",
-  "DiagnosticInfo",
-] as const;
-
 /** Built-in types have the numeric ids 1 … 25 in namespace 0, in this order. */
-const BUILT_IN = new Map<NodeKey, string>(BUILT_IN_NAMES.map((name, i) => [standardKey(i + 1), name] as const));
+const BUILT_IN = new Map<NodeKey, string>(BUILT_IN_TYPES.map((name, i) => [standardKey(i + 1), name] as const));
 
 const SIGNED = ["SByte", "Int16", "Int32", "Int64"];
 const UNSIGNED = ["Byte", "UInt16", "UInt32", "UInt64"];
