@@ -12,7 +12,7 @@ import type { Direction } from "../domain/iodd/device-description";
 import { parseHex } from "../domain/mapping/bits";
 import { findConversion } from "../domain/mapping/find-conversion";
 import { MappingRunner } from "../domain/mapping/mapping-runner";
-import { planMapping } from "../domain/mapping/plan-mapping";
+import { frameKey, planMapping } from "../domain/mapping/plan-mapping";
 import type { Sample } from "../domain/mapping/sample";
 import { formatQuality, formatStatus } from "../domain/mapping/status";
 import { resolvePath, type MapCommand } from "./parse-command-line";
@@ -63,7 +63,7 @@ function runFrames(document: MappingDocument, frames: readonly string[]): Result
     const frame = readFrame(document, text);
     if (!frame.ok) return frame;
     const { role, direction, octets } = frame.value;
-    const expected = plan.value.frames.get(`${role}\n${direction}`)?.plan.octets;
+    const expected = plan.value.frames.get(frameKey(role, direction))?.plan.octets;
     if (expected !== undefined && octets.length !== expected) {
       return fail(problem("decode.length", { octets: octets.length, id: role, expected }));
     }

@@ -93,9 +93,3 @@ export function findChild(element: XmlElement | undefined, ...path: readonly str
   for (const name of path) at = at?.children.find((c) => c.name === name);
   return at;
 }
-
-/** Every element below, the element itself first, in document order. */
-export function* walkElements(element: XmlElement): Generator<XmlElement> {
-  yield element;
-  for (const child of element.children) yield* walkElements(child);
-}

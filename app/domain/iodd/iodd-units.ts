@@ -1,4 +1,5 @@
 /** Units of IODDs (OPC 30120 Annex C). */
+import { toUnitId, UNECE_UNITS_URI } from "../units/units";
 import { ioddUnitTable } from "./iodd-unit-table";
 
 /**
@@ -13,7 +14,6 @@ export type IoddUnit = {
   readonly namespaceUri: string;
 };
 
-export const CEFACT_NAMESPACE = "http://www.opcfoundation.org/UA/units/un/cefact";
 export const IOLINK_UNIT_NAMESPACE = "http://opcfoundation.org/UA/IOLink";
 
 let table: Map<number, IoddUnit> | undefined;
@@ -27,9 +27,9 @@ export function findIoddUnit(unitCode: number): IoddUnit | undefined {
 function toEntry(line: string): [number, IoddUnit] {
   const [digits = "", code = "", symbol = ""] = line.split("\t");
   const ioddCode = Number(digits);
-  const unitId = code === "" ? ioddCode : [...code].reduce((id, character) => id * 256 + character.charCodeAt(0), 0);
+  const unitId = code === "" ? ioddCode : toUnitId(code);
   return [
     ioddCode,
-    { ioddCode, code, unitId, symbol, namespaceUri: code === "" ? IOLINK_UNIT_NAMESPACE : CEFACT_NAMESPACE },
+    { ioddCode, code, unitId, symbol, namespaceUri: code === "" ? IOLINK_UNIT_NAMESPACE : UNECE_UNITS_URI },
   ];
 }
