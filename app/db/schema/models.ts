@@ -13,6 +13,17 @@ export type RequiredModelRow = { readonly modelUri: string; readonly version?: s
 /** One required model of a frozen revision: a published pack by its name, or the contents of a blob of our own. */
 export type PinnedModelRow = RequiredModelRow & { readonly kept: "published" | "blob"; readonly hash: string };
 
+/** A model of the team that a model of machines requires, held at one frozen revision. */
+export type PinRow = {
+  readonly modelUri: string;
+  readonly modelId: string;
+  readonly number: number;
+  /** The contents of that revision. */
+  readonly packHash: string;
+  /** Machines that still follow an earlier revision, by the key of their node. */
+  readonly behind: Readonly<Record<string, number>>;
+};
+
 export const model = sqliteTable(
   "model",
   {
@@ -29,6 +40,8 @@ export const model = sqliteTable(
     headSeq: integer("head_seq").notNull().default(0),
     nodeCount: integer("node_count").notNull().default(0),
     requiredModels: text("required_models", { mode: "json" }).$type<readonly RequiredModelRow[]>().notNull(),
+    /** What a model of machines stands on; absent for models of types, which stand on working states. */
+    pins: text("pins", { mode: "json" }).$type<readonly PinRow[]>(),
     createdAt: timestamp("created_at").notNull(),
     createdBy: text("created_by").notNull(),
     updatedAt: timestamp("updated_at").notNull(),
