@@ -45,6 +45,10 @@ export async function removeUnusedBlobs(): Promise<number> {
       union select pack_hash from snapshot
       union select pack_hash from uploaded_node_set
       union select file_hash from uploaded_node_set
+      union select file_hash from device_description
+      union select description_hash from device_description
+      union select file_hash from tag_list where file_hash is not null
+      union select tags_hash from tag_list
     )`);
   return result.rowsAffected;
 }

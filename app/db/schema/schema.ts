@@ -2,5 +2,6 @@
 import * as authTables from "./auth";
 import * as modelTables from "./models";
 import * as operationTables from "./operations";
+import * as sourceTables from "./sources";
 
-export const schema = { ...authTables, ...modelTables, ...operationTables };
+export const schema = { ...authTables, ...modelTables, ...operationTables, ...sourceTables };
