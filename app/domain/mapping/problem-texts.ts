@@ -13,4 +13,11 @@ export const mappingProblemTexts: Readonly<Record<string, string>> = {
   "mapping.no-device": "No device description is attached to the role {role}.",
   "mapping.constant-input": "The input {name} is a constant; write it into the formula.",
   "transform.lookup-order": "The lookup table gives two values for one input.",
+  "frame.empty": "There are no bytes yet.",
+  "frame.text":
+    "These are no bytes: write hexadecimal pairs (04 D2 17 01), decimal octets (4, 210, 23, 1) or a master's answer in JSON.",
+  "frame.octet": "Position {position} holds {value}; an octet is a whole number from 0 to 255.",
+  "frame.answer": "The answer holds no octets: its ioLink member needs a value that is a list of octets.",
+  "frame.answer-direction": "The answer has no {member}.",
+  "frame.too-long": "That is more than {limit} octets.",
 };
