@@ -11,7 +11,7 @@ import { addRevisionStatement, listRevisions, type ModelRow } from "../db/reposi
 import type { PinnedModelRow } from "../db/schema/models";
 import type { Layer } from "../domain/address-space/address-space";
 import { fail, ok, problem, type Result } from "../domain/core/result";
-import { writePack } from "../domain/nodeset/pack";
+import { toPackContent, writePack } from "../domain/nodeset/pack";
 import { newId } from "../utils/ids.server";
 import { checkModel, countFindings } from "./check-model.server";
 import { publish } from "./event-hub.server";
@@ -69,8 +69,7 @@ async function freeze(author: Caller, model: ModelRow, message: string): Promise
 }
 
 function packLayer(layer: Layer): Promise<StoredBlob> {
-  const nodes = [...layer.nodes.values()].sort((a, b) => a.order - b.order);
-  return toBlob(writePack({ header: layer.header, nodes }));
+  return toBlob(writePack(toPackContent(layer)));
 }
 
 /** Published models are kept by the library under their own name; the organisation's may change or go, so they are copied. */

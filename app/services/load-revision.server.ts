@@ -41,7 +41,7 @@ async function loadPackedLayer(hash: string): Promise<Layer> {
   const bytes = await findBlob(hash);
   const content = bytes ? readPack(bytes.toString("utf8")) : undefined;
   if (!content?.ok) throw new Error(`The stored contents ${hash} cannot be read`);
-  return buildLayer(content.value.header, content.value.nodes);
+  return buildLayer(content.value.header, content.value.nodes, content.value.mapping);
 }
 
 /** A published NodeSet may have been replaced by a newer one since; the nearest that is there stands in for it then. */

@@ -1,7 +1,7 @@
 /** The own layer of a model as a compressed pack, as browsers, workers and the test server load it. */
 import { gzip } from "node:zlib";
 import { promisify } from "node:util";
-import { writePack } from "../domain/nodeset/pack";
+import { toPackContent, writePack } from "../domain/nodeset/pack";
 import type { Layer } from "../domain/address-space/address-space";
 import { singleton } from "../utils/singleton.server";
 import { loadOwnLayer } from "./own-layer.server";
@@ -35,7 +35,6 @@ export async function getModelPack(modelId: string, seq?: number): Promise<Model
 }
 
 async function makePack(own: Layer, seq: number): Promise<ModelPack> {
-  const nodes = [...own.nodes.values()].sort((a, b) => a.order - b.order);
-  const text = writePack({ header: own.header, nodes });
+  const text = writePack(toPackContent(own));
   return { seq, gzip: await compress(text, { level: 5 }) };
 }

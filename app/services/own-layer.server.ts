@@ -39,7 +39,7 @@ export async function loadOwnLayer(modelId: string, seq: number): Promise<Layer>
   const content = bytes ? readPack(bytes.toString("utf8")) : undefined;
   if (!content?.ok) throw new Error(`The state ${stored.packHash} of model ${modelId} cannot be read`);
   // Operations of the own layer were accepted once; replaying them needs no required models except to find what they name.
-  let space = AddressSpace.of([], buildLayer(content.value.header, content.value.nodes));
+  let space = AddressSpace.of([], buildLayer(content.value.header, content.value.nodes, content.value.mapping));
   for (let at = stored.seq; at < seq; ) {
     const page = await listTransactions(modelId, at, Math.min(PAGE, seq - at));
     const last = page.at(-1);

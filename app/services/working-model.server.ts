@@ -24,7 +24,7 @@ import { getOwnNamespace } from "../domain/address-space/model-header";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import { applyWithInverse } from "../domain/editing/invert-operation";
 import type { Operation, Transaction } from "../domain/editing/operation";
-import { writePack } from "../domain/nodeset/pack";
+import { toPackContent, writePack } from "../domain/nodeset/pack";
 import { logError } from "../utils/log.server";
 import { singleton } from "../utils/singleton.server";
 import { describeHeader } from "./describe-header.server";
@@ -256,7 +256,7 @@ function givenNodeId(operation: Operation): { namespaceUri: string; identifier: 
 
 /** Stores the own layer as it is now, so that the next load replays little. */
 async function saveSnapshot(modelId: string, space: AddressSpace, seq: number): Promise<void> {
-  const blob = await toBlob(writePack({ header: space.own.header, nodes: space.listOwnNodes() }));
+  const blob = await toBlob(writePack(toPackContent(space.own)));
   await writeBatch([addBlobStatement(blob, new Date()), addSnapshotStatement(modelId, seq, blob.hash)]);
   await pruneSnapshots(modelId);
 }

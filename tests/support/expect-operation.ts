@@ -1,5 +1,6 @@
 import { expect } from "vitest";
 import { buildLayer, type AddressSpace, type Layer } from "~/domain/address-space/address-space";
+import { listMappingEntries } from "~/domain/address-space/mapping-entry";
 import { applyOperation } from "~/domain/editing/apply-operation";
 import { applyWithInverse } from "~/domain/editing/invert-operation";
 import type { Operation } from "~/domain/editing/operation";
@@ -13,6 +14,7 @@ export function snapshotOwn(layer: Layer): unknown {
     ids: new Map(layer.keysByNodeId.entries()),
     outgoing: toPlain(layer.outgoing),
     incoming: toPlain(layer.incoming),
+    mapping: listMappingEntries(layer.mapping),
   };
 }
 
@@ -24,7 +26,7 @@ function toPlain(index: Layer["outgoing"]): Map<string, unknown> {
 
 /** The own layer's indexes are those of a fresh build: no edit leaves a trace in them. */
 export function expectFreshIndexes(space: AddressSpace): void {
-  expect(snapshotOwn(space.own)).toEqual(snapshotOwn(buildLayer(space.own.header, space.listOwnNodes())));
+  expect(snapshotOwn(space.own)).toEqual(snapshotOwn(buildLayer(space.own.header, space.listOwnNodes(), listMappingEntries(space.own.mapping))));
 }
 
 /** An operation passes the schema and JSON unchanged. */

@@ -19,6 +19,7 @@ export const choice: fc.Arbitrary<Choice> = fc.record({
     "addReference",
     "removeReference",
     "setHeader",
+    "setMapping",
   ),
   a: fc.nat(1000),
   b: fc.nat(1000),
@@ -76,6 +77,11 @@ export function makeOperation(space: AddressSpace, choice: Choice, idBase = 0): 
       return choice.flag
         ? { kind: "setHeader", field: "lastModified", value: choice.text }
         : { kind: "setHeader", field: "lastModified" };
+    case "setMapping": {
+      const entry = { part: "binding" as const, owner: pickKey(space, choice.a), id: `role ${choice.b % 3}` };
+      const value = { sourceId: "master", port: 1 + (choice.c % 8) };
+      return { kind: "setMapping", ...entry, ...(choice.flag ? { value } : {}) };
+    }
   }
 }
 

@@ -10,7 +10,7 @@ async function fetchLayer(url: string, signal?: AbortSignal): Promise<{ layer: L
   if (!answer.ok) throw new Error(`The server answered ${answer.status} for ${url}`);
   const pack = readPack(await answer.text());
   if (!pack.ok) throw new Error(`Not a pack: ${url}`);
-  return { layer: buildLayer(pack.value.header, pack.value.nodes), seq: Number(answer.headers.get("x-ferrule-seq") ?? 0) };
+  return { layer: buildLayer(pack.value.header, pack.value.nodes, pack.value.mapping), seq: Number(answer.headers.get("x-ferrule-seq") ?? 0) };
 }
 
 function loadRequiredLayer(url: string): Promise<Layer> {

@@ -11,6 +11,7 @@ import { ShardedMap } from "../core/sharded-map";
 import { formatNodeId, type NodeId, type NodeKey } from "./node-id";
 import { compareRank, isSameEdge, listDistinctEdges, NO_EDGES, type Edge, type EdgeBundle } from "./edge-bundle";
 import { buildEdgeIndex, updateEdgeIndex } from "./edge-index";
+import { makeMappingEntries, toMappingKey, type MappingAddress, type MappingEntries, type MappingEntry } from "./mapping-entry";
 import type { ModelHeader } from "./model-header";
 import type { Node } from "./node";
 
@@ -27,10 +28,12 @@ export type Layer = {
   readonly incoming: ShardedMap<EdgeBundle>;
   /** The order number that the next new node gets. */
   readonly nextOrder: number;
+  /** How machines are fed; absent while nothing is mapped. */
+  readonly mapping?: MappingEntries;
 };
 
 /** Builds a layer in one go. Of two nodes with one key the later wins; the reader reports the pair. */
-export function buildLayer(header: ModelHeader, nodes: readonly Node[]): Layer {
+export function buildLayer(header: ModelHeader, nodes: readonly Node[], mapping: readonly MappingEntry[] = []): Layer {
   const byKey = ShardedMap.from(nodes.map((n) => [n.key, n] as const));
   const ranked = listRanked(nodes.length === byKey.size ? nodes : [...byKey.values()]);
   return {
@@ -39,6 +42,7 @@ export function buildLayer(header: ModelHeader, nodes: readonly Node[]): Layer {
     keysByNodeId: ShardedMap.lazy(() => new Map(ranked.map((n) => [formatNodeId(n.nodeId), n.key]))),
     ...buildEdgeIndex(byKey, ranked),
     nextOrder: (ranked.at(-1)?.order ?? -1) + 1,
+    ...(mapping.length > 0 ? { mapping: makeMappingEntries(mapping) } : {}),
   };
 }
 
@@ -154,6 +158,18 @@ export class AddressSpace {
 
   withHeader(header: ModelHeader): AddressSpace {
     return this.#withOwn({ ...this.own, header }, false);
+  }
+
+  /** Adds or replaces an entry of the own model's mapping. */
+  withMapping(entry: MappingEntry): AddressSpace {
+    const mapping = (this.own.mapping ?? makeMappingEntries([])).with(toMappingKey(entry), entry);
+    return this.#withOwn({ ...this.own, mapping }, false);
+  }
+
+  withoutMapping(address: MappingAddress): AddressSpace {
+    const { mapping, ...rest } = this.own;
+    const left = mapping?.without(toMappingKey(address));
+    return this.#withOwn(left && left.size > 0 ? { ...rest, mapping: left } : rest, false);
   }
 
   /** The same own model on other required models (one was added, or replaced by another version). */

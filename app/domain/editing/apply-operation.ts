@@ -33,6 +33,8 @@ export function applyOperation(space: AddressSpace, operation: Operation): Resul
       return removeReference(space, operation);
     case "setHeader":
       return setHeader(space, operation);
+    case "setMapping":
+      return setMapping(space, operation);
     default:
       return assertNever(operation);
   }
@@ -185,6 +187,13 @@ function setHeader(space: AddressSpace, { field, value }: Of<"setHeader">): Resu
   if (value !== undefined) return ok(space.withHeader({ ...space.own.header, [field]: value }));
   if (field === "models" || field === "namespaceUris") return fail(problem("operation.header-required", { field }));
   return ok(space.withHeader(withoutMember(space.own.header, field) as ModelHeader));
+}
+
+function setMapping(space: AddressSpace, operation: Of<"setMapping">): Result<AddressSpace> {
+  const { part, owner, id, value, isDangling } = operation;
+  if (value === undefined) return ok(space.withoutMapping({ part, owner, id }));
+  const found = requireOwn(space, owner);
+  return found.ok || isDangling ? ok(space.withMapping({ part, owner, id, value })) : found;
 }
 
 function withoutMember(object: object, name: string): object {

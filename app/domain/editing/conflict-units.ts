@@ -1,6 +1,6 @@
 /**
  * What an edit touches. A unit is a text: `attribute␟key␟name`, `reference␟source␟type␟target`, `node␟key`,
- * `id␟NodeId`, `header␟field`. An edit *changes* units and *needs* others to stay: setting an attribute changes the
+ * `id␟NodeId`, `header␟field`, `mapping␟owner␟part␟id`. An edit *changes* units and *needs* others to stay: setting an attribute changes the
  * attribute and needs the node, adding a reference needs both ends. Two edits conflict when one changes what the other
  * changes or needs; two that merely need the same node do not. Removing a node changes the node, so it conflicts with
  * every edit at it, and nobody's work is thrown away unseen.
@@ -39,6 +39,10 @@ export function listConflictUnits(operation: Operation): { changes: string[]; ne
     }
     case "setHeader":
       return { changes: [unit("header", operation.field)], needs: [] };
+    case "setMapping": {
+      const { part, owner, id, value } = operation;
+      return { changes: [unit("mapping", owner, part, id)], needs: value === undefined ? [] : [nodeUnit(owner)] };
+    }
     default:
       return assertNever(operation);
   }
@@ -99,6 +103,8 @@ export function describeUnit(text: string): { kind: string; node?: NodeKey; attr
       return { kind, node: first as NodeKey, attribute: "node" };
     case "id":
       return { kind, node: first as NodeKey, attribute: "nodeId" };
+    case "mapping":
+      return { kind, node: first as NodeKey, attribute: second };
     default:
       return { kind, attribute: first };
   }

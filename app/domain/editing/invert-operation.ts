@@ -4,6 +4,7 @@
  * down to the places of references in their lists. (The next order number is not taken back: a number is used once.)
  */
 import type { AddressSpace, Edge } from "../address-space/address-space";
+import { toMappingKey } from "../address-space/mapping-entry";
 import type { Node } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import { assertNever, fail, ok, type Result } from "../core/result";
@@ -33,9 +34,18 @@ export function invertOperation(space: AddressSpace, operation: Operation): Oper
       const value = space.own.header[operation.field];
       return [{ kind: "setHeader", field: operation.field, ...(value === undefined ? {} : { value }) }];
     }
+    case "setMapping":
+      return [invertSetMapping(space, operation)];
     default:
       return assertNever(operation);
   }
+}
+
+function invertSetMapping(space: AddressSpace, operation: Extract<Operation, { kind: "setMapping" }>): Operation {
+  const { kind, part, owner, id } = operation;
+  const before = space.own.mapping?.get(toMappingKey(operation));
+  if (!before) return { kind, part, owner, id };
+  return { kind, part, owner, id, value: before.value, ...(space.isOwn(owner) ? {} : { isDangling: true }) };
 }
 
 function invertRemoveNode(space: AddressSpace, key: NodeKey): Operation[] {

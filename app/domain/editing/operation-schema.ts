@@ -3,7 +3,9 @@
  * equals `op` for every operation that a command or an inverse makes.
  */
 import { z } from "zod";
+import { mappingParts } from "../address-space/mapping-entry";
 import type { ModelHeader } from "../address-space/model-header";
+import { mappingPartSchemas } from "../mapping/mapping-parts";
 import { attributeSchemas, headerShape, isRequiredAttribute, nodeKeySchema, nodeSchema } from "./node-schema";
 import type { AttributeName, Operation } from "./operation";
 
@@ -28,6 +30,19 @@ const setHeader = z
   .strictObject({ kind: z.literal("setHeader"), field: headerField, value: z.unknown().optional() })
   .superRefine((operation, context) => copyIssues(headerShape[operation.field], operation.value, context));
 
+const setMapping = z
+  .strictObject({
+    kind: z.literal("setMapping"),
+    part: z.enum(mappingParts),
+    owner: nodeKeySchema,
+    id: z.string().min(1).max(10_000),
+    value: z.unknown().optional(),
+    isDangling: z.literal(true).optional(),
+  })
+  .superRefine((operation, context) => {
+    if (operation.value !== undefined) copyIssues(mappingPartSchemas[operation.part], operation.value, context);
+  });
+
 function copyIssues(schema: z.ZodType, value: unknown, context: z.RefinementCtx): void {
   const result = schema.safeParse(value);
   if (result.success) return;
@@ -51,6 +66,7 @@ export const operationSchema: z.ZodType<Operation> = z.discriminatedUnion("kind"
   }),
   z.strictObject({ kind: z.literal("removeReference"), ...edge }),
   setHeader,
+  setMapping,
 ]);
 
 /** The most operations in one transaction: more than the deepest instantiation needs, little enough to answer quickly. */

@@ -3,6 +3,7 @@
  * unit: (node, attribute), (source, type, target), a whole node, or one field of the header. User intents ("add a member",
  * "instantiate", "delete with all below it") are commands that answer a list of operations.
  */
+import type { MappingAddress } from "../address-space/mapping-entry";
 import type { NodeKey } from "../address-space/node-id";
 import type { ModelHeader } from "../address-space/model-header";
 import type { Node } from "../address-space/node";
@@ -84,7 +85,14 @@ export type Operation =
     }
   | { readonly kind: "removeReference"; readonly source: NodeKey; readonly type: NodeKey; readonly target: NodeKey }
   /** Sets one field of the model's header: version, required models, namespace table. */
-  | { readonly kind: "setHeader"; readonly field: keyof ModelHeader; readonly value?: unknown };
+  | { readonly kind: "setHeader"; readonly field: keyof ModelHeader; readonly value?: unknown }
+  /** Sets one entry of the mapping; an absent `value` takes it away. Its owner must be there unless `isDangling`. */
+  | ({ readonly kind: "setMapping"; readonly value?: unknown; readonly isDangling?: true } & MappingAddress);
+
+/** Whether the operations leave nodes and header alone: who may edit mappings need not be allowed to edit models. */
+export function isMappingEdit(operations: readonly Operation[]): boolean {
+  return operations.every((operation) => operation.kind === "setMapping");
+}
 
 /**
  * A transaction: what one user did in one go. Stored as one row; undo is a new transaction made of `inverse`.

@@ -8,7 +8,7 @@ import { z } from "zod";
 /** What a role stands for on every machine. `deviceKey` is vendorId/deviceId where a certain product is meant. */
 export const sourceRoleSchema = z.strictObject({
   role: z.string().min(1).max(100),
-  kind: z.enum(["io-link-device", "modbus-unit", "opc-ua-server", "rest-service"]),
+  kind: z.enum(["io-link-device", "modbus-unit", "opc-ua-server", "rest-service", "tag-server"]),
   vendorId: z.number().int().min(1).max(65_535).optional(),
   deviceId: z.number().int().min(1).max(16_777_215).optional(),
   description: z.string().max(1_000).optional(),
@@ -24,7 +24,7 @@ export const octetOrders = ["ABCD", "CDAB", "BADC", "DCBA"] as const;
 
 const role = z.string().min(1).max(100);
 
-const inputReferenceSchema = z.discriminatedUnion("kind", [
+export const inputReferenceSchema = z.discriminatedUnion("kind", [
   /** A field of process data. `subindex` 0 is the whole of a plain datatype; `image` names one of several layouts. */
   z.strictObject({
     kind: z.literal("process-data"),
@@ -130,13 +130,22 @@ export const qualityRulesSchema = z.strictObject({
   invalid: z.enum(["Bad", "Bad_SensorFailure"]).optional(),
   /** A value beyond EURange stays Good unless this asks for Uncertain_EngineeringUnitsExceeded. */
   beyondRange: z.enum(["Good", "Uncertain_EngineeringUnitsExceeded"]).optional(),
-  /** How many poll periods the last value is kept after the source fell silent. */
+  /** How many poll periods the last value is kept after the source fell silent (3). */
   keepPeriods: z.number().int().min(0).max(1_000).optional(),
+  /** What follows then: no value (Bad_NoCommunication), or the last one for as long as it takes. */
+  afterKeep: z.enum(["Bad_NoCommunication", "Uncertain_NoCommunicationLastUsable"]).optional(),
+  /** A value outside of what the sensor measures: no value, or the sensor's limit with Uncertain_SensorNotAccurate. */
+  outOfRange: z.enum(["Bad_SensorFailure", "Uncertain_SensorNotAccurate"]).optional(),
+  /** A formula one of whose inputs is Bad: no value, or what the others give with Uncertain_SubNormal (averages). */
+  badInput: z.enum(["Bad", "Uncertain_SubNormal"]).optional(),
 });
 
-export const mappingRowSchema = z.strictObject({
-  /** Browse names from the type down to the Variable: `Process/SpindleSpeed`; names with `/` are escaped as `&/`. */
-  target: z.string().min(1).max(5_000),
+/**
+ * A row without its target: as the model keeps it under the target's name. An `out` row goes the other way: the Variable's
+ * value, through the transforms, into an output of the source; it needs limits, beyond which nothing is written.
+ */
+export const rowContentSchema = z.strictObject({
+  direction: z.enum(["in", "out"]).optional(),
   source: sourceReferenceSchema,
   transforms: z.array(transformSchema).max(16),
   quality: qualityRulesSchema.optional(),
@@ -145,6 +154,13 @@ export const mappingRowSchema = z.strictObject({
   /** Milliseconds between readings that the mapping promises. */
   period: z.number().int().min(1).max(86_400_000).optional(),
   comment: z.string().max(2_000).optional(),
+  limits: z.strictObject({ low: z.number(), high: z.number() }).optional(),
+});
+
+export const mappingRowSchema = z.strictObject({
+  /** Browse names from the type down to the Variable: `Process/SpindleSpeed`; names with `/` are escaped as `&/`. */
+  target: z.string().min(1).max(5_000),
+  ...rowContentSchema.shape,
 });
 
 export const mappingSchema = z.strictObject({
@@ -158,5 +174,6 @@ export type SourceReference = z.infer<typeof sourceReferenceSchema>;
 export type InputReference = z.infer<typeof inputReferenceSchema>;
 export type Transform = z.infer<typeof transformSchema>;
 export type QualityRules = z.infer<typeof qualityRulesSchema>;
+export type RowContent = z.infer<typeof rowContentSchema>;
 export type MappingRow = z.infer<typeof mappingRowSchema>;
 export type Mapping = z.infer<typeof mappingSchema>;

@@ -1,5 +1,7 @@
 import { z } from "zod";
+import { assertMay } from "~/auth/caller.server";
 import { requireModel } from "~/auth/require-model.server";
+import { isMappingEdit } from "~/domain/editing/operation";
 import { operationsSchema } from "~/domain/editing/operation-schema";
 import { listModelTransactions } from "~/presenters/model-transactions.server";
 import { appendTransactions } from "~/services/working-model.server";
@@ -30,9 +32,10 @@ export async function loader({ request, params }: Route.LoaderArgs): Promise<Res
 
 /** `POST /models/:modelId/transactions`: 200 accepted · 409 others were quicker · 422 refused. */
 export async function action({ request, params }: Route.ActionArgs): Promise<Response> {
-  const { caller, model } = await requireModel(request, params.modelId, "model.edit");
+  const { caller, model } = await requireModel(request, params.modelId, "mapping.edit");
   requireMethod(request, "POST");
   const intent = await requireJson(request, appendSchema);
+  if (intent.transactions.some((t) => !isMappingEdit(t.operations))) assertMay(caller, "model.edit", model.organizationId);
   const outcome = await appendTransactions(model.id, caller, intent);
   switch (outcome.kind) {
     case "accepted":
