@@ -5,6 +5,7 @@
 import type { Problem } from "./result";
 import { addressSpaceProblemTexts } from "../address-space/problem-texts";
 import { checksProblemTexts } from "../checks/problem-texts";
+import { compareProblemTexts } from "../compare/problem-texts";
 import { deliverProblemTexts } from "../deliver/problem-texts";
 import { editingProblemTexts } from "../editing/problem-texts";
 import { ioddProblemTexts } from "../iodd/problem-texts";
@@ -18,6 +19,7 @@ const texts: Readonly<Record<string, string>> = {
   "limit.file-size": "The file has {size} bytes; the limit is {limit} bytes (50 MB).",
   ...addressSpaceProblemTexts,
   ...checksProblemTexts,
+  ...compareProblemTexts,
   ...nodesetProblemTexts,
   ...deliverProblemTexts,
   ...editingProblemTexts,
