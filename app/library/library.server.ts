@@ -21,6 +21,8 @@ export type ResolveOptions = {
   readonly extra?: readonly LibraryEntry[];
   /** URI of the model that asks: named in problems, and never among the layers itself. */
   readonly requiredBy?: string;
+  /** URIs that are taken from `extra` alone, whatever else is newer. */
+  readonly exact?: ReadonlySet<string>;
 };
 
 type Loaded = { readonly layer: Layer; readonly problems: readonly Problem[] };
@@ -45,7 +47,8 @@ export class Library {
 
   /** Which entries the required models need, in loading order, without loading any. */
   choose(required: readonly ModelEntry[], options: ResolveOptions = {}): Choice {
-    return chooseModels(required, [options.extra ?? [], this.#published], options.requiredBy ?? "The model");
+    const published = this.#published.filter((entry) => !options.exact?.has(entry.modelUri));
+    return chooseModels(required, [options.extra ?? [], published], options.requiredBy ?? "The model");
   }
 
   /**

@@ -17,7 +17,20 @@ export type LayerSummary = {
 
 export type ModelLayers = { readonly layers: readonly LayerSummary[]; readonly problems: readonly ProblemJson[] };
 
+/** A model of the team that this one holds at a frozen revision. */
+export type PinnedSummary = {
+  readonly modelUri: string;
+  readonly modelId: string;
+  readonly modelName: string;
+  readonly number: number;
+  readonly message: string;
+  /** The newest frozen revision, and how many edits the working state has had since. */
+  readonly newest: number;
+  readonly editsSince: number;
+};
+
 export type ModelWorkspace = ModelLayers & {
+  readonly pins: readonly PinnedSummary[];
   readonly model: {
     readonly id: string;
     readonly organizationId: string;
@@ -64,7 +77,11 @@ export function presentLayers(working: WorkingState): ModelLayers {
   };
 }
 
-export async function presentWorkspace(caller: Caller, working: WorkingState): Promise<ModelWorkspace> {
+export async function presentWorkspace(
+  caller: Caller,
+  working: WorkingState,
+  pins: readonly PinnedSummary[],
+): Promise<ModelWorkspace> {
   const { model, seq } = working;
   const sheets = await listSheets(model.id);
   const { id, organizationId, name, kind, namespaceUri, version, publicationDate, nodeCount, updatedBy } = model;
@@ -85,6 +102,15 @@ export async function presentWorkspace(caller: Caller, working: WorkingState): P
       updatedBy,
     },
     ...presentLayers(working),
+    pins: pins.map(({ modelUri, modelId, modelName, number, message, newest, editsSince }) => ({
+      modelUri,
+      modelId,
+      modelName,
+      number,
+      message,
+      newest,
+      editsSince,
+    })),
     workingPackUrl: `/models/${id}/pack?seq=${seq}`,
     sheets: sheets.map((sheet) => ({ id: sheet.id, name: sheet.name, version: sheet.version })),
     permissions: allowed,

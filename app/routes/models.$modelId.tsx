@@ -8,6 +8,7 @@ import { ModelBar, TestServerLink } from "~/components/models/model-bar";
 import { ModelFoot } from "~/components/models/model-foot";
 import type { FrameData } from "~/presenters/frame.server";
 import { presentWorkspace } from "~/presenters/model-workspace.server";
+import { describePins } from "~/services/pins.server";
 import { loadWorkingModel } from "~/services/working-model.server";
 import { failWith } from "~/utils/problem-response.server";
 
@@ -17,7 +18,7 @@ export async function loader({ request, params }: Route.LoaderArgs) {
     throw redirect(`/models/${model.id}/sheet`);
   const working = await loadWorkingModel(model.id);
   if (!working) throw failWith(404, "request.not-found");
-  return presentWorkspace(caller, working);
+  return presentWorkspace(caller, working, await describePins(working.model));
 }
 
 /** The open model lives on between pages; only its About page changes what it was opened with. */

@@ -11,7 +11,6 @@ import { chooseOrganization } from "~/presenters/chosen-organization.server";
 import { readNewModelPage } from "~/presenters/new-model-page.server";
 import { createModel } from "~/services/create-model.server";
 import { listLibraryChoices } from "~/services/list-library-choices.server";
-import { startRetrofit } from "~/services/start-retrofit.server";
 import { newModelSchema as schema } from "~/utils/model-forms";
 
 export const meta: Route.MetaFunction = () => [{ title: "New model · Ferrule" }];
@@ -35,11 +34,13 @@ export async function action({ request }: Route.ActionArgs) {
   if (submission.status !== "success") return data(submission.reply(), { status: 400 });
   const { required, start, ...intent } = submission.value;
   const requiredModels = start === "retrofit" ? [...new Set([...required, ...retrofitRequiredModels])] : required;
-  const result = await createModel(caller, organizationId, { ...intent, requiredModels });
+  const result = await createModel(caller, organizationId, {
+    ...intent,
+    requiredModels,
+    ...(start === "retrofit" ? { retrofitOf: toNamespacePart(intent.name) || "Machine" } : {}),
+  });
   if (!result.ok) return data(submission.reply({ formErrors: result.problems.map(formatProblem) }), { status: 422 });
   if (start === "signals") return redirect(`/models/${result.value.id}/signals`);
-  // A starter that fails leaves a blank model, which its author can fill or delete.
-  if (start === "retrofit") await startRetrofit(caller, result.value, toNamespacePart(intent.name) || "Machine");
   return redirect(`/models/${result.value.id}/sheet`);
 }
 

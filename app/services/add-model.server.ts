@@ -19,6 +19,7 @@ import { writePack } from "../domain/nodeset/pack";
 import { newId } from "../utils/ids.server";
 import { describeHeader } from "./describe-header.server";
 import { publish } from "./event-hub.server";
+import { choosePins } from "./pins.server";
 import { makeSheet } from "./save-sheet.server";
 
 export type NewModel = {
@@ -49,6 +50,7 @@ export async function addModel(author: Caller, organizationId: string, intent: N
     ...describeHeader(content.header),
     headSeq: 0,
     nodeCount: content.nodes.length,
+    pins: kind === "machines" ? await choosePins(organizationId, content.header, []) : null,
     createdAt: now,
     createdBy: author.name,
     updatedAt: now,

@@ -9,6 +9,8 @@ import { setModelInfo, setRequiredModels } from "../domain/editing/commands/set-
 import type { Edit } from "../domain/editing/edit-draft";
 import { newId } from "../utils/ids.server";
 import { toRequiredEntry } from "./create-model.server";
+import { freezeForMachines } from "./freeze-for-machines.server";
+import { choosePins } from "./pins.server";
 import { resolveRequiredModels } from "./required-models.server";
 import { appendTransactions, loadWorkingModel } from "./working-model.server";
 
@@ -30,14 +32,18 @@ export async function changeRequiredModels(
   modelUris: readonly string[],
 ): Promise<Result<null>> {
   const uris = [...new Set([OPC_UA_NAMESPACE, ...modelUris])];
+  const isPinned = model.kind === "machines";
+  if (isPinned) {
+    const frozen = await freezeForMachines(author, model.organizationId, modelUris, model.name);
+    if (!frozen.ok) return frozen;
+  }
   const asked = {
     modelUri: model.namespaceUri,
     requiredModels: uris.map((modelUri) => ({ modelUri, requiredModels: [] })),
   };
-  const { layers, missing } = await resolveRequiredModels(model.organizationId, {
-    namespaceUris: [model.namespaceUri],
-    models: [asked],
-  });
+  const header = { namespaceUris: [model.namespaceUri], models: [asked] };
+  const pins = isPinned ? await choosePins(model.organizationId, header, model.pins ?? []) : null;
+  const { layers, missing } = await resolveRequiredModels(model.organizationId, header, pins);
   if (missing.length > 0) return fail(...missing);
   const requiredModels = uris.flatMap((uri) => layers.filter((layer) => layer.modelUri === uri).map(toRequiredEntry));
   return append(author, model, "set-required-models", (space) =>

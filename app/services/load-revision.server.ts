@@ -1,10 +1,9 @@
 /** Frozen states as address spaces, on the required models that they were frozen on. */
-import { findBlob } from "../db/repositories/blobs.server";
 import { findRevisionByNumber, type ModelRow } from "../db/repositories/models.server";
 import type { PinnedModelRow } from "../db/schema/models";
-import { AddressSpace, buildLayer, type Layer } from "../domain/address-space/address-space";
-import { readPack } from "../domain/nodeset/pack";
+import { AddressSpace, type Layer } from "../domain/address-space/address-space";
 import { getLibrary } from "../library/library.server";
+import { loadPackedLayer } from "./pins.server";
 import { resolveRequiredModels } from "./required-models.server";
 import { loadWorkingModel } from "./working-model.server";
 
@@ -25,7 +24,7 @@ export async function loadState(model: ModelRow, state: StateName): Promise<Addr
   const own = await loadPackedLayer(revision.packHash);
   // Revision 0 pins nothing: it stands on what the model requires, as far as that is there.
   if (!revision.pinned) {
-    const { layers } = await resolveRequiredModels(model.organizationId, own.header);
+    const { layers } = await resolveRequiredModels(model.organizationId, own.header, model.pins);
     return AddressSpace.of(layers.map((l) => l.layer), own);
   }
   return AddressSpace.of(await loadPinned(model.organizationId, own, revision.pinned), own);
@@ -35,13 +34,6 @@ export async function loadState(model: ModelRow, state: StateName): Promise<Addr
 export async function loadRevisionLayer(modelId: string, number: number): Promise<Layer | undefined> {
   const revision = await findRevisionByNumber(modelId, number);
   return revision && loadPackedLayer(revision.packHash);
-}
-
-async function loadPackedLayer(hash: string): Promise<Layer> {
-  const bytes = await findBlob(hash);
-  const content = bytes ? readPack(bytes.toString("utf8")) : undefined;
-  if (!content?.ok) throw new Error(`The stored contents ${hash} cannot be read`);
-  return buildLayer(content.value.header, content.value.nodes, content.value.mapping);
 }
 
 /** A published NodeSet may have been replaced by a newer one since; the nearest that is there stands in for it then. */

@@ -3,20 +3,18 @@
  * works on, the NodeSets that it uploaded, and the published ones. The library chooses; here the organisation's own are
  * described to it and every layer gets the address from which a browser fetches it.
  */
-import { listModels, findModel, type ModelRow } from "../db/repositories/models.server";
-import { findBlob } from "../db/repositories/blobs.server";
+import { listModels, findModel, findRevisionByNumber, type ModelRow } from "../db/repositories/models.server";
 import { listUploads, type UploadRow } from "../db/repositories/uploads.server";
-import type { RequiredModelRow } from "../db/schema/models";
-import { buildLayer, type Layer } from "../domain/address-space/address-space";
+import type { PinRow, RequiredModelRow } from "../db/schema/models";
+import type { Layer } from "../domain/address-space/address-space";
 import { getOwnNamespace, type ModelHeader } from "../domain/address-space/model-header";
 import { OPC_UA_NAMESPACE } from "../domain/address-space/node-id";
 import type { Problem } from "../domain/core/result";
-import { readPack } from "../domain/nodeset/pack";
 import { describeLayer, listRequired } from "../library/describe-nodeset.server";
 import { getLibrary } from "../library/library.server";
 import type { LibraryEntry } from "../library/library-entry";
-import { singleton } from "../utils/singleton.server";
 import { loadNewestLayer } from "./own-layer.server";
+import { loadPackedLayer } from "./pins.server";
 
 export type RequiredLayer = {
   readonly modelUri: string;
@@ -40,14 +38,24 @@ export type RequiredModels = {
 
 type OwnEntry = { readonly entry: LibraryEntry; readonly packUrl: string; readonly from?: RequiredLayer["from"] };
 
-/** What is there is answered also when something is missing, so that the caller may go on with it or refuse. */
-export async function resolveRequiredModels(organizationId: string, header: ModelHeader): Promise<RequiredModels> {
+/**
+ * What is there is answered also when something is missing, so that the caller may go on with it or refuse. A model that
+ * is pinned is taken at that revision, with the models that it was frozen on.
+ */
+export async function resolveRequiredModels(
+  organizationId: string,
+  header: ModelHeader,
+  pins: readonly PinRow[] | null = null,
+): Promise<RequiredModels> {
   const ownUri = getOwnNamespace(header);
   if (ownUri === OPC_UA_NAMESPACE) return { layers: [], missing: [], warnings: [] };
   const required = listRequired(header);
-  const own = await listOwnEntries(organizationId, required, ownUri);
+  const pinned = await listPinnedEntries(pins ?? []);
+  const exact = new Set(pinned.map(({ entry }) => entry.modelUri));
+  const others = await listOwnEntries(organizationId, required, ownUri);
+  const own = [...pinned, ...others.filter(({ entry }) => !exact.has(entry.modelUri))];
   const library = getLibrary();
-  const choice = library.choose(required, { extra: own.map(({ entry }) => entry), requiredBy: ownUri });
+  const choice = library.choose(required, { extra: own.map(({ entry }) => entry), requiredBy: ownUri, exact });
   const problems = [...choice.problems];
   const layers: RequiredLayer[] = [];
   for (const entry of choice.entries) {
@@ -101,21 +109,25 @@ async function fromModel(row: ModelRow): Promise<OwnEntry> {
   return { entry, from, packUrl: `/models/${row.id}/pack?seq=${row.headSeq}` };
 }
 
-const getUploadLayers = () => singleton("upload-layers", () => new Map<string, Promise<Layer>>());
-
 async function fromUpload(row: UploadRow): Promise<OwnEntry> {
-  const layers = getUploadLayers();
-  const loading = layers.get(row.packHash) ?? loadUploadedLayer(row.packHash);
-  layers.set(row.packHash, loading);
-  loading.catch(() => layers.delete(row.packHash));
-  return { entry: describeLayer(await loading, row.fileName, row.fileHash), packUrl: `/packs/${row.packHash}` };
+  return fromPack(row.packHash, row.fileName, row.fileHash);
 }
 
-async function loadUploadedLayer(packHash: string): Promise<Layer> {
-  const bytes = await findBlob(packHash);
-  const content = bytes ? readPack(bytes.toString("utf8")) : undefined;
-  if (!content?.ok) throw new Error(`The pack ${packHash} of the library cannot be read`);
-  return buildLayer(content.value.header, content.value.nodes);
+async function fromPack(packHash: string, file: string, contentId: string): Promise<OwnEntry> {
+  return { entry: describeLayer(await loadPackedLayer(packHash), file, contentId), packUrl: `/packs/${packHash}` };
+}
+
+/** The revisions themselves, then what they were frozen on of the team's own; a direct pin beats an indirect one. */
+async function listPinnedEntries(pins: readonly PinRow[]): Promise<OwnEntry[]> {
+  const entries = new Map<string, OwnEntry>();
+  for (const pin of pins) entries.set(pin.modelUri, await fromPack(pin.packHash, pin.modelUri, pin.packHash));
+  for (const pin of pins) {
+    const revision = await findRevisionByNumber(pin.modelId, pin.number);
+    for (const { modelUri, kept, hash } of revision?.pinned ?? []) {
+      if (kept === "blob" && !entries.has(modelUri)) entries.set(modelUri, await fromPack(hash, modelUri, hash));
+    }
+  }
+  return [...entries.values()];
 }
 
 /** Whether the layers of models of the organisation are still at the state that they were taken from. */

@@ -27,10 +27,15 @@ export const rollOutSchema = z.object({
         name: z.string().trim().min(1).max(200),
         serialNumber: z.string().trim().max(200),
         location: z.string().trim().max(200),
+        optional: z.array(z.string().max(1000)).max(500).optional(),
       }),
     )
     .min(1)
     .max(100),
+  nodeIds: z.discriminatedUnion("kind", [
+    z.object({ kind: z.literal("numbers") }),
+    z.object({ kind: z.literal("path"), pattern: z.string().trim().min(1).max(200), separator: z.enum([".", "/", "_"]) }),
+  ]),
 });
 export type RollOutIntent = z.infer<typeof rollOutSchema>;
 

@@ -19,6 +19,7 @@ import {
   type ModelRow,
 } from "../db/repositories/models.server";
 import { addRetiredStatement, HIGHEST_LEASED_IDENTIFIER, raiseLedgerStatement } from "../db/repositories/node-ids.server";
+import type { PinRow } from "../db/schema/models";
 import { AddressSpace } from "../domain/address-space/address-space";
 import { getOwnNamespace } from "../domain/address-space/model-header";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
@@ -30,6 +31,7 @@ import { singleton } from "../utils/singleton.server";
 import { describeHeader } from "./describe-header.server";
 import { publish } from "./event-hub.server";
 import { forgetNewestLayer, keepNewestLayer, loadNewestLayer } from "./own-layer.server";
+import { choosePins } from "./pins.server";
 import { findGivenTwice, listRetired } from "./retire-node-ids.server";
 import { areLayersCurrent, resolveRequiredModels, type RequiredLayer } from "./required-models.server";
 
@@ -112,7 +114,7 @@ async function loadFromStore(modelId: string): Promise<WorkingModel | undefined>
   const model = await findModel(modelId);
   if (!model) return undefined;
   const own = await loadNewestLayer(model);
-  const required = await resolveRequiredModels(model.organizationId, own.header);
+  const required = await resolveRequiredModels(model.organizationId, own.header, model.pins);
   return {
     model,
     seq: model.headSeq,
@@ -122,7 +124,8 @@ async function loadFromStore(modelId: string): Promise<WorkingModel | undefined>
 }
 
 async function withFreshLayers(working: WorkingModel): Promise<WorkingModel> {
-  const required = await resolveRequiredModels(working.model.organizationId, working.space.own.header);
+  const { organizationId, pins } = working.model;
+  const required = await resolveRequiredModels(organizationId, working.space.own.header, pins);
   return { ...working, ...required, space: working.space.withRequired(required.layers.map((l) => l.layer)) };
 }
 
@@ -131,6 +134,10 @@ export type AppendIntent = {
   readonly clientId: string;
   readonly base: number;
   readonly transactions: readonly NewTransaction[];
+  /** Frozen revisions that the model stands on from now; the operations are meant for them. */
+  readonly pins?: readonly PinRow[];
+  /** The window that asked for it, which loads anew by itself. */
+  readonly window?: string;
 };
 export type AppendOutcome =
   | { readonly kind: "accepted"; readonly head: number; readonly accepted: readonly AcceptedTransaction[] }
@@ -160,11 +167,13 @@ async function append(modelId: string, author: Caller, intent: AppendIntent): Pr
   if (intent.base > working.seq) {
     return { kind: "refused", head: working.seq, accepted, problems: [problem("transactions.ahead", { base: intent.base, head: working.seq })] };
   }
-  const applied = await applyAll(working, author, clientId, fresh);
+  const start = intent.pins ? await withPins(working, intent.pins) : working;
+  const applied = await applyAll(start, author, clientId, fresh);
   if (!applied.ok) return { kind: "refused", head: working.seq, problems: applied.problems, accepted };
   const givenTwice = await findGivenTwice(working.model.organizationId, applied.value.added);
   if (givenTwice.length > 0) return { kind: "refused", head: working.seq, problems: givenTwice, accepted };
   try {
+    if (intent.pins) publish(`model:${modelId}`, { pinned: true, by: intent.window ?? clientId });
     await save(applied.value.working, author, applied.value.added);
   } catch (error) {
     // The database refuses a number that another process has given meanwhile; then we were too late like any other window.
@@ -202,24 +211,32 @@ async function applyAll(start: WorkingModel, author: Caller, clientId: string, f
   return ok({ working, added });
 }
 
+async function withPins(working: WorkingModel, pins: readonly PinRow[]): Promise<WorkingModel> {
+  return withFreshLayers({ ...working, model: { ...working.model, pins } });
+}
+
 /** The models table changed: other required models may lie beneath now, and the own namespace must stay what it is. */
 async function withChangedModels(before: WorkingModel, after: WorkingModel): Promise<Result<WorkingModel>> {
   const { header } = after.space.own;
   if (getOwnNamespace(header) !== before.model.namespaceUri) {
     return fail(problem("model.namespace-fixed", { namespaceUri: before.model.namespaceUri }));
   }
-  const required = await resolveRequiredModels(after.model.organizationId, header);
-  const known = new Set(before.missing.map((p) => String(p.data?.modelUri)));
-  const newlyMissing = required.missing.filter((p) => !known.has(String(p.data?.modelUri)));
+  const { organizationId, kind } = after.model;
+  const known = after.model.pins;
+  const pins = kind === "machines" && known ? await choosePins(organizationId, header, known) : known;
+  const required = await resolveRequiredModels(organizationId, header, pins);
+  const missingBefore = new Set(before.missing.map((p) => String(p.data?.modelUri)));
+  const newlyMissing = required.missing.filter((p) => !missingBefore.has(String(p.data?.modelUri)));
   if (newlyMissing.length > 0) return fail(...newlyMissing);
-  return ok({ ...after, ...required, space: after.space.withRequired(required.layers.map((l) => l.layer)) });
+  const space = after.space.withRequired(required.layers.map((l) => l.layer));
+  return ok({ ...after, ...required, space, model: { ...after.model, pins } });
 }
 
 async function save(working: WorkingModel, author: Caller, added: readonly Transaction[]): Promise<void> {
   const { model, space, seq } = working;
   const now = new Date();
   const topic = `model:${model.id}`;
-  const change = { headSeq: seq, nodeCount: space.own.nodes.size, updatedAt: now, updatedBy: author.name, ...describeHeader(space.own.header) };
+  const change = { headSeq: seq, nodeCount: space.own.nodes.size, updatedAt: now, updatedBy: author.name, pins: model.pins, ...describeHeader(space.own.header) };
   const statements: Statement[] = [updateModelStatement(model.id, change)];
   for (const entry of added) statements.push(addTransactionStatement(model.id, author.userId, entry));
   const highest = findHighestGiven(model.namespaceUri, added);

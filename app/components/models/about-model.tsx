@@ -5,7 +5,7 @@ import { Form, useNavigation } from "react-router";
 import { RequiredModelsField } from "~/components/library/required-models-field";
 import { baseModelUri } from "~/components/library/required-closure";
 import { LocalTime } from "~/components/shell/local-time";
-import { Button, buttonClass } from "~/components/ui/button";
+import { Button, buttonClass, TextLink } from "~/components/ui/button";
 import { Dialog, DialogClose } from "~/components/ui/dialog";
 import { Field, Input } from "~/components/ui/field";
 import { Icon } from "~/components/ui/icon";
@@ -41,6 +41,9 @@ export function AboutModel({ workspace, required, choices, answer, editBlockedBy
         <div className="grid content-start gap-8">
           <Facts model={model} />
           <Block title="Required models">
+            {workspace.pins.map((pin) => (
+              <PinnedNotice key={pin.modelUri} pin={pin} modelId={model.id} />
+            ))}
             {workspace.problems.map((problem) => (
               <Notice key={problem.message} tone={problem.severity === "error" ? "error" : "warning"} className="mb-2">
                 {problem.message}
@@ -111,6 +114,21 @@ export function AboutModel({ workspace, required, choices, answer, editBlockedBy
         </div>
       </div>
     </Page>
+  );
+}
+
+/** Machines stand on a frozen revision; what the types have got since waits until somebody takes it. */
+function PinnedNotice({ pin, modelId }: { pin: ModelWorkspace["pins"][number]; modelId: string }) {
+  const later =
+    pin.newest > pin.number
+      ? `Revision ${pin.newest} is frozen since.`
+      : pin.editsSince > 0
+        ? `It was edited since; freeze a revision there to take what is new.`
+        : "Nothing was changed in it since.";
+  return (
+    <Notice title={`${pin.modelName} is held at revision ${pin.number}: ${pin.message}`} className="mb-2">
+      {later} <TextLink to={`/models/${modelId}/roll-out?take=${pin.newest}`}>Type version of the machines</TextLink>
+    </Notice>
   );
 }
 

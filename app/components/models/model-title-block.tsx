@@ -20,7 +20,11 @@ const toShortName = (uri: string) =>
 
 /** The cells of the title block of a model. */
 function listTitleCells({ workspace, seq, nodeCount, tally }: ModelTitleFacts): TitleCell[] {
-  const { model, layers, problems } = workspace;
+  const { model, layers, pins, problems } = workspace;
+  const nameOf = (uri: string) => {
+    const pin = pins.find((one) => one.modelUri === uri);
+    return pin ? `${toShortName(uri)} r${pin.number}` : uri.endsWith("opcfoundation.org/UA/") ? "UA" : toShortName(uri);
+  };
   const missing = problems.filter((problem) => problem.severity === "error").length;
   return [
     { label: "Model", value: model.name, strong: true },
@@ -45,9 +49,7 @@ function listTitleCells({ workspace, seq, nodeCount, tally }: ModelTitleFacts): 
       value:
         missing > 0
           ? `${missing} required missing`
-          : layers
-              .map((layer) => (layer.modelUri.endsWith("opcfoundation.org/UA/") ? "UA" : toShortName(layer.modelUri)))
-              .join(" · "),
+          : layers.map((layer) => nameOf(layer.modelUri)).join(" · "),
       mono: missing === 0,
     },
   ];

@@ -54,34 +54,3 @@ export function listRowsBetween(rows: readonly RegisterRow[], fromId: string, to
   if (from < 0 || to < 0) return rows.filter((row) => row.id === toId);
   return rows.slice(Math.min(from, to), Math.max(from, to) + 1);
 }
-
-/** Cells of a block as a spreadsheet copies them: rows by line breaks, cells by tabs, quotes around cells that hold either. */
-export function parseBlock(text: string): string[][] {
-  const rows: string[][] = [[]];
-  let cell = "";
-  let isQuoted = false;
-  const endCell = (): void => {
-    rows.at(-1)?.push(cell);
-    cell = "";
-  };
-  for (let i = 0; i < text.length; i++) {
-    const char = text[i];
-    if (isQuoted) {
-      if (char !== '"') cell += char;
-      else if (text[i + 1] === '"') cell += text[++i];
-      else isQuoted = false;
-    } else if (char === '"' && cell === "") isQuoted = true;
-    else if (char === "\t") endCell();
-    else if (char === "\n") {
-      endCell();
-      rows.push([]);
-    } else if (char !== "\r") cell += char;
-  }
-  if (cell !== "" || (rows.at(-1)?.length ?? 0) > 0) endCell();
-  else rows.pop();
-  return rows;
-}
-
-export function formatBlock(rows: readonly (readonly string[])[]): string {
-  return rows.map((row) => row.map((cell) => (/["\t\n]/.test(cell) ? `"${cell.replace(/"/g, '""')}"` : cell)).join("\t")).join("\n");
-}

@@ -3,10 +3,11 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { makeAddRequest, type AddRequest } from "../model/add-request";
 import { findMemberOwner } from "../model/member-owner";
+import { formatBlock, parseBlock } from "../model/cell-block";
 import type { CellChange } from "../model/cell-change";
 import { useOpenModel, useView } from "../model/use-model";
 import { getCellText, getEditText, isEditable, type Column, type ColumnId } from "./columns";
-import { formatBlock, listRowsBetween, moveCell, parseBlock, type GridCell, type Move } from "./grid-state";
+import { listRowsBetween, moveCell, type GridCell, type Move } from "./grid-state";
 import type { RegisterRow } from "./register-rows";
 
 /** A cell in edit: what stood there, or the first key that was pressed on it. */

@@ -1,11 +1,12 @@
 import { useSearchParams } from "react-router";
-import { DifferenceBadge, RatingBadge, type Difference } from "~/components/notation/difference-badge";
+import { DifferenceBadge, RatingBadge } from "~/components/notation/difference-badge";
 import { TextLink } from "~/components/ui/button";
 import { Field, Select } from "~/components/ui/field";
 import { Block } from "~/components/ui/page";
 import { Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
 import type { RevisionJson } from "~/utils/api-schemas";
 import type { Compared } from "./compared";
+import { toDifference } from "./to-difference";
 
 type Change = Compared["changes"][number];
 
@@ -100,11 +101,6 @@ function ChangeRow({ modelId, change }: { modelId: string; change: Change }) {
       </Td>
     </Tr>
   );
-}
-
-function toDifference({ kind }: Change): Difference {
-  if (kind.endsWith("-added")) return "added";
-  return kind.endsWith("-removed") ? "removed" : "changed";
 }
 
 function StateChoice({ revisions, compared }: { revisions: readonly RevisionJson[]; compared: Compared }) {

@@ -1,7 +1,9 @@
 import { Plus, X } from "lucide-react";
-import type { ClipboardEvent } from "react";
+import type { ClipboardEvent, ReactNode } from "react";
 import { Button, IconButton } from "~/components/ui/button";
+import { Popover } from "~/components/ui/popover";
 import { Input } from "~/components/ui/field";
+import { parseBlock } from "~/components/model/cell-block";
 import { Table, Td, Th } from "~/components/ui/table";
 import { proposeNextName, type RollOutRow } from "~/domain/instantiation/roll-out-machines";
 
@@ -9,16 +11,21 @@ const columns = ["name", "serialNumber", "location"] as const;
 const words: Record<(typeof columns)[number], string> = {
   name: "Name",
   serialNumber: "Serial number",
-  location: "Location",
+  location: "Place",
 };
 
 /** One row a machine; a block of cells from a spreadsheet may be pasted into any cell. */
 export function MachineRows({
   rows,
   onChange,
+  common,
+  choiceFor,
 }: {
   rows: readonly RollOutRow[];
   onChange: (rows: readonly RollOutRow[]) => void;
+  /** Optional members that a machine gets without a choice of its own. */
+  common: readonly string[];
+  choiceFor: (row: RollOutRow, onChoose: (optional: readonly string[]) => void) => ReactNode;
 }) {
   function set(index: number, change: Partial<RollOutRow>): void {
     onChange(rows.map((row, i) => (i === index ? { ...row, ...change } : row)));
@@ -27,10 +34,7 @@ export function MachineRows({
     const text = event.clipboardData.getData("text/plain");
     if (!/[\t\n]/.test(text.trim())) return;
     event.preventDefault();
-    const block = text
-      .trimEnd()
-      .split(/\r?\n/)
-      .map((line) => line.split("\t"));
+    const block = parseBlock(text);
     const next = [...rows];
     block.forEach((cells, i) => {
       const row = { ...(next[index + i] ?? { name: "", serialNumber: "", location: "" }) };
@@ -53,6 +57,7 @@ export function MachineRows({
             {columns.map((column) => (
               <Th key={column}>{words[column]}</Th>
             ))}
+            <Th>Optional members</Th>
             <Th className="w-8">
               <span className="sr-only">Remove</span>
             </Th>
@@ -77,6 +82,24 @@ export function MachineRows({
                   />
                 </Td>
               ))}
+              <Td className="whitespace-nowrap">
+                <Popover
+                  label={`Optional members of machine ${index + 1}`}
+                  className="max-h-96 w-80 overflow-y-auto p-3"
+                  trigger={
+                    <Button size="small" tone="bare" aria-label={`Optional members of machine ${index + 1}: ${tellChoice(row, common)}`}>
+                      {tellChoice(row, common)}
+                    </Button>
+                  }
+                >
+                  {choiceFor(row, (optional) => set(index, { optional })) ?? <p className="text-small text-ink-2">Choose the type first.</p>}
+                  {row.optional ? (
+                    <Button size="small" className="mt-2" onClick={() => onChange(rows.map((other, i) => (i === index ? withoutChoice(other) : other)))}>
+                      As the others
+                    </Button>
+                  ) : null}
+                </Popover>
+              </Td>
               <Td right>
                 <IconButton
                   icon={X}
@@ -104,4 +127,13 @@ export function MachineRows({
       </Button>
     </div>
   );
+}
+
+function withoutChoice({ optional: _choice, ...row }: RollOutRow): RollOutRow {
+  return row;
+}
+
+function tellChoice(row: RollOutRow, common: readonly string[]): string {
+  const count = (row.optional ?? common).length;
+  return `${count === 0 ? "none" : count}${row.optional ? ", its own choice" : " as the others"}`;
 }

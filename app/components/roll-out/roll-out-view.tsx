@@ -9,24 +9,26 @@ import { FindingShape, FindingTallyBadge } from "~/components/notation/finding-b
 import { Button } from "~/components/ui/button";
 import { Field, Input, Select } from "~/components/ui/field";
 import { Notice } from "~/components/ui/notice";
-import { Block, Page } from "~/components/ui/page";
+import { Block } from "~/components/ui/page";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { listMachines } from "~/domain/instantiation/list-machines";
 import {
   MACHINES,
   proposeNextName,
+  type NodeIdPolicy,
   type RollOutIntent,
   type RollOutRow,
 } from "~/domain/instantiation/roll-out-machines";
 import { formatCount } from "~/utils/format";
 import { MachineRows } from "./machine-rows";
+import { NodeIdChoice } from "./node-id-choice";
 import { previewRollOut, type RollOutPreview } from "./preview-roll-out";
 
-type Props = { space: AddressSpace; editBlockedBy: string | undefined; refusal: string | undefined };
+type Props = { space: AddressSpace; editBlockedBy: string | undefined };
 
 /** Many machines of one type in one go: a table, a look at what comes of it, one step. */
-export function RollOutView({ space, editBlockedBy, refusal }: Props) {
+export function RollOutView({ space, editBlockedBy }: Props) {
   const machines = listMachines(space);
   const last = machines.at(-1);
   const parents = listParents(space);
@@ -40,8 +42,10 @@ export function RollOutView({ space, editBlockedBy, refusal }: Props) {
   const [rows, setRows] = useState<readonly RollOutRow[]>([
     { name: proposeNextName(last?.name ?? ""), serialNumber: "", location: "" },
   ]);
+  const [nodeIds, setNodeIds] = useState<NodeIdPolicy>({ kind: "numbers" });
   const [preview, setPreview] = useState<RollOutPreview | undefined>(undefined);
-  const intent: RollOutIntent | undefined = type && parent ? { type, parent, optional, manufacturer, rows } : undefined;
+  const intent: RollOutIntent | undefined =
+    type && parent ? { type, parent, optional, manufacturer, rows, nodeIds } : undefined;
   const missing = intent
     ? rows.some((row) => row.name.trim() === "")
       ? "a machine has no name"
@@ -56,11 +60,19 @@ export function RollOutView({ space, editBlockedBy, refusal }: Props) {
       setPreview(undefined);
     };
   return (
-    <Page title="Roll-out" about="Many machines of one type in one go. The type stays as it is.">
       <div className="grid grid-cols-[minmax(0,1fr)_340px] gap-8 max-lg:grid-cols-1">
         <div className="grid content-start gap-6">
           <Block title="Machines" about="cells may be pasted from a spreadsheet">
-            <MachineRows rows={rows} onChange={changing(setRows)} />
+            <MachineRows
+              rows={rows}
+              onChange={changing(setRows)}
+              common={optional}
+              choiceFor={(row, onChoose) =>
+                type && parent ? (
+                  <OptionalMembers space={space} parent={parent} type={type} chosen={row.optional ?? optional} onChoose={onChoose} />
+                ) : null
+              }
+            />
           </Block>
           {type && parent ? (
             <OptionalMembers
@@ -73,7 +85,6 @@ export function RollOutView({ space, editBlockedBy, refusal }: Props) {
           ) : null}
         </div>
         <aside className="grid content-start gap-4 border-t-[1.5px] border-ink pt-3">
-          {refusal ? <Notice tone="error" title={refusal} live /> : null}
           <Field label="Type" hint={type ? <i>{getNodeName(space, type)}</i> : "Search it in the loaded models."}>
             {(tied) => (
               <TypeSearch
@@ -112,6 +123,7 @@ export function RollOutView({ space, editBlockedBy, refusal }: Props) {
               />
             )}
           </Field>
+          <NodeIdChoice policy={nodeIds} onChange={changing(setNodeIds)} example={rows[0]} />
           <Button
             className="justify-self-start"
             blockedBy={missing}
@@ -129,7 +141,6 @@ export function RollOutView({ space, editBlockedBy, refusal }: Props) {
           <p className="text-note text-ink-3">One transaction: all of them are made, or none.</p>
         </aside>
       </div>
-    </Page>
   );
 }
 
@@ -145,6 +156,14 @@ function Preview({ preview, space }: { preview: RollOutPreview; space: AddressSp
   const rules = new Map(preview.findings.map((finding) => [finding.rule, finding.message] as const));
   return (
     <Notice tone={tally.error > 0 ? "error" : "plain"} title={`${formatCount(preview.nodes)} nodes would be made`} live>
+      <p className="mb-1 break-words">
+        {preview.machines.map((machine, i) => (
+          <span key={machine.nodeId}>
+            {i > 0 ? ", " : ""}
+            {machine.name} <span className="font-mono text-note text-ink-3">{machine.nodeId}</span>
+          </span>
+        ))}
+      </p>
       <span className="flex items-center gap-2">
         Findings in them: <FindingTallyBadge tally={tally} showNone />
       </span>

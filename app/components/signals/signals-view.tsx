@@ -11,7 +11,7 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import { isTypeNode } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { addSignals } from "~/domain/editing/starters/add-signals";
-import { readDelimited } from "~/domain/editing/starters/read-delimited";
+import { readCsv } from "~/utils/read-csv";
 import { guessColumns, readSignalList, type ColumnChoice } from "~/domain/editing/starters/read-signal-list";
 import { toNamespacePart } from "../models/propose-namespace";
 import { ColumnMatch } from "./column-match";
@@ -31,7 +31,7 @@ export function SignalsView({ model, space, editBlockedBy }: Props) {
   const [target, setTarget] = useState<string>(newType);
   const [typeName, setTypeName] = useState(`${toNamespacePart(model.workspace.model.name) || "Machine"}Type`);
   const read = useDeferredValue(text);
-  const table = useMemo(() => (read.trim() === "" ? undefined : readDelimited(read)), [read]);
+  const table = useMemo(() => (read.trim() === "" ? undefined : readCsv(read)), [read]);
   const head = table?.ok ? (table.value.rows[0]?.fields ?? []) : [];
   const columns = matched ?? guessColumns(head);
   const list = useMemo(() => (table?.ok ? readSignalList(table.value, columns) : undefined), [table, columns]);

@@ -1,5 +1,5 @@
 /** Models and their working state as rows. Statements for writes are answered, so that a use case writes one batch. */
-import { and, asc, desc, eq, gt, inArray, lte } from "drizzle-orm";
+import { and, asc, desc, eq, gt, inArray, like, lte, or } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import type { Transaction } from "../../domain/editing/operation";
 import { getDatabase } from "../client.server";
@@ -55,6 +55,17 @@ export async function findRevisionByNumber(modelId: string, number: number): Pro
     .from(revision)
     .where(and(eq(revision.modelId, modelId), eq(revision.number, number)));
   return row;
+}
+
+/** Whether a model of the organisation stands on these contents, at once or through what its revision was frozen on. */
+export async function hasPinnedPack(organizationId: string, hash: string): Promise<boolean> {
+  const [row] = await getDatabase()
+    .select({ id: model.id })
+    .from(model)
+    .leftJoin(revision, eq(revision.modelId, model.id))
+    .where(and(eq(model.organizationId, organizationId), or(like(model.pins, `%${hash}%`), like(revision.pinned, `%${hash}%`))))
+    .limit(1);
+  return row !== undefined;
 }
 
 /** The newest stored state at or before `seq`: a snapshot, or revision 0. */

@@ -27,6 +27,7 @@ export const requestProblemTexts: Readonly<Record<string, string>> = {
   "library.entry-exists": "The library has {modelUri} in version {version} already.",
   "library.entry-used": "{names} require this NodeSet; it cannot be taken away.",
   "model.namespace-fixed": "The namespace of a model stays {namespaceUri}; make a new model for another one.",
+  "pin.revision-missing": "There is no revision {number} of these types.",
   "transactions.ahead": "The window believes to be at {base}, but the model is at {head}. Reload it.",
   "transactions.stale": "Others changed the model meanwhile.",
   "sheet.stale": "The sheet was changed in another window meanwhile.",

@@ -32,6 +32,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "type.no-supertype": "{node} is not a type that one can derive from.",
   "type.inverse-name-missing": "{name} needs an inverse name, or to be symmetric (OPC 10000-3 §5.3.2).",
 
+  "roll-out.pattern": "“{pattern}” gives every machine the same NodeId: write {name} or {serial} in it.",
+  "roll-out.node-id-taken": "The NodeId {nodeId} would be given twice. Choose another name or pattern.",
   "instantiate.no-type": "“{type}” is neither an ObjectType nor a VariableType, so it has no instances.",
   "instantiate.abstract": "{type} is abstract: choose one of its subtypes (OPC 10000-3 §6.2.1).",
   "instantiate.interface":

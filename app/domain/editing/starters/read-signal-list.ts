@@ -6,7 +6,7 @@ import type { NodeKey } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { problem, type Problem } from "../../core/result";
 import { listSymbols, listUnits, type Unit } from "../../units/units";
-import type { TextTable } from "./read-delimited";
+import type { TextTable } from "./text-table";
 
 export const signalFields = [
   "name",

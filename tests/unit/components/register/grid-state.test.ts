@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { COLUMNS } from "~/components/register/columns";
-import { formatBlock, listRowsBetween, moveCell, parseBlock } from "~/components/register/grid-state";
+import { formatBlock, parseBlock } from "~/components/model/cell-block";
+import { listRowsBetween, moveCell } from "~/components/register/grid-state";
 import type { RegisterRow } from "~/components/register/register-rows";
 import type { NodeKey } from "~/domain/address-space/node-id";
 

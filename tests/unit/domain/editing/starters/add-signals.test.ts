@@ -6,7 +6,7 @@ import { getValue } from "~/domain/core/result";
 import { BlockAllocator } from "~/domain/editing/allocate-node-id";
 import { applyOperations } from "~/domain/editing/apply-operation";
 import { addSignals } from "~/domain/editing/starters/add-signals";
-import { readDelimited } from "~/domain/editing/starters/read-delimited";
+import { readCsv } from "~/utils/read-csv";
 import { guessColumns, readSignalList } from "~/domain/editing/starters/read-signal-list";
 import { buildModel } from "../../../../support/model-builder";
 
@@ -17,7 +17,7 @@ Process,Level,REAL,,0,100
 ,Running,BOOL,,,`;
 
 function readSignals() {
-  const table = getValue(readDelimited(list));
+  const table = getValue(readCsv(list));
   return readSignalList(table, guessColumns(table.rows[0]?.fields ?? [])).signals;
 }
 

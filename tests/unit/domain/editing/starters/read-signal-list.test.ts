@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { StandardDataType as D } from "~/domain/address-space/standard-ids";
 import { getValue } from "~/domain/core/result";
-import { readDelimited } from "~/domain/editing/starters/read-delimited";
+import { readCsv } from "~/utils/read-csv";
 import {
   guessColumns,
   readSignalList,
@@ -10,7 +10,7 @@ import {
 } from "~/domain/editing/starters/read-signal-list";
 
 function read(text: string): SignalList {
-  const table = getValue(readDelimited(text));
+  const table = getValue(readCsv(text));
   return readSignalList(table, guessColumns(table.rows[0]?.fields ?? []));
 }
 

@@ -1,12 +1,12 @@
 import { describe, expect, it } from "vitest";
-import { readDelimited } from "~/domain/editing/starters/read-delimited";
+import { readCsv } from "~/utils/read-csv";
 
 function rowsOf(text: string): (readonly string[])[] {
-  const table = readDelimited(text);
+  const table = readCsv(text);
   return table.ok ? table.value.rows.map((row) => row.fields) : [];
 }
 
-describe("readDelimited", () => {
+describe("readCsv", () => {
   it.each([
     ["comma", "a,b\n1,2"],
     ["semicolon", "a;b\r\n1;2\r\n"],
@@ -26,17 +26,17 @@ describe("readDelimited", () => {
   });
 
   it("leaves out empty rows and tells the line on which a row starts", () => {
-    const table = readDelimited("a,b\n\n\n1,2\n");
+    const table = readCsv("a,b\n\n\n1,2\n");
     expect(table.ok && table.value.rows.map((row) => row.line)).toEqual([1, 4]);
   });
 
   it("names the line of a quotation mark that is never closed", () => {
-    const table = readDelimited('a,b\n1,"2');
+    const table = readCsv('a,b\n1,"2');
     expect(!table.ok && table.problems[0]).toMatchObject({ code: "signal-list.open-quote", at: { line: 2 } });
   });
 
   it("refuses an empty and an endless list", () => {
-    expect(readDelimited(" \n ").ok).toBe(false);
-    expect(readDelimited("a\n".repeat(6000)).ok).toBe(false);
+    expect(readCsv(" \n ").ok).toBe(false);
+    expect(readCsv("a\n".repeat(6000)).ok).toBe(false);
   });
 });
