@@ -8,7 +8,14 @@ import { readNodeSet } from "~/domain/nodeset/read-nodeset";
 import { readPack, writePack } from "~/domain/nodeset/pack";
 import { writeNodeSet } from "~/domain/nodeset/write-nodeset";
 import { validateXsd } from "~/library/validate-xsd.server";
+import { AddressSpace, buildLayer } from "~/domain/address-space/address-space";
+import type { NodeKey } from "~/domain/address-space/node-id";
+import { applyOperations } from "~/domain/editing/apply-operation";
+import { applyWithInverse } from "~/domain/editing/invert-operation";
+import type { Operation } from "~/domain/editing/operation";
+import { operationsSchema } from "~/domain/editing/operation-schema";
 import { describeNodeSetTree, listHeadComments } from "../support/describe-nodeset-tree";
+import { getPublishedLayer } from "../support/published-layers";
 
 function load(name: string): string {
   return readFileSync(new URL(`../fixtures/nodesets/${name}.NodeSet2.xml`, import.meta.url), "utf8");
@@ -20,7 +27,7 @@ function nodeNamed(content: NodeSetContent, name: string): Node {
   return node;
 }
 
-describe.each(["rare", "strange"])("the %s file", (name) => {
+describe.each(["rare", "strange", "cluttered"])("the %s file", (name) => {
   const text = load(name);
   const content = getValue(readNodeSet(text));
   const { xml } = writeNodeSet(content);
@@ -101,6 +108,62 @@ describe("the strange file", () => {
     const content = getValue(result);
     expect(content.isWhole).toBe(true);
     expect(nodeNamed(content, "Own").key).toBe("nsu=http://merrow.example/strange/;i=1");
+  });
+});
+
+describe("the cluttered file", () => {
+  const text = load("cluttered");
+  const content = getValue(readNodeSet(text));
+  const required = getPublishedLayer("Opc.Ua.NodeSet2.xml");
+
+  it("loses nothing and says nothing", () => {
+    expect(content.isWhole).toBe(true);
+    expect(readNodeSet(text).problems).toEqual([]);
+    const count = (xml: string, what: RegExp): number => xml.match(what)?.length ?? 0;
+    const { xml } = writeNodeSet(content);
+    for (const what of [/<!--/g, / x:\w+="/g, /<x:\w+/g, /<\?keeper/g, /stray text &amp; more/g]) {
+      expect(count(xml, what)).toBe(count(text, what));
+    }
+  });
+
+  it("gives the same bytes after an edit was undone, and after a node was deleted and came back", () => {
+    const space = AddressSpace.of([required], buildLayer(content.header, content.nodes));
+    const owner = nodeNamed(content, "Owner");
+    const rename: Operation = { kind: "setAttribute", key: owner.key, attribute: "displayName", value: [{ text: "New" }] };
+    const speed: Operation = { kind: "removeNode", key: nodeNamed(content, "Speed").key };
+    const edited = getValue(applyWithInverse(space, [rename, speed]));
+    const back = getValue(applyOperations(edited.space, operationsSchema.parse(edited.inverse)));
+    expect(writeNodeSet({ header: back.own.header, nodes: back.listOwnNodes() }).xml).toBe(writeNodeSet(content).xml);
+  });
+
+  it("keeps comments at their references when others go", () => {
+    const space = AddressSpace.of([required], buildLayer(content.header, content.nodes));
+    const [owner, method] = [nodeNamed(content, "Owner").key, nodeNamed(content, "Do").key];
+    const remove: Operation = { kind: "removeReference", source: owner, type: "i=47" as NodeKey, target: method };
+    const edited = getValue(applyOperations(space, [remove]));
+    const { xml } = writeNodeSet({ header: edited.own.header, nodes: edited.listOwnNodes() });
+    expect(xml).toContain('<!-- its type -->\n      <Reference ReferenceType="HasTypeDefinition" x:why="because">');
+    expect(xml).not.toContain("<!-- once more -->");
+  });
+
+  it.each([
+    [' x:own="true"', ""],
+    ['x:voice="tenor"', 'x:voice="alt"'],
+    ["<!-- once more -->", ""],
+    ["<!-- BaseObjectType -->", ""],
+    ["<!-- behind the file -->", ""],
+    ["<!-- end of the file -->", ""],
+    ["<!-- the other one -->", ""],
+    ["free for all", "free for some"],
+    ["<x:NoRole />", ""],
+    ['x:table="aliases"', ""],
+    ['x:page="7"', 'x:page="8"'],
+    ["<x:Emphasis>much</x:Emphasis>", ""],
+    ["stray text", "text"],
+    ["<!-- metres -->", ""],
+  ])("is not called the same by the comparer when %j becomes %j", (before, after) => {
+    expect(text).toContain(before);
+    expect(describeNodeSetTree(text.replace(before, after))).not.toEqual(describeNodeSetTree(text));
   });
 });
 

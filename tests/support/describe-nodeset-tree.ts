@@ -1,9 +1,10 @@
 /**
  * What a NodeSet2 file says, by a slow and obvious second way: the DOM of libxml2, no table of attributes, no classes.
  * Two files that say the same give equal descriptions, whatever their prefixes, the order of their namespaces, of their
- * nodes or of references at a node. It shares no code with the reader and must stay so.
+ * nodes or of references at a node. Comments and stray text count, each with the element that follows it. It shares no
+ * code with the reader and must stay so.
  */
-import { XmlDocument, XmlElement } from "libxml2-wasm";
+import { XmlCData, XmlComment, XmlDocument, XmlElement, XmlText } from "libxml2-wasm";
 
 const NODESET = "http://opcfoundation.org/UA/2011/03/UANodeSet.xsd";
 const TYPES = "http://opcfoundation.org/UA/2008/02/Types.xsd";
@@ -20,33 +21,57 @@ export type NodeSetDescription = {
 type Tables = { readonly uris: readonly string[]; readonly aliases: ReadonlyMap<string, string> };
 
 export function describeNodeSetTree(xml: Uint8Array | string): NodeSetDescription {
-  const document = typeof xml === "string" ? XmlDocument.fromString(xml) : XmlDocument.fromBuffer(xml);
+  const text = typeof xml === "string" ? xml : decode(xml);
+  // libxml2-wasm does not show processing instructions; as comments they are seen.
+  const document = XmlDocument.fromString(text.replace(/<\?(?!xml\s)([^]*?)\?>/g, "<!--?$1?-->"));
+  const tail = text.slice(text.lastIndexOf("UANodeSet")).replace(/^[^>]*>/, "");
   try {
-    return describeRoot(document.root);
+    const description = describeRoot(document.root);
+    const behind = tail.trim() === "" ? [] : [`behind ${tail.trim()}`];
+    return { ...description, head: [...description.head, ...behind] };
   } finally {
     document.dispose();
   }
 }
 
+/** UTF-8, or UTF-16 by its mark: libxml2 is given text, so that its processing instructions can be changed before. */
+function decode(bytes: Uint8Array): string {
+  const [first, second] = bytes;
+  const encoding = first === 0xff && second === 0xfe ? "utf-16le" : first === 0xfe && second === 0xff ? "utf-16be" : "utf-8";
+  return new TextDecoder(encoding).decode(bytes);
+}
+
 function describeRoot(root: XmlElement): NodeSetDescription {
   const children = elementsOf(root);
+  const marks = marksOf(root);
+  const marksBefore = (index: number): readonly string[] => marks.before.get(index) ?? [];
   const uris = textsOf(children, "NamespaceUris");
   const aliases = new Map<string, string>();
   for (const table of children.filter((child) => child.name === "Aliases")) {
-    for (const alias of elementsOf(table)) aliases.set(alias.attr("Alias")?.value ?? "", alias.content.trim());
+    for (const alias of elementsOf(table).filter((row) => row.namespaceUri === NODESET)) aliases.set(alias.attr("Alias")?.value ?? "", alias.content.trim());
   }
   const tables = { uris: ["http://opcfoundation.org/UA/", ...uris], aliases };
   const isNode = (child: XmlElement): boolean => child.namespaceUri === NODESET && child.name.startsWith("UA");
   const isTable = (child: XmlElement): boolean => child.name === "NamespaceUris" || child.name === "Aliases";
   const attributes = root.attrs.map((attribute) => `@${attribute.name}=${attribute.value}`).sort();
-  const heads = children.filter((child) => !isNode(child) && !isTable(child) && elementsOf(child).length > 0);
+  const heads = children.filter((child) => !isNode(child) && (!isTable(child) || hasMore(child)));
   const namesOfAliases = [...aliases].map(([alias, id]) => `alias ${alias}=${expandId(id, tables)}`).sort();
-  const nodes = children.filter(isNode).map((child): [string, string] => {
-    return [expandId(child.attr("NodeId")?.value ?? "", tables), describeElement(child, tables, "node", 0)];
+  const nodes = children.flatMap((child, index): [string, string][] => {
+    if (!isNode(child)) return [];
+    const text = [...marksBefore(index), describeElement(child, tables, "node", 0)].join("\n");
+    return [[expandId(child.attr("NodeId")?.value ?? "", tables), text]];
   });
   return {
     namespaces: [...uris].sort(),
-    head: [...attributes, ...namesOfAliases, ...heads.map((child) => describeElement(child, tables, "head", 0)).sort()],
+    head: [
+      ...attributes,
+      ...namesOfAliases,
+      ...heads
+        .map((child) => [describeElement(child, tables, "head", 0), ...marksBefore(children.indexOf(child))].join("\n"))
+        .filter((line) => !/^\{[^}]*\}\w+ {2}""$/.test(line))
+        .sort(),
+      ...marks.end.map((mark) => `end ${mark}`),
+    ],
     nodes: nodes.sort((a, b) => (a[0] < b[0] ? -1 : a[0] > b[0] ? 1 : 0)),
   };
 }
@@ -70,12 +95,18 @@ function describeElement(element: XmlElement, tables: Tables, place: Place, dept
   const children = elementsOf(element);
   const indent = "  ".repeat(depth + 1);
   const head = `{${element.namespaceUri}}${element.name} ${attributes.join(" ")}`;
-  if (children.length === 0) return `${head} "${describeText(element, tables, place)}"`;
-  const lines = children.map((child) => describeElement(child, tables, inner, depth + 1));
+  const marks = marksOf(element);
+  const end = marks.end.map((mark) => `${indent}end ${mark}`);
+  if (children.length === 0) {
+    return [`${head} "${describeText(element, tables, place)}"`, ...end.filter((mark) => mark.includes("<!--"))].join("\n");
+  }
+  const lines = children.map((child, index) =>
+    [describeElement(child, tables, inner, depth + 1), ...(marks.before.get(index) ?? [])].join(`\n${indent}before `),
+  );
   const isUnordered = (inner === "node" || inner === "head") && element.namespaceUri === NODESET;
   // Between different elements the schema gives the order; among equal ones it is the file's, except for references.
   const ordered = isUnordered ? sortByName(lines, element.name === "References") : lines;
-  return [head, ...ordered.filter((line) => !isEmptyReferences(line)).map((line) => indent + line)].join("\n");
+  return [head, ...ordered.filter((line) => !isEmptyReferences(line)).map((line) => indent + line), ...end].join("\n");
 }
 
 function sortByName(lines: readonly string[], fully: boolean): string[] {
@@ -127,7 +158,37 @@ function expandName(text: string, { uris }: Tables): string {
 function textsOf(children: readonly XmlElement[], name: string): string[] {
   return children
     .filter((child) => child.name === name)
-    .flatMap((child) => elementsOf(child).map((uri) => uri.content.trim()));
+    .flatMap((child) => elementsOf(child).filter((row) => row.namespaceUri === NODESET))
+    .map((uri) => uri.content.trim());
+}
+
+/** Comments and text that is more than space, in their order, in lists before each child and one behind the last. */
+function marksOf(element: XmlElement): { before: ReadonlyMap<number, readonly string[]>; end: readonly string[] } {
+  const before = new Map<number, readonly string[]>();
+  let marks: string[] = [];
+  let index = 0;
+  for (let child = element.firstChild; child; child = child.next) {
+    if (child instanceof XmlElement) {
+      if (marks.length > 0) before.set(index, marks);
+      marks = [];
+      index++;
+    } else if (child instanceof XmlComment) marks.push(`<!--${child.content}-->`);
+    else if ((child instanceof XmlText || child instanceof XmlCData) && child.content.trim() !== "") {
+      marks.push(child.content.trim());
+    }
+  }
+  return { before, end: marks };
+}
+
+/** Whether a table holds more than its rows say. */
+function hasMore(table: XmlElement): boolean {
+  const hasMarks = (element: XmlElement): boolean => {
+    const { before, end } = marksOf(element);
+    return before.size > 0 || end.some((mark) => mark.startsWith("<!--"));
+  };
+  const isMore = (row: XmlElement): boolean =>
+    row.namespaceUri !== NODESET || row.attrs.length > (row.name === "Alias" ? 1 : 0) || hasMarks(row);
+  return table.attrs.length > 0 || hasMarks(table) || elementsOf(table).some(isMore);
 }
 
 function elementsOf(element: XmlElement): XmlElement[] {

@@ -1,6 +1,6 @@
 /** What a NodeSet2 file says of itself, beside its nodes (OPC 10000-6 §F.3–F.5). */
 import type { NodeKey } from "./node-id";
-import type { RolePermission, XmlText } from "./node";
+import type { Leftover, RolePermission, XmlText } from "./node";
 
 /** A row of the Models table. Dates and versions are kept as written. */
 export type ModelEntry = {
@@ -25,11 +25,13 @@ export type ModelHeader = {
   readonly aliases?: readonly (readonly [alias: string, key: NodeKey])[];
   readonly extensions?: readonly XmlText[];
   readonly lastModified?: string;
-  /** Comments before and directly behind the opening of the root element: licences stand there. */
+  /** Comments before the root element: licences stand there. */
   readonly headComments?: readonly string[];
   /** Namespace declarations and unknown attributes of the root element, as written. */
   readonly rootAttributes?: Readonly<Record<string, string>>;
   readonly otherElements?: readonly XmlText[];
+  /** Of the root ("") and of the tables of the head: `Models/Model:URI`, `Aliases/Alias:HasComponent`. */
+  readonly leftovers?: readonly Leftover[];
 };
 
 /** The namespace that the model defines: the first row of Models, else the first namespace of the table. */

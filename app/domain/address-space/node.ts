@@ -38,6 +38,25 @@ export type XmlText = {
   readonly attributes?: Readonly<Record<string, string>>;
 };
 
+/**
+ * What a file holds at one element beside what the schema knows, where that element has no object of its own to keep it:
+ * unknown attributes of a DisplayName, unknown elements in a table, comments. `at` is the path of the element below the
+ * node (or below the root, in a header) with what tells it from its siblings: "" is the node itself, then `References`,
+ * `DisplayName:de`, `Definition/Field:Speed`, `Reference:i=47 i=58`; a second one that is called the same gets `#2`.
+ * The element is named by what it says and not by its place, so that edits of its siblings leave it alone; what belongs to
+ * an element that an edit took away goes with it.
+ */
+export type Leftover = {
+  readonly at: string;
+  /** As written, in the order of the file. */
+  readonly attributes?: Readonly<Record<string, string>>;
+  readonly elements?: readonly XmlText[];
+  /** Comments, processing instructions and stray text, as they stand in the file: before the element. */
+  readonly before?: readonly string[];
+  /** The same at the end of its content. */
+  readonly inside?: readonly string[];
+};
+
 export type RolePermission = { readonly role: NodeKey; readonly permissions: number };
 
 export type ReleaseStatus = "Released" | "Draft" | "Deprecated";
@@ -65,6 +84,7 @@ type NodeBase = {
   readonly otherAttributes?: Readonly<Record<string, string>>;
   /** Child elements that the schema does not know, in order; written back after the known ones. */
   readonly otherElements?: readonly XmlText[];
+  readonly leftovers?: readonly Leftover[];
 };
 
 type InstanceBase = NodeBase & { readonly parent?: NodeKey; readonly designToolOnly?: boolean };

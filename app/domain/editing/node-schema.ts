@@ -2,8 +2,10 @@
  * Shapes of nodes and headers as zod schemas, strict: an unknown member is an error on both sides of the wire. They hold
  * the shape and the ranges of the types; whatever a reader may have kept from a published file passes, since an undo
  * sends it back as it was. What a model should hold beyond that is the checker's business.
+ *
+ * Written with zod/mini: the browser's first load holds this file, and the full zod is three times as large.
  */
-import { z } from "zod";
+import * as z from "zod/mini";
 import { parseNodeId, MAX_NUMERIC_IDENTIFIER, type NodeId, type NodeKey } from "../address-space/node-id";
 import type { ModelEntry, ModelHeader } from "../address-space/model-header";
 import type { Node, NodeClass } from "../address-space/node";
@@ -13,138 +15,157 @@ import type { AttributeName } from "./operation";
 
 const MAX_TEXT = 16_000_000;
 /** Characters that no XML file can hold (XML 1.0 §2.2): with one of these a model could not be exported any more. */
-const text = z.string().max(MAX_TEXT).refine(isWritableText, "Holds characters that XML cannot hold");
-const uint16 = z.int().min(0).max(65_535);
-const uint32 = z.int().min(0).max(4_294_967_295);
-const int32 = z.int().min(-2_147_483_648).max(2_147_483_647);
+const text = z
+  .string()
+  .check(z.maxLength(MAX_TEXT), z.refine(isWritableText, "Holds characters that XML cannot hold"));
+const someText = text.check(z.minLength(1));
+const natural = z.int().check(z.minimum(0));
+const uint16 = z.int().check(z.minimum(0), z.maximum(65_535));
+const uint32 = z.int().check(z.minimum(0), z.maximum(4_294_967_295));
+const int32 = z.int().check(z.minimum(-2_147_483_648), z.maximum(2_147_483_647));
 
 export const nodeKeySchema = z.custom<NodeKey>(
   (value) => typeof value === "string" && parseNodeId(value, []).ok,
   "Expected a node key such as i=58 or nsu=URI;i=1",
 );
 
-export const nodeIdSchema: z.ZodType<NodeId> = z
+export const nodeIdSchema: z.ZodMiniType<NodeId> = z
   .strictObject({
-    namespaceUri: text.min(1),
+    namespaceUri: someText,
     type: z.enum(["i", "s", "g", "b"]),
-    identifier: z.union([z.int().min(0).max(MAX_NUMERIC_IDENTIFIER), text]),
+    identifier: z.union([z.int().check(z.minimum(0), z.maximum(MAX_NUMERIC_IDENTIFIER)), text]),
   })
-  .refine(
-    (id) =>
-      parseNodeId(`${id.type}=${id.identifier}`, []).ok && (id.type === "i") === (typeof id.identifier === "number"),
-    {
-      message: "The identifier does not fit its type",
-    },
+  .check(
+    z.refine(
+      (id) =>
+        parseNodeId(`${id.type}=${id.identifier}`, []).ok && (id.type === "i") === (typeof id.identifier === "number"),
+      "The identifier does not fit its type",
+    ),
   );
 
-const qualifiedName = z.strictObject({ namespaceUri: text.min(1), name: text });
-const localizedText = z.strictObject({ locale: text.optional(), text });
+const qualifiedName = z.strictObject({ namespaceUri: someText, name: text });
+const localizedText = z.strictObject({ locale: z.optional(text), text });
 const localizedTexts = z.array(localizedText);
 const XML_NAME = /^[\p{L}_][\p{L}\p{N}_.-]*(?::[\p{L}_][\p{L}\p{N}_.-]*)?$/u;
-const otherAttributes = z.record(z.string().regex(XML_NAME), text);
+const otherAttributes = z.record(z.string().check(z.regex(XML_NAME)), text);
 const prefixes = z.record(
-  z.string().refine((name) => name === "" || XML_NAME.test(name)),
+  z.string().check(z.refine((name) => name === "" || XML_NAME.test(name))),
   text,
 );
 const xmlText = z
-  .strictObject({ xml: text, prefixes: prefixes.optional(), attributes: otherAttributes.optional() })
-  .refine((value) => readFragment(value).ok, "Is not well-formed XML");
+  .strictObject({ xml: text, prefixes: z.optional(prefixes), attributes: z.optional(otherAttributes) })
+  .check(z.refine((value) => readFragment(value).ok, "Is not well-formed XML"));
 const rolePermission = z.strictObject({ role: nodeKeySchema, permissions: uint32 });
 
 const declaredReference = z.strictObject({
   type: nodeKeySchema,
   target: nodeKeySchema,
   isForward: z.boolean(),
-  serverUri: text.optional(),
+  serverUri: z.optional(text),
+  otherAttributes: z.optional(otherAttributes),
 });
+/** As the reader keeps it: a comment, a processing instruction, or stray text. */
+const mark = text.check(z.refine((value) => readFragment({ xml: value }).ok, "Is not well-formed XML"));
+const leftovers = z.array(
+  z.strictObject({
+    at: text,
+    attributes: z.optional(otherAttributes),
+    elements: z.optional(z.array(xmlText)),
+    before: z.optional(z.array(mark)),
+    inside: z.optional(z.array(mark)),
+  }),
+);
 
 const dataTypeField = z.strictObject({
   name: text,
-  symbolicName: text.optional(),
-  displayName: localizedTexts.optional(),
-  description: localizedTexts.optional(),
-  dataType: nodeKeySchema.optional(),
-  valueRank: int32.optional(),
-  arrayDimensions: text.optional(),
-  maxStringLength: uint32.optional(),
-  value: z.int().optional(),
-  isOptional: z.boolean().optional(),
-  allowSubTypes: z.boolean().optional(),
-  otherAttributes: otherAttributes.optional(),
+  symbolicName: z.optional(text),
+  displayName: z.optional(localizedTexts),
+  description: z.optional(localizedTexts),
+  dataType: z.optional(nodeKeySchema),
+  valueRank: z.optional(int32),
+  arrayDimensions: z.optional(text),
+  maxStringLength: z.optional(uint32),
+  value: z.optional(z.int()),
+  isOptional: z.optional(z.boolean()),
+  allowSubTypes: z.optional(z.boolean()),
+  otherAttributes: z.optional(otherAttributes),
+  otherElements: z.optional(z.array(xmlText)),
 });
 
 const dataTypeDefinition = z.strictObject({
   name: qualifiedName,
-  symbolicName: text.optional(),
-  isUnion: z.boolean().optional(),
-  isOptionSet: z.boolean().optional(),
-  baseType: text.optional(),
+  symbolicName: z.optional(text),
+  isUnion: z.optional(z.boolean()),
+  isOptionSet: z.optional(z.boolean()),
+  baseType: z.optional(text),
   fields: z.array(dataTypeField),
-  otherAttributes: otherAttributes.optional(),
+  otherAttributes: z.optional(otherAttributes),
+  otherElements: z.optional(z.array(xmlText)),
 });
 
 const baseShape = {
   nodeId: nodeIdSchema,
-  order: z.int().min(0),
+  order: natural,
   browseName: qualifiedName,
-  symbolicName: text.optional(),
+  symbolicName: z.optional(text),
   displayName: localizedTexts,
-  description: localizedTexts.optional(),
-  category: z.array(text).optional(),
-  documentation: text.optional(),
-  releaseStatus: z.enum(["Released", "Draft", "Deprecated"]).optional(),
-  writeMask: uint32.optional(),
-  userWriteMask: uint32.optional(),
-  accessRestrictions: uint16.optional(),
-  hasNoPermissions: z.boolean().optional(),
-  rolePermissions: z.array(rolePermission).optional(),
-  extensions: z.array(xmlText).optional(),
-  otherAttributes: otherAttributes.optional(),
-  otherElements: z.array(xmlText).optional(),
+  description: z.optional(localizedTexts),
+  category: z.optional(z.array(text)),
+  documentation: z.optional(text),
+  releaseStatus: z.optional(z.enum(["Released", "Draft", "Deprecated"])),
+  writeMask: z.optional(uint32),
+  userWriteMask: z.optional(uint32),
+  accessRestrictions: z.optional(uint16),
+  hasNoPermissions: z.optional(z.boolean()),
+  rolePermissions: z.optional(z.array(rolePermission)),
+  extensions: z.optional(z.array(xmlText)),
+  otherAttributes: z.optional(otherAttributes),
+  otherElements: z.optional(z.array(xmlText)),
+  leftovers: z.optional(leftovers),
 };
 
-const instanceShape = { ...baseShape, parent: nodeKeySchema.optional(), designToolOnly: z.boolean().optional() };
+const instanceShape = { ...baseShape, parent: z.optional(nodeKeySchema), designToolOnly: z.optional(z.boolean()) };
 const valueShape = {
-  value: xmlText.optional(),
-  dataType: nodeKeySchema.optional(),
-  valueRank: int32.optional(),
-  arrayDimensions: text.optional(),
+  value: z.optional(xmlText),
+  dataType: z.optional(nodeKeySchema),
+  valueRank: z.optional(int32),
+  arrayDimensions: z.optional(text),
 };
-const isAbstract = z.boolean().optional();
+const isAbstract = z.optional(z.boolean());
 
 /** What of each class may be set by itself: everything but key, class and references. */
 const attributeShapes = {
-  Object: { ...instanceShape, eventNotifier: uint32.optional() },
-  View: { ...instanceShape, eventNotifier: uint32.optional(), containsNoLoops: z.boolean().optional() },
+  Object: { ...instanceShape, eventNotifier: z.optional(uint32) },
+  View: { ...instanceShape, eventNotifier: z.optional(uint32), containsNoLoops: z.optional(z.boolean()) },
   Variable: {
     ...instanceShape,
     ...valueShape,
-    accessLevel: uint32.optional(),
-    userAccessLevel: uint32.optional(),
-    minimumSamplingInterval: z.number().optional(),
-    historizing: z.boolean().optional(),
-    translations: z.array(xmlText).optional(),
+    accessLevel: z.optional(uint32),
+    userAccessLevel: z.optional(uint32),
+    minimumSamplingInterval: z.optional(z.number()),
+    historizing: z.optional(z.boolean()),
+    translations: z.optional(z.array(xmlText)),
   },
   Method: {
     ...instanceShape,
-    executable: z.boolean().optional(),
-    userExecutable: z.boolean().optional(),
-    methodDeclaration: nodeKeySchema.optional(),
-    argumentDescriptions: z.array(z.strictObject({ name: text, description: localizedTexts })).optional(),
+    executable: z.optional(z.boolean()),
+    userExecutable: z.optional(z.boolean()),
+    methodDeclaration: z.optional(nodeKeySchema),
+    argumentDescriptions: z.optional(z.array(z.strictObject({ name: text, description: localizedTexts }))),
   },
   ObjectType: { ...baseShape, isAbstract },
   VariableType: { ...baseShape, ...valueShape, isAbstract },
   DataType: {
     ...baseShape,
     isAbstract,
-    purpose: z.enum(["Normal", "ServicesOnly", "CodeGenerator"]).optional(),
-    definition: dataTypeDefinition.optional(),
+    purpose: z.optional(z.enum(["Normal", "ServicesOnly", "CodeGenerator"])),
+    definition: z.optional(dataTypeDefinition),
   },
   ReferenceType: {
     ...baseShape,
     isAbstract,
-    symmetric: z.boolean().optional(),
-    inverseName: localizedTexts.optional(),
+    symmetric: z.optional(z.boolean()),
+    inverseName: z.optional(localizedTexts),
   },
 } as const;
 
@@ -159,10 +180,10 @@ export const nodeSchema = z.discriminatedUnion("nodeClass", [
   z.strictObject({ nodeClass: z.literal("VariableType"), ...identity, ...attributeShapes.VariableType }),
   z.strictObject({ nodeClass: z.literal("DataType"), ...identity, ...attributeShapes.DataType }),
   z.strictObject({ nodeClass: z.literal("ReferenceType"), ...identity, ...attributeShapes.ReferenceType }),
-]) satisfies z.ZodType<Node>;
+]) satisfies z.ZodMiniType<Node>;
 
 /** The schema of each attribute; one name means the same in every class that has it. */
-export const attributeSchemas: Readonly<Record<AttributeName, z.ZodType>> = {
+export const attributeSchemas: Readonly<Record<AttributeName, z.ZodMiniType>> = {
   ...attributeShapes.Object,
   ...attributeShapes.View,
   ...attributeShapes.Variable,
@@ -185,28 +206,30 @@ export function isRequiredAttribute(attribute: AttributeName): boolean {
   return attribute === "nodeId" || attribute === "order" || attribute === "browseName" || attribute === "displayName";
 }
 
-export const modelEntrySchema: z.ZodType<ModelEntry> = z.strictObject({
-  modelUri: text.min(1),
-  version: text.optional(),
-  modelVersion: text.optional(),
-  publicationDate: text.optional(),
-  xmlSchemaUri: text.optional(),
-  accessRestrictions: uint16.optional(),
-  rolePermissions: z.array(rolePermission).optional(),
+export const modelEntrySchema: z.ZodMiniType<ModelEntry> = z.strictObject({
+  modelUri: someText,
+  version: z.optional(text),
+  modelVersion: z.optional(text),
+  publicationDate: z.optional(text),
+  xmlSchemaUri: z.optional(text),
+  accessRestrictions: z.optional(uint16),
+  rolePermissions: z.optional(z.array(rolePermission)),
   requiredModels: z.array(z.lazy(() => modelEntrySchema)),
-  otherAttributes: otherAttributes.optional(),
+  otherAttributes: z.optional(otherAttributes),
+  otherElements: z.optional(z.array(xmlText)),
 });
 
 export const headerShape = {
-  namespaceUris: z.array(text.min(1)),
-  serverUris: z.array(text).optional(),
+  namespaceUris: z.array(someText),
+  serverUris: z.optional(z.array(text)),
   models: z.array(modelEntrySchema),
-  aliases: z.array(z.tuple([text, nodeKeySchema])).optional(),
-  extensions: z.array(xmlText).optional(),
-  lastModified: text.optional(),
-  headComments: z.array(text).optional(),
-  rootAttributes: otherAttributes.optional(),
-  otherElements: z.array(xmlText).optional(),
+  aliases: z.optional(z.array(z.tuple([text, nodeKeySchema]))),
+  extensions: z.optional(z.array(xmlText)),
+  lastModified: z.optional(text),
+  headComments: z.optional(z.array(text)),
+  rootAttributes: z.optional(otherAttributes),
+  otherElements: z.optional(z.array(xmlText)),
+  leftovers: z.optional(leftovers),
 };
 
-export const modelHeaderSchema = z.strictObject(headerShape) satisfies z.ZodType<ModelHeader>;
+export const modelHeaderSchema = z.strictObject(headerShape) satisfies z.ZodMiniType<ModelHeader>;

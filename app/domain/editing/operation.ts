@@ -27,6 +27,7 @@ export type AttributeName =
   | "extensions"
   | "otherAttributes"
   | "otherElements"
+  | "leftovers"
   | "parent"
   | "designToolOnly"
   | "eventNotifier"

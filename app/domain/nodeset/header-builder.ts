@@ -4,6 +4,7 @@ import type { ModelEntry, ModelHeader } from "../address-space/model-header";
 import type { RolePermission, XmlText } from "../address-space/node";
 import { problem, type Problem } from "../core/result";
 import type { IdTable } from "./id-table";
+import { LeftoverBuilder } from "./leftover-builder";
 import type { Attributes } from "./xml/scan-xml";
 import type { Position } from "./xml/source-position";
 
@@ -37,6 +38,7 @@ export class HeaderBuilder {
   readonly comments: string[] = [];
   readonly extensions: XmlText[] = [];
   readonly otherElements: XmlText[] = [];
+  readonly leftovers = new LeftoverBuilder();
   rootAttributes: Attributes = {};
   hasServerUris = false;
   /** Set by `build` when an alias or a role could not be resolved. */
@@ -84,6 +86,7 @@ export class HeaderBuilder {
 
   build(ids: IdTable): ModelHeader {
     const { lastModified, others } = this.#splitRootAttributes();
+    const leftovers = this.leftovers.build();
     return {
       namespaceUris: this.namespaceUris,
       ...(this.hasServerUris ? { serverUris: this.serverUris } : {}),
@@ -94,6 +97,7 @@ export class HeaderBuilder {
       ...(this.comments.length > 0 ? { headComments: this.comments } : {}),
       rootAttributes: others,
       ...(this.otherElements.length > 0 ? { otherElements: this.otherElements } : {}),
+      ...(leftovers ? { leftovers } : {}),
     };
   }
 

@@ -1,8 +1,9 @@
 /** Elements that hold text only: what becomes of the text when they close. */
 import type { DeclaredReference } from "../address-space/node";
 import type { LocalizedText } from "../address-space/qualified-name";
-import { problem } from "../core/result";
+import { nameReference, toStep } from "./leftover-path";
 import { append } from "./node-builder";
+import { listKept } from "./read-attributes";
 import type { ReadContext } from "./read-context";
 import type { Attributes } from "./xml/scan-xml";
 
@@ -22,10 +23,25 @@ export type Leaf =
   | "argumentName"
   | "argumentDescription";
 
+/** What each element may have by the schema; what a Reference has besides is kept in the reference itself. */
 const NONE: readonly string[] = [];
 const LOCALE: readonly string[] = ["Locale"];
-const PERMISSIONS: readonly string[] = ["Permissions"];
-const ALIAS: readonly string[] = ["Alias"];
+const KNOWN_ATTRIBUTES: Readonly<Record<Leaf, readonly string[] | undefined>> = {
+  reference: undefined,
+  uri: NONE,
+  server: NONE,
+  category: NONE,
+  documentation: NONE,
+  argumentName: NONE,
+  alias: ["Alias"],
+  role: ["Permissions"],
+  displayName: LOCALE,
+  description: LOCALE,
+  inverseName: LOCALE,
+  fieldDisplayName: LOCALE,
+  fieldDescription: LOCALE,
+  argumentDescription: LOCALE,
+};
 const MAX_UINT32 = 4_294_967_295;
 
 export class LeafReader {
@@ -79,19 +95,19 @@ export class LeafReader {
         argument?.description.push(this.#toLocalizedText());
         break;
       case "argumentName":
-        if (argument) argument.name = this.#toPlainText();
+        if (argument) argument.name = text;
         break;
       case "category":
-        if (node) node.category = append(node.category, this.#toPlainText());
+        if (node) node.category = append(node.category, text);
         break;
       case "documentation":
-        if (node) node.fields.documentation = this.#toPlainText();
+        if (node) node.fields.documentation = text;
         break;
       case "uri":
-        header.addNamespace(this.#toPlainText().trim(), this.#offset);
+        header.addNamespace(text.trim(), this.#offset);
         break;
       case "server":
-        header.serverUris.push(this.#toPlainText().trim());
+        header.serverUris.push(text.trim());
         break;
       case "role":
         this.#addRole(text);
@@ -102,13 +118,63 @@ export class LeafReader {
     }
   }
 
-  #toPlainText(): string {
-    this.#warnOfAttributes(NONE);
-    return this.#text;
+  /** Attributes of the element that closed which the schema does not know. */
+  listUnknownAttributes(): Readonly<Record<string, string>> | undefined {
+    const known = KNOWN_ATTRIBUTES[this.#leaf];
+    return known && listKept(this.#attributes, known);
+  }
+
+  /** What the element that closed is called in leftovers. */
+  toStep(): string {
+    const [name, nth] = this.#identify();
+    return toStep(this.#name, name, nth);
+  }
+
+  #identify(): [name: string | undefined, nth: number] {
+    const { node, field, argument, header, models, siblings } = this.#context;
+    const text = this.#text.trim();
+    const itself = (one: string): string => one;
+    const byLocale = (texts: readonly LocalizedText[] | undefined): [string | undefined, number] => {
+      const locale = this.#attributes["Locale"];
+      return [locale, siblings.count(texts ?? [], (one) => one.locale, locale)];
+    };
+    switch (this.#leaf) {
+      case "reference": {
+        const last = node?.references.at(-1);
+        const name = last && nameReference(last);
+        return [name, siblings.count(node?.references ?? [], nameReference, name)];
+      }
+      case "displayName":
+        return byLocale(node?.displayName);
+      case "description":
+        return byLocale(node?.description);
+      case "inverseName":
+        return byLocale(node?.inverseName);
+      case "fieldDisplayName":
+        return byLocale(field?.displayName);
+      case "fieldDescription":
+        return byLocale(field?.description);
+      case "argumentDescription":
+        return byLocale(argument?.description);
+      case "category":
+        return [this.#text, siblings.count(node?.category ?? [], itself, this.#text)];
+      case "uri":
+        return [text, siblings.count(header.namespaceUris, itself, text)];
+      case "server":
+        return [text, siblings.count(header.serverUris, itself, text)];
+      case "role": {
+        const roles = models.at(-1)?.roles ?? node?.rolePermissions ?? [];
+        return [undefined, roles.length];
+      }
+      case "alias":
+        return [this.#attributes["Alias"], 1];
+      case "argumentName":
+      case "documentation":
+        return [undefined, 1];
+    }
   }
 
   #toLocalizedText(): LocalizedText {
-    this.#warnOfAttributes(LOCALE);
     const locale = this.#attributes["Locale"];
     return locale === undefined ? { text: this.#text } : { locale, text: this.#text };
   }
@@ -155,7 +221,6 @@ export class LeafReader {
   }
 
   #addRole(text: string): void {
-    this.#warnOfAttributes(PERMISSIONS);
     const written = this.#attributes["Permissions"] ?? "0";
     const permissions = /^\s*\d{1,10}\s*$/.test(written) ? Number(written) : Number.NaN;
     if (!(permissions <= MAX_UINT32)) {
@@ -174,17 +239,8 @@ export class LeafReader {
   }
 
   #addAlias(text: string): void {
-    this.#warnOfAttributes(ALIAS);
     const alias = this.#attributes["Alias"];
     if (alias === undefined) this.#context.reportMissing("Alias", "Alias", this.#offset);
     else this.#context.header.addAlias(alias, text.trim(), this.#offset);
-  }
-
-  #warnOfAttributes(known: readonly string[]): void {
-    for (const attribute in this.#attributes) {
-      if (known.includes(attribute) || attribute.startsWith("xmlns")) continue;
-      const found = problem.warning("nodeset.attribute-not-kept", { attribute, element: this.#name });
-      this.#context.report(found, this.#offset, attribute);
-    }
   }
 }

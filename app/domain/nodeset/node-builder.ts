@@ -10,6 +10,7 @@ import type {
   RolePermission,
   XmlText,
 } from "../address-space/node";
+import type { LeftoverBuilder } from "./leftover-builder";
 import type { LocalizedText, QualifiedName } from "../address-space/qualified-name";
 
 type KeysOf<T> = T extends T ? keyof T : never;
@@ -48,6 +49,7 @@ export class NodeBuilder {
   translations: XmlText[] | undefined;
   argumentDescriptions: ArgumentDescription[] | undefined;
   otherElements: XmlText[] | undefined;
+  leftovers: LeftoverBuilder | undefined;
   readonly references: DeclaredReference[] = [];
 
   constructor(nodeClass: NodeClass, nodeId: NodeId, browseName: QualifiedName, order: number) {
@@ -85,6 +87,8 @@ export class NodeBuilder {
     if (this.translations) fields.translations = this.translations;
     if (this.argumentDescriptions) fields.argumentDescriptions = this.argumentDescriptions;
     if (this.otherElements) fields.otherElements = this.otherElements;
+    const leftovers = this.leftovers?.build();
+    if (leftovers) fields.leftovers = leftovers;
     // The constructor set what every node has, and the table of the class lets no foreign attribute in.
     return fields as Node;
   }

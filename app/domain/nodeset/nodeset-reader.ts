@@ -7,36 +7,21 @@ import type { NodeKey } from "../address-space/node-id";
 import { problem, type Place } from "../core/result";
 import type { IdTables } from "./header-builder";
 import { IdTable } from "./id-table";
-import { LeafReader, type Leaf } from "./leaf-reader";
+import { LeafReader } from "./leaf-reader";
+import { LeftoverNotes } from "./leftover-notes";
 import type { ReadLimits } from "./limits";
 import type { NodeSetContent } from "./nodeset-content";
 import { NODE_ELEMENTS, NODESET_XML_NAMESPACE } from "./nodeset-xml";
 import { openDefinition, openField, openModel, openNode } from "./open-elements";
+import { OpenCapture } from "./open-capture";
 import type { ProblemList } from "./problem-list";
-import { RawCapture, type CaptureMode } from "./raw-capture";
+import type { CaptureMode } from "./raw-capture";
 import { othersOf, ReadContext } from "./read-context";
+import { findLeaf, isTable, type State } from "./reader-states";
 import { findRootMeaning } from "./root-meanings";
 import { getLocalName, NamespaceScopes } from "./xml/namespace-scopes";
 import { ScanStop, type AttributeHint, type Attributes, type XmlHandler } from "./xml/scan-xml";
 import { toPositions, type Position } from "./xml/source-position";
-
-/** Where the reader stands; the name of the open element that decides what may follow. */
-type State =
-  | "document"
-  | "root"
-  | "namespaces"
-  | "servers"
-  | "models"
-  | "model"
-  | "roles"
-  | "aliases"
-  | "extensions"
-  | "node"
-  | "references"
-  | "definition"
-  | "field"
-  | "argument"
-  | "leaf";
 
 /** What follows an element: a state, or "captured" when it is kept raw or passed over. */
 type Next = State | "captured";
@@ -50,20 +35,21 @@ export class NodeSetReader implements XmlHandler {
   readonly #states: State[] = ["document"];
   #state: State = "document";
   #rootDefaultUri = "";
-  #hasFirstChild = false;
+  #hasRoot = false;
   #isInHeader = false;
   readonly #tables: IdTables | undefined;
   #hasIds = false;
   #isLate = false;
-  #capture: RawCapture | undefined;
-  #captureInto: ((text: XmlText) => void) | undefined;
-  #captureDepth = 0;
+  readonly #capture: OpenCapture;
+  readonly #notes: LeftoverNotes;
   readonly #nodes: Node[] = [];
   readonly #offsets = new Map<NodeKey, number>();
 
   constructor(source: string, limits: ReadLimits, tables: IdTables | undefined) {
     this.#context = new ReadContext(source, limits);
     this.#leaf = new LeafReader(this.#context);
+    this.#capture = new OpenCapture(this.#context, this.#scopes);
+    this.#notes = new LeftoverNotes(this.#context, this.#states);
     this.#tables = tables;
   }
 
@@ -73,6 +59,7 @@ export class NodeSetReader implements XmlHandler {
 
   finish(): NodeSetContent {
     this.#finishHeader();
+    this.#notes.finish();
     const { header, ids, source, isWhole } = this.#context;
     const built = header.build(ids);
     const offsets = this.#offsets;
@@ -96,13 +83,12 @@ export class NodeSetReader implements XmlHandler {
   }
 
   open(name: string, attributes: Attributes, start: number, end: number, hint: AttributeHint): void {
-    const depth = this.#states.length + this.#captureDepth;
+    const depth = this.#states.length + this.#capture.depth;
     if (hint === "declaring") this.#scopes.declare(depth, attributes);
     if (hint !== "plain") for (const attribute in attributes) this.#requirePrefix(attribute, start);
     const isPlain = !name.includes(":");
     if (!isPlain) this.#requirePrefix(name, start);
-    if (this.#capture) {
-      this.#captureDepth++;
+    if (this.#capture.depth > 0) {
       this.#capture.open(name, attributes, start, end, depth);
       return;
     }
@@ -112,44 +98,43 @@ export class NodeSetReader implements XmlHandler {
       this.#openRoot(local, uri, attributes, start);
       return;
     }
-    this.#hasFirstChild = true;
     const next = uri === NODESET_XML_NAMESPACE ? this.#openKnown(local, attributes, start, end) : undefined;
     if (next === undefined) this.#openUnknown(name, attributes, start, end);
-    else if (next !== "captured") this.#push(next);
+    else if (next !== "captured") {
+      this.#push(next);
+      this.#notes.open(next, attributes);
+    }
   }
 
   text(start: number, end: number, resolved: string | undefined): void {
-    if (this.#capture) this.#capture.text(start, end, resolved);
+    if (this.#capture.depth > 0) this.#capture.text(start, end, resolved);
     else if (this.#state === "leaf") this.#leaf.text(start, end, resolved);
+    else this.#notes.text(start, end);
   }
 
-  comment(text: string): void {
-    if (!this.#hasFirstChild) this.#context.header.comments.push(text);
+  mark(start: number, end: number): void {
+    if (this.#capture.depth > 0) return;
+    const isInHead = this.#states.length === 1 && !this.#hasRoot;
+    if (isInHead && this.#context.source.startsWith("<!--", start)) {
+      this.#context.header.comments.push(this.#context.source.slice(start + 4, end - 3));
+    } else this.#notes.mark(start, end);
   }
 
   close(name: string, start: number, end: number): void {
-    if (this.#capture) {
-      this.#closeInCapture(this.#capture, name, start, end);
+    if (this.#capture.depth > 0) {
+      this.#capture.close(name, start, end, this.#states.length);
       return;
     }
-    this.#closeState();
+    if (this.#state === "leaf") {
+      this.#leaf.close();
+      this.#notes.closeLeaf(this.#leaf);
+    } else {
+      this.#notes.close();
+      this.#closeState();
+    }
     this.#states.pop();
     this.#state = this.#states.at(-1) ?? "document";
     this.#scopes.leave(this.#states.length);
-  }
-
-  #closeInCapture(capture: RawCapture, name: string, start: number, end: number): void {
-    this.#captureDepth--;
-    const depth = this.#states.length + this.#captureDepth;
-    if (this.#captureDepth > 0) {
-      capture.close(name, start, depth);
-      this.#scopes.leave(depth);
-      return;
-    }
-    const into = this.#captureInto;
-    this.#capture = undefined;
-    this.#scopes.leave(depth);
-    into?.(capture.finish(start, end));
   }
 
   #requirePrefix(name: string, offset: number): void {
@@ -171,26 +156,24 @@ export class NodeSetReader implements XmlHandler {
     if (uri !== NODESET_XML_NAMESPACE) throw new ScanStop(problem("nodeset.wrong-namespace", { uri }, at));
     this.#context.header.rootAttributes = attributes;
     this.#rootDefaultUri = this.#scopes.defaultUri;
+    this.#hasRoot = true;
     this.#push("root");
+    this.#notes.open("root", attributes);
   }
 
   /** What follows an element of the NodeSet's own XML namespace; undefined when it has no place here. */
   #openKnown(local: string, attributes: Attributes, start: number, end: number): Next | undefined {
+    const leaf = findLeaf(this.#state, local);
+    if (leaf !== undefined) {
+      if (leaf === "inverseName" && this.#context.node?.fields.nodeClass !== "ReferenceType") return undefined;
+      this.#leaf.open(leaf, local, attributes, start);
+      return "leaf";
+    }
     switch (this.#state) {
       case "root":
         return this.#openInRoot(local, attributes, start);
       case "node":
         return this.#openInNode(local, attributes, start, end);
-      case "references":
-        return local === "Reference" ? this.#openLeaf("reference", local, attributes, start) : undefined;
-      case "namespaces":
-        return local === "Uri" ? this.#openLeaf("uri", local, attributes, start) : undefined;
-      case "servers":
-        return local === "Uri" ? this.#openLeaf("server", local, attributes, start) : undefined;
-      case "aliases":
-        return local === "Alias" ? this.#openLeaf("alias", local, attributes, start) : undefined;
-      case "roles":
-        return local === "RolePermission" ? this.#openLeaf("role", local, attributes, start) : undefined;
       case "models":
       case "model":
         return this.#openInModels(local, attributes, start);
@@ -201,12 +184,6 @@ export class NodeSetReader implements XmlHandler {
         if (local !== "Field") return undefined;
         openField(this.#context, attributes, start);
         return "field";
-      case "field":
-        if (local === "DisplayName") return this.#openLeaf("fieldDisplayName", local, attributes, start);
-        return local === "Description" ? this.#openLeaf("fieldDescription", local, attributes, start) : undefined;
-      case "argument":
-        if (local === "Name") return this.#openLeaf("argumentName", local, attributes, start);
-        return local === "Description" ? this.#openLeaf("argumentDescription", local, attributes, start) : undefined;
       default:
         return undefined;
     }
@@ -258,14 +235,6 @@ export class NodeSetReader implements XmlHandler {
     if (!node) return undefined;
     const { nodeClass } = node.fields;
     switch (local) {
-      case "DisplayName":
-        return this.#openLeaf("displayName", local, attributes, start);
-      case "Description":
-        return this.#openLeaf("description", local, attributes, start);
-      case "Category":
-        return this.#openLeaf("category", local, attributes, start);
-      case "Documentation":
-        return this.#openLeaf("documentation", local, attributes, start);
       case "References":
         return "references";
       case "RolePermissions":
@@ -290,8 +259,6 @@ export class NodeSetReader implements XmlHandler {
         if (nodeClass !== "DataType") return undefined;
         openDefinition(this.#context, attributes, start);
         return "definition";
-      case "InverseName":
-        return nodeClass === "ReferenceType" ? this.#openLeaf("inverseName", local, attributes, start) : undefined;
       default:
         return undefined;
     }
@@ -308,11 +275,6 @@ export class NodeSetReader implements XmlHandler {
     return "roles";
   }
 
-  #openLeaf(leaf: Leaf, name: string, attributes: Attributes, start: number): State {
-    this.#leaf.open(leaf, name, attributes, start);
-    return "leaf";
-  }
-
   #openCapture(
     mode: CaptureMode,
     name: string,
@@ -321,46 +283,31 @@ export class NodeSetReader implements XmlHandler {
     end: number,
     into: (text: XmlText) => void,
   ): "captured" {
-    const { source, ids } = this.#context;
-    this.#capture = new RawCapture(
-      source,
-      mode,
-      { name, attributes, start, end, depth: this.#states.length },
-      this.#scopes,
-      this.#rootDefaultUri,
-      ids.namespaceUris,
-      (found, offset) => this.#context.report(found, offset),
-    );
-    this.#captureInto = into;
-    this.#captureDepth = 1;
+    if (mode === "content" || mode === "value") this.#notes.openCaptured(name, this.#isInHeader);
+    const element = { name, attributes, start, end, depth: this.#states.length };
+    this.#capture.begin(mode, element, this.#rootDefaultUri, into);
     return "captured";
   }
 
-  /** Keeps an element that the schema does not know, where there is a place for it; else says that it is not kept. */
+  /** Keeps an element that the schema does not know where it stands. */
   #openUnknown(name: string, attributes: Attributes, start: number, end: number): void {
     const into = this.#findPlaceForUnknown();
-    if (!into) this.#context.report(problem.warning("nodeset.element-not-kept", { element: name }), start);
-    this.#openCapture(into ? "whole" : "nothing", name, attributes, start, end, (text) => into?.push(text));
+    const before = this.#notes.takeMarks();
+    this.#openCapture("whole", name, attributes, start, end, (text) => {
+      const kept = before.length === 0 ? text : { ...text, xml: before.join("") + text.xml };
+      if (into) into.push(kept);
+      else this.#notes.addElement(kept);
+    });
   }
 
   #findPlaceForUnknown(): XmlText[] | undefined {
     const { header, node, models, definition, field } = this.#context;
-    switch (this.#state) {
-      case "root":
-        return header.otherElements;
-      case "node":
-        return node && (node.otherElements ??= []);
-      case "model": {
-        const model = models.at(-1);
-        return model && (model.otherElements ??= []);
-      }
-      case "definition":
-        return definition && othersOf(definition);
-      case "field":
-        return field && othersOf(field);
-      default:
-        return undefined;
-    }
+    if (this.#state === "leaf" || isTable(this.#state)) return undefined;
+    if (field) return othersOf(field);
+    if (definition) return othersOf(definition);
+    if (node) return (node.otherElements ??= []);
+    const model = models.at(-1);
+    return model ? (model.otherElements ??= []) : header.otherElements;
   }
 
   #noteTable(element: string, start: number): void {
@@ -387,9 +334,6 @@ export class NodeSetReader implements XmlHandler {
   #closeState(): void {
     const context = this.#context;
     switch (this.#state) {
-      case "leaf":
-        this.#leaf.close();
-        break;
       case "node":
         if (context.node) this.#nodes.push(context.node.build());
         context.node = undefined;

@@ -39,8 +39,6 @@ export const nodesetProblemTexts: Readonly<Record<string, string>> = {
   "nodeset.required-model-cycle": "The model {modelUri} requires itself: {path}.",
   "nodeset.attribute-missing": "{element} has no attribute {attribute}.",
   "nodeset.attribute-value": "{attribute}=“{value}” is not {expected}. The attribute is kept as written.",
-  "nodeset.element-not-kept": "{element} is not known here and is not kept.",
-  "nodeset.attribute-not-kept": "The attribute {attribute} of {element} is not known and is not kept.",
   "nodeset.alias-undefined": "The alias “{alias}” is not defined in the file. It was read as {nodeId} of the standard.",
   "nodeset.alias-unknown": "“{alias}” is neither a NodeId nor an alias of the file.",
   "nodeset.alias-cycle": "The alias “{alias}” leads back to itself.",

@@ -91,3 +91,13 @@ function refuse(name: string, text: string, expected: string, context: Attribute
   context.reportValue(name, text, expected);
   return undefined;
 }
+
+/** Attributes to keep as they are, but the known ones; the default namespace is the writer's business. */
+export function listKept(attributes: Attributes, known?: readonly string[]): Record<string, string> | undefined {
+  let kept: Record<string, string> | undefined;
+  for (const name in attributes) {
+    if (name === "xmlns" || known?.includes(name)) continue;
+    (kept ??= {})[name] = attributes[name] ?? "";
+  }
+  return kept;
+}

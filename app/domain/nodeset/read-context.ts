@@ -11,6 +11,7 @@ import type { DefinitionDraft, FieldDraft, NodeBuilder } from "./node-builder";
 import { ProblemList } from "./problem-list";
 import { readAttributes, type AttributeContext } from "./read-attributes";
 import type { Attributes } from "./xml/scan-xml";
+import { SiblingCounter } from "./sibling-counter";
 import { PositionCounter } from "./xml/source-position";
 import { StringCache } from "./xml/string-cache";
 
@@ -22,6 +23,7 @@ export class ReadContext {
   readonly problems: ProblemList;
   readonly header: HeaderBuilder;
   readonly cache: StringCache;
+  readonly siblings = new SiblingCounter();
   /** Empty until the head is read. */
   ids = new IdTable([], [], new Map());
   isWhole = true;

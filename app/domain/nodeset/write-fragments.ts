@@ -40,8 +40,11 @@ function declaration(prefix: string, uri: string): string {
   return ` xmlns${prefix === "" ? "" : `:${prefix}`}="${escapeAttribute(uri)}"`;
 }
 
+/** Behind the name of the first tag; comments and text may stand before it. */
+const FIRST_TAG = /^(?:[^<]|<!--[^]*?-->|<!\[CDATA\[[^]*?\]\]>|<\?[^]*?\?>)*<[^\s!?/>][^\s/>]*/;
+
 function insertIntoFirstTag(xml: string, text: string): string {
-  return xml.replace(/<[^\s!?/>][^\s/>]*/, (tag) => tag + text);
+  return xml.replace(FIRST_TAG, (head) => head + text);
 }
 
 const IDENTIFIER = /(<(?:[^\s<>/:]+:)?Identifier(?:\s[^<>]*)?>)(svr=\d+;)?nsu=([^;<]*);/g;

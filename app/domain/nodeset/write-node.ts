@@ -1,5 +1,13 @@
 /** Writes one node as XML: attributes in the order of the tables, children in the order of the schema. */
-import type { DataTypeDefinition, DataTypeField, DeclaredReference, Node, RolePermission } from "../address-space/node";
+import type {
+  ArgumentDescription,
+  DataTypeDefinition,
+  DataTypeField,
+  DeclaredReference,
+  Node,
+  RolePermission,
+  XmlText,
+} from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import type { LocalizedText } from "../address-space/qualified-name";
 import {
@@ -10,6 +18,8 @@ import {
   type AttributeType,
 } from "./attribute-tables";
 import type { IdWriter } from "./id-writer";
+import { joinPath, nameReference } from "./leftover-path";
+import { LeftoverWriter, writeTable } from "./leftover-writer";
 import { writeAround, writeWholeElement, type Declared } from "./write-fragments";
 import { escapeAttribute, escapeText } from "./xml/escape";
 
@@ -23,6 +33,11 @@ export type WriteContext = {
   readonly referenceHeads: { readonly forward: Map<NodeKey, string>; readonly inverse: Map<NodeKey, string> };
 };
 
+/** What stands before a node in its file: comments and the like. */
+export function writeBeforeNode(node: Node): string {
+  return LeftoverWriter.of(node.leftovers, {})?.before("", "  ") ?? "";
+}
+
 export function writeNode(node: Node, context: WriteContext): string {
   const { ids, prefix } = context;
   const element = `${prefix}UA${node.nodeClass}`;
@@ -31,8 +46,12 @@ export function writeNode(node: Node, context: WriteContext): string {
     ` BrowseName="${escapeAttribute(ids.formatName(node.browseName))}"` +
     writeAttributes(node, NODE_ATTRIBUTES[node.nodeClass], node.otherAttributes, ids);
   const declared = withNodeDeclarations(context.declared, node.otherAttributes);
+  const rest = LeftoverWriter.of(node.leftovers, declared);
   const body =
-    writeCommon(node, context, declared) + writeSpecific(node, context, declared) + writeOthers(node, declared);
+    writeCommon(node, context, declared, rest) +
+    writeSpecific(node, context, declared, rest) +
+    writeOthers(node, declared) +
+    (rest?.inside("", "    ") ?? "");
   return body === "" ? `${head} />\n` : `${head}>\n${body}  </${element}>\n`;
 }
 
@@ -65,30 +84,47 @@ function formatAttribute(value: unknown, type: AttributeType, name: string, ids:
   return typeof value === "string" ? escapeAttribute(value) : String(value);
 }
 
-function writeCommon(node: Node, context: WriteContext, declared: Declared): string {
+type Rest = LeftoverWriter | undefined;
+
+function writeCommon(node: Node, context: WriteContext, declared: Declared, rest: Rest): string {
   const { prefix, ids } = context;
   let out =
-    writeTexts("DisplayName", node.displayName, "    ", prefix) +
-    writeTexts("Description", node.description, "    ", prefix);
-  for (const category of node.category ?? []) out += writeText(`${prefix}Category`, category, "    ");
-  if (node.documentation !== undefined) out += writeText(`${prefix}Documentation`, node.documentation, "    ");
-  if (node.references.length > 0) {
-    out += `    <${prefix}References>\n`;
-    for (const reference of node.references) out += writeReference(reference, context);
-    out += `    </${prefix}References>\n`;
-  }
-  if (node.rolePermissions) out += writeRolePermissions(node.rolePermissions, "    ", prefix, ids);
-  if (node.extensions && node.extensions.length > 0) {
-    out += `    <${prefix}Extensions>\n`;
-    for (const extension of node.extensions) {
-      out += `      ${writeAround(`${prefix}Extension`, extension, declared, undefined)}\n`;
-    }
-    out += `    </${prefix}Extensions>\n`;
+    writeTexts("DisplayName", node.displayName, "    ", prefix, rest) +
+    writeTexts("Description", node.description, "    ", prefix, rest);
+  for (const category of node.category ?? []) out += writeLeaf("Category", category, category, "    ", prefix, rest);
+  if (node.documentation !== undefined)
+    out += writeLeaf("Documentation", node.documentation, undefined, "    ", prefix, rest);
+  if (node.references.length > 0 || rest) out += writeReferences(node.references, context, rest);
+  if (node.rolePermissions || rest) out += writeRolePermissions(node.rolePermissions, "    ", prefix, ids, rest, "");
+  if ((node.extensions && node.extensions.length > 0) || rest) {
+    const extensions = node.extensions ?? [];
+    const body = extensions.map((one) => writeRaw("Extension", one, "      ", prefix, declared, rest, "Extensions"));
+    out += writeTable({ name: "Extensions", prefix, indent: "    " }, body.join(""), rest, "Extensions");
   }
   return out;
 }
 
-function writeReference(reference: DeclaredReference, context: WriteContext): string {
+/** An element whose content is kept raw and whose ids, if it has some, mean nothing to OPC UA. */
+export function writeRaw(
+  name: string,
+  text: XmlText,
+  indent: string,
+  prefix: string,
+  declared: Declared,
+  rest: Rest,
+  parent: string,
+): string {
+  const before = rest?.before(rest.next(parent, name), indent) ?? "";
+  return `${before}${indent}${writeAround(prefix + name, text, declared, undefined)}\n`;
+}
+
+function writeReferences(references: readonly DeclaredReference[], context: WriteContext, rest: Rest): string {
+  let body = "";
+  for (const reference of references) body += writeReference(reference, context, rest);
+  return writeTable({ name: "References", prefix: context.prefix, indent: "    " }, body, rest, "References");
+}
+
+function writeReference(reference: DeclaredReference, context: WriteContext, rest: Rest): string {
   const { ids, prefix, referenceHeads } = context;
   const { type, target, isForward, serverUri, otherAttributes } = reference;
   // A model has few reference types and tens of thousands of references.
@@ -100,91 +136,131 @@ function writeReference(reference: DeclaredReference, context: WriteContext): st
   if (otherAttributes) {
     for (const [name, value] of Object.entries(otherAttributes)) head += ` ${name}="${escapeAttribute(value)}"`;
   }
-  return `${head}>${escapeText(ids.formatTarget(target, serverUri))}</${prefix}Reference>\n`;
+  const text = escapeText(ids.formatTarget(target, serverUri));
+  if (!rest) return `${head}>${text}</${prefix}Reference>\n`;
+  const at = rest.next("References", "Reference", nameReference(reference));
+  return `${rest.before(at, "      ")}${head}>${text}${rest.insideText(at)}</${prefix}Reference>\n`;
 }
 
+/** `parent` is the path of the element around, for leftovers. An empty list is written, an absent one is not. */
 export function writeRolePermissions(
-  permissions: readonly RolePermission[],
+  permissions: readonly RolePermission[] | undefined,
   indent: string,
   prefix: string,
   ids: IdWriter,
+  rest: Rest,
+  parent: string,
 ): string {
-  if (permissions.length === 0) return `${indent}<${prefix}RolePermissions />\n`;
-  let out = `${indent}<${prefix}RolePermissions>\n`;
-  for (const { role, permissions: mask } of permissions) {
-    out += `${indent}  <${prefix}RolePermission Permissions="${mask}">${escapeText(ids.formatKey(role))}</${prefix}RolePermission>\n`;
+  const at = joinPath(parent, "RolePermissions");
+  let body = "";
+  for (const { role, permissions: mask } of permissions ?? []) {
+    const attribute = ` Permissions="${mask}"`;
+    body += writeLeaf("RolePermission", ids.formatKey(role), undefined, `${indent}  `, prefix, rest, at, attribute);
   }
-  return `${out}${indent}</${prefix}RolePermissions>\n`;
+  return writeTable({ name: "RolePermissions", prefix, indent, isKept: permissions !== undefined }, body, rest, at);
 }
 
-function writeSpecific(node: Node, context: WriteContext, declared: Declared): string {
+function writeSpecific(node: Node, context: WriteContext, declared: Declared, rest: Rest): string {
   const { prefix, ids } = context;
   switch (node.nodeClass) {
     case "Variable":
     case "VariableType": {
-      let out = node.value ? `    ${writeAround(`${prefix}Value`, node.value, declared, ids)}\n` : "";
+      let out = rest?.before("Value", "    ") ?? "";
+      if (node.value) out += `    ${writeAround(`${prefix}Value`, node.value, declared, ids)}\n`;
       if (node.nodeClass === "VariableType") return out;
       for (const translation of node.translations ?? []) {
-        out += `    ${writeAround(`${prefix}Translation`, translation, declared, undefined)}\n`;
+        out += writeRaw("Translation", translation, "    ", prefix, declared, rest, "");
       }
       return out;
     }
     case "Method":
-      return (node.argumentDescriptions ?? []).map((argument) => writeArgument(argument, prefix)).join("");
+      return (node.argumentDescriptions ?? []).map((argument) => writeArgument(argument, prefix, rest)).join("");
     case "DataType":
-      return node.definition ? writeDefinition(node.definition, context, declared) : "";
+      return node.definition ? writeDefinition(node.definition, context, declared, rest) : "";
     case "ReferenceType":
-      return writeTexts("InverseName", node.inverseName, "    ", prefix);
+      return writeTexts("InverseName", node.inverseName, "    ", prefix, rest);
     default:
       return "";
   }
 }
 
-function writeArgument(
-  argument: { readonly name: string; readonly description: readonly LocalizedText[] },
-  prefix: string,
-): string {
+function writeArgument(argument: ArgumentDescription, prefix: string, rest: Rest): string {
+  const at = rest?.next("", "ArgumentDescription") ?? "";
   const body =
-    writeText(`${prefix}Name`, argument.name, "      ") +
-    writeTexts("Description", argument.description, "      ", prefix);
-  return `    <${prefix}ArgumentDescription>\n${body}    </${prefix}ArgumentDescription>\n`;
+    writeLeaf("Name", argument.name, undefined, "      ", prefix, rest, at) +
+    writeTexts("Description", argument.description, "      ", prefix, rest, at);
+  return writeTable({ name: "ArgumentDescription", prefix, indent: "    " }, body, rest, at);
 }
 
-function writeDefinition(definition: DataTypeDefinition, context: WriteContext, declared: Declared): string {
+function writeDefinition(
+  definition: DataTypeDefinition,
+  context: WriteContext,
+  declared: Declared,
+  rest: Rest,
+): string {
   const { ids, prefix } = context;
   const head =
     `    <${prefix}Definition Name="${escapeAttribute(ids.formatName(definition.name))}"` +
     writeAttributes(definition, DEFINITION_ATTRIBUTES, definition.otherAttributes, ids);
   const body =
-    definition.fields.map((field) => writeField(field, context, declared)).join("") +
-    (definition.otherElements ?? []).map((other) => `      ${writeWholeElement(other, declared)}\n`).join("");
-  return body === "" ? `${head} />\n` : `${head}>\n${body}    </${prefix}Definition>\n`;
+    definition.fields.map((field) => writeField(field, context, declared, rest)).join("") +
+    (definition.otherElements ?? []).map((other) => `      ${writeWholeElement(other, declared)}\n`).join("") +
+    (rest?.inside("Definition", "      ") ?? "");
+  const before = rest?.before("Definition", "    ") ?? "";
+  return before + (body === "" ? `${head} />\n` : `${head}>\n${body}    </${prefix}Definition>\n`);
 }
 
-function writeField(field: DataTypeField, { ids, prefix }: WriteContext, declared: Declared): string {
+function writeField(field: DataTypeField, { ids, prefix }: WriteContext, declared: Declared, rest: Rest): string {
+  const at = rest?.next("Definition", "Field", field.name) ?? "";
   const head =
     `      <${prefix}Field Name="${escapeAttribute(field.name)}"` +
     writeAttributes(field, FIELD_ATTRIBUTES, field.otherAttributes, ids);
   const body =
-    writeTexts("DisplayName", field.displayName, "        ", prefix) +
-    writeTexts("Description", field.description, "        ", prefix) +
-    (field.otherElements ?? []).map((other) => `        ${writeWholeElement(other, declared)}\n`).join("");
-  return body === "" ? `${head} />\n` : `${head}>\n${body}      </${prefix}Field>\n`;
+    writeTexts("DisplayName", field.displayName, "        ", prefix, rest, at) +
+    writeTexts("Description", field.description, "        ", prefix, rest, at) +
+    (field.otherElements ?? []).map((other) => `        ${writeWholeElement(other, declared)}\n`).join("") +
+    (rest?.inside(at, "        ") ?? "");
+  const before = rest?.before(at, "      ") ?? "";
+  return before + (body === "" ? `${head} />\n` : `${head}>\n${body}      </${prefix}Field>\n`);
 }
 
-function writeTexts(name: string, texts: readonly LocalizedText[] | undefined, indent: string, prefix: string): string {
+function writeTexts(
+  name: string,
+  texts: readonly LocalizedText[] | undefined,
+  indent: string,
+  prefix: string,
+  rest: Rest,
+  parent = "",
+): string {
   let out = "";
   for (const { locale, text } of texts ?? []) {
     const attribute = locale === undefined ? "" : ` Locale="${escapeAttribute(locale)}"`;
-    out += writeText(`${prefix}${name}`, text, indent, attribute);
+    out += writeLeaf(name, text, locale, indent, prefix, rest, parent, attribute);
   }
   return out;
 }
 
-export function writeText(element: string, text: string, indent: string, attribute = ""): string {
-  return text === ""
-    ? `${indent}<${element}${attribute} />\n`
-    : `${indent}<${element}${attribute}>${escapeText(text)}</${element}>\n`;
+/** An element that holds text. `label` is what tells it from its siblings in leftovers, `parent` the path around it. */
+export function writeLeaf(
+  name: string,
+  text: string,
+  label: string | undefined,
+  indent: string,
+  prefix: string,
+  rest: Rest,
+  parent = "",
+  attribute = "",
+): string {
+  const element = prefix + name;
+  if (!rest) {
+    return text === ""
+      ? `${indent}<${element}${attribute} />\n`
+      : `${indent}<${element}${attribute}>${escapeText(text)}</${element}>\n`;
+  }
+  const at = rest.next(parent, name, label);
+  const head = `${rest.before(at, indent)}${indent}<${element}${attribute}${rest.attributes(at)}`;
+  const content = escapeText(text) + rest.insideText(at);
+  return content === "" ? `${head} />\n` : `${head}>${content}</${element}>\n`;
 }
 
 function writeOthers(node: Node, declared: Declared): string {

@@ -9,9 +9,19 @@ import { MODEL_ATTRIBUTES } from "./attribute-tables";
 import { toCanonicalOrder } from "./canonical-order";
 import { IdWriter } from "./id-writer";
 import { NODESET_XML_NAMESPACE } from "./nodeset-xml";
-import { writeAround, writeWholeElement } from "./write-fragments";
-import { writeAttributes, writeNode, writeRolePermissions, writeText, type WriteContext } from "./write-node";
-import { escapeAttribute, escapeText } from "./xml/escape";
+import { BEHIND_ROOT } from "./leftover-path";
+import { LeftoverWriter, writeTable } from "./leftover-writer";
+import { writeWholeElement } from "./write-fragments";
+import {
+  writeAttributes,
+  writeBeforeNode,
+  writeLeaf,
+  writeNode,
+  writeRaw,
+  writeRolePermissions,
+  type WriteContext,
+} from "./write-node";
+import { escapeAttribute } from "./xml/escape";
 
 export type WriteOptions = {
   /** Types first, parents before children, else by id; default is the order of the model. */
@@ -44,28 +54,35 @@ export function writeNodeSet(
   // Nodes before the head: they decide which namespaces and aliases the head must list.
   const parts: string[] = [];
   const heights = nodes.map((node) => {
+    const before = node.leftovers ? writeBeforeNode(node) : "";
     const part = writeNode(node, context);
-    parts.push(part);
+    parts.push(before, part);
     // Counting at once also makes one string of the many that the part was put together from.
-    return countLineBreaks(part);
+    return { before: countLineBreaks(before), own: countLineBreaks(part) };
   });
-  const head = writeHead(header, root, context);
+  const rest = LeftoverWriter.of(header.leftovers, root.declared);
+  const head = writeHead(header, root, context, rest);
+  const tail = `${rest?.inside("", "  ") ?? ""}</${root.prefix}UANodeSet>\n${rest?.inside(BEHIND_ROOT, "") ?? ""}`;
   let lines: ReadonlyMap<NodeKey, number> | undefined;
   return {
-    xml: `${head}${parts.join("")}</${root.prefix}UANodeSet>\n`,
+    xml: `${head}${parts.join("")}${tail}`,
     get lines() {
       return (lines ??= toLines(nodes, heights, countLineBreaks(head) + 1));
     },
   };
 }
 
+/** Lines that one node takes, and those of the comments before it. */
+type Height = { readonly before: number; readonly own: number };
+
 /** The first line of each node, from the number of lines that each takes. */
-function toLines(nodes: readonly Node[], heights: readonly number[], first: number): ReadonlyMap<NodeKey, number> {
+function toLines(nodes: readonly Node[], heights: readonly Height[], first: number): ReadonlyMap<NodeKey, number> {
   let line = first;
   return new Map(
     nodes.map((node, i) => {
-      const start = line;
-      line += heights[i] ?? 0;
+      const height = heights[i] ?? { before: 0, own: 0 };
+      const start = line + height.before;
+      line = start + height.own;
       return [node.key, start];
     }),
   );
@@ -100,26 +117,29 @@ function makeRoot(header: ModelHeader): Root {
   return { prefix: prefix === "" ? "" : `${prefix}:`, attributes, declared };
 }
 
-function writeHead(header: ModelHeader, root: Root, context: WriteContext): string {
-  const { ids, prefix } = context;
+function writeHead(header: ModelHeader, root: Root, context: WriteContext, rest: LeftoverWriter | undefined): string {
+  const { ids, prefix, declared } = context;
   let out = '<?xml version="1.0" encoding="utf-8"?>\n';
   for (const comment of header.headComments ?? []) out += `<!--${comment}-->\n`;
+  out += rest?.before("", "") ?? "";
   out += `<${prefix}UANodeSet${writeRootAttributes(header, root)}>\n`;
   // The models come first in time: their roles may need a namespace that the table lacks.
-  const models = header.models.map((model) => writeModel("Model", model, "    ", context)).join("");
+  const models = header.models.map((model) => writeModel("Model", model, "    ", context, rest, "Models")).join("");
   const aliases = (header.aliases ?? ids.listUsedAliases())
-    .map(
-      ([alias, key]) =>
-        `    <${prefix}Alias Alias="${escapeAttribute(alias)}">${escapeText(ids.formatKey(key))}</${prefix}Alias>\n`,
-    )
+    .map(([alias, key]) => {
+      const attribute = ` Alias="${escapeAttribute(alias)}"`;
+      return writeLeaf("Alias", ids.formatKey(key), alias, "    ", prefix, rest, "Aliases", attribute);
+    })
     .join("");
   const extensions = (header.extensions ?? [])
-    .map((extension) => `    ${writeAround(`${prefix}Extension`, extension, context.declared, undefined)}\n`)
+    .map((extension) => writeRaw("Extension", extension, "    ", prefix, declared, rest, "Extensions"))
     .join("");
-  out += wrap(`${prefix}NamespaceUris`, writeUris(ids.namespaceUris, prefix));
-  out += wrap(`${prefix}ServerUris`, writeUris(ids.serverUris, prefix));
-  out += wrap(`${prefix}Models`, models) + wrap(`${prefix}Aliases`, aliases) + wrap(`${prefix}Extensions`, extensions);
-  for (const other of header.otherElements ?? []) out += `  ${writeWholeElement(other, context.declared)}\n`;
+  const table = (name: string, body: string): string => writeTable({ name, prefix, indent: "  " }, body, rest, name);
+  const uris = (name: string, list: readonly string[]): string =>
+    table(name, list.map((uri) => writeLeaf("Uri", uri, uri, "    ", prefix, rest, name)).join(""));
+  out += uris("NamespaceUris", ids.namespaceUris) + uris("ServerUris", ids.serverUris);
+  out += table("Models", models) + table("Aliases", aliases) + table("Extensions", extensions);
+  for (const other of header.otherElements ?? []) out += `  ${writeWholeElement(other, declared)}\n`;
   return out;
 }
 
@@ -129,25 +149,28 @@ function writeRootAttributes(header: ModelHeader, root: Root): string {
   return modified + others.join("");
 }
 
-function wrap(element: string, body: string): string {
-  return body === "" ? "" : `  <${element}>\n${body}  </${element}>\n`;
-}
-
-function writeUris(uris: readonly string[], prefix: string): string {
-  return uris.map((uri) => writeText(`${prefix}Uri`, uri, "    ")).join("");
-}
-
-function writeModel(element: string, model: ModelEntry, indent: string, context: WriteContext): string {
+function writeModel(
+  element: string,
+  model: ModelEntry,
+  indent: string,
+  context: WriteContext,
+  rest: LeftoverWriter | undefined,
+  parent: string,
+): string {
   const { prefix, ids } = context;
+  const at = rest?.next(parent, element, model.modelUri) ?? "";
   const head =
     `${indent}<${prefix}${element} ModelUri="${escapeAttribute(model.modelUri)}"` +
     writeAttributes(model, MODEL_ATTRIBUTES, model.otherAttributes, ids);
   const inner = `${indent}  `;
+  const required = model.requiredModels.map((one) => writeModel("RequiredModel", one, inner, context, rest, at));
   const body =
-    (model.rolePermissions ? writeRolePermissions(model.rolePermissions, inner, prefix, ids) : "") +
-    model.requiredModels.map((required) => writeModel("RequiredModel", required, inner, context)).join("") +
-    (model.otherElements ?? []).map((other) => `${inner}${writeWholeElement(other, context.declared)}\n`).join("");
-  return body === "" ? `${head} />\n` : `${head}>\n${body}${indent}</${prefix}${element}>\n`;
+    writeRolePermissions(model.rolePermissions, inner, prefix, ids, rest, at) +
+    required.join("") +
+    (model.otherElements ?? []).map((other) => `${inner}${writeWholeElement(other, context.declared)}\n`).join("") +
+    (rest?.inside(at, inner) ?? "");
+  const before = rest?.before(at, indent) ?? "";
+  return before + (body === "" ? `${head} />\n` : `${head}>\n${body}${indent}</${prefix}${element}>\n`);
 }
 
 function countLineBreaks(text: string): number {

@@ -69,7 +69,7 @@ class FragmentBuilder {
     if (element) element.text += resolved ?? this.#source.slice(start, end);
   }
 
-  comment(): void {
+  mark(): void {
     // Comments inside values say nothing about the value.
   }
 

@@ -22,7 +22,8 @@ export interface XmlHandler {
   close(name: string, start: number, end: number): void;
   /** Character data: as it stands between the offsets, unless `resolved` says what references in it mean. */
   text(start: number, end: number, resolved: string | undefined): void;
-  comment(text: string): void;
+  /** A comment or a processing instruction. */
+  mark(start: number, end: number): void;
 }
 
 export type ScanOptions = {
@@ -290,7 +291,7 @@ class XmlScan {
       if (end < 0) this.#truncated("a comment has no end");
       if (text.charCodeAt(end + 2) !== GREATER) this.#failOrTruncated("“--” stands in a comment", end, end + 2);
       this.#at = end + 3;
-      this.#handler.comment(text.slice(start + 4, end));
+      this.#handler.mark(start, end + 3);
       return;
     }
     if (text.startsWith("<![CDATA[", start)) {
@@ -315,6 +316,7 @@ class XmlScan {
     if (name.toLowerCase() === "xml") this.#fail("the XML declaration does not stand at the very start", start);
     if (end > nameEnd && !isSpace(text.charCodeAt(nameEnd))) this.#fail("a processing instruction has no name", start);
     this.#at = end + 2;
+    this.#handler.mark(start, end + 2);
   }
 
   #readDeclaration(): void {

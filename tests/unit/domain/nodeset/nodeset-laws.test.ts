@@ -5,6 +5,7 @@ import { getValue } from "~/domain/core/result";
 import { readPack, writePack } from "~/domain/nodeset/pack";
 import { readNodeSet } from "~/domain/nodeset/read-nodeset";
 import { writeNodeSet } from "~/domain/nodeset/write-nodeset";
+import { describeNodeSetTree, listHeadComments } from "../../../support/describe-nodeset-tree";
 import { header, NAMESPACES, nodes } from "../../../support/random-nodeset";
 
 const RUNS = { numRuns: 150 };
@@ -72,4 +73,37 @@ describe("any model", () => {
       RUNS,
     );
   });
+
+  it("keeps comments, unknown elements and unknown attributes wherever they were strewn", () => {
+    const pieces = fc.array(fc.tuple(fc.nat(), fc.constantFrom("comment", "element", "attribute")), { maxLength: 12 });
+    fc.assert(
+      fc.property(header, nodes, pieces, (head, list, strewn) => {
+        const { xml } = writeNodeSet({ header: head, nodes: list });
+        const cluttered = strewn.reduce((text, [place, what], i) => strew(text, place, what, i), xml);
+        const result = readNodeSet(cluttered);
+        expect(result.problems.filter((found) => found.severity === "error")).toEqual([]);
+        const again = writeNodeSet(getValue(result)).xml;
+        expect(describeNodeSetTree(again)).toEqual(describeNodeSetTree(cluttered));
+        expect(listHeadComments(again)).toEqual(listHeadComments(cluttered));
+        expect(writeNodeSet(getValue(readNodeSet(again))).xml).toBe(again);
+      }),
+      RUNS,
+    );
+  });
 });
+
+/** Puts something into the text that no schema knows, before a tag or into one. */
+function strew(xml: string, place: number, what: string, number: number): string {
+  const isTag = what === "attribute" ? /<[A-Za-z][^<>]*?(?=\s*\/?>)/g : /(?<=>\s*)<[A-Za-z/]/g;
+  const body = xml.indexOf("<UANodeSet");
+  const tags = [...xml.matchAll(isTag)].filter((tag) => tag.index > body && !xml.startsWith("</UANodeSet", tag.index - 1));
+  const tag = tags[place % Math.max(1, tags.length)];
+  if (!tag) return xml;
+  const at = what === "attribute" ? tag.index + tag[0].length : tag.index;
+  const piece = {
+    comment: `<!-- ${number} <not a tag> -->`,
+    element: `<z:e xmlns:z="urn:z" n="${number}"/>`,
+    attribute: ` z${number}="&lt;${number}"`,
+  }[what];
+  return xml.slice(0, at) + (piece ?? "") + xml.slice(at);
+}
