@@ -12,10 +12,10 @@ import {
 } from "../db/repositories/models.server";
 import { HIGHEST_LEASED_IDENTIFIER, raiseLedgerStatement } from "../db/repositories/node-ids.server";
 import type { ModelKind } from "../db/schema/models";
-import { getOwnNamespace, type ModelHeader } from "../domain/address-space/model-header";
+import { getOwnNamespace } from "../domain/address-space/model-header";
 import type { Node } from "../domain/address-space/node";
 import { fail, ok, problem, type Result } from "../domain/core/result";
-import { writePack } from "../domain/nodeset/pack";
+import { writePack, type PackContent } from "../domain/nodeset/pack";
 import { newId } from "../utils/ids.server";
 import { describeHeader } from "./describe-header.server";
 import { publish } from "./event-hub.server";
@@ -25,20 +25,22 @@ import { makeSheet } from "./save-sheet.server";
 export type NewModel = {
   readonly name: string;
   readonly kind: ModelKind;
-  readonly content: { readonly header: ModelHeader; readonly nodes: readonly Node[] };
+  readonly content: PackContent;
   readonly message: string;
+  /** A branch of another model, and the state that both have in common. */
+  readonly variant?: { readonly of: ModelRow; readonly baseHash: string };
   /** The imported file, kept byte for byte. */
   readonly file?: { readonly name: string; readonly bytes: Uint8Array };
 };
 
 /** Problem: `model.namespace-taken`, also when another request was quicker by a moment. */
 export async function addModel(author: Caller, organizationId: string, intent: NewModel): Promise<Result<ModelRow>> {
-  const { content, name, kind, file } = intent;
+  const { content, name, kind, file, variant } = intent;
   const now = new Date();
   const namespaceUri = getOwnNamespace(content.header);
   const taken = (holder: ModelRow) => fail(problem("model.namespace-taken", { namespaceUri, name: holder.name }));
   const before = await findModelByNamespace(organizationId, namespaceUri);
-  if (before) return taken(before);
+  if (before && !variant) return taken(before);
   const pack = await toBlob(writePack(content));
   const fileBlob = file ? await toBlob(file.bytes) : undefined;
   const model: ModelRow = {
@@ -50,7 +52,9 @@ export async function addModel(author: Caller, organizationId: string, intent: N
     ...describeHeader(content.header),
     headSeq: 0,
     nodeCount: content.nodes.length,
-    pins: kind === "machines" ? await choosePins(organizationId, content.header, []) : null,
+    pins: variant ? variant.of.pins : kind === "machines" ? await choosePins(organizationId, content.header, []) : null,
+    variantOf: variant?.of.id ?? null,
+    variantBaseHash: variant?.baseHash ?? null,
     createdAt: now,
     createdBy: author.name,
     updatedAt: now,
@@ -79,14 +83,14 @@ export async function addModel(author: Caller, organizationId: string, intent: N
         organizationId,
         userId: author.userId,
         userName: author.name,
-        action: file ? "model.import" : "model.create",
+        action: file ? "model.import" : variant ? "model.branch" : "model.create",
         subject: { kind: "model", id: model.id, name },
         details: { namespaceUri, nodes: content.nodes.length, ...(file ? { file: file.name } : {}) },
       }),
     ]);
   } catch (error) {
     const quicker = await findModelByNamespace(organizationId, namespaceUri);
-    if (quicker) return taken(quicker);
+    if (quicker && !variant) return taken(quicker);
     throw error;
   }
   publish(`models:${organizationId}`, { id: model.id, change: "added" });

@@ -43,6 +43,9 @@ export async function removeUnusedBlobs(): Promise<number> {
       union select file_hash from revision where file_hash is not null
       union select json_extract(pin.value, '$.hash') from revision, json_each(revision.pinned) as pin
       union select pack_hash from snapshot
+      union select variant_base_hash from model where variant_base_hash is not null
+      union select pack_hash from release
+      union select bundle_hash from release
       union select pack_hash from uploaded_node_set
       union select file_hash from uploaded_node_set
       union select file_hash from device_description

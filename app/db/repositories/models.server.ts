@@ -1,5 +1,5 @@
 /** Models and their working state as rows. Statements for writes are answered, so that a use case writes one batch. */
-import { and, asc, desc, eq, gt, inArray, like, lte, or } from "drizzle-orm";
+import { and, asc, desc, eq, gt, inArray, isNull, like, lte, or } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
 import type { Transaction } from "../../domain/editing/operation";
 import { getDatabase } from "../client.server";
@@ -15,16 +15,26 @@ export async function findModel(id: string): Promise<ModelRow | undefined> {
   return row;
 }
 
+/** The model that stands for the namespace; its variants do not. */
 export async function findModelByNamespace(organizationId: string, namespaceUri: string): Promise<ModelRow | undefined> {
   const [row] = await getDatabase()
     .select()
     .from(model)
-    .where(and(eq(model.organizationId, organizationId), eq(model.namespaceUri, namespaceUri)));
+    .where(and(eq(model.organizationId, organizationId), eq(model.namespaceUri, namespaceUri), isNull(model.variantOf)));
   return row;
 }
 
+/** The models of an organisation without their variants. */
 export async function listModels(organizationId: string): Promise<ModelRow[]> {
-  return getDatabase().select().from(model).where(eq(model.organizationId, organizationId)).orderBy(asc(model.name), asc(model.id));
+  return getDatabase()
+    .select()
+    .from(model)
+    .where(and(eq(model.organizationId, organizationId), isNull(model.variantOf)))
+    .orderBy(asc(model.name), asc(model.id));
+}
+
+export async function listVariants(modelId: string): Promise<ModelRow[]> {
+  return getDatabase().select().from(model).where(eq(model.variantOf, modelId)).orderBy(asc(model.name), asc(model.id));
 }
 
 export function addModelStatement(row: typeof model.$inferInsert) {

@@ -1,5 +1,6 @@
 /** Models and everything that hangs on their working state. */
-import { blob, index, integer, primaryKey, sqliteTable, text, uniqueIndex } from "drizzle-orm/sqlite-core";
+import { sql } from "drizzle-orm";
+import { blob, index, integer, primaryKey, sqliteTable, text, uniqueIndex, type AnySQLiteColumn } from "drizzle-orm/sqlite-core";
 import type { Operation } from "../../domain/editing/operation";
 import { organization } from "./auth";
 
@@ -42,12 +43,21 @@ export const model = sqliteTable(
     requiredModels: text("required_models", { mode: "json" }).$type<readonly RequiredModelRow[]>().notNull(),
     /** What a model of machines stands on; absent for models of types, which stand on working states. */
     pins: text("pins", { mode: "json" }).$type<readonly PinRow[]>(),
+    /** A variant is a branch of another model for a trial: it shares the namespace and is merged back or thrown away. */
+    variantOf: text("variant_of"),
+    /** The state that both had in common last, which a merge compares with. */
+    variantBaseHash: text("variant_base_hash").references((): AnySQLiteColumn => contentBlob.hash),
     createdAt: timestamp("created_at").notNull(),
     createdBy: text("created_by").notNull(),
     updatedAt: timestamp("updated_at").notNull(),
     updatedBy: text("updated_by").notNull(),
   },
-  (table) => [uniqueIndex("model_namespace").on(table.organizationId, table.namespaceUri)],
+  (table) => [
+    uniqueIndex("model_namespace")
+      .on(table.organizationId, table.namespaceUri)
+      .where(sql`${table.variantOf} is null`),
+    index("model_variant").on(table.variantOf),
+  ],
 );
 
 /** Bytes by their SHA-256; revisions, snapshots and uploads name them. `bytes` is gzip of what the hash was made of. */
@@ -79,6 +89,8 @@ export const revision = sqliteTable(
     at: timestamp("at").notNull(),
     nodeCount: integer("node_count").notNull(),
     counts: text("counts", { mode: "json" }).$type<{ error: number; warning: number; hint: number }>(),
+    /** How much changed by meaning since the revision before it. */
+    changes: text("changes", { mode: "json" }).$type<{ breaking: number; additive: number; neutral: number }>(),
     /** The required models that it was frozen on, base first; absent for revision 0, which pins nothing. */
     pinned: text("pinned", { mode: "json" }).$type<readonly PinnedModelRow[]>(),
   },

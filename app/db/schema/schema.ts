@@ -2,6 +2,8 @@
 import * as authTables from "./auth";
 import * as modelTables from "./models";
 import * as operationTables from "./operations";
+import * as outboxTables from "./outbox";
+import * as reviewTables from "./reviews";
 import * as sourceTables from "./sources";
 
-export const schema = { ...authTables, ...modelTables, ...operationTables, ...sourceTables };
+export const schema = { ...authTables, ...modelTables, ...operationTables, ...outboxTables, ...reviewTables, ...sourceTables };
