@@ -39,6 +39,9 @@ export type ChangeKind =
   | "release-status-changed"
   | "permissions-changed"
   | "attribute-changed"
+  | "mapping-added"
+  | "mapping-removed"
+  | "mapping-changed"
   | "required-model-changed"
   | "model-version-changed";
 

@@ -11,6 +11,7 @@ import { StandardModellingRule, StandardReferenceType } from "../address-space/s
 import { collectSubtypes, isHierarchical } from "../address-space/type-hierarchy";
 import type { Change, ChangeKind, ChangeRating, Comparison } from "./change";
 import type { Difference } from "./compare-data-types";
+import { compareMappings } from "./compare-mappings";
 import { compareNodes, isFactProperty, toldElsewhere, type Sides } from "./compare-nodes";
 import { nameOf } from "./describe-facts";
 import { matchNodes } from "./match-nodes";
@@ -51,7 +52,7 @@ export function compareModels(before: AddressSpace, after: AddressSpace): Compar
     for (const difference of compareNodes(sides, pair)) tell(after, pair.after, difference);
   }
   compareReferences(sides, addedKeys, removedKeys, tell);
-  changes.push(...compareHeaders(before, after));
+  changes.push(...compareHeaders(before, after), ...compareMappings(before, after, match.toAfter));
   changes.sort(byRatingThenPath);
   const rating = changes[0]?.rating;
   const entry = before.own.header.models[0];

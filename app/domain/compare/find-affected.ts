@@ -20,7 +20,12 @@ export type ReaderOfNodes = { readonly id: string; readonly name: string; readon
 /** `stops`: it reads what breaks. `look`: it reads what changed otherwise. `may-use`: something new beside what it reads. */
 export type ReaderEffect = "stops" | "look" | "may-use";
 
-export type AffectedPlace = { readonly modelId: string | null; readonly model: string; readonly nodeId: string; readonly path: string };
+export type AffectedPlace = {
+  readonly modelId: string | null;
+  readonly model: string;
+  readonly nodeId: string;
+  readonly path: string;
+};
 
 export type AffectedReader = {
   readonly id: string;
@@ -49,7 +54,11 @@ export class AffectedFinder {
 
   constructor(
     states: { readonly before: AddressSpace; readonly after: AddressSpace },
-    context: { readonly name: string; readonly dependents: readonly DependentModel[]; readonly readers: readonly ReaderOfNodes[] },
+    context: {
+      readonly name: string;
+      readonly dependents: readonly DependentModel[];
+      readonly readers: readonly ReaderOfNodes[];
+    },
   ) {
     this.#before = states.before;
     this.#after = states.after;
@@ -67,8 +76,14 @@ export class AffectedFinder {
     const instances = owner === undefined ? [] : [owner, ...subtypes].flatMap((t) => this.#listInstances(t));
     const ids = new Set(this.#listTouched(space, change, owner, instances));
     return {
-      subtypes: subtypes.flatMap((t) => this.#toPlace(this.#scopes.find((s) => s.space.isOwn(t)), t)),
-      instances: type?.nodeClass === "DataType" ? [] : instances.flatMap(({ scope, node }) => this.#toPlace(scope, node.key)),
+      subtypes: subtypes.flatMap((t) =>
+        this.#toPlace(
+          this.#scopes.find((s) => s.space.isOwn(t)),
+          t,
+        ),
+      ),
+      instances:
+        type?.nodeClass === "DataType" ? [] : instances.flatMap(({ scope, node }) => this.#toPlace(scope, node.key)),
       readers: this.#readers.flatMap((reader) => this.#findEffect(reader, change, ids)),
     };
   }
@@ -76,12 +91,15 @@ export class AffectedFinder {
   #toPlace(scope: Scope | undefined, key: NodeKey): AffectedPlace[] {
     const node = scope?.space.getNode(key);
     if (!scope || !node) return [];
-    return [{ modelId: scope.id, model: scope.name, nodeId: formatNodeId(node.nodeId), path: getPath(scope.space, key) }];
+    return [
+      { modelId: scope.id, model: scope.name, nodeId: formatNodeId(node.nodeId), path: getPath(scope.space, key) },
+    ];
   }
 
   #listSubtypes(space: AddressSpace, type: NodeKey): NodeKey[] {
     const found = new Set<NodeKey>();
-    for (const at of [space, ...this.#scopes.map((s) => s.space)]) for (const sub of collectSubtypes(at, type)) found.add(sub);
+    for (const at of [space, ...this.#scopes.map((s) => s.space)])
+      for (const sub of collectSubtypes(at, type)) found.add(sub);
     found.delete(type);
     return [...found];
   }
@@ -91,7 +109,10 @@ export class AffectedFinder {
     let found = this.#instances.get(type);
     if (!found) {
       found = this.#scopes.flatMap((scope) => {
-        const nodes = scope.space.getNode(type)?.nodeClass === "DataType" ? listOfDataType(scope.space, type) : listOfType(scope.space, type);
+        const nodes =
+          scope.space.getNode(type)?.nodeClass === "DataType"
+            ? listOfDataType(scope.space, type)
+            : listOfType(scope.space, type);
         return nodes.map((node) => ({ scope, node }));
       });
       this.#instances.set(type, found);
@@ -100,7 +121,12 @@ export class AffectedFinder {
   }
 
   /** NodeIds that the change meets: the node, its counterparts in instances, and what is below these. */
-  #listTouched(space: AddressSpace, change: Change, owner: NodeKey | undefined, instances: readonly { scope: Scope; node: Node }[]): string[] {
+  #listTouched(
+    space: AddressSpace,
+    change: Change,
+    owner: NodeKey | undefined,
+    instances: readonly { scope: Scope; node: Node }[],
+  ): string[] {
     const key = change.key as NodeKey;
     const ids: string[] = change.nodeId === undefined ? [] : [change.nodeId];
     // A node that came or went is met by whoever reads what stands beside it.
@@ -148,20 +174,26 @@ function listOfDataType(space: AddressSpace, type: NodeKey): Node[] {
   return space.listOwnNodes().filter((node) => hasValueAttributes(node) && node.dataType === type);
 }
 
+/** Deeper than any model; ends the walk where owners go round in a circle. */
+const MAX_DEPTH = 100;
+
 /** BrowseNames from the owner down to the node, both ends of which are known to be related. */
 function listNamesBelow(space: AddressSpace, owner: NodeKey, key: NodeKey): Node["browseName"][] | undefined {
   const names: Node["browseName"][] = [];
-  for (let at: NodeKey | undefined = key; at !== owner; at = findParent(space, at)) {
-    const node = at === undefined ? undefined : space.getNode(at);
-    if (!node || names.length > 100) return undefined;
+  let at: NodeKey | undefined = key;
+  while (at !== owner) {
+    const node: Node | undefined = at === undefined ? undefined : space.getNode(at);
+    if (!node || names.length > MAX_DEPTH) return undefined;
     names.unshift(node.browseName);
+    at = findParent(space, node.key);
   }
   return names;
 }
 
 function followNames(space: AddressSpace, from: Node, names: readonly Node["browseName"][]): Node | undefined {
   let at: Node | undefined = from;
-  for (const name of names) at = at && listChildren(space, at.key).find((child) => isSameQualifiedName(child.browseName, name));
+  for (const name of names)
+    at = at && listChildren(space, at.key).find((child) => isSameQualifiedName(child.browseName, name));
   return at;
 }
 

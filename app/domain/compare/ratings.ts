@@ -110,6 +110,13 @@ export const ratings = {
   releaseStatus: rate("neutral", "Says what is planned; nothing that is read changes.", "OPC 11030 §14.2"),
   permissions: rate("breaking", "Clients may be refused what they were allowed (inferred).", "OPC 10000-3 §8.55"),
   attribute: rate("neutral", "No reader depends on this attribute (inferred)."),
+  rowAdded: rate("additive", "A source feeds the member from now on (inferred)."),
+  rowRemoved: rate("breaking", "No source feeds the member any more; readers get no value (inferred)."),
+  rowChanged: rate(
+    "neutral",
+    "The same member, fed or scaled in another way; look whether the values stay comparable (inferred).",
+  ),
+  mappingAround: rate("neutral", "Says how the values come; no node changes (inferred)."),
   requiredModelRaised: rate(
     "neutral",
     "The server must hold a later version of the required model.",

@@ -47,10 +47,17 @@ export function splitModel(space: AddressSpace, intent: SplitIntent): Result<Spl
   const needs = listNeedsOfRest(space, part);
   if (needs.length > 0) return fail(...needs);
   const keys = new Map<NodeKey, NodeKey>();
-  for (const key of part) keys.set(key, toNodeKey({ ...space.requireNode(key).nodeId, namespaceUri: intent.namespaceUri }));
+  for (const key of part)
+    keys.set(key, toNodeKey({ ...space.requireNode(key).nodeId, namespaceUri: intent.namespaceUri }));
   const made = makeModel(space, intent);
-  if (!made.ok) return made.problems.some((p) => p.code === "model.uri") ? fail(problem("split.uri", { uri: intent.namespaceUri })) : made;
-  const content: ModelContent = { header: made.value.header, nodes: [...made.value.nodes, ...movePart(space, part, keys, intent.namespaceUri, made.value.nodes.length)] };
+  if (!made.ok)
+    return made.problems.some((p) => p.code === "model.uri")
+      ? fail(problem("split.uri", { uri: intent.namespaceUri }))
+      : made;
+  const content: ModelContent = {
+    header: made.value.header,
+    nodes: [...made.value.nodes, ...movePart(space, part, keys, intent.namespaceUri, made.value.nodes.length)],
+  };
   return ok({ content, operations: listRestOperations(space, part, keys, content), moved: part.size });
 }
 
@@ -59,7 +66,8 @@ function collectPart(space: AddressSpace, types: readonly NodeKey[]): Set<NodeKe
   const part = new Set(types.filter((key) => space.isOwn(key) && isTypeNode(space.requireNode(key))));
   for (const key of part) {
     const encodings = listEdgesFrom(space, key, StandardReferenceType.HasEncoding).map((e) => e.target);
-    for (const below of [...listChildren(space, key).map((n) => n.key), ...encodings]) if (space.isOwn(below)) part.add(below);
+    for (const below of [...listChildren(space, key).map((n) => n.key), ...encodings])
+      if (space.isOwn(below)) part.add(below);
   }
   return part;
 }
@@ -71,7 +79,9 @@ function listNeedsOfRest(space: AddressSpace, part: ReadonlySet<NodeKey>): Probl
     const isFromAbove = (other: NodeKey): boolean => isNamedFromAbove(node, other);
     for (const other of new Set(listMentions(node))) {
       if (!space.isOwn(other) || part.has(other) || isFromAbove(other)) continue;
-      problems.push(problem("split.depends-on-rest", { path: getPath(space, key), other: getPath(space, other) }, { node: key }));
+      problems.push(
+        problem("split.depends-on-rest", { path: getPath(space, key), other: getPath(space, other) }, { node: key }),
+      );
     }
   }
   return problems;
@@ -86,12 +96,23 @@ function isNamedFromAbove(node: Node, other: NodeKey): boolean {
 function makeModel(space: AddressSpace, { namespaceUri, version, publicationDate }: SplitIntent): Result<ModelContent> {
   const required = (space.own.header.models[0]?.requiredModels ?? []).map(toRequiredRow);
   const ids = new BlockAllocator(namespaceUri, [{ from: FIRST_METADATA_ID, to: LAST_METADATA_ID }]);
-  return createModel(space.layers.slice(0, -1), ids, { namespaceUri, version, publicationDate, requiredModels: required });
+  return createModel(space.layers.slice(0, -1), ids, {
+    namespaceUri,
+    version,
+    publicationDate,
+    requiredModels: required,
+  });
 }
 
 type Renaming = ReadonlyMap<NodeKey, NodeKey>;
 
-function movePart(space: AddressSpace, part: ReadonlySet<NodeKey>, keys: Renaming, namespaceUri: string, firstOrder: number): Node[] {
+function movePart(
+  space: AddressSpace,
+  part: ReadonlySet<NodeKey>,
+  keys: Renaming,
+  namespaceUri: string,
+  firstOrder: number,
+): Node[] {
   const own = space.own.header.models[0]?.modelUri;
   return space
     .listOwnNodes()
@@ -116,37 +137,55 @@ function renameIn(node: Node, keys: Renaming): Node {
   }
   if ("value" in node && node.value) changed["value"] = { ...node.value, xml: renameInXml(node.value.xml, keys) };
   if (node.nodeClass === "DataType" && node.definition) {
-    const fields = node.definition.fields.map((f) => (f.dataType === undefined ? f : { ...f, dataType: to(f.dataType) }));
+    const fields = node.definition.fields.map((f) =>
+      f.dataType === undefined ? f : { ...f, dataType: to(f.dataType) },
+    );
     changed["definition"] = { ...node.definition, fields };
   }
   return changed as unknown as Node;
 }
 
 function renameInXml(xml: string, keys: Renaming): string {
-  return xml.replace(/(<(?:\w+:)?Identifier>\s*)([^<]+?)(\s*<)/g, (whole, before: string, id: string, after: string) => {
-    const renamed = keys.get(id as NodeKey);
-    return renamed === undefined ? whole : `${before}${renamed}${after}`;
-  });
+  return xml.replace(
+    /(<(?:\w+:)?Identifier>\s*)([^<]+?)(\s*<)/g,
+    (whole, before: string, id: string, after: string) => {
+      const renamed = keys.get(id as NodeKey);
+      return renamed === undefined ? whole : `${before}${renamed}${after}`;
+    },
+  );
 }
 
 /** The rest of the model without the part, naming the new nodes, on the new required model. */
-function listRestOperations(space: AddressSpace, part: ReadonlySet<NodeKey>, keys: Renaming, content: ModelContent): Operation[] {
+function listRestOperations(
+  space: AddressSpace,
+  part: ReadonlySet<NodeKey>,
+  keys: Renaming,
+  content: ModelContent,
+): Operation[] {
   const nodes = new Map<NodeKey, Node>();
   for (const node of toState(space).nodes.values()) {
     if (part.has(node.key)) continue;
     const renamed = renameIn(node, keys);
     const owner = findParent(space, node.key);
     const isHeldByPart = owner !== undefined && part.has(owner) && !node.references.some((r) => r.target === owner);
-    const references = isHeldByPart ? [...renamed.references, toOwner(space, node.key, keys.get(owner) as NodeKey, owner)] : renamed.references;
+    const references = isHeldByPart
+      ? [...renamed.references, toOwner(space, node.key, keys.get(owner) as NodeKey, owner)]
+      : renamed.references;
     nodes.set(node.key, { ...renamed, references });
   }
   const { header } = space.own;
   const [row, ...others] = header.models;
   const entry = content.header.models[0] as ModelEntry;
-  const models = row ? [{ ...row, requiredModels: [...row.requiredModels, toRequiredRow(entry)] }, ...others] : header.models;
+  const models = row
+    ? [{ ...row, requiredModels: [...row.requiredModels, toRequiredRow(entry)] }, ...others]
+    : header.models;
   const namespaceUris = [...header.namespaceUris, entry.modelUri];
   const required = [...space.layers.slice(0, -1), buildLayer(content.header, content.nodes)];
-  return listStateOperations(AddressSpace.of(required, space.own), { header: { ...header, models, namespaceUris }, nodes });
+  return listStateOperations(AddressSpace.of(required, space.own), {
+    header: { ...header, models, namespaceUris },
+    nodes,
+    mapping: toState(space).mapping,
+  });
 }
 
 /** The reference by which the part held a node that stays, declared at the node from now on. */
@@ -156,7 +195,9 @@ function toOwner(space: AddressSpace, key: NodeKey, target: NodeKey, owner: Node
 }
 
 /** Whether the types can be told apart from the rest: for a screen that offers them. */
-export function listSplittableTypes(space: AddressSpace): { readonly key: NodeKey; readonly nodeId: string; readonly name: string }[] {
+export function listSplittableTypes(
+  space: AddressSpace,
+): { readonly key: NodeKey; readonly nodeId: string; readonly name: string }[] {
   return space
     .listOwnNodes()
     .filter(isTypeNode)

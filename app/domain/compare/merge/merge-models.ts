@@ -11,6 +11,7 @@ import { problem, type Problem } from "../../core/result";
 import { ConflictList, conflictId, formatSide, type MergeChoices, type MergeConflict } from "./merge-conflict";
 import { mergeEdges } from "./merge-edges";
 import { mergeHeaders } from "./merge-header";
+import { mergeMappings } from "./merge-mappings";
 import { mergePresence, type MergeInput } from "./merge-presence";
 import {
   isSameJson,
@@ -55,7 +56,8 @@ export function mergeModels(
     nodes.set(key, mergeNode(input, key, remover, byNode.get(key) ?? []));
   }
   const header = mergeHeaders(input.base.header, input.ours.header, input.theirs.header, conflicts);
-  return { state: { header, nodes }, conflicts: conflicts.found, problems: findTwice(nodes, input) };
+  const mapping = mergeMappings(input);
+  return { state: { header, nodes, mapping }, conflicts: conflicts.found, problems: findTwice(nodes, input) };
 }
 
 function groupByDeclaringNode(edges: ReadonlyMap<string, PlacedEdge>): Map<NodeKey, Set<string>[]> {

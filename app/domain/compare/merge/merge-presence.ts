@@ -111,6 +111,12 @@ function listNewMentions(base: ModelState, side: ModelState): ReadonlySet<NodeKe
     const before = new Set(old ? listMentions(old) : []);
     for (const key of listMentions(node)) if (!before.has(key)) found.add(key);
   }
+  for (const [id, { owner, id: name, value }] of side.mapping) {
+    const old = base.mapping.get(id);
+    // A row is named by the Variable that it feeds, with a path behind the line break where a type gives the member.
+    if (!old || !isSameJson(old.value, value))
+      for (const key of [owner, name.split("\n")[0]]) found.add(key as NodeKey);
+  }
   return found;
 }
 

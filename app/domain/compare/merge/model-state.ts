@@ -3,14 +3,24 @@
  * lists in which nodes declare them, since the same reference may be declared at either end or at both.
  */
 import type { AddressSpace, Edge } from "../../address-space/address-space";
+import { listMappingEntries, toMappingKey, type MappingEntry } from "../../address-space/mapping-entry";
 import type { ModelHeader } from "../../address-space/model-header";
 import type { DeclaredReference, Node } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
 
-export type ModelState = { readonly header: ModelHeader; readonly nodes: ReadonlyMap<NodeKey, Node> };
+export type ModelState = {
+  readonly header: ModelHeader;
+  readonly nodes: ReadonlyMap<NodeKey, Node>;
+  /** By address, see `toMappingKey`. */
+  readonly mapping: ReadonlyMap<string, MappingEntry>;
+};
 
 export function toState(space: AddressSpace): ModelState {
-  return { header: space.own.header, nodes: new Map(space.listOwnNodes().map((node) => [node.key, node])) };
+  return {
+    header: space.own.header,
+    nodes: new Map(space.listOwnNodes().map((node) => [node.key, node])),
+    mapping: new Map(listMappingEntries(space.own.mapping).map((entry) => [toMappingKey(entry), entry])),
+  };
 }
 
 /** An edge with the ends that declare it. */

@@ -41,6 +41,7 @@ export function listStateOperations(space: AddressSpace, wanted: ModelState): Op
     ...additions.operations,
     ...listReferenceAdditions(plan, present, wantedEdges, additions.covered),
     ...listHeaderChanges(space, wanted),
+    ...listMappingChanges(space, wanted),
   ];
 }
 
@@ -199,4 +200,19 @@ function listHeaderChanges(space: AddressSpace, wanted: ModelState): Operation[]
     if (isSameJson(old[field], now[field])) return [];
     return [{ kind: "setHeader", field, ...(now[field] === undefined ? {} : { value: now[field] }) }];
   });
+}
+
+function listMappingChanges(space: AddressSpace, wanted: ModelState): Operation[] {
+  const present = toState(space).mapping;
+  const operations: Operation[] = [];
+  for (const [id, { part, owner, id: name }] of present) {
+    if (!wanted.mapping.has(id)) operations.push({ kind: "setMapping", part, owner, id: name });
+  }
+  for (const [id, { part, owner, id: name, value }] of wanted.mapping) {
+    const old = present.get(id);
+    if (old && isSameJson(old.value, value)) continue;
+    const isDangling = !wanted.nodes.has(owner);
+    operations.push({ kind: "setMapping", part, owner, id: name, value, ...(isDangling ? { isDangling: true } : {}) });
+  }
+  return operations;
 }
