@@ -1,5 +1,5 @@
 import type { AddressSpace } from "~/domain/address-space/address-space";
-import type { Node } from "~/domain/address-space/node";
+import { hasValueAttributes, type Node } from "~/domain/address-space/node";
 import type { Finding } from "~/domain/checks/finding";
 import { useEffect, useState, useSyncExternalStore } from "react";
 import { formatPath, getNodeName, isProperty } from "../model/member-facts";
@@ -13,6 +13,7 @@ import { cx } from "../ui/cx";
 import { IdentityColumn } from "./identity-column";
 import { ReferenceColumn } from "./reference-column";
 import { TextColumn } from "./text-column";
+import { hasDraft, ValueBench } from "./value-bench";
 import { ValueColumn } from "./value-column";
 import "./drawer.css";
 
@@ -106,10 +107,12 @@ function Columns({ space, node }: { space: AddressSpace; node: Node }) {
   const { actions } = useOpenModel();
   const readOnly = !actions.mayChange(node.key);
   const isWide = node.nodeClass === "Method" || node.nodeClass === "DataType";
+  const [isValueOpen, setValueOpen] = useState(() => hasDraft(node.key));
+  if (isValueOpen && hasValueAttributes(node)) return <ValueBench space={space} node={node} readOnly={readOnly} onClose={() => setValueOpen(false)} />;
   return (
     <div className={cx("particulars", isWide && "is-wide")}>
       <IdentityColumn space={space} node={node} readOnly={readOnly} />
-      <ValueColumn space={space} node={node} readOnly={readOnly} />
+      <ValueColumn space={space} node={node} readOnly={readOnly} onOpenValue={() => setValueOpen(true)} />
       <TextColumn node={node} readOnly={readOnly} />
       <ReferenceColumn space={space} node={node} />
     </div>

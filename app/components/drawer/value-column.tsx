@@ -5,7 +5,6 @@ import { formatValueRank, VALUE_RANKS } from "../model/member-facts";
 import { TypeField } from "../model/type-search";
 import { UnitField } from "../model/unit-search";
 import { useOpenModel } from "../model/use-model";
-import { formatValueText } from "../model/value-text";
 import { Select } from "../ui/field";
 import { ArgumentTables } from "./argument-tables";
 import { EnumerationTable } from "./enumeration-table";
@@ -13,19 +12,20 @@ import { MembersColumn } from "./members-column";
 import { CommitField, Particular } from "./particular";
 import { RangeDimension } from "./range-dimension";
 import { ReferenceTypeColumn } from "./reference-type-column";
+import { ValueRow } from "./value-row";
 
 /** What the node carries: DataType, rank, unit and range of a Variable, arguments of a Method, fields of an enumeration. */
-export function ValueColumn({ space, node, readOnly }: { space: AddressSpace; node: Node; readOnly: boolean }) {
+export function ValueColumn({ space, node, readOnly, onOpenValue }: { space: AddressSpace; node: Node; readOnly: boolean; onOpenValue: () => void }) {
   if (node.nodeClass === "Method") return <ArgumentTables space={space} node={node} readOnly={readOnly} />;
   if (node.nodeClass === "DataType") return <EnumerationTable space={space} node={node} readOnly={readOnly} />;
-  if (hasValueAttributes(node)) return <VariableValue space={space} node={node} readOnly={readOnly} />;
+  if (hasValueAttributes(node)) return <VariableValue space={space} node={node} readOnly={readOnly} onOpenValue={onOpenValue} />;
   if (node.nodeClass === "ReferenceType") return <ReferenceTypeColumn node={node} readOnly={readOnly} />;
   return <MembersColumn space={space} node={node} readOnly={readOnly} />;
 }
 
 type VariableProps = { space: AddressSpace; node: Extract<Node, { nodeClass: "Variable" | "VariableType" }>; readOnly: boolean };
 
-function VariableValue({ space, node, readOnly }: VariableProps) {
+function VariableValue({ space, node, readOnly, onOpenValue }: VariableProps & { onOpenValue: () => void }) {
   const { actions } = useOpenModel();
   const isVariable = node.nodeClass === "Variable";
   const unit = isVariable ? findUnitOf(space, node.key) : undefined;
@@ -58,18 +58,7 @@ function VariableValue({ space, node, readOnly }: VariableProps) {
         <Particular label="Unit">{(id) => <UnitField id={id} label="Unit" value={unit} readOnly={readOnly} onPick={(picked) => actions.setUnit([node.key], picked)} />}</Particular>
       ) : null}
       {isVariable ? <RangeRow space={space} node={node} readOnly={readOnly} /> : null}
-      <Particular label="Value">
-        {(id) => (
-          <CommitField
-            id={id}
-            mono
-            value={formatValueText(space, node)}
-            readOnly={readOnly}
-            placeholder="none"
-            onCommit={(text) => actions.changeCells([{ key: node.key, column: "value", text }], "set-value")}
-          />
-        )}
-      </Particular>
+      <Particular label="Value">{(id) => <ValueRow id={id} space={space} node={node} readOnly={readOnly} onOpen={onOpenValue} />}</Particular>
     </section>
   );
 }

@@ -66,6 +66,11 @@ export class ModelActions {
     return edit.made;
   }
 
+  /** A command of a form of its own as one transaction. Answers whether it went through. */
+  apply(label: string, ...steps: readonly EditStep[]): boolean {
+    return this.#run(label, steps) !== undefined;
+  }
+
   /** Brings copies in line with what they were made from. */
   #follow(consequences: readonly Consequence[]): void {
     this.#run("follow-type", [(space, context) => applyConsequences(space, context, { consequences })]);

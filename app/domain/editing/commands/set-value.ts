@@ -6,6 +6,7 @@ import { problem, type Problem, type Result } from "../../core/result";
 import { SpaceDataTypes } from "../../nodeset/values/data-type-shapes";
 import { checkVariant } from "../../nodeset/values/check-variant";
 import { readValue } from "../../nodeset/values/read-value";
+import { isSameValue } from "../../nodeset/values/same-value";
 import { isWritableText } from "../../nodeset/values/scalar-text";
 import type { Variant } from "../../nodeset/values/variant";
 import { writeValue } from "../../nodeset/values/write-value";
@@ -36,9 +37,19 @@ export function setValueOn(draft: EditDraft, key: NodeKey, value: Variant | unde
     draft.fail(misfit);
     return;
   }
-  const written = writeValue(value, new SpaceDataTypes(draft.space));
+  const types = new SpaceDataTypes(draft.space);
+  if (isWrittenAlready(draft.space, key, value, types)) return;
+  const written = writeValue(value, types);
   if (isWritableText(written.xml)) draft.set(key, "value", written);
   else draft.fail(problem("value.character", undefined, { node: key, attribute: "value" }));
+}
+
+/** The same value keeps the text that a file gave it, to the last space. */
+function isWrittenAlready(space: AddressSpace, key: NodeKey, value: Variant, types: SpaceDataTypes): boolean {
+  const node = space.getNode(key);
+  if (!node || !hasValueAttributes(node) || !node.value) return false;
+  const read = readValue(node.value, types);
+  return read.ok && isSameValue(read.value, value);
 }
 
 function findMisfit(space: AddressSpace, key: NodeKey, value: Variant): Problem | undefined {
