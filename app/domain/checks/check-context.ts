@@ -1,33 +1,23 @@
 /**
- * What rules see of an address space, and the memory of what they saw.
- *
- * Every answer sits in a slot (slots.ts). After an edit, `update` drops the slots that the edit can have changed and
- * answers the checks that must run again, nothing else. Slots are fine where many nodes meet: edges are kept apart by
- * direction and by group (HasSubtype, other hierarchical, rest), so that a new instance does not disturb those who only
- * asked for its type's supertype.
+ * What rules see of an address space: questions to the graph, all of them noted, so that an edit finds the checks that must
+ * run again (graph-memory.ts).
  */
 import type { AddressSpace, Layer } from "../address-space/address-space";
-import { listDistinctEdges, type Edge } from "../address-space/edge-index";
+import type { Edge } from "../address-space/edge-index";
 import type { ModelHeader } from "../address-space/model-header";
-import { isTypeNode, type Node } from "../address-space/node";
+import { isTypeNode, type Node, type NodeClass } from "../address-space/node";
 import { formatNodeId, parseNodeId, type NodeId, type NodeKey } from "../address-space/node-id";
 import { formatQualifiedName, type QualifiedName } from "../address-space/qualified-name";
-import { StandardReferenceType } from "../address-space/standard-ids";
 import { getReferenceTypes } from "../address-space/type-hierarchy";
-import { listMovedEdges } from "./moved-edges";
-import { groupByNodeId, hasTwins } from "./twins";
-import { dropSlot, Slot, type Computation, type Subject } from "./slots";
-import { addTypeName, getTypeNames, makeTypeNames, removeTypeName, type TypeNames } from "./type-names";
+import { GraphMemory, type Lookup as LookupOf } from "./graph-memory";
 import { usesNamespace } from "./namespace-use";
-import { Answer, EdgeSlot, FROM, HIERARCHICAL, NodeSlot, OTHER, SUBTYPE, TO, View } from "./views";
-
-const NO_EDGES: readonly Edge[] = [];
-
-/** Up to this many edges all groups are sorted out in one go; of hubs (PropertyType, Mandatory) only what is asked for. */
-const HUB = 64;
+import type { Subject } from "./slots";
+import { groupByNodeId, hasTwins } from "./twins";
+import { addTypeName, getTypeNames, makeTypeNames, removeTypeName, type TypeNames } from "./type-names";
+import { FROM, HIERARCHICAL, OTHER, SUBTYPE, TO } from "./views";
 
 /** A lookup worth remembering; `makeLookup` makes it. */
-export type Lookup<T> = { readonly number: number; readonly compute: (ctx: CheckContext, key: NodeKey) => T };
+export type Lookup<T> = LookupOf<CheckContext, T>;
 
 let lookups = 0;
 
@@ -37,67 +27,64 @@ export function makeLookup<T>(compute: Lookup<T>["compute"]): Lookup<T> {
 }
 
 export class CheckContext {
-  #space: AddressSpace;
-  readonly #views = new Map<NodeKey, View>();
-  /** Checks ask for the same node many times in a row. */
-  #lastKey: NodeKey | undefined;
-  #lastView = new View();
+  readonly #memory: GraphMemory;
   readonly #typeNames: TypeNames;
-  /** Slots of questions that are not about one node: who has a name, who has an id, who uses a namespace. */
-  readonly #slots = new Map<string, Slot>();
+  #uris: Uris;
   readonly #witnesses = new Map<string, NodeKey>();
   #twins: ReadonlyMap<string, readonly NodeKey[]> | undefined;
-  readonly #hierarchical: ReadonlySet<NodeKey>;
   readonly #required: readonly Layer[];
   readonly #requiredUris: ReadonlySet<string>;
-  readonly #isTracked: boolean;
-  #reader: Computation | undefined;
 
   /** Without tracking reads are not noted, which a single full run does not need; `update` then must not be called. */
   constructor(space: AddressSpace, isTracked = true) {
-    this.#space = space;
-    this.#isTracked = isTracked;
-    this.#hierarchical = getReferenceTypes(space, StandardReferenceType.HierarchicalReferences);
+    this.#memory = new GraphMemory(space, isTracked);
     this.#required = space.layers.slice(0, -1);
     this.#requiredUris = new Set(this.#required.flatMap((l) => l.header.models.map((m) => m.modelUri)));
     this.#typeNames = makeTypeNames(space.own);
+    this.#uris = listUris(space.own.header);
+  }
+
+  get #space(): AddressSpace {
+    return this.#memory.space;
   }
 
   node(key: NodeKey): Node | undefined {
-    const view = this.#view(key);
-    const slot = (view.node ??= new NodeSlot(this.#space.getNode(key)));
-    slot.note(this.#reader);
-    return slot.node;
+    return this.#memory.node(key);
+  }
+
+  /** The NodeClass; undefined where there is no node. Who asks no more is not disturbed by other changes of the node. */
+  classOf(key: NodeKey): NodeClass | undefined {
+    return this.#memory.classOf(key);
   }
 
   /** Edges from the node that are hierarchical, HasSubtype left out. */
   childEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, FROM, HIERARCHICAL);
+    return this.#memory.edges(key, FROM, HIERARCHICAL);
   }
 
   /** Edges to the node that are hierarchical, HasSubtype left out. */
   parentEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, TO, HIERARCHICAL);
+    return this.#memory.edges(key, TO, HIERARCHICAL);
   }
 
   /** HasSubtype edges to the node; the supertypes are their sources. */
   supertypeEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, TO, SUBTYPE);
+    return this.#memory.edges(key, TO, SUBTYPE);
   }
 
   /** HasSubtype edges from the node; the subtypes are their targets. */
   subtypeEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, FROM, SUBTYPE);
+    return this.#memory.edges(key, FROM, SUBTYPE);
   }
 
   /** Non-hierarchical edges from the node. */
   otherEdges(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, FROM, OTHER);
+    return this.#memory.edges(key, FROM, OTHER);
   }
 
   /** Non-hierarchical edges to the node. */
   otherEdgesTo(key: NodeKey): readonly Edge[] {
-    return this.#edges(key, TO, OTHER);
+    return this.#memory.edges(key, TO, OTHER);
   }
 
   edgesFrom(key: NodeKey): Edge[] {
@@ -114,12 +101,23 @@ export class CheckContext {
   }
 
   isHierarchical(referenceType: NodeKey): boolean {
-    return this.#hierarchical.has(referenceType);
+    return this.#memory.isHierarchical(referenceType);
   }
 
   get header(): ModelHeader {
-    this.#note("header");
+    this.#memory.note("header");
     return this.#space.own.header;
+  }
+
+  /** URIs of the models and of the whole namespace table: what rules about nodes ask of the header. */
+  get modelUris(): readonly string[] {
+    this.#memory.note("uris");
+    return this.#uris.models;
+  }
+
+  get namespaceUris(): readonly string[] {
+    this.#memory.note("uris");
+    return this.#uris.namespaces;
   }
 
   /** The layers of the required models; a change of these starts a new context. */
@@ -128,13 +126,13 @@ export class CheckContext {
   }
 
   isOwn(key: NodeKey): boolean {
-    return this.node(key) !== undefined && this.#space.isOwn(key);
+    return this.#memory.classOf(key) !== undefined && this.#space.isOwn(key);
   }
 
   /** Keys of all types with the BrowseName, those of required models first. */
   listTypesNamed(browseName: QualifiedName): NodeKey[] {
     const name = formatQualifiedName(browseName);
-    this.#note(`type ${name}`);
+    this.#memory.note(`type ${name}`);
     const keys = this.#required.flatMap((layer) => [...(getTypeNames(layer).get(name) ?? [])]);
     return [...keys, ...[...(this.#typeNames.get(name) ?? [])].sort()];
   }
@@ -146,7 +144,7 @@ export class CheckContext {
       const key = layer.keysByNodeId.get(text);
       if (key !== undefined) return key;
     }
-    this.#note(`id ${text}`);
+    this.#memory.note(`id ${text}`);
     return this.#space.own.keysByNodeId.get(text);
   }
 
@@ -176,12 +174,12 @@ export class CheckContext {
       this.node(node.key);
       return true;
     }
-    this.#note("any node");
+    this.#memory.note("any node");
     return false;
   }
 
   hasOwnDataTypes(): boolean {
-    this.#note("data types");
+    this.#memory.note("data types");
     for (const keys of this.#typeNames.values()) {
       for (const key of keys) if (this.#space.own.nodes.get(key)?.nodeClass === "DataType") return true;
     }
@@ -190,25 +188,11 @@ export class CheckContext {
 
   /** Whether a loaded model defines the namespace; the own model counts. */
   isNamespaceLoaded(namespaceUri: string): boolean {
-    return this.#requiredUris.has(namespaceUri) || this.header.models.some((m) => m.modelUri === namespaceUri);
+    return this.#requiredUris.has(namespaceUri) || this.modelUris.includes(namespaceUri);
   }
 
   lookUp<T>(lookup: Lookup<T>, key: NodeKey): T {
-    const { answers } = this.#view(key);
-    const answer = answers[lookup.number] ?? this.#answer(lookup, key, answers);
-    answer.note(this.#reader);
-    return answer.value as T;
-  }
-
-  #answer(lookup: Lookup<unknown>, key: NodeKey, answers: (Answer | undefined)[]): Answer {
-    const answer = new Answer();
-    const { number } = lookup;
-    const forget = (): void => void (answers[number] = undefined);
-    answer.value = this.#isTracked
-      ? this.#readAs({ answer, forget, isEnded: false }, () => lookup.compute(this, key))
-      : lookup.compute(this, key);
-    answers[number] = answer;
-    return answer;
+    return this.#memory.lookUp(lookup, this, key);
   }
 
   /** NodeId text with `nsu=` of a node, loaded or not. */
@@ -258,8 +242,7 @@ export class CheckContext {
 
   /** Runs the check of a subject; what it reads is noted for it. */
   runAs(subject: Subject, run: () => void): void {
-    if (this.#isTracked) this.#readAs({ subject, isEnded: false }, run);
-    else run();
+    this.#memory.runAs(subject, run);
   }
 
   /**
@@ -270,13 +253,21 @@ export class CheckContext {
     const before = this.#space;
     const dirty = new Set<Subject>();
     if (hasTwins(before)) this.#dirtyTwins(before, after, changed, dirty);
-    this.#space = after;
+    this.#memory.space = after;
     this.#twins = undefined;
     if (hasTwins(after)) this.#dirtyTwins(before, after, changed, dirty);
-    if (before.own.header !== after.own.header) this.#drop("header", dirty);
-    if (changed.length > 0) this.#drop("any node", dirty);
+    if (before.own.header !== after.own.header) this.#moveHeader(after.own.header, dirty);
+    if (changed.length > 0) this.#memory.drop("any node", dirty);
     for (const key of changed) this.#touch(key, before.own.nodes.get(key), after.own.nodes.get(key), dirty);
     return dirty;
+  }
+
+  #moveHeader(header: ModelHeader, dirty: Set<Subject>): void {
+    this.#memory.drop("header", dirty);
+    const uris = listUris(header);
+    if (JSON.stringify(uris) === JSON.stringify(this.#uris)) return;
+    this.#uris = uris;
+    this.#memory.drop("uris", dirty);
   }
 
   /** Of two nodes with one NodeId both are told, so both are checked again when one of them changes. */
@@ -289,105 +280,20 @@ export class CheckContext {
   }
 
   #touch(key: NodeKey, old: Node | undefined, node: Node | undefined, dirty: Set<Subject>): void {
-    const view = this.#views.get(key);
-    if (view?.node) {
-      dropSlot(view.node, dirty);
-      view.node = undefined;
-    }
+    this.#memory.touch(key, old, node, dirty);
     for (const state of [old, node]) {
       if (!state) continue;
-      this.#drop(`id ${formatNodeId(state.nodeId)}`, dirty);
-      if (isTypeNode(state)) this.#drop(`type ${formatQualifiedName(state.browseName)}`, dirty);
-      if (state.nodeClass === "DataType") this.#drop("data types", dirty);
+      this.#memory.drop(`id ${formatNodeId(state.nodeId)}`, dirty);
+      if (isTypeNode(state)) this.#memory.drop(`type ${formatQualifiedName(state.browseName)}`, dirty);
+      if (state.nodeClass === "DataType") this.#memory.drop("data types", dirty);
     }
     if (old) removeTypeName(this.#typeNames, old);
     if (node) addTypeName(this.#typeNames, node);
-    for (const edge of listMovedEdges(old, node)) {
-      const group = this.#groupOf(edge.type);
-      this.#dropEdges(edge.source, FROM + group, dirty);
-      this.#dropEdges(edge.target, TO + group, dirty);
-    }
   }
+}
 
-  #dropEdges(key: NodeKey, index: number, dirty: Set<Subject>): void {
-    const edges = this.#views.get(key)?.edges;
-    const slot = edges?.[index];
-    if (!edges || !slot) return;
-    dropSlot(slot, dirty);
-    edges[index] = undefined;
-  }
+type Uris = { readonly models: readonly string[]; readonly namespaces: readonly string[] };
 
-  #drop(name: string, dirty: Set<Subject>): void {
-    const slot = this.#slots.get(name);
-    if (slot) dropSlot(slot, dirty);
-  }
-
-  #note(name: string): void {
-    if (!this.#reader) return;
-    let slot = this.#slots.get(name);
-    if (!slot) this.#slots.set(name, (slot = new Slot()));
-    slot.note(this.#reader);
-  }
-
-  #view(key: NodeKey): View {
-    if (key === this.#lastKey) return this.#lastView;
-    let view = this.#views.get(key);
-    if (!view) this.#views.set(key, (view = new View()));
-    this.#lastKey = key;
-    this.#lastView = view;
-    return view;
-  }
-
-  #edges(key: NodeKey, direction: number, group: number): readonly Edge[] {
-    const { edges } = this.#view(key);
-    const slot = edges[direction + group] ?? this.#fillEdges(edges, key, direction, group);
-    slot.note(this.#reader);
-    return slot.edges;
-  }
-
-  #fillEdges(slots: View["edges"], key: NodeKey, direction: number, group: number): EdgeSlot {
-    const bundles = this.#listBundles(key, direction);
-    const size = bundles.reduce((sum, bundle) => sum + bundle.length, 0);
-    if (size > HUB) return (slots[direction + group] = new EdgeSlot(this.#pick(bundles, group)));
-    for (const each of [SUBTYPE, HIERARCHICAL, OTHER])
-      slots[direction + each] ??= new EdgeSlot(this.#pick(bundles, each));
-    return slots[direction + group] ?? new EdgeSlot(NO_EDGES);
-  }
-
-  #listBundles(key: NodeKey, direction: number): (readonly Edge[])[] {
-    const bundles: (readonly Edge[])[] = [];
-    for (const layer of this.#space.layers) {
-      const bundle = (direction === FROM ? layer.outgoing : layer.incoming).get(key);
-      if (bundle) bundles.push(bundle.distinct);
-    }
-    return bundles;
-  }
-
-  #pick(bundles: readonly (readonly Edge[])[], group: number): readonly Edge[] {
-    let found: Edge[] | undefined;
-    for (const bundle of bundles) {
-      for (const edge of bundle) {
-        if (this.#groupOf(edge.type) !== group) continue;
-        if (found) found.push(edge);
-        else found = [edge];
-      }
-    }
-    if (!found) return NO_EDGES;
-    return bundles.length > 1 ? listDistinctEdges(found) : found;
-  }
-
-  #groupOf(type: NodeKey): number {
-    if (type === StandardReferenceType.HasSubtype) return SUBTYPE;
-    return this.#hierarchical.has(type) ? HIERARCHICAL : OTHER;
-  }
-
-  #readAs<T>(reader: Computation, run: () => T): T {
-    const outer = this.#reader;
-    this.#reader = reader;
-    try {
-      return run();
-    } finally {
-      this.#reader = outer;
-    }
-  }
+function listUris({ models, namespaceUris }: ModelHeader): Uris {
+  return { models: models.map((m) => m.modelUri), namespaces: namespaceUris };
 }

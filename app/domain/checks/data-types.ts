@@ -60,12 +60,17 @@ export function nameDataType(ctx: CheckContext, dataType: NodeKey): string {
   return ctx.node(dataType)?.browseName.name ?? dataType;
 }
 
-/** The DataType behind a TypeId of a value: one of its encodings, or the DataType itself. Undefined when it is not loaded. */
-export function findDataTypeOf(ctx: CheckContext, typeId: string): NodeKey | undefined {
+/** Of TypeIds, which are NodeId texts like keys. */
+const typeIdDataType = makeLookup<NodeKey | undefined>((ctx, typeId) => {
   const parsed = parseNodeId(typeId, []);
   if (!parsed.ok) return undefined;
   const key = ctx.findWithNodeId(parsed.value);
   if (key === undefined) return undefined;
-  if (ctx.node(key)?.nodeClass === "DataType") return key;
+  if (ctx.classOf(key) === "DataType") return key;
   return ctx.otherEdgesTo(key).find((e) => e.type === StandardReferenceType.HasEncoding)?.source;
+});
+
+/** The DataType behind a TypeId of a value: one of its encodings, or the DataType itself. Undefined when it is not loaded. */
+export function findDataTypeOf(ctx: CheckContext, typeId: string): NodeKey | undefined {
+  return ctx.lookUp(typeIdDataType, typeId as NodeKey);
 }

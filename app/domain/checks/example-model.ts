@@ -22,6 +22,7 @@ import {
   StandardType as T,
 } from "../address-space/standard-ids";
 import { list, scalar } from "./example-values";
+import type { Wiring } from "./wiring";
 
 export const EXAMPLE_URI = "http://example.org/UA/Press/";
 
@@ -52,6 +53,8 @@ type TypeParts = Common & { readonly supertype?: NodeKey; readonly isAbstract?: 
 export class ExampleModel {
   readonly uri: string;
   header: ModelHeader;
+  /** For the examples of rules about mappings and sources. */
+  wiring: Wiring | undefined;
   readonly #nodes = new Map<NodeKey, Node>();
   #nextId = 1001;
   #hasMetadata = true;

@@ -1,6 +1,7 @@
 /** What the checker says of a model. */
 import type { NodeKey } from "../address-space/node-id";
 import type { Severity } from "../core/result";
+import type { WiringPlace } from "./wiring";
 
 /** Permanent number of a rule in the catalogue, `R001` … */
 export type RuleId = `R${number}`;
@@ -19,6 +20,8 @@ export type Finding = {
   readonly browseName: string;
   readonly path: string;
   readonly attribute?: string;
+  /** For findings about wiring: the mapping, machine, source or port. */
+  readonly place?: WiringPlace;
   readonly message: string;
   readonly clause: string;
   readonly facts: readonly string[];
@@ -35,6 +38,7 @@ export type Report = {
   readonly severity?: Severity;
   readonly attribute?: string;
   readonly key?: NodeKey;
+  readonly place?: WiringPlace;
   /** For rules with several clauses: the one that this finding breaks. */
   readonly clause?: string;
   readonly data?: FindingData;

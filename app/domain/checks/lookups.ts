@@ -1,7 +1,7 @@
 /** Remembered questions that many rules ask. Each walks in a loop over tracked reads, so that cycles end. */
 import type { Edge } from "../address-space/edge-index";
-import type { Node } from "../address-space/node";
-import { isTypeNode } from "../address-space/node";
+import type { Node, NodeClass } from "../address-space/node";
+import { TYPE_CLASSES } from "./rule";
 import { OPC_UA_NAMESPACE, type NodeKey } from "../address-space/node-id";
 import { StandardReferenceType as R } from "../address-space/standard-ids";
 import { makeLookup, type CheckContext } from "./check-context";
@@ -29,12 +29,16 @@ export function isKindOf(ctx: CheckContext, type: NodeKey, ancestor: NodeKey): b
 
 /** Whether the whole chain up to a root is loaded, so that "is not below" can be said at all. */
 export function isChainLoaded(ctx: CheckContext, type: NodeKey): boolean {
-  return ctx.node(type) !== undefined && listSupertypes(ctx, type).every((t) => ctx.node(t) !== undefined);
+  return ctx.classOf(type) !== undefined && listSupertypes(ctx, type).every((t) => ctx.classOf(t) !== undefined);
 }
 
-const typeDefinition = makeLookup<NodeKey | undefined>((ctx, key) =>
-  findTarget(ctx.otherEdges(key), R.HasTypeDefinition),
-);
+const NO_KEYS: readonly NodeKey[] = [];
+
+const typeDefinitions = makeLookup<readonly NodeKey[]>((ctx, key) => {
+  let found = NO_KEYS;
+  for (const { type, target } of ctx.otherEdges(key)) if (type === R.HasTypeDefinition) found = [...found, target];
+  return found;
+});
 const modellingRule = makeLookup<NodeKey | undefined>((ctx, key) =>
   findTarget(ctx.otherEdges(key), R.HasModellingRule),
 );
@@ -44,21 +48,26 @@ function findTarget(edges: readonly Edge[], type: NodeKey): NodeKey | undefined 
   return undefined;
 }
 
+export function listTypeDefinitions(ctx: CheckContext, key: NodeKey): readonly NodeKey[] {
+  return ctx.lookUp(typeDefinitions, key);
+}
+
 export function findTypeDefinition(ctx: CheckContext, key: NodeKey): NodeKey | undefined {
-  return ctx.lookUp(typeDefinition, key);
+  return ctx.lookUp(typeDefinitions, key)[0];
 }
 
 export function findModellingRule(ctx: CheckContext, key: NodeKey): NodeKey | undefined {
   return ctx.lookUp(modellingRule, key);
 }
 
+const TYPES: ReadonlySet<NodeClass | undefined> = new Set(TYPE_CLASSES);
+
 const typeAbove = makeLookup<NodeKey | undefined>((ctx, key) => {
   const seen = new Set<NodeKey>([key]);
   for (const at of seen) {
-    for (const edge of ctx.parentEdges(at)) {
-      const parent = ctx.node(edge.source);
-      if (parent && isTypeNode(parent)) return parent.key;
-      seen.add(edge.source);
+    for (const { source } of ctx.parentEdges(at)) {
+      if (TYPES.has(ctx.classOf(source))) return source;
+      seen.add(source);
     }
   }
   return undefined;
@@ -74,10 +83,9 @@ const declaration = makeLookup<boolean>((ctx, key) => {
   const seen = new Set<NodeKey>([key]);
   for (const at of seen) {
     for (const { source } of ctx.parentEdges(at)) {
-      const parent = ctx.node(source);
-      if (!parent) continue;
-      if (parent.nodeClass === "ObjectType" || parent.nodeClass === "VariableType") return true;
-      if (findModellingRule(ctx, source) !== undefined) seen.add(source);
+      const parent = ctx.classOf(source);
+      if (parent === "ObjectType" || parent === "VariableType") return true;
+      if (parent !== undefined && findModellingRule(ctx, source) !== undefined) seen.add(source);
     }
   }
   return false;
@@ -86,6 +94,18 @@ const declaration = makeLookup<boolean>((ctx, key) => {
 /** An InstanceDeclaration: a node with a modelling rule below a type or another declaration (OPC 10000-3 §6.2.1). */
 export function isInstanceDeclaration(ctx: CheckContext, key: NodeKey): boolean {
   return ctx.lookUp(declaration, key);
+}
+
+const typeMember = makeLookup<boolean>((ctx, key) =>
+  ctx.parentEdges(key).some(({ source }) => {
+    const parent = ctx.classOf(source);
+    return parent === "ObjectType" || parent === "VariableType";
+  }),
+);
+
+/** Whether the node hangs directly on an ObjectType or a VariableType. */
+export function isMemberOfType(ctx: CheckContext, key: NodeKey): boolean {
+  return ctx.lookUp(typeMember, key);
 }
 
 const propertyRole = makeLookup<boolean>((ctx, key) => {

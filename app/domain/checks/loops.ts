@@ -8,6 +8,9 @@ type LoopLookup = Lookup<readonly NodeKey[] | undefined>;
 export function makeLoopLookup(referenceType: NodeKey): LoopLookup {
   return makeLookup((ctx, start) => {
     const types = ctx.closure(referenceType);
+    // Most nodes are leaves, which no loop runs through.
+    const isLeaf = [ctx.childEdges(start), ctx.subtypeEdges(start)].every((edges) => !edges.some((e) => types.has(e.type)));
+    if (isLeaf) return undefined;
     const below = new Map<NodeKey, NodeKey>();
     const open: NodeKey[] = [start];
     for (const at of open) {

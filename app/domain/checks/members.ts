@@ -12,6 +12,8 @@ import { findModellingRule, listSupertypes } from "./lookups";
 /** A declaration with its rule and the type (or Interface, or declaration) that it hangs on. */
 export type Member = {
   readonly node: Node;
+  /** Text of its BrowseName, by which members are matched. */
+  readonly name: string;
   readonly rule: NodeKey;
   readonly owner: NodeKey;
   readonly referenceType: NodeKey;
@@ -34,7 +36,7 @@ const ownMembers = makeLookup<readonly Member[]>((ctx, key) => {
     const rule = findModellingRule(ctx, edge.target);
     if (!node || rule === undefined || seen.has(node.key)) continue;
     seen.add(node.key);
-    found.push({ node, rule, owner: key, referenceType: edge.type });
+    found.push({ node, name: formatQualifiedName(node.browseName), rule, owner: key, referenceType: edge.type });
   }
   return found;
 });
@@ -48,8 +50,7 @@ const inheritedMembers = makeLookup<ReadonlyMap<string, Member>>((ctx, key) => {
   const members = new Map<string, Member>();
   for (const type of [key, ...listSupertypes(ctx, key)]) {
     for (const member of listOwnMembers(ctx, type)) {
-      const name = formatQualifiedName(member.node.browseName);
-      if (!members.has(name)) members.set(name, member);
+      if (!members.has(member.name)) members.set(member.name, member);
     }
   }
   return members;
@@ -58,6 +59,18 @@ const inheritedMembers = makeLookup<ReadonlyMap<string, Member>>((ctx, key) => {
 /** The members of a type with the inherited ones, by BrowseName with namespace; the nearest declaration wins. */
 export function getMembers(ctx: CheckContext, type: NodeKey): ReadonlyMap<string, Member> {
   return ctx.lookUp(inheritedMembers, type);
+}
+
+const NO_MEMBERS: readonly Member[] = [];
+
+const placeholders = makeLookup<readonly Member[]>((ctx, type) => {
+  const found = [...getMembers(ctx, type).values()].filter((m) => m.rule === M.MandatoryPlaceholder);
+  return found.length > 0 ? found : NO_MEMBERS;
+});
+
+/** The members of a type that stand for one or more others on each instance. */
+export function listMandatoryPlaceholders(ctx: CheckContext, type: NodeKey): readonly Member[] {
+  return ctx.lookUp(placeholders, type);
 }
 
 const interfaces = makeLookup<readonly NodeKey[]>((ctx, key) => {

@@ -1,28 +1,17 @@
 /** Ranges in values (OPC 10000-8 §5.6.2). */
-import type { XmlText } from "../address-space/node";
-import { listBodies, textOf } from "./value-xml";
+import { listBodiesBelow, makeTreeQuestion, textOf } from "./value-xml";
 
 export type RangeValue = { readonly low: number; readonly high: number };
 
 const NO_RANGES: readonly RangeValue[] = [];
 
-/** Values are immutable and several rules ask for the ranges of each. */
-const rangesOf = new WeakMap<XmlText, readonly RangeValue[]>();
-
 /** The ranges of a value; a limit that is left out is 0, one that cannot be read is NaN. */
-export function listRanges(value: XmlText | undefined): readonly RangeValue[] {
-  if (!value?.xml.includes("Range")) return NO_RANGES;
-  let ranges = rangesOf.get(value);
-  if (!ranges) rangesOf.set(value, (ranges = readRanges(value)));
-  return ranges;
-}
-
-function readRanges(value: XmlText): RangeValue[] {
-  return listBodies(value, "Range").map((body) => ({
+export const listRanges = makeTreeQuestion(NO_RANGES, (root) =>
+  listBodiesBelow(root, "Range").map((body) => ({
     low: toNumber(textOf(body, "Low")),
     high: toNumber(textOf(body, "High")),
-  }));
-}
+  })),
+);
 
 function toNumber(text: string): number {
   if (text === "") return 0;

@@ -8,12 +8,13 @@
 import type { Node, NodeClass } from "../address-space/node";
 import type { Result, Severity } from "../core/result";
 import type { NodeIdAllocator } from "../editing/allocate-node-id";
-import type { Operation } from "../editing/operation";
+import type { AttributeName, Operation } from "../editing/operation";
 import type { AddressSpace } from "../address-space/address-space";
 import type { NodeKey } from "../address-space/node-id";
 import type { CheckContext } from "./check-context";
 import type { ExampleModel } from "./example-model";
 import type { Finding, ReportFunction, RuleId } from "./finding";
+import type { Wiring } from "./wiring";
 
 /** Answers the operations that mend a finding, all in one undo step; new nodes take their NodeIds from `ids`. */
 export type Fix = {
@@ -22,8 +23,14 @@ export type Fix = {
   readonly apply: (space: AddressSpace, finding: Finding, ids: NodeIdAllocator) => Result<readonly Operation[]>;
 };
 
-/** Builds a small model; the bad one answers the node that the rule must name ("model" for the model as a whole). */
-export type Example = { readonly text: string; readonly build: (m: ExampleModel) => NodeKey | "model" | undefined };
+/**
+ * Builds a small model; the bad one answers the node that the rule must name: "model" for the model as a whole, the name of
+ * the place for a finding about wiring without a node.
+ */
+export type Example = {
+  readonly text: string;
+  readonly build: (m: ExampleModel) => NodeKey | "model" | `place ${string}` | undefined;
+};
 
 type RuleBase = {
   readonly id: RuleId;
@@ -41,12 +48,37 @@ type RuleBase = {
   readonly fix?: Fix;
 };
 
+/**
+ * What a rule may need of a node to have a say. `declares members`: a type or an InstanceDeclaration. `type above`: a type
+ * from which hierarchical references lead down to the node; `member of type`: directly. `text id`: a NodeId that is no number.
+ */
+export const NEEDS = [
+  "value",
+  "structure",
+  "children",
+  "modelling rule",
+  "declares members",
+  "type above",
+  "no type above",
+  "member of type",
+  "property",
+  "no property",
+  "text id",
+] as const;
+export type Need = (typeof NEEDS)[number];
+
+/** A rule is called for nodes that meet all that it says here, which spares most nodes most rules. */
 export type NodeRule = RuleBase & {
   readonly concerns: readonly NodeClass[];
-  /** Only nodes that declare a reference of this type or below it are looked at, which spares most nodes most rules. */
+  readonly needs?: readonly Need[];
+  /** The node declares a reference of this type or below it. */
   readonly declares?: NodeKey;
-  /** Likewise only nodes that have a value, or children. */
-  readonly needs?: "value" | "children";
+  /** The node has one of these attributes. */
+  readonly attributes?: readonly AttributeName[];
+  /** The type definition is one of these types or below. */
+  readonly types?: readonly NodeKey[];
+  /** The node has one of these names of namespace 0. */
+  readonly standardNames?: readonly string[];
   readonly check: (node: Node, ctx: CheckContext, report: ReportFunction) => void;
 };
 
@@ -55,7 +87,13 @@ export type ModelRule = RuleBase & {
   readonly check: (ctx: CheckContext, report: ReportFunction) => void;
 };
 
-export type Rule = NodeRule | ModelRule;
+/** A rule over mappings, machines, sources and ports; it runs only where these are handed in. */
+export type WiringRule = RuleBase & {
+  readonly concerns: "wiring";
+  readonly check: (wiring: Wiring, ctx: CheckContext, report: ReportFunction) => void;
+};
+
+export type Rule = NodeRule | ModelRule | WiringRule;
 
 export const ALL_CLASSES: readonly NodeClass[] = [
   "Object",

@@ -1,37 +1,59 @@
 /**
- * Slots note who read them. A computation is the check of one node, the check of the model, or a remembered lookup;
- * dropping a slot ends all computations that read it, lookups that read these, and so on, and answers the checks met.
+ * Slots note who read them. A reader is the check of one subject, or a remembered lookup; dropping a slot ends all that
+ * read it, lookups that read these, and so on, and answers the subjects met.
  */
 import type { NodeKey } from "../address-space/node-id";
 
-export type Subject = NodeKey | "model";
+/** What is checked in one go: a node, the model's header, the wiring of the machines. */
+export type Subject = NodeKey | "model" | "wiring";
 
-export type Computation = {
-  /** For checks. */
-  readonly subject?: Subject;
-  /** For lookups: the slot of the answer, and how to forget it. */
-  readonly answer?: Slot;
-  readonly forget?: () => void;
-  isEnded: boolean;
-};
+/** The check of one subject. */
+export class SubjectReader {
+  readonly subject: Subject;
+  isEnded = false;
+
+  constructor(subject: Subject) {
+    this.subject = subject;
+  }
+}
+
+export type Reader = SubjectReader | Answer;
 
 export class Slot {
-  #readers: Computation[] | undefined = undefined;
-  #lastReader: Computation | undefined = undefined;
+  #readers: Reader[] | undefined = undefined;
+  #lastReader: Reader | undefined = undefined;
 
   /** Notes a read; reading twice in a row costs one comparison. */
-  note(reader: Computation | undefined): void {
-    if (reader === undefined || this.#lastReader === reader) return;
+  note(reader: Reader): void {
+    if (this.#lastReader === reader) return;
     this.#lastReader = reader;
     if (this.#readers) this.#readers.push(reader);
     else this.#readers = [reader];
   }
 
-  takeReaders(): readonly Computation[] {
+  takeReaders(): readonly Reader[] {
     const readers = this.#readers ?? [];
     this.#readers = undefined;
     this.#lastReader = undefined;
     return readers;
+  }
+}
+
+/** The answer of a lookup, in the place where it is remembered: a slot for those who ask, a reader of what it came from. */
+export class Answer extends Slot {
+  value: unknown = undefined;
+  isEnded = false;
+  readonly #home: (Answer | undefined)[];
+  readonly #place: number;
+
+  constructor(home: (Answer | undefined)[], place: number) {
+    super();
+    this.#home = home;
+    this.#place = place;
+  }
+
+  forget(): void {
+    if (this.#home[this.#place] === this) this.#home[this.#place] = undefined;
   }
 }
 
@@ -42,9 +64,10 @@ export function dropSlot(slot: Slot, dirty: Set<Subject>): void {
     for (const reader of at.takeReaders()) {
       if (reader.isEnded) continue;
       reader.isEnded = true;
-      reader.forget?.();
-      if (reader.subject !== undefined) dirty.add(reader.subject);
-      if (reader.answer) open.push(reader.answer);
+      if (reader instanceof Answer) {
+        reader.forget();
+        open.push(reader);
+      } else dirty.add(reader.subject);
     }
   }
 }

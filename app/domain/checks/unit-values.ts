@@ -1,7 +1,6 @@
 /** EUInformation in values, and the codes behind unit ids (OPC 10000-8 §5.6.3). */
-import type { XmlText } from "../address-space/node";
 import { UNECE_URI } from "./example-values";
-import { listBodies, textOf } from "./value-xml";
+import { listBodiesBelow, makeTreeQuestion, textOf } from "./value-xml";
 
 export const IEC_URI = "http://www.opcfoundation.org/UA/units/cdd/IEC62720";
 
@@ -17,26 +16,16 @@ export type UnitValue = {
 
 const NO_UNITS: readonly UnitValue[] = [];
 
-/** Values are immutable and several rules ask for the units of each. */
-const unitsOf = new WeakMap<XmlText, readonly UnitValue[]>();
-
-export function listUnits(value: XmlText | undefined): readonly UnitValue[] {
-  if (!value?.xml.includes("EUInformation")) return NO_UNITS;
-  let units = unitsOf.get(value);
-  if (!units) unitsOf.set(value, (units = readUnits(value)));
-  return units;
-}
-
-function readUnits(value: XmlText): UnitValue[] {
-  return listBodies(value, "EUInformation").map((body) => ({
+export const listUnits = makeTreeQuestion(NO_UNITS, (root) =>
+  listBodiesBelow(root, "EUInformation").map((body) => ({
     uri: textOf(body, "NamespaceUri"),
     unitId: textOf(body, "UnitId"),
     symbol: textOf(body, "DisplayName", "Text"),
     symbolLocale: textOf(body, "DisplayName", "Locale"),
     name: textOf(body, "Description", "Text"),
     nameLocale: textOf(body, "Description", "Locale"),
-  }));
-}
+  })),
+);
 
 /** Whether a URI differs from a known one only by scheme, www, letter case, closing slash or blanks. */
 export function isNearMiss(uri: string, known: string): boolean {

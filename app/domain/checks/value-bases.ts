@@ -4,7 +4,7 @@
  */
 import { hasValueAttributes, type Node, type VariableNode, type VariableTypeNode } from "../address-space/node";
 import { formatQualifiedName } from "../address-space/qualified-name";
-import type { CheckContext } from "./check-context";
+import { makeLookup, type CheckContext } from "./check-context";
 import { findTypeDefinition, listSupertypes } from "./lookups";
 import { findInheritedMember, getMembers, isNaming, listInterfaces } from "./members";
 
@@ -14,7 +14,11 @@ export type ValueBase = {
   readonly role: "its VariableType" | "its supertype" | "the overridden declaration" | "the declaration in the type";
 };
 
-export function listValueBases(node: VariableNode | VariableTypeNode, ctx: CheckContext): ValueBase[] {
+const NO_BASES: readonly ValueBase[] = [];
+
+const valueBases = makeLookup<readonly ValueBase[]>((ctx, key) => {
+  const node = ctx.node(key);
+  if (!node || !hasValueAttributes(node)) return NO_BASES;
   const bases: ValueBase[] = [];
   const add = (base: Node | undefined, role: ValueBase["role"]): void => {
     if (base && base.key !== node.key && hasValueAttributes(base)) bases.push({ base, role });
@@ -42,4 +46,8 @@ export function listValueBases(node: VariableNode | VariableTypeNode, ctx: Check
     }
   }
   return bases;
+});
+
+export function listValueBases({ key }: VariableNode | VariableTypeNode, ctx: CheckContext): readonly ValueBase[] {
+  return ctx.lookUp(valueBases, key);
 }

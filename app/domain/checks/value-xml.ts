@@ -1,4 +1,7 @@
-/** Values as element trees, each read once: values are immutable and shared by all states of a model. */
+/**
+ * Values as element trees, each read once: values are immutable and shared by all states of a model. Values of the same text
+ * (a unit, a usual range) share one tree.
+ */
 import type { XmlText } from "../address-space/node";
 import { findChild, readValueElements, type ValueElement } from "./value-element";
 
@@ -11,10 +14,39 @@ export type ValueTree =
 
 const trees = new WeakMap<XmlText, ValueTree>();
 
+/** The texts met last; short ones, since long ones hardly repeat. */
+const byText = new Map<string, ValueTree>();
+const MAX_TEXTS = 2_000;
+const MAX_LENGTH = 2_000;
+
 export function readValueTree(value: XmlText): ValueTree {
   let tree = trees.get(value);
-  if (!tree) trees.set(value, (tree = makeTree(value)));
+  if (!tree) trees.set(value, (tree = findTree(value)));
   return tree;
+}
+
+function findTree(value: XmlText): ValueTree {
+  if (value.xml.length > MAX_LENGTH) return makeTree(value);
+  let text = value.xml;
+  for (const prefix in value.prefixes) text += `\n${prefix}=${value.prefixes[prefix] ?? ""}`;
+  let tree = byText.get(text);
+  if (tree) return tree;
+  tree = makeTree(value);
+  if (byText.size >= MAX_TEXTS) byText.clear();
+  byText.set(text, tree);
+  return tree;
+}
+
+/** Asks something of values, once of each tree. `compute` depends on nothing else. */
+export function makeTreeQuestion<T>(absent: T, compute: (root: ValueElement) => T): (value: XmlText | undefined) => T {
+  const answers = new WeakMap<ValueElement, { readonly answer: T }>();
+  return (value) => {
+    const root = findValueRoot(value);
+    if (!root) return absent;
+    let known = answers.get(root);
+    if (!known) answers.set(root, (known = { answer: compute(root) }));
+    return known.answer;
+  };
 }
 
 /** The element of a value that is there and well formed. */
@@ -65,7 +97,11 @@ export function findTypeId(extensionObject: ValueElement): string | undefined {
 
 /** Bodies named after a standard structure, wherever they stand in the value. */
 export function listBodies(value: XmlText | undefined, name: string): ValueElement[] {
-  return listExtensionObjects(findValueRoot(value)).flatMap((e) => {
+  return listBodiesBelow(findValueRoot(value), name);
+}
+
+export function listBodiesBelow(root: ValueElement | undefined, name: string): ValueElement[] {
+  return listExtensionObjects(root).flatMap((e) => {
     const body = findBody(e);
     return body?.name === name ? [body] : [];
   });

@@ -1,7 +1,7 @@
 /** The slots of one node: itself, its edges by direction and group, answers of lookups. */
 import type { Edge } from "../address-space/edge-index";
-import type { Node } from "../address-space/node";
-import { Slot } from "./slots";
+import type { Node, NodeClass } from "../address-space/node";
+import { Slot, type Answer } from "./slots";
 
 export class NodeSlot extends Slot {
   readonly node: Node | undefined;
@@ -9,6 +9,16 @@ export class NodeSlot extends Slot {
   constructor(node: Node | undefined) {
     super();
     this.node = node;
+  }
+}
+
+/** NodeClass and existence, which many ask for and hardly an edit changes. */
+export class ClassSlot extends Slot {
+  readonly nodeClass: NodeClass | undefined;
+
+  constructor(nodeClass: NodeClass | undefined) {
+    super();
+    this.nodeClass = nodeClass;
   }
 }
 
@@ -21,10 +31,6 @@ export class EdgeSlot extends Slot {
   }
 }
 
-export class Answer extends Slot {
-  value: unknown = undefined;
-}
-
 /** HasSubtype, other hierarchical references, the rest; first those from the node, then those to it. */
 export const FROM = 0;
 export const TO = 3;
@@ -34,6 +40,7 @@ export const OTHER = 2;
 
 export class View {
   node: NodeSlot | undefined = undefined;
+  nodeClass: ClassSlot | undefined = undefined;
   readonly edges: (EdgeSlot | undefined)[] = [undefined, undefined, undefined, undefined, undefined, undefined];
   /** By the number of the lookup. */
   readonly answers: (Answer | undefined)[] = [];

@@ -15,14 +15,14 @@ export const r002: NodeRule = {
   check(node, ctx, report) {
     const twins = ctx.listTwins(node);
     for (const twin of twins) {
-      const isModelTwice = !ctx.isOwn(twin) && ctx.header.models.some((m) => m.modelUri === node.nodeId.namespaceUri);
+      const isModelTwice = !ctx.isOwn(twin) && ctx.modelUris.includes(node.nodeId.namespaceUri);
       if (isModelTwice) continue;
       report({
         attribute: "nodeId",
         message: `The NodeId ${formatNodeId(node.nodeId)} is given twice.`,
         facts: [
           `This node: ${node.browseName.name}, ${node.nodeClass}`,
-          `The other: ${ctx.nameOf(twin)}, ${ctx.node(twin)?.nodeClass ?? "unknown class"}, in ${ctx.isOwn(twin) ? "this model" : "a required model"}`,
+          `The other: ${ctx.nameOf(twin)}, ${ctx.classOf(twin) ?? "unknown class"}, in ${ctx.isOwn(twin) ? "this model" : "a required model"}`,
         ],
       });
     }

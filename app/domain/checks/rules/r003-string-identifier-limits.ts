@@ -11,6 +11,7 @@ export const r003: NodeRule = {
   clause: clause(3, "§8.2.4"),
   priority: 2,
   concerns: ALL_CLASSES,
+  needs: ["text id"],
   condition:
     "A text identifier has at most 4096 characters and no control characters, an opaque one at most 4096 bytes.",
   why: "Longer identifiers are refused by servers, and invisible characters make two identifiers look alike.",

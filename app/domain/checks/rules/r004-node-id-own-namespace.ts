@@ -13,15 +13,15 @@ export const r004: NodeRule = {
   condition: "A node that the model defines carries the namespace URI of one of the model's own rows in Models.",
   why: "The namespace names who assigns identifiers. A node in a foreign namespace collides with the next version of that model, and other tools take it for a part of it.",
   check(node, ctx, report) {
-    const { models } = ctx.header;
+    const { modelUris } = ctx;
     const { namespaceUri } = node.nodeId;
-    if (models.length === 0 || models.some((m) => m.modelUri === namespaceUri)) return;
+    if (modelUris.length === 0 || modelUris.includes(namespaceUri)) return;
     report({
       attribute: "nodeId",
       message: `${node.browseName.name} is numbered in the foreign namespace ${namespaceUri}.`,
       facts: [
         `NodeId: ${formatNodeId(node.nodeId)}`,
-        `This model defines: ${models.map((m) => m.modelUri).join(", ")}`,
+        `This model defines: ${modelUris.join(", ")}`,
       ],
     });
   },

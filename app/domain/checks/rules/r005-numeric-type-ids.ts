@@ -11,10 +11,10 @@ export const r005: NodeRule = {
   clause: `${clause(6, "§5.1.8")} for encodings; types: common practice, no source`,
   priority: 2,
   concerns: ALL_CLASSES,
+  needs: ["text id"],
   condition: "Encodings of DataTypes have numeric identifiers. Types should have them too: there it is a hint.",
   why: "Every message carries the identifier of the encoding: a number takes four bytes, a text takes its length, and some stacks know numbers only.",
   check(node, ctx, report) {
-    if (node.nodeId.type === "i") return;
     const type = findTypeDefinition(ctx, node.key);
     const isEncoding = type !== undefined && isKindOf(ctx, type, T.DataTypeEncodingType);
     if (!isEncoding && !isTypeNode(node)) return;

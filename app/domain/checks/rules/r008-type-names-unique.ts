@@ -20,7 +20,7 @@ export const r008: NodeRule = {
         message: `The type name ${node.browseName.name} is taken already.`,
         facts: [
           `BrowseName: ${formatQualifiedName(node.browseName)}`,
-          `Also borne by the ${ctx.node(twin)?.nodeClass ?? "type"} ${ctx.describe(twin)}`,
+          `Also borne by the ${ctx.classOf(twin) ?? "type"} ${ctx.describe(twin)}`,
         ],
       });
     }

@@ -1,6 +1,5 @@
 import type { NodeKey } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
-import { isInstanceDeclaration } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
 export const r009: NodeRule = {
@@ -10,12 +9,10 @@ export const r009: NodeRule = {
   clause: clause(3, "§4.6.4, §5.5.1, §5.5.2, §5.6.4, §5.6.5, §5.7.1, §6.2.6"),
   priority: 1,
   concerns: ["ObjectType", "VariableType", "Object", "Variable", "Method"],
-  needs: "children",
+  needs: ["children", "declares members"],
   condition: "All children of a type or an instance declaration have different BrowseNames, namespace included.",
   why: "A browse path from the type would have two targets, so instances cannot say which of the two a member comes from.",
   check(node, ctx, report) {
-    const isType = node.nodeClass === "ObjectType" || node.nodeClass === "VariableType";
-    if (!isType && !isInstanceDeclaration(ctx, node.key)) return;
     const first = new Map<string, NodeKey>();
     for (const { target } of ctx.childEdges(node.key)) {
       const child = ctx.node(target);

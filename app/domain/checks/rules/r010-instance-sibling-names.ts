@@ -1,4 +1,4 @@
-import { findTypeAbove, findTypeDefinition } from "../lookups";
+import { findTypeDefinition } from "../lookups";
 import { getChildren, getMembers, isNaming } from "../members";
 import { clause, type NodeRule } from "../rule";
 
@@ -9,13 +9,13 @@ export const r010: NodeRule = {
   clause: clause(3, "§6.4.2, §6.4.1, §4.6.4"),
   priority: 2,
   concerns: ["Object", "Variable"],
-  needs: "children",
+  needs: ["children", "no type above"],
   condition:
     "A plain instance has one child of the name of a Mandatory or Optional declaration of its type. Other names may repeat.",
   why: "A browse path from the type answers two nodes: a client that takes the first may read the wrong one.",
   check(node, ctx, report) {
     const type = findTypeDefinition(ctx, node.key);
-    if (type === undefined || findTypeAbove(ctx, node.key) !== undefined) return;
+    if (type === undefined) return;
     const members = getMembers(ctx, type);
     for (const [name, same] of getChildren(ctx, node.key)) {
       const member = members.get(name);

@@ -11,7 +11,7 @@ export const r011: NodeRule = {
   clause: clause(3, "§4.5.2, §5.6.3"),
   priority: 1,
   concerns: ALL_CLASSES,
-  needs: "children",
+  needs: ["children"],
   condition: "No node has two Properties with the same BrowseName.",
   why: "Clients read Properties by name: which of two ranges or units holds is left to chance.",
   check(node, ctx, report) {

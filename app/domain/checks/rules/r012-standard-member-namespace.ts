@@ -1,6 +1,6 @@
 import { attributeFix } from "../fixes";
 import type { Node } from "../../address-space/node";
-import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
+import { OPC_UA_NAMESPACE, type NodeKey } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
@@ -20,7 +20,7 @@ export const r012: NodeRule = {
   clause: clause(3, "§5.2.4, §6.2.7"),
   priority: 1,
   concerns: ["Object", "Variable", "Method", "ObjectType", "VariableType", "DataType"],
-  needs: "children",
+  needs: ["children"],
   condition:
     "A standard Property has its BrowseName in namespace 0, and a member of a type that of its declaration, whatever namespace the NodeId has.",
   why: "Clients look for 0:EURange or 0:InputArguments by browse path. Under another namespace the range, the unit or the arguments are not found.",
@@ -101,17 +101,15 @@ function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunct
       : [findTypeDefinition(ctx, node.key)];
   const sources = types.flatMap((t) => (t === undefined ? [] : [t, ...listInterfaces(ctx, t)]));
   if (node.nodeClass === "Object") sources.push(...listInterfaces(ctx, node.key));
+  const strays = listUndeclared(node, sources, ctx);
+  if (strays.length === 0) return;
   const children = getChildren(ctx, node.key);
   const told = new Set<string>();
   for (const source of sources) {
-    for (const [name, member] of getMembers(ctx, source)) {
+    for (const { name, node: declared, owner } of getMembers(ctx, source).values()) {
       if (children.has(name)) continue;
-      const { browseName } = member.node;
-      const stray = ctx.childEdges(node.key).find((e) => ctx.node(e.target)?.browseName.name === browseName.name);
-      const child = stray && ctx.node(stray.target);
+      const child = strays.find((c) => c.browseName.name === declared.browseName.name);
       if (!child || told.has(child.key) || !ctx.isOwn(child.key) || isReportedAsStandard(node, child, ctx)) continue;
-      if (sources.some((s) => s !== node.key && getMembers(ctx, s).has(formatQualifiedName(child.browseName))))
-        continue;
       told.add(child.key);
       report({
         key: child.key,
@@ -120,12 +118,22 @@ function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunct
         message: `${child.browseName.name} has the name of a declared member but another namespace.`,
         facts: [
           `BrowseName: ${formatQualifiedName(child.browseName)}`,
-          `Declared: ${name}, by ${ctx.describe(member.owner)}`,
+          `Declared: ${name}, by ${ctx.describe(owner)}`,
         ],
-        data: { namespaceUri: browseName.namespaceUri },
+        data: { namespaceUri: declared.browseName.namespaceUri },
       });
     }
   }
+}
+
+/** Children whose BrowseName no type declares; what the node itself declares first is no member of a type above it. */
+function listUndeclared(node: Node, sources: readonly NodeKey[], ctx: CheckContext): Node[] {
+  const above = sources.filter((source) => source !== node.key).map((source) => getMembers(ctx, source));
+  const undeclared: Node[] = [];
+  for (const [name, [child]] of getChildren(ctx, node.key)) {
+    if (child && !above.some((members) => members.has(name))) undeclared.push(child);
+  }
+  return undeclared;
 }
 
 function isReportedAsStandard(node: Node, child: Node, ctx: CheckContext): boolean {

@@ -14,6 +14,7 @@ export const r014: NodeRule = {
   clause: `${clause(3, "§5.8.2, §8.51, §8.52")}, OPC 11030 v1.03 §2.1.2 (white paper)`,
   priority: 2,
   concerns: ALL_CLASSES,
+  needs: ["declares members"],
   condition:
     "Names of DataTypes and their fields begin with a letter and hold letters, digits and underscores only. Other types and declarations likewise and in PascalCase: there it is a hint.",
   why: "Code generators make identifiers of these names; other characters are replaced, differently in every tool.",

@@ -12,8 +12,9 @@ export const r015: NodeRule = {
   condition: "No two siblings and no two fields of a DataType differ in letter case only.",
   why: "People read them as one name, and tools without regard to case overwrite one with the other.",
   check(node, ctx, report) {
+    const edges = ctx.childEdges(node.key);
     const seen = new Map<string, Node>();
-    for (const { target } of ctx.childEdges(node.key)) {
+    for (const { target } of edges.length < 2 ? [] : edges) {
       const child = ctx.node(target);
       if (!child) continue;
       const folded = child.browseName.name.toLowerCase();

@@ -17,6 +17,7 @@ export const r017: NodeRule = {
   why: "A server can answer one text per language; which of two is taken differs from loader to loader.",
   check(node, _ctx, report) {
     for (const attribute of ATTRIBUTES) {
+      if ((node[attribute]?.length ?? 0) < 2) continue;
       const locales = (node[attribute] ?? []).map((t) => t.locale ?? "");
       const twice = locales.find((locale, i) => locales.indexOf(locale) !== i);
       if (twice === undefined) continue;

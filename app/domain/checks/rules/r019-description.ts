@@ -12,6 +12,7 @@ export const r019: NodeRule = {
   clause: clause(3, "§5.2.6"),
   priority: 2,
   concerns: ALL_CLASSES,
+  needs: ["declares members"],
   condition:
     "Types, and members that the model names itself, have a Description (the attribute is optional; where present it explains the meaning).",
   why: "Whoever connects to the machine in five years has nothing else to learn from what “Level2” means.",

@@ -10,6 +10,7 @@ export const r022: NodeRule = {
   clause: `${clause(6, "§F.3, Table F.2")}, UANodeSet.xsd`,
   priority: 1,
   concerns: ALL_CLASSES,
+  attributes: ["symbolicName"],
   condition:
     "A SymbolicName begins with a letter and holds letters, digits and underscores only. Where the BrowseName itself would do, it is a hint.",
   why: "Code generators use it as an identifier; the file's schema refuses anything else.",

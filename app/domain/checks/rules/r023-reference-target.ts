@@ -17,7 +17,7 @@ export const r023: NodeRule = {
   check(node, ctx, report) {
     for (const reference of node.references) {
       const { target, type, serverUri } = reference;
-      if (serverUri !== undefined || ctx.node(target)) continue;
+      if (serverUri !== undefined || ctx.classOf(target) !== undefined) continue;
       const namespace = ctx.namespaceOf(target);
       if (namespace !== undefined && !ctx.isNamespaceLoaded(namespace)) continue;
       const isNeeded = isNeededTarget(reference);

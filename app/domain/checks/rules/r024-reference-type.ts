@@ -1,5 +1,4 @@
 import { isAbstract } from "../../address-space/node";
-import type { NodeKey } from "../../address-space/node-id";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
@@ -14,10 +13,8 @@ export const r024: NodeRule = {
     "The type of every reference is a ReferenceType that is not abstract. Where its namespace is not loaded: a warning.",
   why: "A reference of an unknown or abstract type is dropped by loaders, so its target is not found by browsing.",
   check(node, ctx, report) {
-    const seen = new Set<NodeKey>();
-    for (const { type } of node.references) {
-      if (seen.has(type)) continue;
-      seen.add(type);
+    for (const [i, { type }] of node.references.entries()) {
+      if (node.references.findIndex((r) => r.type === type) < i) continue;
       const found = ctx.node(type);
       const name = node.browseName.name;
       if (!found) {

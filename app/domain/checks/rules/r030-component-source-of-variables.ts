@@ -20,7 +20,7 @@ export const r030: NodeRule = {
     const exception = ctx.closure(HasArgumentDescription);
     for (const edge of edgesDeclaredAt(node, ctx, R.HasComponent)) {
       const source = ctx.node(edge.source);
-      if (!source || ctx.node(edge.target)?.nodeClass !== "Variable" || exception.has(edge.type)) continue;
+      if (!source || ctx.classOf(edge.target) !== "Variable" || exception.has(edge.type)) continue;
       // A Property as the source is a finding of R033.
       if (["Object", "ObjectType", "Variable", "VariableType"].includes(source.nodeClass)) continue;
       report({

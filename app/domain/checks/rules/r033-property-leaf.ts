@@ -1,5 +1,5 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
-import { isProperty, ofType } from "../lookups";
+import { ofType } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 import { count } from "../texts";
 
@@ -10,11 +10,10 @@ export const r033: NodeRule = {
   clause: clause(3, "§5.6.3, §7.3, §7.8"),
   priority: 1,
   concerns: ["Variable"],
-  needs: "children",
+  needs: ["children", "property"],
   condition: "The target of a HasProperty reference has no outgoing hierarchical reference of any kind.",
   why: "Properties end the tree: clients do not browse below them, so what hangs there is never found.",
   check(node, ctx, report) {
-    if (!isProperty(ctx, node.key)) return;
     const edges = [...ctx.childEdges(node.key), ...ctx.subtypeEdges(node.key)];
     if (edges.length === 0) return;
     const owners = ofType(ctx, ctx.parentEdges(node.key), R.HasProperty).map(

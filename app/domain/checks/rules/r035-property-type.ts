@@ -1,6 +1,6 @@
 import { typeDefinitionFix } from "../fixes";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
-import { findTypeDefinition, isProperty } from "../lookups";
+import { findTypeDefinition } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
 export const r035: NodeRule = {
@@ -10,10 +10,10 @@ export const r035: NodeRule = {
   clause: `${clause(3, "§5.6.3")}, ${clause(5, "§7.3")}`,
   priority: 1,
   concerns: ["Variable"],
+  needs: ["property"],
   condition: "The type definition of a HasProperty target is exactly PropertyType (i=68), which has no subtypes.",
   why: "Servers and code generators decide by the type whether a Variable is a Property or a DataVariable; the two answers then differ.",
   check(node, ctx, report) {
-    if (!isProperty(ctx, node.key)) return;
     const type = findTypeDefinition(ctx, node.key);
     if (type === undefined || type === T.PropertyType) return;
     report({

@@ -10,6 +10,7 @@ export const r036: NodeRule = {
   clause: `${clause(5, "§7.3, §7.4")}, ${clause(3, "§5.6.3, §5.6.4")}`,
   priority: 1,
   concerns: ["Variable"],
+  types: [T.PropertyType],
   condition: "The target of HasComponent or a subtype is not of PropertyType.",
   why: "PropertyType says “Property”, HasComponent says “DataVariable”: clients filter by either and see the node in one list only.",
   check(node, ctx, report) {

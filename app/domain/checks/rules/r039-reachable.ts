@@ -56,7 +56,7 @@ export const r039: NodeRule = {
 const reaches = makeLookup<boolean>((ctx, key) => {
   const seen = new Set<NodeKey>([key]);
   for (const at of seen) {
-    if (at === StandardObject.RootFolder || !ctx.node(at)) return true;
+    if (at === StandardObject.RootFolder || ctx.classOf(at) === undefined) return true;
     for (const { source } of ctx.parentEdges(at)) seen.add(source);
     for (const { source } of ctx.supertypeEdges(at)) seen.add(source);
   }

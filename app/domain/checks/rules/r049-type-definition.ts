@@ -1,5 +1,6 @@
 import { typeDefinitionFix } from "../fixes";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
+import { listTypeDefinitions } from "../lookups";
 import { ALL_CLASSES, clause, type NodeRule } from "../rule";
 
 export const r049: NodeRule = {
@@ -13,13 +14,13 @@ export const r049: NodeRule = {
     "An Object has exactly one type definition, an ObjectType; a Variable exactly one, a VariableType; no other class has any.",
   why: "Without its type a node cannot be understood or created; loaders refuse it or make it an instance of a base type.",
   check(node, ctx, report) {
-    const types = ctx
-      .otherEdges(node.key)
-      .filter((e) => e.type === R.HasTypeDefinition)
-      .map((e) => e.target);
-    const attribute = "references";
+    const types = listTypeDefinitions(ctx, node.key);
+    const [only] = types;
     const wanted =
       node.nodeClass === "Object" ? "ObjectType" : node.nodeClass === "Variable" ? "VariableType" : undefined;
+    if (wanted !== undefined && types.length === 1 && only !== undefined && (ctx.classOf(only) ?? wanted) === wanted)
+      return;
+    const attribute = "references";
     const facts = types.map((key) => `HasTypeDefinition: ${ctx.describe(key)}`);
     if (wanted === undefined) {
       if (types.length === 0) return;

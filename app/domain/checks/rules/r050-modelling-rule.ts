@@ -10,6 +10,7 @@ export const r050: NodeRule = {
   clause: clause(3, "§7.12, §6.4.4.1"),
   priority: 1,
   concerns: ALL_CLASSES,
+  needs: ["modelling rule"],
   condition:
     "Only Objects, Variables and Methods have a modelling rule, at most one, and it is an Object of ModellingRuleType or a subtype; rules of one's own are legal.",
   why: "With two rules nobody knows whether the member must exist on instances; a rule that is none is ignored.",

@@ -21,7 +21,7 @@ export const r054: NodeRule = {
     for (const edge of edgesDeclaredAt(node, ctx, R.HasEventSource)) {
       const source = ctx.node(edge.source);
       if (!source || isEventNotifier(source) || isInstanceDeclaration(ctx, source.key)) continue;
-      if (source.nodeClass === "ObjectType" && (!ctx.node(edge.target) || isInstanceDeclaration(ctx, edge.target)))
+      if (source.nodeClass === "ObjectType" && (ctx.classOf(edge.target) === undefined || isInstanceDeclaration(ctx, edge.target)))
         continue;
       const bits =
         source.nodeClass === "Object" || source.nodeClass === "View"

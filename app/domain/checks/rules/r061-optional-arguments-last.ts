@@ -12,7 +12,7 @@ export const r061: NodeRule = {
   clause: clause(3, "§5.7.3"),
   priority: 2,
   concerns: ["Method"],
-  needs: "children",
+  needs: ["children"],
   condition: "Input arguments that HasOptionalInputArgumentDescription describes stand behind all others.",
   why: "A caller leaves arguments out at the end only; one in the middle cannot be left out.",
   check(node, ctx, report) {

@@ -15,11 +15,11 @@ export const r064: NodeRule = {
   why: "It is defined for Objects only; servers refuse it elsewhere.",
   check(node, ctx, report) {
     for (const edge of edgesDeclaredAt(node, ctx, N.AssociatedWith)) {
-      const wrong = [edge.source, edge.target].find((key) => ctx.node(key) && ctx.node(key)?.nodeClass !== "Object");
+      const wrong = [edge.source, edge.target].find((key) => ctx.classOf(key) !== undefined && ctx.classOf(key) !== "Object");
       if (wrong === undefined) continue;
       report({
         attribute: "references",
-        message: `AssociatedWith joins Objects, but ${ctx.nameOf(wrong)} is a ${ctx.node(wrong)?.nodeClass ?? "node"}.`,
+        message: `AssociatedWith joins Objects, but ${ctx.nameOf(wrong)} is a ${ctx.classOf(wrong) ?? "node"}.`,
         facts: [`Source: ${ctx.describe(edge.source)}`, `Target: ${ctx.describe(edge.target)}`],
         data: { ...edge },
       });

@@ -10,6 +10,7 @@ export const r074: NodeRule = {
   clause: clause(3, "§6.2.1"),
   priority: 2,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["modelling rule"],
   condition:
     "Hierarchical references lead to a declaration from exactly one type, over other declarations or directly.",
   why: "A change made for one type silently changes the other, and the two can no longer be versioned apart.",
@@ -19,8 +20,8 @@ export const r074: NodeRule = {
     const seen = new Set<NodeKey>([node.key]);
     for (const at of seen) {
       for (const { source } of ctx.parentEdges(at)) {
-        const parent = ctx.node(source);
-        if (parent?.nodeClass === "ObjectType" || parent?.nodeClass === "VariableType") types.add(source);
+        const parent = ctx.classOf(source);
+        if (parent === "ObjectType" || parent === "VariableType") types.add(source);
         else if (parent && findModellingRule(ctx, source) !== undefined) seen.add(source);
       }
     }

@@ -16,16 +16,15 @@ export const r075: NodeRule = {
   clause: clause(3, "§6.2.2"),
   priority: 1,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["type above"],
   condition:
     "A child of an ObjectType, a VariableType or an instance declaration has a modelling rule. States, Transitions and DefaultInstanceBrowseName belong to the type alone.",
   why: "Without a rule the member stays on the type: subtypes do not inherit it, and no instance gets it. Often the rule was forgotten.",
   check(node, ctx, report) {
     if (findModellingRule(ctx, node.key) !== undefined || isMeantForType(node, ctx)) return;
     const owner = ofType(ctx, ctx.parentEdges(node.key), R.Aggregates).find(({ source }) => {
-      const parent = ctx.node(source);
-      return (
-        parent?.nodeClass === "ObjectType" || parent?.nodeClass === "VariableType" || isInstanceDeclaration(ctx, source)
-      );
+      const parent = ctx.classOf(source);
+      return parent === "ObjectType" || parent === "VariableType" || isInstanceDeclaration(ctx, source);
     });
     if (!owner) return;
     report({

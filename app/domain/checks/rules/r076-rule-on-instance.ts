@@ -1,5 +1,5 @@
 import { modellingRuleFix, REMOVED } from "../fixes";
-import { findModellingRule, findTypeAbove } from "../lookups";
+import { findModellingRule } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
 export const r076: NodeRule = {
@@ -9,12 +9,12 @@ export const r076: NodeRule = {
   clause: clause(3, "§6.4.4.3"),
   priority: 2,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["modelling rule", "no type above"],
   condition: "A node that belongs to no type has no modelling rule; one is allowed but means nothing.",
   why: "It is mostly left over from a copied declaration and lets readers look for a type that is not there.",
   check(node, ctx, report) {
     const rule = findModellingRule(ctx, node.key);
-    if (rule === undefined || ctx.parentEdges(node.key).length === 0 || findTypeAbove(ctx, node.key) !== undefined)
-      return;
+    if (rule === undefined || ctx.parentEdges(node.key).length === 0) return;
     report({
       attribute: "references",
       message: `${node.browseName.name} is a plain instance and has the modelling rule ${ctx.nameOf(rule)}.`,

@@ -11,6 +11,7 @@ export const r077: NodeRule = {
   clause: clause(3, "§6.4.4.4.4, §6.4.4.4.5"),
   priority: 1,
   concerns: ["Object", "Variable"],
+  needs: ["modelling rule"],
   condition:
     "BrowseName and DisplayName of a placeholder Object or Variable begin with < and end with >. Methods keep their real name.",
   why: "Readers of the type take the name for a real member and look for it on instances.",

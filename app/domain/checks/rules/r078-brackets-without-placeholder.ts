@@ -11,6 +11,7 @@ export const r078: NodeRule = {
   clause: `common practice, no source (the reverse of ${clause(3, "§6.4.4.4.4")})`,
   priority: 2,
   concerns: ["Object", "Variable"],
+  needs: ["modelling rule"],
   condition: "A declaration named in angle brackets has a placeholder rule.",
   why: "As Mandatory or Optional it asks instances for a member with the brackets in its name.",
   check(node, ctx, report) {

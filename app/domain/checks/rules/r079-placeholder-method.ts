@@ -17,7 +17,7 @@ export const r079: NodeRule = {
   check(node, ctx, report) {
     const rule = findModellingRule(ctx, node.key);
     for (const { source } of ctx.parentEdges(node.key)) {
-      if (ctx.node(source)?.nodeClass !== "ObjectType") continue;
+      if (ctx.classOf(source) !== "ObjectType") continue;
       const base = findInheritedMember(ctx, source, node.browseName);
       if (!base || !isPlaceholder(base.rule) || base.node.key === node.key || rule === undefined) continue;
       const allowed = base.rule === M.MandatoryPlaceholder ? [M.Mandatory] : [M.Optional, M.Mandatory];

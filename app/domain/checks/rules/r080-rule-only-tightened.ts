@@ -15,6 +15,7 @@ export const r080: NodeRule = {
   clause: clause(3, "§6.4.4.2, Table 21, §6.4.4.3, §6.4.4.4.4, §6.4.4.4.5"),
   priority: 1,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["modelling rule", "declares members"],
   condition:
     "Where a declaration overrides an inherited one, or repeats one of its parent's type, Mandatory stays, Optional stays or becomes Mandatory, placeholders stay.",
   why: "Clients written for the base type rely on its Mandatory members; a subtype that makes one Optional breaks them.",
@@ -62,7 +63,7 @@ export const r080: NodeRule = {
 };
 
 function findBase(parent: NodeKey, name: Member["node"]["browseName"], ctx: CheckContext): Member | undefined {
-  const parentClass = ctx.node(parent)?.nodeClass;
+  const parentClass = ctx.classOf(parent);
   if (parentClass === "ObjectType" || parentClass === "VariableType") return findInheritedMember(ctx, parent, name);
   const type = findTypeDefinition(ctx, parent);
   return type === undefined ? undefined : getMembers(ctx, type).get(formatQualifiedName(name));

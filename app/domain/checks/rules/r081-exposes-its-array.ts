@@ -10,6 +10,7 @@ export const r081: NodeRule = {
   clause: clause(3, "§6.4.4.4.3"),
   priority: 2,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["modelling rule"],
   condition: "A declaration with the rule ExposesItsArray is a Variable below a VariableType with ValueRank 0 or more.",
   why: "The rule stands for one Variable per array entry; where there is no array, nothing is made.",
   check(node, ctx, report) {

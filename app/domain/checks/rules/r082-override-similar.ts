@@ -12,13 +12,14 @@ export const r082: NodeRule = {
   clause: clause(3, "§6.3.3.3, §6.2.7"),
   priority: 1,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["member of type"],
   condition:
     "A child of a type with the BrowseName of an inherited declaration has its NodeClass, its type or a subtype, and a modelling rule of its own.",
   why: "Clients written for the base type find another kind of node at the path that they know.",
   check(node, ctx, report) {
     for (const { source } of ctx.parentEdges(node.key)) {
-      const owner = ctx.node(source);
-      if (owner?.nodeClass !== "ObjectType" && owner?.nodeClass !== "VariableType") continue;
+      const owner = ctx.classOf(source);
+      if (owner !== "ObjectType" && owner !== "VariableType") continue;
       const base = findInheritedMember(ctx, source, node.browseName);
       if (!base || base.node.key === node.key || !isNaming(base.rule)) continue;
       const facts = [

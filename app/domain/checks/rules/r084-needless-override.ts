@@ -15,6 +15,7 @@ export const r084: NodeRule = {
   clause: clause(3, "§6.3.3.3"),
   priority: 2,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["member of type"],
   condition:
     "A subtype repeats an inherited declaration only where it changes something: type, rule, DataType, rank, texts, references, children.",
   why: "The copy must be kept in step with the original for ever, and hides later changes of it.",

@@ -18,13 +18,14 @@ export const r085: NodeRule = {
   clause: clause(3, "§6.3.3.3"),
   priority: 2,
   concerns: ["Object", "Variable", "Method"],
+  needs: ["member of type"],
   condition:
     "An override provides every optional attribute that the inherited declaration provides: Description, ArrayDimensions, MinimumSamplingInterval, RolePermissions, AccessRestrictions.",
   why: "Clients of the base type rely on the attribute; on the subtype it answers “attribute invalid”.",
   check(node, ctx, report) {
     for (const { source } of ctx.parentEdges(node.key)) {
-      const owner = ctx.node(source);
-      if (owner?.nodeClass !== "ObjectType" && owner?.nodeClass !== "VariableType") continue;
+      const owner = ctx.classOf(source);
+      if (owner !== "ObjectType" && owner !== "VariableType") continue;
       const base = findInheritedMember(ctx, source, node.browseName)?.node;
       if (!base || base.key === node.key || base.nodeClass !== node.nodeClass) continue;
       for (const attribute of ATTRIBUTES) {

@@ -5,7 +5,7 @@ import type { Node } from "../../address-space/node";
 import { standardKey, type NodeKey } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardModellingRule as M, StandardType } from "../../address-space/standard-ids";
-import type { CheckContext } from "../check-context";
+import { makeLookup, type CheckContext } from "../check-context";
 import type { ReportFunction } from "../finding";
 import { findModellingRule, findTypeDefinition, isInstanceDeclaration } from "../lookups";
 import { getChildren, getMembers, isNaming, isPlaceholder, listOwnMembers, type Member } from "../members";
@@ -28,8 +28,9 @@ export const r086: NodeRule = {
     if (type === undefined || type === StandardType.NamespaceMetadataType) return;
     const isDeclaration = isInstanceDeclaration(ctx, node.key);
     if (isDeclaration && isPlaceholder(findModellingRule(ctx, node.key))) return;
-    const walk: Walk = { instance: node, type, isDeclaration, report, ctx };
-    checkBelow(walk, node, [...getMembers(ctx, type).values()], []);
+    const members = ctx.lookUp(askedMembers, type);
+    if (members.length === 0) return;
+    checkBelow({ instance: node, type, isDeclaration, report, ctx }, node, members, []);
   },
   fix: {
     label: "Make all mandatory members that are missing",
@@ -79,22 +80,33 @@ const TOLD_BY_DATA_ACCESS: ReadonlySet<NodeKey> = new Set(
   [2369, 17502, 17575, 2374, 2375, 2377, 11241, 11461, 12025, 12026, 12027, 12028].map(standardKey),
 );
 
+/** Members of a type that something is asked of: mandatory ones, and those with declarations below. */
+const askedMembers = makeLookup<readonly Member[]>((ctx, type) => {
+  const asked = [...getMembers(ctx, type).values()].filter((member) => isAsked(member, ctx));
+  return asked.length > 0 ? asked : NO_MEMBERS;
+});
+
+const NO_MEMBERS: readonly Member[] = [];
+
+function isAsked({ node, rule }: Member, ctx: CheckContext): boolean {
+  if (!isNaming(rule) || TOLD_BY_DATA_ACCESS.has(node.key)) return false;
+  return rule === M.Mandatory || listOwnMembers(ctx, node.key).length > 0;
+}
+
 /** Members of the type on `at`, and below the members found what the type declares below their declarations. */
 function checkBelow(walk: Walk, at: Node, members: readonly Member[], path: readonly string[]): void {
   if (path.length > MAX_DEPTH) return;
   const { ctx } = walk;
   const children = getChildren(ctx, at.key);
   for (const member of members) {
-    if (!isNaming(member.rule) || TOLD_BY_DATA_ACCESS.has(member.node.key)) continue;
-    const name = formatQualifiedName(member.node.browseName);
+    if (!isAsked(member, ctx)) continue;
+    const { name } = member;
     const child = children.get(name)?.find((c) => c.nodeClass === member.node.nodeClass);
-    const memberPath = [...path, member.node.browseName.name];
-    if (!child) {
-      if (member.rule === M.Mandatory && !isToldByChild(walk, at, name, path))
-        reportMissing(walk, at, member, memberPath);
-    } else if (child.key !== member.node.key) {
-      checkBelow(walk, child, listOwnMembers(ctx, member.node.key), memberPath);
-    }
+    if (child?.key === member.node.key) continue;
+    const below = child ? listOwnMembers(ctx, member.node.key) : NO_MEMBERS;
+    if (child && below.length > 0) checkBelow(walk, child, below, [...path, member.node.browseName.name]);
+    else if (!child && member.rule === M.Mandatory && !isToldByChild(walk, at, name, path))
+      reportMissing(walk, at, member, [...path, member.node.browseName.name]);
   }
 }
 

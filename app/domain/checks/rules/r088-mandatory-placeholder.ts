@@ -1,6 +1,5 @@
-import { StandardModellingRule as M } from "../../address-space/standard-ids";
-import { findTypeAbove, findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
-import { getMembers, type Member } from "../members";
+import { findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
+import { listMandatoryPlaceholders, type Member } from "../members";
 import type { NodeKey } from "../../address-space/node-id";
 import type { CheckContext } from "../check-context";
 import { clause, type NodeRule } from "../rule";
@@ -12,15 +11,15 @@ export const r088: NodeRule = {
   clause: clause(3, "§6.4.4.4.5"),
   priority: 1,
   concerns: ["Object", "Variable"],
+  needs: ["no type above"],
   condition:
     "A plain instance has for each MandatoryPlaceholder of its type at least one child of the declared type over the same reference type, or subtypes of these.",
   why: "The type promises at least one; clients that list them find none.",
   check(node, ctx, report) {
     const type = findTypeDefinition(ctx, node.key);
-    if (type === undefined || findTypeAbove(ctx, node.key) !== undefined) return;
-    for (const member of getMembers(ctx, type).values()) {
-      if (member.rule !== M.MandatoryPlaceholder || ctx.childEdges(node.key).some((e) => fills(e, member, ctx)))
-        continue;
+    if (type === undefined) return;
+    for (const member of listMandatoryPlaceholders(ctx, type)) {
+      if (ctx.childEdges(node.key).some((e) => fills(e, member, ctx))) continue;
       const wanted = findTypeDefinition(ctx, member.node.key);
       report({
         message: `${node.browseName.name} has nothing for the mandatory placeholder ${member.node.browseName.name} of ${ctx.nameOf(type)}.`,

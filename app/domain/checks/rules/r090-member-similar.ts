@@ -12,7 +12,7 @@ export const r090: NodeRule = {
   clause: clause(3, "§4.6.4, §6.2.4, §6.4.1, §6.4.2"),
   priority: 1,
   concerns: ["Object", "Variable"],
-  needs: "children",
+  needs: ["children"],
   condition:
     "A child with the BrowseName of a Mandatory or Optional declaration of the type or an Interface has the declared NodeClass and the declared type or a subtype. Of several children of one name one must fit.",
   why: "A client that knows the type expects a Variable of a known type at this path and finds something else.",
@@ -22,14 +22,10 @@ export const r090: NodeRule = {
       ...(type === undefined ? [] : [type, ...listInterfaces(ctx, type)]),
       ...listInterfaces(ctx, node.key),
     ];
-    const children = getChildren(ctx, node.key);
-    const done = new Set<string>();
-    for (const source of sources) {
-      for (const [name, member] of getMembers(ctx, source)) {
-        const same = children.get(name);
-        if (!same || !isNaming(member.rule) || done.has(name) || same.some((child) => isSimilar(child, member, ctx)))
-          continue;
-        done.add(name);
+    for (const [name, same] of getChildren(ctx, node.key)) {
+      for (const source of sources) {
+        const member = getMembers(ctx, source).get(name);
+        if (!member || !isNaming(member.rule) || same.some((child) => isSimilar(child, member, ctx))) continue;
         const child = same.find((c) => ctx.isOwn(c.key)) ?? same[0];
         if (!child) continue;
         const declared = findTypeDefinition(ctx, member.node.key);
@@ -45,6 +41,7 @@ export const r090: NodeRule = {
           ],
           data: { declared: declared ?? "", member: member.node.key },
         });
+        break;
       }
     }
   },
@@ -78,6 +75,6 @@ function isSimilar(child: Node, { node: declared }: Member, ctx: CheckContext): 
   if (isProperty(ctx, child.key) && isProperty(ctx, declared.key)) return true;
   const wanted = findTypeDefinition(ctx, declared.key);
   const found = findTypeDefinition(ctx, child.key);
-  if (wanted === undefined || found === undefined || !isChainLoaded(ctx, found) || !ctx.node(wanted)) return true;
+  if (wanted === undefined || found === undefined || !isChainLoaded(ctx, found) || ctx.classOf(wanted) === undefined) return true;
   return isKindOf(ctx, found, wanted);
 }

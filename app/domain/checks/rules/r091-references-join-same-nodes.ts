@@ -1,10 +1,20 @@
-import { formatQualifiedName } from "../../address-space/qualified-name";
+import type { NodeKey } from "../../address-space/node-id";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { addReference, findSubject, keyOf, notPossible } from "../fixes";
 import { ok } from "../../core/result";
-import { findTypeAbove, findTypeDefinition } from "../lookups";
-import { getChildren, getMembers, isNaming } from "../members";
+import { makeLookup } from "../check-context";
+import { findTypeDefinition } from "../lookups";
+import { getChildren, getMembers, isNaming, type Member } from "../members";
 import { clause, type NodeRule } from "../rule";
+
+/** Members that their owner names over two references or more. */
+const joinedMembers = makeLookup<readonly { readonly member: Member; readonly links: readonly NodeKey[] }[]>((ctx, type) =>
+  [...getMembers(ctx, type).values()].flatMap((member) => {
+    if (!isNaming(member.rule)) return [];
+    const links = ctx.childEdges(member.owner).filter((e) => e.target === member.node.key).map((e) => e.type);
+    return links.length < 2 ? [] : [{ member, links }];
+  }),
+);
 
 export const r091: NodeRule = {
   id: "R091",
@@ -13,21 +23,15 @@ export const r091: NodeRule = {
   clause: clause(3, "§6.4.3"),
   priority: 2,
   concerns: ["Object", "Variable"],
-  needs: "children",
+  needs: ["children", "no type above"],
   condition: "Where the type has several references to one member, the instance has all of them to its one member.",
   why: "Events, for example, are then announced for another node than the one that sends them.",
   check(node, ctx, report) {
     const type = findTypeDefinition(ctx, node.key);
-    if (type === undefined || findTypeAbove(ctx, node.key) !== undefined) return;
-    const children = getChildren(ctx, node.key);
-    for (const member of getMembers(ctx, type).values()) {
-      if (!isNaming(member.rule)) continue;
-      const links = ctx
-        .childEdges(member.owner)
-        .filter((e) => e.target === member.node.key)
-        .map((e) => e.type);
-      const [child] = children.get(formatQualifiedName(member.node.browseName)) ?? [];
-      if (links.length < 2 || !child) continue;
+    if (type === undefined) return;
+    for (const { member, links } of ctx.lookUp(joinedMembers, type)) {
+      const child = getChildren(ctx, node.key).get(member.name)?.[0];
+      if (!child) continue;
       const found = ctx
         .childEdges(node.key)
         .filter((e) => e.target === child.key)

@@ -128,7 +128,7 @@ function checkEnds(transition: Node, ctx: CheckContext, report: ReportFunction):
     for (const end of ends) {
       const endType = findTypeDefinition(ctx, end);
       if (
-        !ctx.node(end) ||
+        ctx.classOf(end) === undefined ||
         endType === undefined ||
         isKindOf(ctx, endType, N.StateType) ||
         !isChainLoaded(ctx, endType)

@@ -1,6 +1,6 @@
 import { getDataType } from "../../address-space/node";
 import { StandardDataType as D } from "../../address-space/standard-ids";
-import { findTypeAbove, findTypeDefinition } from "../lookups";
+import { findTypeDefinition } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
 export const r096: NodeRule = {
@@ -10,15 +10,11 @@ export const r096: NodeRule = {
   clause: clause(3, "§5.6.2"),
   priority: 1,
   concerns: ["Variable"],
+  needs: ["no type above"],
   condition: "A plain instance states the most restrictive DataType that holds; declarations may leave it open.",
   why: "BaseDataType allows anything: clients cannot prepare a display, a history or a tag of the right type.",
   check(node, ctx, report) {
-    if (
-      node.nodeClass !== "Variable" ||
-      getDataType(node) !== D.BaseDataType ||
-      findTypeAbove(ctx, node.key) !== undefined
-    )
-      return;
+    if (node.nodeClass !== "Variable" || getDataType(node) !== D.BaseDataType) return;
     if (ctx.parentEdges(node.key).length === 0) return;
     const type = findTypeDefinition(ctx, node.key);
     report({

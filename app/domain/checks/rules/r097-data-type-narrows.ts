@@ -22,7 +22,7 @@ export const r097: NodeRule = {
       const wider = getDataType(base);
       if (
         wider === D.BaseDataType ||
-        !ctx.node(wider) ||
+        ctx.classOf(wider) === undefined ||
         isKindOf(ctx, dataType, wider) ||
         !isChainLoaded(ctx, dataType)
       )

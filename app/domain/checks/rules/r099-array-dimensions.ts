@@ -10,6 +10,7 @@ export const r099: NodeRule = {
   clause: `${clause(3, "§5.6.2, Table 13, §5.6.5, Table 14")}, ${clause(5, "§5.3, §5.4")}`,
   priority: 1,
   concerns: ["Variable", "VariableType"],
+  attributes: ["arrayDimensions"],
   condition:
     "With ValueRank n > 0 ArrayDimensions has n entries where it is given; a scalar, and a VariableType without a fixed rank, have none. On a Variable with rank 0, −2 or −3 they are a warning.",
   why: "Servers refuse the Variable or ignore the lengths; clients size their buffers after them.",

@@ -10,6 +10,7 @@ export const r100: NodeRule = {
   clause: clause(3, "§6.2.8"),
   priority: 2,
   concerns: ["Variable", "VariableType"],
+  attributes: ["arrayDimensions"],
   condition:
     "Where both sides give ArrayDimensions, an entry 0 may become a number; other entries and their count stay.",
   why: "Clients of the base type reserve the length that it promises.",

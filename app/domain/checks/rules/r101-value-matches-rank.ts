@@ -14,7 +14,7 @@ export const r101: NodeRule = {
   clause: `${clause(3, "§5.6.2, Table 13, §5.6.5, Table 14, §8.7")}, ${clause(6, "§5.3.1.17, §5.1.11")}`,
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["value"],
   condition:
     "Rank −1 holds one element, 1 a list, above 1 a Matrix with as many dimensions, −3 one element or a list, 0 a list or a Matrix. No value, an empty one and an empty list of an array are never wrong.",
   why: "Loaders take the value as it stands: the server then serves an array where its own attributes promise a single value.",
@@ -25,28 +25,23 @@ export const r101: NodeRule = {
     const rank = getValueRank(node);
     if (rank === -1 && getDataType(node) === D.BaseDataType) return;
     const shape = findShape(root);
-    const shown = String(rank).replace("-", "−");
-    const facts = [
-      `ValueRank: ${shown}${node.valueRank === undefined ? " (the attribute is left out)" : ""}`,
-      `Value: ${describeShape(root, shape)}`,
-    ];
-    if (!isAllowed(shape, rank, root)) {
-      report({
-        attribute: "value",
-        message: `The Value of ${node.browseName.name} is ${describeShape(root, shape)}, but the ValueRank is ${shown}.`,
-        facts,
-        data: { shape },
-      });
-      return;
-    }
+    const isFitting = isAllowed(shape, rank, root);
     const sizes = shape === "matrix" ? listSizes(root) : [];
-    if (shape === "matrix" && ((rank > 1 && sizes.length !== rank) || sizes.some((size) => !(size > 0)))) {
-      report({
-        attribute: "value",
-        message: `The Matrix of ${node.browseName.name} has the dimensions ${sizes.join(", ") || "none"}, but the ValueRank is ${shown}.`,
-        facts,
-      });
-    }
+    const isOddMatrix = shape === "matrix" && ((rank > 1 && sizes.length !== rank) || sizes.some((size) => !(size > 0)));
+    if (isFitting && !isOddMatrix) return;
+    const shown = String(rank).replace("-", "−");
+    const name = node.browseName.name;
+    report({
+      attribute: "value",
+      message: isFitting
+        ? `The Matrix of ${name} has the dimensions ${sizes.join(", ") || "none"}, but the ValueRank is ${shown}.`
+        : `The Value of ${name} is ${describeShape(root, shape)}, but the ValueRank is ${shown}.`,
+      facts: [
+        `ValueRank: ${shown}${node.valueRank === undefined ? " (the attribute is left out)" : ""}`,
+        `Value: ${describeShape(root, shape)}`,
+      ],
+      ...(isFitting ? {} : { data: { shape } }),
+    });
   },
   fix: attributeFix("Make a list of the single value, or a single value of a list of one", "value", (node) => {
     const root = hasValueAttributes(node) ? findValueRoot(node.value) : undefined;

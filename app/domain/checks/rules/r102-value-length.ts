@@ -12,7 +12,8 @@ export const r102: NodeRule = {
   clause: clause(3, "§5.6.2, Table 13"),
   priority: 2,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  attributes: ["arrayDimensions"],
+  needs: ["value"],
   condition:
     "No dimension of the Value is longer than its entry in ArrayDimensions; the entry is the greatest length, 0 sets none.",
   why: "Clients reserve the length that is promised and cut the rest.",

@@ -18,7 +18,7 @@ export const r103: NodeRule = {
   clause: `${clause(3, "§5.6.2, §5.8.2, §5.8.3")}, ${clause(6, "§5.1.2, Table 1, §5.3.1.3, Table 33, §5.3.1.16, §5.3.1.19, §5.3.2, §5.3.3")}`,
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["value"],
   condition:
     "The element is named after the built-in type of the DataType: Int32 for enumerations, ExtensionObject for structures with a TypeId of the DataType or a subtype; its text is a value of that type.",
   why: "Servers refuse the file or serve a value of another type than they declare, which clients decode wrongly or not at all.",

@@ -13,7 +13,7 @@ export const r104: NodeRule = {
   clause: `${clause(3, "§5.8.2, §8.14, §8.52")} (inferred)`,
   priority: 2,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["value"],
   condition: "An Int32 value of an enumeration is one of the defined fields, those of the supertype included.",
   why: "Clients show the bare number, or nothing.",
   check(node, ctx, report) {

@@ -19,12 +19,12 @@ export const r105: NodeRule = {
   clause: clause(6, "§5.3.5–§5.3.7, §5.1.13, §5.3.1.16"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["structure"],
   condition:
     "The body of a structure holds its fields by name in the order of the definition, inherited ones first; any may be left out. With optional fields an EncodingMask stands first, a Union has a SwitchField and one field.",
   why: "Readers take fields in order: one that is misspelt or out of place is lost, and what follows it too.",
   check(node, ctx, report) {
-    if (!hasValueAttributes(node) || !node.value?.xml.includes("ExtensionObject")) return;
+    if (!hasValueAttributes(node)) return;
     for (const element of listExtensionObjects(findValueRoot(node.value))) {
       const body = findBody(element);
       const typeId = findTypeId(element);

@@ -11,12 +11,12 @@ export const r106: NodeRule = {
   clause: clause(3, "§5.8.3"),
   priority: 2,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["structure"],
   condition:
     "The TypeId of a structure in a value stands for a concrete DataType; the DataType attribute may be abstract.",
   why: "There is no encoding of an abstract type, so that nobody can read the value.",
   check(node, ctx, report) {
-    if (!hasValueAttributes(node) || !node.value?.xml.includes("ExtensionObject")) return;
+    if (!hasValueAttributes(node)) return;
     for (const element of listExtensionObjects(findValueRoot(node.value))) {
       const typeId = findTypeId(element);
       const key = typeId === undefined ? undefined : findDataTypeOf(ctx, typeId);

@@ -12,6 +12,7 @@ export const r107: NodeRule = {
   clause: `${clause(3, "§8.57, §8.58")}, ${clause(6, "§F.8")}`,
   priority: 1,
   concerns: ["Variable"],
+  attributes: ["accessLevel"],
   condition: "Only bits 0 to 6 and 8 to 13 of AccessLevel are set.",
   why: "Reserved bits mean nothing today and something else tomorrow; strict loaders refuse the file.",
   check(node, _ctx, report) {

@@ -9,6 +9,7 @@ export const r108: NodeRule = {
   clause: `${clause(3, "§5.6.2")}, ${clause(6, "§F.8")}`,
   priority: 2,
   concerns: ["Variable"],
+  attributes: ["userAccessLevel"],
   condition: "UserAccessLevel, which files need not have, allows nothing that AccessLevel does not.",
   why: "Loaders that do use it show an access that the server then refuses.",
   check(node, _ctx, report) {

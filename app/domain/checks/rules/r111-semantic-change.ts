@@ -1,11 +1,10 @@
 import { getAccessLevel } from "../../address-space/node";
-import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { attributeFix } from "../fixes";
 import { isProperty } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
-const SEMANTIC = new Set([
+const SEMANTIC = [
   "EURange",
   "EngineeringUnits",
   "InstrumentRange",
@@ -16,7 +15,7 @@ const SEMANTIC = new Set([
   "Title",
   "AxisScaleType",
   "ValuePrecision",
-]);
+];
 const WRITE = 2;
 const SEMANTIC_CHANGE = 16;
 
@@ -27,16 +26,12 @@ export const r111: NodeRule = {
   clause: `${clause(3, "§5.6.2, §8.57")}, ${clause(8, "§5.2")}`,
   priority: 2,
   concerns: ["Variable"],
+  standardNames: SEMANTIC,
   condition:
     "A standard Property that gives a value its meaning (range, unit, texts) and can be written has bit 4, SemanticChange, in AccessLevel.",
   why: "Clients keep unit and range: without the bit they do not know that these may change, and show wrong numbers.",
   check(node, ctx, report) {
-    if (
-      node.nodeClass !== "Variable" ||
-      node.browseName.namespaceUri !== OPC_UA_NAMESPACE ||
-      !SEMANTIC.has(node.browseName.name)
-    )
-      return;
+    if (node.nodeClass !== "Variable") return;
     const access = getAccessLevel(node);
     if ((access & WRITE) === 0 || (access & SEMANTIC_CHANGE) !== 0 || !isProperty(ctx, node.key)) return;
     report({

@@ -12,6 +12,7 @@ export const r112: NodeRule = {
   clause: `${clause(11, "§4.7")}, ${clause(3, "§5.6.2")}`,
   priority: 1,
   concerns: ["Variable"],
+  attributes: ["historizing"],
   condition:
     "A Variable that is being historized can be read in history: bit 2 of AccessLevel. On declarations a hint; the bit without Historizing is legal.",
   why: "The server records what nobody may read.",

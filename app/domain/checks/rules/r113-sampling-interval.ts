@@ -8,6 +8,7 @@ export const r113: NodeRule = {
   clause: clause(3, "§5.6.2"),
   priority: 2,
   concerns: ["Variable"],
+  attributes: ["minimumSamplingInterval"],
   condition: "MinimumSamplingInterval is 0 (continuous), a number of milliseconds above, or −1 (not known).",
   why: "Servers refuse other numbers or sample as fast as they can.",
   check(node, _ctx, report) {

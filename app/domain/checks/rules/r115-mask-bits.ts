@@ -18,6 +18,7 @@ export const r115: NodeRule = {
   clause: clause(3, "§8.55, §8.56, §8.60"),
   priority: 2,
   concerns: ALL_CLASSES,
+  attributes: ["writeMask", "accessRestrictions", "rolePermissions"],
   condition:
     "Permissions use bits 0 to 15, AccessRestrictions 0 to 3, WriteMask 0 to 25 (without bit 21 on Variables).",
   why: "A reserved bit in a permission may become a right that nobody wanted to give.",

@@ -6,6 +6,8 @@ import { scalar } from "../example-values";
 import { findStandardProperty, isChainLoaded, isKindOf, listSupertypes } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
+const PROPERTIES = ["MaxStringLength", "MaxCharacters", "MaxByteStringLength", "MaxArrayLength"];
+
 export const r116: NodeRule = {
   id: "R116",
   title: "Properties of length where there is a length",
@@ -13,25 +15,26 @@ export const r116: NodeRule = {
   clause: clause(3, "§5.6.2, Table 13, §5.6.4"),
   priority: 2,
   concerns: ["Variable"],
-  needs: "children",
+  needs: ["children"],
   condition:
     "MaxStringLength and MaxCharacters exclude each other and stand on texts; MaxByteStringLength on ByteString; MaxArrayLength where there may be an array.",
   why: "Clients cut their input after these; where two limits stand, or one without meaning, each client takes another.",
   check(node, ctx, report) {
     if (node.nodeClass !== "Variable") return;
-    const has = (name: string): boolean => findStandardProperty(ctx, node.key, name) !== undefined;
+    const has = new Set(PROPERTIES.filter((name) => findStandardProperty(ctx, node.key, name) !== undefined));
+    if (has.size === 0) return;
     const name = node.browseName.name;
     const dataType = getDataType(node);
     const facts = [`DataType: ${ctx.describe(dataType)}`, `ValueRank: ${String(getValueRank(node)).replace("-", "−")}`];
-    if (has("MaxStringLength") && has("MaxCharacters"))
+    if (has.has("MaxStringLength") && has.has("MaxCharacters"))
       report({ message: `${name} has both MaxStringLength and MaxCharacters.`, facts });
     const isText = canBe(ctx, dataType, [D.String, D.LocalizedText]);
     for (const property of ["MaxStringLength", "MaxCharacters"]) {
-      if (has(property) && !isText) report({ message: `${name} is no text and has ${property}.`, facts });
+      if (has.has(property) && !isText) report({ message: `${name} is no text and has ${property}.`, facts });
     }
-    if (has("MaxByteStringLength") && !canBe(ctx, dataType, [D.ByteString]))
+    if (has.has("MaxByteStringLength") && !canBe(ctx, dataType, [D.ByteString]))
       report({ message: `${name} is no ByteString and has MaxByteStringLength.`, facts });
-    if (has("MaxArrayLength") && getValueRank(node) === -1)
+    if (has.has("MaxArrayLength") && getValueRank(node) === -1)
       report({ message: `${name} is a scalar and has MaxArrayLength.`, facts });
   },
   examples: {

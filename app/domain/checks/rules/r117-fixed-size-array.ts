@@ -11,7 +11,7 @@ export const r117: NodeRule = {
   clause: clause(3, "§5.6.2, Table 13"),
   priority: 2,
   concerns: ["Variable"],
-  needs: "children",
+  needs: ["children"],
   condition: "Where FixedSizeArray is true, ArrayDimensions is given and every entry is above 0.",
   why: "A fixed size that is not said helps nobody.",
   check(node, ctx, report) {

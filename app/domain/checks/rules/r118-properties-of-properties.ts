@@ -1,6 +1,6 @@
 import { OPC_UA_NAMESPACE, standardKey } from "../../address-space/node-id";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
-import { isProperty, ofType } from "../lookups";
+import { ofType } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
 const ONLY_DATA_VARIABLES = new Set(["NodeVersion", "LocalTime", "AllowNulls"]);
@@ -12,11 +12,10 @@ export const r118: NodeRule = {
   clause: clause(3, "§5.6.2, Table 13"),
   priority: 2,
   concerns: ["Variable"],
-  needs: "children",
+  needs: ["children", "property"],
   condition: "A Property does not carry NodeVersion, LocalTime or AllowNulls.",
   why: "They describe DataVariables; on a Property nobody looks for them.",
   check(node, ctx, report) {
-    if (!isProperty(ctx, node.key)) return;
     for (const { target, source, type } of ofType(ctx, ctx.childEdges(node.key), R.HasProperty)) {
       const child = ctx.node(target);
       if (child?.browseName.namespaceUri !== OPC_UA_NAMESPACE || !ONLY_DATA_VARIABLES.has(child.browseName.name))

@@ -13,6 +13,7 @@ export const r119: NodeRule = {
   clause: `${clause(8, "§5.3.2.3, Table 3")}, ${clause(3, "§6.4.4.4.1")}, ${clause(6, "§F.3")}`,
   priority: 1,
   concerns: ["Variable"],
+  types: [T.AnalogItemType],
   condition:
     "A Variable of AnalogItemType or a subtype that is a real instance has the Property 0:EURange of DataType Range. A declaration may leave it to its type: there it is a hint.",
   why: "Displays, trends and deadbands in percent need the range; servers refuse percent deadbands without it.",

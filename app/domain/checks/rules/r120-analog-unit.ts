@@ -13,6 +13,7 @@ export const r120: NodeRule = {
   clause: `${clause(8, "§5.3.2.4, Table 4, §5.3.2.5, Table 5")}, ${clause(3, "§6.4.4.4.1")}, ${clause(6, "§F.3")}`,
   priority: 1,
   concerns: ["Variable"],
+  types: [T.AnalogUnitType, T.AnalogUnitRangeType],
   condition:
     "A Variable of AnalogUnitType, AnalogUnitRangeType or a subtype that is a real instance has the Property 0:EngineeringUnits of DataType EUInformation. On declarations it is a hint.",
   why: "A number without its unit is read wrongly sooner or later: bar for pascal, litres for cubic metres.",

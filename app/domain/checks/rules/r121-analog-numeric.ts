@@ -12,6 +12,7 @@ export const r121: NodeRule = {
   clause: `${clause(8, "§5.3.2.2, Table 2")}, ${clause(3, "§6.2.8")}`,
   priority: 1,
   concerns: ["Variable"],
+  types: [T.BaseAnalogType],
   condition: "The DataType of a Variable of BaseAnalogType or a subtype is Number or below.",
   why: "Range, unit and deadband have no meaning for anything else, and clients that plot the item fail.",
   check(node, ctx, report) {

@@ -1,7 +1,7 @@
 import { getDataType } from "../../address-space/node";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import { isNumeric } from "../data-types";
-import { findStandardProperty, findTypeAbove, findTypeDefinition, isKindOf, isProperty } from "../lookups";
+import { findStandardProperty, findTypeDefinition, isKindOf } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
@@ -14,12 +14,12 @@ export const r122: NodeRule = {
   clause: `${clause(8, "§5.3.2.2")} for analog items; others: common practice, no source`,
   priority: 1,
   concerns: ["Variable"],
+  needs: ["no property", "no type above"],
   condition:
     "A floating-point DataVariable of an instance, and every analog item, has EngineeringUnits. Durations, counters and indexes need none.",
   why: "A number without its unit is read wrongly sooner or later.",
   check(node, ctx, report) {
-    if (node.nodeClass !== "Variable" || isProperty(ctx, node.key) || findTypeAbove(ctx, node.key) !== undefined)
-      return;
+    if (node.nodeClass !== "Variable") return;
     const dataType = getDataType(node);
     const type = findTypeDefinition(ctx, node.key);
     const isAnalog = type !== undefined && isKindOf(ctx, type, T.BaseAnalogType);

@@ -19,7 +19,7 @@ export const r123: NodeRule = {
   clause: `${clause(3, "§5.6.2, Table 13")}, ${clause(8, "§5.3.4.1, Table 10, §5.3.4.3")}, ${clause(9, "§5.8.23")}`,
   priority: 1,
   concerns: ["Variable"],
-  needs: "children",
+  needs: ["children"],
   condition:
     "A Variable with EngineeringUnits has a numeric DataType, or a Structure of numbers only. BaseDataType and Structure, which may still become one, and Structures with other fields are a warning; array items are exempt.",
   why: "A unit on a text or a flag means nothing; conversions that trust it fail.",

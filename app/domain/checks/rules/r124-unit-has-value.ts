@@ -1,7 +1,5 @@
-import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import { CELSIUS } from "../example-values";
-import { findTypeAbove, isProperty } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 import { listUnits } from "../unit-values";
 
@@ -12,18 +10,13 @@ export const r124: NodeRule = {
   clause: `${clause(8, "§5.6.3.3, Table 19")}, ${clause(6, "§F.8")}`,
   priority: 1,
   concerns: ["Variable"],
+  standardNames: ["EngineeringUnits"],
+  needs: ["property", "no type above"],
   condition:
     "On an instance EngineeringUnits has a value with namespaceUri, unitId and displayName; an empty description is a hint. Declarations need none.",
   why: "A server answers “no value”, and the number stays without its unit.",
   check(node, ctx, report) {
-    const { browseName } = node;
-    if (
-      node.nodeClass !== "Variable" ||
-      browseName.name !== "EngineeringUnits" ||
-      browseName.namespaceUri !== OPC_UA_NAMESPACE
-    )
-      return;
-    if (!isProperty(ctx, node.key) || findTypeAbove(ctx, node.key) !== undefined) return;
+    if (node.nodeClass !== "Variable") return;
     const owner = ctx.parentEdges(node.key)[0];
     const name = owner === undefined ? "its owner" : ctx.nameOf(owner.source);
     const [value] = listUnits(node.value);

@@ -12,7 +12,7 @@ export const r125: NodeRule = {
   clause: clause(8, "§5.6.3.1, §5.6.3.4, §5.6.3.5"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["structure"],
   condition:
     "A unit's namespaceUri that means UN/CEFACT or IEC 62720 is written exactly as the standard has it; other systems have other URIs. An empty one beside a unitId or a displayName is a warning.",
   why: "Clients compare the URI text: one that differs by a letter makes the unit unknown, and nothing is converted.",

@@ -13,7 +13,7 @@ export const r126: NodeRule = {
   clause: clause(8, "§5.6.3.3, Table 19, §5.6.3.4, §5.6.3.5"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["structure"],
   condition:
     "Beside the UN/CEFACT namespace the unitId is a common code: two or three characters 0–9, A–Z as bytes, high byte first. −1, “not available”, and a code that the published table does not have are warnings. Beside the IEC 62720 namespace it holds six characters of five bits.",
   why: "Clients find symbol and conversion by the code; a number of another system names another unit or none.",
@@ -21,6 +21,7 @@ export const r126: NodeRule = {
     if (!hasValueAttributes(node)) return;
     for (const value of listUnits(node.value)) {
       const unitId = Number(value.unitId);
+      if (isUnece(value) && unitById(unitId) !== undefined) continue;
       const facts = [
         `UnitId: ${value.unitId || "left out"}`,
         `DisplayName: ${value.symbol || "none"}`,

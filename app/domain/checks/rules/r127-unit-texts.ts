@@ -13,7 +13,7 @@ export const r127: NodeRule = {
   clause: clause(8, "§5.6.3.4"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["structure"],
   condition:
     "For a unitId of the published table the English or unnamed displayName is its symbol; of several in the cell any. Another description is a hint.",
   why: "One of the two is wrong, and a reader of the display cannot know which.",
@@ -23,18 +23,21 @@ export const r127: NodeRule = {
       const known = isUnece(value) ? unitById(Number(value.unitId)) : undefined;
       if (!known) continue;
       const symbols = listSymbols(known);
+      const isSymbolRight = !isEnglish(value.symbolLocale) || value.symbol === "" || symbols.includes(value.symbol);
+      const isNameRight = !isEnglish(value.nameLocale) || value.name === "" || value.name === known.name;
+      if (isSymbolRight && isNameRight) continue;
       const facts = [
         `UnitId: ${value.unitId} is ${known.code}`,
         `Table: “${symbols.join("” or “")}”, ${known.name}`,
         `Here: “${value.symbol}”, ${value.name || "no description"}`,
       ];
-      if (isEnglish(value.symbolLocale) && value.symbol !== "" && !symbols.includes(value.symbol)) {
+      if (!isSymbolRight) {
         report({
           attribute: "value",
           message: `The unit of ${node.browseName.name} is written “${value.symbol}”, its code means “${known.symbol}”.`,
           facts,
         });
-      } else if (isEnglish(value.nameLocale) && value.name !== "" && value.name !== known.name) {
+      } else {
         report({
           severity: "hint",
           attribute: "value",

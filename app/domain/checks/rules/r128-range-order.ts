@@ -12,7 +12,7 @@ export const r128: NodeRule = {
   clause: `${clause(8, "§5.6.2, Table 17")} (inferred)`,
   priority: 2,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["value"],
   condition: "Neither limit of a Range being NaN, Low is at most High. Equal limits are legal.",
   why: "Displays divide by the span and draw upside down or not at all.",
   check(node, _ctx, report) {

@@ -1,7 +1,9 @@
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
+import type { NodeKey } from "../../address-space/node-id";
+import type { CheckContext } from "../check-context";
 import { range } from "../example-values";
 import { findStandardProperty } from "../lookups";
-import { formatRange, isWithin, listRanges } from "../ranges";
+import { formatRange, isWithin, listRanges, type RangeValue } from "../ranges";
 import { clause, type NodeRule } from "../rule";
 
 export const r129: NodeRule = {
@@ -11,15 +13,13 @@ export const r129: NodeRule = {
   clause: `${clause(8, "§5.3.2.2")} (inferred from the meanings)`,
   priority: 2,
   concerns: ["Variable"],
-  needs: "children",
+  needs: ["children"],
   condition:
     "Where both have values, EURange (what is likely in normal operation) lies within InstrumentRange (what the instrument can return).",
   why: "Values that the instrument can never return are shown as normal.",
   check(node, ctx, report) {
-    const [normal, possible] = ["EURange", "InstrumentRange"].map((name) => {
-      const property = findStandardProperty(ctx, node.key, name);
-      return property?.nodeClass === "Variable" ? listRanges(property.value)[0] : undefined;
-    });
+    const possible = findRange(node.key, "InstrumentRange", ctx);
+    const normal = possible && findRange(node.key, "EURange", ctx);
     if (!normal || !possible || isWithin(normal, possible)) return;
     report({
       message: `The EURange of ${node.browseName.name} exceeds its InstrumentRange.`,
@@ -31,6 +31,11 @@ export const r129: NodeRule = {
     bad: { text: "0 … 200 within −10 … 110.", build: (m) => addRanges(m, 0, 200) },
   },
 };
+
+function findRange(key: NodeKey, name: string, ctx: CheckContext): RangeValue | undefined {
+  const property = findStandardProperty(ctx, key, name);
+  return property?.nodeClass === "Variable" ? listRanges(property.value)[0] : undefined;
+}
 
 function addRanges(
   m: Parameters<NodeRule["examples"]["good"]["build"]>[0],

@@ -22,7 +22,7 @@ export const r130: NodeRule = {
   clause: `${clause(8, "§5.3.2.2")}, example 2 (inferred)`,
   priority: 2,
   concerns: ["Variable"],
-  needs: "children",
+  needs: ["children"],
   condition: "The limits of InstrumentRange can be told in the DataType.",
   why: "Values beyond what the DataType holds wrap or are cut.",
   check(node, ctx, report) {

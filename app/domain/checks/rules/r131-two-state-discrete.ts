@@ -12,6 +12,7 @@ export const r131: NodeRule = {
   clause: clause(8, "§5.3.3.2, Table 7"),
   priority: 1,
   concerns: ["Variable"],
+  types: [T.TwoStateDiscreteType],
   condition: "The DataType is Boolean; on instances TrueState and FalseState of DataType LocalizedText exist.",
   why: "Displays show these texts instead of true and false; without them nobody knows which of the two is the dangerous one.",
   check(node, ctx, report) {

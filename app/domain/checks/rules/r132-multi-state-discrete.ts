@@ -13,6 +13,7 @@ export const r132: NodeRule = {
   clause: clause(8, "§5.3.3.3, Table 8"),
   priority: 1,
   concerns: ["Variable"],
+  types: [T.MultiStateDiscreteType],
   condition:
     "The DataType is UInteger or below; on instances EnumStrings, an array of LocalizedText, exists. A value beyond the texts is a hint.",
   why: "The value is the place of its text in the list: without the list only a number is shown.",

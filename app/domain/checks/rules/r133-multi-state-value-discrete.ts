@@ -15,6 +15,7 @@ export const r133: NodeRule = {
   clause: `${clause(8, "§5.3.3.4, Table 9")}, ${clause(3, "§8.39")}`,
   priority: 1,
   concerns: ["Variable"],
+  types: [T.MultiStateValueDiscreteType],
   condition:
     "The DataType is an integer of at most 64 bit, or Number, Integer, UInteger on declarations; on instances EnumValues and ValueAsText exist; the values in EnumValues are unique.",
   why: "Clients look the text up by the value: without the list, or with one value twice, a fault is shown under a wrong name.",

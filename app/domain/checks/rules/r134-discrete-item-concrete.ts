@@ -1,7 +1,7 @@
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import { typeDefinitionFix } from "../fixes";
 import { getDataType } from "../../address-space/node";
-import { findTypeAbove, findTypeDefinition } from "../lookups";
+import { findTypeDefinition } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 
 export const r134: NodeRule = {
@@ -11,10 +11,12 @@ export const r134: NodeRule = {
   clause: `${clause(8, "§5.3.3.1")}, ${clause(3, "§6.2.1")}`,
   priority: 2,
   concerns: ["Variable"],
+  types: [T.DiscreteItemType],
+  needs: ["no type above"],
   condition: "A plain instance has a concrete subtype of DiscreteItemType; a declaration may name the abstract type.",
   why: "Only the subtype says whether the value has two states, texts by place, or texts by value.",
   check(node, ctx, report) {
-    if (findTypeDefinition(ctx, node.key) !== T.DiscreteItemType || findTypeAbove(ctx, node.key) !== undefined) return;
+    if (findTypeDefinition(ctx, node.key) !== T.DiscreteItemType) return;
     report({
       attribute: "references",
       message: `${node.browseName.name} is an instance of the abstract DiscreteItemType.`,

@@ -1,7 +1,6 @@
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { standardKey } from "../../address-space/node-id";
 import { checkProperties, findItemType, type WantedProperty } from "../discrete-items";
-import { findTypeAbove } from "../lookups";
 import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
@@ -21,12 +20,14 @@ export const r135: NodeRule = {
   clause: clause(8, "§5.3.4.1, Table 10, §5.3.4.2–§5.3.4.6"),
   priority: 2,
   concerns: ["Variable"],
+  types: [N.ArrayItemType],
+  needs: ["no type above"],
   condition:
     "An instance of a subtype of ArrayItemType has EURange, EngineeringUnits, Title and AxisScaleType; ArrayItemType itself is abstract and has no plain instance.",
   why: "Spectra and images cannot be drawn without their title and axes.",
   check(node, ctx, report) {
     const type = findItemType(node, ctx, N.ArrayItemType);
-    if (type === undefined || findTypeAbove(ctx, node.key) !== undefined) return;
+    if (type === undefined) return;
     if (type === N.ArrayItemType) {
       report({
         attribute: "references",

@@ -1,4 +1,3 @@
-import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { scalar } from "../example-values";
 import { attributeFix } from "../fixes";
@@ -13,16 +12,12 @@ export const r136: NodeRule = {
   clause: clause(8, "§5.3.1"),
   priority: 2,
   concerns: ["Variable"],
-  needs: "value",
+  standardNames: ["ValuePrecision"],
+  needs: ["value"],
   condition: "The value of ValuePrecision is a whole number, although its DataType is Double.",
   why: "It counts digits; half a digit is shown as any.",
   check(node, ctx, report) {
-    if (
-      node.nodeClass !== "Variable" ||
-      node.browseName.name !== "ValuePrecision" ||
-      node.browseName.namespaceUri !== OPC_UA_NAMESPACE
-    )
-      return;
+    if (node.nodeClass !== "Variable") return;
     const text = findValueRoot(node.value)?.text.trim() ?? "";
     if (text === "" || Number.isInteger(Number(text)) || Number.isNaN(Number(text)) || !isProperty(ctx, node.key))
       return;

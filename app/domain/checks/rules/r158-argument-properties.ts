@@ -17,7 +17,7 @@ export const r158: NodeRule = {
   clause: `${clause(3, "§5.7.1, Table 15, §8.6")}, ${clause(6, "§5.3.1.16")}`,
   priority: 1,
   concerns: ["Method"],
-  needs: "children",
+  needs: ["children"],
   condition:
     "InputArguments and OutputArguments of a Method have the DataType Argument and ValueRank 1, and a list of Arguments as value where they have one.",
   why: "Clients build the call from this list; what they cannot read they cannot call.",

@@ -10,7 +10,7 @@ export const r159: NodeRule = {
   clause: clause(3, "§5.7.1"),
   priority: 1,
   concerns: ["Method"],
-  needs: "children",
+  needs: ["children"],
   condition: "Input and output arguments of a Method together have different names.",
   why: "Generated code has one variable for both, and argument descriptions cannot say which they mean.",
   check(node, ctx, report) {

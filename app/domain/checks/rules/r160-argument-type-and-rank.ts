@@ -11,7 +11,7 @@ export const r160: NodeRule = {
   clause: `${clause(3, "§8.6, Table 28")}, ${clause(6, "§5.1.11, §5.3.5")}`,
   priority: 1,
   concerns: ["Method"],
-  needs: "children",
+  needs: ["children"],
   condition:
     "Each argument names a DataType; ArrayDimensions is empty for ranks up to 0, and empty or of as many entries as the rank above. A ValueRank that is left out means 0, one or more dimensions: a hint.",
   why: "Clients cannot build the call, or send a list where a single value is meant.",
@@ -23,7 +23,7 @@ export const r160: NodeRule = {
         const key = toKey(ctx, dataType);
         const isMissing =
           dataType === "" || (parsed.ok && key === undefined && ctx.isNamespaceLoaded(parsed.value.namespaceUri));
-        if (isMissing || (key !== undefined && ctx.node(key)?.nodeClass !== "DataType")) {
+        if (isMissing || (key !== undefined && ctx.classOf(key) !== "DataType")) {
           report({ message: `${what} has no DataType that exists.`, facts: [`DataType: ${dataType || "left out"}`] });
         }
         const rank = valueRank ?? 0;

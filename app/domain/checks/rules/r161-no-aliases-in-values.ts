@@ -3,8 +3,8 @@ import { parseNodeId } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { argumentList } from "../example-values";
 import { clause, type NodeRule } from "../rule";
-import { walkValue, type ValueElement } from "../value-element";
-import { findValueRoot } from "../value-xml";
+import { walkValue } from "../value-element";
+import { makeTreeQuestion } from "../value-xml";
 
 export const r161: NodeRule = {
   id: "R161",
@@ -13,13 +13,11 @@ export const r161: NodeRule = {
   clause: clause(6, "§F.2"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["value"],
   condition: "NodeIds inside a Value are written as NodeIds, never as an alias of the file.",
   why: "Aliases are not resolved inside values: loaders read a null NodeId or stop.",
   check(node, _ctx, report) {
-    if (!hasValueAttributes(node) || !node.value?.xml.includes("Identifier")) return;
-    const root = findValueRoot(node.value);
-    const alias = root && findAlias(root);
+    const alias = hasValueAttributes(node) ? findAlias(node.value) : undefined;
     if (alias === undefined) return;
     report({
       attribute: "value",
@@ -51,12 +49,12 @@ export const r161: NodeRule = {
   },
 };
 
-function findAlias(root: ValueElement): string | undefined {
-  const texts = walkValue(root)
+const findAlias = makeTreeQuestion<string | undefined>(undefined, (root) =>
+  walkValue(root)
     .filter((e) => e.name === "Identifier" && e.children.length === 0)
-    .map((e) => e.text.trim());
-  return texts.find((text) => text !== "" && !isNodeId(text));
-}
+    .map((e) => e.text.trim())
+    .find((text) => text !== "" && !isNodeId(text)),
+);
 
 /** Also true for ids of other servers and for indices that the file does not have: those are no aliases. */
 function isNodeId(text: string): boolean {

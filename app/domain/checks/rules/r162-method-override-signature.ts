@@ -22,7 +22,7 @@ export const r162: NodeRule = {
   why: "Clients call with the arguments of the base type and are refused.",
   check(node, ctx, report) {
     for (const { source } of ctx.parentEdges(node.key)) {
-      if (ctx.node(source)?.nodeClass !== "ObjectType") continue;
+      if (ctx.classOf(source) !== "ObjectType") continue;
       const base = findInheritedMember(ctx, source, node.browseName);
       if (!base || base.node.key === node.key || base.node.nodeClass !== "Method" || isPlaceholder(base.rule)) continue;
       for (const property of ["InputArguments", "OutputArguments"] as const) {

@@ -15,7 +15,7 @@ export const r163: NodeRule = {
   clause: clause(3, "§5.7.1"),
   priority: 2,
   concerns: ["Method"],
-  needs: "children",
+  needs: ["children"],
   condition: "A Method without inputs or outputs has no Property for them; an empty list means the same.",
   why: "Some clients show an empty form instead of calling at once.",
   check(node, ctx, report) {

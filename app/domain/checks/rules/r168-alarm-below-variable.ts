@@ -22,7 +22,7 @@ export const r168: NodeRule = {
       const type = findTypeDefinition(ctx, edge.target);
       if (
         (source?.nodeClass !== "Variable" && source?.nodeClass !== "VariableType") ||
-        ctx.node(edge.target)?.nodeClass !== "Object"
+        ctx.classOf(edge.target) !== "Object"
       )
         continue;
       if (type === undefined || !isKindOf(ctx, type, N.ConditionType)) continue;

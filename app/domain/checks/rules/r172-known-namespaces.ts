@@ -14,7 +14,7 @@ export const r172: NodeRule = {
   why: "A name in a namespace that nobody defines is a slip of an index: clients look for it in another namespace.",
   check({ browseName }, ctx, report) {
     const { namespaceUri, name } = browseName;
-    const { namespaceUris } = ctx.header;
+    const { namespaceUris } = ctx;
     if (
       namespaceUri === OPC_UA_NAMESPACE ||
       namespaceUris.includes(namespaceUri) ||

@@ -1,5 +1,4 @@
 import { getDataType, getValueRank } from "../../address-space/node";
-import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { StandardType as T } from "../../address-space/standard-ids";
 import { findTypeDefinition, isKindOf } from "../lookups";
 import { clause, type NodeRule } from "../rule";
@@ -19,13 +18,13 @@ export const r182: NodeRule = {
   clause: clause(5, "§6.3.13, Table 22"),
   priority: 2,
   concerns: ["Variable"],
+  standardNames: [...ARRAYS.keys()],
   condition:
     "On a namespace metadata object StaticNodeIdTypes is an array of IdType and StaticNumericNodeIdRange an array of NumericRange.",
   why: "Clients that read a list get a single value and take the namespace for dynamic.",
   check(node, ctx, report) {
-    if (node.nodeClass !== "Variable" || node.browseName.namespaceUri !== OPC_UA_NAMESPACE) return;
     const wanted = ARRAYS.get(node.browseName.name);
-    if (wanted === undefined) return;
+    if (node.nodeClass !== "Variable" || wanted === undefined) return;
     const isMetadata = ctx.parentEdges(node.key).some((e) => {
       const type = findTypeDefinition(ctx, e.source);
       return type !== undefined && isKindOf(ctx, type, T.NamespaceMetadataType);

@@ -18,22 +18,21 @@ export const r183: NodeRule = {
   check(node, ctx, report) {
     const { parent } = node as InstanceNode;
     const isDeclaration = isInstanceDeclaration(ctx, node.key);
-    const sources = ctx.parentEdges(node.key).map((e) => e.source);
-    const facts = [
-      `ParentNodeId: ${parent === undefined ? "none" : ctx.describe(parent)}`,
-      ...sources.map((s) => `Hierarchical reference from ${ctx.describe(s)}`),
-    ];
-    if (parent === undefined) {
-      if (isDeclaration)
-        report({ attribute: "parent", message: `The declaration ${node.browseName.name} has no ParentNodeId.`, facts });
-    } else if (!sources.includes(parent)) {
-      report({
-        ...(isDeclaration ? {} : { severity: "warning" }),
-        attribute: "parent",
-        message: `The ParentNodeId of ${node.browseName.name} is no parent of it.`,
-        facts,
-      });
-    }
+    const parents = ctx.parentEdges(node.key);
+    if (parent === undefined ? !isDeclaration : parents.some((e) => e.source === parent)) return;
+    const name = node.browseName.name;
+    report({
+      ...(isDeclaration ? {} : { severity: "warning" }),
+      attribute: "parent",
+      message:
+        parent === undefined
+          ? `The declaration ${name} has no ParentNodeId.`
+          : `The ParentNodeId of ${name} is no parent of it.`,
+      facts: [
+        `ParentNodeId: ${parent === undefined ? "none" : ctx.describe(parent)}`,
+        ...parents.map((e) => `Hierarchical reference from ${ctx.describe(e.source)}`),
+      ],
+    });
   },
   fix: attributeFix("Name the parent", "parent", (node, _finding, space) => {
     const types = getReferenceTypes(space, R.HierarchicalReferences);

@@ -10,6 +10,7 @@ export const r184: NodeRule = {
   clause: clause(6, "§F.7"),
   priority: 2,
   concerns: ["Object", "Variable", "Method", "View"],
+  attributes: ["designToolOnly"],
   condition:
     "DesignToolOnly stands on Objects and Variables only; such a node has a type definition, no ParentNodeId, no parent and no children.",
   why: "Servers leave such nodes out, and their children and references with them.",

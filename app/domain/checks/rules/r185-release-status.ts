@@ -9,6 +9,7 @@ export const r185: NodeRule = {
   clause: clause(6, "§F.3"),
   priority: 2,
   concerns: ["Object", "Variable", "Method"],
+  attributes: ["releaseStatus"],
   condition: "ReleaseStatus stands on types and free instances, not on members of a type, which share its status.",
   why: "A type that is released with a draft inside is neither.",
   check(node, ctx, report) {

@@ -12,7 +12,7 @@ export const r192: NodeRule = {
   clause: clause(6, "§F.1, §F.2, §F.8, §5.3.1.17"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["value"],
   condition: "A Value is one well-formed element of the XML namespace http://opcfoundation.org/UA/2008/02/Types.xsd.",
   why: "Readers look the element up by its namespace: another one is an unknown type, and the value is lost.",
   check(node, _ctx, report) {

@@ -1,7 +1,7 @@
 import { nodeId } from "../example-values";
 import { clause, type NodeRule } from "../rule";
 import { walkValue } from "../value-element";
-import { findValueRoot } from "../value-xml";
+import { makeTreeQuestion } from "../value-xml";
 import { hasValueAttributes } from "../../address-space/node";
 import { parseNodeId } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
@@ -13,13 +13,11 @@ export const r193: NodeRule = {
   clause: clause(6, "§F.14"),
   priority: 1,
   concerns: ["Variable", "VariableType"],
-  needs: "value",
+  needs: ["value"],
   condition: "NodeIds inside a Value name namespaces of the file's own table.",
   why: "An index of a running server, or of another file, stands for another namespace here, or for none: the id is lost.",
   check(node, _ctx, report) {
-    if (!hasValueAttributes(node) || !node.value?.xml.includes("Identifier")) return;
-    const texts = walkValue(findValueRoot(node.value)).flatMap((e) => (e.name === "Identifier" ? [e.text.trim()] : []));
-    const stray = texts.find((text) => !isIndexKnown(text));
+    const stray = hasValueAttributes(node) ? findStray(node.value) : undefined;
     if (stray === undefined) return;
     report({
       attribute: "value",
@@ -48,6 +46,12 @@ export const r193: NodeRule = {
     },
   },
 };
+
+const findStray = makeTreeQuestion<string | undefined>(undefined, (root) =>
+  walkValue(root)
+    .flatMap((e) => (e.name === "Identifier" ? [e.text.trim()] : []))
+    .find((text) => !isIndexKnown(text)),
+);
 
 /** Indices of the file are URIs by now; what still is an index was not in its table. */
 function isIndexKnown(text: string): boolean {

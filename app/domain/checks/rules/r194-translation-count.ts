@@ -10,7 +10,8 @@ export const r194: NodeRule = {
   clause: clause(6, "§F.8, Table F.8, §F.10"),
   priority: 2,
   concerns: ["Variable"],
-  needs: "value",
+  attributes: ["translations"],
+  needs: ["value"],
   condition:
     "A Variable with Translations has one for each entry of its list, one for a single value; more are a hint, since readers ignore them.",
   why: "Entries without translation are shown in another language than the rest.",

@@ -11,6 +11,7 @@ export const r197: NodeRule = {
   clause: `${clause(6, "§F.3, §F.5")}, ${clause(3, "§5.2.9, §4.9.2")}; that the role exists: common practice, no source`,
   priority: 2,
   concerns: ALL_CLASSES,
+  attributes: ["rolePermissions"],
   condition: "Each permission names an Object of RoleType; the well-known roles stand in namespace 0.",
   why: "A permission of an unknown role is given to nobody.",
   check(node, ctx, report) {

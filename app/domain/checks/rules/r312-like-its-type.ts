@@ -1,12 +1,11 @@
 import { hasValueAttributes, type Node, type XmlText } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
-import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import type { ExampleModel } from "../example-model";
 import { CELSIUS, unit } from "../example-values";
 import type { ReportFunction } from "../finding";
-import { findStandardProperty, findTypeAbove, findTypeDefinition } from "../lookups";
+import { findStandardProperty, findTypeDefinition } from "../lookups";
 import { getChildren, getMembers, isNaming, listOwnMembers, type Member } from "../members";
 import { formatRange, listRanges } from "../ranges";
 import type { NodeRule } from "../rule";
@@ -19,11 +18,12 @@ export const r312: NodeRule = {
   clause: "common practice, no source",
   priority: 2,
   concerns: ["Object"],
+  needs: ["no type above"],
   condition: "Members of an instance have the unit and the range of the type's declarations; another range is a hint.",
   why: "Who compares machines takes the type's unit for all of them: one that differs is read wrongly by a factor.",
   check(node, ctx, report) {
     const type = findTypeDefinition(ctx, node.key);
-    if (type === undefined || findTypeAbove(ctx, node.key) !== undefined) return;
+    if (type === undefined) return;
     compareBelow(node, [...getMembers(ctx, type).values()], 0, ctx, report);
   },
   examples: {
@@ -55,8 +55,8 @@ function compareBelow(
 ): void {
   if (depth > MAX_DEPTH) return;
   const children = getChildren(ctx, at.key);
-  for (const { node: declared, rule } of members) {
-    const child = isNaming(rule) ? children.get(formatQualifiedName(declared.browseName))?.[0] : undefined;
+  for (const { node: declared, rule, name } of members) {
+    const child = isNaming(rule) ? children.get(name)?.[0] : undefined;
     if (!child || child.key === declared.key) continue;
     if (ctx.isOwn(child.key)) compareAnalog(child, declared, ctx, report);
     compareBelow(child, listOwnMembers(ctx, declared.key), depth + 1, ctx, report);
@@ -64,9 +64,10 @@ function compareBelow(
 }
 
 function compareAnalog(child: Node, declared: Node, ctx: CheckContext, report: ReportFunction): void {
-  const [here, there] = [child, declared].map((n) => listUnits(findValue(n, "EngineeringUnits", ctx))[0]);
   const name = child.browseName.name;
-  if (here && there && (here.unitId !== there.unitId || here.uri !== there.uri)) {
+  const there = listUnits(findValue(declared, "EngineeringUnits", ctx))[0];
+  const here = there && listUnits(findValue(child, "EngineeringUnits", ctx))[0];
+  if (there && here && (here.unitId !== there.unitId || here.uri !== there.uri)) {
     report({
       key: child.key,
       message: `${name} is in ${here.symbol || here.unitId}, its type says ${there.symbol || there.unitId}.`,
@@ -76,8 +77,9 @@ function compareAnalog(child: Node, declared: Node, ctx: CheckContext, report: R
       ],
     });
   }
-  const [range, wanted] = [child, declared].map((n) => listRanges(findValue(n, "EURange", ctx))[0]);
-  if (range && wanted && (range.low !== wanted.low || range.high !== wanted.high)) {
+  const wanted = listRanges(findValue(declared, "EURange", ctx))[0];
+  const range = wanted && listRanges(findValue(child, "EURange", ctx))[0];
+  if (wanted && range && (range.low !== wanted.low || range.high !== wanted.high)) {
     report({
       key: child.key,
       severity: "hint",
