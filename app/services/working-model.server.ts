@@ -24,6 +24,7 @@ import { AddressSpace } from "../domain/address-space/address-space";
 import { getOwnNamespace } from "../domain/address-space/model-header";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import { applyWithInverse } from "../domain/editing/invert-operation";
+import { listGivenNodeIds } from "../domain/editing/given-node-ids";
 import type { Operation, Transaction } from "../domain/editing/operation";
 import { toPackContent, writePack } from "../domain/nodeset/pack";
 import { logError } from "../utils/log.server";
@@ -257,18 +258,13 @@ function findHighestGiven(namespaceUri: string, added: readonly Transaction[]): 
   let highest = 0;
   for (const { operations } of added) {
     for (const operation of operations) {
-      const nodeId = givenNodeId(operation);
-      if (nodeId?.namespaceUri !== namespaceUri || typeof nodeId.identifier !== "number") continue;
-      if (nodeId.identifier <= HIGHEST_LEASED_IDENTIFIER) highest = Math.max(highest, nodeId.identifier);
+      for (const { nodeId } of listGivenNodeIds(operation)) {
+        if (nodeId.namespaceUri !== namespaceUri || typeof nodeId.identifier !== "number") continue;
+        if (nodeId.identifier <= HIGHEST_LEASED_IDENTIFIER) highest = Math.max(highest, nodeId.identifier);
+      }
     }
   }
   return highest;
-}
-
-function givenNodeId(operation: Operation): { namespaceUri: string; identifier: number | string } | undefined {
-  if (operation.kind === "addNode") return operation.node.nodeId;
-  if (operation.kind !== "setAttribute" || operation.attribute !== "nodeId") return undefined;
-  return operation.value as { namespaceUri: string; identifier: number | string };
 }
 
 /** Stores the own layer as it is now, so that the next load replays little. */

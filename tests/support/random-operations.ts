@@ -2,7 +2,7 @@ import fc from "fast-check";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { DeclaredReference, Node, NodeClass } from "~/domain/address-space/node";
 import { numericNodeId, standardKey, toNodeKey, type NodeKey } from "~/domain/address-space/node-id";
-import { isRequiredAttribute } from "~/domain/editing/node-schema";
+import { isRequiredAttribute } from "~/domain/editing/attribute-names";
 import type { AttributeName, Operation } from "~/domain/editing/operation";
 import { makeNode, TEST_NAMESPACE } from "./small-standard";
 
@@ -16,6 +16,7 @@ export const choice: fc.Arbitrary<Choice> = fc.record({
     "removeNode",
     "setAttribute",
     "setAttribute",
+    "renumber",
     "addReference",
     "removeReference",
     "setHeader",
@@ -58,6 +59,13 @@ export function makeOperation(space: AddressSpace, choice: Choice, idBase = 0): 
       return { kind: "removeNode", key: pickKey(space, choice.a) };
     case "setAttribute":
       return { kind: "setAttribute", key: pickKey(space, choice.a), ...makeAttribute(choice, idBase) };
+    case "renumber": {
+      const keys = [...new Set([pickKey(space, choice.a), pickKey(space, choice.b), pickKey(space, choice.c)])];
+      const ids = keys.map((key) => space.requireNode(key).nodeId);
+      const fresh = numericNodeId(TEST_NAMESPACE, idBase + 500 + choice.c);
+      const changes = keys.map((key, i) => ({ key, nodeId: ids[i + 1] ?? (choice.flag ? fresh : (ids[0] ?? fresh)) }));
+      return { kind: "renumber", changes };
+    }
     case "addReference":
       return {
         kind: "addReference",

@@ -130,9 +130,7 @@ export class AddressSpace {
   /** Adds or replaces a node of the own model. */
   withNode(node: Node): AddressSpace {
     const old = this.own.nodes.get(node.key);
-    let { keysByNodeId } = this.own;
-    if (old) keysByNodeId = keysByNodeId.without(formatNodeId(old.nodeId));
-    keysByNodeId = keysByNodeId.with(formatNodeId(node.nodeId), node.key);
+    const keysByNodeId = withoutId(this.own, old).with(formatNodeId(node.nodeId), node.key);
     const layer: Layer = {
       ...this.own,
       nodes: this.own.nodes.with(node.key, node),
@@ -150,7 +148,7 @@ export class AddressSpace {
     const layer: Layer = {
       ...this.own,
       nodes: this.own.nodes.without(key),
-      keysByNodeId: this.own.keysByNodeId.without(formatNodeId(old.nodeId)),
+      keysByNodeId: withoutId(this.own, old),
       ...updateEdgeIndex(this.own, old, undefined),
     };
     return this.#withOwn(layer, old.nodeClass === "ReferenceType");
@@ -180,6 +178,12 @@ export class AddressSpace {
   #withOwn(own: Layer, clearsCache: boolean): AddressSpace {
     return new AddressSpace([...this.layers.slice(0, -1), own], clearsCache ? new Map() : this.referenceTypeCache);
   }
+}
+
+/** Without the NodeId of a node, unless another node has it by now: nodes that exchange their ids are put there in turns. */
+function withoutId({ keysByNodeId }: Layer, node: Node | undefined): ShardedMap<NodeKey> {
+  const text = node && formatNodeId(node.nodeId);
+  return text !== undefined && keysByNodeId.get(text) === node?.key ? keysByNodeId.without(text) : keysByNodeId;
 }
 
 /** The edges of a node that other nodes of the layer declare: what keeps it from being removed. */

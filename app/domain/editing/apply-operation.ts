@@ -7,9 +7,9 @@
 import { hasEdge, listUses, type AddressSpace, type Edge } from "../address-space/address-space";
 import type { ModelHeader } from "../address-space/model-header";
 import type { DeclaredReference, Node } from "../address-space/node";
-import { formatNodeId, toNodeKey, type NodeId, type NodeKey } from "../address-space/node-id";
+import { formatNodeId, type NodeId, type NodeKey } from "../address-space/node-id";
 import { assertNever, fail, ok, problem, type Problem, type Result } from "../core/result";
-import { hasAttribute, isRequiredAttribute } from "./node-schema";
+import { hasAttribute, isRequiredAttribute } from "./attribute-names";
 import type { AttributeName, Operation } from "./operation";
 
 type Of<K extends Operation["kind"]> = Extract<Operation, { kind: K }>;
@@ -27,6 +27,8 @@ export function applyOperation(space: AddressSpace, operation: Operation): Resul
       return removeNode(space, operation.key);
     case "setAttribute":
       return setAttribute(space, operation);
+    case "renumber":
+      return renumber(space, operation);
     case "addReference":
       return addReference(space, operation);
     case "removeReference":
@@ -73,9 +75,12 @@ export function findDangling(space: AddressSpace, node: Node): NodeKey[] {
   return missing;
 }
 
-/** A NodeId is never given twice: neither one in use nor one by which a renumbered node is known. */
+/**
+ * No two nodes have one NodeId. That one which was given up is given to nobody else is the ledger's part and that of the
+ * commands: an inverse must be able to put back what an explicit renumbering made.
+ */
 function findIdProblem(space: AddressSpace, key: NodeKey, nodeId: NodeId): Problem | undefined {
-  const holder = space.findByNodeId(nodeId) ?? space.getNode(toNodeKey(nodeId));
+  const holder = space.findByNodeId(nodeId);
   if (!holder || holder.key === key) return undefined;
   return problem("operation.node-id-taken", { nodeId: formatNodeId(nodeId) }, { node: key });
 }
@@ -103,6 +108,24 @@ function setAttribute(space: AddressSpace, { key, attribute, value }: Of<"setAtt
     if (taken) return fail(taken);
   }
   return ok(space.withNode(withAttribute(node, attribute, value)));
+}
+
+/** All at once: a NodeId is free when its holder gives it up in the same operation. */
+function renumber(space: AddressSpace, { changes }: Of<"renumber">): Result<AddressSpace> {
+  const moving = new Set(changes.map(({ key }) => key));
+  const given = new Set<string>();
+  let next = space;
+  for (const { key, nodeId } of changes) {
+    const found = requireOwn(space, key);
+    if (!found.ok) return found;
+    const text = formatNodeId(nodeId);
+    const holder = space.findByNodeId(nodeId);
+    const isTaken = given.has(text) || (holder !== undefined && !moving.has(holder.key));
+    if (isTaken) return fail(problem("operation.node-id-taken", { nodeId: text }, { node: key }));
+    given.add(text);
+    next = next.withNode({ ...found.value, nodeId });
+  }
+  return ok(next);
 }
 
 function withAttribute(node: Node, attribute: AttributeName, value: unknown): Node {

@@ -31,6 +31,16 @@ export function listConflictUnits(operation: Operation): { changes: string[]; ne
       if (attribute === "nodeId") changes.push(unit("id", formatNodeId(value as NodeId)));
       return { changes, needs: [nodeUnit(key), ...listNamedNodes(attribute, value)] };
     }
+    case "renumber": {
+      const { changes } = operation;
+      return {
+        changes: changes.flatMap(({ key, nodeId }) => [
+          unit("attribute", key, "nodeId"),
+          unit("id", formatNodeId(nodeId)),
+        ]),
+        needs: changes.map(({ key }) => nodeUnit(key)),
+      };
+    }
     case "addReference":
     case "removeReference": {
       const { kind, source, type, target } = operation;

@@ -8,6 +8,7 @@ import { findModellingRule } from "../address-space/browse";
 import { isTypeNode, type NodeClass } from "../address-space/node";
 import { fail, ok, problem, type Result } from "../core/result";
 import type { NewNodePlace, NodeIdAllocator } from "./allocate-node-id";
+import { listGivenNodeIds } from "./given-node-ids";
 import type { Operation } from "./operation";
 
 /** All NodeIds ever given. Grows only. */
@@ -24,11 +25,7 @@ export class NodeIdLedger {
 
   /** Takes note of what operations give; what they take away stays given. */
   record(operations: readonly Operation[]): void {
-    for (const operation of operations) {
-      if (operation.kind === "addNode") this.add(operation.node.nodeId);
-      else if (operation.kind === "setAttribute" && operation.attribute === "nodeId")
-        this.add(operation.value as NodeId);
-    }
+    for (const operation of operations) for (const { nodeId } of listGivenNodeIds(operation)) this.add(nodeId);
   }
 
   add(id: NodeId): void {

@@ -24,6 +24,13 @@ export function invertOperation(space: AddressSpace, operation: Operation): Oper
       const value = node?.[attribute];
       return [{ kind: "setAttribute", key, attribute, ...(value === undefined ? {} : { value }) }];
     }
+    case "renumber": {
+      const changes = operation.changes.flatMap(({ key }) => {
+        const node = space.getNode(key);
+        return node ? [{ key, nodeId: node.nodeId }] : [];
+      });
+      return [{ kind: "renumber", changes }];
+    }
     case "addReference": {
       const { source, type, target } = operation;
       return [{ kind: "removeReference", source, type, target }];

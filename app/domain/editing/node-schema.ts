@@ -2,8 +2,6 @@
  * Shapes of nodes and headers as zod schemas, strict: an unknown member is an error on both sides of the wire. They hold
  * the shape and the ranges of the types; whatever a reader may have kept from a published file passes, since an undo
  * sends it back as it was. What a model should hold beyond that is the checker's business.
- *
- * Written with zod/mini: the browser's first load holds this file, and the full zod is three times as large.
  */
 import * as z from "zod/mini";
 import { parseNodeId, MAX_NUMERIC_IDENTIFIER, type NodeId, type NodeKey } from "../address-space/node-id";
@@ -11,6 +9,7 @@ import type { ModelEntry, ModelHeader } from "../address-space/model-header";
 import type { Node, NodeClass } from "../address-space/node";
 import { isWritableText } from "../nodeset/values/scalar-text";
 import { readFragment } from "../nodeset/values/xml-fragment";
+import type { AttributeOf } from "./attribute-names";
 import type { AttributeName } from "./operation";
 
 const MAX_TEXT = 16_000_000;
@@ -191,20 +190,6 @@ export const attributeSchemas: Readonly<Record<AttributeName, z.ZodMiniType>> = 
   ...attributeShapes.DataType,
   ...attributeShapes.ReferenceType,
 };
-
-const attributesByClass = new Map<NodeClass, ReadonlySet<string>>(
-  Object.entries(attributeShapes).map(([nodeClass, shape]) => [nodeClass as NodeClass, new Set(Object.keys(shape))]),
-);
-
-/** Whether nodes of the class have the attribute (OPC 10000-6 Annex F, OPC 10000-3 §5.3–5.8). */
-export function hasAttribute(nodeClass: NodeClass, attribute: AttributeName): boolean {
-  return attributesByClass.get(nodeClass)?.has(attribute) ?? false;
-}
-
-/** Attributes that a node always has. */
-export function isRequiredAttribute(attribute: AttributeName): boolean {
-  return attribute === "nodeId" || attribute === "order" || attribute === "browseName" || attribute === "displayName";
-}
 
 export const modelEntrySchema: z.ZodMiniType<ModelEntry> = z.strictObject({
   modelUri: someText,

@@ -6,7 +6,8 @@ import { z } from "zod";
 import { mappingParts } from "../address-space/mapping-entry";
 import type { ModelHeader } from "../address-space/model-header";
 import { mappingPartSchemas } from "../mapping/mapping-parts";
-import { attributeSchemas, headerShape, isRequiredAttribute, nodeKeySchema, nodeSchema } from "./node-schema";
+import { isRequiredAttribute } from "./attribute-names";
+import { attributeSchemas, headerShape, nodeIdSchema, nodeKeySchema, nodeSchema } from "./node-schema";
 import type { AttributeName, Operation } from "./operation";
 
 const place = z.int().min(0);
@@ -43,8 +44,8 @@ const setMapping = z
     if (operation.value !== undefined) copyIssues(mappingPartSchemas[operation.part], operation.value, context);
   });
 
-function copyIssues(schema: z.ZodType, value: unknown, context: z.RefinementCtx): void {
-  const result = schema.safeParse(value);
+function copyIssues(schema: z.core.$ZodType, value: unknown, context: z.RefinementCtx): void {
+  const result = z.safeParse(schema, value);
   if (result.success) return;
   for (const issue of result.error.issues) {
     context.addIssue({ code: "custom", message: issue.message, path: ["value", ...issue.path] });
@@ -55,6 +56,10 @@ export const operationSchema: z.ZodType<Operation> = z.discriminatedUnion("kind"
   z.strictObject({ kind: z.literal("addNode"), node: nodeSchema, isDangling: z.literal(true).optional() }),
   z.strictObject({ kind: z.literal("removeNode"), key: nodeKeySchema }),
   setAttribute,
+  z.strictObject({
+    kind: z.literal("renumber"),
+    changes: z.array(z.strictObject({ key: nodeKeySchema, nodeId: nodeIdSchema })).min(1),
+  }),
   z.strictObject({
     kind: z.literal("addReference"),
     ...edge,

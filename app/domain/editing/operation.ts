@@ -4,7 +4,7 @@
  * "instantiate", "delete with all below it") are commands that answer a list of operations.
  */
 import type { MappingAddress } from "../address-space/mapping-entry";
-import type { NodeKey } from "../address-space/node-id";
+import type { NodeId, NodeKey } from "../address-space/node-id";
 import type { ModelHeader } from "../address-space/model-header";
 import type { Node } from "../address-space/node";
 
@@ -69,6 +69,8 @@ export type Operation =
       readonly attribute: AttributeName;
       readonly value?: unknown;
     }
+  /** Gives nodes other NodeIds, all at once: two may exchange theirs, and several may pass them on in a circle. */
+  | { readonly kind: "renumber"; readonly changes: readonly { readonly key: NodeKey; readonly nodeId: NodeId }[] }
   /**
    * `sourceIndex` and `targetIndex` are places in the lists of declared references; absent means at the end. `repeats`
    * are the places of further declarations of the same reference, which some files have and an undo must put back.

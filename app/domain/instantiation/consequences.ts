@@ -219,7 +219,7 @@ export function applyConsequences(
 /** Whether operations touch types or what stands in them, so that asking for consequences is worth the time. */
 export function touchesDeclarations(before: AddressSpace, operations: readonly Operation[]): boolean {
   return operations.some((operation) => {
-    if (operation.kind === "setHeader" || operation.kind === "setMapping") return false;
+    if (operation.kind === "setHeader" || operation.kind === "setMapping" || operation.kind === "renumber") return false;
     if (operation.kind === "addNode") return operation.node.references.some((r) => r.type === HasModellingRule);
     const keys = "key" in operation ? [operation.key] : [operation.source, operation.target];
     return keys.some((key) => isDeclaration(before, key));

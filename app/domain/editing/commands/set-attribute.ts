@@ -6,35 +6,13 @@ import type { AddressSpace } from "../../address-space/address-space";
 import type { NodeKey } from "../../address-space/node-id";
 import { problem, type Result } from "../../core/result";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
-import { attributeSchemas, isRequiredAttribute } from "../node-schema";
+import { isAttributeValue, type PlainAttribute } from "../attribute-values";
+import { isRequiredAttribute } from "../attribute-names";
 import type { AttributeName } from "../operation";
-
-/** Attributes that this command sets. */
-export const PLAIN_ATTRIBUTES = [
-  "symbolicName",
-  "category",
-  "documentation",
-  "releaseStatus",
-  "writeMask",
-  "accessRestrictions",
-  "hasNoPermissions",
-  "rolePermissions",
-  "designToolOnly",
-  "eventNotifier",
-  "containsNoLoops",
-  "accessLevel",
-  "minimumSamplingInterval",
-  "historizing",
-  "executable",
-  "methodDeclaration",
-  "argumentDescriptions",
-  "isAbstract",
-  "symmetric",
-] as const satisfies readonly AttributeName[];
 
 export type SetAttributeIntent = {
   readonly node: NodeKey;
-  readonly attribute: (typeof PLAIN_ATTRIBUTES)[number];
+  readonly attribute: PlainAttribute;
   /** Absent takes it away, its default then holds. */
   readonly value?: unknown;
 };
@@ -42,6 +20,7 @@ export type SetAttributeIntent = {
 /** Bits that the standard leaves free to use (OPC 10000-3 §8.57–8.59): reserved ones must stay zero. */
 const ALLOWED_BITS: Readonly<Partial<Record<AttributeName, number>>> = {
   accessLevel: 0x3f7f,
+  userAccessLevel: 0x3f7f,
   eventNotifier: 0x0d,
   accessRestrictions: 0x0f,
 };
@@ -51,7 +30,7 @@ export function setAttribute(space: AddressSpace, context: CommandContext, inten
   const draft = new EditDraft(space, context);
   const { node, attribute, value } = intent;
   const isGone = value === undefined && !isRequiredAttribute(attribute);
-  if (!isGone && !attributeSchemas[attribute].safeParse(value).success)
+  if (!isGone && !isAttributeValue(attribute, value))
     draft.fail(problem("attribute.value", { attribute }, { node, attribute }));
   const allowed = ALLOWED_BITS[attribute];
   if (allowed !== undefined && typeof value === "number" && (value & ~allowed) !== 0) {

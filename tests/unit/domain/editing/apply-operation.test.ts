@@ -23,13 +23,11 @@ describe("addNode", () => {
     expect(space.edgesFrom(parent.key)).toEqual([{ source: parent.key, type: HasComponent, target: child.key }]);
   });
 
-  it("refuses a key, a NodeId of another node and a former NodeId", () => {
+  it("refuses a key and a NodeId of another node", () => {
     const renumbered = makeNode(5, "Object", { nodeId: numericNodeId(TEST_NAMESPACE, 6) });
     const space = makeSpace([parent, renumbered]);
     expectRefused(space, { kind: "addNode", node: parent }, "operation.node-exists");
     expectRefused(space, { kind: "addNode", node: makeNode(6, "Object") }, "operation.node-id-taken");
-    const former = makeNode(7, "Object", { nodeId: numericNodeId(TEST_NAMESPACE, 5) });
-    expectRefused(space, { kind: "addNode", node: former }, "operation.node-id-taken");
     const standard = makeNode(8, "Object", { nodeId: numericNodeId(OPC_UA_NAMESPACE, 58) });
     expectRefused(space, { kind: "addNode", node: standard }, "operation.node-id-taken");
   });
@@ -93,17 +91,12 @@ describe("setAttribute", () => {
     );
   });
 
-  it("renumbers a node and finds it by its new NodeId only; the old one stays given", () => {
+  it("renumbers a node and finds it by its new NodeId only", () => {
     const nodeId = numericNodeId(TEST_NAMESPACE, 4711);
     const next = expectOperation(space, { kind: "setAttribute", key: child.key, attribute: "nodeId", value: nodeId });
     expect(next.findByNodeId(nodeId)?.key).toBe(child.key);
     expect(next.findByNodeId(child.nodeId)).toBeUndefined();
     expectOperation(next, { kind: "setAttribute", key: child.key, attribute: "nodeId", value: child.nodeId });
-    expectRefused(
-      next,
-      { kind: "setAttribute", key: parent.key, attribute: "nodeId", value: child.nodeId },
-      "operation.node-id-taken",
-    );
   });
 });
 
@@ -215,5 +208,45 @@ describe("indexes", () => {
     const edited = makeSpace(nodes).withNode(late);
     expect(edited.edgesFrom(parent.key)).toEqual(built.edgesFrom(parent.key));
     expect(edited.edgesFrom(parent.key).map((e) => e.target)).toEqual([late.key, keyOf(9)]);
+  });
+});
+
+describe("renumber", () => {
+  const [one, two, three] = [1, 2, 3].map((id) => makeNode(id, "Object"));
+  if (!one || !two || !three) throw new Error("No nodes");
+  const space = makeSpace([one, two, three]);
+  const idOf = (number: number) => numericNodeId(TEST_NAMESPACE, number);
+
+  it("lets nodes exchange their NodeIds and pass them on in a circle", () => {
+    const swapped = expectOperation(space, {
+      kind: "renumber",
+      changes: [
+        { key: one.key, nodeId: idOf(2) },
+        { key: two.key, nodeId: idOf(1) },
+      ],
+    });
+    expect([1, 2, 3].map((number) => swapped.findByNodeId(idOf(number))?.key)).toEqual([two.key, one.key, three.key]);
+    const turned = expectOperation(swapped, {
+      kind: "renumber",
+      changes: [
+        { key: one.key, nodeId: idOf(3) },
+        { key: three.key, nodeId: idOf(1) },
+        { key: two.key, nodeId: idOf(9) },
+      ],
+    });
+    expect([1, 2, 3, 9].map((number) => turned.findByNodeId(idOf(number))?.key)).toEqual([
+      three.key,
+      undefined,
+      one.key,
+      two.key,
+    ]);
+  });
+
+  it("refuses a NodeId that another node keeps, or that two would get", () => {
+    const to = (key: NodeKey, number: number) => ({ key, nodeId: idOf(number) });
+    expectRefused(space, { kind: "renumber", changes: [to(one.key, 2)] }, "operation.node-id-taken");
+    expectRefused(space, { kind: "renumber", changes: [to(one.key, 9), to(two.key, 9)] }, "operation.node-id-taken");
+    const foreign = { kind: "renumber" as const, changes: [to(standardKey(58), 9)] };
+    expectRefused(space, foreign, "operation.node-foreign");
   });
 });

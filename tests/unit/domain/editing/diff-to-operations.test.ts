@@ -6,6 +6,7 @@ import { numericNodeId, toNodeKey } from "~/domain/address-space/node-id";
 import { applyOperation, applyOperations } from "~/domain/editing/apply-operation";
 import { diffToOperations } from "~/domain/editing/diff-to-operations";
 import type { NodeSetContent } from "~/domain/nodeset/nodeset-content";
+import { listGivenNodeIds } from "~/domain/editing/given-node-ids";
 import { readNodeSet } from "~/domain/nodeset/read-nodeset";
 import { writeNodeSet } from "~/domain/nodeset/write-nodeset";
 import { choice, makeOperation, type Choice } from "../../../support/random-operations";
@@ -38,7 +39,7 @@ function edit(space: AddressSpace, choices: readonly Choice[]): AddressSpace {
   return choices.reduce((current, made) => {
     const operation = makeOperation(current, made);
     // Another NodeId is another node in a text, which is told below.
-    if (operation.kind === "setAttribute" && operation.attribute === "nodeId") return current;
+    if (listGivenNodeIds(operation).some((given) => !given.node)) return current;
     const applied = applyOperation(current, operation);
     return applied.ok ? applied.value : current;
   }, space);

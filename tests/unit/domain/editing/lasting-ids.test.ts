@@ -121,6 +121,31 @@ describe("renumberNodes", () => {
     expect(bench.space.edgesFrom(type).map((e) => e.target)).toContain(method);
   });
 
+  it("lets nodes exchange ids and pass them on in a circle, with the values that hold them, and takes it back", () => {
+    const before = bench.space;
+    const [first, second, third] = [state, type, method].map((key) => bench.node(key).nodeId);
+    if (!first || !second || !third) throw new Error("No nodes");
+    const argumentsKey = bench.at(method, "InputArguments").key;
+    const textOf = (): string => (bench.node(argumentsKey) as { value: { xml: string } }).value.xml;
+    bench.do(renumberNodes, {
+      changes: [
+        { node: state, nodeId: second },
+        { node: type, nodeId: third },
+        { node: method, nodeId: first },
+      ],
+    });
+    expect([first, second, third].map((one) => bench.space.findByNodeId(one)?.key)).toEqual([method, state, type]);
+    expect(textOf()).toContain(`<Identifier>${formatNodeId(second)}</Identifier>`);
+    bench.do(renumberNodes, {
+      changes: [
+        { node: state, nodeId: first },
+        { node: type, nodeId: second },
+        { node: method, nodeId: third },
+      ],
+    });
+    expect(bench.space.listOwnNodes()).toEqual(before.listOwnNodes());
+  });
+
   it("refuses ids that are or were given, and other namespaces", () => {
     expect(bench.refuse(renumberNodes, { changes: [{ node: method, nodeId: id(1002) }] })).toEqual([
       "operation.node-id-taken",
