@@ -18,6 +18,10 @@ export default [
   route("events/topics", "routes/data/event-topics.ts"),
   route("packs/:hash", "routes/data/pack.ts"),
   route("team/audit.csv", "routes/data/audit.ts"),
+  route("devices/files", "routes/data/device-files.ts"),
+  route("devices/:deviceId/file", "routes/data/device-file.ts"),
+  route("devices/:deviceId/picture", "routes/data/device-picture.ts"),
+  route("devices/:deviceId/description", "routes/data/device-description.ts"),
   ...prefix("models/:modelId", [
     route("pack", "routes/data/model-pack.ts"),
     route("layers", "routes/data/model-layers.ts"),

@@ -30,6 +30,12 @@ export function readDevicePackage(bytes: Uint8Array, fileName: string): Result<D
   return files.ok ? readFiles(files.value) : files;
 }
 
+/** One picture of a package that was read before, by its name; undefined where it holds none. */
+export function readPackagePicture(bytes: Uint8Array, name: string): Uint8Array | undefined {
+  const files = isZip(bytes) ? unpack(bytes) : undefined;
+  return files?.ok ? files.value.get(name) : undefined;
+}
+
 function isZip(bytes: Uint8Array): boolean {
   return bytes[0] === 0x50 && bytes[1] === 0x4b;
 }

@@ -9,7 +9,7 @@ import { fail, ok, problem, type Result } from "../core/result";
 const MAX_NODES = 300;
 
 const FUNCTIONS = new Set(
-  "abs ceil floor round sign sqrt exp log log10 log2 pow min max sin cos tan asin acos atan atan2 hypot".split(" "),
+  "abs ceil floor round sign sqrt exp log log10 log2 pow min max mean sin cos tan asin acos atan atan2 hypot".split(" "),
 );
 const CONSTANTS = new Set(["pi", "e", "true", "false"]);
 const NODE_TYPES = new Set([
@@ -59,7 +59,13 @@ export function compileFormula(expression: string, allowedNames: readonly string
     return fail(problem("formula.unknown-name", { name: unknown, choices: allowedNames.join(", ") || "none" }));
   }
   const code = parsed.value.compile();
-  return ok({ names: [...names], evaluate: (inputs) => toResult(code.evaluate({ ...inputs })) });
+  return ok({ names: [...names], evaluate: (inputs) => toResult(code.evaluate({ mean, ...inputs })) });
+}
+
+/** The mean of what is there: an input that carries no value is left out. */
+function mean(...values: readonly number[]): number {
+  const known = values.filter((value) => !Number.isNaN(value));
+  return known.reduce((sum, value) => sum + value, 0) / known.length;
 }
 
 function findName(node: MathNode): string {

@@ -19,12 +19,6 @@ const target = z.string().min(1).max(10_000);
 export const roleSchema = sourceRoleSchema.omit({ role: true }).extend({
   /** The description in the device library that the layouts were taken from. */
   deviceDescriptionId: id.optional(),
-  productName: text.optional(),
-  portClass: z.enum(["A", "B"]).optional(),
-  /** Wanted cycle time in milliseconds. */
-  cycleMs: z.number().positive().max(60_000).optional(),
-  /** The present value of the parameter that decides between several layouts. */
-  condition: z.string().max(200).optional(),
   profileCharacteristic: z.array(z.number().int()).max(100).optional(),
   layouts: z
     .strictObject({ in: processDataImageSchema.optional(), out: processDataImageSchema.optional() })

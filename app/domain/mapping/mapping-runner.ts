@@ -2,11 +2,23 @@
  * A running mapping: one for each machine. Frames and samples go in, changed Variables come out. It has no clock and no
  * timers: the caller gives the time with each input and calls `age` now and then, so that a replay of a recorded file and
  * a live source take the same path.
+ *
+ * Everything that can be found before the first frame is found then: each source has a slot for its newest sample, and
+ * each frame knows the rows that it feeds in the order of evaluation.
  */
 import type { Direction } from "../iodd/device-description";
-import { frameKey, type ChannelKey, type FormulaInput, type MappingPlan, type RowPlan } from "./plan-mapping";
+import {
+  frameKey,
+  type ChannelKey,
+  type ChannelSlot,
+  type FormulaInput,
+  type FrameChannel,
+  type MappingPlan,
+  type RowPlan,
+} from "./plan-mapping";
+import type { CompiledFormula } from "./formula";
 import { badSample, toNumber, worstStatus, type Sample } from "./sample";
-import { isBad, StatusCode } from "./status";
+import { isBad, isGood, StatusCode } from "./status";
 import type { TransformStep } from "./transform";
 
 export type FrameInput = {
@@ -19,7 +31,27 @@ export type FrameInput = {
 
 export type Update = { readonly target: string; readonly sample: Sample };
 
-type RunningRow = { readonly plan: RowPlan; readonly steps: readonly TransformStep[]; sample: Sample };
+/** What is known of a role beside its data: no source is bound, another device answers, the device reports a failure. */
+export type RoleState = "ok" | "not-connected" | "wrong-device" | "device-failure";
+
+const STATUS_OF_ROLE: Readonly<Record<Exclude<RoleState, "ok">, number>> = {
+  "not-connected": StatusCode.Bad_NotConnected,
+  "wrong-device": StatusCode.Bad_ConfigurationError,
+  "device-failure": StatusCode.Bad_DeviceFailure,
+};
+
+type RunningRow = {
+  readonly plan: RowPlan;
+  readonly target: string;
+  readonly steps: readonly TransformStep[];
+  sample: Sample;
+};
+
+type RunningFrame = {
+  readonly octets: number;
+  readonly channels: readonly FrameChannel[];
+  readonly rows: readonly RunningRow[];
+};
 
 const WAITING = badSample(StatusCode.Bad_WaitingForInitialData, 0);
 
@@ -27,19 +59,26 @@ export class MappingRunner {
   readonly #plan: MappingPlan;
   readonly #rows: readonly RunningRow[];
   readonly #rowsByTarget: ReadonlyMap<string, RunningRow>;
-  /** Rows that a channel feeds, those that read them by formula behind them. */
-  readonly #rowsByChannel = new Map<ChannelKey, RunningRow[]>();
-  readonly #channels = new Map<ChannelKey, Sample>();
+  /** By slot: the rows that it feeds, directly or through formulas, in the order of evaluation. */
+  readonly #rowsBySlot: readonly (readonly RunningRow[])[];
+  readonly #samples: Sample[];
+  readonly #frames = new Map<string, RunningFrame>();
+  readonly #roleStatus = new Map<string, number>();
 
   constructor(plan: MappingPlan, time = 0) {
     this.#plan = plan;
-    this.#rows = plan.rows.map((row) => ({ plan: row, steps: row.makeSteps(), sample: WAITING }));
-    this.#rowsByTarget = new Map(this.#rows.map((row) => [row.plan.row.target, row]));
-    for (const row of this.#rows) this.#register(row);
+    this.#rows = plan.rows.map((row) => ({ plan: row, target: row.row.target, steps: row.makeSteps(), sample: WAITING }));
+    this.#rowsByTarget = new Map(this.#rows.map((row) => [row.target, row]));
+    this.#samples = new Array<Sample>(plan.slots.size).fill(WAITING);
+    const needs = this.#rows.map((row) => this.#listSlots(row, new Set()));
+    this.#rowsBySlot = this.#samples.map((_, slot) => this.#rows.filter((_row, i) => needs[i]?.has(slot)));
+    for (const [key, { plan: frame, channels }] of plan.frames) {
+      const rows = this.#rows.filter((_row, i) => channels.some((c) => needs[i]?.has(c.slot)));
+      this.#frames.set(key, { octets: frame.octets, channels, rows });
+    }
     for (const row of this.#rows) {
-      if (row.plan.input.kind === "constant") {
-        row.sample = runSteps(row, { value: row.plan.input.value, status: StatusCode.Good, time });
-      }
+      const { input } = row.plan;
+      if (input.kind === "constant") row.sample = runRow(row, { value: input.value, status: StatusCode.Good, time });
     }
   }
 
@@ -50,7 +89,7 @@ export class MappingRunner {
 
   /** All Variables with their present samples, in the order of evaluation. */
   list(): Update[] {
-    return this.#rows.map((row) => ({ target: row.plan.row.target, sample: row.sample }));
+    return this.#rows.map((row) => ({ target: row.target, sample: row.sample }));
   }
 
   /**
@@ -58,35 +97,50 @@ export class MappingRunner {
    * its fields become Bad (OPC 30120 §7.1.3), never 0.
    */
   offerFrame(role: string, direction: Direction, frame: FrameInput): Update[] {
-    const entry = this.#plan.frames.get(frameKey(role, direction));
+    const entry = this.#frames.get(frameKey(role, direction));
     if (!entry) return [];
-    const changed: ChannelKey[] = [];
-    const isUsable = frame.isValid && frame.octets.length === entry.plan.octets;
-    const status = frame.isValid ? StatusCode.Bad_ConfigurationError : StatusCode.Bad;
-    for (const { field, channel } of entry.channels) {
-      if (!isUsable) {
-        this.#channels.set(channel, badSample(status, frame.time));
-      } else {
-        const decoded = field.decode(frame.octets);
-        const value = typeof decoded.value === "object" ? null : decoded.value;
-        this.#channels.set(channel, { value, status: decoded.status, time: frame.time });
+    const { octets, time } = frame;
+    const { channels } = entry;
+    const refused = this.#refuse(role, entry, frame);
+    if (refused !== undefined) {
+      const sample = badSample(refused, time);
+      for (const { slot } of channels) this.#samples[slot] = sample;
+    } else {
+      for (let i = 0; i < channels.length; i++) {
+        const channel = channels[i] as FrameChannel;
+        const { value, status } = channel.field.decode(octets);
+        this.#samples[channel.slot] = { value: typeof value === "object" ? null : value, status, time };
       }
-      changed.push(channel);
     }
-    return this.#update(changed);
+    return this.#evaluateAll(entry.rows);
   }
 
   /** A sample of any other source: a register, a tag, a parameter, the device status. */
   offerSample(channel: ChannelKey, sample: Sample): Update[] {
-    if (!this.#rowsByChannel.has(channel)) return [];
-    this.#channels.set(channel, isBad(sample.status) ? badSample(sample.status, sample.time) : sample);
-    return this.#update([channel]);
+    const slot = this.#plan.slots.get(channel);
+    if (slot === undefined) return [];
+    this.#samples[slot] = isBad(sample.status) ? badSample(sample.status, sample.time) : sample;
+    return this.#evaluateAll(this.#rowsBySlot[slot] ?? []);
+  }
+
+  /** While a role is not "ok", all that it feeds is Bad with the status of the case, whatever its source says. */
+  setRoleState(role: string, state: RoleState, time: number): Update[] {
+    if (state === "ok") {
+      this.#roleStatus.delete(role);
+      return [];
+    }
+    const status = STATUS_OF_ROLE[state];
+    if (this.#roleStatus.get(role) === status) return [];
+    this.#roleStatus.set(role, status);
+    const slots = this.#plan.slotsOfRole.get(role) ?? [];
+    for (const slot of slots) this.#samples[slot] = badSample(status, time);
+    return this.#evaluateAll(this.#rows.filter((row) => slots.some((slot) => this.#rowsBySlot[slot]?.includes(row))));
   }
 
   /**
    * Lets values grow old: a channel that is silent for more than one period keeps its last value as
    * Uncertain_NoCommunicationLastUsable, after `keepPeriods` (3 unless the row says otherwise) it becomes
-   * Bad_NoCommunication without a value.
+   * Bad_NoCommunication without a value, unless the row keeps it for as long as it takes.
    */
   age(now: number): Update[] {
     const updates: Update[] = [];
@@ -94,86 +148,77 @@ export class MappingRunner {
       const { period, quality } = row.plan.row;
       if (period === undefined || row.plan.input.kind === "constant" || row.sample === WAITING) continue;
       const silent = now - row.sample.time;
-      const keep = (quality?.keepPeriods ?? 3) * period;
+      if (silent <= period || isBad(row.sample.status)) continue;
+      const isKept = silent <= (quality?.keepPeriods ?? 3) * period;
       const status =
-        silent > keep
-          ? StatusCode.Bad_NoCommunication
-          : silent > period
-            ? StatusCode.Uncertain_NoCommunicationLastUsable
-            : undefined;
-      if (status === undefined || isBad(row.sample.status) || row.sample.status === status) continue;
+        isKept || quality?.afterKeep === "Uncertain_NoCommunicationLastUsable"
+          ? StatusCode.Uncertain_NoCommunicationLastUsable
+          : StatusCode.Bad_NoCommunication;
+      if (row.sample.status === status) continue;
       row.sample = isBad(status) ? badSample(status, row.sample.time) : { ...row.sample, status };
-      updates.push({ target: row.plan.row.target, sample: row.sample });
+      updates.push({ target: row.target, sample: row.sample });
     }
     return updates;
   }
 
-  #register(row: RunningRow): void {
-    for (const channel of this.#listChannels(row, new Set())) {
-      const rows = this.#rowsByChannel.get(channel);
-      if (rows) rows.push(row);
-      else this.#rowsByChannel.set(channel, [row]);
-    }
+  #refuse(role: string, entry: RunningFrame, frame: FrameInput): number | undefined {
+    const known = this.#roleStatus.size === 0 ? undefined : this.#roleStatus.get(role);
+    if (known !== undefined) return known;
+    if (!frame.isValid) return StatusCode.Bad;
+    return frame.octets.length === entry.octets ? undefined : StatusCode.Bad_ConfigurationError;
   }
 
-  #listChannels(row: RunningRow, found: Set<ChannelKey>): ReadonlySet<ChannelKey> {
+  #listSlots(row: RunningRow, found: Set<ChannelSlot>): ReadonlySet<ChannelSlot> {
     const { input } = row.plan;
-    if (input.kind === "channel") found.add(input.channel);
+    if (input.kind === "channel") found.add(input.slot);
     if (input.kind !== "formula") return found;
-    for (const { channel, target } of input.inputs) {
-      if (channel !== undefined) found.add(channel);
+    for (const { slot, target } of input.inputs) {
+      if (slot !== undefined) found.add(slot);
       const member = target === undefined ? undefined : this.#rowsByTarget.get(target);
-      if (member) this.#listChannels(member, found);
+      if (member) this.#listSlots(member, found);
     }
     return found;
   }
 
-  #update(changed: readonly ChannelKey[]): Update[] {
-    const updates: Update[] = [];
-    if (changed.length === 1) {
-      for (const row of this.#rowsByChannel.get(changed[0] ?? "") ?? []) updates.push(this.#evaluate(row));
-      return updates;
+  #evaluateAll(rows: readonly RunningRow[]): Update[] {
+    const updates = new Array<Update>(rows.length);
+    for (let i = 0; i < rows.length; i++) {
+      const row = rows[i] as RunningRow;
+      const { input } = row.plan;
+      if (input.kind === "channel") row.sample = runRow(row, this.#samples[input.slot] as Sample);
+      else if (input.kind === "formula") row.sample = runRow(row, this.#compute(row, input.formula, input.inputs));
+      updates[i] = { target: row.target, sample: row.sample };
     }
-    const rows = new Set<RunningRow>();
-    for (const channel of changed) for (const row of this.#rowsByChannel.get(channel) ?? []) rows.add(row);
-    // A formula comes behind what it reads: plan order, which a Set of several channels may not keep.
-    const ordered = [...rows].some((row) => row.plan.input.kind === "formula")
-      ? this.#rows.filter((row) => rows.has(row))
-      : rows;
-    for (const row of ordered) updates.push(this.#evaluate(row));
     return updates;
   }
 
-  #evaluate(row: RunningRow): Update {
-    const { input } = row.plan;
-    if (input.kind === "channel") row.sample = runSteps(row, this.#channels.get(input.channel) ?? WAITING);
-    else if (input.kind === "formula") row.sample = runSteps(row, this.#compute(input.formula.evaluate, input.inputs));
-    return { target: row.plan.row.target, sample: row.sample };
-  }
-
   /** Worst status and oldest time of the inputs; null when one of them is Bad or the result is no number. */
-  #compute(evaluate: (inputs: Record<string, number>) => number | boolean, inputs: readonly FormulaInput[]): Sample {
-    const samples = inputs.map(({ channel, target }) =>
-      channel !== undefined
-        ? (this.#channels.get(channel) ?? WAITING)
-        : (this.#rowsByTarget.get(target ?? "")?.sample ?? WAITING),
+  #compute(row: RunningRow, formula: CompiledFormula, inputs: readonly FormulaInput[]): Sample {
+    const samples = inputs.map(({ slot, target }) =>
+      slot === undefined ? (this.#rowsByTarget.get(target ?? "")?.sample ?? WAITING) : (this.#samples[slot] as Sample),
     );
-    const status = worstStatus(samples);
     const time = samples.length === 0 ? 0 : Math.min(...samples.map((s) => s.time));
-    if (isBad(status)) return badSample(status, time);
+    const worst = worstStatus(samples);
+    const isLenient = row.plan.row.quality?.badInput === "Uncertain_SubNormal";
+    if (isBad(worst) && !isLenient) return badSample(worst, time);
     const values: Record<string, number> = {};
     for (const [index, { name }] of inputs.entries()) {
-      const number = toNumber(samples[index]?.value ?? null);
+      const sample = samples[index] as Sample;
+      const number = isBad(sample.status) ? Number.NaN : toNumber(sample.value);
       if (number === undefined) return badSample(StatusCode.Bad_ConfigurationError, time);
       values[name] = number;
     }
-    const value = evaluate(values);
-    return Number.isNaN(value) ? badSample(StatusCode.Bad, time) : { value, status, time };
+    const value = formula.evaluate(values);
+    if (Number.isNaN(value)) return badSample(isBad(worst) ? worst : StatusCode.Bad, time);
+    const status = isLenient && !isGood(worst) ? StatusCode.Uncertain_SubNormal : worst;
+    return { value, status, time };
   }
 }
 
-function runSteps(row: RunningRow, sample: Sample): Sample {
-  let at = sample;
-  for (const step of row.steps) at = step(at);
-  return at;
+function runRow(row: RunningRow, sample: Sample): Sample {
+  const { prepare, finish } = row.plan;
+  const { steps } = row;
+  let at = prepare ? prepare(sample) : sample;
+  for (let i = 0; i < steps.length; i++) at = (steps[i] as TransformStep)(at);
+  return finish ? finish(at) : at;
 }

@@ -12,6 +12,12 @@ export const sourceRoleSchema = z.strictObject({
   vendorId: z.number().int().min(1).max(65_535).optional(),
   deviceId: z.number().int().min(1).max(16_777_215).optional(),
   description: z.string().max(1_000).optional(),
+  productName: z.string().max(2_000).optional(),
+  portClass: z.enum(["A", "B"]).optional(),
+  /** Wanted cycle time in milliseconds. */
+  cycleMs: z.number().positive().max(60_000).optional(),
+  /** The present value of the parameter that decides between several layouts. */
+  condition: z.string().max(200).optional(),
 });
 
 export const registerTypes = ["UInt16", "Int16", "UInt32", "Int32", "UInt64", "Int64", "Float32", "Float64"] as const;
