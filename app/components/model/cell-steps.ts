@@ -9,10 +9,11 @@ import { setText } from "~/domain/editing/commands/set-text";
 import { setRange, setUnit } from "~/domain/editing/commands/set-unit";
 import { setValue } from "~/domain/editing/commands/set-value";
 import { setValueRank } from "~/domain/editing/commands/set-value-rank";
-import { parseRange } from "./analog-facts";
-import type { CellChange } from "./cell-change";
+import { findUnitOf } from "./analog-facts";
+import { getLanguage, isDescription, type CellChange } from "./cell-change";
 import type { EditStep } from "./edit-steps";
 import { findTypes } from "./find-types";
+import { parseRangeIn, toOwnUnit } from "./number-with-unit";
 import { findSpokenUnit } from "./unit-lookup";
 import { formatValueRank, RULE_KEYS, VALUE_RANKS, type RuleName } from "./member-facts";
 import { toRenameStep } from "./rename-steps";
@@ -23,11 +24,13 @@ import { parseValueText } from "./value-text";
 export function toCellStep(change: CellChange): EditStep | undefined {
   const { key, column, text } = change;
   const trimmed = text.trim();
+  if (isDescription(column)) {
+    const locale = getLanguage(column);
+    return (space, context) => setText(space, context, { node: key, attribute: "description", text: trimmed, ...(locale === "" ? {} : { locale }) });
+  }
   switch (column) {
     case "name":
       return toRenameStep(key, trimmed);
-    case "description":
-      return (space, context) => setText(space, context, { node: key, attribute: "description", text: trimmed, ...getFirstLocale(space, key) });
     case "dataType":
       return (space, context) => {
         const dataType = findExactType(space, "DataType", trimmed);
@@ -53,7 +56,7 @@ export function toCellStep(change: CellChange): EditStep | undefined {
     case "range":
       return (space, context) => {
         if (trimmed === "" || trimmed === "–") return setRange(space, context, { variable: key });
-        const range = parseRange(trimmed);
+        const range = parseRangeIn(findUnitOf(space, key), trimmed);
         return range === undefined ? `“${trimmed}” is no range. Write min … max.` : setRange(space, context, { variable: key, range });
       };
     case "rule":
@@ -71,19 +74,14 @@ export function toCellStep(change: CellChange): EditStep | undefined {
       return (space, context) => {
         const node = space.getNode(key);
         if (trimmed === "") return setValue(space, context, { node: key });
-        const value = node && parseValueText(space, node, trimmed);
+        const value = node && parseValueText(space, node, toOwnUnit(findUnitOf(space, key), trimmed));
         return value === undefined ? `“${trimmed}” is no value of ${node?.browseName.name ?? key}.` : setValue(space, context, { node: key, value });
       };
+    case "source":
     case "nodeId":
     case "finding":
       return undefined;
   }
-}
-
-/** The first text keeps its locale. */
-function getFirstLocale(space: AddressSpace, key: NodeKey): { locale?: string } {
-  const locale = space.getNode(key)?.description?.[0]?.locale;
-  return locale === undefined ? {} : { locale };
 }
 
 function findExactType(space: AddressSpace, kind: "DataType" | "ObjectType" | "VariableType", name: string): NodeKey | undefined {

@@ -1,9 +1,9 @@
-/** The unit table for screens. It is large, so it comes by itself after a model was opened; until then it answers nothing. */
-import { useSyncExternalStore } from "react";
+/** The unit table for screens. It is large, so it comes when somebody begins to look for a unit; until then it answers nothing. */
+import { useEffect, useSyncExternalStore } from "react";
 import type * as units from "~/domain/units/units";
 import { toUnitFacts, type UnitFacts } from "./analog-facts";
 
-type UnitModule = Pick<typeof units, "findUnits" | "listUnits" | "toEuInformation"> & { readonly synonyms: ReadonlyMap<string, string> };
+type UnitModule = Pick<typeof units, "findUnits" | "listUnits" | "toEuInformation" | "toUnitCode" | "convert"> & { readonly synonyms: ReadonlyMap<string, string> };
 
 /** A unit of the table, with what else a list shows of it. */
 export type UnitHit = UnitFacts & { readonly code: string; readonly quantity: string };
@@ -27,8 +27,15 @@ function subscribe(listener: () => void): () => void {
   return () => listeners.delete(listener);
 }
 
-/** Whether the table is there; draws again when it came. */
-export function useUnitTable(): boolean {
+export function hasUnits(): boolean {
+  return table !== undefined;
+}
+
+/** Whether the table is there; brings it once it is wanted, and draws again when it came. */
+export function useUnitTable(isWanted = true): boolean {
+  useEffect(() => {
+    if (isWanted) void loadUnits();
+  }, [isWanted]);
   return useSyncExternalStore(subscribe, () => table !== undefined, () => false);
 }
 
@@ -49,4 +56,11 @@ export function findSpokenUnit(text: string): UnitFacts | undefined {
   const folded = spoken.toLowerCase().replace(/[\s.]+/g, "");
   const isExact = hit.symbol === spoken || hit.code === spoken || hit.name.toLowerCase() === spoken.toLowerCase() || table.synonyms.get(folded) === hit.code;
   return isExact ? hit : undefined;
+}
+
+/** The value in another unit of the same quantity; undefined where the units do not fit, or the table has not come. */
+export function convertUnit(value: number, from: UnitFacts, to: UnitFacts): number | undefined {
+  const [a, b] = [table?.toUnitCode(from.unitId), table?.toUnitCode(to.unitId)];
+  const converted = a !== undefined && b !== undefined ? table?.convert(value, a, b) : undefined;
+  return converted?.ok ? converted.value : undefined;
 }

@@ -1,21 +1,31 @@
 import { X } from "lucide-react";
 import { useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
+import { hasValueAttributes } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { getNodeName, RULE_KEYS, type RuleName } from "../model/member-facts";
 import { MoveMenu } from "../model/move-menu";
+import { TypeSearch } from "../model/type-search";
 import { UnitSearch } from "../model/unit-search";
 import { useOpenModel } from "../model/use-model";
 import { Button } from "../ui/button";
 import { Input } from "../ui/field";
 import { Menu } from "../ui/menu";
 
+type Props = {
+  space: AddressSpace;
+  selection: readonly NodeKey[];
+  /** Gives all rows what the first has in the column of the cursor. */
+  fill: { readonly column: string | undefined; readonly run: () => void };
+};
+
 /** What can be done to all selected rows; each press is one edit, undone with one step. */
-export function BulkBar({ space, selection }: { space: AddressSpace; selection: readonly NodeKey[] }) {
+export function BulkBar({ space, selection, fill }: Props) {
   const { actions, view } = useOpenModel();
-  const [open, setOpen] = useState<"unit" | "range" | "move">();
+  const [open, setOpen] = useState<"unit" | "range" | "dataType" | "move">();
   const keys = selection.filter((key) => actions.mayChange(key));
   const variables = keys.filter((key) => space.getNode(key)?.nodeClass === "Variable");
+  const valued = keys.filter((key) => hasValue(space, key));
   const names = selection.slice(0, 4).map((key) => getNodeName(space, key));
   const instances = keys.filter((key) => !space.getNode(key)?.nodeClass.endsWith("Type"));
 
@@ -74,6 +84,25 @@ export function BulkBar({ space, selection }: { space: AddressSpace; selection: 
           EURange
         </Button>
       )}
+      {open === "dataType" ? (
+        <div className="w-56">
+          <TypeSearch
+            label="DataType of the selected rows"
+            space={space}
+            kind="DataType"
+            initial=""
+            onPick={(type) => {
+              actions.setDataType(valued, type);
+              setOpen(undefined);
+            }}
+            onCancel={() => setOpen(undefined)}
+          />
+        </div>
+      ) : (
+        <Button size="small" onClick={() => setOpen("dataType")} {...(valued.length === 0 ? { blockedBy: "no Variable is selected" } : {})}>
+          DataType
+        </Button>
+      )}
       <Menu
         label="Access"
         trigger={<Button size="small" {...(variables.length === 0 ? { blockedBy: "no Variable is selected" } : {})}>Access</Button>}
@@ -87,16 +116,29 @@ export function BulkBar({ space, selection }: { space: AddressSpace; selection: 
       </Button>
       {open === "move" ? <MoveMenu keys={keys} onClose={() => setOpen(undefined)} /> : null}
       <i className="register-rule" />
+      <Button
+        size="small"
+        title="Ctrl D"
+        onClick={fill.run}
+        {...(fill.column === undefined ? { blockedBy: "put the cursor into the column first" } : keys.length === 0 ? { blockedBy: "these nodes belong to required models" } : {})}
+      >
+        Fill {fill.column ?? ""} down
+      </Button>
       <Button size="small" onClick={() => actions.duplicate(keys)} {...(keys.length === 0 ? { blockedBy: "these nodes belong to required models" } : {})}>
         Duplicate
       </Button>
       <Button size="small" tone="danger" onClick={() => actions.remove(keys)} {...(keys.length === 0 ? { blockedBy: "these nodes belong to required models" } : {})}>
         Delete
       </Button>
-      <span className="ml-auto text-ink-2">one edit, undone with one step</span>
+      <span className="ml-auto truncate text-ink-2">one edit, undone with one step</span>
       <Button size="small" tone="bare" icon={X} onClick={() => view.select([])}>
         Clear
       </Button>
     </div>
   );
+}
+
+function hasValue(space: AddressSpace, key: NodeKey): boolean {
+  const node = space.getNode(key);
+  return node !== undefined && hasValueAttributes(node);
 }

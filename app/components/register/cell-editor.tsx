@@ -5,10 +5,12 @@ import { RULE_KEYS, formatValueRank, VALUE_RANKS } from "../model/member-facts";
 import { TypeSearch } from "../model/type-search";
 import { UnitSearch } from "../model/unit-search";
 import { useOpenModel } from "../model/use-model";
-import { COLUMNS, type ColumnId } from "./columns";
+import { findUnitSymbol } from "../model/analog-facts";
+import { isDescription } from "../model/cell-change";
+import type { Column, ColumnId } from "./columns";
 import type { CellEdit, GridControl } from "./use-grid-control";
 
-type Props = { space: AddressSpace; node: Node; column: ColumnId; edit: CellEdit; grid: GridControl };
+type Props = { space: AddressSpace; node: Node; column: Column; edit: CellEdit; grid: GridControl };
 
 const CHOICES: Readonly<Partial<Record<ColumnId, readonly string[]>>> = {
   rule: ["", ...Object.keys(RULE_KEYS)],
@@ -17,9 +19,9 @@ const CHOICES: Readonly<Partial<Record<ColumnId, readonly string[]>>> = {
 };
 
 /** The editor that fits the column, in the place of the cell. Enter takes and goes down, Tab takes and goes on, Esc leaves. */
-export function CellEditor({ space, node, column, edit, grid }: Props) {
+export function CellEditor({ space, node, column: { id: column, title }, edit, grid }: Props) {
   const { actions } = useOpenModel();
-  const label = `${COLUMNS.find((c) => c.id === column)?.title ?? column} of ${node.browseName.name}`;
+  const label = `${title} of ${node.browseName.name}`;
   const take = (text: string): void => actions.changeCells([{ key: node.key, column, text }], `set-${column}`);
 
   if (column === "unit") {
@@ -53,12 +55,16 @@ export function CellEditor({ space, node, column, edit, grid }: Props) {
     );
   }
   const choices = CHOICES[column];
-  return choices ? <ChoiceCell label={label} choices={choices} edit={edit} grid={grid} onTake={take} /> : <TextCell label={label} edit={edit} grid={grid} onTake={take} column={column} />;
+  if (choices) return <ChoiceCell label={label} choices={choices} edit={edit} grid={grid} onTake={take} />;
+  const isFigure = column === "range" || column === "value";
+  const unit = isFigure && node.nodeClass === "Variable" ? findUnitSymbol(space, node.key) : "";
+  return <TextCell label={label} edit={edit} grid={grid} onTake={take} column={column} unit={unit} />;
 }
 
 type CellProps = { label: string; edit: CellEdit; grid: GridControl; onTake: (text: string) => void };
 
-function TextCell({ label, edit, grid, onTake, column }: CellProps & { column: ColumnId }) {
+/** A figure says its unit; one that is typed with another unit of the same quantity is converted. */
+function TextCell({ label, edit, grid, onTake, column, unit }: CellProps & { column: ColumnId; unit: string }) {
   const isDone = useRef(false);
 
   function finish(text: string, move?: "down" | "next" | "previous"): void {
@@ -68,13 +74,13 @@ function TextCell({ label, edit, grid, onTake, column }: CellProps & { column: C
     grid.endEdit(move);
   }
 
-  return (
+  const input = (
     <input
       autoFocus
-      aria-label={label}
+      aria-label={unit === "" ? label : `${label} in ${unit}`}
       defaultValue={edit.text}
       placeholder={column === "range" ? "min … max" : undefined}
-      spellCheck={column === "description"}
+      spellCheck={isDescription(column)}
       autoComplete="off"
       onFocus={(event) => {
         if (!edit.replaces) event.currentTarget.select();
@@ -93,6 +99,13 @@ function TextCell({ label, edit, grid, onTake, column }: CellProps & { column: C
         }
       }}
     />
+  );
+  if (unit === "") return input;
+  return (
+    <span className="register-figure">
+      {input}
+      <i>{unit}</i>
+    </span>
   );
 }
 

@@ -3,10 +3,9 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import { findTypeDefinition, getDisplayName } from "~/domain/address-space/browse";
 import { getAccessLevel, getDataType, getValueRank, hasValueAttributes, isTypeNode, type Node } from "~/domain/address-space/node";
 import { formatNodeId } from "~/domain/address-space/node-id";
-import { findText } from "~/domain/address-space/qualified-name";
 import { findSupertype } from "~/domain/address-space/type-hierarchy";
 import { findRangeOf, findUnitOf, formatRange } from "../model/analog-facts";
-import type { CellColumn } from "../model/cell-change";
+import { getLanguage, isDescription, type CellColumn, type DescriptionColumn } from "../model/cell-change";
 import { findRuleName, formatValueRank, getNodeName } from "../model/member-facts";
 import { formatLocalNodeId } from "../model/namespace-label";
 import { formatValueText } from "../model/value-text";
@@ -23,7 +22,7 @@ export type Column = {
   readonly isMono?: boolean;
 };
 
-export const COLUMNS: readonly Column[] = [
+const BEFORE_TEXTS: readonly Column[] = [
   { id: "name", title: "Member", width: 216, grows: 1 },
   { id: "type", title: "Type", width: 154, grows: 0.3 },
   { id: "dataType", title: "DataType", width: 108, isMono: true },
@@ -33,13 +32,35 @@ export const COLUMNS: readonly Column[] = [
   { id: "rule", title: "Rule", width: 90 },
   { id: "access", title: "Access", width: 56, isMono: true },
   { id: "value", title: "Value", width: 84, isMono: true },
-  { id: "description", title: "Description", width: 160, grows: 1.2 },
+];
+
+const BEHIND_TEXTS: readonly Column[] = [
   { id: "nodeId", title: "NodeId", width: 70, isMono: true },
   { id: "finding", title: "Finding", width: 62 },
 ];
 
+/** Every column there is, with one for each language of the descriptions. */
+export function listColumns(languages: readonly string[]): Column[] {
+  return [...BEFORE_TEXTS, ...languages.map(toTextColumn), ...BEHIND_TEXTS];
+}
+
+function toTextColumn(language: string): Column {
+  const id: DescriptionColumn = `description:${language}`;
+  return { id, title: language === "" ? "Description" : `Description ${language}`, width: 160, grows: 1.2 };
+}
+
+/** The languages in which own nodes are described, the most usual first; "" is a text that names none. */
+export function listLanguages(space: AddressSpace): string[] {
+  const counts = new Map<string, number>();
+  for (const { description } of space.own.nodes.values()) {
+    for (const { locale = "" } of description ?? []) counts.set(locale, (counts.get(locale) ?? 0) + 1);
+  }
+  return counts.size === 0 ? [""] : [...counts].sort((a, b) => b[1] - a[1]).map(([locale]) => locale);
+}
+
 /** The text of a cell; names of types come from their nodes. */
 export function getCellText(space: AddressSpace, node: Node, column: ColumnId): string {
+  if (isDescription(column)) return findLanguage(node, getLanguage(column));
   switch (column) {
     case "name":
       return getDisplayName(node);
@@ -59,13 +80,16 @@ export function getCellText(space: AddressSpace, node: Node, column: ColumnId): 
       return formatAccess(node);
     case "value":
       return formatValueText(space, node);
-    case "description":
-      return findText(node.description ?? []) ?? "";
     case "nodeId":
       return formatLocalNodeId(node.nodeId);
+    case "source":
     case "finding":
       return "";
   }
+}
+
+function findLanguage(node: Node, language: string): string {
+  return node.description?.find(({ locale = "" }) => locale === language)?.text ?? "";
 }
 
 function describeSupertype(space: AddressSpace, node: Node): string {
@@ -84,9 +108,9 @@ export function formatAccess(node: Node): string {
 /** Which cells can be edited for a node of this class. */
 export function isEditable(node: Node, column: ColumnId): boolean {
   const isVariable = node.nodeClass === "Variable";
+  if (isDescription(column)) return true;
   switch (column) {
     case "name":
-    case "description":
       return true;
     case "type":
       return isVariable || node.nodeClass === "Object";
@@ -100,6 +124,7 @@ export function isEditable(node: Node, column: ColumnId): boolean {
       return isVariable;
     case "rule":
       return !isTypeNode(node);
+    case "source":
     case "nodeId":
     case "finding":
       return false;
@@ -114,6 +139,7 @@ export function getEditText(space: AddressSpace, node: Node, column: ColumnId): 
 /** Everything a filter looks into. */
 export function getSearchText(space: AddressSpace, node: Node): string {
   const parts = [node.browseName.name, getDisplayName(node), formatNodeId(node.nodeId)];
-  for (const column of ["type", "dataType", "unit", "description"] as const) parts.push(getCellText(space, node, column));
+  for (const { text } of node.description ?? []) parts.push(text);
+  for (const column of ["type", "dataType", "unit"] as const) parts.push(getCellText(space, node, column));
   return parts.join("\n").toLowerCase();
 }

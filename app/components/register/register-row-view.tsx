@@ -2,6 +2,7 @@ import { ChevronDown, ChevronRight } from "lucide-react";
 import { memo } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { isTypeNode, type Node } from "~/domain/address-space/node";
+import { isDescription } from "../model/cell-change";
 import { getNodeName, isProperty } from "../model/member-facts";
 import { useBadges, useMatesAmong } from "../model/use-model";
 import { FindingBadge } from "../notation/finding-badge";
@@ -30,6 +31,7 @@ type Props = {
 export const RegisterRowView = memo(function RegisterRowView(props: Props) {
   const { space, row, node, index, top, columns, template, isSelected, activeColumn, editing, grid } = props;
   const mates = useMatesAmong([row.key]);
+  const firstText = columns.find((column) => isDescription(column.id))?.id;
   const isOwner = node.nodeClass === "Object" || isTypeNode(node);
   return (
     <div
@@ -55,7 +57,7 @@ export const RegisterRowView = memo(function RegisterRowView(props: Props) {
             onClick={(event) => grid.onCellClick(event, row, column.id)}
             onDoubleClick={() => grid.startEdit({ rowId: row.id, column: column.id })}
           >
-            {isActive && editing ? <CellEditor space={space} node={node} column={column.id} edit={editing} grid={grid} /> : <Cell {...{ space, row, node, column: column.id, grid }} />}
+            {isActive && editing ? <CellEditor space={space} node={node} column={column} edit={editing} grid={grid} /> : <Cell {...{ space, row, node, column: column.id, grid, firstText }} />}
           </div>
         );
       })}
@@ -65,14 +67,16 @@ export const RegisterRowView = memo(function RegisterRowView(props: Props) {
 
 function getTone(column: ColumnId, node: Node): string {
   if (column === "type") return node.nodeClass === "Method" ? "is-words" : "is-type-name";
-  return column === "description" || column === "rank" ? "is-words" : "";
+  return isDescription(column) || column === "rank" ? "is-words" : "";
 }
 
-function Cell({ space, row, node, column, grid }: { space: AddressSpace; row: RegisterRow; node: Node; column: ColumnId; grid: GridControl }) {
+type CellProps = { space: AddressSpace; row: RegisterRow; node: Node; column: ColumnId; grid: GridControl; firstText: ColumnId | undefined };
+
+function Cell({ space, row, node, column, grid, firstText }: CellProps) {
   if (column === "name") return <NameCell space={space} row={row} node={node} grid={grid} />;
   if (column === "finding") return <FindingCell row={row} />;
   const text = getCellText(space, node, column);
-  if (column === "description" && text === "" && row.origin !== undefined) return <span>from {getNodeName(space, row.origin)}</span>;
+  if (column === firstText && text === "" && row.origin !== undefined) return <span>from {getNodeName(space, row.origin)}</span>;
   return text === "" ? null : <span title={text.length > 14 ? text : undefined}>{text}</span>;
 }
 

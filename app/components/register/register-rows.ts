@@ -8,6 +8,7 @@ import type { Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { listRoots } from "../model/list-roots";
 import { listInheritedMembers } from "../model/member-facts";
+import type { RowOrder } from "./row-order";
 
 export type RegisterRow = {
   readonly id: string;
@@ -29,6 +30,8 @@ export type RegisterView = {
   readonly showInherited: boolean;
   /** Only rows that answer this question, with their owners; undefined shows all. */
   readonly matches?: (key: NodeKey) => boolean;
+  /** Order of siblings; undefined leaves that of the model. */
+  readonly order?: RowOrder;
 };
 
 const SEPARATOR = " ";
@@ -53,7 +56,9 @@ function appendRows(
   above: ReadonlySet<NodeKey>,
 ): boolean {
   let hasShown = false;
-  children.forEach(({ key, origin }, index) => {
+  const { order } = view;
+  const ordered = order ? [...children].sort((a, b) => order(a.key, b.key)) : children;
+  ordered.forEach(({ key, origin }, index) => {
     const node = space.getNode(key);
     if (!node) return;
     const id = parentId === undefined ? key : parentId + SEPARATOR + key;

@@ -1,12 +1,9 @@
-import { Columns3, Plus } from "lucide-react";
-import { useEffect, useRef } from "react";
+import { Plus } from "lucide-react";
+import { useEffect, useRef, type ReactNode } from "react";
 import { useFindingTally, useOpenModel } from "../model/use-model";
 import { Button } from "../ui/button";
 import { Input } from "../ui/field";
-import { Menu } from "../ui/menu";
 import { Segments, ToggleSegments } from "../ui/segments";
-import { COLUMNS } from "./columns";
-import type { ColumnChoice } from "./use-register-columns";
 
 export type RegisterFilter = { readonly text: string; readonly withFindings: boolean; readonly showInherited: boolean };
 
@@ -14,7 +11,8 @@ type Props = {
   filter: RegisterFilter;
   onFilter: (filter: RegisterFilter) => void;
   rowCount: number;
-  columns: ColumnChoice;
+  /** The menu of the columns. */
+  columns: ReactNode;
   onAdd: () => void;
   onLeave: () => void;
 };
@@ -48,6 +46,7 @@ export function RegisterTools({ filter, onFilter, rowCount, columns, onAdd, onLe
         className="w-58!"
         aria-label="Filter members"
         placeholder="Filter members  /"
+        title="Words anywhere in a row, or in one column: “unit: mm”. “Unit:” alone asks for what is not filled in."
         value={filter.text}
         onChange={(event) => onFilter({ ...filter, text: event.currentTarget.value })}
         onKeyDown={(event) => {
@@ -83,21 +82,7 @@ export function RegisterTools({ filter, onFilter, rowCount, columns, onAdd, onLe
       <span className="ml-auto text-note text-ink-3" aria-live="polite">
         <span className="font-mono">{rowCount}</span> rows
       </span>
-      <Menu
-        label="Columns"
-        align="end"
-        trigger={
-          <Button size="small" tone="bare" icon={Columns3}>
-            Columns <span className="font-mono">{COLUMNS.length - columns.hidden.size}</span> of <span className="font-mono">{COLUMNS.length}</span>
-          </Button>
-        }
-        entries={COLUMNS.filter((column) => column.id !== "name").map((column) => ({
-          kind: "choice" as const,
-          label: column.title,
-          checked: !columns.hidden.has(column.id),
-          onSelect: () => columns.toggle(column.id),
-        }))}
-      />
+      {columns}
       {actions.canEdit ? (
         <Button size="small" icon={Plus} onClick={onAdd}>
           Member

@@ -8,11 +8,14 @@ import { useFindingTally, useOpenModel, useSelection, useSpace } from "../model/
 import { Empty } from "../ui/empty";
 import { Button } from "../ui/button";
 import { BulkBar } from "./bulk-bar";
-import { getSearchText } from "./columns";
+import type { ColumnId } from "./columns";
+import { ColumnMenu } from "./column-menu";
 import { NewMemberRow } from "./new-member-row";
 import { RegisterHead } from "./register-head";
 import { RegisterRowView } from "./register-row-view";
 import { buildRows } from "./register-rows";
+import { parseFilter } from "./row-filter";
+import { makeRowOrder, type SortRule } from "./row-order";
 import { RegisterTools, type RegisterFilter } from "./register-tools";
 import { useGridControl } from "./use-grid-control";
 import { useRegisterColumns } from "./use-register-columns";
@@ -32,20 +35,28 @@ export function Register() {
   const [filter, setFilter] = useState(NO_FILTER);
   const [toggled, setToggled] = useState<ReadonlySet<string>>(new Set());
   const [adding, setAdding] = useState<AddRequest>();
-  const { columns, template, width, choice } = useRegisterColumns();
+  const [sort, setSort] = useState<SortRule>();
+  const { columns, template, width, choice } = useRegisterColumns(space);
+  const newest = useRef(space);
+  newest.current = space;
+
+  const order = useMemo(
+    () => sort && makeRowOrder(() => newest.current, sort, (key) => findings.getState().byNode.get(key)?.length ?? 0),
+    [sort, findings],
+  );
 
   const rows = useMemo(() => {
-    const text = filter.text.trim().toLowerCase();
+    const question = parseFilter(filter.text, choice.all);
     const { byNode } = findings.getState();
-    const isFiltering = text !== "" || filter.withFindings;
+    const isFiltering = question !== undefined || filter.withFindings;
     const matches = (key: NodeKey): boolean => {
       const node = space.getNode(key);
       if (!node || (filter.withFindings && !byNode.has(key))) return false;
-      return text === "" || getSearchText(space, node).includes(text);
+      return question === undefined || question(space, node);
     };
-    return buildRows(space, { toggled, showInherited: filter.showInherited, ...(isFiltering ? { matches } : {}) });
-    // The tally changes whenever the checker answered anew.
-  }, [space, toggled, filter, findings, tally]);
+    return buildRows(space, { toggled, showInherited: filter.showInherited, ...(isFiltering ? { matches } : {}), ...(order ? { order } : {}) });
+    // Findings are asked only by their filter; the tally changes whenever the checker answered anew.
+  }, [space, toggled, filter, order, choice.all, findings, filter.withFindings ? tally : undefined]);
 
   const toggle = useCallback((id: string) => {
     setToggled((old) => {
@@ -74,7 +85,7 @@ export function Register() {
         filter={filter}
         onFilter={setFilter}
         rowCount={rows.length}
-        columns={choice}
+        columns={<ColumnMenu choice={choice} sort={sort} onSort={setSort} />}
         onAdd={() => setAdding(makeAddRequest("Variable", owner === undefined ? {} : { parent: owner }))}
         onLeave={() => scroller.current?.focus()}
       />
@@ -94,7 +105,7 @@ export function Register() {
         onCopy={grid.onCopy}
         onPaste={grid.onPaste}
       >
-        <RegisterHead columns={columns} template={template} width={width} />
+        <RegisterHead columns={columns} template={template} width={width} sort={sort} onSort={(column) => setSort((old) => nextSort(old, column))} onWidth={choice.setWidth} />
         <div className="register-body" role="rowgroup" style={{ height: virtual.getTotalSize(), minWidth: width }}>
           {virtual.getVirtualItems().map((item) => {
             const row = rows[item.index];
@@ -121,10 +132,16 @@ export function Register() {
         {rows.length === 0 ? <NoRows isFiltering={filter.text !== "" || filter.withFindings} onAdd={() => setAdding(makeAddRequest("ObjectType"))} /> : null}
       </div>
       {actions.canEdit && owner !== undefined ? <NewMemberRow space={space} owner={owner} /> : null}
-      {selection.length > 1 ? <BulkBar space={space} selection={selection} /> : null}
+      {selection.length > 1 ? <BulkBar space={space} selection={selection} fill={{ column: columns.find((column) => column.id === grid.cell?.column)?.title, run: grid.fillDown }} /> : null}
       {adding ? <AddNodePanel key={adding.id} request={adding} onClose={() => setAdding(undefined)} /> : null}
     </section>
   );
+}
+
+/** A press on a head sorts upwards, the next one downwards, the third leaves the order of the model. */
+function nextSort(old: SortRule | undefined, column: ColumnId): SortRule | undefined {
+  if (old?.column !== column) return { column, isDescending: false };
+  return old.isDescending ? undefined : { column, isDescending: true };
 }
 
 function NoRows({ isFiltering, onAdd }: { isFiltering: boolean; onAdd: () => void }) {

@@ -23,6 +23,8 @@ export type GridControl = {
   readonly endEdit: (move?: Move) => void;
   readonly onCellClick: (event: MouseEvent, row: RegisterRow, column: ColumnId) => void;
   readonly onKeyDown: (event: KeyboardEvent) => void;
+  /** Gives the selected rows what the first of them has in the column of the cursor. */
+  readonly fillDown: () => void;
   readonly onCopy: (event: ClipboardEvent) => void;
   readonly onPaste: (event: ClipboardEvent) => void;
 };
@@ -255,6 +257,7 @@ export function useGridControl(inputs: Inputs): GridControl {
       endEdit,
       onCellClick,
       onKeyDown,
+      fillDown,
       onCopy,
       onPaste,
     };

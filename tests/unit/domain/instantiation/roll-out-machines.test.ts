@@ -42,6 +42,7 @@ describe("rollOutMachines", () => {
         optional: ["Process/Counter"],
         manufacturer: "Quillon",
         rows,
+        nodeIds: { kind: "numbers" },
       }),
     );
     const machines = listMachines(getValue(applyOperations(space, edit.operations)));
@@ -59,7 +60,7 @@ describe("rollOutMachines", () => {
   it("leaves the type as it was", () => {
     const { space, type, ids } = build();
     const edit = getValue(
-      rollOutMachines(space, ids, { type, parent: MACHINES, optional: [], manufacturer: "", rows }),
+      rollOutMachines(space, ids, { type, parent: MACHINES, optional: [], manufacturer: "", rows, nodeIds: { kind: "numbers" } }),
     );
     const after = getValue(applyOperations(space, edit.operations));
     expect(after.edgesFrom(type)).toEqual(space.edgesFrom(type));
@@ -69,8 +70,50 @@ describe("rollOutMachines", () => {
   it("makes nothing when one name is taken", () => {
     const { space, type, ids } = build();
     const twice = rows.map((row) => ({ ...row, name: "P1" }));
-    const edit = rollOutMachines(space, ids, { type, parent: MACHINES, optional: [], manufacturer: "", rows: twice });
+    const intent = { type, parent: MACHINES, optional: [], manufacturer: "", rows: twice, nodeIds: { kind: "numbers" } } as const;
+    const edit = rollOutMachines(space, ids, intent);
     expect(!edit.ok && edit.problems.map((p) => p.code)).toEqual(["name.taken"]);
+  });
+});
+
+describe("what differs from machine to machine", () => {
+  it("gives a machine its own choice of optional members", () => {
+    const { space, type, ids } = build();
+    const [first, second] = rows as [RollOutRow, RollOutRow];
+    const edit = getValue(
+      rollOutMachines(space, ids, {
+        type,
+        parent: MACHINES,
+        optional: ["Process/Counter"],
+        manufacturer: "",
+        rows: [first, { ...second, optional: [] }],
+        nodeIds: { kind: "numbers" },
+      }),
+    );
+    const machines = listMachines(getValue(applyOperations(space, edit.operations)));
+    expect(machines.map(({ groups }) => groups[0]?.members.map((member) => member.isPresent))).toEqual([
+      [true, true],
+      [true, false],
+    ]);
+  });
+
+  it("makes NodeIds of a pattern for the machine, and of the path below it", () => {
+    const { space, type, ids } = build();
+    const intent = { type, parent: MACHINES, optional: [], manufacturer: "", rows, nodeIds: { kind: "path", pattern: "Hall.{name}", separator: "." } } as const;
+    const after = getValue(applyOperations(space, getValue(rollOutMachines(space, ids, intent)).operations));
+    const given = after.listOwnNodes().flatMap(({ nodeId }) => (nodeId.type === "s" ? [nodeId.identifier] : []));
+    expect(given).toEqual(expect.arrayContaining(["Hall.P1", "Hall.P1.Process", "Hall.P1.Process.Speed", "Hall.P2.Identification.SerialNumber"]));
+    // OPC 10000-3 §8.2.4: string identifiers are unique within their namespace.
+    expect(new Set(given).size).toBe(given.length);
+  });
+
+  it("refuses a pattern that says the same of all machines, and an id that is there", () => {
+    const { space, type, ids } = build();
+    const plan = (pattern: string, some: readonly RollOutRow[]) =>
+      rollOutMachines(space, ids, { type, parent: MACHINES, optional: [], manufacturer: "", rows: some, nodeIds: { kind: "path", pattern, separator: "." } });
+    const [same, twice] = [plan("Press", rows), plan("{serial}", rows.map((row) => ({ ...row, serialNumber: "A-1" })))];
+    expect(!same.ok && same.problems.map((found) => found.code)).toEqual(["roll-out.pattern"]);
+    expect(!twice.ok && twice.problems.map((found) => found.code)).toEqual(["roll-out.node-id-taken"]);
   });
 });
 
