@@ -11,6 +11,8 @@ export const testServerProblemTexts: Readonly<Record<string, string>> = {
   "test-server.not-running": "This test server is not running.",
   "endpoint.namespace-unknown": "The server has no namespace {namespaceUri}.",
   "endpoint.unreachable": "{endpointUrl} does not answer: {detail}",
+  "endpoint.walk-cut": "The walk over the server ended after {count} nodes; there may be more.",
+  "endpoint.value-unreadable": "{count} values could not be taken over, since the definition of their structure is not known.",
   "endpoint.node-unknown": "The server has no node {node}.",
   "endpoint.not-writable": "The server does not let this value be written.",
   "endpoint.array": "Arrays are not written from here.",

@@ -28,6 +28,7 @@ export class EndpointClient {
   #retry: NodeJS.Timeout | undefined;
   #idle: NodeJS.Timeout | undefined;
   #isDisposed = false;
+  #holds = 0;
   readonly #watches: WatchList;
   readonly #listeners = new Set<(state: ConnectionState) => void>();
   readonly #onDispose: () => void;
@@ -68,6 +69,19 @@ export class EndpointClient {
     };
   }
 
+  /** Keeps the session open for work longer than the idle limit, until the answered function is called. */
+  hold(): () => void {
+    this.#holds++;
+    this.#touch();
+    let isHeld = true;
+    return () => {
+      if (!isHeld) return;
+      isHeld = false;
+      this.#holds--;
+      this.#touch();
+    };
+  }
+
   async dispose(): Promise<void> {
     if (this.#isDisposed) return;
     this.#isDisposed = true;
@@ -80,12 +94,12 @@ export class EndpointClient {
     await connection?.then(closeConnection, () => undefined);
   }
 
-  /** Puts the idle clock back; a client with watches never idles. */
+  /** Puts the idle clock back; a client that is watched or held never idles. */
   #touch(): void {
     clearTimeout(this.#idle);
     if (this.#isDisposed) return;
     this.#idle = setTimeout(() => {
-      if (this.#watches.size === 0) void this.dispose();
+      if (this.#watches.size === 0 && this.#holds === 0) void this.dispose();
     }, IDLE_LIMIT);
     this.#idle.unref();
   }

@@ -1,0 +1,63 @@
+/** Counts what one Variable does while it is watched; the caller tells the time, so that a test needs no clock. */
+import type { Observation } from "./as-built";
+
+export type StatusSeverity = "good" | "uncertain" | "bad";
+
+const RANK: Readonly<Record<StatusSeverity, number>> = { good: 0, uncertain: 1, bad: 2 };
+
+/** The severity bits of a StatusCode (OPC 10000-4 §7.38.1, Table 173). */
+export function getSeverity(code: number): StatusSeverity {
+  const bits = code >>> 30;
+  return bits === 0 ? "good" : bits === 1 ? "uncertain" : "bad";
+}
+
+export class ObservationTally {
+  readonly #nodeId: string;
+  readonly #path: string;
+  readonly #start: number;
+  #samples = 0;
+  #worst: { severity: StatusSeverity; name: string } = { severity: "good", name: "Good" };
+  #severity: StatusSeverity | undefined;
+  #since: number;
+  #badFor = 0;
+  #uncertainFor = 0;
+
+  constructor(nodeId: string, path: string, start: number) {
+    this.#nodeId = nodeId;
+    this.#path = path;
+    this.#start = start;
+    this.#since = start;
+  }
+
+  /** One sample as it arrives, milliseconds. */
+  offer(time: number, code: number, name: string): void {
+    const severity = getSeverity(code);
+    this.#samples++;
+    if (RANK[severity] > RANK[this.#worst.severity]) this.#worst = { severity, name };
+    if (severity === this.#severity) return;
+    this.#close(time);
+    this.#severity = severity;
+    this.#since = time;
+  }
+
+  end(time: number, promisedPeriod?: number): Observation {
+    this.#close(time);
+    return {
+      nodeId: this.#nodeId,
+      path: this.#path,
+      watchedFor: time - this.#start,
+      samples: this.#samples,
+      badFor: this.#badFor,
+      uncertainFor: this.#uncertainFor,
+      worstStatus: this.#worst.name,
+      ...(promisedPeriod === undefined ? {} : { promisedPeriod }),
+    };
+  }
+
+  #close(time: number): void {
+    const lasted = time - this.#since;
+    if (this.#severity === "bad") this.#badFor = Math.max(this.#badFor, lasted);
+    if (this.#severity === "uncertain") this.#uncertainFor = Math.max(this.#uncertainFor, lasted);
+    this.#since = time;
+  }
+}
