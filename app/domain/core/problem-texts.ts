@@ -11,6 +11,7 @@ import { editingProblemTexts } from "../editing/problem-texts";
 import { ioddProblemTexts } from "../iodd/problem-texts";
 import { mappingProblemTexts } from "../mapping/problem-texts";
 import { sourceProblemTexts } from "../mapping/source-problem-texts";
+import { releaseProblemTexts } from "../release/problem-texts";
 import { testServerProblemTexts } from "../simulation/problem-texts";
 import { requestProblemTexts } from "./request-problem-texts";
 import { nodesetProblemTexts } from "../nodeset/problem-texts";
@@ -26,6 +27,7 @@ const texts: Readonly<Record<string, string>> = {
   ...ioddProblemTexts,
   ...mappingProblemTexts,
   ...sourceProblemTexts,
+  ...releaseProblemTexts,
   ...requestProblemTexts,
   ...testServerProblemTexts,
 };
