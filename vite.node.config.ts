@@ -9,6 +9,7 @@ const entries: Record<string, string> = {
   "test-server": "app/opcua/test-server/main.ts",
   "read-worker": "app/library/read-worker.ts",
   bench: "tests/bench/main.ts",
+  "bench-browser": "tests/bench/browser/main.ts",
 };
 
 export default defineConfig({

@@ -29,6 +29,7 @@ export default [
     route("lease", "routes/data/model-lease.ts"),
     route("presence", "routes/data/model-presence.ts"),
     route("nodeset", "routes/data/model-nodeset.ts"),
+    route("findings.json", "routes/data/model-findings.ts"),
     route("waivers", "routes/data/model-waivers.ts"),
     route("waivers/:waiverId", "routes/data/model-waiver.ts"),
     route("sheets", "routes/data/model-sheets.ts"),

@@ -24,7 +24,7 @@ const bundles = {
     stamp: join(root, "build", "server", ".made-of"),
   },
   node: {
-    sources: ["app", "tests/bench", "vite.node.config.ts", ...shared],
+    sources: ["app", "tests/bench", "tests/support", "vite.node.config.ts", ...shared],
     command: ["vite", "build", "-c", "vite.node.config.ts"],
     stamp: join(root, "build", "node", ".made-of"),
   },
@@ -36,6 +36,7 @@ const targets = {
   demo: { needs: ["web", "node"], runs: "server.js", args: ["--demo"] },
   ferrule: { needs: ["node"], runs: "cli.js" },
   bench: { needs: ["node"], runs: "bench.js" },
+  "bench:browser": { needs: ["web", "node"], runs: "bench-browser.js" },
 };
 
 function stopWith(message) {

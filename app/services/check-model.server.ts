@@ -44,10 +44,10 @@ export async function checkModel(modelId: string): Promise<ModelFindings | undef
 }
 
 /** All findings of the state that was checked last, accepted ones too; for who decides on them. */
-export async function listAllFindings(modelId: string): Promise<{ space: AddressSpace; findings: readonly Finding[] } | undefined> {
+export async function listAllFindings(modelId: string): Promise<{ seq: number; space: AddressSpace; findings: readonly Finding[] } | undefined> {
   const checked = await checkModel(modelId);
   const run = await getRuns().get(modelId);
-  return checked && run && { space: run.space, findings: run.findings };
+  return checked && run && { seq: checked.seq, space: run.space, findings: run.findings };
 }
 
 /** An edit touches little; other required models are a new check. */

@@ -2,7 +2,7 @@
 import { measureEditing } from "./editing";
 import { measureLibrary, readLibraryInChild } from "./library";
 import { measureReading, readAndParseInChild, readInChild, readPacksInChild, readReferenceInChild } from "./reading";
-import type { BenchResult } from "./result";
+import { formatResult, type BenchResult } from "./result";
 import { measureTestServerStart, runBareServer } from "./test-server-start";
 
 const measures: readonly (() => Promise<BenchResult[]>)[] = [
@@ -20,13 +20,6 @@ async function runAll(asJson: boolean): Promise<void> {
     if (!asJson) for (const result of found) console.log(formatResult(result));
   }
   if (asJson) console.log(JSON.stringify({ results }));
-}
-
-function formatResult({ name, value, unit, reference, ratio, target, met }: BenchResult): string {
-  const figure = `${name}: ${value} ${unit}`;
-  if (reference === null || ratio === null) return figure;
-  const wanted = target === null ? "" : ` (asked for: at most ${target} ×, ${met ? "met" : "not met"})`;
-  return `${figure}, reference ${reference} ${unit}, ${ratio} ×${wanted}`;
 }
 
 async function runAsChild(name: string, args: readonly string[]): Promise<void> {

@@ -7,8 +7,10 @@ export type BenchResult = {
   readonly reference: number | null;
   /** value ÷ reference. */
   readonly ratio: number | null;
-  /** Highest ratio that is asked for; null for a figure that is only recorded. */
+  /** Highest ratio that is asked for; null where none is. */
   readonly target: number | null;
+  /** Highest value that is asked for; null where none is. */
+  readonly limit: number | null;
   readonly met: boolean | null;
 };
 
@@ -22,13 +24,30 @@ export function compare(name: string, unit: string, value: number, reference: nu
     reference: round(reference),
     ratio: round(ratio),
     target,
+    limit: null,
     met: ratio <= target,
   };
 }
 
 /** A figure that is only recorded. */
 export function record(name: string, unit: string, value: number): BenchResult {
-  return { name, value: round(value), unit, reference: null, ratio: null, target: null, met: null };
+  return { name, value: round(value), unit, reference: null, ratio: null, target: null, limit: null, met: null };
+}
+
+/** A figure that may not exceed `highest`. */
+export function limit(name: string, unit: string, value: number, highest: number): BenchResult {
+  return { ...record(name, unit, value), limit: highest, met: value <= highest };
+}
+
+/** One line for a person. */
+export function formatResult(result: BenchResult): string {
+  const { name, value, unit, reference, ratio, target, met } = result;
+  const verdict = met ? "met" : "not met";
+  const figure = `${name}: ${value} ${unit}`;
+  if (result.limit !== null) return `${figure} (asked for: at most ${result.limit} ${unit}, ${verdict})`;
+  if (reference === null || ratio === null) return figure;
+  const wanted = target === null ? "" : ` (asked for: at most ${target} ×, ${verdict})`;
+  return `${figure}, reference ${reference} ${unit}, ${ratio} ×${wanted}`;
 }
 
 export function median(values: readonly number[]): number {

@@ -29,6 +29,7 @@ import { listArguments, type ArgumentFacts, type Direction } from "./method-argu
 import { getNodeName } from "./member-facts";
 import { toRenameStep } from "./rename-steps";
 import { setTypeDefinition } from "./set-type-definition";
+import { hasUnits, loadUnits } from "./unit-lookup";
 import type { ViewStore } from "./view-store";
 
 export class ModelActions {
@@ -186,6 +187,10 @@ export class ModelActions {
 
   /** Cells of own nodes; those of required models and columns that are read are left out. */
   changeCells(changes: readonly CellChange[], label: string): void {
+    if (!hasUnits() && changes.some((change) => change.column === "unit")) {
+      void loadUnits().then(() => this.changeCells(changes, label));
+      return;
+    }
     const steps = changes.flatMap((change) => (this.mayChange(change.key) ? (toCellStep(change) ?? []) : []));
     this.#run(label, steps);
   }

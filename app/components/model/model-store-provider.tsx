@@ -5,6 +5,7 @@ import { Notice } from "../ui/notice";
 import { loadSpace } from "./load-space";
 import { ModelKeys } from "./model-keys";
 import { makeWaitingModel, openModel } from "./open-model";
+import { prepareUnsaved } from "./unsaved-edits";
 import { OpenModelContext, type OpenModel } from "./use-model";
 
 /** Opens a model for the pages inside. The packs come after the first paint; until then the pages draw an empty model. */
@@ -18,10 +19,10 @@ export function ModelStoreProvider({ workspace, children }: { workspace: ModelWo
     const controller = new AbortController();
     let close: (() => void) | undefined;
     setFailure(undefined);
-    loadSpace(workspace, controller.signal)
-      .then((loaded) => {
+    Promise.all([loadSpace(workspace, controller.signal), prepareUnsaved(workspace.model.id)])
+      .then(([loaded, takeUnsaved]) => {
         if (controller.signal.aborted) return;
-        const opening = openModel(workspace, loaded, waiting.view);
+        const opening = openModel(workspace, { ...loaded, takeUnsaved }, waiting.view);
         close = opening.close;
         setOpened(opening.model);
       })

@@ -1,34 +1,16 @@
 /** The requests of the open model: transactions, leases of NodeIds, presence. What comes in is checked before it is used. */
-import { z } from "zod";
-import type { Problem } from "~/domain/core/result";
-import { operationsSchema } from "~/domain/editing/operation-schema";
+import { isBlock, isEmptyPage, isPosted, isRefused, parseWith } from "./read-answers";
 import type { Transaction } from "~/domain/editing/operation";
 import type { OutgoingTransaction, PostOutcome, SyncTransport } from "~/editor/sync-transport";
 
-const transactionSchema = z.object({
-  seq: z.int(),
-  base: z.int(),
-  clientId: z.string(),
-  clientSeq: z.int(),
-  author: z.string(),
-  at: z.string(),
-  label: z.string(),
-  operations: operationsSchema,
-  inverse: z.array(z.unknown()),
-});
-
-const acceptedSchema = z.array(z.object({ clientSeq: z.int(), seq: z.int(), at: z.string() }));
-const postedSchema = z.object({ head: z.int(), accepted: acceptedSchema });
-const staleSchema = z.object({ head: z.int(), between: z.array(transactionSchema) });
-const refusedSchema = z.object({ problems: z.array(z.looseObject({ code: z.string() })) });
-const pageSchema = z.object({ head: z.int(), transactions: z.array(transactionSchema) });
-const blockSchema = z.object({ from: z.int(), to: z.int() });
-
 const TIMEOUT = 20_000;
 
-export function parseTransaction(data: unknown): Transaction | undefined {
-  const parsed = transactionSchema.safeParse(data);
-  return parsed.success ? (parsed.data as unknown as Transaction) : undefined;
+/** Schemas of what others did are large; they come with the first such edit. */
+const loadTransactionSchemas = () => import("./transaction-schemas");
+
+export async function parseTransaction(data: unknown): Promise<Transaction | undefined> {
+  const { transactionSchema } = await loadTransactionSchemas();
+  return parseWith(transactionSchema, data) as unknown as Transaction | undefined;
 }
 
 export class ModelTransport implements SyncTransport {
@@ -44,9 +26,13 @@ export class ModelTransport implements SyncTransport {
     const answer = await this.#send("transactions", { clientId: this.clientId, base, transactions });
     if (!answer) return { kind: "unreachable" };
     const body: unknown = await answer.json().catch(() => undefined);
-    if (answer.status === 200) return read(postedSchema, body, (value) => ({ kind: "accepted", ...value }));
-    if (answer.status === 409) return read(staleSchema, body, (value) => ({ kind: "stale", ...value, between: value.between as unknown as Transaction[] }));
-    if (answer.status === 422 || answer.status === 400) return read(refusedSchema, body, (value) => ({ kind: "refused", ...value, problems: value.problems as unknown as Problem[] }));
+    if (answer.status === 200) return isPosted(body) ? { kind: "accepted", ...body } : { kind: "unreachable" };
+    if (answer.status === 409) {
+      const { staleSchema } = await loadTransactionSchemas();
+      const stale = parseWith(staleSchema, body);
+      return stale ? { kind: "stale", ...stale, between: stale.between as unknown as Transaction[] } : { kind: "unreachable" };
+    }
+    if (answer.status === 422 || answer.status === 400) return isRefused(body) ? { kind: "refused", ...body } : { kind: "unreachable" };
     if (answer.status === 401 || answer.status === 403 || answer.status === 404) return { kind: "forbidden", status: answer.status };
     return { kind: "unreachable" };
   }
@@ -57,12 +43,15 @@ export class ModelTransport implements SyncTransport {
     for (let since = seq; ; ) {
       const answer = await fetch(`${this.#base}/transactions?since=${since}`, { signal: AbortSignal.timeout(TIMEOUT) }).catch(() => undefined);
       if (!answer?.ok) return undefined;
-      const page = pageSchema.safeParse(await answer.json().catch(() => undefined));
-      if (!page.success) return undefined;
-      const transactions = page.data.transactions as unknown as Transaction[];
+      const body: unknown = await answer.json().catch(() => undefined);
+      if (isEmptyPage(body)) return found;
+      const { pageSchema } = await loadTransactionSchemas();
+      const page = parseWith(pageSchema, body);
+      if (!page) return undefined;
+      const transactions = page.transactions as unknown as Transaction[];
       found.push(...transactions);
-      const last = transactions.at(-1)?.seq ?? page.data.head;
-      if (transactions.length === 0 || last >= page.data.head) return found;
+      const last = transactions.at(-1)?.seq ?? page.head;
+      if (transactions.length === 0 || last >= page.head) return found;
       since = last;
     }
   }
@@ -71,8 +60,8 @@ export class ModelTransport implements SyncTransport {
   async lease(): Promise<{ readonly from: number; readonly to: number } | undefined> {
     const answer = await this.#send("lease", { clientId: this.clientId });
     if (!answer?.ok) return undefined;
-    const block = blockSchema.safeParse(await answer.json().catch(() => undefined));
-    return block.success ? block.data : undefined;
+    const block: unknown = await answer.json().catch(() => undefined);
+    return isBlock(block) ? block : undefined;
   }
 
   async tellPresence(place: string, selection: readonly string[]): Promise<void> {
@@ -87,9 +76,4 @@ export class ModelTransport implements SyncTransport {
       signal: AbortSignal.timeout(TIMEOUT),
     }).catch(() => undefined);
   }
-}
-
-function read<T>(schema: z.ZodType<T>, body: unknown, make: (value: T) => PostOutcome): PostOutcome {
-  const parsed = schema.safeParse(body);
-  return parsed.success ? make(parsed.data) : { kind: "unreachable" };
 }

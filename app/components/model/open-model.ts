@@ -1,6 +1,5 @@
 /** Puts an open model together from its parts, and takes it apart again. Browser only. */
 import type { AddressSpace } from "~/domain/address-space/address-space";
-import type { Transaction } from "~/domain/editing/operation";
 import { EditorStore } from "~/editor/editor-store";
 import type { ModelWorkspace } from "~/presenters/model-workspace.server";
 import { onConnectionChange, subscribeToTopic } from "../shell/event-stream";
@@ -14,8 +13,7 @@ import { PresenceStore } from "./presence-store";
 import { followFindings } from "./run-checks";
 import { followWaivers } from "./follow-waivers";
 import { listRoots } from "./list-roots";
-import { loadUnits } from "./unit-lookup";
-import { keepUnsaved, takeUnsaved } from "./unsaved-edits";
+import { keepUnsaved, type KeptEdits } from "./unsaved-edits";
 import type { OpenModel } from "./use-model";
 import { ViewStore } from "./view-store";
 
@@ -30,14 +28,19 @@ export function makeWaitingModel(workspace: ModelWorkspace): OpenModel {
 }
 
 /** The model with its way to the server; the second function ends everything. */
-export function openModel(workspace: ModelWorkspace, loaded: { space: AddressSpace; seq: number }, view: ViewStore): { model: OpenModel; close: () => void } {
+export function openModel(
+  workspace: ModelWorkspace,
+  loaded: { space: AddressSpace; seq: number; takeUnsaved: () => KeptEdits | undefined },
+  view: ViewStore,
+): { model: OpenModel; close: () => void } {
   const { id } = workspace.model;
   const canEdit = workspace.permissions.includes("model.edit");
-  const unsaved = canEdit ? takeUnsaved(id) : undefined;
+  const unsaved = canEdit ? loaded.takeUnsaved() : undefined;
   const clientId = unsaved?.clientId ?? crypto.randomUUID();
   const transport = new ModelTransport(id, clientId);
   const editor: EditorStore = new EditorStore({
-    ...loaded,
+    space: loaded.space,
+    seq: loaded.seq,
     clientId,
     canEdit,
     transport,
@@ -54,14 +57,13 @@ export function openModel(workspace: ModelWorkspace, loaded: { space: AddressSpa
       }
     },
   });
-  void loadUnits();
   const findings = new FindingStore();
   const presence = new PresenceStore();
   const actions = new ModelActions(editor, view, canEdit);
   selectFirst(loaded.space, view);
   const model: OpenModel = { workspace, editor, view, findings, presence, actions, isReady: true };
   const ends = [
-    followFindings(editor, findings),
+    followFindings(id, editor, findings),
     followWaivers(id, findings),
     followTransactions(id, editor),
     presence.follow(id, transport, view),
@@ -81,14 +83,17 @@ function selectFirst(space: AddressSpace, view: ViewStore): void {
 /** Edits of others come by the stream; after it was away the store asks for what it missed. */
 function followTransactions(modelId: string, editor: EditorStore): () => void {
   let isOnOldTypes = false;
-  const endTopic = subscribeToTopic(`model:${modelId}`, (data) => {
-    const transaction: Transaction | undefined = parseTransaction(data);
+  const hear = async (data: unknown): Promise<void> => {
+    const transaction = await parseTransaction(data);
     if (transaction && !isOnOldTypes) editor.receive(transaction);
-    else if (typeof data === "object" && data !== null && "pinned" in data) {
+  };
+  const endTopic = subscribeToTopic(`model:${modelId}`, (data) => {
+    if (typeof data === "object" && data !== null && "pinned" in data) {
       // What follows is meant for another revision of the types; the window that took it loads anew by itself.
       isOnOldTypes = true;
       if (!("by" in data && data.by === editor.clientId)) window.location.reload();
     } else if (typeof data === "object" && data !== null && "deleted" in data) showToast({ tone: "error", title: "This model was deleted." });
+    else void hear(data);
   });
   const endWatch = onConnectionChange((state) => {
     if (state === "open") void editor.catchUp();

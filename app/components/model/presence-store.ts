@@ -1,21 +1,17 @@
 /** Who else has this model open, where they are and what they have selected. */
-import { z } from "zod";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { subscribeToTopic } from "../shell/event-stream";
 import type { ModelTransport } from "./model-transport";
 import type { ViewStore } from "./view-store";
 
-const personSchema = z.object({
-  userId: z.string(),
-  name: z.string(),
-  initials: z.string(),
-  clientId: z.string(),
-  place: z.string(),
-  selection: z.array(z.string()).default([]),
-});
-const presenceSchema = z.object({ people: z.array(personSchema) });
-
-export type PresentPerson = Omit<z.infer<typeof personSchema>, "selection"> & { readonly selection: readonly NodeKey[] };
+export type PresentPerson = {
+  readonly userId: string;
+  readonly name: string;
+  readonly initials: string;
+  readonly clientId: string;
+  readonly place: string;
+  readonly selection: readonly NodeKey[];
+};
 
 const NOBODY: readonly PresentPerson[] = [];
 const TELL_EVERY = 20_000;
@@ -70,10 +66,21 @@ export class PresenceStore {
   }
 
   #hear(data: unknown, ownClientId: string): void {
-    const parsed = presenceSchema.safeParse(data);
-    if (!parsed.success) return;
-    const people = parsed.data.people.filter((person) => person.clientId !== ownClientId);
-    this.#people = people.length === 0 ? NOBODY : (people as unknown as PresentPerson[]);
+    const people = readPeople(data).filter((person) => person.clientId !== ownClientId);
+    this.#people = people.length === 0 ? NOBODY : people;
     for (const listener of [...this.#listeners]) listener();
   }
+}
+
+/** What is not whole is left out: presence is a courtesy. */
+function readPeople(data: unknown): PresentPerson[] {
+  const { people } = (data ?? {}) as { people?: unknown };
+  if (!Array.isArray(people)) return [];
+  return people.flatMap((entry: unknown) => {
+    const person = (entry ?? {}) as Partial<PresentPerson>;
+    const { userId, name, initials, clientId, place, selection } = person;
+    const texts = [userId, name, initials, clientId, place];
+    if (!texts.every((text) => typeof text === "string") || !Array.isArray(selection)) return [];
+    return [person as PresentPerson];
+  });
 }

@@ -18,8 +18,8 @@ type Props = { space: AddressSpace; placeholder?: string; isBare?: boolean };
 export function SayInput({ space, placeholder, isBare = false }: Props) {
   const { actions } = useOpenModel();
   const selection = useSelection();
-  useUnitTable();
   const [phrase, setPhrase] = useState("");
+  useUnitTable(phrase !== "");
   const [owner, setOwner] = useState<NodeKey>();
   const selected = findMemberOwner(space, selection.at(-1));
   // While members are added one after the other the selection goes to the newest; they all belong to the same owner.
