@@ -3,28 +3,22 @@
  * attribute while the node stays as it was: it keeps a fingerprint of the node, and when that differs the finding is open
  * again and says so.
  */
-import { z } from "zod";
 import type { AddressSpace } from "../address-space/address-space";
 import type { Node } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
 import type { Finding } from "./finding";
 
-export const waiverSchema = z.object({
-  rule: z.string().regex(/^R\d{3}$/),
+export type Waiver = {
+  readonly rule: string;
   /** NodeId text with `nsu=`; "" for the model as a whole. */
-  nodeId: z.string(),
-  attribute: z.string().optional(),
-  reason: z.string().min(1),
-  person: z.string().min(1),
+  readonly nodeId: string;
+  readonly attribute?: string | undefined;
+  readonly reason: string;
+  readonly person: string;
   /** ISO 8601. */
-  date: z.string().min(1),
-  fingerprint: z.string(),
-});
-
-export type Waiver = z.infer<typeof waiverSchema>;
-
-/** The file that a pipeline reads: `{"waivers": […]}`. */
-export const waiverFileSchema = z.object({ waivers: z.array(waiverSchema) });
+  readonly date: string;
+  readonly fingerprint: string;
+};
 
 export type WaivedFindings<W extends Waiver = Waiver> = {
   readonly open: readonly Finding[];
