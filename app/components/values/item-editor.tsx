@@ -5,7 +5,7 @@ import { Button } from "../ui/button";
 import { Select } from "../ui/field";
 import { ArrayRows } from "./array-rows";
 import { WordBits } from "./bit-list";
-import { getCarrier, makeItem } from "./initial-value";
+import { getCarrier, makeItem } from "~/domain/nodeset/values/initial-value";
 import { BooleanLeaf, EnumerationLeaf, NullButton, TextLeaf } from "./leaf-controls";
 import { TEXT_TYPES } from "./leaf-text";
 import { MatrixGrid } from "./matrix-grid";

@@ -4,7 +4,7 @@ import type { RawStructure } from "~/domain/nodeset/values/variant";
 import { getNodeName } from "../model/member-facts";
 import { Button } from "../ui/button";
 import { Notice } from "../ui/notice";
-import { makeStructure } from "./initial-value";
+import { makeStructure } from "~/domain/nodeset/values/initial-value";
 import { XmlLeaf } from "./text-controls";
 import type { DraftItem } from "./value-draft";
 import { useValueForm } from "./value-form";

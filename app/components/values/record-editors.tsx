@@ -3,7 +3,7 @@ import type { ReactNode } from "react";
 import type { BuiltInType } from "~/domain/nodeset/values/variant";
 import { Button } from "../ui/button";
 import { Checkbox } from "../ui/field";
-import { makeItem } from "./initial-value";
+import { makeItem } from "~/domain/nodeset/values/initial-value";
 import { listTypesFor } from "./shapes";
 import type { DraftDataValue, DraftDiagnostic, DraftItem } from "./value-draft";
 import { useValueForm, type LeafProps } from "./value-form";

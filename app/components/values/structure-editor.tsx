@@ -1,17 +1,20 @@
 /** Structures field by field, unions as one of their fields, option sets as ticks, structures that are not known as XML. */
-import { useMemo, type ReactNode } from "react";
+import { useMemo, useState, type ReactNode } from "react";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { findText } from "~/domain/address-space/qualified-name";
 import { StandardDataType } from "~/domain/address-space/standard-ids";
+import { listDirectSubtypes } from "~/domain/address-space/type-hierarchy";
 import type { StructureField, StructureShape } from "~/domain/nodeset/values/data-type-shapes";
 import type { RawStructure } from "~/domain/nodeset/values/variant";
 import { getNodeName } from "../model/member-facts";
 import { TypeSearch } from "../model/type-search";
 import { Button } from "../ui/button";
+import { cx } from "../ui/cx";
 import { Checkbox, Select } from "../ui/field";
 import { ByteBits } from "./bit-list";
-import { makeField, makeStructure } from "./initial-value";
+import { makeField, makeStructure } from "~/domain/nodeset/values/initial-value";
 import { NullButton } from "./leaf-controls";
+import { TEXT_TYPES } from "./leaf-text";
 import { findOptionBits } from "./option-bits";
 import { RawBody } from "./raw-body";
 import type { Draft, DraftStructure } from "./value-draft";
@@ -43,12 +46,17 @@ export function StructureEditor({ label, item, onChange, autoFocus, dataType, is
   const shape = form.types.findStructure(value.dataType);
   if (!shape) return <p className="text-small text-ink-3">Its DataType is not loaded.</p>;
   return (
-    <fieldset className="structure-value" aria-label={label}>
+    <fieldset className={cx("structure-value", isFlat(shape) && "is-flat")} aria-label={label}>
       <div className="flex min-h-6 flex-wrap items-center gap-2">
         <em className="text-small">{getNodeName(form.space, value.dataType)}</em>
         {isFixed || form.readOnly ? null : (
           <>
-            <ConcreteType label={label} below={base} onPick={(type) => onChange(changeType(form, value, type))} />
+            <ConcreteType
+              label={label}
+              below={base}
+              isChosen
+              onPick={(type) => onChange(changeType(form, value, type))}
+            />
             <NullButton label={label} item={item} onChange={onChange} empty={null} />
           </>
         )}
@@ -56,6 +64,15 @@ export function StructureEditor({ label, item, onChange, autoFocus, dataType, is
       <StructureFields value={value} shape={shape} onChange={onChange} autoFocus={autoFocus ?? false} />
     </fieldset>
   );
+}
+
+/** Few fields of one figure or text each: in a list they stand side by side. */
+function isFlat({ fields, isUnion }: StructureShape): boolean {
+  const isShort = (field: StructureField): boolean =>
+    field.valueRank === -1 &&
+    field.builtInType !== undefined &&
+    (TEXT_TYPES.has(field.builtInType) || field.builtInType === "Boolean");
+  return !isUnion && fields.length > 0 && fields.length <= 4 && fields.every(isShort);
 }
 
 /** Fields that the other type has too are kept. */
@@ -74,20 +91,36 @@ function changeType(
   return { ...next, fields: { ...next.fields, ...Object.fromEntries(kept) } };
 }
 
-/** The concrete types below the declared one, in a search that opens on demand. */
-function ConcreteType({ label, below, onPick }: { label: string; below: NodeKey; onPick: (type: NodeKey) => void }) {
+type ConcreteProps = { label: string; below: NodeKey; isChosen?: boolean; onPick: (type: NodeKey) => void };
+
+/** The concrete types below the declared one; where one is chosen already, the search opens on demand. */
+function ConcreteType({ label, below, isChosen = false, onPick }: ConcreteProps) {
   const { space } = useValueForm();
+  const [isOpen, setOpen] = useState(!isChosen);
+  const hasChoice = useMemo(() => listDirectSubtypes(space, below).length > 0, [space, below]);
+  if (!hasChoice) return null;
+  if (!isOpen) {
+    return (
+      <Button size="small" tone="bare" aria-label={`Change the type of ${label}`} onClick={() => setOpen(true)}>
+        Change type
+      </Button>
+    );
+  }
   return (
-    <span className="w-52">
+    <span className="w-60">
       <TypeSearch
         label={`Concrete type of ${label}`}
         space={space}
         kind="DataType"
         concreteOnly
         below={below}
-        autoFocus={false}
-        placeholder={`Choose below ${getNodeName(space, below)}`}
-        onPick={onPick}
+        autoFocus={isChosen}
+        placeholder={`Choose a type below ${getNodeName(space, below)}`}
+        onPick={(type) => {
+          setOpen(!isChosen);
+          onPick(type);
+        }}
+        {...(isChosen ? { onCancel: () => setOpen(false) } : {})}
       />
     </span>
   );
@@ -152,19 +185,13 @@ function FieldValue({
   onChange: (draft: Draft) => void;
   autoFocus?: boolean;
 }) {
-  const { Draft: DraftEditor } = useValueForm();
+  const { Draft: DraftEditor, Item } = useValueForm();
+  const shared = { label: field.name, dataType: field.dataType, autoFocus: autoFocus ?? false };
   // A field that carries a Variant is one Variant, whatever that holds.
-  const rank = draft.type === "Variant" && draft.shape === "scalar" ? -1 : field.valueRank;
+  if (draft.type === "Variant" && draft.shape === "scalar")
+    return <Item {...shared} type="Variant" item={draft.value} onChange={(value) => onChange({ ...draft, value })} />;
   return (
-    <DraftEditor
-      label={field.name}
-      draft={draft}
-      onChange={onChange}
-      dataType={field.dataType}
-      valueRank={rank}
-      isFixed={field.isInline}
-      autoFocus={autoFocus ?? false}
-    />
+    <DraftEditor {...shared} draft={draft} onChange={onChange} valueRank={field.valueRank} isFixed={field.isInline} />
   );
 }
 

@@ -6,7 +6,7 @@ import { checkVariant } from "~/domain/nodeset/values/check-variant";
 import type { Variant } from "~/domain/nodeset/values/variant";
 import { getDataTypes } from "../model/read-typed-value";
 import { Button } from "../ui/button";
-import { makeDraft } from "./initial-value";
+import { makeValue } from "~/domain/nodeset/values/initial-value";
 import { DraftEditor, ItemEditor, TypedDraftEditor } from "./item-editor";
 import { listTypesFor } from "./shapes";
 import { finishDraft, listReasons, toDraft, type Draft } from "./value-draft";
@@ -58,7 +58,7 @@ export function ValueEditor(props: ValueEditorProps) {
     [space, types, readOnly],
   );
   const [draft, setDraft] = useState<Draft>(
-    () => props.draft ?? (value ? toDraft(value) : makeDraft(form, dataType, valueRank, dimensions)),
+    () => props.draft ?? (value ? toDraft(value) : makeValue(form, dataType, valueRank, dimensions)),
   );
   const [start] = useState(draft);
   const [isLeaving, setLeaving] = useState(false);

@@ -137,6 +137,9 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "enumeration.extends":
     "{name} would add the value {value} to the enumeration that it derives from; a subtype only restricts (OPC 10000-3 §8.14).",
   "enumeration.value-range": "{name}: {value} is not a whole number of 32 bits.",
+  "data-type.no-data-type": "{node} is not a DataType.",
+  "data-type.own-subtype": "{node} is below this type, so it cannot stand above it.",
+  "data-type.other-kind": "{node} and {supertype} are of different kinds; a structure stays a structure, an enumeration an enumeration.",
   "structure.no-structure": "{node} is not a structure.",
   "structure.supertype": "{node} is not below Structure.",
   "structure.name-taken": "Two fields are called “{name}”.",

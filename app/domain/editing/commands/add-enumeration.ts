@@ -16,6 +16,7 @@ import { makeEnumValues, makeTexts } from "../../nodeset/values/standard-values"
 import { writeValue } from "../../nodeset/values/write-value";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
 import { checkInheritedFields } from "../inherited-fields";
+import { keepUnnamed } from "../kept-fields";
 import { addTypeTo } from "./add-type";
 import { addStandardProperty, removeProperty } from "./set-unit";
 
@@ -24,6 +25,8 @@ export type EnumerationField = {
   readonly value: number;
   readonly displayName?: readonly LocalizedText[];
   readonly description?: readonly LocalizedText[];
+  /** Its name before, where this edit renames it. */
+  readonly was?: string;
 };
 
 export type AddEnumerationIntent = {
@@ -69,7 +72,10 @@ export function setEnumerationFields(
     return draft.finish();
   }
   checkFields(draft, intent.fields, findSupertype(space, node.key));
-  draft.set(node.key, "definition", { ...getDefinition(node), fields: intent.fields.map(toField) });
+  draft.set(node.key, "definition", {
+    ...getDefinition(node),
+    fields: intent.fields.map((f) => keepUnnamed(node, f, toField(f))),
+  });
   setFieldsProperty(draft, node.key, intent.fields);
   return draft.finish();
 }

@@ -13,6 +13,7 @@ import { problem, type Result } from "../../core/result";
 import { makeTexts } from "../../nodeset/values/standard-values";
 import { EditDraft, type CommandContext, type Edit } from "../edit-draft";
 import { checkInheritedFields } from "../inherited-fields";
+import { keepUnnamed } from "../kept-fields";
 import { setListProperty } from "./add-enumeration";
 import { addTypeTo } from "./add-type";
 import { toDimensionsText } from "./set-value-rank";
@@ -27,6 +28,8 @@ export type StructureFieldIntent = {
   readonly isOptional?: boolean;
   readonly allowSubTypes?: boolean;
   readonly description?: readonly LocalizedText[];
+  /** Its name before, where this edit renames it: what else a file says of the field stays with it. */
+  readonly was?: string;
 };
 
 export type AddStructureIntent = {
@@ -57,8 +60,19 @@ export function addStructure(space: AddressSpace, context: CommandContext, inten
     fields: intent.fields.map((f) => toField(space, f)),
   };
   const key = addTypeTo(draft, { ...intent, supertype }, { definition });
-  if (key !== undefined && !intent.isAbstract) for (const encoding of ENCODINGS) addEncoding(draft, key, encoding);
+  if (key !== undefined && !intent.isAbstract) addEncodings(draft, key);
   return draft.finish();
+}
+
+/** Those of the three encoding Objects that the structure does not have yet. */
+export function addEncodings(draft: EditDraft, dataType: NodeKey): void {
+  const encodings = listEncodings(draft.space, dataType).map((key) => draft.space.getNode(key)?.browseName.name);
+  for (const encoding of ENCODINGS) if (!encodings.includes(encoding)) addEncoding(draft, dataType, encoding);
+}
+
+export function listEncodings(space: AddressSpace, dataType: NodeKey): NodeKey[] {
+  const edges = space.edgesFrom(dataType).filter((edge) => edge.type === StandardReferenceType.HasEncoding);
+  return edges.map((edge) => edge.target);
 }
 
 function addEncoding(draft: EditDraft, dataType: NodeKey, name: (typeof ENCODINGS)[number]): void {
@@ -88,7 +102,7 @@ export function setStructureFields(
     return draft.finish();
   }
   checkFields(draft, intent.fields, node.definition?.isUnion ?? false, findSupertype(space, node.key));
-  const fields = intent.fields.map((f) => toField(space, f));
+  const fields = intent.fields.map((f) => keepUnnamed(node, f, toField(space, f)));
   draft.set(node.key, "definition", { ...(node.definition ?? { name: node.browseName }), fields });
   return draft.finish();
 }
@@ -144,26 +158,39 @@ export type OptionSetBit = {
   readonly name: string;
   readonly bit: number;
   readonly description?: readonly LocalizedText[];
+  readonly was?: string;
 };
 
 export type AddOptionSetIntent = {
   readonly name: string;
   readonly bits: readonly OptionSetBit[];
-  /** Bits in the value: 8, 16, 32 or 64. The DataType derives from the unsigned integer of that size. */
-  readonly size: 8 | 16 | 32 | 64;
+  /**
+   * Bits in the value: 8, 16, 32 or 64, the DataType then derives from the unsigned integer of that size; `any` for a
+   * structure below OptionSet, which also says which bits are valid.
+   */
+  readonly size: 8 | 16 | 32 | 64 | "any";
   readonly description?: readonly LocalizedText[];
 };
 
-const UNSIGNED_BY_SIZE = { 8: standardKey(3), 16: standardKey(5), 32: standardKey(7), 64: standardKey(9) } as const;
+const SUPERTYPE_BY_SIZE = {
+  8: standardKey(3),
+  16: standardKey(5),
+  32: standardKey(7),
+  64: standardKey(9),
+  any: StandardDataType.OptionSet,
+} as const;
+/** Common sense, no source: a bit number beyond this is a slip. */
+const MOST_BITS = 4096;
 
-/** An option set below an unsigned integer (OPC 10000-3 §8.40). Problems: `name.*`, `option-set.*`. */
+/** An option set (OPC 10000-3 §8.40). Problems: `name.*`, `option-set.*`. */
 export function addOptionSet(space: AddressSpace, context: CommandContext, intent: AddOptionSetIntent): Result<Edit> {
   const draft = new EditDraft(space, context);
-  checkBits(draft, intent.bits, intent.size);
+  checkBits(draft, intent.bits, intent.size === "any" ? MOST_BITS : intent.size);
   if (draft.hasFailed) return draft.finish();
   const name = qualifiedName(draft.ownNamespace, intent.name);
   const definition = { name, isOptionSet: true, fields: intent.bits.map(toBitField) };
-  const key = addTypeTo(draft, { ...intent, supertype: UNSIGNED_BY_SIZE[intent.size] }, { definition });
+  const key = addTypeTo(draft, { ...intent, supertype: SUPERTYPE_BY_SIZE[intent.size] }, { definition });
+  if (key !== undefined && intent.size === "any") addEncodings(draft, key);
   if (key !== undefined) setOptionSetValues(draft, key, intent.bits);
   return draft.finish();
 }
@@ -182,10 +209,16 @@ export function setOptionSetBits(
     draft.fail(problem("option-set.no-option-set", { node: intent.dataType }));
     return draft.finish();
   }
-  checkBits(draft, intent.bits, 64);
-  draft.set(node.key, "definition", { ...node.definition, fields: intent.bits.map(toBitField) });
+  checkBits(draft, intent.bits, findSize(space, node.key));
+  const fields = intent.bits.map((bit) => keepUnnamed(node, bit, toBitField(bit)));
+  draft.set(node.key, "definition", { ...node.definition, fields });
   setOptionSetValues(draft, node.key, intent.bits);
   return draft.finish();
+}
+
+function findSize(space: AddressSpace, dataType: NodeKey): number {
+  const sizes = [8, 16, 32, 64] as const;
+  return sizes.find((size) => isSubtypeOf(space, dataType, SUPERTYPE_BY_SIZE[size])) ?? MOST_BITS;
 }
 
 function checkBits(draft: EditDraft, bits: readonly OptionSetBit[], size: number): void {

@@ -47,9 +47,13 @@ export interface DataTypeLookup {
   /** undefined where the DataType is not loaded. */
   findBuiltInType(dataType: NodeKey): BuiltInType | undefined;
   findEnumerationNames(dataType: NodeKey): ReadonlyMap<number, string> | undefined;
+  /** The bits that an option set names, as a number; undefined for other DataTypes. */
+  findOptionMask(dataType: NodeKey): bigint | undefined;
 }
 
 const BUILT_IN_BY_KEY = new Map<NodeKey, BuiltInType>(BUILT_IN_TYPES.map((name, i) => [standardKey(i + 1), name]));
+/** No published option set comes near; a number beyond is a slip that must cost no memory. */
+const MOST_BITS = 4096;
 const ABSTRACT_NUMBERS = new Set<NodeKey>([
   StandardDataType.Number,
   StandardDataType.Integer,
@@ -168,6 +172,17 @@ export class SpaceDataTypes implements DataTypeLookup {
     if (!node?.definition || !listSupertypes(this.#space, dataType).includes(StandardDataType.Enumeration))
       return undefined;
     return new Map(node.definition.fields.map((f) => [f.value ?? -1, f.name]));
+  }
+
+  findOptionMask(dataType: NodeKey): bigint | undefined {
+    let mask: bigint | undefined;
+    for (const key of [dataType, ...listSupertypes(this.#space, dataType)]) {
+      const definition = this.#getDataType(key)?.definition;
+      if (definition?.isOptionSet !== true) continue;
+      for (const field of definition.fields)
+        mask = (mask ?? 0n) | (1n << BigInt(Math.min(MOST_BITS, Math.max(0, field.value ?? 0))));
+    }
+    return mask;
   }
 
   #findByText(typeId: string): { key: NodeKey; nodeClass: string } | undefined {
