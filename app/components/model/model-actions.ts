@@ -195,6 +195,13 @@ export class ModelActions {
     this.#run(label, steps);
   }
 
+  /** Texts found and replaced, in one edit; false when it was refused. */
+  replaceTexts(steps: readonly EditStep[], count: number): boolean {
+    if (this.#run("replace-texts", steps) === undefined) return false;
+    showToast({ tone: "good", title: `Replaced in ${count} ${count === 1 ? "place" : "places"}. Ctrl Z takes all of it back.`, seconds: 6 });
+    return true;
+  }
+
   copyNodes(keys: readonly NodeKey[]): void {
     writeClipboard(this.#editor.getState().space, keys);
   }

@@ -87,15 +87,21 @@ function useModelPalette(): void {
       { id: "register", label: "Register", group: "Screens of this model", run: go("register") },
       { id: "findings", label: "Findings", group: "Screens of this model", run: go("findings") },
       { id: "source", label: "Source text", group: "Screens of this model", run: go("source") },
+      { id: "types", label: "Types", group: "Screens of this model", run: go("types") },
+      { id: "revisions", label: "Revisions", group: "Screens of this model", run: go("revisions") },
+      { id: "about", label: "About this model", group: "Screens of this model", run: go("about") },
+      ...(workspace.model.kind === "machines" ? [{ id: "roll-out", label: "Roll-out", group: "Screens of this model", run: go("roll-out") }] : []),
       { id: "test-server", label: "Test server", group: "Screens of this model", run: go("test-server") },
     ];
     const edits = actions.canEdit
       ? [
           { id: "undo", label: "Undo", group: "Actions", hint: "Ctrl Z", run: () => actions.undo() },
+          { id: "replace", label: "Find and replace", group: "Actions", hint: "Ctrl H", run: go("register?replace") },
+          { id: "signals", label: "Add from a signal list", group: "Actions", run: go("signals") },
           { id: "redo", label: "Redo", group: "Actions", hint: "Ctrl Shift Z", run: () => actions.redo() },
         ]
       : [];
     return [...screens, ...edits, { id: "export", label: "Download NodeSet2", group: "Actions", run: () => window.location.assign(`${base}/nodeset`) }];
-  }, [navigate, base, actions]);
+  }, [navigate, base, actions, workspace.model.kind]);
   usePaletteActions(entries);
 }

@@ -1,4 +1,4 @@
-import { Plus } from "lucide-react";
+import { Plus, Replace } from "lucide-react";
 import { useEffect, useRef, type ReactNode } from "react";
 import { useFindingTally, useOpenModel } from "../model/use-model";
 import { Button } from "../ui/button";
@@ -14,6 +14,7 @@ type Props = {
   /** The menu of the columns. */
   columns: ReactNode;
   onAdd: () => void;
+  onReplace: () => void;
   onLeave: () => void;
 };
 
@@ -21,15 +22,22 @@ const SHOWN = new Set(["inherited"] as const);
 const NOT_SHOWN = new Set<"inherited">();
 
 /** Filter, columns and the way to new members, above the table. */
-export function RegisterTools({ filter, onFilter, rowCount, columns, onAdd, onLeave }: Props) {
+export function RegisterTools({ filter, onFilter, rowCount, columns, onAdd, onReplace, onLeave }: Props) {
   const { actions } = useOpenModel();
   const tally = useFindingTally();
   const field = useRef<HTMLInputElement>(null);
+  const latestReplace = useRef(onReplace);
+  latestReplace.current = onReplace;
   const findingCount = tally ? tally.error + tally.warning + tally.hint : 0;
 
   useEffect(() => {
     const onKeyDown = (event: KeyboardEvent): void => {
       const target = event.target as Element | null;
+      if (event.key.toLowerCase() === "h" && (event.ctrlKey || event.metaKey) && !event.shiftKey && !event.altKey) {
+        event.preventDefault();
+        latestReplace.current();
+        return;
+      }
       if (event.key !== "/" || event.ctrlKey || event.metaKey || target?.closest("input, textarea, select, [contenteditable]")) return;
       event.preventDefault();
       field.current?.focus();
@@ -82,6 +90,11 @@ export function RegisterTools({ filter, onFilter, rowCount, columns, onAdd, onLe
       <span className="ml-auto text-note text-ink-3" aria-live="polite">
         <span className="font-mono">{rowCount}</span> rows
       </span>
+      {actions.canEdit ? (
+        <Button size="small" tone="bare" icon={Replace} title="Ctrl H" onClick={onReplace}>
+          Replace
+        </Button>
+      ) : null}
       {columns}
       {actions.canEdit ? (
         <Button size="small" icon={Plus} onClick={onAdd}>

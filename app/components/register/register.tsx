@@ -1,5 +1,6 @@
 import { useVirtualizer } from "@tanstack/react-virtual";
 import { useCallback, useMemo, useRef, useState } from "react";
+import { useSearchParams } from "react-router";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { AddNodePanel } from "../model/add-node-panel";
 import { makeAddRequest, type AddRequest } from "../model/add-request";
@@ -14,6 +15,7 @@ import { NewMemberRow } from "./new-member-row";
 import { RegisterHead } from "./register-head";
 import { RegisterRowView } from "./register-row-view";
 import { buildRows } from "./register-rows";
+import { ReplacePanel } from "./replace-panel";
 import { parseFilter } from "./row-filter";
 import { makeRowOrder, type SortRule } from "./row-order";
 import { RegisterTools, type RegisterFilter } from "./register-tools";
@@ -36,6 +38,20 @@ export function Register() {
   const [toggled, setToggled] = useState<ReadonlySet<string>>(new Set());
   const [adding, setAdding] = useState<AddRequest>();
   const [sort, setSort] = useState<SortRule>();
+  const [parameters, setParameters] = useSearchParams();
+  const isReplacing = parameters.has("replace");
+  const showReplace = useCallback(
+    (isShown: boolean) =>
+      setParameters(
+        (old) => {
+          if (isShown) old.set("replace", "");
+          else old.delete("replace");
+          return old;
+        },
+        { replace: true },
+      ),
+    [setParameters],
+  );
   const { columns, template, width, choice } = useRegisterColumns(space);
   const newest = useRef(space);
   newest.current = space;
@@ -87,8 +103,18 @@ export function Register() {
         rowCount={rows.length}
         columns={<ColumnMenu choice={choice} sort={sort} onSort={setSort} />}
         onAdd={() => setAdding(makeAddRequest("Variable", owner === undefined ? {} : { parent: owner }))}
+        onReplace={() => showReplace(true)}
         onLeave={() => scroller.current?.focus()}
       />
+      {isReplacing ? (
+        <ReplacePanel
+          space={space}
+          onClose={() => {
+            showReplace(false);
+            scroller.current?.focus();
+          }}
+        />
+      ) : null}
       <div
         ref={scroller}
         className="register-grid"

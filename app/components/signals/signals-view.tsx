@@ -1,4 +1,5 @@
-import { useDeferredValue, useMemo, useState } from "react";
+import { Download } from "lucide-react";
+import { useDeferredValue, useEffect, useMemo, useRef, useState } from "react";
 import { useNavigate } from "react-router";
 import { describe } from "~/components/model/edit-steps";
 import type { OpenModel } from "~/components/model/use-model";
@@ -11,10 +12,15 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import { isTypeNode } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { addSignals } from "~/domain/editing/starters/add-signals";
+import { readSignalList, type ColumnChoice } from "~/domain/editing/starters/read-signal-list";
+import type { TextTable } from "~/domain/editing/starters/text-table";
+import { fail, ok, type Problem, type Result } from "~/domain/core/result";
 import { readCsv } from "~/utils/read-csv";
-import { guessColumns, readSignalList, type ColumnChoice } from "~/domain/editing/starters/read-signal-list";
+import { readXlsx, type WorkbookSheet } from "~/utils/read-xlsx";
 import { toNamespacePart } from "../models/propose-namespace";
 import { ColumnMatch } from "./column-match";
+import { proposeColumns, readTemplates, type ColumnTemplate } from "./column-templates";
+import { downloadSignalList } from "./download-signal-list";
 import { SignalTable } from "./signal-table";
 
 type Props = { model: OpenModel; space: AddressSpace; editBlockedBy: string | undefined };
@@ -23,26 +29,53 @@ const newType = "new";
 const example =
   "group,name,type,unit,low,high,description\nProcess,spindle speed,REAL,r/min,0,180,Speed of the spindles";
 
+/** Pasted or read from a text file; or a workbook with the sheet that is taken. */
+type Source =
+  | { readonly kind: "text"; readonly text: string }
+  | { readonly kind: "workbook"; readonly name: string; readonly sheets: readonly WorkbookSheet[]; readonly chosen: number }
+  | { readonly kind: "unreadable"; readonly problems: readonly Problem[] };
+
+/** Undefined while nothing was given. */
+function readSource(source: Source): Result<TextTable> | undefined {
+  if (source.kind === "unreadable") return fail(...source.problems);
+  if (source.kind === "text") return source.text.trim() === "" ? undefined : readCsv(source.text);
+  const sheet = source.sheets[source.chosen];
+  return sheet ? ok(sheet.table) : undefined;
+}
+
 /** A signal list becomes members: paste or choose it, match the columns, look, and take it in one step. */
 export function SignalsView({ model, space, editBlockedBy }: Props) {
   const navigate = useNavigate();
-  const [text, setText] = useState("");
+  const [source, setSource] = useState<Source>({ kind: "text", text: "" });
   const [matched, setMatched] = useState<ColumnChoice | undefined>(undefined);
+  const [templates, setTemplates] = useState<readonly ColumnTemplate[]>([]);
   const [target, setTarget] = useState<string>(newType);
   const [typeName, setTypeName] = useState(`${toNamespacePart(model.workspace.model.name) || "Machine"}Type`);
-  const read = useDeferredValue(text);
-  const table = useMemo(() => (read.trim() === "" ? undefined : readCsv(read)), [read]);
+  const file = useRef<HTMLInputElement>(null);
+  const read = useDeferredValue(source);
+  const table = useMemo(() => readSource(read), [read]);
   const head = table?.ok ? (table.value.rows[0]?.fields ?? []) : [];
-  const columns = matched ?? guessColumns(head);
+  const columns = matched ?? proposeColumns(templates, head);
   const list = useMemo(() => (table?.ok ? readSignalList(table.value, columns) : undefined), [table, columns]);
   const problems = [...(table && !table.ok ? table.problems : []), ...(list?.problems ?? [])];
   const ownTypes = space.listOwnNodes().filter((node) => isTypeNode(node) && node.nodeClass === "ObjectType");
   const count = list?.signals.length ?? 0;
 
-  async function chooseFile(file: File | undefined): Promise<void> {
-    if (!file) return;
+  useEffect(() => setTemplates(readTemplates()), []);
+
+  function change(next: Source): void {
     setMatched(undefined);
-    setText(await file.text());
+    setSource(next);
+  }
+  async function chooseFile(chosen: File | undefined): Promise<void> {
+    if (!chosen) return;
+    if (!/\.xls[xmb]?$/i.test(chosen.name)) return change({ kind: "text", text: await chosen.text() });
+    const sheets = await readXlsx(new Uint8Array(await chosen.arrayBuffer()));
+    change(sheets.ok ? { kind: "workbook", name: chosen.name, sheets: sheets.value, chosen: 0 } : { kind: "unreadable", problems: sheets.problems });
+  }
+  function clear(): void {
+    if (file.current) file.current.value = "";
+    change({ kind: "text", text: "" });
   }
   function take(): void {
     const type = target === newType ? { name: typeName.trim() } : { key: target as NodeKey };
@@ -72,36 +105,43 @@ export function SignalsView({ model, space, editBlockedBy }: Props) {
     <Page
       title="Signal list"
       about="Rows become members: a group becomes an Object, a signal a Variable with unit and range."
+      actions={
+        <Button icon={Download} onClick={() => void downloadSignalList(space, model.workspace.model.name)}>
+          This model as signal list (XLSX)
+        </Button>
+      }
     >
       <div className="grid grid-cols-[minmax(0,1fr)_320px] gap-8 max-lg:grid-cols-1">
         <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-5">
-          <Field
-            label="The list"
-            hint="Copy the cells in your spreadsheet and paste them here, or choose a CSV file. The first row holds the heads."
-          >
-            {(tied) => (
-              <TextArea
-                {...tied}
-                mono
-                rows={table ? 5 : 10}
-                value={text}
-                placeholder={example}
-                spellCheck={false}
-                onChange={(event) => {
-                  setMatched(undefined);
-                  setText(event.currentTarget.value);
-                }}
-              />
-            )}
-          </Field>
+          {source.kind === "workbook" ? (
+            <Workbook source={source} onSheet={(chosen) => change({ ...source, chosen })} onClear={clear} />
+          ) : (
+            <Field
+              label="The list"
+              hint="Copy the cells in your spreadsheet and paste them here, or choose a CSV or XLSX file. The first row holds the heads."
+            >
+              {(tied) => (
+                <TextArea
+                  {...tied}
+                  mono
+                  rows={table ? 5 : 10}
+                  value={source.kind === "text" ? source.text : ""}
+                  placeholder={example}
+                  spellCheck={false}
+                  onChange={(event) => change({ kind: "text", text: event.currentTarget.value })}
+                />
+              )}
+            </Field>
+          )}
           <input
+            ref={file}
             type="file"
-            aria-label="CSV file"
-            accept=".csv,.tsv,.txt,text/csv,text/plain"
+            aria-label="CSV or XLSX file"
+            accept=".csv,.tsv,.txt,.xlsx,text/csv,text/plain,application/vnd.openxmlformats-officedocument.spreadsheetml.sheet"
             onChange={(event) => void chooseFile(event.currentTarget.files?.[0])}
             className="text-small file:mr-3 file:h-7 file:rounded-edge file:border file:border-edge file:bg-leaf file:px-2.5 file:text-small file:font-medium"
           />
-          {head.length > 0 ? <ColumnMatch head={head} columns={columns} onChange={setMatched} /> : null}
+          {head.length > 0 ? <ColumnMatch head={head} columns={columns} templates={templates} onChange={setMatched} onTemplates={setTemplates} /> : null}
           {list && count > 0 ? <SignalTable signals={list.signals} space={space} /> : null}
         </div>
         <aside className="grid content-start gap-4 border-t-[1.5px] border-ink pt-3">
@@ -159,5 +199,33 @@ export function SignalsView({ model, space, editBlockedBy }: Props) {
         </aside>
       </div>
     </Page>
+  );
+}
+
+type WorkbookProps = { source: Extract<Source, { kind: "workbook" }>; onSheet: (index: number) => void; onClear: () => void };
+
+/** The chosen workbook, and which of its sheets is the list. */
+function Workbook({ source, onSheet, onClear }: WorkbookProps) {
+  return (
+    <div className="flex flex-wrap items-end gap-4 border border-rule bg-leaf p-3">
+      <p className="min-w-40 text-small">
+        <b className="block font-semibold">{source.name}</b>
+        <span className="text-ink-3">{(source.sheets[source.chosen]?.table.rows.length ?? 1) - 1} rows below the heads</span>
+      </p>
+      <Field label="Sheet">
+        {(tied) => (
+          <Select {...tied} size="small" className="w-56" value={source.chosen} onChange={(event) => onSheet(Number(event.currentTarget.value))}>
+            {source.sheets.map((sheet, i) => (
+              <option key={sheet.name} value={i}>
+                {sheet.name}
+              </option>
+            ))}
+          </Select>
+        )}
+      </Field>
+      <Button size="small" onClick={onClear}>
+        Paste instead
+      </Button>
+    </div>
   );
 }

@@ -17,6 +17,11 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
     "No numbers for new NodeIds are left in this window; it gets new ones as soon as the server answers.",
 
   "node-id.path-used-up": "No NodeId is left for the path {path}.",
+  "node-id.range-used-up":
+    "All numbers {from} … {to} for nodes of the class {nodeClass} are given. Widen the range on the model's page About.",
+  "id-policy.pattern": "The pattern “{pattern}” needs {path} once, where the path of names goes.",
+  "id-policy.range": "The range {from} … {to} for {nodeClass} is not one: from 1 to {limit}, the lower number first.",
+  "id-policy.overlap": "The ranges for {first} and {second} overlap.",
   "renumber.namespace": "A node of this model has its NodeId in the model's own namespace, not in {uri}.",
   "override.no-such-member": "The type inherits no member {path}.",
   "override.exists": "{name} is declared in this type already.",
@@ -157,6 +162,9 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "model.metadata-exists": "The metadata of {uri} are there already.",
   "model.no-row": "The model has no row in its Models table.",
   "model.required-in-use": "{uri} is still used by {count} nodes of this model.",
+  "workbook.too-large": "The workbook is larger than {limit} MB (unpacked, where that is more). Keep only the sheet with the list.",
+  "workbook.old-format": "The workbook has the old format (XLS) or a password. Save it as XLSX without one.",
+  "workbook.unreadable": "The file is no workbook that can be read (XLSX). Save it anew, or paste its cells.",
   "signal-list.empty": "The list has no rows.",
   "signal-list.too-long": "The list is longer than {limit} rows.",
   "signal-list.open-quote": "A quotation mark is opened and never closed.",

@@ -32,16 +32,23 @@ export function addSignals(
     "key" in type ? type.key : sequence.do((s, c) => addType(s, c, { supertype: T.BaseObjectType, name: type.name }));
   if (key === undefined) return sequence.finish();
   for (const signal of signals) {
-    const parent = signal.group === undefined ? key : openGroup(sequence, key, signal.group);
+    const parent = openGroup(sequence, key, signal.group?.split("/") ?? []);
     if (parent === undefined) break;
     addSignal(sequence, parent, signal);
   }
   return sequence.finish();
 }
 
-function openGroup(sequence: EditSequence, type: NodeKey, name: string): NodeKey | undefined {
-  const there = findMember(sequence.space, type, name, getOwnNamespace(sequence.space.own.header));
-  return there?.key ?? sequence.do((s, c) => addObject(s, c, { parent: type, name }));
+/** The innermost group; those on the way that are not there are made. */
+function openGroup(sequence: EditSequence, type: NodeKey, path: readonly string[]): NodeKey | undefined {
+  let at: NodeKey | undefined = type;
+  for (const name of path) {
+    const parent: NodeKey | undefined = at;
+    if (parent === undefined) return undefined;
+    const there = findMember(sequence.space, parent, name, getOwnNamespace(sequence.space.own.header));
+    at = there?.key ?? sequence.do((s, c) => addObject(s, c, { parent, name }));
+  }
+  return at;
 }
 
 /** Unit and range ask for different types (OPC 10000-8 §5.3.2): with both AnalogUnitRangeType, with one of them its own. */

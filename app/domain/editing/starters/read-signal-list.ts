@@ -30,6 +30,7 @@ export type Signal = {
   readonly name: string;
   /** The name as written. */
   readonly title: string;
+  /** Names of Objects, the outermost first, `/` between them. */
   readonly group: string | undefined;
   readonly dataType: NodeKey;
   readonly unit: Unit | undefined;
@@ -156,7 +157,7 @@ function readSignal(line: number, get: (field: SignalField) => string, problems:
     line,
     name,
     title,
-    group: toBrowseName(get("group")) || undefined,
+    group: toGroupPath(get("group")) || undefined,
     dataType,
     unit: isNumeric ? unit : undefined,
     range: isNumeric ? range : undefined,
@@ -186,6 +187,11 @@ export function toBrowseName(text: string): string {
     .filter(Boolean)
     .map((word) => word.charAt(0).toUpperCase() + word.slice(1))
     .join("");
+}
+
+/** `drive / gearbox` → `Drive/Gearbox`: groups inside of groups. */
+function toGroupPath(text: string): string {
+  return text.split(/[/\\]/).map(toBrowseName).filter(Boolean).join("/");
 }
 
 function readDataType(text: string, isMeasured: boolean, line: number, problems: Problem[]): NodeKey {
