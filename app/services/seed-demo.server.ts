@@ -20,6 +20,7 @@ import { newId } from "../utils/ids.server";
 import { findProjectRoot } from "../utils/project-root.server";
 import { importModel } from "./import-model.server";
 import { readUpload } from "./read-upload.server";
+import { seedBraiderMapping, seedHallSources } from "./seed-demo-sources.server";
 
 const DEMO_SLUG = "demo";
 
@@ -33,7 +34,11 @@ const demoModels = [
 export async function seedDemo(): Promise<string[]> {
   const organizationId = await seedPeople();
   const author = await findAuthor(organizationId);
-  for (const { file, name } of demoModels) await seedModel(author, organizationId, file, name);
+  const [types, hall] = demoModels;
+  await seedModel(author, organizationId, types.file, types.name);
+  await seedBraiderMapping(author, organizationId);
+  await seedModel(author, organizationId, hall.file, hall.name);
+  await seedHallSources(author, organizationId);
   return [`Demo organisation: ${demoOrganizationName} (everybody and everything in it is invented)`];
 }
 

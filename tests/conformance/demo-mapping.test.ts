@@ -6,7 +6,7 @@ import { readFileSync } from "node:fs";
 import { join } from "node:path";
 import { describe, expect, test } from "vitest";
 import { AddressSpace, buildLayer } from "~/domain/address-space/address-space";
-import { findMember } from "~/domain/address-space/browse";
+import { listChildren } from "~/domain/address-space/browse";
 import { formatNodeId, numericNodeId, toNodeKey, type NodeKey } from "~/domain/address-space/node-id";
 import { getValue, ok } from "~/domain/core/result";
 import { findLayout, readMappingDocument, writeMappingDocument } from "~/domain/deliver/mapping-document";
@@ -30,7 +30,7 @@ function nodeIdOf(target: string): string {
   const space = AddressSpace.of(published.map(getPublishedLayer), buildLayer(header, nodes));
   let at: NodeKey = toNodeKey(numericNodeId(BRAIDER, 1001));
   for (const name of target.split("/")) {
-    const member = findMember(space, at, name, BRAIDER);
+    const member = listChildren(space, at).find((child) => child.browseName.name === name);
     if (!member) throw new Error(`${target}: no member ${name}`);
     at = member.key;
   }

@@ -7,6 +7,8 @@ import { fail, ok, problem, type Result } from "../core/result";
 import type { Direction, ProcessDataImage } from "../iodd/device-description";
 import { processDataImageSchema, toProcessDataImage } from "../iodd/process-data-schema";
 import { mappingSchema } from "../mapping/mapping";
+import { bindingSchema, checkCaseSchema } from "../mapping/mapping-parts";
+import { sourceAddressSchema, sourceKinds } from "../mapping/source-settings";
 
 export const MAPPING_DOCUMENT_FORMAT = "ferrule-mapping-document";
 export const MAPPING_DOCUMENT_VERSION = 1;
@@ -30,6 +32,21 @@ const layoutSchema = z.strictObject({
   image: processDataImageSchema,
 });
 
+/** Where one machine finds the roles; absent in the document of a type. */
+const machineSchema = z.strictObject({
+  name: z.string().max(2_000),
+  nodeId: z.string().max(5_000),
+  bindings: z
+    .array(
+      z.strictObject({
+        role: z.string().min(1).max(100),
+        ...bindingSchema.omit({ sourceId: true, deviceDescriptionId: true }).shape,
+        source: z.strictObject({ name: z.string().max(100), kind: z.enum(sourceKinds), address: sourceAddressSchema }),
+      }),
+    )
+    .max(200),
+});
+
 export const mappingDocumentSchema = z.strictObject({
   $schema: z.string().max(500).optional(),
   format: z.literal(MAPPING_DOCUMENT_FORMAT),
@@ -42,6 +59,9 @@ export const mappingDocumentSchema = z.strictObject({
   mapping: mappingSchema,
   layouts: z.array(layoutSchema).max(400),
   nodes: z.array(nodeSchema).max(5_000),
+  machine: machineSchema.optional(),
+  /** Recorded frames with the values expected from them; targets as in the rows. */
+  checkCases: z.array(checkCaseSchema).max(1_000).optional(),
 });
 
 export type MappingDocument = z.infer<typeof mappingDocumentSchema>;

@@ -3,4 +3,5 @@ export const deliverProblemTexts: Readonly<Record<string, string>> = {
   "document.no-json": "The document is not JSON: {message}.",
   "document.format": "This is no mapping document of a kind that is read here; expected is {expected}.",
   "document.invalid": "The document does not follow its schema: {message}.",
+  "deliver.no-mapping": "The type of {machine} has no mapping.",
 };

@@ -11,6 +11,7 @@ import { readDevicePackage } from "~/domain/iodd/read-package";
 import type { DeviceDescription, Direction } from "~/domain/iodd/device-description";
 import { chooseLayout } from "~/domain/mapping/choose-layout";
 import type { InputReference, MappingRow, Transform } from "~/domain/mapping/mapping";
+import type { CheckCase } from "~/domain/mapping/mapping-parts";
 import { unitByCode } from "~/domain/units/units";
 
 const devices = {
@@ -50,6 +51,10 @@ function row(
 ): MappingRow {
   return { target, source, transforms, period: 500, ...more };
 }
+
+/** Of the IODD's values (off, green, yellow, red, blue, white; steady, flash, blink slowly, blink fast) to those of IA. */
+const colours = [0, 2, 4, 1, 3, 7];
+const patterns = [0, 2, 1, 1];
 
 const rows: MappingRow[] = [
   row("Process/CreelDistance", field("creel sensor", 1)),
@@ -101,6 +106,81 @@ const rows: MappingRow[] = [
     [],
     { period: 5_000 },
   ),
+  ...[1, 2, 3, 4, 5].flatMap(segmentRows),
+];
+
+function segmentRows(segment: number): MappingRow[] {
+  const first = 3 * segment - 2;
+  const member = (name: string): string => `Status/StackLight/Segment${segment}/${name}`;
+  return [
+    row(member("Intensity"), field("stack light", first + 2), [
+      {
+        kind: "lookup",
+        points: [
+          [0, 0],
+          [3, 100],
+        ],
+      },
+    ]),
+    row(member("SignalColor"), field("stack light", first), [toMap(colours)]),
+    row(member("SignalMode"), field("stack light", first + 1), [toMap(patterns)]),
+  ];
+}
+
+function toMap(values: readonly number[]): Transform {
+  return { kind: "value-map", entries: values.map((to, from) => ({ from, to })) };
+}
+
+/** Numbers worked out by hand from the layouts of the scenario. */
+const checkCases: CheckCase[] = [
+  {
+    name: "Running, creel half full",
+    frames: [
+      { role: "creel sensor", direction: "in", hex: "08 98 FC 00" },
+      { role: "carriage sensor", direction: "in", hex: "27 74 FB 00" },
+      { role: "condition monitor", direction: "in", hex: "00 E7 02 82 61 27 94 00 00 00 00 00" },
+      { role: "stack light", direction: "out", hex: "23 00 4B 00 00" },
+    ],
+    samples: [
+      { reference: register("controller", 12, "Float32"), value: 100.5 },
+      { reference: register("meter", 0, "Int32"), value: 3840 },
+    ],
+    expected: [
+      { target: "Process/CreelDistance", value: 220, status: 0 },
+      { target: "Process/CreelFill", value: 50, status: 0 },
+      { target: "Process/CarriagePosition", value: 101, status: 0 },
+      { target: "Process/CarriageDeviation", value: 0.5, tolerance: 1e-9, status: 0 },
+      { target: "Environment/GearboxVibration", value: 2.31, status: 0 },
+      { target: "Environment/GearboxTemperature", value: 64.2, status: 0 },
+      { target: "Environment/Humidity", value: 48.5, status: 0 },
+      { target: "Environment/AmbientPressure", value: 1013.2, status: 0 },
+      { target: "Energy/ActivePower", value: 3.84, status: 0 },
+      { target: "Status/StackLight/Segment1/SignalColor", value: 2, status: 0 },
+      { target: "Status/StackLight/Segment3/SignalMode", value: 1, status: 0 },
+    ],
+    note: "Green at the lowest segment, the third one blinks yellow.",
+  },
+  {
+    name: "No echo from the creel",
+    frames: [{ role: "creel sensor", direction: "in", hex: "7F FC FC 00" }],
+    samples: [],
+    expected: [
+      { target: "Process/CreelDistance", value: null, status: 0x808c0000 },
+      { target: "Process/CreelFill", value: null, status: 0x808c0000 },
+    ],
+  },
+  {
+    name: "Creel out of range, carriage invalid",
+    frames: [
+      { role: "creel sensor", direction: "in", hex: "7F F8 FC 00" },
+      { role: "carriage sensor", direction: "in", hex: "00 00 FB 00", isValid: false },
+    ],
+    samples: [],
+    expected: [
+      { target: "Process/CreelDistance", value: null, status: 0x808c0600 },
+      { target: "Process/CarriagePosition", value: null, status: 0x80000000 },
+    ],
+  },
 ];
 
 const units: Readonly<
@@ -129,6 +209,13 @@ const units: Readonly<
   "Status/SensorHealth": ["DeviceHealthEnumeration", null, null],
 };
 
+/** Data types of the elements of IA's stack light. */
+const stackLightTypes: Readonly<Record<string, string>> = {
+  Intensity: "Float",
+  SignalColor: "SignalColor",
+  SignalMode: "SignalModeLight",
+};
+
 /** `nodeIdOf` answers the NodeId text of a member of the type by its path. */
 export function makeBraiderMapping(nodeIdOf: (target: string) => string): MappingDocument {
   const deviceRoles = Object.entries(devices).map(([role, product]) => ({ role, device: readDemoDevice(product) }));
@@ -144,13 +231,14 @@ export function makeBraiderMapping(nodeIdOf: (target: string) => string): Mappin
           kind: "io-link-device",
           vendorId: device.vendorId,
           deviceId: device.deviceId,
+          productName: devices[role as DeviceRole],
         })),
-        { role: "controller", kind: "modbus-unit" },
+        { role: "controller", kind: "modbus-unit", description: "The braider's own controller, read only." },
         { role: "meter", kind: "modbus-unit" },
-      ],
+      ].sort((a, b) => (a.role < b.role ? -1 : 1)),
       rows,
     },
-    layouts: deviceRoles.flatMap(({ role, device }) =>
+    layouts: [...deviceRoles].sort((a, b) => (a.role < b.role ? -1 : 1)).flatMap(({ role, device }) =>
       (["in", "out"] satisfies Direction[]).flatMap((direction) => {
         const image = chooseLayout(device, direction);
         return image.ok
@@ -159,7 +247,7 @@ export function makeBraiderMapping(nodeIdOf: (target: string) => string): Mappin
       }),
     ),
     nodes: rows.map(({ target }) => {
-      const [dataType, code, range] = units[target] ?? ["BaseDataType", null, null];
+      const [dataType, code, range] = units[target] ?? [stackLightTypes[target.split("/").at(-1) ?? ""] ?? "", null, null];
       const unit = code === null ? undefined : unitByCode(code);
       return {
         target,
@@ -169,5 +257,6 @@ export function makeBraiderMapping(nodeIdOf: (target: string) => string): Mappin
         range: range ? { low: range[0], high: range[1] } : null,
       };
     }),
+    checkCases: [...checkCases],
   });
 }
