@@ -12,7 +12,7 @@
  */
 import type { AddressSpace } from "../domain/address-space/address-space";
 import { fail, ok, type Problem, type Result } from "../domain/core/result";
-import { BlockAllocator, type NodeIdAllocator } from "../domain/editing/allocate-node-id";
+import type { NodeIdAllocator } from "../domain/editing/allocate-node-id";
 import { applyOperations } from "../domain/editing/apply-operation";
 import {
   EMPTY_HISTORY,
@@ -24,6 +24,7 @@ import {
   type History,
   type HistoryStep,
 } from "../domain/editing/history";
+import { IdStock } from "../domain/editing/id-stock";
 import { applyWithInverse, type Applied } from "../domain/editing/invert-operation";
 import type { Operation, Transaction } from "../domain/editing/operation";
 import { rebase, type RefusedEdit } from "../domain/editing/rebase";
@@ -32,13 +33,14 @@ import type { OutgoingTransaction, PostOutcome } from "./sync-transport";
 
 const MOST_SENT = 100;
 const RETRY_DELAYS = [500, 1000, 2000, 4000, 8000];
-const LEASE_BELOW = 400;
+/** Fewer ids than these in stock, and the next block is leased. */
+const LEASE_BELOW = { all: 400, each: 100 };
 
 export class EditorStore {
   readonly clientId: string;
   readonly allocator: NodeIdAllocator;
   readonly #options: EditorOptions;
-  readonly #blocks: BlockAllocator;
+  readonly #ids: IdStock;
   readonly #listeners = new Set<() => void>();
   /** Foreign transactions that came before the one they follow. */
   readonly #early = new Map<number, Transaction>();
@@ -68,8 +70,8 @@ export class EditorStore {
     this.#confirmed = options.space;
     this.#shown = options.space;
     this.#seq = options.seq;
-    this.#blocks = BlockAllocator.forModel(() => this.#shown, options.restored?.blocks ?? []);
-    this.allocator = { allocate: (nodeClass) => this.#allocate(nodeClass) };
+    this.#ids = new IdStock(() => this.#shown, options.restored?.blocks ?? []);
+    this.allocator = { allocate: (nodeClass, place) => this.#allocate(nodeClass, place) };
     this.#state = this.#makeState();
     if (options.canEdit && options.restored && options.restored.pending.length > 0)
       this.#startRestoring(options.restored);
@@ -88,7 +90,7 @@ export class EditorStore {
     const earlier = this.#unsettled;
     return {
       pending: [...(earlier?.pending ?? []), ...this.#pending],
-      blocks: this.#blocks.listBlocks(),
+      blocks: this.#ids.listBlocks(),
       base: earlier?.base ?? this.#seq,
     };
   }
@@ -150,20 +152,28 @@ export class EditorStore {
     this.#listeners.clear();
   }
 
-  #allocate(nodeClass: Parameters<NodeIdAllocator["allocate"]>[0]): ReturnType<NodeIdAllocator["allocate"]> {
-    const allocated = this.#blocks.allocate(nodeClass);
+  #allocate(...[nodeClass, place]: Parameters<NodeIdAllocator["allocate"]>): ReturnType<NodeIdAllocator["allocate"]> {
+    const allocated = this.#ids.allocate(nodeClass, place);
     void this.#lease();
     return allocated;
   }
 
   /** Keeps some ids in stock, since an edit cannot wait for the network. */
   async #lease(): Promise<void> {
-    if (this.#isLeasing || this.#isDisposed || !this.#options.canEdit || this.#blocks.remaining >= LEASE_BELOW) return;
-    this.#isLeasing = true;
-    const block = await this.#options.transport.lease();
-    this.#isLeasing = false;
-    if (block) this.#blocks.addBlock(block);
-    else this.#options.schedule(() => void this.#lease(), RETRY_DELAYS[2] as number);
+    if (this.#isLeasing || this.#isDisposed || !this.#options.canEdit) return;
+    for (let wanted = this.#ids.findWanted(LEASE_BELOW); wanted; wanted = this.#ids.findWanted(LEASE_BELOW)) {
+      this.#isLeasing = true;
+      const lease = await this.#options.transport.lease(wanted.for);
+      this.#isLeasing = false;
+      if (this.#isDisposed) return;
+      if (!lease) {
+        this.#options.schedule(() => void this.#lease(), RETRY_DELAYS[2] as number);
+        return;
+      }
+      if (lease.given) this.#ids.addGiven(lease.given);
+      if (lease.block) this.#ids.addBlock(lease.block);
+      else this.#ids.markUsedUp(wanted.for);
+    }
   }
 
   /**
@@ -206,6 +216,7 @@ export class EditorStore {
   #enqueue(label: string, operations: readonly Operation[], applied: Applied): number {
     const clientSeq = this.#nextClientSeq++;
     this.#shown = applied.space;
+    this.#ids.record(operations);
     this.#pending = [...this.#pending, { clientSeq, label, operations }];
     // Edits of one turn go in one request.
     queueMicrotask(() => this.#send());
@@ -229,6 +240,9 @@ export class EditorStore {
       );
     this.#confirmed = applied.value;
     this.#seq = transaction.seq;
+    this.#ids.record(transaction.operations);
+    // Another choice of NodeIds needs other blocks.
+    if (transaction.operations.some((o) => o.kind === "setHeader" && o.field === "idPolicy")) void this.#lease();
     if (transaction.clientId === this.clientId && this.#acknowledge(transaction.clientSeq, transaction.at)) return;
     this.#history = recordForeign(this.#history, transaction);
     this.#rebase([transaction]);

@@ -3,6 +3,7 @@
  * inverse; what it gives is asked for among everything that was ever taken away.
  */
 import { findRetired, type RetiredNodeId } from "../db/repositories/node-ids.server";
+import type { Node } from "../domain/address-space/node";
 import { formatNodeId } from "../domain/address-space/node-id";
 import type { QualifiedName } from "../domain/address-space/qualified-name";
 import { problem, type Problem } from "../domain/core/result";
@@ -24,12 +25,14 @@ function addHolders(holders: Map<string, RetiredNodeId>, operation: Operation): 
 
 /** The nodes that an operation gives NodeIds to. */
 function listHolders(operation: Operation): RetiredNodeId[] {
-  return listGivenNodeIds(operation).map(({ key, nodeId, node }) => ({
-    nodeId: formatNodeId(nodeId),
-    nodeKey: key,
-    nodeClass: node?.nodeClass ?? null,
-    browseName: node ? formatName(node.browseName) : null,
-  }));
+  return listGivenNodeIds(operation).map(({ key, nodeId, node }) =>
+    node ? toRetired(node) : { nodeId: formatNodeId(nodeId), nodeKey: key, nodeClass: null, browseName: null },
+  );
+}
+
+/** A node whose NodeId no other may get. */
+export function toRetired({ key, nodeId, nodeClass, browseName }: Node): RetiredNodeId {
+  return { nodeId: formatNodeId(nodeId), nodeKey: key, nodeClass, browseName: formatName(browseName) };
 }
 
 function formatName({ namespaceUri, name }: QualifiedName): string {

@@ -4,10 +4,9 @@ import type { Caller } from "../auth/caller.server";
 import type { ModelRow } from "../db/repositories/models.server";
 import type { NodeKey } from "../domain/address-space/node-id";
 import { fail, ok, problem, type Result } from "../domain/core/result";
-import { BlockAllocator } from "../domain/editing/allocate-node-id";
 import { rollOutMachines } from "../domain/instantiation/roll-out-machines";
 import { newId } from "../utils/ids.server";
-import { leaseNodeIds, MAX_LEASE_SIZE } from "./lease-node-ids.server";
+import { makeWithIds } from "./lease-node-ids.server";
 import { appendTransactions, loadWorkingModel } from "./working-model.server";
 
 const key = z
@@ -46,12 +45,11 @@ export async function rollOut(
   intent: RollOutIntent,
 ): Promise<Result<{ first: NodeKey | undefined }>> {
   const clientId = `roll-out-${newId()}`;
-  const lease = await leaseNodeIds(model, clientId, author.userId, MAX_LEASE_SIZE);
-  if (!lease.ok) return lease;
   const working = await loadWorkingModel(model.id);
   if (!working) return fail(problem("request.not-found"));
-  const ids = BlockAllocator.forModel(() => working.space, [lease.value]);
-  const edit = rollOutMachines(working.space, ids, intent);
+  const edit = await makeWithIds(author, model, clientId, working.space, (ids, stock) =>
+    rollOutMachines(working.space, ids, intent, stock.ledger),
+  );
   if (!edit.ok) return edit;
   const outcome = await appendTransactions(model.id, author, {
     clientId,

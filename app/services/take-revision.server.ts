@@ -22,7 +22,7 @@ import { applyConsequences, type Consequence } from "../domain/instantiation/con
 import { listMachines } from "../domain/instantiation/list-machines";
 import { describeUpdate, listMachineUpdates, type UpdateFact } from "../domain/instantiation/machine-updates";
 import { toRequiredEntry } from "./create-model.server";
-import { leaseNodeIds, MAX_LEASE_SIZE } from "./lease-node-ids.server";
+import { makeWithIds } from "./lease-node-ids.server";
 import { loadState } from "./load-revision.server";
 import { movePin } from "./pins.server";
 import { resolveRequiredModels, type RequiredLayer } from "./required-models.server";
@@ -95,15 +95,13 @@ export async function previewRevision(model: ModelRow, modelUri: string, number:
 
 /** Problems: as above, those of the commands, `transactions.stale`. */
 export async function takeRevision(author: Caller, model: ModelRow, intent: TakeRevisionIntent): Promise<Result<null>> {
-  const lease = await leaseNodeIds(model, intent.clientId, author.userId, MAX_LEASE_SIZE);
-  if (!lease.ok) return lease;
   const planned = await plan(model, intent.modelUri, intent.number);
   if (!planned.ok) return planned;
   const { working, pin, moved, pins, updates } = planned.value;
   const chosen = new Set(intent.machines);
   const followers = updates.filter(({ machine }) => chosen.has(machine));
-  const ids = BlockAllocator.forModel(() => planned.value.after, [lease.value]);
-  const edit = makeEdit(planned.value, ids, followers.flatMap((update) => update.consequences));
+  const consequences = followers.flatMap((update) => update.consequences);
+  const edit = await makeWithIds(author, model, intent.clientId, planned.value.after, (ids) => makeEdit(planned.value, ids, consequences));
   if (!edit.ok) return edit;
   const left = updates.filter(({ machine, follows, consequences }) => !chosen.has(machine) && follows !== moved.number && consequences.length > 0);
   const behind = Object.fromEntries(left.map(({ machine, follows }) => [machine, follows]));

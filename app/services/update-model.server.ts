@@ -2,10 +2,12 @@ import type { Caller } from "../auth/caller.server";
 import { writeBatch } from "../db/client.server";
 import { addAuditStatement } from "../db/repositories/audit.server";
 import { removeModelStatement, updateModelStatement, type ModelRow } from "../db/repositories/models.server";
+import { addRetiredStatements } from "../db/repositories/node-ids.server";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import { publish } from "./event-hub.server";
 import { isInLibrary, listDependents } from "./required-models.server";
-import { forgetWorkingModel, inModelTurn } from "./working-model.server";
+import { toRetired } from "./retire-node-ids.server";
+import { forgetWorkingModel, inModelTurn, loadWorkingModel } from "./working-model.server";
 
 /** The name that the team gives the model; namespace and version belong to its contents. */
 export async function renameModel(author: Caller, model: ModelRow, name: string): Promise<void> {
@@ -20,7 +22,7 @@ export async function renameModel(author: Caller, model: ModelRow, name: string)
 }
 
 /**
- * Deletes a model with its history and sheets; the ledger of its identifiers stays, so that none is given again.
+ * Deletes a model with its history and sheets; its NodeIds stay in the ledger, so that none is given again.
  * Problem: `model.required-by-others`, unless the library has the same namespace for them to fall back on.
  */
 export async function deleteModel(author: Caller, model: ModelRow): Promise<Result<null>> {
@@ -28,8 +30,10 @@ export async function deleteModel(author: Caller, model: ModelRow): Promise<Resu
   const users = isElsewhere ? [] : await listDependents(model.organizationId, model.namespaceUri);
   if (users.length > 0) return fail(problem("model.required-by-others", { names: users.join(", ") }));
   await inModelTurn(model.id, async () => {
+    const nodes = (await loadWorkingModel(model.id))?.space.listOwnNodes() ?? [];
     await writeBatch([
       removeModelStatement(model.id),
+      ...addRetiredStatements(model.organizationId, nodes.map(toRetired)),
       addAuditStatement({ ...describe(author, model), action: "model.delete", details: { namespaceUri: model.namespaceUri } }),
     ]);
     forgetWorkingModel(model.id);

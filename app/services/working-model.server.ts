@@ -18,7 +18,7 @@ import {
   type AcceptedTransaction,
   type ModelRow,
 } from "../db/repositories/models.server";
-import { addRetiredStatement, HIGHEST_LEASED_IDENTIFIER, raiseLedgerStatement } from "../db/repositories/node-ids.server";
+import { addRetiredStatements, HIGHEST_LEASED_IDENTIFIER, raiseLedgerStatement } from "../db/repositories/node-ids.server";
 import type { PinRow } from "../db/schema/models";
 import { AddressSpace } from "../domain/address-space/address-space";
 import { getOwnNamespace } from "../domain/address-space/model-header";
@@ -31,9 +31,11 @@ import { logError } from "../utils/log.server";
 import { singleton } from "../utils/singleton.server";
 import { describeHeader } from "./describe-header.server";
 import { publish } from "./event-hub.server";
+import { listMovedWaivers } from "./move-waivers.server";
 import { forgetNewestLayer, keepNewestLayer, loadNewestLayer } from "./own-layer.server";
 import { choosePins } from "./pins.server";
 import { findGivenTwice, listRetired } from "./retire-node-ids.server";
+import { voidApprovals } from "./void-approvals.server";
 import { areLayersCurrent, resolveRequiredModels, type RequiredLayer } from "./required-models.server";
 
 export type WorkingModel = {
@@ -139,6 +141,8 @@ export type AppendIntent = {
   readonly pins?: readonly PinRow[];
   /** The window that asked for it, which loads anew by itself. */
   readonly window?: string;
+  /** Approvals of a running review stay: only the version of a release is written in. */
+  readonly keepsApprovals?: true;
 };
 export type AppendOutcome =
   | { readonly kind: "accepted"; readonly head: number; readonly accepted: readonly AcceptedTransaction[] }
@@ -175,13 +179,14 @@ async function append(modelId: string, author: Caller, intent: AppendIntent): Pr
   if (givenTwice.length > 0) return { kind: "refused", head: working.seq, problems: givenTwice, accepted };
   try {
     if (intent.pins) publish(`model:${modelId}`, { pinned: true, by: intent.window ?? clientId });
-    await save(applied.value.working, author, applied.value.added);
+    await save(start.space, applied.value.working, author, applied.value.added);
   } catch (error) {
     // The database refuses a number that another process has given meanwhile; then we were too late like any other window.
     if ((await findModel(modelId))?.headSeq === working.seq) throw error;
     forgetWorkingModel(modelId);
     return append(modelId, author, intent);
   }
+  if (!intent.keepsApprovals) await voidApprovals(working.model, author);
   const added = applied.value.added.map(({ clientSeq, seq, at }) => ({ clientSeq, seq, at }));
   return { kind: "accepted", head: applied.value.working.seq, accepted: [...accepted, ...added] };
 }
@@ -233,7 +238,7 @@ async function withChangedModels(before: WorkingModel, after: WorkingModel): Pro
   return ok({ ...after, ...required, space, model: { ...after.model, pins } });
 }
 
-async function save(working: WorkingModel, author: Caller, added: readonly Transaction[]): Promise<void> {
+async function save(before: AddressSpace, working: WorkingModel, author: Caller, added: readonly Transaction[]): Promise<void> {
   const { model, space, seq } = working;
   const now = new Date();
   const topic = `model:${model.id}`;
@@ -242,7 +247,8 @@ async function save(working: WorkingModel, author: Caller, added: readonly Trans
   for (const entry of added) statements.push(addTransactionStatement(model.id, author.userId, entry));
   const highest = findHighestGiven(model.namespaceUri, added);
   if (highest > 0) statements.push(raiseLedgerStatement(model.organizationId, model.namespaceUri, highest));
-  for (const retired of listRetired(added)) statements.push(addRetiredStatement(model.organizationId, retired));
+  statements.push(...addRetiredStatements(model.organizationId, listRetired(added)));
+  statements.push(...(await listMovedWaivers(model.id, before, space, added.flatMap((entry) => entry.operations))));
   const firstEvent = statements.length;
   for (const entry of added) statements.push(addEventStatement(topic, entry.seq, now));
   const results = await writeBatch(statements as [Statement, ...Statement[]]);

@@ -102,7 +102,7 @@ test("refuses a body that is no operation, with the field named", async () => {
 
 test("leases blocks that never overlap, also after the model was deleted and imported again", async () => {
   const lease = async (id: string, clientId: string) =>
-    (await (await app.call("POST", `/models/${id}/lease`, { cookie, json: { clientId } })).json()) as { from: number; to: number };
+    ((await (await app.call("POST", `/models/${id}/lease`, { cookie, json: { clientId } })).json()) as { block: { from: number; to: number } }).block;
   const blocks = await Promise.all(["a", "b", "c"].map((client) => lease(modelId, client)));
   const sorted = [...blocks].sort((a, b) => a.from - b.from);
   expect(sorted[0]?.from).toBeGreaterThan(1003);

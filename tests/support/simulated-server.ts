@@ -123,7 +123,7 @@ export class SimulatedWindow {
         return { kind: "unreachable" };
       },
       listSince: async (seq) => (this.isOnline ? this.server.list.slice(seq) : undefined),
-      lease: async () => (this.isOnline ? { from: 5000, to: 5999 } : undefined),
+      lease: async () => (this.isOnline ? { block: { from: 5000, to: 5999 } } : undefined),
     };
   }
 }

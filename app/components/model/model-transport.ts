@@ -1,7 +1,8 @@
 /** The requests of the open model: transactions, leases of NodeIds, presence. What comes in is checked before it is used. */
-import { isBlock, isEmptyPage, isPosted, isRefused, parseWith } from "./read-answers";
+import { isEmptyPage, isLease, isPosted, isRefused, parseWith } from "./read-answers";
+import type { BlockFor } from "~/domain/editing/id-stock";
 import type { Transaction } from "~/domain/editing/operation";
-import type { OutgoingTransaction, PostOutcome, SyncTransport } from "~/editor/sync-transport";
+import type { IdLease, OutgoingTransaction, PostOutcome, SyncTransport } from "~/editor/sync-transport";
 
 const TIMEOUT = 20_000;
 
@@ -57,11 +58,12 @@ export class ModelTransport implements SyncTransport {
   }
 
   /** A block of numeric ids of one's own; undefined while the server cannot be reached. */
-  async lease(): Promise<{ readonly from: number; readonly to: number } | undefined> {
-    const answer = await this.#send("lease", { clientId: this.clientId });
+  async lease(nodeClass: BlockFor): Promise<IdLease | undefined> {
+    const answer = await this.#send("lease", { clientId: this.clientId, ...(nodeClass ? { nodeClass } : {}) });
     if (!answer?.ok) return undefined;
-    const block: unknown = await answer.json().catch(() => undefined);
-    return isBlock(block) ? block : undefined;
+    const lease: unknown = await answer.json().catch(() => undefined);
+    if (!isLease(lease)) return undefined;
+    return lease.block && nodeClass ? { ...lease, block: { ...lease.block, nodeClass } } : lease;
   }
 
   async tellPresence(place: string, selection: readonly string[]): Promise<void> {

@@ -3,8 +3,7 @@
  * operations of others come in.
  */
 import type { Problem } from "~/domain/core/result";
-import type { IdBlock } from "~/domain/editing/allocate-node-id";
-import type { AcceptedTransaction } from "~/editor/sync-transport";
+import type { AcceptedTransaction, IdLease } from "~/editor/sync-transport";
 
 type Members = Readonly<Record<string, unknown>>;
 
@@ -26,9 +25,11 @@ export function isRefused(body: unknown): body is { problems: readonly Problem[]
   return Array.isArray(problems) && problems.every((found) => typeof toMembers(found).code === "string");
 }
 
-export function isBlock(body: unknown): body is IdBlock {
-  const { from, to } = toMembers(body);
-  return isCount(from) && isCount(to);
+export function isLease(body: unknown): body is IdLease {
+  const { block, given } = toMembers(body);
+  const { from, to } = toMembers(block);
+  const isBlock = block === undefined || (isCount(from) && isCount(to));
+  return isBlock && (given === undefined || (Array.isArray(given) && given.every((id) => typeof id === "string")));
 }
 
 /** Nothing happened meanwhile, which is the usual answer when a page opens. */

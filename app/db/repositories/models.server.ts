@@ -130,6 +130,21 @@ export async function listTransactions(modelId: string, since: number, limit: nu
   return rows.map(toTransaction);
 }
 
+/** The newest transactions that gave nodes other NodeIds; the caller looks at the operations themselves. */
+export async function listRenumberingTransactions(modelId: string, limit: number): Promise<Transaction[]> {
+  const renumbers = or(
+    like(transaction.operations, '%"kind":"renumber"%'),
+    like(transaction.operations, '%"attribute":"nodeId"%'),
+  );
+  const rows = await getDatabase()
+    .select()
+    .from(transaction)
+    .where(and(eq(transaction.modelId, modelId), renumbers))
+    .orderBy(desc(transaction.seq))
+    .limit(limit);
+  return rows.map(toTransaction);
+}
+
 export async function findTransaction(modelId: string, seq: number): Promise<Transaction | undefined> {
   const [row] = await getDatabase()
     .select()

@@ -27,6 +27,10 @@ export async function listWaivers(modelId: string): Promise<StoredWaiver[]> {
   }));
 }
 
+export function listWaiverRows(modelId: string): Promise<WaiverRow[]> {
+  return getDatabase().select().from(findingWaiver).where(eq(findingWaiver.modelId, modelId));
+}
+
 export async function findWaiver(modelId: string, id: string): Promise<WaiverRow | undefined> {
   const [row] = await getDatabase()
     .select()

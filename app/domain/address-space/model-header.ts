@@ -1,4 +1,5 @@
 /** What a NodeSet2 file says of itself, beside its nodes (OPC 10000-6 §F.3–F.5). */
+import type { IdPolicy } from "./id-policy";
 import type { NodeKey } from "./node-id";
 import type { Leftover, RolePermission, XmlText } from "./node";
 
@@ -32,6 +33,8 @@ export type ModelHeader = {
   readonly otherElements?: readonly XmlText[];
   /** Of the root ("") and of the tables of the head: `Models/Model:URI`, `Aliases/Alias:HasComponent`. */
   readonly leftovers?: readonly Leftover[];
+  /** How new NodeIds are chosen; absent is numbers one after the other. Not part of a file. */
+  readonly idPolicy?: IdPolicy;
 };
 
 /** The namespace that the model defines: the first row of Models, else the first namespace of the table. */

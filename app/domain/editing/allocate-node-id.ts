@@ -10,7 +10,12 @@ import type { NodeClass } from "../address-space/node";
 import { fail, ok, problem, type Result } from "../core/result";
 
 /** A leased block; `to` is the last id that belongs to it. */
-export type IdBlock = { readonly from: number; readonly to: number };
+export type IdBlock = {
+  readonly from: number;
+  readonly to: number;
+  /** The class that it was leased for, where classes have ranges of their own. */
+  readonly nodeClass?: NodeClass;
+};
 
 /** Where the node will stand, for policies that make the id from it. */
 export type NewNodePlace = {
@@ -22,6 +27,28 @@ export type NewNodePlace = {
 /** What commands take new NodeIds from. Class and place are told so that a policy may number by them; see id-policies.ts. */
 export interface NodeIdAllocator {
   allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId>;
+}
+
+/** Numbers that no lease reaches. */
+const FIRST_SCRATCH = 3_600_000_000;
+
+/** For a trial of a command, whose edit is thrown away: gives scratch ids and counts how many of each class it takes. */
+export class CountingAllocator implements NodeIdAllocator {
+  readonly counts = new Map<NodeClass, number>();
+  readonly #space: AddressSpace;
+  #next = FIRST_SCRATCH;
+
+  constructor(space: AddressSpace) {
+    this.#space = space;
+  }
+
+  allocate(nodeClass: NodeClass): Result<NodeId> {
+    this.counts.set(nodeClass, (this.counts.get(nodeClass) ?? 0) + 1);
+    for (;;) {
+      const nodeId = numericNodeId(getOwnNamespace(this.#space.own.header), this.#next++);
+      if (!this.#space.findByNodeId(nodeId) && !this.#space.getNode(toNodeKey(nodeId))) return ok(nodeId);
+    }
+  }
 }
 
 /** Hands out the ids of leased blocks. It is the one thing here that remembers: ids are used up, whatever becomes of them. */
@@ -49,7 +76,14 @@ export class BlockAllocator implements NodeIdAllocator {
   }
 
   addBlock(block: IdBlock): void {
-    this.#blocks = [...this.#blocks, block];
+    this.#blocks = [...this.#blocks, { from: block.from, to: block.to }];
+  }
+
+  /** Drops what stands outside of a range. */
+  keepWithin({ from, to }: IdBlock): void {
+    this.#blocks = this.#blocks
+      .map((block) => ({ from: Math.max(block.from, from), to: Math.min(block.to, to) }))
+      .filter((block) => block.from <= block.to);
   }
 
   /** The blocks as they are now, to be kept over a reload of the window. */

@@ -1,9 +1,9 @@
 /**
- * How new NodeIds are chosen beside the plain block of numbers: in a range of its own for each node class, or as a path of
- * names (`B1.Gearbox.Vibration`) for the nodes of machines. `NodeIdLedger` remembers every NodeId that was ever given in a
+ * NodeIds as paths of names (`B1.Gearbox.Vibration`) for the nodes of machines. `NodeIdLedger` remembers every NodeId that was ever given in a
  * namespace, so that no policy gives one twice, also after deletion, renumbering or import.
  */
-import { formatNodeId, type NodeId } from "../address-space/node-id";
+import { PATH_PLACE } from "../address-space/id-policy";
+import { formatNodeId, toNodeKey, type NodeId } from "../address-space/node-id";
 import { findModellingRule } from "../address-space/browse";
 import { isTypeNode, type NodeClass } from "../address-space/node";
 import { fail, ok, problem, type Result } from "../core/result";
@@ -32,24 +32,13 @@ export class NodeIdLedger {
     this.#given.add(formatNodeId(id));
   }
 
+  addText(nodeId: string): void {
+    this.#given.add(nodeId);
+  }
+
   /** NodeId texts, to be kept. */
   list(): string[] {
     return [...this.#given];
-  }
-}
-
-/** Numbers from a range of its own for each class that has one; other classes take from `fallback`. */
-export class ClassRangeAllocator implements NodeIdAllocator {
-  readonly #byClass: ReadonlyMap<NodeClass, NodeIdAllocator>;
-  readonly #fallback: NodeIdAllocator;
-
-  constructor(byClass: ReadonlyMap<NodeClass, NodeIdAllocator>, fallback: NodeIdAllocator) {
-    this.#byClass = byClass;
-    this.#fallback = fallback;
-  }
-
-  allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId> {
-    return (this.#byClass.get(nodeClass) ?? this.#fallback).allocate(nodeClass, place);
   }
 }
 
@@ -66,25 +55,35 @@ export class PathAllocator implements NodeIdAllocator {
   readonly #separator: string;
   readonly #ledger: NodeIdLedger;
   readonly #numbers: NodeIdAllocator;
+  readonly #pattern: string;
 
-  constructor(namespaceUri: string, ledger: NodeIdLedger, numbers: NodeIdAllocator, separator = ".") {
+  constructor(
+    namespaceUri: string,
+    ledger: NodeIdLedger,
+    numbers: NodeIdAllocator,
+    separator = ".",
+    pattern: string = PATH_PLACE,
+  ) {
     this.#namespaceUri = namespaceUri;
     this.#ledger = ledger;
     this.#numbers = numbers;
     this.#separator = separator;
+    this.#pattern = pattern;
   }
 
   allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId> {
     if (!place || nodeClass.endsWith("Type") || isInType(place)) return this.#numbers.allocate(nodeClass, place);
     const parent = place.parent === undefined ? undefined : place.space.getNode(place.parent)?.nodeId;
     const isOwnPath = parent?.type === "s" && parent.namespaceUri === this.#namespaceUri;
-    const path = isOwnPath ? `${parent.identifier}${this.#separator}${place.name}` : place.name;
+    const path = isOwnPath
+      ? `${parent.identifier}${this.#separator}${place.name}`
+      : this.#pattern.replace(PATH_PLACE, () => place.name);
     for (let suffix = 1; suffix <= MAX_SUFFIX; suffix++) {
       const identifier = suffix === 1 ? path : `${path}_${suffix}`;
       const nodeId: NodeId = { namespaceUri: this.#namespaceUri, type: "s", identifier };
-      if (this.#ledger.has(nodeId) || place.space.findByNodeId(nodeId)) continue;
-      this.#ledger.add(nodeId);
-      return ok(nodeId);
+      const isTaken = place.space.findByNodeId(nodeId) ?? place.space.getNode(toNodeKey(nodeId));
+      // What a command takes is recorded when its edit is made: one that fails uses no path up.
+      if (!isTaken && !this.#ledger.has(nodeId)) return ok(nodeId);
     }
     return fail(problem("node-id.path-used-up", { path }));
   }

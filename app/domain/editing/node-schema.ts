@@ -5,6 +5,13 @@
  */
 import * as z from "zod/mini";
 import { parseNodeId, MAX_NUMERIC_IDENTIFIER, type NodeId, type NodeKey } from "../address-space/node-id";
+import {
+  checkIdPolicy,
+  HIGHEST_ALLOCATED,
+  NODE_CLASSES,
+  PATH_SEPARATORS,
+  type IdPolicy,
+} from "../address-space/id-policy";
 import type { ModelEntry, ModelHeader } from "../address-space/model-header";
 import type { Node, NodeClass } from "../address-space/node";
 import { isWritableText } from "../nodeset/values/scalar-text";
@@ -204,6 +211,23 @@ export const modelEntrySchema: z.ZodMiniType<ModelEntry> = z.strictObject({
   otherElements: z.optional(z.array(xmlText)),
 });
 
+const idRange = z.strictObject({
+  from: z.int().check(z.minimum(1), z.maximum(HIGHEST_ALLOCATED)),
+  to: z.int().check(z.minimum(1), z.maximum(HIGHEST_ALLOCATED)),
+});
+
+export const idPolicySchema: z.ZodMiniType<IdPolicy> = z
+  .discriminatedUnion("kind", [
+    z.strictObject({ kind: z.literal("numbers") }),
+    z.strictObject({ kind: z.literal("ranges"), ranges: z.partialRecord(z.enum(NODE_CLASSES), idRange) }),
+    z.strictObject({
+      kind: z.literal("paths"),
+      pattern: text.check(z.maxLength(200)),
+      separator: z.enum(PATH_SEPARATORS),
+    }),
+  ])
+  .check(z.refine((policy) => checkIdPolicy(policy).length === 0, "Is no usable choice of NodeIds"));
+
 export const headerShape = {
   namespaceUris: z.array(someText),
   serverUris: z.optional(z.array(text)),
@@ -215,6 +239,7 @@ export const headerShape = {
   rootAttributes: z.optional(otherAttributes),
   otherElements: z.optional(z.array(xmlText)),
   leftovers: z.optional(leftovers),
+  idPolicy: z.optional(idPolicySchema),
 };
 
 export const modelHeaderSchema = z.strictObject(headerShape) satisfies z.ZodMiniType<ModelHeader>;

@@ -27,7 +27,7 @@ export type RollOutRow = {
   readonly optional?: readonly string[];
 };
 
-/** Numbers from the block, or string ids along the path below a name that a pattern gives the machine. */
+/** As the model chooses its NodeIds, or string ids along the path below a name that a pattern gives the machine. */
 export type NodeIdPolicy =
   | { readonly kind: "numbers" }
   | {
@@ -55,14 +55,19 @@ const MACHINE_IDENTIFICATION = toNodeKey(numericNodeId(MACHINERY_URI, 1012));
  * The machines come first in `made`, each before its members. Problems: those of `instantiate` and of `setValue`,
  * `roll-out.pattern`, `roll-out.node-id-taken`.
  */
-export function rollOutMachines(space: AddressSpace, numbers: CommandContext, intent: RollOutIntent): Result<Edit> {
+export function rollOutMachines(
+  space: AddressSpace,
+  numbers: CommandContext,
+  intent: RollOutIntent,
+  ledger = new NodeIdLedger(),
+): Result<Edit> {
   const { nodeIds, parent } = intent;
   if (nodeIds.kind === "path") {
     if (!/\{(name|serial)\}/.test(nodeIds.pattern)) return fail(problem("roll-out.pattern", { pattern: nodeIds.pattern }));
-    const taken = findTakenId(space, nodeIds.pattern, intent.rows);
+    const taken = findTakenId(space, nodeIds.pattern, intent.rows, ledger);
     if (taken !== undefined) return fail(problem("roll-out.node-id-taken", { nodeId: taken }));
   }
-  const context = nodeIds.kind === "path" ? new MachineIds(space, parent, nodeIds, numbers) : numbers;
+  const context = nodeIds.kind === "path" ? new MachineIds(space, parent, nodeIds, numbers, ledger) : numbers;
   const sequence = new EditSequence(space, context);
   for (const row of intent.rows) {
     if (context instanceof MachineIds) context.row = row;
@@ -87,12 +92,18 @@ export function fillPattern(pattern: string, row: RollOutRow): string {
 }
 
 /** The first id of the rows that the model has, or that two rows would share. */
-function findTakenId(space: AddressSpace, pattern: string, rows: readonly RollOutRow[]): string | undefined {
+function findTakenId(
+  space: AddressSpace,
+  pattern: string,
+  rows: readonly RollOutRow[],
+  ledger: NodeIdLedger,
+): string | undefined {
   const namespaceUri = getOwnNamespace(space.own.header);
   const seen = new Set<string>();
   for (const row of rows) {
     const identifier = fillPattern(pattern, row);
-    if (seen.has(identifier) || space.findByNodeId({ namespaceUri, type: "s", identifier })) return `s=${identifier}`;
+    const nodeId: NodeId = { namespaceUri, type: "s", identifier };
+    if (seen.has(identifier) || ledger.has(nodeId) || space.findByNodeId(nodeId)) return `s=${identifier}`;
     seen.add(identifier);
   }
   return undefined;
@@ -105,10 +116,16 @@ class MachineIds implements CommandContext {
   readonly #pattern: string;
   readonly #paths: PathAllocator;
 
-  constructor(space: AddressSpace, parent: NodeKey, policy: Extract<NodeIdPolicy, { kind: "path" }>, numbers: CommandContext) {
+  constructor(
+    space: AddressSpace,
+    parent: NodeKey,
+    policy: Extract<NodeIdPolicy, { kind: "path" }>,
+    numbers: CommandContext,
+    ledger: NodeIdLedger,
+  ) {
     this.#parent = parent;
     this.#pattern = policy.pattern;
-    this.#paths = new PathAllocator(getOwnNamespace(space.own.header), new NodeIdLedger(), numbers, policy.separator);
+    this.#paths = new PathAllocator(getOwnNamespace(space.own.header), ledger, numbers, policy.separator);
   }
 
   allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId> {

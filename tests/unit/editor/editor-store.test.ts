@@ -85,7 +85,7 @@ function openWindow(server: FakeServer, clientId: string, hears = true) {
   const transport: SyncTransport = {
     post: async (base, transactions) => server.post(clientId, base, transactions),
     listSince: async (seq) => (server.isReachable ? server.list.slice(seq) : undefined),
-    lease: async () => ({ from: 5000, to: 5999 }),
+    lease: async () => ({ block: { from: 5000, to: 5999 } }),
   };
   const store = new EditorStore({
     space: start,

@@ -1,16 +1,18 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { formatNodeId, numericNodeId, standardKey, type NodeId, type NodeKey } from "~/domain/address-space/node-id";
-import type { NodeClass } from "~/domain/address-space/node";
+import { checkIdPolicy, type IdPolicy } from "~/domain/address-space/id-policy";
 import { StandardDataType, StandardType } from "~/domain/address-space/standard-ids";
-import { BlockAllocator } from "~/domain/editing/allocate-node-id";
+import { BlockAllocator, type IdBlock } from "~/domain/editing/allocate-node-id";
 import { applyOperation } from "~/domain/editing/apply-operation";
 import { addEnumeration } from "~/domain/editing/commands/add-enumeration";
 import { addMethod, addObject, addVariable } from "~/domain/editing/commands/add-member";
 import { addStructure } from "~/domain/editing/commands/add-structure";
 import { addType } from "~/domain/editing/commands/add-type";
+import { setIdPolicy } from "~/domain/editing/commands/set-id-policy";
 import { renumberNodes } from "~/domain/editing/commands/renumber-nodes";
-import { ClassRangeAllocator, NodeIdLedger, PathAllocator } from "~/domain/editing/id-policies";
+import { NodeIdLedger, PathAllocator } from "~/domain/editing/id-policies";
+import { IdStock } from "~/domain/editing/id-stock";
 import { instantiate } from "~/domain/instantiation/instantiate";
 import { planNodeIds, readNodeIdsCsv, writeNodeIdsCsv } from "~/domain/nodeset/node-ids-csv";
 import { Workbench } from "../../../support/command-harness";
@@ -20,14 +22,74 @@ import { makeNode, makeSpace, TEST_NAMESPACE } from "../../../support/small-stan
 const id = (identifier: number): NodeId => numericNodeId(TEST_NAMESPACE, identifier);
 
 describe("policies", () => {
+  const stockOf = (policy: IdPolicy, blocks: readonly IdBlock[], given: readonly string[] = []): IdStock => {
+    const space = makeSpace();
+    return new IdStock(() => space.withHeader({ ...space.own.header, idPolicy: policy }), blocks, given);
+  };
+  const ranges: IdPolicy = {
+    kind: "ranges",
+    ranges: { Variable: { from: 6000, to: 6002 }, Method: { from: 7000, to: 7999 } },
+  };
+
   it("number by class, each in its range", () => {
-    const ranges = new Map<NodeClass, BlockAllocator>([
-      ["Variable", new BlockAllocator(TEST_NAMESPACE, [{ from: 6000, to: 6999 }])],
-      ["Method", new BlockAllocator(TEST_NAMESPACE, [{ from: 7000, to: 7999 }])],
+    const stock = stockOf(ranges, [
+      { from: 1000, to: 1999 },
+      { from: 6000, to: 6002, nodeClass: "Variable" },
+      { from: 7000, to: 7099, nodeClass: "Method" },
     ]);
-    const allocator = new ClassRangeAllocator(ranges, new BlockAllocator(TEST_NAMESPACE, [{ from: 1000, to: 1999 }]));
-    const given = (["Object", "Variable", "Method", "Variable"] as const).map((c) => allocator.allocate(c));
+    const given = (["Object", "Variable", "Method", "Variable"] as const).map((c) => stock.allocate(c));
     expect(given.map((r) => r.ok && r.value.identifier)).toEqual([1000, 6000, 7000, 6001]);
+  });
+
+  it("ask for blocks of the ranges that run low, and say when a range is used up", () => {
+    const stock = stockOf(ranges, [{ from: 1000, to: 1999 }]);
+    const below = { all: 400, each: 2 };
+    expect(stock.findWanted(below)).toEqual({ for: "Variable" });
+    stock.addBlock({ from: 6000, to: 6002, nodeClass: "Variable" });
+    expect(stock.findWanted(below)).toEqual({ for: "Method" });
+    stock.addBlock({ from: 7000, to: 7099, nodeClass: "Method" });
+    expect(stock.findWanted(below)).toBeUndefined();
+    for (let i = 0; i < 3; i++) expect(stock.allocate("Variable").ok).toBe(true);
+    stock.markUsedUp("Variable");
+    expect(stock.findWanted(below)).toBeUndefined();
+    expect(stock.allocate("Variable").problems.map((found) => found.code)).toEqual(["node-id.range-used-up"]);
+    expect(stock.allocate("Object").ok).toBe(true);
+  });
+
+  it("drop what was leased for a range that is another one by now", () => {
+    let policy = ranges;
+    const space = makeSpace();
+    const stock = new IdStock(() => space.withHeader({ ...space.own.header, idPolicy: policy }), [
+      { from: 6000, to: 6002, nodeClass: "Variable" },
+    ]);
+    policy = { kind: "ranges", ranges: { Variable: { from: 6002, to: 6999 } } };
+    expect(stock.findWanted({ all: 0, each: 2 })).toEqual({ for: "Variable" });
+    const next = stock.allocate("Variable");
+    expect(next.ok && next.value.identifier).toBe(6002);
+  });
+
+  it("are refused where they cannot be used", () => {
+    const codes = (policy: IdPolicy): string[] => checkIdPolicy(policy).map((found) => found.code);
+    expect(codes({ kind: "paths", pattern: "Hall2", separator: "." })).toEqual(["id-policy.pattern"]);
+    expect(codes({ kind: "ranges", ranges: { Object: { from: 9, to: 3 } } })).toEqual(["id-policy.range"]);
+    const overlapping = { Object: { from: 1, to: 9 }, Method: { from: 9, to: 12 } };
+    expect(codes({ kind: "ranges", ranges: overlapping })).toEqual(["id-policy.overlap"]);
+    const bench = new Workbench();
+    bench.do(setIdPolicy, { policy: { kind: "paths", pattern: "Hall2.{path}", separator: "." } });
+    expect(bench.space.own.header.idPolicy).toEqual({ kind: "paths", pattern: "Hall2.{path}", separator: "." });
+    expect(bench.refuse(setIdPolicy, { policy: { kind: "paths", pattern: "", separator: "." } })).toEqual([
+      "id-policy.pattern",
+    ]);
+  });
+
+  it("give no path again that somebody gave up, and begin paths as the pattern says", () => {
+    const paths: IdPolicy = { kind: "paths", pattern: "Hall2.{path}", separator: "/" };
+    const stock = stockOf(paths, [{ from: 1000, to: 1999 }], [`nsu=${TEST_NAMESPACE};s=Hall2.B1`]);
+    const place = { space: makeSpace(), parent: standardKey(85), name: "B1" };
+    const second = stock.allocate("Object", place);
+    expect(second.ok && second.value.identifier).toBe("Hall2.B1_2");
+    const type = stock.allocate("ObjectType", { ...place, parent: standardKey(58) });
+    expect(type.ok && type.value.identifier).toBe(1000);
   });
 
   it("name nodes of machines by path and number types and what stands in them", () => {
@@ -53,6 +115,7 @@ describe("policies", () => {
       .filter((n) => n.type === "s")
       .map((n) => n.identifier);
     expect(texts).toEqual(["B1", "B1.Vibration", "B1.Gearbox", "B1.Gearbox.Vibration"]);
+    for (const node of bench.space.listOwnNodes()) ledger.add(node.nodeId);
     const again = paths.allocate("Object", { space: makeSpace(), parent: undefined, name: "B1" });
     expect(again.ok && again.value.identifier).toBe("B1_2");
   });

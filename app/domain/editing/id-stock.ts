@@ -1,0 +1,114 @@
+/**
+ * The ids that a window or a server's command has in stock: blocks of numbers that the server leased, and the memory of
+ * every string identifier that was given. New NodeIds are chosen by the policy that the model then has.
+ */
+import type { AddressSpace } from "../address-space/address-space";
+import { NODE_CLASSES, NUMBERS, type IdPolicy, type IdRange } from "../address-space/id-policy";
+import { getOwnNamespace } from "../address-space/model-header";
+import type { NodeClass } from "../address-space/node";
+import { toNodeKey, type NodeId } from "../address-space/node-id";
+import { fail, problem, type Result } from "../core/result";
+import { BlockAllocator, type IdBlock, type NewNodePlace, type NodeIdAllocator } from "./allocate-node-id";
+import { NodeIdLedger, PathAllocator } from "./id-policies";
+import type { Operation } from "./operation";
+
+/** Which block is asked for: that of a class, or the one for all that has no range. */
+export type BlockFor = NodeClass | undefined;
+
+export class IdStock implements NodeIdAllocator {
+  readonly ledger: NodeIdLedger;
+  readonly #getSpace: () => AddressSpace;
+  readonly #blocks = new Map<BlockFor, BlockAllocator>();
+  readonly #usedUp = new Map<BlockFor, string>();
+
+  /** `given`: NodeId texts that were given in the namespace and that the model does not have any more. */
+  constructor(getSpace: () => AddressSpace, blocks: readonly IdBlock[], given: Iterable<string> = []) {
+    this.#getSpace = getSpace;
+    this.ledger = new NodeIdLedger(given);
+    for (const block of blocks) this.addBlock(block);
+  }
+
+  /** Problems: `node-id.block-empty`, `node-id.range-used-up`, `node-id.path-used-up`. */
+  allocate(nodeClass: NodeClass, place?: NewNodePlace): Result<NodeId> {
+    const policy = this.#policy;
+    const range = findRange(policy, nodeClass);
+    if (range && this.#usedUp.get(nodeClass) === toText(range) && this.#remainingIn(nodeClass) === 0)
+      return fail(problem("node-id.range-used-up", { nodeClass, ...range }));
+    if (range) return this.#blockOf(nodeClass).allocate(nodeClass);
+    const numbers = this.#blockOf(undefined);
+    if (policy.kind !== "paths") return numbers.allocate(nodeClass);
+    const { pattern, separator } = policy;
+    return new PathAllocator(this.#namespaceUri, this.ledger, numbers, separator, pattern).allocate(nodeClass, place);
+  }
+
+  /** Takes note of what edits give, own and foreign: none of it is given again, also after it was taken away. */
+  record(operations: readonly Operation[]): void {
+    this.ledger.record(operations);
+  }
+
+  addGiven(given: Iterable<string>): void {
+    for (const id of given) this.ledger.addText(id);
+  }
+
+  addBlock(block: IdBlock): void {
+    this.#blockOf(block.nodeClass).addBlock(block);
+  }
+
+  /** The server has no number left for it; that holds until the range is another one. */
+  markUsedUp(wanted: BlockFor): void {
+    const range = wanted && findRange(this.#policy, wanted);
+    this.#usedUp.set(wanted, range ? toText(range) : "");
+  }
+
+  listBlocks(): readonly IdBlock[] {
+    return [...this.#blocks].flatMap(([nodeClass, blocks]) =>
+      blocks.listBlocks().map((block) => (nodeClass === undefined ? block : { ...block, nodeClass })),
+    );
+  }
+
+  /** What should be leased next: fewer ids than `below` are left of it. Blocks outside of a changed range are dropped. */
+  findWanted(below: { readonly all: number; readonly each: number }): { readonly for: BlockFor } | undefined {
+    const policy = this.#policy;
+    for (const nodeClass of NODE_CLASSES) {
+      const range = findRange(policy, nodeClass);
+      if (!range) continue;
+      this.#blockOf(nodeClass).keepWithin(range);
+      const isUsedUp = this.#usedUp.get(nodeClass) === toText(range);
+      if (!isUsedUp && this.#remainingIn(nodeClass) < below.each) return { for: nodeClass };
+    }
+    return this.#remainingIn(undefined) < below.all && !this.#usedUp.has(undefined) ? { for: undefined } : undefined;
+  }
+
+  get #policy(): IdPolicy {
+    return this.#getSpace().own.header.idPolicy ?? NUMBERS;
+  }
+
+  get #namespaceUri(): string {
+    return getOwnNamespace(this.#getSpace().own.header);
+  }
+
+  #remainingIn(wanted: BlockFor): number {
+    return this.#blocks.get(wanted)?.remaining ?? 0;
+  }
+
+  #blockOf(wanted: BlockFor): BlockAllocator {
+    let blocks = this.#blocks.get(wanted);
+    if (!blocks) {
+      const isTaken = (id: NodeId): boolean =>
+        this.ledger.has(id) ||
+        this.#getSpace().findByNodeId(id) !== undefined ||
+        this.#getSpace().getNode(toNodeKey(id)) !== undefined;
+      blocks = new BlockAllocator(this.#namespaceUri, [], isTaken);
+      this.#blocks.set(wanted, blocks);
+    }
+    return blocks;
+  }
+}
+
+export function findRange(policy: IdPolicy, nodeClass: NodeClass): IdRange | undefined {
+  return policy.kind === "ranges" ? policy.ranges[nodeClass] : undefined;
+}
+
+function toText({ from, to }: IdRange): string {
+  return `${from}-${to}`;
+}
