@@ -45,6 +45,8 @@ type RunningRow = {
   readonly target: string;
   readonly steps: readonly TransformStep[];
   sample: Sample;
+  /** What the last evaluation went through, where somebody wants to see it. */
+  path?: Sample[];
 };
 
 type RunningFrame = {
@@ -65,9 +67,16 @@ export class MappingRunner {
   readonly #frames = new Map<string, RunningFrame>();
   readonly #roleStatus = new Map<string, number>();
 
-  constructor(plan: MappingPlan, time = 0) {
+  /** With `keepsPaths`, `trace` answers what each value went through. */
+  constructor(plan: MappingPlan, time = 0, keepsPaths = false) {
     this.#plan = plan;
-    this.#rows = plan.rows.map((row) => ({ plan: row, target: row.row.target, steps: row.makeSteps(), sample: WAITING }));
+    this.#rows = plan.rows.map((row) => ({
+      plan: row,
+      target: row.row.target,
+      steps: row.makeSteps(),
+      sample: WAITING,
+      ...(keepsPaths ? { path: [] } : {}),
+    }));
     this.#rowsByTarget = new Map(this.#rows.map((row) => [row.target, row]));
     this.#samples = new Array<Sample>(plan.slots.size).fill(WAITING);
     const needs = this.#rows.map((row) => this.#listSlots(row, new Set()));
@@ -85,6 +94,11 @@ export class MappingRunner {
   /** The present sample of a Variable; undefined for one that the mapping does not feed. */
   read(target: string): Sample | undefined {
     return this.#rowsByTarget.get(target)?.sample;
+  }
+
+  /** The source's sample and what each step made of it, at the last evaluation; empty before that. */
+  trace(target: string): readonly Sample[] {
+    return this.#rowsByTarget.get(target)?.path ?? [];
   }
 
   /** All Variables with their present samples, in the order of evaluation. */
@@ -219,6 +233,10 @@ function runRow(row: RunningRow, sample: Sample): Sample {
   const { prepare, finish } = row.plan;
   const { steps } = row;
   let at = prepare ? prepare(sample) : sample;
-  for (let i = 0; i < steps.length; i++) at = (steps[i] as TransformStep)(at);
+  if (row.path) row.path = [at];
+  for (let i = 0; i < steps.length; i++) {
+    at = (steps[i] as TransformStep)(at);
+    row.path?.push(at);
+  }
   return finish ? finish(at) : at;
 }

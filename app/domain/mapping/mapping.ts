@@ -30,6 +30,45 @@ export const octetOrders = ["ABCD", "CDAB", "BADC", "DCBA"] as const;
 
 const role = z.string().min(1).max(100);
 
+const registerReferenceSchema = z.strictObject({
+  kind: z.literal("register"),
+  role,
+  table: z.enum(["coil", "discrete-input", "holding-register", "input-register"]),
+  /** Zero-based wire address. */
+  address: z.number().int().min(0).max(65_535),
+  type: z.enum(registerTypes).optional(),
+  order: z.enum(octetOrders).optional(),
+  /** Counts from the least significant bit of the register. */
+  bit: z.number().int().min(0).max(15).optional(),
+});
+
+const tagReferenceSchema = z.strictObject({ kind: z.literal("tag"), role, name: z.string().min(1).max(1_000) });
+
+/** Member names and array indices from the root of a JSON answer. */
+const jsonPathReferenceSchema = z.strictObject({
+  kind: z.literal("json-path"),
+  role,
+  path: z
+    .array(z.union([z.string().max(200), z.number().int().min(0)]))
+    .min(1)
+    .max(32),
+});
+
+/** NodeId text with `nsu=`. */
+const nodeReferenceSchema = z.strictObject({
+  kind: z.literal("opc-ua-node"),
+  role,
+  nodeId: z.string().min(3).max(5_000),
+});
+
+/** What a list of a controller's values can name; the role is said when the list is used. */
+export const tagPlaceSchema = z.discriminatedUnion("kind", [
+  registerReferenceSchema.omit({ role: true }),
+  tagReferenceSchema.omit({ role: true }),
+  jsonPathReferenceSchema.omit({ role: true }),
+  nodeReferenceSchema.omit({ role: true }),
+]);
+
 export const inputReferenceSchema = z.discriminatedUnion("kind", [
   /** A field of process data. `subindex` 0 is the whole of a plain datatype; `image` names one of several layouts. */
   z.strictObject({
@@ -51,28 +90,10 @@ export const inputReferenceSchema = z.discriminatedUnion("kind", [
   /** The worst device status of the roles, as DI DeviceHealthEnumeration. */
   z.strictObject({ kind: z.literal("device-status"), roles: z.array(role).min(1).max(32) }),
   z.strictObject({ kind: z.literal("event-code"), role, code: z.number().int().min(0).max(65_535) }),
-  /** Zero-based wire address. `bit` counts from the least significant bit of the register. */
-  z.strictObject({
-    kind: z.literal("register"),
-    role,
-    table: z.enum(["coil", "discrete-input", "holding-register", "input-register"]),
-    address: z.number().int().min(0).max(65_535),
-    type: z.enum(registerTypes).optional(),
-    order: z.enum(octetOrders).optional(),
-    bit: z.number().int().min(0).max(15).optional(),
-  }),
-  z.strictObject({ kind: z.literal("tag"), role, name: z.string().min(1).max(1_000) }),
-  /** Member names and array indices from the root of a JSON answer. */
-  z.strictObject({
-    kind: z.literal("json-path"),
-    role,
-    path: z
-      .array(z.union([z.string().max(200), z.number().int().min(0)]))
-      .min(1)
-      .max(32),
-  }),
-  /** NodeId text with `nsu=`. */
-  z.strictObject({ kind: z.literal("opc-ua-node"), role, nodeId: z.string().min(3).max(5_000) }),
+  registerReferenceSchema,
+  tagReferenceSchema,
+  jsonPathReferenceSchema,
+  nodeReferenceSchema,
   z.strictObject({ kind: z.literal("constant"), value: z.union([z.number(), z.boolean(), z.string().max(10_000)]) }),
 ]);
 

@@ -3,7 +3,7 @@
  * profiles apply only when the device names such a profile, since other devices use the same numbers otherwise.
  */
 import type { IoddSimpleDatatype } from "../iodd/device-description";
-import { LIMIT_HIGH, LIMIT_LOW, StatusCode } from "./status";
+import { LIMIT_HIGH, LIMIT_LOW, StatusCode, withLimit } from "./status";
 
 /** `status` Good: a name only ("0 = disabled"); otherwise the value is no number and the status says why. */
 export type SpecialValue = { readonly raw: number; readonly text: string; readonly status: number };
@@ -14,8 +14,8 @@ const MEASURING_PROFILES = new Set([10, 11, 12, 13, 16, 17, 18, 19, 20, 21, 22, 
 /** 16 bit (common to several public device manuals): no data, out of range above, out of range below. */
 const PROFILE_VALUES_16: readonly SpecialValue[] = [
   { raw: 32_764, text: "No measurement data", status: StatusCode.Bad_SensorFailure },
-  { raw: 32_760, text: "Out of range (+)", status: StatusCode.Bad_SensorFailure | LIMIT_HIGH },
-  { raw: -32_760, text: "Out of range (−)", status: StatusCode.Bad_SensorFailure | LIMIT_LOW },
+  { raw: 32_760, text: "Out of range (+)", status: withLimit(StatusCode.Bad_SensorFailure, LIMIT_HIGH) },
+  { raw: -32_760, text: "Out of range (−)", status: withLimit(StatusCode.Bad_SensorFailure, LIMIT_LOW) },
 ];
 
 type Integer = Extract<IoddSimpleDatatype, { kind: "UIntegerT" | "IntegerT" }>;
@@ -45,8 +45,8 @@ function toStatus(type: Integer, raw: number, names: readonly string[]): number 
   if (/no (measurement )?(data|echo|target|value|signal)|invalid|failure|not available/.test(words))
     return StatusCode.Bad_SensorFailure;
   if (/out of (measuring )?range|over|under|exceed/.test(words)) {
-    if (/\(\+\)|\+|above|high|over/.test(words)) return StatusCode.Bad_SensorFailure | LIMIT_HIGH;
-    if (/\(-\)|−|-|below|low|under/.test(words)) return StatusCode.Bad_SensorFailure | LIMIT_LOW;
+    if (/\(\+\)|\+|above|high|over/.test(words)) return withLimit(StatusCode.Bad_SensorFailure, LIMIT_HIGH);
+    if (/\(-\)|−|-|below|low|under/.test(words)) return withLimit(StatusCode.Bad_SensorFailure, LIMIT_LOW);
     return StatusCode.Bad_SensorFailure;
   }
   const profile =

@@ -24,6 +24,18 @@ export const StatusCode = {
 export const LIMIT_LOW = 0x0500;
 export const LIMIT_HIGH = 0x0600;
 
+/** A status with limit bits, as an unsigned number. */
+export function withLimit(status: number, limit: number): number {
+  return (status | limit) >>> 0;
+}
+
+/** The name, with the side of a limit that was met: `Bad_SensorFailure (high)`. */
+export function formatStatusWithLimit(code: number): string {
+  const bits = code & 0x0700;
+  const side = bits === LIMIT_LOW ? " (low)" : bits === LIMIT_HIGH ? " (high)" : bits === 0x0700 ? " (constant)" : "";
+  return `${formatStatus(code)}${side}`;
+}
+
 /** The name without limit bits; the hexadecimal number for a code outside the table. */
 export function formatStatus(code: number): string {
   const base = (code & 0xffff0000) >>> 0;
