@@ -56,7 +56,11 @@ export function SignalsView({ model, space, editBlockedBy }: Props) {
   const table = useMemo(() => readSource(read), [read]);
   const head = table?.ok ? (table.value.rows[0]?.fields ?? []) : [];
   const columns = matched ?? proposeColumns(templates, head);
-  const list = useMemo(() => (table?.ok ? readSignalList(table.value, columns) : undefined), [table, columns]);
+  const dataTypes = useMemo(() => listDataTypes(space), [space]);
+  const list = useMemo(
+    () => (table?.ok ? readSignalList(table.value, columns, (name) => dataTypes.get(name)) : undefined),
+    [table, columns, dataTypes],
+  );
   const problems = [...(table && !table.ok ? table.problems : []), ...(list?.problems ?? [])];
   const ownTypes = space.listOwnNodes().filter((node) => isTypeNode(node) && node.nodeClass === "ObjectType");
   const count = list?.signals.length ?? 0;
@@ -200,6 +204,15 @@ export function SignalsView({ model, space, editBlockedBy }: Props) {
       </div>
     </Page>
   );
+}
+
+/** DataTypes of all loaded models by name; an own one wins over one of a required model. */
+function listDataTypes(space: AddressSpace): ReadonlyMap<string, NodeKey> {
+  const found = new Map<string, NodeKey>();
+  for (const layer of space.layers) {
+    for (const node of layer.nodes.values()) if (node.nodeClass === "DataType") found.set(node.browseName.name, node.key);
+  }
+  return found;
 }
 
 type WorkbookProps = { source: Extract<Source, { kind: "workbook" }>; onSheet: (index: number) => void; onClear: () => void };

@@ -1,6 +1,6 @@
 /** The model as a signal list: one row a Variable, in the columns that a signal list is read from (read-signal-list.ts). */
 import type { AddressSpace } from "../../address-space/address-space";
-import { findModellingRule, findParent, getDisplayName } from "../../address-space/browse";
+import { findModellingRule, findParent, findProperty } from "../../address-space/browse";
 import { getAccessLevel, getDataType, isTypeNode, type Node, type VariableNode } from "../../address-space/node";
 import { formatNodeId, type NodeKey } from "../../address-space/node-id";
 import { findText } from "../../address-space/qualified-name";
@@ -8,7 +8,6 @@ import { StandardReferenceType } from "../../address-space/standard-ids";
 import { SpaceDataTypes } from "../../nodeset/values/data-type-shapes";
 import { readValue } from "../../nodeset/values/read-value";
 import { findEuInformation, findRange } from "../../nodeset/values/standard-values";
-import { findProperty } from "../../address-space/browse";
 
 export type SignalCell = string | number | null;
 
@@ -39,7 +38,7 @@ function toRow(space: AddressSpace, types: SpaceDataTypes, node: VariableNode): 
   return [
     owner,
     groups.join("/"),
-    getDisplayName(node),
+    node.browseName.name,
     space.getNode(getDataType(node))?.browseName.name ?? "",
     findEuInformation(read("EngineeringUnits"))?.displayName.text ?? "",
     range?.low ?? null,

@@ -5,7 +5,8 @@
 import type { NodeKey } from "../../address-space/node-id";
 import { StandardDataType as D } from "../../address-space/standard-ids";
 import { problem, type Problem } from "../../core/result";
-import { listSymbols, listUnits, type Unit } from "../../units/units";
+import { COMMON_CODES } from "../../units/common-units";
+import { listSymbols, listUnits, unitByCode, type Unit } from "../../units/units";
 import type { TextTable } from "./text-table";
 
 export const signalFields = [
@@ -117,20 +118,23 @@ const dataTypes: Readonly<Record<string, NodeKey>> = {
   dateandtime: D.DateTime,
 };
 
+/** A DataType of the loaded models by its name; asked before the words of controllers. */
+export type FindDataType = (name: string) => NodeKey | undefined;
+
 export type SignalList = { readonly signals: readonly Signal[]; readonly problems: readonly Problem[] };
 
 /**
  * Reads the rows below the head. A row without a name, or with one that its group has already, is left out with a problem;
  * what else is not understood is told and the row taken without it. Codes: `signal-list.*`, at line and attribute.
  */
-export function readSignalList(table: TextTable, columns: ColumnChoice): SignalList {
+export function readSignalList(table: TextTable, columns: ColumnChoice, findDataType: FindDataType = () => undefined): SignalList {
   const problems: Problem[] = [];
   const signals: Signal[] = [];
   const taken = new Set<string>();
   if (columns.name === undefined) return { signals, problems: [problem("signal-list.no-name-column")] };
   for (const { line, fields } of table.rows.slice(1)) {
     const get = (field: SignalField): string => (columns[field] === undefined ? "" : (fields[columns[field]] ?? ""));
-    const signal = readSignal(line, get, problems);
+    const signal = readSignal(line, get, problems, findDataType);
     if (!signal) continue;
     const path = `${signal.group ?? ""}/${signal.name}`;
     if (taken.has(path)) problems.push(problem("signal-list.name-twice", { name: signal.name }, { line }));
@@ -140,7 +144,12 @@ export function readSignalList(table: TextTable, columns: ColumnChoice): SignalL
   return { signals, problems };
 }
 
-function readSignal(line: number, get: (field: SignalField) => string, problems: Problem[]): Signal | undefined {
+function readSignal(
+  line: number,
+  get: (field: SignalField) => string,
+  problems: Problem[],
+  findDataType: FindDataType,
+): Signal | undefined {
   const title = get("name");
   const name = toBrowseName(title);
   if (name === "") {
@@ -149,7 +158,8 @@ function readSignal(line: number, get: (field: SignalField) => string, problems:
   }
   const unit = readUnit(get("unit"), line, problems);
   const range = readRange(get("low"), get("high"), line, problems);
-  const dataType = readDataType(get("dataType"), unit !== undefined || range !== undefined, line, problems);
+  const dataType =
+    findDataType(get("dataType")) ?? readDataType(get("dataType"), unit !== undefined || range !== undefined, line, problems);
   const isNumeric = numeric.has(dataType);
   if (!isNumeric && (unit || range))
     problems.push(problem.warning("signal-list.not-numeric", { name }, { line, attribute: "unit" }));
@@ -217,14 +227,15 @@ function readDataType(text: string, isMeasured: boolean, line: number, problems:
 
 let unitsByText: ReadonlyMap<string, Unit> | undefined;
 
-/** Units by code, symbol and name. A text that several units share names the first of the table. */
+/** Units by code, symbol and name. A text that several units share names the one that plants use most. */
 function getUnitsByText(): ReadonlyMap<string, Unit> {
   if (unitsByText) return unitsByText;
   const map = new Map<string, Unit>();
   const add = (text: string, unit: Unit): void => {
     if (!map.has(text)) map.set(text, unit);
   };
-  for (const unit of listUnits()) for (const symbol of listSymbols(unit)) add(symbol, unit);
+  const usual = COMMON_CODES.flatMap((code) => unitByCode(code) ?? []);
+  for (const unit of [...usual, ...listUnits()]) for (const symbol of listSymbols(unit)) add(symbol, unit);
   for (const unit of listUnits()) add(unit.name.toLowerCase(), unit);
   for (const unit of listUnits()) add(unit.code, unit);
   return (unitsByText = map);
