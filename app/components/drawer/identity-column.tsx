@@ -26,7 +26,13 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
       <Particular label="BrowseName">
         {(id) => (
           <div className="localised">
-            <CommitField id={id} mono value={node.browseName.name} readOnly={readOnly} onCommit={(text) => actions.rename(node.key, text)} />
+            <CommitField
+              id={id}
+              mono
+              value={node.browseName.name}
+              readOnly={readOnly}
+              onCommit={(text) => actions.rename(node.key, text)}
+            />
             {node.browseName.namespaceUri === getOwnNamespace(space.own.header) ? null : (
               <span className="locale" title={node.browseName.namespaceUri}>
                 {getNamespaceLabel(node.browseName.namespaceUri)}
@@ -37,7 +43,20 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
       </Particular>
       <Particular label="DisplayName">
         {(id) => (
-          <LocalisedTexts id={id} label="DisplayName" texts={node.displayName} readOnly={readOnly} onChange={(text, locale) => actions.setText({ node: node.key, attribute: "displayName", text, ...(locale === undefined ? {} : { locale }) })} />
+          <LocalisedTexts
+            id={id}
+            label="DisplayName"
+            texts={node.displayName}
+            readOnly={readOnly}
+            onChange={(text, locale) =>
+              actions.setText({
+                node: node.key,
+                attribute: "displayName",
+                text,
+                ...(locale === undefined ? {} : { locale }),
+              })
+            }
+          />
         )}
       </Particular>
       <Fact label="NodeId" mono>
@@ -55,7 +74,9 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
             label="Abstract"
             checked={node.isAbstract === true}
             disabled={readOnly}
-            onChange={(event) => actions.setAttribute([node.key], "isAbstract", event.currentTarget.checked ? true : undefined)}
+            onChange={(event) =>
+              actions.setAttribute([node.key], "isAbstract", event.currentTarget.checked ? true : undefined)
+            }
           />
         </Fact>
       ) : (
@@ -78,7 +99,14 @@ function OwnerRow({ space, node }: { space: AddressSpace; node: Node }) {
   return (
     <Particular label="Belongs to">
       {(id) => (
-        <Select id={id} size="small" value={owner ?? ""} onFocus={() => setAsked(true)} onPointerDown={() => setAsked(true)} onChange={(event) => actions.move([node.key], event.currentTarget.value as NodeKey)}>
+        <Select
+          id={id}
+          size="small"
+          value={owner ?? ""}
+          onFocus={() => setAsked(true)}
+          onPointerDown={() => setAsked(true)}
+          onChange={(event) => actions.move([node.key], event.currentTarget.value as NodeKey)}
+        >
           {isListed ? null : <option value={owner ?? ""}>{getNodeName(space, owner)}</option>}
           {parents.map((parent) => (
             <option key={parent.key} value={parent.key}>
@@ -100,7 +128,11 @@ function TypeRow({ space, node, readOnly }: { space: AddressSpace; node: Node; r
         {supertype === undefined ? (
           "–"
         ) : (
-          <button type="button" className="italic underline decoration-rule underline-offset-3 hover:text-copper" onClick={() => view.reveal(supertype)}>
+          <button
+            type="button"
+            className="italic underline decoration-rule underline-offset-3 hover:text-copper"
+            onClick={() => view.reveal(supertype)}
+          >
             {getNodeName(space, supertype)}
           </button>
         )}
@@ -137,9 +169,24 @@ function RuleRow({ rule, node, readOnly }: { rule: RuleName | undefined; node: N
     <Particular label="Rule">
       {(id) => (
         <span className="flex items-center gap-1.5">
-          {isShort ? <Segments label="Modelling rule" value={rule} onChange={set} options={SHORT.map((name) => ({ value: name, label: name }))} className="h-6!" /> : null}
+          {isShort ? (
+            <Segments
+              label="Modelling rule"
+              value={rule}
+              onChange={set}
+              options={SHORT.map((name) => ({ value: name, label: name }))}
+              className="h-6!"
+            />
+          ) : null}
           <span className={isShort ? "w-7" : "w-full"}>
-            <Select id={id} size="small" aria-label="Modelling rule" value={rule ?? ""} onChange={(event) => set(event.currentTarget.value)} className={isShort ? "w-7! overflow-hidden" : ""}>
+            <Select
+              id={id}
+              size="small"
+              aria-label="Modelling rule"
+              value={rule ?? ""}
+              onChange={(event) => set(event.currentTarget.value)}
+              className={isShort ? "w-7! overflow-hidden" : ""}
+            >
               <option value="">none</option>
               {Object.keys(RULE_KEYS).map((name) => (
                 <option key={name} value={name}>

@@ -57,7 +57,15 @@ export function LocalisedTexts({ id, label, texts, readOnly, rows, onChange }: P
 
 const OFFERED = ["en", "de", "fr", "es", "it", "pl", "cs", "nl", "sv", "pt", "zh", "ja"];
 
-function AddLanguage({ label, taken, onAdd }: { label: string; taken: readonly LocalizedText[]; onAdd: (locale: string) => void }) {
+function AddLanguage({
+  label,
+  taken,
+  onAdd,
+}: {
+  label: string;
+  taken: readonly LocalizedText[];
+  onAdd: (locale: string) => void;
+}) {
   const [isOpen, setOpen] = useState(false);
   const free = OFFERED.filter((locale) => !taken.some((text) => text.locale === locale));
   if (!isOpen) {

@@ -15,7 +15,9 @@ export function MembersColumn({ space, node, readOnly }: { space: AddressSpace; 
   return (
     <section aria-label="Members">
       <Summary space={space} node={node} />
-      {!isTypeNode(node) && findTypeDefinition(space, node.key) !== undefined && space.isOwn(node.key) ? <OpenMembers space={space} node={node} readOnly={readOnly} /> : null}
+      {!isTypeNode(node) && findTypeDefinition(space, node.key) !== undefined && space.isOwn(node.key) ? (
+        <OpenMembers space={space} node={node} readOnly={readOnly} />
+      ) : null}
     </section>
   );
 }
@@ -76,8 +78,12 @@ function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Nod
   const { missing, groups } = useMemo(() => {
     const open = listOfferedMembers(space, node.key).filter((member) => !member.isPlaceholder);
     // Properties of Variables are many and rarely wanted: InstrumentRange, Definition and their like.
-    const isDetail = (member: OpenMember): boolean => member.parent !== node.key && space.getNode(member.parent)?.nodeClass === "Variable";
-    return { missing: listMissingMembers(space, node.key), groups: { members: open.filter((m) => !isDetail(m)), details: open.filter(isDetail) } };
+    const isDetail = (member: OpenMember): boolean =>
+      member.parent !== node.key && space.getNode(member.parent)?.nodeClass === "Variable";
+    return {
+      missing: listMissingMembers(space, node.key),
+      groups: { members: open.filter((m) => !isDetail(m)), details: open.filter(isDetail) },
+    };
   }, [space, node.key]);
   const offered = [...groups.members, ...(showsDetails ? groups.details : [])].slice(0, MOST);
   return (
@@ -87,7 +93,10 @@ function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Nod
           <h3>
             Missing of its type <span className="font-mono font-normal">{missing.length}</span>
           </h3>
-          <p className="text-small text-ink-2">{missing.slice(0, 6).map(formatPath).join(", ")}{missing.length > 6 ? " …" : ""}</p>
+          <p className="text-small text-ink-2">
+            {missing.slice(0, 6).map(formatPath).join(", ")}
+            {missing.length > 6 ? " …" : ""}
+          </p>
           {readOnly ? null : (
             <Button size="small" className="mt-1.5" onClick={() => actions.addMissingMembers(node.key)}>
               Add what is missing
@@ -105,7 +114,14 @@ function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Nod
               <li key={member.pathKey} className="reference-item">
                 <span>{formatPath(member)}</span>
                 {readOnly ? null : (
-                  <Button size="small" tone="bare" icon={Plus} className="ml-auto h-5!" aria-label={`Add ${formatPath(member)}`} onClick={() => actions.addOptionalMembers(node.key, [member.pathKey])}>
+                  <Button
+                    size="small"
+                    tone="bare"
+                    icon={Plus}
+                    className="ml-auto h-5!"
+                    aria-label={`Add ${formatPath(member)}`}
+                    onClick={() => actions.addOptionalMembers(node.key, [member.pathKey])}
+                  >
                     Add
                   </Button>
                 )}

@@ -34,7 +34,13 @@ export function NodeDrawer() {
       storageKey="particulars-height"
       initialHeight={258}
       onClose={() => view.setDrawerOpen(false)}
-      head={node ? <Head space={space} node={node} more={selection.length - 1} /> : <span className="text-small text-ink-3">Select a node to see its particulars</span>}
+      head={
+        node ? (
+          <Head space={space} node={node} more={selection.length - 1} />
+        ) : (
+          <span className="text-small text-ink-3">Select a node to see its particulars</span>
+        )
+      }
       tools={node ? <WorstFinding node={node} /> : null}
     >
       {node ? <Columns key={node.key} space={space} node={node} /> : null}
@@ -57,9 +63,13 @@ function Head({ space, node, more }: { space: AddressSpace; node: Node; more: nu
   return (
     <>
       <NodeClassGlyph kind={isProperty(space, node) ? "Property" : node.nodeClass} label />
-      <h2 className={cx("text-body font-semibold", node.nodeClass.endsWith("Type") && "italic")}>{getNodeName(space, node.key)}</h2>
+      <h2 className={cx("text-body font-semibold", node.nodeClass.endsWith("Type") && "italic")}>
+        {getNodeName(space, node.key)}
+      </h2>
       <span className="truncate font-mono text-note text-ink-3">{formatPath(space, node.key)}</span>
-      {space.isOwn(node.key) ? null : <span className="text-note text-ink-3">belongs to a required model, read only</span>}
+      {space.isOwn(node.key) ? null : (
+        <span className="text-note text-ink-3">belongs to a required model, read only</span>
+      )}
       {more > 0 ? <span className="text-note text-copper">and {more} more selected</span> : null}
     </>
   );
@@ -72,7 +82,10 @@ function WorstFinding({ node }: { node: Node }) {
   const count = findings.getState().byNode.get(node.key)?.length ?? 0;
   if (!finding) return null;
   return (
-    <span className="flex min-w-0 max-w-130 items-center gap-1.5 text-small" title={`${finding.rule} ${finding.message}\n${finding.facts.join("\n")}\n${finding.clause}`}>
+    <span
+      className="flex min-w-0 max-w-130 items-center gap-1.5 text-small"
+      title={`${finding.rule} ${finding.message}\n${finding.facts.join("\n")}\n${finding.clause}`}
+    >
       <FindingBadge severity={finding.severity} title={finding.rule} />
       <span className="truncate">{finding.message}</span>
       {count > 1 ? <span className="shrink-0 text-note text-ink-3">and {count - 1} more</span> : null}
@@ -87,10 +100,12 @@ function MendButton({ finding }: { finding: Finding }) {
   const [mend, setMend] = useState<() => void>();
   useEffect(() => {
     let isGone = false;
-    void Promise.all([import("../findings/mend-findings"), import("~/domain/checks/registry")]).then(([{ mendFindings }, { findRule }]) => {
-      const hasFix = findRule(finding.rule)?.fix !== undefined;
-      if (!isGone) setMend(() => (hasFix ? () => mendFindings(model, [finding]) : undefined));
-    });
+    void Promise.all([import("../findings/mend-findings"), import("~/domain/checks/registry")]).then(
+      ([{ mendFindings }, { findRule }]) => {
+        const hasFix = findRule(finding.rule)?.fix !== undefined;
+        if (!isGone) setMend(() => (hasFix ? () => mendFindings(model, [finding]) : undefined));
+      },
+    );
     return () => {
       isGone = true;
     };
@@ -103,14 +118,17 @@ function MendButton({ finding }: { finding: Finding }) {
   );
 }
 
+/** Classes whose second column is a table. */
+const WIDE: Readonly<Partial<Record<Node["nodeClass"], string>>> = { Method: "is-wide", DataType: "is-data-type" };
+
 function Columns({ space, node }: { space: AddressSpace; node: Node }) {
   const { actions } = useOpenModel();
   const readOnly = !actions.mayChange(node.key);
-  const isWide = node.nodeClass === "Method" || node.nodeClass === "DataType";
   const [isValueOpen, setValueOpen] = useState(() => hasDraft(node.key));
-  if (isValueOpen && hasValueAttributes(node)) return <ValueBench space={space} node={node} readOnly={readOnly} onClose={() => setValueOpen(false)} />;
+  if (isValueOpen && hasValueAttributes(node))
+    return <ValueBench space={space} node={node} readOnly={readOnly} onClose={() => setValueOpen(false)} />;
   return (
-    <div className={cx("particulars", isWide && "is-wide")}>
+    <div className={cx("particulars", WIDE[node.nodeClass])}>
       <IdentityColumn space={space} node={node} readOnly={readOnly} />
       <ValueColumn space={space} node={node} readOnly={readOnly} onOpenValue={() => setValueOpen(true)} />
       <TextColumn node={node} readOnly={readOnly} />

@@ -39,7 +39,19 @@ type CommitProps = {
 };
 
 /** A field that hands its text over when it is left or Enter is pressed; Esc brings the old text back. */
-export function CommitField({ id, label, value, onCommit, readOnly = false, mono, unit, placeholder, rows, className, isBare }: CommitProps) {
+export function CommitField({
+  id,
+  label,
+  value,
+  onCommit,
+  readOnly = false,
+  mono,
+  unit,
+  placeholder,
+  rows,
+  className,
+  isBare,
+}: CommitProps) {
   const [text, setText] = useState(value);
   const isLeaving = useRef(false);
   useEffect(() => setText(value), [value]);
@@ -58,7 +70,11 @@ export function CommitField({ id, label, value, onCommit, readOnly = false, mono
     autoComplete: "off",
     onBlur: commit,
     ...(mono ? { mono } : {}),
-    className: cx(className, isBare && "border-transparent! bg-transparent! focus:border-copper! focus:bg-leaf! hover:not-read-only:border-edge!"),
+    className: cx(
+      className,
+      isBare &&
+        "border-transparent! bg-transparent! focus:border-copper! focus:bg-leaf! hover:not-read-only:border-edge!",
+    ),
   };
   function onKey(key: string, isMultiline: boolean, element: HTMLElement): void {
     if (key === "Enter" && !isMultiline) element.blur();

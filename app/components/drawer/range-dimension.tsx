@@ -10,7 +10,8 @@ export function RangeDimension({ range, instrument }: { range: Range; instrument
   const axis = instrument ?? widen(range);
   const span = axis.high - axis.low;
   if (!Number.isFinite(span) || span <= 0 || range.high <= range.low) return null;
-  const toX = (value: number): number => LEFT + ((Math.min(Math.max(value, axis.low), axis.high) - axis.low) / span) * (RIGHT - LEFT);
+  const toX = (value: number): number =>
+    LEFT + ((Math.min(Math.max(value, axis.low), axis.high) - axis.low) / span) * (RIGHT - LEFT);
   const low = toX(range.low);
   const high = toX(range.high);
   const middle = (low + high) / 2;
@@ -20,7 +21,9 @@ export function RangeDimension({ range, instrument }: { range: Range; instrument
       <path className="dimension-axis" d={`M${LEFT} 30H${RIGHT}`} />
       {Array.from({ length: 21 }, (_, i) => {
         const x = LEFT + ((RIGHT - LEFT) * i) / 20;
-        return <path key={i} className="dimension-axis" strokeWidth="1" d={i % 5 === 0 ? `M${x} 26v8` : `M${x} 30v4`} />;
+        return (
+          <path key={i} className="dimension-axis" strokeWidth="1" d={i % 5 === 0 ? `M${x} 26v8` : `M${x} 30v4`} />
+        );
       })}
       <rect className="dimension-bar" x={low} y="26.5" width={Math.max(2, high - low)} height="7" />
       <path className="dimension-line" d={`M${low} 10v26M${high} 10v26M${low} 14H${high}`} />

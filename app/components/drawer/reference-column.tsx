@@ -29,9 +29,16 @@ export function ReferenceColumn({ space, node }: { space: AddressSpace; node: No
           </h4>
           <ul>
             {group.items.slice(0, MOST).map(({ edge, other }) => (
-              <ReferenceItem key={`${edge.source} ${edge.type} ${edge.target}`} space={space} edge={edge} other={other} />
+              <ReferenceItem
+                key={`${edge.source} ${edge.type} ${edge.target}`}
+                space={space}
+                edge={edge}
+                other={other}
+              />
             ))}
-            {group.items.length > MOST ? <li className="text-note text-ink-3">{group.items.length - MOST} more</li> : null}
+            {group.items.length > MOST ? (
+              <li className="text-note text-ink-3">{group.items.length - MOST} more</li>
+            ) : null}
           </ul>
         </div>
       ))}
@@ -57,7 +64,12 @@ function ReferenceItem({ space, edge, other }: { space: AddressSpace; edge: Edge
       {node && !space.isOwn(other) ? <code>{getNamespaceLabel(node.nodeId.namespaceUri)}</code> : null}
       <code>{type}</code>
       {actions.mayRemoveReference(edge) ? (
-        <button type="button" className="reference-remove" aria-label={`Remove ${type} to ${name}`} onClick={() => actions.removeReference(edge)}>
+        <button
+          type="button"
+          className="reference-remove"
+          aria-label={`Remove ${type} to ${name}`}
+          onClick={() => actions.removeReference(edge)}
+        >
           <X size={12} aria-hidden />
         </button>
       ) : null}
@@ -66,18 +78,39 @@ function ReferenceItem({ space, edge, other }: { space: AddressSpace; edge: Edge
 }
 
 function listGroups(space: AddressSpace, key: NodeKey): Group[] {
-  const groups: Record<string, Group["items"]> = { Type: [], "Belongs to": [], "Made of": [], "Used by": [], "Points to": [], "Pointed to by": [] };
-  const { HasSubtype, HasTypeDefinition, HasInterface, HasModellingRule, HierarchicalReferences } = StandardReferenceType;
+  const groups: Record<string, Group["items"]> = {
+    Type: [],
+    "Belongs to": [],
+    "Made of": [],
+    "Used by": [],
+    "Points to": [],
+    "Pointed to by": [],
+  };
+  const { HasSubtype, HasTypeDefinition, HasInterface, HasModellingRule, HierarchicalReferences } =
+    StandardReferenceType;
   const isMeaning = (type: NodeKey, wanted: NodeKey): boolean => type === wanted || isSubtypeOf(space, type, wanted);
   for (const edge of space.edgesFrom(key)) {
     if (edge.type === HasModellingRule) continue;
     const isType = edge.type === HasTypeDefinition || edge.type === HasInterface;
-    const title = isType ? "Type" : edge.type === HasSubtype ? "Used by" : isMeaning(edge.type, HierarchicalReferences) ? "Made of" : "Points to";
+    const title = isType
+      ? "Type"
+      : edge.type === HasSubtype
+        ? "Used by"
+        : isMeaning(edge.type, HierarchicalReferences)
+          ? "Made of"
+          : "Points to";
     groups[title]?.push({ edge, other: edge.target });
   }
   for (const edge of space.edgesTo(key)) {
     const isUse = edge.type === HasTypeDefinition || edge.type === HasInterface || edge.type === HasModellingRule;
-    const title = edge.type === HasSubtype ? "Type" : isUse ? "Used by" : isMeaning(edge.type, HierarchicalReferences) ? "Belongs to" : "Pointed to by";
+    const title =
+      edge.type === HasSubtype
+        ? "Type"
+        : isUse
+          ? "Used by"
+          : isMeaning(edge.type, HierarchicalReferences)
+            ? "Belongs to"
+            : "Pointed to by";
     groups[title]?.push({ edge, other: edge.source });
   }
   return Object.entries(groups).flatMap(([title, items]) => (items.length === 0 ? [] : [{ title, items }]));

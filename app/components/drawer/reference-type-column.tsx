@@ -15,7 +15,9 @@ export function ReferenceTypeColumn({ node, readOnly }: { node: ReferenceTypeNod
           label="Symmetric: reads the same from both ends"
           checked={node.symmetric === true}
           disabled={readOnly}
-          onChange={(event) => actions.setAttribute([node.key], "symmetric", event.currentTarget.checked ? true : undefined)}
+          onChange={(event) =>
+            actions.setAttribute([node.key], "symmetric", event.currentTarget.checked ? true : undefined)
+          }
         />
       </Fact>
       {node.symmetric === true ? null : (
@@ -26,7 +28,14 @@ export function ReferenceTypeColumn({ node, readOnly }: { node: ReferenceTypeNod
               label="Inverse name"
               texts={node.inverseName ?? []}
               readOnly={readOnly}
-              onChange={(text, locale) => actions.setText({ node: node.key, attribute: "inverseName", text, ...(locale === undefined ? {} : { locale }) })}
+              onChange={(text, locale) =>
+                actions.setText({
+                  node: node.key,
+                  attribute: "inverseName",
+                  text,
+                  ...(locale === undefined ? {} : { locale }),
+                })
+              }
             />
           )}
         </Particular>

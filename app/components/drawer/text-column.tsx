@@ -24,14 +24,30 @@ export function TextColumn({ node, readOnly }: { node: Node; readOnly: boolean }
             rows={2}
             texts={node.description ?? []}
             readOnly={readOnly}
-            onChange={(text, locale) => actions.setText({ node: node.key, attribute: "description", text, ...(locale === undefined ? {} : { locale }) })}
+            onChange={(text, locale) =>
+              actions.setText({
+                node: node.key,
+                attribute: "description",
+                text,
+                ...(locale === undefined ? {} : { locale }),
+              })
+            }
           />
         )}
       </Particular>
-      {node.nodeClass === "Variable" ? <AccessRow level={getAccessLevel(node)} node={node} readOnly={readOnly} /> : null}
+      {node.nodeClass === "Variable" ? (
+        <AccessRow level={getAccessLevel(node)} node={node} readOnly={readOnly} />
+      ) : null}
       {node.nodeClass === "Method" ? (
         <Fact label="Access">
-          <Checkbox label="may be called" checked={node.executable !== false} disabled={readOnly} onChange={(event) => actions.setAttribute([node.key], "executable", event.currentTarget.checked ? undefined : false)} />
+          <Checkbox
+            label="may be called"
+            checked={node.executable !== false}
+            disabled={readOnly}
+            onChange={(event) =>
+              actions.setAttribute([node.key], "executable", event.currentTarget.checked ? undefined : false)
+            }
+          />
         </Fact>
       ) : null}
       {node.nodeClass === "Variable" ? (
@@ -46,7 +62,8 @@ export function TextColumn({ node, readOnly }: { node: Node; readOnly: boolean }
               readOnly={readOnly}
               onCommit={(text) => {
                 const interval = Number(text.replace(",", "."));
-                if (text === "" || Number.isFinite(interval)) actions.setAttribute([node.key], "minimumSamplingInterval", text === "" ? undefined : interval);
+                if (text === "" || Number.isFinite(interval))
+                  actions.setAttribute([node.key], "minimumSamplingInterval", text === "" ? undefined : interval);
               }}
             />
           )}
@@ -54,7 +71,13 @@ export function TextColumn({ node, readOnly }: { node: Node; readOnly: boolean }
       ) : null}
       <Particular label="Documents">
         {(id) => (
-          <CommitField id={id} value={node.documentation ?? ""} placeholder="link" readOnly={readOnly} onCommit={(text) => actions.setAttribute([node.key], "documentation", text === "" ? undefined : text)} />
+          <CommitField
+            id={id}
+            value={node.documentation ?? ""}
+            placeholder="link"
+            readOnly={readOnly}
+            onCommit={(text) => actions.setAttribute([node.key], "documentation", text === "" ? undefined : text)}
+          />
         )}
       </Particular>
     </section>
@@ -77,7 +100,13 @@ function AccessRow({ level, node, readOnly }: { level: number; node: Node; readO
             label={label}
             checked={(level & bit) !== 0}
             disabled={readOnly}
-            onChange={(event) => actions.setAttribute([node.key], "accessLevel", toWritten(event.currentTarget.checked ? level | bit : level & ~bit))}
+            onChange={(event) =>
+              actions.setAttribute(
+                [node.key],
+                "accessLevel",
+                toWritten(event.currentTarget.checked ? level | bit : level & ~bit),
+              )
+            }
           />
         ))}
       </span>

@@ -49,8 +49,13 @@ export function ValueBench({ space, node, readOnly, onClose }: Props) {
             <h3 className="mb-0! text-note font-semibold text-ink-3">Value</h3>
             <code className="font-mono text-note text-ink-3">{formatDataType(space, node)}</code>
             {read && !read.ok ? (
-              <Notice tone="warning" className="ml-2 py-0.5!" title="The value in the file cannot be read, so the form begins anew; until you commit, the file's text stays.">
-                {read.problems.map(formatProblem).join(" ")} <code className="font-mono break-all">{node.value?.xml.trim().slice(0, 160)}</code>
+              <Notice
+                tone="warning"
+                className="ml-2 py-0.5!"
+                title="The value in the file cannot be read, so the form begins anew; until you commit, the file's text stays."
+              >
+                {read.problems.map(formatProblem).join(" ")}{" "}
+                <code className="font-mono break-all">{node.value?.xml.trim().slice(0, 160)}</code>
               </Notice>
             ) : null}
           </div>

@@ -12,7 +12,13 @@ import { Input, Select } from "../ui/field";
 import { formatLeaf, parseLeaf, TEXT_TYPES } from "../values/leaf-text";
 import { isUnfinished } from "../values/value-draft";
 
-type Props = { id: string; space: AddressSpace; node: VariableNode | VariableTypeNode; readOnly: boolean; onOpen: () => void };
+type Props = {
+  id: string;
+  space: AddressSpace;
+  node: VariableNode | VariableTypeNode;
+  readOnly: boolean;
+  onOpen: () => void;
+};
 
 /** The value in one row: one text or choice is edited here, everything else on the bench that the button opens. */
 export function ValueRow({ id, space, node, readOnly, onOpen }: Props) {
@@ -21,9 +27,16 @@ export function ValueRow({ id, space, node, readOnly, onOpen }: Props) {
   const dataType = getDataType(node);
   const value = readTypedValue(space, node);
   const type = value?.type ?? types.findBuiltInType(dataType);
-  const isPlain = getValueRank(node) === -1 && (value === undefined ? node.value === undefined : value.shape === "scalar" && value.type === types.findBuiltInType(dataType));
+  const isPlain =
+    getValueRank(node) === -1 &&
+    (value === undefined
+      ? node.value === undefined
+      : value.shape === "scalar" && value.type === types.findBuiltInType(dataType));
   const names = types.findEnumerationNames(dataType);
-  const take = (next: Variant | undefined): void => void actions.apply("set-value", (current, context) => setValue(current, context, { node: node.key, ...(next ? { value: next } : {}) }));
+  const take = (next: Variant | undefined): void =>
+    void actions.apply("set-value", (current, context) =>
+      setValue(current, context, { node: node.key, ...(next ? { value: next } : {}) }),
+    );
   const one = (item: Scalar): Variant => ({ type, shape: "scalar", value: item }) as Variant;
   const item = value?.shape === "scalar" ? value.value : undefined;
 
@@ -31,7 +44,16 @@ export function ValueRow({ id, space, node, readOnly, onOpen }: Props) {
     <div className="flex items-start gap-1">
       <div className="min-w-0 flex-1">
         {isPlain && type === "Boolean" ? (
-          <ChoiceField id={id} value={item === undefined ? "" : String(item)} readOnly={readOnly} choices={[["true", "true"], ["false", "false"]]} onPick={(text) => take(text === "" ? undefined : one(text === "true"))} />
+          <ChoiceField
+            id={id}
+            value={item === undefined ? "" : String(item)}
+            readOnly={readOnly}
+            choices={[
+              ["true", "true"],
+              ["false", "false"],
+            ]}
+            onPick={(text) => take(text === "" ? undefined : one(text === "true"))}
+          />
         ) : isPlain && names && (item === undefined || names.has(item as number)) ? (
           <ChoiceField
             id={id}
@@ -41,24 +63,58 @@ export function ValueRow({ id, space, node, readOnly, onOpen }: Props) {
             onPick={(text) => take(text === "" ? undefined : one(Number(text)))}
           />
         ) : isPlain && type !== undefined && TEXT_TYPES.has(type) && !String(item ?? "").includes("\n") ? (
-          <PlainField id={id} type={type} item={item} readOnly={readOnly} onTake={(next) => take(next === undefined ? undefined : one(next))} />
+          <PlainField
+            id={id}
+            type={type}
+            item={item}
+            readOnly={readOnly}
+            onTake={(next) => take(next === undefined ? undefined : one(next))}
+          />
         ) : (
-          <Input id={id} size="small" mono readOnly value={formatValueText(space, node)} placeholder="none" onDoubleClick={onOpen} />
+          <Input
+            id={id}
+            size="small"
+            mono
+            readOnly
+            value={formatValueText(space, node)}
+            placeholder="none"
+            onDoubleClick={onOpen}
+          />
         )}
       </div>
-      <Button size="small" icon={ListTree} aria-label="Open the value" title="All of the value, in a form" onClick={onOpen}>
+      <Button
+        size="small"
+        icon={ListTree}
+        aria-label="Open the value"
+        title="All of the value, in a form"
+        onClick={onOpen}
+      >
         {readOnly ? "Show" : "Edit"}
       </Button>
-      {node.value && !readOnly ? <IconButton size="small" icon={X} label="Take the value away" onClick={() => take(undefined)} /> : null}
+      {node.value && !readOnly ? (
+        <IconButton size="small" icon={X} label="Take the value away" onClick={() => take(undefined)} />
+      ) : null}
     </div>
   );
 }
 
-type ChoiceProps = { id: string; value: string; readOnly: boolean; choices: readonly (readonly [string, string])[]; onPick: (value: string) => void };
+type ChoiceProps = {
+  id: string;
+  value: string;
+  readOnly: boolean;
+  choices: readonly (readonly [string, string])[];
+  onPick: (value: string) => void;
+};
 
 function ChoiceField({ id, value, readOnly, choices, onPick }: ChoiceProps) {
   return (
-    <Select id={id} size="small" value={value} disabled={readOnly} onChange={(event) => onPick(event.currentTarget.value)}>
+    <Select
+      id={id}
+      size="small"
+      value={value}
+      disabled={readOnly}
+      onChange={(event) => onPick(event.currentTarget.value)}
+    >
       <option value="">none</option>
       {choices.map(([choice, label]) => (
         <option key={choice} value={choice}>
@@ -69,7 +125,13 @@ function ChoiceField({ id, value, readOnly, choices, onPick }: ChoiceProps) {
   );
 }
 
-type PlainProps = { id: string; type: BuiltInType; item: Scalar | undefined; readOnly: boolean; onTake: (item: Scalar | undefined) => void };
+type PlainProps = {
+  id: string;
+  type: BuiltInType;
+  item: Scalar | undefined;
+  readOnly: boolean;
+  onTake: (item: Scalar | undefined) => void;
+};
 
 /** Taken when it is left or Enter is pressed; a text that is no value stays, with the reason. */
 function PlainField({ id, type, item, readOnly, onTake }: PlainProps) {

@@ -1,13 +1,15 @@
 import { X } from "lucide-react";
-import { useEffect, useRef, useState } from "react";
+import { lazy, Suspense, useEffect, useRef, useState } from "react";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
 import { IconButton } from "../ui/button";
-import { AddEnumerationForm } from "./add-enumeration-form";
 import { AddMemberForm } from "./add-member-form";
 import { AddMethodForm } from "./add-method-form";
 import type { AddFormProps, AddRequest } from "./add-request";
 import { AddTypeForm } from "./add-type-form";
 import "./model.css";
+
+/** Its commands are many and rarely wanted, so they come on demand. */
+const AddDataTypeForm = lazy(() => import("../types/add-data-type-form").then((module) => ({ default: module.AddDataTypeForm })));
 
 type Props = { request: AddRequest; onClose: () => void };
 
@@ -19,7 +21,7 @@ const TITLES: Readonly<Record<AddRequest["kind"], string>> = {
   View: "New View",
   ObjectType: "New ObjectType",
   VariableType: "New VariableType",
-  DataType: "New enumeration",
+  DataType: "New DataType",
   ReferenceType: "New ReferenceType",
 };
 
@@ -70,7 +72,11 @@ function FormOf(props: AddFormProps) {
     case "ReferenceType":
       return <AddTypeForm {...props} kind={props.request.kind} />;
     case "DataType":
-      return <AddEnumerationForm {...props} />;
+      return (
+        <Suspense>
+          <AddDataTypeForm onDone={props.onDone} />
+        </Suspense>
+      );
     case "Method":
       return <AddMethodForm {...props} />;
     default:

@@ -1,10 +1,7 @@
 /** What people do to the open model: intents become commands, commands become one transaction each, refusals become messages. */
 import type { Edge } from "~/domain/address-space/address-space";
 import { findParent } from "~/domain/address-space/browse";
-import type { DataTypeField } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
-import type { LocalizedText } from "~/domain/address-space/qualified-name";
-import { addEnumeration, setEnumerationFields, type EnumerationField } from "~/domain/editing/commands/add-enumeration";
 import { addMethod, addObject, addProperty, addVariable, type AddMethodIntent, type AddObjectIntent, type AddPropertyIntent, type AddVariableIntent } from "~/domain/editing/commands/add-member";
 import { addType, type AddTypeIntent } from "~/domain/editing/commands/add-type";
 import { connectNodes, disconnectNodes, type ConnectNodesIntent } from "~/domain/editing/commands/connect-nodes";
@@ -67,9 +64,9 @@ export class ModelActions {
     return edit.made;
   }
 
-  /** A command of a form of its own as one transaction. Answers whether it went through. */
-  apply(label: string, ...steps: readonly EditStep[]): boolean {
-    return this.#run(label, steps) !== undefined;
+  /** A command of a form of its own as one transaction. Answers the nodes that it made, undefined when it was refused. */
+  apply(label: string, ...steps: readonly EditStep[]): readonly NodeKey[] | undefined {
+    return this.#run(label, steps);
   }
 
   /** Brings copies in line with what they were made from. */
@@ -107,10 +104,6 @@ export class ModelActions {
 
   addType(intent: AddTypeIntent): NodeKey | undefined {
     return this.#add("add-type", (space, context) => addType(space, context, intent));
-  }
-
-  addEnumeration({ values, ...intent }: { name: string; values: readonly EnumerationField[]; description?: readonly LocalizedText[] }): NodeKey | undefined {
-    return this.#add("add-enumeration", (space, context) => addEnumeration(space, context, { ...intent, fields: values }));
   }
 
   addOptionalMembers(instance: NodeKey, optional: readonly string[]): void {
@@ -178,11 +171,6 @@ export class ModelActions {
     const toIntent = ({ description, ...argument }: ArgumentFacts) => ({ ...argument, ...(description === "" ? {} : { description: { text: description } }) });
     const intent = { method, input: lists.input.map(toIntent), output: lists.output.map(toIntent) };
     this.#run("set-arguments", [(current, context) => setMethodArguments(current, context, intent)]);
-  }
-
-  setEnumeration(dataType: NodeKey, fields: readonly DataTypeField[]): void {
-    const list = fields.map(({ name, value = 0, displayName, description }) => ({ name, value, ...(displayName ? { displayName } : {}), ...(description && description.length > 0 ? { description } : {}) }));
-    this.#run("set-enumeration", [(space, context) => setEnumerationFields(space, context, { dataType, fields: list })]);
   }
 
   /** Cells of own nodes; those of required models and columns that are read are left out. */

@@ -76,6 +76,7 @@ type FieldProps = {
   value: NodeKey | undefined;
   readOnly?: boolean;
   concreteOnly?: boolean;
+  below?: NodeKey;
   onPick: (type: NodeKey) => void;
 };
 
@@ -83,7 +84,7 @@ type FieldProps = {
 export const EDITABLE = "cursor-pointer border-edge! bg-leaf! hover:border-ink!";
 
 /** Shows the chosen type; pressed or typed into, it becomes the search. */
-export function TypeField({ id, label, space, kind, value, readOnly = false, concreteOnly, onPick }: FieldProps) {
+export function TypeField({ id, label, space, kind, value, readOnly = false, concreteOnly, below, onPick }: FieldProps) {
   const [search, setSearch] = useState<string>();
   if (search === undefined || readOnly) {
     return (
@@ -112,6 +113,7 @@ export function TypeField({ id, label, space, kind, value, readOnly = false, con
       initial={search}
       placeholder={getNodeName(space, value)}
       {...(concreteOnly ? { concreteOnly } : {})}
+      {...(below === undefined ? {} : { below })}
       onPick={(type) => {
         setSearch(undefined);
         onPick(type);

@@ -10,6 +10,8 @@ import { isAbstract, type Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { findText } from "~/domain/address-space/qualified-name";
 import { listDirectSubtypes, listSupertypes } from "~/domain/address-space/type-hierarchy";
+import { useOpenModel } from "../model/use-model";
+import { DataTypeDesigner } from "./data-type-designer";
 import { listTypeMembers } from "./list-type-members";
 
 type Props = { space: AddressSpace; type: Node; modelId: string; onShow: (key: NodeKey) => void };
@@ -18,7 +20,7 @@ type Props = { space: AddressSpace; type: Node; modelId: string; onShow: (key: N
 export function TypeDetail({ space, type, modelId, onShow }: Props) {
   const chain = listSupertypes(space, type.key);
   const subtypes = listDirectSubtypes(space, type.key);
-  const members = listTypeMembers(space, type.key);
+  const { actions } = useOpenModel();
   const description = findText(type.description ?? []);
   return (
     <article aria-label={getDisplayName(type)} className="grid grid-cols-[minmax(0,1fr)] content-start gap-4">
@@ -57,51 +59,62 @@ export function TypeDetail({ space, type, modelId, onShow }: Props) {
           onShow={onShow}
         />
       ) : null}
-      <section>
-        <h2 className="mb-1 text-lead font-semibold">
-          Members <span className="font-mono font-normal text-ink-3">{members.length}</span>
-        </h2>
-        {members.length === 0 ? (
-          <p className="border-t border-ink pt-2 text-small text-ink-2">None.</p>
-        ) : (
-          <TableScroll label="Members">
-            <Table caption={`Members of ${getDisplayName(type)}`}>
-              <thead>
-                <tr>
-                  <Th>Name</Th>
-                  <Th>Type</Th>
-                  <Th>DataType</Th>
-                  <Th right>Count</Th>
-                  <Th>Description</Th>
-                </tr>
-              </thead>
-              <tbody>
-                {members.map((member) => (
-                  <Tr key={member.key} className={member.origin ? "text-ink-3" : ""}>
-                    <Td>
-                      <span className="flex items-center gap-1.5 whitespace-nowrap">
-                        <NodeClassGlyph kind={member.glyph} label />
-                        {member.name}
-                      </span>
-                    </Td>
-                    <Td className="italic">{member.typeName}</Td>
-                    <Td mono>{member.dataType}</Td>
-                    <Td right mono>
-                      {member.cardinality}
-                    </Td>
-                    <Td className="max-w-80 truncate">
-                      <span title={member.description}>
-                        {member.origin ? `from ${member.origin}` : member.description}
-                      </span>
-                    </Td>
-                  </Tr>
-                ))}
-              </tbody>
-            </Table>
-          </TableScroll>
-        )}
-      </section>
+      {type.nodeClass === "DataType" ? (
+        <DataTypeDesigner key={type.key} space={space} node={type} readOnly={!actions.mayChange(type.key)} />
+      ) : (
+        <MemberTable space={space} type={type} />
+      )}
     </article>
+  );
+}
+
+function MemberTable({ space, type }: { space: AddressSpace; type: Node }) {
+  const members = listTypeMembers(space, type.key);
+  return (
+    <section>
+      <h2 className="mb-1 text-lead font-semibold">
+        Members <span className="font-mono font-normal text-ink-3">{members.length}</span>
+      </h2>
+      {members.length === 0 ? (
+        <p className="border-t border-ink pt-2 text-small text-ink-2">None.</p>
+      ) : (
+        <TableScroll label="Members">
+          <Table caption={`Members of ${getDisplayName(type)}`}>
+            <thead>
+              <tr>
+                <Th>Name</Th>
+                <Th>Type</Th>
+                <Th>DataType</Th>
+                <Th right>Count</Th>
+                <Th>Description</Th>
+              </tr>
+            </thead>
+            <tbody>
+              {members.map((member) => (
+                <Tr key={member.key} className={member.origin ? "text-ink-3" : ""}>
+                  <Td>
+                    <span className="flex items-center gap-1.5 whitespace-nowrap">
+                      <NodeClassGlyph kind={member.glyph} label />
+                      {member.name}
+                    </span>
+                  </Td>
+                  <Td className="italic">{member.typeName}</Td>
+                  <Td mono>{member.dataType}</Td>
+                  <Td right mono>
+                    {member.cardinality}
+                  </Td>
+                  <Td className="max-w-80 truncate">
+                    <span title={member.description}>
+                      {member.origin ? `from ${member.origin}` : member.description}
+                    </span>
+                  </Td>
+                </Tr>
+              ))}
+            </tbody>
+          </Table>
+        </TableScroll>
+      )}
+    </section>
   );
 }
 

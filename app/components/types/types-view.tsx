@@ -1,18 +1,27 @@
-import { Search } from "lucide-react";
+import { Plus, Search } from "lucide-react";
 import { useMemo, useState, type KeyboardEvent } from "react";
 import { findTypes, type TypeHit, type TypeKind } from "~/components/model/find-types";
 import type { OpenModel } from "~/components/model/use-model";
 import { NodeClassGlyph } from "~/components/notation/node-class-glyph";
+import { Button } from "~/components/ui/button";
 import { cx } from "~/components/ui/cx";
 import { Input } from "~/components/ui/field";
 import { Icon } from "~/components/ui/icon";
 import { Segments } from "~/components/ui/segments";
 import type { AddressSpace } from "~/domain/address-space/address-space";
+import { isTypeNode } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
+import { AddDataTypeForm } from "./add-data-type-form";
 import { TypeActions } from "./type-actions";
 import { TypeDetail } from "./type-detail";
 
 const most = 200;
+
+/** The class of the type that the address names. */
+function findKind(space: AddressSpace, key: NodeKey | undefined): TypeKind | undefined {
+  const node = key === undefined ? undefined : space.getNode(key);
+  return node && isTypeNode(node) ? node.nodeClass : undefined;
+}
 
 type Props = {
   model: OpenModel;
@@ -24,8 +33,9 @@ type Props = {
 
 /** The types of all loaded models: found on the left, told in the middle, used on the right. */
 export function TypesView({ model, space, shown, onShow, editBlockedBy }: Props) {
-  const [kind, setKind] = useState<TypeKind>("ObjectType");
+  const [kind, setKind] = useState<TypeKind>(() => findKind(space, shown) ?? "ObjectType");
   const [query, setQuery] = useState("");
+  const [isAdding, setAdding] = useState(false);
   const hits = useMemo(() => findTypes(space, { kind }, query, most), [space, kind, query]);
   const type = space.getNode(shown ?? hits[0]?.key ?? ("" as NodeKey));
   return (
@@ -56,6 +66,17 @@ export function TypesView({ model, space, shown, onShow, editBlockedBy }: Props)
               { value: "ReferenceType", label: "Reference" },
             ]}
           />
+          {kind === "DataType" ? (
+            <Button
+              size="small"
+              icon={Plus}
+              className="justify-self-start"
+              blockedBy={editBlockedBy}
+              onClick={() => setAdding(true)}
+            >
+              New DataType
+            </Button>
+          ) : null}
           <p className="text-note text-ink-3">
             <span className="font-mono">{hits.length === most ? `${most}+` : hits.length}</span> in{" "}
             <span className="font-mono">{space.layers.length}</span> loaded models
@@ -67,7 +88,22 @@ export function TypesView({ model, space, shown, onShow, editBlockedBy }: Props)
         {type ? <TypeDetail space={space} type={type} modelId={model.workspace.model.id} onShow={onShow} /> : null}
       </div>
       <div className="min-h-0 overflow-y-auto border-l border-rule bg-bench px-4 py-4">
-        {type ? <TypeActions model={model} space={space} type={type} editBlockedBy={editBlockedBy} /> : null}
+        {isAdding ? (
+          <section aria-label="New DataType" className="types-adding">
+            <h2 className="text-lead font-semibold">New DataType</h2>
+            <AddDataTypeForm
+              onDone={(_name, _closes, key) => {
+                setAdding(false);
+                onShow(key);
+              }}
+            />
+            <Button size="small" tone="bare" onClick={() => setAdding(false)}>
+              Close
+            </Button>
+          </section>
+        ) : type ? (
+          <TypeActions model={model} space={space} type={type} editBlockedBy={editBlockedBy} />
+        ) : null}
       </div>
     </main>
   );
