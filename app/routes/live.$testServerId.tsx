@@ -2,14 +2,15 @@ import type { ShouldRevalidateFunctionArgs } from "react-router";
 import type { Route } from "./+types/live.$testServerId";
 import { mayDo, requireUser } from "~/auth/caller.server";
 import { LiveView } from "~/components/live/live-view";
-import { requireTestServer } from "~/services/find-test-server.server";
+import { requireLiveTarget } from "~/services/live-target.server";
 
-export const meta: Route.MetaFunction = ({ loaderData }) => [{ title: `Live: ${loaderData?.server.modelName ?? "gone"} · Ferrule` }];
+export const meta: Route.MetaFunction = ({ loaderData }) => [{ title: `Live: ${loaderData?.target.name ?? "gone"} · Ferrule` }];
 
 export async function loader({ request, params }: Route.LoaderArgs) {
   const caller = await requireUser(request);
-  const server = requireTestServer(caller, params.testServerId, "read");
-  return { server, mayWrite: mayDo(caller, "test-server.write", server.organizationId), startNode: new URL(request.url).searchParams.get("node") ?? server.landingNode };
+  const target = await requireLiveTarget(caller, params.testServerId, "read");
+  const mayWrite = mayDo(caller, target.kind === "test-server" ? "test-server.write" : "endpoint.write", target.organizationId);
+  return { target, mayWrite, startNode: new URL(request.url).searchParams.get("node") ?? target.landingNode };
 }
 
 /** The node in the address changes with every selection; only another server asks anew. */
@@ -18,5 +19,5 @@ export function shouldRevalidate({ currentParams, nextParams }: ShouldRevalidate
 }
 
 export default function LiveServer({ loaderData }: Route.ComponentProps) {
-  return <LiveView key={loaderData.server.id} server={loaderData.server} startNode={loaderData.startNode} mayWrite={loaderData.mayWrite} />;
+  return <LiveView key={loaderData.target.id} target={loaderData.target} startNode={loaderData.startNode} mayWrite={loaderData.mayWrite} />;
 }

@@ -3,6 +3,7 @@ import { isMember, type Caller } from "../auth/caller.server";
 import { getSupervisor } from "../opcua/supervisor.server";
 import { registerTopicProvider, type Dispose, type Emit } from "./event-hub.server";
 import { followTestServers } from "./follow-test-servers.server";
+import { findLiveTarget } from "./live-target.server";
 import { openEndpoint } from "./live-endpoint.server";
 
 const nothing: Dispose = () => undefined;
@@ -21,9 +22,9 @@ function splitTopic(topic: string): { id: string; rest: string } {
   return { id, rest: rest.join(":") };
 }
 
-function mayLook(caller: Caller, topic: string): boolean {
-  const state = getSupervisor().get(splitTopic(topic).id);
-  return state !== undefined && isMember(caller, state.organizationId);
+async function mayLook(caller: Caller, topic: string): Promise<boolean> {
+  const target = await findLiveTarget(splitTopic(topic).id);
+  return target !== undefined && isMember(caller, target.organizationId);
 }
 
 /** Late listeners get the state as it is; the log comes with the page. */

@@ -12,7 +12,7 @@ import type { Sample } from "~/domain/live/sample";
 import { callMethod, writeValue } from "~/opcua/client/act.server";
 import { browseChildren, findPathTo } from "~/opcua/client/browse.server";
 import { EndpointClient } from "~/opcua/client/endpoint-client.server";
-import { BROWSE_PAGE, type EndpointSettings } from "~/opcua/client/endpoint-settings";
+import { ANONYMOUS, BROWSE_PAGE, PROTECTED, UNPROTECTED, type EndpointSettings } from "~/opcua/client/endpoint-settings";
 import { readNode } from "~/opcua/client/read-node.server";
 import { Supervisor } from "~/opcua/supervisor.server";
 import { buildTestServer, type TestServerBundle } from "../support/test-server-bundle";
@@ -37,7 +37,8 @@ beforeAll(async () => {
   settings = {
     id: "live",
     endpointUrl: state.endpointUrl ?? "",
-    security: "basic256sha256",
+    security: PROTECTED,
+    token: ANONYMOUS,
     certificate: supervisor.getCertificate("live"),
     pkiFolder,
   };
@@ -230,7 +231,7 @@ describe("an endpoint that is not there", () => {
         await waitFor(() => (seen.length > before + 1 ? true : undefined), 30_000);
         expect(states).toEqual(["connected", "lost", "connected"]);
       },
-      { endpointUrl: `opc.tcp://127.0.0.1:${port}`, security: "none", certificate: undefined },
+      { endpointUrl: `opc.tcp://127.0.0.1:${port}`, security: UNPROTECTED, certificate: undefined },
     );
     await server.shutdown();
   });
@@ -253,7 +254,7 @@ describe("a bare server that this application did not start", () => {
         expect(names).toHaveLength(BROWSE_PAGE * 2 + 7);
         expect(new Set(names).size).toBe(names.length);
       },
-      { endpointUrl: `opc.tcp://127.0.0.1:${port}`, security: "none", certificate: undefined },
+      { endpointUrl: `opc.tcp://127.0.0.1:${port}`, security: UNPROTECTED, certificate: undefined },
     );
     await server.shutdown();
   });

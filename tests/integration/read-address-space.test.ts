@@ -12,6 +12,7 @@ import { STRICT_TOLERANCE } from "~/domain/as-built/as-built";
 import { compareAsBuilt } from "~/domain/as-built/compare-as-built";
 import { getValue } from "~/domain/core/result";
 import { readNodeSet } from "~/domain/nodeset/read-nodeset";
+import { ANONYMOUS, PROTECTED } from "~/opcua/client/endpoint-settings";
 import { EndpointClient } from "~/opcua/client/endpoint-client.server";
 import { readAddressSpace, type LiveAddressSpace } from "~/opcua/client/read-address-space.server";
 import { observeVariables } from "~/opcua/client/observe.server";
@@ -43,7 +44,8 @@ beforeAll(async () => {
   client = new EndpointClient({
     id: "walked",
     endpointUrl: state.endpointUrl ?? "",
-    security: "basic256sha256",
+    security: PROTECTED,
+    token: ANONYMOUS,
     certificate: supervisor.getCertificate("walked"),
     pkiFolder: makeTestFolder("walk-pki"),
   });

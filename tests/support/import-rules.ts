@@ -204,6 +204,8 @@ export const domainAreas: readonly string[] = [
   "deliver",
   "simulation",
   "live",
+  "as-built",
+  "release",
 ];
 
 /** Everything that may stand at the top of the project. */

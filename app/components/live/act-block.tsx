@@ -3,14 +3,14 @@ import { useEffect, useState, type ReactNode } from "react";
 import { chooseDecimals, formatNumber, formatRange } from "~/domain/live/format-live";
 import type { CallAnswer, MethodArgument, WriteAnswer } from "~/domain/live/live-action";
 import type { NodeCard } from "~/domain/live/live-node";
-import type { TestServerState } from "~/domain/simulation/test-server-state";
+import type { LiveTarget } from "~/domain/live/live-target";
 import { Field, Input, Select } from "../ui/field";
 import { Icon } from "../ui/icon";
 import { HoldButton } from "./hold-button";
 import { useLiveValue } from "./live-context";
 
 type Props = {
-  server: TestServerState;
+  target: LiveTarget;
   card: NodeCard | null;
   /** The object that a Method is called on. */
   owner: string;
@@ -18,16 +18,16 @@ type Props = {
 };
 
 /** Writing a value or calling a Method: fenced, with its consequence, behind a held press, and in the audit. */
-export function ActBlock({ server, card, owner, mayWrite }: Props) {
-  if (!card || server.state !== "running") return null;
+export function ActBlock({ target, card, owner, mayWrite }: Props) {
+  if (!card || !target.isOpen) return null;
   const blockedBy = !mayWrite
-    ? "Your roles do not write or call on test servers"
-    : server.security.includes("basic256sha256")
+    ? `Your roles do not write or call on ${target.kind === "test-server" ? "test servers" : "endpoints"}`
+    : target.isProtected
       ? undefined
       : "Nothing is written or called over an unprotected connection";
-  if (card.nodeClass === "Method") return <CallBlock key={card.nodeId} server={server} card={card} owner={owner} blockedBy={blockedBy} />;
+  if (card.nodeClass === "Method") return <CallBlock key={card.nodeId} target={target} card={card} owner={owner} blockedBy={blockedBy} />;
   const isWritable = card.nodeClass === "Variable" && card.accessLevel.includes("CurrentWrite") && (card.valueRank ?? -1) < 0;
-  return isWritable ? <WriteBlock key={card.nodeId} server={server} card={card} blockedBy={blockedBy} /> : null;
+  return isWritable ? <WriteBlock key={card.nodeId} target={target} card={card} blockedBy={blockedBy} /> : null;
 }
 
 function Fence({ title, about, foot, children }: { title: string; about: string; foot: ReactNode; children: ReactNode }) {
@@ -43,12 +43,32 @@ function Fence({ title, about, foot, children }: { title: string; about: string;
   );
 }
 
+const MACHINE_CAUTION =
+  "This acts on a running machine: it may start, stop or move. It is no safety function. Check range, unit and owner, see that nobody is within reach, and follow the machine's risk assessment, local codes and licensed practice.";
+
+/** Acting on anything but a test server of ours asks for the endpoint's name, so that nobody acts on the wrong one. */
+function ConfirmField({ target, value, onChange }: { target: LiveTarget; value: string; onChange: (text: string) => void }) {
+  if (target.kind === "test-server") return null;
+  return (
+    <div className="w-64">
+      <Field label={`Type “${target.name}” to confirm`} hint={target.endpointUrl ?? ""}>
+        {(control) => <Input {...control} value={value} onChange={(event) => onChange(event.target.value)} autoComplete="off" />}
+      </Field>
+    </div>
+  );
+}
+
+function isUnconfirmed(target: LiveTarget, confirm: string): boolean {
+  return target.kind === "endpoint" && confirm.trim() !== target.name;
+}
+
 const AUDIT = <span className="text-note text-ink-3">written to the audit</span>;
 
-function WriteBlock({ server, card, blockedBy }: { server: TestServerState; card: NodeCard; blockedBy: string | undefined }) {
+function WriteBlock({ target, card, blockedBy }: { target: LiveTarget; card: NodeCard; blockedBy: string | undefined }) {
   const value = useLiveValue(card.nodeId);
   const [text, setText] = useState("");
-  const { ask, isBusy, answer, problem } = useAct<WriteAnswer>(`/live/${server.id}/write`);
+  const [confirm, setConfirm] = useState("");
+  const { ask, isBusy, answer, problem } = useAct<WriteAnswer>(`/live/${target.id}/write`);
   const unit = card.unit?.text ?? "";
   const now = value?.sample.value;
   const step = typeof now === "number" && text.trim() !== "" ? Number(text.replace(",", ".").replace("\u2212", "-")) - now : Number.NaN;
@@ -56,7 +76,11 @@ function WriteBlock({ server, card, blockedBy }: { server: TestServerState; card
   return (
     <Fence
       title={`Writing sets ${card.displayName}`}
-      about="On this test server only; no machine is connected. A value that moves by itself stays as written, marked as forced by hand, until the server stops."
+      about={
+        target.kind === "test-server"
+          ? "On this test server only; no machine is connected. A value that moves by itself stays as written, marked as forced by hand, until the server stops."
+          : MACHINE_CAUTION
+      }
       foot={
         <>
           <Outcome problem={problem} text={answer ? `${answer.status}: ${answer.before.text} → ${answer.after.text}` : null} isDone={answer?.isDone ?? true} />
@@ -74,8 +98,13 @@ function WriteBlock({ server, card, blockedBy }: { server: TestServerState; card
           <br />
           {card.range ? `allowed ${formatRange(card.range)}` : "no range given"}
         </p>
+        <ConfirmField target={target} value={confirm} onChange={setConfirm} />
         <span className="ml-auto">
-          <HoldButton busy={isBusy} blockedBy={blockedBy ?? (text === "" ? "Give the new value first" : undefined)} onHeld={() => void ask({ node: card.nodeId, value: text })}>
+          <HoldButton
+            busy={isBusy}
+            blockedBy={blockedBy ?? (text === "" ? "Give the new value first" : isUnconfirmed(target, confirm) ? "Confirm the endpoint first" : undefined)}
+            onHeld={() => void ask({ node: card.nodeId, value: text, confirm: confirm.trim() })}
+          >
             Hold to write
           </HoldButton>
         </span>
@@ -84,18 +113,19 @@ function WriteBlock({ server, card, blockedBy }: { server: TestServerState; card
   );
 }
 
-type CallProps = { server: TestServerState; card: NodeCard; owner: string; blockedBy: string | undefined };
+type CallProps = { target: LiveTarget; card: NodeCard; owner: string; blockedBy: string | undefined };
 
-function CallBlock({ server, card, owner, blockedBy }: CallProps) {
+function CallBlock({ target, card, owner, blockedBy }: CallProps) {
   const [inputs, setInputs] = useState<readonly string[]>(() => card.inputArguments.map(() => ""));
-  const { ask, isBusy, answer, problem } = useAct<CallAnswer>(`/live/${server.id}/call`);
+  const [confirm, setConfirm] = useState("");
+  const { ask, isBusy, answer, problem } = useAct<CallAnswer>(`/live/${target.id}/call`);
   const isOpen = card.inputArguments.some((argument, index) => inputs[index] === "" && argument.builtInType !== "String");
   const hasArray = card.inputArguments.some((argument) => argument.builtInType === "array");
   const outputs = answer?.outputs.map((output) => `${output.name} = ${output.text}`).join(", ");
   return (
     <Fence
       title={`Calling runs ${card.displayName}`}
-      about="On this test server only; no machine is connected. It answers with typed results and does nothing else."
+      about={target.kind === "test-server" ? "On this test server only; no machine is connected. It answers with typed results and does nothing else." : MACHINE_CAUTION}
       foot={
         <>
           <Outcome problem={problem} text={answer ? `${answer.status}${outputs ? `: ${outputs}` : ""}` : null} isDone={answer?.isDone ?? true} />
@@ -117,11 +147,12 @@ function CallBlock({ server, card, owner, blockedBy }: CallProps) {
           </div>
         ))}
         {card.inputArguments.length === 0 ? <p className="text-small text-ink-2">It takes no arguments.</p> : null}
+        <ConfirmField target={target} value={confirm} onChange={setConfirm} />
         <span className="ml-auto">
           <HoldButton
             busy={isBusy}
-            blockedBy={blockedBy ?? (hasArray ? "Arrays are not given from here" : isOpen ? "Give all arguments first" : undefined)}
-            onHeld={() => void ask({ object: owner, method: card.nodeId, inputs })}
+            blockedBy={blockedBy ?? (hasArray ? "Arrays are not given from here" : isOpen ? "Give all arguments first" : isUnconfirmed(target, confirm) ? "Confirm the endpoint first" : undefined)}
+            onHeld={() => void ask({ object: owner, method: card.nodeId, inputs, confirm: confirm.trim() })}
           >
             Hold to call
           </HoldButton>

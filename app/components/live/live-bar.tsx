@@ -1,6 +1,6 @@
 import { Pause, Play, TriangleAlert } from "lucide-react";
 import { useState } from "react";
-import type { TestServerState } from "~/domain/simulation/test-server-state";
+import type { LiveTarget } from "~/domain/live/live-target";
 import { StatusBadge } from "../notation/status-badge";
 import { Button, LinkButton } from "../ui/button";
 import { Icon } from "../ui/icon";
@@ -15,22 +15,22 @@ const STREAM_WORDS: Readonly<Record<StreamState, string>> = {
 };
 
 /** Which server, how it is reached, and that nothing here moves a machine. */
-export function LiveBar({ server, values }: { server: TestServerState; values: LiveValues }) {
+export function LiveBar({ target, values }: { target: LiveTarget; values: LiveValues }) {
   const stream = useStream();
   const watched = useWatchedCount();
   const [isPaused, setPaused] = useState(false);
-  const isOver = server.state !== "running" && server.state !== "starting";
+  const isOver = !target.isOpen && target.phase !== "starting";
   return (
     <header className="flex min-h-10 shrink-0 flex-wrap items-center gap-x-2.5 gap-y-1 border-b border-rule px-5 py-1 max-md:px-4">
-      <b className="text-lead font-semibold tracking-[-0.01em]">{server.modelName}</b>
-      <span className="font-mono text-note text-ink-3">{server.endpointUrl ?? "no endpoint"}</span>
+      <b className="text-lead font-semibold tracking-[-0.01em]">{target.name}</b>
+      <span className="font-mono text-note text-ink-3">{target.endpointUrl ?? "no endpoint"}</span>
       <span className="h-[18px] w-px bg-rule max-sm:hidden" />
       <StatusBadge status={isOver ? "bad" : stream === "running" ? "good" : "stale"} quiet>
         <span>
-          {isOver ? `Test server ${server.state}` : STREAM_WORDS[stream]}
+          {isOver ? `Test server ${target.phase}` : STREAM_WORDS[stream]}
           {stream === "running" && !isOver ? (
             <>
-              , <span className="font-mono">{server.security.includes("basic256sha256") ? "SignAndEncrypt" : "None"}</span>
+              , <span className="font-mono">{target.securityMode}</span>
             </>
           ) : null}
         </span>
@@ -40,9 +40,13 @@ export function LiveBar({ server, values }: { server: TestServerState; values: L
       <div className="ml-auto flex items-center gap-2.5">
         <span className="flex items-center gap-1.5 text-small text-warning">
           <Icon of={TriangleAlert} size={14} />
-          Simulated values. No machine is connected.
+          {target.kind === "test-server" ? "Simulated values. No machine is connected." : "Reading from a live device. No values are written."}
         </span>
-        <LinkButton to={`/models/${server.modelId}/test-server`}>Test server</LinkButton>
+        {target.kind === "test-server" ? (
+          <LinkButton to={`/models/${target.modelId}/test-server`}>Test server</LinkButton>
+        ) : (
+          <LinkButton to="/live/endpoints">Endpoints</LinkButton>
+        )}
         <Button
           icon={isPaused ? Play : Pause}
           onClick={() => {
@@ -53,7 +57,7 @@ export function LiveBar({ server, values }: { server: TestServerState; values: L
           {isPaused ? "Go on" : "Pause"}
         </Button>
       </div>
-      {server.security.includes("basic256sha256") ? null : <p className="w-full text-small text-warning">Unprotected connection. Bench use only.</p>}
+      {target.isProtected ? null : <p className="w-full text-small text-warning">Unprotected connection. Bench use only.</p>}
     </header>
   );
 }

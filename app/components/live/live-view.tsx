@@ -1,6 +1,6 @@
 import { useCallback, useEffect, useRef, useState, type ReactNode } from "react";
 import type { BrowsedNode } from "~/domain/live/live-node";
-import type { TestServerState } from "~/domain/simulation/test-server-state";
+import type { LiveTarget } from "~/domain/live/live-target";
 import { ActBlock } from "./act-block";
 import { ColumnView } from "./column-view";
 import { LiveBar } from "./live-bar";
@@ -9,23 +9,23 @@ import { LiveValues } from "./live-values";
 import { PathWire } from "./path-wire";
 import { OBJECTS_FOLDER, useLiveColumns } from "./use-live-columns";
 import { useNodeCard } from "./use-node-card";
-import { useTestServer } from "./use-test-server";
+import { useLiveTarget } from "./use-live-target";
 import { ValueCard } from "./value-card";
 import { toWatched, useWatchList } from "./watch-list";
 import { WatchStrip } from "./watch-strip";
 
 type Props = {
-  server: TestServerState;
+  target: LiveTarget;
   startNode: string | null;
   /** The roles of whoever looks allow writes and calls. */
   mayWrite: boolean;
 };
 
 /** Live: columns to the right along the browse path, the value at their end, the watch strip below. */
-export function LiveView({ server, startNode, mayWrite }: Props) {
+export function LiveView({ target, startNode, mayWrite }: Props) {
   return (
-    <LiveProvider serverId={server.id}>
-      {(values) => <LiveStage initial={server} startNode={startNode} mayWrite={mayWrite} values={values} />}
+    <LiveProvider serverId={target.id}>
+      {(values) => <LiveStage initial={target} startNode={startNode} mayWrite={mayWrite} values={values} />}
     </LiveProvider>
   );
 }
@@ -38,20 +38,19 @@ function LiveProvider({ serverId, children }: { serverId: string; children: (val
 
 const SUGGESTED = 5;
 
-type StageProps = { initial: TestServerState; startNode: string | null; mayWrite: boolean; values: LiveValues };
+type StageProps = { initial: LiveTarget; startNode: string | null; mayWrite: boolean; values: LiveValues };
 
 function LiveStage({ initial, startNode, mayWrite, values }: StageProps) {
-  const { server } = useTestServer(initial);
+  const target = useLiveTarget(initial);
   const [wanted, setWanted] = useState(startNode);
-  const live = useLiveColumns(server.id, wanted);
+  const live = useLiveColumns(target.id, wanted);
   const selected = live.path.at(-1);
-  const card = useNodeCard(server.id, selected);
-  const watch = useWatchList(server.modelId);
+  const card = useNodeCard(target.id, selected);
+  const watch = useWatchList(target.modelId ?? target.id);
   const stage = useRef<HTMLDivElement>(null);
   const scroller = useRef<HTMLDivElement>(null);
-  const isRunning = server.state === "running";
 
-  useEffect(() => values.setServerRunning(isRunning), [values, isRunning]);
+  useEffect(() => values.setServerRunning(target.isOpen), [values, target.isOpen]);
   useAddress(selected?.nodeId);
   useEffect(() => {
     scroller.current?.scrollTo({ left: scroller.current.scrollWidth, behavior: "instant" });
@@ -77,8 +76,8 @@ function LiveStage({ initial, startNode, mayWrite, values }: StageProps) {
 
   return (
     <main id="main" tabIndex={-1} className="flex min-h-0 flex-1 flex-col outline-none max-md:overflow-y-auto">
-      <h1 className="sr-only">Live: {server.applicationName}</h1>
-      <LiveBar server={server} values={values} />
+      <h1 className="sr-only">Live: {target.name}</h1>
+      <LiveBar target={target} values={values} />
       <Trail path={live.path} onGo={(length) => live.select(Math.max(0, length - 1), live.path[Math.max(0, length - 1)] as BrowsedNode)} />
       <div ref={stage} className="relative flex h-[min(446px,52%)] min-h-64 shrink-0 max-md:h-auto max-md:min-h-0 max-md:flex-col">
         <div ref={scroller} data-columns className="flex max-w-[64%] min-w-0 shrink-0 overflow-x-auto max-md:h-[300px] max-md:max-w-full">
@@ -104,7 +103,7 @@ function LiveStage({ initial, startNode, mayWrite, values }: StageProps) {
           isWatched={selected !== undefined && watch.has(selected.nodeId)}
           onWatch={() => selected && toggleWatch(selected)}
           onOpenMember={(node) => live.select(live.path.length, node)}
-          act={<ActBlock server={server} card={card.card} owner={live.path.at(-2)?.nodeId ?? OBJECTS_FOLDER} mayWrite={mayWrite} />}
+          act={<ActBlock target={target} card={card.card} owner={live.path.at(-2)?.nodeId ?? OBJECTS_FOLDER} mayWrite={mayWrite} />}
         />
         <PathWire stage={stage} signature={live.path.map((node) => node.nodeId).join(" ")} />
       </div>

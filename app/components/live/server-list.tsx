@@ -1,6 +1,7 @@
 import { Play } from "lucide-react";
 import { Form, useNavigation } from "react-router";
 import { formatAge } from "~/domain/live/format-live";
+import type { LiveTarget } from "~/domain/live/live-target";
 import type { TestServerState } from "~/domain/simulation/test-server-state";
 import { StatusBadge } from "../notation/status-badge";
 import { Button, LinkButton } from "../ui/button";
@@ -8,14 +9,14 @@ import { Empty } from "../ui/empty";
 import { Page } from "../ui/page";
 import { useNow } from "./live-context";
 
-type Props = { servers: readonly TestServerState[]; models: readonly { readonly id: string; readonly name: string }[]; mayRun: boolean };
+type Props = { servers: readonly TestServerState[]; endpoints: readonly LiveTarget[]; models: readonly { readonly id: string; readonly name: string }[]; mayRun: boolean };
 
 /** Where Live begins: the servers that can be looked at, or the way to one. */
-export function ServerList({ servers, models, mayRun }: Props) {
+export function ServerList({ servers, endpoints, models, mayRun }: Props) {
   const now = useNow(1000);
   return (
-    <Page title="Live" about="Values of running servers, along the browse path.">
-      {servers.length === 0 ? <NoServer models={models} mayRun={mayRun} /> : null}
+    <Page title="Live" about="Values of running servers, along the browse path." actions={<LinkButton to="/live/endpoints">Endpoints</LinkButton>}>
+      {servers.length === 0 && endpoints.length === 0 ? <NoServer models={models} mayRun={mayRun} /> : null}
       <ul className="grid max-w-240">
         {servers.map((server) => (
           <li key={server.id} className="flex min-h-12 flex-wrap items-center gap-x-4 gap-y-1 border-b border-hair py-2">
@@ -33,6 +34,20 @@ export function ServerList({ servers, models, mayRun }: Props) {
                   Watch values
                 </LinkButton>
               ) : null}
+            </span>
+          </li>
+        ))}
+        {endpoints.map((endpoint) => (
+          <li key={endpoint.id} className="flex min-h-12 flex-wrap items-center gap-x-4 gap-y-1 border-b border-hair py-2">
+            <span className="w-56 min-w-0">
+              <b className="block truncate font-semibold">{endpoint.name}</b>
+              <span className="font-mono text-note text-ink-3">{endpoint.endpointUrl}</span>
+            </span>
+            <span className="text-small text-ink-2">endpoint, {endpoint.isProtected ? endpoint.securityMode : "unprotected"}</span>
+            <span className="ml-auto">
+              <LinkButton tone="ink" to={`/live/${endpoint.id}`} aria-label={`Look at ${endpoint.name}`}>
+                Look
+              </LinkButton>
             </span>
           </li>
         ))}

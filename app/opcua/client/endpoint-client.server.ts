@@ -11,6 +11,8 @@ import {
   OPCUACertificateManager,
   OPCUAClient,
   SecurityPolicy,
+  type UserIdentityInfo,
+  UserTokenType,
 } from "node-opcua";
 import { CONNECT_LIMIT, IDLE_LIMIT, PUBLISHING_INTERVAL, REQUEST_LIMIT, type ConnectionState, type EndpointSettings } from "./endpoint-settings";
 import { WatchList } from "./watch-list.server";
@@ -177,7 +179,6 @@ export class EndpointClient {
 }
 
 async function openConnection(settings: EndpointSettings): Promise<Connection> {
-  const isOpen = settings.security === "none";
   const certificates = new OPCUACertificateManager({
     rootFolder: join(settings.pkiFolder, "client"),
     // A pinned certificate is compared by the client itself; without one the endpoint's trust was decided when it was listed.
@@ -188,8 +189,7 @@ async function openConnection(settings: EndpointSettings): Promise<Connection> {
     applicationName: "Ferrule live view",
     clientName: "Ferrule live view",
     clientCertificateManager: certificates,
-    securityMode: isOpen ? MessageSecurityMode.None : MessageSecurityMode.SignAndEncrypt,
-    securityPolicy: isOpen ? SecurityPolicy.None : SecurityPolicy.Basic256Sha256,
+    ...toWireSecurity(settings.security),
     ...(settings.certificate ? { serverCertificate: settings.certificate } : {}),
     endpointMustExist: false,
     connectionStrategy: { maxRetry: 0, initialDelay: 200 },
@@ -205,9 +205,30 @@ async function openConnection(settings: EndpointSettings): Promise<Connection> {
   }
 }
 
+const MODES = {
+  none: MessageSecurityMode.None,
+  sign: MessageSecurityMode.Sign,
+  "sign-and-encrypt": MessageSecurityMode.SignAndEncrypt,
+} as const;
+
+function toWireSecurity({ mode, policy }: EndpointSettings["security"]): { securityMode: MessageSecurityMode; securityPolicy: SecurityPolicy } {
+  return { securityMode: MODES[mode], securityPolicy: mode === "none" ? SecurityPolicy.None : SecurityPolicy[policy] };
+}
+
+function toIdentity(token: EndpointSettings["token"]): UserIdentityInfo {
+  switch (token.kind) {
+    case "anonymous":
+      return { type: UserTokenType.Anonymous };
+    case "user-name":
+      return { type: UserTokenType.UserName, userName: token.userName, password: token.password };
+    case "certificate":
+      return { type: UserTokenType.Certificate, certificateData: token.certificate, privateKey: token.privateKey };
+  }
+}
+
 async function openSession(client: OPCUAClient, settings: EndpointSettings): Promise<Connection> {
   await client.connect(settings.endpointUrl);
-  const session = await client.createSession();
+  const session = await client.createSession(toIdentity(settings.token));
   const namespaces = await session.readNamespaceArray();
   return { client, session, subscription: undefined, namespaces };
 }
