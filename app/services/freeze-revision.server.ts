@@ -9,12 +9,15 @@ import { addAuditStatement } from "../db/repositories/audit.server";
 import { addBlobStatement, toBlob, type StoredBlob } from "../db/repositories/blobs.server";
 import { addRevisionStatement, listRevisions, type ModelRow } from "../db/repositories/models.server";
 import type { PinnedModelRow } from "../db/schema/models";
-import type { Layer } from "../domain/address-space/address-space";
+import type { AddressSpace, Layer } from "../domain/address-space/address-space";
+import type { ChangeRating } from "../domain/compare/change";
+import { compareModels } from "../domain/compare/compare-models";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import { toPackContent, writePack } from "../domain/nodeset/pack";
 import { newId } from "../utils/ids.server";
 import { checkModel, countFindings } from "./check-model.server";
 import { publish } from "./event-hub.server";
+import { loadState } from "./load-revision.server";
 import type { RequiredLayer } from "./required-models.server";
 import { inModelTurn, loadWorkingModel } from "./working-model.server";
 
@@ -53,6 +56,7 @@ async function freeze(author: Caller, model: ModelRow, message: string): Promise
       at: now,
       nodeCount: working.space.own.nodes.size,
       counts: countFindings(checked.findings),
+      changes: newest ? await countChanges(model, newest.number, working.space) : null,
       pinned,
     }),
     addAuditStatement({
@@ -66,6 +70,15 @@ async function freeze(author: Caller, model: ModelRow, message: string): Promise
   );
   await writeBatch(statements);
   return ok(frozen);
+}
+
+/** How much changed by meaning since the revision before. */
+async function countChanges(model: ModelRow, number: number, space: AddressSpace): Promise<Record<ChangeRating, number> | null> {
+  const before = await loadState(model, number);
+  if (!before) return null;
+  const counts = { breaking: 0, additive: 0, neutral: 0 };
+  for (const { rating } of compareModels(before, space).changes) counts[rating]++;
+  return counts;
 }
 
 function packLayer(layer: Layer): Promise<StoredBlob> {

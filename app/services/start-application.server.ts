@@ -6,6 +6,7 @@ import { getEnvironment } from "../utils/env.server";
 import { onShutdown, runShutdown } from "../utils/shutdown.server";
 import { singleton } from "../utils/singleton.server";
 import { getLibrary } from "../library/library.server";
+import { startOutbox } from "./run-outbox.server";
 import { removeOldUploads } from "./pending-uploads.server";
 import { seedDemo } from "./seed-demo.server";
 import { keepSetUpCode, needsSetUp } from "./set-up-organization.server";
@@ -29,6 +30,7 @@ async function start(): Promise<StartReport> {
   getLibrary().usePackFolder(join(getEnvironment().dataFolder, "packs"));
   registerModelTopics();
   await registerLiveTopics();
+  startOutbox();
   const { isDemo, dataFolder } = getEnvironment();
   if (isDemo) return { lines: await seedDemo() };
   if (!(await needsSetUp())) return { lines: [`Data folder: ${dataFolder}`] };

@@ -1,8 +1,9 @@
 import type { Caller } from "../auth/caller.server";
 import { writeBatch } from "../db/client.server";
 import { addAuditStatement } from "../db/repositories/audit.server";
-import { removeModelStatement, updateModelStatement, type ModelRow } from "../db/repositories/models.server";
+import { listVariants, removeModelStatement, updateModelStatement, type ModelRow } from "../db/repositories/models.server";
 import { addRetiredStatements } from "../db/repositories/node-ids.server";
+import { listReleases } from "../db/repositories/releases.server";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import { publish } from "./event-hub.server";
 import { isInLibrary, listDependents } from "./required-models.server";
@@ -22,23 +23,27 @@ export async function renameModel(author: Caller, model: ModelRow, name: string)
 }
 
 /**
- * Deletes a model with its history and sheets; its NodeIds stay in the ledger, so that none is given again.
- * Problem: `model.required-by-others`, unless the library has the same namespace for them to fall back on.
+ * Deletes a model with its history, sheets and variants; its NodeIds stay in the ledger, so that none is given again.
+ * Problems: `model.has-releases`; `model.required-by-others`, unless the library has the same namespace for them to fall
+ * back on. Nobody stands on a variant.
  */
 export async function deleteModel(author: Caller, model: ModelRow): Promise<Result<null>> {
-  const isElsewhere = await isInLibrary(model.organizationId, model.namespaceUri);
+  if ((await listReleases(model.id)).length > 0) return fail(problem("model.has-releases"));
+  const isElsewhere = model.variantOf !== null || (await isInLibrary(model.organizationId, model.namespaceUri));
   const users = isElsewhere ? [] : await listDependents(model.organizationId, model.namespaceUri);
   if (users.length > 0) return fail(problem("model.required-by-others", { names: users.join(", ") }));
+  const variants = await listVariants(model.id);
   await inModelTurn(model.id, async () => {
     const nodes = (await loadWorkingModel(model.id))?.space.listOwnNodes() ?? [];
     await writeBatch([
       removeModelStatement(model.id),
+      ...variants.map((variant) => removeModelStatement(variant.id)),
       ...addRetiredStatements(model.organizationId, nodes.map(toRetired)),
       addAuditStatement({ ...describe(author, model), action: "model.delete", details: { namespaceUri: model.namespaceUri } }),
     ]);
-    forgetWorkingModel(model.id);
+    for (const { id } of [model, ...variants]) forgetWorkingModel(id);
   });
-  publish(`model:${model.id}`, { deleted: true });
+  for (const { id } of [model, ...variants]) publish(`model:${id}`, { deleted: true });
   publish(`models:${model.organizationId}`, { id: model.id, change: "deleted" });
   return ok(null);
 }

@@ -15,6 +15,11 @@ const environmentSchema = z.object({
     .optional(),
   FERRULE_SECRET: z.string().min(32, "must have at least 32 characters").optional(),
   FERRULE_DEMO: z.enum(["0", "1"]).default("0"),
+  FERRULE_SMTP_URL: z
+    .string()
+    .regex(/^(local$|smtps?:\/\/)/, "must start with smtp:// or smtps://, or be the word local")
+    .optional(),
+  FERRULE_MAIL_FROM: z.string().min(3).max(320).default("Ferrule <ferrule@localhost>"),
   FERRULE_ORIGIN: z.url("must be an address such as https://ferrule.example").optional(),
 });
 
@@ -28,6 +33,9 @@ export type Environment = {
   readonly isDemo: boolean;
   /** The address that browsers use when a proxy stands before the application. */
   readonly publicOrigin: string | undefined;
+  /** The mail server; `local` for one that this process runs and that shows what it received; undefined for none. */
+  readonly smtpUrl: string | undefined;
+  readonly mailFrom: string;
 };
 
 export class EnvironmentError extends Error {}
@@ -55,6 +63,8 @@ export function readEnvironment(variables: Readonly<Record<string, string | unde
     databaseUrl: isDemo ? ownDatabase : (data.DATABASE_URL ?? ownDatabase),
     secret: data.FERRULE_SECRET ?? keepSecret(join(dataFolder, "secret")),
     isDemo,
+    smtpUrl: data.FERRULE_SMTP_URL ?? (isDemo ? "local" : undefined),
+    mailFrom: data.FERRULE_MAIL_FROM,
     publicOrigin: data.FERRULE_ORIGIN ? new URL(data.FERRULE_ORIGIN).origin : undefined,
   };
 }

@@ -25,6 +25,15 @@ export function updateMailStatement(id: string, change: Partial<typeof mail.$inf
   return getDatabase().update(mail).set(change).where(eq(mail.id, id));
 }
 
+/** Takes a mail for sending; false when somebody else was quicker. */
+export async function claimMail({ id, nextAttemptAt }: MailRow, until: Date): Promise<boolean> {
+  const result = await getDatabase()
+    .update(mail)
+    .set({ nextAttemptAt: until })
+    .where(and(eq(mail.id, id), eq(mail.state, "waiting"), eq(mail.nextAttemptAt, nextAttemptAt)));
+  return result.rowsAffected === 1;
+}
+
 /** Newest first. */
 export async function listMail(organizationId: string, limit: number): Promise<MailRow[]> {
   return getDatabase().select().from(mail).where(eq(mail.organizationId, organizationId)).orderBy(desc(mail.createdAt), desc(mail.id)).limit(limit);
@@ -86,6 +95,14 @@ export async function listDueWebhookDeliveries(now: Date, limit: number): Promis
     .where(and(eq(webhookDelivery.state, "waiting"), lte(webhookDelivery.nextAttemptAt, now)))
     .orderBy(asc(webhookDelivery.nextAttemptAt))
     .limit(limit);
+}
+
+export async function claimWebhookDelivery({ id, nextAttemptAt }: WebhookDeliveryRow, until: Date): Promise<boolean> {
+  const result = await getDatabase()
+    .update(webhookDelivery)
+    .set({ nextAttemptAt: until })
+    .where(and(eq(webhookDelivery.id, id), eq(webhookDelivery.state, "waiting"), eq(webhookDelivery.nextAttemptAt, nextAttemptAt)));
+  return result.rowsAffected === 1;
 }
 
 export function updateWebhookDeliveryStatement(id: string, change: Partial<typeof webhookDelivery.$inferInsert>) {

@@ -86,6 +86,14 @@ export function voidApprovalsStatement(reviewId: string, by: string, at: Date) {
     .where(and(eq(reviewer.reviewId, reviewId), eq(reviewer.decision, "approved"), isNull(reviewer.voidedAt)));
 }
 
+/** Every decision becomes void: the review has gone on to another revision. */
+export function voidAllStatement(reviewId: string, by: string, at: Date) {
+  return getDatabase()
+    .update(reviewer)
+    .set({ voidedAt: at, voidedBy: by })
+    .where(and(eq(reviewer.reviewId, reviewId), isNotNull(reviewer.decision), isNull(reviewer.voidedAt)));
+}
+
 /** Comments of the review, and those of earlier reviews of the model that nobody has settled. Oldest first. */
 export async function listReviewComments({ id, modelId }: Pick<ReviewRow, "id" | "modelId">): Promise<ReviewCommentRow[]> {
   const db = getDatabase();

@@ -3,6 +3,7 @@ import type { AddressSpace } from "../address-space/address-space";
 import { getPath } from "../address-space/browse";
 import { listMappingEntries, toMappingKey, type MappingEntry, type MappingPart } from "../address-space/mapping-entry";
 import { formatNodeId, type NodeKey } from "../address-space/node-id";
+import { toRowTarget } from "../mapping/type-mapping";
 import type { Change, ChangeKind } from "./change";
 import { isSameJson } from "./merge/model-state";
 import { ratings, type Rating } from "./ratings";
@@ -33,9 +34,9 @@ export function compareMappings(
 
 function toTable(space: AddressSpace, toAfter: (key: NodeKey) => NodeKey): Map<string, MappingEntry> {
   const rename = (entry: MappingEntry): string => {
-    const [target = "", ...below] = entry.id.split("\n");
-    const id =
-      entry.part === "row" || entry.part === "exception" ? [toAfter(target as NodeKey), ...below].join("\n") : entry.id;
+    const [target = ""] = toRowTarget(entry.id).split("\n");
+    const isOfMember = entry.part === "row" || entry.part === "exception";
+    const id = isOfMember ? entry.id.replace(target, toAfter(target as NodeKey)) : entry.id;
     return toMappingKey({ part: entry.part, owner: toAfter(entry.owner), id });
   };
   return new Map(listMappingEntries(space.own.mapping).map((entry) => [rename(entry), entry]));
@@ -44,7 +45,7 @@ function toTable(space: AddressSpace, toAfter: (key: NodeKey) => NodeKey): Map<s
 function toChange(space: AddressSpace, old: MappingEntry | undefined, now: MappingEntry | undefined): Change {
   const entry = (now ?? old) as MappingEntry;
   const kind: ChangeKind = !old ? "mapping-added" : !now ? "mapping-removed" : "mapping-changed";
-  const [target = "", ...below] = entry.id.split("\n");
+  const [target = "", ...below] = toRowTarget(entry.id).split("\n");
   const isOfMember = entry.part === "row" || entry.part === "exception";
   const member = isOfMember ? space.getNode(target as NodeKey) : undefined;
   const node = member ?? space.getNode(entry.owner);

@@ -6,6 +6,7 @@ import { findParent } from "../../address-space/browse";
 import type { AddressSpace } from "../../address-space/address-space";
 import type { Node } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
+import { toRowTarget } from "../../mapping/type-mapping";
 import { conflictId, type ConflictList, type MergeSide } from "./merge-conflict";
 import { isSameJson, type ModelState } from "./model-state";
 
@@ -115,7 +116,7 @@ function listNewMentions(base: ModelState, side: ModelState): ReadonlySet<NodeKe
     const old = base.mapping.get(id);
     // A row is named by the Variable that it feeds, with a path behind the line break where a type gives the member.
     if (!old || !isSameJson(old.value, value))
-      for (const key of [owner, name.split("\n")[0]]) found.add(key as NodeKey);
+      for (const key of [owner, toRowTarget(name).split("\n")[0]]) found.add(key as NodeKey);
   }
   return found;
 }

@@ -4,7 +4,7 @@
  */
 import type { AddressSpace } from "../../address-space/address-space";
 import type { DeclaredReference, Node } from "../../address-space/node";
-import { formatNodeId, type NodeKey } from "../../address-space/node-id";
+import { isSameNodeId, type NodeId, type NodeKey } from "../../address-space/node-id";
 import type { AttributeName, DeclaredAt, Operation } from "../../editing/operation";
 import {
   isSameJson,
@@ -89,42 +89,22 @@ function pickEnds({ edge: { source, type, target } }: PlacedEdge) {
 
 function listAttributeChanges({ kept }: Plan): Operation[] {
   const operations: Operation[] = [];
-  const renumbered: Operation[] = [];
+  const changes: { key: NodeKey; nodeId: NodeId }[] = [];
   for (const { old, now } of kept) {
+    if (!isSameNodeId(old.nodeId, now.nodeId)) changes.push({ key: old.key, nodeId: now.nodeId });
     for (const name of listAttributeNames(old, now)) {
       const value = readAttribute(now, name);
-      if (isSameJson(readAttribute(old, name), value)) continue;
-      const operation: Operation = {
+      if (name === "nodeId" || isSameJson(readAttribute(old, name), value)) continue;
+      operations.push({
         kind: "setAttribute",
         key: old.key,
         attribute: name as AttributeName,
         ...(value === undefined ? {} : { value }),
-      };
-      (name === "nodeId" ? renumbered : operations).push(operation);
+      });
     }
   }
-  return [...orderRenumbering(kept, renumbered), ...operations];
-}
-
-/** A NodeId must be free before another node gets it. */
-function orderRenumbering(kept: Plan["kept"], operations: readonly Operation[]): Operation[] {
-  const held = new Map(kept.map(({ old }) => [formatNodeId(old.nodeId), old.key]));
-  const targets = new Map(kept.map(({ now }) => [now.key, formatNodeId(now.nodeId)]));
-  const ordered: Operation[] = [];
-  let waiting = [...operations];
-  while (waiting.length > 0) {
-    const free = waiting.filter((o) => o.kind === "setAttribute" && !held.has(targets.get(o.key) ?? ""));
-    // Nodes that exchange their numbers cannot be put in order; applying then says which number is taken.
-    if (free.length === 0) return [...ordered, ...waiting];
-    for (const operation of free) {
-      if (operation.kind !== "setAttribute") continue;
-      for (const [id, key] of held) if (key === operation.key) held.delete(id);
-      held.set(targets.get(operation.key) ?? "", operation.key);
-    }
-    ordered.push(...free);
-    waiting = waiting.filter((o) => !free.includes(o));
-  }
-  return ordered;
+  // All numbers at once: two nodes may have exchanged theirs.
+  return changes.length > 0 ? [{ kind: "renumber", changes }, ...operations] : operations;
 }
 
 /** Nodes with those of their references that can stand at once; the others are added when all nodes are there. */
