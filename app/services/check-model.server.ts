@@ -4,9 +4,12 @@ import type { AddressSpace } from "../domain/address-space/address-space";
 import { startChecksInSteps, updateChecks, type CheckRun } from "../domain/checks/run-checks";
 import { toReport, type CheckReport } from "../domain/checks/to-report";
 import type { Finding } from "../domain/checks/finding";
+import type { Wiring } from "../domain/checks/wiring";
+import { makeWiring } from "../domain/mapping/make-wiring";
 import { applyWaivers, type WaivedFindings } from "../domain/checks/waivers";
 import { singleton } from "../utils/singleton.server";
 import { exportModel } from "./export-model.server";
+import { loadPlannedSources } from "./load-planned-sources.server";
 import { loadWorkingModel } from "./working-model.server";
 
 const MAX_CACHED = 16;
@@ -31,7 +34,8 @@ export async function checkModel(modelId: string): Promise<ModelFindings | undef
   }
   // A run takes over the memory of the one before, so those of one model stand in a queue.
   const before = runs.get(modelId);
-  const run = before ? before.then((last) => advance(last, working.space), () => check(working.space)) : check(working.space);
+  const wiring = makeWiring(working.space, await loadPlannedSources(working.model.organizationId));
+  const run = before ? before.then((last) => advance(last, working.space, wiring), () => check(working.space, wiring)) : check(working.space, wiring);
   runs.delete(modelId);
   runs.set(modelId, run);
   for (const oldest of runs.keys()) {
@@ -51,13 +55,13 @@ export async function listAllFindings(modelId: string): Promise<{ seq: number; s
 }
 
 /** An edit touches little; other required models are a new check. */
-function advance(last: CheckRun, space: AddressSpace): CheckRun | Promise<CheckRun> {
+function advance(last: CheckRun, space: AddressSpace, wiring: Wiring): CheckRun | Promise<CheckRun> {
   const isSameBase = last.space.layers.length === space.layers.length && last.space.layers.every((layer, i) => layer === space.layers[i] || layer === last.space.own);
-  return isSameBase ? updateChecks(last, space) : check(space);
+  return isSameBase ? updateChecks(last, space, wiring) : check(space, wiring);
 }
 
-async function check(space: AddressSpace): Promise<CheckRun> {
-  const steps = startChecksInSteps(space);
+async function check(space: AddressSpace, wiring: Wiring): Promise<CheckRun> {
+  const steps = startChecksInSteps(space, { wiring });
   let since = performance.now();
   for (;;) {
     const step = steps.next();

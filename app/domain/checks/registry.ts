@@ -184,8 +184,23 @@ import { r192 } from "./rules/r192-value-namespace";
 import { r193 } from "./rules/r193-value-namespace-index";
 import { r194 } from "./rules/r194-translation-count";
 import { r197 } from "./rules/r197-role-permissions";
+import { r198 } from "./rules/r198-row-feeds-member";
+import { r199 } from "./rules/r199-source-fits-data-type";
+import { r200 } from "./rules/r200-mapped-units-agree";
+import { r202 } from "./rules/r202-output-within-range";
+import { r203 } from "./rules/r203-one-scaling";
+import { r204 } from "./rules/r204-mandatory-mapped";
 import { r311 } from "./rules/r311-five-groups";
 import { r312 } from "./rules/r312-like-its-type";
+import { r401 } from "./rules/r401-mapping-runs";
+import { r402 } from "./rules/r402-check-cases-hold";
+import { r403 } from "./rules/r403-mapped-ranges-fit";
+import { r404 } from "./rules/r404-scaled-once";
+import { r405 } from "./rules/r405-port-once";
+import { r406 } from "./rules/r406-port-class";
+import { r407 } from "./rules/r407-planned-device";
+import { r408 } from "./rules/r408-process-data-length";
+import { r409 } from "./rules/r409-roles-bound";
 
 export const RULES: readonly Rule[] = [
   r001,
@@ -372,8 +387,23 @@ export const RULES: readonly Rule[] = [
   r193,
   r194,
   r197,
+  r198,
+  r199,
+  r200,
+  r202,
+  r203,
+  r204,
   r311,
   r312,
+  r401,
+  r402,
+  r403,
+  r404,
+  r405,
+  r406,
+  r407,
+  r408,
+  r409,
 ];
 
 const byId = new Map<string, Rule>(RULES.map((rule) => [rule.id, rule] as const));

@@ -58,6 +58,7 @@ export type Target = {
   readonly unit: TargetUnit | undefined;
   readonly range: Range | undefined;
   readonly instrumentRange: Range | undefined;
+  /** It and all members above it are mandatory: every machine has it. */
   readonly isMandatory: boolean;
   readonly isProperty: boolean;
   /** The values of an enumeration or a multi-state Variable with their texts. */
@@ -144,6 +145,7 @@ class TargetWalk {
     anchor: Anchor | undefined,
     above: readonly NodeKey[],
     isOfVariable = false,
+    isAlways = true,
   ): void {
     if (at.names.length >= MAX_DEPTH) return;
     const members = listMemberDeclarations(this.#space, sources);
@@ -157,9 +159,10 @@ class TargetWalk {
       const isDirect = member.declared[0]?.scope === DIRECT;
       const next: Anchor = isDirect || !anchor ? { key: member.node.key, below: [] } : { ...anchor, below: [...anchor.below, segment] };
       const { node } = member;
-      if (node.nodeClass === "Variable") this.#found.push(this.#toTarget(member, node, here, next));
+      const isHere = isAlways && isMandatory(member.rule);
+      if (node.nodeClass === "Variable") this.#found.push(this.#toTarget(member, node, here, next, isHere));
       const inner = listMemberSources(this.#space, member, OF_TYPE);
-      this.#visit(inner, here, next, [...above, node.key], node.nodeClass === "Variable");
+      this.#visit(inner, here, next, [...above, node.key], node.nodeClass === "Variable", isHere);
     }
   }
 
@@ -168,6 +171,7 @@ class TargetWalk {
     node: VariableNode,
     here: { names: readonly QualifiedName[]; path: readonly string[] },
     anchor: Anchor,
+    isAlways: boolean,
   ): Target {
     const dataType = getDataType(node);
     const typeNode = this.#space.getNode(dataType);
@@ -189,7 +193,7 @@ class TargetWalk {
       unit: information && toTargetUnit(information),
       range,
       instrumentRange,
-      isMandatory: isMandatory(member.rule),
+      isMandatory: isAlways,
       isProperty: this.#isProperty(member),
       states: this.#listStates(member, dataType),
       isWritable: ((node.accessLevel ?? 1) & CURRENT_WRITE) !== 0,

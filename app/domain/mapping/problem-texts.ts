@@ -21,6 +21,10 @@ export const mappingProblemTexts: Readonly<Record<string, string>> = {
   "mapping.output-limits": "An output needs limits: nothing beyond them is ever written.",
   "mapping.output-safety": "A Variable that mirrors a safety signal cannot be written.",
   "transform.lookup-order": "The lookup table gives two values for one input.",
+  "recording.empty": "The file holds no frame.",
+  "recording.too-long": "The file holds more than {limit} frames.",
+  "recording.columns": "The line has {count} columns; time, port and bytes are needed.",
+  "recording.hex": "“{text}” is no row of hexadecimal pairs.",
   "frame.empty": "There are no bytes yet.",
   "frame.text":
     "These are no bytes: write hexadecimal pairs (04 D2 17 01), decimal octets (4, 210, 23, 1) or a master's answer in JSON.",

@@ -1,8 +1,10 @@
 import { readdirSync } from "node:fs";
 import { describe, expect, test } from "vitest";
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import type { Finding } from "~/domain/checks/finding";
 import { RULES } from "~/domain/checks/registry";
 import { runChecks } from "~/domain/checks/run-checks";
-import { buildModel } from "../../../support/model-builder";
+import { buildModel, type ExampleModel } from "../../../support/model-builder";
 import { getPublishedLayer, getStandardLayer } from "../../../support/published-layers";
 
 const files = readdirSync(new URL("../../../../app/domain/checks/rules/", import.meta.url)).filter((f) =>
@@ -14,6 +16,10 @@ const required = [
   getStandardLayer(),
   ...["Di", "Machinery"].map((name) => getPublishedLayer(`Opc.Ua.${name}.NodeSet2.xml`)),
 ];
+
+function check(space: AddressSpace, { wiring }: ExampleModel): readonly Finding[] {
+  return runChecks(space, wiring ? { wiring } : {});
+}
 
 describe("registry of rules", () => {
   test("holds every rule file once, in the order of numbers", () => {
@@ -32,16 +38,16 @@ describe("registry of rules", () => {
 
 describe.each(RULES)("$id $title", (rule) => {
   test(`good: ${rule.examples.good.text}`, () => {
-    const { space } = buildModel((m) => rule.examples.good.build(m), required);
-    const findings = runChecks(space);
+    const { space, model } = buildModel((m) => rule.examples.good.build(m), required);
+    const findings = runChecks(space, model.wiring ? { wiring: model.wiring } : {});
     expect(findings.filter((f) => f.rule === rule.id)).toEqual([]);
     expect(findings.filter((f) => f.severity === "error")).toEqual([]);
   });
 
   test(`bad: ${rule.examples.bad.text}`, () => {
-    const { space, made } = buildModel((m) => rule.examples.bad.build(m), required);
-    const found = runChecks(space).filter((f) => f.rule === rule.id);
-    expect(found.map((f) => f.key ?? "model")).toContain(made);
+    const { space, made, model } = buildModel((m) => rule.examples.bad.build(m), required);
+    const found = runChecks(space, model.wiring ? { wiring: model.wiring } : {}).filter((f) => f.rule === rule.id);
+    expect(found.map((f) => f.key ?? (f.place ? `place ${f.place.name}` : "model"))).toContain(made);
     expect(found.some((f) => f.severity === rule.severity)).toBe(true);
     for (const finding of found) {
       expect(finding.message).toMatch(/\.$/);
