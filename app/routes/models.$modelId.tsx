@@ -57,6 +57,7 @@ export default function Model({ loaderData }: Route.ComponentProps) {
           { to: `${base}/sheet`, label: "Sheet" },
           { to: `${base}/register`, label: "Register" },
           { to: `${base}/types`, label: "Types" },
+          { to: `${base}/mapping`, label: "Mapping" },
           ...(model.kind === "machines" ? [{ to: `${base}/roll-out`, label: "Roll-out" }] : []),
           {
             to: `${base}/findings`,
@@ -68,6 +69,7 @@ export default function Model({ loaderData }: Route.ComponentProps) {
           },
           { to: `${base}/source`, label: "Source text" },
           { to: `${base}/revisions`, label: "Revisions" },
+          { to: `${base}/as-built`, label: "As-built" },
         ]}
       />
       <div className="flex min-h-0 flex-1 flex-col">

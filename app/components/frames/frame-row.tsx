@@ -1,7 +1,7 @@
 import { FerruleBadge } from "~/components/notation/ferrule-badge";
 import { cx } from "~/components/ui/cx";
+import type { FieldActions } from "./field-actions";
 import type { FrameField, FrameView } from "./frame-fields";
-import type { FieldActions } from "./frame-ruler";
 import { listBits, placeTags, type FrameRows, type Span } from "./lay-out-frame";
 import type { FieldReading } from "./read-fields";
 
@@ -11,6 +11,9 @@ const HEX = 24;
 const LANE = 50;
 const TAG = 19;
 const LETTER = 6.7;
+const TAG_LETTER = 7.2;
+/** Height of one wire's way to the right, below a row. */
+export const TRACK = 7;
 
 type Props = FieldActions & {
   row: FrameRows["rows"][number];
@@ -21,6 +24,7 @@ type Props = FieldActions & {
   readings: ReadonlyMap<number, FieldReading> | undefined;
   picked: ReadonlySet<number> | undefined;
   feeds: ReadonlyMap<number, string> | undefined;
+  wires: { readonly prefix: string; readonly counts: ReadonlyMap<number, number> } | undefined;
   here: number | undefined;
   tabStop: number;
   onHere: (field: number | undefined) => void;
@@ -43,8 +47,14 @@ export function FrameRow(props: Props) {
     })),
     width,
   );
+  const tagsBottom = fieldsBottom + (tags.lanes > 0 ? 6 + tags.lanes * TAG : 0);
+  const tracks = spans.reduce((sum, span) => sum + countWires(props, span), 0);
   return (
-    <div className="relative" style={{ width, height: fieldsBottom + (tags.lanes > 0 ? 6 + tags.lanes * TAG : 0) }}>
+    <div
+      data-tracks-below={tagsBottom}
+      className="relative"
+      style={{ width, height: tagsBottom + (tracks > 0 ? 4 + tracks * TRACK : 0) }}
+    >
       {row.octets.map((octet, i) => (
         <OctetCells
           key={octet}
@@ -62,7 +72,7 @@ export function FrameRow(props: Props) {
           <span key={tag.id} aria-hidden>
             <span
               className="absolute border-l border-ink-3"
-              style={{ left: tag.anchor, top: fieldsBottom - 6, height: y - fieldsBottom + 8 }}
+              style={{ left: tag.anchor, top: fieldsBottom - 6, height: y - fieldsBottom + 16 }}
             />
             <TagText
               tag={tag}
@@ -85,13 +95,18 @@ export function FrameRow(props: Props) {
   );
 }
 
+function countWires({ wires, view }: Props, span: Span): number {
+  const field = span.field === undefined || !span.begins ? undefined : view.fields[span.field];
+  return field === undefined ? 0 : (wires?.counts.get(field.subindex) ?? 0);
+}
+
 function fits(field: FrameField | undefined, span: Span, bit: number): boolean {
   return field !== undefined && (span.to - span.from) * bit >= field.name.length * LETTER + 14;
 }
 
 function measureTag(field: FrameField | undefined, readings: Props["readings"]): number {
   const value = field && readings?.get(field.subindex);
-  return ((field?.name.length ?? 0) + (value ? value.value.length + value.unit.length + 3 : 0)) * LETTER + 10;
+  return ((field?.name.length ?? 0) + (value ? value.value.length + value.unit.length + 3 : 0)) * TAG_LETTER + 14;
 }
 
 function OctetCells({
@@ -193,6 +208,7 @@ function FieldSpan(props: Props & { span: Span; bit: number; top: number }) {
     <button
       type="button"
       data-field={index}
+      {...(props.wires ? { "data-pin": `${props.wires.prefix}${field.subindex}` } : {})}
       tabIndex={index === tabStop ? 0 : -1}
       aria-label={name}
       {...(onPick ? { "aria-pressed": isPicked } : {})}

@@ -1,19 +1,13 @@
-import { useMemo, useRef, useState, type DragEvent, type KeyboardEvent } from "react";
+import { useMemo, useRef, useState, type KeyboardEvent } from "react";
 import { FieldReadout } from "./field-readout";
-import type { FrameField, FrameView } from "./frame-fields";
+import type { FieldActions } from "./field-actions";
+import type { FrameView } from "./frame-fields";
 import { FrameRow } from "./frame-row";
 import { chooseOctetsPerRow, layOutFrame } from "./lay-out-frame";
 import type { FieldReading } from "./read-fields";
 import { useWidth } from "./use-width";
 
 const LEAST_BIT_WIDTH = 11;
-
-export type FieldActions = {
-  /** Enter or a click takes a field; what that means, the page says. */
-  readonly onPick?: ((field: FrameField) => void) | undefined;
-  readonly onDragStart?: ((field: FrameField, event: DragEvent) => void) | undefined;
-  readonly onDragEnd?: (() => void) | undefined;
-};
 
 type Props = FieldActions & {
   /** `QS-U30, process data in`. */
@@ -27,10 +21,12 @@ type Props = FieldActions & {
   feeds?: ReadonlyMap<number, string> | undefined;
   /** Leaves the readout away where the page shows the facts itself. */
   quiet?: boolean;
+  /** Where wires leave: the pin's name before the subindex, and how many wires each field has. */
+  wires?: { readonly prefix: string; readonly counts: ReadonlyMap<number, number> } | undefined;
 };
 
 /** Process data as a ruler of bits, octet by octet as transmitted; each field a coloured, named span. Arrow keys walk. */
-export function FrameRuler({ label, view, octets, readings, picked, feeds, quiet, ...actions }: Props) {
+export function FrameRuler({ label, view, octets, readings, picked, feeds, quiet, wires, ...actions }: Props) {
   const [box, width] = useWidth(1_100);
   const [here, setHere] = useState<number | undefined>(undefined);
   const [tabStop, setTabStop] = useState(0);
@@ -63,6 +59,7 @@ export function FrameRuler({ label, view, octets, readings, picked, feeds, quiet
             readings={readings}
             picked={picked}
             feeds={feeds}
+            wires={wires}
             here={here}
             tabStop={stop}
             onHere={(field) => {

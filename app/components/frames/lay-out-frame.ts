@@ -111,22 +111,35 @@ function cut(field: number | undefined, from: number, to: number, lane: number, 
 export type Tag = { readonly id: number; readonly anchor: number; readonly width: number };
 export type PlacedTag = Tag & { readonly left: number; readonly lane: number };
 
+const GAP = 4;
+
 /**
- * Names beside narrow spans: each as near to its anchor as the edges allow, in the first lane where it meets no other.
- * All figures in pixels.
+ * Names beside narrow spans, hung on a line that comes down from the span: at the left of the line, or at its right where
+ * the edge leaves no room. No name lies on another one, and no line runs through a name. All figures in pixels.
  */
-export function placeTags(tags: readonly Tag[], width: number, gap = 6): { placed: PlacedTag[]; lanes: number } {
-  const ends: number[] = [];
-  const placed = [...tags]
-    .sort((a, b) => a.anchor - b.anchor)
-    .map((tag) => {
-      const left = Math.max(0, Math.min(tag.anchor - tag.width / 2, width - tag.width));
-      let lane = 0;
-      while ((ends[lane] ?? -Infinity) > left) lane++;
-      ends[lane] = left + tag.width + gap;
-      return { ...tag, left, lane };
+export function placeTags(tags: readonly Tag[], width: number): { placed: PlacedTag[]; lanes: number } {
+  const ascending = [...tags].sort((a, b) => a.anchor - b.anchor);
+  const atLeft = ascending.filter((tag) => tag.anchor - tag.width - GAP >= 0);
+  const atRight = ascending.filter((tag) => !atLeft.includes(tag)).reverse();
+  const placed: PlacedTag[] = [];
+  for (const tag of atLeft) placed.push(hang(tag, tag.anchor - GAP - tag.width, placed));
+  for (const tag of atRight) placed.push(hang(tag, Math.min(tag.anchor + GAP, Math.max(0, width - tag.width)), placed));
+  return { placed, lanes: placed.reduce((most, tag) => Math.max(most, tag.lane + 1), 0) };
+}
+
+/** In the first lane that is free for the name and to which the line can come down. */
+function hang(tag: Tag, left: number, placed: readonly PlacedTag[]): PlacedTag {
+  const right = left + tag.width;
+  const isFree = (lane: number): boolean =>
+    placed.every((other) => {
+      const crosses = other.left < right + GAP && left < other.left + other.width + GAP;
+      const lineOfOther = other.lane >= lane && other.anchor > left - 1 && other.anchor < right + 1;
+      const ownLine = other.lane < lane && tag.anchor > other.left - 1 && tag.anchor < other.left + other.width + 1;
+      return !(other.lane === lane && crosses) && !lineOfOther && !ownLine;
     });
-  return { placed, lanes: ends.length };
+  let lane = 0;
+  while (!isFree(lane) && lane < placed.length) lane++;
+  return { ...tag, left, lane };
 }
 
 /** The bits of the octets in the order of transmission. */

@@ -85,6 +85,7 @@ function useModelPalette(): void {
     const screens = [
       { id: "sheet", label: "Sheet", group: "Screens of this model", run: go("sheet") },
       { id: "register", label: "Register", group: "Screens of this model", run: go("register") },
+      { id: "mapping", label: "Mapping", group: "Screens of this model", run: go("mapping") },
       { id: "findings", label: "Findings", group: "Screens of this model", run: go("findings") },
       { id: "source", label: "Source text", group: "Screens of this model", run: go("source") },
       { id: "types", label: "Types", group: "Screens of this model", run: go("types") },
@@ -93,7 +94,7 @@ function useModelPalette(): void {
       ...(workspace.model.kind === "machines" ? [{ id: "roll-out", label: "Roll-out", group: "Screens of this model", run: go("roll-out") }] : []),
       { id: "test-server", label: "Test server", group: "Screens of this model", run: go("test-server") },
     ];
-    const edits = actions.canEdit
+    const edits = actions.canEdit || workspace.permissions.includes("mapping.edit")
       ? [
           { id: "undo", label: "Undo", group: "Actions", hint: "Ctrl Z", run: () => actions.undo() },
           { id: "replace", label: "Find and replace", group: "Actions", hint: "Ctrl H", run: go("register?replace") },

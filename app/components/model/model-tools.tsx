@@ -7,12 +7,13 @@ import { useEditorState, useOpenModel } from "./use-model";
 
 /** In the bar of a model: who else is here, undo and redo, and whether everything is saved. */
 export function ModelTools() {
-  const { actions } = useOpenModel();
+  const { actions, workspace } = useOpenModel();
+  const mayMap = workspace.permissions.includes("mapping.edit");
   const { undoLabel, redoLabel } = useEditorState();
   return (
     <>
       <PeopleHere />
-      {actions.canEdit ? (
+      {actions.canEdit || mayMap ? (
         <>
           <IconButton icon={Undo2} label="Undo" keys="Ctrl Z" onClick={() => actions.undo()} {...(undoLabel === undefined ? { blockedBy: "nothing to undo" } : {})} />
           <IconButton icon={Redo2} label="Redo" keys="Ctrl Shift Z" onClick={() => actions.redo()} {...(redoLabel === undefined ? { blockedBy: "nothing to redo" } : {})} />

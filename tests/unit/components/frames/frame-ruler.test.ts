@@ -102,21 +102,32 @@ describe("the ruler", () => {
     expect(chooseOctetsPerRow(0, 1_100, 11)).toBe(1);
   });
 
-  it("keeps names beside narrow spans apart and within the edges", () => {
+  it("hangs names beside narrow spans so that no line runs through one", () => {
     const { placed, lanes } = placeTags(
       [
-        { id: 0, anchor: 95, width: 40 },
-        { id: 1, anchor: 99, width: 40 },
+        { id: 0, anchor: 280, width: 80 },
+        { id: 1, anchor: 290, width: 60 },
         { id: 2, anchor: 20, width: 40 },
       ],
-      100,
+      300,
     );
     expect(lanes).toBe(2);
+    // Left of its line, the leftmost highest; at the left edge right of its line.
     expect(placed.map(({ id, left, lane }) => [id, left, lane])).toEqual([
-      [2, 0, 0],
-      [0, 60, 0],
-      [1, 60, 1],
+      [0, 196, 0],
+      [1, 226, 1],
+      [2, 24, 0],
     ]);
+    const meets = placed.some((tag) =>
+      placed.some(
+        (other) =>
+          other.id !== tag.id &&
+          other.lane < tag.lane &&
+          tag.anchor > other.left &&
+          tag.anchor < other.left + other.width,
+      ),
+    );
+    expect(meets).toBe(false);
   });
 
   it("writes the highest bit of an octet first", () => {

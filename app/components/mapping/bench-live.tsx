@@ -1,0 +1,178 @@
+import { Pause, Play, RefreshCw } from "lucide-react";
+import { useEffect, useRef, useState } from "react";
+import { StatusBadge } from "~/components/notation/status-badge";
+import { Button } from "~/components/ui/button";
+import { Empty } from "~/components/ui/empty";
+import { Field, Select } from "~/components/ui/field";
+import type { SourceView } from "~/services/read-sources.server";
+import { readPort } from "../sources/read-port";
+import { toFrameId } from "./bench-inputs";
+import type { MappingScene } from "./mapping-scene";
+import type { BenchState } from "./use-bench";
+
+const EVERY_MS = 1_000;
+
+type Place = {
+  readonly id: string;
+  readonly sourceId: string;
+  readonly port: number;
+  readonly label: string;
+  readonly role: string | undefined;
+  readonly machine: string | undefined;
+};
+
+/** Live bytes from the ports of masters: once, or every second. */
+export function BenchLive({
+  bench,
+  scene,
+  sources,
+}: {
+  bench: BenchState;
+  scene: MappingScene;
+  sources: readonly SourceView[];
+}) {
+  const places = listPlaces(sources);
+  const roles = scene.roleViews.filter(({ role }) => role.kind === "io-link-device").map(({ name }) => name);
+  const machines = [...new Set(places.flatMap((place) => place.machine ?? []))];
+  const [chosen, setChosen] = useState<Readonly<Record<string, string>>>(() => chooseFor(places, roles, machines[0]));
+  const [isFollowing, setFollowing] = useState(false);
+  const [state, setState] = useState<{ failures: readonly string[]; at: string } | undefined>(undefined);
+  const latest = useRef(chosen);
+  latest.current = chosen;
+
+  async function readAll(): Promise<void> {
+    const wanted = Object.entries(latest.current).flatMap(([role, id]) => {
+      const place = places.find((one) => one.id === id);
+      return place ? [{ role, place }] : [];
+    });
+    const answers = await Promise.all(
+      wanted.map(async ({ role, place }) => ({ role, place, reading: await readPort(place.sourceId, place.port) })),
+    );
+    bench.setInputs((before) => {
+      const frames = { ...before.frames };
+      for (const { role, reading } of answers) {
+        if (!reading.ok) continue;
+        for (const direction of ["in", "out"] as const) {
+          const frame = reading[direction];
+          if (frame) frames[toFrameId(role, direction)] = { text: frame.hex, isValid: frame.isValid };
+        }
+      }
+      return { ...before, frames };
+    });
+    const failures = answers.flatMap(({ role, reading }) => (reading.ok ? [] : [`${role}: ${reading.message}`]));
+    setState({ failures, at: new Date().toLocaleTimeString([], { hour12: false }) });
+  }
+
+  useEffect(() => {
+    if (!isFollowing) return;
+    let isOver = false;
+    let timer: ReturnType<typeof setTimeout> | undefined;
+    const turn = async () => {
+      await readAll();
+      if (!isOver) timer = setTimeout(() => void turn(), EVERY_MS);
+    };
+    void turn();
+    return () => {
+      isOver = true;
+      clearTimeout(timer);
+    };
+    // Places and roles of the turn are read from the ref, so that a choice does not start another turn.
+  }, [isFollowing]);
+
+  if (places.length === 0)
+    return <Empty title="No port to read from">Plan a master and its ports on the Sources page first.</Empty>;
+  return (
+    <div className="grid gap-3 border-b border-rule pb-3">
+      <div className="grid grid-cols-2 gap-3">
+        {machines.length > 0 ? (
+          <Field label="As machine">
+            {(tied) => (
+              <Select
+                {...tied}
+                size="small"
+                onChange={(event) => setChosen(chooseFor(places, roles, event.currentTarget.value))}
+              >
+                {machines.map((machine) => (
+                  <option key={machine} value={machine}>
+                    {machine}
+                  </option>
+                ))}
+              </Select>
+            )}
+          </Field>
+        ) : null}
+        {roles.map((role) => (
+          <Field key={role} label={`${role} from`}>
+            {(tied) => (
+              <Select
+                {...tied}
+                size="small"
+                value={chosen[role] ?? ""}
+                onChange={(event) => setChosen({ ...chosen, [role]: event.currentTarget.value })}
+              >
+                <option value="">not read</option>
+                {places.map((place) => (
+                  <option key={place.id} value={place.id}>
+                    {place.label}
+                  </option>
+                ))}
+              </Select>
+            )}
+          </Field>
+        ))}
+      </div>
+      <div className="flex flex-wrap items-center gap-2">
+        <Button size="small" icon={RefreshCw} onClick={() => void readAll()}>
+          Read once
+        </Button>
+        <Button
+          size="small"
+          icon={isFollowing ? Pause : Play}
+          aria-pressed={isFollowing}
+          onClick={() => setFollowing(!isFollowing)}
+        >
+          {isFollowing ? "Stop" : "Follow every second"}
+        </Button>
+        {state ? (
+          <StatusBadge status={state.failures.length === 0 ? "good" : "bad"}>
+            {state.failures.length === 0 ? `read at ${state.at}` : state.failures.join("; ")}
+          </StatusBadge>
+        ) : null}
+      </div>
+      <p className="text-note text-ink-3">Reading from a live device. No values are written.</p>
+    </div>
+  );
+}
+
+function listPlaces(sources: readonly SourceView[]): Place[] {
+  return sources.flatMap((source) =>
+    source.ports.flatMap((port): Place[] => {
+      const place = { sourceId: source.id, port: port.port };
+      const name = `${source.name} port ${port.port}`;
+      if (port.bindings.length === 0)
+        return port.plan
+          ? [{ ...place, id: `${source.id} ${port.port}`, label: name, role: undefined, machine: undefined }]
+          : [];
+      return port.bindings.map((binding) => ({
+        ...place,
+        id: `${source.id} ${port.port} ${binding.machineKey} ${binding.role}`,
+        label: `${name}, ${binding.machine} ${binding.role}`,
+        role: binding.role,
+        machine: binding.machine,
+      }));
+    }),
+  );
+}
+
+function chooseFor(
+  places: readonly Place[],
+  roles: readonly string[],
+  machine: string | undefined,
+): Record<string, string> {
+  return Object.fromEntries(
+    roles.flatMap((role) => {
+      const place = places.find((one) => one.role === role && one.machine === machine);
+      return place ? [[role, place.id] as const] : [];
+    }),
+  );
+}

@@ -1,0 +1,20 @@
+import type { Route } from "./+types/sources";
+import { assertMay, mayDo, requireUser } from "~/auth/caller.server";
+import { SourcesView } from "~/components/sources/sources-view";
+import { chooseOrganization } from "~/presenters/chosen-organization.server";
+import { listDevices } from "~/services/read-devices.server";
+import { readSources } from "~/services/read-sources.server";
+
+export const meta: Route.MetaFunction = () => [{ title: "Sources · Ferrule" }];
+
+export async function loader({ request }: Route.LoaderArgs) {
+  const caller = await requireUser(request);
+  const { organizationId } = chooseOrganization(request, caller);
+  assertMay(caller, "read", organizationId);
+  const [sources, devices] = await Promise.all([readSources(organizationId), listDevices(organizationId)]);
+  return { sources, devices, findings: [], mayEdit: mayDo(caller, "mapping.edit", organizationId) };
+}
+
+export default function SourcesRoute({ loaderData }: Route.ComponentProps) {
+  return <SourcesView {...loaderData} />;
+}
