@@ -3,12 +3,12 @@ import { AddressSpace, buildLayer } from "../domain/address-space/address-space"
 import { getOwnNamespace } from "../domain/address-space/model-header";
 import type { Change, ChangeRating, Comparison } from "../domain/compare/change";
 import { compareModels } from "../domain/compare/compare-models";
-import { formatProblem } from "../domain/core/problem-texts";
-import type { Problem, Result } from "../domain/core/result";
+import type { Result } from "../domain/core/result";
 import { listRequired } from "../library/describe-nodeset.server";
 import type { LibraryEntry } from "../library/library-entry";
 import { getLibrary } from "../library/library.server";
 import type { CompareCommand } from "./parse-command-line";
+import { refuse } from "./print-problems";
 import { readFolders, readInput } from "./read-input";
 
 const EXIT_CODES: Readonly<Record<ChangeRating, number>> = { neutral: 0, additive: 1, breaking: 3 };
@@ -53,21 +53,6 @@ function toJson(comparison: Comparison) {
     rating: comparison.rating ?? null,
     proposedVersion: comparison.proposedVersion ?? null,
   };
-}
-
-function refuse(command: CompareCommand, file: string, problems: readonly Problem[]): number {
-  const rows = problems.map((found) => ({
-    file,
-    code: found.code,
-    message: formatProblem(found),
-    line: found.at?.line ?? null,
-    column: found.at?.column ?? null,
-  }));
-  if (command.isJson) process.stdout.write(`${JSON.stringify({ problems: rows }, null, 2)}\n`);
-  else
-    for (const row of rows)
-      process.stderr.write(`${row.file}:${row.line ?? 1}:${row.column ?? 1}: ${row.message} [${row.code}]\n`);
-  return 2;
 }
 
 function formatComparison({ changes, rating, proposedVersion }: Comparison): string {

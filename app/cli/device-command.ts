@@ -1,7 +1,6 @@
 /** `device`: what was read of an IODD. `decode`: one frame of its process data. */
 import { readFile, stat } from "node:fs/promises";
-import { formatProblem } from "../domain/core/problem-texts";
-import { fail, problem, type Problem, type Result } from "../domain/core/result";
+import { fail, problem, type Result } from "../domain/core/result";
 import type { DeviceDescription, IoddDatatype, ProcessDataImage } from "../domain/iodd/device-description";
 import { findIoddUnit } from "../domain/iodd/iodd-units";
 import { PACKAGE_LIMITS, readDevicePackage } from "../domain/iodd/read-package";
@@ -10,24 +9,26 @@ import { chooseLayout } from "../domain/mapping/choose-layout";
 import { decodeFrame, planFrame } from "../domain/mapping/decode-frame";
 import { reportFrame, type FieldReport } from "../domain/mapping/report-frame";
 import { resolvePath, type DecodeCommand, type DeviceCommand } from "./parse-command-line";
+import { formatProblemLine, refuse, toProblemRow } from "./print-problems";
 
 export async function device(command: DeviceCommand): Promise<number> {
   const read = await readDevice(command.file);
-  if (!read.ok) return refuse(command, read.problems);
+  if (!read.ok) return refuse(command, command.file, read.problems);
   if (command.isJson) {
-    process.stdout.write(`${JSON.stringify({ device: read.value, problems: toProblems(read.problems) }, null, 2)}\n`);
+    const problems = read.problems.map((found) => toProblemRow(command.file, found));
+    process.stdout.write(`${JSON.stringify({ device: read.value, problems }, null, 2)}\n`);
     return 0;
   }
   process.stdout.write(formatDevice(read.value));
-  for (const found of read.problems) process.stdout.write(`${formatLine(command.file, found)}\n`);
+  for (const found of read.problems) process.stdout.write(`${formatProblemLine(command.file, found)}\n`);
   return 0;
 }
 
 export async function decode(command: DecodeCommand): Promise<number> {
   const read = await readDevice(command.file);
-  if (!read.ok) return refuse(command, read.problems);
+  if (!read.ok) return refuse(command, command.file, read.problems);
   const fields = decodeHex(read.value, command);
-  if (!fields.ok) return refuse(command, fields.problems);
+  if (!fields.ok) return refuse(command, command.file, fields.problems);
   process.stdout.write(
     command.isJson ? `${JSON.stringify({ fields: fields.value }, null, 2)}\n` : formatFields(fields.value),
   );
@@ -59,26 +60,6 @@ async function readDevice(file: string): Promise<Result<DeviceDescription>> {
   const [first] = read.value.devices;
   if (!first) throw new RangeError("A package without a description was read");
   return { ok: true, value: first.device, problems: read.problems };
-}
-
-function toProblems(problems: readonly Problem[]) {
-  return problems.map((found) => ({
-    code: found.code,
-    severity: found.severity,
-    message: formatProblem(found),
-    line: found.at?.line ?? null,
-    column: found.at?.column ?? null,
-  }));
-}
-
-function refuse(command: { readonly file: string; readonly isJson: boolean }, problems: readonly Problem[]): number {
-  if (command.isJson) process.stdout.write(`${JSON.stringify({ problems: toProblems(problems) }, null, 2)}\n`);
-  else for (const found of problems) process.stderr.write(`${formatLine(command.file, found)}\n`);
-  return 2;
-}
-
-function formatLine(file: string, found: Problem): string {
-  return `${file}:${found.at?.line ?? 1}:${found.at?.column ?? 1}: ${found.severity}: ${formatProblem(found)} [${found.code}]`;
 }
 
 function formatDevice(description: DeviceDescription): string {

@@ -5,8 +5,9 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
       Reads the file with the models it requires and runs the checker.
   npm run -s ferrule -- rules [--json]
       The rules of the checker: number, severity, clause, whether there is a fix; and those that do not run, with the reason.
-  npm run -s ferrule -- roundtrip IN OUT [--with DIR]…
-      Reads IN and writes OUT with all nodes, references and attributes, in the order of IN.
+  npm run -s ferrule -- roundtrip IN OUT [--canonical] [--with DIR]…
+      Reads IN and writes OUT with all nodes, references and attributes, in the order of IN. --canonical: types first, owners
+      before what they own, else by NodeId, so that two files of one model differ only where the model does.
   npm run -s ferrule -- compare OLD NEW [--with DIR]… [--json]
       What changed from OLD to NEW, by meaning: each change rated breaking, additive or neutral, with the clause.
   npm run -s ferrule -- device FILE [--json]

@@ -6,8 +6,7 @@ import {
   readMappingDocument,
   type MappingDocument,
 } from "../domain/deliver/mapping-document";
-import { formatProblem } from "../domain/core/problem-texts";
-import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
+import { fail, ok, problem, type Result } from "../domain/core/result";
 import type { Direction } from "../domain/iodd/device-description";
 import { parseHex } from "../domain/mapping/bits";
 import { findConversion } from "../domain/mapping/find-conversion";
@@ -16,6 +15,7 @@ import { frameKey, planMapping } from "../domain/mapping/plan-mapping";
 import type { Sample } from "../domain/mapping/sample";
 import { formatQuality, formatStatus } from "../domain/mapping/status";
 import { resolvePath, type MapCommand } from "./parse-command-line";
+import { refuse } from "./print-problems";
 
 type NodeValue = {
   readonly target: string;
@@ -28,9 +28,9 @@ type NodeValue = {
 
 export async function map(command: MapCommand): Promise<number> {
   const document = await readDocument(command.file);
-  if (!document.ok) return refuse(command, document.problems);
+  if (!document.ok) return refuse(command, command.file, document.problems);
   const values = runFrames(document.value, command.frames);
-  if (!values.ok) return refuse(command, values.problems);
+  if (!values.ok) return refuse(command, command.file, values.problems);
   process.stdout.write(
     command.isJson ? `${JSON.stringify({ nodes: values.value }, null, 2)}\n` : formatValues(values.value),
   );
@@ -100,19 +100,6 @@ function toNodeValue(document: MappingDocument, target: string, sample: Sample):
     status: formatStatus(sample.status),
     quality: formatQuality(sample.status),
   };
-}
-
-function refuse(command: MapCommand, problems: readonly Problem[]): number {
-  const rows = problems.map((found) => ({
-    code: found.code,
-    message: formatProblem(found),
-    at: found.at?.path ?? null,
-  }));
-  if (command.isJson) process.stdout.write(`${JSON.stringify({ problems: rows }, null, 2)}\n`);
-  else
-    for (const row of rows)
-      process.stderr.write(`${command.file}${row.at === null ? "" : ` ${row.at}`}: ${row.message} [${row.code}]\n`);
-  return 2;
 }
 
 function formatValues(values: readonly NodeValue[]): string {

@@ -19,6 +19,7 @@ export type RoundtripCommand = {
   readonly name: "roundtrip";
   readonly input: string;
   readonly output: string;
+  readonly isCanonical: boolean;
   readonly folders: readonly string[];
 };
 export type CompareCommand = {
@@ -96,7 +97,7 @@ export function parseCommandLine(args: readonly string[]): Command {
   if (name === "roundtrip") {
     if (values.json) throw new UsageError("roundtrip knows no --json.");
     const [input, output] = requireCount(rest, 2, "roundtrip takes two files, IN and OUT.");
-    return { name, input: input ?? "", output: output ?? "", folders };
+    return { name, input: input ?? "", output: output ?? "", isCanonical: values.canonical ?? false, folders };
   }
   if (name === "compare") {
     const [before, after] = requireCount(rest, 2, "compare takes two files, OLD and NEW.");
@@ -135,6 +136,7 @@ function parse(args: readonly string[]) {
         conventions: { type: "string" },
         direction: { type: "string" },
         condition: { type: "string" },
+        canonical: { type: "boolean" },
         frame: { type: "string", multiple: true },
         help: { type: "boolean", short: "h" },
       },

@@ -1,27 +1,27 @@
 /** `roundtrip`: reads a file and writes it again. Required models are not needed: values stay as they stand. */
 import { randomUUID } from "node:crypto";
 import { rename, rm, writeFile } from "node:fs/promises";
-import { formatProblem } from "../domain/core/problem-texts";
 import { problem, type Problem } from "../domain/core/result";
 import { writeNodeSet } from "../domain/nodeset/write-nodeset";
 import { resolvePath, type RoundtripCommand } from "./parse-command-line";
+import { printProblems } from "./print-problems";
 import { readFolders, readInput } from "./read-input";
 
 export async function roundtrip(command: RoundtripCommand): Promise<number> {
   const folders = await readFolders(command.folders);
-  report(command.input, folders.problems);
+  printProblems(command.input, folders.problems);
   if (!folders.ok) return 2;
   const content = await readInput(command.input);
-  report(command.input, content.problems);
+  printProblems(command.input, content.problems);
   if (!content.ok) return 2;
   if (!content.value.isWhole) {
-    report(command.input, [problem("roundtrip.not-whole", { output: command.output })]);
+    printProblems(command.input, [problem("roundtrip.not-whole", { output: command.output })]);
     return 1;
   }
-  const { xml } = writeNodeSet(content.value);
+  const { xml } = writeNodeSet(content.value, { canonicalOrder: command.isCanonical });
   const failure = await save(resolvePath(command.output), xml);
   if (failure) {
-    report(command.output, [failure]);
+    printProblems(command.output, [failure]);
     return 2;
   }
   process.stdout.write(`${command.output}: ${content.value.nodes.length} nodes\n`);
@@ -38,12 +38,5 @@ async function save(file: string, xml: string): Promise<Problem | undefined> {
   } catch (error) {
     await rm(temporary, { force: true }).catch(() => undefined);
     return problem("file.unwritable", { file, detail: error instanceof Error ? error.message : String(error) });
-  }
-}
-
-function report(file: string, problems: readonly Problem[]): void {
-  for (const found of problems) {
-    const { line = 1, column = 1 } = found.at ?? {};
-    process.stderr.write(`${file}:${line}:${column}: ${found.severity}: ${formatProblem(found)} [${found.code}]\n`);
   }
 }

@@ -8,17 +8,29 @@ import { AboutModel } from "~/components/models/about-model";
 import { formatProblem } from "~/domain/core/problem-texts";
 import { ok, type Result } from "~/domain/core/result";
 import type { ModelWorkspace } from "~/presenters/model-workspace.server";
-import { changeRequiredModels, changeVersion } from "~/services/change-model-info.server";
+import { listRenumberings } from "~/presenters/renumberings.server";
+import { changeIdPolicy, changeRequiredModels, changeVersion } from "~/services/change-model-info.server";
 import { listLibraryChoices } from "~/services/list-library-choices.server";
 import { deleteModel, renameModel } from "~/services/update-model.server";
 import { loadWorkingModel } from "~/services/working-model.server";
+import { toIdPolicy } from "~/utils/id-policy-fields";
 import { aboutModelSchema as schema, type AboutModelForm } from "~/utils/model-forms";
 
 export async function loader({ request, params }: Route.LoaderArgs) {
   const { model } = await requireModelForPage(request, params.modelId, "read");
-  const [working, choices] = await Promise.all([loadWorkingModel(model.id), listLibraryChoices(model.organizationId)]);
-  const required = working?.space.own.header.models[0]?.requiredModels.map((entry) => entry.modelUri) ?? [];
-  return { name: model.name, required, choices: choices.filter((choice) => choice.id !== model.id) };
+  const [working, choices, renumberings] = await Promise.all([
+    loadWorkingModel(model.id),
+    listLibraryChoices(model.organizationId),
+    listRenumberings(model.id),
+  ]);
+  const header = working?.space.own.header;
+  return {
+    name: model.name,
+    required: header?.models[0]?.requiredModels.map((entry) => entry.modelUri) ?? [],
+    choices: choices.filter((choice) => choice.id !== model.id),
+    idPolicy: header?.idPolicy,
+    renumberings,
+  };
 }
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [
@@ -36,7 +48,8 @@ export async function action({ request, params }: Route.ActionArgs) {
   const form = await request.formData();
   const submission = parseWithZod(form, { schema });
   if (submission.status !== "success") {
-    const intent = form.get("intent") === "set-version" ? "set-version" : "rename";
+    const asked = form.get("intent");
+    const intent = asked === "set-version" || asked === "set-id-policy" ? asked : "rename";
     return data<Answer>({ intent, submission: submission.reply(), refusal: undefined }, { status: 400 });
   }
   const { value } = submission;
@@ -59,6 +72,8 @@ async function act(caller: Caller, model: ModelAccess["model"], form: AboutModel
       return changeVersion(caller, model, form.version);
     case "set-required":
       return changeRequiredModels(caller, model, form.required);
+    case "set-id-policy":
+      return changeIdPolicy(caller, model, toIdPolicy(form));
     case "delete":
       return deleteModel(caller, model);
   }
@@ -72,6 +87,8 @@ export default function About({ loaderData, actionData }: Route.ComponentProps) 
       workspace={workspace}
       required={loaderData.required}
       choices={loaderData.choices}
+      idPolicy={loaderData.idPolicy}
+      renumberings={loaderData.renumberings}
       answer={actionData}
       editBlockedBy={
         workspace.permissions.includes("model.edit") ? undefined : "asks for the role engineer or administrator"

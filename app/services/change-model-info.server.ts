@@ -2,9 +2,11 @@
 import type { Caller } from "../auth/caller.server";
 import type { ModelRow } from "../db/repositories/models.server";
 import type { AddressSpace } from "../domain/address-space/address-space";
+import type { IdPolicy } from "../domain/address-space/id-policy";
 import { OPC_UA_NAMESPACE } from "../domain/address-space/node-id";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import { BlockAllocator } from "../domain/editing/allocate-node-id";
+import { setIdPolicy } from "../domain/editing/commands/set-id-policy";
 import { setModelInfo, setRequiredModels } from "../domain/editing/commands/set-model-info";
 import type { Edit } from "../domain/editing/edit-draft";
 import { newId } from "../utils/ids.server";
@@ -51,6 +53,11 @@ export async function changeRequiredModels(
   );
 }
 
+/** How new nodes get their NodeIds from now on. Problems: those of `checkIdPolicy`. */
+export function changeIdPolicy(author: Caller, model: ModelRow, policy: IdPolicy): Promise<Result<null>> {
+  return append(author, model, "set-id-policy", (space) => setIdPolicy(space, noIdentifiers(model), { policy }));
+}
+
 async function append(
   author: Caller,
   model: ModelRow,
@@ -61,6 +68,7 @@ async function append(
   if (!working) return fail(problem("request.not-found"));
   const made = edit(working.space);
   if (!made.ok) return made;
+  if (made.value.operations.length === 0) return ok(null);
   const outcome = await appendTransactions(model.id, author, {
     clientId: `page-${newId()}`,
     base: working.seq,

@@ -3,6 +3,8 @@ import { z } from "zod";
 import { comparisonSchema, findingsSchema, modelSchema, problemDocumentSchema, revisionSchema } from "../utils/api-schemas";
 import { testServerAnswerSchema } from "./describe-test-server.server";
 import { freezeSchema } from "./freeze-revision.server";
+import { asBuiltIntentSchema } from "./make-as-built.server";
+import { asBuiltRunSchema, asBuiltSummarySchema } from "./read-as-built.server";
 import { testServerIntentSchema } from "./start-test-server.server";
 
 const schemas = {
@@ -11,6 +13,8 @@ const schemas = {
   Revision: revisionSchema,
   Comparison: comparisonSchema,
   TestServer: testServerAnswerSchema,
+  AsBuiltReport: asBuiltSummarySchema,
+  AsBuiltRun: asBuiltRunSchema,
   Problem: problemDocumentSchema,
 } as const;
 type SchemaName = keyof typeof schemas;
@@ -123,7 +127,16 @@ const paths = {
     get: {
       operationId: "exportModel",
       summary: "The NodeSet2 file of the working state",
-      responses: { 200: { description: "The file", content: nodeSetBody }, ...problems(401, 403, 404) },
+      parameters: [
+        {
+          name: "order",
+          in: "query",
+          required: false,
+          schema: { type: "string", enum: ["file", "canonical"], default: "file" },
+          description: "file: as it was imported, with what is new behind. canonical: types first, owners before what they own, else by NodeId.",
+        },
+      ],
+      responses: { 200: { description: "The file", content: nodeSetBody }, ...problems(400, 401, 403, 404) },
     },
   },
   "/models/{modelId}/node-ids": {
@@ -191,6 +204,37 @@ const paths = {
       description: "Answers at once in state `starting`. A simulation, not for control.",
       requestBody: { required: false, content: { "application/json": { schema: toJsonSchema(testServerIntentSchema, "input") } } },
       responses: { 201: json(refTo("TestServer"), "The test server, starting"), ...problems(400, 401, 403, 404, 415, 422, 503) },
+    },
+  },
+  "/models/{modelId}/as-built-reports": {
+    parameters: [pathId("modelId")],
+    get: {
+      operationId: "listAsBuiltReports",
+      summary: "Comparisons of live servers with states of the model, newest first",
+      responses: { 200: json({ type: "array", items: refTo("AsBuiltReport") }, "The reports"), ...problems(401, 403, 404) },
+    },
+    post: {
+      operationId: "startAsBuiltReport",
+      summary: "Compare a live server with a state of the model",
+      description: "Answers at once with the run; ask for it until it is done. `targetId` is a test server or an endpoint. Reads only.",
+      requestBody: { required: true, content: { "application/json": { schema: toJsonSchema(asBuiltIntentSchema, "input") } } },
+      responses: { 202: json(refTo("AsBuiltRun"), "The run"), ...problems(400, 401, 403, 404, 415, 422) },
+    },
+  },
+  "/as-built-runs/{runId}": {
+    parameters: [pathId("runId")],
+    get: {
+      operationId: "getAsBuiltRun",
+      summary: "How far a comparison with a live server is",
+      responses: { 200: json(refTo("AsBuiltRun"), "The run"), ...problems(401, 403, 404) },
+    },
+  },
+  "/as-built-reports/{reportId}": {
+    parameters: [pathId("reportId")],
+    get: {
+      operationId: "getAsBuiltReport",
+      summary: "The evidence of one report, the very text that was hashed and signed",
+      responses: { 200: json({ type: "object" }, "The report"), ...problems(401, 403, 404) },
     },
   },
   "/test-servers/{testServerId}": {

@@ -1,5 +1,6 @@
 /** Forms about models; checked in the browser while typing and again on the server. */
 import { z } from "zod";
+import { idPolicyFields as idPolicySchema } from "./id-policy-fields";
 
 const maxUri = 400;
 
@@ -45,6 +46,7 @@ export const aboutModelSchema = z.discriminatedUnion("intent", [
     intent: z.literal("set-required"),
     required: z.array(z.string().max(maxUri)).max(50, "At most 50 models").default([]),
   }),
+  idPolicySchema,
   z.object({ intent: z.literal("delete") }),
 ]);
 export type AboutModelForm = z.infer<typeof aboutModelSchema>;

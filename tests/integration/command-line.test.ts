@@ -133,6 +133,12 @@ describe("roundtrip", () => {
     const [once, twice] = [join(scratch, "1.xml"), join(scratch, "2.xml")];
     expect((await run("roundtrip", published("Opc.Ua.IOLink.NodeSet2.xml"), once)).code).toBe(0);
     expect((await run("roundtrip", once, twice)).code).toBe(0);
+    const canonical = join(scratch, "canonical.xml");
+    expect((await run("roundtrip", once, canonical, "--canonical")).code).toBe(0);
+    const order = (path: string): string[] =>
+      [...readFileSync(path, "utf8").matchAll(/<UA(\w+) NodeId="([^"]+)"/g)].map((match) => match[2] ?? "");
+    expect(order(canonical)).not.toEqual(order(once));
+    expect(order(canonical).sort()).toEqual(order(once).sort());
     expect(readFileSync(twice)).toEqual(readFileSync(once));
   });
 

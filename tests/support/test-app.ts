@@ -123,7 +123,7 @@ async function runHandler(
     if (answer instanceof Response) return answer;
     const wrapped = answer as { type?: string; data?: unknown; init?: ResponseInit } | null;
     return wrapped?.type === "DataWithResponseInit"
-      ? Response.json(wrapped.data, wrapped.init)
+      ? Response.json(wrapped.data, wrapped.init ?? undefined)
       : Response.json(answer ?? null);
   } catch (thrown) {
     if (thrown instanceof Response) return thrown;

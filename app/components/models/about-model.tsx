@@ -11,9 +11,13 @@ import { Field, Input } from "~/components/ui/field";
 import { Icon } from "~/components/ui/icon";
 import { Notice } from "~/components/ui/notice";
 import { Block, Page } from "~/components/ui/page";
+import type { IdPolicy } from "~/domain/address-space/id-policy";
 import type { ModelWorkspace } from "~/presenters/model-workspace.server";
+import type { Renumbering } from "~/presenters/renumberings.server";
 import type { LibraryChoice } from "~/services/list-library-choices.server";
 import type { AboutModelForm } from "~/utils/model-forms";
+import { IdPolicyForm } from "./id-policy-form";
+import { RenumberingsTable } from "./renumberings-table";
 
 type Intent = AboutModelForm["intent"];
 type Answer = {
@@ -26,11 +30,14 @@ type Props = {
   workspace: ModelWorkspace;
   required: readonly string[];
   choices: readonly LibraryChoice[];
+  idPolicy: IdPolicy | undefined;
+  renumberings: readonly Renumbering[];
   answer: Answer | undefined;
   editBlockedBy: string | undefined;
 };
 
-export function AboutModel({ workspace, required, choices, answer, editBlockedBy }: Props) {
+export function AboutModel({ workspace, required, choices, idPolicy, renumberings, answer, editBlockedBy }: Props) {
+  const isSettingIds = useIsSending("set-id-policy");
   const { model } = workspace;
   const refusalOf = (intent: Intent) => (answer?.intent === intent ? answer.refusal : undefined);
   const errorsOf = (intent: Intent, field: string) =>
@@ -56,6 +63,9 @@ export function AboutModel({ workspace, required, choices, answer, editBlockedBy
               refusal={refusalOf("set-required")}
               editBlockedBy={editBlockedBy}
             />
+          </Block>
+          <Block title="Renumbered">
+            <RenumberingsTable list={renumberings} />
           </Block>
         </div>
         <div className="grid content-start gap-5">
@@ -96,12 +106,32 @@ export function AboutModel({ workspace, required, choices, answer, editBlockedBy
               <Icon of={Download} /> Download NodeSet2
             </a>
             <a
+              href={`/models/${model.id}/nodeset?order=canonical`}
+              download
+              className={buttonClass("plain", "medium", "justify-self-start")}
+            >
+              <Icon of={Download} /> The same in canonical order
+            </a>
+            <a
               href={`/api/v1/models/${model.id}/node-ids`}
               download
               className={buttonClass("plain", "medium", "justify-self-start")}
             >
               <Icon of={Download} /> Download NodeIds as CSV
             </a>
+          </Part>
+          <Part
+            id="node-ids"
+            title="NodeIds"
+            about="Given once and for all; nodes that are there keep theirs until somebody renumbers them."
+          >
+            <IdPolicyForm
+              key={JSON.stringify(idPolicy)}
+              policy={idPolicy}
+              refusal={refusalOf("set-id-policy")}
+              isSending={isSettingIds}
+              editBlockedBy={editBlockedBy}
+            />
           </Part>
           <Part
             id="delete"

@@ -4,10 +4,12 @@ import { handleApi, refuseChanges } from "~/utils/api-handler.server";
 import { failWith } from "~/utils/problem-response.server";
 import type { Route } from "./+types/model-nodeset";
 
-/** `GET /api/v1/models/{id}/nodeset`: the NodeSet2 file of the working state. */
+/** `GET /api/v1/models/{id}/nodeset?order=canonical`: the NodeSet2 file of the working state. */
 export const loader = handleApi(async ({ request, params }: Route.LoaderArgs) => {
   const { model } = await requireModel(request, params.modelId, "read");
-  const written = await exportModel(model.id);
+  const order = new URL(request.url).searchParams.get("order") ?? "file";
+  if (order !== "file" && order !== "canonical") throw failWith(400, "request.field", { field: "order", message: "file or canonical" });
+  const written = await exportModel(model.id, { canonicalOrder: order === "canonical" });
   if (!written) throw failWith(404, "request.not-found");
   return new Response(written.xml, {
     headers: {
