@@ -35,6 +35,7 @@ export default [
     route("waivers/:waiverId", "routes/data/model-waiver.ts"),
     route("sheets", "routes/data/model-sheets.ts"),
     route("sheets/:sheetId", "routes/data/model-sheet.ts"),
+    route("renumberings.csv", "routes/data/renumberings.ts"),
   ]),
   ...prefix("api", [
     route("auth/*", "routes/api/auth.ts"),
@@ -69,6 +70,7 @@ export default [
     ]),
     route("devices", "routes/devices.tsx"),
     route("devices/:deviceId", "routes/devices.$deviceId.tsx"),
+      route("renumber", "routes/models.$modelId.renumber.tsx"),
     route("sources", "routes/sources.tsx"),
     route("sources/wiring-list", "routes/sources.wiring-list.tsx"),
     route("library", "routes/library.tsx"),

@@ -1,5 +1,6 @@
 /** Who did what when, as a file. */
 import { listAudit, type AuditRow } from "../db/repositories/audit.server";
+import { writeCsvLine } from "../utils/write-csv";
 
 type AuditLine = {
   readonly id: number;
@@ -34,11 +35,5 @@ export async function* exportAudit(organizationId: string): AsyncGenerator<strin
 
 function toCsvLine(line: AuditLine): string {
   const cells = columns.map((column) => (column === "details" ? JSON.stringify(line.details) : String(line[column])));
-  return `${cells.map(quoteCell).join(",")}\r\n`;
-}
-
-/** A spreadsheet would run a cell that begins like a formula; an apostrophe before it makes it text. */
-function quoteCell(text: string): string {
-  const safe = /^[=+\-@\t\r]/.test(text) ? `'${text}` : text;
-  return `"${safe.replaceAll('"', '""')}"`;
+  return writeCsvLine(cells);
 }

@@ -1,4 +1,4 @@
-import { ChevronDown, Download, Info, Play, Table2, Trash2 } from "lucide-react";
+import { ChevronDown, Download, Hash, Info, Play, Table2, Trash2 } from "lucide-react";
 import type { ReactNode } from "react";
 import { useRunningTestServers, type RunningServer } from "~/components/shell/use-running-test-servers";
 import { LinkButton } from "~/components/ui/button";
@@ -39,6 +39,7 @@ export function ModelBar({ model, tabs, mayEdit, tools, testServer }: Props) {
           ...(mayEdit
             ? ([
                 { kind: "link", label: "Add from a signal list", icon: Table2, to: `/models/${model.id}/signals` },
+                { kind: "link", label: "Renumber nodes", icon: Hash, to: `/models/${model.id}/renumber` },
               ] as const)
             : []),
           {
