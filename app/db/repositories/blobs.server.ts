@@ -52,6 +52,7 @@ export async function removeUnusedBlobs(): Promise<number> {
       union select description_hash from device_description
       union select file_hash from tag_list where file_hash is not null
       union select tags_hash from tag_list
+      union select body_hash from as_built_report
     )`);
   return result.rowsAffected;
 }
