@@ -9,6 +9,7 @@ import { getLanguage, isDescription, type CellColumn, type DescriptionColumn } f
 import { findRuleName, formatValueRank, getNodeName } from "../model/member-facts";
 import { formatLocalNodeId } from "../model/namespace-label";
 import { formatValueText } from "../model/value-text";
+import { formatSourceField } from "./source-field";
 
 export type ColumnId = CellColumn;
 
@@ -31,6 +32,7 @@ const BEFORE_TEXTS: readonly Column[] = [
   { id: "range", title: "EURange", width: 100, isRight: true, isMono: true },
   { id: "rule", title: "Rule", width: 90 },
   { id: "access", title: "Access", width: 56, isMono: true },
+  { id: "source", title: "Source field", width: 190, isMono: true },
   { id: "value", title: "Value", width: 84, isMono: true },
 ];
 
@@ -39,9 +41,10 @@ const BEHIND_TEXTS: readonly Column[] = [
   { id: "finding", title: "Finding", width: 62 },
 ];
 
-/** Every column there is, with one for each language of the descriptions. */
-export function listColumns(languages: readonly string[]): Column[] {
-  return [...BEFORE_TEXTS, ...languages.map(toTextColumn), ...BEHIND_TEXTS];
+/** Every column there is, with one for each language of the descriptions; what feeds a member is shown where there is a mapping. */
+export function listColumns(languages: readonly string[], isMapped = false): Column[] {
+  const facts = BEFORE_TEXTS.filter((column) => isMapped || column.id !== "source");
+  return [...facts, ...languages.map(toTextColumn), ...BEHIND_TEXTS];
 }
 
 function toTextColumn(language: string): Column {
@@ -83,6 +86,7 @@ export function getCellText(space: AddressSpace, node: Node, column: ColumnId): 
     case "nodeId":
       return formatLocalNodeId(node.nodeId);
     case "source":
+      return formatSourceField(space, node);
     case "finding":
       return "";
   }

@@ -5,12 +5,14 @@ import { isTypeNode, type Node } from "~/domain/address-space/node";
 import { isDescription } from "../model/cell-change";
 import { getNodeName, isProperty } from "../model/member-facts";
 import { useBadges, useMatesAmong } from "../model/use-model";
+import { FerruleBadge } from "../notation/ferrule-badge";
 import { FindingBadge } from "../notation/finding-badge";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
 import { cx } from "../ui/cx";
 import { CellEditor } from "./cell-editor";
 import { getCellText, type Column, type ColumnId } from "./columns";
 import type { RegisterRow } from "./register-rows";
+import { findSourceField, formatSourceField } from "./source-field";
 import type { CellEdit, GridControl } from "./use-grid-control";
 
 type Props = {
@@ -75,6 +77,7 @@ type CellProps = { space: AddressSpace; row: RegisterRow; node: Node; column: Co
 function Cell({ space, row, node, column, grid, firstText }: CellProps) {
   if (column === "name") return <NameCell space={space} row={row} node={node} grid={grid} />;
   if (column === "finding") return <FindingCell row={row} />;
+  if (column === "source") return <SourceCell space={space} node={node} />;
   const text = getCellText(space, node, column);
   if (column === firstText && text === "" && row.origin !== undefined) return <span>from {getNodeName(space, row.origin)}</span>;
   return text === "" ? null : <span title={text.length > 14 ? text : undefined}>{text}</span>;
@@ -93,6 +96,19 @@ function NameCell({ space, row, node, grid }: { space: AddressSpace; row: Regist
       )}
       <NodeClassGlyph kind={isProperty(space, node) ? "Property" : node.nodeClass} label />
       <b>{name}</b>
+    </span>
+  );
+}
+
+function SourceCell({ space, node }: { space: AddressSpace; node: Node }) {
+  const field = findSourceField(space, node);
+  if (!field) return null;
+  const text = formatSourceField(space, node);
+  const title = field.exception === undefined ? text : `${text} (differs from its type: ${field.exception})`;
+  return (
+    <span className="register-source" title={title || undefined}>
+      <FerruleBadge feed={field.feed} width={18} />
+      <span>{field.exception === undefined ? text : `${text} *`}</span>
     </span>
   );
 }

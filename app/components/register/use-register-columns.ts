@@ -1,6 +1,7 @@
 import { useCallback, useDeferredValue, useEffect, useMemo, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { listColumns, listLanguages, type Column, type ColumnId } from "./columns";
+import { hasMapping, useSourceWords } from "./source-field";
 
 const STORAGE_KEY = "register-columns";
 const ALWAYS: ColumnId = "name";
@@ -33,6 +34,8 @@ export function useRegisterColumns(space: AddressSpace): { columns: readonly Col
   // Languages change rarely; looking for them must not hold up a key press.
   const settled = useDeferredValue(space);
   const found = useMemo(() => listLanguages(settled).join("\n"), [settled]);
+  const isMapped = hasMapping(space);
+  const hasWords = useSourceWords(isMapped);
 
   useEffect(() => setKept(readKept()), []);
 
@@ -46,7 +49,7 @@ export function useRegisterColumns(space: AddressSpace): { columns: readonly Col
 
   return useMemo(() => {
     const languages = [...new Set([...found.split("\n"), ...kept.languages])];
-    const all = listColumns(languages);
+    const all = listColumns(languages, isMapped && hasWords);
     const hidden = new Set(kept.hidden);
     const columns = all
       .filter((column) => !hidden.has(column.id))
@@ -65,7 +68,7 @@ export function useRegisterColumns(space: AddressSpace): { columns: readonly Col
       reset: () => change(() => NOTHING),
     };
     return { columns, template, width, choice };
-  }, [kept, found, change]);
+  }, [kept, found, isMapped, hasWords, change]);
 }
 
 function withWidth({ grows: _grows, ...column }: Column, width: number): Column {

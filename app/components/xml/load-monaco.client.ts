@@ -1,6 +1,24 @@
 /** The editor for source text, loaded when it is wanted the first time: it is larger than all the rest together. */
 import EditorWorker from "monaco-editor/editor/editor.worker.js?worker";
 import * as monaco from "monaco-editor/editor.js";
+import "monaco-editor/features/bracketMatching/register.js";
+import "monaco-editor/features/caretOperations/register.js";
+import "monaco-editor/features/clipboard/register.js";
+import "monaco-editor/features/codeEditor/register.js";
+import "monaco-editor/features/codicon/register.js";
+import "monaco-editor/features/comment/register.js";
+import "monaco-editor/features/cursorUndo/register.js";
+import "monaco-editor/features/find/register.js";
+import "monaco-editor/features/folding/register.js";
+import "monaco-editor/features/gotoError/register.js";
+import "monaco-editor/features/hover/register.js";
+import "monaco-editor/features/indentation/register.js";
+import "monaco-editor/features/linesOperations/register.js";
+import "monaco-editor/features/multicursor/register.js";
+import "monaco-editor/features/stickyScroll/register.js";
+import "monaco-editor/features/toggleTabFocusMode/register.js";
+import "monaco-editor/features/wordHighlighter/register.js";
+import "monaco-editor/features/wordOperations/register.js";
 import "monaco-editor/languages/definitions/xml/register.js";
 
 self.MonacoEnvironment = { getWorker: () => new EditorWorker() };
