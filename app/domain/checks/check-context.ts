@@ -14,7 +14,8 @@ import { usesNamespace } from "./namespace-use";
 import type { Subject } from "./slots";
 import { groupByNodeId, hasTwins } from "./twins";
 import { addTypeName, getTypeNames, makeTypeNames, removeTypeName, type TypeNames } from "./type-names";
-import { FROM, HIERARCHICAL, OTHER, SUBTYPE, TO } from "./views";
+import { FROM, HIERARCHICAL, OTHER, SUBTYPE, TO, type NodeHead } from "./views";
+import { TYPE_CLASSES } from "./node-classes";
 
 /** A lookup worth remembering; `makeLookup` makes it. */
 export type Lookup<T> = LookupOf<CheckContext, T>;
@@ -55,6 +56,11 @@ export class CheckContext {
   /** The NodeClass; undefined where there is no node. Who asks no more is not disturbed by other changes of the node. */
   classOf(key: NodeKey): NodeClass | undefined {
     return this.#memory.classOf(key);
+  }
+
+  /** NodeClass and BrowseName of the node, likewise. */
+  head(key: NodeKey): NodeHead | undefined {
+    return this.#memory.head(key);
   }
 
   /** Edges from the node that are hierarchical, HasSubtype left out. */
@@ -208,7 +214,7 @@ export class CheckContext {
   }
 
   nameOf(key: NodeKey): string {
-    return this.node(key)?.browseName.name ?? key;
+    return this.head(key)?.browseName.name ?? key;
   }
 
   /** The namespace of a node, loaded or not; undefined when the key is no NodeId text. */
@@ -226,17 +232,19 @@ export class CheckContext {
     const isStartOwn = this.isOwn(key);
     for (let at: NodeKey | undefined = key; at !== undefined && !seen.has(at);) {
       seen.add(at);
-      const node = this.node(at);
-      if (!node || (names.length > 0 && isStartOwn && !this.isOwn(at))) break;
-      names.unshift(node.browseName.name);
-      at = isTypeNode(node) ? undefined : this.#parentOf(node);
+      const head = this.head(at);
+      if (!head || (names.length > 0 && isStartOwn && !this.isOwn(at))) break;
+      names.unshift(head.browseName.name);
+      at = TYPE_CLASSES.includes(head.nodeClass) ? undefined : this.#parentOf(at);
     }
     return names.join("/");
   }
 
-  #parentOf(node: Node): NodeKey | undefined {
-    const edges = this.parentEdges(node.key);
-    const declared = "parent" in node ? node.parent : undefined;
+  #parentOf(key: NodeKey): NodeKey | undefined {
+    const edges = this.parentEdges(key);
+    if (edges.length < 2) return edges[0]?.source;
+    const node = this.node(key);
+    const declared = node && "parent" in node ? node.parent : undefined;
     return edges.some((e) => e.source === declared) ? declared : edges[0]?.source;
   }
 

@@ -9,7 +9,8 @@ import { StandardDataType, StandardType } from "../address-space/standard-ids";
 import type { CheckContext } from "./check-context";
 import { CELSIUS } from "./example-values";
 import { findStandardProperty, isInstanceDeclaration, isProperty } from "./lookups";
-import { ALL_CLASSES, type NodeRule } from "./rule";
+import { ALL_CLASSES } from "./node-classes";
+import { type NodeRule } from "./rule";
 import { listUnits } from "./unit-values";
 
 const pattern = z.string().refine(isPattern, { message: "is no pattern" });

@@ -12,7 +12,19 @@ import { StandardReferenceType } from "../address-space/standard-ids";
 import { getReferenceTypes } from "../address-space/type-hierarchy";
 import { listMovedEdges } from "./moved-edges";
 import { Answer, dropSlot, Slot, SubjectReader, type Reader, type Subject } from "./slots";
-import { ClassSlot, EdgeSlot, FROM, HIERARCHICAL, NodeSlot, OTHER, SUBTYPE, TO, View } from "./views";
+import {
+  ClassSlot,
+  EdgeSlot,
+  FROM,
+  HeadSlot,
+  HIERARCHICAL,
+  NodeSlot,
+  OTHER,
+  SUBTYPE,
+  TO,
+  View,
+  type NodeHead,
+} from "./views";
 
 const NO_EDGES: readonly Edge[] = [];
 const GROUPS: readonly number[] = [SUBTYPE, HIERARCHICAL, OTHER];
@@ -21,15 +33,20 @@ const NOTHING_THERE = new EdgeSlot(NO_EDGES);
 /** Up to this many edges all groups are sorted out in one go; of hubs (PropertyType, Mandatory) only what is asked for. */
 const HUB = 64;
 
+/** What is remembered where nothing is tracked, and the answer is undefined. */
+const NO_ANSWER = Symbol("no answer");
+
 /** A question worth remembering about one node, asked of a `C`. */
 export type Lookup<C, T> = { readonly number: number; readonly compute: (context: C, key: NodeKey) => T };
 
 export class GraphMemory {
   space: AddressSpace;
   readonly #views = new Map<NodeKey, View>();
-  /** Checks ask for the same node many times in a row. */
+  /** Checks ask for the same two nodes, a child and its parent, many times in turn. */
   #lastKey: NodeKey | undefined;
   #lastView = new View();
+  #otherKey: NodeKey | undefined;
+  #otherView = this.#lastView;
   /** Slots of questions that are not about one node: who has a name, who has an id, who uses a namespace. */
   readonly #slots = new Map<string, Slot>();
   readonly #groups: ReadonlyMap<NodeKey, number>;
@@ -56,10 +73,20 @@ export class GraphMemory {
 
   /** The NodeClass; undefined where there is no node. */
   classOf(key: NodeKey): NodeClass | undefined {
+    if (!this.#isTracked) return this.node(key)?.nodeClass;
     const view = this.#view(key);
     const slot = (view.nodeClass ??= new ClassSlot(this.space.getNode(key)?.nodeClass));
     if (this.#reader) slot.note(this.#reader);
     return slot.nodeClass;
+  }
+
+  /** NodeClass and BrowseName of the node. */
+  head(key: NodeKey): NodeHead | undefined {
+    if (!this.#isTracked) return this.node(key);
+    const view = this.#view(key);
+    const slot = (view.head ??= new HeadSlot(this.space.getNode(key)));
+    if (this.#reader) slot.note(this.#reader);
+    return slot.head;
   }
 
   edges(key: NodeKey, direction: number, group: number): readonly Edge[] {
@@ -76,9 +103,18 @@ export class GraphMemory {
   /** The answer for the key, remembered until something changes that it was made from. */
   lookUp<C, T>(lookup: Lookup<C, T>, context: C, key: NodeKey): T {
     const { answers } = this.#view(key);
-    const answer = answers[lookup.number] ?? this.#answer(lookup, context, key, answers);
-    if (this.#reader) answer.note(this.#reader);
-    return answer.value as T;
+    const { number } = lookup;
+    let answer = answers[number];
+    if (answer === undefined) {
+      if (this.#isTracked) return this.#answer(lookup, context, key, answers).value as T;
+      answer = lookup.compute(context, key) ?? NO_ANSWER;
+      answers[number] = answer;
+    }
+    if (answer instanceof Answer) {
+      if (this.#reader) answer.note(this.#reader);
+      return answer.value as T;
+    }
+    return (answer === NO_ANSWER ? undefined : answer) as T;
   }
 
   /** Notes that the running check depends on something that has a name of its own; `drop` ends it. */
@@ -103,14 +139,7 @@ export class GraphMemory {
   /** Drops what hangs on a node that changed: itself and the lists of edges at both ends that it moved. */
   touch(key: NodeKey, old: Node | undefined, node: Node | undefined, dirty: Set<Subject>): void {
     const view = this.#views.get(key);
-    if (view?.node) {
-      dropSlot(view.node, dirty);
-      view.node = undefined;
-    }
-    if (view?.nodeClass && old?.nodeClass !== node?.nodeClass) {
-      dropSlot(view.nodeClass, dirty);
-      view.nodeClass = undefined;
-    }
+    if (view) dropHead(view, old, node, dirty);
     for (const edge of listMovedEdges(old, node)) {
       const group = this.#groupOf(edge.type);
       this.#dropEdges(edge.source, FROM + group, dirty);
@@ -118,13 +147,11 @@ export class GraphMemory {
     }
   }
 
-  #answer<C, T>(lookup: Lookup<C, T>, context: C, key: NodeKey, answers: (Answer | undefined)[]): Answer {
-    const { number } = lookup;
-    const answer = new Answer(answers, number);
-    answer.value = this.#isTracked
-      ? this.#readAs(answer, () => lookup.compute(context, key))
-      : lookup.compute(context, key);
-    answers[number] = answer;
+  #answer<C, T>(lookup: Lookup<C, T>, context: C, key: NodeKey, answers: unknown[]): Answer {
+    const answer = new Answer(answers, lookup.number);
+    answer.value = this.#readAs(answer, () => lookup.compute(context, key));
+    answers[lookup.number] = answer;
+    if (this.#reader) answer.note(this.#reader);
     return answer;
   }
 
@@ -138,8 +165,10 @@ export class GraphMemory {
 
   #view(key: NodeKey): View {
     if (key === this.#lastKey) return this.#lastView;
-    let view = this.#views.get(key);
+    let view = key === this.#otherKey ? this.#otherView : this.#views.get(key);
     if (!view) this.#views.set(key, (view = new View()));
+    this.#otherKey = this.#lastKey;
+    this.#otherView = this.#lastView;
     this.#lastKey = key;
     this.#lastView = view;
     return view;
@@ -191,5 +220,22 @@ export class GraphMemory {
     } finally {
       this.#reader = outer;
     }
+  }
+}
+
+/** Drops what was read of the node itself, as far as it differs. */
+function dropHead(view: View, old: Node | undefined, node: Node | undefined, dirty: Set<Subject>): void {
+  if (view.node) dropSlot(view.node, dirty);
+  view.node = undefined;
+  const isSameClass = old?.nodeClass === node?.nodeClass;
+  if (view.nodeClass && !isSameClass) {
+    dropSlot(view.nodeClass, dirty);
+    view.nodeClass = undefined;
+  }
+  const isSameName =
+    old?.browseName.name === node?.browseName.name && old?.browseName.namespaceUri === node?.browseName.namespaceUri;
+  if (view.head && !(isSameClass && isSameName)) {
+    dropSlot(view.head, dirty);
+    view.head = undefined;
   }
 }

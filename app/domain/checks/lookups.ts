@@ -1,7 +1,7 @@
 /** Remembered questions that many rules ask. Each walks in a loop over tracked reads, so that cycles end. */
 import type { Edge } from "../address-space/edge-index";
 import type { Node, NodeClass } from "../address-space/node";
-import { TYPE_CLASSES } from "./rule";
+import { TYPE_CLASSES } from "./node-classes";
 import { OPC_UA_NAMESPACE, type NodeKey } from "../address-space/node-id";
 import { StandardReferenceType as R } from "../address-space/standard-ids";
 import { makeLookup, type CheckContext } from "./check-context";
@@ -63,6 +63,16 @@ export function findModellingRule(ctx: CheckContext, key: NodeKey): NodeKey | un
 const TYPES: ReadonlySet<NodeClass | undefined> = new Set(TYPE_CLASSES);
 
 const typeAbove = makeLookup<NodeKey | undefined>((ctx, key) => {
+  // Nearly all nodes have one parent, up to a type or a root; the general way is for the others.
+  let at = key;
+  for (let steps = 0; steps < 100; steps++) {
+    const edges = ctx.parentEdges(at);
+    const [edge] = edges;
+    if (!edge) return undefined;
+    if (edges.length > 1) break;
+    if (TYPES.has(ctx.classOf(edge.source))) return edge.source;
+    at = edge.source;
+  }
   const seen = new Set<NodeKey>([key]);
   for (const at of seen) {
     for (const { source } of ctx.parentEdges(at)) {
@@ -96,16 +106,12 @@ export function isInstanceDeclaration(ctx: CheckContext, key: NodeKey): boolean 
   return ctx.lookUp(declaration, key);
 }
 
-const typeMember = makeLookup<boolean>((ctx, key) =>
-  ctx.parentEdges(key).some(({ source }) => {
-    const parent = ctx.classOf(source);
-    return parent === "ObjectType" || parent === "VariableType";
-  }),
-);
-
 /** Whether the node hangs directly on an ObjectType or a VariableType. */
 export function isMemberOfType(ctx: CheckContext, key: NodeKey): boolean {
-  return ctx.lookUp(typeMember, key);
+  return ctx.parentEdges(key).some(({ source }) => {
+    const parent = ctx.classOf(source);
+    return parent === "ObjectType" || parent === "VariableType";
+  });
 }
 
 const propertyRole = makeLookup<boolean>((ctx, key) => {
@@ -125,21 +131,22 @@ export function ofType(ctx: CheckContext, edges: readonly Edge[], referenceType:
   return edges.every((e) => types.has(e.type)) ? edges : edges.filter((e) => types.has(e.type));
 }
 
-const NO_PROPERTIES: ReadonlyMap<string, Node> = new Map();
+const NO_PROPERTIES: ReadonlyMap<string, NodeKey> = new Map();
 
-const standardProperties = makeLookup<ReadonlyMap<string, Node>>((ctx, key) => {
+const standardProperties = makeLookup<ReadonlyMap<string, NodeKey>>((ctx, key) => {
   const edges = ofType(ctx, ctx.childEdges(key), R.HasProperty);
   if (edges.length === 0) return NO_PROPERTIES;
-  const found = new Map<string, Node>();
+  const found = new Map<string, NodeKey>();
   for (const { target } of edges) {
-    const node = ctx.node(target);
+    const node = ctx.head(target);
     if (node?.browseName.namespaceUri !== OPC_UA_NAMESPACE || found.has(node.browseName.name)) continue;
-    found.set(node.browseName.name, node);
+    found.set(node.browseName.name, target);
   }
   return found;
 });
 
 /** The Property with a BrowseName of namespace 0, by identity of namespace and name. */
 export function findStandardProperty(ctx: CheckContext, key: NodeKey, name: string): Node | undefined {
-  return ctx.lookUp(standardProperties, key).get(name);
+  const found = ctx.lookUp(standardProperties, key).get(name);
+  return found === undefined ? undefined : ctx.node(found);
 }

@@ -7,17 +7,34 @@ import type { Node } from "../address-space/node";
 import { formatQualifiedName } from "../address-space/qualified-name";
 import { StandardModellingRule as M, StandardReferenceType as R } from "../address-space/standard-ids";
 import { makeLookup, type CheckContext } from "./check-context";
-import { findModellingRule, listSupertypes } from "./lookups";
+import { findModellingRule, findTypeDefinition, listSupertypes } from "./lookups";
+import type { NodeHead } from "./views";
 
 /** A declaration with its rule and the type (or Interface, or declaration) that it hangs on. */
 export type Member = {
-  readonly node: Node;
+  readonly node: NodeHead;
   /** Text of its BrowseName, by which members are matched. */
   readonly name: string;
   readonly rule: NodeKey;
   readonly owner: NodeKey;
   readonly referenceType: NodeKey;
 };
+
+const texts = new Map<string, Map<string, string>>();
+
+/** Text of a BrowseName; the same string for the same name, since models repeat few names often. */
+export function toNameText({ namespaceUri, name }: Node["browseName"]): string {
+  let names = texts.get(namespaceUri);
+  if (!names) texts.set(namespaceUri, (names = new Map()));
+  let text = names.get(name);
+  if (text === undefined) {
+    if (names.size >= MAX_NAMES) names.clear();
+    names.set(name, (text = formatQualifiedName({ namespaceUri, name })));
+  }
+  return text;
+}
+
+const MAX_NAMES = 20_000;
 
 /** Rules that name one member each; placeholders and ExposesItsArray name none. */
 export function isNaming(rule: NodeKey): boolean {
@@ -32,11 +49,11 @@ const ownMembers = makeLookup<readonly Member[]>((ctx, key) => {
   const found: Member[] = [];
   const seen = new Set<NodeKey>();
   for (const edge of ctx.childEdges(key)) {
-    const node = ctx.node(edge.target);
+    const node = ctx.head(edge.target);
     const rule = findModellingRule(ctx, edge.target);
     if (!node || rule === undefined || seen.has(node.key)) continue;
     seen.add(node.key);
-    found.push({ node, name: formatQualifiedName(node.browseName), rule, owner: key, referenceType: edge.type });
+    found.push({ node, name: toNameText(node.browseName), rule, owner: key, referenceType: edge.type });
   }
   return found;
 });
@@ -94,23 +111,58 @@ export function findInheritedMember(
   browseName: Node["browseName"],
 ): Member | undefined {
   const [supertype] = listSupertypes(ctx, type);
-  return supertype === undefined ? undefined : getMembers(ctx, supertype).get(formatQualifiedName(browseName));
+  return supertype === undefined ? undefined : getMembers(ctx, supertype).get(toNameText(browseName));
 }
 
 /** Children of a node by BrowseName with namespace; several where names repeat. */
-const children = makeLookup<ReadonlyMap<string, readonly Node[]>>((ctx, key) => {
-  const found = new Map<string, Node[]>();
+const children = makeLookup<ReadonlyMap<string, readonly NodeHead[]>>((ctx, key) => {
+  const found = new Map<string, NodeHead[]>();
   for (const edge of ctx.childEdges(key)) {
-    const node = ctx.node(edge.target);
+    const node = ctx.head(edge.target);
     if (!node) continue;
-    const name = formatQualifiedName(node.browseName);
+    const name = toNameText(node.browseName);
     const same = found.get(name);
     if (!same) found.set(name, [node]);
-    else if (!same.includes(node)) same.push(node);
+    else if (!same.some((n) => n.key === node.key)) same.push(node);
   }
   return found;
 });
 
-export function getChildren(ctx: CheckContext, key: NodeKey): ReadonlyMap<string, readonly Node[]> {
+export function getChildren(ctx: CheckContext, key: NodeKey): ReadonlyMap<string, readonly NodeHead[]> {
   return ctx.lookUp(children, key);
+}
+
+const MAX_DEPTH = 20;
+
+/**
+ * The declaration that a member of a plain instance follows: found by the names on its path, from the topmost own node whose
+ * type declares them, since declarations of a type override those of the types of its members.
+ */
+export function findDeclarationOf(ctx: CheckContext, key: NodeKey): NodeHead | undefined {
+  const path: string[] = [];
+  let found: NodeHead | undefined;
+  let at = key;
+  for (let depth = 0; depth < MAX_DEPTH; depth++) {
+    const node = ctx.head(at);
+    const [edge] = ctx.parentEdges(at);
+    if (!node || !edge || !ctx.isOwn(edge.source)) break;
+    path.unshift(toNameText(node.browseName));
+    const type = findTypeDefinition(ctx, edge.source);
+    found = (type === undefined ? undefined : findDeclared(ctx, type, path)) ?? found;
+    at = edge.source;
+  }
+  return found?.key === key ? undefined : found;
+}
+
+function findDeclared(
+  ctx: CheckContext,
+  type: NodeKey,
+  [first = "", ...rest]: readonly string[],
+): NodeHead | undefined {
+  let member = getMembers(ctx, type).get(first);
+  for (const name of rest) {
+    if (!member || !isNaming(member.rule)) return undefined;
+    member = listOwnMembers(ctx, member.node.key).find((m) => m.name === name);
+  }
+  return member && isNaming(member.rule) ? member.node : undefined;
 }

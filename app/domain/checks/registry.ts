@@ -105,6 +105,7 @@ import { r106 } from "./rules/r106-value-of-abstract-type";
 import { r107 } from "./rules/r107-access-level-bits";
 import { r108 } from "./rules/r108-user-access-level";
 import { r109 } from "./rules/r109-setpoint-access";
+import { r110 } from "./rules/r110-measured-and-writable";
 import { r111 } from "./rules/r111-semantic-change";
 import { r112 } from "./rules/r112-historizing";
 import { r113 } from "./rules/r113-sampling-interval";
@@ -308,6 +309,7 @@ export const RULES: readonly Rule[] = [
   r107,
   r108,
   r109,
+  r110,
   r111,
   r112,
   r113,

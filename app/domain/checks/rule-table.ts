@@ -14,7 +14,8 @@ import {
   isProperty,
   listSupertypes,
 } from "./lookups";
-import { ALL_CLASSES, NEEDS, type ModelRule, type Need, type NodeRule, type Rule, type WiringRule } from "./rule";
+import { ALL_CLASSES } from "./node-classes";
+import { NEEDS, type ModelRule, type Need, type NodeRule, type Rule, type WiringRule } from "./rule";
 
 export class RuleTable {
   readonly model: readonly ModelRule[];
@@ -24,7 +25,8 @@ export class RuleTable {
   readonly #names: readonly string[];
   readonly #declared: readonly NodeKey[];
   readonly #types: readonly NodeKey[];
-  readonly #byKind = new Map<string, readonly NodeRule[]>();
+  /** By two numbers that hold all that a kind is: what the node is, and what it refers to. */
+  readonly #byKind = new Map<number, Map<number, readonly NodeRule[]>>();
   readonly #declaredBits = new Map<NodeKey, number>();
   /** By the list of supertypes, which is another list after a change of these. */
   readonly #typeBits = new WeakMap<readonly NodeKey[], number>();
@@ -47,23 +49,28 @@ export class RuleTable {
     const types = this.#findTypes(node, ctx);
     const { namespaceUri, name } = node.browseName;
     const standard = namespaceUri === OPC_UA_NAMESPACE ? this.#names.indexOf(name) : -1;
-    const kind = `${ALL_CLASSES.indexOf(node.nodeClass)} ${needs} ${attributes} ${declared} ${types} ${standard}`;
-    let rules = this.#byKind.get(kind);
-    if (!rules) {
-      const isAny = (wanted: readonly string[] | undefined, all: readonly string[], bits: number): boolean =>
-        wanted === undefined || wanted.some((w) => (bits & (1 << all.indexOf(w))) !== 0);
-      rules = this.#rules.filter(
-        (rule) =>
-          rule.concerns.includes(node.nodeClass) &&
-          (toBits(rule.needs ?? []) & ~needs) === 0 &&
-          isAny(rule.attributes, this.#attributes, attributes) &&
-          isAny(rule.declares && [rule.declares], this.#declared, declared) &&
-          isAny(rule.types, this.#types, types) &&
-          (rule.standardNames === undefined || (standard >= 0 && rule.standardNames.includes(name))),
-      );
-      this.#byKind.set(kind, rules);
-    }
+    // Products and not shifts: together they may have more than 32 bits.
+    const itself = ((attributes * 64 + standard + 1) * ALL_NEEDS + needs) * 8 + ALL_CLASSES.indexOf(node.nodeClass);
+    const references = types * 2 ** 16 + declared;
+    let same = this.#byKind.get(itself);
+    if (!same) this.#byKind.set(itself, (same = new Map()));
+    let rules = same.get(references);
+    if (!rules) same.set(references, (rules = this.#choose(node, { needs, attributes, declared, types, standard })));
     return rules;
+  }
+
+  #choose(node: Node, kind: Kind): NodeRule[] {
+    const isAny = (wanted: readonly string[] | undefined, all: readonly string[], bits: number): boolean =>
+      wanted === undefined || wanted.some((w) => (bits & (1 << all.indexOf(w))) !== 0);
+    return this.#rules.filter(
+      (rule) =>
+        rule.concerns.includes(node.nodeClass) &&
+        (toBits(rule.needs ?? []) & ~kind.needs) === 0 &&
+        isAny(rule.attributes, this.#attributes, kind.attributes) &&
+        isAny(rule.declares && [rule.declares], this.#declared, kind.declared) &&
+        isAny(rule.types, this.#types, kind.types) &&
+        (rule.standardNames === undefined || (kind.standard >= 0 && rule.standardNames.includes(node.browseName.name))),
+    );
   }
 
   #findAttributes(node: Node): number {
@@ -104,34 +111,34 @@ export class RuleTable {
   }
 }
 
+type Kind = Readonly<Record<"needs" | "attributes" | "declared" | "types" | "standard", number>>;
+
+const ALL_NEEDS = 2 ** NEEDS.length;
+const BIT = Object.fromEntries(NEEDS.map((need, i) => [need, 1 << i] as const)) as Readonly<Record<Need, number>>;
+
 /** What the node has of what rules may need, as bits in the order of `NEEDS`. */
 function findNeeds(node: Node, ctx: CheckContext): number {
   const { key } = node;
-  const value = hasValueAttributes(node) ? node.value : undefined;
   const isType = isTypeNode(node);
+  let bits = 0;
+  if (hasValueAttributes(node) && node.value !== undefined) {
+    bits |= BIT.value;
+    if (node.value.xml.includes("ExtensionObject")) bits |= BIT.structure;
+  }
+  if (ctx.childEdges(key).length > 0) bits |= BIT.children;
   const hasRule = findModellingRule(ctx, key) !== undefined;
   const isBelowType = !isType && findTypeAbove(ctx, key) !== undefined;
-  const isItsProperty = node.nodeClass === "Variable" && isProperty(ctx, key);
-  const has: Readonly<Record<Need, boolean>> = {
-    value: value !== undefined,
-    structure: value !== undefined && value.xml.includes("ExtensionObject"),
-    children: ctx.childEdges(key).length > 0,
-    "modelling rule": hasRule,
-    "declares members": isType || (hasRule && isBelowType && isInstanceDeclaration(ctx, key)),
-    "type above": isBelowType,
-    "no type above": !isType && !isBelowType,
-    "member of type": isBelowType && isMemberOfType(ctx, key),
-    property: isItsProperty,
-    "no property": !isItsProperty,
-    "text id": node.nodeId.type !== "i",
-  };
-  let bits = 0;
-  for (let i = 0; i < NEEDS.length; i++) if (has[NEEDS[i] as Need]) bits |= 1 << i;
+  if (hasRule) bits |= BIT["modelling rule"];
+  if (isType || (hasRule && isBelowType && isInstanceDeclaration(ctx, key))) bits |= BIT["declares members"];
+  if (!isType) bits |= isBelowType ? BIT["type above"] : BIT["no type above"];
+  if (isBelowType && isMemberOfType(ctx, key)) bits |= BIT["member of type"];
+  bits |= node.nodeClass === "Variable" && isProperty(ctx, key) ? BIT.property : BIT["no property"];
+  if (node.nodeId.type !== "i") bits |= BIT["text id"];
   return bits;
 }
 
 function toBits(needs: readonly Need[]): number {
-  return needs.reduce((bits, need) => bits | (1 << NEEDS.indexOf(need)), 0);
+  return needs.reduce((bits, need) => bits | BIT[need], 0);
 }
 
 function unite<T extends string>(lists: readonly (readonly T[] | undefined)[]): T[] {

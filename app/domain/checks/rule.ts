@@ -95,19 +95,6 @@ export type WiringRule = RuleBase & {
 
 export type Rule = NodeRule | ModelRule | WiringRule;
 
-export const ALL_CLASSES: readonly NodeClass[] = [
-  "Object",
-  "Variable",
-  "Method",
-  "View",
-  "ObjectType",
-  "VariableType",
-  "DataType",
-  "ReferenceType",
-];
-
-export const TYPE_CLASSES: readonly NodeClass[] = ["ObjectType", "VariableType", "DataType", "ReferenceType"];
-
 const EDITIONS: Readonly<Record<number, string>> = { 16: "1.05.04", 11: "1.05.04" };
 
 /** `OPC 10000-3 v1.05.06 §4.4.4`. The editions are those in which the sections were read. */

@@ -43,10 +43,10 @@ export class Slot {
 export class Answer extends Slot {
   value: unknown = undefined;
   isEnded = false;
-  readonly #home: (Answer | undefined)[];
+  readonly #home: unknown[];
   readonly #place: number;
 
-  constructor(home: (Answer | undefined)[], place: number) {
+  constructor(home: unknown[], place: number) {
     super();
     this.#home = home;
     this.#place = place;

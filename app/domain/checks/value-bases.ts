@@ -3,10 +3,9 @@
  * declaration of the type of which it is a member (OPC 10000-3 §6.2.8).
  */
 import { hasValueAttributes, type Node, type VariableNode, type VariableTypeNode } from "../address-space/node";
-import { formatQualifiedName } from "../address-space/qualified-name";
 import { makeLookup, type CheckContext } from "./check-context";
 import { findTypeDefinition, listSupertypes } from "./lookups";
-import { findInheritedMember, getMembers, isNaming, listInterfaces } from "./members";
+import { findInheritedMember, getMembers, isNaming, listInterfaces, toNameText, type Member } from "./members";
 
 export type ValueBase = {
   readonly base: VariableNode | VariableTypeNode;
@@ -20,6 +19,7 @@ const valueBases = makeLookup<readonly ValueBase[]>((ctx, key) => {
   const node = ctx.node(key);
   if (!node || !hasValueAttributes(node)) return NO_BASES;
   const bases: ValueBase[] = [];
+  const addMember = ({ node: { key: member } }: Member, role: ValueBase["role"]): void => add(ctx.node(member), role);
   const add = (base: Node | undefined, role: ValueBase["role"]): void => {
     if (base && base.key !== node.key && hasValueAttributes(base)) bases.push({ base, role });
   };
@@ -31,18 +31,19 @@ const valueBases = makeLookup<readonly ValueBase[]>((ctx, key) => {
   const type = findTypeDefinition(ctx, node.key);
   const typeNode = type === undefined ? undefined : ctx.node(type);
   if (typeNode?.nodeClass === "VariableType") add(typeNode, "its VariableType");
-  const name = formatQualifiedName(node.browseName);
+  const name = toNameText(node.browseName);
   for (const { source } of ctx.parentEdges(node.key)) {
-    const parent = ctx.node(source);
-    if (!parent) continue;
-    if (parent.nodeClass === "ObjectType" || parent.nodeClass === "VariableType") {
-      add(findInheritedMember(ctx, source, node.browseName)?.node, "the overridden declaration");
+    const parent = ctx.classOf(source);
+    if (parent === undefined) continue;
+    if (parent === "ObjectType" || parent === "VariableType") {
+      const inherited = findInheritedMember(ctx, source, node.browseName);
+      if (inherited) addMember(inherited, "the overridden declaration");
       continue;
     }
     const parentType = findTypeDefinition(ctx, source);
     for (const from of [...(parentType === undefined ? [] : [parentType]), ...listInterfaces(ctx, source)]) {
       const member = getMembers(ctx, from).get(name);
-      if (member && isNaming(member.rule)) add(member.node, "the declaration in the type");
+      if (member && isNaming(member.rule)) addMember(member, "the declaration in the type");
     }
   }
   return bases;

@@ -1,7 +1,7 @@
 /** The slots of one node: itself, its edges by direction and group, answers of lookups. */
 import type { Edge } from "../address-space/edge-index";
 import type { Node, NodeClass } from "../address-space/node";
-import { Slot, type Answer } from "./slots";
+import { Slot } from "./slots";
 
 export class NodeSlot extends Slot {
   readonly node: Node | undefined;
@@ -19,6 +19,18 @@ export class ClassSlot extends Slot {
   constructor(nodeClass: NodeClass | undefined) {
     super();
     this.nodeClass = nodeClass;
+  }
+}
+
+/** What a node is called, for those who match nodes by name. */
+export type NodeHead = Pick<Node, "key" | "nodeClass" | "browseName">;
+
+export class HeadSlot extends Slot {
+  readonly head: NodeHead | undefined;
+
+  constructor(head: NodeHead | undefined) {
+    super();
+    this.head = head;
   }
 }
 
@@ -41,7 +53,8 @@ export const OTHER = 2;
 export class View {
   node: NodeSlot | undefined = undefined;
   nodeClass: ClassSlot | undefined = undefined;
+  head: HeadSlot | undefined = undefined;
   readonly edges: (EdgeSlot | undefined)[] = [undefined, undefined, undefined, undefined, undefined, undefined];
-  /** By the number of the lookup. */
-  readonly answers: (Answer | undefined)[] = [];
+  /** By the number of the lookup: `Answer`s, or plain values where nothing is tracked. */
+  readonly answers: unknown[] = [];
 }

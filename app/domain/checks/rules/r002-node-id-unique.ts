@@ -1,7 +1,8 @@
 import { findSubject, notPossible, setAttribute } from "../fixes";
 import { ok } from "../../core/result";
 import { formatNodeId, numericNodeId } from "../../address-space/node-id";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r002: NodeRule = {
   id: "R002",

@@ -1,7 +1,8 @@
 import { findSubject, notPossible, setAttribute } from "../fixes";
 import { ok } from "../../core/result";
 import { formatNodeId, numericNodeId, OPC_UA_NAMESPACE } from "../../address-space/node-id";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r004: NodeRule = {
   id: "R004",
@@ -19,10 +20,7 @@ export const r004: NodeRule = {
     report({
       attribute: "nodeId",
       message: `${node.browseName.name} is numbered in the foreign namespace ${namespaceUri}.`,
-      facts: [
-        `NodeId: ${formatNodeId(node.nodeId)}`,
-        `This model defines: ${modelUris.join(", ")}`,
-      ],
+      facts: [`NodeId: ${formatNodeId(node.nodeId)}`, `This model defines: ${modelUris.join(", ")}`],
     });
   },
   fix: {

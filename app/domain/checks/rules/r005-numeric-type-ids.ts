@@ -2,7 +2,8 @@ import { formatNodeId } from "../../address-space/node-id";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { isTypeNode } from "../../address-space/node";
 import { findTypeDefinition, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r005: NodeRule = {
   id: "R005",

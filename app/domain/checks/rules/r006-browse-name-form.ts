@@ -1,5 +1,6 @@
 import { attributeFix } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { listControlCharacters } from "../texts";
 
 const LIMIT = 512;

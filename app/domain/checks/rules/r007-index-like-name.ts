@@ -1,6 +1,7 @@
 import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { attributeFix } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r007: NodeRule = {
   id: "R007",

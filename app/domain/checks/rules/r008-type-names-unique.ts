@@ -1,5 +1,6 @@
 import { formatQualifiedName } from "../../address-space/qualified-name";
-import { clause, TYPE_CLASSES, type NodeRule } from "../rule";
+import { TYPE_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r008: NodeRule = {
   id: "R008",

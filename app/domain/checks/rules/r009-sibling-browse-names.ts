@@ -1,5 +1,5 @@
 import type { NodeKey } from "../../address-space/node-id";
-import { formatQualifiedName } from "../../address-space/qualified-name";
+import { toNameText } from "../members";
 import { clause, type NodeRule } from "../rule";
 
 export const r009: NodeRule = {
@@ -17,7 +17,7 @@ export const r009: NodeRule = {
     for (const { target } of ctx.childEdges(node.key)) {
       const child = ctx.node(target);
       if (!child) continue;
-      const name = formatQualifiedName(child.browseName);
+      const name = toNameText(child.browseName);
       const twin = first.get(name);
       if (twin === undefined) first.set(name, target);
       if (twin === undefined || twin === target) continue;

@@ -1,8 +1,9 @@
 import type { NodeKey } from "../../address-space/node-id";
-import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { ofType } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { toNameText } from "../members";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r011: NodeRule = {
   id: "R011",
@@ -19,7 +20,7 @@ export const r011: NodeRule = {
     for (const { target } of ofType(ctx, ctx.childEdges(node.key), R.HasProperty)) {
       const property = ctx.node(target);
       if (!property) continue;
-      const name = formatQualifiedName(property.browseName);
+      const name = toNameText(property.browseName);
       const twin = first.get(name);
       if (twin === undefined) first.set(name, target);
       else if (twin !== target) {

@@ -8,6 +8,7 @@ import type { ReportFunction } from "../finding";
 import { findTypeDefinition, isKindOf, ofType } from "../lookups";
 import { getChildren, getMembers, listInterfaces } from "../members";
 import { clause, type NodeRule } from "../rule";
+import type { NodeHead } from "../views";
 
 const METHOD_PROPERTIES = new Set(["InputArguments", "OutputArguments"]);
 const DATA_TYPE_PROPERTIES = new Set(["EnumStrings", "EnumValues", "OptionSetValues"]);
@@ -116,10 +117,7 @@ function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunct
         severity: "warning",
         attribute: "browseName",
         message: `${child.browseName.name} has the name of a declared member but another namespace.`,
-        facts: [
-          `BrowseName: ${formatQualifiedName(child.browseName)}`,
-          `Declared: ${name}, by ${ctx.describe(owner)}`,
-        ],
+        facts: [`BrowseName: ${formatQualifiedName(child.browseName)}`, `Declared: ${name}, by ${ctx.describe(owner)}`],
         data: { namespaceUri: declared.browseName.namespaceUri },
       });
     }
@@ -127,16 +125,16 @@ function checkDeclaredMembers(node: Node, ctx: CheckContext, report: ReportFunct
 }
 
 /** Children whose BrowseName no type declares; what the node itself declares first is no member of a type above it. */
-function listUndeclared(node: Node, sources: readonly NodeKey[], ctx: CheckContext): Node[] {
+function listUndeclared(node: Node, sources: readonly NodeKey[], ctx: CheckContext): NodeHead[] {
   const above = sources.filter((source) => source !== node.key).map((source) => getMembers(ctx, source));
-  const undeclared: Node[] = [];
+  const undeclared: NodeHead[] = [];
   for (const [name, [child]] of getChildren(ctx, node.key)) {
     if (child && !above.some((members) => members.has(name))) undeclared.push(child);
   }
   return undeclared;
 }
 
-function isReportedAsStandard(node: Node, child: Node, ctx: CheckContext): boolean {
+function isReportedAsStandard(node: Node, child: NodeHead, ctx: CheckContext): boolean {
   return (
     (namesFor(node, ctx)?.has(child.browseName.name) ?? false) &&
     child.browseName.namespaceUri !== OPC_UA_NAMESPACE &&

@@ -2,7 +2,8 @@ import type { Node } from "../../address-space/node";
 import { isTypeNode } from "../../address-space/node";
 import type { CheckContext } from "../check-context";
 import { isInstanceDeclaration } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 const WORD = /^[A-Za-z]\w*$/;
 const PASCAL = /^[A-Z]\w*$/;

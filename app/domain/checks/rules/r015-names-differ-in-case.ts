@@ -1,5 +1,6 @@
 import type { Node } from "../../address-space/node";
-import { ALL_CLASSES, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { type NodeRule } from "../rule";
 import { isSameQualifiedName } from "../../address-space/qualified-name";
 
 export const r015: NodeRule = {

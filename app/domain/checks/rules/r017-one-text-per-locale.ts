@@ -2,7 +2,8 @@ import type { Node } from "../../address-space/node";
 import type { LocalizedText } from "../../address-space/qualified-name";
 import { attributeFix } from "../fixes";
 import type { Finding } from "../finding";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 const ATTRIBUTES = ["displayName", "description"] as const;
 

@@ -1,6 +1,7 @@
 import type { LocalizedText } from "../../address-space/qualified-name";
 import { attributeFix } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 const ATTRIBUTES = ["displayName", "description", "inverseName"] as const;
 const LOCALE = /^(?:[a-z]{2,3}(?:-(?:[A-Z]{2}|[A-Z][a-z]{3}|CHS|CHT|\d{3}))*|)$/;

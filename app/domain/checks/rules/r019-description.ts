@@ -1,9 +1,9 @@
 import { isTypeNode, type Node } from "../../address-space/node";
-import { formatQualifiedName } from "../../address-space/qualified-name";
 import type { CheckContext } from "../check-context";
 import { findTypeDefinition, isInstanceDeclaration } from "../lookups";
-import { getMembers } from "../members";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { getMembers, toNameText } from "../members";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r019: NodeRule = {
   id: "R019",
@@ -40,6 +40,6 @@ export const r019: NodeRule = {
 function isDescribedElsewhere(node: Node, ctx: CheckContext): boolean {
   return ctx.parentEdges(node.key).some(({ source }) => {
     const type = findTypeDefinition(ctx, source);
-    return type !== undefined && getMembers(ctx, type).has(formatQualifiedName(node.browseName));
+    return type !== undefined && getMembers(ctx, type).has(toNameText(node.browseName));
   });
 }

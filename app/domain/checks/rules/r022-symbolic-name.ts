@@ -1,5 +1,6 @@
 import { attributeFix, REMOVED } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 const FORM = /^[A-Za-z]\w*$/;
 

@@ -2,7 +2,8 @@ import type { DeclaredReference, Node } from "../../address-space/node";
 import { standardKey, type NodeKey } from "../../address-space/node-id";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r023: NodeRule = {
   id: "R023",

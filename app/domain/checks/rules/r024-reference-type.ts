@@ -1,6 +1,7 @@
 import { isAbstract } from "../../address-space/node";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r024: NodeRule = {
   id: "R024",

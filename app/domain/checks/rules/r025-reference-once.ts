@@ -6,7 +6,8 @@ import { findSubject, isSameReference, notPossible } from "../fixes";
 import { ok } from "../../core/result";
 import type { Operation } from "../../editing/operation";
 import { isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r025: NodeRule = {
   id: "R025",

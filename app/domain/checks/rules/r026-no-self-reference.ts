@@ -1,7 +1,8 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { edgesDeclaredAt } from "../edges";
 import { removeReferenceFix } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r026: NodeRule = {
   id: "R026",

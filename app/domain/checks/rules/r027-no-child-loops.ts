@@ -1,8 +1,7 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
-import { findLoop, isLoopReporter, makeLoopLookup } from "../loops";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
-
-const childLoop = makeLoopLookup(R.HasChild);
+import { findLoop, isLoopReporter } from "../loops";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r027: NodeRule = {
   id: "R027",
@@ -14,7 +13,7 @@ export const r027: NodeRule = {
   condition: "Following only HasChild references and their subtypes never leads back to the start.",
   why: "Programs that walk down to the leaves never end; a type that is its own supertype cannot be instantiated.",
   check(node, ctx, report) {
-    const loop = findLoop(ctx, childLoop, node.key);
+    const loop = findLoop(ctx, R.HasChild, node.key);
     if (!loop || !isLoopReporter(node.key, loop, ctx)) return;
     report({
       attribute: "references",

@@ -1,8 +1,7 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
-import { findLoop, isLoopReporter, makeLoopLookup } from "../loops";
-
-const eventLoop = makeLoopLookup(R.HasEventSource);
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
+import { findLoop, isLoopReporter } from "../loops";
 
 export const r028: NodeRule = {
   id: "R028",
@@ -14,7 +13,7 @@ export const r028: NodeRule = {
   condition: "Following only HasEventSource references and their subtypes never leads back to the start.",
   why: "Events are passed up along these references: in a loop they never arrive, or arrive for ever.",
   check(node, ctx, report) {
-    const loop = findLoop(ctx, eventLoop, node.key);
+    const loop = findLoop(ctx, R.HasEventSource, node.key);
     if (!loop || !isLoopReporter(node.key, loop, ctx)) return;
     report({
       attribute: "references",

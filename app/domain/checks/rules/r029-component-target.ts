@@ -1,6 +1,7 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { edgesDeclaredAt } from "../edges";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r029: NodeRule = {
   id: "R029",

@@ -1,7 +1,8 @@
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import { edgesDeclaredAt } from "../edges";
 import { findTypeDefinition, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode } from "../standard-nodes";
 
 export const r031: NodeRule = {

@@ -2,7 +2,8 @@ import { StandardReferenceType as R, StandardType as T } from "../../address-spa
 import { edgesDeclaredAt } from "../edges";
 import { removeReferenceFix } from "../fixes";
 import { findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r040: NodeRule = {
   id: "R040",

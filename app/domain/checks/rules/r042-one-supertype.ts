@@ -2,7 +2,8 @@ import type { NodeKey } from "../../address-space/node-id";
 import { addReference, findSubject, notPossible } from "../fixes";
 import { ok } from "../../core/result";
 import { StandardDataType as D, StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
-import { clause, TYPE_CLASSES, type NodeRule } from "../rule";
+import { TYPE_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 const ROOTS: ReadonlySet<string> = new Set([T.BaseObjectType, T.BaseVariableType, D.BaseDataType, R.References]);
 

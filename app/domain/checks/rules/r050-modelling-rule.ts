@@ -1,7 +1,8 @@
 import { modellingRuleFix, REMOVED } from "../fixes";
 import { StandardModellingRule, StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r050: NodeRule = {
   id: "R050",

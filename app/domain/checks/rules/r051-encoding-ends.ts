@@ -1,7 +1,8 @@
 import { StandardDataType as D, StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 import { edgesDeclaredAt } from "../edges";
 import { findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r051: NodeRule = {
   id: "R051",

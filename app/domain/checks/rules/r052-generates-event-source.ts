@@ -3,7 +3,8 @@ import { edgesDeclaredAt } from "../edges";
 import { isMethodOfType } from "../event-ends";
 import { findSubject, keyOf, notPossible } from "../fixes";
 import { ok } from "../../core/result";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r052: NodeRule = {
   id: "R052",

@@ -2,7 +2,8 @@ import { StandardReferenceType as R, StandardType as T } from "../../address-spa
 import { edgesDeclaredAt } from "../edges";
 import { isMethodOfType } from "../event-ends";
 import { retypeReferenceFix } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r053: NodeRule = {
   id: "R053",

@@ -4,7 +4,8 @@ import { isEventNotifier } from "../event-ends";
 import { keyOf, notPossible, setAttribute } from "../fixes";
 import { ok } from "../../core/result";
 import { isInstanceDeclaration } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r054: NodeRule = {
   id: "R054",
@@ -21,7 +22,10 @@ export const r054: NodeRule = {
     for (const edge of edgesDeclaredAt(node, ctx, R.HasEventSource)) {
       const source = ctx.node(edge.source);
       if (!source || isEventNotifier(source) || isInstanceDeclaration(ctx, source.key)) continue;
-      if (source.nodeClass === "ObjectType" && (ctx.classOf(edge.target) === undefined || isInstanceDeclaration(ctx, edge.target)))
+      if (
+        source.nodeClass === "ObjectType" &&
+        (ctx.classOf(edge.target) === undefined || isInstanceDeclaration(ctx, edge.target))
+      )
         continue;
       const bits =
         source.nodeClass === "Object" || source.nodeClass === "View"

@@ -4,7 +4,8 @@ import { isEventNotifier } from "../event-ends";
 import { keyOf, notPossible, setAttribute } from "../fixes";
 import { ok } from "../../core/result";
 import { isInstanceDeclaration } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r055: NodeRule = {
   id: "R055",

@@ -3,7 +3,8 @@ import { StandardReferenceType as R } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import { edgesDeclaredAt } from "../edges";
 import { findTypeAbove, findTypeDefinition, isChainLoaded, isKindOf, ofType } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
 const SOURCES = ["Object", "Variable", "Method", "ObjectType", "VariableType"];

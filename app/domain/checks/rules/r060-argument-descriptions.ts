@@ -4,7 +4,8 @@ import { readArguments, toKey } from "../arguments";
 import { edgesDeclaredAt } from "../edges";
 import { argumentList } from "../example-values";
 import { findModellingRule, isInstanceDeclaration } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
 export const r060: NodeRule = {

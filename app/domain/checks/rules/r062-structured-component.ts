@@ -3,7 +3,8 @@ import { StandardDataType as D } from "../../address-space/standard-ids";
 import { listFields } from "../data-types";
 import { edgesDeclaredAt } from "../edges";
 import { isChainLoaded, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
 export const r062: NodeRule = {

@@ -1,6 +1,7 @@
 import { edgesDeclaredAt } from "../edges";
 import { removeReferenceFix } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
 export const r064: NodeRule = {
@@ -15,7 +16,9 @@ export const r064: NodeRule = {
   why: "It is defined for Objects only; servers refuse it elsewhere.",
   check(node, ctx, report) {
     for (const edge of edgesDeclaredAt(node, ctx, N.AssociatedWith)) {
-      const wrong = [edge.source, edge.target].find((key) => ctx.classOf(key) !== undefined && ctx.classOf(key) !== "Object");
+      const wrong = [edge.source, edge.target].find(
+        (key) => ctx.classOf(key) !== undefined && ctx.classOf(key) !== "Object",
+      );
       if (wrong === undefined) continue;
       report({
         attribute: "references",

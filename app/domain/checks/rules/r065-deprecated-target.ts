@@ -1,6 +1,7 @@
 import { edgesDeclaredAt } from "../edges";
 import { removeReferenceFix } from "../fixes";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
 export const r065: NodeRule = {

@@ -10,6 +10,7 @@ import type { ReportFunction } from "../finding";
 import { findModellingRule, findTypeDefinition, ofType } from "../lookups";
 import { getChildren, getMembers, isPlaceholder, listOwnMembers, type Member } from "../members";
 import { clause, type NodeRule } from "../rule";
+import type { NodeHead } from "../views";
 
 export const r069: NodeRule = {
   id: "R069",
@@ -68,7 +69,7 @@ type Walk = {
 
 function checkMembers(
   walk: Walk,
-  at: Node,
+  at: NodeHead,
   members: readonly Member[],
   ctx: CheckContext,
   report: ReportFunction,
@@ -90,7 +91,7 @@ function checkMembers(
 
 const MAX_DEPTH = 20;
 
-function findSimilar(walk: Walk, at: Node, name: string, member: Member, ctx: CheckContext): Node | undefined {
+function findSimilar(walk: Walk, at: NodeHead, name: string, member: Member, ctx: CheckContext): NodeHead | undefined {
   const inherited = at.nodeClass === "ObjectType" ? getMembers(ctx, at.key).get(name)?.node : undefined;
   if (inherited?.nodeClass === member.node.nodeClass) return inherited;
   return getChildren(ctx, at.key)
@@ -99,7 +100,7 @@ function findSimilar(walk: Walk, at: Node, name: string, member: Member, ctx: Ch
 }
 
 /** A nested member that the type of its parent already makes Mandatory comes with every instance. */
-function isGivenByType(walk: Walk, at: Node, name: string, ctx: CheckContext): boolean {
+function isGivenByType(walk: Walk, at: NodeHead, name: string, ctx: CheckContext): boolean {
   if (walk.path.length === 0) return false;
   const type = findTypeDefinition(ctx, at.key);
   return type !== undefined && getMembers(ctx, type).get(name)?.rule === M.Mandatory;
@@ -126,7 +127,7 @@ function reportRule(
   walk: Walk,
   path: readonly string[],
   member: Member,
-  found: Node,
+  found: NodeHead,
   ctx: CheckContext,
   report: ReportFunction,
 ): void {

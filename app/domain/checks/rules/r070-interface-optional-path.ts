@@ -1,7 +1,6 @@
-import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardModellingRule as M } from "../../address-space/standard-ids";
 import { findModellingRule } from "../lookups";
-import { getMembers, listInterfaces } from "../members";
+import { getMembers, listInterfaces, toNameText } from "../members";
 import { clause, type NodeRule } from "../rule";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
 
@@ -20,7 +19,7 @@ export const r070: NodeRule = {
       const declared = getMembers(ctx, applied);
       for (const { target } of ctx.childEdges(node.key)) {
         const child = ctx.node(target);
-        const member = child && declared.get(formatQualifiedName(child.browseName));
+        const member = child && declared.get(toNameText(child.browseName));
         if (!child || !member || member.rule !== M.Optional || child.key === member.node.key) continue;
         const rule = findModellingRule(ctx, target);
         if (child.nodeClass === member.node.nodeClass && (rule === M.Mandatory || rule === M.Optional)) continue;

@@ -5,7 +5,8 @@ import { StandardDataType as D, StandardReferenceType as R } from "../../address
 import type { CheckContext } from "../check-context";
 import { edgesDeclaredAt } from "../edges";
 import { findModellingRule, findStandardProperty, findTypeDefinition, isChainLoaded, listSupertypes } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { findValueRoot, textOf } from "../value-xml";
 
 export const r073: NodeRule = {

@@ -1,11 +1,10 @@
 import { keyOf, modellingRuleFix } from "../fixes";
 import type { Severity } from "../../core/result";
 import type { NodeKey } from "../../address-space/node-id";
-import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardModellingRule as M } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import { findModellingRule, findTypeDefinition, isInstanceDeclaration } from "../lookups";
-import { findInheritedMember, getMembers, isPlaceholder, type Member } from "../members";
+import { findInheritedMember, getMembers, isPlaceholder, type Member, toNameText } from "../members";
 import { clause, type NodeRule } from "../rule";
 
 export const r080: NodeRule = {
@@ -66,7 +65,7 @@ function findBase(parent: NodeKey, name: Member["node"]["browseName"], ctx: Chec
   const parentClass = ctx.classOf(parent);
   if (parentClass === "ObjectType" || parentClass === "VariableType") return findInheritedMember(ctx, parent, name);
   const type = findTypeDefinition(ctx, parent);
-  return type === undefined ? undefined : getMembers(ctx, type).get(formatQualifiedName(name));
+  return type === undefined ? undefined : getMembers(ctx, type).get(toNameText(name));
 }
 
 /** Rules outside the standard's table are expected to stay; undefined means that the change is allowed. */

@@ -1,4 +1,3 @@
-import type { Node } from "../../address-space/node";
 import { standardKey, type NodeKey } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
 import { StandardReferenceType as R } from "../../address-space/standard-ids";
@@ -6,6 +5,7 @@ import type { CheckContext } from "../check-context";
 import { findModellingRule, listSupertypes } from "../lookups";
 import { getChildren, getMembers } from "../members";
 import { clause, type NodeRule } from "../rule";
+import type { NodeHead } from "../views";
 import { StandardNode } from "../standard-nodes";
 
 export const r083: NodeRule = {
@@ -60,7 +60,7 @@ export const r083: NodeRule = {
   },
 };
 
-function findOwnChild(parent: NodeKey, ctx: CheckContext): Node | undefined {
+function findOwnChild(parent: NodeKey, ctx: CheckContext): NodeHead | undefined {
   for (const same of getChildren(ctx, parent).values()) {
     const own = same.find((child) => ctx.isOwn(child.key) && findModellingRule(ctx, child.key) !== undefined);
     if (own) return own;

@@ -25,7 +25,9 @@ export const r084: NodeRule = {
       const owner = ctx.node(source);
       if (owner?.nodeClass !== "ObjectType" && owner?.nodeClass !== "VariableType") continue;
       const base = findInheritedMember(ctx, source, node.browseName);
-      if (!base || base.node.key === node.key || base.referenceType !== type || !isCopy(node, base.node, ctx)) continue;
+      if (!base || base.node.key === node.key || base.referenceType !== type) continue;
+      const inherited = ctx.node(base.node.key);
+      if (!inherited || !isCopy(node, inherited, ctx)) continue;
       report({
         message: `${node.browseName.name} of ${owner.browseName.name} only repeats what it inherits.`,
         facts: [

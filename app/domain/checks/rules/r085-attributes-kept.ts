@@ -26,8 +26,9 @@ export const r085: NodeRule = {
     for (const { source } of ctx.parentEdges(node.key)) {
       const owner = ctx.classOf(source);
       if (owner !== "ObjectType" && owner !== "VariableType") continue;
-      const base = findInheritedMember(ctx, source, node.browseName)?.node;
-      if (!base || base.key === node.key || base.nodeClass !== node.nodeClass) continue;
+      const inherited = findInheritedMember(ctx, source, node.browseName)?.node;
+      const base = inherited && inherited.key !== node.key ? ctx.node(inherited.key) : undefined;
+      if (base?.nodeClass !== node.nodeClass) continue;
       for (const attribute of ATTRIBUTES) {
         if (!isGiven(base, attribute) || isGiven(node, attribute)) continue;
         report({

@@ -10,6 +10,7 @@ import type { ReportFunction } from "../finding";
 import { findModellingRule, findTypeDefinition, isInstanceDeclaration } from "../lookups";
 import { getChildren, getMembers, isNaming, isPlaceholder, listOwnMembers, type Member } from "../members";
 import { clause, type NodeRule } from "../rule";
+import type { NodeHead } from "../views";
 
 export const r086: NodeRule = {
   id: "R086",
@@ -94,7 +95,7 @@ function isAsked({ node, rule }: Member, ctx: CheckContext): boolean {
 }
 
 /** Members of the type on `at`, and below the members found what the type declares below their declarations. */
-function checkBelow(walk: Walk, at: Node, members: readonly Member[], path: readonly string[]): void {
+function checkBelow(walk: Walk, at: NodeHead, members: readonly Member[], path: readonly string[]): void {
   if (path.length > MAX_DEPTH) return;
   const { ctx } = walk;
   const children = getChildren(ctx, at.key);
@@ -111,7 +112,7 @@ function checkBelow(walk: Walk, at: Node, members: readonly Member[], path: read
 }
 
 /** A nested node is checked against its own type by itself. */
-function isToldByChild({ ctx }: Walk, at: Node, name: string, path: readonly string[]): boolean {
+function isToldByChild({ ctx }: Walk, at: NodeHead, name: string, path: readonly string[]): boolean {
   if (path.length === 0 || !ctx.isOwn(at.key)) return false;
   const type = findTypeDefinition(ctx, at.key);
   return type !== undefined && getMembers(ctx, type).get(name)?.rule === M.Mandatory;
@@ -119,7 +120,7 @@ function isToldByChild({ ctx }: Walk, at: Node, name: string, path: readonly str
 
 function reportMissing(
   { instance, type, isDeclaration, report, ctx }: Walk,
-  at: Node,
+  at: NodeHead,
   member: Member,
   path: readonly string[],
 ): void {

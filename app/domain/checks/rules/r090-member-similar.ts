@@ -1,9 +1,9 @@
 import { formatQualifiedName } from "../../address-space/qualified-name";
-import type { Node } from "../../address-space/node";
 import type { CheckContext } from "../check-context";
 import { findTypeDefinition, isChainLoaded, isKindOf, isProperty } from "../lookups";
 import { getChildren, getMembers, isNaming, listInterfaces, type Member } from "../members";
 import { clause, type NodeRule } from "../rule";
+import type { NodeHead } from "../views";
 
 export const r090: NodeRule = {
   id: "R090",
@@ -67,7 +67,7 @@ export const r090: NodeRule = {
 };
 
 /** Same class and, for Objects and Variables, the same type or one below it; an unknown type is given the benefit of the doubt. */
-function isSimilar(child: Node, { node: declared }: Member, ctx: CheckContext): boolean {
+function isSimilar(child: NodeHead, { node: declared }: Member, ctx: CheckContext): boolean {
   if (child.key === declared.key) return true;
   if (child.nodeClass !== declared.nodeClass) return false;
   if (child.nodeClass === "Method") return true;
@@ -75,6 +75,7 @@ function isSimilar(child: Node, { node: declared }: Member, ctx: CheckContext): 
   if (isProperty(ctx, child.key) && isProperty(ctx, declared.key)) return true;
   const wanted = findTypeDefinition(ctx, declared.key);
   const found = findTypeDefinition(ctx, child.key);
-  if (wanted === undefined || found === undefined || !isChainLoaded(ctx, found) || ctx.classOf(wanted) === undefined) return true;
+  if (wanted === undefined || found === undefined || !isChainLoaded(ctx, found) || ctx.classOf(wanted) === undefined)
+    return true;
   return isKindOf(ctx, found, wanted);
 }

@@ -8,12 +8,16 @@ import { getChildren, getMembers, isNaming, type Member } from "../members";
 import { clause, type NodeRule } from "../rule";
 
 /** Members that their owner names over two references or more. */
-const joinedMembers = makeLookup<readonly { readonly member: Member; readonly links: readonly NodeKey[] }[]>((ctx, type) =>
-  [...getMembers(ctx, type).values()].flatMap((member) => {
-    if (!isNaming(member.rule)) return [];
-    const links = ctx.childEdges(member.owner).filter((e) => e.target === member.node.key).map((e) => e.type);
-    return links.length < 2 ? [] : [{ member, links }];
-  }),
+const joinedMembers = makeLookup<readonly { readonly member: Member; readonly links: readonly NodeKey[] }[]>(
+  (ctx, type) =>
+    [...getMembers(ctx, type).values()].flatMap((member) => {
+      if (!isNaming(member.rule)) return [];
+      const links = ctx
+        .childEdges(member.owner)
+        .filter((e) => e.target === member.node.key)
+        .map((e) => e.type);
+      return links.length < 2 ? [] : [{ member, links }];
+    }),
 );
 
 export const r091: NodeRule = {

@@ -1,7 +1,6 @@
-import { formatQualifiedName } from "../../address-space/qualified-name";
 import { attributeFix } from "../fixes";
 import { findTypeAbove, findTypeDefinition } from "../lookups";
-import { getMembers, isNaming } from "../members";
+import { getMembers, isNaming, toNameText } from "../members";
 import { clause, type NodeRule } from "../rule";
 
 export const r092: NodeRule = {
@@ -23,7 +22,7 @@ export const r092: NodeRule = {
       return;
     for (const { source } of ctx.parentEdges(node.key)) {
       const type = findTypeDefinition(ctx, source);
-      const member = type === undefined ? undefined : getMembers(ctx, type).get(formatQualifiedName(node.browseName));
+      const member = type === undefined ? undefined : getMembers(ctx, type).get(toNameText(node.browseName));
       if (!member || !isNaming(member.rule) || member.node.nodeClass !== "Method" || member.node.key === node.key)
         continue;
       report({

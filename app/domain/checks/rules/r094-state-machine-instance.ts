@@ -35,7 +35,8 @@ export const r094: NodeRule = {
     if (!current || states.length === 0) return;
     const property = findStandardProperty(ctx, current.key, "Number");
     const number = property?.nodeClass === "Variable" ? findValueRoot(property.value)?.text.trim() : undefined;
-    const text = current.nodeClass === "Variable" ? textOf(findValueRoot(current.value), "Text") : "";
+    const variable = ctx.node(current.key);
+    const text = variable?.nodeClass === "Variable" ? textOf(findValueRoot(variable.value), "Text") : "";
     const isNumberWrong = number !== undefined && number !== "" && !states.some((s) => s.number === number);
     const isTextWrong = text !== "" && !states.some((s) => s.names.includes(text));
     if (!isNumberWrong && !isTextWrong) return;

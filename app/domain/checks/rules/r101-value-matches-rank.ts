@@ -27,7 +27,8 @@ export const r101: NodeRule = {
     const shape = findShape(root);
     const isFitting = isAllowed(shape, rank, root);
     const sizes = shape === "matrix" ? listSizes(root) : [];
-    const isOddMatrix = shape === "matrix" && ((rank > 1 && sizes.length !== rank) || sizes.some((size) => !(size > 0)));
+    const isOddMatrix =
+      shape === "matrix" && ((rank > 1 && sizes.length !== rank) || sizes.some((size) => !(size > 0)));
     if (isFitting && !isOddMatrix) return;
     const shown = String(rank).replace("-", "−");
     const name = node.browseName.name;

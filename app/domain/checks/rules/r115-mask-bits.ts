@@ -3,7 +3,8 @@ import { keepBits, listSurplusBits } from "../bit-rules";
 import { findSubject, notPossible, setAttribute } from "../fixes";
 import { ok } from "../../core/result";
 import type { Operation } from "../../editing/operation";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 const PERMISSIONS = 0xffff;
 const RESTRICTIONS = 0b1111;

@@ -3,7 +3,8 @@ import { edgesDeclaredAt } from "../edges";
 import { addReference, keyOf, notPossible, retypeReferenceFix, setAttribute } from "../fixes";
 import { ok } from "../../core/result";
 import { findTypeDefinition, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
 export const r168: NodeRule = {

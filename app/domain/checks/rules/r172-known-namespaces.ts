@@ -1,6 +1,7 @@
 import { OPC_UA_NAMESPACE } from "../../address-space/node-id";
 import { formatQualifiedName } from "../../address-space/qualified-name";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 
 export const r172: NodeRule = {
   id: "R172",

@@ -1,7 +1,8 @@
 import { standardKey } from "../../address-space/node-id";
 import { attributeFix } from "../fixes";
 import { findTypeDefinition, isChainLoaded, isKindOf } from "../lookups";
-import { ALL_CLASSES, clause, type NodeRule } from "../rule";
+import { ALL_CLASSES } from "../node-classes";
+import { clause, type NodeRule } from "../rule";
 import { StandardNode as N } from "../standard-nodes";
 
 export const r197: NodeRule = {

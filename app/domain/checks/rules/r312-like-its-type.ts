@@ -4,9 +4,8 @@ import { StandardDataType as D, StandardType as T } from "../../address-space/st
 import type { CheckContext } from "../check-context";
 import type { ExampleModel } from "../example-model";
 import { CELSIUS, unit } from "../example-values";
-import type { ReportFunction } from "../finding";
-import { findStandardProperty, findTypeDefinition } from "../lookups";
-import { getChildren, getMembers, isNaming, listOwnMembers, type Member } from "../members";
+import { findStandardProperty } from "../lookups";
+import { findDeclarationOf } from "../members";
 import { formatRange, listRanges } from "../ranges";
 import type { NodeRule } from "../rule";
 import { listUnits } from "../unit-values";
@@ -17,14 +16,34 @@ export const r312: NodeRule = {
   severity: "warning",
   clause: "common practice, no source",
   priority: 2,
-  concerns: ["Object"],
-  needs: ["no type above"],
+  concerns: ["Variable"],
+  needs: ["children", "no property", "no type above"],
   condition: "Members of an instance have the unit and the range of the type's declarations; another range is a hint.",
   why: "Who compares machines takes the type's unit for all of them: one that differs is read wrongly by a factor.",
   check(node, ctx, report) {
-    const type = findTypeDefinition(ctx, node.key);
-    if (type === undefined) return;
-    compareBelow(node, [...getMembers(ctx, type).values()], 0, ctx, report);
+    const here = listUnits(findValue(node, "EngineeringUnits", ctx))[0];
+    const range = listRanges(findValue(node, "EURange", ctx))[0];
+    const declared = here || range ? findDeclarationOf(ctx, node.key) : undefined;
+    if (!declared) return;
+    const name = node.browseName.name;
+    const there = listUnits(findValue(declared, "EngineeringUnits", ctx))[0];
+    if (there && here && (here.unitId !== there.unitId || here.uri !== there.uri)) {
+      report({
+        message: `${name} is in ${here.symbol || here.unitId}, its type says ${there.symbol || there.unitId}.`,
+        facts: [
+          `Here: ${here.symbol} (${here.unitId})`,
+          `${ctx.describe(declared.key)}: ${there.symbol} (${there.unitId})`,
+        ],
+      });
+    }
+    const wanted = listRanges(findValue(declared, "EURange", ctx))[0];
+    if (wanted && range && (range.low !== wanted.low || range.high !== wanted.high)) {
+      report({
+        severity: "hint",
+        message: `${name} has the range ${formatRange(range)}, its type ${formatRange(wanted)}.`,
+        facts: [`Here: ${formatRange(range)}`, `${ctx.describe(declared.key)}: ${formatRange(wanted)}`],
+      });
+    }
   },
   examples: {
     good: { text: "The unit of the type.", build: (m) => void addTypeAndInstance(m, CELSIUS) },
@@ -44,52 +63,7 @@ function addTypeAndInstance(m: ExampleModel, value: XmlText): NodeKey {
   return member;
 }
 
-const MAX_DEPTH = 20;
-
-function compareBelow(
-  at: Node,
-  members: readonly Member[],
-  depth: number,
-  ctx: CheckContext,
-  report: ReportFunction,
-): void {
-  if (depth > MAX_DEPTH) return;
-  const children = getChildren(ctx, at.key);
-  for (const { node: declared, rule, name } of members) {
-    const child = isNaming(rule) ? children.get(name)?.[0] : undefined;
-    if (!child || child.key === declared.key) continue;
-    if (ctx.isOwn(child.key)) compareAnalog(child, declared, ctx, report);
-    compareBelow(child, listOwnMembers(ctx, declared.key), depth + 1, ctx, report);
-  }
-}
-
-function compareAnalog(child: Node, declared: Node, ctx: CheckContext, report: ReportFunction): void {
-  const name = child.browseName.name;
-  const there = listUnits(findValue(declared, "EngineeringUnits", ctx))[0];
-  const here = there && listUnits(findValue(child, "EngineeringUnits", ctx))[0];
-  if (there && here && (here.unitId !== there.unitId || here.uri !== there.uri)) {
-    report({
-      key: child.key,
-      message: `${name} is in ${here.symbol || here.unitId}, its type says ${there.symbol || there.unitId}.`,
-      facts: [
-        `Here: ${here.symbol} (${here.unitId})`,
-        `${ctx.describe(declared.key)}: ${there.symbol} (${there.unitId})`,
-      ],
-    });
-  }
-  const wanted = listRanges(findValue(declared, "EURange", ctx))[0];
-  const range = wanted && listRanges(findValue(child, "EURange", ctx))[0];
-  if (wanted && range && (range.low !== wanted.low || range.high !== wanted.high)) {
-    report({
-      key: child.key,
-      severity: "hint",
-      message: `${name} has the range ${formatRange(range)}, its type ${formatRange(wanted)}.`,
-      facts: [`Here: ${formatRange(range)}`, `${ctx.describe(declared.key)}: ${formatRange(wanted)}`],
-    });
-  }
-}
-
-function findValue(node: Node, property: string, ctx: CheckContext): XmlText | undefined {
-  const found = findStandardProperty(ctx, node.key, property);
+function findValue({ key }: Pick<Node, "key">, property: string, ctx: CheckContext): XmlText | undefined {
+  const found = findStandardProperty(ctx, key, property);
   return found && hasValueAttributes(found) ? found.value : undefined;
 }
