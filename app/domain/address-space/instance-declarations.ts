@@ -204,6 +204,14 @@ export function isMandatory(rule: NodeKey | undefined): boolean {
   return rule === StandardModellingRule.Mandatory;
 }
 
+/**
+ * Whether the declaration stands for any number of nodes with names of their own: placeholders, and a Variable that exposes
+ * an array, one for each entry (§6.4.4.4.3).
+ */
+export function standsForMany(rule: NodeKey | undefined): boolean {
+  return isPlaceholder(rule) || rule === StandardModellingRule.ExposesItsArray;
+}
+
 export function isPlaceholder(rule: NodeKey | undefined): boolean {
   return rule === StandardModellingRule.OptionalPlaceholder || rule === StandardModellingRule.MandatoryPlaceholder;
 }

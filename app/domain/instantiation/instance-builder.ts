@@ -12,9 +12,9 @@
 import type { AddressSpace, Edge } from "../address-space/address-space";
 import {
   isMandatory,
-  isPlaceholder,
   listMemberDeclarations,
   listMemberSources,
+  standsForMany,
   type DeclarationSource,
   type MemberDeclaration,
 } from "../address-space/instance-declarations";
@@ -110,7 +110,7 @@ export class InstanceBuilder {
     const aggregates = getReferenceTypes(this.#draft.space, R.Aggregates);
     for (const member of listMemberDeclarations(this.#declared, place.sources)) {
       if (this.#draft.hasFailed) return;
-      if (isPlaceholder(member.rule)) this.#buildPlaceholder(place, member);
+      if (standsForMany(member.rule)) this.#buildPlaceholder(place, member);
       else if (member.referenceTypes.some((type) => aggregates.has(type)))
         this.#buildMember(place, member, wantsMandatory);
       else this.#deferred.push({ place, member, wantsMandatory });
@@ -156,13 +156,13 @@ export class InstanceBuilder {
     const key = this.#draft.add({
       nodeClass: member.node.nodeClass,
       browseName,
-      ...(isPlaceholder(member.rule) ? {} : { displayName: member.node.displayName }),
+      ...(standsForMany(member.rule) ? {} : { displayName: member.node.displayName }),
       ...(member.node.description ? { description: member.node.description } : {}),
       references: this.#listReferences(place, member, typeDefinition),
       attributes: { parent: place.parent, ...copyAttributes(this.#draft.space, member) },
     });
     if (key === undefined) return;
-    if (!isPlaceholder(member.rule)) this.#know(member.declared, key);
+    if (!standsForMany(member.rule)) this.#know(member.declared, key);
     const sources = listMemberSources(this.#declared, member, this.#newScope(), typeDefinition);
     this.#buildLevel({ parent: key, path: [...place.path, browseName], sources }, true);
   }

@@ -10,11 +10,11 @@ import type { AddressSpace } from "../address-space/address-space";
 import { findTypeDefinition, listEdgesFrom } from "../address-space/browse";
 import {
   isMandatory,
-  isPlaceholder,
   listInstanceSources,
   listMemberDeclarations,
   listMemberSources,
   toPathKey,
+  standsForMany,
   type DeclarationSource,
   type MemberDeclaration,
 } from "../address-space/instance-declarations";
@@ -41,6 +41,7 @@ export type OpenMember = {
   readonly parent: NodeKey;
   readonly declaration: NodeKey;
   readonly rule: NodeKey;
+  /** It stands for any number of nodes with names of their own. */
   readonly isPlaceholder: boolean;
 };
 
@@ -62,7 +63,7 @@ export function* walkInstance(
     }));
     yield { ...level, members };
     for (const { member, child } of members) {
-      if (!child || seen.has(child.key) || isPlaceholder(member.rule)) continue;
+      if (!child || seen.has(child.key) || standsForMany(member.rule)) continue;
       seen.add(child.key);
       const definition = findTypeDefinition(space, child.key) ?? member.typeDefinition;
       queue.push({
@@ -100,7 +101,7 @@ export function listOfferedMembers(space: AddressSpace, instance: NodeKey): Open
   return listOpenMembers(
     space,
     instance,
-    (_level, member) => member.rule === StandardModellingRule.Optional || isPlaceholder(member.rule),
+    (_level, member) => member.rule === StandardModellingRule.Optional || standsForMany(member.rule),
   );
 }
 
@@ -121,7 +122,7 @@ function listOpenMembers(
         parent: level.parent,
         declaration: member.node.key,
         rule: member.rule,
-        isPlaceholder: isPlaceholder(member.rule),
+        isPlaceholder: standsForMany(member.rule),
       });
     }
   }

@@ -42,7 +42,12 @@ export type AddStructureIntent = {
   readonly isAbstract?: boolean;
 };
 
-const ENCODINGS = ["Default Binary", "Default XML", "Default JSON"] as const;
+/** BrowseName and SymbolicName, as the published NodeSets have them. */
+const ENCODINGS = [
+  ["Default Binary", "DefaultBinary"],
+  ["Default XML", "DefaultXml"],
+  ["Default JSON", "DefaultJson"],
+] as const;
 
 /** Problems: `name.*`, `structure.*`. */
 export function addStructure(space: AddressSpace, context: CommandContext, intent: AddStructureIntent): Result<Edit> {
@@ -67,7 +72,7 @@ export function addStructure(space: AddressSpace, context: CommandContext, inten
 /** Those of the three encoding Objects that the structure does not have yet. */
 export function addEncodings(draft: EditDraft, dataType: NodeKey): void {
   const encodings = listEncodings(draft.space, dataType).map((key) => draft.space.getNode(key)?.browseName.name);
-  for (const encoding of ENCODINGS) if (!encodings.includes(encoding)) addEncoding(draft, dataType, encoding);
+  for (const [name, symbol] of ENCODINGS) if (!encodings.includes(name)) addEncoding(draft, dataType, name, symbol);
 }
 
 export function listEncodings(space: AddressSpace, dataType: NodeKey): NodeKey[] {
@@ -75,7 +80,7 @@ export function listEncodings(space: AddressSpace, dataType: NodeKey): NodeKey[]
   return edges.map((edge) => edge.target);
 }
 
-function addEncoding(draft: EditDraft, dataType: NodeKey, name: (typeof ENCODINGS)[number]): void {
+function addEncoding(draft: EditDraft, dataType: NodeKey, name: string, symbolicName: string): void {
   draft.add({
     nodeClass: "Object",
     browseName: qualifiedName(OPC_UA_NAMESPACE, name),
@@ -83,7 +88,7 @@ function addEncoding(draft: EditDraft, dataType: NodeKey, name: (typeof ENCODING
       { type: StandardReferenceType.HasEncoding, target: dataType, isForward: false },
       { type: StandardReferenceType.HasTypeDefinition, target: StandardType.DataTypeEncodingType, isForward: true },
     ],
-    attributes: { symbolicName: name.replace(" ", "") },
+    attributes: { symbolicName },
   });
 }
 

@@ -237,7 +237,7 @@ describe("NodeIds CSV", () => {
     // The form of the published lists, e.g. `Argument_Encoding_DefaultXml,297,Object` (OPC 10000-6 §A.3).
     expect(csv).toMatch(/^MachineType,\d+,ObjectType$/m);
     expect(csv).toMatch(/^MachineType_Process_data_Speed,\d+,Variable$/m);
-    expect(csv).toMatch(/^PointType_Encoding_DefaultXML,\d+,Object$/m);
+    expect(csv).toMatch(/^PointType_Encoding_DefaultXml,\d+,Object$/m);
     const two = new Workbench();
     for (let i = 0; i < 4000; i++) two.context.allocate("Object");
     build(two);

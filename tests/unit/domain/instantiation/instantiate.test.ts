@@ -8,12 +8,15 @@ import {
   StandardReferenceType,
   StandardType,
 } from "~/domain/address-space/standard-ids";
+import { addEnumeration } from "~/domain/editing/commands/add-enumeration";
 import { addMethod, addObject, addVariable } from "~/domain/editing/commands/add-member";
+import { addStructure } from "~/domain/editing/commands/add-structure";
 import { addType } from "~/domain/editing/commands/add-type";
 import { connectNodes } from "~/domain/editing/commands/connect-nodes";
 import { deleteNodes } from "~/domain/editing/commands/delete-nodes";
 import { addDeclaredMembers, instantiate } from "~/domain/instantiation/instantiate";
 import { listMissingMembers, listOfferedMembers } from "~/domain/instantiation/missing-members";
+import { writeNodeSet } from "~/domain/nodeset/write-nodeset";
 import { Workbench } from "../../../support/command-harness";
 import { TEST_NAMESPACE } from "../../../support/small-standard";
 
@@ -176,6 +179,89 @@ describe("inheritance", () => {
     });
     expect(bench.at(pump, "SerialNumber")).toMatchObject({ browseName: { namespaceUri: DI }, dataType: "i=12" });
     expect(listOfferedMembers(bench.space, pump).map((m) => m.path[0]?.name)).toContain("AssetId");
+  });
+});
+
+describe("what stands for many nodes", () => {
+  it("is the entry of an exposed array: none is made unasked, each that was named is (OPC 10000-3 §6.4.4.4.3)", () => {
+    const bench = new Workbench();
+    const type = bench.do(addType, {
+      supertype: StandardType.BaseDataVariableType,
+      name: "LevelsType",
+      dataType: StandardDataType.Double,
+      valueRank: 1,
+      arrayDimensions: "0",
+    });
+    const { ExposesItsArray } = StandardModellingRule;
+    bench.do(addVariable, { parent: type, name: "Level", dataType: StandardDataType.Double, rule: ExposesItsArray });
+    const named = ["Level1", "Level2"].map((name) => ({ path: "Level", name }));
+    const bare = bench.do(addVariable, { parent: OBJECTS, name: "Bare", typeDefinition: type });
+    expect(bench.has(bare, "Level")).toBe(false);
+    expect(listMissingMembers(bench.space, bare)).toEqual([]);
+    expect(listOfferedMembers(bench.space, bare)).toMatchObject([{ rule: ExposesItsArray, isPlaceholder: true }]);
+    const filled = bench.do(addVariable, { parent: OBJECTS, name: "Filled", typeDefinition: type, named });
+    for (const name of ["Level1", "Level2"]) {
+      expect(bench.at(filled, name)).toMatchObject({ nodeClass: "Variable", dataType: "i=11" });
+      expect(bench.at(filled, name).displayName).toEqual([{ text: name }]);
+    }
+  });
+
+  it("is a mandatory placeholder too, which is missing until a node of its type is there (§6.4.4.4.5)", () => {
+    const bench = new Workbench();
+    const sensor = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "SensorType" });
+    const special = bench.do(addType, { supertype: sensor, name: "EyeType" });
+    const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "StationType" });
+    bench.do(addObject, { parent: type, name: "<Sensor>", typeDefinition: sensor, rule: MandatoryPlaceholder });
+    const station = bench.do(instantiate, { type, parent: OBJECTS, name: "S1" });
+    expect(listMissingMembers(bench.space, station).map((member) => member.pathKey)).toHaveLength(1);
+    bench.do(addObject, { parent: station, name: "Door" });
+    expect(listMissingMembers(bench.space, station)).toHaveLength(1);
+    bench.do(addObject, { parent: station, name: "Eye", typeDefinition: special });
+    expect(listMissingMembers(bench.space, station)).toEqual([]);
+  });
+});
+
+describe("add-ins", () => {
+  it("are members like any other: mandatory ones are made, by the reference that the type has (§4.10.3)", () => {
+    const bench = new Workbench("Opc.Ua.Di.NodeSet2.xml");
+    // LockingServicesType i=6388 with the mandatory Property Locked (published DI 1.04 NodeSet).
+    const addIn = di(6388);
+    expect(bench.node(addIn).browseName.name).toBe("LockingServicesType");
+    const type = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "GateType" });
+    const { HasAddIn } = StandardReferenceType;
+    bench.do(addObject, { parent: type, name: "Lock", typeDefinition: addIn, referenceType: HasAddIn });
+    const gate = bench.do(instantiate, { type, parent: OBJECTS, name: "G1" });
+    const lock = bench.at(gate, "Lock");
+    expect(bench.space.hasEdge({ source: gate, type: HasAddIn, target: lock.key })).toBe(true);
+    expect(bench.has(gate, "Lock/Locked")).toBe(true);
+  });
+
+  it("and Interfaces reach the instances of subtypes", () => {
+    const bench = new Workbench("Opc.Ua.Di.NodeSet2.xml");
+    const base = bench.do(addType, { supertype: StandardType.BaseObjectType, name: "PumpType" });
+    bench.do(connectNodes, { source: base, type: StandardReferenceType.HasInterface, target: di(15035) });
+    const derived = bench.do(addType, { supertype: base, name: "BigPumpType" });
+    const pump = bench.do(instantiate, { type: derived, parent: OBJECTS, name: "P1", optional: ["Manufacturer"] });
+    expect(bench.has(pump, "Manufacturer")).toBe(true);
+  });
+});
+
+describe("what is written here", () => {
+  it("carries the inverse reference at each child, subtype and encoding, since some stacks lose nodes without", () => {
+    const bench = new Workbench();
+    const type = makeMachineType(bench);
+    bench.do(addType, { supertype: type, name: "BigMachineType" });
+    bench.do(addStructure, { name: "PointType", fields: [{ name: "X", dataType: StandardDataType.Double }] });
+    bench.do(addEnumeration, { name: "StateEnum", fields: [{ name: "Off", value: 0 }] });
+    bench.do(instantiate, { type, parent: OBJECTS, name: "B1", optional: ["Light"] });
+    const { xml } = writeNodeSet({ header: bench.space.own.header, nodes: bench.space.listOwnNodes() });
+    const nodes = [...xml.matchAll(/<UA(\w+) NodeId="([^"]+)" BrowseName="([^"]+)"[^>]*>([^]*?)<\/UA\1>/g)];
+    expect(nodes.length).toBe(bench.space.own.nodes.size);
+    const inverse = /ReferenceType="(?:HasSubtype|HasProperty|HasComponent|HasOrderedComponent|HasAddIn|Organizes|HasEncoding)" IsForward="false"/;
+    for (const [, , id, name, body] of nodes) expect(inverse.test(body ?? ""), `${id ?? ""} ${name ?? ""}`).toBe(true);
+    const children = [...xml.matchAll(/<UA(?:Object|Variable|Method) [^>]*>/g)].map(([tag]) => tag);
+    const isOwned = (tag: string): boolean => tag.includes("ParentNodeId=") || tag.includes('BrowseName="Default ');
+    expect(children.filter((tag) => !isOwned(tag))).toEqual([]);
   });
 });
 

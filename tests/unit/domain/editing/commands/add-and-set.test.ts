@@ -372,8 +372,8 @@ describe("data types", () => {
       .map((e) => bench.node(e.target));
     expect(encodings.map((n) => [n.browseName.name, n.symbolicName, n.references[0]?.isForward])).toEqual([
       ["Default Binary", "DefaultBinary", false],
-      ["Default XML", "DefaultXML", false],
-      ["Default JSON", "DefaultJSON", false],
+      ["Default XML", "DefaultXml", false],
+      ["Default JSON", "DefaultJson", false],
     ]);
     expect(bench.node(point)).toMatchObject({
       definition: {
