@@ -81,6 +81,8 @@ export default [
     route("sources/wiring-list", "routes/sources.wiring-list.tsx"),
     route("library", "routes/library.tsx"),
     route("team", "routes/team.tsx"),
+    route("boards", "routes/boards.tsx"),
+    route("boards/:boardId", "routes/boards.$boardId.tsx"),
     route("as-built/:reportId", "routes/as-built.$reportId.tsx"),
     route("live", "routes/live.tsx"),
     route("live/endpoints", "routes/live.endpoints.tsx"),

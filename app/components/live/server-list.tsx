@@ -15,7 +15,13 @@ type Props = { servers: readonly TestServerState[]; endpoints: readonly LiveTarg
 export function ServerList({ servers, endpoints, models, mayRun }: Props) {
   const now = useNow(1000);
   return (
-    <Page title="Live" about="Values of running servers, along the browse path." actions={<LinkButton to="/live/endpoints">Endpoints</LinkButton>}>
+    <Page title="Live" about="Values of running servers, along the browse path." actions={
+        <>
+          <LinkButton to="/boards">Watch boards</LinkButton>
+          <LinkButton to="/live/endpoints">Endpoints</LinkButton>
+        </>
+      }
+    >
       {servers.length === 0 && endpoints.length === 0 ? <NoServer models={models} mayRun={mayRun} /> : null}
       <ul className="grid max-w-240">
         {servers.map((server) => (

@@ -9,6 +9,8 @@ export const testServerProblemTexts: Readonly<Record<string, string>> = {
   "test-server.node-missing": "The test server does not have the node {node} that the model describes.",
   "test-server.model-gone": "The model was deleted before its test server could start.",
   "test-server.not-running": "This test server is not running.",
+  "board.no-machine": "The model has no machine {nodeId} with a type.",
+  "board.stale": "{by} arranged the board meanwhile; open it again, then arrange.",
   "point-check.no-variable": "The model has no Variable {nodeId}.",
   "as-built.state": "The model has no revision {state}.",
   "endpoint.address": "“{text}” is no address of an OPC UA server; it looks like opc.tcp://host:4840/path.",
