@@ -1,5 +1,7 @@
 /** `npm run bench [-- --json]`: figures with their references, all of one run. */
+import { checkInChild, measureChecking } from "./checking";
 import { measureEditing } from "./editing";
+import { measureImport, serveImportsInChild } from "./import";
 import { measureLibrary, readLibraryInChild } from "./library";
 import { measureReading, readAndParseInChild, readInChild, readPacksInChild, readReferenceInChild } from "./reading";
 import { formatResult, type BenchResult } from "./result";
@@ -8,7 +10,9 @@ import { measureTestServerStart, runBareServer } from "./test-server-start";
 const measures: readonly (() => Promise<BenchResult[]>)[] = [
   measureReading,
   measureLibrary,
+  measureImport,
   measureEditing,
+  measureChecking,
   measureTestServerStart,
 ];
 
@@ -27,7 +31,9 @@ async function runAsChild(name: string, args: readonly string[]): Promise<void> 
   if (name === "read-reference") return readReferenceInChild(args);
   if (name === "read-packs") return readPacksInChild(args);
   if (name === "read-and-parse") return readAndParseInChild(args);
+  if (name === "check") return checkInChild();
   if (name === "read-library") return readLibraryInChild();
+  if (name === "import-server") return serveImportsInChild(args);
   const [pkiFolder, ...files] = args;
   if (name === "bare-server" && pkiFolder) return runBareServer(pkiFolder, files);
   throw new RangeError(`Unknown child ${name}`);

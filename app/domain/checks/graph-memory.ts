@@ -4,7 +4,7 @@
  * where many nodes meet: edges are kept apart by direction and by group (HasSubtype, other hierarchical, rest), so that a
  * new instance does not disturb those who only asked for its type's supertype.
  */
-import type { AddressSpace } from "../address-space/address-space";
+import type { AddressSpace, Layer } from "../address-space/address-space";
 import { listDistinctEdges, type Edge } from "../address-space/edge-index";
 import type { Node, NodeClass } from "../address-space/node";
 import type { NodeKey } from "../address-space/node-id";
@@ -51,12 +51,15 @@ export class GraphMemory {
   readonly #slots = new Map<string, Slot>();
   readonly #groups: ReadonlyMap<NodeKey, number>;
   readonly #isTracked: boolean;
+  /** Keys that required models name and do not have. */
+  readonly #named: ReadonlySet<NodeKey>;
   #reader: Reader | undefined;
 
   /** Without tracking reads are not noted, which a single full run does not need; `update` then must not be called. */
   constructor(space: AddressSpace, isTracked: boolean) {
     this.space = space;
     this.#isTracked = isTracked;
+    this.#named = new Set(space.layers.slice(0, -1).flatMap((layer) => listDangling(layer)));
     const hierarchical = getReferenceTypes(space, StandardReferenceType.HierarchicalReferences);
     this.#groups = new Map([
       ...[...hierarchical].map((type) => [type, HIERARCHICAL] as const),
@@ -201,7 +204,9 @@ export class GraphMemory {
 
   #listBundles(key: NodeKey, direction: number): (readonly Edge[])[] {
     const bundles: (readonly Edge[])[] = [];
-    for (const layer of this.space.layers) {
+    const { layers, own } = this.space;
+    // Required models hardly ever name nodes of models that require them.
+    for (const layer of own.nodes.has(key) && !this.#named.has(key) ? [own] : layers) {
       const bundle = (direction === FROM ? layer.outgoing : layer.incoming).get(key);
       if (bundle) bundles.push(bundle.distinct);
     }
@@ -221,6 +226,18 @@ export class GraphMemory {
       this.#reader = outer;
     }
   }
+}
+
+const dangling = new WeakMap<Layer, readonly NodeKey[]>();
+
+/** Keys in the edges of a layer that are no nodes of it; layers beneath a model are shared, so each is asked once. */
+function listDangling(layer: Layer): readonly NodeKey[] {
+  let keys = dangling.get(layer);
+  if (!keys) {
+    const named = new Set([...layer.outgoing.keys(), ...layer.incoming.keys()]);
+    dangling.set(layer, (keys = ([...named] as NodeKey[]).filter((key) => !layer.nodes.has(key))));
+  }
+  return keys;
 }
 
 /** Drops what was read of the node itself, as far as it differs. */
