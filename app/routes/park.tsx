@@ -4,6 +4,8 @@ import { ParkView } from "~/components/park/park-view";
 import { chooseOrganization } from "~/presenters/chosen-organization.server";
 import { listTestServers } from "~/presenters/list-test-servers.server";
 import { readPark } from "~/services/read-park.server";
+import { readGatewayStates } from "~/services/read-release.server";
+import { readReviews } from "~/services/read-review.server";
 import { hidesSteps } from "~/utils/hidden-steps";
 
 export const meta: Route.MetaFunction = () => [{ title: "Park · Ferrule" }];
@@ -15,6 +17,8 @@ export async function loader({ request }: Route.LoaderArgs) {
   return {
     ...(await readPark(organizationId)),
     testServers: listTestServers(organizationId),
+    reviews: (await readReviews(caller, organizationId)).filter(({ state }) => state !== "closed" && state !== "released"),
+    gateways: await readGatewayStates(organizationId),
     organizationId,
     organizationName,
     userName: caller.name,

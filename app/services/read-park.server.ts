@@ -7,6 +7,7 @@ import type { Finding } from "../domain/checks/finding";
 import { formatProblem } from "../domain/core/problem-texts";
 import { listMachines, type Machine, type MachineFigure } from "../domain/instantiation/list-machines";
 import { checkModel, countFindings, type FindingCounts } from "./check-model.server";
+import { readMachineFacts, type FactReader, type MachineFacts } from "./read-machine-facts.server";
 import { loadWorkingModel } from "./working-model.server";
 
 export type ModelSummary = {
@@ -28,6 +29,7 @@ export type ModelSummary = {
 
 export type ParkMachine = Omit<Machine, "state" | "figure"> & {
   readonly modelId: string;
+  readonly facts: MachineFacts;
   readonly tally: FindingCounts;
   /** NodeId texts to watch while a test server serves the model. */
   readonly stateNodeId: string | null;
@@ -66,7 +68,7 @@ export async function readPark(organizationId: string): Promise<Park> {
     const tally = countFindings(findings);
     const requires = working.layers.map((layer) => layer.modelUri).filter((uri) => uri !== OPC_UA_NAMESPACE);
     models.push({ ...summarize(working.model), tally, requires, missing: working.missing.map(formatProblem) });
-    if (row.kind === "machines") machines.push(...toParkMachines(row.id, working.space, findings));
+    if (row.kind === "machines") machines.push(...toParkMachines(row.id, working.space, findings, await readMachineFacts(working.model)));
   }
   return { models, machines, edits: await listRecentEdits(models) };
 }
@@ -76,7 +78,7 @@ function summarize(row: ModelRow) {
   return { id, name, kind, namespaceUri, version, headSeq, nodeCount, updatedAt: updatedAt.toISOString(), updatedBy };
 }
 
-function toParkMachines(modelId: string, space: AddressSpace, findings: readonly Finding[]): ParkMachine[] {
+function toParkMachines(modelId: string, space: AddressSpace, findings: readonly Finding[], readFacts: FactReader): ParkMachine[] {
   const toNodeId = (key: NodeKey | undefined) => {
     const node = key === undefined ? undefined : space.getNode(key);
     return node ? formatNodeId(node.nodeId) : null;
@@ -84,6 +86,7 @@ function toParkMachines(modelId: string, space: AddressSpace, findings: readonly
   return listMachines(space).map(({ state, figure, ...machine }) => ({
     ...machine,
     modelId,
+    facts: readFacts(space, { state, figure, ...machine }),
     tally: countFindings(findings.filter((finding) => isBelow(space, finding.key, machine.key))),
     stateNodeId: toNodeId(state),
     figure: figure

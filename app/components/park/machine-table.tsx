@@ -7,7 +7,7 @@ import { cx } from "~/components/ui/cx";
 import type { TestServerState } from "~/domain/simulation/test-server-state";
 import type { ParkMachine } from "~/services/read-park.server";
 import { MachineElevation } from "./machine-elevation";
-import { MemberTape } from "./member-tape";
+import { isMapped, MemberTape } from "./member-tape";
 import { useLiveValue } from "./use-live-value";
 
 type Props = { machines: readonly ParkMachine[]; testServers: readonly TestServerState[] };
@@ -60,6 +60,14 @@ export function MachineTable({ machines, testServers }: Props) {
                 {(machine) => <span className="font-mono">{machine.identification[name] ?? ""}</span>}
               </Row>
             ))}
+            {machines.some((machine) => machine.facts.typeVersion) ? (
+              <Row label="Type version" machines={machines}>
+                {(machine) => <TypeVersionCell machine={machine} />}
+              </Row>
+            ) : null}
+            <Row label="Release on it" machines={machines}>
+              {(machine) => <ReleaseCell machine={machine} />}
+            </Row>
             <Row label="Findings" machines={machines}>
               {(machine) => (
                 <Link to={`/models/${machine.modelId}/findings`}>
@@ -67,7 +75,7 @@ export function MachineTable({ machines, testServers }: Props) {
                 </Link>
               )}
             </Row>
-            <Row label="Members" machines={machines} opens>
+            <Row label={machines.some((machine) => machine.facts.mapped) ? "Mapped members" : "Members"} machines={machines} opens>
               {(machine) => <Total machine={machine} />}
             </Row>
             {groups.map((name) => (
@@ -75,6 +83,16 @@ export function MachineTable({ machines, testServers }: Props) {
                 {(machine) => <GroupCell machine={machine} name={name} />}
               </Row>
             ))}
+            <Row label="As-built report" machines={machines} opens>
+              {(machine) => <AsBuiltCell machine={machine} />}
+            </Row>
+            <Row label="Sources" machines={machines}>
+              {(machine) => (
+                <span className="block max-w-36 truncate font-mono text-note text-ink-2" title={machine.facts.sources}>
+                  {machine.facts.sources || <span className="text-ink-3">none bound</span>}
+                </span>
+              )}
+            </Row>
           </tbody>
         </table>
       </div>
@@ -135,18 +153,66 @@ function Row({ label, machines, tall, opens, within, children }: RowProps) {
   );
 }
 
+/** The revision of its type that the machine follows; an older one leads to the update. */
+function TypeVersionCell({ machine }: { machine: ParkMachine }) {
+  const version = machine.facts.typeVersion;
+  if (!version) return <span className="text-ink-3">not held</span>;
+  if (version.number === version.newest) return <span className="font-mono">r{version.number}</span>;
+  return (
+    <Link to={`/models/${machine.modelId}/roll-out?take=${version.newest}`} className="hover:text-copper">
+      <span className="font-mono">r{version.number}</span> <span className="text-note text-ink-2">r{version.newest} is ready</span>
+    </Link>
+  );
+}
+
+const deliveryWords = { sent: "sent", loaded: "loaded", proved: "proved" } as const;
+
+/** What was delivered to the machine's gateway, and how far it got. */
+function ReleaseCell({ machine }: { machine: ParkMachine }) {
+  const { gateway } = machine.facts;
+  if (!gateway?.delivered) return <span className="text-ink-3" title={gateway ? `Nothing was delivered to ${gateway.name}` : "No gateway publishes this machine"}>none yet</span>;
+  const { delivered } = gateway;
+  const status = delivered.state === "proved" ? "good" : delivered.isWithdrawn ? "bad" : "uncertain";
+  return (
+    <Link to={`/releases/${delivered.releaseId}`} className="flex items-center gap-1.5 hover:text-copper" title={gateway.name}>
+      <StatusShape status={status} />
+      <span className="font-mono">{delivered.version}</span>
+      <span className="text-note text-ink-2">{delivered.isWithdrawn ? "withdrawn" : deliveryWords[delivered.state]}</span>
+    </Link>
+  );
+}
+
+function AsBuiltCell({ machine }: { machine: ParkMachine }) {
+  const report = machine.facts.asBuilt;
+  if (!report)
+    return (
+      <Link to={`/models/${machine.modelId}/as-built`} className="hover:text-copper">
+        <StatusBadge status="stale">never</StatusBadge>
+      </Link>
+    );
+  const status = report.verdict === "as released" ? "good" : report.verdict === "differs" ? "uncertain" : "bad";
+  return (
+    <Link to={`/models/${machine.modelId}/as-built`} className="hover:text-copper" title={`Report ${report.number}`}>
+      <StatusBadge status={status}>{report.verdict}</StatusBadge>
+    </Link>
+  );
+}
+
+/** How many of the members that the machine has are fed; without a mapping, how many it has of those of its type. */
 function Total({ machine }: { machine: ParkMachine }) {
   const members = machine.groups.flatMap((group) => group.members);
+  const present = members.filter((member) => member.isPresent);
+  const counted = machine.facts.mapped ? present.filter((member) => isMapped(member, machine.facts.mapped)) : present;
   return (
     <span className="font-mono">
-      {members.filter((member) => member.isPresent).length} <span className="text-ink-3">of {members.length}</span>
+      {counted.length} <span className="text-ink-3">of {machine.facts.mapped ? present.length : members.length}</span>
     </span>
   );
 }
 
 function GroupCell({ machine, name }: { machine: ParkMachine; name: string }) {
   const group = machine.groups.find((candidate) => candidate.name === name);
-  return group ? <MemberTape group={group} /> : <span className="text-ink-3">not in its type</span>;
+  return group ? <MemberTape group={group} mapped={machine.facts.mapped} /> : <span className="text-ink-3">not in its type</span>;
 }
 
 /** What the machine does now, as the test server tells it. */
@@ -200,7 +266,7 @@ function MachineCard({ machine, server }: { machine: ParkMachine; server: TestSe
           <div key={group.name} className="contents">
             <dt className="text-ink-2">{group.name}</dt>
             <dd>
-              <MemberTape group={group} />
+              <MemberTape group={group} mapped={machine.facts.mapped} />
             </dd>
           </div>
         ))}

@@ -11,8 +11,10 @@ import { Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
 import { TitleBlock } from "~/components/ui/title-block";
 import type { Park } from "~/services/read-park.server";
 import { formatCount } from "~/utils/format";
+import { GatewayTable } from "./gateway-table";
 import { MachineTable } from "./machine-table";
 import { FirstSteps } from "./first-steps";
+import { ReviewTable } from "./review-table";
 import type { ParkData } from "./park-data";
 import { TestServerTable } from "./test-server-table";
 import { WaitList } from "./wait-list";
@@ -84,8 +86,12 @@ export function ParkView({ park }: { park: ParkData }) {
       )}
       {models.length > 0 ? (
         <div className="mt-6 grid grid-cols-2 gap-8 max-lg:grid-cols-1">
-          <ModelsBlock park={park} />
           <div className="grid content-start gap-6">
+            <ReviewTable reviews={park.reviews} />
+            <ModelsBlock park={park} />
+          </div>
+          <div className="grid content-start gap-6">
+            <GatewayTable gateways={park.gateways} />
             <TestServerTable servers={testServers} />
             <EditsBlock park={park} />
           </div>

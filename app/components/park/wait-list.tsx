@@ -7,7 +7,7 @@ import type { ParkData } from "./park-data";
 type Waiting = { id: string; severity: Severity; title: string; about: ReactNode; to: string; action: string };
 
 /** What asks for somebody's hand, the most urgent first. */
-function listWaiting({ models, testServers }: ParkData): Waiting[] {
+function listWaiting({ models, machines, reviews, gateways, testServers }: ParkData): Waiting[] {
   const ofModels = models.flatMap((model): Waiting[] => {
     const { error, warning } = model.tally;
     const rows: Waiting[] = [];
@@ -50,8 +50,46 @@ function listWaiting({ models, testServers }: ParkData): Waiting[] {
       to: `/models/${server.modelId}/test-server`,
       action: "Look at it",
     }));
+  const ofReviews = reviews
+    .filter((review) => review.waitsForMe)
+    .map((review): Waiting => ({
+      id: `review ${review.id}`,
+      severity: "warning",
+      title: `${review.author} asks you about ${review.model}`,
+      about: `Review ${review.number}: ${review.title}`,
+      to: `/reviews/${review.id}`,
+      action: "Decide",
+    }));
+  const ofGateways = gateways
+    .filter(({ delivered, proved }) => !delivered.isWithdrawn && delivered.version !== proved?.version)
+    .map(({ gatewayId, gateway, model, delivered }): Waiting => ({
+      id: `gateway ${gatewayId} ${model}`,
+      severity: "hint",
+      title: `${gateway} owes the proof of ${delivered.version}`,
+      about: `Release ${delivered.version} of ${model} was ${delivered.state}; no as-built report proves it yet.`,
+      to: `/releases/${delivered.releaseId}`,
+      action: "Look at it",
+    }));
   const weight: Record<Severity, number> = { error: 0, warning: 1, hint: 2 };
-  return [...ofServers, ...ofModels].sort((a, b) => weight[a.severity] - weight[b.severity]);
+  return [...ofServers, ...ofModels, ...ofReviews, ...listLate(machines), ...ofGateways].sort((a, b) => weight[a.severity] - weight[b.severity]);
+}
+
+/** Machines whose types have a newer frozen revision, one entry a model. */
+function listLate(machines: ParkData["machines"]): Waiting[] {
+  const late = machines.filter(({ facts }) => facts.typeVersion && facts.typeVersion.number < facts.typeVersion.newest);
+  return [...new Set(late.map((machine) => machine.modelId))].map((modelId): Waiting => {
+    const own = late.filter((machine) => machine.modelId === modelId);
+    const newest = own[0]?.facts.typeVersion?.newest ?? 0;
+    const names = own.map((machine) => machine.name);
+    return {
+      id: `late ${modelId}`,
+      severity: "hint",
+      title: names.length === 1 ? `${names[0]} follows an earlier type version` : `${names.length} machines follow an earlier type version`,
+      about: `${names.slice(0, 8).join(", ")}: revision ${newest} of their type is frozen.`,
+      to: `/models/${modelId}/roll-out?take=${newest}`,
+      action: "See what it brings",
+    };
+  });
 }
 
 export function WaitList({ park }: { park: ParkData }) {

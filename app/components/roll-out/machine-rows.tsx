@@ -135,5 +135,5 @@ function withoutChoice({ optional: _choice, ...row }: RollOutRow): RollOutRow {
 
 function tellChoice(row: RollOutRow, common: readonly string[]): string {
   const count = (row.optional ?? common).length;
-  return `${count === 0 ? "none" : count}${row.optional ? ", its own choice" : " as the others"}`;
+  return `${count === 0 ? "none" : count}${row.optional ? ", its own choice" : ", as the others"}`;
 }

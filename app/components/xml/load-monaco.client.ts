@@ -53,6 +53,14 @@ export function applyTheme(): void {
       "editorGutter.background": colour("--bench"),
       "editorIndentGuide.background1": colour("--hair"),
       "editorCursor.foreground": colour("--copper"),
+      "editor.foldBackground": "#00000000",
+      "editorHoverWidget.background": colour("--leaf"),
+      "editorHoverWidget.foreground": colour("--ink"),
+      "editorHoverWidget.border": colour("--ink"),
+      "editorStickyScroll.background": colour("--bench"),
+      "editorStickyScrollHover.background": colour("--bench-2"),
+      "editorWidget.background": colour("--leaf"),
+      "editorWidget.border": colour("--ink"),
     },
   });
   monaco.editor.setTheme(THEME);

@@ -25,7 +25,12 @@ const DI_NAMESPACE = "http://opcfoundation.org/UA/DI/";
 export type MachineGroup = {
   readonly name: string;
   /** One entry a declared member, in the order of the type: whether the machine has it. */
-  readonly members: readonly { readonly name: string; readonly isPresent: boolean }[];
+  readonly members: readonly {
+    readonly name: string;
+    /** BrowseNames below the machine: `Process/SpindleSpeed`. */
+    readonly path: string;
+    readonly isPresent: boolean;
+  }[];
 };
 
 export type MachineFigure = {
@@ -116,7 +121,11 @@ function listGroups(space: AddressSpace, machine: NodeKey, type: NodeKey): Machi
     const present = new Set(own ? listComponents(space, own.key).map((m) => formatQualifiedName(m.browseName)) : []);
     groups.push({
       name: getDisplayName(declared),
-      members: [...names].map(([name, member]) => ({ name: getDisplayName(member), isPresent: present.has(name) })),
+      members: [...names].map(([name, member]) => ({
+        name: getDisplayName(member),
+        path: `${declared.browseName.name}/${member.browseName.name}`,
+        isPresent: present.has(name),
+      })),
     });
   }
   return groups;

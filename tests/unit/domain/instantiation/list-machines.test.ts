@@ -40,11 +40,11 @@ describe("listMachines", () => {
           {
             name: "Process",
             members: [
-              { name: "Speed", isPresent: true },
-              { name: "Counter", isPresent: false },
+              { name: "Speed", path: "Process/Speed", isPresent: true },
+              { name: "Counter", path: "Process/Counter", isPresent: false },
             ],
           },
-          { name: "Energy", members: [{ name: "Power", isPresent: true }] },
+          { name: "Energy", members: [{ name: "Power", path: "Energy/Power", isPresent: true }] },
         ],
       ],
     ]);

@@ -52,8 +52,8 @@ describe("rollOutMachines", () => {
     ]);
     expect(machines[1]?.identification.Location).toBeUndefined();
     expect(machines[0]?.groups[0]?.members).toEqual([
-      { name: "Speed", isPresent: true },
-      { name: "Counter", isPresent: true },
+      { name: "Speed", path: "Process/Speed", isPresent: true },
+      { name: "Counter", path: "Process/Counter", isPresent: true },
     ]);
   });
 
