@@ -68,6 +68,7 @@ export default [
       route("register", "routes/models.$modelId.register.tsx"),
       route("types", "routes/models.$modelId.types.tsx"),
       route("mapping", "routes/models.$modelId.mapping.tsx"),
+      route("survey", "routes/models.$modelId.survey.tsx"),
       route("signals", "routes/models.$modelId.signals.tsx"),
       route("roll-out", "routes/models.$modelId.roll-out.tsx"),
       route("findings", "routes/models.$modelId.findings.tsx"),

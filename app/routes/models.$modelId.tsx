@@ -57,6 +57,7 @@ export default function Model({ loaderData }: Route.ComponentProps) {
           { to: `${base}/sheet`, label: "Sheet" },
           { to: `${base}/register`, label: "Register" },
           { to: `${base}/types`, label: "Types" },
+          ...(model.kind === "types" ? [{ to: `${base}/survey`, label: "Survey" }] : []),
           { to: `${base}/mapping`, label: "Mapping" },
           ...(model.kind === "machines" ? [{ to: `${base}/roll-out`, label: "Roll-out" }] : []),
           {

@@ -2,6 +2,7 @@ import type { Route } from "./+types/sources";
 import { assertMay, mayDo, requireUser } from "~/auth/caller.server";
 import { SourcesView } from "~/components/sources/sources-view";
 import { chooseOrganization } from "~/presenters/chosen-organization.server";
+import { listSourceFindings } from "~/services/list-source-findings.server";
 import { listDevices } from "~/services/read-devices.server";
 import { readSources } from "~/services/read-sources.server";
 
@@ -11,8 +12,12 @@ export async function loader({ request }: Route.LoaderArgs) {
   const caller = await requireUser(request);
   const { organizationId } = chooseOrganization(request, caller);
   assertMay(caller, "read", organizationId);
-  const [sources, devices] = await Promise.all([readSources(organizationId), listDevices(organizationId)]);
-  return { sources, devices, findings: [], mayEdit: mayDo(caller, "mapping.edit", organizationId) };
+  const [sources, devices, findings] = await Promise.all([
+    readSources(organizationId),
+    listDevices(organizationId),
+    listSourceFindings(organizationId),
+  ]);
+  return { sources, devices, findings, mayEdit: mayDo(caller, "mapping.edit", organizationId) };
 }
 
 export default function SourcesRoute({ loaderData }: Route.ComponentProps) {

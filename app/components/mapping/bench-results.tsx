@@ -68,7 +68,7 @@ export function BenchResults({ scene, readings }: { scene: MappingScene; reading
                 {isOpen && reading ? (
                   <tr>
                     <td colSpan={5} className="border-b border-hair bg-bench p-2">
-                      <StepPath steps={reading.steps} />
+                      <StepPath steps={reading.steps} unit={reading.unit} />
                     </td>
                   </tr>
                 ) : null}
@@ -91,7 +91,7 @@ const kindWords: Readonly<Record<TraceStep["kind"], string>> = {
   node: "Node",
 };
 
-function StepPath({ steps }: { steps: readonly TraceStep[] }) {
+function StepPath({ steps, unit }: { steps: readonly TraceStep[]; unit: string }) {
   return (
     <ol className="grid grid-cols-[80px_minmax(0,1fr)_auto_auto] gap-x-4 gap-y-0.5 pl-5 text-small">
       {steps.map((step, i) => (
@@ -101,7 +101,9 @@ function StepPath({ steps }: { steps: readonly TraceStep[] }) {
           </span>
           <span className="truncate font-mono">{step.transform ? describeTransform(step.transform) : step.text}</span>
           <span className="text-right font-mono font-semibold">
-            {step.kind === "bits" ? "" : `${formatSampleValue(step.value)} ${step.value === null ? "" : step.unit}`}
+            {step.kind === "bits"
+              ? ""
+              : `${formatSampleValue(step.value)} ${step.value === null ? "" : step.kind === "node" ? unit : step.unit}`}
           </span>
           <span>
             {step.kind === "bits" ? null : (

@@ -52,7 +52,7 @@ export function Bench({ bench, scene, sources, actions }: Props) {
           The same functions decode here, in the checker and in the test server. Nothing is written to a device.
         </p>
       </section>
-      <section aria-label="Result" className="grid content-start gap-5 overflow-y-auto px-5 py-3">
+      <section aria-label="Result" className="space-y-5 overflow-y-auto px-5 py-3">
         {bench.problems.map((problem, i) => (
           <p key={`${problem.code} ${i}`} className="flex items-start gap-1.5 text-small">
             <span className="pt-0.5">

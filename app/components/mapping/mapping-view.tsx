@@ -195,7 +195,9 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
         {view === "bench" ? (
           <Bench bench={bench} scene={scene} sources={sources} actions={actions} />
         ) : view === "deliver" ? (
-          <DeliverPanel typeKey={type} typeName={typeName} />
+          <div className="overflow-y-auto px-5 py-4">
+            <DeliverPanel type={{ key: type, name: typeName }} machines={[]} />
+          </div>
         ) : (
           <WireMap
             scene={scene}

@@ -1,5 +1,5 @@
 import type { QualityRules, RowContent } from "~/domain/mapping/mapping";
-import { Choice } from "./source-editor";
+import { Choice } from "./choice";
 import { FigureInput } from "./commit-input";
 
 type Props = { row: RowContent; onChange: (quality: QualityRules | undefined) => void };

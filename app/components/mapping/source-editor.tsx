@@ -1,6 +1,7 @@
 import { Select, Field, Checkbox } from "~/components/ui/field";
 import type { Target } from "~/domain/mapping/list-targets";
 import { octetOrders, registerTypes, type SourceReference } from "~/domain/mapping/mapping";
+import { Choice } from "./choice";
 import { CommitInput, FigureInput } from "./commit-input";
 import { sourceKinds, tableWords, viewRoleFrame, type Roles } from "./describe-source";
 import { FormulaFields } from "./formula-fields";
@@ -253,29 +254,6 @@ function TextOf({ label, value, onChange }: { label: string; value: string; onCh
         return undefined;
       }}
     />
-  );
-}
-
-type ChoiceProps<Value extends string> = {
-  label: string;
-  value: Value;
-  options: readonly (readonly [value: Value, label: string])[];
-  onChange: (value: Value) => void;
-};
-
-export function Choice<Value extends string>({ label, value, options, onChange }: ChoiceProps<Value>) {
-  return (
-    <Field label={label}>
-      {(tied) => (
-        <Select {...tied} size="small" value={value} onChange={(event) => onChange(event.currentTarget.value as Value)}>
-          {options.map(([option, word]) => (
-            <option key={option} value={option}>
-              {word}
-            </option>
-          ))}
-        </Select>
-      )}
-    </Field>
   );
 }
 

@@ -28,10 +28,15 @@ export function followFindings(modelId: string, editor: EditorStore, findings: F
     timer = undefined;
     if (isChecking) return;
     isChecking = true;
-    const { startChecksInSteps, updateChecks } = await import("~/domain/checks/run-checks");
+    const [{ startChecksInSteps, updateChecks }, { makeWiring }] = await Promise.all([
+      import("~/domain/checks/run-checks"),
+      import("~/domain/mapping/make-wiring"),
+    ]);
     const { space } = editor.getState();
     if (!isEnded && space !== checked) {
-      run = run ? updateChecks(run, space) : await finish(startChecksInSteps(space), () => isEnded);
+      // The plan of the sources is the organisation's and not here: the server's findings tell of it.
+      const wiring = makeWiring(space, []);
+      run = run ? updateChecks(run, space, wiring) : await finish(startChecksInSteps(space, { wiring }), () => isEnded);
       checked = space;
       if (run && !isEnded) findings.set(space, run.findings);
     }

@@ -3,7 +3,7 @@ import { DeviceSymbol } from "~/components/devices/device-symbol";
 import { cx } from "~/components/ui/cx";
 import type { PortView, SourceView } from "~/services/read-sources.server";
 import { PortSocket } from "./port-socket";
-import type { SourceFinding } from "./source-findings";
+import type { SourceFinding } from "~/services/list-source-findings.server";
 import { modeWords, shortKindWords } from "./source-words";
 
 const PORTS_A_ROW = 8;

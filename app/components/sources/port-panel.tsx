@@ -6,7 +6,7 @@ import { href } from "react-router";
 import { portModes, type PortPlan } from "~/domain/mapping/source-settings";
 import type { DeviceSummary } from "~/services/read-devices.server";
 import type { PortView, SourceView } from "~/services/read-sources.server";
-import type { SourceFinding } from "./source-findings";
+import type { SourceFinding } from "~/services/list-source-findings.server";
 import { LiveReading } from "./live-reading";
 import { modeWords } from "./source-words";
 import type { SourceActions } from "./use-source-actions";

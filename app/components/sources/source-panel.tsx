@@ -4,7 +4,7 @@ import { Button } from "~/components/ui/button";
 import { Dialog, DialogClose } from "~/components/ui/dialog";
 import type { SourceView } from "~/services/read-sources.server";
 import { SourceForm } from "./source-form";
-import type { SourceFinding } from "./source-findings";
+import type { SourceFinding } from "~/services/list-source-findings.server";
 import type { SourceActions } from "./use-source-actions";
 
 type Props = {

@@ -12,7 +12,7 @@ import type { Sources } from "~/services/read-sources.server";
 import { GatewayTable } from "./gateway-table";
 import { MasterPicture } from "./master-picture";
 import { PortPanel } from "./port-panel";
-import type { SourceFinding } from "./source-findings";
+import type { SourceFinding } from "~/services/list-source-findings.server";
 import { SourcePanel } from "./source-panel";
 import { UnitTable } from "./unit-table";
 import { useSourceActions } from "./use-source-actions";

@@ -2,7 +2,7 @@ import { RowHead, Table, TableScroll, Td, Th } from "~/components/ui/table";
 import { FindingBadge } from "~/components/notation/finding-badge";
 import { cx } from "~/components/ui/cx";
 import type { SourceView } from "~/services/read-sources.server";
-import type { SourceFinding } from "./source-findings";
+import type { SourceFinding } from "~/services/list-source-findings.server";
 import { formatAddress, kindWords } from "./source-words";
 
 type Props = {
