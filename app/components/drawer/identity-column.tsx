@@ -14,6 +14,7 @@ import { useOpenModel } from "../model/use-model";
 import { Checkbox, Select } from "../ui/field";
 import { Icon } from "../ui/icon";
 import { Segments } from "../ui/segments";
+import { OverrideRow } from "./inherited-members";
 import { LocalisedTexts } from "./localised-texts";
 import { CommitField, Fact, Particular } from "./particular";
 
@@ -68,7 +69,7 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
       </Fact>
       {isTypeNode(node) || readOnly ? null : <OwnerRow space={space} node={node} />}
       <TypeRow space={space} node={node} readOnly={readOnly} />
-      {isTypeNode(node) ? (
+      {node.nodeClass === "DataType" ? null : isTypeNode(node) ? (
         <Fact label="">
           <Checkbox
             label="Abstract"
@@ -82,6 +83,7 @@ export function IdentityColumn({ space, node, readOnly }: { space: AddressSpace;
       ) : (
         <RuleRow rule={findRuleName(space, node.key)} node={node} readOnly={readOnly} />
       )}
+      <OverrideRow space={space} node={node} />
     </section>
   );
 }

@@ -1,12 +1,14 @@
-import { Plus } from "lucide-react";
+import { Check, Plus } from "lucide-react";
 import { useMemo, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { findTypeDefinition, listMembers } from "~/domain/address-space/browse";
 import { isTypeNode, type Node } from "~/domain/address-space/node";
 import { listMissingMembers, listOfferedMembers, type OpenMember } from "~/domain/instantiation/missing-members";
-import { findRuleName, getClassName, isProperty, listInheritedMembers } from "../model/member-facts";
+import { findRuleName, getClassName, isProperty } from "../model/member-facts";
 import { useOpenModel } from "../model/use-model";
 import { Button } from "../ui/button";
+import { Icon } from "../ui/icon";
+import { InheritedMembers } from "./inherited-members";
 
 const MOST = 120;
 
@@ -15,6 +17,7 @@ export function MembersColumn({ space, node, readOnly }: { space: AddressSpace; 
   return (
     <section aria-label="Members">
       <Summary space={space} node={node} />
+      {isTypeNode(node) ? <InheritedMembers space={space} type={node.key} readOnly={readOnly} /> : null}
       {!isTypeNode(node) && findTypeDefinition(space, node.key) !== undefined && space.isOwn(node.key) ? (
         <OpenMembers space={space} node={node} readOnly={readOnly} />
       ) : null}
@@ -24,7 +27,6 @@ export function MembersColumn({ space, node, readOnly }: { space: AddressSpace; 
 
 function Summary({ space, node }: { space: AddressSpace; node: Node }) {
   const members = listMembers(space, node.key);
-  const inherited = isTypeNode(node) ? listInheritedMembers(space, node.key).length : 0;
   const rows = new Map<string, { all: number; mandatory: number; optional: number }>();
   for (const member of members) {
     const name = getClassName(member.nodeClass, isProperty(space, member));
@@ -63,11 +65,6 @@ function Summary({ space, node }: { space: AddressSpace; node: Node }) {
           </tbody>
         </table>
       ) : null}
-      {inherited > 0 ? (
-        <p className="mt-1.5 text-note text-ink-3">
-          and <span className="font-mono">{inherited}</span> inherited
-        </p>
-      ) : null}
     </>
   );
 }
@@ -88,22 +85,7 @@ function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Nod
   const offered = [...groups.members, ...(showsDetails ? groups.details : [])].slice(0, MOST);
   return (
     <>
-      {missing.length > 0 ? (
-        <div className="mt-3">
-          <h3>
-            Missing of its type <span className="font-mono font-normal">{missing.length}</span>
-          </h3>
-          <p className="text-small text-ink-2">
-            {missing.slice(0, 6).map(formatPath).join(", ")}
-            {missing.length > 6 ? " …" : ""}
-          </p>
-          {readOnly ? null : (
-            <Button size="small" className="mt-1.5" onClick={() => actions.addMissingMembers(node.key)}>
-              Add what is missing
-            </Button>
-          )}
-        </div>
-      ) : null}
+      <Completeness missing={missing} node={node} readOnly={readOnly} />
       {groups.members.length + groups.details.length > 0 ? (
         <div className="mt-3">
           <h3>
@@ -136,6 +118,44 @@ function OpenMembers({ space, node, readOnly }: { space: AddressSpace; node: Nod
         </div>
       ) : null}
     </>
+  );
+}
+
+const MOST_MISSING = 40;
+
+/** Whether the instance has every mandatory member of its type, at any depth, and one press that adds what it lacks. */
+function Completeness({ missing, node, readOnly }: { missing: readonly OpenMember[]; node: Node; readOnly: boolean }) {
+  const { actions } = useOpenModel();
+  if (missing.length === 0) {
+    return (
+      <p className="mt-2 flex items-center gap-1.5 text-small text-good" role="status">
+        <Icon of={Check} size={13} /> Complete: it has every mandatory member of its type.
+      </p>
+    );
+  }
+  const addable = missing.filter((member) => !member.isPlaceholder);
+  return (
+    <div className="mt-3" role="group" aria-label="What is missing">
+      <h3>
+        Missing of its type <span className="font-mono font-normal">{missing.length}</span>
+      </h3>
+      <ul className="max-h-40 overflow-y-auto text-small text-ink-2">
+        {missing.slice(0, MOST_MISSING).map((member) => (
+          <li key={member.pathKey}>
+            {formatPath(member)}
+            {member.isPlaceholder ? <span className="text-ink-3"> stands for one or more, which you name</span> : null}
+          </li>
+        ))}
+        {missing.length > MOST_MISSING ? (
+          <li className="text-ink-3">and {missing.length - MOST_MISSING} more</li>
+        ) : null}
+      </ul>
+      {readOnly || addable.length === 0 ? null : (
+        <Button size="small" className="mt-1.5" onClick={() => actions.addMissingMembers(node.key)}>
+          Add what is missing
+        </Button>
+      )}
+    </div>
   );
 }
 

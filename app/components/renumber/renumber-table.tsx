@@ -2,6 +2,7 @@ import { useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { Node } from "~/domain/address-space/node";
 import type { NodeId, NodeKey } from "~/domain/address-space/node-id";
+import { StandardReferenceType } from "~/domain/address-space/standard-ids";
 import { formatPath, getNodeName, isProperty } from "../model/member-facts";
 import { formatLocalNodeId } from "../model/namespace-label";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
@@ -82,7 +83,7 @@ function Row({
   readOnly,
 }: Props & { node: Node }) {
   const [isOpen, setOpen] = useState(false);
-  const path = formatPath(space, node.key);
+  const path = formatPlace(space, node);
   const reason = reasonOf(node.key);
   const values = uses.get(node.key) ?? [];
   const references = space.edgesFrom(node.key).length + space.edgesTo(node.key).length;
@@ -147,6 +148,12 @@ function Row({
       ) : null}
     </>
   );
+}
+
+/** Encodings all have the same few names; the DataType says whose they are. */
+function formatPlace(space: AddressSpace, node: Node): string {
+  const owner = space.findEdgeTo(node.key, StandardReferenceType.HasEncoding)?.source;
+  return owner === undefined ? formatPath(space, node.key) : `${getNodeName(space, owner)} / ${node.browseName.name}`;
 }
 
 const MOST = 40;
