@@ -27,7 +27,7 @@ export function AsBuiltView({ modelId, targets, revisions, pointChecks, reports,
         {answer?.runId ? <RunProgress key={answer.runId} runId={answer.runId} /> : null}
         <Block title="A new report">
           {targets.length === 0 ? (
-            <Notice tone="hint" title="No server can be read: start a test server, or name the gateway as an endpoint." action={<LinkButton to="/live/endpoints">Endpoints</LinkButton>} />
+            <Notice tone="hint" title="No server can be read: start a test server, or name the gateway as an endpoint." action={<span className="flex gap-2"><LinkButton to={`/models/${modelId}/test-server`}>Test server</LinkButton><LinkButton to="/live/endpoints">Endpoints</LinkButton></span>} />
           ) : (
             <ReportForm targets={targets} revisions={revisions} blockedBy={blockedBy} />
           )}

@@ -20,7 +20,7 @@ export function BoardTileView({ tile, nodeId, isWall }: Props) {
   const hasValue = live !== undefined && value !== null && value !== undefined;
   const status = live ? toStatus(live.sample, stream) : "stale";
   return (
-    <article aria-label={tile.title} className={cx("h-full border-t border-rule pt-1.5", isStale && "text-stale")}>
+    <article aria-label={tile.title} className={cx("flex-1 border-t border-rule pt-1.5", isStale && "text-stale")}>
       <header className="flex items-baseline gap-2">
         <h3 className={cx("truncate text-ink-2", isWall ? "text-body" : "text-small")} title={tile.title}>
           {tile.title}
@@ -33,7 +33,7 @@ export function BoardTileView({ tile, nodeId, isWall }: Props) {
       <p className={cx("flex items-center gap-2 truncate font-mono", isWall ? "text-[34px] leading-11" : "text-[22px] leading-8", isStale ? "font-normal" : "font-medium", nodeId === null && "text-small text-ink-3")}>
         {tile.kind === "state" && hasValue ? <Lamp colour={tile.states.find((state) => state.value === Number(value))?.lamp ?? "white"} isStale={isStale} size={isWall ? 26 : 18} /> : null}
         <span className="truncate">{text}</span>
-        {tile.unit && hasValue ? <small className="text-note font-normal text-ink-3">{tile.unit}</small> : null}
+        {tile.unit && tile.unit !== "1" && hasValue ? <small className="text-note font-normal text-ink-3">{tile.unit}</small> : null}
       </p>
       {tile.kind === "bar" && tile.range ? <Bar range={tile.range} value={typeof value === "number" ? value : null} isStale={isStale} title={tile.title} unit={tile.unit} /> : null}
       {tile.hasTrend && nodeId !== null && !tile.isHidden ? <Trend nodeId={nodeId} name={tile.title} range={tile.range} span={TREND_SPAN} /> : null}

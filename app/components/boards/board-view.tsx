@@ -1,7 +1,7 @@
-import { Expand, Pencil, Save, Shrink } from "lucide-react";
+import { Expand, Link2, Pencil, Save, Shrink } from "lucide-react";
 import { useEffect, useState } from "react";
 import { useFetcher, useSearchParams } from "react-router";
-import { changeTile, moveTile, type BoardContent, type BoardTile } from "~/domain/live/watch-board";
+import { changeTile, lampColours, moveTile, type BoardContent, type BoardTile, type LampColour } from "~/domain/live/watch-board";
 import type { BoardPage } from "~/services/watch-boards.server";
 import { LiveContext, useStream } from "../live/live-context";
 import { LiveValues } from "../live/live-values";
@@ -29,7 +29,7 @@ export function BoardView({ board, isWall, mayArrange }: Props) {
     <main id="main" tabIndex={-1} className={cx("min-h-0 flex-1 overflow-y-auto outline-none", isWall ? "fixed inset-0 z-40 bg-paper px-6 py-4" : "px-5 pb-8 max-sm:px-4")}>
       <header className="flex min-h-14 flex-wrap items-center gap-x-3 gap-y-2 py-2">
         {isArranging ? (
-          <Field label="Name of the board" inline>
+          <Field label="Name of the board" inline className="grid-cols-[auto_1fr]!">
             {(tied) => <Input {...tied} value={name} onChange={(event) => setName(event.target.value)} maxLength={100} />}
           </Field>
         ) : (
@@ -46,6 +46,7 @@ export function BoardView({ board, isWall, mayArrange }: Props) {
               Arrange
             </Button>
           )}
+          {isWall ? null : <CopyLink />}
           <WallSwitch isWall={isWall} />
         </span>
       </header>
@@ -116,6 +117,19 @@ function Switches({ board }: { board: BoardPage }) {
   );
 }
 
+/** Everybody of the organisation may open the link; what they may change there is a matter of their roles. */
+function CopyLink() {
+  const [isCopied, setCopied] = useState(false);
+  const copy = (): void => {
+    void navigator.clipboard.writeText(location.href).then(() => setCopied(true));
+  };
+  return (
+    <Button icon={Link2} onClick={copy}>
+      {isCopied ? "Link copied" : "Copy the link"}
+    </Button>
+  );
+}
+
 function WallSwitch({ isWall }: { isWall: boolean }) {
   const [, setSearch] = useSearchParams();
   const toggle = (): void =>
@@ -177,7 +191,7 @@ function Sections({ content, nodeIds, isArranging, isWall, onChange }: SectionsP
             {shown
               .filter((tile) => tile.section === section)
               .map((tile) => (
-                <li key={tile.path} className={cx("min-w-0", tile.isWide && "col-span-2 max-sm:col-span-1", tile.isHidden && "opacity-50")}>
+                <li key={tile.path} className={cx("flex min-w-0 flex-col", tile.isWide && "col-span-2 max-sm:col-span-1", tile.isHidden && "opacity-50")}>
                   <BoardTileView tile={tile} nodeId={nodeIds[tile.path] ?? null} isWall={isWall} />
                   {isArranging ? <ArrangeTile tile={tile} onMove={(by) => onChange(moveTile(content, tile.path, by))} onChange={(change) => onChange(changeTile(content, tile.path, change))} /> : null}
                 </li>
@@ -188,6 +202,8 @@ function Sections({ content, nodeIds, isArranging, isWall, onChange }: SectionsP
     </div>
   );
 }
+
+const LAMP_MEANINGS: Readonly<Record<LampColour, string>> = { red: "red, danger", yellow: "yellow, abnormal", green: "green, normal", blue: "blue, act", white: "white, neutral" };
 
 function ArrangeTile({ tile, onMove, onChange }: { tile: BoardTile; onMove: (by: -1 | 1) => void; onChange: (change: Partial<BoardTile>) => void }) {
   return (
@@ -209,6 +225,23 @@ function ArrangeTile({ tile, onMove, onChange }: { tile: BoardTile; onMove: (by:
       <Button size="small" onClick={() => onChange({ isHidden: !tile.isHidden })} aria-pressed={tile.isHidden}>
         {tile.isHidden ? "Show" : "Hide"}
       </Button>
+      {tile.states.map((state) => (
+        <label key={state.value} className="flex w-full items-center gap-2 text-note text-ink-2">
+          <span className="min-w-0 flex-1 truncate">{state.text}</span>
+          <select
+            value={state.lamp}
+            aria-label={`Lamp of ${state.text}`}
+            onChange={(event) => onChange({ states: tile.states.map((other) => (other === state ? { ...other, lamp: event.target.value as LampColour } : other)) })}
+            className="h-6 rounded-edge border border-edge bg-leaf px-1 text-note"
+          >
+            {lampColours.map((colour) => (
+              <option key={colour} value={colour}>
+                {LAMP_MEANINGS[colour]}
+              </option>
+            ))}
+          </select>
+        </label>
+      ))}
     </div>
   );
 }

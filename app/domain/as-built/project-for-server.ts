@@ -27,13 +27,20 @@ const UNTOLD: ReadonlySet<string> = new Set([
   "extensions",
   "translations",
   "argumentDescriptions",
+  "methodDeclaration",
   "otherAttributes",
   "otherElements",
   "leftovers",
 ]);
 
 /** What a server may choose where the model leaves it open. */
-const LEFT_TO_SERVER = ["minimumSamplingInterval", "historizing", "value"] as const;
+const LEFT_TO_SERVER = ["minimumSamplingInterval", "historizing", "executable", "value"] as const;
+
+/**
+ * Properties that tell the process and not the model: the text of a present value (OPC 10000-8 §5.3.3.4) and what states and
+ * transitions say of now (OPC 10000-16 §4.4.2, §4.4.4).
+ */
+const MOVING_PROPERTIES: ReadonlySet<string> = new Set(["ValueAsText", "Id", "Name", "Number", "EffectiveDisplayName", "TransitionTime", "EffectiveTransitionTime"]);
 
 /** A released node; `served` is the same node as the server has it, when it has it: it decides the language. */
 export function projectForServer(space: AddressSpace, types: DataTypeLookup, node: Node, served: Node | undefined): Node {
@@ -49,7 +56,9 @@ export function projectForServer(space: AddressSpace, types: DataTypeLookup, nod
 export function projectServed(space: AddressSpace, types: DataTypeLookup, node: Node, released: Node | undefined): Node {
   const open = new Set<string>(LEFT_TO_SERVER.filter((name) => released && !(name in released)));
   const told = open.size > 0 ? (without(node, (name) => open.has(name)) as Node) : node;
-  return withBareFields(withComparableValue(space, types, told));
+  // No service tells ParentNodeId; where the release names one of several owners, the same one is meant.
+  const parent = released && "parent" in released ? { parent: released.parent } : {};
+  return withBareFields(withComparableValue(space, types, { ...told, ...parent } as Node));
 }
 
 /** Fields of a DataType by name and type; their texts come in one language and are no part of the contract. */
@@ -66,7 +75,8 @@ function without(object: object, isDropped: (name: string) => boolean): object {
 /** The value of a Property in one spelling; that of another Variable is the process's, not the model's. */
 function withComparableValue(space: AddressSpace, types: DataTypeLookup, node: Node): Node {
   if (!hasValueAttributes(node) || node.value === undefined) return node;
-  return isProperty(space, node.key) ? { ...node, value: normaliseValue(node.value, types) } : (without(node, (name) => name === "value") as Node);
+  const isTold = isProperty(space, node.key) && !MOVING_PROPERTIES.has(node.browseName.name);
+  return isTold ? { ...node, value: normaliseValue(node.value, types) } : (without(node, (name) => name === "value") as Node);
 }
 
 function isProperty(space: AddressSpace, key: NodeKey): boolean {

@@ -112,7 +112,7 @@ function listStateTexts(space: AddressSpace, types: SpaceDataTypes, node: Variab
 /** A first guess by the word of the state (common practice, no source); people choose otherwise on the board. */
 export function proposeLamp(state: string): LampColour {
   if (/emergency|fault|fail|alarm|error|broken|trip/i.test(state)) return "red";
-  if (/warn|maintenance|out.?of.?spec|limit|abnormal|check.?function/i.test(state)) return "yellow";
+  if (/warn|maintenance|(?:out.?of|off).?spec|limit|abnormal|check.?function/i.test(state)) return "yellow";
   if (/wait|reset|acknowledge|manual|set.?up|hold/i.test(state)) return "blue";
   if (/run|produc|execut|operat|normal|good|ok\b|ready|automatic/i.test(state)) return "green";
   return "white";

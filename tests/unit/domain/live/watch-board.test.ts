@@ -61,6 +61,7 @@ describe("proposeLamp", () => {
     ["Fault", "red"],
     ["EmergencyStop", "red"],
     ["MaintenanceRequired", "yellow"],
+    ["OFF_SPEC", "yellow"],
     ["Running", "green"],
     ["SetUp", "blue"],
     ["Stopped", "white"],
