@@ -34,7 +34,7 @@ import type { OutgoingTransaction, PostOutcome } from "./sync-transport";
 const MOST_SENT = 100;
 const RETRY_DELAYS = [500, 1000, 2000, 4000, 8000];
 /** Fewer ids than these in stock, and the next block is leased. */
-const LEASE_BELOW = { all: 400, each: 100 };
+const LEASE_BELOW = 400;
 
 export class EditorStore {
   readonly clientId: string;

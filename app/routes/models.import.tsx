@@ -3,6 +3,7 @@ import { data, Form, redirect, useNavigate, useNavigation, useSearchParams } fro
 import type { Route } from "./+types/models.import";
 import { assertMay, requireUser } from "~/auth/caller.server";
 import { FileDrop } from "~/components/models/file-drop";
+import { useImportProgress } from "~/components/models/use-import-progress";
 import { ImportPreviewView, type ImportTarget } from "~/components/models/import-preview";
 import { ProblemList } from "~/components/models/problem-list";
 import { Button } from "~/components/ui/button";
@@ -30,13 +31,16 @@ export async function action({ request }: Route.ActionArgs) {
   assertMay(caller, "model.edit", organizationId);
   if (request.headers.get("content-type")?.startsWith("multipart/form-data")) {
     const file = await readUploadedFile(request, "file");
-    const result = file.ok ? await previewImport(caller, organizationId, file.value.bytes, file.value.name) : file;
+    if (!file.ok) return refuse(file.problems, 422);
+    const { bytes, name, progress } = file.value;
+    const options = { signal: request.signal, ...(progress === undefined ? {} : { progress }) };
+    const result = await previewImport(caller, organizationId, bytes, name, options);
     return result.ok ? { preview: result.value, problems: [] } : refuse(result.problems, 422);
   }
   const form = importSchema.safeParse(Object.fromEntries(await request.formData()));
   if (!form.success) return data({ preview: null, problems: [] }, { status: 400 });
   const { upload: uploadId, into, ...intent } = form.data;
-  const upload = await takePendingUpload(caller, organizationId, uploadId);
+  const upload = await takePendingUpload(caller, organizationId, uploadId, { signal: request.signal });
   if (!upload.ok) return refuse(upload.problems, 422);
   if (into === "library") {
     const added = await addToLibrary(caller, organizationId, upload.value);
@@ -93,9 +97,16 @@ export default function Import({ actionData }: Route.ComponentProps) {
 
 function Upload() {
   const form = useRef<HTMLFormElement>(null);
+  const name = useRef<HTMLInputElement>(null);
+  const [done, follow] = useImportProgress();
   const navigation = useNavigation();
   const navigate = useNavigate();
   const busy = navigation.state !== "idle" && navigation.formMethod === "POST";
+  async function send() {
+    const progress = await follow();
+    if (name.current) name.current.value = progress;
+    form.current?.requestSubmit();
+  }
   return (
     <Form ref={form} method="post" encType="multipart/form-data" className="grid max-w-200 gap-3">
       <FileDrop
@@ -103,10 +114,15 @@ function Upload() {
         accept=".xml,application/xml,text/xml"
         label="Drop a NodeSet2 file here, or press to choose one"
         hint="XML, up to 50 MB. A preview comes first."
-        onChosen={() => form.current?.requestSubmit()}
+        onChosen={() => void send()}
       />
+      <input ref={name} type="hidden" name="progress" />
       {busy ? (
-        <Progress stage="Sending and reading the file" onCancel={() => void navigate(".", { replace: true })} />
+        <Progress
+          stage={done === undefined ? "Sending the file" : "Reading the file"}
+          done={done}
+          onCancel={() => void navigate(".", { replace: true })}
+        />
       ) : (
         <noscript>
           <Button type="submit">Show the preview</Button>

@@ -12,7 +12,7 @@ import {
   raiseLedgerStatement,
 } from "../db/repositories/node-ids.server";
 import type { AddressSpace } from "../domain/address-space/address-space";
-import { NUMBERS, type IdRange } from "../domain/address-space/id-policy";
+import { getStockSize, NUMBERS, type IdRange } from "../domain/address-space/id-policy";
 import type { NodeClass } from "../domain/address-space/node";
 import { formatNodeId } from "../domain/address-space/node-id";
 import { fail, ok, problem, type Result } from "../domain/core/result";
@@ -39,8 +39,8 @@ export function leaseNodeIds(
   intent: LeaseIntent,
 ): Promise<Result<IdBlock>> {
   const { organizationId, namespaceUri } = model;
-  const { count = LEASE_SIZE, ...holder } = intent;
   const range = nodeClass && findRange(space.own.header.idPolicy ?? NUMBERS, nodeClass);
+  const { count = range ? getStockSize(range) : LEASE_SIZE, ...holder } = intent;
   return writeInTurn(async (db) => {
     const free = range ? await findInRange(model, space, range, count) : await findNext(model, count);
     if (!free) return fail(problem("model.identifiers-used-up"));
@@ -60,7 +60,12 @@ async function findNext({ organizationId, namespaceUri }: ModelRow, count: numbe
 }
 
 /** The first run of the range that nobody has, had or may take. */
-async function findInRange(model: ModelRow, space: AddressSpace, range: IdRange, count: number): Promise<IdRange | undefined> {
+async function findInRange(
+  model: ModelRow,
+  space: AddressSpace,
+  range: IdRange,
+  count: number,
+): Promise<IdRange | undefined> {
   const { organizationId, namespaceUri } = model;
   const leased = await listLeases(organizationId, namespaceUri, range);
   const numbers = await listRetiredIdentifiers(organizationId, namespaceUri, range);
@@ -99,7 +104,7 @@ export async function makeWithIds(
   const { idPolicy = NUMBERS } = space.own.header;
   for (const [nodeClass, count] of counter.counts) {
     const from = findRange(idPolicy, nodeClass) ? nodeClass : undefined;
-    for (let missing = count; missing > 0; ) {
+    for (let missing = count; missing > 0;) {
       const lease = await leaseNodeIds(model, space, from, { clientId, userId: author.userId, count: missing });
       if (!lease.ok) return lease;
       stock.addBlock({ ...lease.value, ...(from ? { nodeClass: from } : {}) });

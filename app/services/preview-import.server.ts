@@ -9,7 +9,7 @@ import { isTypeNode } from "../domain/address-space/node";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import { toProblemJson, type ProblemJson } from "../utils/problem-response.server";
 import { keepPendingUpload, findPendingUpload, removePendingUpload } from "./pending-uploads.server";
-import { listRefusals, readUpload, type Upload } from "./read-upload.server";
+import { listRefusals, readUpload, type Upload, type UploadOptions } from "./read-upload.server";
 import { resolveRequiredModels } from "./required-models.server";
 import type { ModelKind } from "../db/schema/models";
 
@@ -44,8 +44,9 @@ export async function previewImport(
   organizationId: string,
   bytes: Uint8Array,
   fileName: string,
+  options: UploadOptions = {},
 ): Promise<Result<ImportPreview>> {
-  const read = await readUpload(bytes, fileName);
+  const read = await readUpload(bytes, fileName, options);
   if (!read.ok) return read;
   const upload = read.value;
   const required = await resolveRequiredModels(organizationId, upload.content.header);
@@ -69,10 +70,15 @@ export async function previewImport(
 }
 
 /** The kept file, read again. Problem: `import.gone`. */
-export async function takePendingUpload(caller: Caller, organizationId: string, uploadId: string): Promise<Result<Upload>> {
+export async function takePendingUpload(
+  caller: Caller,
+  organizationId: string,
+  uploadId: string,
+  options: UploadOptions = {},
+): Promise<Result<Upload>> {
   const pending = await findPendingUpload(uploadId, organizationId, caller.userId);
   if (!pending) return fail(problem("import.gone"));
-  return readUpload(pending.bytes, pending.fileName);
+  return readUpload(pending.bytes, pending.fileName, options);
 }
 
 export function dropPendingUpload(uploadId: string): void {

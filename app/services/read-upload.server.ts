@@ -5,6 +5,7 @@ import { READ_LIMITS } from "../domain/nodeset/limits";
 import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { listRequired } from "../library/describe-nodeset.server";
 import { getLibrary } from "../library/library.server";
+import { publish } from "./event-hub.server";
 
 export const MAX_UPLOAD_BYTES = READ_LIMITS.maxBytes;
 
@@ -19,9 +20,25 @@ export type Upload = {
   readonly problems: readonly Problem[];
 };
 
+export type UploadOptions = {
+  /** The sender has left: the reading ends with `read.cancelled`. */
+  readonly signal?: AbortSignal;
+  /** Who listens to the topic `import:<progress>` is told how far the reading is, 0 … 1. */
+  readonly progress?: string;
+};
+
 /** Fails only when nothing can be shown of the file; whether it may be imported is asked with `listRefusals`. */
-export async function readUpload(bytes: Uint8Array, fileName: string, signal?: AbortSignal): Promise<Result<Upload>> {
-  const read = await getLibrary().read(bytes, { fileName, ...(signal ? { signal } : {}) });
+export async function readUpload(
+  bytes: Uint8Array,
+  fileName: string,
+  { signal, progress }: UploadOptions = {},
+): Promise<Result<Upload>> {
+  const tell = (done: number, total: number): void => publish(`import:${progress ?? ""}`, { done: done / total });
+  const read = await getLibrary().read(bytes, {
+    fileName,
+    ...(signal ? { signal } : {}),
+    ...(progress === undefined ? {} : { onProgress: tell }),
+  });
   if (!read.ok) return read;
   const { header } = read.value;
   const namespaceUri = getOwnNamespace(header);

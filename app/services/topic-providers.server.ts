@@ -29,6 +29,8 @@ export function registerModelTopics(): void {
   registerTopicProvider("sheet", { authorise: mayReadModel });
   registerTopicProvider("waivers", { authorise: mayReadModel });
   registerTopicProvider("models", { authorise: (caller, topic) => isMember(caller, restOf(topic)) });
+  // The name of the topic is a secret that the page made for itself.
+  registerTopicProvider("import", { authorise: () => true, keepsNewestOnly: true });
   registerTopicProvider("presence", {
     authorise: mayReadModel,
     keepsNewestOnly: true,

@@ -19,6 +19,18 @@ import { makeRandom, type Random } from "../support/random";
 const bytes = readFileSync(join(getPackageFolder(), "Opc.Ua.IOLink.NodeSet2.xml"));
 const text = bytes.toString("utf8");
 
+/** Heap in MB, garbage included: what a read asked of the process at most. */
+const heapMb = (): number => process.memoryUsage().heapUsed / 1024 / 1024;
+
+type Measured = { readonly result: Result<NodeSetContent>; readonly time: number; readonly memory: number };
+
+function measure(input: Uint8Array): Measured {
+  const before = heapMb();
+  const start = performance.now();
+  const result = read(input);
+  return { result, time: performance.now() - start, memory: Math.max(0, heapMb() - before) };
+}
+
 /** Without a clock: how long each took is printed, and only the suite's own time-out ends a read that hangs. */
 function read(input: Uint8Array): Result<NodeSetContent> {
   const decoded = decodeXmlBytes(input);
@@ -118,13 +130,14 @@ describe.each(Object.entries(damages))("%s", (name, damage) => {
   it(`is met decently ${TRIES} times`, () => {
     const random = makeRandom(name);
     let slowest = 0;
+    let largest = 0;
     let refused = 0;
     const disagreements: string[] = [];
     for (let i = 0; i < TRIES; i++) {
       const input = damage(random);
-      const start = performance.now();
-      const result = read(input);
-      slowest = Math.max(slowest, performance.now() - start);
+      const { result, time, memory } = measure(input);
+      slowest = Math.max(slowest, time);
+      largest = Math.max(largest, memory);
       if (!result.ok) refused++;
       expectDecent(result);
       const isDecoded = !result.problems.some(({ code }) => code.startsWith("encoding.") || code.startsWith("file."));
@@ -137,7 +150,9 @@ describe.each(Object.entries(damages))("%s", (name, damage) => {
         );
       }
     }
-    console.log(`${name}: ${TRIES} files, ${refused} refused, slowest ${slowest.toFixed(0)} ms`);
+    console.log(
+      `${name}: ${TRIES} files, ${refused} refused, slowest ${slowest.toFixed(0)} ms, at most ${largest.toFixed(0)} MB`,
+    );
     expect(disagreements).toEqual([]);
   });
 });
@@ -145,16 +160,19 @@ describe.each(Object.entries(damages))("%s", (name, damage) => {
 describe("hostile files", () => {
   const root = text.slice(0, text.indexOf(">", text.indexOf("<UANodeSet")) + 1);
 
+  /** The first have names of their own; more than so many of these do not fit into a file that is not refused by its size. */
+  const makeAttributes = (count: number): Buffer => {
+    const different = Array.from({ length: 1_000 }, (_, i) => ` a${i}=""`).join("");
+    return Buffer.concat([Buffer.from(`${root}<a${different}`), Buffer.alloc(count * 5, ' a=""')]);
+  };
+
   it.each([
     ["depth 100 000", () => Buffer.from(root + "<a>".repeat(100_000)), "limit.depth"],
+    ["ten million attributes", () => makeAttributes(10_000_000), "limit.file-size"],
+    ["nine million attributes", () => makeAttributes(9_000_000), "limit.attributes"],
     [
-      "three million attributes",
-      () => Buffer.from(`${root}<a${Array.from({ length: 3_000_000 }, (_, i) => ` a${i}=""`).join("")}`),
-      "limit.attributes",
-    ],
-    [
-      "ten million attributes of one name",
-      () => Buffer.concat([Buffer.from(`${root}<a`), Buffer.alloc(40_000_000, ' a=""')]),
+      "nine million attributes of one name",
+      () => Buffer.concat([Buffer.from(`${root}<a`), Buffer.alloc(45_000_000, ' a=""')]),
       "xml.not-well-formed",
     ],
     ["one attribute of 40 MB", () => Buffer.from(`${root}<a b="${"x".repeat(40_000_000)}`), "xml.truncated"],
@@ -192,20 +210,114 @@ describe("hostile files", () => {
         ),
       "nodeset.alias-unknown",
     ],
+    [
+      "a million comments in one table",
+      () => Buffer.from(`${root}<Aliases>${"<!--x-->".repeat(1_000_000)}</Aliases>`),
+      "xml.truncated",
+    ],
+    [
+      "300 000 references with a comment each",
+      () => {
+        const row = '<!--x--><Reference ReferenceType="i=47" x="1">ns=1;i=2</Reference>';
+        const node = `<UAObject NodeId="ns=1;i=1" BrowseName="1:A"><References>${row.repeat(300_000)}`;
+        return Buffer.from(root + node);
+      },
+      "xml.truncated",
+    ],
+    [
+      "300 000 fields of one name with unknown elements",
+      () => {
+        const field = '<Field Name="A"><!--x--><DisplayName x="1">a<b/></DisplayName></Field>';
+        const node = '<UADataType NodeId="ns=1;i=1" BrowseName="1:A"><Definition Name="1:A">';
+        return Buffer.from(root + node + field.repeat(300_000));
+      },
+      "xml.truncated",
+    ],
+    [
+      "100 000 required models within each other",
+      () => Buffer.from(`${root}<Models>${'<Model ModelUri="a">'}${'<RequiredModel ModelUri="a">'.repeat(100_000)}`),
+      "limit.depth",
+    ],
+    [
+      "an entity of a file",
+      () => Buffer.from('<!DOCTYPE a [<!ENTITY a SYSTEM "file:///etc/hostname">]><a>&a;</a>'),
+      "xml.doctype",
+    ],
+    [
+      "an entity of the network",
+      () => Buffer.from('<!DOCTYPE a SYSTEM "http://127.0.0.1:9/a.dtd"><a/>'),
+      "xml.doctype",
+    ],
+    [
+      "an entity that nobody declared",
+      () => Buffer.from(text.replace("<DisplayName>", "<DisplayName>&nbsp;")),
+      "xml.not-well-formed",
+    ],
+    [
+      "UTF-16 cut in half a character",
+      () => Buffer.from(`\uFEFF${text}`, "utf16le").subarray(0, 100_001),
+      "encoding.invalid",
+    ],
+    [
+      "Latin 1 that calls itself UTF-8",
+      () => Buffer.from(text.replace("<DisplayName>", "<DisplayName>ä"), "latin1"),
+      "encoding.invalid",
+    ],
+    [
+      "an encoding that nobody knows",
+      () => Buffer.from(text.replace('encoding="utf-8"', 'encoding="x-none"')),
+      "encoding.unknown",
+    ],
+    ["a mark in the middle", () => Buffer.from(text.replace("<UANodeSet", "\uFEFF<UANodeSet")), "xml.not-xml"],
     ["NUL bytes", () => Buffer.concat([Buffer.from(root), Buffer.alloc(1_000)]), "xml.not-well-formed"],
     ["nothing but NUL", () => Buffer.alloc(1_000), "file.other-kind"],
   ])("%s is refused within bounds", (name, make, code) => {
     const input = make();
-    const start = performance.now();
-    const result = read(input);
-    const time = performance.now() - start;
+    const { result, time, memory } = measure(input);
     console.log(
-      `${name}: ${time.toFixed(0)} ms, ${result.problems
+      `${name} (${(input.length / 1e6).toFixed(1)} MB): ${time.toFixed(0)} ms, ${memory.toFixed(0)} MB, ${result.problems
         .map((found) => found.code)
         .slice(0, 3)
         .join(", ")}`,
     );
     expect(result.problems.map((found) => found.code)).toContain(code);
     expectDecent(result);
+  });
+
+  it.each([
+    ["UTF-8 with its mark", () => Buffer.from(`\uFEFF${text}`)],
+    [
+      "UTF-16, little end first",
+      () => Buffer.from(`\uFEFF${text.replace('encoding="utf-8"', 'encoding="utf-16"')}`, "utf16le"),
+    ],
+    [
+      "UTF-16, big end first",
+      () => Buffer.from(`\uFEFF${text.replace('encoding="utf-8"', 'encoding="utf-16"')}`, "utf16le").swap16(),
+    ],
+    ["UTF-16 without its mark", () => Buffer.from(text, "utf16le")],
+    ["UTF-8 that calls itself UTF-16", () => Buffer.from(text.replace('encoding="utf-8"', 'encoding="utf-16"'))],
+    ["CR LF", () => Buffer.from(text.replace(/\r?\n/g, "\r\n"))],
+  ])("%s is read as what it is", (name, make) => {
+    const { result, time, memory } = measure(make());
+    console.log(
+      `${name}: ${time.toFixed(0)} ms, ${memory.toFixed(0)} MB, ${result.problems.map((found) => found.code).join(", ")}`,
+    );
+    expect(result.problems.filter((found) => found.severity === "error")).toEqual([]);
+    const plain = read(bytes);
+    if (!result.ok || !plain.ok) throw new Error("Not read");
+    expect(writeNodeSet(result.value).xml).toBe(writeNodeSet(plain.value).xml);
+  });
+
+  it("have no more than 256 attributes at one element, were they let in by their size", () => {
+    const hostile = makeAttributes(10_000_000).toString();
+    const before = heapMb();
+    const start = performance.now();
+    const result = readNodeSet(hostile, { limits: { maxBytes: hostile.length } });
+    console.log(
+      `ten million attributes: ${(performance.now() - start).toFixed(0)} ms, ${(heapMb() - before).toFixed(0)} MB`,
+    );
+    expect(result.problems.map((found) => [found.code, found.at?.line !== undefined])).toEqual([
+      ["limit.attributes", true],
+    ]);
   });
 });

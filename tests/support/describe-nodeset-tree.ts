@@ -37,7 +37,8 @@ export function describeNodeSetTree(xml: Uint8Array | string): NodeSetDescriptio
 /** UTF-8, or UTF-16 by its mark: libxml2 is given text, so that its processing instructions can be changed before. */
 function decode(bytes: Uint8Array): string {
   const [first, second] = bytes;
-  const encoding = first === 0xff && second === 0xfe ? "utf-16le" : first === 0xfe && second === 0xff ? "utf-16be" : "utf-8";
+  const encoding =
+    first === 0xff && second === 0xfe ? "utf-16le" : first === 0xfe && second === 0xff ? "utf-16be" : "utf-8";
   return new TextDecoder(encoding).decode(bytes);
 }
 
@@ -48,7 +49,8 @@ function describeRoot(root: XmlElement): NodeSetDescription {
   const uris = textsOf(children, "NamespaceUris");
   const aliases = new Map<string, string>();
   for (const table of children.filter((child) => child.name === "Aliases")) {
-    for (const alias of elementsOf(table).filter((row) => row.namespaceUri === NODESET)) aliases.set(alias.attr("Alias")?.value ?? "", alias.content.trim());
+    for (const alias of elementsOf(table).filter((row) => row.namespaceUri === NODESET))
+      aliases.set(alias.attr("Alias")?.value ?? "", alias.content.trim());
   }
   const tables = { uris: ["http://opcfoundation.org/UA/", ...uris], aliases };
   const isNode = (child: XmlElement): boolean => child.namespaceUri === NODESET && child.name.startsWith("UA");
@@ -98,7 +100,9 @@ function describeElement(element: XmlElement, tables: Tables, place: Place, dept
   const marks = marksOf(element);
   const end = marks.end.map((mark) => `${indent}end ${mark}`);
   if (children.length === 0) {
-    return [`${head} "${describeText(element, tables, place)}"`, ...end.filter((mark) => mark.includes("<!--"))].join("\n");
+    return [`${head} "${describeText(element, tables, place)}"`, ...end.filter((mark) => mark.includes("<!--"))].join(
+      "\n",
+    );
   }
   const lines = children.map((child, index) =>
     [describeElement(child, tables, inner, depth + 1), ...(marks.before.get(index) ?? [])].join(`\n${indent}before `),

@@ -13,7 +13,7 @@ import { PresenceStore } from "./presence-store";
 import { followFindings } from "./run-checks";
 import { followWaivers } from "./follow-waivers";
 import { listRoots } from "./list-roots";
-import { keepUnsaved, type KeptEdits } from "./unsaved-edits";
+import { keepUnsaved, takeBlocks, type KeptEdits } from "./unsaved-edits";
 import type { OpenModel } from "./use-model";
 import { ViewStore } from "./view-store";
 
@@ -36,6 +36,8 @@ export function openModel(
   const { id } = workspace.model;
   const canEdit = workspace.permissions.includes("model.edit");
   const unsaved = canEdit ? loaded.takeUnsaved() : undefined;
+  // Taken from the tab in any case, so that no other copy of it holds them too.
+  const blocks = canEdit ? takeBlocks(id) : [];
   const clientId = unsaved?.clientId ?? crypto.randomUUID();
   const transport = new ModelTransport(id, clientId);
   const editor: EditorStore = new EditorStore({
@@ -48,7 +50,7 @@ export function openModel(
       const timer = setTimeout(run, milliseconds);
       return () => clearTimeout(timer);
     },
-    ...(unsaved ? { restored: unsaved } : {}),
+    restored: unsaved ?? { pending: [], blocks, base: loaded.seq },
     onRefused: (refused) => {
       for (const { problems, conflictsWith } of refused) {
         const by = conflictsWith?.author ? `${conflictsWith.author} was quicker. ` : "";

@@ -3,7 +3,14 @@ import { Form } from "react-router";
 import { Button } from "~/components/ui/button";
 import { Field, Input, Select } from "~/components/ui/field";
 import { Notice } from "~/components/ui/notice";
-import { NODE_CLASSES, NUMBERS, PATH_PLACE, PATH_SEPARATORS, type IdPolicy, type IdRange } from "~/domain/address-space/id-policy";
+import {
+  NODE_CLASSES,
+  NUMBERS,
+  PATH_PLACE,
+  PATH_SEPARATORS,
+  type IdPolicy,
+  type IdRange,
+} from "~/domain/address-space/id-policy";
 import type { NodeClass } from "~/domain/address-space/node";
 
 type Props = {
@@ -15,7 +22,11 @@ type Props = {
 
 const KINDS: readonly { readonly kind: IdPolicy["kind"]; readonly label: string; readonly hint: string }[] = [
   { kind: "numbers", label: "Numbers, one after the other", hint: "The next number that was never given." },
-  { kind: "ranges", label: "Numbers, a range for each node class", hint: "A class without a range takes the next number of all." },
+  {
+    kind: "ranges",
+    label: "Numbers, a range for each node class",
+    hint: "A class without a range takes the next number of all.",
+  },
   { kind: "paths", label: "Paths of names for machines", hint: "Types and what stands in them are numbered." },
 ];
 
@@ -79,7 +90,15 @@ function Ranges({ policy, isBlocked }: { policy: IdPolicy; isBlocked: boolean })
   );
 }
 
-function RangeRow({ nodeClass, range, isBlocked }: { nodeClass: NodeClass; range: IdRange | undefined; isBlocked: boolean }) {
+function RangeRow({
+  nodeClass,
+  range,
+  isBlocked,
+}: {
+  nodeClass: NodeClass;
+  range: IdRange | undefined;
+  isBlocked: boolean;
+}) {
   const end = (name: "from" | "to") => (
     <Input
       name={`${name}.${nodeClass}`}

@@ -49,6 +49,13 @@ export function ModelBar({ model, tabs, mayEdit, tools, testServer }: Props) {
             to: `/models/${model.id}/nodeset`,
             download: true,
           },
+          {
+            kind: "link",
+            label: "Download in canonical order",
+            icon: Download,
+            to: `/models/${model.id}/nodeset?order=canonical`,
+            download: true,
+          },
           ...(mayEdit
             ? ([
                 { kind: "rule" },

@@ -37,6 +37,14 @@ export const NODE_CLASSES: readonly NodeClass[] = [
   "View",
 ];
 
+/**
+ * How many ids of a class a window keeps in stock, since an edit cannot wait for the network: enough for a large type, and a
+ * twentieth of the range at most, since what a window does not use is lost.
+ */
+export function getStockSize({ from, to }: IdRange): number {
+  return Math.max(8, Math.min(400, Math.ceil((to - from + 1) / 20)));
+}
+
 /** What keeps a policy from being used. Problems: `id-policy.pattern`, `id-policy.range`, `id-policy.overlap`. */
 export function checkIdPolicy(policy: IdPolicy): Problem[] {
   if (policy.kind === "paths") {

@@ -3,7 +3,7 @@
  * every string identifier that was given. New NodeIds are chosen by the policy that the model then has.
  */
 import type { AddressSpace } from "../address-space/address-space";
-import { NODE_CLASSES, NUMBERS, type IdPolicy, type IdRange } from "../address-space/id-policy";
+import { getStockSize, NODE_CLASSES, NUMBERS, type IdPolicy, type IdRange } from "../address-space/id-policy";
 import { getOwnNamespace } from "../address-space/model-header";
 import type { NodeClass } from "../address-space/node";
 import { toNodeKey, type NodeId } from "../address-space/node-id";
@@ -66,17 +66,23 @@ export class IdStock implements NodeIdAllocator {
     );
   }
 
-  /** What should be leased next: fewer ids than `below` are left of it. Blocks outside of a changed range are dropped. */
-  findWanted(below: { readonly all: number; readonly each: number }): { readonly for: BlockFor } | undefined {
+  /**
+   * What should be leased next: of a range less than a stock is left, or fewer ids than `below` of those for all others.
+   * Blocks outside of a changed range are dropped.
+   */
+  findWanted(below: number): { readonly for: BlockFor } | undefined {
     const policy = this.#policy;
+    let isComplete = true;
     for (const nodeClass of NODE_CLASSES) {
       const range = findRange(policy, nodeClass);
+      isComplete &&= range !== undefined;
       if (!range) continue;
       this.#blockOf(nodeClass).keepWithin(range);
       const isUsedUp = this.#usedUp.get(nodeClass) === toText(range);
-      if (!isUsedUp && this.#remainingIn(nodeClass) < below.each) return { for: nodeClass };
+      if (!isUsedUp && this.#remainingIn(nodeClass) < getStockSize(range)) return { for: nodeClass };
     }
-    return this.#remainingIn(undefined) < below.all && !this.#usedUp.has(undefined) ? { for: undefined } : undefined;
+    const isEnough = isComplete || this.#remainingIn(undefined) >= below || this.#usedUp.has(undefined);
+    return isEnough ? undefined : { for: undefined };
   }
 
   get #policy(): IdPolicy {

@@ -13,10 +13,9 @@ import {
   type IdPolicy,
 } from "../address-space/id-policy";
 import type { ModelEntry, ModelHeader } from "../address-space/model-header";
-import type { Node, NodeClass } from "../address-space/node";
+import type { Node } from "../address-space/node";
 import { isWritableText } from "../nodeset/values/scalar-text";
 import { readFragment } from "../nodeset/values/xml-fragment";
-import type { AttributeOf } from "./attribute-names";
 import type { AttributeName } from "./operation";
 
 const MAX_TEXT = 16_000_000;

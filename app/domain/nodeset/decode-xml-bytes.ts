@@ -30,10 +30,11 @@ export function decodeXmlBytes(bytes: Uint8Array, maxBytes: number = READ_LIMITS
   if (bytes.length === 0) return fail(problem("file.empty", undefined, start));
   const kind = recogniseFile(bytes);
   if (!kind.isXml) return fail(problem("file.other-kind", { kind: kind.kind, what: kind.what }, start));
-  const { encoding, declared } = findEncoding(bytes);
+  const { encoding, declared, isMislabelled } = findEncoding(bytes);
   if (encoding === undefined) return fail(problem("encoding.unknown", { encoding: declared }, start));
-  const warnings: Problem[] =
-    encoding === "utf-8" ? [] : [problem.warning("encoding.declared", { encoding: declared }, start)];
+  const warnings: Problem[] = [];
+  if (encoding !== "utf-8") warnings.push(problem.warning("encoding.declared", { encoding: declared }, start));
+  if (isMislabelled) warnings.push(problem.warning("encoding.mislabelled", undefined, start));
   try {
     return ok(new TextDecoder(encoding, { fatal: true }).decode(bytes), warnings);
   } catch {
@@ -41,7 +42,13 @@ export function decodeXmlBytes(bytes: Uint8Array, maxBytes: number = READ_LIMITS
   }
 }
 
-function findEncoding(bytes: Uint8Array): { encoding: string | undefined; declared: string } {
+type FoundEncoding = {
+  readonly encoding: string | undefined;
+  readonly declared: string;
+  readonly isMislabelled?: boolean;
+};
+
+function findEncoding(bytes: Uint8Array): FoundEncoding {
   const [a, b, c, d] = bytes;
   if (a === 0xef && b === 0xbb && c === 0xbf) return { encoding: "utf-8", declared: "UTF-8" };
   if (a === 0xff && b === 0xfe && !(c === 0 && d === 0)) return { encoding: "utf-16le", declared: "UTF-16" };
@@ -54,7 +61,7 @@ function findEncoding(bytes: Uint8Array): { encoding: string | undefined; declar
   const name = declared.toLowerCase();
   if (name === "utf-8" || name === "utf8") return { encoding: "utf-8", declared };
   // Bytes that show an encoding of one byte a character cannot be UTF-16, whatever the declaration says.
-  if (name.startsWith("utf-16")) return { encoding: "utf-8", declared: "UTF-8" };
+  if (name.startsWith("utf-16")) return { encoding: "utf-8", declared: "UTF-8", isMislabelled: true };
   return { encoding: ENCODINGS.get(name), declared };
 }
 

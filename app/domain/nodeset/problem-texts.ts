@@ -11,6 +11,7 @@ export const nodesetProblemTexts: Readonly<Record<string, string>> = {
   "limit.time": "Reading took longer than {limit} s, which is the limit, and was stopped.",
   "limit.problems": "{count} more problems are not listed; the list ends at {limit}.",
   "encoding.declared": "The file is in {encoding}. It was read; a NodeSet is usually UTF-8, and an export will be.",
+  "encoding.mislabelled": "The first line says UTF-16, but the bytes are UTF-8. They were read as UTF-8.",
   "encoding.invalid":
     "The bytes are not {encoding}. Save the file as UTF-8, or let its first line name the encoding that it has.",
   "encoding.unknown": "The encoding “{encoding}” cannot be read. Save the file as UTF-8.",

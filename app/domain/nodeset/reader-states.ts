@@ -77,7 +77,10 @@ export function findPath(states: readonly State[], context: ReadContext): string
     else if (state === "model") path = joinPath(path, findModelStep(context, models++));
     else if (state === "field") path = joinPath(path, findFieldStep(context));
     else if (state === "argument") {
-      path = joinPath(path, toStep("ArgumentDescription", undefined, (context.node?.argumentDescriptions?.length ?? 0) + 1));
+      path = joinPath(
+        path,
+        toStep("ArgumentDescription", undefined, (context.node?.argumentDescriptions?.length ?? 0) + 1),
+      );
     }
   }
   return path;
@@ -85,7 +88,11 @@ export function findPath(states: readonly State[], context: ReadContext): string
 
 function findFieldStep({ definition, field, siblings }: ReadContext): string {
   const name = field?.name ?? "";
-  return toStep("Field", name, siblings.count(definition?.fields ?? [], (one) => one.name, name));
+  return toStep(
+    "Field",
+    name,
+    siblings.count(definition?.fields ?? [], (one) => one.name, name),
+  );
 }
 
 function findModelStep({ models, header, siblings }: ReadContext, index: number): string {

@@ -28,13 +28,13 @@ describe("policies", () => {
   };
   const ranges: IdPolicy = {
     kind: "ranges",
-    ranges: { Variable: { from: 6000, to: 6002 }, Method: { from: 7000, to: 7999 } },
+    ranges: { Variable: { from: 6000, to: 6007 }, Method: { from: 7000, to: 7999 } },
   };
 
   it("number by class, each in its range", () => {
     const stock = stockOf(ranges, [
       { from: 1000, to: 1999 },
-      { from: 6000, to: 6002, nodeClass: "Variable" },
+      { from: 6000, to: 6007, nodeClass: "Variable" },
       { from: 7000, to: 7099, nodeClass: "Method" },
     ]);
     const given = (["Object", "Variable", "Method", "Variable"] as const).map((c) => stock.allocate(c));
@@ -43,13 +43,13 @@ describe("policies", () => {
 
   it("ask for blocks of the ranges that run low, and say when a range is used up", () => {
     const stock = stockOf(ranges, [{ from: 1000, to: 1999 }]);
-    const below = { all: 400, each: 2 };
+    const below = 400;
     expect(stock.findWanted(below)).toEqual({ for: "Variable" });
-    stock.addBlock({ from: 6000, to: 6002, nodeClass: "Variable" });
+    stock.addBlock({ from: 6000, to: 6007, nodeClass: "Variable" });
     expect(stock.findWanted(below)).toEqual({ for: "Method" });
     stock.addBlock({ from: 7000, to: 7099, nodeClass: "Method" });
     expect(stock.findWanted(below)).toBeUndefined();
-    for (let i = 0; i < 3; i++) expect(stock.allocate("Variable").ok).toBe(true);
+    for (let i = 0; i < 8; i++) expect(stock.allocate("Variable").ok).toBe(true);
     stock.markUsedUp("Variable");
     expect(stock.findWanted(below)).toBeUndefined();
     expect(stock.allocate("Variable").problems.map((found) => found.code)).toEqual(["node-id.range-used-up"]);
@@ -60,12 +60,12 @@ describe("policies", () => {
     let policy = ranges;
     const space = makeSpace();
     const stock = new IdStock(() => space.withHeader({ ...space.own.header, idPolicy: policy }), [
-      { from: 6000, to: 6002, nodeClass: "Variable" },
+      { from: 6000, to: 6007, nodeClass: "Variable" },
     ]);
-    policy = { kind: "ranges", ranges: { Variable: { from: 6002, to: 6999 } } };
-    expect(stock.findWanted({ all: 0, each: 2 })).toEqual({ for: "Variable" });
+    policy = { kind: "ranges", ranges: { Variable: { from: 6007, to: 6999 } } };
+    expect(stock.findWanted(0)).toEqual({ for: "Variable" });
     const next = stock.allocate("Variable");
-    expect(next.ok && next.value.identifier).toBe(6002);
+    expect(next.ok && next.value.identifier).toBe(6007);
   });
 
   it("are refused where they cannot be used", () => {
