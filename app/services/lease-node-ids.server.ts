@@ -16,7 +16,7 @@ import { getStockSize, NUMBERS, type IdRange } from "../domain/address-space/id-
 import type { NodeClass } from "../domain/address-space/node";
 import { formatNodeId } from "../domain/address-space/node-id";
 import { fail, ok, problem, type Result } from "../domain/core/result";
-import { CountingAllocator, type IdBlock, type NodeIdAllocator } from "../domain/editing/allocate-node-id";
+import { CountingAllocator, findFree, type IdBlock, type NodeIdAllocator } from "../domain/editing/allocate-node-id";
 import type { Edit } from "../domain/editing/edit-draft";
 import { findRange, IdStock } from "../domain/editing/id-stock";
 
@@ -73,17 +73,6 @@ async function findInRange(
     if (nodeId.namespaceUri === namespaceUri && typeof nodeId.identifier === "number") numbers.push(nodeId.identifier);
   }
   return findFree(range, [...leased, ...numbers.map((number) => ({ from: number, to: number }))], count);
-}
-
-/** The first run of at most `count` numbers of the range that is in none of the others. */
-export function findFree(range: IdRange, taken: readonly IdRange[], count: number): IdRange | undefined {
-  let from = range.from;
-  for (const other of [...taken].sort((a, b) => a.from - b.from)) {
-    if (other.to < from) continue;
-    if (other.from > from) return { from, to: Math.min(other.from - 1, from + count - 1, range.to) };
-    from = other.to + 1;
-  }
-  return from <= range.to ? { from, to: Math.min(from + count - 1, range.to) } : undefined;
 }
 
 /**

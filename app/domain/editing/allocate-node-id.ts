@@ -5,6 +5,7 @@
  */
 import type { AddressSpace } from "../address-space/address-space";
 import { numericNodeId, toNodeKey, type NodeId, type NodeKey } from "../address-space/node-id";
+import type { IdRange } from "../address-space/id-policy";
 import { getOwnNamespace } from "../address-space/model-header";
 import type { NodeClass } from "../address-space/node";
 import { fail, ok, problem, type Result } from "../core/result";
@@ -102,4 +103,15 @@ export class BlockAllocator implements NodeIdAllocator {
     }
     return fail(problem("node-id.block-empty"));
   }
+}
+
+/** The first run of at most `count` numbers of the range that is in none of the others. */
+export function findFree(range: IdRange, taken: readonly IdRange[], count: number): IdRange | undefined {
+  let from = range.from;
+  for (const other of [...taken].sort((a, b) => a.from - b.from)) {
+    if (other.to < from) continue;
+    if (other.from > from) return { from, to: Math.min(other.from - 1, from + count - 1, range.to) };
+    from = other.to + 1;
+  }
+  return from <= range.to ? { from, to: Math.min(from + count - 1, range.to) } : undefined;
 }

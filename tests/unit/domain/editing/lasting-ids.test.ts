@@ -1,9 +1,18 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { formatNodeId, numericNodeId, standardKey, type NodeId, type NodeKey } from "~/domain/address-space/node-id";
-import { checkIdPolicy, type IdPolicy } from "~/domain/address-space/id-policy";
+import type { Node } from "~/domain/address-space/node";
+import {
+  formatNodeId,
+  numericNodeId,
+  standardKey,
+  toNodeKey,
+  type NodeId,
+  type NodeKey,
+} from "~/domain/address-space/node-id";
+import type { AddressSpace } from "~/domain/address-space/address-space";
+import { checkIdPolicy, NUMBERS, type IdPolicy } from "~/domain/address-space/id-policy";
 import { StandardDataType, StandardType } from "~/domain/address-space/standard-ids";
-import { BlockAllocator, type IdBlock } from "~/domain/editing/allocate-node-id";
+import { BlockAllocator, findFree, type IdBlock } from "~/domain/editing/allocate-node-id";
 import { applyOperation } from "~/domain/editing/apply-operation";
 import { addEnumeration } from "~/domain/editing/commands/add-enumeration";
 import { addMethod, addObject, addVariable } from "~/domain/editing/commands/add-member";
@@ -12,7 +21,7 @@ import { addType } from "~/domain/editing/commands/add-type";
 import { setIdPolicy } from "~/domain/editing/commands/set-id-policy";
 import { renumberNodes } from "~/domain/editing/commands/renumber-nodes";
 import { NodeIdLedger, PathAllocator } from "~/domain/editing/id-policies";
-import { IdStock } from "~/domain/editing/id-stock";
+import { findRange, IdStock, type BlockFor } from "~/domain/editing/id-stock";
 import { instantiate } from "~/domain/instantiation/instantiate";
 import { planNodeIds, readNodeIdsCsv, writeNodeIdsCsv } from "~/domain/nodeset/node-ids-csv";
 import { Workbench } from "../../../support/command-harness";
@@ -59,9 +68,10 @@ describe("policies", () => {
   it("drop what was leased for a range that is another one by now", () => {
     let policy = ranges;
     const space = makeSpace();
-    const stock = new IdStock(() => space.withHeader({ ...space.own.header, idPolicy: policy }), [
-      { from: 6000, to: 6007, nodeClass: "Variable" },
-    ]);
+    const stock = new IdStock(
+      () => space.withHeader({ ...space.own.header, idPolicy: policy }),
+      [{ from: 6000, to: 6007, nodeClass: "Variable" }],
+    );
     policy = { kind: "ranges", ranges: { Variable: { from: 6007, to: 6999 } } };
     expect(stock.findWanted(0)).toEqual({ for: "Variable" });
     const next = stock.allocate("Variable");
@@ -153,6 +163,93 @@ describe("NodeIdLedger", () => {
         expect(new NodeIdLedger(ledger.list()).list()).toEqual(ledger.list());
       }),
       { numRuns: 100 },
+    );
+  });
+});
+
+/** A server that leases and remembers as the real one does, without a database. */
+class IdServer {
+  readonly leased: { from: number; to: number }[] = [];
+  readonly given = new Set<string>();
+  highest = 0;
+
+  lease(space: AddressSpace, wanted: BlockFor): IdBlock | undefined {
+    const range = wanted && findRange(space.own.header.idPolicy ?? NUMBERS, wanted);
+    const ids = [...this.given].flatMap((id) => Number(/;i=(\d+)$/.exec(id)?.[1] ?? []));
+    const free = range
+      ? findFree(range, [...this.leased, ...ids.map((number) => ({ from: number, to: number }))], 5)
+      : { from: this.highest + 1, to: this.highest + 5 };
+    if (!free) return undefined;
+    this.highest = Math.max(this.highest, free.to);
+    this.leased.push(free);
+    return wanted ? { ...free, nodeClass: wanted } : free;
+  }
+
+  listPaths(): string[] {
+    return [...this.given].filter((id) => /;s=/.test(id));
+  }
+}
+
+describe("allocation", () => {
+  const policies: readonly IdPolicy[] = [
+    NUMBERS,
+    { kind: "paths", pattern: "{path}", separator: "." },
+    { kind: "ranges", ranges: { Object: { from: 3, to: 30 }, Variable: { from: 31, to: 60 } } },
+    { kind: "ranges", ranges: { Object: { from: 20, to: 50 }, Method: { from: 1, to: 19 } } },
+  ];
+  const step = fc.record({
+    what: fc.constantFrom("add", "add", "add", "fail", "remove", "import", "policy", "reload"),
+    window: fc.nat(2),
+    number: fc.nat(100),
+    nodeClass: fc.constantFrom("Object" as const, "Variable" as const, "Method" as const),
+    name: fc.constantFrom("B1", "B2", "Speed"),
+  });
+
+  it("never gives a NodeId twice: three windows, every policy, failed edits, deletions, imports, reloads", () => {
+    fc.assert(
+      fc.property(fc.array(step, { maxLength: 80 }), (steps) => {
+        const server = new IdServer();
+        let space = makeSpace();
+        const open = (): IdStock => new IdStock(() => space, [], server.listPaths());
+        const windows = [open(), open(), open()];
+        const everGiven: string[] = [];
+        const commit = (node: Node): void => {
+          everGiven.push(formatNodeId(node.nodeId));
+          server.given.add(formatNodeId(node.nodeId));
+          const operation = { kind: "addNode" as const, node };
+          const applied = applyOperation(space, operation);
+          if (!applied.ok) throw new Error(JSON.stringify(applied.problems));
+          space = applied.value;
+          for (const stock of windows) stock.record([operation]);
+        };
+        for (const { what, window, number, nodeClass, name } of steps) {
+          const stock = windows[window] ?? open();
+          for (let wanted = stock.findWanted(3), i = 0; wanted && i < 20; wanted = stock.findWanted(3), i++) {
+            const block = server.lease(space, wanted.for);
+            if (block) stock.addBlock(block);
+            else stock.markUsedUp(wanted.for);
+          }
+          if (what === "policy")
+            space = space.withHeader({ ...space.own.header, idPolicy: policies[number % 4] ?? NUMBERS });
+          if (what === "reload") windows[window] = open();
+          const [first] = space.listOwnNodes();
+          if (what === "remove" && first) space = space.withoutNode(first.key);
+          const imported = makeNode(number + 1, "Object");
+          const isFree = !server.given.has(formatNodeId(imported.nodeId));
+          const isLeased = server.leased.some(({ from, to }) => number + 1 >= from && number + 1 <= to);
+          if (what === "import" && isFree && !isLeased) {
+            commit(imported);
+            server.highest = Math.max(server.highest, number + 1);
+          }
+          if (what !== "add" && what !== "fail") continue;
+          const nodeId = stock.allocate(nodeClass, { space, parent: standardKey(85), name });
+          if (!nodeId.ok || what === "fail") continue;
+          const key = toNodeKey(nodeId.value);
+          commit({ ...makeNode(0, nodeClass), key, nodeId: nodeId.value, order: everGiven.length } as Node);
+        }
+        expect(new Set(everGiven).size).toBe(everGiven.length);
+      }),
+      { numRuns: 300 },
     );
   });
 });
