@@ -1,4 +1,5 @@
 /** `npm run bench [-- --json]`: figures with their references, all of one run. */
+import { measureAsBuilt } from "./as-built";
 import { checkInChild, measureChecking } from "./checking";
 import { measureEditing } from "./editing";
 import { measureImport, serveImportsInChild } from "./import";
@@ -14,6 +15,7 @@ const measures: readonly (() => Promise<BenchResult[]>)[] = [
   measureEditing,
   measureChecking,
   measureTestServerStart,
+  measureAsBuilt,
 ];
 
 async function runAll(asJson: boolean): Promise<void> {

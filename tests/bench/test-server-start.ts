@@ -81,7 +81,7 @@ export async function runBareServer(pkiFolder: string, files: readonly string[])
   await server.initialize();
   await server.start();
   process.on("SIGTERM", () => void server.shutdown(0).then(() => process.exit(0)));
-  await answerParent({ kind: "ready" });
+  await answerParent({ kind: "ready", endpointUrl: `opc.tcp://127.0.0.1:${server.endpoints[0]?.port ?? 0}` });
 }
 
 function listHallFiles(): string[] {
