@@ -1,5 +1,5 @@
 import { useVirtualizer } from "@tanstack/react-virtual";
-import { useCallback, useMemo, useRef, useState } from "react";
+import { useCallback, useDeferredValue, useMemo, useRef, useState } from "react";
 import { useSearchParams } from "react-router";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { AddNodePanel } from "../model/add-node-panel";
@@ -21,6 +21,7 @@ import { makeRowOrder, type SortRule } from "./row-order";
 import { RegisterTools, type RegisterFilter } from "./register-tools";
 import { useGridControl } from "./use-grid-control";
 import { useRegisterColumns } from "./use-register-columns";
+import { useTreeShape } from "./use-tree-shape";
 import "./register.css";
 
 const ROW = 24;
@@ -61,8 +62,12 @@ export function Register() {
     [sort, findings],
   );
 
+  const shape = useTreeShape(space);
+  // What is typed into the filter is shown at once; a large model answers a moment later.
+  const wanted = useDeferredValue(filter.text);
+
   const rows = useMemo(() => {
-    const question = parseFilter(filter.text, choice.all);
+    const question = parseFilter(wanted, choice.all);
     const { byNode } = findings.getState();
     const isFiltering = question !== undefined || filter.withFindings;
     const matches = (key: NodeKey): boolean => {
@@ -71,8 +76,8 @@ export function Register() {
       return question === undefined || question(space, node);
     };
     return buildRows(space, { toggled, showInherited: filter.showInherited, ...(isFiltering ? { matches } : {}), ...(order ? { order } : {}) });
-    // Findings are asked only by their filter; the tally changes whenever the checker answered anew.
-  }, [space, toggled, filter, order, choice.all, findings, filter.withFindings ? tally : undefined]);
+    // A filter asks the contents; without one only the tree counts. The tally changes whenever the checker answered anew.
+  }, [wanted.trim() === "" && !filter.withFindings ? shape : space, toggled, wanted, filter.withFindings, filter.showInherited, order, choice.all, findings, filter.withFindings ? tally : undefined]);
 
   const toggle = useCallback((id: string) => {
     setToggled((old) => {
