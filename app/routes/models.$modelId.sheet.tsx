@@ -1,4 +1,3 @@
-import { useEffect } from "react";
 import { NodeDrawer } from "~/components/drawer/node-drawer";
 import { LoadingModel } from "~/components/model/loading-model";
 import { useOpenModel } from "~/components/model/use-model";
@@ -12,13 +11,11 @@ export function meta() {
 }
 
 export default function SheetPage() {
-  const { workspace, presence, isReady } = useOpenModel();
-  const sheet = workspace.sheets[0];
-  useEffect(() => presence.setPlace("sheet"), [presence]);
+  const { workspace, isReady } = useOpenModel();
   return (
     <main id="main" className="flex min-h-0 flex-1 flex-col">
       <h1 className="sr-only">Sheet of {workspace.model.name}</h1>
-      {isReady ? <Sheet sheetId={sheet?.id ?? "main"} /> : <LoadingModel what="the sheet" />}
+      {isReady ? <Sheet /> : <LoadingModel what="the sheet" />}
       <NodeDrawer />
     </main>
   );

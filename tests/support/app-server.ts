@@ -4,7 +4,7 @@ import { mkdtempSync, rmSync } from "node:fs";
 import { createServer } from "node:net";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
-import { projectRoot } from "./source-files";
+import { findProjectRoot } from "~/utils/project-root.server";
 
 const START_LIMIT_MS = 120_000;
 /** What the application promises after SIGTERM. */
@@ -27,7 +27,7 @@ export async function startApp(
   const port = await findFreePort();
   const url = `http://127.0.0.1:${port}`;
   const child = spawn(process.execPath, ["app/cli/launch.mjs", target], {
-    cwd: projectRoot,
+    cwd: findProjectRoot(),
     env: { ...process.env, NODE_ENV: "production", PORT: String(port), FERRULE_DATA: dataFolder, ...env },
     detached: true,
   });

@@ -54,31 +54,38 @@ export function lineEndMarkerId(end: LineEnd, tone: LineTone = "ink"): string {
   return `line-end-${end}-${tone}`;
 }
 
+/** The markers as definitions inside a drawing; `prefix` keeps those of a picture apart from those of the page. */
+export function LineEndDefinitions({ prefix = "" }: { prefix?: string }) {
+  return (
+    <defs>
+      {(Object.keys(shapes) as LineEnd[]).flatMap((end) =>
+        (Object.keys(strokes) as LineTone[]).map((tone) => {
+          const shape = shapes[end];
+          return (
+            <marker
+              key={lineEndMarkerId(end, tone)}
+              id={prefix + lineEndMarkerId(end, tone)}
+              markerWidth={shape.width}
+              markerHeight={14}
+              refX={shape.refX}
+              refY={7}
+              orient="auto-start-reverse"
+              markerUnits="userSpaceOnUse"
+            >
+              {shape.draw(strokes[tone])}
+            </marker>
+          );
+        }),
+      )}
+    </defs>
+  );
+}
+
 /** The markers, once in a document that draws reference lines: `markerEnd={url(#…)}` with `lineEndMarkerId`. */
 export function LineEndMarkers() {
   return (
     <svg width="0" height="0" className="absolute" aria-hidden>
-      <defs>
-        {(Object.keys(shapes) as LineEnd[]).flatMap((end) =>
-          (Object.keys(strokes) as LineTone[]).map((tone) => {
-            const shape = shapes[end];
-            return (
-              <marker
-                key={lineEndMarkerId(end, tone)}
-                id={lineEndMarkerId(end, tone)}
-                markerWidth={shape.width}
-                markerHeight={14}
-                refX={shape.refX}
-                refY={7}
-                orient="auto-start-reverse"
-                markerUnits="userSpaceOnUse"
-              >
-                {shape.draw(strokes[tone])}
-              </marker>
-            );
-          }),
-        )}
-      </defs>
+      <LineEndDefinitions />
     </svg>
   );
 }

@@ -1,24 +1,45 @@
 import type { NodeProps, Node as FlowNode } from "@xyflow/react";
-import { memo, type ReactNode } from "react";
+import { memo, use, type ReactNode } from "react";
+import { FerruleBadge } from "../notation/ferrule-badge";
 import { FindingBadge } from "../notation/finding-badge";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
 import { cx } from "../ui/cx";
 import { InlineName } from "../model/inline-name";
 import { useBadges, useMatesAmong, useSelectedAmong, type Badge } from "../model/use-model";
+import { FarContext } from "./far-context";
 import type { Card, MemberRow } from "./sheet-scene";
 
 export type CardFlowNode = FlowNode<{ card: Card }, "card">;
 
 /** One node of the drawing in the standard's shape. Selection and badges come from their stores, so that a card is drawn anew only when it changed. */
 export const CardNode = memo(function CardNode({ data }: NodeProps<CardFlowNode>) {
-  const { card } = data;
+  const isFar = use(FarContext);
+  return isFar ? <FarCard card={data.card} /> : <NearCard card={data.card} />;
+});
+
+/** Far away only names are read: nothing else is made, so that a thousand cards move like plain boxes. */
+function FarCard({ card }: { card: Card }) {
+  const selected = useSelectedAmong([card.key]);
+  return (
+    <div className={getCardClass(card, selected.has(card.key))} data-key={card.key} style={{ width: card.width, height: card.height }}>
+      <CardShape card={card} />
+      <span className="card-far">{card.name}</span>
+    </div>
+  );
+}
+
+function getCardClass(card: Card, isSelected: boolean): string {
+  return cx("drawn-card", `is-${card.shape}`, card.isType && "is-type", card.isForeign && "is-foreign", isSelected && "is-selected");
+}
+
+function NearCard({ card }: { card: Card }) {
   const keys = [card.key, ...card.rows.map((row) => row.key)];
   const selected = useSelectedAmong(keys);
   const badges = useBadges(keys);
   const mates = useMatesAmong(keys);
   return (
     <div
-      className={cx("drawn-card", `is-${card.shape}`, card.isType && "is-type", card.isForeign && "is-foreign", selected.has(card.key) && "is-selected")}
+      className={getCardClass(card, selected.has(card.key))}
       data-key={card.key}
       style={{ width: card.width, height: card.height }}
     >
@@ -33,12 +54,9 @@ export const CardNode = memo(function CardNode({ data }: NodeProps<CardFlowNode>
         </ul>
       )}
       {card.folded > 0 || card.drawn > 0 ? <CardFoot card={card} /> : null}
-      <span className="card-far" aria-hidden="true">
-        {card.name}
-      </span>
     </div>
   );
-});
+}
 
 /** Hexagon, signpost, oval and trapezium are drawn; rectangles are boxes. */
 function CardShape({ card: { shape, width, height } }: { card: Card }) {
@@ -105,7 +123,7 @@ const CardRow = memo(function CardRow({ row, isForeign, isSelected, badge, mate 
   const isOwn = !isForeign && row.origin === undefined;
   return (
     <li
-      className={cx("card-row", row.origin !== undefined && "is-inherited", isSelected && "is-selected")}
+      className={cx("card-row", row.feed !== undefined && "has-feed", row.origin !== undefined && "is-inherited", isSelected && "is-selected")}
       role="option"
       aria-selected={isSelected}
       aria-label={getRowLabel(row, badge)}
@@ -135,6 +153,7 @@ const CardRow = memo(function CardRow({ row, isForeign, isSelected, badge, mate 
       <span className="row-badge">
         {badge ? <FindingBadge severity={badge.severity} {...(badge.count > 1 ? { count: badge.count } : {})} title={badge.title} /> : null}
       </span>
+      {row.feed === undefined ? null : <FerruleBadge feed={row.feed} />}
       <span className="row-cardinality">{row.cardinality}</span>
       {isOwn ? <span className="card-port" data-port={row.key} /> : null}
     </li>
@@ -145,6 +164,7 @@ function getRowLabel(row: MemberRow, badge: Badge | undefined): string {
   const parts = [row.name, row.isProperty ? "Property" : row.nodeClass];
   if (row.typeName) parts.push(row.typeName);
   if (row.dataType) parts.push(row.unit ? `${row.dataType} in ${row.unit}` : row.dataType);
+  if (row.feed !== undefined) parts.push(row.feed === "open" ? "no source yet" : row.feed === "constant" ? "constant" : "fed by a source");
   if (row.cardinality) parts.push(`cardinality ${row.cardinality}`);
   if (row.origin) parts.push(`from ${row.origin}`);
   if (badge) parts.push(badge.title);

@@ -40,11 +40,23 @@ function placeAll(scene: Scene): Map<NodeKey, Point> {
   let y = ORIGIN.y;
   for (const band of bands) {
     const left = stack(band.left, y, (card) => ORIGIN.x + leftWidth - card.width, places);
+    if (isFolder(band, scene)) {
+      places.set(band.axis.key, { x: axisX, y });
+      const below = y + band.axis.height + COLUMN_GAP / 2;
+      y = Math.max(stackColumns(band.right, below, 420, axisX + COLUMN_GAP / 2, places), left) + BAND_GAP;
+      continue;
+    }
     const right = stackColumns(band.right, y, Math.max(band.axis.height, 420), rightX, places);
     places.set(band.axis.key, { x: axisX, y });
     y = Math.max(y + band.axis.height, left, right) + BAND_GAP;
   }
   return places;
+}
+
+/** What a folder organises hangs below it, so that its lines need not run around cards. */
+function isFolder({ axis, right }: Band, scene: Scene): boolean {
+  const organized = new Set(scene.lines.flatMap((line) => (line.isOrganized && line.from === axis.key ? [line.to] : [])));
+  return right.length > 1 && right.every((card) => organized.has(card.key));
 }
 
 /** Each type or entry Object that belongs to no other card opens a band; the rest joins the band that it has lines with. */
@@ -157,6 +169,22 @@ function getWantedPlace(card: Card, scene: Scene, cards: ReadonlyMap<NodeKey, Ca
   }
   const bottom = Math.max(ORIGIN.y - BAND_GAP, ...rects.map((rect) => rect.y + rect.height));
   return { x: Math.min(...rects.map((rect) => rect.x), ORIGIN.x), y: bottom + BAND_GAP };
+}
+
+/** Arranged cards go below those that stay, where they would cover them; they keep their places among each other's columns. */
+export function makeRoom(scene: Scene, arranged: ReadonlyMap<NodeKey, Point>, kept: ReadonlyMap<NodeKey, Rect>): Map<NodeKey, Point> {
+  if (kept.size === 0) return new Map(arranged);
+  const cards = new Map(scene.cards.map((card) => [card.key, card]));
+  const rects = [...kept.values()];
+  const places = new Map<NodeKey, Point>();
+  for (const [key, wanted] of [...arranged].sort((a, b) => a[1].y - b[1].y)) {
+    const card = cards.get(key);
+    if (!card) continue;
+    const point = findFreePlace(card, wanted, rects);
+    places.set(key, point);
+    rects.push({ ...point, width: card.width, height: card.height });
+  }
+  return places;
 }
 
 /** Slides downwards until nothing is covered. */

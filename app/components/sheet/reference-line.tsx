@@ -1,5 +1,6 @@
 import { memo } from "react";
 import { isDashedLine, lineEndMarkerId } from "../notation/line-ends";
+import { placeCaptions } from "./line-captions";
 import { formatPathData, type Route } from "./route-lines";
 
 type Props = { route: Route; isSelected: boolean; isLit: boolean; name: string; onSelect: (id: string) => void };
@@ -23,7 +24,7 @@ export const ReferenceLine = memo(function ReferenceLine({ route, isSelected, is
   return (
     <g className={className}>
       <path className="reference-line" d={path} markerEnd={marker} {...(line.end === "symmetric" ? { markerStart: marker } : {})} />
-      <Caption route={route} />
+      <Captions route={route} />
       <path
         className="reference-grip"
         d={path}
@@ -55,30 +56,11 @@ function isSameLine(a: Props, b: Props): boolean {
   );
 }
 
-const AWAY: Readonly<Record<string, number>> = { component: 15, property: 18 };
-
-/** Cardinality close to the target, the name behind it, both above the last stretch. */
-function Caption({ route: { line, points } }: { route: Route }) {
-  const last = points.at(-1);
-  const before = points.at(-2);
-  if (!last || !before || (line.label === undefined && line.cardinality === undefined)) return null;
-  const isLevel = last.y === before.y;
-  const sign = last.x > before.x ? -1 : 1;
-  const anchor = isLevel && sign < 0 ? "end" : "start";
-  const away = AWAY[line.end] ?? 18;
-  const room = line.cardinality === undefined ? 0 : line.cardinality.length * 6.6 + 8;
-  return (
-    <>
-      {line.cardinality === undefined ? null : (
-        <text className="reference-cardinality" x={isLevel ? last.x + sign * away : last.x + 8} y={isLevel ? last.y - 6 : last.y - 14} textAnchor={anchor}>
-          {line.cardinality}
-        </text>
-      )}
-      {line.label === undefined ? null : (
-        <text className="reference-name" x={isLevel ? last.x + sign * (away + room) : last.x + 8} y={isLevel ? last.y - 6 : (last.y + before.y) / 2 + 4} textAnchor={anchor}>
-          {line.label}
-        </text>
-      )}
-    </>
-  );
+/** Name and cardinality. */
+function Captions({ route: { line, points } }: { route: Route }) {
+  return placeCaptions(line, points).map(({ text, x, y, anchor, isMono }) => (
+    <text key={`${text} ${isMono}`} className={isMono ? "reference-cardinality" : "reference-name"} x={x} y={y} textAnchor={anchor}>
+      {text}
+    </text>
+  ));
 }

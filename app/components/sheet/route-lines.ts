@@ -11,6 +11,7 @@ type Side = "left" | "right" | "top" | "bottom";
 
 const STUB = 30;
 const TRACK = 10;
+const BUS = 36;
 const SLOTS = [0, 8, -8, 4, -4];
 
 /** Rectangles by card; a line whose card has none is left out. */
@@ -24,13 +25,32 @@ export function routeLines(lines: readonly Line[], rects: ReadonlyMap<string, Re
     const target = rects.get(line.to);
     if (source && target) routes.push({ line, points: routeLine(line, source, target, { slots, tracks, obstacles }) });
   }
-  return routes;
+  return nameEachBusOnce(routes);
+}
+
+/** Lines on one bus say its name once, where it is longest. */
+function nameEachBusOnce(routes: readonly Route[]): Route[] {
+  const longest = new Map<string, Route>();
+  const lengthOf = (route: Route): number => Math.abs((route.points.at(-1)?.x ?? 0) - (route.points[0]?.x ?? 0));
+  const busOf = ({ line }: Route): string | undefined => (line.isOrganized ? `${line.from} ${line.edge.type}` : undefined);
+  for (const route of routes) {
+    const bus = busOf(route);
+    const other = bus === undefined ? undefined : longest.get(bus);
+    if (bus !== undefined && (!other || lengthOf(route) > lengthOf(other))) longest.set(bus, route);
+  }
+  return routes.map((route) => {
+    const bus = busOf(route);
+    if (bus === undefined || longest.get(bus) === route) return route;
+    const { label: _, ...line } = route.line;
+    return { ...route, line };
+  });
 }
 
 type Tables = { readonly slots: SlotTable; readonly tracks: TrackTable; readonly obstacles: ObstacleTable };
 
 function routeLine(line: Line, source: Rect, target: Rect, { slots, tracks, obstacles }: Tables): Point[] {
   if (line.from === line.to) return routeLoop(source, line.sourceRow);
+  if (line.isOrganized && isBelow(source, target)) return routeFromAbove(source, target);
   const [from, to] = chooseSides(source, target, line.sourceRow !== undefined);
   // Lines of one type meet at the end that carries no mark, and at a supertype's heads.
   const bundle = line.end === "subtype" ? `${line.to} in ${to}` : `${line.from} ${line.sourceRow ?? line.edge.type} ${from}`;
@@ -77,6 +97,20 @@ function getAnchor(rect: Rect, side: Side, slot: number, row: number | undefined
   if (row !== undefined) return { x, y: rect.y + HEAD_HEIGHT + (row + 0.5) * ROW_HEIGHT };
   const middle = rect.height <= 48 ? rect.height / 2 : HEAD_HEIGHT / 2;
   return { x, y: rect.y + middle + slot };
+}
+
+function isBelow(source: Rect, target: Rect): boolean {
+  return source.y + source.height + BUS <= target.y && source.x + BUS <= target.x;
+}
+
+/** Down from the folder to a bus, along it to the gap before the card, down there, and into its head. */
+function routeFromAbove(source: Rect, target: Rect): Point[] {
+  const start = { x: source.x + BUS / 2, y: source.y + source.height };
+  const bus = start.y + BUS / 2;
+  const x = target.x - BUS / 2;
+  const end = getAnchor(target, "left", 0, undefined);
+  if (x - start.x < 1.5) return [start, { x: start.x, y: end.y }, end];
+  return [start, { x: start.x, y: bus }, { x, y: bus }, { x, y: end.y }, end];
 }
 
 function routeVertical(start: Point, end: Point): Point[] {

@@ -8,6 +8,7 @@ import { Empty } from "../ui/empty";
 import { Button } from "../ui/button";
 import { CaptionNode, type CaptionFlowNode } from "./caption-node";
 import { CardNode, type CardFlowNode } from "./card-node";
+import { FarContext } from "./far-context";
 import type { SheetControl } from "./sheet-control";
 import { ConnectingLine, SheetLines } from "./sheet-lines";
 import type { Point, Rect } from "./sheet-geometry";
@@ -28,6 +29,8 @@ type Props = {
   captions: readonly Caption[];
   control: SheetControl;
   onMove: (moved: ReadonlyMap<NodeKey, Point>) => void;
+  /** Wishes to bring a node into sight that were answered before this sheet was opened. */
+  seen: number;
 };
 
 const NODE_TYPES: NodeTypes = { card: CardNode, caption: CaptionNode };
@@ -36,7 +39,7 @@ const FIT = { padding: 0.06, maxZoom: 1, minZoom: 0.35 };
 const isFar = (state: ReactFlowState): boolean => state.transform[2] < FAR;
 
 /** The canvas: xyflow moves cards and view, everything else on it is ours. */
-export function SheetCanvas({ ref, space, scene, rects, captions, control, onMove }: Props) {
+export function SheetCanvas({ ref, space, scene, rects, captions, control, onMove, seen }: Props) {
   const { view, actions } = useOpenModel();
   const selection = useSelection();
   const far = useStore(isFar);
@@ -46,7 +49,7 @@ export function SheetCanvas({ ref, space, scene, rects, captions, control, onMov
   const nodes = useFlowNodes(scene, rects, captions, selection, selectedCaption, control);
   const moving = useRef(new Map<NodeKey, Point>());
   const onKeyDown = useSheetKeys({ space, scene, rects, control, selectedLine, selectedCaption, clearLine: () => setSelectedLine(undefined) });
-  useReveal(space, scene, rects, control);
+  useReveal(space, scene, rects, control, seen);
 
   function onNodesChange(changes: NodeChange<SheetFlowNode>[]): void {
     let selected: Set<NodeKey> | undefined;
@@ -124,6 +127,7 @@ export function SheetCanvas({ ref, space, scene, rects, captions, control, onMov
         Arrow keys move through cards and members, F2 renames, Enter adds the next member, C connects, Delete removes. The register
         holds the same members as a table.
       </p>
+      <FarContext value={far}>
       <ReactFlow<SheetFlowNode>
         nodes={nodes}
         edges={NO_EDGES}
@@ -167,6 +171,7 @@ export function SheetCanvas({ ref, space, scene, rects, captions, control, onMov
           {connecting ? <ConnectingLine from={connecting.from} to={connecting.to} /> : null}
         </ViewportPortal>
       </ReactFlow>
+      </FarContext>
       {scene.cards.length === 0 ? <EmptySheet control={control} canEdit={actions.canEdit} /> : null}
     </div>
   );

@@ -14,5 +14,10 @@ export type SheetControl = {
   readonly connect: (request: ConnectRequest) => void;
   readonly add: (request: AddRequest) => void;
   readonly move: (keys: readonly NodeKey[]) => void;
+  /** Leaves hand-placed cards to the layout again. */
+  readonly release: (keys: readonly NodeKey[]) => void;
+  readonly byHand: ReadonlySet<NodeKey>;
+  /** Looks at one node with what lies around it; undefined looks at the sheet again. */
+  readonly focusOn: (key: NodeKey | undefined) => void;
   readonly changeLayout: (make: (layout: SheetLayout) => SheetLayout) => void;
 };

@@ -3,31 +3,36 @@ import { useMemo, useRef, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { AddNodePanel } from "../model/add-node-panel";
-import { makeAddRequest, type AddRequest } from "../model/add-request";
+import type { AddRequest } from "../model/add-request";
 import { MoveMenu } from "../model/move-menu";
 import { useOpenModel } from "../model/use-model";
-import type { PaletteEntry } from "../palette/palette-store";
 import { usePaletteActions } from "../palette/use-palette-actions";
 import { arrangeCards } from "./arrange-cards";
 import { ConnectMenu } from "./connect-menu";
-import { placeCards } from "./place-cards";
+import { listPaletteActions } from "./list-palette-actions";
+import { makeRoom, placeCards } from "./place-cards";
+import { PrintSheet } from "./print-sheet";
 import { SheetCanvas } from "./sheet-canvas";
 import type { SheetControl } from "./sheet-control";
 import { SheetFoot } from "./sheet-foot";
 import { getBounds, getZoneOrigin, type Point, type Rect } from "./sheet-geometry";
-import { withFoldToggled, withHidden, withPositions, withShown, type SheetLayout } from "./sheet-layout";
+import { withFoldToggled, withHandPlaced, withHidden, withoutHandPlaced, withPositions, withShown, type SheetLayout } from "./sheet-layout";
 import { SheetMenu } from "./sheet-menu";
+import type { SheetPlace } from "./sheet-place";
 import type { Scene } from "./sheet-scene";
+import { SheetStrip } from "./sheet-strip";
 import type { ConnectRequest } from "./use-connect-drag";
+import { useSheetActions } from "./use-sheet-actions";
+import { useSheetPicture } from "./use-sheet-picture";
 import { useScene } from "./use-scene";
 import { ZoneStrip } from "./zone-strips";
 
-type Props = { space: AddressSpace; layout: SheetLayout; changeLayout: (make: (layout: SheetLayout) => SheetLayout) => void };
+type Props = { space: AddressSpace; layout: SheetLayout; changeLayout: (make: (layout: SheetLayout) => SheetLayout) => void; place: SheetPlace; seen: number };
 
 const NOT_MOVED: ReadonlyMap<NodeKey, Point> = new Map();
 
 /** Frame, canvas and foot of one sheet with what can be done on it. */
-export function SheetDrawing({ space, layout, changeLayout }: Props) {
+export function SheetDrawing({ space, layout, changeLayout, place: sheetPlace, seen }: Props) {
   const { view, actions } = useOpenModel();
   const { fitView } = useReactFlow();
   const canvas = useRef<HTMLDivElement>(null);
@@ -45,15 +50,20 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
     // Places that were only computed become fixed as soon as somebody places a card, so that nothing jumps later.
     const place = (positions: ReadonlyMap<NodeKey, Point>): void => {
       setMoved(NOT_MOVED);
-      changeLayout((old) => withPositions(withPositions(old, places), positions));
+      changeLayout((old) => withHandPlaced(withPositions(old, places), positions));
     };
     const arrange = async (): Promise<void> => {
       setArranging(true);
       try {
         const { selection } = view.getState();
         const chosen = scene.cards.filter((card) => selection.includes(card.key));
-        const keys = new Set((chosen.length > 1 ? chosen : scene.cards).map((card) => card.key));
-        place(moveTo(await arrangeCards(scene, keys), places));
+        const byHand = new Set(layout.byHand);
+        const free = scene.cards.filter((card) => !byHand.has(card.key));
+        const keys = new Set((chosen.length > 1 ? chosen : free).map((card) => card.key));
+        const arranged = moveTo(await arrangeCards(scene, keys), places);
+        const kept = toRects({ ...scene, cards: scene.cards.filter((card) => !keys.has(card.key)) }, places, NOT_MOVED);
+        setMoved(NOT_MOVED);
+        changeLayout((old) => withPositions(withPositions(old, places), makeRoom(scene, arranged, kept)));
         requestAnimationFrame(() => void fitView({ duration: 180, padding: 0.08, maxZoom: 1 }));
       } finally {
         setArranging(false);
@@ -68,22 +78,29 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
       connect: setConnecting,
       add: setAdding,
       move: setMoving,
+      release: (keys) => changeLayout((old) => withoutHandPlaced(old, keys)),
+      byHand: new Set(layout.byHand),
+      focusOn: sheetPlace.focusOn,
       changeLayout,
     };
-  }, [changeLayout, places, scene, view, fitView]);
+  }, [changeLayout, places, scene, view, fitView, layout.byHand, sheetPlace.focusOn]);
 
-  usePaletteActions(useMemo(() => listSheetActions(control, actions.canEdit), [control, actions]));
+  const getPicture = useSheetPicture({ space, scene, rects, captions: layout.captions, place: sheetPlace });
+  const sheetActions = useSheetActions({ space, layout, places, place: sheetPlace, getPicture });
+  usePaletteActions(useMemo(() => listPaletteActions(control, sheetActions, actions.canEdit), [control, sheetActions, actions]));
 
   return (
     <section className="sheet" aria-label="Sheet">
+      <SheetStrip space={space} place={sheetPlace} sheetActions={sheetActions} />
+      <PrintSheet getPicture={getPicture} />
       <div className="sheet-frame">
         <ZoneStrip side="top" origin={origin} canvas={canvas} />
         <ZoneStrip side="left" origin={origin} canvas={canvas} />
         <div className="sheet-drawing">
           <SheetMenu space={space} scene={scene} rects={rects} control={control}>
-            <SheetCanvas ref={canvas} space={space} scene={scene} rects={rects} captions={layout.captions} control={control} onMove={setMoved} />
+            <SheetCanvas ref={canvas} space={space} scene={scene} rects={rects} captions={layout.captions} control={control} onMove={setMoved} seen={seen} />
           </SheetMenu>
-          <SheetFoot space={space} isArranging={isArranging} control={control} />
+          <SheetFoot space={space} isArranging={isArranging} rects={rects} control={control} />
         </div>
         <ZoneStrip side="right" origin={origin} canvas={canvas} />
         <ZoneStrip side="bottom" origin={origin} canvas={canvas} />
@@ -94,16 +111,6 @@ export function SheetDrawing({ space, layout, changeLayout }: Props) {
     </section>
   );
 }
-
-function listSheetActions(control: SheetControl, canEdit: boolean): PaletteEntry[] {
-  const group = "Actions on this sheet";
-  const arrange = { id: "arrange", label: "Arrange the cards", group, run: control.arrange };
-  if (!canEdit) return [arrange];
-  const adds = ADDABLE.map((kind) => ({ id: `add-${kind}`, label: `Add ${kind === "DataType" ? "enumeration" : kind}`, group, run: () => control.add(makeAddRequest(kind)) }));
-  return [arrange, ...adds];
-}
-
-const ADDABLE = ["ObjectType", "VariableType", "DataType", "ReferenceType", "Object", "Variable", "Property", "Method"] as const;
 
 function toRects(scene: Scene, places: ReadonlyMap<NodeKey, Point>, moved: ReadonlyMap<NodeKey, Point>): Map<NodeKey, Rect> {
   const rects = new Map<NodeKey, Rect>();

@@ -1,23 +1,26 @@
-import { MiniMap, useReactFlow, useStore, type ReactFlowState } from "@xyflow/react";
+import { useReactFlow, useStore, type ReactFlowState } from "@xyflow/react";
 import { Maximize2, Minus, Network, Plus } from "lucide-react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
+import type { NodeKey } from "~/domain/address-space/node-id";
 import { getOwnNamespace } from "~/domain/address-space/model-header";
 import { SaveState } from "../model/save-state";
 import { useFindingTally, useOpenModel } from "../model/use-model";
 import { FindingTallyBadge } from "../notation/finding-badge";
 import { Tooltip } from "../ui/tooltip";
 import type { SheetControl } from "./sheet-control";
+import type { Rect } from "./sheet-geometry";
+import { SheetMap } from "./sheet-map";
 import { Stencil } from "./stencil";
 
-type Props = { space: AddressSpace; isArranging: boolean; control: SheetControl };
+type Props = { space: AddressSpace; isArranging: boolean; rects: ReadonlyMap<NodeKey, Rect>; control: SheetControl };
 
 /** The foot of the drawing: stencil, map of the sheet, title block. */
-export function SheetFoot({ space, isArranging, control }: Props) {
+export function SheetFoot({ space, isArranging, rects, control }: Props) {
   const { actions } = useOpenModel();
   return (
     <div className="sheet-foot">
       <div className="stencil">{actions.canEdit ? <Stencil space={space} control={control} /> : <p className="px-4 text-small text-ink-3">You may look at this sheet, not change it.</p>}</div>
-      <SheetMap isArranging={isArranging} onArrange={control.arrange} />
+      <MapBlock isArranging={isArranging} onArrange={control.arrange} rects={rects} />
       <SheetTitle space={space} />
     </div>
   );
@@ -25,24 +28,12 @@ export function SheetFoot({ space, isArranging, control }: Props) {
 
 const getZoom = (state: ReactFlowState): number => Math.round(state.transform[2] * 100);
 
-function SheetMap({ isArranging, onArrange }: { isArranging: boolean; onArrange: () => void }) {
+function MapBlock({ isArranging, onArrange, rects }: { isArranging: boolean; onArrange: () => void; rects: ReadonlyMap<NodeKey, Rect> }) {
   const { fitView, zoomIn, zoomOut, zoomTo } = useReactFlow();
   const zoom = useStore(getZoom);
   return (
     <div className="sheet-map" role="group" aria-label="Map of the sheet">
-      <MiniMap
-        pannable
-        zoomable
-        style={MAP_SIZE}
-        nodeColor="var(--bench-2)"
-        nodeStrokeColor="var(--ink-3)"
-        nodeStrokeWidth={12}
-        nodeBorderRadius={0}
-        maskColor="transparent"
-        maskStrokeColor="var(--copper)"
-        maskStrokeWidth={1.5}
-        ariaLabel="Map of the sheet"
-      />
+      <SheetMap rects={rects} />
       <div className="sheet-map-tools">
         <MapButton label="Zoom out" onClick={() => void zoomOut({ duration: 90 })} icon={Minus} />
         <button type="button" aria-label={`Zoom ${zoom} %, press for 100 %`} onClick={() => void zoomTo(1, { duration: 180 })}>
@@ -55,8 +46,6 @@ function SheetMap({ isArranging, onArrange }: { isArranging: boolean; onArrange:
     </div>
   );
 }
-
-const MAP_SIZE = { width: 131, height: 45 };
 
 function MapButton({ label, onClick, icon: IconOf }: { label: string; onClick: () => void; icon: typeof Plus }) {
   return (

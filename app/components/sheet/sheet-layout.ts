@@ -13,6 +13,10 @@ export type Caption = {
 
 export type SheetLayout = {
   readonly positions: Readonly<Record<string, Point>>;
+  /** A selection that somebody chose, instead of what the model as a whole shows by itself. */
+  readonly isChosen: boolean;
+  /** Cards that somebody put where they lie; arranging leaves them there. */
+  readonly byHand: readonly NodeKey[];
   /** Cards beyond the default choice, and cards of it that were taken away. */
   readonly added: readonly NodeKey[];
   readonly hidden: readonly NodeKey[];
@@ -20,14 +24,16 @@ export type SheetLayout = {
   readonly captions: readonly Caption[];
 };
 
-export const EMPTY_LAYOUT: SheetLayout = { positions: {}, added: [], hidden: [], unfolded: [], captions: [] };
+export const EMPTY_LAYOUT: SheetLayout = { positions: {}, isChosen: false, byHand: [], added: [], hidden: [], unfolded: [], captions: [] };
 
 /** Reads a stored layout; what is missing or broken is left out, since a layout may never keep a model from opening. */
 export function readLayout(stored: unknown): SheetLayout {
   if (typeof stored !== "object" || stored === null) return EMPTY_LAYOUT;
-  const { positions, added, hidden, unfolded, captions } = stored as Record<string, unknown>;
+  const { positions, isChosen, byHand, added, hidden, unfolded, captions } = stored as Record<string, unknown>;
   return {
     positions: Object.fromEntries(Object.entries(toRecord(positions)).filter((entry): entry is [string, Point] => isPoint(entry[1]))),
+    isChosen: isChosen === true,
+    byHand: toKeys(byHand),
     added: toKeys(added),
     hidden: toKeys(hidden),
     unfolded: toKeys(unfolded),
@@ -58,6 +64,22 @@ export function withPositions(layout: SheetLayout, positions: Iterable<readonly 
   return { ...layout, positions: { ...layout.positions, ...Object.fromEntries(rounded) } };
 }
 
+/** Places that a person gave. */
+export function withHandPlaced(layout: SheetLayout, positions: Iterable<readonly [NodeKey, Point]>): SheetLayout {
+  const placed = [...positions];
+  return { ...withPositions(layout, placed), byHand: [...new Set([...layout.byHand, ...placed.map(([key]) => key)])] };
+}
+
+/** Leaves these cards to the layout again. */
+export function withoutHandPlaced(layout: SheetLayout, keys: readonly NodeKey[]): SheetLayout {
+  return { ...layout, byHand: layout.byHand.filter((key) => !keys.includes(key)) };
+}
+
+/** A sheet that shows just these cards, without places. */
+export function makeChosenLayout(keys: readonly NodeKey[], positions: SheetLayout["positions"] = {}): SheetLayout {
+  return { ...EMPTY_LAYOUT, isChosen: true, added: [...new Set(keys)], positions };
+}
+
 /** Shows cards; one that was taken away before comes back. */
 export function withShown(layout: SheetLayout, keys: readonly NodeKey[]): SheetLayout {
   return {
@@ -72,6 +94,7 @@ export function withHidden(layout: SheetLayout, keys: readonly NodeKey[]): Sheet
   return {
     ...layout,
     positions,
+    byHand: layout.byHand.filter((key) => !keys.includes(key)),
     added: layout.added.filter((key) => !keys.includes(key)),
     hidden: [...new Set([...layout.hidden, ...keys])],
   };
@@ -82,8 +105,8 @@ export function withFoldToggled(layout: SheetLayout, key: NodeKey): SheetLayout 
   return { ...layout, unfolded: unfolded.includes(key) ? unfolded.filter((k) => k !== key) : [...unfolded, key] };
 }
 
-/** The cards of the sheet: the default choice with what somebody added and took away. */
+/** The cards of the sheet: the default choice, unless somebody chose all, with what was added and taken away. */
 export function chooseCards(defaults: readonly NodeKey[], layout: SheetLayout): NodeKey[] {
   const hidden = new Set(layout.hidden);
-  return [...new Set([...defaults, ...layout.added])].filter((key) => !hidden.has(key));
+  return [...new Set([...(layout.isChosen ? [] : defaults), ...layout.added])].filter((key) => !hidden.has(key));
 }

@@ -1,10 +1,11 @@
-import { memo, useMemo } from "react";
+import { memo, use, useMemo } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { getNodeName } from "../model/member-facts";
 import { useOpenModel, useView } from "../model/use-model";
 import { ReferenceLine } from "./reference-line";
-import { routeLines } from "./route-lines";
+import { FarContext } from "./far-context";
+import { formatPathData, routeLines } from "./route-lines";
 import { SHADOW, type Point, type Rect } from "./sheet-geometry";
 import type { Card, Scene } from "./sheet-scene";
 
@@ -21,6 +22,15 @@ export const SheetLines = memo(function SheetLines({ scene, space, rects, select
   const routes = useMemo(() => routeLines(scene.lines, rects), [scene.lines, rects]);
   const shadows = useMemo(() => getShadowPath(scene.cards, rects), [scene.cards, rects]);
   const lit = useLitCards(scene);
+  const isFar = use(FarContext);
+  if (isFar) {
+    return (
+      <svg className="sheet-lines" aria-hidden="true">
+        <path className="sheet-shadow" d={shadows} />
+        <path className="reference-line" d={routes.map((route) => formatPathData(route.points)).join("")} />
+      </svg>
+    );
+  }
   return (
     <svg className="sheet-lines">
       <path className="sheet-shadow" d={shadows} />

@@ -67,9 +67,11 @@ function useMenuEntries(context: Context, key: NodeKey | undefined): MenuEntry[]
       { kind: "rule" },
     );
   }
-  entries.push(...listViewEntries(context, key));
+  entries.push({ label: "Focus on this node", keys: "O", onSelect: () => control.focusOn(key) }, ...listViewEntries(context, key));
   const chosen = view.getState().selection.filter((k) => context.rects.has(k));
   if (chosen.length > 1) entries.push(...listAlignEntries(context, chosen));
+  const placed = (chosen.length > 1 ? chosen : [key]).filter((k) => control.byHand.has(k));
+  if (placed.length > 0) entries.push({ label: "Let the layout place it again", onSelect: () => control.release(placed) });
   if (scene.cards.some((card) => card.key === key)) entries.push({ label: "Take off this sheet", keys: "H", onSelect: () => control.hide(chosen.length > 1 ? chosen : [key]) });
   if (actions.mayChange(key)) {
     const many = view.getState().selection.length;
@@ -97,12 +99,12 @@ function listViewEntries({ space, scene, control }: Context, key: NodeKey): Menu
   const node = space.requireNode(key);
   const offers: [string, NodeKey[]][] = [
     ["Draw as a node of its own", [key]],
-    ["Draw its members", listMembers(space, key).map((member) => member.key)],
-    ["Draw its neighbours", listNeighbours(space, key)],
-    ["Draw where it is used", listUsers(space, key)],
-    ["Draw its supertypes", isTypeNode(node) ? listSupertypes(space, key) : []],
-    ["Draw its type", isTypeNode(node) ? [] : [findTypeDefinition(space, key)].filter((k) => k !== undefined)],
-    ["Draw its owner", [isTypeNode(node) ? undefined : findParent(space, key)].filter((k) => k !== undefined)],
+    ["Show members", listMembers(space, key).map((member) => member.key)],
+    ["Show neighbours", listNeighbours(space, key)],
+    ["Show where used", listUsers(space, key)],
+    ["Show supertypes", isTypeNode(node) ? listSupertypes(space, key) : []],
+    ["Show its type", isTypeNode(node) ? [] : [findTypeDefinition(space, key)].filter((k) => k !== undefined)],
+    ["Show its owner", [isTypeNode(node) ? undefined : findParent(space, key)].filter((k) => k !== undefined)],
   ];
   return offers.flatMap(([label, keys]) => {
     const missing = keys.filter((k) => !drawn.has(k) && space.getNode(k) !== undefined);

@@ -19,7 +19,9 @@ import {
 } from "../model/member-facts";
 import { findUnitSymbol } from "../model/analog-facts";
 import { formatLocalNodeId, getNamespaceLabel } from "../model/namespace-label";
+import type { Feed } from "../notation/ferrule-badge";
 import type { LineEnd } from "../notation/line-ends";
+import { findSourceField } from "../register/source-field";
 import { FOOT_HEIGHT, HEAD_HEIGHT, ROW_HEIGHT } from "./sheet-geometry";
 
 export type MemberRow = {
@@ -34,6 +36,8 @@ export type MemberRow = {
   readonly cardinality: string;
   /** Name of the type that the member comes from, where it is inherited. */
   readonly origin?: string;
+  /** Whether the model's mapping feeds it; absent where no mapping speaks of it. */
+  readonly feed?: Feed;
 };
 
 export type CardShape = "card" | "variable" | "oval" | "hexagon" | "signpost" | "trapezium";
@@ -76,6 +80,8 @@ export type Line = {
   readonly cardinality?: string;
   /** Row at which the line leaves its source's card. */
   readonly sourceRow?: number;
+  /** From a folder to what it organises: such lines come from above, on one bus. */
+  readonly isOrganized?: true;
 };
 
 export type Scene = { readonly cards: readonly Card[]; readonly lines: readonly Line[] };
@@ -153,6 +159,7 @@ function getInlineType(space: AddressSpace, type: NodeKey | undefined, shown: Re
 }
 
 function buildRow(space: AddressSpace, node: Node, origin?: string): MemberRow {
+  const feed = findSourceField(space, node)?.feed;
   const typeDefinition = node.nodeClass === "Object" ? findTypeDefinition(space, node.key) : undefined;
   return {
     key: node.key,
@@ -164,6 +171,7 @@ function buildRow(space: AddressSpace, node: Node, origin?: string): MemberRow {
     unit: node.nodeClass === "Variable" ? findUnitSymbol(space, node.key) : "",
     cardinality: getCardinality(findRuleName(space, node.key)),
     ...(origin === undefined ? {} : { origin }),
+    ...(feed === undefined ? {} : { feed }),
   };
 }
 
@@ -186,7 +194,7 @@ function measureCard(card: Omit<Card, "width" | "height">): { width: number; hei
 function measureRow(row: MemberRow): number {
   const name = row.name.length * WORD + (row.typeName ? (row.typeName.length + 2) * WORD : 0);
   const right = row.origin ? (row.origin.length + 5) * 6 : (row.dataType.length + row.unit.length) * MONO + 8;
-  return 106 + name + right;
+  return 106 + (row.feed === undefined ? 0 : 26) + name + right;
 }
 
 function clamp(value: number, low: number, high: number): number {
@@ -223,6 +231,7 @@ function buildLine(space: AddressSpace, edge: Edge): Line | undefined {
     to: end === "subtype" ? edge.source : edge.target,
     end,
     ...(says ? {} : { label: getNodeName(space, edge.type) }),
+    ...(edge.type === StandardReferenceType.Organizes ? { isOrganized: true as const } : {}),
     ...(cardinality === "" ? {} : { cardinality }),
   };
 }

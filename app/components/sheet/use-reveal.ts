@@ -12,11 +12,11 @@ const LEGIBLE = 0.5;
 const MARGIN = 28;
 
 /** Brings a node into sight when somebody asked for it: its card, or the card in whose rows it stands; a hidden one is drawn first. */
-export function useReveal(space: AddressSpace, scene: Scene, rects: ReadonlyMap<NodeKey, Rect>, control: SheetControl): void {
+export function useReveal(space: AddressSpace, scene: Scene, rects: ReadonlyMap<NodeKey, Rect>, control: SheetControl, seen: number): void {
   const { view } = useOpenModel();
   const revealed = useView((state) => state.revealed);
-  const answered = useRef(0);
-  const asked = useRef(0);
+  const answered = useRef(seen);
+  const asked = useRef(seen);
   const { setCenter, getViewport } = useReactFlow();
   const size = useStoreApi();
 

@@ -2,9 +2,11 @@ import { useReactFlow } from "@xyflow/react";
 import type { KeyboardEvent } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
+import { listSupertypes } from "~/domain/address-space/type-hierarchy";
 import { makeAddRequest } from "../model/add-request";
 import { findMemberOwner } from "../model/member-owner";
 import { useOpenModel } from "../model/use-model";
+import { listNeighbours, listUsers } from "./neighbours";
 import type { SheetControl } from "./sheet-control";
 import type { Point, Rect } from "./sheet-geometry";
 import type { Scene } from "./sheet-scene";
@@ -66,6 +68,11 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
     if (parent !== undefined && actions.canEdit) control.add(makeAddRequest("Variable", { parent }));
   }
 
+  function showAround(list: (key: NodeKey) => readonly NodeKey[]): void {
+    const found = view.getState().selection.flatMap(list);
+    if (found.length > 0) control.show(found);
+  }
+
   const plain: Readonly<Record<string, () => void>> = {
     F2: () => {
       const key = view.getState().selection.at(-1);
@@ -82,6 +89,13 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
     },
     h: () => control.hide(view.getState().selection.filter((key) => rects.has(key))),
     d: () => control.show(view.getState().selection),
+    o: () => {
+      const key = view.getState().selection.at(-1);
+      if (key !== undefined) control.focusOn(key);
+    },
+    n: () => showAround((key) => listNeighbours(space, key)),
+    u: () => showAround((key) => listUsers(space, key)),
+    s: () => showAround((key) => listSupertypes(space, key)),
     f: () => void fitView({ duration: 180, padding: 0.08, maxZoom: 1 }),
     "+": () => void zoomIn({ duration: 90 }),
     "-": () => void zoomOut({ duration: 90 }),

@@ -1,5 +1,5 @@
 import { useViewport } from "@xyflow/react";
-import { useEffect, useState, type RefObject } from "react";
+import { useEffect, useMemo, useState, type RefObject } from "react";
 import { formatZoneColumn, formatZoneRow, ZONE_HEIGHT, ZONE_WIDTH, type Point } from "./sheet-geometry";
 
 type Side = "top" | "bottom" | "left" | "right";
@@ -13,15 +13,23 @@ export function ZoneStrip({ side, origin, canvas }: { side: Side; origin: Point;
   const offset = isRow ? viewport.x + origin.x * viewport.zoom : viewport.y + origin.y * viewport.zoom;
   const step = getStep((isRow ? ZONE_WIDTH : ZONE_HEIGHT) * viewport.zoom);
   const first = Math.floor(-offset / step.pixels);
-  const count = Math.ceil(length / step.pixels) + 1;
-  const labels = Array.from({ length: Math.min(count, 60) }, (_, index) => first + index);
-  return (
-    <div className={isRow ? "zone-strip is-row" : "zone-strip is-column"} style={isRow ? { gridRow: side === "top" ? 1 : 3 } : { gridColumn: side === "left" ? 1 : 3 }} aria-hidden="true">
-      {labels.map((index) => (
-        <span key={index} style={isRow ? { left: index * step.pixels + offset, width: step.pixels } : { top: index * step.pixels + offset, height: step.pixels }}>
+  // While the drawing only moves, the labels are kept and their band is shifted: that costs no layout.
+  const labels = useMemo(() => {
+    const count = Math.min(60, Math.ceil(length / step.pixels) + 2);
+    return Array.from({ length: count }, (_, place) => {
+      const index = first + place;
+      const at = place * step.pixels;
+      return (
+        <span key={index} style={isRow ? { left: at, width: step.pixels } : { top: at, height: step.pixels }}>
           {isRow ? formatZoneColumn(index * step.zones) : formatZoneRow(index * step.zones)}
         </span>
-      ))}
+      );
+    });
+  }, [first, length, step.pixels, step.zones, isRow]);
+  const shift = Math.round(first * step.pixels + offset);
+  return (
+    <div className={isRow ? "zone-strip is-row" : "zone-strip is-column"} style={isRow ? { gridRow: side === "top" ? 1 : 3 } : { gridColumn: side === "left" ? 1 : 3 }} aria-hidden="true">
+      <div style={{ transform: isRow ? `translateX(${shift}px)` : `translateY(${shift}px)` }}>{labels}</div>
     </div>
   );
 }

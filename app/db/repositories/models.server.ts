@@ -222,6 +222,10 @@ export async function saveSheet(
   return result.rowsAffected === 1;
 }
 
+export function placeSheetStatement(id: string, position: number) {
+  return getDatabase().update(sheet).set({ position }).where(eq(sheet.id, id));
+}
+
 export function removeSheetStatement(id: string) {
   return getDatabase().delete(sheet).where(eq(sheet.id, id));
 }

@@ -48,8 +48,10 @@ export async function panAndZoom(page: Page): Promise<number[]> {
     };
     const pan = async (steps: number) => {
       mouse(pane, "mousedown", 0, 0, 1);
+      // A figure of eight that ends where it began.
       for (let at = 1; at <= steps; at++) {
-        await step(() => mouse(window, "mousemove", Math.sin(at / 9) * 320, Math.sin(at / 14) * 240, 1));
+        const turn = (2 * Math.PI * at) / steps;
+        await step(() => mouse(window, "mousemove", Math.sin(2 * turn) * 320, Math.sin(turn) * 240, 1));
       }
       mouse(window, "mouseup", 0, 0, 0);
     };

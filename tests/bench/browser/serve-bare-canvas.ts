@@ -4,7 +4,7 @@ import { createServer } from "node:http";
 import { tmpdir } from "node:os";
 import { extname, join, normalize } from "node:path";
 import { build } from "vite";
-import { projectRoot } from "../../support/source-files";
+import { findProjectRoot } from "~/utils/project-root.server";
 
 const TYPES: Readonly<Record<string, string>> = { ".html": "text/html", ".js": "text/javascript", ".css": "text/css" };
 
@@ -15,7 +15,7 @@ export async function serveBareCanvas(): Promise<BareCanvas> {
   await build({
     configFile: false,
     logLevel: "error",
-    root: join(projectRoot, "tests/bench/browser/bare-canvas"),
+    root: join(findProjectRoot(), "tests/bench/browser/bare-canvas"),
     oxc: { jsx: { runtime: "automatic" } },
     build: { outDir: folder, emptyOutDir: true },
   });
