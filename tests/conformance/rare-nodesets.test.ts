@@ -126,12 +126,28 @@ describe("the cluttered file", () => {
     }
   });
 
+  it("writes booleans and numbers as they stood, until an edit changes them", () => {
+    const { xml } = writeNodeSet(content);
+    for (const piece of ['WriteMask="007"', 'IsForward="true"', 'IsForward="0"', "1000.0", 'Historizing="0"', 'AccessRestrictions="03"'])
+      expect(xml).toContain(piece);
+    expect(nodeNamed(content, "Spelled")).toMatchObject({ writeMask: 7, hasNoPermissions: true, eventNotifier: 1 });
+    const space = AddressSpace.of([required], buildLayer(content.header, content.nodes));
+    const key = nodeNamed(content, "Slow").key;
+    const faster: Operation = { kind: "setAttribute", key, attribute: "minimumSamplingInterval", value: 10 };
+    const never: Operation = { kind: "setAttribute", key, attribute: "historizing" };
+    const edited = getValue(applyOperations(space, [faster, never]));
+    const after = writeNodeSet({ header: edited.own.header, nodes: edited.listOwnNodes() }).xml;
+    expect(after).toContain('BrowseName="1:Slow" ValueRank="-01" MinimumSamplingInterval="10"');
+    expect(after).not.toContain("Historizing");
+  });
+
   it("gives the same bytes after an edit was undone, and after a node was deleted and came back", () => {
     const space = AddressSpace.of([required], buildLayer(content.header, content.nodes));
     const owner = nodeNamed(content, "Owner");
     const rename: Operation = { kind: "setAttribute", key: owner.key, attribute: "displayName", value: [{ text: "New" }] };
     const speed: Operation = { kind: "removeNode", key: nodeNamed(content, "Speed").key };
-    const edited = getValue(applyWithInverse(space, [rename, speed]));
+    const type: Operation = { kind: "removeReference", source: owner.key, type: "i=40" as NodeKey, target: "i=58" as NodeKey };
+    const edited = getValue(applyWithInverse(space, [rename, speed, type]));
     const back = getValue(applyOperations(edited.space, operationsSchema.parse(edited.inverse)));
     expect(writeNodeSet({ header: back.own.header, nodes: back.listOwnNodes() }).xml).toBe(writeNodeSet(content).xml);
   });

@@ -48,7 +48,10 @@ export type XmlText = {
  */
 export type Leftover = {
   readonly at: string;
-  /** As written, in the order of the file. */
+  /**
+   * As written, in the order of the file. Of an element that has an object of its own, spellings of attributes that we would
+   * write otherwise (`1` for true, `1000.0`); they hold while the attribute has the value that they say.
+   */
   readonly attributes?: Readonly<Record<string, string>>;
   readonly elements?: readonly XmlText[];
   /** Comments, processing instructions and stray text, as they stand in the file: before the element. */

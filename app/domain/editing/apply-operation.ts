@@ -157,16 +157,24 @@ type Insertion = { readonly key: NodeKey; readonly reference: DeclaredReference;
 
 function listDeclaringEnds(space: AddressSpace, operation: Of<"addReference">): Insertion[] {
   const { source, type, target, declaredAt, sourceIndex, targetIndex, repeats } = operation;
+  const { sourceAttributes, targetAttributes } = operation;
   const insertions: Insertion[] = [];
   if (declaredAt !== "target" && space.isOwn(source)) {
-    const reference = { type, target, isForward: true };
+    const reference = withAttributes({ type, target, isForward: true }, sourceAttributes);
     for (const at of [sourceIndex, ...(repeats?.source ?? [])]) insertions.push({ key: source, reference, at });
   }
   if (declaredAt !== "source" && space.isOwn(target)) {
-    const reference = { type, target: source, isForward: false };
+    const reference = withAttributes({ type, target: source, isForward: false }, targetAttributes);
     for (const at of [targetIndex, ...(repeats?.target ?? [])]) insertions.push({ key: target, reference, at });
   }
   return insertions;
+}
+
+function withAttributes(
+  reference: DeclaredReference,
+  otherAttributes: DeclaredReference["otherAttributes"],
+): DeclaredReference {
+  return otherAttributes ? { ...reference, otherAttributes } : reference;
 }
 
 function collectInsertions(insertions: readonly Insertion[]): Map<NodeKey, Insertion[]> {

@@ -41,7 +41,9 @@ function isObjectOf(required: Shape, optional: Shape = {}): Test {
   return (value) =>
     isPlainObject(value) &&
     Object.entries(required).every(([name, test]) => test(value[name])) &&
-    Object.entries(value).every(([name, part]) => name in required || (part === undefined ? name in optional : optional[name]?.(part)));
+    Object.entries(value).every(
+      ([name, part]) => name in required || (part === undefined ? name in optional : optional[name]?.(part)),
+    );
 }
 
 function isRecordOf(isName: (name: string) => boolean): Test {
@@ -80,7 +82,9 @@ const TESTS = {
   executable: isBoolean,
   userExecutable: isBoolean,
   methodDeclaration: isKey,
-  argumentDescriptions: isListOf(isObjectOf({ name: isText, description: isLocalizedTexts } satisfies Record<keyof ArgumentDescription, Test>)),
+  argumentDescriptions: isListOf(
+    isObjectOf({ name: isText, description: isLocalizedTexts } satisfies Record<keyof ArgumentDescription, Test>),
+  ),
   isAbstract: isBoolean,
   purpose: isOneOf("Normal", "ServicesOnly", "CodeGenerator"),
   symmetric: isBoolean,

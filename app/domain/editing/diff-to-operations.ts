@@ -32,7 +32,12 @@ type Content = Pick<NodeSetContent, "header" | "nodes">;
  * `source-text.reference-kind`, `source-text.node-twice`, and those of the operations, at the node that they concern.
  */
 export function diffToOperations(space: AddressSpace, content: Content): Result<TextDifference> {
-  const written = readNodeSet(writeNodeSet({ header: space.own.header, nodes: space.listOwnNodes() }, { findNodeId: (key) => space.getNode(key)?.nodeId }).xml);
+  const written = readNodeSet(
+    writeNodeSet(
+      { header: space.own.header, nodes: space.listOwnNodes() },
+      { findNodeId: (key) => space.getNode(key)?.nodeId },
+    ).xml,
+  );
   if (!written.ok) return written;
   const keys = new KeyMap(space);
   const before = indexNodes(written.value.nodes.map((node) => keys.toSpace(node)));
@@ -79,7 +84,13 @@ class KeyMap {
   }
 
   toSpace(node: Node): Node {
-    return replaceKeys({ ...node, references: node.references.map((r) => ({ ...r, type: this.find(r.type), target: this.find(r.target) })) }, this);
+    return replaceKeys(
+      {
+        ...node,
+        references: node.references.map((r) => ({ ...r, type: this.find(r.type), target: this.find(r.target) })),
+      },
+      this,
+    );
   }
 }
 
@@ -89,9 +100,12 @@ function replaceKeys(node: Node, keys: KeyMap): Node {
   for (const name of ["parent", "dataType", "methodDeclaration"]) {
     if (typeof changed[name] === "string") changed[name] = keys.find(changed[name] as NodeKey);
   }
-  if (node.rolePermissions) changed.rolePermissions = node.rolePermissions.map((r) => ({ ...r, role: keys.find(r.role) }));
+  if (node.rolePermissions)
+    changed.rolePermissions = node.rolePermissions.map((r) => ({ ...r, role: keys.find(r.role) }));
   if (node.nodeClass === "DataType" && node.definition) {
-    const fields = node.definition.fields.map((field) => (field.dataType === undefined ? field : { ...field, dataType: keys.find(field.dataType) }));
+    const fields = node.definition.fields.map((field) =>
+      field.dataType === undefined ? field : { ...field, dataType: keys.find(field.dataType) },
+    );
     changed.definition = { ...node.definition, fields };
   }
   return changed as unknown as Node;
@@ -128,7 +142,12 @@ function diffAttributes(plan: Plan, old: Node | undefined, node: Node): void {
   for (const name of new Set([...Object.keys(old), ...Object.keys(node)])) {
     if (NOT_ATTRIBUTES.has(name) || isSame(left?.[name], right?.[name])) continue;
     const value = right?.[name];
-    plan.do(node.key, { kind: "setAttribute", key: node.key, attribute: name as AttributeName, ...(value === undefined ? {} : { value }) });
+    plan.do(node.key, {
+      kind: "setAttribute",
+      key: node.key,
+      attribute: name as AttributeName,
+      ...(value === undefined ? {} : { value }),
+    });
   }
   if (!isSame(listOdd(old), listOdd(node))) {
     plan.problems.push(problem("source-text.reference-kind", { name: node.browseName.name }, { node: node.key }));
@@ -151,7 +170,11 @@ function isSame(a: unknown, b: unknown): boolean {
 function sorted(value: unknown): unknown {
   if (Array.isArray(value)) return value.map(sorted);
   if (typeof value !== "object" || value === null) return value;
-  return Object.fromEntries(Object.entries(value).sort(([a], [b]) => (a < b ? -1 : 1)).map(([name, member]) => [name, sorted(member)]));
+  return Object.fromEntries(
+    Object.entries(value)
+      .sort(([a], [b]) => (a < b ? -1 : 1))
+      .map(([name, member]) => [name, sorted(member)]),
+  );
 }
 
 /** References that no edge stands for: to another server, or with attributes that the schema does not know. */
@@ -171,7 +194,9 @@ function toEdgeId({ source, type, target }: Edge): string {
   return `${source}\n${type}\n${target}`;
 }
 
-function indexEdges(nodes: ReadonlyMap<NodeKey, Node>): Map<string, { edge: Edge; source: number[]; target: number[] }> {
+function indexEdges(
+  nodes: ReadonlyMap<NodeKey, Node>,
+): Map<string, { edge: Edge; source: number[]; target: number[] }> {
   const found = new Map<string, { edge: Edge; source: number[]; target: number[] }>();
   for (const node of nodes.values()) {
     node.references.forEach((reference, index) => {
@@ -220,7 +245,9 @@ class Plan {
     const applied = applyOperation(this.space, operation);
     if (!applied.ok) {
       // Told at the node whose text asked for it; what is missing is named in the sentence.
-      this.problems.push(...applied.problems.map((found) => (key === undefined ? found : { ...found, at: { ...found.at, node: key } })));
+      this.problems.push(
+        ...applied.problems.map((found) => (key === undefined ? found : { ...found, at: { ...found.at, node: key } })),
+      );
       return false;
     }
     this.operations.push(operation);
@@ -231,7 +258,9 @@ class Plan {
 
   /** With the references that can stand at once; those to nodes that come later follow as edges. */
   addNode(node: Node, edges: readonly EdgeChange[]): void {
-    const bothEnds = new Set(edges.filter(({ places }) => places && places.source.length > 0 && places.target.length > 0).map(({ id }) => id));
+    const bothEnds = new Set(
+      edges.filter(({ places }) => places && places.source.length > 0 && places.target.length > 0).map(({ id }) => id),
+    );
     const references = node.references.filter((reference) => {
       if (isOdd(reference)) return true;
       const { type, target, isForward } = reference;
@@ -253,7 +282,8 @@ class Plan {
       const node = own.nodes.get(key);
       return node !== undefined && declares(node, edge);
     });
-    if (edge.places || isDeclaredByLasting) this.do(lasting[0] ?? source, { kind: "removeReference", source, type, target });
+    if (edge.places || isDeclaredByLasting)
+      this.do(lasting[0] ?? source, { kind: "removeReference", source, type, target });
   }
 
   addEdge({ source, type, target, places, id }: EdgeChange): void {
@@ -261,7 +291,8 @@ class Plan {
     const [sourceIndex, ...moreSource] = places.source;
     const [targetIndex, ...moreTarget] = places.target;
     const declaredAt: DeclaredAt = targetIndex === undefined ? "source" : sourceIndex === undefined ? "target" : "both";
-    const repeats = moreSource.length + moreTarget.length > 0 ? { repeats: { source: moreSource, target: moreTarget } } : {};
+    const repeats =
+      moreSource.length + moreTarget.length > 0 ? { repeats: { source: moreSource, target: moreTarget } } : {};
     this.do(this.space.isOwn(source) ? source : target, {
       kind: "addReference",
       source,
@@ -296,11 +327,19 @@ class Plan {
         if (going.has(edge.source) && going.has(edge.target)) edges.set(toEdgeId(edge), edge);
       }
     }
-    for (const { source, type, target } of edges.values()) this.do(undefined, { kind: "removeReference", source, type, target });
+    for (const { source, type, target } of edges.values())
+      this.do(undefined, { kind: "removeReference", source, type, target });
     return edges.size > 0;
   }
 }
 
 function declares(node: Node, edge: Edge): boolean {
-  return node.references.some((r) => !isOdd(r) && r.type === edge.type && (r.isForward ? node.key === edge.source && r.target === edge.target : node.key === edge.target && r.target === edge.source));
+  return node.references.some(
+    (r) =>
+      !isOdd(r) &&
+      r.type === edge.type &&
+      (r.isForward
+        ? node.key === edge.source && r.target === edge.target
+        : node.key === edge.target && r.target === edge.source),
+  );
 }

@@ -66,6 +66,8 @@ function invertRemoveReference(space: AddressSpace, { source, type, target }: Ed
   const [sourceIndex, ...sourceRepeats] = listPlaces(space, source, edge, true);
   const [targetIndex, ...targetRepeats] = listPlaces(space, target, edge, false);
   const declaredAt: DeclaredAt = targetIndex === undefined ? "source" : sourceIndex === undefined ? "target" : "both";
+  const sourceAttributes = findAttributes(space, source, sourceIndex);
+  const targetAttributes = findAttributes(space, target, targetIndex);
   const isDangling = [source, type, target].some((key) => !space.getNode(key));
   return {
     kind: "addReference",
@@ -73,11 +75,17 @@ function invertRemoveReference(space: AddressSpace, { source, type, target }: Ed
     declaredAt,
     ...(sourceIndex === undefined ? {} : { sourceIndex }),
     ...(targetIndex === undefined ? {} : { targetIndex }),
+    ...(sourceAttributes ? { sourceAttributes } : {}),
+    ...(targetAttributes ? { targetAttributes } : {}),
     ...(sourceRepeats.length + targetRepeats.length > 0
       ? { repeats: { source: sourceRepeats, target: targetRepeats } }
       : {}),
     ...(isDangling ? { isDangling: true } : {}),
   };
+}
+
+function findAttributes(space: AddressSpace, key: NodeKey, index: number | undefined) {
+  return index === undefined ? undefined : space.own.nodes.get(key)?.references[index]?.otherAttributes;
 }
 
 function listPlaces(space: AddressSpace, key: NodeKey, edge: Edge, isForward: boolean): number[] {

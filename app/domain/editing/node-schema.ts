@@ -20,9 +20,7 @@ import type { AttributeName } from "./operation";
 
 const MAX_TEXT = 16_000_000;
 /** Characters that no XML file can hold (XML 1.0 §2.2): with one of these a model could not be exported any more. */
-const text = z
-  .string()
-  .check(z.maxLength(MAX_TEXT), z.refine(isWritableText, "Holds characters that XML cannot hold"));
+const text = z.string().check(z.maxLength(MAX_TEXT), z.refine(isWritableText, "Holds characters that XML cannot hold"));
 const someText = text.check(z.minLength(1));
 const natural = z.int().check(z.minimum(0));
 const uint16 = z.int().check(z.minimum(0), z.maximum(65_535));
@@ -52,13 +50,10 @@ const qualifiedName = z.strictObject({ namespaceUri: someText, name: text });
 const localizedText = z.strictObject({ locale: z.optional(text), text });
 const localizedTexts = z.array(localizedText);
 const XML_NAME = /^[\p{L}_][\p{L}\p{N}_.-]*(?::[\p{L}_][\p{L}\p{N}_.-]*)?$/u;
-const otherAttributes = z.record(z.string().check(z.regex(XML_NAME)), text);
-const prefixes = z.record(
-  z.string().check(z.refine((name) => name === "" || XML_NAME.test(name))),
-  text,
-);
+export const otherAttributesSchema = z.record(z.string().check(z.regex(XML_NAME)), text);
+const prefixes = z.record(z.string().check(z.refine((name) => name === "" || XML_NAME.test(name))), text);
 const xmlText = z
-  .strictObject({ xml: text, prefixes: z.optional(prefixes), attributes: z.optional(otherAttributes) })
+  .strictObject({ xml: text, prefixes: z.optional(prefixes), attributes: z.optional(otherAttributesSchema) })
   .check(z.refine((value) => readFragment(value).ok, "Is not well-formed XML"));
 const rolePermission = z.strictObject({ role: nodeKeySchema, permissions: uint32 });
 
@@ -67,14 +62,14 @@ const declaredReference = z.strictObject({
   target: nodeKeySchema,
   isForward: z.boolean(),
   serverUri: z.optional(text),
-  otherAttributes: z.optional(otherAttributes),
+  otherAttributes: z.optional(otherAttributesSchema),
 });
 /** As the reader keeps it: a comment, a processing instruction, or stray text. */
 const mark = text.check(z.refine((value) => readFragment({ xml: value }).ok, "Is not well-formed XML"));
 const leftovers = z.array(
   z.strictObject({
     at: text,
-    attributes: z.optional(otherAttributes),
+    attributes: z.optional(otherAttributesSchema),
     elements: z.optional(z.array(xmlText)),
     before: z.optional(z.array(mark)),
     inside: z.optional(z.array(mark)),
@@ -93,7 +88,7 @@ const dataTypeField = z.strictObject({
   value: z.optional(z.int()),
   isOptional: z.optional(z.boolean()),
   allowSubTypes: z.optional(z.boolean()),
-  otherAttributes: z.optional(otherAttributes),
+  otherAttributes: z.optional(otherAttributesSchema),
   otherElements: z.optional(z.array(xmlText)),
 });
 
@@ -104,7 +99,7 @@ const dataTypeDefinition = z.strictObject({
   isOptionSet: z.optional(z.boolean()),
   baseType: z.optional(text),
   fields: z.array(dataTypeField),
-  otherAttributes: z.optional(otherAttributes),
+  otherAttributes: z.optional(otherAttributesSchema),
   otherElements: z.optional(z.array(xmlText)),
 });
 
@@ -124,7 +119,7 @@ const baseShape = {
   hasNoPermissions: z.optional(z.boolean()),
   rolePermissions: z.optional(z.array(rolePermission)),
   extensions: z.optional(z.array(xmlText)),
-  otherAttributes: z.optional(otherAttributes),
+  otherAttributes: z.optional(otherAttributesSchema),
   otherElements: z.optional(z.array(xmlText)),
   leftovers: z.optional(leftovers),
 };
@@ -206,7 +201,7 @@ export const modelEntrySchema: z.ZodMiniType<ModelEntry> = z.strictObject({
   accessRestrictions: z.optional(uint16),
   rolePermissions: z.optional(z.array(rolePermission)),
   requiredModels: z.array(z.lazy(() => modelEntrySchema)),
-  otherAttributes: z.optional(otherAttributes),
+  otherAttributes: z.optional(otherAttributesSchema),
   otherElements: z.optional(z.array(xmlText)),
 });
 
@@ -235,7 +230,7 @@ export const headerShape = {
   extensions: z.optional(z.array(xmlText)),
   lastModified: z.optional(text),
   headComments: z.optional(z.array(text)),
-  rootAttributes: z.optional(otherAttributes),
+  rootAttributes: z.optional(otherAttributesSchema),
   otherElements: z.optional(z.array(xmlText)),
   leftovers: z.optional(leftovers),
   idPolicy: z.optional(idPolicySchema),

@@ -7,7 +7,7 @@ import { mappingParts } from "../address-space/mapping-entry";
 import type { ModelHeader } from "../address-space/model-header";
 import { mappingPartSchemas } from "../mapping/mapping-parts";
 import { isRequiredAttribute } from "./attribute-names";
-import { attributeSchemas, headerShape, nodeIdSchema, nodeKeySchema, nodeSchema } from "./node-schema";
+import { attributeSchemas, headerShape, nodeIdSchema, nodeKeySchema, nodeSchema, otherAttributesSchema } from "./node-schema";
 import type { AttributeName, Operation } from "./operation";
 
 const place = z.int().min(0);
@@ -66,6 +66,8 @@ export const operationSchema: z.ZodType<Operation> = z.discriminatedUnion("kind"
     declaredAt: z.enum(["source", "target", "both"]),
     sourceIndex: place.optional(),
     targetIndex: place.optional(),
+    sourceAttributes: z.optional(otherAttributesSchema),
+    targetAttributes: z.optional(otherAttributesSchema),
     repeats: z.strictObject({ source: z.array(place), target: z.array(place) }).optional(),
     isDangling: z.literal(true).optional(),
   }),

@@ -84,6 +84,9 @@ export type Operation =
       readonly sourceIndex?: number;
       readonly targetIndex?: number;
       readonly repeats?: { readonly source: readonly number[]; readonly target: readonly number[] };
+      /** Attributes that the schema does not know, as `DeclaredReference.otherAttributes`, at either end. */
+      readonly sourceAttributes?: Readonly<Record<string, string>>;
+      readonly targetAttributes?: Readonly<Record<string, string>>;
       readonly isDangling?: true;
     }
   | { readonly kind: "removeReference"; readonly source: NodeKey; readonly type: NodeKey; readonly target: NodeKey }

@@ -40,8 +40,10 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "type.no-supertype": "{node} is not a type that one can derive from.",
   "type.inverse-name-missing": "{name} needs an inverse name, or to be symmetric (OPC 10000-3 §5.3.2).",
 
-  "source-text.class-changed": "{name} was of class {from} and cannot become {to}. Give the new node a NodeId of its own.",
-  "source-text.reference-kind": "A reference of {name} to another server, or with attributes that the schema does not know, cannot be changed here.",
+  "source-text.class-changed":
+    "{name} was of class {from} and cannot become {to}. Give the new node a NodeId of its own.",
+  "source-text.reference-kind":
+    "A reference of {name} to another server, or with attributes that the schema does not know, cannot be changed here.",
   "source-text.node-twice": "The text holds {nodeId} twice.",
   "roll-out.pattern": "“{pattern}” gives every machine the same NodeId: write {name} or {serial} in it.",
   "roll-out.node-id-taken": "The NodeId {nodeId} would be given twice. Choose another name or pattern.",
@@ -147,7 +149,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "enumeration.value-range": "{name}: {value} is not a whole number of 32 bits.",
   "data-type.no-data-type": "{node} is not a DataType.",
   "data-type.own-subtype": "{node} is below this type, so it cannot stand above it.",
-  "data-type.other-kind": "{node} and {supertype} are of different kinds; a structure stays a structure, an enumeration an enumeration.",
+  "data-type.other-kind":
+    "{node} and {supertype} are of different kinds; a structure stays a structure, an enumeration an enumeration.",
   "structure.no-structure": "{node} is not a structure.",
   "structure.supertype": "{node} is not below Structure.",
   "structure.name-taken": "Two fields are called “{name}”.",
@@ -165,7 +168,8 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "model.metadata-exists": "The metadata of {uri} are there already.",
   "model.no-row": "The model has no row in its Models table.",
   "model.required-in-use": "{uri} is still used by {count} nodes of this model.",
-  "workbook.too-large": "The workbook is larger than {limit} MB (unpacked, where that is more). Keep only the sheet with the list.",
+  "workbook.too-large":
+    "The workbook is larger than {limit} MB (unpacked, where that is more). Keep only the sheet with the list.",
   "workbook.old-format": "The workbook has the old format (XLS) or a password. Save it as XLSX without one.",
   "workbook.unreadable": "The file is no workbook that can be read (XLSX). Save it anew, or paste its cells.",
   "signal-list.empty": "The list has no rows.",

@@ -196,7 +196,8 @@ export class LeafReader {
   #withRarities(reference: DeclaredReference, serverUri: string | undefined): DeclaredReference {
     let others: Record<string, string> | undefined;
     for (const name in this.#attributes) {
-      if (name === "ReferenceType" || name === "IsForward" || name === "xmlns") continue;
+      if (name === "ReferenceType" || name === "xmlns") continue;
+      if (name === "IsForward" && this.#attributes[name] === "false") continue;
       (others ??= {})[name] = this.#attributes[name] ?? "";
     }
     if (others === undefined && serverUri === undefined) return reference;

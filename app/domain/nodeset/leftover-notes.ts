@@ -4,11 +4,12 @@
  * until there is something to note.
  */
 import type { Leftover, XmlText } from "../address-space/node";
+import { DEFINITION_ATTRIBUTES, FIELD_ATTRIBUTES, MODEL_ATTRIBUTES, NODE_ATTRIBUTES } from "./attribute-tables";
 import { LeftoverBuilder } from "./leftover-builder";
 import type { LeafReader } from "./leaf-reader";
 import { BEHIND_ROOT, joinPath, toStep } from "./leftover-path";
 import type { ReadContext } from "./read-context";
-import { listKept } from "./read-attributes";
+import { listKept, listOddSpellings } from "./read-attributes";
 import { findPath, isTable, type State } from "./reader-states";
 import type { Attributes } from "./xml/scan-xml";
 
@@ -49,7 +50,8 @@ export class LeftoverNotes {
       if (this.#marks.length > 0) this.#beforeLeaf = this.takeMarks();
       return;
     }
-    const kept = isTable(state) ? listKept(attributes) : undefined;
+    const isOdd = this.#context.takeOddSpelling();
+    const kept = isTable(state) ? listKept(attributes) : isOdd ? this.#listSpellings(state, attributes) : undefined;
     if (this.#marks.length === 0 && !kept) return;
     this.#note({ at: this.#path(), ...(kept ? { attributes: kept } : {}), before: this.takeMarks() });
   }
@@ -94,6 +96,14 @@ export class LeftoverNotes {
   /** The file ends. */
   finish(): void {
     if (this.#marks.length > 0) this.#context.header.leftovers.note({ at: BEHIND_ROOT, inside: this.takeMarks() });
+  }
+
+  #listSpellings(state: State, attributes: Attributes): Record<string, string> | undefined {
+    const nodeClass = this.#context.node?.fields.nodeClass;
+    if (state === "node") return nodeClass && listOddSpellings(attributes, NODE_ATTRIBUTES[nodeClass]);
+    if (state === "field") return listOddSpellings(attributes, FIELD_ATTRIBUTES);
+    if (state === "definition") return listOddSpellings(attributes, DEFINITION_ATTRIBUTES);
+    return state === "model" ? listOddSpellings(attributes, MODEL_ATTRIBUTES) : undefined;
   }
 
   #path(): string {

@@ -31,6 +31,11 @@ export class LeftoverWriter {
     return (this.#leftovers.get(at)?.before ?? []).map((mark) => `${indent}${mark}\n`).join("");
   }
 
+  /** How attributes of an element that has an object of its own were written; see `Leftover.attributes`. */
+  spellings(at: string): Readonly<Record<string, string>> | undefined {
+    return this.#leftovers.get(at)?.attributes;
+  }
+
   attributes(at: string): string {
     return Object.entries(this.#leftovers.get(at)?.attributes ?? {})
       .map(([name, value]) => ` ${name}="${escapeAttribute(value)}"`)

@@ -7,6 +7,8 @@ export type AttributeContext = {
   /** Resolves a NodeId or alias; undefined when it cannot, which is then reported already. */
   toKey(text: string, attribute: string): NodeKey | undefined;
   reportValue(attribute: string, value: string, expected: string): void;
+  /** Set when an attribute is not written as we would write it: `1` for true, `1000.0`. */
+  hasOddSpelling: boolean;
 };
 
 const INTEGER = /^[+-]?\d{1,15}$/;
@@ -37,7 +39,10 @@ export function readAttributes(
     const text = attributes[name] ?? "";
     const spec = table.get(name);
     const value = spec && parseAttribute(name, spec.type, text, context);
-    if (spec && value !== undefined) target[spec.field] = value;
+    if (spec && value !== undefined) {
+      target[spec.field] = value;
+      if (typeof value !== "string" && String(value) !== text) context.hasOddSpelling = true;
+    }
     else (others ??= {})[name] = text;
   }
   return others;
@@ -90,6 +95,25 @@ function oneOf(name: string, text: string, values: readonly string[], context: A
 function refuse(name: string, text: string, expected: string, context: AttributeContext): undefined {
   context.reportValue(name, text, expected);
   return undefined;
+}
+
+/** Of the attributes of a table those that are not written as we would write them, as they stand. */
+export function listOddSpellings(attributes: Attributes, table: AttributeTable): Record<string, string> | undefined {
+  let odd: Record<string, string> | undefined;
+  for (const name in attributes) {
+    const spec = table.get(name);
+    const text = attributes[name] ?? "";
+    const value = spec && readSpelling(text, spec.type);
+    if (value !== undefined && String(value) !== text) (odd ??= {})[name] = text;
+  }
+  return odd;
+}
+
+/** What the text of a boolean or a number says; undefined for other types and for what cannot be read. */
+export function readSpelling(text: string, type: AttributeType): boolean | number | undefined {
+  if (type === "boolean") return ({ true: true, "1": true, false: false, "0": false } as const)[text.trim()];
+  if (type === "double") return DOUBLE.test(text.trim()) ? Number(text) : undefined;
+  return type in RANGES && INTEGER.test(text.trim()) ? Number(text) : undefined;
 }
 
 /** Attributes to keep as they are, but the known ones; the default namespace is the writer's business. */

@@ -46,6 +46,7 @@ export class ReadContext {
     this.header = new HeaderBuilder((found, offset) => this.report(found, offset));
     this.#positions = new PositionCounter(source);
     this.#attributeContext = {
+      hasOddSpelling: false,
       toKey: (text, attribute) => this.toKey(text, this.#elementOffset, attribute),
       reportValue: (attribute, value, expected) => this.reportValue(attribute, value, expected, this.#elementOffset),
     };
@@ -65,6 +66,13 @@ export class ReadContext {
   ): Readonly<Record<string, string>> | undefined {
     this.#elementOffset = offset;
     return readAttributes(attributes, table, handled, target as Record<string, unknown>, this.#attributeContext);
+  }
+
+  /** Whether an element was read since the last question whose attributes are not written as we would write them. */
+  takeOddSpelling(): boolean {
+    const isOdd = this.#attributeContext.hasOddSpelling;
+    if (isOdd) this.#attributeContext.hasOddSpelling = false;
+    return isOdd;
   }
 
   toKey(text: string, offset: number, attribute?: string): NodeKey | undefined {

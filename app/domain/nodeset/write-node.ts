@@ -21,6 +21,7 @@ import type { IdWriter } from "./id-writer";
 import { joinPath, nameReference } from "./leftover-path";
 import { LeftoverWriter, writeTable } from "./leftover-writer";
 import { writeAround, writeWholeElement, type Declared } from "./write-fragments";
+import { readSpelling } from "./read-attributes";
 import { escapeAttribute, escapeText } from "./xml/escape";
 
 export type WriteContext = {
@@ -41,12 +42,12 @@ export function writeBeforeNode(node: Node): string {
 export function writeNode(node: Node, context: WriteContext): string {
   const { ids, prefix } = context;
   const element = `${prefix}UA${node.nodeClass}`;
+  const declared = withNodeDeclarations(context.declared, node.otherAttributes);
+  const rest = LeftoverWriter.of(node.leftovers, declared);
   const head =
     `  <${element} NodeId="${escapeAttribute(ids.formatKey(node.key))}"` +
     ` BrowseName="${escapeAttribute(ids.formatName(node.browseName))}"` +
-    writeAttributes(node, NODE_ATTRIBUTES[node.nodeClass], node.otherAttributes, ids);
-  const declared = withNodeDeclarations(context.declared, node.otherAttributes);
-  const rest = LeftoverWriter.of(node.leftovers, declared);
+    writeAttributes(node, NODE_ATTRIBUTES[node.nodeClass], node.otherAttributes, ids, rest?.spellings(""));
   const body =
     writeCommon(node, context, declared, rest) +
     writeSpecific(node, context, declared, rest) +
@@ -61,12 +62,16 @@ export function writeAttributes(
   table: AttributeTable,
   others: Readonly<Record<string, string>> | undefined,
   ids: IdWriter,
+  spellings?: Readonly<Record<string, string>>,
 ): string {
   let out = "";
   const values = fields as Readonly<Record<string, unknown>>;
   table.forEach(({ name, field, type }) => {
     const value = values[field];
-    if (value !== undefined) out += ` ${name}="${formatAttribute(value, type, name, ids)}"`;
+    if (value === undefined) return;
+    const spelling = spellings?.[name];
+    const isAsWritten = spelling !== undefined && readSpelling(spelling, type) === value;
+    out += ` ${name}="${isAsWritten ? escapeAttribute(spelling) : formatAttribute(value, type, name, ids)}"`;
   });
   if (!others) return out;
   for (const [name, value] of Object.entries(others)) {
@@ -134,6 +139,8 @@ function writeReference(reference: DeclaredReference, context: WriteContext, res
     (isForward ? referenceHeads.forward : referenceHeads.inverse).set(type, head);
   }
   if (otherAttributes) {
+    if (otherAttributes.IsForward !== undefined)
+      head = `      <${prefix}Reference ReferenceType="${escapeAttribute(ids.formatType(type))}"`;
     for (const [name, value] of Object.entries(otherAttributes)) head += ` ${name}="${escapeAttribute(value)}"`;
   }
   const text = escapeText(ids.formatTarget(target, serverUri));
@@ -201,7 +208,7 @@ function writeDefinition(
   const { ids, prefix } = context;
   const head =
     `    <${prefix}Definition Name="${escapeAttribute(ids.formatName(definition.name))}"` +
-    writeAttributes(definition, DEFINITION_ATTRIBUTES, definition.otherAttributes, ids);
+    writeAttributes(definition, DEFINITION_ATTRIBUTES, definition.otherAttributes, ids, rest?.spellings("Definition"));
   const body =
     definition.fields.map((field) => writeField(field, context, declared, rest)).join("") +
     (definition.otherElements ?? []).map((other) => `      ${writeWholeElement(other, declared)}\n`).join("") +
@@ -214,7 +221,7 @@ function writeField(field: DataTypeField, { ids, prefix }: WriteContext, declare
   const at = rest?.next("Definition", "Field", field.name) ?? "";
   const head =
     `      <${prefix}Field Name="${escapeAttribute(field.name)}"` +
-    writeAttributes(field, FIELD_ATTRIBUTES, field.otherAttributes, ids);
+    writeAttributes(field, FIELD_ATTRIBUTES, field.otherAttributes, ids, rest?.spellings(at));
   const body =
     writeTexts("DisplayName", field.displayName, "        ", prefix, rest, at) +
     writeTexts("Description", field.description, "        ", prefix, rest, at) +

@@ -161,7 +161,7 @@ function writeModel(
   const at = rest?.next(parent, element, model.modelUri) ?? "";
   const head =
     `${indent}<${prefix}${element} ModelUri="${escapeAttribute(model.modelUri)}"` +
-    writeAttributes(model, MODEL_ATTRIBUTES, model.otherAttributes, ids);
+    writeAttributes(model, MODEL_ATTRIBUTES, model.otherAttributes, ids, rest?.spellings(at));
   const inner = `${indent}  `;
   const required = model.requiredModels.map((one) => writeModel("RequiredModel", one, inner, context, rest, at));
   const body =
