@@ -30,10 +30,21 @@ export async function readXlsx(bytes: Uint8Array): Promise<Result<WorkbookSheet[
 
 /** The signature of a compound file, in which the old format (XLS) and files with a password are kept. */
 const COMPOUND = [0xd0, 0xcf, 0x11, 0xe0];
+/** That of a ZIP archive (APPNOTE §4.3.7). */
+const ARCHIVE = [0x50, 0x4b, 0x03, 0x04];
+
+/** By its first bytes, whatever the file is called. */
+export function looksLikeWorkbook(bytes: Uint8Array): boolean {
+  return startsWith(bytes, ARCHIVE) || startsWith(bytes, COMPOUND);
+}
+
+function startsWith(bytes: Uint8Array, signature: readonly number[]): boolean {
+  return signature.every((byte, i) => bytes[i] === byte);
+}
 
 function checkSize(bytes: Uint8Array) {
   if (bytes.length > MAX_BYTES) return problem("workbook.too-large", { limit: MAX_BYTES / 1_000_000 });
-  if (COMPOUND.every((byte, i) => bytes[i] === byte)) return problem("workbook.old-format");
+  if (startsWith(bytes, COMPOUND)) return problem("workbook.old-format");
   let size = 0;
   let parts = 0;
   try {

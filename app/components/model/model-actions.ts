@@ -26,6 +26,7 @@ import { listArguments, type ArgumentFacts, type Direction } from "./method-argu
 import { getNodeName } from "./member-facts";
 import { toRenameStep } from "./rename-steps";
 import { setTypeDefinition } from "./set-type-definition";
+import { namesUnit } from "./number-with-unit";
 import { hasUnits, loadUnits } from "./unit-lookup";
 import type { ViewStore } from "./view-store";
 
@@ -175,7 +176,7 @@ export class ModelActions {
 
   /** Cells of own nodes; those of required models and columns that are read are left out. */
   changeCells(changes: readonly CellChange[], label: string): void {
-    if (!hasUnits() && changes.some((change) => change.column === "unit")) {
+    if (!hasUnits() && changes.some(namesUnit)) {
       void loadUnits().then(() => this.changeCells(changes, label));
       return;
     }

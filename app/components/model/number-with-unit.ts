@@ -1,6 +1,7 @@
 /** Figures that people write with a unit: `40 cm` in a cell of mm means 400. Needs the unit table (unit-lookup.ts). */
 import type { Range } from "~/domain/nodeset/values/standard-values";
 import { formatNumber, parseRange, type UnitFacts } from "./analog-facts";
+import type { CellChange } from "./cell-change";
 import { toNumber } from "./parse-phrase";
 import { convertUnit, findSpokenUnit } from "./unit-lookup";
 
@@ -23,6 +24,12 @@ export function parseRangeIn(own: UnitFacts | undefined, text: string): Range | 
   const range = match && parseRange(match[1] ?? "");
   const scale = match && findScale(own, match[2] ?? "");
   return range && scale ? { low: scale(range.low), high: scale(range.high) } : undefined;
+}
+
+/** Whether the text cannot be understood before the unit table has come. */
+export function namesUnit({ column, text }: CellChange): boolean {
+  if (column === "unit") return text.trim() !== "";
+  return (column === "range" || column === "value") && /[\p{L}°%‰µΩ]/u.test(text);
 }
 
 function findScale(own: UnitFacts, text: string): ((value: number) => number) | undefined {

@@ -16,7 +16,7 @@ import { readSignalList, type ColumnChoice } from "~/domain/editing/starters/rea
 import type { TextTable } from "~/domain/editing/starters/text-table";
 import { fail, ok, type Problem, type Result } from "~/domain/core/result";
 import { readCsv } from "~/utils/read-csv";
-import { readXlsx, type WorkbookSheet } from "~/utils/read-xlsx";
+import { looksLikeWorkbook, readXlsx, type WorkbookSheet } from "~/utils/read-xlsx";
 import { toNamespacePart } from "../models/propose-namespace";
 import { ColumnMatch } from "./column-match";
 import { proposeColumns, readTemplates, type ColumnTemplate } from "./column-templates";
@@ -73,8 +73,9 @@ export function SignalsView({ model, space, editBlockedBy }: Props) {
   }
   async function chooseFile(chosen: File | undefined): Promise<void> {
     if (!chosen) return;
-    if (!/\.xls[xmb]?$/i.test(chosen.name)) return change({ kind: "text", text: await chosen.text() });
-    const sheets = await readXlsx(new Uint8Array(await chosen.arrayBuffer()));
+    const bytes = new Uint8Array(await chosen.arrayBuffer());
+    if (!looksLikeWorkbook(bytes) && !/\.xls[xmb]?$/i.test(chosen.name)) return change({ kind: "text", text: new TextDecoder().decode(bytes) });
+    const sheets = await readXlsx(bytes);
     change(sheets.ok ? { kind: "workbook", name: chosen.name, sheets: sheets.value, chosen: 0 } : { kind: "unreadable", problems: sheets.problems });
   }
   function clear(): void {

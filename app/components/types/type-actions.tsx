@@ -11,7 +11,7 @@ import { getDisplayName } from "~/domain/address-space/browse";
 import type { Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { StandardReferenceType } from "~/domain/address-space/standard-ids";
-import { listImplementers, listTypeUses, proposeInstanceName, proposeSubtypeName, type TypeUse } from "./type-uses";
+import { findAgreedName, listImplementers, listTypeUses, proposeInstanceName, proposeSubtypeName, type TypeUse } from "./type-uses";
 
 const words: Record<TypeUse, { label: string; about: string }> = {
   derive: { label: "Derive", about: "A subtype of your own: it inherits every member and adds more." },
@@ -120,13 +120,21 @@ function ImplementForm({ model, space, type, editBlockedBy, onMade }: FormProps)
 function InstantiateForm({ model, space, type, editBlockedBy, onMade, asAddIn }: FormProps & { asAddIn?: boolean }) {
   const parents = listParents(space);
   const [parent, setParent] = useState<NodeKey | undefined>(parents[0]?.key);
-  const [name, setName] = useState(proposeInstanceName(type.browseName.name));
+  const agreed = asAddIn ? findAgreedName(space, type.key) : undefined;
+  const [name, setName] = useState(agreed?.name?.name ?? proposeInstanceName(type.browseName.name));
   const [optional, setOptional] = useState<readonly string[]>([]);
   const isVariable = type.nodeClass === "VariableType";
 
   function make(): void {
     if (parent === undefined) return;
-    const intent = { parent, name: name.trim(), typeDefinition: type.key, optional };
+    const isAgreed = agreed?.name?.name === name.trim();
+    const intent = {
+      parent,
+      name: name.trim(),
+      typeDefinition: type.key,
+      optional,
+      ...(isAgreed && agreed.name ? { namespaceUri: agreed.name.namespaceUri } : {}),
+    };
     const made = isVariable
       ? model.actions.addVariable(intent)
       : model.actions.addObject({ ...intent, ...(asAddIn ? { referenceType: StandardReferenceType.HasAddIn } : {}) });
@@ -154,7 +162,14 @@ function InstantiateForm({ model, space, type, editBlockedBy, onMade, asAddIn }:
       <Button
         type="submit"
         tone="main"
-        blockedBy={editBlockedBy ?? (parent === undefined ? "nothing to hang it below" : undefined)}
+        blockedBy={
+          editBlockedBy ??
+          (asAddIn && !agreed
+            ? "its model gives add-ins of it no name (DefaultInstanceBrowseName, OPC 10000-3 §4.10.3)"
+            : parent === undefined
+              ? "nothing to hang it below"
+              : undefined)
+        }
         className="justify-self-start"
       >
         {asAddIn ? "Add as add-in" : "Instantiate"}

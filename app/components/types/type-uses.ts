@@ -3,7 +3,10 @@ import type { AddressSpace } from "~/domain/address-space/address-space";
 import { isAbstract, type Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { StandardType } from "~/domain/address-space/standard-ids";
-import { isSubtypeOf } from "~/domain/address-space/type-hierarchy";
+import { findProperty } from "~/domain/address-space/browse";
+import type { QualifiedName } from "~/domain/address-space/qualified-name";
+import { isSubtypeOf, listSupertypes } from "~/domain/address-space/type-hierarchy";
+import { readTypedValue } from "../model/read-typed-value";
 
 export type TypeUse = "derive" | "instantiate" | "implement" | "add-in";
 
@@ -16,6 +19,22 @@ export function listTypeUses(space: AddressSpace, type: Node): TypeUse[] {
   if (isAbstract(type)) return uses;
   if (type.nodeClass === "ObjectType") return [...uses, "instantiate", "add-in"];
   return type.nodeClass === "VariableType" && type.key !== StandardType.PropertyType ? [...uses, "instantiate"] : uses;
+}
+
+/**
+ * The name that instances of an add-in's type bear: the value of its DefaultInstanceBrowseName (OPC 10000-3 §4.10.3).
+ * Undefined where the type has no such Property; without `name` where the Property has no value.
+ */
+export function findAgreedName(space: AddressSpace, type: NodeKey): { name: QualifiedName | undefined } | undefined {
+  for (const key of [type, ...listSupertypes(space, type)]) {
+    const property = findProperty(space, key, "DefaultInstanceBrowseName");
+    if (!property) continue;
+    const variant = readTypedValue(space, property);
+    const value = variant?.shape === "scalar" && variant.type === "QualifiedName" ? variant.value : undefined;
+    const name = typeof value === "object" && value !== null && "name" in value ? (value as QualifiedName) : undefined;
+    return { name: name && name.name !== "" ? name : undefined };
+  }
+  return undefined;
 }
 
 /** `PressType` → `Press`; a name without that ending gets none. */
