@@ -7,6 +7,7 @@ const entries: Record<string, string> = {
   server: "app/server.ts",
   cli: "app/cli/main.ts",
   "test-server": "app/opcua/test-server/main.ts",
+  "fake-master": "app/opcua/fake-master/main.ts",
   "read-worker": "app/library/read-worker.ts",
   bench: "tests/bench/main.ts",
   "bench-browser": "tests/bench/browser/main.ts",

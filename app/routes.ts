@@ -22,6 +22,7 @@ export default [
   route("releases/:releaseId/file", "routes/data/release-file.ts"),
   route("sources/changes", "routes/data/source-changes.ts"),
   route("sources/wiring-list.csv", "routes/data/wiring-list.ts"),
+  route("sources/:sourceId/read", "routes/data/source-read.ts"),
   route("devices/files", "routes/data/device-files.ts"),
   route("devices/:deviceId/file", "routes/data/device-file.ts"),
   route("devices/:deviceId/picture", "routes/data/device-picture.ts"),

@@ -3,6 +3,8 @@
  * of another build, or broken. Everything that the child needs travels in `start`; it reads files, never the database.
  */
 import { z } from "zod";
+import { processDataImageSchema } from "~/domain/iodd/process-data-schema";
+import { mappingSchema } from "~/domain/mapping/mapping";
 
 const motionSchema = z.discriminatedUnion("kind", [
   z.object({ kind: z.literal("sine"), low: z.number(), high: z.number(), period: z.number().positive(), phase: z.number() }),
@@ -31,6 +33,31 @@ export const simulatedVariableSchema = z.object({
   isProperty: z.boolean(),
 });
 
+const layoutSchema = z.object({
+  role: z.string(),
+  direction: z.enum(["in", "out"]),
+  image: processDataImageSchema,
+  profileCharacteristic: z.array(z.number()),
+});
+const rangeSchema = z.object({ low: z.number(), high: z.number() });
+
+/** A machine whose Variables a mapping feeds. */
+const fedMachineSchema = z.object({
+  machine: z.string(),
+  mapping: mappingSchema,
+  layouts: z.array(layoutSchema),
+  ranges: z.record(z.string(), z.object({ range: rangeSchema.optional(), instrumentRange: rangeSchema.optional() })),
+  unbound: z.array(z.string()),
+  nodes: z.array(z.object({ target: z.string(), nodeId: z.string(), builtInType: builtInTypeSchema })),
+});
+
+const inputBase = { machine: z.string(), time: z.number() };
+const feedInputSchema = z.discriminatedUnion("kind", [
+  z.object({ kind: z.literal("frame"), ...inputBase, role: z.string(), direction: z.enum(["in", "out"]), octets: z.instanceof(Uint8Array), isValid: z.boolean() }),
+  z.object({ kind: z.literal("sample"), ...inputBase, channel: z.string(), value: z.union([z.number(), z.bigint(), z.boolean(), z.string(), z.null()]), status: z.number() }),
+  z.object({ kind: z.literal("role"), ...inputBase, role: z.string(), state: z.enum(["not-connected", "wrong-device", "device-failure"]), holds: z.boolean() }),
+]);
+
 export const startSchema = z.object({
   kind: z.literal("start"),
   id: z.string(),
@@ -51,10 +78,16 @@ export const startSchema = z.object({
   /** Methods that answer with typed results; the others say that they are not implemented. */
   methods: z.array(z.string()),
   maxSessions: z.number().int().positive(),
+  /** Machines that live sources feed; their other Variables then wait without a value instead of moving. */
+  feed: z.array(fedMachineSchema).optional(),
 });
 export type StartMessage = z.infer<typeof startSchema>;
 
-export const toChildSchema = z.discriminatedUnion("kind", [startSchema, z.object({ kind: z.literal("stop") })]);
+export const toChildSchema = z.discriminatedUnion("kind", [
+  startSchema,
+  z.object({ kind: z.literal("inputs"), inputs: z.array(feedInputSchema) }),
+  z.object({ kind: z.literal("stop") }),
+]);
 export type ToChildMessage = z.infer<typeof toChildSchema>;
 
 const sessionSchema = z.object({
@@ -85,6 +118,14 @@ export const toParentSchema = z.discriminatedUnion("kind", [
     kind: z.literal("failed"),
     code: z.string(),
     data: z.record(z.string(), z.union([z.string(), z.number(), z.boolean()])),
+  }),
+  z.object({
+    kind: z.literal("feed"),
+    /** Since the start: inputs that came, Variables that changed by them. */
+    inputs: z.number().int(),
+    changes: z.number().int(),
+    /** From acquisition to the Variable's change over the last second, ms; null when nothing came. */
+    delay: z.object({ p50: z.number(), p99: z.number(), highest: z.number() }).nullable(),
   }),
   z.object({ kind: z.literal("stopped") }),
 ]);

@@ -11,6 +11,7 @@ import { join } from "node:path";
 import { createInterface } from "node:readline";
 import { stripVTControlCharacters } from "node:util";
 import { problem, type Problem } from "~/domain/core/result";
+import type { FeedInput } from "~/domain/mapping/plan-readings";
 import type { LogLine, TestServerStage, TestServerState } from "~/domain/simulation/test-server-state";
 import { findProjectRoot } from "~/utils/project-root.server";
 import { onShutdown } from "~/utils/shutdown.server";
@@ -116,6 +117,7 @@ export class Supervisor {
       endpointUrl: null,
       certificateThumbprint: null,
       simulation: null,
+      feed: null,
       sessions: [],
       problems: [],
       sampleInstances: [],
@@ -154,6 +156,13 @@ export class Supervisor {
     child.on("error", (error) => this.#fail(entry, problem("test-server.start", { detail: error.message })));
     child.once("exit", (code, signal) => this.#afterExit(entry, code, signal));
     child.send(message, () => undefined);
+  }
+
+  /** Hands inputs of live sources to a server that runs; to any other they are lost, as for a gateway that is off. */
+  feed(id: string, inputs: readonly FeedInput[]): void {
+    const entry = this.#entries.get(id);
+    if (entry?.state.state !== "running" || !entry.child?.connected) return;
+    entry.child.send({ kind: "inputs", inputs }, () => undefined);
   }
 
   /** Notes that the files could not be made. */
@@ -207,6 +216,11 @@ export class Supervisor {
       case "ready":
         this.#becomeReady(entry, message);
         return;
+      case "feed": {
+        const { inputs, changes, delay } = message;
+        this.#update(entry, { feed: { inputs, changes, delay } });
+        return;
+      }
       case "sessions":
         this.#update(entry, { sessions: message.sessions });
         return;

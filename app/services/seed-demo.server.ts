@@ -22,7 +22,7 @@ import { importModel } from "./import-model.server";
 import { readUpload } from "./read-upload.server";
 import { seedBraiderMapping, seedHallSources } from "./seed-demo-sources.server";
 
-const DEMO_SLUG = "demo";
+export const DEMO_SLUG = "demo";
 
 /** The demo's models in the order in which they require each other; the file names tell the model's name. */
 const demoModels = [

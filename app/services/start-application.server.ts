@@ -8,7 +8,9 @@ import { singleton } from "../utils/singleton.server";
 import { getLibrary } from "../library/library.server";
 import { startOutbox } from "./run-outbox.server";
 import { removeOldUploads } from "./pending-uploads.server";
-import { seedDemo } from "./seed-demo.server";
+import { startDemoSources } from "./demo-sources.server";
+import { DEMO_SLUG, seedDemo } from "./seed-demo.server";
+import { registerSourceTopics } from "./source-topics.server";
 import { keepSetUpCode, needsSetUp } from "./set-up-organization.server";
 import { registerLiveTopics } from "./live-topics.server";
 import { registerModelTopics } from "./topic-providers.server";
@@ -29,10 +31,11 @@ async function start(): Promise<StartReport> {
   removeOldUploads();
   getLibrary().usePackFolder(join(getEnvironment().dataFolder, "packs"));
   registerModelTopics();
+  registerSourceTopics();
   await registerLiveTopics();
   startOutbox();
   const { isDemo, dataFolder } = getEnvironment();
-  if (isDemo) return { lines: await seedDemo() };
+  if (isDemo) return { lines: [...(await seedDemo()), await startDemoSources(DEMO_SLUG)] };
   if (!(await needsSetUp())) return { lines: [`Data folder: ${dataFolder}`] };
   return {
     lines: [

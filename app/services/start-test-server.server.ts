@@ -6,6 +6,7 @@ import { addAuditStatement } from "../db/repositories/audit.server";
 import { saveNewTestServer } from "../db/repositories/test-servers.server";
 import { AddressSpace } from "../domain/address-space/address-space";
 import { fail, ok, problem, type Result } from "../domain/core/result";
+import type { MachineFeed } from "../domain/mapping/make-feed";
 import { listAnsweredMethods } from "../domain/simulation/list-answered-methods";
 import { makeSampleInstances } from "../domain/simulation/make-sample-instances";
 import { planSimulation, type SimulatedVariable } from "../domain/simulation/plan-simulation";
@@ -15,6 +16,7 @@ import { getSupervisor, type TestServerSeed } from "../opcua/supervisor.server";
 import { getEnvironment } from "../utils/env.server";
 import { newId } from "../utils/ids.server";
 import { logError } from "../utils/log.server";
+import { feedTestServer, planFeed } from "./feed-test-server.server";
 import { followTestServers } from "./follow-test-servers.server";
 import { getTestServerFolder, removeTestServerFiles, writeTestServerFiles } from "./test-server-files.server";
 import { loadWorkingModel } from "./working-model.server";
@@ -23,6 +25,8 @@ import { loadWorkingModel } from "./working-model.server";
 export const testServerIntentSchema = z.strictObject({
   security: z.array(z.enum(["basic256sha256", "none"])).min(1).max(2).default(["basic256sha256"]),
   simulatedQuality: z.enum(["uncertain", "good"]).default("uncertain"),
+  /** `live`: machines with a mapping are fed by their sources; what nothing feeds has no value then. */
+  values: z.enum(["simulated", "live"]).default("simulated"),
 });
 export type TestServerIntent = z.infer<typeof testServerIntentSchema>;
 
@@ -58,7 +62,7 @@ export async function startTestServer(model: ModelOfServer, by: Person, intent: 
     heartbeatAt: new Date(state.startedAt),
   };
   await saveNewTestServer(row, auditOf("test-server.start", model, by, { testServer: seed.id, ...intent }));
-  void prepare(seed)
+  void prepare(seed, intent.values)
     .catch((error: unknown) => failStart(seed, error))
     .then(() => clearWhenStopped(seed.id));
   return ok(state);
@@ -96,7 +100,7 @@ function makeSeed(model: ModelOfServer, { security, simulatedQuality }: TestServ
   };
 }
 
-async function prepare(seed: TestServerSeed): Promise<void> {
+async function prepare(seed: TestServerSeed, values: TestServerIntent["values"]): Promise<void> {
   const supervisor = getSupervisor();
   const working = await loadWorkingModel(seed.modelId);
   if (!working) return supervisor.failStart(seed.id, [problem("test-server.model-gone")]);
@@ -108,12 +112,26 @@ async function prepare(seed: TestServerSeed): Promise<void> {
   const team = layers.filter((required) => required.from).map((required) => required.layer);
   const served = samples ? AddressSpace.of(space.layers, samples.layer) : space;
   const moved = [...team, space.own, ...(samples ? [samples.layer] : [])];
-  const simulation = planSimulation(served, moved);
-  supervisor.launch({ ...toStartMessage(seed, nodeSetFiles, simulation), methods: listAnsweredMethods(served, moved) }, {
+  const feed = values === "live" ? await planFeed(model.organizationId, space) : undefined;
+  const simulation = feed ? planSimulation(served, moved).map(holdStill) : planSimulation(served, moved);
+  const message = { ...toStartMessage(seed, nodeSetFiles, simulation), methods: listAnsweredMethods(served, moved) };
+  supervisor.launch({ ...message, ...(feed ? { feed: feed.machines.map(toFeedMessage) } : {}) }, {
     servedSeq: working.seq,
     sampleInstances: samples?.names ?? [],
     landingNode: (simulation.find(({ motion }) => motion.kind === "sine" || motion.kind === "ramp") ?? simulation[0])?.nodeId ?? null,
   });
+  if (feed) await feedTestServer(seed.id, model.organizationId, feed);
+}
+
+/** On a server with live values nothing is made up: what moves in a simulation keeps the model's value, or has none. */
+function holdStill(entry: SimulatedVariable): SimulatedVariable {
+  return entry.motion.kind === "static" ? entry : { ...entry, motion: { kind: "static" } };
+}
+
+/** Plain data for the message, lists copied. */
+function toFeedMessage(machine: MachineFeed): NonNullable<StartMessage["feed"]>[number] {
+  const layouts = machine.layouts.map((layout) => ({ ...layout, profileCharacteristic: [...layout.profileCharacteristic] }));
+  return { ...machine, layouts, unbound: [...machine.unbound], nodes: [...machine.nodes], ranges: { ...machine.ranges } };
 }
 
 function toStartMessage(seed: TestServerSeed, nodeSetFiles: string[], simulation: readonly SimulatedVariable[]): Omit<StartMessage, "methods"> {

@@ -5,7 +5,7 @@
 import ModbusRTU from "modbus-serial";
 import { problem } from "../domain/core/result";
 import { StatusCode } from "../domain/mapping/status";
-import type { Reading } from "./source-outcome";
+import type { Reading } from "../domain/mapping/live-source";
 
 export type ModbusTable = "coil" | "discrete-input" | "holding-register" | "input-register";
 

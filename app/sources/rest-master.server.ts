@@ -5,7 +5,7 @@
 import { z } from "zod";
 import { problem, type Problem } from "../domain/core/result";
 import { StatusCode } from "../domain/mapping/status";
-import type { Reading } from "./source-outcome";
+import type { Reading } from "../domain/mapping/live-source";
 
 export type RestMasterAddress = {
   /** `http://192.0.2.1` or with the path of a proxy; `/iolink/v1` is added. */
@@ -44,7 +44,7 @@ export async function readProcessData(
   master: RestMasterAddress,
   alias: string,
 ): Promise<Reading<{ readonly in?: ProcessDataFrame; readonly out?: ProcessDataFrame }>> {
-  const answer = await getJson(
+  const answer = await askMaster(
     master,
     `/devices/${encodeURIComponent(alias)}/processdata/value?format=byteArray`,
     processDataSchema,
@@ -68,7 +68,7 @@ export async function readParameter(
   subindex = 0,
 ): Promise<Reading<Uint8Array>> {
   const path = subindex === 0 ? `/parameters/${index}/value` : `/parameters/${index}/subindices/${subindex}/value`;
-  const answer = await getJson(
+  const answer = await askMaster(
     master,
     `/devices/${encodeURIComponent(alias)}${path}?format=byteArray`,
     z.array(z.number().int().min(0).max(255)).max(232),
@@ -77,15 +77,19 @@ export async function readParameter(
 }
 
 export function readPorts(master: RestMasterAddress, masterNumber = 1): Promise<Reading<z.infer<typeof portsSchema>>> {
-  return getJson(master, `/masters/${masterNumber}/ports`, portsSchema);
+  return askMaster(master, `/masters/${masterNumber}/ports`, portsSchema);
 }
 
 export function readIdentification(master: RestMasterAddress, alias: string): Promise<Reading<DeviceIdentification>> {
-  return getJson(master, `/devices/${encodeURIComponent(alias)}/identification`, identificationSchema);
+  return askMaster(master, `/devices/${encodeURIComponent(alias)}/identification`, identificationSchema);
 }
 
-async function getJson<T>(master: RestMasterAddress, path: string, schema: z.ZodType<T>): Promise<Reading<T>> {
-  const url = `${master.baseUrl.replace(/\/+$/, "")}/iolink/v1${path}`;
+function askMaster<T>(master: RestMasterAddress, path: string, schema: z.ZodType<T>): Promise<Reading<T>> {
+  return getJson(`${master.baseUrl.replace(/\/+$/, "")}/iolink/v1${path}`, master.timeoutMs, schema);
+}
+
+/** One GET within limits of time and size; follows no redirect. */
+export async function getJson<T>(url: string, timeoutMs = DEFAULT_TIMEOUT_MS, schema: z.ZodType<T>): Promise<Reading<T>> {
   const failed = (status: number, found: Problem): Reading<T> => ({
     ok: false,
     status,
@@ -94,7 +98,7 @@ async function getJson<T>(master: RestMasterAddress, path: string, schema: z.Zod
   });
   try {
     const response = await fetch(url, {
-      signal: AbortSignal.timeout(master.timeoutMs ?? DEFAULT_TIMEOUT_MS),
+      signal: AbortSignal.timeout(timeoutMs),
       redirect: "error",
       headers: { accept: "application/json" },
     });

@@ -23,6 +23,7 @@ import {
   readBigUnsigned,
   readOctets,
 } from "./bits";
+import { readText } from "./read-text";
 import { makeScaler } from "./scale";
 import { findSpecialValue, type SpecialValue } from "./special-values";
 import { LIMIT_HIGH, LIMIT_LOW, StatusCode } from "./status";
@@ -245,19 +246,6 @@ function makeBigDecoder({ type, bitOffset, bitLength, unit, gradient, offset }: 
       status: StatusCode.Good,
     };
   };
-}
-
-/** Text up to the first zero octet. Octets that are no UTF-8 become U+FFFD. */
-function readText(octets: Uint8Array): string {
-  const end = octets.indexOf(0);
-  const shown = end < 0 ? octets : octets.subarray(0, end);
-  let encoded = "";
-  for (const octet of shown) encoded += `%${octet.toString(16).padStart(2, "0")}`;
-  try {
-    return decodeURIComponent(encoded);
-  } catch {
-    return Array.from(shown, (octet) => (octet < 128 ? String.fromCharCode(octet) : "\ufffd")).join("");
-  }
 }
 
 const SECONDS_1900_TO_1970 = 2_208_988_800n;

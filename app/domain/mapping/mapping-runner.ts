@@ -32,9 +32,10 @@ export type FrameInput = {
 export type Update = { readonly target: string; readonly sample: Sample };
 
 /** What is known of a role beside its data: no source is bound, another device answers, the device reports a failure. */
-export type RoleState = "ok" | "not-connected" | "wrong-device" | "device-failure";
+export type RoleState = "not-connected" | "wrong-device" | "device-failure";
 
-const STATUS_OF_ROLE: Readonly<Record<Exclude<RoleState, "ok">, number>> = {
+/** In the order of what counts more. */
+const STATUS_OF_ROLE: Readonly<Record<RoleState, number>> = {
   "not-connected": StatusCode.Bad_NotConnected,
   "wrong-device": StatusCode.Bad_ConfigurationError,
   "device-failure": StatusCode.Bad_DeviceFailure,
@@ -65,7 +66,8 @@ export class MappingRunner {
   readonly #rowsBySlot: readonly (readonly RunningRow[])[];
   readonly #samples: Sample[];
   readonly #frames = new Map<string, RunningFrame>();
-  readonly #roleStatus = new Map<string, number>();
+  /** What holds of a role; absent for one of which nothing does. */
+  readonly #roleStates = new Map<string, ReadonlySet<RoleState>>();
 
   /** With `keepsPaths`, `trace` answers what each value went through. */
   constructor(plan: MappingPlan, time = 0, keepsPaths = false) {
@@ -132,20 +134,20 @@ export class MappingRunner {
   /** A sample of any other source: a register, a tag, a parameter, the device status. */
   offerSample(channel: ChannelKey, sample: Sample): Update[] {
     const slot = this.#plan.slots.get(channel);
-    if (slot === undefined) return [];
+    if (slot === undefined || this.#isOverruled(slot)) return [];
     this.#samples[slot] = isBad(sample.status) ? badSample(sample.status, sample.time) : sample;
     return this.#evaluateAll(this.#rowsBySlot[slot] ?? []);
   }
 
-  /** While a role is not "ok", all that it feeds is Bad with the status of the case, whatever its source says. */
-  setRoleState(role: string, state: RoleState, time: number): Update[] {
-    if (state === "ok") {
-      this.#roleStatus.delete(role);
-      return [];
-    }
-    const status = STATUS_OF_ROLE[state];
-    if (this.#roleStatus.get(role) === status) return [];
-    this.#roleStatus.set(role, status);
+  /** While one of the states holds, all that the role feeds is Bad with the status of the case, whatever its source says. */
+  setRoleState(role: string, state: RoleState, holds: boolean, time: number): Update[] {
+    const before = this.#roleStates.get(role) ?? new Set<RoleState>();
+    if (before.has(state) === holds) return [];
+    const after = new Set([...before, state].filter((s) => s !== state || holds));
+    if (after.size > 0) this.#roleStates.set(role, after);
+    else this.#roleStates.delete(role);
+    const status = this.#findRoleStatus(role);
+    if (status === undefined) return [];
     const slots = this.#plan.slotsOfRole.get(role) ?? [];
     for (const slot of slots) this.#samples[slot] = badSample(status, time);
     return this.#evaluateAll(this.#rows.filter((row) => slots.some((slot) => this.#rowsBySlot[slot]?.includes(row))));
@@ -176,10 +178,21 @@ export class MappingRunner {
   }
 
   #refuse(role: string, entry: RunningFrame, frame: FrameInput): number | undefined {
-    const known = this.#roleStatus.size === 0 ? undefined : this.#roleStatus.get(role);
+    const known = this.#roleStates.size === 0 ? undefined : this.#findRoleStatus(role);
     if (known !== undefined) return known;
     if (!frame.isValid) return StatusCode.Bad;
     return frame.octets.length === entry.octets ? undefined : StatusCode.Bad_ConfigurationError;
+  }
+
+  #isOverruled(slot: ChannelSlot): boolean {
+    if (this.#roleStates.size === 0) return false;
+    return [...this.#roleStates.keys()].some((role) => this.#plan.slotsOfRole.get(role)?.includes(slot));
+  }
+
+  #findRoleStatus(role: string): number | undefined {
+    const states = this.#roleStates.get(role);
+    const worst = states && (Object.keys(STATUS_OF_ROLE) as RoleState[]).find((state) => states.has(state));
+    return worst && STATUS_OF_ROLE[worst];
   }
 
   #listSlots(row: RunningRow, found: Set<ChannelSlot>): ReadonlySet<ChannelSlot> {

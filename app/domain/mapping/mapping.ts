@@ -84,6 +84,8 @@ export const inputReferenceSchema = z.discriminatedUnion("kind", [
     role,
     index: z.number().int().min(0).max(65_535),
     subindex: z.number().int().min(0).max(255),
+    /** How its octets are read; absent: text where they can be text, else an unsigned integer. */
+    encoding: z.enum(["text", "unsigned", "signed", "float", "boolean"]).optional(),
   }),
   z.strictObject({ kind: z.literal("port-status"), role }),
   z.strictObject({ kind: z.literal("validity"), role, direction: z.enum(["in", "out"]) }),

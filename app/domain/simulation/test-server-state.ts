@@ -40,6 +40,13 @@ export type TestServerSession = {
 /** Counts of what moves, for the page. */
 export type SimulationCounts = { readonly moving: number; readonly fixed: number };
 
+/** What live sources fed since the start, and how quickly it reached the Variables over the last second, ms. */
+export type FeedState = {
+  readonly inputs: number;
+  readonly changes: number;
+  readonly delay: { readonly p50: number; readonly p99: number; readonly highest: number } | null;
+};
+
 export type TestServerState = {
   readonly id: string;
   readonly organizationId: string;
@@ -65,6 +72,8 @@ export type TestServerState = {
   readonly tokens: { readonly anonymous: boolean; readonly userName: string; readonly password: string };
   readonly certificateThumbprint: string | null;
   readonly simulation: SimulationCounts | null;
+  /** Null for a server that only simulates. */
+  readonly feed: FeedState | null;
   readonly sessions: readonly TestServerSession[];
   readonly problems: readonly Problem[];
 };

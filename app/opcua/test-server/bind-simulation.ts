@@ -21,6 +21,7 @@ export type BoundSimulation = {
 const MINIMUM_SAMPLING_INTERVAL = 100;
 
 /**
+ * @param fillsGaps false on a server with live values: what the model leaves open stays without a value
  * @param now the clock, ms since 1970; the simulation's time is the time of day, so that a restart goes on where it would be
  */
 export function bindSimulation(
@@ -28,6 +29,7 @@ export function bindSimulation(
   plan: readonly SimulatedVariable[],
   quality: "uncertain" | "good",
   now: () => number,
+  fillsGaps = true,
 ): BoundSimulation {
   const status = quality === "good" ? StatusCodes.Good : StatusCodes.UncertainSimulatedValue;
   const namespaces = space.getNamespaceArray().map((namespace) => namespace.namespaceUri);
@@ -42,7 +44,7 @@ export function bindSimulation(
     // One odd Variable must not keep a whole park from being served.
     try {
       if (entry.motion.kind === "static") {
-        holdValue(space, node as UAVariable, entry, status, new Date(now()));
+        holdValue(space, node as UAVariable, entry, fillsGaps ? status : undefined, new Date(now()));
         bound.fixed++;
       } else {
         moveValue(node as UAVariable, entry, status, now);
@@ -82,9 +84,14 @@ function moveValue(variable: UAVariable, entry: SimulatedVariable, status: Statu
 }
 
 /** Keeps the model's value. What the model leaves open gets a plain value; a Property with a value describes and stays Good. */
-function holdValue(space: AddressSpace, variable: UAVariable, entry: SimulatedVariable, status: StatusCode, at: Date): void {
+function holdValue(space: AddressSpace, variable: UAVariable, entry: SimulatedVariable, status: StatusCode | undefined, at: Date): void {
   if (entry.hasValue) {
-    if (!entry.isProperty) variable.setValueFromSource(variable.readValue().value, status, at);
+    if (!entry.isProperty) variable.setValueFromSource(variable.readValue().value, status ?? StatusCodes.Good, at);
+    return;
+  }
+  if (status === undefined) {
+    // OPC 10000-4 §7.11.5: a Variable that nothing feeds has no value.
+    if (!entry.isProperty) variable.setValueFromSource(new Variant({}), StatusCodes.BadNoValue, at);
     return;
   }
   const dataType = entry.builtInType === "ExtensionObject" ? space.findDataType(variable.dataType) : null;

@@ -5,6 +5,7 @@
 import { join } from "node:path";
 import { setTimeout as wait } from "node:timers/promises";
 import type { OPCUAServer } from "node-opcua";
+import type { FeedInput } from "~/domain/mapping/plan-readings";
 import { toChildSchema, type StartMessage, type ToParentMessage } from "../messages";
 
 /** Sessions are looked at this often while the server runs, ms. */
@@ -12,6 +13,7 @@ const SESSION_REPORT_INTERVAL = 1000;
 const SHUTDOWN_LIMIT = 2500;
 
 let running: { server: OPCUAServer; timer: NodeJS.Timeout } | undefined;
+let feed: { offer(inputs: readonly FeedInput[]): void; stop(): void } | undefined;
 let isEnding = false;
 
 process.on("message", (raw) => {
@@ -20,6 +22,8 @@ process.on("message", (raw) => {
     void fail("test-server.message", { detail: message.error.issues[0]?.message ?? "unreadable" });
   } else if (message.data.kind === "stop") {
     void end(0);
+  } else if (message.data.kind === "inputs") {
+    feed?.offer(message.data.inputs);
   } else {
     start(message.data).catch((error: unknown) => fail("test-server.start", { detail: error instanceof Error ? error.message : String(error) }));
   }
@@ -51,8 +55,12 @@ async function start(config: StartMessage): Promise<void> {
 
   send({ kind: "progress", stage: "simulation" });
   addNotice(space);
-  const bound = bindSimulation(space, config.simulation, config.simulatedQuality, () => Date.now());
+  const bound = bindSimulation(space, config.simulation, config.simulatedQuality, () => Date.now(), !config.feed);
   answerMethods(space, config.methods, (text) => log("info", text));
+  if (config.feed) {
+    const { startFeed } = await import("./bind-feed");
+    feed = startFeed(space, config.feed, { now: () => Date.now(), log: (text) => log("warning", text), report: (state) => send({ kind: "feed", ...state }) });
+  }
 
   send({ kind: "progress", stage: "endpoint" });
   await server.start();
@@ -110,6 +118,7 @@ async function end(exitCode: number): Promise<void> {
   isEnding = true;
   if (running) {
     clearInterval(running.timer);
+    feed?.stop();
     await Promise.race([running.server.shutdown(100), wait(SHUTDOWN_LIMIT)]).catch(() => undefined);
   }
   send({ kind: "stopped" });
