@@ -13,7 +13,7 @@ export type MachineFacts = {
   readonly typeVersion: { readonly number: number; readonly newest: number } | null;
   /** Paths of the members that a source feeds on this machine; null where its type has no mapping. */
   readonly mapped: readonly string[] | null;
-  /** `M1 1, 2 · Controller B1`. */
+  /** `M1 1–3 · Controller B1`. */
   readonly sources: string;
   readonly gateway: { readonly name: string; readonly delivered: GatewayState["delivered"] | null; readonly provedVersion: string | null } | null;
   readonly asBuilt: { readonly verdict: string; readonly number: number; readonly at: string } | null;
@@ -66,7 +66,20 @@ function describeSources(space: AddressSpace, machine: NodeKey, nameOf: Readonly
     const name = nameOf.get(binding.sourceId) ?? "?";
     bySource.set(name, [...(bySource.get(name) ?? []), ...(binding.port === undefined ? [] : [binding.port])]);
   }
-  return [...bySource].map(([name, ports]) => [name, [...ports].sort((a, b) => a - b).join(", ")].filter(Boolean).join(" ")).join(" · ");
+  return [...bySource].map(([name, ports]) => [name, formatPorts(ports)].filter(Boolean).join(" ")).join(" · ");
+}
+
+/** `1–3, 5`. */
+function formatPorts(ports: readonly number[]): string {
+  const sorted = [...new Set(ports)].sort((a, b) => a - b);
+  const starts = sorted.filter((port) => !sorted.includes(port - 1));
+  return starts
+    .map((start) => {
+      let end = start;
+      while (sorted.includes(end + 1)) end++;
+      return end === start ? String(start) : `${start}–${end}`;
+    })
+    .join(", ");
 }
 
 /** The newest report that was made of the machine's gateway. */

@@ -88,7 +88,7 @@ export function MachineTable({ machines, testServers }: Props) {
             </Row>
             <Row label="Sources" machines={machines}>
               {(machine) => (
-                <span className="block max-w-36 truncate font-mono text-note text-ink-2" title={machine.facts.sources}>
+                <span className="block w-24 truncate font-mono text-note text-ink-2 max-[1400px]:w-[84px]" title={machine.facts.sources}>
                   {machine.facts.sources || <span className="text-ink-3">none bound</span>}
                 </span>
               )}
