@@ -6,7 +6,8 @@ import type { Change, ChangeKind } from "../compare/change";
 import { compareModels } from "../compare/compare-models";
 import { SpaceDataTypes } from "../nodeset/values/data-type-shapes";
 import type { AsBuiltAspect, AsBuiltComparison, AsBuiltDifference, AsBuiltTolerance, Observation, ServedModel } from "./as-built";
-import { projectForServer, projectServed } from "./project-for-server";
+import { isSameGraph } from "./is-same-graph";
+import { makeServedView, projectForServer, projectServed } from "./project-for-server";
 
 export type AsBuiltInput = {
   /** The release with its required models. */
@@ -59,18 +60,19 @@ function compareServedNodes({ released, served, tolerance }: AsBuiltInput): AsBu
   const nodes = released.listOwnNodes();
   const namespaces = new Set(nodes.map((n) => n.nodeId.namespaceUri));
   const liveNodes = served.nodes.filter((n) => namespaces.has(n.nodeId.namespaceUri));
-  const byId = new Map(liveNodes.map((n) => [formatNodeId(n.nodeId), n]));
-  const required = released.layers.slice(0, -1);
-  const { header } = released.own;
-  const live = AddressSpace.of(required, buildLayer(header, liveNodes));
   const types = new SpaceDataTypes(released);
-  const expected = nodes.map((node) => projectForServer(released, types, node, byId.get(formatNodeId(node.nodeId))));
-  const shown = liveNodes.map((node) => projectServed(live, types, node, released.findByNodeId(node.nodeId)));
-  const comparison = compareModels(
-    AddressSpace.of(required, buildLayer(header, expected)),
-    AddressSpace.of(required, buildLayer(header, shown)),
-  );
-  return comparison.changes.filter((change) => counts(change, tolerance)).map(toDifference);
+  const liveById = new Map(liveNodes.map((n) => [formatNodeId(n.nodeId), n]));
+  const releasedById = new Map(nodes.map((n) => [formatNodeId(n.nodeId), n]));
+  const releasedView = makeServedView(released, types, nodes);
+  const liveView = makeServedView(released, types, liveNodes);
+  const expected = nodes.map((node) => projectForServer(releasedView, node, liveById.get(formatNodeId(node.nodeId))));
+  const shown = liveNodes.map((node) => projectServed(liveView, node, releasedById.get(formatNodeId(node.nodeId))));
+  if (isSameGraph(expected, shown)) return [];
+  const required = released.layers.slice(0, -1);
+  const toSpace = (list: readonly Node[]): AddressSpace => AddressSpace.of(required, buildLayer(released.own.header, list));
+  return compareModels(toSpace(expected), toSpace(shown))
+    .changes.filter((change) => counts(change, tolerance))
+    .map(toDifference);
 }
 
 const TEXT_KINDS: ReadonlySet<ChangeKind> = new Set(["text-changed"]);

@@ -277,7 +277,7 @@ function compareRest({ before: old, after: now }: NodePair): Difference[] {
 }
 
 function attribute(node: Node, name: (typeof PLAIN_ATTRIBUTES)[number]): unknown {
-  return Object.entries(node).find(([key]) => key === name)?.[1];
+  return (node as unknown as Readonly<Record<string, unknown>>)[name];
 }
 
 /** References told elsewhere: ownership, types and rules are facts of the node. */

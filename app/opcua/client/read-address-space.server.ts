@@ -94,7 +94,14 @@ function makeNodes(
   namespaces: readonly string[],
   layers: readonly Layer[],
 ): Result<LiveAddressSpace> {
-  const keyOf = (id: NodeId): NodeKey => toNodeKey(toDomainNodeId(id, namespaces));
+  // Reference types and type definitions come again with every node.
+  const keys = new Map<string, NodeKey>();
+  const keyOf = (id: NodeId): NodeKey => {
+    const text = id.toString();
+    const known = keys.get(text) ?? toNodeKey(toDomainNodeId(id, namespaces));
+    keys.set(text, known);
+    return known;
+  };
   const ownKeys = new Set(own.map((n) => n.description.nodeId.toString()));
   const incoming = listIncoming(found, ownKeys, keyOf);
   const bare = own.map((node, order) => makeNode(node, attributes[order] ?? new Map(), order, incoming, namespaces, keyOf));
