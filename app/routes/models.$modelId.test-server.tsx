@@ -18,6 +18,7 @@ export async function loader({ request, params }: Route.LoaderArgs) {
     headSeq: model.headSeq,
     servers: servers.map((server) => ({ server, log: readTestServerLog(server.id) })),
     mayRun: mayDo(caller, "test-server.run", model.organizationId),
+    hasMachines: model.kind === "machines",
   };
 }
 
@@ -27,7 +28,7 @@ export async function action({ request, params }: Route.ActionArgs) {
   const old = form.has("id") ? requireTestServer(caller, String(form.get("id")), "test-server.run") : undefined;
   if (old) await stopTestServer(old, caller);
   if (form.get("intent") === "stop") return redirect(`/models/${model.id}/test-server`);
-  const intent = requireFields(testServerIntentSchema, old ? { security: old.security, simulatedQuality: old.simulatedQuality } : readChoice(form));
+  const intent = requireFields(testServerIntentSchema, old ? { security: old.security, simulatedQuality: old.simulatedQuality, values: old.feed ? "live" : "simulated" } : readChoice(form));
   const started = await startTestServer(model, caller, intent);
   if (!started.ok) return data({ problems: started.problems }, { status: 503 });
   return redirect(`/models/${model.id}/test-server`);
@@ -37,6 +38,7 @@ function readChoice(form: FormData): object {
   return {
     security: form.get("open") === "1" ? ["basic256sha256", "none"] : ["basic256sha256"],
     simulatedQuality: form.get("simulatedQuality") ?? undefined,
+    values: form.get("values") ?? undefined,
   };
 }
 

@@ -9,7 +9,7 @@ import { Progress } from "../ui/progress";
 import { Segments } from "../ui/segments";
 
 /** Starts a test server with one press; the choices below it are for those who need them. */
-export function StartTestServer({ mayRun, isAgain }: { mayRun: boolean; isAgain: boolean }) {
+export function StartTestServer({ mayRun, isAgain, hasMachines }: { mayRun: boolean; isAgain: boolean; hasMachines: boolean }) {
   const navigation = useNavigation();
   const [isOpen, setOpen] = useState(false);
   const isStarting = navigation.state !== "idle" && navigation.formData?.get("intent") === "start";
@@ -28,6 +28,20 @@ export function StartTestServer({ mayRun, isAgain }: { mayRun: boolean; isAgain:
           {isAgain ? "Start another" : "Start test server"}
         </Button>
       </div>
+      {hasMachines ? (
+        <div className="flex flex-wrap items-center gap-2 text-small">
+          <span className="text-ink-2">Values</span>
+          <Segments
+            label="Values"
+            name="values"
+            value="simulated"
+            options={[
+              { value: "simulated", label: "Simulated" },
+              { value: "live", label: "From the live sources, through the mapping" },
+            ]}
+          />
+        </div>
+      ) : null}
       {isStarting ? <Progress stage={TEST_SERVER_STAGES[0].label} figure={`1 of ${TEST_SERVER_STAGES.length}`} className="max-w-160" /> : null}
       <details className="text-small">
         <summary className="w-fit text-ink-2">Security and status</summary>

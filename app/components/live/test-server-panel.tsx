@@ -131,6 +131,16 @@ function Running({ server }: { server: TestServerState }) {
         <Row name="Application URI">
           <span className="font-mono break-all">{server.applicationUri}</span>
         </Row>
+        {server.feed ? (
+          <Row name="Fed by sources">
+            <span className="font-mono">{server.feed.inputs}</span> readings, <span className="font-mono">{server.feed.changes}</span> changes of Variables
+            {server.feed.delay ? (
+              <>
+                ; from reading to Variable p99 <span className="font-mono">{server.feed.delay.p99.toFixed(1)} ms</span>
+              </>
+            ) : null}
+          </Row>
+        ) : null}
         <Row name="Values">
           {server.simulation?.moving ?? 0} move, {server.simulation?.fixed ?? 0} keep still; status{" "}
           <span className="font-mono">{server.simulatedQuality === "good" ? "Good" : "Uncertain_SimulatedValue"}</span>

@@ -1,5 +1,6 @@
 import { Pause, Play, RefreshCw } from "lucide-react";
 import { useEffect, useRef, useState } from "react";
+import { FindingShape } from "~/components/notation/finding-badge";
 import { StatusBadge } from "~/components/notation/status-badge";
 import { Button } from "~/components/ui/button";
 import { Empty } from "~/components/ui/empty";
@@ -133,15 +134,23 @@ export function BenchLive({
         >
           {isFollowing ? "Stop" : "Follow every second"}
         </Button>
-        {state ? (
-          <StatusBadge status={state.failures.length === 0 ? "good" : "bad"}>
-            {state.failures.length === 0 ? `read at ${state.at}` : state.failures.join("; ")}
-          </StatusBadge>
-        ) : null}
+        {state && state.failures.length === 0 ? <StatusBadge status="good">read at {state.at}</StatusBadge> : null}
       </div>
+      <Failures texts={state?.failures ?? []} />
       <p className="text-note text-ink-3">Reading from a live device. No values are written.</p>
     </div>
   );
+}
+
+function Failures({ texts }: { texts: readonly string[] }) {
+  return texts.map((text) => (
+    <p key={text} role="alert" className="flex items-start gap-1.5 text-small text-error">
+      <span className="pt-0.5">
+        <FindingShape severity="error" />
+      </span>
+      {text}
+    </p>
+  ));
 }
 
 function listPlaces(sources: readonly SourceView[]): Place[] {

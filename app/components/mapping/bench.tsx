@@ -29,7 +29,10 @@ export function Bench({ bench, scene, sources, actions }: Props) {
     );
   return (
     <div className="grid min-h-0 flex-1 grid-cols-[minmax(380px,2fr)_minmax(0,3fr)] divide-x divide-rule overflow-hidden">
-      <section aria-label="Input" className="grid content-start gap-4 overflow-y-auto px-5 py-3">
+      <section
+        aria-label="Input"
+        className="grid grid-cols-[minmax(0,1fr)] content-start gap-4 overflow-y-auto px-5 py-3"
+      >
         <div className="flex items-center gap-3">
           <Segments
             label="Bytes from"

@@ -17,6 +17,7 @@ import { listMachines, type Machine } from "~/domain/instantiation/list-machines
 import { listBoundRoles, listExceptions } from "~/domain/mapping/bindings";
 import type { PlannedSource } from "~/domain/mapping/make-wiring";
 import type { Binding } from "~/domain/mapping/mapping-parts";
+import { isIoLinkMaster } from "~/domain/mapping/source-settings";
 import { planBindings, type RollOutCell } from "~/domain/mapping/roll-out-bindings";
 import type { DeviceSummary } from "~/services/read-devices.server";
 import type { LoggedReplacement } from "~/services/replace-device.server";
@@ -297,7 +298,7 @@ function BindingTable({ roles, machines, sources, devices }: TableProps) {
 }
 
 function patternHint(sources: readonly PlannedSource[]): string {
-  return sources[0] ? `${sources[0].name}:{n}` : "M1:{n}";
+  return `${sources.find((source) => isIoLinkMaster(source.kind))?.name ?? "M1"}:{n}`;
 }
 
 type CellProps = {

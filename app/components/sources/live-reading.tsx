@@ -3,6 +3,7 @@ import { RefreshCw } from "lucide-react";
 import { viewFrame } from "~/components/frames/frame-fields";
 import { FrameTable } from "~/components/frames/frame-table";
 import { readFields } from "~/components/frames/read-fields";
+import { FindingShape } from "~/components/notation/finding-badge";
 import { StatusBadge } from "~/components/notation/status-badge";
 import { Button } from "~/components/ui/button";
 import type { DeviceDescription } from "~/domain/iodd/device-description";
@@ -37,7 +38,12 @@ export function LiveReading({ source, port }: { source: SourceView; port: PortVi
           return frame ? <ReadFrame key={direction} direction={direction} frame={frame} device={device} /> : null;
         })
       ) : (
-        <StatusBadge status="bad">{reading.message}</StatusBadge>
+        <p role="alert" className="flex items-start gap-1.5 text-small text-error">
+          <span className="pt-0.5">
+            <FindingShape severity="error" />
+          </span>
+          {reading.message}
+        </p>
       )}
       {reading?.ok && !reading.in && !reading.out ? (
         <p className="text-small text-ink-2">The port answers, but no process data.</p>
