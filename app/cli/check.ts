@@ -6,17 +6,19 @@ import { AddressSpace, buildLayer } from "../domain/address-space/address-space"
 import { getOwnNamespace } from "../domain/address-space/model-header";
 import { conventionsSchema, makeConventionRules, type Conventions } from "../domain/checks/conventions";
 import { RULES } from "../domain/checks/registry";
+import { formatReport } from "../domain/checks/format-report";
 import type { Rule } from "../domain/checks/rule";
 import { runChecks } from "../domain/checks/run-checks";
-import { toReport, type CheckReport, type ReportedFinding } from "../domain/checks/to-report";
+import { toSchemaFindings } from "../domain/checks/schema-findings";
+import { isAtLeast, keepFrom, toReport, type CheckReport, type ReportedFinding } from "../domain/checks/to-report";
 import { toSarif } from "../domain/checks/to-sarif";
 import { waiverFileSchema } from "../domain/checks/waiver-file";
 import { applyWaivers, type Waiver } from "../domain/checks/waivers";
-import { fail, ok, problem, type Problem, type Result, type Severity } from "../domain/core/result";
+import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { listRequired } from "../library/describe-nodeset.server";
 import { getLibrary } from "../library/library.server";
-import { formatReport } from "./format-report";
+import { validateXsd } from "../library/validate-xsd.server";
 import { resolvePath, type CheckCommand } from "./parse-command-line";
 import { readFolders, readInput } from "./read-input";
 
@@ -26,7 +28,6 @@ type Checked = {
 };
 
 const NOTHING = new Map<never, never>();
-const WEIGHT: Readonly<Record<Severity, number>> = { error: 2, warning: 1, hint: 0 };
 
 export async function check(command: CheckCommand): Promise<number> {
   const { file } = command;
@@ -52,8 +53,9 @@ export async function check(command: CheckCommand): Promise<number> {
   const checked = checkContent(command, content.value, layers.value, problems, {
     waivers: waivers.value.waivers,
     rules: [...RULES, ...makeConventionRules(conventions.value)],
+    faults: await validateXsd(await readFile(resolvePath(file))),
   });
-  const counted = checked.report.findings.some((f) => WEIGHT[f.severity] >= WEIGHT[command.severity ?? "error"]);
+  const counted = checked.report.findings.some((f) => isAtLeast(f.severity, command.severity ?? "error"));
   const hasErrors = counted || problems.some((found) => found.severity === "error");
   return print(command, checked, hasErrors ? 1 : 0);
 }
@@ -64,30 +66,30 @@ function withPlace(found: Problem, { header, modelPlaces }: NodeSetContent): Pro
   return found.at || !at ? found : { ...found, at };
 }
 
+type Asked = {
+  readonly waivers: readonly Waiver[];
+  readonly rules: readonly Rule[];
+  /** What is not valid against the schema. */
+  readonly faults: readonly Problem[];
+};
+
 function checkContent(
   { file, severity }: CheckCommand,
   content: NodeSetContent,
   layers: Parameters<typeof AddressSpace.of>[0],
   problems: readonly Problem[],
-  { waivers, rules }: { readonly waivers: readonly Waiver[]; readonly rules: readonly Rule[] },
+  { waivers, rules, faults }: Asked,
 ): Checked {
   const space = AddressSpace.of(layers, buildLayer(content.header, content.nodes));
+  const { lines } = content;
   const { open, waived } = applyWaivers(space, runChecks(space, { rules }), waivers);
-  const sources = { file, lines: content.lines, problems };
-  const listed = waived.map(({ finding, waiver }) => {
-    const [reported] = toReport([finding], { file, lines: content.lines }).findings;
+  const ofText = applyWaivers(space, toSchemaFindings(space, faults, lines), waivers);
+  const sources = { file, lines, problems, ofText: ofText.open };
+  const listed = [...waived, ...ofText.waived].map(({ finding, waiver }) => {
+    const [reported] = toReport([finding], { file, lines }).findings;
     return reported ? [{ finding: reported, waiver }] : [];
   });
   return { report: keepFrom(toReport(open, sources), severity), waived: listed.flat() };
-}
-
-/** Leaves out findings below the severity that is asked for. */
-function keepFrom(report: CheckReport, lowest: Severity | undefined): CheckReport {
-  if (lowest === undefined) return report;
-  const findings = report.findings.filter((f) => WEIGHT[f.severity] >= WEIGHT[lowest]);
-  const counts = { error: 0, warning: 0, hint: 0 };
-  for (const { severity } of findings) counts[severity]++;
-  return { ...report, counts, findings };
 }
 
 /** Reads a JSON file of a known form. Problem: `check-file.unreadable`. */
@@ -120,6 +122,6 @@ function toText(
 ): string {
   if (format === "text") return formatReport(report, isChecked);
   const digest = (text: string): string => createHash("sha256").update(text).digest("hex");
-  const document = format === "json" ? report : toSarif([report], { version: "0.1.0", waived, digest });
+  const document = format === "json" ? report : toSarif([report], { version: "0.1.0", waived, digest, isChecked });
   return `${JSON.stringify(document, null, 2)}\n`;
 }

@@ -2,9 +2,10 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
 
   npm run -s ferrule -- check FILE [--with DIR]… [--format text|json|sarif] [--severity S] [--waivers FILE]
         [--conventions FILE]
-      Reads the file with the models it requires and runs the checker.
-  npm run -s ferrule -- rules [--json]
+      Validates the file against UANodeSet.xsd, reads it with the models it requires and runs the checker.
+  npm run -s ferrule -- rules [RULE] [--json]
       The rules of the checker: number, severity, clause, whether there is a fix; and those that do not run, with the reason.
+      With a RULE, as R023: what must hold, what happens where it does not, a good and a bad example.
   npm run -s ferrule -- roundtrip IN OUT [--canonical] [--with DIR]…
       Reads IN and writes OUT with all nodes, references and attributes, in the order of IN. --canonical: types first, owners
       before what they own, else by NodeId, so that two files of one model differ only where the model does.

@@ -14,7 +14,7 @@ export type CheckCommand = {
   readonly conventions: string | undefined;
 };
 export type ReportFormat = "text" | "json" | "sarif";
-export type RulesCommand = { readonly name: "rules"; readonly isJson: boolean };
+export type RulesCommand = { readonly name: "rules"; readonly id: string | undefined; readonly isJson: boolean };
 export type RoundtripCommand = {
   readonly name: "roundtrip";
   readonly input: string;
@@ -91,8 +91,8 @@ export function parseCommandLine(args: readonly string[]): Command {
     };
   }
   if (name === "rules") {
-    requireCount(rest, 0, "rules takes no file.");
-    return { name, isJson: values.json ?? false };
+    if (rest.length > 1) throw new UsageError("rules takes one RULE at most.");
+    return { name, id: rest[0]?.toUpperCase(), isJson: values.json ?? false };
   }
   if (name === "roundtrip") {
     if (values.json) throw new UsageError("roundtrip knows no --json.");

@@ -2,11 +2,12 @@
 import { listWaivers } from "../db/repositories/waivers.server";
 import type { AddressSpace } from "../domain/address-space/address-space";
 import { startChecksInSteps, updateChecks, type CheckRun } from "../domain/checks/run-checks";
-import { toReport, type CheckReport } from "../domain/checks/to-report";
+import { keepFrom, toReport, type CheckReport, type ReportedFinding } from "../domain/checks/to-report";
 import type { Finding } from "../domain/checks/finding";
 import type { Wiring } from "../domain/checks/wiring";
 import { makeWiring } from "../domain/mapping/make-wiring";
-import { applyWaivers, type WaivedFindings } from "../domain/checks/waivers";
+import { applyWaivers, type WaivedFindings, type Waiver } from "../domain/checks/waivers";
+import type { Severity } from "../domain/core/result";
 import { singleton } from "../utils/singleton.server";
 import { exportModel } from "./export-model.server";
 import { loadPlannedSources } from "./load-planned-sources.server";
@@ -81,11 +82,21 @@ export function countFindings(findings: readonly Pick<Finding, "severity">[]): F
   return counts;
 }
 
+export type ModelReport = {
+  readonly report: CheckReport;
+  readonly waived: readonly { readonly finding: ReportedFinding; readonly waiver: Waiver }[];
+};
+
 /** The report that the API and the command line share: findings with the lines of the export. */
-export async function reportModel(modelId: string): Promise<CheckReport | undefined> {
+export async function reportModel(modelId: string, lowest?: Severity): Promise<ModelReport | undefined> {
   const checked = await checkModel(modelId);
   const written = await exportModel(modelId);
   if (!checked || !written) return undefined;
   const { missing, warnings } = written.working;
-  return toReport(checked.findings, { file: written.fileName, lines: written.lines, problems: [...missing, ...warnings] });
+  const { fileName: file, lines } = written;
+  const waived = checked.waived.flatMap(({ finding, waiver }) =>
+    toReport([finding], { file, lines }).findings.map((reported) => ({ finding: reported, waiver })),
+  );
+  const report = toReport(checked.findings, { file, lines, problems: [...missing, ...warnings] });
+  return { report: keepFrom(report, lowest), waived };
 }

@@ -1,5 +1,6 @@
 /** The OpenAPI 3.1 document of /api/v1, made of the schemas that the routes check and answer with. */
 import { z } from "zod";
+import { waiverFileSchema } from "../domain/checks/waiver-file";
 import { comparisonSchema, findingsSchema, modelSchema, problemDocumentSchema, revisionSchema } from "../utils/api-schemas";
 import { testServerAnswerSchema } from "./describe-test-server.server";
 import { freezeSchema } from "./freeze-revision.server";
@@ -69,6 +70,12 @@ const organization = {
   description: "Needed only by a session of somebody who belongs to several organisations.",
 };
 const pathId = (name: string) => ({ name, in: "path", required: true, schema: { type: "string" } });
+const choice = (name: string, values: readonly string[], description: string) => ({
+  name,
+  in: "query",
+  schema: { type: "string", enum: values },
+  description,
+});
 const stateName = (name: string, description: string) => ({
   name,
   in: "query",
@@ -157,8 +164,30 @@ const paths = {
     parameters: [pathId("modelId")],
     get: {
       operationId: "listFindings",
-      summary: "What the checker says of the working state",
-      responses: { 200: json(refTo("Findings"), "The report"), ...problems(401, 403, 404) },
+      summary: "What the checker says of the working state, without what people have accepted",
+      parameters: [
+        choice("format", ["json", "sarif", "text"], "The form of the report; SARIF 2.1.0 tells accepted findings as suppressed."),
+        choice("severity", ["error", "warning", "hint"], "Only findings of this severity and above."),
+      ],
+      responses: {
+        200: {
+          description: "The report",
+          content: {
+            "application/json": { schema: refTo("Findings") },
+            "application/sarif+json": { schema: { type: "object" } },
+            "text/plain": { schema: { type: "string" } },
+          },
+        },
+        ...problems(401, 403, 404, 422),
+      },
+    },
+  },
+  "/models/{modelId}/waivers": {
+    parameters: [pathId("modelId")],
+    get: {
+      operationId: "listWaivers",
+      summary: "Accepted findings, as the file that the command line's --waivers reads",
+      responses: { 200: json(toJsonSchema(waiverFileSchema), "The waivers"), ...problems(401, 403, 404) },
     },
   },
   "/models/{modelId}/revisions": {

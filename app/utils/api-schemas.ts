@@ -22,10 +22,12 @@ export const findingSchema = z
     nodeId: z.string().meta({ description: "With nsu=, never an index; empty when the model as a whole is meant." }),
     browseName: z.string(),
     path: z.string(),
+    attribute: z.string().optional().meta({ examples: ["dataType"] }),
     ...placeFields,
     message: z.string(),
     clause: z.string().meta({ description: "Part, edition and section of the standard." }),
     facts: z.array(z.string()),
+    consequence: z.string().optional().meta({ description: "What happens in practice if nobody mends it." }),
   })
   .meta({ id: "Finding" });
 

@@ -61,6 +61,36 @@ describe("import through the API", () => {
     }
   });
 
+  test("tells findings as text and SARIF, from a severity on, and without what was accepted", async () => {
+    const file = writePumpNodeSet({ uri: "http://merrow.example/UA/Formats/" });
+    const made = (await (await app.call("POST", "/api/v1/models", { cookie, body: file, headers: xml })).json()) as { id: string };
+    const ask = (query: string) => app.call("GET", `/api/v1/models/${made.id}/findings${query}`, { cookie });
+    const all = (await (await ask("")).json()) as { findings: { rule: string; severity: string; nodeId: string; attribute?: string; message: string }[] };
+    const [first] = all.findings;
+    if (!first) throw new Error("The file has no findings to speak of");
+    const text = await ask("?format=text");
+    expect(text.headers.get("content-type")).toBe("text/plain; charset=utf-8");
+    expect(await text.text()).toContain(first.message);
+    const sarif = await ask("?format=sarif");
+    expect(sarif.headers.get("content-type")).toBe("application/sarif+json");
+    type Log = { version: string; runs: { results: { ruleId: string; suppressions?: object[] }[] }[] };
+    expect((await sarif.json()) as Log).toMatchObject({ version: "2.1.0" });
+    const errors = (await (await ask("?severity=error")).json()) as typeof all;
+    expect(errors.findings).toEqual(all.findings.filter((f) => f.severity === "error"));
+    expect((await ask("?format=pdf")).status).toBe(422);
+
+    const { rule, nodeId, attribute } = first;
+    const body = JSON.stringify({ rule, nodeId, attribute, reason: "Agreed with the plant." });
+    const accepted = await app.call("POST", `/models/${made.id}/waivers`, { cookie, body, headers: { "content-type": "application/json" } });
+    expect(accepted.status).toBe(201);
+    const left = (await (await ask("")).json()) as typeof all;
+    expect(left.findings.some((f) => f.rule === rule && f.nodeId === nodeId && f.attribute === attribute)).toBe(false);
+    const log = (await (await ask("?format=sarif")).json()) as Log;
+    expect(log.runs[0]?.results.find((r) => r.ruleId === rule && r.suppressions)?.suppressions).toHaveLength(1);
+    const waivers = (await (await app.call("GET", `/api/v1/models/${made.id}/waivers`, { cookie })).json()) as { waivers: object[] };
+    expect(waivers.waivers).toMatchObject([{ rule, nodeId, reason: "Agreed with the plant." }]);
+  });
+
   test("answers 409 to the same namespace, also when both come at the same time", async () => {
     const file = writePumpNodeSet({ uri: "http://merrow.example/UA/Twice/" });
     const statuses = await Promise.all([upload(file), upload(file), upload(file)]);

@@ -40,7 +40,7 @@ test("a new model stands on its required models, has its namespace's metadata, a
   }
   expect(xml).toMatch(/<RequiredModel ModelUri="http:\/\/opcfoundation.org\/UA\/DI\/" [^>]*Version="1\.\d+/);
   const report = await reportModel(made.value.id);
-  expect(report?.findings.filter((f) => f.severity === "error")).toEqual([]);
+  expect(report?.report.findings.filter((f) => f.severity === "error")).toEqual([]);
 });
 
 test("the same namespace is not made twice, a published one not at all, and ids are not given again after deletion", async () => {

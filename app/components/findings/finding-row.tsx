@@ -13,6 +13,7 @@ import type { Finding } from "~/domain/checks/finding";
 import { findRule } from "~/domain/checks/registry";
 import { AcceptFinding } from "./accept-finding";
 import { FindingPlace } from "./finding-place";
+import { MendPreview } from "./mend-preview";
 
 export type FindingTools = {
   readonly space: AddressSpace;
@@ -31,7 +32,8 @@ function toParentPath(finding: Finding): string {
 
 function showLinks(finding: Finding, modelId: string) {
   const query = finding.key === undefined ? "" : `?node=${encodeURIComponent(finding.key)}`;
-  return { sheet: `/models/${modelId}/sheet${query}`, register: `/models/${modelId}/register${query}` };
+  const base = `/models/${modelId}`;
+  return { sheet: `${base}/sheet${query}`, register: `${base}/register${query}`, source: `${base}/source${query}` };
 }
 
 type RowProps = { finding: Finding; tools: FindingTools; open: boolean; onToggle: () => void; showsRule?: boolean };
@@ -125,7 +127,15 @@ function FindingDetail({ finding, tools }: { finding: Finding; tools: FindingToo
           {rule ? <Fact label="Must hold">{rule.condition}</Fact> : null}
           {rule ? <Fact label="If ignored">{rule.why}</Fact> : null}
           <Fact label="Clause">
-            <Tag>{finding.clause}</Tag>
+            <span className="flex flex-wrap items-center gap-2">
+              <Tag>{finding.clause}</Tag>
+              <Link
+                to={`/rules/${finding.rule}`}
+                className="border-b border-rule font-medium hover:border-copper hover:text-copper"
+              >
+                Help on {finding.rule}
+              </Link>
+            </span>
           </Fact>
         </dl>
       </section>
@@ -143,6 +153,9 @@ function FindingDetail({ finding, tools }: { finding: Finding; tools: FindingToo
               </Button>
               <span className="text-note text-ink-3">undone with one step</span>
             </div>
+            <div className="mb-3 max-h-60 overflow-y-auto border-l border-rule pl-2.5">
+              <MendPreview space={tools.space} findings={[finding]} />
+            </div>
           </>
         ) : (
           <p className="mb-2 text-small text-ink-2">Mend it by hand where the node stands.</p>
@@ -150,6 +163,7 @@ function FindingDetail({ finding, tools }: { finding: Finding; tools: FindingToo
         <p className="flex flex-wrap gap-2">
           <LinkToNode to={links.register}>In the register</LinkToNode>
           <LinkToNode to={links.sheet}>On the sheet</LinkToNode>
+          <LinkToNode to={links.source}>In the source text</LinkToNode>
         </p>
         {tools.accept ? <AcceptFinding finding={finding} accept={tools.accept} /> : null}
       </section>

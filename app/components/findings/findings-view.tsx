@@ -1,5 +1,6 @@
 import { ChevronDown, ChevronRight, Search } from "lucide-react";
 import { useMemo, useState } from "react";
+import { Link } from "react-router";
 import type { WaivedFinding } from "~/components/model/finding-store";
 import { findingWords, FindingShape } from "~/components/notation/finding-badge";
 import { Button } from "~/components/ui/button";
@@ -12,6 +13,7 @@ import type { Finding } from "~/domain/checks/finding";
 import { findRule, RULES } from "~/domain/checks/registry";
 import type { Severity } from "~/domain/core/result";
 import { FindingRow, type FindingTools } from "./finding-row";
+import { MendPreview } from "./mend-preview";
 import { WaivedList } from "./waived-list";
 import { getFindingId, groupFindings, matchesText, type FindingGroup, type Grouping } from "./group-findings";
 
@@ -79,7 +81,11 @@ export function FindingsView({ findings, waived, tools, ownNodes }: Props) {
         </label>
         <p className="ml-auto text-note text-ink-3">
           <span className="font-mono">{ownNodes.toLocaleString("en").replaceAll(",", " ")}</span> nodes of the model
-          checked by <span className="font-mono">{RULES.length}</span> rules; findings inside required models stay out
+          checked by{" "}
+          <Link to="/rules" className="border-b border-rule hover:border-copper hover:text-copper">
+            <span className="font-mono">{RULES.length}</span> rules
+          </Link>
+          ; findings inside required models stay out
         </p>
       </div>
       <div className="min-h-0 flex-1 overflow-y-auto px-5 pb-8">
@@ -126,6 +132,7 @@ type GroupProps = {
 function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: GroupProps) {
   const fix = grouping === "rule" ? findRule(group.id)?.fix : undefined;
   const [showsAll, setShowsAll] = useState(false);
+  const [isMending, setIsMending] = useState(false);
   const shown = showsAll ? group.findings : group.findings.slice(0, firstRows);
   return (
     <li className="border-b border-rule">
@@ -148,7 +155,7 @@ function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: G
         </button>
         <span className="flex items-center gap-3 text-note text-ink-3">
           {fix && tools.mend && group.findings.length > 1 ? (
-            <Button size="small" onClick={() => tools.mend?.(group.findings)} title={fix.label}>
+            <Button size="small" aria-expanded={isMending} onClick={() => setIsMending(!isMending)} title={fix.label}>
               Mend all {group.findings.length}
             </Button>
           ) : null}
@@ -156,6 +163,9 @@ function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: G
           <span className="w-6 text-right font-mono text-small text-ink">{group.findings.length}</span>
         </span>
       </div>
+      {isMending && fix ? (
+        <MendAll label={fix.label} findings={group.findings} tools={tools} onDone={() => setIsMending(false)} />
+      ) : null}
       {isClosed ? null : (
         <ul>
           {shown.map((finding) => {
@@ -185,6 +195,37 @@ function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: G
         </ul>
       )}
     </li>
+  );
+}
+
+type MendAllProps = { label: string; findings: readonly Finding[]; tools: FindingTools; onDone: () => void };
+
+/** Before all findings of a kind are mended: what that changes, how many it is, and the way back. */
+function MendAll({ label, findings, tools, onDone }: MendAllProps) {
+  const mend = () => {
+    tools.mend?.(findings);
+    onDone();
+  };
+  return (
+    <section
+      aria-label={`Mend all: ${label}`}
+      className="grid gap-3 border-b border-hair bg-leaf px-5 py-3"
+      onKeyDown={(event) => {
+        if (event.key === "Escape") onDone();
+      }}
+    >
+      <h3 className="text-small font-semibold">{label}</h3>
+      <div className="max-h-80 overflow-y-auto">
+        <MendPreview space={tools.space} findings={findings} />
+      </div>
+      <p className="flex items-center gap-3">
+        <Button tone="main" blockedBy={tools.mendBlockedBy} onClick={mend} autoFocus>
+          Mend all {findings.length}
+        </Button>
+        <Button onClick={onDone}>Leave as it is</Button>
+        <span className="text-note text-ink-3">undone with one step</span>
+      </p>
+    </section>
   );
 }
 

@@ -24,6 +24,7 @@ export function FrameActions({ frame }: { frame: FrameData }) {
     const go = (path: string) => () => void navigate(path);
     return [
       ...screens.map(({ to, label }) => ({ id: `screen ${to}`, label, group: "Screens", run: go(to) })),
+      { id: "screen /rules", label: "Rules of the checker", group: "Screens", run: go("/rules") },
       ...models.map(({ id, name, kind }) => ({
         id: `model ${id}`,
         label: name,

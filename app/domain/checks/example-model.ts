@@ -172,6 +172,11 @@ export class ExampleModel {
     return node;
   }
 
+  /** What was made so far. */
+  listKeys(): NodeKey[] {
+    return [...this.#nodes.keys()];
+  }
+
   /** A BrowseName: `Speed` in the own namespace, `0:EURange` in namespace 0. */
   name(text: string): QualifiedName {
     return text.startsWith("0:") ? qualifiedName(OPC_UA_NAMESPACE, text.slice(2)) : qualifiedName(this.uri, text);

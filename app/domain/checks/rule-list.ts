@@ -1,5 +1,6 @@
 /** The whole catalogue for people and pipelines: rules that run, and those that do not, with the reason. */
 import type { Severity } from "../core/result";
+import { FILE_RULES } from "./file-rules";
 import { RULES } from "./registry";
 import { clause } from "./rule";
 
@@ -84,13 +85,6 @@ const OMITTED: readonly Omission[] = [
     "A matter of writing files: exports of new models are sorted.",
   ],
   [
-    "R191",
-    "Schema valid",
-    "error",
-    `UANodeSet.xsd, ${clause(6, "§F.1, §F.7")}`,
-    "A question to the text of a file, not to the model in it: the validation against the schema answers it.",
-  ],
-  [
     "R195",
     "Extensions preserved",
     "hint",
@@ -109,22 +103,17 @@ const OMITTED: readonly Omission[] = [
 
 /** In the order of numbers. */
 export function listRules(): ListedRule[] {
-  const running = RULES.map(({ id, title, severity, clause: basis, fix }) => ({
-    id,
-    title,
-    severity,
-    clause: basis,
-    hasFix: fix !== undefined,
-    implemented: true,
-  }));
-  const omitted = OMITTED.map(([id, title, severity, basis, reason]) => ({
-    id,
-    title,
-    severity,
-    clause: basis,
-    hasFix: false,
-    implemented: false,
-    reason,
-  }));
-  return [...running, ...omitted].sort((a, b) => (a.id < b.id ? -1 : 1));
+  const toListed = (rule: Omit<ListedRule, "hasFix" | "implemented">, hasFix: boolean): ListedRule => {
+    const { id, title, severity, clause: basis, reason } = rule;
+    const implemented = reason === undefined;
+    return { id, title, severity, clause: basis, hasFix, implemented, ...(implemented ? {} : { reason }) };
+  };
+  const listed = [
+    ...RULES.map((rule) => toListed(rule, rule.fix !== undefined)),
+    ...FILE_RULES.map((rule) => toListed(rule, false)),
+    ...OMITTED.map(([id, title, severity, basis, reason]) =>
+      toListed({ id, title, severity, clause: basis, reason }, false),
+    ),
+  ];
+  return listed.sort((a, b) => (a.id < b.id ? -1 : 1));
 }

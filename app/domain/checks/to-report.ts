@@ -3,6 +3,8 @@ import type { NodeKey } from "../address-space/node-id";
 import { formatProblem } from "../core/problem-texts";
 import type { Problem, Severity } from "../core/result";
 import type { Finding } from "./finding";
+import { FILE_RULES } from "./file-rules";
+import { findRule } from "./registry";
 import { toFindings, type PlacedFinding } from "./problem-findings";
 
 export type ReportedFinding = {
@@ -11,11 +13,14 @@ export type ReportedFinding = {
   readonly nodeId: string;
   readonly browseName: string;
   readonly path: string;
+  readonly attribute?: string;
   readonly line: number;
   readonly column: number;
   readonly message: string;
   readonly clause: string;
   readonly facts: readonly string[];
+  /** What happens in practice if nobody mends it. */
+  readonly consequence?: string;
 };
 
 export type ReportedProblem = {
@@ -37,6 +42,8 @@ export type ReportSources = {
   /** Where each node's element starts: the reader's map, or the writer's, which knows lines only. */
   readonly lines: ReadonlyMap<NodeKey, number | { readonly line: number; readonly column: number }>;
   readonly problems?: readonly Problem[];
+  /** Findings about the text of the file. */
+  readonly ofText?: readonly PlacedFinding[];
 };
 
 /**
@@ -44,12 +51,32 @@ export type ReportSources = {
  * reading that break a rule appear among the findings too.
  */
 export function toReport(findings: readonly Finding[], sources: ReportSources): CheckReport {
-  const { file, lines, problems = [] } = sources;
-  const placed: PlacedFinding[] = [...findings.map((f) => ({ ...f, ...findPlace(f, lines) })), ...toFindings(problems)];
+  const { file, lines, problems = [], ofText = [] } = sources;
+  const placed: PlacedFinding[] = [
+    ...findings.map((f) => ({ ...f, ...findPlace(f, lines) })),
+    ...toFindings(problems),
+    ...ofText,
+  ];
   const reported = placed.map(toReportedFinding).sort(compareReported);
   const counts = { error: 0, warning: 0, hint: 0 };
   for (const { severity } of reported) counts[severity]++;
   return { file, counts, findings: reported, problems: problems.map(toReportedProblem) };
+}
+
+const WEIGHT: Readonly<Record<Severity, number>> = { error: 2, warning: 1, hint: 0 };
+
+/** Whether a severity is the asked one or above. */
+export function isAtLeast(severity: Severity, lowest: Severity): boolean {
+  return WEIGHT[severity] >= WEIGHT[lowest];
+}
+
+/** The report without findings below the severity that is asked for. */
+export function keepFrom(report: CheckReport, lowest: Severity | undefined): CheckReport {
+  if (lowest === undefined) return report;
+  const findings = report.findings.filter((f) => isAtLeast(f.severity, lowest));
+  const counts = { error: 0, warning: 0, hint: 0 };
+  for (const { severity } of findings) counts[severity]++;
+  return { ...report, counts, findings };
 }
 
 function findPlace(finding: Finding, lines: ReportSources["lines"]): { line: number; column: number } {
@@ -59,8 +86,22 @@ function findPlace(finding: Finding, lines: ReportSources["lines"]): { line: num
 }
 
 function toReportedFinding(finding: PlacedFinding): ReportedFinding {
-  const { rule, severity, nodeId, browseName, path, line = 1, column = 1, message, clause, facts } = finding;
-  return { rule, severity, nodeId, browseName, path, line, column, message, clause, facts };
+  const { rule, severity, nodeId, browseName, path, attribute, line = 1, column = 1, message, clause, facts } = finding;
+  const consequence = (findRule(rule) ?? FILE_RULES.find((r) => r.id === rule))?.why;
+  return {
+    rule,
+    severity,
+    nodeId,
+    browseName,
+    path,
+    ...(attribute === undefined ? {} : { attribute }),
+    line,
+    column,
+    message,
+    clause,
+    facts,
+    ...(consequence === undefined ? {} : { consequence }),
+  };
 }
 
 function toReportedProblem(found: Problem): ReportedProblem {

@@ -4,6 +4,7 @@
  */
 import type { Severity } from "../core/result";
 import type { ReportedFinding, CheckReport } from "./to-report";
+import { FILE_RULES } from "./file-rules";
 import { RULES } from "./registry";
 import type { Waiver } from "./waivers";
 
@@ -17,6 +18,8 @@ const LEVELS: Readonly<Record<Severity, "error" | "warning" | "note">> = {
 
 export type SarifOptions = {
   readonly version: string;
+  /** False when the file could not be checked: its log then says so, and that nothing is known of results. */
+  readonly isChecked?: boolean;
   /** Accepted findings; they stay in the log with their level and say who accepted them. */
   readonly waived?: readonly { readonly finding: ReportedFinding; readonly waiver: Waiver }[];
   /** A digest of a text as hexadecimal digits, which the domain cannot make; without it there are no fingerprints. */
@@ -27,7 +30,8 @@ export type SarifOptions = {
 export function toSarif(reports: readonly CheckReport[], options: SarifOptions): object {
   const used = new Set(reports.flatMap((r) => r.findings.map((f) => f.rule)));
   for (const { finding } of options.waived ?? []) used.add(finding.rule);
-  const rules = RULES.filter((rule) => used.has(rule.id));
+  const rules = [...RULES, ...FILE_RULES].filter((rule) => used.has(rule.id));
+  const { isChecked = true } = options;
   const indexOf = new Map(rules.map((rule, i) => [rule.id as string, i] as const));
   const uris = reports.map((r) => toUri(r.file));
   const results = reports.flatMap((report, at) => [
@@ -61,10 +65,10 @@ export function toSarif(reports: readonly CheckReport[], options: SarifOptions):
         },
         columnKind: "utf16CodeUnits",
         artifacts: uris.map((uri) => ({ location: { uri, uriBaseId: "SRCROOT" }, mimeType: "application/xml" })),
-        results,
+        ...(isChecked ? { results } : {}),
         invocations: [
           {
-            executionSuccessful: true,
+            executionSuccessful: isChecked,
             toolExecutionNotifications: notes.map(({ code, message, line, column, uri }) => ({
               level: "warning",
               descriptor: { id: code },

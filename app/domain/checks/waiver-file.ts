@@ -13,3 +13,18 @@ const waiverSchema: z.ZodType<Waiver> = z.object({
 });
 
 export const waiverFileSchema = z.object({ waivers: z.array(waiverSchema) });
+
+/** The file for a pipeline that honours what people have accepted in the application. */
+export function toWaiverFile(waivers: readonly Waiver[]): z.infer<typeof waiverFileSchema> {
+  return {
+    waivers: waivers.map(({ rule, nodeId, attribute, reason, person, date, fingerprint }) => ({
+      rule,
+      nodeId,
+      ...(attribute === undefined ? {} : { attribute }),
+      reason,
+      person,
+      date,
+      fingerprint,
+    })),
+  };
+}

@@ -20,23 +20,23 @@ export type Waiver = {
   readonly fingerprint: string;
 };
 
-export type WaivedFindings<W extends Waiver = Waiver> = {
-  readonly open: readonly Finding[];
-  readonly waived: readonly { readonly finding: Finding; readonly waiver: W }[];
+export type WaivedFindings<W extends Waiver = Waiver, F extends Finding = Finding> = {
+  readonly open: readonly F[];
+  readonly waived: readonly { readonly finding: F; readonly waiver: W }[];
   /** Waivers of findings that are open again because their node changed. */
   readonly expired: readonly W[];
 };
 
-export function applyWaivers<W extends Waiver>(
+export function applyWaivers<W extends Waiver, F extends Finding>(
   space: AddressSpace,
-  findings: readonly Finding[],
+  findings: readonly F[],
   waivers: readonly W[],
-): WaivedFindings<W> {
+): WaivedFindings<W, F> {
   if (waivers.length === 0) return { open: findings, waived: [], expired: [] };
   const byPlace = new Map<string, W>();
   for (const waiver of waivers) byPlace.set(placeOf(waiver), waiver);
-  const open: Finding[] = [];
-  const waived: { finding: Finding; waiver: W }[] = [];
+  const open: F[] = [];
+  const waived: { finding: F; waiver: W }[] = [];
   const expired = new Set<W>();
   for (const finding of findings) {
     const waiver = byPlace.get(placeOf(finding));
