@@ -33,7 +33,10 @@ export function ArrayRows({ label, type, values, onChange, make, render }: Props
   useEffect(() => {
     if (wanted === undefined) return;
     const row = list.current?.querySelector(`[data-row="${wanted}"]`);
-    row?.querySelector<HTMLElement>("input:not([type=checkbox]), select, textarea, input, button")?.focus();
+    const control = row?.querySelector<HTMLElement>("input:not([type=checkbox]), select, textarea, input, button");
+    control?.focus();
+    // What stands there is typed over.
+    if (control instanceof HTMLInputElement && control.type === "text") control.select();
     setWanted(undefined);
   }, [wanted]);
 
