@@ -41,6 +41,18 @@ describe.each(manifest.nodesets.map(({ file }) => file))("%s", (file) => {
     expect(again.nodes).toEqual(content.nodes);
   });
 
+  it("changes in one line when one text of one node changes, and leaves the imported file's lines alone", () => {
+    const index = Math.floor(content.nodes.length / 2);
+    const nodes = content.nodes.map((node, i) =>
+      i === index ? { ...node, displayName: [{ text: "Changed here" }, ...node.displayName.slice(1)] } : node,
+    );
+    const [before, after] = [written.xml, writeNodeSet({ ...content, nodes }).xml].map((xml) => xml.split("\n"));
+    const added = content.nodes[index]?.displayName.length === 0 ? 1 : 0;
+    expect(after?.length).toBe((before?.length ?? 0) + added);
+    expect(after?.filter((line) => line.includes("Changed here"))).toHaveLength(1);
+    if (added === 0) expect(after?.filter((line, i) => line !== before?.[i])).toHaveLength(1);
+  });
+
   it("comes out the same when its own output is read and written", () => {
     expect(writeNodeSet(getValue(readNodeSet(written.xml))).xml).toBe(written.xml);
   });
