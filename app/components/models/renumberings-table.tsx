@@ -1,5 +1,6 @@
 import { LocalTime } from "~/components/shell/local-time";
 import { Table, TableScroll, Td, Th } from "~/components/ui/table";
+import { formatNodeId, OPC_UA_NAMESPACE, parseNodeId } from "~/domain/address-space/node-id";
 import type { Renumbering } from "~/presenters/renumberings.server";
 
 /** What nodes were called before, for whoever meets an old NodeId in a program or a drawing. */
@@ -35,5 +36,6 @@ export function RenumberingsTable({ list }: { list: readonly Renumbering[] }) {
 
 /** All are of the model's own namespace, which the page names. */
 function withoutNamespace(nodeId: string): string {
-  return nodeId.replace(/^nsu=[^;]*;/, "");
+  const parsed = parseNodeId(nodeId, []);
+  return parsed.ok ? formatNodeId({ ...parsed.value, namespaceUri: OPC_UA_NAMESPACE }) : nodeId;
 }
