@@ -42,7 +42,8 @@ export async function startDemoSources(slug: string): Promise<string> {
 
 async function startOpcUaMaster(organizationId: string): Promise<void> {
   const files = REQUIRED_FILES.flatMap((uri) => {
-    const entry = getLibrary().list().find((e) => e.modelUri === uri && e.origin === "published");
+    const published = getLibrary().list().filter((e) => e.modelUri === uri && e.origin === "published");
+    const [entry] = published.sort((a, b) => ((a.publicationDate ?? "") < (b.publicationDate ?? "") ? 1 : -1));
     return entry?.source.kind === "file" ? [entry.source.path] : [];
   });
   const master = await startFakeMaster(join(findProjectRoot(), "build/node/fake-master.js"), {

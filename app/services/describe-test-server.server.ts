@@ -18,6 +18,10 @@ export const testServerAnswerSchema = z.object({
   tokens: z.object({ anonymous: z.boolean(), userName: z.string(), password: z.string() }),
   certificateThumbprint: z.string().nullable(),
   sessions: z.number().int(),
+  feed: z
+    .object({ inputs: z.int(), changes: z.int(), delay: z.object({ p50: z.number(), p99: z.number(), highest: z.number() }).nullable() })
+    .nullable()
+    .meta({ description: "What live sources fed since the start, and its delay over the last second in ms; null for a simulation." }),
   problems: z.array(z.object({ code: z.string(), severity: z.string(), message: z.string() }).loose()),
   log: z.array(z.object({ at: z.iso.datetime(), level: z.string(), text: z.string() })).optional(),
 });
@@ -40,6 +44,7 @@ export function describeTestServer(server: TestServerState, log?: readonly LogLi
     tokens: server.tokens,
     certificateThumbprint: server.certificateThumbprint,
     sessions: server.sessions.length,
+    feed: server.feed && { ...server.feed },
     problems: server.problems.map(toProblemJson),
     ...(log ? { log: log.map((line) => ({ ...line })) } : {}),
   };

@@ -1,4 +1,5 @@
 /** Feeds a test server from the live sources of its organisation: pollers here, mappings in its process. */
+import { setTimeout as wait } from "node:timers/promises";
 import type { AddressSpace } from "../domain/address-space/address-space";
 import { formatProblem } from "../domain/core/problem-texts";
 import { makeFeed, type Feed } from "../domain/mapping/make-feed";
@@ -8,6 +9,8 @@ import { logError } from "../utils/log.server";
 import { singleton } from "../utils/singleton.server";
 import { openSource } from "./live-sources.server";
 import { loadPlannedSources } from "./load-planned-sources.server";
+
+const START_POLL_MS = 100;
 
 /** Ends of what runs, by test server. */
 const getFeeds = () => singleton("test-server-feeds", () => new Map<string, () => void>());
@@ -25,6 +28,8 @@ export async function feedTestServer(testServerId: string, organizationId: strin
   getFeeds().set(testServerId, () => {
     for (const end of ends) end();
   });
+  // Slow readings come once a minute: the first must find the server running.
+  while (supervisor.get(testServerId)?.state === "starting") await wait(START_POLL_MS);
   const memory = new ReadingMemory();
   for (const planned of feed.readings) {
     const poller = await openSource(organizationId, planned.sourceId);

@@ -56,6 +56,9 @@ type RunningFrame = {
   readonly rows: readonly RunningRow[];
 };
 
+/** A reading that is late by less than this share of its period is no outage. */
+const LATE = 1.4;
+
 const WAITING = badSample(StatusCode.Bad_WaitingForInitialData, 0);
 
 export class MappingRunner {
@@ -164,7 +167,7 @@ export class MappingRunner {
       const { period, quality } = row.plan.row;
       if (period === undefined || row.plan.input.kind === "constant" || row.sample === WAITING) continue;
       const silent = now - row.sample.time;
-      if (silent <= period || isBad(row.sample.status)) continue;
+      if (silent <= LATE * period || isBad(row.sample.status)) continue;
       const isKept = silent <= (quality?.keepPeriods ?? 3) * period;
       const status =
         isKept || quality?.afterKeep === "Uncertain_NoCommunicationLastUsable"

@@ -40,7 +40,7 @@ export function makeBraiderSignals(braider: number, time: number): BraiderSignal
   const seconds = time / 1000 + braider * 37;
   const isWaiting = braider === 4 && seconds % 180 < 25;
   const isRunning = !isWaiting;
-  const stroke = triangle(seconds / 14);
+  const stroke = triangle(seconds / 90);
   const setpoint = 20 + 210 * stroke;
   const lag = 0.6 * Math.sin(seconds * 1.7 + braider);
   const speed = isRunning ? 120 + 8 * braider + 3 * Math.sin(seconds / 9) : 0;
