@@ -20,12 +20,12 @@ export function NodeIdChoice({ policy, onChange, example }: Props) {
         value={policy.kind}
         onChange={(kind) => onChange(kind === "numbers" ? { kind } : { kind, pattern: "{name}", separator: "." })}
         options={[
-          { value: "numbers", label: "Numbers" },
+          { value: "numbers", label: "As the model has it" },
           { value: "path", label: "Path of names" },
         ]}
       />
       {policy.kind === "numbers" ? (
-        <p className="text-note text-ink-3">The next free numbers of the namespace.</p>
+        <p className="text-note text-ink-3">As the page About of the model says; numbers one after the other unless it was changed there.</p>
       ) : (
         <>
           <div className="grid grid-cols-[minmax(0,1fr)_110px] gap-2">

@@ -1,11 +1,11 @@
 /** What a roll-out would make and what the checker would say of it, before anything is made. Pure. */
 import type { AddressSpace } from "~/domain/address-space/address-space";
-import { getOwnNamespace } from "~/domain/address-space/model-header";
-import { numericNodeId, type NodeId } from "~/domain/address-space/node-id";
+import type { NodeId } from "~/domain/address-space/node-id";
 import type { Finding } from "~/domain/checks/finding";
 import { runChecks } from "~/domain/checks/run-checks";
-import { ok, type Problem } from "~/domain/core/result";
+import type { Problem } from "~/domain/core/result";
 import { applyOperations } from "~/domain/editing/apply-operation";
+import { IdStock } from "~/domain/editing/id-stock";
 import { listMachines } from "~/domain/instantiation/list-machines";
 import { rollOutMachines, type RollOutIntent } from "~/domain/instantiation/roll-out-machines";
 
@@ -19,13 +19,8 @@ export type RollOutPreview =
     }
   | { readonly ok: false; readonly problems: readonly Problem[] };
 
-/** Above all that is leased, so that a scratch id never meets a real one. */
-const SCRATCH_IDS = 3_500_000_000;
-
 export function previewRollOut(space: AddressSpace, intent: RollOutIntent): RollOutPreview {
-  const namespaceUri = getOwnNamespace(space.own.header);
-  let next = SCRATCH_IDS;
-  const edit = rollOutMachines(space, { allocate: () => ok(numericNodeId(namespaceUri, next++)) }, intent);
+  const edit = rollOutMachines(space, IdStock.forTrial(space), intent);
   const after = edit.ok ? applyOperations(space, edit.value.operations) : edit;
   if (!edit.ok || !after.ok) return { ok: false, problems: after.problems };
   const findings = runChecks(after.value).filter((finding) => finding.key !== undefined && !space.getNode(finding.key));

@@ -31,7 +31,7 @@ export interface NodeIdAllocator {
 }
 
 /** Numbers that no lease reaches. */
-const FIRST_SCRATCH = 3_600_000_000;
+export const FIRST_SCRATCH = 3_600_000_000;
 
 /** For a trial of a command, whose edit is thrown away: gives scratch ids and counts how many of each class it takes. */
 export class CountingAllocator implements NodeIdAllocator {

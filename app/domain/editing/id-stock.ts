@@ -8,9 +8,11 @@ import { getOwnNamespace } from "../address-space/model-header";
 import type { NodeClass } from "../address-space/node";
 import { toNodeKey, type NodeId } from "../address-space/node-id";
 import { fail, problem, type Result } from "../core/result";
-import { BlockAllocator, type IdBlock, type NewNodePlace, type NodeIdAllocator } from "./allocate-node-id";
+import { BlockAllocator, FIRST_SCRATCH, type IdBlock, type NewNodePlace, type NodeIdAllocator } from "./allocate-node-id";
 import { NodeIdLedger, PathAllocator } from "./id-policies";
 import type { Operation } from "./operation";
+
+const SCRATCH_IDS = 10_000_000;
 
 /** Which block is asked for: that of a class, or the one for all that has no range. */
 export type BlockFor = NodeClass | undefined;
@@ -26,6 +28,15 @@ export class IdStock implements NodeIdAllocator {
     this.#getSpace = getSpace;
     this.ledger = new NodeIdLedger(given);
     for (const block of blocks) this.addBlock(block);
+  }
+
+  /** For a trial of a command, whose edit is thrown away: numbers that no lease reaches, paths as they would be given. */
+  static forTrial(space: AddressSpace): IdStock {
+    const blocks = [undefined, ...NODE_CLASSES].map((nodeClass, i): IdBlock => {
+      const from = FIRST_SCRATCH + i * SCRATCH_IDS;
+      return { from, to: from + SCRATCH_IDS - 1, ...(nodeClass ? { nodeClass } : {}) };
+    });
+    return new IdStock(() => space, blocks);
   }
 
   /** Problems: `node-id.block-empty`, `node-id.range-used-up`, `node-id.path-used-up`. */
