@@ -132,7 +132,11 @@ export function useGridControl(inputs: Inputs): GridControl {
       const at = find();
       const { space, rows } = latest.current;
       const selected = new Set(view.getState().selection);
-      const chosen = rows.filter((row) => selected.has(row.key));
+      const takes = ({ key }: RegisterRow): boolean => {
+        const node = space.getNode(key);
+        return node !== undefined && at !== undefined && isEditable(node, at.column);
+      };
+      const chosen = rows.filter((row) => selected.has(row.key) && takes(row));
       const first = chosen[0] && space.getNode(chosen[0].key);
       if (!at || !first || chosen.length < 2) return;
       const text = getCellText(space, first, at.column);
