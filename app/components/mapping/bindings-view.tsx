@@ -1,7 +1,7 @@
 import { useMemo, useState } from "react";
 import { href } from "react-router";
-import { useEditorState, useOpenModel } from "~/components/model/use-model";
-import { FindingShape } from "~/components/notation/finding-badge";
+import { useBadges, useEditorState, useOpenModel, type Badge } from "~/components/model/use-model";
+import { FindingBadge, FindingShape } from "~/components/notation/finding-badge";
 import { Button, LinkButton } from "~/components/ui/button";
 import { Drawer } from "~/components/ui/drawer";
 import { Empty } from "~/components/ui/empty";
@@ -14,7 +14,7 @@ import { showToast } from "~/components/ui/toast";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { formatProblem } from "~/domain/core/problem-texts";
 import { listMachines, type Machine } from "~/domain/instantiation/list-machines";
-import { listBoundRoles, listExceptions } from "~/domain/mapping/bindings";
+import { listBoundRoles } from "~/domain/mapping/bindings";
 import type { PlannedSource } from "~/domain/mapping/make-wiring";
 import type { Binding } from "~/domain/mapping/mapping-parts";
 import { isIoLinkMaster } from "~/domain/mapping/source-settings";
@@ -22,6 +22,7 @@ import { planBindings, type RollOutCell } from "~/domain/mapping/roll-out-bindin
 import type { DeviceSummary } from "~/services/read-devices.server";
 import type { LoggedReplacement } from "~/services/replace-device.server";
 import { BindingPanel } from "./binding-panel";
+import { Exceptions } from "./exception-editor";
 import { DeliverPanel } from "./deliver-panel";
 import { MappingActions } from "./use-mapping-actions";
 
@@ -40,10 +41,6 @@ export function BindingsView({ sources, devices, replacements }: Props) {
   const machines = useMemo(() => listMachines(space), [space]);
   const tables = useMemo(
     () => groupByRoles(machines, (key) => listBoundRoles(space, key).map((one) => one.role)),
-    [machines, space],
-  );
-  const exceptions = useMemo(
-    () => machines.flatMap((machine) => listExceptions(space, machine.key).map((one) => ({ machine, ...one }))),
     [machines, space],
   );
   if (machines.length === 0)
@@ -93,38 +90,7 @@ export function BindingsView({ sources, devices, replacements }: Props) {
               <BindingTable key={roles.join("\n")} roles={roles} machines={group} sources={sources} devices={devices} />
             ),
           )}
-          <Block title="Exceptions" about="Machines that differ from their type in a row.">
-            {exceptions.length === 0 ? (
-              <p className="text-small text-ink-2">None: every machine is fed as its type says.</p>
-            ) : (
-              <TableScroll label="Exceptions">
-                <Table caption="Rows in which machines differ from their type">
-                  <thead>
-                    <tr>
-                      <Th>Machine</Th>
-                      <Th>Member</Th>
-                      <Th>Differs by</Th>
-                      <Th>Reason</Th>
-                    </tr>
-                  </thead>
-                  <tbody>
-                    {exceptions.map(({ machine, path, exception }) => (
-                      <Tr key={`${machine.key} ${path}`}>
-                        <RowHead>{machine.name}</RowHead>
-                        <Td mono>{path}</Td>
-                        <Td>
-                          {exception.isMissing
-                            ? "is not there"
-                            : `another ${Object.keys(exception.row ?? {}).join(", ")}`}
-                        </Td>
-                        <Td className="text-ink-2">{exception.reason}</Td>
-                      </Tr>
-                    ))}
-                  </tbody>
-                </Table>
-              </TableScroll>
-            )}
-          </Block>
+          <Exceptions machines={machines} />
           {replacements.length > 0 ? <Replacements replacements={replacements} /> : null}
         </div>
       )}
@@ -162,6 +128,7 @@ function BindingTable({ roles, machines, sources, devices }: TableProps) {
   const [open, setOpen] = useState<{ machine: NodeKey; role: string } | undefined>(undefined);
   const machineActions = (machine: NodeKey) => new MappingActions(model, machine);
   const actions = machineActions(machines[0]?.key as NodeKey);
+  const badges = useBadges(machines.map((machine) => machine.key));
   const hasPattern = Object.values(patterns).some((pattern) => pattern.trim() !== "");
   const plan = useMemo(
     () =>
@@ -246,7 +213,12 @@ function BindingTable({ roles, machines, sources, devices }: TableProps) {
               const bound = new Map(listBoundRoles(space, machine.key).map((one) => [one.role, one.binding]));
               return (
                 <tr key={machine.key} className="align-top">
-                  <RowHead className="pt-1.5">{machine.name}</RowHead>
+                  <RowHead className="pt-1.5">
+                    <span className="flex items-center gap-1.5">
+                      {machine.name}
+                      <MachineBadge badge={badges.get(machine.key)} />
+                    </span>
+                  </RowHead>
                   {roles.map((role) => (
                     <BindingCell
                       key={role}
@@ -295,6 +267,10 @@ function BindingTable({ roles, machines, sources, devices }: TableProps) {
       ) : null}
     </section>
   );
+}
+
+function MachineBadge({ badge }: { badge: Badge | undefined }) {
+  return badge ? <FindingBadge severity={badge.severity} count={badge.count} title={badge.title} /> : null;
 }
 
 function patternHint(sources: readonly PlannedSource[]): string {

@@ -7,6 +7,7 @@ import { Field, Select } from "~/components/ui/field";
 import { Icon } from "~/components/ui/icon";
 import { Block } from "~/components/ui/page";
 import type { NodeKey } from "~/domain/address-space/node-id";
+import { ReadDocument } from "./read-document";
 
 type Choice = { readonly key: NodeKey; readonly name: string };
 type Props = {
@@ -53,16 +54,19 @@ export function DeliverPanel({ type, machines }: Props) {
   return (
     <div className="grid content-start gap-6">
       {type ? (
-        <Block title="Files" about={<em>{type.name}</em>}>
-          <Files
-            files={typeFiles.map(([what, file, name, about]) => ({
-              href: `${base}/${what}?type=${encodeURIComponent(type.key)}`,
-              file,
-              name,
-              about,
-            }))}
-          />
-        </Block>
+        <>
+          <Block title="Files" about={<em>{type.name}</em>}>
+            <Files
+              files={typeFiles.map(([what, file, name, about]) => ({
+                href: `${base}/${what}?type=${encodeURIComponent(type.key)}`,
+                file,
+                name,
+                about,
+              }))}
+            />
+          </Block>
+          <ReadDocument type={type.key} />
+        </>
       ) : (
         <Block
           title="Files of a machine"
