@@ -9,7 +9,7 @@ import { listMemberships, type Membership } from "../db/repositories/people.serv
 import { sha256 } from "../utils/ids.server";
 import { failWith } from "../utils/problem-response.server";
 import { getAuth } from "./auth.server";
-import { can, tokenScopes, type Action, type Role, type TokenScope } from "./permissions";
+import { can, getScope, tokenScopes, type Action, type Role, type TokenScope } from "./permissions";
 import { isFromOwnOrigin, isStateChanging } from "./same-origin.server";
 
 export type Caller = {
@@ -92,7 +92,7 @@ export function isMember(caller: Caller, organizationId: string): boolean {
 
 /** Whether the caller may do it in this organisation, the token's scopes included. */
 export function mayDo(caller: Caller, action: Action, organizationId: string): boolean {
-  if (caller.token && !caller.token.scopes.includes(action === "read" ? "read" : "write")) return false;
+  if (caller.token && !caller.token.scopes.includes(getScope(action))) return false;
   return can(rolesIn(caller, organizationId), action);
 }
 

@@ -51,6 +51,20 @@ export function formatRoles(held: readonly Role[]): string {
   return roles.filter((role) => held.includes(role)).join(",");
 }
 
-/** What a token may do besides its owner's roles: reading alone, or writing too. */
-export const tokenScopes = ["read", "write"] as const;
+/** What a token may do within its owner's roles; each scope stands by itself. */
+export const tokenScopes = ["read", "write", "review", "release"] as const;
 export type TokenScope = (typeof tokenScopes)[number];
+
+/** The scope that an action asks of a token. */
+export function getScope(action: Action): TokenScope {
+  switch (action) {
+    case "read":
+    case "release":
+      return action;
+    case "comment":
+    case "review.decide":
+      return "review";
+    default:
+      return "write";
+  }
+}

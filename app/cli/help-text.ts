@@ -11,6 +11,9 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
       before what they own, else by NodeId, so that two files of one model differ only where the model does.
   npm run -s ferrule -- compare OLD NEW [--with DIR]… [--json]
       What changed from OLD to NEW, by meaning: each change rated breaking, additive or neutral, with the clause.
+  npm run -s ferrule -- verify BUNDLE [--key FILE] [--json]
+      Whether a release's bundle is whole and signed: every file against the manifest, the manifest against its Ed25519
+      signature, and with --key (the organisation's public key, PEM) whether it is that key.
   npm run -s ferrule -- device FILE [--json]
       What an IODD says: one XML file, or the ZIP that it came in.
   npm run -s ferrule -- decode FILE HEX [--direction in|out] [--condition VALUE] [--json]
@@ -28,6 +31,7 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
 
 Exit status: 0 nothing of severity error · 1 at least one error (check --severity S: one of S or above) ·
 2 unreadable file, missing required model, or wrong usage.
+verify: 0 everything fits · 1 something does not · 2 unreadable.
 compare: 0 no change or neutral ones only · 1 additive · 3 breaking · 2 unreadable.
 decode: 2 also for a frame of the wrong length and where --condition must say which layout is meant.
 `;

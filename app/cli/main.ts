@@ -7,6 +7,7 @@ import { map } from "./map-command";
 import { parseCommandLine, UsageError } from "./parse-command-line";
 import { roundtrip } from "./roundtrip";
 import { rules } from "./rules-command";
+import { verify } from "./verify-command";
 
 async function run(args: readonly string[]): Promise<number> {
   const command = parseCommandLine(args);
@@ -22,6 +23,8 @@ async function run(args: readonly string[]): Promise<number> {
       return roundtrip(command);
     case "compare":
       return compare(command);
+    case "verify":
+      return verify(command);
     case "device":
       return device(command);
     case "decode":

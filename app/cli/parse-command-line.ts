@@ -29,6 +29,13 @@ export type CompareCommand = {
   readonly folders: readonly string[];
   readonly isJson: boolean;
 };
+export type VerifyCommand = {
+  readonly name: "verify";
+  readonly file: string;
+  /** PEM file of the public key that must have signed. */
+  readonly key: string | undefined;
+  readonly isJson: boolean;
+};
 export type DeviceCommand = { readonly name: "device"; readonly file: string; readonly isJson: boolean };
 export type DecodeCommand = {
   readonly name: "decode";
@@ -51,6 +58,7 @@ export type Command =
   | RulesCommand
   | RoundtripCommand
   | CompareCommand
+  | VerifyCommand
   | DeviceCommand
   | DecodeCommand
   | MapCommand;
@@ -103,6 +111,10 @@ export function parseCommandLine(args: readonly string[]): Command {
     const [before, after] = requireCount(rest, 2, "compare takes two files, OLD and NEW.");
     return { name, before: before ?? "", after: after ?? "", folders, isJson: values.json ?? false };
   }
+  if (name === "verify") {
+    const [file] = requireCount(rest, 1, "verify takes one BUNDLE.");
+    return { name, file: file ?? "", key: values.key, isJson: values.json ?? false };
+  }
   if (name === "device") {
     const [file] = requireCount(rest, 1, "device takes one FILE.");
     return { name, file: file ?? "", isJson: values.json ?? false };
@@ -138,6 +150,7 @@ function parse(args: readonly string[]) {
         condition: { type: "string" },
         canonical: { type: "boolean" },
         frame: { type: "string", multiple: true },
+        key: { type: "string" },
         help: { type: "boolean", short: "h" },
       },
     });

@@ -9,6 +9,7 @@ import { PeopleTable } from "~/components/team/people-table";
 import { teamSchema, type TeamIntent } from "~/components/team/team-forms";
 import { RoleLegend } from "~/components/team/role-boxes";
 import { TokensBlock } from "~/components/team/tokens-block";
+import { LinkButton } from "~/components/ui/button";
 import { Notice } from "~/components/ui/notice";
 import { Block, Page } from "~/components/ui/page";
 import { formatProblem } from "~/domain/core/problem-texts";
@@ -57,7 +58,7 @@ export async function action({ request }: Route.ActionArgs) {
   if (value.intent === "create-token") {
     const { secret } = await createToken(caller, organizationId, {
       name: value.name,
-      scopes: value.scope === "write" ? ["read", "write"] : ["read"],
+      scopes: [...new Set(["read" as const, ...value.scopes])],
       days: value.days,
     });
     return data<Answer>({ intent: value.intent, submission: null, secret, errors: [] });
@@ -96,6 +97,7 @@ export default function Team({ loaderData, actionData }: Route.ComponentProps) {
   return (
     <Page
       title="Team"
+      actions={<LinkButton to="/team/settings">Approvals, webhooks, mail</LinkButton>}
       about={`${page.people.length} ${page.people.length === 1 ? "person" : "people"} of ${page.organizationName}`}
     >
       <div className="grid grid-cols-[minmax(0,1fr)_340px] gap-8 max-lg:grid-cols-1">

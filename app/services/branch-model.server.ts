@@ -7,7 +7,7 @@ import type { Caller } from "../auth/caller.server";
 import { writeBatch } from "../db/client.server";
 import { addAuditStatement } from "../db/repositories/audit.server";
 import { addBlobStatement, toBlob } from "../db/repositories/blobs.server";
-import { findModel, findRevisionByNumber, updateModelStatement, type ModelRow } from "../db/repositories/models.server";
+import { findModel, findRevisionByNumber, listVariants, updateModelStatement, type ModelRow } from "../db/repositories/models.server";
 import { AddressSpace } from "../domain/address-space/address-space";
 import type { MergeConflict, MergeSide } from "../domain/compare/merge/merge-conflict";
 import { mergeModels } from "../domain/compare/merge/merge-models";
@@ -126,4 +126,8 @@ async function noteCommonState(author: Caller, variant: ModelRow, theirsId: stri
     }),
   ]);
   forgetWorkingModel(variant.id);
+}
+
+export function listModelVariants(model: ModelRow): Promise<ModelRow[]> {
+  return listVariants(model.id);
 }

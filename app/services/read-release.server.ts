@@ -157,3 +157,8 @@ export async function readGatewayStates(organizationId: string): Promise<Gateway
   }
   return [...states.values()].sort((a, b) => a.gateway.localeCompare(b.gateway) || a.model.localeCompare(b.model));
 }
+
+/** The deliveries of one release, newest first. */
+export async function listReleaseDeliveries(release: Pick<ReleaseRow, "id">): Promise<DeliveryLine[]> {
+  return (await listDeliveries([release.id])).map(toDeliveryLine);
+}

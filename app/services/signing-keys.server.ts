@@ -50,3 +50,8 @@ export async function signManifest(keyId: string, manifest: string): Promise<Bun
   const signature = sign(null, Buffer.from(manifest, "utf8"), privateKey).toString("base64");
   return { algorithm: "Ed25519", keyId: key.id, publicKey: key.publicKey, signature };
 }
+
+/** The public key that signs now, in PEM; undefined before the first release. */
+export async function findPublicKey(organizationId: string): Promise<string | undefined> {
+  return (await findSigningKey(organizationId))?.publicKey;
+}

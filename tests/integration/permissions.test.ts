@@ -28,6 +28,7 @@ afterAll(() => app.stop());
 const open: Readonly<Record<string, string>> = {
   "routes/sign-in.tsx": "the door",
   "routes/set-up.tsx": "the door of an empty installation, guarded by the code",
+  "routes/mail.unsubscribe.tsx": "the way out of mails, guarded by a mark that only the installation makes",
   "routes/theme.tsx": "a choice of colours in a cookie",
   "routes/api/auth.ts": "the door for programs",
   "routes/api/openapi.ts": "describes, tells nothing",

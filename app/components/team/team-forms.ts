@@ -23,7 +23,7 @@ const setPasswordSchema = z.object({ intent: z.literal("set-password"), userId, 
 const createTokenSchema = z.object({
   intent: z.literal("create-token"),
   name: z.string("Say what it is for").trim().max(100, "At most 100 characters"),
-  scope: z.enum(tokenScopes),
+  scopes: z.array(z.enum(tokenScopes)).default([]),
   days: z.coerce
     .number("Write a number of days")
     .int("Whole days")

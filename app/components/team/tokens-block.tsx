@@ -4,7 +4,7 @@ import { Form, useNavigation } from "react-router";
 import { LocalTime } from "~/components/shell/local-time";
 import { Button } from "~/components/ui/button";
 import { Dialog, DialogClose } from "~/components/ui/dialog";
-import { Field, Input, Select } from "~/components/ui/field";
+import { Checkbox, Field, Input } from "~/components/ui/field";
 import { Notice } from "~/components/ui/notice";
 import { Block } from "~/components/ui/page";
 import { Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
@@ -44,7 +44,7 @@ export function TokensBlock({ tokens, secret, errors, now }: Props) {
                     {token.hint}…
                   </Td>
                   <Td>{token.owner}</Td>
-                  <Td>{token.scopes.includes("write") ? "read and write" : "read"}</Td>
+                  <Td>{token.scopes.join(", ")}</Td>
                   <Td mono>
                     {token.expiresAt ? <Expiry iso={token.expiresAt} hasExpired={token.expiresAt <= now} /> : "never"}
                   </Td>
@@ -65,14 +65,12 @@ export function TokensBlock({ tokens, secret, errors, now }: Props) {
         <Field label="For" className="w-56">
           {(tied) => <Input {...tied} name="name" placeholder="nightly check" maxLength={100} required />}
         </Field>
-        <Field label="May" className="w-36">
-          {(tied) => (
-            <Select {...tied} name="scope" defaultValue="read">
-              <option value="read">read</option>
-              <option value="write">read and write</option>
-            </Select>
-          )}
-        </Field>
+        <fieldset className="flex h-7 items-center gap-3">
+          <legend className="text-note font-medium text-ink-2">May read, and</legend>
+          {(["write", "review", "release"] as const).map((scope) => (
+            <Checkbox key={scope} name="scopes" value={scope} label={scope} />
+          ))}
+        </fieldset>
         <Field label="Ends after" className="w-28">
           {(tied) => (
             <Input {...tied} name="days" type="number" min={1} max={366} defaultValue={90} unit="days" mono required />

@@ -56,8 +56,8 @@ function toChange(space: AddressSpace, old: MappingEntry | undefined, now: Mappi
     path,
     detail: member ? PART_NAMES[entry.part] : `${PART_NAMES[entry.part]} ${entry.id}`,
     ...rate(entry.part, kind),
-    before: formatEntry(old),
-    after: formatEntry(now),
+    before: formatEntry(space, old),
+    after: formatEntry(space, now),
   };
 }
 
@@ -71,7 +71,7 @@ function rate(part: MappingPart, kind: ChangeKind): Rating {
 }
 
 /** The plain values of an entry on one line, names before them: `role creel sensor, subindex 1`. */
-function formatEntry(entry: MappingEntry | undefined): string | null {
+function formatEntry(space: AddressSpace, entry: MappingEntry | undefined): string | null {
   if (!entry) return null;
   const parts: string[] = [];
   const collect = (name: string, value: unknown): void => {
@@ -80,8 +80,13 @@ function formatEntry(entry: MappingEntry | undefined): string | null {
     else if (typeof value === "object" && value !== null)
       Object.entries(value).forEach(([key, inner]) => collect(key, inner));
     else if (value !== undefined && value !== null && value !== "")
-      parts.push(name === "kind" ? String(value) : `${name} ${String(value)}`);
+      parts.push(name === "kind" ? String(value) : `${name} ${nameIn(space, value)}`);
   };
   collect("", entry.value);
   return parts.join(", ").slice(0, 300);
+}
+
+/** Members are named by key in a mapping; people read their names. */
+function nameIn(space: AddressSpace, value: unknown): string {
+  return (typeof value === "string" && space.getNode(value as NodeKey)?.browseName.name) || String(value);
 }

@@ -18,5 +18,6 @@ export const releaseProblemTexts: Readonly<Record<string, string>> = {
   "bundle.file-changed": "{path} is not what was released: its SHA-256 differs.",
   "bundle.no-signature": "The archive holds no {file}; nobody has signed it.",
   "bundle.signature": "The signature does not fit the manifest.",
+  "bundle.key-unreadable": "{file} holds no public key in PEM form.",
   "bundle.key": "The bundle is signed with another key ({found}) than the one given ({given}).",
 };
