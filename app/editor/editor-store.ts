@@ -171,8 +171,12 @@ export class EditorStore {
         return;
       }
       if (lease.given) this.#ids.addGiven(lease.given);
-      if (lease.block) this.#ids.addBlock(lease.block);
-      else this.#ids.markUsedUp(wanted.for);
+      if (!lease.block) this.#ids.markUsedUp(wanted.for);
+      else if (!this.#ids.addBlock(lease.block)) {
+        // The server knows another choice of NodeIds than this window; one of them will hear of it.
+        this.#options.schedule(() => void this.#lease(), RETRY_DELAYS[2] as number);
+        return;
+      }
     }
   }
 

@@ -61,8 +61,14 @@ export class IdStock implements NodeIdAllocator {
     for (const id of given) this.ledger.addText(id);
   }
 
-  addBlock(block: IdBlock): void {
-    this.#blockOf(block.nodeClass).addBlock(block);
+  /** False where nothing was gained: the block lies outside of the range that its class has by now. */
+  addBlock(block: IdBlock): boolean {
+    const { nodeClass } = block;
+    const range = nodeClass && findRange(this.#policy, nodeClass);
+    const before = this.#remainingIn(nodeClass);
+    this.#blockOf(nodeClass).addBlock(block);
+    if (range) this.#blockOf(nodeClass).keepWithin(range);
+    return this.#remainingIn(nodeClass) > before;
   }
 
   /** The server has no number left for it; that holds until the range is another one. */

@@ -74,6 +74,7 @@ describe("policies", () => {
     );
     policy = { kind: "ranges", ranges: { Variable: { from: 6007, to: 6999 } } };
     expect(stock.findWanted(0)).toEqual({ for: "Variable" });
+    expect(stock.addBlock({ from: 6000, to: 6005, nodeClass: "Variable" })).toBe(false);
     const next = stock.allocate("Variable");
     expect(next.ok && next.value.identifier).toBe(6007);
   });
