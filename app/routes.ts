@@ -43,6 +43,7 @@ export default [
     route("sheets", "routes/data/model-sheets.ts"),
     route("sheets/:sheetId", "routes/data/model-sheet.ts"),
     route("renumberings.csv", "routes/data/renumberings.ts"),
+    route("history", "routes/data/node-history.ts"),
   ]),
   ...prefix("api", [
     route("auth/*", "routes/api/auth.ts"),

@@ -1,7 +1,7 @@
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import { hasValueAttributes, type Node } from "~/domain/address-space/node";
 import type { Finding } from "~/domain/checks/finding";
-import { useEffect, useState, useSyncExternalStore } from "react";
+import { lazy, Suspense, useEffect, useState, useSyncExternalStore } from "react";
 import { formatPath, getNodeName, isProperty } from "../model/member-facts";
 import { listRoots } from "../model/list-roots";
 import { useOpenModel, useSelection, useSpace, useView } from "../model/use-model";
@@ -16,6 +16,9 @@ import { TextColumn } from "./text-column";
 import { hasDraft, ValueBench } from "./value-bench";
 import { ValueColumn } from "./value-column";
 import "./drawer.css";
+
+/** The lower row, which is met by scrolling or by dragging the drawer taller. */
+const FurtherColumns = lazy(() => import("./further-columns").then((module) => ({ default: module.FurtherColumns })));
 
 /** Particulars of the selected node, for the sheet and the register alike. */
 export function NodeDrawer() {
@@ -128,11 +131,16 @@ function Columns({ space, node }: { space: AddressSpace; node: Node }) {
   if (isValueOpen && hasValueAttributes(node))
     return <ValueBench space={space} node={node} readOnly={readOnly} onClose={() => setValueOpen(false)} />;
   return (
-    <div className={cx("particulars", WIDE[node.nodeClass])}>
-      <IdentityColumn space={space} node={node} readOnly={readOnly} />
-      <ValueColumn space={space} node={node} readOnly={readOnly} onOpenValue={() => setValueOpen(true)} />
-      <TextColumn node={node} readOnly={readOnly} />
-      <ReferenceColumn space={space} node={node} />
-    </div>
+    <>
+      <div className={cx("particulars", WIDE[node.nodeClass])}>
+        <IdentityColumn space={space} node={node} readOnly={readOnly} />
+        <ValueColumn space={space} node={node} readOnly={readOnly} onOpenValue={() => setValueOpen(true)} />
+        <TextColumn node={node} readOnly={readOnly} />
+        <ReferenceColumn space={space} node={node} />
+      </div>
+      <Suspense>
+        <FurtherColumns space={space} node={node} readOnly={readOnly} />
+      </Suspense>
+    </>
   );
 }

@@ -1,6 +1,7 @@
 /** Models and their working state as rows. Statements for writes are answered, so that a use case writes one batch. */
-import { and, asc, desc, eq, gt, inArray, isNull, like, lte, or } from "drizzle-orm";
+import { and, asc, desc, eq, gt, inArray, isNull, like, lt, lte, or, sql } from "drizzle-orm";
 import { newId } from "../../utils/ids.server";
+import type { NodeKey } from "../../domain/address-space/node-id";
 import type { Transaction } from "../../domain/editing/operation";
 import { getDatabase } from "../client.server";
 import { model, revision, sheet, snapshot, transaction, type SheetLayout } from "../schema/models";
@@ -140,6 +141,23 @@ export async function listRenumberingTransactions(modelId: string, limit: number
     .select()
     .from(transaction)
     .where(and(eq(transaction.modelId, modelId), renumbers))
+    .orderBy(desc(transaction.seq))
+    .limit(limit);
+  return rows.map(toTransaction);
+}
+
+/** The newest transactions before `before` that name the node in what they did. */
+export async function listNodeTransactions(
+  modelId: string,
+  key: NodeKey,
+  before: number,
+  limit: number,
+): Promise<Transaction[]> {
+  const named = sql`instr(${transaction.operations}, ${JSON.stringify(key)}) > 0`;
+  const rows = await getDatabase()
+    .select()
+    .from(transaction)
+    .where(and(eq(transaction.modelId, modelId), lt(transaction.seq, before), named))
     .orderBy(desc(transaction.seq))
     .limit(limit);
   return rows.map(toTransaction);
