@@ -51,6 +51,11 @@ export function findTypes(space: AddressSpace, question: TypeQuestion, query: st
   return found.slice(0, limit).map(({ node }) => toHit(node));
 }
 
+/** The type of exactly this name, the nearest one where several models have one. */
+export function findTypeByName(space: AddressSpace, name: string, kinds: readonly TypeKind[]): TypeNode | undefined {
+  return listTypes(space).findLast((node) => node.browseName.name === name && kinds.includes(node.nodeClass));
+}
+
 function getNearness(space: AddressSpace, node: Node): number {
   if (space.isOwn(node.key)) return 8;
   const layer = space.layers.findIndex((l) => l.nodes.has(node.key));

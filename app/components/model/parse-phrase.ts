@@ -14,7 +14,13 @@ export type SpokenMember<Unit> = {
   readonly dataType?: NodeKey;
   readonly unit?: Unit;
   readonly range?: Range;
+  readonly isOptional?: true;
 };
+
+export type SpokenType = { readonly key: NodeKey; readonly kind: "DataType" | "VariableType" | "ObjectType" };
+
+/** Finds a type of the loaded models by exactly this name. */
+export type TypeLookup = (name: string) => SpokenType | undefined;
 
 /** Finds a unit by exactly this text: symbol, name or code. */
 export type UnitLookup<Unit> = (text: string) => Unit | undefined;
@@ -36,24 +42,61 @@ const QUANTITY_WORDS = new Set([...ANALOG_WORDS, ...HABITS.flatMap((habit) => ha
 const NUMBER = String.raw`[-−+]?\d+(?:[.,]\d+)?`;
 const RANGE = new RegExp(String.raw`(?:^|\s)(${NUMBER})\s*(?:…|\.{2,3}|–|to|bis)\s*(${NUMBER})(?=\s|$|[^\d.,])`, "i");
 
-/** Undefined for a phrase without a name. */
-export function parsePhrase<Unit>(phrase: string, findUnit: UnitLookup<Unit>): SpokenMember<Unit> | undefined {
-  const { rest, range } = takeRange(phrase.trim());
+/**
+ * Undefined for a phrase without a name. Names of types among the words say type and DataType, and `optional` says that not
+ * every machine has the member: `active energy Double kWh 0..1000000`, `stack light BasicStacklightType optional`.
+ */
+export function parsePhrase<Unit>(phrase: string, findUnit: UnitLookup<Unit>, findType: TypeLookup = () => undefined): SpokenMember<Unit> | undefined {
+  const { rest: spokenText, range } = takeRange(phrase.trim());
+  const { rest, types, isOptional } = takeTypes(spokenText, findType);
   const { words, unit } = takeUnit(rest, findUnit);
-  const isMethod = /\(\s*\)\s*$/.test(phrase.trim());
-  const isObject = phrase.trim().endsWith("/");
+  const isMethod = /\(\s*\)\s*$/.test(rest);
+  const isObject = rest.endsWith("/");
   const name = toMemberName(words.map((word) => word.replace(/[()/]+$/, "")));
   if (name === "") return undefined;
-  if (isMethod) return { kind: "Method", name, typeDefinition: StandardType.BaseObjectType };
-  if (isObject) return { kind: "Object", name, typeDefinition: StandardType.BaseObjectType };
-  if (unit !== undefined || range) {
-    return { kind: "Variable", name, typeDefinition: StandardType.AnalogUnitRangeType, dataType: StandardDataType.Float, ...(unit === undefined ? {} : { unit }), ...(range ? { range } : {}) };
-  }
+  const shared = { name, ...(isOptional ? { isOptional } : {}) };
+  const objectType = types.find((type) => type.kind === "ObjectType")?.key;
+  if (isMethod) return { kind: "Method", ...shared, typeDefinition: StandardType.BaseObjectType };
+  if (isObject || objectType !== undefined) return { kind: "Object", ...shared, typeDefinition: objectType ?? StandardType.BaseObjectType };
+  const meant = guessVariable(words, unit !== undefined || range !== undefined);
+  const dataType = types.find((type) => type.kind === "DataType")?.key;
+  const typeDefinition = types.find((type) => type.kind === "VariableType")?.key;
+  return {
+    kind: "Variable",
+    ...shared,
+    // A named DataType without unit or range is no measured value, whatever the words sound like.
+    typeDefinition: typeDefinition ?? (dataType !== undefined && unit === undefined && !range ? StandardType.BaseDataVariableType : meant.typeDefinition),
+    ...(dataType !== undefined ? { dataType } : meant.dataType === undefined ? {} : { dataType: meant.dataType }),
+    ...(unit === undefined ? {} : { unit }),
+    ...(range ? { range } : {}),
+  };
+}
+
+function guessVariable(words: readonly string[], isMeasured: boolean): { typeDefinition: NodeKey; dataType?: NodeKey } {
+  const analog = { typeDefinition: StandardType.AnalogUnitRangeType, dataType: StandardDataType.Float };
+  if (isMeasured) return analog;
   const spoken = words.map((word) => word.toLowerCase());
   const habit = HABITS.find((h) => h.words.some((word) => spoken.includes(word)));
-  if (habit) return { kind: "Variable", name, typeDefinition: habit.typeDefinition, dataType: habit.dataType };
-  const isAnalog = spoken.some((word) => ANALOG_WORDS.includes(word));
-  return { kind: "Variable", name, typeDefinition: isAnalog ? StandardType.AnalogUnitRangeType : StandardType.BaseDataVariableType, ...(isAnalog ? { dataType: StandardDataType.Float } : {}) };
+  if (habit) return { typeDefinition: habit.typeDefinition, dataType: habit.dataType };
+  return spoken.some((word) => ANALOG_WORDS.includes(word)) ? analog : { typeDefinition: StandardType.BaseDataVariableType };
+}
+
+/** Takes `optional` and the names of types out; the first word is always of the name. */
+function takeTypes(text: string, findType: TypeLookup): { rest: string; types: SpokenType[]; isOptional?: true } {
+  const types: SpokenType[] = [];
+  let isOptional = false;
+  const [first = "", ...others] = text.split(/\s+/);
+  const rest = others.filter((word) => {
+    if (word.toLowerCase() === "optional") isOptional = true;
+    else {
+      // Types are written with a capital, as no other word of a phrase needs be.
+      const found = /^\p{Lu}/u.test(word) ? findType(word) : undefined;
+      if (!found) return true;
+      types.push(found);
+    }
+    return false;
+  });
+  return { rest: [first, ...rest].join(" "), types, ...(isOptional ? { isOptional: true as const } : {}) };
 }
 
 function takeRange(phrase: string): { rest: string; range?: Range } {

@@ -31,6 +31,7 @@ export function CommandPalette() {
         <Dialog.Overlay className="fixed inset-0 z-40 bg-[rgb(0_0_0/0.18)]" />
         <Dialog.Content
           aria-describedby={undefined}
+          onCloseAutoFocus={focusDrawing}
           className="fixed top-[11vh] left-1/2 z-50 flex max-h-[70vh] w-[min(680px,calc(100vw-32px))] -translate-x-1/2 flex-col border-[1.5px] border-ink bg-leaf outline-none"
         >
           <Dialog.Title className="sr-only">Go to node, screen or action</Dialog.Title>
@@ -39,6 +40,15 @@ export function CommandPalette() {
       </Dialog.Portal>
     </Dialog.Root>
   );
+}
+
+/** What was named is worked on next: the drawing or the table gets the focus, unless a form has taken it already. */
+function focusDrawing(event: Event): void {
+  const place = document.querySelector<HTMLElement>("[data-keyboard]");
+  if (!place) return;
+  event.preventDefault();
+  const isTaken = document.activeElement?.matches("input, textarea, select") === true && !document.activeElement.closest("[role=dialog]");
+  if (!isTaken) place.focus({ preventScroll: true });
 }
 
 function PaletteBody({ initial }: { initial: string }) {

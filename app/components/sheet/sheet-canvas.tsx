@@ -1,5 +1,5 @@
 import { ReactFlow, SelectionMode, useStore, ViewportPortal, type NodeChange, type NodeTypes, type ReactFlowState } from "@xyflow/react";
-import { useMemo, useRef, useState, type MouseEvent, type PointerEvent, type RefObject } from "react";
+import { useEffect, useMemo, useRef, useState, type MouseEvent, type PointerEvent, type RefObject } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { useOpenModel, useSelection } from "../model/use-model";
@@ -50,6 +50,11 @@ export function SheetCanvas({ ref, space, scene, rects, captions, control, onMov
   const moving = useRef(new Map<NodeKey, Point>());
   const onKeyDown = useSheetKeys({ space, scene, rects, control, selectedLine, selectedCaption, clearLine: () => setSelectedLine(undefined) });
   useReveal(space, scene, rects, control, seen);
+
+  // Who comes by keyboard can begin at once; a field that has the focus keeps it.
+  useEffect(() => {
+    if (document.activeElement === document.body) ref.current?.focus({ preventScroll: true });
+  }, [ref]);
 
   function onNodesChange(changes: NodeChange<SheetFlowNode>[]): void {
     let selected: Set<NodeKey> | undefined;

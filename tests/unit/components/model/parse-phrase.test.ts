@@ -1,8 +1,8 @@
 import { describe, expect, it } from "vitest";
-import { parsePhrase, toMemberName } from "~/components/model/parse-phrase";
-import { StandardDataType, StandardType } from "~/domain/address-space/standard-ids";
+import { parsePhrase, toMemberName, type SpokenType } from "~/components/model/parse-phrase";
+import { StandardDataType as D, StandardType as T } from "~/domain/address-space/standard-ids";
 
-const units: Record<string, string> = { "%": "P1", "°C": "CEL", "mm/s": "C16", "degree Celsius": "CEL", mm: "MMT", V: "VLT" };
+const units: Record<string, string> = { "%": "P1", "°C": "CEL", "mm/s": "C16", kWh: "KWH", "degree Celsius": "CEL", mm: "MMT", V: "VLT" };
 const parse = (phrase: string) => parsePhrase(phrase, (text) => units[text]);
 
 describe("a phrase about a signal", () => {
@@ -10,8 +10,8 @@ describe("a phrase about a signal", () => {
     expect(parse("oil level %")).toEqual({
       kind: "Variable",
       name: "OilLevel",
-      typeDefinition: StandardType.AnalogUnitRangeType,
-      dataType: StandardDataType.Float,
+      typeDefinition: T.AnalogUnitRangeType,
+      dataType: D.Float,
       unit: "P1",
     });
     expect(parse("gearbox temperature [°C]")).toMatchObject({ name: "GearboxTemperature", unit: "CEL" });
@@ -29,10 +29,10 @@ describe("a phrase about a signal", () => {
   });
 
   it("knows counters, states and texts by their words", () => {
-    expect(parse("picks counter")).toMatchObject({ name: "PicksCounter", dataType: StandardDataType.UInt32 });
-    expect(parse("door open")).toMatchObject({ typeDefinition: StandardType.TwoStateDiscreteType, dataType: StandardDataType.Boolean });
-    expect(parse("recipe number")).toMatchObject({ dataType: StandardDataType.UInt16 });
-    expect(parse("sensor tag")).toMatchObject({ dataType: StandardDataType.String });
+    expect(parse("picks counter")).toMatchObject({ name: "PicksCounter", dataType: D.UInt32 });
+    expect(parse("door open")).toMatchObject({ typeDefinition: T.TwoStateDiscreteType, dataType: D.Boolean });
+    expect(parse("recipe number")).toMatchObject({ dataType: D.UInt16 });
+    expect(parse("sensor tag")).toMatchObject({ dataType: D.String });
   });
 
   it("makes methods and groups by their marks", () => {
@@ -42,6 +42,24 @@ describe("a phrase about a signal", () => {
 
   it("answers nothing for an empty phrase", () => {
     expect(parse("   ")).toBeUndefined();
+  });
+});
+
+describe("types in a phrase", () => {
+  it("takes names of types and the word optional", () => {
+    const types = { Double: { key: D.Double, kind: "DataType" }, AnalogUnitType: { key: T.AnalogUnitType, kind: "VariableType" } } as const;
+    const say = (phrase: string) => parsePhrase(phrase, (text) => units[text], (name) => (types as Record<string, SpokenType>)[name]);
+    expect(say("active energy Double kWh 0..1000000 optional")).toMatchObject({
+      name: "ActiveEnergy",
+      dataType: D.Double,
+      typeDefinition: T.AnalogUnitRangeType,
+      range: { low: 0, high: 1_000_000 },
+      isOptional: true,
+    });
+    expect(say("total Double")).toMatchObject({ name: "Total", dataType: D.Double, typeDefinition: T.BaseDataVariableType });
+    expect(say("pressure AnalogUnitType")).toMatchObject({ name: "Pressure", typeDefinition: T.AnalogUnitType });
+    // The first word is the name, whatever it is.
+    expect(say("Double")).toMatchObject({ name: "Double" });
   });
 });
 
