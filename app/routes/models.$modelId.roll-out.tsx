@@ -6,6 +6,7 @@ import { RollOutPage } from "~/components/roll-out/roll-out-page";
 import { Progress } from "~/components/ui/progress";
 import { formatProblem } from "~/domain/core/problem-texts";
 import type { Problem } from "~/domain/core/result";
+import { holdTypes } from "~/services/hold-types.server";
 import { describePins } from "~/services/pins.server";
 import { rollOut, rollOutSchema } from "~/services/roll-out-machines.server";
 import { previewRevision, takeRevision, takeRevisionSchema } from "~/services/take-revision.server";
@@ -24,6 +25,7 @@ export async function loader({ request, params }: Route.LoaderArgs) {
   return {
     name: model.name,
     pins,
+    isHeld: model.pins !== null,
     preview: previewed?.ok ? previewed.value : null,
     refusal: previewed && !previewed.ok ? toText(previewed.problems) : null,
   };
@@ -48,6 +50,11 @@ export async function action({ request, params }: Route.ActionArgs) {
     const taken = await takeRevision(caller, model, intent.data);
     if (!taken.ok) return data({ refusal: toText(taken.problems) }, { status: 422 });
     // The open model stands on other types now, so the whole page is loaded anew.
+    return redirectDocument(`/models/${model.id}/roll-out`);
+  }
+  if (form.has("hold")) {
+    const held = await holdTypes(caller, model);
+    if (!held.ok) return data({ refusal: toText(held.problems) }, { status: 422 });
     return redirectDocument(`/models/${model.id}/roll-out`);
   }
   const intent = rollOutSchema.safeParse(parseJson(form.get("intent")));
@@ -86,6 +93,7 @@ export default function RollOut({ loaderData, actionData }: Route.ComponentProps
       space={space}
       clientId={model.editor.clientId}
       pins={loaderData.pins}
+      isHeld={loaderData.isHeld}
       preview={loaderData.preview}
       refusal={actionData?.refusal ?? loaderData.refusal ?? undefined}
       editBlockedBy={

@@ -184,3 +184,22 @@ test("the pack of a pinned revision is for those alone whose machines stand on i
   const other = await addOtherOrganization(app);
   expect((await app.call("GET", `/packs/${hash}`, { cookie: other.cookie })).status).toBe(404);
 });
+
+test("machines of a model from before are held as they stand when somebody asks for it", async () => {
+  const { updateModelStatement, findModel, listRevisions } = await import("~/db/repositories/models.server");
+  const { writeBatch } = await import("~/db/client.server");
+  const { forgetWorkingModel } = await import("~/services/working-model.server");
+  await writeBatch([updateModelStatement(machines, { pins: null })]);
+  forgetWorkingModel(machines);
+  const type = await findType();
+  await edit(types, (space, ids) => setRange(space, ids, { variable: findBelow(space, type, "Energy", "ActivePower") ?? type, range: { low: 0, high: 300 } }));
+  const before = await open(machines);
+  const { holdTypes } = await import("~/services/hold-types.server");
+  getValue(await holdTypes(caller, before.model));
+  const [newest] = await listRevisions(types);
+  expect(newest?.message).toBe("For the machines of Hall");
+  expect((await findModel(machines))?.pins).toMatchObject([{ modelUri: WINCH, number: newest?.number }]);
+  const after = await open(machines);
+  const idOf = (space: AddressSpace) => space.layers.map((layer) => [layer.header.models[0]?.modelUri, layer.nodes.size]);
+  expect(idOf(after.space)).toEqual(idOf(before.space));
+});

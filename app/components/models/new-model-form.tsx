@@ -116,6 +116,11 @@ export function NewModelForm({ lastResult, organizationName, taken, choices }: P
       {kind === "types" ? <StarterChoice start={start} onChoose={setStart} /> : null}
       <div className="grid gap-1">
         <h2 className="text-note font-medium text-ink-2">Required models</h2>
+        {kind === "machines" ? (
+          <p className="text-note text-ink-3">
+            Of your own models the newest frozen revision is taken and held; a later one comes when you take it on the page Roll-out.
+          </p>
+        ) : null}
         <RequiredModelsField choices={choices} chosen={needed} onChange={setRequired} name={fields.required.name} />
       </div>
       <p className="flex gap-2">
