@@ -94,6 +94,8 @@ export default [
       route("findings", "routes/models.$modelId.findings.tsx"),
       route("source", "routes/models.$modelId.source.tsx"),
       route("revisions", "routes/models.$modelId.revisions.tsx"),
+      route("merge", "routes/models.$modelId.merge.tsx"),
+      route("parts", "routes/models.$modelId.parts.tsx"),
       route("as-built", "routes/models.$modelId.as-built.tsx"),
       route("about", "routes/models.$modelId.about.tsx"),
       route("renumber", "routes/models.$modelId.renumber.tsx"),

@@ -15,6 +15,11 @@ export async function requireModelForPage(request: Request, modelId: string | un
   return accessModel(await requireUser(request), modelId, action);
 }
 
+/** The model that a form names, when the caller may do this with it; 404 or 403 is thrown otherwise. */
+export async function findModelOf(caller: Caller, modelId: string, action: Action): Promise<ModelRow> {
+  return (await accessModel(caller, modelId, action)).model;
+}
+
 async function accessModel(caller: Caller, modelId: string | undefined, action: Action): Promise<ModelAccess> {
   const model = modelId === undefined ? undefined : await findModel(modelId);
   assertMay(caller, action, model?.organizationId);

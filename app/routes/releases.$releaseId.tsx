@@ -1,6 +1,7 @@
 import { data } from "react-router";
 import type { Route } from "./+types/releases.$releaseId";
 import type { Action } from "~/auth/permissions";
+import { assertMay } from "~/auth/caller.server";
 import { requireReleaseForPage } from "~/auth/require-review.server";
 import { ReleaseView } from "~/components/releases/release-view";
 import { useRevalidateOn } from "~/components/shell/use-revalidate-on";
@@ -26,9 +27,10 @@ export async function loader({ request, params }: Route.LoaderArgs) {
 const needs: Readonly<Record<string, Action>> = { withdraw: "release", deliver: "release", loaded: "release" };
 
 export async function action({ request, params }: Route.ActionArgs) {
-  const form = await request.clone().formData();
+  const { caller, model, release } = await requireReleaseForPage(request, params.releaseId, "read");
+  const form = await request.formData();
   const intent = String(form.get("intent") ?? "");
-  const { caller, model, release } = await requireReleaseForPage(request, params.releaseId, needs[intent] ?? "read");
+  assertMay(caller, needs[intent] ?? "read", model.organizationId);
   if (intent === "rebuild") return data({ rebuilt: await proveReproducible(model, release), errors: [] as string[] });
   const result = await act();
   const errors = result.ok ? [] : result.problems.map(formatProblem);

@@ -1,5 +1,6 @@
 import { data, Outlet, redirect } from "react-router";
 import type { Route } from "./+types/reviews.$reviewId";
+import { assertMay } from "~/auth/caller.server";
 import { requireReviewForPage, type ReviewAccess } from "~/auth/require-review.server";
 import type { Action } from "~/auth/permissions";
 import { ReviewBar } from "~/components/reviews/review-bar";
@@ -37,9 +38,10 @@ const needs: Readonly<Record<string, Action>> = {
 };
 
 export async function action({ request, params }: Route.ActionArgs) {
-  const form = await request.clone().formData();
+  const access = await requireReviewForPage(request, params.reviewId, "read");
+  const form = await request.formData();
   const intent = String(form.get("intent") ?? "");
-  const access = await requireReviewForPage(request, params.reviewId, needs[intent] ?? "read");
+  assertMay(access.caller, needs[intent] ?? "read", access.model.organizationId);
   const result = await act(access, intent, form);
   if (!result.ok) return data({ intent, errors: result.problems.map(formatProblem) }, { status: 409 });
   if (intent === "release") throw redirect(`/releases/${(result.value as { id: string }).id}`);

@@ -1,7 +1,7 @@
 import { data, redirect } from "react-router";
 import type { Route } from "./+types/reviews";
 import { assertMay, mayDo, requireUser } from "~/auth/caller.server";
-import { requireModelForPage } from "~/auth/require-model.server";
+import { findModelOf } from "~/auth/require-model.server";
 import { ReviewsView } from "~/components/reviews/reviews-view";
 import { useRevalidateOn } from "~/components/shell/use-revalidate-on";
 import { formatProblem } from "~/domain/core/problem-texts";
@@ -35,9 +35,9 @@ export async function loader({ request }: Route.LoaderArgs) {
 
 /** Asks for a review. */
 export async function action({ request }: Route.ActionArgs) {
-  await requireUser(request);
-  const form = await request.clone().formData();
-  const { caller, model } = await requireModelForPage(request, String(form.get("modelId") ?? ""), "revision.freeze");
+  const caller = await requireUser(request);
+  const form = await request.formData();
+  const model = await findModelOf(caller, String(form.get("modelId") ?? ""), "revision.freeze");
   const intent = askReviewSchema.safeParse({ title: form.get("title"), reviewers: form.getAll("reviewers") });
   if (!intent.success) return data({ errors: ["Say what it is about, and name a reviewer."] }, { status: 400 });
   const asked = await askReview(caller, model, intent.data);

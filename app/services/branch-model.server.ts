@@ -131,3 +131,9 @@ async function noteCommonState(author: Caller, variant: ModelRow, theirsId: stri
 export function listModelVariants(model: ModelRow): Promise<ModelRow[]> {
   return listVariants(model.id);
 }
+
+/** The model that a variant came from; null for a model that is none. */
+export async function findOrigin(model: ModelRow): Promise<{ id: string; name: string } | null> {
+  const origin = model.variantOf === null ? undefined : await findModel(model.variantOf);
+  return origin ? { id: origin.id, name: origin.name } : null;
+}

@@ -3,7 +3,7 @@ import { z } from "zod";
 import type { Caller } from "../auth/caller.server";
 import { findModel, type ModelRow } from "../db/repositories/models.server";
 import type { NodeKey } from "../domain/address-space/node-id";
-import { splitModel } from "../domain/compare/split-model";
+import { listSplittableTypes, splitModel } from "../domain/compare/split-model";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import { addModel } from "./add-model.server";
 import { applyEdit } from "./apply-edit.server";
@@ -41,4 +41,10 @@ export async function splitOffModel(author: Caller, model: ModelRow, intent: z.i
   if (edited.ok) return ok((await findModel(added.value.id)) ?? added.value);
   await deleteModel(author, added.value);
   return edited;
+}
+
+/** The types that can be chosen. */
+export async function listSplitChoices(model: ModelRow): Promise<ReturnType<typeof listSplittableTypes>> {
+  const working = await loadWorkingModel(model.id);
+  return working ? listSplittableTypes(working.space) : [];
 }

@@ -69,6 +69,10 @@ export const revisionSchema = z
     at: z.iso.datetime(),
     nodeCount: z.int(),
     counts: z.object({ error: z.int(), warning: z.int(), hint: z.int() }).nullable(),
+    changes: z
+      .object({ breaking: z.int(), additive: z.int(), neutral: z.int() })
+      .nullable()
+      .meta({ description: "How much changed by meaning since the revision before; null where nobody counted." }),
     pinned: z.array(z.object({ modelUri: z.string(), version: z.string().nullable(), publicationDate: z.string().nullable() })),
   })
   .meta({ id: "Revision", description: "A frozen state of a model; number 0 is what it began with." });

@@ -1,32 +1,52 @@
-import { Download, Snowflake } from "lucide-react";
+import { Snowflake } from "lucide-react";
 import { useEffect, useRef } from "react";
 import { Form, useNavigation } from "react-router";
-import { FindingTallyBadge } from "~/components/notation/finding-badge";
-import { Button, TextLink } from "~/components/ui/button";
+import { ReleasesTable } from "~/components/releases/releases-table";
+import { Button, LinkButton } from "~/components/ui/button";
 import { Field, Input } from "~/components/ui/field";
-import { Icon } from "~/components/ui/icon";
 import { Notice } from "~/components/ui/notice";
 import { Block, Page } from "~/components/ui/page";
-import { RowHead, Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
+import { TableScroll } from "~/components/ui/table";
+import type { ReleaseSummary } from "~/services/read-release.server";
 import type { RevisionJson } from "~/utils/api-schemas";
 import { formatCount } from "~/utils/format";
 import type { Compared } from "./compared";
 import { ComparisonBlock } from "./comparison-block";
+import { RevisionTable } from "./revision-table";
+import { VariantsBlock, type VariantLine } from "./variants-block";
 
 type Props = {
   modelId: string;
   revisions: readonly RevisionJson[];
   compared: Compared | null;
+  releases: readonly ReleaseSummary[];
+  variants: readonly VariantLine[];
+  /** Set when the model is a variant itself. */
+  variantOf: { readonly id: string; readonly name: string } | null;
   mayFreeze: boolean;
+  mayEdit: boolean;
   refusal: string | undefined;
 };
 
 /** What the model was, and what has changed since. */
-export function RevisionsView({ modelId, revisions, compared, mayFreeze, refusal }: Props) {
+export function RevisionsView(props: Props) {
+  const { modelId, revisions, compared, releases, variants, variantOf, mayFreeze, mayEdit, refusal } = props;
   return (
     <Page
       title="Revisions"
       about="Frozen states that never change. One revision id travels with everything made from it."
+      actions={
+        <>
+          {mayEdit && !variantOf ? (
+            <LinkButton to={`/models/${modelId}/parts`}>Required versions, split</LinkButton>
+          ) : null}
+          {variantOf ? (
+            <LinkButton to={`/models/${modelId}/merge`}>Merge with {variantOf.name}</LinkButton>
+          ) : (
+            <LinkButton to={`/reviews?model=${modelId}`}>Ask for a review</LinkButton>
+          )}
+        </>
+      }
     >
       <div className="grid gap-8">
         <FreezeForm
@@ -36,9 +56,21 @@ export function RevisionsView({ modelId, revisions, compared, mayFreeze, refusal
         />
         <Block title="Frozen states" about={<span className="font-mono">{formatCount(revisions.length)}</span>}>
           <TableScroll label="Revisions">
-            <RevisionTable modelId={modelId} revisions={revisions} />
+            <RevisionTable
+              modelId={modelId}
+              revisions={revisions}
+              releases={releases}
+              mayEdit={mayEdit}
+              isVariant={variantOf !== null}
+            />
           </TableScroll>
         </Block>
+        {releases.length > 0 ? (
+          <Block title="Releases" about={<span className="font-mono">{releases.length}</span>}>
+            <ReleasesTable releases={releases} />
+          </Block>
+        ) : null}
+        {variants.length > 0 ? <VariantsBlock variants={variants} /> : null}
         {compared ? <ComparisonBlock modelId={modelId} revisions={revisions} compared={compared} /> : null}
       </div>
     </Page>
@@ -53,6 +85,7 @@ function FreezeForm({ blockedBy, refusal }: { blockedBy: string | undefined; ref
   }, [refusal]);
   return (
     <Form method="post" ref={form} className="grid max-w-200 gap-3">
+      <input type="hidden" name="intent" value="freeze" />
       {refusal ? <Notice tone="error" title={refusal} live /> : null}
       <div className="flex items-end gap-2">
         <Field label="Message" className="flex-1">
@@ -73,76 +106,4 @@ function FreezeForm({ blockedBy, refusal }: { blockedBy: string | undefined; ref
       </div>
     </Form>
   );
-}
-
-function RevisionTable({ modelId, revisions }: Pick<Props, "modelId" | "revisions">) {
-  return (
-    <Table caption="Revisions, newest first">
-      <thead>
-        <tr>
-          <Th right className="w-12">
-            No.
-          </Th>
-          <Th>Message</Th>
-          <Th>Frozen by</Th>
-          <Th>When, UTC</Th>
-          <Th right>Edits up to</Th>
-          <Th right>Nodes</Th>
-          <Th>Findings</Th>
-          <Th>Content</Th>
-          <Th>
-            <span className="sr-only">Take it</span>
-          </Th>
-        </tr>
-      </thead>
-      <tbody>
-        {revisions.map((revision) => (
-          <Tr key={revision.number}>
-            <Td right mono>
-              {revision.number}
-            </Td>
-            <RowHead>{revision.message}</RowHead>
-            <Td className="whitespace-nowrap">{revision.author}</Td>
-            <Td mono className="text-note whitespace-nowrap text-ink-2">
-              {formatTime(revision.at)}
-            </Td>
-            <Td right mono>
-              {formatCount(revision.seq)}
-            </Td>
-            <Td right mono>
-              {formatCount(revision.nodeCount)}
-            </Td>
-            <Td>
-              {revision.counts ? (
-                <FindingTallyBadge tally={revision.counts} showNone />
-              ) : (
-                <span className="text-ink-3">not counted</span>
-              )}
-            </Td>
-            <Td mono className="text-note text-ink-3" title={revision.hash}>
-              {revision.hash.slice(0, 12)}
-            </Td>
-            <Td className="whitespace-nowrap">
-              <span className="flex items-center justify-end gap-3">
-                <TextLink to={`?from=${revision.number}&to=working`}>Compare with now</TextLink>
-                <a
-                  href={`/api/v1/models/${modelId}/revisions/${revision.number}/nodeset`}
-                  download
-                  className="inline-flex items-center gap-1 underline decoration-rule decoration-1 underline-offset-3 hover:text-copper hover:decoration-copper"
-                  aria-label={`Download revision ${revision.number} as NodeSet2`}
-                >
-                  <Icon of={Download} /> NodeSet2
-                </a>
-              </span>
-            </Td>
-          </Tr>
-        ))}
-      </tbody>
-    </Table>
-  );
-}
-
-/** Day and minute in UTC, the same on server and in the browser. */
-function formatTime(at: string): string {
-  return `${at.slice(0, 10)} ${at.slice(11, 16)}`;
 }

@@ -16,14 +16,20 @@ export function OutboxView({ page }: { page: OutboxPage }) {
   const [open, setOpen] = useState<string>();
   const shown = page.mail.find((mail) => mail.id === open);
   return (
-    <Page title="Outbox" about={<>from {page.from}</>} actions={<LinkButton to="/team/settings">Approvals, webhooks, mail</LinkButton>}>
+    <Page
+      title="Outbox"
+      about={<>from {page.from}</>}
+      actions={<LinkButton to="/team/settings">Approvals, webhooks, mail</LinkButton>}
+    >
       <div className="grid gap-4">
         {page.server === null ? (
           <Notice tone="warning" title="No mail server is set">
             Mails wait in the queue until FERRULE_SMTP_URL names one; nothing is lost.
           </Notice>
         ) : page.server === "local" ? (
-          <Notice title="The mail server of this host takes every mail and delivers none">What it received is shown below.</Notice>
+          <Notice title="The mail server of this host takes every mail and delivers none">
+            What it received is shown below.
+          </Notice>
         ) : null}
         {page.mail.length === 0 ? (
           <Empty title="No mail yet">Asking for a review sends the first one.</Empty>
@@ -48,7 +54,12 @@ export function OutboxView({ page }: { page: OutboxPage }) {
                 {page.mail.map((mail) => (
                   <Tr key={mail.id}>
                     <Td className="font-semibold">
-                      <button type="button" className="text-left hover:text-copper" aria-expanded={open === mail.id} onClick={() => setOpen(open === mail.id ? undefined : mail.id)}>
+                      <button
+                        type="button"
+                        className="text-left hover:text-copper"
+                        aria-expanded={open === mail.id}
+                        onClick={() => setOpen(open === mail.id ? undefined : mail.id)}
+                      >
                         {mail.subject}
                       </button>
                     </Td>
@@ -63,7 +74,9 @@ export function OutboxView({ page }: { page: OutboxPage }) {
                     <Td className="whitespace-nowrap">
                       <LocalTime iso={mail.createdAt} />
                     </Td>
-                    <Td className="whitespace-nowrap">{mail.received ? <LocalTime iso={mail.received.at} /> : <span className="text-ink-3">–</span>}</Td>
+                    <Td className="whitespace-nowrap">
+                      {mail.received ? <LocalTime iso={mail.received.at} /> : <span className="text-ink-3">–</span>}
+                    </Td>
                     <Td right>
                       {mail.state === "failed" ? (
                         <Form method="post">
@@ -88,22 +101,36 @@ export function OutboxView({ page }: { page: OutboxPage }) {
 
 function MailParts({ mail }: { mail: MailLine }) {
   return (
-    <section aria-label={mail.subject} className="grid grid-cols-2 gap-4 border-t-[1.5px] border-ink pt-3 max-lg:grid-cols-1">
+    <section
+      aria-label={mail.subject}
+      className="grid grid-cols-2 gap-4 border-t-[1.5px] border-ink pt-3 max-lg:grid-cols-1"
+    >
       {mail.lastError ? <Notice tone="error" title={mail.lastError} className="col-span-full" /> : null}
       <div>
         <h2 className="text-small font-semibold">Plain text</h2>
-        <pre tabIndex={0} className="mt-1 max-h-80 overflow-auto border border-rule bg-leaf p-3 font-mono text-note whitespace-pre-wrap">
+        <pre
+          tabIndex={0}
+          className="mt-1 max-h-80 overflow-auto border border-rule bg-leaf p-3 font-mono text-note whitespace-pre-wrap"
+        >
           {mail.text}
         </pre>
       </div>
       <div>
         <h2 className="text-small font-semibold">HTML</h2>
-        <iframe title={`HTML of ${mail.subject}`} sandbox="" srcDoc={mail.html} className="mt-1 h-80 w-full border border-rule bg-white" />
+        <iframe
+          title={`HTML of ${mail.subject}`}
+          sandbox=""
+          srcDoc={mail.html}
+          className="mt-1 h-80 w-full border border-rule bg-white"
+        />
       </div>
       {mail.received ? (
         <div className="col-span-full">
           <h2 className="text-small font-semibold">As received by the mail server of this host</h2>
-          <pre tabIndex={0} className="mt-1 max-h-80 overflow-auto border border-rule bg-leaf p-3 font-mono text-note whitespace-pre-wrap">
+          <pre
+            tabIndex={0}
+            className="mt-1 max-h-80 overflow-auto border border-rule bg-leaf p-3 font-mono text-note whitespace-pre-wrap"
+          >
             {mail.received.source}
           </pre>
         </div>

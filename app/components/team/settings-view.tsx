@@ -30,9 +30,24 @@ export function SettingsView({ page, mayAdminister, errors, secret }: Props) {
           <Form method="post" className="flex items-end gap-3" key={page.approvals}>
             <input type="hidden" name="intent" value="approvals" />
             <Field label="Approvals" className="w-24">
-              {(control) => <Input {...control} name="approvals" type="number" min={1} max={5} defaultValue={page.approvals} mono disabled={!mayAdminister} />}
+              {(control) => (
+                <Input
+                  {...control}
+                  name="approvals"
+                  type="number"
+                  min={1}
+                  max={5}
+                  defaultValue={page.approvals}
+                  mono
+                  disabled={!mayAdminister}
+                />
+              )}
             </Field>
-            <Button type="submit" busy={busy === "approvals"} blockedBy={mayAdminister ? undefined : "asks for the role administrator"}>
+            <Button
+              type="submit"
+              busy={busy === "approvals"}
+              blockedBy={mayAdminister ? undefined : "asks for the role administrator"}
+            >
               Save
             </Button>
           </Form>
@@ -40,8 +55,13 @@ export function SettingsView({ page, mayAdminister, errors, secret }: Props) {
         <Block title="Signing key" about="Ed25519; its private half never leaves this installation">
           {page.key ? (
             <p className="border-t border-ink py-2 text-small">
-              <span className="font-mono break-all">{page.key.id}</span>, since <LocalTime iso={page.key.createdAt} parts="date" />.{" "}
-              <a href="/api/v1/signing-key" download="ferrule-key.pem" className="underline decoration-rule underline-offset-3 hover:text-copper">
+              <span className="font-mono break-all">{page.key.id}</span>, since{" "}
+              <LocalTime iso={page.key.createdAt} parts="date" />.{" "}
+              <a
+                href="/api/v1/signing-key"
+                download="ferrule-key.pem"
+                className="underline decoration-rule underline-offset-3 hover:text-copper"
+              >
                 Download the public key
               </a>
             </p>
@@ -56,7 +76,9 @@ export function SettingsView({ page, mayAdminister, errors, secret }: Props) {
             ))}
           </div>
         </Block>
-        {mayAdminister ? <WebhooksBlock webhooks={page.webhooks} secret={secret} busy={busy === "add-webhook"} /> : null}
+        {mayAdminister ? (
+          <WebhooksBlock webhooks={page.webhooks} secret={secret} busy={busy === "add-webhook"} />
+        ) : null}
       </div>
     </Page>
   );
@@ -69,14 +91,30 @@ function MailChoice({ kind, isWanted }: { kind: MailKind; isWanted: boolean }) {
     <fetcher.Form method="post">
       <input type="hidden" name="intent" value="mail" />
       <input type="hidden" name="kind" value={kind} />
-      <Checkbox name="wanted" label={`When ${mailKinds[kind]}`} checked={shown} onChange={(event) => void fetcher.submit(event.currentTarget.form)} />
+      <Checkbox
+        name="wanted"
+        label={`When ${mailKinds[kind]}`}
+        checked={shown}
+        onChange={(event) => void fetcher.submit(event.currentTarget.form)}
+      />
     </fetcher.Form>
   );
 }
 
-function WebhooksBlock({ webhooks, secret, busy }: { webhooks: readonly WebhookLine[]; secret: string | undefined; busy: boolean }) {
+function WebhooksBlock({
+  webhooks,
+  secret,
+  busy,
+}: {
+  webhooks: readonly WebhookLine[];
+  secret: string | undefined;
+  busy: boolean;
+}) {
   return (
-    <Block title="Webhooks" about="a signed POST for each release that is published or withdrawn, tried again until it is taken">
+    <Block
+      title="Webhooks"
+      about="a signed POST for each release that is published or withdrawn, tried again until it is taken"
+    >
       {secret ? (
         <Notice tone="good" title="Copy the secret now; it is never shown again" live className="mb-3">
           <code className="font-mono text-small break-all select-all">{secret}</code>
@@ -96,13 +134,27 @@ function WebhooksBlock({ webhooks, secret, busy }: { webhooks: readonly WebhookL
               </Button>
             </Form>
           </div>
-          {hook.deliveries.length > 0 ? <CallTable hook={hook} /> : <p className="text-small text-ink-3">Not called yet.</p>}
+          {hook.deliveries.length > 0 ? (
+            <CallTable hook={hook} />
+          ) : (
+            <p className="text-small text-ink-3">Not called yet.</p>
+          )}
         </section>
       ))}
       <Form method="post" className="mt-2 flex items-end gap-3" key={webhooks.length}>
         <input type="hidden" name="intent" value="add-webhook" />
         <Field label="Address" className="flex-1">
-          {(control) => <Input {...control} name="url" type="url" mono required maxLength={1000} placeholder="https://pipeline.example/hooks/ferrule" />}
+          {(control) => (
+            <Input
+              {...control}
+              name="url"
+              type="url"
+              mono
+              required
+              maxLength={1000}
+              placeholder="https://pipeline.example/hooks/ferrule"
+            />
+          )}
         </Field>
         <Button type="submit" busy={busy}>
           Add a webhook
