@@ -5,22 +5,15 @@ import { StatusBadge } from "~/components/notation/status-badge";
 import { Button } from "~/components/ui/button";
 import { Empty } from "~/components/ui/empty";
 import { Field, Select } from "~/components/ui/field";
+import { readRegister } from "~/domain/mapping/plan-readings";
 import type { SourceView } from "~/services/read-sources.server";
-import { readPort } from "../sources/read-port";
+import { readPort, readRegisters } from "../sources/read-port";
 import { toFrameId } from "./bench-inputs";
+import { chooseFor, listPlaces, listRegisterPlaces, type RegisterPlace } from "./bench-places";
 import type { MappingScene } from "./mapping-scene";
 import type { BenchState } from "./use-bench";
 
 const EVERY_MS = 1_000;
-
-type Place = {
-  readonly id: string;
-  readonly sourceId: string;
-  readonly port: number;
-  readonly label: string;
-  readonly role: string | undefined;
-  readonly machine: string | undefined;
-};
 
 /** Live bytes from the ports of masters: once, or every second. */
 export function BenchLive({
@@ -35,20 +28,23 @@ export function BenchLive({
   const places = listPlaces(sources);
   const roles = scene.roleViews.filter(({ role }) => role.kind === "io-link-device").map(({ name }) => name);
   const machines = [...new Set(places.flatMap((place) => place.machine ?? []))];
+  const [machine, setMachine] = useState(machines[0]);
+  const registers = listRegisterPlaces(bench.points, sources, machine);
   const [chosen, setChosen] = useState<Readonly<Record<string, string>>>(() => chooseFor(places, roles, machines[0]));
   const [isFollowing, setFollowing] = useState(false);
   const [state, setState] = useState<{ failures: readonly string[]; at: string } | undefined>(undefined);
-  const latest = useRef(chosen);
-  latest.current = chosen;
+  const latest = useRef({ chosen, registers });
+  latest.current = { chosen, registers };
 
   async function readAll(): Promise<void> {
-    const wanted = Object.entries(latest.current).flatMap(([role, id]) => {
+    const wanted = Object.entries(latest.current.chosen).flatMap(([role, id]) => {
       const place = places.find((one) => one.id === id);
       return place ? [{ role, place }] : [];
     });
     const answers = await Promise.all(
       wanted.map(async ({ role, place }) => ({ role, place, reading: await readPort(place.sourceId, place.port) })),
     );
+    const read = await Promise.all(latest.current.registers.map(readPlace));
     bench.setInputs((before) => {
       const frames = { ...before.frames };
       for (const { role, reading } of answers) {
@@ -58,10 +54,15 @@ export function BenchLive({
           if (frame) frames[toFrameId(role, direction)] = { text: frame.hex, isValid: frame.isValid };
         }
       }
-      return { ...before, frames };
+      const samples = { ...before.samples };
+      for (const one of read) if (one.ok) samples[one.id] = one.text;
+      return { frames, samples };
     });
-    const failures = answers.flatMap(({ role, reading }) => (reading.ok ? [] : [`${role}: ${reading.message}`]));
-    setState({ failures, at: new Date().toLocaleTimeString([], { hour12: false }) });
+    const failures = [
+      ...answers.flatMap(({ role, reading }) => (reading.ok ? [] : [`${role}: ${reading.message}`])),
+      ...read.flatMap((one) => (one.ok ? [] : [one.message])),
+    ];
+    setState({ failures: [...new Set(failures)], at: new Date().toLocaleTimeString([], { hour12: false }) });
   }
 
   useEffect(() => {
@@ -91,7 +92,10 @@ export function BenchLive({
               <Select
                 {...tied}
                 size="small"
-                onChange={(event) => setChosen(chooseFor(places, roles, event.currentTarget.value))}
+                onChange={(event) => {
+                  setMachine(event.currentTarget.value);
+                  setChosen(chooseFor(places, roles, event.currentTarget.value));
+                }}
               >
                 {machines.map((machine) => (
                   <option key={machine} value={machine}>
@@ -153,35 +157,14 @@ function Failures({ texts }: { texts: readonly string[] }) {
   ));
 }
 
-function listPlaces(sources: readonly SourceView[]): Place[] {
-  return sources.flatMap((source) =>
-    source.ports.flatMap((port): Place[] => {
-      const place = { sourceId: source.id, port: port.port };
-      const name = `${source.name} port ${port.port}`;
-      if (port.bindings.length === 0)
-        return port.plan
-          ? [{ ...place, id: `${source.id} ${port.port}`, label: name, role: undefined, machine: undefined }]
-          : [];
-      return port.bindings.map((binding) => ({
-        ...place,
-        id: `${source.id} ${port.port} ${binding.machineKey} ${binding.role}`,
-        label: `${name}, ${binding.machine} ${binding.role}`,
-        role: binding.role,
-        machine: binding.machine,
-      }));
-    }),
-  );
-}
+type ReadPlace =
+  { readonly ok: true; readonly id: string; readonly text: string } | { readonly ok: false; readonly message: string };
 
-function chooseFor(
-  places: readonly Place[],
-  roles: readonly string[],
-  machine: string | undefined,
-): Record<string, string> {
-  return Object.fromEntries(
-    roles.flatMap((role) => {
-      const place = places.find((one) => one.role === role && one.machine === machine);
-      return place ? [[role, place.id] as const] : [];
-    }),
-  );
+async function readPlace({ point, reference, sourceId, unitId, address, count }: RegisterPlace): Promise<ReadPlace> {
+  const answer = await readRegisters(sourceId, { unitId, table: reference.table, address, count });
+  if (!answer.ok) return { ok: false, message: `${reference.role}: ${answer.message}` };
+  const value = readRegister(reference, answer.words, 0);
+  return value === undefined
+    ? { ok: false, message: `${point.label}: too few registers` }
+    : { ok: true, id: point.id, text: String(value) };
 }

@@ -11,10 +11,11 @@ import { Input } from "~/components/ui/field";
 import { RowHead, Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
 import { cx } from "~/components/ui/cx";
 import { showToast } from "~/components/ui/toast";
+import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { formatProblem } from "~/domain/core/problem-texts";
 import { listMachines, type Machine } from "~/domain/instantiation/list-machines";
-import { listBoundRoles } from "~/domain/mapping/bindings";
+import { listBoundRoles, toMachineMapping } from "~/domain/mapping/bindings";
 import type { PlannedSource } from "~/domain/mapping/make-wiring";
 import type { Binding } from "~/domain/mapping/mapping-parts";
 import { isIoLinkMaster } from "~/domain/mapping/source-settings";
@@ -77,7 +78,11 @@ export function BindingsView({ sources, devices, replacements }: Props) {
       }
     >
       {view === "deliver" ? (
-        <DeliverPanel machines={machines.map(({ key, name }) => ({ key, name }))} type={undefined} />
+        <DeliverPanel
+          machines={machines.map(({ key, name }) => ({ key, name }))}
+          type={undefined}
+          outputs={listMachineOutputs(space, machines)}
+        />
       ) : (
         <div className="grid gap-8">
           {tables.map(({ roles, machines: group }) =>
@@ -96,6 +101,11 @@ export function BindingsView({ sources, devices, replacements }: Props) {
       )}
     </Page>
   );
+}
+
+function listMachineOutputs(space: AddressSpace, machines: readonly Machine[]): string[] {
+  const rows = machines.flatMap((machine) => toMachineMapping(space, machine.key)?.rows ?? []);
+  return [...new Set(rows.flatMap((row) => (row.direction === "out" ? [row.target] : [])))];
 }
 
 /** Machines whose types have the same roles share a table. */

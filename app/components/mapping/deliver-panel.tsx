@@ -1,12 +1,12 @@
-import { Download } from "lucide-react";
 import { useState } from "react";
 import { useOpenModel } from "~/components/model/use-model";
-import { buttonClass } from "~/components/ui/button";
 import { Empty } from "~/components/ui/empty";
-import { Field, Select } from "~/components/ui/field";
-import { Icon } from "~/components/ui/icon";
+import { Checkbox, Field, Select } from "~/components/ui/field";
+import { Notice } from "~/components/ui/notice";
 import { Block } from "~/components/ui/page";
 import type { NodeKey } from "~/domain/address-space/node-id";
+import { DownloadLink } from "./download-link";
+import { ExportTemplates } from "./export-templates";
 import { ReadDocument } from "./read-document";
 
 type Choice = { readonly key: NodeKey; readonly name: string };
@@ -15,62 +15,59 @@ type Props = {
   type: Choice | undefined;
   /** The machines of a model of machines. */
   machines: readonly Choice[];
+  /** Paths of the Variables that the mapping writes to outputs. */
+  outputs: readonly string[];
 };
 
-const typeFiles = [
+const documentFiles = [
   [
-    "mapping-document",
-    "mapping.json",
+    "document",
     "Mapping document",
     "JSON by the published schema: sources, layouts, transforms, units, quality. Read back it gives the same mapping.",
   ],
-  ["mapping-table", "mapping.csv", "Mapping as a table", "CSV for people: one row a Variable."],
-  ["signal-list", "signals.xlsx", "Signal list", "A workbook with every signal, its unit, range and source."],
+  ["csv", "Mapping as a table", "CSV for people: one row a Variable."],
 ] as const;
-
+const typeFiles = [
+  ...documentFiles,
+  ["signal-list", "Signal list", "A workbook with every surveyed signal, its unit, range and source."],
+] as const;
 const machineFiles = [
-  [
-    "thing-description",
-    "thing.json",
-    "Thing Description",
-    "W3C Web of Things 1.1 with Modbus and HTTP forms and OPC UA names, for one machine.",
-  ],
-  [
-    "mapping-document",
-    "mapping.json",
-    "Mapping document",
-    "The mapping as it holds for this machine: bindings and exceptions applied.",
-  ],
-  ["mapping-table", "mapping.csv", "Mapping as a table", "CSV for people, with ports and addresses of this machine."],
+  ...documentFiles,
+  ["thing-description", "Thing Description", "W3C Web of Things 1.1 with Modbus and HTTP forms and OPC UA names."],
 ] as const;
 
-/** What leaves the house of this mapping. */
-export function DeliverPanel({ type, machines }: Props) {
+/** What leaves the house of this mapping: files, what templates make of it, and the way back in. */
+export function DeliverPanel({ type, machines, outputs }: Props) {
   const { workspace } = useOpenModel();
-  const [machine, setMachine] = useState(machines[0]?.key);
+  const [machine, setMachine] = useState<NodeKey | undefined>(machines[0]?.key);
+  const [isReviewed, setReviewed] = useState(false);
+  const of = type?.key ?? machine;
+  if (of === undefined) return <Empty title="Nothing to deliver yet">Map a type first, or roll out a machine.</Empty>;
   const base = `/models/${workspace.model.id}/deliver`;
-  if (!type && machines.length === 0)
-    return <Empty title="Nothing to deliver yet">Map a type first, or roll out a machine.</Empty>;
+  const isLocked = outputs.length > 0 && !isReviewed;
   return (
-    <div className="grid content-start gap-6">
-      {type ? (
-        <>
-          <Block title="Files" about={<em>{type.name}</em>}>
-            <Files
-              files={typeFiles.map(([what, file, name, about]) => ({
-                href: `${base}/${what}?type=${encodeURIComponent(type.key)}`,
-                file,
-                name,
-                about,
-              }))}
-            />
-          </Block>
-          <ReadDocument type={type.key} />
-        </>
-      ) : (
-        <Block
-          title="Files of a machine"
-          actions={
+    <div className="grid content-start gap-7">
+      {outputs.length > 0 ? (
+        <Notice
+          tone="warning"
+          title={`${outputs.length} ${outputs.length === 1 ? "Variable writes" : "Variables write"} to outputs: ${outputs.join(", ")}`}
+        >
+          <p className="mb-1.5">
+            A write can move machinery, and IO-Link process data is not safety-related communication. Follow the
+            machine&rsquo;s risk assessment, local codes and licensed practice.
+          </p>
+          <Checkbox
+            label={`Reviewed by ${workspace.user.name}`}
+            checked={isReviewed}
+            onChange={(event) => setReviewed(event.currentTarget.checked)}
+          />
+        </Notice>
+      ) : null}
+      <Block
+        title="Files"
+        about={type ? <em>{type.name}</em> : undefined}
+        actions={
+          type ? undefined : (
             <Field label="Machine" inline>
               {(tied) => (
                 <Select
@@ -88,37 +85,24 @@ export function DeliverPanel({ type, machines }: Props) {
                 </Select>
               )}
             </Field>
-          }
-        >
-          <Files
-            files={machineFiles.map(([what, file, name, about]) => ({
-              href: `${base}/${what}?machine=${encodeURIComponent(machine ?? "")}`,
-              file,
-              name,
-              about,
-            }))}
-          />
-        </Block>
-      )}
+          )
+        }
+      >
+        <ul className="border-t border-ink">
+          {(type ? typeFiles : machineFiles).map(([what, name, about]) => (
+            <li
+              key={what}
+              className="grid grid-cols-[200px_minmax(0,1fr)_auto] items-center gap-4 border-b border-hair py-2 text-small"
+            >
+              <span className="font-semibold">{name}</span>
+              <span className="text-ink-2">{about}</span>
+              <DownloadLink href={`${base}/${what}?of=${encodeURIComponent(of)}`} name={name} isLocked={isLocked} />
+            </li>
+          ))}
+        </ul>
+      </Block>
+      <ExportTemplates of={of} isLocked={isLocked} />
+      {type ? <ReadDocument type={type.key} /> : null}
     </div>
-  );
-}
-
-function Files({ files }: { files: readonly { href: string; file: string; name: string; about: string }[] }) {
-  return (
-    <ul className="border-t border-ink">
-      {files.map((one) => (
-        <li
-          key={one.href}
-          className="grid grid-cols-[200px_minmax(0,1fr)_auto] items-center gap-4 border-b border-hair py-2 text-small"
-        >
-          <span className="font-semibold">{one.name}</span>
-          <span className="text-ink-2">{one.about}</span>
-          <a href={one.href} download className={buttonClass("plain", "small")}>
-            <Icon of={Download} /> {one.file}
-          </a>
-        </li>
-      ))}
-    </ul>
   );
 }

@@ -136,3 +136,8 @@ export function countMapped(members: readonly Member[]): { mapped: number; all: 
   const open = inputs.filter((member) => member.row === undefined && member.target.isMandatory).length;
   return { mapped, all: inputs.length, open };
 }
+
+/** Paths of the Variables that rows write to outputs. */
+export function listOutputs(members: readonly Member[]): string[] {
+  return members.flatMap(({ row, target }) => (row?.direction === "out" ? [target.path] : []));
+}

@@ -12,10 +12,11 @@ import { listMachineTypes } from "~/domain/mapping/list-targets";
 import { suggestRows, type Suggestion } from "~/domain/mapping/suggest-rows";
 import type { DeviceSummary } from "~/services/read-devices.server";
 import type { SourceView } from "~/services/read-sources.server";
+import { AddOutput } from "./add-output";
 import { Bench } from "./bench";
 import { useBench } from "./use-bench";
 import { DeliverPanel } from "./deliver-panel";
-import { countMapped, makeMappingScene } from "./mapping-scene";
+import { countMapped, listOutputs, makeMappingScene } from "./mapping-scene";
 import { OpenRow } from "./open-row";
 import { RowHead, RowInspector, UnmapButton } from "./row-inspector";
 import { SuggestionList } from "./suggestion-list";
@@ -196,7 +197,7 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
           <Bench bench={bench} scene={scene} sources={sources} actions={actions} />
         ) : view === "deliver" ? (
           <div className="overflow-y-auto px-5 py-4">
-            <DeliverPanel type={{ key: type, name: typeName }} machines={[]} />
+            <DeliverPanel type={{ key: type, name: typeName }} machines={[]} outputs={listOutputs(scene.members)} />
           </div>
         ) : (
           <WireMap
@@ -218,7 +219,18 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
           initialHeight={320}
           onClose={() => show({ target: undefined })}
           head={<RowHead member={member} roles={scene.roles} />}
-          tools={member.row ? <UnmapButton member={member} actions={actions} /> : undefined}
+          tools={
+            <>
+              <AddOutput
+                member={member}
+                members={scene.members}
+                roles={scene.roles}
+                actions={actions}
+                onAdded={(id) => show({ target: id })}
+              />
+              {member.row ? <UnmapButton member={member} actions={actions} /> : null}
+            </>
+          }
         >
           {member.row ? (
             <RowInspector

@@ -301,7 +301,8 @@ function readValue({ reference, first }: Extract<Use, { kind: "value" }>, value:
   }
 }
 
-function readRegister(reference: Extract<InputReference, { kind: "register" }>, words: readonly number[], first: number): SampleValue | undefined {
+/** The value of a register reference in words (or bits) as they were read; undefined when they are too few. */
+export function readRegister(reference: Extract<InputReference, { kind: "register" }>, words: readonly number[], first: number): SampleValue | undefined {
   const [word] = words.slice(first, first + 1);
   if (word === undefined) return undefined;
   if (!reference.table.endsWith("register")) return word !== 0;
