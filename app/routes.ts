@@ -39,7 +39,6 @@ export default [
     route("findings.json", "routes/data/model-findings.ts"),
     route("waivers", "routes/data/model-waivers.ts"),
     route("device-replacement", "routes/data/device-replacement.ts"),
-    route("mapping-document", "routes/data/mapping-import.ts"),
     route("waivers/:waiverId", "routes/data/model-waiver.ts"),
     route("sheets", "routes/data/model-sheets.ts"),
     route("sheets/:sheetId", "routes/data/model-sheet.ts"),
