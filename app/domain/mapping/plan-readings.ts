@@ -45,7 +45,7 @@ export type ReadingPlan = {
   readonly unbound: readonly { readonly machine: string; readonly role: string }[];
 };
 
-const DEFAULT_PERIOD = 500;
+export const DEFAULT_PERIOD = 500;
 /** Parameters are slow and wear nothing when read; device status and identity change rarely. */
 const SLOW_PERIOD = 5_000;
 const DEVICE_STATUS_INDEX = 36;
