@@ -109,6 +109,7 @@ export default [
     route("devices/:deviceId", "routes/devices.$deviceId.tsx"),
     route("sources", "routes/sources.tsx"),
     route("sources/wiring-list", "routes/sources.wiring-list.tsx"),
+    route("sources/tags", "routes/sources.tags.tsx"),
     route("reviews", "routes/reviews.tsx"),
     route("reviews/:reviewId", "routes/reviews.$reviewId.tsx", [
       index("routes/reviews.$reviewId._index.tsx"),

@@ -15,11 +15,13 @@ import type { SourceView } from "~/services/read-sources.server";
 import { AddOutput } from "./add-output";
 import { Bench } from "./bench";
 import { useBench } from "./use-bench";
+import { useTags } from "./use-tags";
 import { DeliverPanel } from "./deliver-panel";
 import { countMapped, listOutputs, makeMappingScene } from "./mapping-scene";
 import { OpenRow } from "./open-row";
 import { RowHead, RowInspector, UnmapButton } from "./row-inspector";
 import { SuggestionList } from "./suggestion-list";
+import { TagChoice } from "./tag-choice";
 import { useMappingActions } from "./use-mapping-actions";
 import { WireMap } from "./wire-map";
 
@@ -81,7 +83,8 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
   const scene = useMemo(() => makeMappingScene(space, type), [space, type]);
   const [refused, setRefused] = useState<ReadonlySet<string>>(new Set());
   const [isSuggesting, setSuggesting] = useState(false);
-  const found = useMemo(() => suggestRows(space, type), [space, type]);
+  const roleTags = useTags();
+  const found = useMemo(() => suggestRows(space, type, { tags: roleTags.tags }), [space, type, roleTags.tags]);
   const suggestions = found.filter((suggestion) => !refused.has(nameSuggestion(suggestion)));
   const bench = useBench(space, scene);
   const view = (search.get("view") ?? "wires") as View;
@@ -262,6 +265,7 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
           onClose={() => setSuggesting(false)}
           head={<h2 className="text-small font-semibold">Suggestions</h2>}
         >
+          <TagChoice roles={scene.roles} tags={roleTags} />
           <SuggestionList
             suggestions={suggestions}
             roles={scene.roles}

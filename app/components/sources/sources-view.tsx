@@ -1,4 +1,4 @@
-import { Plus, Printer } from "lucide-react";
+import { Plus, Printer, Table2 } from "lucide-react";
 import { href, useSearchParams } from "react-router";
 import { Button, LinkButton } from "~/components/ui/button";
 import { Drawer } from "~/components/ui/drawer";
@@ -84,6 +84,9 @@ export function SourcesView({ sources: { sources, gateways, machines }, devices,
                 options={[{ value: ALL, label: "All" }, ...machineNames.map((name) => ({ value: name, label: name }))]}
               />
             ) : null}
+            <LinkButton to={href("/sources/tags")} icon={Table2}>
+              Tags
+            </LinkButton>
             <LinkButton to={href("/sources/wiring-list")} icon={Printer}>
               Wiring list
             </LinkButton>
