@@ -28,20 +28,16 @@ function decode(text: string): string {
 
 export type NamedPlace = { readonly node: Node; readonly from: number; readonly to: number };
 
-/** A NodeId, or a word in an attribute or between tags that may be an alias. */
-const TOKEN = /(?:(?:ns=\d+|nsu=[^;"<\s]+);)?[isgb]=[^"<>\s]+|(?<=[">])[A-Za-z_]\w*(?=["<])/g;
-
-/** The node that the text under the column (0-based) stands for. */
+/** The node that the text under the column (0-based) stands for: what is between two quotes, or between two tags. */
 export function findNamed(space: AddressSpace, tables: SourceTables, line: string, column: number): NamedPlace | undefined {
-  for (const match of line.matchAll(TOKEN)) {
-    const from = match.index;
-    const to = from + match[0].length;
-    if (column < from || column > to) continue;
-    const id = parseNodeId(tables.aliases.get(decode(match[0])) ?? decode(match[0]), tables.namespaceUris);
-    const node = id.ok ? space.findByNodeId(id.value) : undefined;
-    return node ? { node, from, to } : undefined;
-  }
-  return undefined;
+  const from = Math.max(line.lastIndexOf('"', column - 1), line.lastIndexOf(">", column - 1)) + 1;
+  const ends = [line.indexOf('"', column), line.indexOf("<", column)].filter((end) => end >= 0);
+  const to = Math.min(...ends);
+  if (from === 0 || ends.length === 0 || from >= to) return undefined;
+  const text = decode(line.slice(from, to));
+  const id = parseNodeId(tables.aliases.get(text) ?? text, tables.namespaceUris);
+  const node = id.ok ? space.findByNodeId(id.value) : undefined;
+  return node && { node, from, to };
 }
 
 /** A few lines in Markdown: name and class, where it stands, what it is, what its model says of it. */
