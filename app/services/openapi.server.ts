@@ -4,6 +4,7 @@ import { freezeSchema } from "./freeze-revision.server";
 import { asBuiltIntentSchema } from "./make-as-built.server";
 import { testServerIntentSchema } from "./start-test-server.server";
 import { choice, json, organization, pathId, problems, refTo, schemas, stateName, toJsonSchema, type JsonObject } from "./openapi-parts.server";
+import { mappingPaths } from "./openapi-mapping.server";
 import { releasePaths } from "./openapi-releases.server";
 
 const nodeSetBody = { "application/xml": { schema: { type: "string", contentMediaType: "application/xml" } } };
@@ -144,6 +145,7 @@ const paths = {
     },
   },
   ...releasePaths,
+  ...mappingPaths,
   "/models/{modelId}/test-servers": {
     parameters: [pathId("modelId")],
     get: {
