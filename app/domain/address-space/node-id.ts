@@ -122,10 +122,11 @@ export function isNullNodeId(id: NodeId): boolean {
   return id.identifier === "" || id.identifier === "00000000-0000-0000-0000-000000000000";
 }
 
-function escapeUri(uri: string): string {
+/** A URI inside an id: `;` ends it and `%` begins an escape (OPC 10000-6 §5.1.12). */
+export function escapeUri(uri: string): string {
   return uri.includes("%") || uri.includes(";") ? uri.replace(/%/g, "%25").replace(/;/g, "%3B") : uri;
 }
 
-function unescapeUri(text: string): string {
+export function unescapeUri(text: string): string {
   return text.includes("%") ? text.replace(/%3B/gi, ";").replace(/%25/g, "%") : text;
 }

@@ -9,6 +9,7 @@ import {
   toNodeKey,
   type NodeId,
   type NodeKey,
+  unescapeUri,
 } from "../address-space/node-id";
 import { parseQualifiedName, type QualifiedName } from "../address-space/qualified-name";
 import { fail, ok, problem, type Problem, type Result } from "../core/result";
@@ -173,8 +174,4 @@ function trimId(text: string): string {
   if (trimmed.length === text.length || !/^(?:[^;]*;){0,2}s=/.test(trimmed)) return trimmed;
   const tail = text.slice(text.indexOf(trimmed) + trimmed.length);
   return /[\r\n]/.test(tail) ? trimmed : trimmed + tail;
-}
-
-function unescapeUri(text: string): string {
-  return text.replace(/%3B/gi, ";").replace(/%25/g, "%");
 }

@@ -5,6 +5,8 @@
 import type { ModelHeader } from "../address-space/model-header";
 import type { Node } from "../address-space/node";
 import {
+  escapeUri,
+  formatNodeId,
   formatNodeIdWithIndex,
   OPC_UA_NAMESPACE,
   parseNodeKey,
@@ -17,7 +19,7 @@ import { STANDARD_ALIASES } from "./standard-aliases";
 
 export class IdWriter {
   readonly namespaceUris: string[];
-  readonly serverUris: string[];
+  readonly serverUris: readonly string[];
   readonly #indices = new Map<string, number>([[OPC_UA_NAMESPACE, 0]]);
   readonly #texts = new Map<NodeKey, string>();
   readonly #aliases: ReadonlyMap<NodeKey, string>;
@@ -66,12 +68,16 @@ export class IdWriter {
     return alias;
   }
 
-  /** A target on another server: `svr=1;…`. */
+  /**
+   * A target on another server: `svr=1;…`. What the tables of the file do not have is spelled out (`svu=`, `nsu=`), so that
+   * a reference to elsewhere adds nothing to them.
+   */
   formatTarget(key: NodeKey, serverUri: string | undefined): string {
     if (serverUri === undefined) return this.formatKey(key);
-    let index = this.serverUris.indexOf(serverUri) + 1;
-    if (index === 0) index = this.serverUris.push(serverUri);
-    return `svr=${index};${this.formatKey(key)}`;
+    const index = this.serverUris.indexOf(serverUri) + 1;
+    const server = index === 0 ? `svu=${escapeUri(serverUri)}` : `svr=${index}`;
+    const id = this.#findNodeId(key) ?? parseNodeKey(key);
+    return `${server};${this.#indices.has(id.namespaceUri) ? this.formatId(id) : formatNodeId(id)}`;
   }
 
   /** `N:Name`; without index in namespace 0, except where the name itself would then look as if it had one. */
