@@ -288,6 +288,51 @@ describe("the value form", () => {
   });
 });
 
+describe("the drawer", () => {
+  it("opens the form from the register's cell where a text would not do", async () => {
+    await page.goto(`/models/${model}/register?node=${keyOf(6026)}`);
+    const cell = page.getByRole("row", { name: /\bAPoint\b/ }).getByRole("gridcell", { name: /X: 1.5/ });
+    await cell.click();
+    await page.keyboard.press("Enter");
+    const form = page.getByRole("group", { name: "Value of APoint" });
+    await form.getByRole("textbox", { name: "X" }).waitFor();
+    await page.keyboard.press("Escape");
+    await form.waitFor({ state: "detached" });
+  });
+
+  it("edits attributes, permissions and extensions, and tells who did it", async () => {
+    await page.goto(`/models/${model}/register?node=${keyOf(6026)}`);
+    const attributes = page.getByRole("region", { name: "Attributes" });
+    await attributes.getByRole("textbox", { name: "Symbol" }).fill("A_Point");
+    await page.keyboard.press("Enter");
+    await attributes.getByRole("combobox", { name: "Release" }).selectOption("Draft");
+    const permissions = page.getByRole("region", { name: "Permissions" });
+    await permissions.getByRole("button", { name: "Role", exact: true }).click();
+    await permissions.getByRole("combobox", { name: "Role 1" }).selectOption({ label: "Operator" });
+    const extensions = page.getByRole("region", { name: "Extensions" });
+    await extensions.getByRole("button", { name: "Add extension" }).click();
+    await extensions.getByRole("textbox", { name: "New extension" }).fill("<Note>");
+    await extensions
+      .getByRole("alert")
+      .getByText(/Not well-formed/)
+      .waitFor();
+    await extensions.getByRole("textbox", { name: "New extension" }).fill('<Note xmlns="urn:n">1</Note>');
+    await page.keyboard.press("Tab");
+    await extensions.getByRole("textbox", { name: "Extension 1" }).waitFor();
+    const xml = await exportFile();
+    const written = xml.slice(xml.indexOf('BrowseName="1:APoint"') - 200, xml.indexOf('BrowseName="1:Points"'));
+    expect(written).toMatch(/SymbolicName="A_Point"/);
+    expect(written).toMatch(/ReleaseStatus="Draft"/);
+    // Role Operator is i=15680 (OPC 10000-18 §4.3); Browse and Read are bits 0 and 5 (OPC 10000-3 Table 38).
+    expect(written).toMatch(/<RolePermission Permissions="33">i=15680<\/RolePermission>/);
+    expect(written).toMatch(/<Extension>\s*<Note xmlns="urn:n">1<\/Note>\s*<\/Extension>/);
+    const history = page.getByRole("region", { name: "History" });
+    await history.getByText(/release status: nothing → Draft/).waitFor();
+    await history.getByText("Tomas Lindqvist").first().waitFor();
+    await history.getByText("came with the model").waitFor();
+  });
+});
+
 describe("the DataType tables", () => {
   it("make a structure from lines, with encodings that have NodeIds of their own", async () => {
     await page.goto(`/models/${model}/types?type=${keyOf(3001)}`);
@@ -366,16 +411,18 @@ describe("axe", () => {
         await ready(visitor.page).waitFor();
         found.push(...(await findAccessibilityProblems(visitor.page)).map((line) => `${path} ${line}`));
       };
-      for (const id of [6029, 6032]) {
-        await look(
-          `/models/${model}/register?node=${keyOf(id)}`,
-          (p) => p.getByRole("group", { name: /^Value of/ }),
-          (p) => p.getByRole("button", { name: "Open the value" }).click(),
-        );
-      }
-      await look(`/models/${model}/types?type=${keyOf(3006)}`, (p) => p.getByRole("region", { name: "Structure" }));
-      await look(`/models/${model}/register?node=${keyOf(3008)}`, (p) => p.getByRole("region", { name: "Option set" }));
-      await look(`/models/${model}/renumber`, (p) => p.getByRole("table", { name: "NodeIds now and to be" }));
+      const register = `/models/${model}/register?node=`;
+      await look(
+        register + keyOf(6029),
+        (p) => p.getByRole("group", { name: /^Value of/ }),
+        (p) => p.getByRole("button", { name: "Open the value" }).click(),
+      );
+      await look(register + keyOf(3006), (p) => p.getByRole("table", { name: "Fields" }));
+      await look(
+        `/models/${model}/renumber`,
+        (p) => p.getByRole("table", { name: "NodeIds now and to be" }),
+        (p) => p.getByRole("searchbox", { name: /Nodes by name/ }).fill("AInt"),
+      );
       await visitor.context.close();
       expect(found).toEqual([]);
       expect(visitor.complaints).toEqual([]);

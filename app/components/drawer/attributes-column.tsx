@@ -138,7 +138,7 @@ function ClassAttributes({ space, node, readOnly }: Props) {
             readOnly={readOnly}
             onChange={(bits) => set("userAccessLevel", bits)}
           />
-          {flag("historizing: values are recorded", "historizing", node.historizing === true)}
+          {flag("values are recorded", "historizing", node.historizing === true)}
         </>
       );
     case "VariableType":

@@ -125,16 +125,22 @@ function MendButton({ finding }: { finding: Finding }) {
 const WIDE: Readonly<Partial<Record<Node["nodeClass"], string>>> = { Method: "is-wide", DataType: "is-data-type" };
 
 function Columns({ space, node }: { space: AddressSpace; node: Node }) {
-  const { actions } = useOpenModel();
+  const { actions, view } = useOpenModel();
   const readOnly = !actions.mayChange(node.key);
-  const [isValueOpen, setValueOpen] = useState(() => hasDraft(node.key));
+  const [, drawAgain] = useState(0);
+  const isValueOpen = useView((state) => state.openValue === node.key) || hasDraft(node.key);
+  // A form that was left unfinished is open because of its draft, which no store tells of.
+  const close = (): void => {
+    view.closeValue();
+    drawAgain((n) => n + 1);
+  };
   if (isValueOpen && hasValueAttributes(node))
-    return <ValueBench space={space} node={node} readOnly={readOnly} onClose={() => setValueOpen(false)} />;
+    return <ValueBench space={space} node={node} readOnly={readOnly} onClose={close} />;
   return (
     <>
       <div className={cx("particulars", WIDE[node.nodeClass])}>
         <IdentityColumn space={space} node={node} readOnly={readOnly} />
-        <ValueColumn space={space} node={node} readOnly={readOnly} onOpenValue={() => setValueOpen(true)} />
+        <ValueColumn space={space} node={node} readOnly={readOnly} onOpenValue={() => view.openValue(node.key)} />
         <TextColumn node={node} readOnly={readOnly} />
         <ReferenceColumn space={space} node={node} />
       </div>

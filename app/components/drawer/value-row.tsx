@@ -1,9 +1,10 @@
 import { ListTree, X } from "lucide-react";
 import { useEffect, useId, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
-import { getDataType, getValueRank, type VariableNode, type VariableTypeNode } from "~/domain/address-space/node";
+import { getDataType, type VariableNode, type VariableTypeNode } from "~/domain/address-space/node";
 import { setValue } from "~/domain/editing/commands/set-value";
 import type { BuiltInType, Scalar, Variant } from "~/domain/nodeset/values/variant";
+import { isPlainValue } from "../model/plain-value";
 import { getDataTypes, readTypedValue } from "../model/read-typed-value";
 import { useOpenModel } from "../model/use-model";
 import { formatValueText } from "../model/value-text";
@@ -27,11 +28,7 @@ export function ValueRow({ id, space, node, readOnly, onOpen }: Props) {
   const dataType = getDataType(node);
   const value = readTypedValue(space, node);
   const type = value?.type ?? types.findBuiltInType(dataType);
-  const isPlain =
-    getValueRank(node) === -1 &&
-    (value === undefined
-      ? node.value === undefined
-      : value.shape === "scalar" && value.type === types.findBuiltInType(dataType));
+  const isPlain = isPlainValue(space, node);
   const names = types.findEnumerationNames(dataType);
   const take = (next: Variant | undefined): void =>
     void actions.apply("set-value", (current, context) =>

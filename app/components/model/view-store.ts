@@ -11,6 +11,8 @@ export type ViewState = {
   readonly revealed: number;
   readonly isDrawerOpen: boolean;
   readonly renaming: NodeKey | undefined;
+  /** The node whose value is open in its form. */
+  readonly openValue: NodeKey | undefined;
 };
 
 export class ViewStore {
@@ -19,6 +21,7 @@ export class ViewStore {
     revealed: 0,
     isDrawerOpen: true,
     renaming: undefined,
+    openValue: undefined,
   };
   readonly #listeners = new Set<() => void>();
 
@@ -52,6 +55,16 @@ export class ViewStore {
 
   stopRenaming(): void {
     if (this.#state.renaming !== undefined) this.#set({ renaming: undefined });
+  }
+
+  /** Shows the whole value of the node in the drawer, as a form. */
+  openValue(key: NodeKey): void {
+    this.select([key]);
+    this.#set({ openValue: key, isDrawerOpen: true });
+  }
+
+  closeValue(): void {
+    if (this.#state.openValue !== undefined) this.#set({ openValue: undefined });
   }
 
   setDrawerOpen(isDrawerOpen: boolean): void {

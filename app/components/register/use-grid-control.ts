@@ -5,6 +5,7 @@ import { makeAddRequest, type AddRequest } from "../model/add-request";
 import { findMemberOwner } from "../model/member-owner";
 import { formatBlock, parseBlock } from "../model/cell-block";
 import type { CellChange } from "../model/cell-change";
+import { fitsInCell } from "../model/plain-value";
 import { useOpenModel, useView } from "../model/use-model";
 import { getCellText, getEditText, isEditable, type Column, type ColumnId } from "./columns";
 import { listRowsBetween, moveCell, type GridCell, type Move } from "./grid-state";
@@ -92,9 +93,13 @@ export function useGridControl(inputs: Inputs): GridControl {
       const node = row && space.getNode(row.key);
       if (!node || !actions.mayChange(node.key) || !isEditable(node, at.column)) return;
       setCell(at);
+      if (at.column === "value" && !fitsInCell(space, node)) {
+        view.openValue(node.key);
+        return;
+      }
       setEditing({ text: key ?? getEditText(space, node, at.column), replaces: key !== undefined });
     },
-    [actions],
+    [actions, view],
   );
 
   const endEdit = useCallback(
