@@ -20,6 +20,14 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
       One frame of the device's process data. HEX: pairs in the order of transmission, spaces allowed.
   npm run -s ferrule -- map DOCUMENT --frame SOURCE=HEX… [--json]
       Node values with status codes that a mapping document makes of one frame a source (SOURCE:out=HEX: what was set).
+  npm run -s ferrule -- as-built FILE ENDPOINT [--with DIR]… [--watch SECONDS] [--ignore PATTERN]…
+        [--fingerprint SHA256] [--security sign-and-encrypt|sign|none] [--user NAME] [--pki DIR] [--json]
+      Whether the server at opc.tcp://HOST:PORT serves what FILE says: namespaces, versions, nodes, types, units, ranges, access,
+      values of properties; with --watch whether values come and are good. It reads, and writes nothing.
+      Without --fingerprint it prints that of the server's certificate, for you to compare, and ends with 2.
+      --ignore: paths or NodeIds that do not count, * for any characters. --security none: unprotected, bench use only.
+      --user: the password comes from FERRULE_PASSWORD. --pki: keeps the client's certificate there, for servers that have to
+      trust it first.
   npm run -s ferrule -- help
 
   --with DIR   adds the NodeSets below DIR to the library for this call; may be given several times
@@ -31,6 +39,7 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
 
 Exit status: 0 nothing of severity error · 1 at least one error (check --severity S: one of S or above) ·
 2 unreadable file, missing required model, or wrong usage.
+as-built: 0 as released · 1 differs · 2 not reached, not shown, or unreadable.
 verify: 0 everything fits · 1 something does not · 2 unreadable.
 compare: 0 no change or neutral ones only · 1 additive · 3 breaking · 2 unreadable.
 decode: 2 also for a frame of the wrong length and where --condition must say which layout is meant.

@@ -1,4 +1,5 @@
 /** The command line for pipelines. No database; the exit codes are told by `help`. */
+import { asBuilt } from "./as-built-command";
 import { check } from "./check";
 import { compare } from "./compare-command";
 import { decode, device } from "./device-command";
@@ -31,6 +32,8 @@ async function run(args: readonly string[]): Promise<number> {
       return decode(command);
     case "map":
       return map(command);
+    case "as-built":
+      return asBuilt(command);
   }
 }
 

@@ -2,6 +2,7 @@
 import { resolve } from "node:path";
 import { parseArgs } from "node:util";
 import type { Severity } from "../domain/core/result";
+import { securityModes } from "../opcua/client/endpoint-settings";
 
 export type CheckCommand = {
   readonly name: "check";
@@ -52,6 +53,22 @@ export type MapCommand = {
   readonly frames: readonly string[];
   readonly isJson: boolean;
 };
+export type AsBuiltCommand = {
+  readonly name: "as-built";
+  readonly file: string;
+  readonly endpoint: string;
+  readonly folders: readonly string[];
+  readonly watchSeconds: number;
+  /** Patterns over paths and NodeIds. */
+  readonly ignored: readonly string[];
+  readonly security: (typeof securityModes)[number] | undefined;
+  readonly fingerprint: string | undefined;
+  readonly user: string | undefined;
+  readonly password: string | undefined;
+  /** Folder of the client's own certificate; a new one for each call when absent. */
+  readonly pki: string | undefined;
+  readonly isJson: boolean;
+};
 export type Command =
   | { readonly name: "help" }
   | CheckCommand
@@ -61,7 +78,8 @@ export type Command =
   | VerifyCommand
   | DeviceCommand
   | DecodeCommand
-  | MapCommand;
+  | MapCommand
+  | AsBuiltCommand;
 
 /** npm runs scripts in the project's folder; paths mean the folder that the user stands in. */
 export function resolvePath(path: string): string {
@@ -131,7 +149,33 @@ export function parseCommandLine(args: readonly string[]): Command {
     const [file] = requireCount(rest, 1, "map takes one DOCUMENT.");
     return { name, file: file ?? "", frames: values.frame ?? [], isJson: values.json ?? false };
   }
+  if (name === "as-built") return toAsBuilt(rest, values);
   throw new UsageError(name === undefined ? "Which command?" : `There is no command “${name}”.`);
+}
+
+function toAsBuilt(rest: readonly string[], values: ReturnType<typeof parse>["values"]): AsBuiltCommand {
+  const [file = "", endpoint = ""] = requireCount(rest, 2, "as-built takes a FILE and an ENDPOINT.");
+  if (!/^opc\.tcp:\/\/[^\s/]+/i.test(endpoint)) throw new UsageError("ENDPOINT begins with opc.tcp://");
+  const watchSeconds = Number(values.watch ?? 0);
+  if (!(watchSeconds >= 0 && watchSeconds <= 600)) throw new UsageError("--watch is a number of seconds, 0 … 600.");
+  const security = values.security === undefined ? undefined : requireOneOf(values.security, securityModes, "--security is none, sign or sign-and-encrypt.");
+  if (security === "none" && values.user !== undefined) throw new UsageError("--user sends a password; it asks for a protected connection.");
+  const { FERRULE_PASSWORD: password } = process.env;
+  if (values.user !== undefined && password === undefined) throw new UsageError("--user takes the password from the environment, FERRULE_PASSWORD.");
+  return {
+    name: "as-built",
+    file,
+    endpoint,
+    folders: values.with ?? [],
+    watchSeconds,
+    ignored: values.ignore ?? [],
+    security,
+    fingerprint: values.fingerprint,
+    user: values.user,
+    password,
+    pki: values.pki,
+    isJson: values.json ?? false,
+  };
 }
 
 function parse(args: readonly string[]) {
@@ -151,6 +195,12 @@ function parse(args: readonly string[]) {
         canonical: { type: "boolean" },
         frame: { type: "string", multiple: true },
         key: { type: "string" },
+        watch: { type: "string" },
+        ignore: { type: "string", multiple: true },
+        security: { type: "string" },
+        fingerprint: { type: "string" },
+        user: { type: "string" },
+        pki: { type: "string" },
         help: { type: "boolean", short: "h" },
       },
     });

@@ -9,25 +9,24 @@ import { addAsBuiltStatement, findHighestReportNumber, listPointChecks } from ".
 import { addAuditStatement } from "../db/repositories/audit.server";
 import { addBlobStatement, toBlob } from "../db/repositories/blobs.server";
 import type { ModelRow } from "../db/repositories/models.server";
-import { AddressSpace, type Layer } from "../domain/address-space/address-space";
-import { getPath } from "../domain/address-space/browse";
-import { getAccessLevel } from "../domain/address-space/node";
-import { formatNodeId } from "../domain/address-space/node-id";
-import type { AsBuiltComparison, AsBuiltDifference, AsBuiltVerdict, Observation, ServedModel } from "../domain/as-built/as-built";
-import { AS_BUILT_FORMAT, toleranceSchema, type AsBuiltReport } from "../domain/as-built/as-built-report";
-import { compareAsBuilt } from "../domain/as-built/compare-as-built";
+import { findEndpoint } from "../db/repositories/endpoints.server";
+import { findDelivery, findRelease, type DeliveryRow, type ReleaseRow } from "../db/repositories/releases.server";
+import type { AddressSpace } from "../domain/address-space/address-space";
+import type { AsBuiltVerdict } from "../domain/as-built/as-built";
+import { AS_BUILT_FORMAT, listOutside, toleranceSchema, type AsBuiltReport } from "../domain/as-built/as-built-report";
+import { listPromisedPeriods } from "../domain/as-built/list-promised-periods";
 import { formatProblem } from "../domain/core/problem-texts";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import type { LiveTarget } from "../domain/live/live-target";
-import { isInstance } from "../domain/simulation/is-instance";
-import { getLibrary } from "../library/library.server";
 import type { EndpointClient } from "../opcua/client/endpoint-client.server";
-import type { ObserveTarget } from "../opcua/client/observe.server";
-import type { LiveAddressSpace } from "../opcua/client/read-address-space.server";
 import { newId } from "../utils/ids.server";
 import { logError } from "../utils/log.server";
 import { singleton } from "../utils/singleton.server";
+import { compareEndpoint } from "./compare-endpoint.server";
+import { comparePorts } from "./compare-ports.server";
+import { advanceDelivery } from "./deliver-release.server";
 import { openEndpoint } from "./live-endpoint.server";
+import { loadPlannedSources } from "./load-planned-sources.server";
 import { loadState } from "./load-revision.server";
 import { requireSigningKey, signManifest } from "./signing-keys.server";
 
@@ -36,9 +35,7 @@ export const asBuiltIntentSchema = z.strictObject({
   state: z.union([z.literal("working"), z.coerce.number().int().min(0).max(999_999_999)]),
   watchSeconds: z.coerce.number().int().min(0).max(600).default(10),
   tolerance: toleranceSchema.default({ ignored: [], range: 0, areTextsChecked: false }),
-  /** The release and its delivery that the report is to prove. */
-  releaseId: z.string().max(100).optional(),
-  deliveryId: z.string().max(100).optional(),
+  deliveryId: z.string().max(100).optional().meta({ description: "Compares with what was delivered, whatever `state` says; as released, it sets the delivery to proved." }),
 });
 export type AsBuiltIntent = z.infer<typeof asBuiltIntentSchema>;
 
@@ -56,8 +53,6 @@ export type AsBuiltRun = {
 };
 
 const MAX_RUNS = 200;
-/** Variables watched in one run; a hall has fewer. */
-const MAX_WATCHED = 5_000;
 const MAX_KEPT_OBSERVATIONS = 2_000;
 
 const getRuns = () => singleton<Map<string, AsBuiltRun>>("as-built-runs", () => new Map());
@@ -66,15 +61,18 @@ export function findAsBuiltRun(id: string): AsBuiltRun | undefined {
   return getRuns().get(id);
 }
 
-/** Starts a run. Problems: `revision.unknown`, those of openEndpoint. */
-export async function startAsBuilt(author: Caller, model: ModelRow, target: LiveTarget, intent: AsBuiltIntent): Promise<Result<AsBuiltRun>> {
+/** Starts a run. Problems: `as-built.state`, those of findProof and openEndpoint. */
+export async function startAsBuilt(author: Caller, model: ModelRow, target: LiveTarget, asked: AsBuiltIntent): Promise<Result<AsBuiltRun>> {
+  const proof = await findProof(model, target, asked.deliveryId);
+  if (!proof.ok) return proof;
+  const intent = proof.value ? { ...asked, state: proof.value.release.revision } : asked;
   const space = await loadState(model, intent.state);
   if (!space) return fail(problem("as-built.state", { state: String(intent.state) }));
   const client = await openEndpoint(target.id);
   if (!client.ok) return client;
   const run: AsBuiltRun = { id: newId(), organizationId: model.organizationId, modelId: model.id, state: "running", stage: "connect", done: 0, of: 0, reportId: null, verdict: null, problems: [] };
   keep(run);
-  void work(author, model, target, intent, space, client.value, run.id);
+  void work({ author, model, target, intent, space, proof: proof.value }, client.value, run.id);
   return ok(run);
 }
 
@@ -87,106 +85,80 @@ function keep(run: AsBuiltRun): void {
   }
 }
 
-async function work(author: Caller, model: ModelRow, target: LiveTarget, intent: AsBuiltIntent, space: AddressSpace, client: EndpointClient, runId: string): Promise<void> {
+type Proof = { readonly release: ReleaseRow; readonly delivery: DeliveryRow };
+
+/**
+ * The delivery that the report may prove. Problems: `as-built.delivery` when the model has no such delivery,
+ * `as-built.delivery-target` for a test server, which is no gateway, and for the endpoint of another gateway.
+ */
+async function findProof(model: ModelRow, target: LiveTarget, deliveryId: string | undefined): Promise<Result<Proof | undefined>> {
+  if (deliveryId === undefined) return ok(undefined);
+  const delivery = await findDelivery(deliveryId);
+  const release = delivery && (await findRelease(delivery.releaseId));
+  if (release?.modelId !== model.id || !delivery) return fail(problem("as-built.delivery"));
+  const endpoint = target.kind === "endpoint" ? await findEndpoint(target.id) : undefined;
+  const isOfGateway = endpoint !== undefined && (endpoint.gatewayId === null || endpoint.gatewayId === delivery.gatewayId);
+  return isOfGateway ? ok({ release, delivery }) : fail(problem("as-built.delivery-target", { target: target.name, gateway: delivery.gatewayName }));
+}
+
+/** What a run is about. */
+type Work = { readonly author: Caller; readonly model: ModelRow; readonly target: LiveTarget; readonly intent: AsBuiltIntent; readonly space: AddressSpace; readonly proof: Proof | undefined };
+
+async function work(about: Work, client: EndpointClient, runId: string): Promise<void> {
   const change = (now: Partial<AsBuiltRun>): void => {
     const run = getRuns().get(runId);
     if (run) keep({ ...run, ...now });
   };
   try {
-    const report = await makeReport(author, model, target, intent, space, client, change);
-    const id = await saveReport(author, model, target, intent, report);
+    const report = await makeReport(about, client, change);
+    const id = await saveReport(about, report);
+    if (report.verdict === "as released") await proveDelivery(about, report);
     change({ state: "done", stage: "done", reportId: id, verdict: report.verdict });
   } catch (error) {
     logError(error, "as-built");
     const detail = error instanceof Error ? (error.message.split("\n")[0] ?? "") : "no reason given";
-    change({ state: "failed", problems: [problem("endpoint.unreachable", { endpointUrl: target.endpointUrl ?? "", detail })] });
+    change({ state: "failed", problems: [problem("endpoint.unreachable", { endpointUrl: about.target.endpointUrl ?? "", detail })] });
   }
 }
 
-async function makeReport(
-  author: Caller,
-  model: ModelRow,
-  target: LiveTarget,
-  intent: AsBuiltIntent,
-  space: AddressSpace,
-  client: EndpointClient,
-  change: (now: Partial<AsBuiltRun>) => void,
-): Promise<AsBuiltReport> {
+/** A signal whose newest check is outside its tolerance keeps the delivery from being proved. */
+async function proveDelivery({ author, model, proof }: Work, report: AsBuiltReport): Promise<void> {
+  if (!proof || proof.delivery.state === "proved" || listOutside(report.pointChecks).length > 0) return;
+  const proved = await advanceDelivery(author, model, proof.release, proof.delivery.id, "proved");
+  if (!proved.ok) logError(new Error(proved.problems.map(formatProblem).join(" ")), "as-built");
+}
+
+async function makeReport({ author, model, target, intent, space, proof }: Work, client: EndpointClient, change: (now: Partial<AsBuiltRun>) => void): Promise<AsBuiltReport> {
   const startedAt = new Date().toISOString();
-  const [{ readAddressSpace }, { observeVariables }, { readServedModels }] = await Promise.all([
-    import("../opcua/client/read-address-space.server"),
-    import("../opcua/client/observe.server"),
-    import("../opcua/client/read-served-models.server"),
-  ]);
-  const teamLayers = listTeamLayers(space);
-  const models = await readServedModels(client);
-  const read = await readAddressSpace(client, {
-    namespaceUris: teamLayers.flatMap((layer) => layer.header.models.map((m) => m.modelUri)),
-    layers: space.layers.slice(0, -1),
-    onProgress: ({ done, found }) => change({ stage: "browse", done, of: found }),
+  const sources = await loadPlannedSources(model.organizationId);
+  const { comparison, observations, servedNodes, remarks } = await compareEndpoint(space, client, {
+    tolerance: intent.tolerance,
+    watchSeconds: intent.watchSeconds,
+    promisedPeriods: listPromisedPeriods(space, sources),
+    findMore: () => comparePorts(model.organizationId, space, sources),
+    onProgress: (stage, done, of) => change({ stage, done, of }),
   });
-  if (!read.ok) throw new Error(read.problems.map(formatProblem).join(" "));
-  const targets = listWatched(space);
-  const watchedFor = intent.watchSeconds * 1000;
-  const observations = watchedFor > 0 ? await observeVariables(client, targets, { milliseconds: watchedFor, onProgress: (done, of) => change({ stage: "watch", done, of }) }) : [];
-  change({ stage: "compare", done: 0, of: 1 });
-  const comparison = compareLayers(space, teamLayers, read.value, models, observations, intent);
   const pointChecks = await listPointChecks(model.id);
   return {
     format: AS_BUILT_FORMAT,
     model: { id: model.id, name: model.name, namespaceUri: model.namespaceUri, version: space.own.header.models[0]?.version ?? null, revision: intent.state === "working" ? null : intent.state },
     target: { id: target.id, name: target.name, endpointUrl: target.endpointUrl ?? "", securityMode: target.securityMode },
+    ...(proof ? { delivery: { version: proof.release.version, gateway: proof.delivery.gatewayName, sha256: proof.delivery.bundleHash } } : {}),
     madeBy: author.name,
     startedAt,
     endedAt: new Date().toISOString(),
     tolerance: intent.tolerance,
-    watchedFor,
+    watchedFor: intent.watchSeconds * 1000,
     verdict: comparison.verdict,
-    counts: { ...comparison.counts, servedNodes: read.value.nodes.length, watched: observations.length },
+    counts: { ...comparison.counts, servedNodes, watched: observations.length },
     differences: comparison.differences,
     observations: observations.filter((seen) => seen.samples === 0 || seen.badFor > 0 || seen.uncertainFor > 0).slice(0, MAX_KEPT_OBSERVATIONS),
     pointChecks: pointChecks.map(({ path, nodeId, stimulus, localReading, shownValue, unit, tolerance, isWithin, checkedBy, at }) => ({ path, nodeId, stimulus, localReading, shownValue, unit, tolerance, isWithin, checkedBy, at: at.toISOString() })),
-    remarks: read.problems.map(formatProblem),
+    remarks,
   };
 }
 
-/** The layers that the team wrote itself, the own one last: what is published elsewhere is compared by its version alone. */
-function listTeamLayers(space: AddressSpace): Layer[] {
-  const published = new Set(getLibrary().list().map((entry) => entry.modelUri));
-  return space.layers.filter((layer) => layer.header.models[0] !== undefined && !published.has(layer.header.models[0].modelUri));
-}
-
-function listWatched(space: AddressSpace): ObserveTarget[] {
-  const known = new Map();
-  return space
-    .listOwnNodes()
-    .filter((node) => node.nodeClass === "Variable" && (getAccessLevel(node) & 1) === 1 && isInstance(space, node.key, known) && !isPropertyOf(space, node.key))
-    .slice(0, MAX_WATCHED)
-    .map((node) => ({ nodeId: formatNodeId(node.nodeId), path: getPath(space, node.key) }));
-}
-
-function isPropertyOf(space: AddressSpace, key: Parameters<typeof getPath>[1]): boolean {
-  return space.edgesTo(key).some((edge) => edge.type === "i=46");
-}
-
-function compareLayers(space: AddressSpace, teamLayers: readonly Layer[], served: LiveAddressSpace, models: readonly ServedModel[], observations: readonly Observation[], { tolerance }: AsBuiltIntent): AsBuiltComparison {
-  const parts = teamLayers.map((layer, i) => {
-    const isLast = i === teamLayers.length - 1;
-    return compareAsBuilt({
-      released: AddressSpace.of(space.layers.slice(0, space.layers.indexOf(layer)), layer),
-      releasedModels: isLast ? space.layers.flatMap((l) => l.header.models.slice(0, 1)) : [],
-      served: { nodes: served.nodes, models, isComplete: served.isComplete },
-      observations: isLast ? observations : [],
-      tolerance,
-    });
-  });
-  const differences: AsBuiltDifference[] = parts.flatMap((part) => part.differences);
-  const sum = (name: keyof AsBuiltComparison["counts"]): number => parts.reduce((total, part) => total + part.counts[name], 0);
-  const counts = { nodes: sum("nodes"), counted: sum("counted"), ignored: sum("ignored") };
-  return { verdict: counts.counted > 0 ? "differs" : served.isComplete ? "as released" : "not shown", differences, counts };
-}
-
-async function saveReport(author: Caller, model: ModelRow, target: LiveTarget, intent: AsBuiltIntent, report: AsBuiltReport): Promise<string> {
+async function saveReport({ author, model, target, intent, proof }: Work, report: AsBuiltReport): Promise<string> {
   const id = newId();
   const now = new Date();
   const body = await toBlob(`${JSON.stringify(report, null, 2)}\n`);
@@ -201,8 +173,8 @@ async function saveReport(author: Caller, model: ModelRow, target: LiveTarget, i
       modelId: model.id,
       number,
       revisionNumber: intent.state === "working" ? -1 : intent.state,
-      releaseId: intent.releaseId ?? null,
-      deliveryId: intent.deliveryId ?? null,
+      releaseId: proof?.release.id ?? null,
+      deliveryId: proof?.delivery.id ?? null,
       targetId: target.id,
       targetName: target.name,
       endpointUrl: report.target.endpointUrl,

@@ -29,6 +29,8 @@ export type AsBuiltReport = {
   readonly format: typeof AS_BUILT_FORMAT;
   readonly model: { readonly id: string; readonly name: string; readonly namespaceUri: string; readonly version: string | null; readonly revision: number | null };
   readonly target: { readonly id: string; readonly name: string; readonly endpointUrl: string; readonly securityMode: string };
+  /** What the report is to prove. */
+  readonly delivery?: { readonly version: string; readonly gateway: string; readonly sha256: string };
   readonly madeBy: string;
   /** ISO 8601, UTC. */
   readonly startedAt: string;
@@ -46,12 +48,22 @@ export type AsBuiltReport = {
 };
 
 /** The aspects in the order in which an engineer works them off. */
-export const ASPECT_ORDER: readonly AsBuiltAspect[] = ["namespace", "version", "missing", "additional", "identity", "type", "data type", "unit", "range", "access", "value", "reference", "status", "rate", "text"];
+export const ASPECT_ORDER: readonly AsBuiltAspect[] = ["namespace", "version", "missing", "additional", "identity", "type", "data type", "unit", "range", "access", "value", "reference", "status", "rate", "device", "text"];
 
 /** The differences by aspect, those that count first. */
 export function groupDifferences(differences: readonly AsBuiltDifference[]): { aspect: AsBuiltAspect; list: AsBuiltDifference[] }[] {
   return ASPECT_ORDER.flatMap((aspect) => {
     const list = differences.filter((d) => d.aspect === aspect).sort((a, b) => Number(a.ignoredBy !== undefined) - Number(b.ignoredBy !== undefined));
     return list.length > 0 ? [{ aspect, list }] : [];
+  });
+}
+
+/** Signals whose newest check was outside its tolerance; the list comes newest first. */
+export function listOutside(pointChecks: readonly QuotedPointCheck[]): QuotedPointCheck[] {
+  const seen = new Set<string>();
+  return pointChecks.filter(({ nodeId, isWithin }) => {
+    if (seen.has(nodeId)) return false;
+    seen.add(nodeId);
+    return !isWithin;
   });
 }

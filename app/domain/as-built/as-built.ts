@@ -31,11 +31,12 @@ export type AsBuiltAspect =
   | "reference"
   | "text"
   | "status"
-  | "rate";
+  | "rate"
+  | "device";
 
 export type AsBuiltDifference = {
   readonly aspect: AsBuiltAspect;
-  readonly kind: ChangeKind | "namespace-missing" | "version-differs" | "bad-status" | "too-slow" | "never-came";
+  readonly kind: ChangeKind | "namespace-missing" | "version-differs" | "bad-status" | "too-slow" | "never-came" | "device-differs";
   readonly nodeId?: string;
   readonly path: string;
   readonly detail?: string;
@@ -58,6 +59,8 @@ export type Observation = {
   readonly uncertainFor: number;
   /** Name of the worst status that was seen. */
   readonly worstStatus: string;
+  /** The second shortest time between two samples, that a chance pair does not count; absent with fewer than three. */
+  readonly shortestGap?: number;
   /** What the mapping promises; absent for a Variable that nothing feeds. */
   readonly promisedPeriod?: number;
 };

@@ -17,15 +17,19 @@ export type AsBuiltInput = {
   readonly observations?: readonly Observation[];
   /** A Variable may be Bad or silent this long before it counts, ms. */
   readonly badAfter?: number;
+  /** Found beside the address space. */
+  readonly more?: readonly AsBuiltDifference[];
   readonly tolerance: AsBuiltTolerance;
 };
 
 const DEFAULT_BAD_AFTER = 5_000;
 /** A value that comes in twice the promised time is late, not wrong (common practice, no source). */
 const RATE_ALLOWANCE = 2;
+/** Changes that must have been seen before anything is said of the rate. */
+const SAMPLES_FOR_RATE = 6;
 
 export function compareAsBuilt(input: AsBuiltInput): AsBuiltComparison {
-  const found = [...compareServedModels(input), ...compareServedNodes(input), ...judgeObservations(input)];
+  const found = [...compareServedModels(input), ...compareServedNodes(input), ...judgeObservations(input), ...(input.more ?? [])];
   const differences = found.map((difference) => withTolerance(difference, input.tolerance));
   const counted = differences.filter((d) => d.ignoredBy === undefined).length;
   return {
@@ -146,10 +150,11 @@ function judgeObservations({ observations = [], badAfter = DEFAULT_BAD_AFTER }: 
       return [{ aspect: "status", kind: "bad-status", nodeId, path, released: "Good", found }];
     }
     const { promisedPeriod } = seen;
-    if (promisedPeriod === undefined || seen.watchedFor < promisedPeriod * RATE_ALLOWANCE * 2) return [];
-    const period = seen.watchedFor / seen.samples;
-    if (period <= promisedPeriod * RATE_ALLOWANCE) return [];
-    return [{ aspect: "rate", kind: "too-slow", nodeId, path, released: `every ${formatSeconds(promisedPeriod)}`, found: `every ${formatSeconds(period)}` }];
+    // A value that stood still, or came once in time, contradicts nothing.
+    if (promisedPeriod === undefined || seen.samples < SAMPLES_FOR_RATE) return [];
+    if ((seen.shortestGap ?? 0) <= promisedPeriod * RATE_ALLOWANCE) return [];
+    const found = `every ${formatSeconds(seen.watchedFor / seen.samples)}`;
+    return [{ aspect: "rate", kind: "too-slow", nodeId, path, released: `every ${formatSeconds(promisedPeriod)}`, found }];
   });
 }
 

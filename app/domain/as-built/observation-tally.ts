@@ -21,6 +21,8 @@ export class ObservationTally {
   #since: number;
   #badFor = 0;
   #uncertainFor = 0;
+  #lastAt: number | undefined;
+  readonly #gaps: [shortest: number, second: number] = [Infinity, Infinity];
 
   constructor(nodeId: string, path: string, start: number) {
     this.#nodeId = nodeId;
@@ -33,6 +35,8 @@ export class ObservationTally {
   offer(time: number, code: number, name: string): void {
     const severity = getSeverity(code);
     this.#samples++;
+    if (this.#lastAt !== undefined) this.#noteGap(time - this.#lastAt);
+    this.#lastAt = time;
     if (RANK[severity] > RANK[this.#worst.severity]) this.#worst = { severity, name };
     if (severity === this.#severity) return;
     this.#close(time);
@@ -50,8 +54,15 @@ export class ObservationTally {
       badFor: this.#badFor,
       uncertainFor: this.#uncertainFor,
       worstStatus: this.#worst.name,
+      ...(Number.isFinite(this.#gaps[1]) ? { shortestGap: this.#gaps[1] } : {}),
       ...(promisedPeriod === undefined ? {} : { promisedPeriod }),
     };
+  }
+
+  #noteGap(gap: number): void {
+    const [shortest, second] = this.#gaps;
+    if (gap < shortest) this.#gaps.splice(0, 2, gap, shortest);
+    else if (gap < second) this.#gaps[1] = gap;
   }
 
   #close(time: number): void {

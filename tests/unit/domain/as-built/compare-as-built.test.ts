@@ -86,7 +86,10 @@ describe("compareAsBuilt", () => {
     expect(judge({})).toEqual([]);
     expect(judge({ samples: 0 })).toMatchObject([{ kind: "never-came" }]);
     expect(judge({ badFor: 6_000, worstStatus: "BadNoCommunication" })).toMatchObject([{ kind: "bad-status", found: "BadNoCommunication for 6 s" }]);
-    expect(judge({ samples: 3 })).toMatchObject([{ kind: "too-slow", released: "every 1 s", found: "every 3.33 s" }]);
+    expect(judge({ samples: 8, watchedFor: 30_000, shortestGap: 3_500 })).toMatchObject([{ kind: "too-slow", released: "every 1 s", found: "every 3.75 s" }]);
+    // A value that hardly moved, or moved in time at least twice, contradicts no promise.
+    expect(judge({ samples: 3, shortestGap: 3_500 })).toEqual([]);
+    expect(judge({ samples: 8, watchedFor: 30_000, shortestGap: 1_100 })).toEqual([]);
   });
 });
 
@@ -99,7 +102,7 @@ describe("ObservationTally", () => {
     tally.offer(4_000, 0x40900000, "UncertainLastUsableValue");
     tally.offer(4_500, 0, "Good");
     tally.offer(5_000, 0x80310000, "BadNoCommunication");
-    expect(tally.end(6_000)).toEqual({ nodeId: "i=1", path: "x", watchedFor: 6_000, samples: 6, badFor: 3_000, uncertainFor: 500, worstStatus: "BadNoCommunication" });
+    expect(tally.end(6_000)).toEqual({ nodeId: "i=1", path: "x", watchedFor: 6_000, samples: 6, shortestGap: 500, badFor: 3_000, uncertainFor: 500, worstStatus: "BadNoCommunication" });
   });
 });
 
