@@ -1,6 +1,7 @@
 /** `npm run bench [-- --json]`: figures with their references, all of one run. */
 import { measureAsBuilt } from "./as-built";
 import { checkInChild, measureChecking } from "./checking";
+import { measureCompare } from "./compare";
 import { measureEditing } from "./editing";
 import { measureImport, serveImportsInChild } from "./import";
 import { measureLibrary, readLibraryInChild } from "./library";
@@ -13,6 +14,7 @@ const measures: readonly (() => Promise<BenchResult[]>)[] = [
   measureLibrary,
   measureImport,
   measureEditing,
+  measureCompare,
   measureChecking,
   measureTestServerStart,
   measureAsBuilt,

@@ -7,6 +7,7 @@ import { cx } from "~/components/ui/cx";
 import { Tag } from "~/components/ui/tag";
 import type { ReviewChange, ReviewPage } from "~/services/read-review.server";
 import { effectWords } from "./review-words";
+import { useReviewAction } from "./use-review-action";
 
 /** One change: before and after in notation, why it is rated so, whom it touches, the other way. */
 export function ChangeDetail({ page, change }: { page: ReviewPage; change: ReviewChange }) {
@@ -170,8 +171,9 @@ function listSome(texts: readonly string[]): string {
 /** Taking the change back, as a suggestion that the author applies with one key. */
 function OtherWay({ change }: { change: ReviewChange }) {
   const fetcher = useFetcher<{ errors: readonly string[] }>();
+  const action = useReviewAction();
   return (
-    <fetcher.Form method="post" className="flex items-center gap-2">
+    <fetcher.Form action={action} method="post" className="flex items-center gap-2">
       <input type="hidden" name="intent" value="comment" />
       <input type="hidden" name="nodeKey" value={change.nodeKey ?? ""} />
       <input type="hidden" name="change" value={change.what} />

@@ -8,6 +8,7 @@ import { Input } from "~/components/ui/field";
 import { Initials } from "~/components/ui/initials";
 import { Kbd, Tag } from "~/components/ui/tag";
 import type { ReviewComment, ReviewPage } from "~/services/read-review.server";
+import { useReviewAction } from "./use-review-action";
 
 type Answer = { errors: readonly string[] };
 type Props = {
@@ -89,6 +90,7 @@ function Remark({ comment }: { comment: ReviewComment }) {
 /** One key: A applies the first suggestion that waits, wherever the focus is outside a field. */
 function ApplySuggestion({ comment }: { comment: ReviewComment }) {
   const fetcher = useFetcher<Answer>();
+  const action = useReviewAction();
   const button = useRef<HTMLButtonElement>(null);
   useEffect(() => {
     const listen = (event: KeyboardEvent) => {
@@ -104,7 +106,7 @@ function ApplySuggestion({ comment }: { comment: ReviewComment }) {
     return () => document.removeEventListener("keydown", listen);
   }, []);
   return (
-    <fetcher.Form method="post" className="mt-1.5 flex items-center gap-2">
+    <fetcher.Form action={action} method="post" className="mt-1.5 flex items-center gap-2">
       <input type="hidden" name="intent" value="apply-suggestion" />
       <input type="hidden" name="commentId" value={comment.id} />
       <Button
@@ -131,8 +133,9 @@ function ApplySuggestion({ comment }: { comment: ReviewComment }) {
 
 function SettleButton({ comment, isSettled }: { comment: ReviewComment; isSettled: boolean }) {
   const fetcher = useFetcher();
+  const action = useReviewAction();
   return (
-    <fetcher.Form method="post">
+    <fetcher.Form action={action} method="post">
       <input type="hidden" name="intent" value="settle" />
       <input type="hidden" name="commentId" value={comment.id} />
       <input type="hidden" name="isSettled" value={isSettled ? "no" : "yes"} />
@@ -153,6 +156,7 @@ function CommentForm({
   isReply?: boolean;
 }) {
   const fetcher = useFetcher<Answer>();
+  const action = useReviewAction();
   const form = useRef<HTMLFormElement>(null);
   const wasBusy = useRef(false);
   useEffect(() => {
@@ -161,6 +165,7 @@ function CommentForm({
   }, [fetcher.state, fetcher.data]);
   return (
     <fetcher.Form
+      action={action}
       ref={form}
       method="post"
       className={isReply ? "mt-1.5 flex gap-2" : "flex items-center gap-2 border-t border-rule px-5 py-3"}

@@ -10,15 +10,14 @@ const shapes: Record<Effect, string> = {
 };
 const colours: Record<Effect, string> = { stops: "text-removed", look: "text-ink-2", "may-use": "text-added" };
 
-/** What a change does to a reader: broken line, ring, plus. */
+/** What a change does to a reader: broken line, ring, plus. An empty label where the words stand beside it. */
 export function EffectMark({ effect, label }: { effect: Effect; label?: string }) {
   return (
     <svg
       viewBox="0 0 16 16"
       width={15}
       height={15}
-      role="img"
-      aria-label={label ?? effectWords[effect]}
+      {...(label === "" ? { "aria-hidden": true } : { role: "img", "aria-label": label ?? effectWords[effect] })}
       className={`inline-block ${colours[effect]}`}
       fill="none"
       stroke="currentColor"

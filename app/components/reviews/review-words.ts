@@ -29,12 +29,18 @@ export function describeChange({
 }: Pick<ReviewChange, "kind" | "detail" | "before" | "after">): string {
   const what = kind.replace(/-changed$/, "").replaceAll("-", " ");
   if (kind.endsWith("-added"))
-    return [`new ${kind.slice(0, -6).replaceAll("-", " ")}`, after === null ? "" : shorten(after)].filter(Boolean).join(", ");
+    return [`new ${kind.slice(0, -6).replaceAll("-", " ")}`, after === null ? "" : shorten(after)]
+      .filter(Boolean)
+      .join(", ");
   if (kind.endsWith("-removed"))
-    return [`${kind.slice(0, -8).replaceAll("-", " ")} removed`, before === null ? "" : shorten(before)].filter(Boolean).join(", ");
+    return [`${kind.slice(0, -8).replaceAll("-", " ")} removed`, before === null ? "" : shorten(before)]
+      .filter(Boolean)
+      .join(", ");
   const subject = detail === null ? what : detail;
   if (before === null) return `${subject}: ${shorten(after ?? "")}`;
-  return after === null ? `${subject} ${shorten(before)} is gone` : `${subject} ${shorten(before)} becomes ${shorten(after)}`;
+  return after === null
+    ? `${subject} ${shorten(before)} is gone`
+    : `${subject} ${shorten(before)} becomes ${shorten(after)}`;
 }
 
 function shorten(text: string): string {

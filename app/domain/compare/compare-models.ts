@@ -14,7 +14,8 @@ import type { Difference } from "./compare-data-types";
 import { compareMappings } from "./compare-mappings";
 import { compareNodes, isFactProperty, toldElsewhere, type Sides } from "./compare-nodes";
 import { nameOf } from "./describe-facts";
-import { matchNodes } from "./match-nodes";
+import { findTouched } from "./find-touched";
+import { matchNodes, type NodePair } from "./match-nodes";
 import { proposeVersion } from "./propose-version";
 import { ratings, type Rating } from "./ratings";
 
@@ -48,10 +49,12 @@ export function compareModels(before: AddressSpace, after: AddressSpace): Compar
     const count = countBelow(after, node.key, addedKeys);
     tell(after, node, { ...rateAddition(after, node), before: null, after: describe(after, node, count) });
   }
-  for (const pair of match.pairs) {
+  const touched = findTouched(before, after, match);
+  const pairs = touched ? match.pairs.filter((pair) => touched.has(pair.after.key)) : match.pairs;
+  for (const pair of pairs) {
     for (const difference of compareNodes(sides, pair)) tell(after, pair.after, difference);
   }
-  compareReferences(sides, addedKeys, removedKeys, tell);
+  compareReferences(sides, pairs, addedKeys, removedKeys, tell);
   changes.push(...compareHeaders(before, after), ...compareMappings(before, after, match.toAfter));
   changes.sort(byRatingThenPath);
   const rating = changes[0]?.rating;
@@ -137,10 +140,10 @@ function rateAddition(space: AddressSpace, node: Node): { kind: ChangeKind; rati
 type Tell = (space: AddressSpace, node: Node, difference: Difference) => void;
 
 /** References between nodes that both states have; ownership is told as "moved", the rest by reference type. */
-function compareReferences(sides: Sides, added: ReadonlySet<NodeKey>, removed: ReadonlySet<NodeKey>, tell: Tell): void {
+function compareReferences(sides: Sides, pairs: readonly NodePair[], added: ReadonlySet<NodeKey>, removed: ReadonlySet<NodeKey>, tell: Tell): void {
   const { before, after, match } = sides;
   const events = collectSubtypes(after, StandardReferenceType.GeneratesEvent);
-  for (const { before: old, after: now } of match.pairs) {
+  for (const { before: old, after: now } of pairs) {
     const isTold = (space: AddressSpace, edge: Edge, gone: ReadonlySet<NodeKey>): boolean =>
       toldElsewhere.has(edge.type) || gone.has(edge.target) || gone.has(edge.type) || isOwnership(space, edge);
     const left = before.edgesFrom(old.key).filter((e) => !isTold(before, e, removed));
