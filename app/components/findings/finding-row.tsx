@@ -62,7 +62,7 @@ export function FindingRow({ finding, tools, open, onToggle, showsRule }: RowPro
           <span className={cx(open ? "" : "truncate")}>
             {showsRule ? <span className="mr-2 font-mono text-ink-2">{finding.rule}</span> : null}
             <b className={cx("font-semibold", node?.nodeClass.endsWith("Type") && "italic")}>
-              {finding.browseName || "Model"}
+              {finding.browseName || finding.place?.name || "Model"}
             </b>
             {parent ? (
               <span className="text-ink-2">
@@ -138,6 +138,12 @@ function FindingDetail({ finding, tools }: { finding: Finding; tools: FindingToo
             </span>
           </Fact>
         </dl>
+        {rule?.fix ? (
+          <div className="mt-4 border-t border-hair pt-3">
+            <h3 className="mb-2 text-note font-medium text-ink-3">What mending changes</h3>
+            <MendPreview space={tools.space} findings={[finding]} />
+          </div>
+        ) : null}
       </section>
       <section className="border-l border-hair px-5 py-3">
         <h3 className="mb-2 text-note font-medium text-ink-3">What to do</h3>
@@ -152,9 +158,6 @@ function FindingDetail({ finding, tools }: { finding: Finding; tools: FindingToo
                 Mend
               </Button>
               <span className="text-note text-ink-3">undone with one step</span>
-            </div>
-            <div className="mb-3 max-h-60 overflow-y-auto border-l border-rule pl-2.5">
-              <MendPreview space={tools.space} findings={[finding]} />
             </div>
           </>
         ) : (

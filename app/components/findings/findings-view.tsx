@@ -159,6 +159,15 @@ function Group({ group, grouping, tools, openId, onOpen, isClosed, onToggle }: G
               Mend all {group.findings.length}
             </Button>
           ) : null}
+          {group.mark ? (
+            <Link
+              to={`/rules/${group.mark}`}
+              className="border-b border-rule font-medium text-ink-2 hover:border-copper hover:text-copper"
+              aria-label={`Help on ${group.mark}`}
+            >
+              Help
+            </Link>
+          ) : null}
           {group.severity}
           <span className="w-6 text-right font-mono text-small text-ink">{group.findings.length}</span>
         </span>

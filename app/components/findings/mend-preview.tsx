@@ -58,7 +58,7 @@ function Details({ details }: { details: readonly ChangeDetail[] }) {
       {details.map(({ label, before, after }) => (
         <div key={`${label} ${before ?? ""} ${after ?? ""}`} className="contents">
           <dt className="text-ink-3">{label}</dt>
-          <dd className="min-w-0 break-words">
+          <dd className="min-w-0 [overflow-wrap:anywhere]">
             {before === undefined ? null : (
               <del className="text-ink-3" aria-label={`before ${before}`}>
                 {before || "empty"}

@@ -12,8 +12,7 @@ export function RuleHelpView({ help }: { help: RuleHelp }) {
     <Page
       title={
         <>
-          <span className="mr-2 font-mono font-medium text-ink-2">{help.id}</span>
-          {help.title}
+          <span className="mr-2 font-mono font-medium text-ink-2">{help.id}</span> {help.title}
         </>
       }
       about={

@@ -126,7 +126,9 @@ function RuleRow({ rule }: { rule: ListedRule }) {
         </span>
       </Td>
       <Td className="text-ink-2">{rule.clause}</Td>
-      <Td className="text-ink-2">{rule.hasFix ? "one key" : rule.implemented ? "by hand" : "–"}</Td>
+      <Td className="whitespace-nowrap text-ink-2">
+        {rule.hasFix ? "by the rule" : rule.implemented ? "by hand" : "–"}
+      </Td>
     </Tr>
   );
 }

@@ -54,13 +54,21 @@ function describe(
 /** Attributes that tell nothing to a reader, or that stand above the details anyway. */
 const LEFT_OUT: ReadonlySet<string> = new Set(["key", "order", "nodeClass", "references"]);
 
+/** Of a node that comes or goes its name and path say this much. */
+const TOLD_BY_NAME: ReadonlySet<string> = new Set(["nodeId", "browseName", "displayName", "parent"]);
+
 function listNodeDetails(
   before: AddressSpace,
   after: AddressSpace,
   old: Node | undefined,
   node: Node | undefined,
 ): ChangeDetail[] {
-  const names = new Set([...Object.keys(old ?? {}), ...Object.keys(node ?? {})].filter((n) => !LEFT_OUT.has(n)));
+  const isWhole = !old || !node;
+  const names = new Set(
+    [...Object.keys(old ?? {}), ...Object.keys(node ?? {})].filter(
+      (name) => !LEFT_OUT.has(name) && !(isWhole && TOLD_BY_NAME.has(name)),
+    ),
+  );
   const attributes = [...names].flatMap((name) => {
     const text = old && formatAttribute(before, old, name);
     const next = node && formatAttribute(after, node, name);

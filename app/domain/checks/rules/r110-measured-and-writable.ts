@@ -1,3 +1,4 @@
+import type { SourceReference } from "../../mapping/mapping";
 import type { WiringRule } from "../rule";
 import { findTargetOf } from "../source-facts";
 import { exampleMapping, exampleRow, exampleWiring, integerField } from "../wiring-examples";
@@ -16,8 +17,8 @@ export const r110: WiringRule = {
       const outputs = new Set(mapping.mapping.rows.filter((r) => r.direction === "out").map((r) => r.target));
       for (const row of mapping.mapping.rows) {
         const target = findTargetOf(mapping, row);
-        if (!target?.isWritable || row.direction === "out" || row.source.kind === "constant") continue;
-        if (outputs.has(row.target)) continue;
+        if (!target?.isWritable || row.direction === "out" || outputs.has(row.target)) continue;
+        if (!isMeasured(row.source)) continue;
         report({
           key: target.key,
           attribute: "accessLevel",
@@ -51,3 +52,8 @@ export const r110: WiringRule = {
     },
   },
 };
+
+/** What a device puts out is set by somebody, and reading it back measures nothing. */
+function isMeasured(source: SourceReference): boolean {
+  return source.kind !== "constant" && !(source.kind === "process-data" && source.direction === "out");
+}
