@@ -31,7 +31,7 @@ export const action = handleApi(async ({ request }: Route.ActionArgs) => {
   const { name, kind } = requireFields(querySchema, Object.fromEntries(new URL(request.url).searchParams));
   const body = await readBody(request, MAX_UPLOAD_BYTES, "limit.file-size");
   if (!body.ok) return problemResponse(body.problems[0]?.code === "limit.file-size" ? 413 : 422, body.problems);
-  const upload = await readUpload(body.value, `${name === undefined ? "upload" : toFileName(name)}.xml`, request.signal);
+  const upload = await readUpload(body.value, `${name === undefined ? "upload" : toFileName(name)}.xml`, { signal: request.signal });
   if (!upload.ok) return problemResponse(422, upload.problems);
   const intent = { ...(name === undefined ? {} : { name }), ...(kind === undefined ? {} : { kind }) };
   const imported = await importModel(caller, organizationId, upload.value, intent);
