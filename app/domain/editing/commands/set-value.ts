@@ -1,11 +1,12 @@
 /** `setValue`: the Value of a Variable or VariableType, checked against its DataType and ValueRank (OPC 10000-3 §5.6.2). */
 import type { AddressSpace } from "../../address-space/address-space";
-import { getDataType, getValueRank, hasValueAttributes } from "../../address-space/node";
+import { getDataType, getValueRank, hasValueAttributes, type XmlText } from "../../address-space/node";
 import type { NodeKey } from "../../address-space/node-id";
 import { problem, type Problem, type Result } from "../../core/result";
 import { SpaceDataTypes } from "../../nodeset/values/data-type-shapes";
 import { checkVariant } from "../../nodeset/values/check-variant";
 import { readValue } from "../../nodeset/values/read-value";
+import { rewriteValue } from "../../nodeset/values/rewrite-value";
 import { isSameValue } from "../../nodeset/values/same-value";
 import { isWritableText } from "../../nodeset/values/scalar-text";
 import type { Variant } from "../../nodeset/values/variant";
@@ -38,18 +39,18 @@ export function setValueOn(draft: EditDraft, key: NodeKey, value: Variant | unde
     return;
   }
   const types = new SpaceDataTypes(draft.space);
-  if (isWrittenAlready(draft.space, key, value, types)) return;
-  const written = writeValue(value, types);
+  const written = writeLike(draft.space, key, value, types);
   if (isWritableText(written.xml)) draft.set(key, "value", written);
   else draft.fail(problem("value.character", undefined, { node: key, attribute: "value" }));
 }
 
-/** The same value keeps the text that a file gave it, to the last space. */
-function isWrittenAlready(space: AddressSpace, key: NodeKey, value: Variant, types: SpaceDataTypes): boolean {
+/** Like the text that a file gave the value: what stays the same keeps it, to the last space. */
+function writeLike(space: AddressSpace, key: NodeKey, value: Variant, types: SpaceDataTypes): XmlText {
   const node = space.getNode(key);
-  if (!node || !hasValueAttributes(node) || !node.value) return false;
-  const read = readValue(node.value, types);
-  return read.ok && isSameValue(read.value, value);
+  const text = node && hasValueAttributes(node) ? node.value : undefined;
+  const read = text && readValue(text, types);
+  if (!text || !read?.ok) return writeValue(value, types);
+  return isSameValue(read.value, value) ? text : rewriteValue(text, read.value, value, types);
 }
 
 function findMisfit(space: AddressSpace, key: NodeKey, value: Variant): Problem | undefined {

@@ -25,26 +25,32 @@ const CONTENT_INDENT = 6;
 const END_INDENT = 4;
 
 /** An element before it becomes text: a leaf has `text`, raw content has `raw`. */
-type Element = {
+export type WrittenElement = {
   readonly name: string;
   readonly attributes?: Readonly<Record<string, string>>;
   readonly text?: string;
   readonly raw?: string;
-  readonly children?: readonly Element[];
+  readonly children?: readonly WrittenElement[];
 };
+type Element = WrittenElement;
 
 /** The XML text of a Variant. Structures need `types` for names, order and encodings of fields. */
 export function writeValue(variant: Variant, types: DataTypeLookup): XmlText {
-  const element = withAttributes(new ValueWriter(types).writeVariant(variant), { xmlns: TYPES_XML_NAMESPACE });
-  const xml = print(element, CONTENT_INDENT);
+  const xml = printElement(toElement(variant, types), CONTENT_INDENT);
   return { xml: `\n${xml}\n${" ".repeat(END_INDENT)}` };
+}
+
+/** What `writeValue` prints. */
+export function toElement(variant: Variant, types: DataTypeLookup): WrittenElement {
+  return withAttributes(new ValueWriter(types).writeVariant(variant), { xmlns: TYPES_XML_NAMESPACE });
 }
 
 function withAttributes(element: Element, attributes: Readonly<Record<string, string>>): Element {
   return { ...element, attributes: { ...attributes, ...element.attributes } };
 }
 
-function print(element: Element, indent: number): string {
+/** With its children below each other, all lines indented by so many spaces. */
+export function printElement(element: WrittenElement, indent: number): string {
   const pad = " ".repeat(indent);
   const attributes = Object.entries(element.attributes ?? {})
     .map(([name, value]) => ` ${name}="${escapeAttribute(value)}"`)
@@ -53,7 +59,7 @@ function print(element: Element, indent: number): string {
   if (element.raw !== undefined) return `${open}>${element.raw}</${element.name}>`;
   if (element.text !== undefined) return `${open}>${escapeText(element.text)}</${element.name}>`;
   if (!element.children || element.children.length === 0) return `${open}/>`;
-  const inner = element.children.map((child) => print(child, indent + 2)).join("\n");
+  const inner = element.children.map((child) => printElement(child, indent + 2)).join("\n");
   return `${open}>\n${inner}\n${pad}</${element.name}>`;
 }
 
