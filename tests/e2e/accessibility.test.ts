@@ -53,6 +53,44 @@ const screens: readonly Screen[] = [
   { name: "Types", path: () => `/models/${ids.braider}/types`, ready: (page) => page.getByRole("main") },
   { name: "Signals", path: () => `/models/${ids.braider}/signals`, ready: (page) => page.getByRole("main") },
   { name: "Roll-out", path: () => `/models/${ids.hall}/roll-out`, ready: (page) => page.getByRole("main") },
+  {
+    name: "Devices",
+    path: () => "/devices",
+    ready: (page) => page.getByRole("table", { name: "Devices of the library" }),
+  },
+  { name: "Sources", path: () => "/sources", ready: (page) => page.getByRole("region", { name: "Port plan" }) },
+  {
+    name: "Wiring list",
+    path: () => "/sources/wiring-list",
+    ready: (page) => page.getByRole("table", { name: "Ports of M1" }),
+  },
+  { name: "Controller tags", path: () => "/sources/tags", ready: (page) => page.getByText("Drop a tag list here") },
+  {
+    name: "Mapping",
+    path: () =>
+      `/models/${ids.braider}/mapping?target=${encodeURIComponent("nsu=http://merrow.example/UA/RopeBraider/;i=6005")}`,
+    ready: (page) => page.getByRole("region", { name: "Mapping of Process/CreelFill" }),
+  },
+  {
+    name: "Decode bench",
+    path: () => `/models/${ids.braider}/mapping?view=bench`,
+    ready: (page) => page.getByRole("table", { name: "Nodes with what the bytes give" }),
+  },
+  {
+    name: "Deliver",
+    path: () => `/models/${ids.braider}/mapping?view=deliver`,
+    ready: (page) => page.getByRole("heading", { name: "Export templates" }),
+  },
+  {
+    name: "Survey",
+    path: () => `/models/${ids.braider}/survey`,
+    ready: (page) => page.getByRole("table", { name: "Surveyed signals" }),
+  },
+  {
+    name: "Bindings",
+    path: () => `/models/${ids.hall}/mapping`,
+    ready: (page) => page.getByRole("table", { name: "Roles of the machines and where they are found" }),
+  },
   { name: "Source text", path: () => `/models/${ids.braider}/source`, ready: (page) => page.getByRole("main") },
   { name: "Revisions", path: () => `/models/${ids.braider}/revisions`, ready: (page) => page.getByRole("main") },
   { name: "About", path: () => `/models/${ids.braider}/about`, ready: (page) => page.getByRole("main") },

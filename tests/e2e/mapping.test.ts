@@ -3,7 +3,7 @@ import { readFileSync } from "node:fs";
 import type { Browser, Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { startApp, type AppServer } from "../support/app-server";
-import { findAccessibilityProblems, openBrowser, openWindow, signInAs, type Visitor } from "../support/browser";
+import { openBrowser, openWindow, signInAs, type Visitor } from "../support/browser";
 import { findModelId } from "../support/demo-session";
 
 let app: AppServer;
@@ -189,7 +189,7 @@ describe("the mapping", () => {
     await saved.getByText("passes", { exact: true }).waitFor();
   });
 
-  it("surveys a signal, and passes the tests of accessibility on every screen", async () => {
+  it("surveys a signal, and complained of nothing all the while", async () => {
     const { page } = priya;
     await page.goto(`/models/${braider}/survey`);
     await page.getByRole("button", { name: "Signal", exact: true }).click();
@@ -200,20 +200,6 @@ describe("the mapping", () => {
       .getByRole("table", { name: "Surveyed signals" })
       .getByRole("button", { name: "Bobbin change" })
       .waitFor();
-    const screens = [
-      "/devices",
-      "/sources",
-      "/sources/wiring-list",
-      `/models/${braider}/mapping`,
-      `/models/${braider}/mapping?view=bench`,
-      `/models/${braider}/survey`,
-      `/models/${hall}/mapping`,
-    ];
-    for (const screen of screens) {
-      await page.goto(screen);
-      await page.getByRole("main").locator("h1, table, [role=group]").first().waitFor();
-      expect(await findAccessibilityProblems(page), screen).toEqual([]);
-    }
     // 422 is the damaged file; 409 tells a window that its base is old, which it then follows.
     expect(priya.complaints.filter((text) => !/status of (?:409|422)/.test(text))).toEqual([]);
   });

@@ -8,22 +8,28 @@ type Props = {
   view: FrameView;
   readings: ReadonlyMap<number, FieldReading> | undefined;
   feeds?: ReadonlyMap<number, string> | undefined;
+  /** For narrow places: what each field says, not how it is built. */
+  isCompact?: boolean;
 };
 
 /** The same frame as rows. */
-export function FrameTable({ label, view, readings, feeds }: Props) {
+export function FrameTable({ label, view, readings, feeds, isCompact }: Props) {
   return (
     <TableScroll label={label}>
       <Table caption={label}>
         <thead>
           <tr>
             <Th>Field</Th>
-            <Th right>Subindex</Th>
-            <Th>Type</Th>
-            <Th right>Bits</Th>
-            <Th>Octets</Th>
-            <Th>Scale</Th>
-            <Th right>Range</Th>
+            {isCompact ? null : (
+              <>
+                <Th right>Subindex</Th>
+                <Th>Type</Th>
+                <Th right>Bits</Th>
+                <Th>Octets</Th>
+                <Th>Scale</Th>
+                <Th right>Range</Th>
+              </>
+            )}
             <Th>Unit</Th>
             {readings ? (
               <>
@@ -43,22 +49,26 @@ export function FrameTable({ label, view, readings, feeds }: Props) {
             return (
               <Tr key={field.subindex}>
                 <RowHead title={field.description}>{field.name}</RowHead>
-                <Td right mono>
-                  {field.subindex}
-                </Td>
-                <Td mono>{field.typeText}</Td>
-                <Td right mono className="whitespace-nowrap">
-                  {field.bitText}
-                </Td>
-                <Td mono className="whitespace-nowrap">
-                  {field.octetText.replace(/^octets? /, "")}
-                </Td>
-                <Td mono className="whitespace-nowrap">
-                  {field.scaleText}
-                </Td>
-                <Td right mono className="whitespace-nowrap">
-                  {field.rangeText}
-                </Td>
+                {isCompact ? null : (
+                  <>
+                    <Td right mono>
+                      {field.subindex}
+                    </Td>
+                    <Td mono>{field.typeText}</Td>
+                    <Td right mono className="whitespace-nowrap">
+                      {field.bitText}
+                    </Td>
+                    <Td mono className="whitespace-nowrap">
+                      {field.octetText.replace(/^octets? /, "")}
+                    </Td>
+                    <Td mono className="whitespace-nowrap">
+                      {field.scaleText}
+                    </Td>
+                    <Td right mono className="whitespace-nowrap">
+                      {field.rangeText}
+                    </Td>
+                  </>
+                )}
                 <Td>{field.unitText}</Td>
                 {readings ? (
                   <>

@@ -74,7 +74,7 @@ function ReadFrame({
         <StatusBadge status={frame.isValid ? "good" : "bad"}>{frame.isValid ? "valid" : "not valid"}</StatusBadge>
       </p>
       {view && read?.ok ? (
-        <FrameTable label={`Process data ${direction}`} view={view} readings={read.readings} />
+        <FrameTable label={`Process data ${direction}`} view={view} readings={read.readings} isCompact />
       ) : null}
       {read && !read.ok ? (
         <p className="text-small text-error">
