@@ -177,35 +177,50 @@ function sorted(value: unknown): unknown {
   );
 }
 
-/** References that no edge stands for: to another server, or with attributes that the schema does not know. */
+/** References that no edge stands for: those to another server. */
 function isOdd(reference: DeclaredReference): boolean {
-  return reference.serverUri !== undefined || reference.otherAttributes !== undefined;
+  return reference.serverUri !== undefined;
 }
 
 function listOdd(node: Node): readonly DeclaredReference[] {
   return node.references.filter(isOdd);
 }
 
-/** Where an edge is declared: places in the lists of its ends. */
-type Places = { readonly source: readonly number[]; readonly target: readonly number[] };
+type Attributes = DeclaredReference["otherAttributes"];
+
+/** Where an edge is declared: places in the lists of its ends, and what the schema does not know of it there. */
+type Places = {
+  readonly source: readonly number[];
+  readonly target: readonly number[];
+  readonly sourceAttributes: Attributes;
+  readonly targetAttributes: Attributes;
+};
 type EdgeChange = Edge & { readonly id: string; readonly isThere: boolean; readonly places: Places | undefined };
 
 function toEdgeId({ source, type, target }: Edge): string {
   return `${source}\n${type}\n${target}`;
 }
 
-function indexEdges(
-  nodes: ReadonlyMap<NodeKey, Node>,
-): Map<string, { edge: Edge; source: number[]; target: number[] }> {
-  const found = new Map<string, { edge: Edge; source: number[]; target: number[] }>();
+type Declared = {
+  edge: Edge;
+  source: number[];
+  target: number[];
+  sourceAttributes: Attributes;
+  targetAttributes: Attributes;
+};
+
+function indexEdges(nodes: ReadonlyMap<NodeKey, Node>): Map<string, Declared> {
+  const found = new Map<string, Declared>();
   for (const node of nodes.values()) {
     node.references.forEach((reference, index) => {
       if (isOdd(reference)) return;
       const { type, target, isForward } = reference;
       const edge = isForward ? { source: node.key, type, target } : { source: target, type, target: node.key };
       const id = toEdgeId(edge);
-      const entry = found.get(id) ?? { edge, source: [], target: [] };
-      entry[isForward ? "source" : "target"].push(index);
+      const entry: Declared = found.get(id) ?? { edge, source: [], target: [], sourceAttributes: undefined, targetAttributes: undefined };
+      const end = isForward ? "source" : "target";
+      if (entry[end].length === 0) entry[`${end}Attributes`] = reference.otherAttributes;
+      entry[end].push(index);
       found.set(id, entry);
     });
   }
@@ -216,14 +231,19 @@ function indexEdges(
 function diffEdges(before: ReadonlyMap<NodeKey, Node>, after: ReadonlyMap<NodeKey, Node>): EdgeChange[] {
   const [old, now] = [indexEdges(before), indexEdges(after)];
   const changes: EdgeChange[] = [];
-  for (const [id, { edge, source, target }] of now) {
+  for (const [id, { edge, ...places }] of now) {
     const was = old.get(id);
-    if (was?.source.length === source.length && was.target.length === target.length) continue;
-    changes.push({ ...edge, id, isThere: was !== undefined, places: { source, target } });
+    if (was && isSamePlaces(was, places)) continue;
+    changes.push({ ...edge, id, isThere: was !== undefined, places });
   }
   for (const [id, { edge }] of old) if (!now.has(id)) changes.push({ ...edge, id, isThere: true, places: undefined });
   // A place is one in the finished list, so each list is filled from its front.
   return changes.sort((a, b) => firstPlace(a) - firstPlace(b));
+}
+
+function isSamePlaces(a: Places, b: Places): boolean {
+  if (a.source.length !== b.source.length || a.target.length !== b.target.length) return false;
+  return isSame(a.sourceAttributes, b.sourceAttributes) && isSame(a.targetAttributes, b.targetAttributes);
 }
 
 function firstPlace({ places }: EdgeChange): number {
@@ -301,6 +321,8 @@ class Plan {
       declaredAt,
       ...(sourceIndex === undefined ? {} : { sourceIndex }),
       ...(targetIndex === undefined ? {} : { targetIndex }),
+      ...(places.sourceAttributes ? { sourceAttributes: places.sourceAttributes } : {}),
+      ...(places.targetAttributes ? { targetAttributes: places.targetAttributes } : {}),
       ...repeats,
     });
   }

@@ -43,7 +43,7 @@ export const editingProblemTexts: Readonly<Record<string, string>> = {
   "source-text.class-changed":
     "{name} was of class {from} and cannot become {to}. Give the new node a NodeId of its own.",
   "source-text.reference-kind":
-    "A reference of {name} to another server, or with attributes that the schema does not know, cannot be changed here.",
+    "A reference of {name} to another server cannot be changed here.",
   "source-text.node-twice": "The text holds {nodeId} twice.",
   "roll-out.pattern": "“{pattern}” gives every machine the same NodeId: write {name} or {serial} in it.",
   "roll-out.node-id-taken": "The NodeId {nodeId} would be given twice. Choose another name or pattern.",

@@ -93,6 +93,14 @@ describe("diffToOperations", () => {
     expect(!difference.ok && difference.problems.map((found) => [found.code, found.at?.node])).toEqual([["operation.node-missing", keyOf(50)]]);
   });
 
+  it("keeps what the schema does not know of a reference, and takes its change over", () => {
+    const reference = { type: toNodeKey(numericNodeId("http://opcfoundation.org/UA/", 47)), target: keyOf(2), isForward: true };
+    const marked = (mark: string) => makeSpace([makeNode(1, "Object", { references: [{ ...reference, otherAttributes: { Mark: mark } }] }), makeNode(2, "Object")]);
+    const difference = diffToOperations(marked("a"), read(write(marked("b"))));
+    if (!difference.ok) throw new Error(JSON.stringify(difference.problems));
+    expect(write(difference.value.space)).toBe(write(marked("b")));
+  });
+
   it("refuses to remove a node that others name, to change a class, and to say a NodeId twice", () => {
     const owned = applyOperation(start, { kind: "addReference", source: keyOf(1), type: toNodeKey(numericNodeId("http://opcfoundation.org/UA/", 47)), target: keyOf(2), declaredAt: "source" });
     if (!owned.ok) throw new Error("not connected");
