@@ -14,6 +14,7 @@ import { isAtLeast, keepFrom, toReport, type CheckReport, type ReportedFinding }
 import { toSarif } from "../domain/checks/to-sarif";
 import { waiverFileSchema } from "../domain/checks/waiver-file";
 import { applyWaivers, type Waiver } from "../domain/checks/waivers";
+import type { Wiring } from "../domain/checks/wiring";
 import { fail, ok, problem, type Problem, type Result } from "../domain/core/result";
 import type { NodeSetContent } from "../domain/nodeset/nodeset-content";
 import { listRequired } from "../library/describe-nodeset.server";
@@ -21,6 +22,7 @@ import { getLibrary } from "../library/library.server";
 import { validateXsd } from "../library/validate-xsd.server";
 import { resolvePath, type CheckCommand } from "./parse-command-line";
 import { readFolders, readInput } from "./read-input";
+import { makeDocumentWiring, readMappingFile } from "./read-mapping";
 
 type Checked = {
   readonly report: CheckReport;
@@ -50,10 +52,16 @@ export async function check(command: CheckCommand): Promise<number> {
   problems.push(...layers.problems.map((found) => withPlace(found, content.value)));
   const isComplete = layers.ok && layers.problems.every((found) => found.severity !== "error");
   if (!isComplete) return refuse(problems);
-  const checked = checkContent(command, content.value, layers.value, problems, {
+  const mapping = command.mapping === undefined ? undefined : await readMappingFile(command.mapping);
+  if (mapping && !mapping.ok) return refuse(mapping.problems.map((found) => ({ ...found, at: { ...found.at, file: command.mapping ?? "" } })));
+  const space = AddressSpace.of(layers.value, buildLayer(content.value.header, content.value.nodes));
+  const wiring = mapping ? makeDocumentWiring(space, mapping.value) : undefined;
+  if (wiring && !wiring.ok) return refuse(wiring.problems);
+  const checked = checkContent(command, content.value, space, problems, {
     waivers: waivers.value.waivers,
     rules: [...RULES, ...makeConventionRules(conventions.value)],
     faults: await validateXsd(await readFile(resolvePath(file))),
+    wiring: wiring?.value,
   });
   const counted = checked.report.findings.some((f) => isAtLeast(f.severity, command.severity ?? "error"));
   const hasErrors = counted || problems.some((found) => found.severity === "error");
@@ -71,18 +79,18 @@ type Asked = {
   readonly rules: readonly Rule[];
   /** What is not valid against the schema. */
   readonly faults: readonly Problem[];
+  readonly wiring: Wiring | undefined;
 };
 
 function checkContent(
   { file, severity }: CheckCommand,
   content: NodeSetContent,
-  layers: Parameters<typeof AddressSpace.of>[0],
+  space: AddressSpace,
   problems: readonly Problem[],
-  { waivers, rules, faults }: Asked,
+  { waivers, rules, faults, wiring }: Asked,
 ): Checked {
-  const space = AddressSpace.of(layers, buildLayer(content.header, content.nodes));
   const { lines } = content;
-  const { open, waived } = applyWaivers(space, runChecks(space, { rules }), waivers);
+  const { open, waived } = applyWaivers(space, runChecks(space, { rules, ...(wiring ? { wiring } : {}) }), waivers);
   const ofText = applyWaivers(space, toSchemaFindings(space, faults, lines), waivers);
   const sources = { file, lines, problems, ofText: ofText.open };
   const listed = [...waived, ...ofText.waived].map(({ finding, waiver }) => {

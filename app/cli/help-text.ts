@@ -1,7 +1,7 @@
 export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSet2 files, reads IO-Link device descriptions
 
   npm run -s ferrule -- check FILE [--with DIR]… [--format text|json|sarif] [--severity S] [--waivers FILE]
-        [--conventions FILE]
+        [--conventions FILE] [--mapping DOCUMENT]
       Validates the file against UANodeSet.xsd, reads it with the models it requires and runs the checker.
   npm run -s ferrule -- rules [RULE] [--json]
       The rules of the checker: number, severity, clause, whether there is a fix; and those that do not run, with the reason.
@@ -35,6 +35,7 @@ export const helpText = `ferrule – checks, compares and rewrites OPC UA NodeSe
   --severity S error, warning or hint: lists findings of this severity and above, and lets them decide the exit status
   --waivers FILE   a JSON file {"waivers":[{rule,nodeId,attribute?,reason,person,date,fingerprint}]}: accepted findings are
                left out (in SARIF: suppressed) while the node stays as its fingerprint says
+  --mapping DOCUMENT   checks the mapping of a machine type against the model and runs its check cases
   --conventions FILE   a JSON file {"names":{NODECLASS:PATTERN…},"language":"en","unitInDescription":true}: rules of the team
 
 Exit status: 0 nothing of severity error · 1 at least one error (check --severity S: one of S or above) ·

@@ -1,11 +1,5 @@
 /** `map`: a mapping document and one frame a source, in; node values with status codes, out. */
-import { readFile, stat } from "node:fs/promises";
-import {
-  findLayout,
-  MAX_DOCUMENT_CHARACTERS,
-  readMappingDocument,
-  type MappingDocument,
-} from "../domain/deliver/mapping-document";
+import { findLayout, type MappingDocument } from "../domain/deliver/mapping-document";
 import { fail, ok, problem, type Result } from "../domain/core/result";
 import type { Direction } from "../domain/iodd/device-description";
 import { parseHex } from "../domain/mapping/bits";
@@ -14,7 +8,8 @@ import { MappingRunner } from "../domain/mapping/mapping-runner";
 import { frameKey, planMapping } from "../domain/mapping/plan-mapping";
 import type { Sample } from "../domain/mapping/sample";
 import { formatQuality, formatStatus } from "../domain/mapping/status";
-import { resolvePath, type MapCommand } from "./parse-command-line";
+import type { MapCommand } from "./parse-command-line";
+import { readMappingFile } from "./read-mapping";
 import { refuse } from "./print-problems";
 
 type NodeValue = {
@@ -27,7 +22,7 @@ type NodeValue = {
 };
 
 export async function map(command: MapCommand): Promise<number> {
-  const document = await readDocument(command.file);
+  const document = await readMappingFile(command.file);
   if (!document.ok) return refuse(command, command.file, document.problems);
   const values = runFrames(document.value, command.frames);
   if (!values.ok) return refuse(command, command.file, values.problems);
@@ -35,18 +30,6 @@ export async function map(command: MapCommand): Promise<number> {
     command.isJson ? `${JSON.stringify({ nodes: values.value }, null, 2)}\n` : formatValues(values.value),
   );
   return 0;
-}
-
-async function readDocument(file: string): Promise<Result<MappingDocument>> {
-  try {
-    const path = resolvePath(file);
-    const { size } = await stat(path);
-    if (size > MAX_DOCUMENT_CHARACTERS)
-      return fail(problem("document.too-large", { size, limit: MAX_DOCUMENT_CHARACTERS }));
-    return readMappingDocument(await readFile(path, "utf8"));
-  } catch (error) {
-    return fail(problem("file.unreadable", { file, detail: error instanceof Error ? error.message : String(error) }));
-  }
 }
 
 function runFrames(document: MappingDocument, frames: readonly string[]): Result<NodeValue[]> {

@@ -13,6 +13,8 @@ export type CheckCommand = {
   readonly severity: Severity | undefined;
   readonly waivers: string | undefined;
   readonly conventions: string | undefined;
+  /** A mapping document of one of the model's machine types; its check cases run, too. */
+  readonly mapping: string | undefined;
 };
 export type ReportFormat = "text" | "json" | "sarif";
 export type RulesCommand = { readonly name: "rules"; readonly id: string | undefined; readonly isJson: boolean };
@@ -114,6 +116,7 @@ export function parseCommandLine(args: readonly string[]): Command {
       severity,
       waivers: values.waivers,
       conventions: values.conventions,
+      mapping: values.mapping,
     };
   }
   if (name === "rules") {
@@ -190,6 +193,7 @@ function parse(args: readonly string[]) {
         severity: { type: "string" },
         waivers: { type: "string" },
         conventions: { type: "string" },
+        mapping: { type: "string" },
         direction: { type: "string" },
         condition: { type: "string" },
         canonical: { type: "boolean" },

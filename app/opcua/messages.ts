@@ -41,6 +41,9 @@ const layoutSchema = z.object({
 });
 const rangeSchema = z.object({ low: z.number(), high: z.number() });
 
+/** Upper ends of the steps in which delays are counted, ms. */
+export const DELAY_STEPS = [1, 2, 5, 10, 20, 30, 50, 100, 200, 500] as const;
+
 /** A machine whose Variables a mapping feeds. */
 const fedMachineSchema = z.object({
   machine: z.string(),
@@ -126,6 +129,8 @@ export const toParentSchema = z.discriminatedUnion("kind", [
     changes: z.number().int(),
     /** From acquisition to the Variable's change over the last second, ms; null when nothing came. */
     delay: z.object({ p50: z.number(), p99: z.number(), highest: z.number() }).nullable(),
+    /** All delays since the start, counted below each of DELAY_STEPS, the last beyond. */
+    histogram: z.array(z.number().int()),
   }),
   z.object({ kind: z.literal("stopped") }),
 ]);

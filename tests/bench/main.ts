@@ -4,7 +4,10 @@ import { checkInChild, measureChecking } from "./checking";
 import { measureCompare } from "./compare";
 import { measureEditing } from "./editing";
 import { measureImport, serveImportsInChild } from "./import";
+import { measureFeeding, runRestMaster } from "./feeding";
+import { measureIodd } from "./iodd";
 import { measureLibrary, readLibraryInChild } from "./library";
+import { measureMapping } from "./mapping";
 import { measureReading, readAndParseInChild, readInChild, readPacksInChild, readReferenceInChild } from "./reading";
 import { formatResult, type BenchResult } from "./result";
 import { measureTestServerStart, runBareServer } from "./test-server-start";
@@ -16,6 +19,9 @@ const measures: readonly (() => Promise<BenchResult[]>)[] = [
   measureEditing,
   measureCompare,
   measureChecking,
+  measureMapping,
+  measureIodd,
+  measureFeeding,
   measureTestServerStart,
   measureAsBuilt,
 ];
@@ -37,6 +43,7 @@ async function runAsChild(name: string, args: readonly string[]): Promise<void> 
   if (name === "read-and-parse") return readAndParseInChild(args);
   if (name === "check") return checkInChild();
   if (name === "read-library") return readLibraryInChild();
+  if (name === "rest-master") return runRestMaster();
   if (name === "import-server") return serveImportsInChild(args);
   const [pkiFolder, ...files] = args;
   if (name === "bare-server" && pkiFolder) return runBareServer(pkiFolder, files);

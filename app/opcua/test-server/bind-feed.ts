@@ -12,13 +12,14 @@ import type { Sample } from "~/domain/mapping/sample";
 import { isBad, StatusCode } from "~/domain/mapping/status";
 import type { FeedState } from "~/domain/simulation/test-server-state";
 import type { BuiltInType } from "~/domain/simulation/motion";
+import { DELAY_STEPS } from "../messages";
 import { toWireNodeId } from "../node-ids";
 import { encodeNumber, makeVariant } from "./encode-value";
 
 export type FeedOptions = {
   readonly now: () => number;
   readonly log: (text: string) => void;
-  readonly report: (state: FeedState) => void;
+  readonly report: (state: FeedState & { readonly histogram: number[] }) => void;
 };
 
 /** How often values are let grow old and the state is told, ms. */
@@ -44,9 +45,10 @@ export function startFeed(space: AddressSpace, machines: readonly MachineFeed[],
   let inputs = 0;
   let changes = 0;
   let delays: number[] = [];
+  const histogram = new Array<number>(DELAY_STEPS.length + 1).fill(0);
   const timer = setInterval(() => {
     for (const machine of running.values()) changes += apply(machine, machine.runner.age(now()));
-    report({ inputs, changes, delay: summarise(delays) });
+    report({ inputs, changes, delay: summarise(delays), histogram: [...histogram] });
     delays = [];
   }, TICK);
   return {
@@ -56,7 +58,11 @@ export function startFeed(space: AddressSpace, machines: readonly MachineFeed[],
         if (!machine) continue;
         inputs++;
         changes += apply(machine, offerInput(machine.runner, input));
-        delays.push(now() - input.time);
+        const delay = now() - input.time;
+        delays.push(delay);
+        const step = DELAY_STEPS.findIndex((end) => delay <= end);
+        const at = step < 0 ? DELAY_STEPS.length : step;
+        histogram[at] = (histogram[at] ?? 0) + 1;
       }
     },
     stop: () => clearInterval(timer),
