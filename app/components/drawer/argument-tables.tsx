@@ -97,7 +97,7 @@ function ArgumentTable({ space, method, direction, title, readOnly }: TableProps
           disabled={readOnly}
           onChange={(event) => change(index, { valueRank: Number(event.currentTarget.value) })}
         >
-          {[...new Set([-1, 1, argument.valueRank])].map((rank) => (
+          {[...new Set([-1, 1, 2, 3, argument.valueRank])].map((rank) => (
             <option key={rank} value={rank}>
               {formatValueRank(rank)}
             </option>

@@ -1,4 +1,5 @@
 import { X } from "lucide-react";
+import { useState } from "react";
 import type { AddressSpace, Edge } from "~/domain/address-space/address-space";
 import type { Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
@@ -8,10 +9,12 @@ import { getNodeName, isProperty } from "../model/member-facts";
 import { getNamespaceLabel } from "../model/namespace-label";
 import { useOpenModel } from "../model/use-model";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
+import { Button } from "../ui/button";
 
 type Group = { readonly title: string; readonly items: { edge: Edge; other: NodeKey }[] };
 
-const MOST = 24;
+const FEW = 24;
+const MORE = 200;
 
 /** References in both directions, grouped by what they mean for the node. */
 export function ReferenceColumn({ space, node }: { space: AddressSpace; node: Node }) {
@@ -23,26 +26,31 @@ export function ReferenceColumn({ space, node }: { space: AddressSpace; node: No
         References <span className="font-mono font-normal">{count}</span>
       </h3>
       {groups.map((group) => (
-        <div key={group.title} className="reference-group">
-          <h4>
-            {group.title} <span className="font-mono text-ink-3">{group.items.length}</span>
-          </h4>
-          <ul>
-            {group.items.slice(0, MOST).map(({ edge, other }) => (
-              <ReferenceItem
-                key={`${edge.source} ${edge.type} ${edge.target}`}
-                space={space}
-                edge={edge}
-                other={other}
-              />
-            ))}
-            {group.items.length > MOST ? (
-              <li className="text-note text-ink-3">{group.items.length - MOST} more</li>
-            ) : null}
-          </ul>
-        </div>
+        <ReferenceGroup key={group.title} space={space} group={group} />
       ))}
     </section>
+  );
+}
+
+function ReferenceGroup({ space, group }: { space: AddressSpace; group: Group }) {
+  const [most, setMost] = useState(FEW);
+  const rest = group.items.length - most;
+  return (
+    <div className="reference-group">
+      <h4>
+        {group.title} <span className="font-mono text-ink-3">{group.items.length}</span>
+      </h4>
+      <ul>
+        {group.items.slice(0, most).map(({ edge, other }) => (
+          <ReferenceItem key={`${edge.source} ${edge.type} ${edge.target}`} space={space} edge={edge} other={other} />
+        ))}
+      </ul>
+      {rest > 0 ? (
+        <Button size="small" tone="bare" className="-ml-2" onClick={() => setMost(most + MORE)}>
+          {Math.min(rest, MORE)} more of {rest}
+        </Button>
+      ) : null}
+    </div>
   );
 }
 

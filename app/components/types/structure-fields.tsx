@@ -17,11 +17,11 @@ import type { DataTypeEdit } from "./use-data-type-edit";
 type Props = { space: AddressSpace; node: DataTypeNode; isUnion: boolean; readOnly: boolean; edit: DataTypeEdit };
 
 const COLUMNS = [
-  { title: "Name", width: "20%" },
-  { title: "DataType", width: "20%" },
-  { title: "Rank", width: "13%" },
-  { title: "Sizes", width: "8%" },
-  { title: "Longest", width: "9%" },
+  { title: "Name", width: "16%" },
+  { title: "DataType", width: "19%" },
+  { title: "Rank", width: "12%" },
+  { title: "Sizes", width: "7%" },
+  { title: "Longest", width: "8%" },
   { title: "Optional", width: "52px" },
   { title: "Subtypes", width: "56px" },
   { title: "Description" },
