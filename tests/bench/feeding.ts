@@ -96,7 +96,7 @@ function toResults({ inputs, changes, histogram }: Extract<ToParentMessage, { ki
     // A port's very last exchange may fall behind the minute.
     limit("frames that were not exchanged in time", "frames", Math.max(0, wanted - sent), PORTS),
     limit("frames lost on the way to the test server", "frames", sent - inputs, 0),
-    limit("Variables that did not change with their frame", "values", inputs * FIELDS - changes, 0),
+    limit("Variables that did not change with their frame", "values", Math.max(0, inputs * FIELDS - changes), 0),
     limit("delay of a frame to its Variables, p99 at most", "ms", DELAY_STEPS[step] ?? Number.POSITIVE_INFINITY, 50),
   ];
 }

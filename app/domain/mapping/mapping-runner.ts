@@ -56,8 +56,9 @@ type RunningFrame = {
   readonly rows: readonly RunningRow[];
 };
 
-/** A reading that is late by less than this share of its period is no outage. */
+/** A reading that is late by less than this share of its period, or by less than this time, is no outage. */
 const LATE = 1.4;
+const LATE_MS = 200;
 
 const WAITING = badSample(StatusCode.Bad_WaitingForInitialData, 0);
 
@@ -167,7 +168,7 @@ export class MappingRunner {
       const { period, quality } = row.plan.row;
       if (period === undefined || row.plan.input.kind === "constant" || row.sample === WAITING) continue;
       const silent = now - row.sample.time;
-      if (silent <= LATE * period || isBad(row.sample.status)) continue;
+      if (silent <= Math.max(LATE * period, period + LATE_MS) || isBad(row.sample.status)) continue;
       const isKept = silent <= (quality?.keepPeriods ?? 3) * period;
       const status =
         isKept || quality?.afterKeep === "Uncertain_NoCommunicationLastUsable"
