@@ -42,7 +42,8 @@ type Stream = {
   close(): void;
 };
 
-type OpenTopic = { readonly streams: Set<Stream>; readonly disposed: Promise<Dispose | undefined>; newest?: TopicMessage };
+/** `published`: places in the global sequence that were sent, so that what another reader finds again is not. */
+type OpenTopic = { readonly streams: Set<Stream>; readonly published: Set<number>; readonly disposed: Promise<Dispose | undefined>; newest?: TopicMessage };
 
 type Hub = {
   readonly providers: Map<string, TopicProvider>;
@@ -54,6 +55,7 @@ const HEARTBEAT_MS = 15_000;
 const MAX_QUEUE = 2_000;
 const MAX_TOPICS = 2_000;
 const BUFFER_BYTES = 64 * 1024;
+const REMEMBERED = 1_000;
 
 function getHub(): Hub {
   return singleton("event-hub", () => {
@@ -75,10 +77,20 @@ export function publish(topic: string, data: unknown, seq?: number): void {
   const hub = getHub();
   const open = hub.open.get(topic);
   if (!open) return;
+  if (seq !== undefined) {
+    if (open.published.has(seq)) return;
+    open.published.add(seq);
+    if (open.published.size > REMEMBERED) open.published.delete(Math.min(...open.published));
+  }
   const message: TopicMessage = { topic, data, ...(seq === undefined ? {} : { seq }) };
   const coalesce = hub.providers.get(prefixOf(topic))?.keepsNewestOnly === true;
   if (coalesce) open.newest = message;
   for (const stream of open.streams) stream.send(message, coalesce);
+}
+
+/** Whether some tab listens to the topic. */
+export function hasListeners(topic: string): boolean {
+  return getHub().open.has(topic);
 }
 
 /** The answer to `GET /events`. `lastEventId` is what the browser says that it has seen. */
@@ -189,7 +201,7 @@ async function joinTopic(stream: Stream, topic: string, provider: TopicProvider)
     open.streams.add(stream);
     if (open.newest) stream.send(open.newest, true);
   } else {
-    open = { streams: new Set([stream]), disposed: openSource(topic, provider) };
+    open = { streams: new Set([stream]), published: new Set(), disposed: openSource(topic, provider) };
     hub.open.set(topic, open);
   }
   provider.joined?.(topic, stream.listener);

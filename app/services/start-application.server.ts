@@ -8,6 +8,7 @@ import { singleton } from "../utils/singleton.server";
 import { getLibrary } from "../library/library.server";
 import { startOutbox } from "./run-outbox.server";
 import { removeOldUploads } from "./pending-uploads.server";
+import { followOtherProcesses } from "./follow-other-processes.server";
 import { startDemoSources } from "./demo-sources.server";
 import { DEMO_SLUG, seedDemo } from "./seed-demo.server";
 import { registerSourceTopics } from "./source-topics.server";
@@ -34,6 +35,7 @@ async function start(): Promise<StartReport> {
   registerSourceTopics();
   await registerLiveTopics();
   startOutbox();
+  followOtherProcesses();
   const { isDemo, dataFolder } = getEnvironment();
   if (isDemo) return { lines: [...(await seedDemo()), await startDemoSources(DEMO_SLUG)] };
   if (!(await needsSetUp())) return { lines: [`Data folder: ${dataFolder}`] };

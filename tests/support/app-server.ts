@@ -14,6 +14,8 @@ export type AppServer = {
   readonly url: string;
   /** What it has printed so far. */
   output(): string;
+  /** Ends it as a power cut does, and leaves its data folder as it is. */
+  kill(): Promise<void>;
   /** Ends it with SIGTERM; fails when it takes longer than promised. */
   stop(): Promise<void>;
 };
@@ -47,6 +49,11 @@ export async function startApp(
   return {
     url,
     output: () => printed,
+    kill: async () => {
+      const ended = new Promise((resolve) => child.once("exit", resolve));
+      killGroup(child);
+      await ended;
+    },
     stop: async () => {
       const ended = await stopInTime(child);
       end();

@@ -1,7 +1,8 @@
 import { useEffect, useMemo, useState, type ReactNode } from "react";
-import type { ModelWorkspace } from "~/presenters/model-workspace.server";
+import type { ModelLayers, ModelWorkspace } from "~/presenters/model-workspace.server";
 import { Button } from "../ui/button";
 import { Notice } from "../ui/notice";
+import { showToast } from "../ui/toast";
 import { loadSpace } from "./load-space";
 import { ModelKeys } from "./model-keys";
 import { makeWaitingModel, openModel } from "./open-model";
@@ -14,15 +15,23 @@ export function ModelStoreProvider({ workspace, children }: { workspace: ModelWo
   const [opened, setOpened] = useState<OpenModel>();
   const [failure, setFailure] = useState<string>();
   const [attempt, setAttempt] = useState(0);
+  const [layers, setLayers] = useState<ModelLayers>();
+  const current = useMemo(() => (layers ? { ...workspace, ...layers } : workspace), [workspace, layers]);
 
   useEffect(() => {
     const controller = new AbortController();
     let close: (() => void) | undefined;
     setFailure(undefined);
-    Promise.all([loadSpace(workspace, controller.signal), prepareUnsaved(workspace.model.id)])
+    const reload = async (author: string | undefined): Promise<void> => {
+      const found = await fetch(`/models/${encodeURIComponent(current.model.id)}/layers`, { signal: controller.signal }).catch(() => undefined);
+      if (!found?.ok) return;
+      setLayers((await found.json()) as ModelLayers);
+      showToast({ tone: "plain", title: `${author ?? "Somebody"} changed what this model stands on; it was loaded anew.`, seconds: 8 });
+    };
+    Promise.all([loadSpace(current, controller.signal), prepareUnsaved(current.model.id)])
       .then(([loaded, takeUnsaved]) => {
         if (controller.signal.aborted) return;
-        const opening = openModel(workspace, { ...loaded, takeUnsaved }, waiting.view);
+        const opening = openModel(current, { ...loaded, takeUnsaved }, waiting.view, (author) => void reload(author));
         close = opening.close;
         setOpened(opening.model);
       })
@@ -34,7 +43,7 @@ export function ModelStoreProvider({ workspace, children }: { workspace: ModelWo
       close?.();
       setOpened(undefined);
     };
-  }, [workspace, waiting, attempt]);
+  }, [current, waiting, attempt]);
 
   return (
     <OpenModelContext value={opened ?? waiting}>

@@ -1,5 +1,7 @@
 /** Puts an open model together from its parts, and takes it apart again. Browser only. */
 import type { AddressSpace } from "~/domain/address-space/address-space";
+import type { ModelEntry } from "~/domain/address-space/model-header";
+import type { Transaction } from "~/domain/editing/operation";
 import { EditorStore } from "~/editor/editor-store";
 import type { ModelWorkspace } from "~/presenters/model-workspace.server";
 import { onConnectionChange, subscribeToTopic } from "../shell/event-stream";
@@ -32,6 +34,8 @@ export function openModel(
   workspace: ModelWorkspace,
   loaded: { space: AddressSpace; seq: number; takeUnsaved: () => KeptEdits | undefined },
   view: ViewStore,
+  /** Called when the model stands on other required models now, with who changed them. */
+  reload: (author: string | undefined) => void,
 ): { model: OpenModel; close: () => void } {
   const { id } = workspace.model;
   const canEdit = workspace.permissions.includes("model.edit");
@@ -67,7 +71,7 @@ export function openModel(
   const ends = [
     followFindings(id, editor, findings),
     followWaivers(id, findings),
-    followTransactions(id, editor),
+    followTransactions(id, editor, reload),
     presence.follow(id, transport, view),
     keepEdits(id, editor),
     () => editor.dispose(),
@@ -83,27 +87,46 @@ function selectFirst(space: AddressSpace, view: ViewStore): void {
 }
 
 /** Edits of others come by the stream; after it was away the store asks for what it missed. */
-function followTransactions(modelId: string, editor: EditorStore): () => void {
-  let isOnOldTypes = false;
+function followTransactions(modelId: string, editor: EditorStore, reload: (author: string | undefined) => void): () => void {
+  let isOnOldLayers = false;
+  const leaveLayers = (author: string | undefined): void => {
+    // What follows is meant for other required models than those beneath; everything is loaded with them anew.
+    isOnOldLayers = true;
+    reload(author);
+  };
   const hear = async (data: unknown): Promise<void> => {
     const transaction = await parseTransaction(data);
-    if (transaction && !isOnOldTypes) editor.receive(transaction);
+    if (!transaction || isOnOldLayers) return;
+    if (changesLayers(editor, transaction)) leaveLayers(transaction.author);
+    else editor.receive(transaction);
   };
   const endTopic = subscribeToTopic(`model:${modelId}`, (data) => {
     if (typeof data === "object" && data !== null && "pinned" in data) {
-      // What follows is meant for another revision of the types; the window that took it loads anew by itself.
-      isOnOldTypes = true;
-      if (!("by" in data && data.by === editor.clientId)) window.location.reload();
+      if (!("by" in data && data.by === editor.clientId)) leaveLayers(undefined);
+      else isOnOldLayers = true;
     } else if (typeof data === "object" && data !== null && "deleted" in data) showToast({ tone: "error", title: "This model was deleted." });
     else void hear(data);
   });
   const endWatch = onConnectionChange((state) => {
-    if (state === "open") void editor.catchUp();
+    if (state === "open" && !isOnOldLayers) void editor.catchUp();
   });
   return () => {
     endTopic();
     endWatch();
   };
+}
+
+/** Whether somebody else chose other required models; a new version of the model alone is an edit like any other. */
+function changesLayers(editor: EditorStore, transaction: Transaction): boolean {
+  if (transaction.clientId === editor.clientId) return false;
+  const present = listRequiredUris(editor.getState().space.own.header.models);
+  return transaction.operations.some(
+    (operation) => operation.kind === "setHeader" && operation.field === "models" && listRequiredUris(operation.value as readonly ModelEntry[] | undefined) !== present,
+  );
+}
+
+function listRequiredUris(models: readonly ModelEntry[] | undefined): string {
+  return (models?.[0]?.requiredModels ?? []).map((required) => `${required.modelUri} ${required.version ?? ""}`).sort().join("\n");
 }
 
 /** Keeps what is not acknowledged for a reload, and asks before the tab is closed with it. */

@@ -7,6 +7,7 @@ import { findParent, findTypeDefinition, listMembers } from "~/domain/address-sp
 import type { Node } from "~/domain/address-space/node";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { formatQualifiedName } from "~/domain/address-space/qualified-name";
+import { StandardType } from "~/domain/address-space/standard-ids";
 import { findSupertype, listSupertypes } from "~/domain/address-space/type-hierarchy";
 import { isEntryObject, listOwnByClass } from "../model/list-roots";
 import { listInterfaces } from "../model/member-facts";
@@ -46,9 +47,10 @@ function addTypeCards(space: AddressSpace, type: Node, shown: Set<NodeKey>): voi
   if (listed >= FEWEST_ROWS && methods.length <= MOST_METHODS) for (const method of methods) shown.add(method.key);
 }
 
-/** An Object that is more than an instance of its type: it has members that the type does not declare. */
+/** A plain Object, empty or not, and one that is more than an instance of its type: it has members that the type does not declare. */
 function isGroup(space: AddressSpace, node: Node): boolean {
   const type = findTypeDefinition(space, node.key);
+  if (type === StandardType.BaseObjectType) return true;
   const declared = new Set<string>();
   if (type !== undefined) {
     for (const key of [type, ...listSupertypes(space, type)]) {

@@ -1,25 +1,32 @@
-import { useEffect, useState } from "react";
-import { createPortal, flushSync } from "react-dom";
+import { flushSync } from "react-dom";
+import { createRoot } from "react-dom/client";
 import { SheetPicture, type PictureFacts } from "./sheet-picture";
 
-/** While the browser prints, the page is the sheet alone, as large as the paper, with its title block. */
-export function PrintSheet({ getPicture }: { getPicture: () => PictureFacts }) {
-  const [facts, setFacts] = useState<PictureFacts>();
-  useEffect(() => {
-    const begin = (): void => flushSync(() => setFacts(getPicture()));
-    const end = (): void => setFacts(undefined);
+let getPicture: (() => PictureFacts) | undefined;
+let endPrinting: (() => void) | undefined;
+
+/** Prints the sheet alone, as large as the paper, with its title block; the page stays as it was. Loaded when it is asked for. */
+export function printSheet(picture: () => PictureFacts): void {
+  if (!getPicture) {
     window.addEventListener("beforeprint", begin);
-    window.addEventListener("afterprint", end);
-    return () => {
-      window.removeEventListener("beforeprint", begin);
-      window.removeEventListener("afterprint", end);
-    };
-  }, [getPicture]);
-  if (!facts) return null;
-  return createPortal(
-    <div className="printed-sheet">
-      <SheetPicture facts={facts} width="100%" height="100%" />
-    </div>,
-    document.body,
-  );
+    window.addEventListener("afterprint", () => endPrinting?.());
+  }
+  getPicture = picture;
+  window.print();
+}
+
+/** Also for the browser's own command, once a sheet was printed, as long as a sheet is on the page. */
+function begin(): void {
+  if (!getPicture || !document.querySelector(".sheet")) return;
+  const facts = getPicture();
+  const holder = document.createElement("div");
+  holder.className = "printed-sheet";
+  const root = createRoot(holder);
+  flushSync(() => root.render(<SheetPicture facts={facts} width="100%" height="100%" />));
+  document.body.append(holder);
+  endPrinting = () => {
+    endPrinting = undefined;
+    root.unmount();
+    holder.remove();
+  };
 }

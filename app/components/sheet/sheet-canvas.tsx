@@ -28,6 +28,7 @@ type Props = {
   rects: ReadonlyMap<NodeKey, Rect>;
   captions: readonly Caption[];
   control: SheetControl;
+  print: () => void;
   onMove: (moved: ReadonlyMap<NodeKey, Point>) => void;
   /** Wishes to bring a node into sight that were answered before this sheet was opened. */
   seen: number;
@@ -39,7 +40,7 @@ const FIT = { padding: 0.06, maxZoom: 1, minZoom: 0.35 };
 const isFar = (state: ReactFlowState): boolean => state.transform[2] < FAR;
 
 /** The canvas: xyflow moves cards and view, everything else on it is ours. */
-export function SheetCanvas({ ref, space, scene, rects, captions, control, onMove, seen }: Props) {
+export function SheetCanvas({ ref, space, scene, rects, captions, control, print, onMove, seen }: Props) {
   const { view, actions } = useOpenModel();
   const selection = useSelection();
   const far = useStore(isFar);
@@ -48,7 +49,7 @@ export function SheetCanvas({ ref, space, scene, rects, captions, control, onMov
   const [selectedCaption, setSelectedCaption] = useState<string>();
   const nodes = useFlowNodes(scene, rects, captions, selection, selectedCaption, control);
   const moving = useRef(new Map<NodeKey, Point>());
-  const onKeyDown = useSheetKeys({ space, scene, rects, control, selectedLine, selectedCaption, clearLine: () => setSelectedLine(undefined) });
+  const onKeyDown = useSheetKeys({ space, scene, rects, control, print, selectedLine, selectedCaption, clearLine: () => setSelectedLine(undefined) });
   useReveal(space, scene, rects, control, seen);
 
   // Who comes by keyboard can begin at once; a field that has the focus keeps it.
@@ -239,6 +240,7 @@ function toFlowNode(card: Scene["cards"][number], rect: Rect, selected: boolean)
     initialHeight: height,
     measured: { width, height },
     selected,
+    ariaRole: "group",
     ariaLabel: `${card.nodeClass} ${card.name}`,
   };
 }

@@ -1,17 +1,13 @@
 import { useReactFlow } from "@xyflow/react";
-import { useMemo, useRef, useState } from "react";
+import { lazy, Suspense, useMemo, useRef, useState } from "react";
 import type { AddressSpace } from "~/domain/address-space/address-space";
 import type { NodeKey } from "~/domain/address-space/node-id";
-import { AddNodePanel } from "../model/add-node-panel";
 import type { AddRequest } from "../model/add-request";
-import { MoveMenu } from "../model/move-menu";
 import { useOpenModel } from "../model/use-model";
 import { usePaletteActions } from "../palette/use-palette-actions";
 import { arrangeCards } from "./arrange-cards";
-import { ConnectMenu } from "./connect-menu";
 import { listPaletteActions } from "./list-palette-actions";
 import { makeRoom, placeCards } from "./place-cards";
-import { PrintSheet } from "./print-sheet";
 import { SheetCanvas } from "./sheet-canvas";
 import type { SheetControl } from "./sheet-control";
 import { SheetFoot } from "./sheet-foot";
@@ -28,6 +24,11 @@ import { useScene } from "./use-scene";
 import { ZoneStrip } from "./zone-strips";
 
 type Props = { space: AddressSpace; layout: SheetLayout; changeLayout: (make: (layout: SheetLayout) => SheetLayout) => void; place: SheetPlace; seen: number };
+
+/** Forms and menus come when they are first asked for. */
+const AddNodePanel = lazy(() => import("../model/add-node-panel").then((part) => ({ default: part.AddNodePanel })));
+const ConnectMenu = lazy(() => import("./connect-menu").then((part) => ({ default: part.ConnectMenu })));
+const MoveMenu = lazy(() => import("../model/move-menu").then((part) => ({ default: part.MoveMenu })));
 
 const NOT_MOVED: ReadonlyMap<NodeKey, Point> = new Map();
 
@@ -92,22 +93,23 @@ export function SheetDrawing({ space, layout, changeLayout, place: sheetPlace, s
   return (
     <section className="sheet" aria-label="Sheet">
       <SheetStrip space={space} place={sheetPlace} sheetActions={sheetActions} />
-      <PrintSheet getPicture={getPicture} />
       <div className="sheet-frame">
         <ZoneStrip side="top" origin={origin} canvas={canvas} />
         <ZoneStrip side="left" origin={origin} canvas={canvas} />
         <div className="sheet-drawing">
           <SheetMenu space={space} scene={scene} rects={rects} control={control}>
-            <SheetCanvas ref={canvas} space={space} scene={scene} rects={rects} captions={layout.captions} control={control} onMove={setMoved} seen={seen} />
+            <SheetCanvas ref={canvas} space={space} scene={scene} rects={rects} captions={layout.captions} control={control} print={sheetActions.print} onMove={setMoved} seen={seen} />
           </SheetMenu>
           <SheetFoot space={space} isArranging={isArranging} rects={rects} control={control} />
         </div>
         <ZoneStrip side="right" origin={origin} canvas={canvas} />
         <ZoneStrip side="bottom" origin={origin} canvas={canvas} />
       </div>
+      <Suspense>
       {connecting ? <ConnectMenu space={space} request={connecting} onClose={() => setConnecting(undefined)} /> : null}
       {moving ? <MoveMenu keys={moving} onClose={() => setMoving(undefined)} /> : null}
       {adding ? <AddNodePanel key={adding.id} request={adding} onClose={() => setAdding(undefined)} /> : null}
+      </Suspense>
     </section>
   );
 }

@@ -78,7 +78,7 @@ export function useSheetActions({ space, layout, places, place, getPicture }: In
       },
       saveSvg: () => void save("svg"),
       savePng: () => void save("png"),
-      print: () => window.print(),
+      print: () => void import("./print-sheet").then(({ printSheet }) => printSheet(getPicture)),
     };
   }, [place, space, layout, places, view, getPicture]);
 }

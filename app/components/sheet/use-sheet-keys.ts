@@ -17,6 +17,7 @@ type Inputs = {
   scene: Scene;
   rects: ReadonlyMap<NodeKey, Rect>;
   control: SheetControl;
+  print: () => void;
   selectedLine: string | undefined;
   selectedCaption: string | undefined;
   clearLine: () => void;
@@ -31,7 +32,7 @@ const ARROWS: Readonly<Record<string, Point>> = {
 };
 
 /** The keys of the drawing. Everything that the mouse does can be done with them. */
-export function useSheetKeys({ space, scene, rects, control, selectedLine, selectedCaption, clearLine }: Inputs) {
+export function useSheetKeys({ space, scene, rects, control, print, selectedLine, selectedCaption, clearLine }: Inputs) {
   const { view, actions } = useOpenModel();
   const { fitView, zoomIn, zoomOut } = useReactFlow();
 
@@ -110,6 +111,7 @@ export function useSheetKeys({ space, scene, rects, control, selectedLine, selec
     c: () => actions.copyNodes(view.getState().selection),
     v: () => actions.paste(findMemberOwner(space, view.getState().selection.at(-1))),
     d: () => actions.duplicate(view.getState().selection),
+    p: print,
   };
 
   return function onKeyDown(event: KeyboardEvent): void {

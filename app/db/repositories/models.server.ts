@@ -211,6 +211,21 @@ export async function listEventsAfter(topic: string, seq: number, limit: number)
     .limit(limit);
 }
 
+/** The newest number of the global sequence; 0 before the first event. */
+export async function findHighestEvent(): Promise<number> {
+  const [row] = await getDatabase().select({ seq: eventEntry.seq }).from(eventEntry).orderBy(desc(eventEntry.seq)).limit(1);
+  return row?.seq ?? 0;
+}
+
+export async function listAllEventsAfter(seq: number, limit: number) {
+  return getDatabase()
+    .select({ seq: eventEntry.seq, topic: eventEntry.topic, reference: eventEntry.reference })
+    .from(eventEntry)
+    .where(gt(eventEntry.seq, seq))
+    .orderBy(asc(eventEntry.seq))
+    .limit(limit);
+}
+
 export async function listSheets(modelId: string): Promise<SheetRow[]> {
   return getDatabase().select().from(sheet).where(eq(sheet.modelId, modelId)).orderBy(asc(sheet.position), asc(sheet.id));
 }
