@@ -192,3 +192,40 @@ test("who loses a role loses the open stream with it", async () => {
   expect((await setRoles(author, organizationId, mira?.id ?? "", ["developer"])).ok).toBe(true);
   await expect(tab.next()).rejects.toThrow("The stream ended");
 });
+
+test("what another process stored reaches the tabs of this one, once", async () => {
+  const tab = await openTab(cookie);
+  await tab.listen(`model:${modelId}`);
+  const seq = await storeAsAnotherProcess();
+  const message = await tab.next();
+  expect([message.topic, message.data.seq]).toEqual([`model:${modelId}`, seq]);
+  // The next thing that the tab hears is the next edit, not the same one again.
+  const next = await edit();
+  expect((await tab.next()).data.seq).toBe(next);
+  tab.close();
+});
+
+test("signing out ends the open stream", async () => {
+  const own = await addTestPerson(app, organizationId, "Sanne", ["engineer"]);
+  const tab = await openTab(own);
+  await app.call("POST", "/sign-out", { cookie: own });
+  await expect(tab.next()).rejects.toThrow("The stream ended");
+  await expect(app.call("GET", "/events", { cookie: own }).then((answer) => answer.status)).resolves.toBe(401);
+});
+
+/** Rows as a second process on the same database writes them; nothing here is told of it. */
+async function storeAsAnotherProcess(): Promise<number> {
+  const rows = await import("~/db/repositories/models.server");
+  const { writeBatch } = await import("~/db/client.server");
+  const model = await rows.findModel(modelId);
+  if (!model) throw new Error("The model is gone");
+  const seq = model.headSeq + 1;
+  const operation: Operation = { kind: "setAttribute", key: `nsu=${pumpUri};i=1002` as never, attribute: "displayName", value: [{ text: "Written elsewhere" }] };
+  const entry = { seq, base: model.headSeq, clientId: "elsewhere", clientSeq: seq, author: "Elsewhere", at: new Date().toISOString(), label: "set-displayName", operations: [operation], inverse: [] };
+  await writeBatch([
+    rows.updateModelStatement(modelId, { headSeq: seq }),
+    rows.addTransactionStatement(modelId, model.createdBy, entry),
+    rows.addEventStatement(`model:${modelId}`, seq, new Date()),
+  ]);
+  return seq;
+}
