@@ -5,7 +5,7 @@
  */
 import { fail, ok, problem, type Problem, type Result } from "../core/result";
 import { findUnits, unitByCode } from "../units/units";
-import { octetOrders, registerTypes } from "./mapping";
+import { octetOrders, type registerTypes } from "./mapping";
 import type { Tag } from "./tag";
 
 export const tagColumns = ["name", "address", "table", "type", "order", "bit", "scale", "offset", "unit", "path", "nodeId", "comment"] as const;

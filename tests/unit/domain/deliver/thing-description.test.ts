@@ -55,7 +55,7 @@ describe("a Thing Description of a machine", () => {
     expect(validate(dated) ? [] : validate.errors).toEqual([]);
     expect(validate({ ...dated, title: undefined, security: undefined })).toBe(false);
     const broken = structuredClone(dated) as { properties: Record<string, Affordance> };
-    Object.values(broken.properties)[0] && (Object.values(broken.properties)[0]!.type = "int32");
+    for (const property of Object.values(broken.properties)) property.type = "int32";
     expect(validate(broken)).toBe(false);
   });
 
