@@ -12,7 +12,8 @@ export type SheetControl = {
   readonly place: (places: ReadonlyMap<NodeKey, Point>) => void;
   readonly arrange: () => void;
   readonly connect: (request: ConnectRequest) => void;
-  readonly add: (request: AddRequest) => void;
+  /** `at`: where on the drawing the card of what is added shall lie. */
+  readonly add: (request: AddRequest, at?: Point) => void;
   readonly move: (keys: readonly NodeKey[]) => void;
   /** Leaves hand-placed cards to the layout again. */
   readonly release: (keys: readonly NodeKey[]) => void;

@@ -18,6 +18,7 @@ import type { SheetPlace } from "./sheet-place";
 import type { Scene } from "./sheet-scene";
 import { SheetStrip } from "./sheet-strip";
 import type { ConnectRequest } from "./use-connect-drag";
+import { useDropPlace } from "./use-drop-place";
 import { useSheetActions } from "./use-sheet-actions";
 import { useSheetPicture } from "./use-sheet-picture";
 import { useScene } from "./use-scene";
@@ -43,6 +44,7 @@ export function SheetDrawing({ space, layout, changeLayout, place: sheetPlace, s
   const [adding, setAdding] = useState<AddRequest>();
   const [moving, setMoving] = useState<readonly NodeKey[]>();
   const [isArranging, setArranging] = useState(false);
+  const dropPlace = useRef<Point>(undefined);
   const places = useMemo(() => placeCards(scene, new Map(Object.entries(layout.positions) as [NodeKey, Point][])), [scene, layout.positions]);
   const rects = useMemo(() => toRects(scene, places, moved), [scene, places, moved]);
   const origin = useMemo(() => getZoneOrigin(getBounds(toRects(scene, places, NOT_MOVED).values())), [scene, places]);
@@ -77,7 +79,10 @@ export function SheetDrawing({ space, layout, changeLayout, place: sheetPlace, s
       place,
       arrange: () => void arrange(),
       connect: setConnecting,
-      add: setAdding,
+      add: (request, at) => {
+        dropPlace.current = at;
+        setAdding(request);
+      },
       move: setMoving,
       release: (keys) => changeLayout((old) => withoutHandPlaced(old, keys)),
       byHand: new Set(layout.byHand),
@@ -88,6 +93,7 @@ export function SheetDrawing({ space, layout, changeLayout, place: sheetPlace, s
 
   const getPicture = useSheetPicture({ space, scene, rects, captions: layout.captions, place: sheetPlace });
   const sheetActions = useSheetActions({ space, layout, places, place: sheetPlace, getPicture });
+  useDropPlace(scene, dropPlace, control.place);
   usePaletteActions(useMemo(() => listPaletteActions(control, sheetActions, actions.canEdit), [control, sheetActions, actions]));
 
   return (

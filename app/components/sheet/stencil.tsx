@@ -30,7 +30,7 @@ export function Stencil({ space, control }: { space: AddressSpace; control: Shee
       return;
     }
     const parent = MEMBERS.includes(kind) ? findMemberOwner(space, under) : undefined;
-    control.add(makeAddRequest(kind, parent === undefined ? {} : { parent }));
+    control.add(makeAddRequest(kind, parent === undefined ? {} : { parent }), at && screenToFlowPosition(at));
   }
 
   return (
