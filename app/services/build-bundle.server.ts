@@ -4,7 +4,14 @@ import { findRevisionByNumber } from "../db/repositories/models.server";
 import type { ReleasedRequirement } from "../db/schema/reviews";
 import type { AddressSpace, Layer } from "../domain/address-space/address-space";
 import { getOwnNamespace } from "../domain/address-space/model-header";
+import type { NodeKey } from "../domain/address-space/node-id";
 import { compareModels } from "../domain/compare/compare-models";
+import { makeMachineDocument, makeTypeDocument, type KnownSource } from "../domain/deliver/make-mapping-document";
+import { writeMappingDocument } from "../domain/deliver/mapping-document";
+import { makeThingDescription, writeThingDescription } from "../domain/deliver/thing-description";
+import { listMachines } from "../domain/instantiation/list-machines";
+import { listOwners } from "../domain/mapping/mapping-entries";
+
 import { writeNodeIdsCsv } from "../domain/nodeset/node-ids-csv";
 import { writeNodeSet } from "../domain/nodeset/write-nodeset";
 import { makeManifest, packBundle, writeManifest, type BundleFile, type Manifest } from "../domain/release/bundle";
@@ -29,7 +36,12 @@ export type BundleIntent = {
   readonly previous: { readonly revision: number; readonly version: string } | undefined;
   readonly required: readonly ReleasedRequirement[];
   readonly keyId: string;
+  /** The organisation's sources as they were at the release; they may change any day, so the bundle keeps them. */
+  readonly sources: readonly KnownSource[];
 };
+
+/** Where the bundle keeps the sources that its mapping documents name. */
+export const SOURCES_FILE = "mapping/sources.json";
 
 export type BuiltBundle = { readonly bytes: Uint8Array; readonly hash: string; readonly manifest: Manifest; readonly fileName: string };
 
@@ -72,7 +84,26 @@ async function listFiles(intent: BundleIntent, space: AddressSpace, name: string
     toFile(`constants/${name}.ts`, writeTypeScriptConstants(space, title)),
     toFile(`constants/${name.toLowerCase()}.py`, writePythonConstants(space, title)),
     toFile("changes.html", await writeReport(intent, space)),
+    ...listMappingFiles(intent, space),
   ];
+}
+
+/** The mapping document of each mapped machine type; of each machine its document and its Thing Description. */
+function listMappingFiles({ revision, sources }: BundleIntent, space: AddressSpace): BundleFile[] {
+  const options = { revision: String(revision.number) };
+  const nameOf = (key: NodeKey): string => (space.getNode(key)?.browseName.name ?? key).replace(/[^\w.-]+/g, "-");
+  const types = listOwners(space, "row").map((key) => toFile(`mapping/${nameOf(key)}.mapping.json`, writeMappingDocument(makeTypeDocument(space, key, options))));
+  const machines = listMachines(space).flatMap(({ key }) => {
+    const document = makeMachineDocument(space, key, sources, options);
+    if (!document.ok) return [];
+    const name = nameOf(key);
+    return [
+      toFile(`mapping/${name}.mapping.json`, writeMappingDocument(document.value)),
+      toFile(`things/${name}.td.json`, writeThingDescription(makeThingDescription(document.value))),
+    ];
+  });
+  const kept = machines.length > 0 ? [toFile(SOURCES_FILE, `${JSON.stringify(sources, null, 2)}\n`)] : [];
+  return [...types, ...machines, ...kept];
 }
 
 /** Models of the team that this one stands on travel along, as they were frozen; published ones are to be had elsewhere. */
@@ -117,9 +148,10 @@ function toFile(path: string, text: string): BundleFile {
 export async function rebuildBundle(
   model: ModelRow,
   release: Pick<BundleIntent, "version" | "modelVersion" | "publicationDate" | "rating" | "required" | "keyId"> & { readonly revision: number },
+  sources: readonly KnownSource[],
   previous: BundleIntent["previous"],
 ): Promise<BuiltBundle> {
   const revision = await findRevisionByNumber(model.id, release.revision);
   if (!revision) throw new Error(`Model ${model.id} has no revision ${release.revision}`);
-  return buildBundle({ ...release, model, revision, previous });
+  return buildBundle({ ...release, model, revision, previous, sources });
 }

@@ -2,6 +2,7 @@
  * Releasing: the version is written into the approved state, that state is frozen, the bundle is built once, signed and
  * kept. Only what was approved goes out: an edit in between ends the attempt.
  */
+import { strFromU8, unzipSync } from "fflate";
 import { z } from "zod";
 import type { Caller } from "../auth/caller.server";
 import { writeBatch, type Statement } from "../db/client.server";
@@ -21,13 +22,16 @@ import { applyOperations } from "../domain/editing/apply-operation";
 import { toRequiredRow } from "../domain/editing/commands/create-model";
 import { setModelInfo } from "../domain/editing/commands/set-model-info";
 import type { Operation } from "../domain/editing/operation";
+
+import type { KnownSource } from "../domain/deliver/make-mapping-document";
 import { planRelease, type ReleasedVersion } from "../domain/release/release-rules";
 import { newId } from "../utils/ids.server";
 import { applyEdit } from "./apply-edit.server";
 import { auditOf, tell } from "./ask-review.server";
-import { buildBundle, rebuildBundle } from "./build-bundle.server";
+import { buildBundle, rebuildBundle, SOURCES_FILE } from "./build-bundle.server";
 import { listWebhookStatements } from "./call-webhooks.server";
 import { freezeRevision } from "./freeze-revision.server";
+import { loadPlannedSources } from "./load-planned-sources.server";
 import { loadState } from "./load-revision.server";
 import { listMailStatements, toUrl } from "./queue-mail.server";
 import { listObstacles, type ReleaseObstacle } from "./review-rules.server";
@@ -145,7 +149,9 @@ type Released = ReleaseIntent & {
 async function store(author: Caller, model: ModelRow, review: ReviewRow, released: Released): Promise<Result<ReleaseRow>> {
   const { plan, revision, previous, rating, required } = released;
   const key = await requireSigningKey(author, model.organizationId);
-  const bundle = await buildBundle({ model, revision, ...plan, rating, previous, required, keyId: key.id });
+  // Through JSON, as the bundle keeps them: built again from there, the same bytes come out.
+  const sources = JSON.parse(JSON.stringify((await loadPlannedSources(model.organizationId)).map(toKnownSource))) as KnownSource[];
+  const bundle = await buildBundle({ model, revision, ...plan, rating, previous, required, keyId: key.id, sources });
   const blob = await toBlob(bundle.bytes);
   const now = new Date();
   const release: ReleaseRow = {
@@ -239,5 +245,12 @@ export function loadBundle(release: Pick<ReleaseRow, "bundleHash">): Promise<Buf
 /** Builds the bundle again from its revision; the answer is its hash, which must be that of the release. */
 export async function proveReproducible(model: ModelRow, release: ReleaseRow): Promise<string> {
   const previous = (await listReleases(model.id)).find((other) => other.id === release.previousId);
-  return (await rebuildBundle(model, release, previous)).hash;
+  const kept = release.files.some((file) => file.path === SOURCES_FILE) ? await loadBundle(release) : undefined;
+  const sources = kept && unzipSync(kept, { filter: (entry) => entry.name === SOURCES_FILE })[SOURCES_FILE];
+  return (await rebuildBundle(model, release, sources ? (JSON.parse(strFromU8(sources)) as KnownSource[]) : [], previous)).hash;
+}
+
+/** What a mapping document says of a source: not its ports, which are planned anew at any time. */
+function toKnownSource({ id, name, kind, address }: KnownSource): KnownSource {
+  return { id, name, kind, address };
 }
