@@ -17,6 +17,8 @@ export const mappingProblemTexts: Readonly<Record<string, string>> = {
   "mapping.role-name": "“{role}” cannot be the name of a role: it is empty, too long, or taken.",
   "mapping.no-such-role": "There is no role {role}.",
   "mapping.role-in-use": "{count} rows read the role {role}; map these to another source first.",
+  "encode.beyond-limits": "{value} lies beyond the limits {low} … {high} of the output; nothing was made.",
+  "encode.no-value": "The transforms make no number of the value; nothing was made.",
   "tags.too-large": "The file has {size} bytes; the limit is {limit} bytes (50 MB).",
   "tags.too-many": "The list has more than {limit} lines; that is the limit.",
   "tags.empty": "The list has no line below its head.",
