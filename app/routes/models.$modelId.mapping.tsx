@@ -1,3 +1,4 @@
+import type { ShouldRevalidateFunctionArgs } from "react-router";
 import type { Route } from "./+types/models.$modelId.mapping";
 import { requireModelForPage } from "~/auth/require-model.server";
 import { BindingsView } from "~/components/mapping/bindings-view";
@@ -27,6 +28,12 @@ export async function loader({ request, params }: Route.LoaderArgs) {
     planned,
     replacements: replacements.filter((one) => one.modelId === model.id),
   };
+}
+
+/** What is open stands in the address; that alone asks for nothing new. */
+export function shouldRevalidate({ currentUrl, nextUrl, defaultShouldRevalidate }: ShouldRevalidateFunctionArgs) {
+  const isSamePage = currentUrl.pathname === nextUrl.pathname;
+  return defaultShouldRevalidate && !(isSamePage && currentUrl.search !== nextUrl.search);
 }
 
 export const meta: Route.MetaFunction = ({ loaderData }) => [

@@ -1,3 +1,4 @@
+import type { ShouldRevalidateFunctionArgs } from "react-router";
 import type { Route } from "./+types/sources";
 import { assertMay, mayDo, requireUser } from "~/auth/caller.server";
 import { SourcesView } from "~/components/sources/sources-view";
@@ -5,6 +6,12 @@ import { chooseOrganization } from "~/presenters/chosen-organization.server";
 import { listSourceFindings } from "~/services/list-source-findings.server";
 import { listDevices } from "~/services/read-devices.server";
 import { readSources } from "~/services/read-sources.server";
+
+/** What is open stands in the address; that alone asks for nothing new. */
+export function shouldRevalidate({ currentUrl, nextUrl, defaultShouldRevalidate }: ShouldRevalidateFunctionArgs) {
+  const isSamePage = currentUrl.pathname === nextUrl.pathname;
+  return defaultShouldRevalidate && !(isSamePage && currentUrl.search !== nextUrl.search);
+}
 
 export const meta: Route.MetaFunction = () => [{ title: "Sources · Ferrule" }];
 

@@ -54,7 +54,7 @@ describe("devices", () => {
     await page.getByRole("region", { name: "damaged.xml" }).getByText("Nothing was stored.").waitFor();
     expect(await page.getByRole("region", { name: "damaged.xml" }).getByRole("table").innerText()).toMatch(/\d+ : \d+/);
     const row = page.getByRole("row", { name: /^QS-U30/ });
-    expect(await row.getByRole("link", { name: /^V1/ }).allInnerTexts()).toEqual(["V1.10.000", "V1.00.000"]);
+    await expect.poll(() => row.getByRole("link", { name: /^V1/ }).allInnerTexts()).toEqual(["V1.10.000", "V1.00.000"]);
 
     await row.getByRole("link", { name: "QS-U30" }).click();
     await page.getByRole("table", { name: "Differences between the versions" }).getByText("0 … 600").waitFor();
@@ -63,7 +63,7 @@ describe("devices", () => {
     const distance = page
       .getByRole("group", { name: "QS-U30, process data in" })
       .getByRole("button", { name: /^Distance,/ });
-    expect(await distance.getAttribute("aria-label")).toContain("value 234.5 mm, Good");
+    await expect.poll(() => distance.getAttribute("aria-label")).toContain("value 234.5 mm, Good");
     await page.getByLabel("Try bytes").fill("7F FC FC 00");
     await expect.poll(() => distance.getAttribute("aria-label")).toContain("Bad_SensorFailure");
     await page.getByText("Table", { exact: true }).click();

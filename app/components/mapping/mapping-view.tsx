@@ -6,6 +6,7 @@ import { Drawer } from "~/components/ui/drawer";
 import { Empty } from "~/components/ui/empty";
 import { Select } from "~/components/ui/field";
 import { Notice } from "~/components/ui/notice";
+import { useSearchState } from "~/components/shell/use-search-state";
 import { Segments } from "~/components/ui/segments";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { listMachineTypes } from "~/domain/mapping/list-targets";
@@ -79,7 +80,7 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
   const model = useOpenModel();
   const { space } = useEditorState();
   const actions = useMappingActions(type);
-  const [search, setSearch] = useSearchParams();
+  const search = useSearchState();
   const scene = useMemo(() => makeMappingScene(space, type), [space, type]);
   const [refused, setRefused] = useState<ReadonlySet<string>>(new Set());
   const [isSuggesting, setSuggesting] = useState(false);
@@ -88,7 +89,7 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
   const suggestions = found.filter((suggestion) => !refused.has(nameSuggestion(suggestion)));
   const bench = useBench(space, scene);
   const view = (search.get("view") ?? "wires") as View;
-  const selected = search.get("target") ?? undefined;
+  const selected = search.get("target");
   const member = scene.members.find((one) => one.id === selected);
   const findings = useSyncExternalStore(
     model.findings.subscribe,
@@ -97,19 +98,7 @@ function TypeMapping({ type, typeName, types, devices, sources, onType }: TypePr
   ).byNode;
   const { mapped, all, open } = countMapped(scene.members);
 
-  function show(changes: Readonly<Record<string, string | undefined>>): void {
-    setSearch(
-      (before) => {
-        const next = new URLSearchParams(before);
-        for (const [key, value] of Object.entries(changes)) {
-          if (value === undefined) next.delete(key);
-          else next.set(key, value);
-        }
-        return next;
-      },
-      { replace: true, preventScrollReset: true },
-    );
-  }
+  const show = search.set;
   const accept = (list: readonly Suggestion[]) =>
     actions.dispatch(
       "accept-suggestions",

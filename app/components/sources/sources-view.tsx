@@ -1,5 +1,6 @@
 import { Plus, Printer, Table2 } from "lucide-react";
-import { href, useSearchParams } from "react-router";
+import { href } from "react-router";
+import { useSearchState } from "~/components/shell/use-search-state";
 import { Button, LinkButton } from "~/components/ui/button";
 import { Drawer } from "~/components/ui/drawer";
 import { Empty } from "~/components/ui/empty";
@@ -30,8 +31,8 @@ const ALL = "";
 /** Where bytes come from: masters as a picture, units and servers as tables, gateways with their machines. */
 export function SourcesView({ sources: { sources, gateways, machines }, devices, findings, mayEdit }: Props) {
   const actions = useSourceActions(mayEdit);
-  const [search, setSearch] = useSearchParams();
-  const openId = search.get("source") ?? undefined;
+  const search = useSearchState();
+  const openId = search.get("source");
   const openPort = Number(search.get("port") ?? Number.NaN);
   const machine = search.get("machine") ?? ALL;
   const masters = sources.filter((source) => isIoLinkMaster(source.kind));
@@ -49,19 +50,7 @@ export function SourcesView({ sources: { sources, gateways, machines }, devices,
   const ports = masters.flatMap((master) => master.ports);
   const planned = ports.filter((one) => one.plan !== undefined || one.bindings.length > 0).length;
 
-  function show(changes: Readonly<Record<string, string | undefined>>): void {
-    setSearch(
-      (before) => {
-        const next = new URLSearchParams(before);
-        for (const [key, value] of Object.entries(changes)) {
-          if (value === undefined || value === "") next.delete(key);
-          else next.set(key, value);
-        }
-        return next;
-      },
-      { replace: true, preventScrollReset: true },
-    );
-  }
+  const show = search.set;
   const select = (source: string | undefined, portNumber?: number) =>
     show({ source, port: portNumber === undefined ? undefined : String(portNumber) });
 
