@@ -26,7 +26,11 @@ export default function Findings() {
     return (
       <main id="main" className="grid flex-1 place-content-center p-8">
         <h1 className="sr-only">Findings</h1>
-        <Progress stage="Loading the required models and checking" className="w-96" />
+        <Progress
+          stage="Loading the required models and checking"
+          className="w-96"
+          {...(found.progress === undefined ? {} : { done: found.progress })}
+        />
       </main>
     );
   return (
@@ -34,6 +38,7 @@ export default function Findings() {
       findings={found.findings}
       waived={found.waived}
       ownNodes={space.own.nodes.size}
+      progress={found.progress}
       tools={{
         space,
         modelId: workspace.model.id,

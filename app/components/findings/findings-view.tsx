@@ -7,6 +7,7 @@ import { Button } from "~/components/ui/button";
 import { Empty } from "~/components/ui/empty";
 import { Input } from "~/components/ui/field";
 import { Icon } from "~/components/ui/icon";
+import { Progress } from "~/components/ui/progress";
 import { Segments, ToggleSegments } from "~/components/ui/segments";
 import { Tag } from "~/components/ui/tag";
 import type { Finding } from "~/domain/checks/finding";
@@ -22,9 +23,16 @@ const firstRows = 8;
 
 const severities: readonly Severity[] = ["error", "warning", "hint"];
 
-type Props = { findings: readonly Finding[]; waived: readonly WaivedFinding[]; tools: FindingTools; ownNodes: number };
+type Props = {
+  findings: readonly Finding[];
+  waived: readonly WaivedFinding[];
+  tools: FindingTools;
+  ownNodes: number;
+  /** How far a check of the whole model is, while one runs. */
+  progress: number | undefined;
+};
 
-export function FindingsView({ findings, waived, tools, ownNodes }: Props) {
+export function FindingsView({ findings, waived, tools, ownNodes, progress }: Props) {
   const [grouping, setGrouping] = useState<Grouping>("rule");
   const [shown, setShown] = useState<ReadonlySet<Severity>>(new Set(severities));
   const [text, setText] = useState("");
@@ -79,6 +87,7 @@ export function FindingsView({ findings, waived, tools, ownNodes }: Props) {
             type="search"
           />
         </label>
+        {progress === undefined ? null : <Progress stage="Checking the whole model" done={progress} className="w-60" />}
         <p className="ml-auto text-note text-ink-3">
           <span className="font-mono">{ownNodes.toLocaleString("en").replaceAll(",", " ")}</span> nodes of the model
           checked by{" "}

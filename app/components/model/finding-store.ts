@@ -23,9 +23,17 @@ type FindingState = {
   readonly tally: FindingTally;
   /** False until the checker has answered once. */
   readonly isKnown: boolean;
+  /** How far a check of the whole model is, 0 to 1, while one runs. */
+  readonly progress?: number;
 };
 
-const NOTHING: FindingState = { findings: [], waived: [], byNode: new Map(), tally: { error: 0, warning: 0, hint: 0 }, isKnown: false };
+const NOTHING: FindingState = {
+  findings: [],
+  waived: [],
+  byNode: new Map(),
+  tally: { error: 0, warning: 0, hint: 0 },
+  isKnown: false,
+};
 const WEIGHT: Readonly<Record<Severity, number>> = { error: 0, warning: 1, hint: 2 };
 
 export class FindingStore {
@@ -44,6 +52,13 @@ export class FindingStore {
   set(space: AddressSpace, findings: readonly Finding[]): void {
     this.#checked = { space, findings };
     this.#show();
+  }
+
+  /** Told while the whole model is checked in steps; the next `set` ends it. */
+  setProgress(progress: number): void {
+    if (progress - (this.#state.progress ?? 0) < 0.05) return;
+    this.#state = { ...this.#state, progress };
+    for (const listener of [...this.#listeners]) listener();
   }
 
   /** What the team has accepted; each holds while its node stays as it was. */

@@ -36,7 +36,10 @@ export function followFindings(modelId: string, editor: EditorStore, findings: F
     if (!isEnded && space !== checked) {
       // The plan of the sources is the organisation's and not here: the server's findings tell of it.
       const wiring = makeWiring(space, []);
-      run = run ? updateChecks(run, space, wiring) : await finish(startChecksInSteps(space, { wiring }), () => isEnded);
+      const tell = (done: number) => findings.setProgress(done / Math.max(1, space.own.nodes.size));
+      run = run
+        ? updateChecks(run, space, wiring)
+        : await finish(startChecksInSteps(space, { wiring }), tell, () => isEnded);
       checked = space;
       if (run && !isEnded) findings.set(space, run.findings);
     }
@@ -69,19 +72,27 @@ export function followFindings(modelId: string, editor: EditorStore, findings: F
   };
 }
 
-async function fetchFindings(modelId: string, signal: AbortSignal): Promise<{ seq: number; findings: readonly Finding[] } | undefined> {
+async function fetchFindings(
+  modelId: string,
+  signal: AbortSignal,
+): Promise<{ seq: number; findings: readonly Finding[] } | undefined> {
   const answer = await fetch(`/models/${encodeURIComponent(modelId)}/findings.json`, { signal }).catch(() => undefined);
   if (!answer?.ok) return undefined;
   return (await answer.json().catch(() => undefined)) as { seq: number; findings: readonly Finding[] } | undefined;
 }
 
-/** Runs the steps in slices; undefined when it was no longer wanted. */
-async function finish(steps: Generator<number, CheckRun, undefined>, isUnwanted: () => boolean): Promise<CheckRun | undefined> {
+/** Runs the steps in slices and tells how many nodes are done; undefined when it was no longer wanted. */
+async function finish(
+  steps: Generator<number, CheckRun, undefined>,
+  tell: (done: number) => void,
+  isUnwanted: () => boolean,
+): Promise<CheckRun | undefined> {
   let since = performance.now();
   for (;;) {
     const step = steps.next();
     if (step.done) return step.value;
     if (performance.now() - since < SLICE) continue;
+    tell(step.value);
     await new Promise((resolve) => setTimeout(resolve, 0));
     if (isUnwanted()) return undefined;
     since = performance.now();

@@ -114,6 +114,14 @@ export function findInheritedMember(
   return supertype === undefined ? undefined : getMembers(ctx, supertype).get(toNameText(browseName));
 }
 
+/** The declaration that a child of the name overrides or follows: a supertype's below a type, else one of the owner's type. */
+export function findMemberAbove(ctx: CheckContext, owner: NodeKey, browseName: Node["browseName"]): Member | undefined {
+  const ownerClass = ctx.classOf(owner);
+  if (ownerClass === "ObjectType" || ownerClass === "VariableType") return findInheritedMember(ctx, owner, browseName);
+  const type = findTypeDefinition(ctx, owner);
+  return type === undefined ? undefined : getMembers(ctx, type).get(toNameText(browseName));
+}
+
 /** Children of a node by BrowseName with namespace; several where names repeat. */
 const children = makeLookup<ReadonlyMap<string, readonly NodeHead[]>>((ctx, key) => {
   const found = new Map<string, NodeHead[]>();

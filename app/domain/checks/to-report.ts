@@ -94,12 +94,12 @@ function toReportedFinding(finding: PlacedFinding): ReportedFinding {
     nodeId,
     browseName,
     path,
-    ...(attribute === undefined ? {} : { attribute }),
     line,
     column,
     message,
     clause,
     facts,
+    ...(attribute === undefined ? {} : { attribute }),
     ...(consequence === undefined ? {} : { consequence }),
   };
 }

@@ -1,6 +1,10 @@
-import { typeDefinitionFix } from "../fixes";
+import type { Node } from "../../address-space/node";
+import type { NodeKey } from "../../address-space/node-id";
+import type { CheckContext } from "../check-context";
+import { keyOf, typeDefinitionFix } from "../fixes";
 import { StandardReferenceType as R, StandardType as T } from "../../address-space/standard-ids";
-import { listTypeDefinitions } from "../lookups";
+import { findTypeDefinition, listTypeDefinitions } from "../lookups";
+import { findMemberAbove } from "../members";
 import { ALL_CLASSES } from "../node-classes";
 import { clause, type NodeRule } from "../rule";
 
@@ -32,18 +36,26 @@ export const r049: NodeRule = {
       });
       return;
     }
+    const data = { declared: findDeclaredType(node, ctx) ?? "" };
     if (types.length !== 1) {
       const message = `The ${node.nodeClass} ${node.browseName.name} has ${types.length === 0 ? "no" : types.length} type definition${types.length > 1 ? "s" : ""}.`;
-      report({ attribute, message, facts: facts.length > 0 ? facts : ["HasTypeDefinition references: 0"] });
+      report({ attribute, message, facts: facts.length > 0 ? facts : ["HasTypeDefinition references: 0"], data });
     }
     for (const key of types) {
       const type = ctx.node(key);
       if (!type || type.nodeClass === wanted) continue;
       const message = `The type definition of the ${node.nodeClass} ${node.browseName.name} is the ${type.nodeClass} ${type.browseName.name}.`;
-      report({ attribute, message, facts: [...facts, `NodeClass of the type: ${type.nodeClass}; allowed: ${wanted}`] });
+      report({
+        attribute,
+        message,
+        facts: [...facts, `NodeClass of the type: ${type.nodeClass}; allowed: ${wanted}`],
+        data,
+      });
     }
   },
-  fix: typeDefinitionFix("Take the base type", (node) => {
+  fix: typeDefinitionFix("Take the type of the declaration that it follows, else the base type", (node, finding) => {
+    const declared = keyOf(finding, "declared");
+    if (declared !== undefined) return declared;
     if (node.nodeClass === "Object") return T.BaseObjectType;
     if (node.nodeClass !== "Variable") return undefined;
     return node.references.some((r) => r.type === R.HasProperty && !r.isForward)
@@ -61,3 +73,13 @@ export const r049: NodeRule = {
     },
   },
 };
+
+/** The type that the declaration has which the node follows. */
+function findDeclaredType({ key, browseName }: Node, ctx: CheckContext): NodeKey | undefined {
+  for (const { source } of ctx.parentEdges(key)) {
+    const member = findMemberAbove(ctx, source, browseName);
+    const type = member && member.node.key !== key ? findTypeDefinition(ctx, member.node.key) : undefined;
+    if (type !== undefined) return type;
+  }
+  return undefined;
+}

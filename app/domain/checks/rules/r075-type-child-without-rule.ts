@@ -1,8 +1,9 @@
-import { modellingRuleFix } from "../fixes";
+import { keyOf, modellingRuleFix } from "../fixes";
 import { standardKey } from "../../address-space/node-id";
 import { StandardReferenceType as R, StandardType as T, StandardModellingRule } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import { findModellingRule, findTypeDefinition, isInstanceDeclaration, isKindOf, ofType } from "../lookups";
+import { findMemberAbove } from "../members";
 import { clause, type NodeRule } from "../rule";
 import type { Node } from "../../address-space/node";
 
@@ -31,9 +32,13 @@ export const r075: NodeRule = {
       attribute: "references",
       message: `${node.browseName.name} has no modelling rule, so instances of ${ctx.nameOf(owner.source)} do not get it.`,
       facts: [`${ctx.nameOf(owner.type)} from ${ctx.describe(owner.source)}`, "HasModellingRule references: 0"],
+      data: { rule: findMemberAbove(ctx, owner.source, node.browseName)?.rule ?? StandardModellingRule.Optional },
     });
   },
-  fix: modellingRuleFix("Make it Optional, so that instances may have it", () => StandardModellingRule.Optional),
+  fix: modellingRuleFix(
+    "Take the rule that it follows, else Optional, so that instances may have it",
+    (_node, finding) => keyOf(finding, "rule"),
+  ),
   examples: {
     good: {
       text: "A member that instances get.",

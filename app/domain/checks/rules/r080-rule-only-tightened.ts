@@ -2,9 +2,8 @@ import { keyOf, modellingRuleFix } from "../fixes";
 import type { Severity } from "../../core/result";
 import type { NodeKey } from "../../address-space/node-id";
 import { StandardModellingRule as M } from "../../address-space/standard-ids";
-import type { CheckContext } from "../check-context";
-import { findModellingRule, findTypeDefinition, isInstanceDeclaration } from "../lookups";
-import { findInheritedMember, getMembers, isPlaceholder, type Member, toNameText } from "../members";
+import { findModellingRule, isInstanceDeclaration } from "../lookups";
+import { findMemberAbove, isPlaceholder } from "../members";
 import { clause, type NodeRule } from "../rule";
 
 export const r080: NodeRule = {
@@ -22,7 +21,7 @@ export const r080: NodeRule = {
     const rule = findModellingRule(ctx, node.key);
     if (rule === undefined || !isInstanceDeclaration(ctx, node.key)) return;
     for (const { source } of ctx.parentEdges(node.key)) {
-      const base = findBase(source, node.browseName, ctx);
+      const base = findMemberAbove(ctx, source, node.browseName);
       if (!base || base.node.key === node.key) continue;
       if (node.nodeClass === "Method" && isPlaceholder(base.rule)) continue;
       const severity = judge(base.rule, rule);
@@ -60,13 +59,6 @@ export const r080: NodeRule = {
     },
   },
 };
-
-function findBase(parent: NodeKey, name: Member["node"]["browseName"], ctx: CheckContext): Member | undefined {
-  const parentClass = ctx.classOf(parent);
-  if (parentClass === "ObjectType" || parentClass === "VariableType") return findInheritedMember(ctx, parent, name);
-  const type = findTypeDefinition(ctx, parent);
-  return type === undefined ? undefined : getMembers(ctx, type).get(toNameText(name));
-}
 
 /** Rules outside the standard's table are expected to stay; undefined means that the change is allowed. */
 function judge(before: NodeKey, after: NodeKey): Severity | undefined {

@@ -1,7 +1,9 @@
-import { attributeFix, REMOVED } from "../fixes";
-import { hasValueAttributes } from "../../address-space/node";
+import { attributeFix, keyOf, REMOVED } from "../fixes";
+import { getDataType, hasValueAttributes } from "../../address-space/node";
 import { standardKey } from "../../address-space/node-id";
+import { StandardDataType as D } from "../../address-space/standard-ids";
 import { clause, type NodeRule } from "../rule";
+import { listValueBases } from "../value-bases";
 
 export const r095: NodeRule = {
   id: "R095",
@@ -20,11 +22,16 @@ export const r095: NodeRule = {
     if (type?.nodeClass === "DataType") return;
     const attribute = "dataType";
     const name = node.browseName.name;
+    const wider = listValueBases(node, ctx)
+      .map(({ base }) => getDataType(base))
+      .find((key) => key !== D.BaseDataType && ctx.classOf(key) === "DataType");
+    const data = { wider: wider ?? "" };
     if (type) {
       report({
         attribute,
         message: `The DataType of ${name} is ${type.browseName.name}, which is no DataType.`,
         facts: [`DataType attribute: ${ctx.describe(dataType)}`, `Its NodeClass: ${type.nodeClass}`],
+        data,
       });
       return;
     }
@@ -42,10 +49,14 @@ export const r095: NodeRule = {
           ? "The text is no NodeId."
           : `The namespace ${namespace} is loaded and has no such node.`,
       ],
+      data,
     });
   },
-  fix: attributeFix("Leave the DataType open", "dataType", (node) =>
-    "dataType" in node && node.dataType !== undefined ? REMOVED : undefined,
+  fix: attributeFix(
+    "Take the DataType of the VariableType or declaration, else leave it open",
+    "dataType",
+    (node, finding) =>
+      "dataType" in node && node.dataType !== undefined ? (keyOf(finding, "wider") ?? REMOVED) : undefined,
   ),
   examples: {
     good: { text: "Double.", build: (m) => m.variable("Speed", { parent: m.object("Pump1") }) },

@@ -3,7 +3,7 @@ import { keyOf, notPossible } from "../fixes";
 import { ok } from "../../core/result";
 import { getDataType } from "../../address-space/node";
 import { standardKey, type NodeKey } from "../../address-space/node-id";
-import { StandardDataType as D } from "../../address-space/standard-ids";
+import { StandardDataType as D, StandardType as T } from "../../address-space/standard-ids";
 import type { CheckContext } from "../check-context";
 import { isNumeric, listFields } from "../data-types";
 import { CELSIUS } from "../example-values";
@@ -11,6 +11,8 @@ import { findStandardProperty, findTypeDefinition, isChainLoaded, isKindOf } fro
 import { clause, type NodeRule } from "../rule";
 
 const ArrayItemType = standardKey(12021);
+
+const WITH_UNIT = [T.AnalogUnitType, T.AnalogUnitRangeType];
 
 export const r123: NodeRule = {
   id: "R123",
@@ -32,6 +34,7 @@ export const r123: NodeRule = {
     const dataType = getDataType(node);
     const verdict = judge(ctx, dataType);
     if (verdict === "fits") return;
+    const isDemanded = type !== undefined && WITH_UNIT.some((t) => isKindOf(ctx, type, t));
     report({
       ...(verdict === "warning" ? { severity: "warning" } : {}),
       attribute: "dataType",
@@ -41,7 +44,8 @@ export const r123: NodeRule = {
         `Property: ${ctx.describe(property.key)}`,
         "Units are for DataTypes below Number.",
       ],
-      data: { property: property.key },
+      // A VariableType that demands a unit must be changed first, by hand.
+      data: { property: isDemanded ? "" : property.key },
     });
   },
   fix: {

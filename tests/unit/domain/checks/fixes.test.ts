@@ -34,7 +34,10 @@ test.each(FIXABLE)("the fix of $id removes its finding and raises no other error
   expect(runChecks(mended, { rules: [rule] }).filter((f) => isSame(f, finding))).toEqual([]);
   expect(nameErrors(mended).filter((error) => !before.includes(error))).toEqual([]);
   const { inverse } = getValue(applyWithInverse(space, operations));
-  expect(getValue(applyOperations(mended, inverse)).listOwnNodes()).toEqual(space.listOwnNodes());
+  const undone = applyOperations(mended, inverse);
+  // A file may hold two nodes of one NodeId; nobody may make them, so that this one undo is refused.
+  if (rule.id === "R002") expect(undone.problems.map((p) => p.code)).toEqual(["operation.node-id-taken"]);
+  else expect(getValue(undone).listOwnNodes()).toEqual(space.listOwnNodes());
 });
 
 test("fixes answer a problem when their finding is gone", () => {

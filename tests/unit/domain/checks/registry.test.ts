@@ -39,14 +39,14 @@ describe("registry of rules", () => {
 describe.each(RULES)("$id $title", (rule) => {
   test(`good: ${rule.examples.good.text}`, () => {
     const { space, model } = buildModel((m) => rule.examples.good.build(m), required);
-    const findings = runChecks(space, model.wiring ? { wiring: model.wiring } : {});
+    const findings = check(space, model);
     expect(findings.filter((f) => f.rule === rule.id)).toEqual([]);
     expect(findings.filter((f) => f.severity === "error")).toEqual([]);
   });
 
   test(`bad: ${rule.examples.bad.text}`, () => {
     const { space, made, model } = buildModel((m) => rule.examples.bad.build(m), required);
-    const found = runChecks(space, model.wiring ? { wiring: model.wiring } : {}).filter((f) => f.rule === rule.id);
+    const found = check(space, model).filter((f) => f.rule === rule.id);
     expect(found.map((f) => f.key ?? (f.place ? `place ${f.place.name}` : "model"))).toContain(made);
     expect(found.some((f) => f.severity === rule.severity)).toBe(true);
     for (const finding of found) {

@@ -1,10 +1,12 @@
 /** Members, levels and required fields: OASIS SARIF 2.1.0, errata 01, sarif-schema-2.1.0.json. */
+import { Ajv } from "ajv";
 import { describe, expect, test } from "vitest";
 import { runChecks } from "~/domain/checks/run-checks";
 import { toReport } from "~/domain/checks/to-report";
 import { toSarif } from "~/domain/checks/to-sarif";
 import { problem } from "~/domain/core/result";
 import { buildModel } from "../../../support/model-builder";
+import { SARIF_PROFILE } from "../../../support/sarif-schema";
 
 type Log = {
   version: string;
@@ -36,6 +38,35 @@ describe("toSarif", () => {
   });
   const log = toSarif([report], { version: "0.1.0", digest: (text) => `d${text.length}` }) as Log;
   const [run] = log.runs;
+
+  test("has no member and no value that the standard does not know", () => {
+    const isValid = new Ajv({ strict: false }).compile(SARIF_PROFILE);
+    const [finding] = report.findings;
+    if (!finding) throw new Error("no finding");
+    const waiver = {
+      rule: finding.rule,
+      nodeId: "",
+      reason: "Known",
+      person: "Ines",
+      date: "2026-05-04",
+      fingerprint: "",
+    };
+    const logs = [
+      log,
+      toSarif([report], { version: "0.1.0", waived: [{ finding, waiver }] }),
+      toSarif([report], { version: "0.1.0", isChecked: false }),
+    ];
+    for (const each of logs) {
+      isValid(each);
+      expect(isValid.errors ?? []).toEqual([]);
+    }
+  });
+
+  test("says of a file that could not be checked that nothing is known", () => {
+    const refused = toSarif([{ ...report, findings: [] }], { version: "0.1.0", isChecked: false }) as Log;
+    expect(refused.runs[0]?.invocations[0]?.executionSuccessful).toBe(false);
+    expect(refused.runs[0]).not.toHaveProperty("results");
+  });
 
   test("has version, tool and one result a finding", () => {
     expect(log.version).toBe("2.1.0");

@@ -69,6 +69,8 @@ describe("toReport", () => {
       "message",
       "clause",
       "facts",
+      "attribute",
+      "consequence",
     ]);
   });
 
