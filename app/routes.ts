@@ -136,6 +136,7 @@ export default [
     route("live", "routes/live.tsx"),
     route("live/endpoints", "routes/live.endpoints.tsx"),
     route("live/:testServerId", "routes/live.$testServerId.tsx"),
+    route("live/:testServerId/learn", "routes/live.$testServerId.learn.tsx"),
     route("*", "routes/not-found.tsx"),
   ]),
 ] satisfies RouteConfig;

@@ -61,8 +61,21 @@ export function findAsBuiltRun(id: string): AsBuiltRun | undefined {
   return getRuns().get(id);
 }
 
-/** Starts a run. Problems: `as-built.state`, those of findProof and openEndpoint. */
-export async function startAsBuilt(author: Caller, model: ModelRow, target: LiveTarget, asked: AsBuiltIntent): Promise<Result<AsBuiltRun>> {
+/** Starts a run and answers at once. Problems: `as-built.state`, those of findProof and openEndpoint. */
+export async function startAsBuilt(author: Caller, model: ModelRow, target: LiveTarget, intent: AsBuiltIntent): Promise<Result<AsBuiltRun>> {
+  const begun = await begin(author, model, target, intent);
+  return begun.ok ? ok(begun.value.run) : begun;
+}
+
+/** The same, answered when the run has ended. */
+export async function makeAsBuilt(author: Caller, model: ModelRow, target: LiveTarget, intent: AsBuiltIntent): Promise<Result<AsBuiltRun>> {
+  const begun = await begin(author, model, target, intent);
+  if (!begun.ok) return begun;
+  await begun.value.ended;
+  return ok(findAsBuiltRun(begun.value.run.id) ?? begun.value.run);
+}
+
+async function begin(author: Caller, model: ModelRow, target: LiveTarget, asked: AsBuiltIntent): Promise<Result<{ run: AsBuiltRun; ended: Promise<void> }>> {
   const proof = await findProof(model, target, asked.deliveryId);
   if (!proof.ok) return proof;
   const intent = proof.value ? { ...asked, state: proof.value.release.revision } : asked;
@@ -72,8 +85,7 @@ export async function startAsBuilt(author: Caller, model: ModelRow, target: Live
   if (!client.ok) return client;
   const run: AsBuiltRun = { id: newId(), organizationId: model.organizationId, modelId: model.id, state: "running", stage: "connect", done: 0, of: 0, reportId: null, verdict: null, problems: [] };
   keep(run);
-  void work({ author, model, target, intent, space, proof: proof.value }, client.value, run.id);
-  return ok(run);
+  return ok({ run, ended: work({ author, model, target, intent, space, proof: proof.value }, client.value, run.id) });
 }
 
 function keep(run: AsBuiltRun): void {

@@ -6,6 +6,7 @@ import { getEnvironment } from "../utils/env.server";
 import { onShutdown, runShutdown } from "../utils/shutdown.server";
 import { singleton } from "../utils/singleton.server";
 import { getLibrary } from "../library/library.server";
+import { startSchedules } from "./schedule-as-built.server";
 import { startOutbox } from "./run-outbox.server";
 import { removeOldUploads } from "./pending-uploads.server";
 import { followOtherProcesses } from "./follow-other-processes.server";
@@ -35,6 +36,7 @@ async function start(): Promise<StartReport> {
   registerSourceTopics();
   await registerLiveTopics();
   startOutbox();
+  startSchedules();
   followOtherProcesses();
   const { isDemo, dataFolder } = getEnvironment();
   if (isDemo) return { lines: [...(await seedDemo()), await startDemoSources(DEMO_SLUG)] };

@@ -11,6 +11,7 @@ import { Notice } from "../ui/notice";
 import { Block, Page } from "../ui/page";
 import { Table, TableScroll, Td, Th, Tr } from "../ui/table";
 import { PointChecks } from "./point-checks";
+import { Schedules } from "./schedules";
 import { RunProgress } from "./run-progress";
 
 export type AsBuiltAnswer = { errors: readonly string[]; runId?: string; isRecorded?: true };
@@ -18,7 +19,7 @@ export type AsBuiltAnswer = { errors: readonly string[]; runId?: string; isRecor
 type Props = AsBuiltPage & { modelId: string; reports: readonly AsBuiltSummary[]; mayRecord: boolean; answer: AsBuiltAnswer | undefined };
 
 /** Proof on the running thing: what a server serves against a frozen state, and signals proved by hand. */
-export function AsBuiltView({ modelId, targets, revisions, pointChecks, reports, mayRecord, answer }: Props) {
+export function AsBuiltView({ modelId, targets, revisions, deliveries, schedules, signals, pointChecks, reports, mayRecord, answer }: Props) {
   const blockedBy = mayRecord ? undefined : "asks for the role reviewer, integrator, engineer or administrator";
   return (
     <Page title="As-built" about="Whether a running server serves exactly what was frozen. Ferrule only reads; no values are written.">
@@ -29,19 +30,20 @@ export function AsBuiltView({ modelId, targets, revisions, pointChecks, reports,
           {targets.length === 0 ? (
             <Notice tone="hint" title="No server can be read: start a test server, or name the gateway as an endpoint." action={<span className="flex gap-2"><LinkButton to={`/models/${modelId}/test-server`}>Test server</LinkButton><LinkButton to="/live/endpoints">Endpoints</LinkButton></span>} />
           ) : (
-            <ReportForm targets={targets} revisions={revisions} blockedBy={blockedBy} />
+            <ReportForm targets={targets} revisions={revisions} deliveries={deliveries} blockedBy={blockedBy} />
           )}
         </Block>
         <Block title="Reports">
           {reports.length === 0 ? <p className="border-t border-ink py-2 text-small text-ink-2">No report yet.</p> : <ReportTable reports={reports} />}
         </Block>
-        <PointChecks key={`${modelId} ${pointChecks.length}`} checks={pointChecks} blockedBy={blockedBy} />
+        <Schedules schedules={schedules} endpoints={targets.filter((target) => !target.isTestServer)} blockedBy={blockedBy} />
+        <PointChecks key={`${modelId} ${pointChecks.length}`} checks={pointChecks} signals={signals} targets={targets} blockedBy={blockedBy} />
       </div>
     </Page>
   );
 }
 
-function ReportForm({ targets, revisions, blockedBy }: Pick<Props, "targets" | "revisions"> & { blockedBy: string | undefined }) {
+function ReportForm({ targets, revisions, deliveries, blockedBy }: Pick<Props, "targets" | "revisions" | "deliveries"> & { blockedBy: string | undefined }) {
   return (
     <Form method="post" className="flex flex-wrap items-start gap-3 border-t border-ink pt-3">
       <input type="hidden" name="intent" value="report" />
@@ -56,9 +58,14 @@ function ReportForm({ targets, revisions, blockedBy }: Pick<Props, "targets" | "
           </Select>
         )}
       </Field>
-      <Field label="Compared with" className="w-72">
+      <Field label="Compared with" className="w-72" {...(deliveries.length > 0 ? { hint: "As released, and with no point check outside, a delivery becomes proved." } : {})}>
         {(tied) => (
           <Select {...tied} name="state">
+            {deliveries.map((delivery) => (
+              <option key={delivery.id} value={`delivery ${delivery.id}`}>
+                {delivery.text}
+              </option>
+            ))}
             {revisions.map((revision) => (
               <option key={revision.number} value={revision.number}>
                 Revision {revision.number}: {revision.message.slice(0, 60)}

@@ -1,14 +1,14 @@
-import { Form } from "react-router";
 import type { AsBuiltPage } from "~/presenters/as-built-page.server";
 import { StatusBadge } from "../notation/status-badge";
 import { LocalTime } from "../shell/local-time";
-import { Button } from "../ui/button";
-import { Field, Input } from "../ui/field";
 import { Block } from "../ui/page";
 import { Table, TableScroll, Td, Th, Tr } from "../ui/table";
+import { PointCheckForm } from "./point-check-form";
+
+type Props = Pick<AsBuiltPage, "signals" | "targets"> & { blockedBy: string | undefined };
 
 /** Signals proved by hand: what was done to the sensor, what was read beside it, and what the server showed. */
-export function PointChecks({ checks, blockedBy }: { checks: AsBuiltPage["pointChecks"]; blockedBy: string | undefined }) {
+export function PointChecks({ checks, signals, targets, blockedBy }: Props & { checks: AsBuiltPage["pointChecks"] }) {
   return (
     <Block title="Point checks" about="One signal of one machine proved by hand. Work at the machine follows its risk assessment, local codes and licensed practice.">
       {checks.length === 0 ? (
@@ -57,33 +57,7 @@ export function PointChecks({ checks, blockedBy }: { checks: AsBuiltPage["pointC
           </Table>
         </TableScroll>
       )}
-      <Form method="post" className="mt-3 flex flex-wrap items-end gap-3">
-        <input type="hidden" name="intent" value="point-check" />
-        <Field label="NodeId of the signal" className="w-96">
-          {(tied) => <Input {...tied} name="nodeId" mono required placeholder="nsu=http://…;i=6001" autoComplete="off" />}
-        </Field>
-        <Field label="Stimulus" className="w-56">
-          {(tied) => <Input {...tied} name="stimulus" required placeholder="ice water at the sensor" />}
-        </Field>
-        <Field label="Read beside it" className="w-28">
-          {(tied) => <Input {...tied} name="localReading" type="number" step="any" required mono />}
-        </Field>
-        <Field label="Shown" className="w-28">
-          {(tied) => <Input {...tied} name="shownValue" type="number" step="any" required mono />}
-        </Field>
-        <Field label="Tolerance ±" className="w-28">
-          {(tied) => <Input {...tied} name="tolerance" type="number" step="any" min={0} required mono />}
-        </Field>
-        <Field label="Unit" optional className="w-20">
-          {(tied) => <Input {...tied} name="unit" mono />}
-        </Field>
-        <Field label="Note" optional className="w-56">
-          {(tied) => <Input {...tied} name="note" />}
-        </Field>
-        <Button type="submit" blockedBy={blockedBy}>
-          Record the check
-        </Button>
-      </Form>
+      <PointCheckForm signals={signals} targets={targets} blockedBy={blockedBy} />
     </Block>
   );
 }

@@ -56,6 +56,7 @@ function Facts({ summary, body }: Pick<Props, "summary" | "body">) {
   const outside = checks.filter((check) => !check.isWithin).length;
   const rows: [string, ReactNode][] = [
     ["Model", `${body.model.name}, ${body.model.revision === null ? "working state" : `revision ${body.model.revision}`}${body.model.version ? `, version ${body.model.version}` : ""}`],
+    ...(body.delivery ? [["Delivery", `version ${body.delivery.version} to ${body.delivery.gateway}`] as [string, ReactNode]] : []),
     ["Server", `${body.target.name}, ${body.target.endpointUrl}, ${body.target.securityMode}`],
     ["Made", <><LocalTime key="t" iso={body.startedAt} />, {body.madeBy}</>],
     ["Compared", `${formatCount(body.counts.nodes)} nodes of the model with ${formatCount(body.counts.servedNodes)} of the server`],

@@ -99,6 +99,11 @@ function EndpointTable({ endpoints, now }: { endpoints: readonly EndpointSummary
                       </Button>
                     </Form>
                     {endpoint.isAllowed ? (
+                      <LinkButton size="small" to={`/live/${endpoint.id}/learn`} aria-label={`Learn a model from ${endpoint.name}`}>
+                        Learn
+                      </LinkButton>
+                    ) : null}
+                    {endpoint.isAllowed ? (
                       <LinkButton size="small" tone="ink" to={`/live/${endpoint.id}`} aria-label={`Look at ${endpoint.name}`}>
                         Look
                       </LinkButton>

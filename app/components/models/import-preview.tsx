@@ -16,10 +16,15 @@ import { ProblemList, type ShownProblem } from "./problem-list";
 
 export type ImportTarget = "model" | "library";
 
-type Props = { preview: ImportPreview; target: ImportTarget };
+type Props = {
+  preview: ImportPreview;
+  target: ImportTarget;
+  /** Where the form is sent; the page itself when absent. */
+  action?: string;
+};
 
 /** What the file is and what would come of it; nothing is stored yet. */
-export function ImportPreviewView({ preview, target }: Props) {
+export function ImportPreviewView({ preview, target, action }: Props) {
   const main = preview.models[0];
   return (
     <div className="grid grid-cols-[minmax(0,1fr)_380px] gap-8 max-lg:grid-cols-1">
@@ -45,7 +50,7 @@ export function ImportPreviewView({ preview, target }: Props) {
           )}
         </Block>
       </div>
-      <ImportForm key={preview.uploadId} preview={preview} target={target} modelUri={main?.modelUri ?? ""} />
+      <ImportForm key={preview.uploadId} preview={preview} target={target} modelUri={main?.modelUri ?? ""} action={action} />
     </div>
   );
 }
@@ -134,12 +139,12 @@ function Counts({ counts }: { counts: ImportPreview["counts"] }) {
   );
 }
 
-function ImportForm({ preview, target, modelUri }: { preview: ImportPreview; target: ImportTarget; modelUri: string }) {
+function ImportForm({ preview, target, modelUri, action }: { preview: ImportPreview; target: ImportTarget; modelUri: string; action: string | undefined }) {
   const [into, setInto] = useState<ImportTarget>(target);
   const busy = useNavigation().state !== "idle";
   const against: readonly ShownProblem[] = into === "model" ? preview.againstModel : preview.againstLibrary;
   return (
-    <Form method="post" className="grid content-start gap-4 border-t-[1.5px] border-ink pt-3">
+    <Form method="post" {...(action === undefined ? {} : { action })} className="grid content-start gap-4 border-t-[1.5px] border-ink pt-3">
       <input type="hidden" name="upload" value={preview.uploadId} />
       <h2 className="text-lead font-semibold">Take it in</h2>
       <Segments

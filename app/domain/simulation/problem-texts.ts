@@ -14,6 +14,7 @@ export const testServerProblemTexts: Readonly<Record<string, string>> = {
   "point-check.no-variable": "The model has no Variable {nodeId}.",
   "as-built.delivery": "The model has no such delivery.",
   "as-built.delivery-target": "{target} is not the endpoint of {gateway}, to which the release was delivered.",
+  "as-built.endpoint": "A schedule needs an endpoint of the team; test servers come and go.",
   "as-built.state": "The model has no revision {state}.",
   "endpoint.address": "“{text}” is no address of an OPC UA server; it looks like opc.tcp://host:4840/path.",
   "endpoint.allowance-host": "“{text}” is no host: a name, *. and the end of names, an address, or a block such as 10.20.0.0/16.",
@@ -40,4 +41,6 @@ export const testServerProblemTexts: Readonly<Record<string, string>> = {
   "endpoint.arguments": "The Method takes {expected} arguments, not {given}.",
   "endpoint.unprotected": "Nothing is written or called over an unprotected connection. Use Basic256Sha256 or better.",
   "endpoint.browse": "The server did not answer the browse of {node}: {status}.",
+  "learn.empty": "The server has no node in the namespace {namespaceUri}.",
+  "learn.left-out": "{count} references lead to nodes that neither the library nor this namespace describes; they are left out.",
 };
