@@ -19,6 +19,7 @@ import { demoAccounts, demoOrganizationName, demoPassword } from "../utils/demo-
 import { newId } from "../utils/ids.server";
 import { findProjectRoot } from "../utils/project-root.server";
 import { importModel } from "./import-model.server";
+import { seedReaders } from "./seed-demo-readers.server";
 import { readUpload } from "./read-upload.server";
 import { seedBraiderMapping, seedHallSources } from "./seed-demo-sources.server";
 
@@ -39,6 +40,7 @@ export async function seedDemo(): Promise<string[]> {
   await seedBraiderMapping(author, organizationId);
   await seedModel(author, organizationId, hall.file, hall.name);
   await seedHallSources(author, organizationId);
+  await seedReaders(author, organizationId);
   return [`Demo organisation: ${demoOrganizationName} (everybody and everything in it is invented)`];
 }
 
