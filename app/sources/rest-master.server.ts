@@ -76,6 +76,20 @@ export async function readParameter(
   return answer.ok ? { ...answer, value: Uint8Array.from(answer.value) } : answer;
 }
 
+const eventsSchema = z.array(z.object({ message: z.object({ code: z.number().int(), mode: z.string().optional() }) })).max(10_000);
+
+/** Codes that have appeared and not disappeared since; a single shot is over when it is told. */
+export async function readActiveEvents(master: RestMasterAddress, alias: string): Promise<Reading<number[]>> {
+  const answer = await askMaster(master, `/devices/${encodeURIComponent(alias)}/events`, eventsSchema);
+  if (!answer.ok) return answer;
+  const active = new Set<number>();
+  for (const { message } of answer.value) {
+    if (message.mode === "APPEARS") active.add(message.code);
+    else if (message.mode === "DISAPPEARS") active.delete(message.code);
+  }
+  return { ...answer, value: [...active] };
+}
+
 export function readPorts(master: RestMasterAddress, masterNumber = 1): Promise<Reading<z.infer<typeof portsSchema>>> {
   return askMaster(master, `/masters/${masterNumber}/ports`, portsSchema);
 }

@@ -3,7 +3,7 @@ import { z } from "zod";
 import { problem } from "../domain/core/result";
 import type { LiveSource, Reading, SourceItem, SourceReading, SourceValue } from "../domain/mapping/live-source";
 import { StatusCode } from "../domain/mapping/status";
-import { getJson, readIdentification, readParameter, readPorts, readProcessData, type RestMasterAddress } from "./rest-master.server";
+import { getJson, readActiveEvents, readIdentification, readParameter, readPorts, readProcessData, type RestMasterAddress } from "./rest-master.server";
 
 /** Port states of the JSON integration 1.0 → numbers of OPC 30120 (0 no device, 1 deactivated, 2 incorrect device, 3 pre-operate, 4 operate, 5 DI, 6 DO, 255 not available). */
 const PORT_STATES: Readonly<Record<string, number>> = {
@@ -30,6 +30,8 @@ export function openRestMaster(settings: RestMasterSettings): LiveSource {
           return mapReading(await readProcessData(settings, aliasOf(item)), (value) => ({ kind: "process-data", ...value }));
         case "parameter":
           return mapReading(await readParameter(settings, aliasOf(item), item.index, item.subindex), (octets) => ({ kind: "octets", octets }));
+        case "events":
+          return mapReading(await readActiveEvents(settings, aliasOf(item)), (codes) => ({ kind: "events", codes }));
         case "port":
           return readPort(settings, masterNumber, item.port, aliasOf(item));
         default:

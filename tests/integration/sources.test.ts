@@ -6,7 +6,7 @@ import { encodeCarriageSensor, encodeCreelSensor, makeBraiderSignals } from "~/s
 import { startFakeModbusUnits } from "~/sources/fakes/fake-modbus-units.server";
 import { startFakeRestMaster } from "~/sources/fakes/fake-rest-master.server";
 import { ModbusConnection } from "~/sources/modbus-unit.server";
-import { readIdentification, readParameter, readPorts, readProcessData } from "~/sources/rest-master.server";
+import { readActiveEvents, readIdentification, readParameter, readPorts, readProcessData } from "~/sources/rest-master.server";
 
 const closers: (() => Promise<unknown>)[] = [];
 afterEach(async () => {
@@ -60,6 +60,28 @@ describe("REST master", () => {
       ok: true,
       value: { in: { isValid: false } },
     });
+  });
+
+  test("tells events that have appeared and not disappeared", async () => {
+    const fake = await startFakeRestMaster([
+      {
+        port: 1,
+        alias: "S",
+        vendorId: 65001,
+        deviceId: 1030,
+        productName: "QS-U30",
+        serialNumber: "U-1",
+        // 0x8C40 maintenance, 0x4210 over-temperature, 0x5012 battery (IODD standard definitions).
+        events: [
+          { code: 0x8c40, mode: "APPEARS" },
+          { code: 0x4210, mode: "APPEARS" },
+          { code: 0x5012, mode: "SINGLESHOT" },
+          { code: 0x4210, mode: "DISAPPEARS" },
+        ],
+      },
+    ]);
+    closers.push(() => fake.close());
+    expect(await readActiveEvents({ baseUrl: fake.baseUrl }, "S")).toMatchObject({ ok: true, value: [0x8c40] });
   });
 
   test("reads ports, identification and a parameter", async () => {

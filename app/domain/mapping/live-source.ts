@@ -12,6 +12,8 @@ export type SourceItem =
   | { readonly kind: "port"; readonly port: number; readonly alias?: string }
   | { readonly kind: "parameter"; readonly port: number; readonly alias?: string; readonly index: number; readonly subindex: number }
   | { readonly kind: "registers"; readonly unitId: number; readonly table: RegisterTable; readonly address: number; readonly count: number }
+  /** Events of a device that have appeared and not disappeared. */
+  | { readonly kind: "events"; readonly port: number; readonly alias?: string }
   /** The JSON answer of a service. */
   | { readonly kind: "document" }
   | { readonly kind: "node"; readonly nodeId: string };
@@ -28,6 +30,7 @@ export type SourceValue =
       readonly deviceId?: number;
       readonly serialNumber?: string;
     }
+  | { readonly kind: "events"; readonly codes: readonly number[] }
   | { readonly kind: "octets"; readonly octets: Uint8Array }
   | { readonly kind: "words"; readonly words: readonly number[] }
   | { readonly kind: "document"; readonly json: unknown }

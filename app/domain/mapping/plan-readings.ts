@@ -48,6 +48,7 @@ export type ReadingPlan = {
 export const DEFAULT_PERIOD = 500;
 /** Parameters are slow and wear nothing when read; device status and identity change rarely. */
 const SLOW_PERIOD = 5_000;
+const EVENT_PERIOD = 1_000;
 const DEVICE_STATUS_INDEX = 36;
 const MAX_WORDS = 125;
 const MAX_BITS = 2_000;
@@ -145,6 +146,7 @@ class Collector {
         this.#add(binding.sourceId, { kind: "document" }, period, value());
         return;
       case "event-code":
+        if (port) this.#add(binding.sourceId, { kind: "events", ...port }, Math.max(period, EVENT_PERIOD), value());
         return;
     }
   }
@@ -294,6 +296,8 @@ function readValue({ reference, first }: Extract<Use, { kind: "value" }>, value:
       return good(value.kind === "octets" ? decodeParameter(value.octets, reference.encoding) : undefined);
     case "validity":
       return good(value.kind === "process-data" ? value[reference.direction]?.isValid : undefined);
+    case "event-code":
+      return good(value.kind === "events" ? value.codes.includes(reference.code) : undefined);
     case "json-path":
       return good(value.kind === "document" ? readPath(value.json, reference.path) : undefined);
     default:

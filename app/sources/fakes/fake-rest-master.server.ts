@@ -12,6 +12,8 @@ export type FakeDevice = {
   /** Octets in the order of transmission; undefined where the device has none in this direction. */
   readonly readIn?: (time: number) => { readonly octets: readonly number[]; readonly isValid: boolean };
   readonly readOut?: (time: number) => { readonly octets: readonly number[]; readonly isValid: boolean };
+  /** Events in the order in which they came, as the log of the master has them. */
+  readonly events?: readonly { readonly code: number; readonly mode: "APPEARS" | "DISAPPEARS" | "SINGLESHOT" }[];
   /** Octets of parameters by index. */
   readonly parameters?: Readonly<Record<number, readonly number[]>>;
 };
@@ -111,6 +113,10 @@ function answerDevice(response: ServerResponse, device: FakeDevice, path: readon
     };
     const [getData, setData] = [toBody(device.readIn), toBody(device.readOut)];
     return send(response, 200, { ...(getData ? { getData } : {}), ...(setData ? { setData } : {}) });
+  }
+  if (what === "events" && rest.length === 0) {
+    const events = (device.events ?? []).map((message) => ({ time: new Date(time).toISOString(), severity: "WARNING", origin: { deviceAlias: device.alias }, message }));
+    return send(response, 200, events);
   }
   if (what === "parameters" && rest[1] === "value") {
     const octets = device.parameters?.[Number(rest[0])];
