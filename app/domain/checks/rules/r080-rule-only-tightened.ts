@@ -4,6 +4,7 @@ import type { NodeKey } from "../../address-space/node-id";
 import { StandardModellingRule as M } from "../../address-space/standard-ids";
 import { findModellingRule, isInstanceDeclaration } from "../lookups";
 import { findMemberAbove, isPlaceholder } from "../members";
+import { addOverride } from "../example-overrides";
 import { clause, type NodeRule } from "../rule";
 
 export const r080: NodeRule = {
@@ -42,20 +43,11 @@ export const r080: NodeRule = {
   examples: {
     good: {
       text: "Optional becomes Mandatory in the subtype.",
-      build: (m) => {
-        const pump = m.objectType("PumpType");
-        m.variable("Speed", { parent: pump, rule: "Optional" });
-        m.variable("Speed", { parent: m.objectType("FastPumpType", { supertype: pump }), rule: "Mandatory" });
-        return undefined;
-      },
+      build: (m) => addOverride(m, "Optional", "Mandatory"),
     },
     bad: {
       text: "Mandatory becomes Optional in the subtype.",
-      build: (m) => {
-        const pump = m.objectType("PumpType");
-        m.variable("Speed", { parent: pump, rule: "Mandatory" });
-        return m.variable("Speed", { parent: m.objectType("FastPumpType", { supertype: pump }), rule: "Optional" });
-      },
+      build: (m) => addOverride(m, "Mandatory", "Optional"),
     },
   },
 };

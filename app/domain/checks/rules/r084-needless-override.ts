@@ -3,6 +3,7 @@ import { getDataType, getValueRank, hasValueAttributes } from "../../address-spa
 import type { CheckContext } from "../check-context";
 import { findModellingRule, findTypeDefinition } from "../lookups";
 import { findInheritedMember } from "../members";
+import { addOverride } from "../example-overrides";
 import { clause, type NodeRule } from "../rule";
 import { findSubject, notPossible } from "../fixes";
 import { ok } from "../../core/result";
@@ -48,20 +49,11 @@ export const r084: NodeRule = {
   examples: {
     good: {
       text: "The override changes the rule.",
-      build: (m) => {
-        const pump = m.objectType("PumpType");
-        m.variable("Speed", { parent: pump, rule: "Optional" });
-        m.variable("Speed", { parent: m.objectType("FastPumpType", { supertype: pump }), rule: "Mandatory" });
-        return undefined;
-      },
+      build: (m) => addOverride(m, "Optional", "Mandatory"),
     },
     bad: {
       text: "An exact copy.",
-      build: (m) => {
-        const pump = m.objectType("PumpType");
-        m.variable("Speed", { parent: pump, rule: "Mandatory" });
-        return m.variable("Speed", { parent: m.objectType("FastPumpType", { supertype: pump }), rule: "Mandatory" });
-      },
+      build: (m) => addOverride(m, "Mandatory", "Mandatory"),
     },
   },
 };

@@ -33,14 +33,18 @@ export const r181: ModelRule = {
   why: "Clients read here which version of the model a server runs, and whether NodeIds are the same in every server.",
   check(ctx, report) {
     for (const model of ctx.header.models) {
-      const found = listMetadata(ctx).filter((node) => readText(ctx, node.key, "NamespaceUri") === model.modelUri);
+      const all = listMetadata(ctx).filter((node) => readText(ctx, node.key, "NamespaceUri") === model.modelUri);
+      const found = all.filter(({ key }) => findModellingRule(ctx, key) === undefined);
       if (found.length === 0) {
         report({
           attribute: "models",
           message: `The model ${model.modelUri} has no namespace metadata object.`,
           facts: [
-            "Objects of NamespaceMetadataType (i=11616) with this NamespaceUri: 0",
+            "Objects of NamespaceMetadataType (i=11616) with this NamespaceUri and without modelling rule: 0",
             `ModelUri: ${model.modelUri}`,
+            ...all.map(
+              ({ key }) => `${ctx.describe(key)} has a modelling rule, which makes it a declaration and no Object.`,
+            ),
           ],
           data: { modelUri: model.modelUri },
         });
@@ -69,14 +73,14 @@ export const r181: ModelRule = {
   },
 };
 
-/** Own Objects of NamespaceMetadataType or a subtype, declarations left out. */
+/** Own nodes of NamespaceMetadataType or a subtype. */
 function listMetadata(ctx: CheckContext): Node[] {
   const types = new Set<NodeKey>([T.NamespaceMetadataType]);
   for (const type of types) for (const edge of ctx.subtypeEdges(type)) types.add(edge.target);
   const edges = [...types].flatMap((type) => ctx.otherEdgesTo(type).filter((e) => e.type === R.HasTypeDefinition));
   return edges.flatMap(({ source }) => {
     const node = ctx.node(source);
-    return node && ctx.isOwn(source) && findModellingRule(ctx, source) === undefined ? [node] : [];
+    return node && ctx.isOwn(source) ? [node] : [];
   });
 }
 
