@@ -67,7 +67,8 @@ export function SheetDrawing({ space, layout, changeLayout, place: sheetPlace, s
         const kept = toRects({ ...scene, cards: scene.cards.filter((card) => !keys.has(card.key)) }, places, NOT_MOVED);
         setMoved(NOT_MOVED);
         changeLayout((old) => withPositions(withPositions(old, places), makeRoom(scene, arranged, kept)));
-        requestAnimationFrame(() => void fitView({ duration: 180, padding: 0.08, maxZoom: 1 }));
+        // The canvas knows the new places two frames later.
+        requestAnimationFrame(() => requestAnimationFrame(() => void fitView({ duration: 180, padding: 0.08, maxZoom: 1 })));
       } finally {
         setArranging(false);
       }
