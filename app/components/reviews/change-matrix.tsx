@@ -104,7 +104,7 @@ function ChangeRow({
       <th
         scope="row"
         className={cx(
-          "h-[33px] border-b border-hair pl-2 text-left font-normal",
+          "h-[33px] w-[36%] max-w-0 border-b border-hair pl-2 pr-3 text-left font-normal",
           isChosen && "shadow-[inset_3px_0_0_var(--copper)]",
         )}
       >

@@ -131,12 +131,12 @@ export class AffectedFinder {
     const ids: string[] = change.nodeId === undefined ? [] : [change.nodeId];
     // A node that came or went is met by whoever reads what stands beside it.
     const target = change.before === null && change.after !== null ? (findParent(space, key) ?? key) : key;
-    ids.push(...listIdsBelow(space, target));
+    ids.push(...listIdsBelow(space, target), ...listIdsAbove(space, target));
     const names = owner === undefined ? undefined : listNamesBelow(space, owner, target);
     if (names) {
       for (const { scope, node } of instances) {
         const member = followNames(scope.space, node, names);
-        if (member) ids.push(...listIdsBelow(scope.space, member.key));
+        if (member) ids.push(...listIdsBelow(scope.space, member.key), ...listIdsAbove(scope.space, member.key));
       }
     }
     return ids;
@@ -195,6 +195,18 @@ function followNames(space: AddressSpace, from: Node, names: readonly Node["brow
   for (const name of names)
     at = at && listChildren(space, at.key).find((child) => isSameQualifiedName(child.browseName, name));
   return at;
+}
+
+/** Own owners of a node: whoever reads one of them reads the node. */
+function listIdsAbove(space: AddressSpace, key: NodeKey): string[] {
+  const found = new Set<NodeKey>();
+  for (
+    let at = findParent(space, key);
+    at !== undefined && space.isOwn(at) && !found.has(at);
+    at = findParent(space, at)
+  )
+    found.add(at);
+  return [...found].map((at) => formatNodeId(space.requireNode(at).nodeId));
 }
 
 function listIdsBelow(space: AddressSpace, key: NodeKey): string[] {

@@ -52,13 +52,17 @@ describe("whom a change touches", () => {
     );
     const readers = [
       { id: "r", name: "Planner", nodeIds: [keyOf(5)] },
+      { id: "b", name: "Board of the whole machine", nodeIds: [keyOf(4)] },
       { id: "s", name: "Other", nodeIds: ["nsu=urn:x;i=1"] },
     ];
     const [change] = compareModels(before, after).changes;
     const found = change && new AffectedFinder({ before, after }, { name: "M", dependents: [], readers }).find(change);
     expect(found?.subtypes.map((place) => place.path)).toEqual(["Node3"]);
     expect(found?.instances.map((place) => place.path)).toEqual(["Node4"]);
-    expect(found?.readers).toEqual([{ id: "r", name: "Planner", effect: "stops", nodeIds: [keyOf(5)] }]);
+    expect(found?.readers).toMatchObject([
+      { id: "r", name: "Planner", effect: "stops", nodeIds: [keyOf(5)] },
+      { id: "b", effect: "stops", nodeIds: [keyOf(4)] },
+    ]);
     expect(
       change && compareModels(before, getValue(applyOperations(after, takeBackChange(before, after, change)))).changes,
     ).toEqual([]);
