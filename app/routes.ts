@@ -117,7 +117,7 @@ export default [
     route("sources/tags", "routes/sources.tags.tsx"),
     route("reviews", "routes/reviews.tsx"),
     route("reviews/:reviewId", "routes/reviews.$reviewId.tsx", [
-      index("routes/reviews.$reviewId._index.tsx"),
+      index("routes/reviews.$reviewId.meaning.tsx"),
       route("register", "routes/reviews.$reviewId.register.tsx"),
       route("sheet", "routes/reviews.$reviewId.sheet.tsx"),
       route("xml", "routes/reviews.$reviewId.xml.tsx"),
