@@ -65,7 +65,7 @@ export function useSheetActions({ space, layout, places, place, getPicture }: In
             tone: "plain",
             title: `Sheet ${sheet.name} deleted; the model keeps what it showed.`,
             action: (
-              <Button size="small" onClick={() => void addAndOpen(sheet.name, withPositions(layout, places))}>
+              <Button size="small" onClick={() => void sheets.add(sheet.name, withPositions(layout, places)).then((id) => id !== undefined && open(id))}>
                 Bring it back
               </Button>
             ),
