@@ -1,6 +1,7 @@
 /** Which device answers on each port that a machine is bound to, against what its role and the plan of the port want. */
 import type { AddressSpace } from "../domain/address-space/address-space";
 import type { AsBuiltDifference } from "../domain/as-built/as-built";
+import { comparePort } from "../domain/as-built/compare-port";
 import { formatProblem } from "../domain/core/problem-texts";
 import { listMachines } from "../domain/instantiation/list-machines";
 import { listBoundRoles } from "../domain/mapping/bindings";
@@ -10,7 +11,7 @@ import { readSourceNow } from "./live-sources.server";
 
 export type PortComparison = { readonly differences: readonly AsBuiltDifference[]; readonly remarks: readonly string[] };
 
-type Wanted = { readonly path: string; readonly source: PlannedSource; readonly port: number; readonly vendorId: number | undefined; readonly deviceId: number | undefined };
+type Wanted = { readonly path: string; readonly source: PlannedSource; readonly port: number; readonly vendorId: number; readonly deviceId: number };
 
 /** A port that cannot be read contradicts nothing; a remark says that it was not compared. */
 export async function comparePorts(organizationId: string, space: AddressSpace, sources: readonly PlannedSource[]): Promise<PortComparison> {
@@ -22,7 +23,10 @@ export async function comparePorts(organizationId: string, space: AddressSpace, 
     const alias = plan?.deviceAlias;
     const read = await readSourceNow(organizationId, source.id, { kind: "port", port, ...(alias ? { alias } : {}) });
     if (!read.ok) remarks.push(`${wanted.path}: port ${port} of ${source.name} was not compared. ${read.problems.map(formatProblem).join(" ")}`);
-    else if (read.value.value.kind === "port") differences.push(...judge(wanted, plan?.serialNumber, read.value.value));
+    else if (read.value.value.kind === "port") {
+      const serial = plan?.serialNumber === undefined ? {} : { serialNumber: plan.serialNumber };
+      differences.push(...comparePort({ ...wanted, ...serial, place: `port ${port} of ${source.name}` }, read.value.value));
+    }
   }
   return { differences, remarks };
 }
@@ -31,24 +35,9 @@ function listWanted(space: AddressSpace, sources: readonly PlannedSource[]): Wan
   return listMachines(space).flatMap(({ key, name }) =>
     listBoundRoles(space, key).flatMap(({ role, value, binding }): Wanted[] => {
       const source = sources.find((s) => s.id === binding?.sourceId);
-      if (value.kind !== "io-link-device" || !source || binding?.port === undefined || !isIoLinkMaster(source.kind)) return [];
-      return [{ path: `${name}/${role}`, source, port: binding.port, vendorId: value.vendorId, deviceId: value.deviceId }];
+      const { kind, vendorId, deviceId } = value;
+      if (kind !== "io-link-device" || !source || binding?.port === undefined || !isIoLinkMaster(source.kind)) return [];
+      return vendorId === undefined || deviceId === undefined ? [] : [{ path: `${name}/${role}`, source, port: binding.port, vendorId, deviceId }];
     }),
   );
-}
-
-type Found = { readonly vendorId?: number; readonly deviceId?: number; readonly serialNumber?: string };
-
-function judge({ path, source, port, vendorId, deviceId }: Wanted, serialNumber: string | undefined, found: Found): AsBuiltDifference[] {
-  const place = `port ${port} of ${source.name}`;
-  const tell = (detail: string, released: string, seen: string | null): AsBuiltDifference => ({ aspect: "device", kind: "device-differs", path, detail: `${place}: ${detail}`, released, found: seen });
-  if (vendorId === undefined || deviceId === undefined) return [];
-  if (found.vendorId === undefined || found.deviceId === undefined) return [tell("no device answers", formatIds(vendorId, deviceId), null)];
-  if (found.vendorId !== vendorId || found.deviceId !== deviceId) return [tell("another device", formatIds(vendorId, deviceId), formatIds(found.vendorId, found.deviceId))];
-  if (!serialNumber || found.serialNumber === undefined || found.serialNumber === serialNumber) return [];
-  return [tell("another one of the same kind", `serial number ${serialNumber}`, `serial number ${found.serialNumber}`)];
-}
-
-function formatIds(vendorId: number, deviceId: number): string {
-  return `vendor ${vendorId}, device ${deviceId}`;
 }

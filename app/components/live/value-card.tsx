@@ -1,11 +1,13 @@
 import { Eye, EyeOff } from "lucide-react";
-import type { ReactNode } from "react";
+import { Fragment, type ReactNode } from "react";
+import { makeCodeLines } from "~/domain/live/code-lines";
 import type { BrowsedNode, NodeCard } from "~/domain/live/live-node";
 import { formatAge } from "~/domain/live/format-live";
 import { NodeClassGlyph } from "../notation/node-class-glyph";
 import { StatusBadge } from "../notation/status-badge";
 import { Button } from "../ui/button";
 import { cx } from "../ui/cx";
+import { CopyField } from "./copy-field";
 import { getAge } from "./live-values";
 import { useLiveValue, useNow, useStream } from "./live-context";
 import { RangeScale } from "./range-scale";
@@ -55,6 +57,7 @@ export function ValueCard({ node, path, state, isWatched, onWatch, onOpenMember,
       {card ? <Facts node={node} card={card} /> : null}
       {card && card.states.length > 0 ? <States node={node} card={card} /> : null}
       {act}
+      {card ? <TakeAway card={card} path={path} /> : null}
       {card?.description ? <p className="mt-3 text-small text-ink-2">{card.description}</p> : null}
       {members.length > 0 ? <Members members={members} onOpen={onOpenMember} /> : null}
     </section>
@@ -124,6 +127,34 @@ function Facts({ node, card }: { node: BrowsedNode; card: NodeCard }) {
       ) : null}
       {card.executable === null ? null : <Fact name="Executable">{card.executable ? "true" : "false"}</Fact>}
     </dl>
+  );
+}
+
+/** What one takes from here into a program or a mail. */
+function TakeAway({ card, path }: { card: NodeCard; path: readonly BrowsedNode[] }) {
+  const lines = card.nodeClass === "Variable" ? makeCodeLines(card.nodeId) : [];
+  return (
+    <details className="mt-3 text-small">
+      <summary className="w-fit text-ink-2">Copy NodeId, path or code</summary>
+      <dl className="mt-1 grid grid-cols-[82px_minmax(0,1fr)] text-note leading-6">
+        <dt className="text-ink-3">NodeId</dt>
+        <dd>
+          <CopyField label="NodeId" value={card.nodeId} />
+        </dd>
+        <dt className="text-ink-3">Path</dt>
+        <dd>
+          <CopyField label="path" value={toPathText(path)} />
+        </dd>
+        {lines.map(({ language, text }) => (
+          <Fragment key={language}>
+            <dt className="text-ink-3">{language}</dt>
+            <dd>
+              <CopyField label={`${language} line`} value={text} />
+            </dd>
+          </Fragment>
+        ))}
+      </dl>
+    </details>
   );
 }
 
