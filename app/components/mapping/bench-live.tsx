@@ -32,6 +32,7 @@ export function BenchLive({
   const registers = listRegisterPlaces(bench.points, sources, machine);
   const [chosen, setChosen] = useState<Readonly<Record<string, string>>>(() => chooseFor(places, roles, machines[0]));
   const [isFollowing, setFollowing] = useState(false);
+  const [isBusy, setBusy] = useState(false);
   const [state, setState] = useState<{ failures: readonly string[]; at: string } | undefined>(undefined);
   const latest = useRef({ chosen, registers });
   latest.current = { chosen, registers };
@@ -127,7 +128,15 @@ export function BenchLive({
         ))}
       </div>
       <div className="flex flex-wrap items-center gap-2">
-        <Button size="small" icon={RefreshCw} onClick={() => void readAll()}>
+        <Button
+          size="small"
+          icon={RefreshCw}
+          busy={isBusy}
+          onClick={() => {
+            setBusy(true);
+            void readAll().finally(() => setBusy(false));
+          }}
+        >
           Read once
         </Button>
         <Button
