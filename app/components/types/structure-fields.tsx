@@ -17,9 +17,9 @@ import type { DataTypeEdit } from "./use-data-type-edit";
 type Props = { space: AddressSpace; node: DataTypeNode; isUnion: boolean; readOnly: boolean; edit: DataTypeEdit };
 
 const COLUMNS = [
-  { title: "Name", width: "16%" },
-  { title: "DataType", width: "19%" },
-  { title: "Rank", width: "12%" },
+  { title: "Name", width: "15%" },
+  { title: "DataType", width: "18%" },
+  { title: "Rank", width: "15%" },
   { title: "Sizes", width: "7%" },
   { title: "Longest", width: "8%" },
   { title: "Optional", width: "52px" },
