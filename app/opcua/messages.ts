@@ -116,6 +116,8 @@ export const toParentSchema = z.discriminatedUnion("kind", [
     missing: z.array(z.string()),
   }),
   z.object({ kind: z.literal("sessions"), sessions: z.array(sessionSchema) }),
+  /** Resident memory, MB, and share of one processor over the last seconds, 0 … 1. */
+  z.object({ kind: z.literal("load"), memory: z.number(), processor: z.number() }),
   z.object({ kind: z.literal("log"), level: z.enum(["info", "warning", "error"]), text: z.string() }),
   z.object({
     kind: z.literal("failed"),

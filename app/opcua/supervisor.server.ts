@@ -10,6 +10,7 @@ import { existsSync } from "node:fs";
 import { join } from "node:path";
 import { createInterface } from "node:readline";
 import { stripVTControlCharacters } from "node:util";
+import { formatProblem } from "~/domain/core/problem-texts";
 import { problem, type Problem } from "~/domain/core/result";
 import type { FeedInput } from "~/domain/mapping/plan-readings";
 import type { LogLine, TestServerStage, TestServerState } from "~/domain/simulation/test-server-state";
@@ -28,6 +29,8 @@ export type SupervisorOptions = {
   maxRunning?: number;
   /** Old space of a child, MB. */
   maxMemory?: number;
+  /** Waits before a crashed child is started again, ms; after as many crashes it stays failed. */
+  restartDelays?: readonly number[];
 };
 
 /** What the page shows of a server before its process runs. */
@@ -47,6 +50,14 @@ type Entry = {
   certificate: Buffer | undefined;
   child: ChildProcess | undefined;
   startTimer: NodeJS.Timeout | undefined;
+  restartTimer: NodeJS.Timeout | undefined;
+  message: StartMessage | undefined;
+  /** In a row; a server that ran for a while begins anew. */
+  crashes: number;
+  /** What the child said of itself before it went. */
+  lastWords: Problem | undefined;
+  /** Why it was started again. */
+  restart: Problem | undefined;
   /** Settles when the process is gone. */
   gone: Promise<void>;
 };
@@ -56,6 +67,9 @@ const NOISE = /\[NODE-OPCUA-W27\]|--security-revert=CVE-2023-46809/;
 const LOG_LIMIT = 400;
 const LAST_LINES = 5;
 const FINISHED_LIMIT = 24;
+const RESTART_DELAYS = [1_000, 5_000, 20_000];
+/** Running as long as this, a server counts as recovered, ms. */
+const RECOVERED = 300_000;
 
 export class Supervisor {
   readonly #options: Required<SupervisorOptions>;
@@ -69,6 +83,7 @@ export class Supervisor {
       stopTimeout: options.stopTimeout ?? 3_000,
       maxRunning: options.maxRunning ?? 8,
       maxMemory: options.maxMemory ?? 1024,
+      restartDelays: options.restartDelays ?? RESTART_DELAYS,
     };
   }
 
@@ -118,13 +133,15 @@ export class Supervisor {
       certificateThumbprint: null,
       simulation: null,
       feed: null,
+      load: null,
       sessions: [],
       problems: [],
       sampleInstances: [],
       landingNode: null,
       servedSeq: null,
     };
-    this.#entries.set(seed.id, { state, log: [], certificate: undefined, child: undefined, startTimer: undefined, gone: Promise.resolve() });
+    const none = { certificate: undefined, child: undefined, startTimer: undefined, restartTimer: undefined, message: undefined, lastWords: undefined, restart: undefined };
+    this.#entries.set(seed.id, { ...none, state, log: [], crashes: 0, gone: Promise.resolve() });
     this.#forgetFinished();
     this.#emit({ kind: "state", state });
     return state;
@@ -139,8 +156,14 @@ export class Supervisor {
       this.#fail(entry, problem("test-server.not-built", { file }));
       return;
     }
+    entry.message = message;
     this.#update(entry, { stage: "process", ...content });
-    const child = fork(file, [], {
+    this.#fork(entry, message);
+  }
+
+  #fork(entry: Entry, message: StartMessage): void {
+    entry.lastWords = undefined;
+    const child = fork(this.#options.entry, [], {
       execArgv: [`--max-old-space-size=${this.#options.maxMemory}`],
       silent: true,
       serialization: "advanced",
@@ -190,6 +213,7 @@ export class Supervisor {
   async #end(entry: Entry): Promise<void> {
     const { child } = entry;
     clearTimeout(entry.startTimer);
+    clearTimeout(entry.restartTimer);
     if (!child || child.exitCode !== null || child.signalCode !== null) return;
     if (child.connected) child.send({ kind: "stop" }, () => undefined);
     const term = setTimeout(() => child.kill("SIGTERM"), this.#options.stopTimeout / 2);
@@ -224,11 +248,16 @@ export class Supervisor {
       case "sessions":
         this.#update(entry, { sessions: message.sessions });
         return;
+      case "load":
+        this.#update(entry, { load: { memory: message.memory, processor: message.processor } });
+        return;
       case "log":
         this.#log(entry, message.level, message.text);
         return;
       case "failed":
-        this.#fail(entry, problem(message.code, message.data));
+        entry.lastWords = problem(message.code, message.data);
+        // Of a server that ran its process's end decides: it may be started again.
+        if (entry.state.state !== "running") this.#fail(entry, entry.lastWords);
         return;
       case "stopped":
         this.#log(entry, "info", "Stopped.");
@@ -248,7 +277,7 @@ export class Supervisor {
       endpointUrl: message.endpointUrl,
       certificateThumbprint: message.certificateThumbprint,
       simulation: { moving, fixed },
-      problems: missing.slice(0, 20).map((node) => problem.warning("test-server.node-missing", { node }, { node })),
+      problems: [...(entry.restart ? [entry.restart] : []), ...missing.slice(0, 20).map((node) => problem.warning("test-server.node-missing", { node }, { node }))],
     });
   }
 
@@ -259,13 +288,30 @@ export class Supervisor {
     if (state !== "starting" && state !== "running") return;
     const lines = entry.log.filter((line) => line.text !== "Stopped.").slice(-LAST_LINES);
     const lastLines = lines.map((line) => line.text).join("\n") || "The process wrote nothing.";
-    this.#fail(entry, problem("test-server.exited", { reason: signal ? `signal ${signal}` : `exit code ${String(code)}`, lastLines }));
+    const reason = signal ? `signal ${signal}` : `exit code ${String(code)}`;
+    if (state === "running" && this.#startAgain(entry, entry.lastWords ? formatProblem(entry.lastWords) : reason)) return;
+    this.#fail(entry, entry.lastWords ?? problem("test-server.exited", { reason, lastLines }));
+  }
+
+  /** At the same address after a while that grows; false when it crashed too often in a row. */
+  #startAgain(entry: Entry, reason: string): boolean {
+    const { message, state } = entry;
+    if (state.runningAt !== null && Date.now() - Date.parse(state.runningAt) > RECOVERED) entry.crashes = 0;
+    const delay = this.#options.restartDelays[entry.crashes];
+    if (delay === undefined || !message) return false;
+    entry.crashes++;
+    entry.restart = problem.warning("test-server.restarted", { reason, crashes: entry.crashes, seconds: delay / 1000 });
+    const port = Number(/:(\d+)/.exec(state.endpointUrl?.replace("opc.tcp:", "") ?? "")?.[1] ?? message.port);
+    this.#log(entry, "error", formatProblem(entry.restart));
+    this.#update(entry, { state: "starting", stage: "process", runningAt: null, endpointUrl: null, load: null, sessions: [], problems: [entry.restart] });
+    entry.restartTimer = setTimeout(() => this.#fork(entry, { ...message, port }), delay);
+    return true;
   }
 
   #fail(entry: Entry, ...problems: readonly Problem[]): void {
     if (entry.state.state === "stopping" || entry.state.state === "failed") return;
     clearTimeout(entry.startTimer);
-    this.#update(entry, { state: "failed", endedAt: new Date().toISOString(), endpointUrl: null, sessions: [], problems });
+    this.#update(entry, { state: "failed", endedAt: new Date().toISOString(), endpointUrl: null, load: null, sessions: [], problems });
   }
 
   #update(entry: Entry, change: Partial<TestServerState>): void {

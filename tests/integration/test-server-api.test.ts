@@ -22,7 +22,7 @@ let supervisor: Supervisor;
 
 beforeAll(async () => {
   bundle = await buildTestServer("test-server-api");
-  supervisor = singleton("test-server-supervisor", () => new Supervisor({ entry: bundle.entry }));
+  supervisor = singleton("test-server-supervisor", () => new Supervisor({ entry: bundle.entry, restartDelays: [] }));
   onShutdown("test servers", () => supervisor.stopAll());
   app = await startTestApp();
   ({ cookie, organizationId } = await setUpFirst(app));

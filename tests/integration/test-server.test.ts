@@ -145,8 +145,11 @@ describe("a running test server", () => {
     const secured = await startWinch(newSupervisor(), makeSeed("secured"));
     const offered = await withStranger(secured.endpointUrl, SECURED, (_session, client) => client.getEndpoints());
     expect(new Set(offered.map((e) => `${e.securityPolicyUri?.split("#")[1]} ${MessageSecurityMode[e.securityMode]}`))).toEqual(
-      new Set(["Basic256Sha256 Sign", "Basic256Sha256 SignAndEncrypt"]),
+      new Set(["Basic256Sha256", "Aes128_Sha256_RsaOaep", "Aes256_Sha256_RsaPss"].flatMap((policy) => [`${policy} Sign`, `${policy} SignAndEncrypt`])),
     );
+    for (const policy of [SecurityPolicy.Aes128_Sha256_RsaOaep, SecurityPolicy.Aes256_Sha256_RsaPss]) {
+      await expect(withStranger(secured.endpointUrl, { mode: MessageSecurityMode.SignAndEncrypt, policy }, async () => "in")).resolves.toBe("in");
+    }
     expect(new Set(offered.flatMap((e) => (e.userIdentityTokens ?? []).map((t) => UserTokenType[t.tokenType])))).toContain("UserName");
     await expect(withStranger(secured.endpointUrl, OPEN, async () => "in")).rejects.toThrow();
 
@@ -230,7 +233,7 @@ describe("the end of a test server", () => {
   });
 
   it("is a failed state with its last lines when the process dies, and others go on", async () => {
-    await startWinch(newSupervisor(), makeSeed("dies"));
+    await startWinch(newSupervisor({ restartDelays: [] }), makeSeed("dies"));
     const other = await startWinch(supervisor, makeSeed("lives"));
     process.kill(supervisor.getPid("dies") ?? 0, "SIGKILL");
     const failed = await waitFor(() => {
@@ -241,6 +244,27 @@ describe("the end of a test server", () => {
     expect(failed.problems[0]?.data?.lastLines).toMatch(/Listening on/);
     expect(failed.endpointUrl).toBeNull();
     expect(await isListening(toPort(other.endpointUrl))).toBe(true);
+  });
+
+  it("is started again at the same address after a crash, says why, and gives up in the end", async () => {
+    const first = await startWinch(newSupervisor({ restartDelays: [200] }), makeSeed("again"));
+    process.kill(supervisor.getPid("again") ?? 0, "SIGKILL");
+    await waitFor(() => (supervisor.get("again")?.state === "starting" ? true : undefined));
+    const again = await waitFor(() => {
+      const state = supervisor.get("again");
+      return state?.state === "running" ? state : undefined;
+    }, 60_000);
+    expect(again.endpointUrl).toBe(first.endpointUrl);
+    expect(again.problems[0]).toMatchObject({ code: "test-server.restarted", data: { reason: "signal SIGKILL", crashes: 1 } });
+    process.kill(supervisor.getPid("again") ?? 0, "SIGKILL");
+    await waitFor(() => (supervisor.get("again")?.state === "failed" ? true : undefined));
+  });
+
+  it("tells its memory and load", async () => {
+    await startWinch(newSupervisor(), makeSeed("load"));
+    const load = await waitFor(() => supervisor.get("load")?.load ?? undefined, 20_000);
+    expect(load.memory).toBeGreaterThan(20);
+    expect(load.processor).toBeGreaterThanOrEqual(0);
   });
 
   it("says why when the model's file cannot be loaded", async () => {

@@ -46,7 +46,7 @@ export function StartTestServer({ mayRun, isAgain, hasMachines }: { mayRun: bool
       <details className="text-small">
         <summary className="w-fit text-ink-2">Security and status</summary>
         <div className="mt-2 grid gap-3 border-l border-rule pl-4">
-          <p className="text-ink-2">Basic256Sha256 with Sign and SignAndEncrypt; anonymous, or a user whose password is shown once it runs. Only this host reaches it.</p>
+          <p className="text-ink-2">Basic256Sha256, Aes128_Sha256_RsaOaep and Aes256_Sha256_RsaPss with Sign and SignAndEncrypt; anonymous, or a user whose password is shown once it runs. Only this host reaches it.</p>
           <Checkbox
             name="open"
             value="1"

@@ -118,7 +118,7 @@ function Running({ server }: { server: TestServerState }) {
           <CopyField label="endpoint" value={server.endpointUrl ?? ""} />
         </Row>
         <Row name="Security">
-          {server.security.map((one) => (one === "none" ? "None" : "Basic256Sha256, Sign and SignAndEncrypt")).join("; ")}
+          {server.security.map((one) => (one === "none" ? "None" : "Basic256Sha256, Aes128_Sha256_RsaOaep or Aes256_Sha256_RsaPss, Sign and SignAndEncrypt")).join("; ")}
         </Row>
         <Row name="Sign in as">
           anonymous, or user <CopyField label="user name" value={server.tokens.userName} /> with password <CopyField label="password" value={server.tokens.password} />
@@ -145,6 +145,11 @@ function Running({ server }: { server: TestServerState }) {
           {server.simulation?.moving ?? 0} move, {server.simulation?.fixed ?? 0} keep still; status{" "}
           <span className="font-mono">{server.simulatedQuality === "good" ? "Good" : "Uncertain_SimulatedValue"}</span>
         </Row>
+        {server.load ? (
+          <Row name="Load">
+            <span className="font-mono">{server.load.memory} MB</span> of memory, <span className="font-mono">{(server.load.processor * 100).toFixed(0)} %</span> of one processor
+          </Row>
+        ) : null}
         {server.sampleInstances.length > 0 ? (
           <Row name="Instances">
             {server.sampleInstances.join(", ")}: made for this test server only, one of each type, because the model holds types alone

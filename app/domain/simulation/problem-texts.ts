@@ -3,6 +3,7 @@ export const testServerProblemTexts: Readonly<Record<string, string>> = {
   "test-server.not-built": "The test server's program is missing ({file}). Build the application first.",
   "test-server.start": "The test server could not start: {detail}",
   "test-server.start-timeout": "The test server was not ready after {seconds} s and was stopped.",
+  "test-server.restarted": "The process ended by itself ({reason}) and was started again after {seconds} s, crash {crashes} in a row.",
   "test-server.exited": "The test server's process ended by itself ({reason}). Its last lines:\n{lastLines}",
   "test-server.crash": "The test server met an error that it could not handle: {detail}",
   "test-server.message": "The test server's process got a message that it does not understand: {detail}",

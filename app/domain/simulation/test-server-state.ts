@@ -74,6 +74,8 @@ export type TestServerState = {
   readonly simulation: SimulationCounts | null;
   /** Null for a server that only simulates. */
   readonly feed: FeedState | null;
+  /** Resident memory, MB, and share of one processor, 0 … 1; null until the process tells. */
+  readonly load: { readonly memory: number; readonly processor: number } | null;
   readonly sessions: readonly TestServerSession[];
   readonly problems: readonly Problem[];
 };

@@ -15,6 +15,9 @@ export async function createCertificateManager(folder: string, trust: { acceptsU
   return manager;
 }
 
+/** Those of OPC 10000-7 that are neither deprecated nor of elliptic curves. */
+const PROTECTED_POLICIES = [SecurityPolicy.Basic256Sha256, SecurityPolicy.Aes128_Sha256_RsaOaep, SecurityPolicy.Aes256_Sha256_RsaPss];
+
 /** The server as the start message wants it, not yet initialised. It never registers with a discovery server. */
 export function createServer(config: StartMessage, certificates: OPCUACertificateManager, userCertificates: OPCUACertificateManager): OPCUAServer {
   const isOpen = config.security.includes("none");
@@ -28,7 +31,7 @@ export function createServer(config: StartMessage, certificates: OPCUACertificat
     buildInfo: { productName: "Ferrule simulation", manufacturerName: "Ferrule", productUri: "urn:ferrule:simulation" },
     serverCertificateManager: certificates,
     userCertificateManager: userCertificates,
-    securityPolicies: [...(isOpen ? [SecurityPolicy.None] : []), ...(isSecured ? [SecurityPolicy.Basic256Sha256] : [])],
+    securityPolicies: [...(isOpen ? [SecurityPolicy.None] : []), ...(isSecured ? PROTECTED_POLICIES : [])],
     securityModes: [
       ...(isOpen ? [MessageSecurityMode.None] : []),
       ...(isSecured ? [MessageSecurityMode.Sign, MessageSecurityMode.SignAndEncrypt] : []),

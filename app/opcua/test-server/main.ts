@@ -11,6 +11,8 @@ import { toChildSchema, type StartMessage, type ToParentMessage } from "../messa
 /** Sessions are looked at this often while the server runs, ms. */
 const SESSION_REPORT_INTERVAL = 1000;
 const SHUTDOWN_LIMIT = 2500;
+/** The load is told with every so many looks at the sessions. */
+const LOOKS_A_LOAD = 5;
 
 let running: { server: OPCUAServer; timer: NodeJS.Timeout } | undefined;
 let feed: { offer(inputs: readonly FeedInput[]): void; stop(): void } | undefined;
@@ -85,7 +87,16 @@ async function start(config: StartMessage): Promise<void> {
 async function watchSessions(server: OPCUAServer): Promise<NodeJS.Timeout> {
   const { listSessions } = await import("./list-sessions");
   let last = "[]";
+  let looks = 0;
+  let before = { at: performance.now(), used: process.cpuUsage() };
+  const reportLoad = (): void => {
+    const now = { at: performance.now(), used: process.cpuUsage() };
+    const used = now.used.user + now.used.system - before.used.user - before.used.system;
+    send({ kind: "load", memory: Math.round(process.memoryUsage.rss() / 1e6), processor: used / 1000 / (now.at - before.at) });
+    before = now;
+  };
   const report = (): void => {
+    if (++looks % LOOKS_A_LOAD === 0) reportLoad();
     const sessions = listSessions(server);
     const text = JSON.stringify(sessions);
     if (text === last) return;
