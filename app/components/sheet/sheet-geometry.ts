@@ -9,6 +9,8 @@ export const FOOT_HEIGHT = 22;
 export const SHADOW = 4;
 export const ZONE_WIDTH = 320;
 export const ZONE_HEIGHT = 200;
+/** Below this zoom nothing can be worked on. */
+export const LEGIBLE = 0.5;
 
 export function isOverlapping(a: Rect, b: Rect, gap = 0): boolean {
   return (

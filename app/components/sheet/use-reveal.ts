@@ -5,10 +5,9 @@ import { findParent } from "~/domain/address-space/browse";
 import type { NodeKey } from "~/domain/address-space/node-id";
 import { useOpenModel, useView } from "../model/use-model";
 import type { SheetControl } from "./sheet-control";
-import { HEAD_HEIGHT, ROW_HEIGHT, type Point, type Rect } from "./sheet-geometry";
+import { HEAD_HEIGHT, LEGIBLE, ROW_HEIGHT, type Point, type Rect } from "./sheet-geometry";
 import type { Scene } from "./sheet-scene";
 
-const LEGIBLE = 0.5;
 const MARGIN = 28;
 
 /** Brings a node into sight when somebody asked for it: its card, or the card in whose rows it stands; a hidden one is drawn first. */

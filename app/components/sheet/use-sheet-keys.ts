@@ -8,7 +8,7 @@ import { findMemberOwner } from "../model/member-owner";
 import { useOpenModel } from "../model/use-model";
 import { listNeighbours, listUsers } from "./neighbours";
 import type { SheetControl } from "./sheet-control";
-import type { Point, Rect } from "./sheet-geometry";
+import { LEGIBLE, type Point, type Rect } from "./sheet-geometry";
 import type { Scene } from "./sheet-scene";
 import { findNextNode, type WalkKey } from "./walk-cards";
 
@@ -34,7 +34,7 @@ const ARROWS: Readonly<Record<string, Point>> = {
 /** The keys of the drawing. Everything that the mouse does can be done with them. */
 export function useSheetKeys({ space, scene, rects, control, print, selectedLine, selectedCaption, clearLine }: Inputs) {
   const { view, actions } = useOpenModel();
-  const { fitView, zoomIn, zoomOut } = useReactFlow();
+  const { fitView, getZoom, zoomIn, zoomOut } = useReactFlow();
 
   function walk(event: KeyboardEvent): void {
     const at = view.getState().selection.at(-1);
@@ -77,7 +77,10 @@ export function useSheetKeys({ space, scene, rects, control, print, selectedLine
   const plain: Readonly<Record<string, () => void>> = {
     F2: () => {
       const key = view.getState().selection.at(-1);
-      if (key !== undefined && actions.mayChange(key)) view.startRenaming(key);
+      if (key === undefined || !actions.mayChange(key)) return;
+      // From afar a name is no field; the view comes near first.
+      if (getZoom() < LEGIBLE) view.reveal(key);
+      view.startRenaming(key);
     },
     Delete: remove,
     Backspace: remove,
