@@ -111,6 +111,76 @@ describe("as-built reports", () => {
   });
 });
 
+describe("an endpoint of a gateway", () => {
+  it("proves what was delivered to it, and nothing else does", async () => {
+    const { author, model, endpointId } = await prepareEndpoint();
+    const { writeBatch } = await import("~/db/client.server");
+    const { findRevisionByNumber } = await import("~/db/repositories/models.server");
+    const { addDeliveryStatement, addReleaseStatement, findDelivery } = await import("~/db/repositories/releases.server");
+    const packHash = (await findRevisionByNumber(model.id, 0))?.packHash ?? "";
+    const at = new Date();
+    const texts = { version: "1.0.0", modelVersion: "1.0.0", publicationDate: "2026-01-01T00:00:00Z", fileName: "winch.zip", keyId: "none", notes: "", releasedBy: "Ada" };
+    await writeBatch([
+      addReleaseStatement({ ...texts, id: "release-1", organizationId: model.organizationId, modelId: model.id, revision: 0, packHash, bundleHash: packHash, bundleSize: 1, files: [], required: [], at }),
+      addDeliveryStatement({ id: "delivery-1", releaseId: "release-1", gatewayId: "gw-1", gatewayName: "GW-North", bundleHash: packHash, state: "loaded", sentBy: "Ada", sentAt: at, note: "" }),
+    ]);
+    const json = { targetId: serverId, state: 0, watchSeconds: 0, deliveryId: "delivery-1" };
+    expect((await app.call("POST", `/api/v1/models/${modelId}/as-built-reports`, { cookie, json })).status).toBe(422);
+    // The newest check of the signal was outside: the report stands, the delivery does not.
+    const { body } = await report({ ...json, targetId: endpointId });
+    expect(body).toMatchObject({ verdict: "as released", delivery: { version: "1.0.0", gateway: "GW-North" } });
+    expect((await findDelivery("delivery-1"))?.state).toBe("loaded");
+    const { recordPointCheck } = await import("~/services/record-point-check.server");
+    await recordPointCheck(author, model, { nodeId: `nsu=${WINCH_URI};i=6100`, stimulus: "again", localReading: 1, shownValue: 1, tolerance: 0.5, unit: "", note: "" });
+    await report({ ...json, targetId: endpointId });
+    expect(await findDelivery("delivery-1")).toMatchObject({ state: "proved", provedBy: author.name });
+  });
+
+  it("is compared on a schedule, with a mail when the verdict changes", async () => {
+    const { author, model, endpointId } = await prepareEndpoint();
+    const { writeBatch } = await import("~/db/client.server");
+    const { listSchedules, updateScheduleStatement } = await import("~/db/repositories/as-built-schedules.server");
+    const { listMail } = await import("~/db/repositories/outbox.server");
+    const { runDueSchedules, saveSchedule } = await import("~/services/schedule-as-built.server");
+    expect((await saveSchedule(author, model, { endpointId: serverId, everyMinutes: 60 })).problems.map((p) => p.code)).toEqual(["as-built.endpoint"]);
+    await saveSchedule(author, model, { endpointId, everyMinutes: 60 });
+    const now = new Date(Date.now() + 1_000);
+    await runDueSchedules(now);
+    const [first] = await listSchedules(model.id);
+    expect(first).toMatchObject({ lastVerdict: "as released", nextAt: new Date(now.getTime() + 3_600_000) });
+    expect(await listMail(model.organizationId, 10)).toEqual([]);
+    await runDueSchedules(now);
+    await writeBatch([updateScheduleStatement(first?.id ?? "", { lastVerdict: "differs" })]);
+    await runDueSchedules(new Date(now.getTime() + 3_600_000));
+    expect(await listMail(model.organizationId, 10)).toMatchObject([{ kind: "as-built", subject: "Winch gateway: as released" }]);
+  });
+});
+
+/** The test server once more, as an endpoint that the team named. */
+async function prepareEndpoint() {
+  const { writeBatch } = await import("~/db/client.server");
+  const { addAllowanceStatement, findEndpoint, saveEndpointStatement } = await import("~/db/repositories/endpoints.server");
+  const { findModel } = await import("~/db/repositories/models.server");
+  const { listPeople } = await import("~/db/repositories/people.server");
+  const model = await findModel(modelId);
+  if (!model) throw new Error("The model is gone");
+  const { organizationId } = model;
+  const [person] = (await listPeople(organizationId)).filter((one) => one.roles.includes("administrator"));
+  const author = { userId: person?.id ?? "", name: person?.name ?? "", email: "", memberships: [] };
+  if (!(await findEndpoint("endpoint-1"))) {
+    const supervisor = singleton<Supervisor>("test-server-supervisor", () => new Supervisor({ entry: bundle.entry }));
+    const now = new Date();
+    const certificate = supervisor.getCertificate(serverId)?.toString("base64") ?? null;
+    const url = supervisor.get(serverId)?.endpointUrl ?? "";
+    const security = { securityMode: "sign-and-encrypt", securityPolicy: "Basic256Sha256", tokenKind: "anonymous", serverCertificate: certificate };
+    await writeBatch([
+      addAllowanceStatement({ id: "place-1", organizationId, host: "127.0.0.1", portFrom: 1, portTo: 65_535, note: "", addedBy: "Ada", addedAt: now }),
+      saveEndpointStatement({ ...security, id: "endpoint-1", organizationId, name: "Winch gateway", url, note: "", updatedBy: "Ada", updatedAt: now }),
+    ]);
+  }
+  return { author, model, endpointId: "endpoint-1" };
+}
+
 async function findPublicKey(id: string): Promise<string> {
   const { findSigningKeyById } = await import("~/db/repositories/releases.server");
   return (await findSigningKeyById(id))?.publicKey ?? "";
