@@ -57,7 +57,8 @@ export function makeSheet(modelId: string, name: string, position: number, autho
 export async function moveSheet(author: Caller, sheet: SheetRow, place: number): Promise<void> {
   const others = (await listSheets(sheet.modelId)).filter((other) => other.id !== sheet.id);
   const ordered = [...others.slice(0, place), sheet, ...others.slice(place)];
-  await writeBatch(ordered.map((row, position) => placeSheetStatement(row.id, position)));
+  const [first, ...rest] = ordered.map((row, position) => placeSheetStatement(row.id, position));
+  if (first) await writeBatch([first, ...rest]);
   publish(`sheet:${sheet.modelId}`, { sheetId: sheet.id, place, author: author.name });
 }
 
