@@ -71,10 +71,11 @@ test("a model that others require is not deleted, and what it gains reaches them
   const { createModel } = await import("~/services/create-model.server");
   const { findModelByNamespace } = await import("~/db/repositories/models.server");
   const types = await findModelByNamespace(organizationId, intent.namespaceUri);
+  // Machines hold a frozen revision (tests/integration/pins.test.ts); types stand on what the others are now.
   const hall = await createModel(caller, organizationId, {
-    kind: "machines",
-    name: "Hall",
-    namespaceUri: "http://merrow.example/UA/WinchHall/",
+    kind: "types",
+    name: "Winch extras",
+    namespaceUri: "http://merrow.example/UA/WinchExtras/",
     version: "1.0.0",
     requiredModels: [intent.namespaceUri],
   });

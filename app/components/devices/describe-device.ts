@@ -11,7 +11,8 @@ import type {
 } from "~/domain/iodd/device-description";
 import { findIoddUnit } from "~/domain/iodd/iodd-units";
 import { formatBound } from "~/domain/live/format-live";
-import { formatScale, formatType, pickText } from "../frames/frame-fields";
+import { formatScale, formatType } from "../frames/frame-fields";
+import { pickText } from "../frames/field-name";
 
 export type ParameterRow = {
   readonly key: string;

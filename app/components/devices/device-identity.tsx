@@ -1,4 +1,4 @@
-import { pickText } from "~/components/frames/frame-fields";
+import { pickText } from "~/components/frames/field-name";
 import { Block } from "~/components/ui/page";
 import { RowHead, Table, TableScroll, Td, Th, Tr } from "~/components/ui/table";
 import { formatCycle } from "./describe-device";

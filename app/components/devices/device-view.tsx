@@ -2,7 +2,7 @@ import { Download, Trash2 } from "lucide-react";
 import { useState } from "react";
 import { Form, href, Link } from "react-router";
 import { FrameReader } from "~/components/frames/frame-reader";
-import { pickText } from "~/components/frames/frame-fields";
+import { pickText } from "~/components/frames/field-name";
 import { ProblemList } from "~/components/models/problem-list";
 import { Button, buttonClass, TextLink } from "~/components/ui/button";
 import { cx } from "~/components/ui/cx";

@@ -1,7 +1,8 @@
 /** What the ruler shows of an image: its fields with names, types, ranges and places in words. Pure. */
-import type { IoddSimpleDatatype, IoddTexts, ProcessDataImage, RecordItem } from "~/domain/iodd/device-description";
+import type { IoddSimpleDatatype, ProcessDataImage, RecordItem } from "~/domain/iodd/device-description";
 import { formatBound } from "~/domain/live/format-live";
 import { planFrame, type FieldPlan, type FramePlan } from "~/domain/mapping/decode-frame";
+import { findFieldName, pickText } from "./field-name";
 
 export type FrameField = {
   readonly subindex: number;
@@ -26,10 +27,6 @@ export type FrameField = {
 export type FrameView = { readonly plan: FramePlan; readonly octets: number; readonly fields: readonly FrameField[] };
 
 export type FrameViewOptions = { readonly profileCharacteristic?: readonly number[]; readonly language?: string };
-
-export function pickText(texts: IoddTexts | undefined, language = "en"): string | undefined {
-  return texts?.[language] ?? Object.values(texts ?? {})[0];
-}
 
 /** Fields in the order of transmission: the highest bit first. */
 export function viewFrame(image: ProcessDataImage, options: FrameViewOptions = {}): FrameView {
@@ -59,10 +56,9 @@ function toField(
   const last = bitOffset + bitLength - 1;
   const first = octets - 1 - (last >> 3);
   const end = octets - 1 - (bitOffset >> 3);
-  const own = pickText(item?.name ?? (plan.subindex === 0 ? image.name : undefined), language);
   return {
     subindex: plan.subindex,
-    name: own ?? plan.id.replace(/_/g, " "),
+    name: findFieldName(image, plan.subindex, language) ?? plan.id.replace(/_/g, " "),
     description: pickText(item?.description, language),
     plan,
     bitOffset,

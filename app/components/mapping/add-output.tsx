@@ -2,7 +2,8 @@ import { ArrowLeftFromLine } from "lucide-react";
 import { Button } from "~/components/ui/button";
 import type { RowContent } from "~/domain/mapping/mapping";
 import { toRowId } from "~/domain/mapping/type-mapping";
-import { viewRoleFrame, type Roles } from "./describe-source";
+import type { Roles } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import type { Member } from "./mapping-scene";
 import type { MappingActions } from "./use-mapping-actions";
 

@@ -3,7 +3,7 @@ import { formatProblem } from "~/domain/core/problem-texts";
 import type { Direction } from "~/domain/iodd/device-description";
 import { parseFrameText } from "~/domain/mapping/parse-frame-text";
 import { toFrameId } from "./bench-inputs";
-import { viewRoleFrame } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import type { MappingScene } from "./mapping-scene";
 import type { BenchState } from "./use-bench";
 

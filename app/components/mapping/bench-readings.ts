@@ -4,7 +4,7 @@ import { chooseDecimals, formatNumber } from "~/domain/live/format-live";
 import { formatStatus, isBad, isGood, StatusCode } from "~/domain/mapping/status";
 import type { SampleValue } from "~/domain/mapping/sample";
 import type { NodeTrace, TraceStep } from "~/domain/mapping/trace-row";
-import { viewRoleFrame } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import type { MappingScene, Member } from "./mapping-scene";
 
 export type StationReading = { readonly text: string; readonly unit: string };

@@ -1,5 +1,5 @@
 /** Where a row's value comes from, in words that fit into a cell. Pure; sheet and register use it too. */
-import { viewFrame, type FrameView } from "../frames/frame-fields";
+import { findFieldName } from "../frames/field-name";
 import type { Feed } from "../notation/ferrule-badge";
 import type { ProcessDataImage } from "~/domain/iodd/device-description";
 import type { InputReference, RowContent, SourceReference } from "~/domain/mapping/mapping";
@@ -48,7 +48,7 @@ export function describeSource(source: SourceReference, roles: Roles): string {
 export function describePlace(source: SourceReference, roles: Roles): string {
   switch (source.kind) {
     case "process-data": {
-      const name = findFieldName(roles.get(source.role), source.direction, source.subindex);
+      const name = nameField(roles.get(source.role), source.direction, source.subindex);
       return `${name ?? (source.subindex === 0 ? "process data" : `field ${source.subindex}`)}${source.direction === "out" ? ", as set" : ""}`;
     }
     case "parameter":
@@ -88,19 +88,7 @@ export function listRolesOf(source: SourceReference): string[] {
   return "role" in source ? [source.role] : [];
 }
 
-const views = new WeakMap<ProcessDataImage, FrameView>();
-
-/** The frame of a role's process data, made once a layout. */
-export function viewRoleFrame(role: Role, direction: "in" | "out"): FrameView | undefined {
-  const image = role.layouts?.[direction] as ProcessDataImage | undefined;
-  if (!image) return undefined;
-  const known = views.get(image);
-  if (known) return known;
-  const view = viewFrame(image, { profileCharacteristic: role.profileCharacteristic ?? [] });
-  views.set(image, view);
-  return view;
-}
-
-function findFieldName(role: Role | undefined, direction: "in" | "out", subindex: number): string | undefined {
-  return role && viewRoleFrame(role, direction)?.fields.find((field) => field.subindex === subindex)?.name;
+function nameField(role: Role | undefined, direction: "in" | "out", subindex: number): string | undefined {
+  const image = role?.layouts?.[direction] as ProcessDataImage | undefined;
+  return image && findFieldName(image, subindex);
 }

@@ -6,7 +6,8 @@ import { compileFormula } from "~/domain/mapping/formula";
 import type { Target } from "~/domain/mapping/list-targets";
 import type { SourceReference } from "~/domain/mapping/mapping";
 import { CommitInput } from "./commit-input";
-import { describeSource, viewRoleFrame, type Roles } from "./describe-source";
+import { describeSource, type Roles } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import type { Member } from "./mapping-scene";
 
 type Formula = Extract<SourceReference, { kind: "formula" }>;

@@ -1,6 +1,7 @@
 /** A reference of a kind as it starts, on the role that suits it best. Pure. */
 import type { SourceReference } from "~/domain/mapping/mapping";
-import { viewRoleFrame, type Roles } from "./describe-source";
+import type { Roles } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 
 const suits: Readonly<Partial<Record<SourceReference["kind"], string>>> = {
   "process-data": "io-link-device",

@@ -7,7 +7,7 @@ import { IconButton } from "~/components/ui/button";
 import { Input } from "~/components/ui/field";
 import { Menu, type MenuEntry } from "~/components/ui/menu";
 import type { Direction } from "~/domain/iodd/device-description";
-import { viewRoleFrame } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import type { RoleView } from "./mapping-scene";
 import type { FieldReference } from "./use-mapping-actions";
 

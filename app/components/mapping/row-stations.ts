@@ -2,7 +2,8 @@
 import type { FrameField } from "../frames/frame-fields";
 import type { Target } from "~/domain/mapping/list-targets";
 import type { RowContent, SourceReference } from "~/domain/mapping/mapping";
-import { describePlace, tableWords, viewRoleFrame, type Roles } from "./describe-source";
+import { describePlace, tableWords, type Roles } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import { describeTransform, nameTransform } from "./describe-transform";
 
 export type Station = {

@@ -6,7 +6,7 @@ import { TraceBench } from "~/domain/mapping/trace-row";
 import { readFields } from "../frames/read-fields";
 import { listPoints, noInputs, toFrameId, toTraceInputs, type BenchInputs, type BenchPoint } from "./bench-inputs";
 import { toReadings, type NodeReading } from "./bench-readings";
-import { viewRoleFrame } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import type { MappingScene } from "./mapping-scene";
 import type { FrameState } from "./role-block";
 

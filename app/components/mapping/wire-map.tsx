@@ -8,7 +8,7 @@ import type { MenuEntry } from "~/components/ui/menu";
 import { Popover } from "~/components/ui/popover";
 import type { DeviceSummary } from "~/services/read-devices.server";
 import type { NodeReading } from "./bench-readings";
-import { viewRoleFrame } from "./describe-source";
+import { viewRoleFrame } from "./view-role-frame";
 import { toPin, type MappingScene } from "./mapping-scene";
 import { MemberList } from "./member-list";
 import { RoleBlock, type FrameState } from "./role-block";
