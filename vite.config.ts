@@ -19,6 +19,8 @@ export default defineConfig({
           testTimeout: 60_000,
           hookTimeout: 60_000,
           pool: "forks",
+          // They wait for processes of their own most of the time.
+          maxWorkers: 2,
         },
       },
       {

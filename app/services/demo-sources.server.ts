@@ -21,7 +21,11 @@ const MODBUS_NAME = "Hall controllers and meters";
 const OPC_UA_MASTER = "M4";
 const BRAIDERS = [1, 2, 3, 4, 5, 6];
 const FRAME_PERIOD_MS = 200;
-const REQUIRED_FILES = ["http://opcfoundation.org/UA/", "http://opcfoundation.org/UA/DI/", "http://opcfoundation.org/UA/IOLink/"];
+const REQUIRED_FILES = [
+  "http://opcfoundation.org/UA/",
+  "http://opcfoundation.org/UA/DI/",
+  "http://opcfoundation.org/UA/IOLink/",
+];
 
 /** Answers a line for the console. The OPC UA master takes some seconds and comes after the rest. */
 export async function startDemoSources(slug: string): Promise<string> {
@@ -42,20 +46,38 @@ export async function startDemoSources(slug: string): Promise<string> {
 
 async function startOpcUaMaster(organizationId: string): Promise<void> {
   const files = REQUIRED_FILES.flatMap((uri) => {
-    const published = getLibrary().list().filter((e) => e.modelUri === uri && e.origin === "published");
+    const published = getLibrary()
+      .list()
+      .filter((e) => e.modelUri === uri && e.origin === "published");
     const [entry] = published.sort((a, b) => ((a.publicationDate ?? "") < (b.publicationDate ?? "") ? 1 : -1));
     return entry?.source.kind === "file" ? [entry.source.path] : [];
   });
-  const master = await startFakeMaster(join(findProjectRoot(), "build/node/fake-master.js"), {
-    masterName: OPC_UA_MASTER,
-    pkiFolder: join(getEnvironment().dataFolder, "pki", "fake-master"),
-    nodeSetFiles: files,
-    portCount: 8,
-    ports: BRAIDERS.map((braider) => ({ port: braider, vendorId: 65_001, deviceId: 1004, serialNumber: `C04-26-${400 + braider}`, parameters: { "36": [0] } })),
-  });
+  const master = await startFakeMaster(
+    join(findProjectRoot(), "build/node/fake-master.js"),
+    {
+      masterName: OPC_UA_MASTER,
+      pkiFolder: join(getEnvironment().dataFolder, "pki", "fake-master"),
+      nodeSetFiles: files,
+      portCount: 8,
+      ports: BRAIDERS.map((braider) => ({
+        port: braider,
+        vendorId: 65_001,
+        deviceId: 1004,
+        serialNumber: `C04-26-${400 + braider}`,
+        parameters: { "36": [0] },
+      })),
+    },
+    (close) => onShutdown("demo OPC UA master", close),
+  );
   const tell = (): void => {
     const time = Date.now();
-    master.setFrames(BRAIDERS.map((braider) => ({ port: braider, octets: encodeConditionMonitor(makeBraiderSignals(braider, time)), isValid: true })));
+    master.setFrames(
+      BRAIDERS.map((braider) => ({
+        port: braider,
+        octets: encodeConditionMonitor(makeBraiderSignals(braider, time)),
+        isValid: true,
+      })),
+    );
   };
   const timer = setInterval(tell, FRAME_PERIOD_MS);
   onShutdown("demo OPC UA master", async () => {
@@ -67,7 +89,10 @@ async function startOpcUaMaster(organizationId: string): Promise<void> {
   await setAddresses(organizationId, [[OPC_UA_MASTER, { url: master.endpointUrl }]]);
 }
 
-async function setAddresses(organizationId: string, addresses: readonly (readonly [name: string, address: Readonly<Record<string, unknown>>])[]): Promise<void> {
+async function setAddresses(
+  organizationId: string,
+  addresses: readonly (readonly [name: string, address: Readonly<Record<string, unknown>>])[],
+): Promise<void> {
   const rows = await listSourceRows(organizationId);
   const statements = addresses.flatMap(([name, address]): Statement[] => {
     const row = rows.find((r) => r.name === name);

@@ -65,7 +65,7 @@ describe("the main job", () => {
   it("adds an analog member in a unit that is found by search", async () => {
     await goTo(/^Register/);
     await page.getByRole("gridcell", { name: "ObjectType WinchType" }).click();
-    await page.getByRole("button", { name: "Member", exact: true }).click();
+    await page.getByRole("toolbar", { name: "Register tools" }).getByRole("button", { name: "Member" }).click();
     const panel = page.getByRole("complementary", { name: "New Variable" });
     await panel.getByLabel("Name", { exact: true }).fill("OilTemperature");
     await panel.getByLabel(/^Unit/).click();

@@ -236,7 +236,7 @@ describe("the value form", () => {
       input.dispatchEvent(new ClipboardEvent("paste", { clipboardData, bubbles: true, cancelable: true }));
     });
     await commit(form);
-    expect(findValue(await exportFile(), "Series")?.match(/>[\d.]+</g)).toEqual([">10<", ">20<", ">9<", ">3<"]);
+    expect(findValue(await exportFile(), "Series")?.match(/>[\d.]+</g)).toEqual([">10<", ">20<", ">9<", ">3.0<"]);
   });
 
   it("edits a matrix as a grid and keeps what stays inside another size", async () => {
