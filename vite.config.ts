@@ -19,8 +19,6 @@ export default defineConfig({
           testTimeout: 60_000,
           hookTimeout: 60_000,
           pool: "forks",
-          // They wait for processes of their own most of the time.
-          maxWorkers: 2,
         },
       },
       {
