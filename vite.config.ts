@@ -34,6 +34,8 @@ export default defineConfig({
           hookTimeout: 180_000,
           fileParallelism: false,
           pool: "forks",
+          // A browser on a busy machine is late now and then; what is broken fails twice.
+          retry: 1,
         },
       },
     ],

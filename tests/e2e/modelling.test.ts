@@ -91,11 +91,7 @@ describe("the register", () => {
     const power = rowOf(page, /Active power Variable/);
     await power.getByRole("gridcell", { name: "kW", exact: true }).click();
     await page.keyboard.type("watt");
-    await page
-      .getByRole("option", { name: /4B|watt/ })
-      .first()
-      .waitFor();
-    await page.keyboard.press("Enter");
+    await page.getByRole("option", { name: /\bwatt WTT\b/ }).first().click();
     // UN/CEFACT Recommendation 20: watt is WTT; its id is the code's characters as a number (OPC 10000-8 §5.6.3.4).
     await power.getByRole("gridcell", { name: "W", exact: true }).waitFor();
     await power.getByRole("gridcell", { name: "0 … 15", exact: true }).click();

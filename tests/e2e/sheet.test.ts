@@ -125,8 +125,15 @@ describe("two people", () => {
 
   it("get the required models that the other chose, without a hand", async () => {
     await page.goto(`/models/${braider}/about`);
-    await page.getByRole("combobox", { name: "Add a required model" }).fill("PackML");
-    await page.getByRole("listbox", { name: "Add a required model" }).getByRole("option").first().click();
+    const found = page.getByRole("listbox", { name: "Add a required model" }).getByRole("option");
+    // What is typed before the page has come to life is lost: type until it answers.
+    const type = async (): Promise<number> => {
+      await page.getByRole("combobox", { name: "Add a required model" }).fill("");
+      await page.getByRole("combobox", { name: "Add a required model" }).fill("PackML");
+      return found.count();
+    };
+    await expect.poll(type, { timeout: 15_000, interval: 500 }).toBeGreaterThan(0);
+    await found.first().click();
     await page.getByRole("button", { name: "Save required models" }).click();
     await ines.page.getByText(/changed what this model stands on/).first().waitFor();
     await rowsOf(ines.page, "Process").first().waitFor();
