@@ -1,4 +1,4 @@
-import { X509Certificate, createHash } from "node:crypto";
+import { X509Certificate } from "node:crypto";
 import { listAllowances, listEndpoints, type EndpointRow } from "../db/repositories/endpoints.server";
 import { isAllowed, parseEndpointUrl } from "../domain/live/endpoint-address";
 
@@ -43,8 +43,7 @@ function describeTrust(base64: string | null): EndpointSummary["trust"] {
   if (base64 === null) return null;
   try {
     const certificate = new X509Certificate(Buffer.from(base64, "base64"));
-    const fingerprint = createHash("sha256").update(certificate.raw).digest("hex").toUpperCase().replace(/(..)(?=.)/g, "$1:");
-    return { fingerprint, validTo: new Date(certificate.validTo).toISOString() };
+    return { fingerprint: certificate.fingerprint256, validTo: new Date(certificate.validTo).toISOString() };
   } catch {
     return null;
   }

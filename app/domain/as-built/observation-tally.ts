@@ -1,14 +1,15 @@
 /** Counts what one Variable does while it is watched; the caller tells the time, so that a test needs no clock. */
+import { isBad, isGood } from "../mapping/status";
 import type { Observation } from "./as-built";
 
 export type StatusSeverity = "good" | "uncertain" | "bad";
 
 const RANK: Readonly<Record<StatusSeverity, number>> = { good: 0, uncertain: 1, bad: 2 };
 
-/** The severity bits of a StatusCode (OPC 10000-4 §7.38.1, Table 173). */
-export function getSeverity(code: number): StatusSeverity {
-  const bits = code >>> 30;
-  return bits === 0 ? "good" : bits === 1 ? "uncertain" : "bad";
+/** The severity of a StatusCode (OPC 10000-4 §7.38.1, Table 173). */
+function getSeverity(code: number): StatusSeverity {
+  if (isGood(code)) return "good";
+  return isBad(code) ? "bad" : "uncertain";
 }
 
 export class ObservationTally {

@@ -1,5 +1,5 @@
 /** What a server offers before anybody signs in: GetEndpoints (OPC 10000-4 §5.5.4), over an unprotected channel as the standard has it. */
-import { createHash, X509Certificate } from "node:crypto";
+import { X509Certificate } from "node:crypto";
 import { MessageSecurityMode, OPCUAClient, SecurityPolicy, UserTokenType, fromURI, type EndpointDescription } from "node-opcua";
 import type { Discovery, OfferedCertificate, OfferedEndpoint } from "~/domain/live/discovery";
 import { CONNECT_LIMIT, securityPolicies } from "./endpoint-settings";
@@ -45,7 +45,7 @@ function describeCertificate(der: Buffer | undefined): OfferedCertificate | null
     const certificate = new X509Certificate(der);
     return {
       data: der.toString("base64"),
-      fingerprint: createHash("sha256").update(certificate.raw).digest("hex").toUpperCase().replace(/(..)(?=.)/g, "$1:"),
+      fingerprint: certificate.fingerprint256,
       subject: certificate.subject.replaceAll("\n", ", "),
       issuer: certificate.issuer.replaceAll("\n", ", "),
       isSelfSigned: certificate.checkIssued(certificate),

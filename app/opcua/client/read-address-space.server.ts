@@ -127,7 +127,7 @@ function makeHeader(namespaces: readonly string[]): ModelHeader {
 
 /** The text of a value; null where the server has one that no file can hold, undefined where there is none. */
 function toXmlValue(answer: DataValue, context: WireContext): ReturnType<typeof writeValue> | null | undefined {
-  if (!answer.statusCode.isGoodish() && answer.statusCode.value >= 0x80000000) return undefined;
+  if (answer.statusCode.value >= 0x80000000) return undefined;
   const variant = fromWireVariant(answer.value, context);
   if (!variant) return undefined;
   try {
